@@ -1,0 +1,111 @@
+"""Bookings: book, shift, cancel."""
+
+from __future__ import annotations
+
+from typing import Annotated
+
+import typer
+
+from stockroom.cli.printing import show_done
+from stockroom.cli.shared import of
+from stockroom.cli.values import (
+    day_or_none,
+    percent,
+    time_or_none,
+    whole,
+    whole_or_none,
+)
+from stockroom.errors import BadInput
+
+Booking = Annotated[str, typer.Argument(metavar="BOOKING", help="Its number: K06.")]
+Firm = Annotated[str | None, typer.Option(metavar="WORD", help="pencilled, firm or done.")]
+KeepClosed = Annotated[
+    bool, typer.Option("--keep-closed", help="Keep it though the house is closed that day.")
+]
+
+
+def book(
+    ctx: typer.Context,
+    recipe: Annotated[str, typer.Argument(metavar="RECIPE", help="Its code: R04.")],
+    on: Annotated[str, typer.Option("--on", metavar="DATE", help="The day.")],
+    at: Annotated[str, typer.Option("--at", metavar="TIME", help="When it starts: 09:15.")],
+    groups: Annotated[str, typer.Option(metavar="NUMBER", help="Groups, or performances.")],
+    department: Annotated[
+        str, typer.Option("--dept", metavar="CODE", help="Whose money: CH.")
+    ] = "",
+    spare: Annotated[str, typer.Option(metavar="PERCENT", help="How much over.")] = "10",
+    firmness: Firm = None,
+    room: Annotated[str, typer.Option(metavar="ROOM", help="Where: LAB1.")] = "",
+    number: Annotated[
+        str | None, typer.Option(metavar="BOOKING", help="Its number; else the next.")
+    ] = None,
+    keep_closed: KeepClosed = False,
+) -> None:
+    """Book a recipe on a day.
+
+    Example: stockroom book R04 --on 2027-01-21 --at 09:15 --groups 12 --dept CH --by T1
+    """
+    from stockroom.measure.days import parse_day, parse_time
+    from stockroom.service import bookings
+
+    shared = of(ctx)
+    done = bookings.book(
+        shared.path,
+        number,
+        recipe,
+        parse_day(on, where="--on"),
+        parse_time(at, where="--at"),
+        whole(groups, "--groups"),
+        department,
+        spare=percent(spare, "--spare"),
+        firmness=firmness or "firm",
+        room=room,
+        keep=keep_closed,
+        today=shared.today,
+        by=shared.initials,
+    )
+    show_done(shared, done)
+
+
+def shift(
+    ctx: typer.Context,
+    booking: Booking,
+    on: Annotated[str | None, typer.Option("--on", metavar="DATE", help="Its new day.")] = None,
+    at: Annotated[str | None, typer.Option("--at", metavar="TIME", help="Its new time.")] = None,
+    groups: Annotated[str | None, typer.Option(metavar="NUMBER", help="Its new groups.")] = None,
+    firmness: Firm = None,
+    keep_closed: KeepClosed = False,
+) -> None:
+    """Change a booking's day, time, groups or firmness; what it was stays on record.
+
+    Example: stockroom shift K06 --groups 13 --by T1
+    """
+    from stockroom.service import bookings
+
+    if on is None and at is None and groups is None and firmness is None:
+        raise BadInput(f"{booking}: shifted how?", "Add --on, --at, --groups or --firmness.")
+    shared = of(ctx)
+    done = bookings.shift(
+        shared.path,
+        booking,
+        on=day_or_none(on, "--on"),
+        time=time_or_none(at, "--at"),
+        groups=whole_or_none(groups, "--groups"),
+        firmness=firmness,
+        keep=keep_closed,
+        today=shared.today,
+        by=shared.initials,
+    )
+    show_done(shared, done)
+
+
+def cancel(ctx: typer.Context, booking: Booking) -> None:
+    """Drop a booking: what was made for it stays as stock.
+
+    Example: stockroom cancel K06 --by T1
+    """
+    from stockroom.service import bookings
+
+    shared = of(ctx)
+    done = bookings.cancel(shared.path, booking, today=shared.today, by=shared.initials)
+    show_done(shared, done)

@@ -1,0 +1,101 @@
+"""What was seen of a bottle: a strength found, a look, lost, turned up, spoiled."""
+
+from __future__ import annotations
+
+from typing import Annotated
+
+import typer
+
+from stockroom.cli.printing import show_done
+from stockroom.cli.shared import of
+from stockroom.cli.stock import Bottle, Happened, when
+from stockroom.errors import BadInput
+
+
+def found(
+    ctx: typer.Context,
+    bottle: Bottle,
+    strength: Annotated[
+        str, typer.Argument(metavar="STRENGTH", help='With its unit: "0.0987 mol/dm3".')
+    ],
+    sure: Annotated[
+        bool, typer.Option("--sure", help="Keep it though it is far from the label.")
+    ] = False,
+    on: Happened = None,
+) -> None:
+    """A strength was found by titration: the bottle's recheck starts again.
+
+    Example: stockroom found S02 "0.0987 mol/dm3" --by T1
+    """
+    from stockroom.measure.parsing import parse_strength
+    from stockroom.service import checks
+
+    shared = of(ctx)
+    result = parse_strength(strength)
+    show_done(shared, checks.found(shared.path, bottle, result, sure=sure, **when(shared, on)))
+
+
+def look(
+    ctx: typer.Context,
+    bottle: Bottle,
+    good: Annotated[
+        bool | None, typer.Option("--good/--bad", help="What the look said.", show_default=False)
+    ] = None,
+    note: Annotated[str, typer.Option(help='What was seen: "milky with breath".')] = "",
+    on: Happened = None,
+) -> None:
+    """A bottle was looked at: good starts its life again, bad sets it aside.
+
+    Example: stockroom look S03 --good --note "starch blank clear" --by T1
+    """
+    from stockroom.service import checks
+
+    if good is None:
+        raise BadInput(f"{bottle}: was it good or bad?", "Add --good or --bad.")
+    shared = of(ctx)
+    show_done(shared, checks.look(shared.path, bottle, passed=good, note=note, **when(shared, on)))
+
+
+def lost(ctx: typer.Context, bottle: Bottle, on: Happened = None) -> None:
+    """A bottle cannot be found: no plan counts on it until it turns up.
+
+    Example: stockroom lost B28 --by T2
+    """
+    from stockroom.service import checks
+
+    shared = of(ctx)
+    show_done(shared, checks.lost(shared.path, bottle, **when(shared, on)))
+
+
+def turned_up(
+    ctx: typer.Context,
+    bottle: Bottle,
+    place: Annotated[
+        str | None, typer.Option(metavar="PLACE", help="Where; else its last place.")
+    ] = None,
+    on: Happened = None,
+) -> None:
+    """A lost bottle turned up: look at it before it is used.
+
+    Example: stockroom turned-up B28 --place A2 --by T2
+    """
+    from stockroom.service import checks
+
+    shared = of(ctx)
+    show_done(shared, checks.turned_up(shared.path, bottle, place=place, **when(shared, on)))
+
+
+def spoil(
+    ctx: typer.Context,
+    bottle: Bottle,
+    reason: Annotated[str, typer.Option("--why", help='What is wrong: "yellow tinge".')] = "",
+    on: Happened = None,
+) -> None:
+    """A bottle is spoiled or suspected: set aside, with what was made from it.
+
+    Example: stockroom spoil S05 --why "yellow tinge, iron suspected" --by T2
+    """
+    from stockroom.service import checks
+
+    shared = of(ctx)
+    show_done(shared, checks.spoil(shared.path, bottle, reason, **when(shared, on)))

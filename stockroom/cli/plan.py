@@ -1,0 +1,161 @@
+"""The reading commands: plan, fresh, past, usage, buying, ready, why."""
+
+from __future__ import annotations
+
+from datetime import date
+from typing import TYPE_CHECKING, Annotated
+
+import typer
+
+from stockroom.cli.printing import show, width
+from stockroom.cli.shared import Shared, of
+from stockroom.cli.values import day_or_none
+from stockroom.errors import BadInput
+
+if TYPE_CHECKING:
+    from stockroom.planning.decisions import Plan
+
+From = Annotated[
+    str | None,
+    typer.Option("--from", metavar="DATE", help="First day; else the first of the term."),
+]
+To = Annotated[
+    str | None, typer.Option("--to", metavar="DATE", help="Last day; else the last of the term.")
+]
+
+
+def plan(ctx: typer.Context, start: From = None, end: To = None) -> None:
+    """The plan of the term: have, make, check, order, and what cannot be done.
+
+    Example: stockroom plan --from 2027-01-25 --to 2027-01-29
+    """
+    from stockroom.reports.json_plan import plan_json
+    from stockroom.reports.plan_text import plan_text
+
+    shared = of(ctx)
+    answer = _planned(shared, start, end)
+    show(shared, lambda: plan_text(answer, width()), lambda: plan_json(answer))
+
+
+def fresh(ctx: typer.Context, start: From = None, end: To = None) -> None:
+    """What to make up, by day, with its steps and cautions.
+
+    Example: stockroom fresh --from 2027-01-25 --to 2027-01-29
+    """
+    from stockroom.reports.json_plan import fresh_json
+    from stockroom.reports.makes_text import fresh_text
+
+    shared = of(ctx)
+    answer = _planned(shared, start, end)
+    show(shared, lambda: fresh_text(answer, width()), lambda: fresh_json(answer))
+
+
+def past(
+    ctx: typer.Context,
+    on: Annotated[str | None, typer.Option(metavar="DATE", help="The day; else today.")] = None,
+) -> None:
+    """What is past, weak, undated or unchecked on a day, and for which booking it matters.
+
+    Example: stockroom past --on 2027-02-10
+    """
+    from stockroom.reports.json_plan import past_json
+    from stockroom.reports.past_text import past_text
+    from stockroom.service.plan import past_on
+
+    shared = of(ctx)
+    today = shared.today
+    day = day_or_none(on, "--on") or today
+    answer = past_on(shared.path, as_at=today, on=day)
+    show(shared, lambda: past_text(answer, day, width()), lambda: past_json(answer, day))
+
+
+def usage(ctx: typer.Context, start: From = None, end: To = None) -> None:
+    """What the term uses, by solution and in bought form.
+
+    Example: stockroom usage
+    """
+    from stockroom.reports.json_plan import usage_json
+    from stockroom.reports.usage_text import usage_text
+
+    shared = of(ctx)
+    answer = _planned(shared, start, end)
+    show(shared, lambda: usage_text(answer, width()), lambda: usage_json(answer))
+
+
+def buying(ctx: typer.Context) -> None:
+    """What to order, by when, why, and whose money it is.
+
+    Example: stockroom buying --as-at 2027-01-11
+    """
+    from stockroom.reports.buying_text import buying_text
+    from stockroom.reports.json_plan import buying_json
+
+    shared = of(ctx)
+    answer = _planned(shared, None, None)
+    show(shared, lambda: buying_text(answer, width()), lambda: buying_json(answer))
+
+
+def ready(
+    ctx: typer.Context,
+    ref: Annotated[str, typer.Argument(metavar="BOOKING|DATE", help="K11, or 2027-03-23.")],
+) -> None:
+    """Is everything good on the day: first line YES or NO, exit 1 for no.
+
+    Example: stockroom ready K11
+    """
+    from stockroom.reports.json_plan import ready_json
+    from stockroom.reports.ready_text import ready_text
+    from stockroom.service.database import is_practice
+    from stockroom.service.plan import ready as is_ready
+
+    shared = of(ctx)
+    today, practice = shared.today, is_practice(shared.path)
+    answer = is_ready(shared.path, ref, as_at=today)
+    show(
+        shared,
+        lambda: ready_text(answer, width(), practice=practice),
+        lambda: ready_json(answer, as_at=today, practice=practice),
+    )
+    raise typer.Exit(0 if answer.ready else 1)
+
+
+def why(
+    ctx: typer.Context,
+    ref: Annotated[
+        str,
+        typer.Argument(metavar="REF", help="A booking, need, make, order or bottle: K15, K15.1."),
+    ],
+    instead: Annotated[
+        str | None, typer.Option(metavar="NAME", help="Ask about this in its place.")
+    ] = None,
+) -> None:
+    """The reasons behind one line, in five lines or fewer.
+
+    Example: stockroom why K11 --instead "hydrochloric acid"
+    """
+    from stockroom.reports.json_plan import why_json
+    from stockroom.reports.ready_text import why_text
+    from stockroom.service.database import is_practice
+    from stockroom.service.plan import why as reasons_for
+
+    shared = of(ctx)
+    today, practice = shared.today, is_practice(shared.path)
+    reasons = reasons_for(shared.path, ref, as_at=today, instead=instead)
+    show(
+        shared,
+        lambda: why_text(reasons, practice=practice),
+        lambda: why_json(ref, reasons, as_at=today, practice=practice),
+    )
+
+
+def _planned(shared: Shared, start: str | None, end: str | None) -> Plan:
+    from stockroom.service.plan import term_plan
+
+    first, last = day_or_none(start, "--from"), day_or_none(end, "--to")
+    _in_order(first, last)
+    return term_plan(shared.path, as_at=shared.today, start=first, end=last)
+
+
+def _in_order(first: date | None, last: date | None) -> None:
+    if first and last and last < first:
+        raise BadInput(f"--to {last} is before --from {first}.", "Turn them round.")

@@ -1,0 +1,130 @@
+"""The options that may stand before or after the command: --store, --as-at, --by, --json.
+
+Click takes an option of the whole program only before the command's name. So
+these four are lifted out of the command line first, wherever they stand.
+"""
+
+from __future__ import annotations
+
+import os
+import re
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
+from datetime import date
+from pathlib import Path
+
+import typer
+
+from stockroom.cli.values import day_or_none
+from stockroom.errors import BadInput
+
+ANYWHERE = (
+    "Anywhere in the line: --store PATH (the store; else STOCKROOM_STORE), "
+    "--as-at DATE (the day to think of as today), --json (for programs), "
+    "--by INITIALS (who; else STOCKROOM_BY)."
+)
+"""Printed under the help of every command."""
+
+
+_WITH_VALUE = {"--store": "a path", "--as-at": "a date", "--by": "initials"}
+
+
+@dataclass(frozen=True, slots=True)
+class Shared:
+    """What was given with the four, as typed; None where it was not."""
+
+    store: str | None = None
+    as_at: str | None = None
+    by: str | None = None
+    json: bool = False
+
+    @property
+    def path(self) -> Path:
+        """The store to open: the one given, else the usual one, else the practice college."""
+        from stockroom.settings import store_to_open
+
+        return store_to_open(self.store)
+
+    @property
+    def initials(self) -> str:
+        """Whose hand this is: --by, else STOCKROOM_BY; empty when neither says."""
+        return self.by if self.by is not None else os.environ.get("STOCKROOM_BY", "")
+
+    @property
+    def given_day(self) -> date | None:
+        """The day given with --as-at. Raises: BadDate when it cannot be read."""
+        return day_or_none(self.as_at, "--as-at")
+
+    @property
+    def today(self) -> date:
+        """The day given, else the practice day of a practice store, else today."""
+        from stockroom.service.database import day_for
+
+        return day_for(self.path, self.given_day)
+
+
+def of(ctx: typer.Context) -> Shared:
+    """The shared options of the command line this command stood in."""
+    found = ctx.find_root().obj
+    return found if isinstance(found, Shared) else Shared()
+
+
+def pull(
+    words: Sequence[str], value_options: Mapping[str, frozenset[str]]
+) -> tuple[Shared, list[str]]:
+    """The shared options out of a command line, and the words that are left, in order.
+
+    `value_options` names, for each command, the options that a value follows:
+    in `--note --json` the note is "--json". Nothing after `--` is touched.
+    Raises: BadInput when a value is missing or an option is given two values.
+    """
+    found: dict[str, str] = {}
+    left: list[str] = []
+    takes: frozenset[str] | None = None
+    rest = iter(words)
+    for word in rest:
+        if word == "--":
+            return _shared(found), [*left, word, *rest]
+        if word == "--json" or word.partition("=")[0] in _WITH_VALUE:
+            _keep(found, word, rest)
+        elif word in (takes or ()):
+            left += [word, *_next(rest)]
+        else:
+            # the first word that is no option names the command
+            takes = value_options.get(word, frozenset()) if _names(word, takes) else takes
+            left.append(_shielded(word))
+    return _shared(found), left
+
+
+def _names(word: str, takes: frozenset[str] | None) -> bool:
+    return takes is None and not word.startswith("-")
+
+
+def _next(rest: Iterator[str]) -> list[str]:
+    value = next(rest, None)
+    return [] if value is None else [value]
+
+
+def _keep(found: dict[str, str], word: str, rest: Iterator[str]) -> None:
+    name, equals, value = word.partition("=")
+    if name == "--json":
+        found[name] = "yes"
+        return
+    if not equals:
+        value = next(rest, "")
+    if not value or value.startswith("--"):
+        after = f", not {value!r}" if value else ""
+        raise BadInput(
+            f"{name} wants {_WITH_VALUE[name]} after it{after}.", "See stockroom --help."
+        )
+    if found.setdefault(name, value) != value:
+        raise BadInput(f"{name} is given twice: {found[name]!r} and {value!r}.", "Give one.")
+
+
+def _shielded(word: str) -> str:
+    # "-5 cm3" is an amount to be refused in words, not a row of unknown options
+    return f" {word}" if re.match(r"-[\d.]", word) else word
+
+
+def _shared(found: Mapping[str, str]) -> Shared:
+    return Shared(found.get("--store"), found.get("--as-at"), found.get("--by"), "--json" in found)

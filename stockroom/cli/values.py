@@ -1,0 +1,78 @@
+"""Words of the command line to values; every refusal quotes what was typed."""
+
+from __future__ import annotations
+
+import math
+from datetime import date
+from typing import TYPE_CHECKING
+
+from stockroom.errors import BadInput
+
+if TYPE_CHECKING:
+    from stockroom.measure.amounts import Amount
+
+
+def day_or_none(text: str | None, where: str) -> date | None:
+    """A day typed after the option `where`, or None. Raises: BadDate."""
+    if text is None:
+        return None
+    from stockroom.measure.days import parse_day
+
+    return parse_day(text, where=where)
+
+
+def time_or_none(text: str | None, where: str) -> int | None:
+    """Minutes after midnight of a time typed after `where`, or None. Raises: BadDate."""
+    if text is None:
+        return None
+    from stockroom.measure.days import parse_time
+
+    return parse_time(text, where=where)
+
+
+def amount_of(text: str) -> Amount:
+    """An amount with its unit. Raises: BadAmount."""
+    from stockroom.measure.parsing import parse_amount
+
+    return parse_amount(text)
+
+
+def whole(text: str, where: str) -> int:
+    """A whole number, below zero too: what is sensible is for the use case to say.
+
+    Raises: BadInput.
+    """
+    try:
+        return int(text)
+    except ValueError:
+        raise BadInput(f"{where} {text!r} is not a whole number.", f"Write {where} 12.") from None
+
+
+def whole_or_none(text: str | None, where: str) -> int | None:
+    """A whole number typed after `where`, or None. Raises: BadInput."""
+    return None if text is None else whole(text, where)
+
+
+def percent(text: str, where: str) -> float:
+    """A per cent from 0 up, with or without its sign. Raises: BadInput."""
+    value = _number(text)
+    if not (math.isfinite(value) and value >= 0):
+        raise BadInput(f"{where} {text!r} is not a per cent from 0 up.", f"Write {where} 10.")
+    return value
+
+
+def number_or_none(text: str | None, where: str) -> float | None:
+    """A number above zero typed after `where`, "97 %" as 97, or None. Raises: BadInput."""
+    if text is None:
+        return None
+    value = _number(text)
+    if not (math.isfinite(value) and value > 0):
+        raise BadInput(f"{where} {text!r} is not a number above 0.", f"Write {where} 1.18.")
+    return value
+
+
+def _number(text: str) -> float:
+    try:
+        return float(text.strip().removesuffix("%"))
+    except ValueError:
+        return math.nan

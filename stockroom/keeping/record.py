@@ -1,0 +1,67 @@
+"""What is known about one bottle's ageing: its dates, its checks, where it stood."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from datetime import date
+from enum import StrEnum
+
+from stockroom.measure.days import PrintedDate
+
+
+class CheckKind(StrEnum):
+    """How a bottle was checked."""
+
+    FOUND = "found"
+    """A strength was measured."""
+    LOOKED = "looked"
+    """A yes-or-no inspection by eye."""
+    TESTED = "tested"
+    """A peroxide-former's named test, the only thing that moves a safety date."""
+
+
+@dataclass(frozen=True, slots=True)
+class Check:
+    """One dated check. `strength` is in the line's own unit, for a found strength only."""
+
+    on: date
+    kind: CheckKind
+    passed: bool = True
+    strength: float | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Stay:
+    """Where a bottle stood from a day on: the place's name and its °C, if known."""
+
+    since: date
+    place: str
+    temperature_c: float | None
+
+
+@dataclass(frozen=True, slots=True)
+class Record:
+    """The dates, checks and stays of one bottle; None means nobody wrote it down.
+
+    `nominal` is the label's strength in the line's unit (mol/dm³ or g/dm³).
+    `opened_guessed` marks an opened bottle whose day was not written: it counts
+    as opened on the day it was received, the earliest it can have been.
+    """
+
+    received: date | None = None
+    opened: date | None = None
+    opened_guessed: bool = False
+    made: date | None = None
+    printed: PrintedDate | None = None
+    nominal: float | None = None
+    checks: tuple[Check, ...] = ()
+    stays: tuple[Stay, ...] = ()
+    set_aside: str = ""
+    not_found: bool = False
+    gone: bool = False
+    ready_on: date | None = None
+
+    @property
+    def undated(self) -> bool:
+        """True when neither received, made nor looked at: nothing to count a life from."""
+        return not (self.received or self.made or any(check.passed for check in self.checks))

@@ -1,0 +1,251 @@
+"""The verdict on one bottle on one day: its condition, until when, and what decides.
+
+Each kind of rule that sets a date has one function here, looked up in
+`_DATED`; the earliest last good day wins and is named. Last good days are
+included: good until 31 March is usable all that day.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass, replace
+from datetime import date, timedelta
+from enum import StrEnum
+
+from stockroom.keeping.record import Check, CheckKind, Record
+from stockroom.keeping.rules import Origin, Purpose, Rule, RuleKind
+from stockroom.keeping.strength import (
+    Strengths,
+    last_check,
+    origin_day,
+    strengths_on,
+    temperature_on,
+)
+from stockroom.measure.periods import add, format_period
+
+WEAK_BELOW = 0.80
+"""A bottle is weak below this part of its label strength: outside even "rough"."""
+
+
+class Condition(StrEnum):
+    """What a bottle is like on a day. Words ours; design section 2."""
+
+    SOUND = "sound"
+    WATCH = "watch"
+    WEAK = "weak"
+    PAST = "past"
+    NO_DATE = "no date"
+    SET_ASIDE = "set aside"
+    NOT_FOUND = "not found"
+    GONE = "gone"
+
+
+USABLE = frozenset({Condition.SOUND, Condition.WATCH, Condition.WEAK})
+"""Conditions the planner may count at all, if the strength suffices."""
+
+
+@dataclass(frozen=True, slots=True)
+class Limit:
+    """The last good day one rule gives, in words, and what it does when over.
+
+    `known_until` marks a recheck: past it the strength is not known, which is
+    *watch*; any other limit makes the bottle *past*.
+    """
+
+    until: date
+    because: str
+    safety: bool = False
+    known_until: bool = False
+    by_look: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Verdict:
+    """Condition on the day, last good day if one is set, what decided, and the strengths.
+
+    `good_until` is the date named by `decided_by`: for a bottle gone past, the
+    day it was good until; for a sound one the nearest limit ahead.
+    `recheck_by` is the last day its strength counts as known, if it is rechecked;
+    `usable_until` the last day before any limit that is not a recheck.
+    """
+
+    condition: Condition
+    good_until: date | None
+    decided_by: str
+    strengths: Strengths
+    recheck_by: date | None = None
+    usable_until: date | None = None
+    safety: bool = False
+    look_would_do: bool = False
+    """True when only a look stands between this bottle and being sound."""
+
+
+def verdict(
+    record: Record, rules: tuple[Rule, ...], on: date, purpose: Purpose = Purpose.ANY
+) -> Verdict:
+    """Judge one bottle on one day, for a purpose.
+
+    Order: gone, not found, set aside, no date, past, watch, weak, sound. Never
+    raises; a bottle without limits is sound with no date.
+    """
+    strengths = strengths_on(record, rules, on)
+    limits = limits_of(record, rules, on, purpose)
+    unusable = _out_of_use(record)
+    if unusable:
+        looks = unusable[0] is Condition.NO_DATE and not any(limit.until < on for limit in limits)
+        return Verdict(unusable[0], None, unusable[1], strengths, look_would_do=looks)
+    return _judged(strengths, limits, on)
+
+
+def _judged(strengths: Strengths, limits: list[Limit], on: date) -> Verdict:
+    hard = [limit for limit in limits if not limit.known_until]
+    over = [limit for limit in limits if limit.until < on]
+    deciding = _deciding([x for x in over if not x.known_until] or over or limits)
+    condition, until, because = Condition.SOUND, deciding.until, deciding.because
+    if over:
+        condition = Condition.WATCH if deciding.known_until else Condition.PAST
+    elif _is_weak(strengths):
+        condition, because = Condition.WEAK, _weak_words(strengths)
+    return Verdict(
+        condition=condition,
+        good_until=None if until == date.max else until,
+        decided_by=because,
+        strengths=strengths,
+        recheck_by=min((x.until for x in limits if x.known_until), default=None),
+        usable_until=min((x.until for x in hard), default=None),
+        safety=deciding.safety,
+        look_would_do=condition is Condition.PAST
+        and all(x.by_look for x in over if not x.known_until),
+    )
+
+
+def limits_of(
+    record: Record, rules: tuple[Rule, ...], on: date, purpose: Purpose = Purpose.ANY
+) -> list[Limit]:
+    """Every dated limit that speaks of this bottle, in the order of the rules."""
+    place = temperature_on(record, on)
+    limits = [_printed(record)] if record.printed and record.printed.day else []
+    for rule in rules:
+        asked = rule.purpose is Purpose.ANY or rule.purpose is purpose
+        dated = _DATED.get(rule.kind)
+        if dated and asked and rule.holds_for(record.nominal, place):
+            limit = dated(record, rule, on, place)
+            limits += [limit] if limit else []
+    return limits
+
+
+def _out_of_use(record: Record) -> tuple[Condition, str] | None:
+    if record.gone:
+        return Condition.GONE, "discarded"
+    if record.not_found:
+        return Condition.NOT_FOUND, "not found when last looked for"
+    if record.set_aside:
+        return Condition.SET_ASIDE, record.set_aside
+    if record.undated:
+        return Condition.NO_DATE, "no date on it: needs a look"
+    return None
+
+
+def _deciding(limits: list[Limit]) -> Limit:
+    if not limits:
+        return Limit(date.max, "no limit set")
+    return min(limits, key=lambda limit: (limit.until, limit.known_until, limit.because))
+
+
+def _printed(record: Record) -> Limit:
+    assert record.printed is not None and record.printed.day is not None
+    words = f'printed "{record.printed.text}"'
+    if record.printed.ambiguous:
+        words += f", read as {_day(record.printed.day)} until somebody says"
+    return Limit(record.printed.day, words)
+
+
+def _life(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+    since = origin_day(record, rule.origin)
+    if since is None or rule.lasts is None:
+        return None
+    guessed = rule.origin is Origin.OPENED and record.opened_guessed
+    words = f"{rule.origin} {_day(since)}{' (guessed)' if guessed else ''}"
+    return _counted(words, since, rule, place)
+
+
+def _same_day(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+    made = record.made
+    return Limit(made, f"made {_day(made)}, same day only", rule.safety) if made else None
+
+
+def _recheck(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+    found = last_check(record, on, CheckKind.FOUND)
+    return _from_check(record, rule, _on(found), "found", place, known=True)
+
+
+def _look(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+    # a titration is at least as good as a look: the house counts from either
+    seen = last_check(record, on, CheckKind.LOOKED, CheckKind.FOUND)
+    limit = _from_check(record, rule, _on(seen), seen.kind if seen else "", place)
+    return limit and replace(limit, by_look=True)
+
+
+def _test(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+    tested = last_check(record, on, CheckKind.TESTED)
+    limit = _from_check(record, rule, _on(tested), "tested", place)
+    return limit and Limit(limit.until, f"{limit.because}, test or discard", safety=True)
+
+
+def _on(check: Check | None) -> date | None:
+    return check.on if check else None
+
+
+def _from_check(
+    record: Record,
+    rule: Rule,
+    checked: date | None,
+    how: str,
+    place: float | None,
+    *,
+    known: bool = False,
+) -> Limit | None:
+    begun = origin_day(record, rule.origin)
+    since = checked or begun
+    if since is None or rule.lasts is None:
+        return None
+    words = f"{how} {_day(since)}" if checked else f"{rule.origin} {_day(since)}, not checked since"
+    return _counted(words, since, rule, place, known=known)
+
+
+def _counted(
+    words: str, since: date, rule: Rule, place: float | None, *, known: bool = False
+) -> Limit:
+    assert rule.lasts is not None
+    until = add(since, rule.lasts)
+    words = f"{words} + {format_period(rule.lasts)}"
+    if rule.at_c is not None and rule.factor_per_10c and place is not None and place != rule.at_c:
+        scale = rule.factor_per_10c ** ((place - rule.at_c) / 10.0)
+        until = since + timedelta(days=int((until - since).days / scale))
+        words += f" at {rule.at_c:g} °C, {(until - since).days} d at {place:g} °C"
+    return Limit(until, words, rule.safety, known_until=known)
+
+
+_DATED: dict[RuleKind, Callable[[Record, Rule, date, float | None], Limit | None]] = {
+    RuleKind.LIFE: _life,
+    RuleKind.SAME_DAY: _same_day,
+    RuleKind.RECHECK: _recheck,
+    RuleKind.LOOK: _look,
+    RuleKind.TEST: _test,
+}
+
+
+def _is_weak(strengths: Strengths) -> bool:
+    if not strengths.nominal or strengths.expected is None:
+        return False
+    return strengths.expected < WEAK_BELOW * strengths.nominal
+
+
+def _weak_words(strengths: Strengths) -> str:
+    assert strengths.expected is not None and strengths.nominal
+    part = 100 * strengths.expected / strengths.nominal
+    return f"expected at {part:.0f} % of its label strength"
+
+
+def _day(day: date) -> str:
+    return day.isoformat()

@@ -1,0 +1,97 @@
+"""How much of an ingredient a volume takes, in the form really in the bottle."""
+
+from __future__ import annotations
+
+import re
+
+from stockroom.errors import MissingFigure, NotAllowed
+from stockroom.measure.amounts import Amount, Kind
+from stockroom.measure.formats import format_amount, format_number, format_strength
+from stockroom.planning.facts import Form, Line
+
+UL_PER_DM3 = 1_000_000
+
+_WRITTEN = re.compile(r"([0-9.]+) ?([^0-9 ].*)")
+
+
+def say(micro: int, kind: Kind) -> str:
+    """An amount in words: 264000 µL is "264 cm³"."""
+    return format_amount(Amount(kind, micro))
+
+
+def solute_in(line: Line, volume_ul: int) -> float:
+    """Solute in a volume of a made line at its nominal strength: mmol, or mg without a formula.
+
+    Raises MissingFigure for a line without a strength.
+    """
+    if line.strength is None:
+        raise MissingFigure(
+            f"{line.key} has no strength to work an amount out from.",
+            "Give its method amounts per dm³ of product.",
+        )
+    return line.strength * volume_ul / 1000.0
+
+
+def take_for(line: Line, strength: float | None, solute: float) -> int:
+    """Micro-units of `line` that hold `solute` (mmol or mg), at `strength` in its unit.
+
+    A solid uses its own formula and assay; a liquid or solution its strength on
+    the day (nominal when None). Raises MissingFigure when neither is known.
+    """
+    if line.form is Form.SOLID and line.solute_per_gram:
+        return round(solute / line.solute_per_gram * 1_000_000)
+    held = line.strength if strength is None else strength
+    if not held:
+        raise MissingFigure(
+            f"The strength of {line.key} is not known.",
+            "Read it off the label, or titrate it and enter what you find.",
+        )
+    return round(solute / held * 1000.0)
+
+
+def draw_for(
+    ingredient: Line,
+    bottle_strength: float | None,
+    product: Line,
+    volume_ul: int,
+    per_dm3: int | None,
+) -> int:
+    """Micro-units of an ingredient for `volume_ul` of a product.
+
+    `per_dm3` (micro-units per dm³) is used as it stands; None works the amount
+    out from the strengths. Raises NotAllowed when the bottle is weaker than the
+    product has to be, MissingFigure when a strength is not known.
+    """
+    if per_dm3 is not None:
+        return round(volume_ul * per_dm3 / UL_PER_DM3)
+    if not strong_enough(ingredient, bottle_strength, product):
+        weak, wanted = bottle_strength or ingredient.strength or 0.0, product.strength or 0.0
+        raise NotAllowed(
+            f"Cannot reach {format_strength(wanted, product.unit)} "
+            f"from {format_strength(weak, ingredient.unit)}.",
+            "Use a stronger bottle, or ask for less.",
+        )
+    return take_for(ingredient, bottle_strength, solute_in(product, volume_ul))
+
+
+def strong_enough(ingredient: Line, strength: float | None, product: Line) -> bool:
+    """True unless a liquid or solution is weaker than the product made from it."""
+    if ingredient.form is Form.SOLID or product.strength is None:
+        return True
+    held = ingredient.strength if strength is None else strength
+    return held is not None and held >= product.strength * (1 - 1e-9)
+
+
+def say_strength(line: Line, value: float | None) -> str:
+    """A strength in the words of the line's own label: 7.95 mol/dm³ of peroxide as "89.1 vol".
+
+    `value` is in the line's unit; "unknown" when None. Per cents by mass do not
+    go with the strength in a straight line, so those are given in `line.unit`.
+    """
+    if value is None:
+        return "unknown"
+    written = _WRITTEN.fullmatch(line.strength_text)
+    if not written or not line.strength or "w/w" in line.strength_text:
+        return format_strength(value, line.unit)
+    scaled = value / line.strength * float(written[1])
+    return f"{format_number(scaled, 3)} {written[2].replace('dm3', 'dm³')}"

@@ -1,0 +1,244 @@
+"""Step 5: freeze what was worked out into answers and makes, with their reasons."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from datetime import date
+
+from stockroom.measure.amounts import Kind
+from stockroom.planning.amounts import say, say_strength
+from stockroom.planning.decisions import Answer, Draw, Make, Outcome, Short
+from stockroom.planning.explode import Need
+from stockroom.planning.facts import Facts, Form
+from stockroom.planning.make import Batch, Source, keeps
+from stockroom.planning.shelf import Promise, Shelf
+from stockroom.planning.timing import ready_at
+from stockroom.planning.wants import Settled, Want
+from stockroom.planning.windows import good_until
+from stockroom.safety.cautions import cautions_for
+
+_OUTCOMES = {
+    Settled.HELD: Outcome.HAVE,
+    Settled.BUY: Outcome.BUY,
+    Settled.SHOP: Outcome.BUY,
+    Settled.SHORT: Outcome.SHORT,
+    Settled.REFUSED: Outcome.REFUSED,
+}
+
+
+def outcome_of(want: Want) -> Outcome:
+    """What becomes of a need: a make that waits for something to be bought is a buy."""
+    if want.settled is Settled.MAKE:
+        waits = any(part.to_buy for part in want.tree())
+        return Outcome.BUY if waits else Outcome.MAKE
+    return _OUTCOMES[want.settled]
+
+
+def answers(
+    facts: Facts, wants: Iterable[Want], batches: list[Batch], shelf: Shelf
+) -> list[Answer]:
+    """One answer per need, in the order of the bookings."""
+    made_in = {id(want): batch for batch in batches for want in batch.wants}
+    row = [_answer(facts, want, made_in.get(id(want)), shelf) for want in wants]
+    return sorted(row, key=lambda a: (a.booking.on, a.booking.minute, *_number(a.ref)))
+
+
+def _number(ref: str) -> tuple[str, int]:
+    booking, _, number = ref.rpartition(".")
+    return booking, int(number)
+
+
+def _answer(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> Answer:
+    need = want.need
+    outcome = outcome_of(want)
+    draws = tuple(_draw(facts, promise, shelf) for promise in want.promises)
+    if outcome in (Outcome.SHORT, Outcome.REFUSED):
+        draws, batch = (), None
+    return Answer(
+        ref=need.ref,
+        booking=need.booking,
+        recipe_title=need.recipe.title,
+        line=need.line.key,
+        item=need.line.item,
+        strength=need.requirement.strength_text or need.line.strength_text,
+        amount=need.amount,
+        kind=need.line.kind,
+        outcome=outcome,
+        draws=draws,
+        make=batch.id if batch else "",
+        closeness=need.requirement.closeness,
+        fresh=need.requirement.fresh,
+        reasons=tuple(_reasons(facts, want, batch, shelf)),
+    )
+
+
+def _draw(facts: Facts, promise: Promise, shelf: Shelf) -> Draw:
+    bottle = shelf.bottle[promise.bottle]
+    line = facts.lines[bottle.line]
+    strength = shelf.verdict_planned(promise.bottle, promise.on).strengths.expected
+    return Draw(
+        promise.amount, line.kind, bottle=promise.bottle, line=line.key,
+        strength=None if line.form is Form.SOLID else strength,
+    )  # fmt: skip
+
+
+def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> list[str]:
+    words = [want.need.sum_in_words]
+    for promise in want.promises if want.settled is Settled.HELD else ():
+        words.append(_why_this_bottle(facts, want.need, promise, shelf))
+    if batch:
+        with_whom = [need.booking.number for need in batch.needs]
+        shared = [
+            number for number in dict.fromkeys(with_whom) if number != want.need.booking.number
+        ]
+        together = f", together with {', '.join(shared)}" if shared else ""
+        words.append(f"made as {batch.id} on {batch.start[0]}{together}")
+    if want.settled is Settled.SHOP:
+        words.append(f"bought at a shop by {facts.calendar.before(want.need.on, 1)}")
+    said = " ".join(want.reasons)
+    words += list(dict.fromkeys(want.reasons))
+    passed = [(number, why) for number, why in want.passed_over if why not in said]
+    words += [f"{number} not used: {why}" for number, why in dict.fromkeys(passed)]
+    return words
+
+
+def _why_this_bottle(facts: Facts, need: Need, promise: Promise, shelf: Shelf) -> str:
+    judged = shelf.verdict_planned(promise.bottle, promise.on, promise.purpose)
+    strengths = judged.strengths
+    words = f"{say(promise.amount, need.line.kind)} from {promise.bottle}"
+    if strengths.expected is not None and need.line.form is not Form.SOLID:
+        basis = (
+            f"found {strengths.found_on}" if strengths.found is not None else "label, not checked"
+        )
+        words += f", expected {say_strength(need.line, strengths.expected)} on the day ({basis})"
+    until = judged.usable_until
+    return words + (f", good until {until}" if until else "")
+
+
+def makes(facts: Facts, batches: list[Batch]) -> list[Make]:
+    """Every batch as a make, in order of the day work starts."""
+    return [_make(facts, batch) for batch in batches]
+
+
+def _make(facts: Facts, batch: Batch) -> Make:
+    line, run = batch.line, batch.run
+    kept = keeps(facts, line, batch.heel, run.on)
+    until = good_until(line, run.on)
+    return Make(
+        id=batch.id,
+        line=line.key,
+        item=line.item,
+        strength=line.strength_text,
+        volume=batch.volume,
+        needed=run.needed,
+        earliest=max(item.earliest for item in run.items),
+        latest=run.on if len(run.items) == 1 else min(item.latest for item in run.items),
+        on=run.on,
+        ready=_ready_day(facts, batch),
+        bookings=tuple(dict.fromkeys(need.booking.number for need in batch.needs)),
+        sources=tuple(_source(source) for source in batch.sources),
+        fresh=batch.fresh,
+        minutes=batch.method.minutes + batch.method.finish_minutes,
+        finish_on=batch.ready[0] if batch.method.finish_minutes else None,
+        heel=batch.heel,
+        heel_kept=kept,
+        good_until=until,
+        steps=batch.method.steps,
+        cautions=_cautions(facts, batch),
+        reasons=tuple(_make_reasons(facts, batch, kept)),
+    )
+
+
+def _ready_day(facts: Facts, batch: Batch) -> date:
+    return ready_at(batch.start, batch.method, facts.calendar)[0]
+
+
+def _cautions(facts: Facts, batch: Batch) -> tuple[str, ...]:
+    groups = [
+        (source.line.storage_group, source.line.form is Form.SOLID) for source in batch.sources
+    ]
+    general = cautions_for(groups, vented=batch.line.vented_cap, never_kept=batch.line.never_kept)
+    return tuple(dict.fromkeys([*batch.method.cautions, *general]))
+
+
+def _source(source: Source) -> Draw:
+    kind = source.line.kind
+    if source.bottle:
+        return Draw(
+            source.amount, kind, bottle=source.bottle, line=source.line.key, item=source.line.item,
+            strength=source.strength,
+        )  # fmt: skip
+    made = source.batch.id if source.batch else ""
+    return Draw(
+        source.amount, kind, item=source.line.key, line=source.line.key, make=made,
+        strength=source.strength,
+    )  # fmt: skip
+
+
+def _make_reasons(facts: Facts, batch: Batch, kept: bool) -> list[str]:
+    line = batch.line
+    parts = [
+        f"{item.wants[0].ref if len(item.wants) == 1 else _refs(item.wants)} "
+        f"{say(item.volume, Kind.VOLUME)}"
+        for item in batch.run.items
+    ]
+    words = [f"for {' + '.join(parts)}"]
+    for source in batch.sources:
+        words.append(_source_reason(source))
+    words += batch.reasons
+    words.append(_day_reason(batch))
+    if batch.heel and batch.heel > facts.house.batch_step:
+        where = "kept as stock" if kept else "poured away by the usual route"
+        words.append(f"{say(batch.heel, Kind.VOLUME)} over: {where}")
+    return words
+
+
+def _refs(wants: list[Want]) -> str:
+    return "/".join(dict.fromkeys(want.need.booking.number for want in wants))
+
+
+def _source_reason(source: Source) -> str:
+    amount = say(source.amount, source.line.kind)
+    if not source.bottle:
+        return f"{amount} of {source.line.key}, " + (
+            "made first" if source.batch else "to be bought"
+        )
+    if source.line.form is Form.SOLID or source.strength is None:
+        return f"{amount} of {source.line.key} from {source.bottle}"
+    expected = say_strength(source.line, source.strength)
+    words = f"{amount} of {source.bottle} at {expected}"
+    if source.line.strength and abs(source.strength / source.line.strength - 1) > 1e-3:
+        by_label = round(source.amount * source.strength / source.line.strength)
+        words += f" (the label's {source.line.strength_text} would say {say(by_label, source.line.kind)})"
+    return words
+
+
+def _day_reason(batch: Batch) -> str:
+    first = batch.run.items[0]
+    for_day = min(item.use_on for item in batch.run.items)
+    if first.fresh:
+        return f"fresh: made on the morning of {for_day}"
+    stands = f", stands {batch.method.stands_hours:.2g} h" if batch.method.stands_hours else ""
+    return f"the last day that is ready for {for_day}{stands}: {batch.start[0]}"
+
+
+def shorts(wants: Iterable[Want]) -> list[Short]:
+    """What cannot be had, in the order of the bookings."""
+    row = []
+    for want in sorted(wants, key=lambda w: w.need.rank):
+        if outcome_of(want) in (Outcome.SHORT, Outcome.REFUSED):
+            need = want.need
+            reason = "; ".join(dict.fromkeys(want.reasons))
+            strength = need.requirement.strength_text or need.line.strength_text
+            row.append(
+                Short(
+                    need.ref,
+                    need.booking.number,
+                    need.line.item,
+                    strength,
+                    need.amount,
+                    need.line.kind,
+                    reason,
+                )  # fmt: skip
+            )
+    return row

@@ -1,0 +1,107 @@
+"""Step 1: bookings into dated needs, with every step of the sum kept for `why`."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+from datetime import date
+
+from stockroom.errors import UnknownName
+from stockroom.planning.amounts import say
+from stockroom.planning.facts import Booking, Facts, Firmness, Line, Per, Recipe, Requirement
+
+
+@dataclass(frozen=True, slots=True)
+class Need:
+    """One requirement of one booking: so much of a line, on a day. Micro-units."""
+
+    ref: str
+    booking: Booking
+    recipe: Recipe
+    requirement: Requirement
+    line: Line
+    amount: int
+    sum_in_words: str
+
+    @property
+    def on(self) -> date:
+        """The day of the booking."""
+        return self.booking.on
+
+    @property
+    def rank(self) -> tuple[int, date, int, str, int]:
+        """Who is served first: firm before pencilled, then by day, time and number."""
+        pencilled = int(self.booking.firmness is Firmness.PENCILLED)
+        booking = self.booking
+        return pencilled, booking.on, booking.minute, booking.number, self.requirement.number
+
+
+def explode(facts: Facts, bookings: Iterable[Booking]) -> tuple[Need, ...]:
+    """Every need of these bookings, in order of day, time, booking and recipe line.
+
+    Raises UnknownName for a recipe or stock line the facts do not hold.
+    """
+    needs = [
+        _need(facts, booking, recipe, requirement)
+        for booking in sorted(bookings, key=lambda b: (b.on, b.minute, b.number))
+        for recipe in [_recipe_of(facts, booking)]
+        for requirement in recipe.requirements
+    ]
+    return tuple(needs)
+
+
+def standing(bookings: Iterable[Booking], start: date, end: date) -> list[Booking]:
+    """The bookings from `start` to `end` that still stand: pencilled or firm."""
+    wanted = (Firmness.PENCILLED, Firmness.FIRM)
+    return [b for b in bookings if start <= b.on <= end and b.firmness in wanted]
+
+
+def amount_needed(requirement: Requirement, groups: int, spare: int) -> int:
+    """Micro-units for a booking: amount × what it is per × (1 + spare), rounded up.
+
+    `spare` is in thousandths; stand-bys carry none.
+    """
+    total = requirement.amount * count_of(requirement.per, groups)
+    if not requirement.spare:
+        return total
+    return -(-total * (1000 + spare) // 1000)
+
+
+def count_of(per: Per, groups: int) -> int:
+    """How many times a recipe's amount is wanted: its groups, or once."""
+    return groups if per in (Per.GROUP, Per.PERFORMANCE) else 1
+
+
+def _need(facts: Facts, booking: Booking, recipe: Recipe, requirement: Requirement) -> Need:
+    line = facts.lines.get(requirement.line)
+    if line is None:
+        raise UnknownName(
+            f"{recipe.code} line {requirement.number} asks for {requirement.line!r}, "
+            "which is no stock line.",
+            "Add the line, or mend the recipe.",
+        )
+    amount = amount_needed(requirement, booking.groups, booking.spare)
+    words = _sum_in_words(requirement, booking, line, amount)
+    ref = f"{booking.number}.{requirement.number}"
+    return Need(ref, booking, recipe, requirement, line, amount, words)
+
+
+def _recipe_of(facts: Facts, booking: Booking) -> Recipe:
+    recipe = facts.recipes.get((booking.recipe, booking.version))
+    if recipe is None:
+        raise UnknownName(
+            f"{booking.number} is booked on {booking.recipe} version {booking.version}, "
+            "which is not written.",
+            "Add the recipe, or book another.",
+        )
+    return recipe
+
+
+def _sum_in_words(requirement: Requirement, booking: Booking, line: Line, amount: int) -> str:
+    count = count_of(requirement.per, booking.groups)
+    each, total = say(requirement.amount, line.kind), say(requirement.amount * count, line.kind)
+    what = requirement.per if count == 1 else f"{requirement.per}s"
+    words = f"{count} {what} × {each} = {total}"
+    if requirement.spare and booking.spare:
+        words += f", + {booking.spare / 10:g} % spare = {say(amount, line.kind)}"
+    return words

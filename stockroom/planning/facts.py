@@ -1,0 +1,330 @@
+"""What the planner is told: frozen facts, read once, never changed.
+
+Amounts are whole micro-units (µg, µL, micro-items) as in the store; strengths
+are in the line's own unit, mol/dm³ for anything with a formula and g/dm³
+otherwise; days are dates; times are minutes after midnight. `Facts` holds all
+of it. Lines, methods, recipes and bottles refer to each other by key text.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from datetime import date
+from enum import StrEnum
+
+from stockroom.keeping.record import Record
+from stockroom.keeping.rules import Rule
+from stockroom.measure.amounts import Kind
+from stockroom.measure.workdays import Calendar
+
+
+class Closeness(StrEnum):
+    """How near its stated strength a need must be served."""
+
+    EXACT = "exact"
+    CLOSE = "close"
+    ROUGH = "rough"
+    PRESENT = "present"
+
+
+TOLERANCE: dict[Closeness, float | None] = {
+    Closeness.EXACT: 0.005,
+    Closeness.CLOSE: 0.05,
+    Closeness.ROUGH: 0.20,
+    Closeness.PRESENT: None,
+}
+"""Allowed difference as a fraction; None: any strength will do. Design section 2."""
+
+
+class Per(StrEnum):
+    """What an amount in a recipe is multiplied by."""
+
+    GROUP = "group"
+    CLASS = "class"
+    ROOM = "room"
+    PERFORMANCE = "performance"
+    DEMONSTRATOR = "demonstrator"
+
+
+class Firmness(StrEnum):
+    """How sure a booking is."""
+
+    PENCILLED = "pencilled"
+    FIRM = "firm"
+    DONE = "done"
+    DROPPED = "dropped"
+
+
+class Form(StrEnum):
+    """What a stock line is, as it stands in its container."""
+
+    SOLID = "solid"
+    LIQUID = "liquid"
+    SOLUTION = "solution"
+    SUNDRY = "sundry"
+    """Bought at a shop, never a chemical order: juice, yeast, washing-up liquid."""
+
+
+@dataclass(frozen=True, slots=True)
+class Line:
+    """A kind of thing a bottle can hold.
+
+    `key` is the name with the strength ("sodium thiosulfate 0.200 mol/dm3"),
+    `item` the name alone. `strength` is nominal, in `unit`; None when it has
+    none (a solid, a mixture, a saturated solution). `molar_mass` is of the
+    formula really in the container, water of crystallisation included;
+    `solute_molar_mass` of what dissolves. `assay` is a fraction. Levels and
+    batches are micro-units of `kind`. `lead` is in open days, None if unknown.
+    """
+
+    key: str
+    item: str
+    substance: str
+    form: Form
+    kind: Kind
+    strength: float | None = None
+    unit: str = ""
+    strength_text: str = ""
+    molar_mass: float | None = None
+    assay: float = 1.0
+    density: float | None = None
+    rules: tuple[Rule, ...] = ()
+    never_kept: str = ""
+    level: int | None = None
+    largest_batch: int | None = None
+    vented_cap: bool = False
+    storage_group: str = ""
+    keep_note: str = ""
+    packs: tuple[Pack, ...] = ()
+
+    @property
+    def solute_per_gram(self) -> float | None:
+        """Canonical solute in one gram of the solid: mmol/g with a formula, else mg/mg."""
+        if self.form is not Form.SOLID:
+            return None
+        return self.assay * 1000.0 / self.molar_mass if self.molar_mass else self.assay * 1000.0
+
+
+@dataclass(frozen=True, slots=True)
+class Pack:
+    """A size a supplier sells: micro-units, price in pence, lead time in open days."""
+
+    size: int
+    text: str
+    pence: int
+    lead: int | None = None
+    supplier: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Ingredient:
+    """One thing a method takes: the lines that may give it, in order of preference.
+
+    `per_dm3` is micro-units per dm³ of product. None means it is worked out
+    from the strengths: this is the solute. A line in `only_if_held` is used
+    while a sound bottle of it stands on the shelf and is never made or bought
+    for this.
+    """
+
+    lines: tuple[str, ...]
+    per_dm3: int | None = None
+    only_if_held: frozenset[str] = frozenset()
+    role: str = "solute"
+
+
+@dataclass(frozen=True, slots=True)
+class Method:
+    """How a line is made. Minutes are hands-on; `stands_hours` runs through closed days.
+
+    `finish_minutes` is a second piece of hands-on work after standing (filter
+    and titrate). `titrated` says that finishing gives a found strength.
+    `smallest_batch` in µL: never less than this is made.
+    """
+
+    line: str
+    ingredients: tuple[Ingredient, ...]
+    minutes: int = 15
+    finish_minutes: int = 0
+    stands_hours: float = 0.0
+    titrated: bool = False
+    smallest_batch: int = 0
+    minutes_guessed: bool = False
+    steps: str = ""
+    cautions: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Requirement:
+    """One line of a recipe: so much of a stock line, per what, how close, how fresh.
+
+    `lowest` and `highest` bound the strength (equal, for a plain strength with
+    a closeness; a stated range otherwise); None for a line without strength.
+    `tolerance` (fraction) takes the place of the closeness's own. `fresh` is
+    made the same morning. `freshest_days` is the oldest it may be. An exact
+    line may differ from nominal by `may_differ` if the found strength is
+    printed, and wants a strength found within `found_within_days`.
+    """
+
+    number: int
+    line: str
+    amount: int
+    per: Per
+    closeness: Closeness
+    lowest: float | None = None
+    highest: float | None = None
+    strength_text: str = ""
+    tolerance: float | None = None
+    fresh: bool = False
+    freshest_days: int | None = None
+    spare: bool = True
+    may_differ: float | None = None
+    found_within_days: int | None = None
+    closeness_guessed: bool = False
+    note: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Bar:
+    """A substance a recipe must never meet, and why."""
+
+    substance: str
+    reason: str
+
+
+@dataclass(frozen=True, slots=True)
+class Swap:
+    """An allowed swap: `instead` for `line`, mass × `factor`, with its note."""
+
+    line: str
+    instead: str
+    factor: float | None
+    note: str
+
+
+@dataclass(frozen=True, slots=True)
+class Recipe:
+    """One version of a practical or demonstration."""
+
+    code: str
+    version: int
+    title: str
+    requirements: tuple[Requirement, ...]
+    bars: tuple[Bar, ...] = ()
+    swaps: tuple[Swap, ...] = ()
+    never_kept: str = ""
+    waste: str = ""
+    handling: str = ""
+    assessment: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Booking:
+    """A recipe version on a day. `spare` in thousandths; `minute` after midnight."""
+
+    number: str
+    recipe: str
+    version: int
+    on: date
+    minute: int
+    groups: int
+    spare: int
+    department: str
+    firmness: Firmness = Firmness.FIRM
+    room: str = ""
+    lasts_minutes: int = 100
+
+
+@dataclass(frozen=True, slots=True)
+class Bottle:
+    """One container: what it holds now (micro-units) and the record of its ageing.
+
+    `lineage` names the bottles it was made from, the nearest first. `remark` is
+    what somebody wrote on it. `cap` is "tight" or "vented" where written.
+    """
+
+    number: str
+    line: str
+    left: int
+    size: int
+    record: Record
+    place: str = ""
+    remark: str = ""
+    cap: str = ""
+    made_here: bool = False
+    lineage: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Balance:
+    """A balance: its step in µg, and the days it is away."""
+
+    name: str
+    step: int
+    away: tuple[tuple[date, date], ...] = ()
+
+    def here(self, day: date) -> bool:
+        """True when it can be used that day."""
+        return not any(first <= day <= last for first, last in self.away)
+
+
+@dataclass(frozen=True, slots=True)
+class Department:
+    """Who pays: code, name, and pence left for the term (None: no limit kept)."""
+
+    code: str
+    name: str
+    left_pence: int | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Place:
+    """Where bottles stand: °C if known, and the storage group it is kept for."""
+
+    name: str
+    title: str
+    temperature_c: float | None = None
+    meant_for: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class House:
+    """What is settled once for the whole house. Amounts in µL."""
+
+    name: str = "this house"
+    practice: bool = False
+    margin_days: int = 2
+    default_lead: int = 10
+    batch_step: int = 50_000
+    heel_floor: int = 50_000
+    finish_day_before: bool = True
+    largest_vessel: int | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Drawn:
+    """What the ledger says was really drawn from a bottle, for consumption so far."""
+
+    bottle: str
+    line: str
+    on: date
+    amount: int
+
+
+@dataclass(frozen=True, slots=True)
+class Facts:
+    """Everything the planner may know, as at one day."""
+
+    as_at: date
+    start: date
+    end: date
+    calendar: Calendar
+    house: House = field(default_factory=House)
+    lines: dict[str, Line] = field(default_factory=dict)
+    methods: dict[str, Method] = field(default_factory=dict)
+    recipes: dict[tuple[str, int], Recipe] = field(default_factory=dict)
+    bookings: tuple[Booking, ...] = ()
+    bottles: tuple[Bottle, ...] = ()
+    balances: tuple[Balance, ...] = ()
+    departments: tuple[Department, ...] = ()
+    places: tuple[Place, ...] = ()
+    drawn: tuple[Drawn, ...] = ()

@@ -1,0 +1,362 @@
+"""Step 2: settle every want, by the shelf, by making, by buying, or not at all.
+
+Lines are taken in order, what is made before what it is made from. On each
+line the wants are served firm before pencilled, then by day: from one bottle
+where one will do (one class, one strength), else by the next line that may
+give it, else by making, else by buying. A need that cannot be met is left out
+and the rest settled again, so that nothing is held for it.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from datetime import date
+
+from stockroom.planning.amounts import say, solute_in, take_for
+from stockroom.planning.explode import Need
+from stockroom.planning.facts import Facts, Form, Line, Method
+from stockroom.planning.fitness import judge_for_dilution, judge_for_need
+from stockroom.planning.order_of_lines import settling_order
+from stockroom.planning.shelf import Judge, Promise, Shelf, solute_held
+from stockroom.planning.timing import Moment, deadline_for, earliest_ready, latest_start
+from stockroom.planning.wants import Settled, Want
+from stockroom.planning.windows import earliest_start
+from stockroom.safety.bars import barred_by
+
+_SAME_STRENGTH = 1e-3
+"""Bottles whose expected strengths agree this closely (as a fraction) may be put together."""
+
+
+@dataclass(slots=True)
+class Netted:
+    """Every need's want, the shelf with all promises on it, and the needs that failed."""
+
+    wants: list[Want]
+    shelf: Shelf
+    missed: list[Want] = field(default_factory=list)
+
+
+def net(facts: Facts, needs: tuple[Need, ...]) -> Netted:
+    """Settle all needs; those that cannot be met come out SHORT or REFUSED, with the reason."""
+    failed: dict[str, Want] = {}
+    missed: list[Want] = []
+    while True:
+        netting = _Netting(facts)
+        wants = [_root(facts, need) for need in needs if need.ref not in failed]
+        netting.settle(wants)
+        new = netting.failures(wants)
+        if not new:
+            settled = [*wants, *failed.values()]
+            return Netted(sorted(settled, key=lambda w: w.need.rank), netting.shelf, missed)
+        for root in new:
+            failed[root.ref] = root
+            missed += [part for part in root.tree() if part.to_buy]
+
+
+def _root(facts: Facts, need: Need) -> Want:
+    booking, requirement = need.booking, need.requirement
+    fresh = requirement.fresh or bool(need.line.never_kept)
+    method = facts.methods.get(need.line.key)
+    deadline = (booking.on, booking.minute)
+    if method:
+        deadline = deadline_for(
+            booking.on,
+            booking.minute,
+            fresh=fresh,
+            method=method,
+            calendar=facts.calendar,
+            house=facts.house,
+        )
+    return Want(need, (need.line.key,), deadline, amount=need.amount)
+
+
+class _Netting:
+    """One pass over all lines. Not reused: a new one for each attempt."""
+
+    def __init__(self, facts: Facts) -> None:
+        self.facts = facts
+        self.shelf = Shelf(facts)
+        self.waiting: dict[str, list[Want]] = {}
+
+    def settle(self, wants: list[Want]) -> None:
+        for want in wants:
+            self._queue(want)
+        for key in settling_order(self.facts):
+            for want in sorted(self.waiting.get(key, []), key=lambda w: w.need.rank):
+                self._settle_one(want)
+        for want in wants:
+            self._available(want)
+
+    def failures(self, wants: list[Want]) -> list[Want]:
+        """The roots under which something came out short or refused, each with its reason."""
+        return [want for want in wants if self._failed(want)]
+
+    def _failed(self, want: Want) -> bool:
+        bad = (Settled.SHORT, Settled.REFUSED)
+        if want.settled in bad:
+            return True
+        for part in want.parts:
+            if self._failed(part):
+                want.settled = part.settled
+                want.reasons += part.reasons
+                return True
+        return False
+
+    def _queue(self, want: Want) -> None:
+        self.waiting.setdefault(want.line, []).append(want)
+
+    def _settle_one(self, want: Want) -> None:
+        line = self.facts.lines[want.line]
+        refused = self._refusal(want, line)
+        if refused:
+            want.settled = Settled.REFUSED
+            want.reasons.append(refused)
+        elif self._from_shelf(want, line):
+            want.settled = Settled.HELD
+        elif want.tried + 1 < len(want.choices) and not self._may_make(want, line):
+            want.tried += 1
+            self._queue(want)
+        elif self._may_make(want, line):
+            self._make(want, line)
+        elif not self._from_shelf(want, line, last_drops=not self._buyable(want)):
+            self._buy(want, line)
+
+    def _refusal(self, want: Want, line: Line) -> str:
+        recipe = want.need.recipe
+        if line.never_kept and line.key not in self.facts.methods:
+            return f"{line.item} is never kept: {line.never_kept}"
+        barred = barred_by(recipe, line.substance, self._own_substances(want.need))
+        if barred and want.under is not None:
+            return f"{line.item} is barred in {recipe.code}: {barred}"
+        return ""
+
+    def _buyable(self, want: Want) -> bool:
+        return any(self._can_be_bought(key) for key in want.choices)
+
+    def _own_substances(self, need: Need) -> frozenset[str]:
+        keys = (requirement.line for requirement in need.recipe.requirements)
+        return frozenset(self.facts.lines[key].substance for key in keys if key in self.facts.lines)
+
+    def _may_make(self, want: Want, line: Line) -> bool:
+        held_only = want.ingredient is not None and line.key in want.ingredient.only_if_held
+        return line.key in self.facts.methods and not held_only
+
+    # -- from the shelf -------------------------------------------------------------
+
+    def _from_shelf(self, want: Want, line: Line, *, last_drops: bool = False) -> bool:
+        """Promise it from the shelf if that can be done; `last_drops` lifts "too close"."""
+        if line.never_kept:
+            return False
+        good = self._good_bottles(want, line)
+        for number in good:
+            amount = self._amount_from(want, line, number)
+            enough = amount <= self.shelf.left[number]
+            if enough and (last_drops or not self._too_close(want, number, amount)):
+                self._promise(want, line, number, amount)
+                want.settled = Settled.HELD
+                return True
+        together = self._together(want, line, good)
+        for number, amount in together:
+            self._promise(want, line, number, amount)
+        return bool(together)
+
+    def _good_bottles(self, want: Want, line: Line) -> list[str]:
+        judge, on = self._judge(want, line), self._use_day(want)
+        good = []
+        bottles = self.shelf.of_line(line.key)
+        for bottle in self.shelf.in_order(bottles, on, want.purpose):
+            reason = self.shelf.unfit(bottle.number, on, want.purpose, judge)
+            if reason:
+                want.passed_over.append((bottle.number, reason))
+            elif self.shelf.left[bottle.number] > 0:
+                good.append(bottle.number)
+        return good
+
+    def _use_day(self, want: Want) -> date:
+        # an ingredient is used when the make starts, at the latest on its last possible day
+        return want.need.on if want.under is None else want.deadline[0]
+
+    def _judge(self, want: Want, line: Line) -> Judge:
+        if want.under is None:
+            return judge_for_need(want.need.requirement, line, want.need.on)
+        product = self.facts.lines[want.under.line]
+        per_dm3 = want.ingredient.per_dm3 if want.ingredient else None
+        return judge_for_dilution(line, product, per_dm3)
+
+    def _amount_from(self, want: Want, line: Line, number: str | None) -> int:
+        if want.amount is not None:
+            return want.amount
+        assert want.solute is not None
+        day = self._use_day(want)
+        held = solute_held(self.shelf, line, number, day) if number else None
+        return take_for(line, held, want.solute)
+
+    def _too_close(self, want: Want, number: str, amount: int) -> bool:
+        if not self.shelf.too_close(number, amount):
+            return False
+        line = self.facts.lines[self.shelf.bottle[number].line]
+        held = self.shelf.bottle[number].left
+        gone = held - self.shelf.left[number] + amount
+        words = f"{say(gone, line.kind)} of {say(held, line.kind)} in {number}: too close to call"
+        want.passed_over.append((number, words))
+        want.reasons.append(f"{words}, count on a fresh make or bottle")
+        return True
+
+    def _together(self, want: Want, line: Line, good: list[str]) -> list[tuple[str, int]]:
+        """Several bottles for one want: any of a solid, equal strengths of a solution."""
+        alike = [number for number in good if self._alike(want, line, good[0], number)]
+        if len(alike) < 2:
+            return []
+        missing = self._amount_from(want, line, alike[0])
+        shares: list[tuple[str, int]] = []
+        for number in alike:
+            share = min(missing, self.shelf.left[number])
+            shares.append((number, share))
+            missing -= share
+        last = shares[-1]
+        if missing or self.shelf.too_close(*last):
+            return []
+        return [(number, share) for number, share in shares if share]
+
+    def _alike(self, want: Want, line: Line, first: str, number: str) -> bool:
+        day = self._use_day(want)
+        one, other = (solute_held(self.shelf, line, n, day) for n in (first, number))
+        if one is None or other is None:
+            return one is other
+        return abs(other - one) <= _SAME_STRENGTH * one
+
+    def _promise(self, want: Want, line: Line, number: str, amount: int) -> None:
+        judge = self._judge(want, line)
+        made = Promise(number, amount, self._use_day(want), want.ref, want.purpose, judge)
+        self.shelf.promise(made)
+        want.promises.append(made)
+
+    # -- by making --------------------------------------------------------------------
+
+    def _make(self, want: Want, line: Line) -> None:
+        method = self.facts.methods[line.key]
+        want.method = method
+        want.latest = latest_start(want.deadline, method, self.facts.calendar, self.facts.as_at)
+        if want.latest is None:
+            self._cannot(want, line, method)
+            return
+        fresh = want.under is None and want.need.requirement.fresh
+        if fresh and want.latest[0] != want.need.on:
+            want.settled = Settled.SHORT
+            want.reasons.append(_not_by_then(want, line, method))
+            return
+        want.earliest = want.latest[0] if fresh else self._earliest(want, line)
+        want.settled = Settled.MAKE
+        self._add_parts(want, line, method)
+
+    def _earliest(self, want: Want, line: Line) -> date:
+        assert want.latest is not None
+        requirement = want.need.requirement if want.under is None else None
+        return earliest_start(self.facts, line, requirement, self._use_day(want), want.latest[0])
+
+    def _cannot(self, want: Want, line: Line, method: Method) -> None:
+        want.settled = Settled.SHORT
+        start = latest_start(want.deadline, method, self.facts.calendar, date.min.replace(year=2))
+        day = f"; work had to start by {start[0]}" if start else ""
+        stands = f"stands {method.stands_hours:g} h, " if method.stands_hours else ""
+        want.reasons.append(
+            f"cannot: {line.key} {stands}booked {want.need.on}, "
+            f"and today is {self.facts.as_at}{day}"
+        )
+
+    def _add_parts(self, want: Want, line: Line, method: Method) -> None:
+        assert want.latest is not None
+        volume = self._amount_from(want, line, None)
+        for ingredient in method.ingredients:
+            part = Want(want.need, ingredient.lines, want.latest, under=want, ingredient=ingredient)
+            if ingredient.per_dm3 is not None:
+                part.amount = -(-volume * ingredient.per_dm3 // 1_000_000)
+            else:
+                part.solute = solute_in(line, volume)
+            want.parts.append(part)
+            self._queue(part)
+
+    # -- by buying --------------------------------------------------------------------
+
+    def _buy(self, want: Want, line: Line) -> None:
+        if want.ingredient is not None:
+            # nothing on the shelf under any choice: buy the one preferred
+            want.tried = next(
+                (i for i, key in enumerate(want.choices) if self._can_be_bought(key)), want.tried
+            )
+            line = self.facts.lines[want.line]
+        if line.form is Form.SUNDRY:
+            want.settled, want.available = Settled.SHOP, self.facts.as_at
+            return
+        whole = self._amount_from(want, line, None)
+        self._part_from_jar(want, line)
+        want.to_buy = whole - sum(promise.amount for promise in want.promises)
+        arrives = self.arrival(line)
+        if not self._can_be_bought(line.key):
+            want.settled = Settled.SHORT
+            want.reasons.append(_not_made_not_sold(want, line))
+        elif arrives <= want.deadline[0]:
+            want.settled, want.available = Settled.BUY, arrives
+            want.reasons.append(f"{say(want.to_buy, line.kind)} of {line.key} to be bought")
+        else:
+            want.settled = Settled.SHORT
+            want.reasons.append(
+                f"no {line.key} in hand by {want.deadline[0]}; ordered today it comes {arrives}"
+            )
+
+    def _can_be_bought(self, key: str) -> bool:
+        line = self.facts.lines[key]
+        bought = line.form in (Form.SOLID, Form.LIQUID, Form.SUNDRY) or bool(line.packs)
+        return bought and key not in self.facts.methods
+
+    def _part_from_jar(self, want: Want, line: Line) -> None:
+        """Take what there is of a solid; the rest is bought."""
+        if line.form is not Form.SOLID:
+            return
+        missing = self._amount_from(want, line, None)
+        for number in self._good_bottles(want, line):
+            share = min(missing, self.shelf.left[number])
+            if share:
+                self._promise(want, line, number, share)
+                missing -= share
+
+    def arrival(self, line: Line) -> date:
+        """The open day an order placed today would come, at the shortest lead time known."""
+        leads = [pack.lead for pack in line.packs if pack.lead is not None]
+        lead = min(leads, default=self.facts.house.default_lead)
+        return self.facts.calendar.after(self.facts.as_at, lead)
+
+    # -- when each can be in hand -------------------------------------------------------
+
+    def _available(self, want: Want) -> Moment:
+        """The first moment this can be in hand, from the bottom of its tree up."""
+        today = (self.facts.as_at, 0)
+        if want.settled is not Settled.MAKE or want.method is None or want.latest is None:
+            return (want.available, 0) if want.available else today
+        ready = max([today, *(self._available(part) for part in want.parts)])
+        first = ready[0] if ready[1] <= want.latest[1] else self.facts.calendar.after(ready[0], 1)
+        want.ready_from, done = earliest_ready(first, want.method, self.facts.calendar)
+        if want.ready_from > want.latest[0]:
+            want.settled = Settled.SHORT
+            want.reasons.append(
+                f"cannot: {want.line} can be started on {want.ready_from} at the earliest, "
+                f"and had to be by {want.latest[0]}"
+            )
+        return done
+
+
+def _not_by_then(want: Want, line: Line, method: Method) -> str:
+    minutes = method.minutes + round(60 * method.stands_hours)
+    return (
+        f"cannot: {line.key} takes {minutes} min on the morning of {want.need.on}, "
+        f"and that day leaves no staffed time before {_clock(want.need.booking.minute)}"
+    )
+
+
+def _not_made_not_sold(want: Want, line: Line) -> str:
+    why = "; ".join(f"{number} {reason}" for number, reason in want.passed_over[:2])
+    return f"no method and no supplier for {line.key}" + (f" ({why})" if why else "")
+
+
+def _clock(minute: int) -> str:
+    return f"{minute // 60:02d}:{minute % 60:02d}"

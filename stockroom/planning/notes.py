@@ -1,0 +1,136 @@
+"""Step 9: notes for whoever reads the plan: hours, money, neighbours, heavy days, shops."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from stockroom.findings import Finding
+from stockroom.keeping.laws import warmth
+from stockroom.keeping.strength import law_of, temperature_on
+from stockroom.keeping.verdict import Condition, verdict
+from stockroom.planning.amounts import say
+from stockroom.planning.decisions import Level, Make, Order
+from stockroom.planning.explode import Need
+from stockroom.planning.facts import Booking, Facts, Form, Recipe
+from stockroom.safety.neighbours import tight_caps, wrong_neighbours
+
+HEAVY_DAY_MINUTES = 300
+_MIX_BEFORE, _DESTROY_AFTER = 30, 30
+
+
+def notes(
+    facts: Facts,
+    needs: tuple[Need, ...],
+    makes: list[Make],
+    orders: list[Order],
+    levels: list[Level],
+) -> list[Finding]:
+    """Everything worth saying that is neither a need nor a guess, in a fixed order."""
+    bookings = list({need.booking.number: (need.booking, need.recipe) for need in needs}.values())
+    return [
+        *_hours(facts, [booking for booking, _ in bookings]),
+        *_never_kept(bookings),
+        *_heavy_days(makes),
+        *_money(facts, orders),
+        *_levels(levels),
+        *_shelf(facts),
+        *_shops(facts, needs),
+    ]
+
+
+def _hours(facts: Facts, bookings: list[Booking]) -> Iterable[Finding]:
+    calendar = facts.calendar
+    for booking in bookings:
+        if not calendar.is_open(booking.on):
+            yield Finding(booking.number, f"{booking.on} is a closed day: keep it?")
+        elif booking.minute + booking.lasts_minutes > calendar.open_to + 60 or (
+            booking.minute >= calendar.open_to
+        ):
+            end = _clock(booking.minute + booking.lasts_minutes)
+            yield Finding(
+                booking.number,
+                f"{_clock(booking.minute)} to {end} is outside staffed hours "
+                f"({_clock(calendar.open_from)} to {_clock(calendar.open_to)}): "
+                f"someone must be here from {_clock(booking.minute - _MIX_BEFORE)}",
+            )
+
+
+def _never_kept(bookings: list[tuple[Booking, Recipe]]) -> Iterable[Finding]:
+    for booking, recipe in bookings:
+        if recipe.never_kept:
+            ends = booking.minute + booking.lasts_minutes
+            yield Finding(
+                booking.number,
+                f"{booking.on}: mix not before {_clock(booking.minute - _MIX_BEFORE)}, destroy by "
+                f"{_clock(ends + _DESTROY_AFTER)} and tick it with initials. {recipe.never_kept}",
+            )
+
+
+def _heavy_days(makes: list[Make]) -> Iterable[Finding]:
+    minutes: dict[str, int] = {}
+    movable: dict[str, list[str]] = {}
+    for make in makes:
+        day = make.on.isoformat()
+        minutes[day] = minutes.get(day, 0) + make.minutes
+        if make.earliest < make.on:
+            movable.setdefault(day, []).append(make.id)
+    for day, total in sorted(minutes.items()):
+        if total > HEAVY_DAY_MINUTES:
+            earlier = ", ".join(movable.get(day, [])) or "none"
+            yield Finding(day, f"{total} min hands-on; could be made earlier: {earlier}")
+
+
+def _money(facts: Facts, orders: list[Order]) -> Iterable[Finding]:
+    spent: dict[str, int] = {}
+    for order in orders:
+        for code, pence in order.shares:
+            spent[code] = spent.get(code, 0) + pence
+    for department in facts.departments:
+        total, left = spent.get(department.code, 0), department.left_pence
+        if left is not None and total > left:
+            yield Finding(
+                department.code,
+                f"orders come to £{total / 100:.2f} of £{left / 100:.2f} left: "
+                f"£{(total - left) / 100:.2f} over",
+            )
+
+
+def _levels(levels: list[Level]) -> Iterable[Finding]:
+    for level in levels:
+        yield Finding(
+            level.line,
+            f"falls below {say(level.level, level.kind)} on {level.on} "
+            f"({say(level.left, level.kind)} then left): make more",
+        )
+
+
+def _shelf(facts: Facts) -> Iterable[Finding]:
+    meant = {place.name: place.meant_for for place in facts.places}
+    here = [b for b in facts.bottles if b.left and not b.record.gone and not b.record.not_found]
+    group = {b.number: facts.lines[b.line].storage_group for b in here}
+    yield from wrong_neighbours((b.number, group[b.number], meant.get(b.place, "")) for b in here)
+    yield from tight_caps((b.number, b.cap, facts.lines[b.line].vented_cap) for b in here)
+    for bottle in here:
+        rules = facts.lines[bottle.line].rules
+        rule = law_of(bottle.record, rules, facts.as_at)
+        place = temperature_on(bottle.record, facts.as_at)
+        if rule and rule.law and warmth(rule.law, place) > 1.5:
+            times = warmth(rule.law, place)
+            text = f"stands at {place:g} °C and fades {times:.1f} times as fast there: move it"
+            yield Finding(bottle.number, text)
+        judged = verdict(bottle.record, rules, facts.end)
+        if judged.safety and judged.condition is Condition.PAST:
+            text = f"safety date {judged.good_until} ({judged.decided_by}): then do not open or move it; ask"
+            yield Finding(bottle.number, text)
+
+
+def _shops(facts: Facts, needs: tuple[Need, ...]) -> Iterable[Finding]:
+    for need in needs:
+        if need.line.form is Form.SUNDRY:
+            by = facts.calendar.before(need.on, 1)
+            amount = say(need.amount, need.line.kind)
+            yield Finding(need.booking.number, f"{amount} of {need.line.item} from a shop by {by}")
+
+
+def _clock(minute: int) -> str:
+    return f"{minute // 60:02d}:{minute % 60:02d}"

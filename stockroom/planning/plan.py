@@ -1,0 +1,82 @@
+"""The plan: explode, net, batch, buy, tell. Same facts, same plan, whatever their order."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from datetime import date
+
+from stockroom.planning.buy import courses, made_levels, orders
+from stockroom.planning.checks import checks
+from stockroom.planning.decide import answers, makes, shorts
+from stockroom.planning.decisions import Answer, Order, Plan, Use
+from stockroom.planning.explode import explode, standing
+from stockroom.planning.facts import Facts, Firmness
+from stockroom.planning.make import make_up
+from stockroom.planning.net import net
+from stockroom.planning.notes import notes
+from stockroom.planning.tell import guesses, past_on
+from stockroom.planning.usage import drawn_so_far, usage
+from stockroom.planning.wants import Settled, Want
+
+
+def plan(facts: Facts) -> Plan:
+    """Decide what becomes of every need from `as_at` to the end of the facts' period.
+
+    Bookings before the period's start are planned too, since they draw on the
+    same bottles, and then left out of what is shown. Usage covers the whole
+    period, done or to come.
+    """
+    needs = explode(facts, standing(facts.bookings, facts.as_at, facts.end))
+    netted = net(facts, needs)
+    made = make_up(facts, netted.wants, netted.shelf)
+    buying = orders(facts, courses(facts, made, netted.missed, netted.shelf), netted.shelf)
+    batches, shelf = made.batches, netted.shelf
+    making = makes(facts, batches)
+    levels = made_levels(facts, shelf)
+    whole = Plan(
+        as_at=facts.as_at,
+        start=facts.start,
+        end=facts.end,
+        house=facts.house,
+        needs=_with_orders(answers(facts, netted.wants, batches, shelf), netted.wants, buying),
+        makes=tuple(making),
+        past=tuple(past_on(facts, needs, facts.as_at)),
+        usage=tuple(usage_of_period(facts)),
+        drawn=tuple(drawn_so_far(facts, facts.drawn)),
+        orders=tuple(buying),
+        short=tuple(shorts(netted.wants)),
+        checks=tuple(checks(facts, netted.wants, batches, shelf)),
+        levels=tuple(levels),
+        guesses=tuple(guesses(facts, netted.wants, shelf)),
+        notes=tuple(notes(facts, needs, making, buying, levels)),
+    )
+    return _shown(whole, max(facts.start, facts.as_at))
+
+
+def usage_of_period(facts: Facts) -> list[Use]:
+    """What the whole period uses, done or to come; dropped bookings left out."""
+    inside = [b for b in facts.bookings if facts.start <= b.on <= facts.end]
+    wanted = [b for b in inside if b.firmness is not Firmness.DROPPED]
+    return usage(facts, explode(facts, wanted))
+
+
+def _with_orders(row: list[Answer], wants: list[Want], buying: list[Order]) -> tuple[Answer, ...]:
+    by_line = {order.line: order.id for order in buying}
+    waits = {
+        want.ref: by_line[part.line]
+        for want in wants
+        for part in want.tree()
+        if part.to_buy and part.line in by_line and want.settled is not Settled.REFUSED
+    }
+    return tuple(replace(answer, order=waits.get(answer.ref, "")) for answer in row)
+
+
+def _shown(whole: Plan, start: date) -> Plan:
+    """Only what serves bookings from the start of the period on."""
+    shown = {answer.booking.number for answer in whole.needs if answer.booking.on >= start}
+    return replace(
+        whole,
+        needs=tuple(a for a in whole.needs if a.booking.number in shown),
+        makes=tuple(m for m in whole.makes if shown & set(m.bookings)),
+        short=tuple(s for s in whole.short if s.booking in shown),
+    )

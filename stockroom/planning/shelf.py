@@ -1,0 +1,151 @@
+"""What stands on the shelf while a plan is made: balances, promises, openings.
+
+The one mutable thing in the planner. A bottle's contents are promised at most
+once; a sealed bottle the plan opens ages as opened from that day.
+"""
+
+from __future__ import annotations
+
+from collections import defaultdict
+from collections.abc import Callable, Iterable
+from dataclasses import dataclass, replace
+from datetime import date
+
+from stockroom.keeping.rules import Purpose
+from stockroom.keeping.verdict import USABLE, Verdict, verdict
+from stockroom.measure.amounts import Kind
+from stockroom.planning.facts import Bottle, Facts, Form, Line
+
+TOO_CLOSE_UL = 5_000
+TOO_CLOSE_PART = 0.03
+"""Under 5 cm³ or 3 % of what it held, what would remain is too close to call."""
+
+Judge = Callable[[Bottle, Verdict], str]
+"""Says why a bottle will not do ("" when it will)."""
+
+
+@dataclass(frozen=True, slots=True)
+class Promise:
+    """So much of a bottle for somebody (`for_ref`), on a day, judged by `judge`."""
+
+    bottle: str
+    amount: int
+    on: date
+    for_ref: str
+    purpose: Purpose
+    judge: Judge
+
+
+class Shelf:
+    """Balances of every bottle less what is promised. Deterministic: ties by number."""
+
+    def __init__(self, facts: Facts) -> None:
+        self.facts = facts
+        self.left = {bottle.number: bottle.left for bottle in facts.bottles}
+        self.bottle = {bottle.number: bottle for bottle in facts.bottles}
+        self.promises: dict[str, list[Promise]] = defaultdict(list)
+        self._by_line: dict[str, list[Bottle]] = defaultdict(list)
+        self._judged: dict[tuple[str, date, Purpose, date | None], Verdict] = {}
+        for bottle in sorted(facts.bottles, key=lambda b: b.number):
+            self._by_line[bottle.line].append(bottle)
+
+    def of_line(self, key: str) -> list[Bottle]:
+        """Every bottle of a line, by number."""
+        return self._by_line.get(key, [])
+
+    def opening(self, number: str) -> date | None:
+        """The day the plan opens a sealed bottle: the first day it draws on it."""
+        if not self.is_sealed(number):
+            return None
+        return min((promise.on for promise in self.promises[number]), default=None)
+
+    def is_sealed(self, number: str) -> bool:
+        """True for a bought bottle nobody has opened yet."""
+        bottle = self.bottle[number]
+        return not bottle.made_here and bottle.record.opened is None
+
+    def verdict(
+        self, number: str, on: date, purpose: Purpose = Purpose.ANY, opened: date | None = None
+    ) -> Verdict:
+        """Judge a bottle on a day, as opened on `opened` if it is still sealed."""
+        opened = opened if self.is_sealed(number) else None
+        key = (number, on, purpose, opened)
+        if key not in self._judged:
+            bottle = self.bottle[number]
+            record = replace(bottle.record, opened=opened) if opened else bottle.record
+            rules = self.facts.lines[bottle.line].rules
+            self._judged[key] = verdict(record, rules, on, purpose)
+        return self._judged[key]
+
+    def verdict_planned(self, number: str, on: date, purpose: Purpose = Purpose.ANY) -> Verdict:
+        """Judge a bottle on a day, opened as the plan so far opens it."""
+        return self.verdict(number, on, purpose, self.opening(number))
+
+    def unfit(self, number: str, on: date, purpose: Purpose, judge: Judge) -> str:
+        """Why this bottle cannot be drawn on that day for that purpose; "" when it can.
+
+        Opening it earlier than the plan already does must leave every promise
+        already made on it good.
+        """
+        opened = min(filter(None, (self.opening(number), on)))
+        reason = self._unfit_on(number, on, purpose, judge, opened)
+        if reason or opened == self.opening(number):
+            return reason
+        for promise in self.promises[number]:
+            again = self._unfit_on(number, promise.on, promise.purpose, promise.judge, opened)
+            if again:
+                return f"opening it on {on} spoils it for {promise.for_ref}"
+        return ""
+
+    def _unfit_on(self, number: str, on: date, purpose: Purpose, judge: Judge, opened: date) -> str:
+        judged = self.verdict(number, on, purpose, opened)
+        if judged.condition not in USABLE:
+            when = f" after {judged.good_until}" if judged.good_until else ""
+            return f"{judged.condition}{when} ({judged.decided_by})"
+        return judge(self.bottle[number], judged)
+
+    def promise(self, made: Promise) -> None:
+        """Set aside part of a bottle; the balance never goes below zero."""
+        if made.amount > self.left[made.bottle]:
+            raise AssertionError(
+                f"{made.bottle} promised {made.amount} of {self.left[made.bottle]}"
+            )
+        self.left[made.bottle] -= made.amount
+        self.promises[made.bottle].append(made)
+
+    def release(self, made: Promise) -> None:
+        """Take a promise back."""
+        self.promises[made.bottle].remove(made)
+        self.left[made.bottle] += made.amount
+
+    def too_close(self, number: str, amount: int) -> bool:
+        """True when drawing `amount` leaves too little of a liquid to count on."""
+        bottle = self.bottle[number]
+        line = self.facts.lines[bottle.line]
+        after = self.left[number] - amount
+        if line.kind is not Kind.VOLUME or line.form is Form.SUNDRY:
+            return False
+        return after < max(TOO_CLOSE_UL, TOO_CLOSE_PART * bottle.left)
+
+    def in_order(self, bottles: Iterable[Bottle], on: date, purpose: Purpose) -> list[Bottle]:
+        """Bottles in the order to use them: going past soonest, then open ones, then number.
+
+        For an exact purpose the most recently checked comes first.
+        """
+
+        def key(bottle: Bottle) -> tuple[int, date, bool, str]:
+            judged = self.verdict(bottle.number, on, purpose, on)
+            found_on = judged.strengths.found_on
+            recent = -found_on.toordinal() if purpose is Purpose.EXACT and found_on else 0
+            until = judged.usable_until or date.max
+            return recent, until, self.is_sealed(bottle.number), bottle.number
+
+        return sorted(bottles, key=key)
+
+
+def solute_held(shelf: Shelf, line: Line, number: str, on: date) -> float | None:
+    """The strength a bottle is expected to hold on a day, in the line's unit; None if a solid."""
+    if line.form is Form.SOLID:
+        return None
+    opened = shelf.opening(number) or on
+    return shelf.verdict(number, on, opened=opened).strengths.expected

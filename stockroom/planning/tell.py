@@ -1,0 +1,171 @@
+"""Step 8: what is past on a day and before whom it matters, and the guesses leaned on."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from datetime import date
+
+from stockroom.findings import Finding
+from stockroom.keeping.verdict import Condition, Verdict, verdict
+from stockroom.planning.amounts import say_strength
+from stockroom.planning.decisions import PastBottle
+from stockroom.planning.explode import Need
+from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
+from stockroom.planning.shelf import Shelf
+from stockroom.planning.wants import Want
+
+_TOLD = frozenset(Condition) - {Condition.SOUND, Condition.GONE}
+
+
+def past_on(facts: Facts, needs: Iterable[Need], on: date) -> list[PastBottle]:
+    """Every bottle that is not sound on a day, by number, with the bookings it matters for.
+
+    Those are the bookings from that day on that ask for its line or for
+    something made from it.
+    """
+    asked = _who_asks(facts, [need for need in needs if need.on >= on])
+    row = []
+    for bottle in sorted(facts.bottles, key=lambda b: _natural(b.number)):
+        judged = verdict(bottle.record, facts.lines[bottle.line].rules, on)
+        if judged.condition in _TOLD:
+            row.append(_past(facts, bottle, judged, asked.get(bottle.line, ())))
+    return row
+
+
+def _past(facts: Facts, bottle: Bottle, judged: Verdict, bookings: tuple[str, ...]) -> PastBottle:
+    line = facts.lines[bottle.line]
+    words = judged.decided_by
+    expected = judged.strengths.expected
+    if judged.condition is Condition.WATCH and expected is not None and line.strength:
+        if abs(expected / line.strength - 1) > 0.01:
+            words += f"; expected {say_strength(line, expected)} (label {line.strength_text})"
+    item = " ".join(filter(None, (line.item, line.strength_text)))
+    return PastBottle(bottle.number, item, judged.condition, judged.good_until, words, bookings)
+
+
+def _who_asks(facts: Facts, needs: Iterable[Need]) -> dict[str, tuple[str, ...]]:
+    asked: dict[str, list[str]] = {}
+    for need in needs:
+        for key in lines_behind(facts, need.line.key):
+            bookings = asked.setdefault(key, [])
+            if need.booking.number not in bookings:
+                bookings.append(need.booking.number)
+    return {key: tuple(bookings) for key, bookings in asked.items()}
+
+
+def lines_behind(facts: Facts, key: str) -> list[str]:
+    """A line and every line it may be made from, down to the bought ones."""
+    seen, waiting = [], [key]
+    while waiting:
+        following = waiting.pop()
+        if following in seen:
+            continue
+        seen.append(following)
+        method = facts.methods.get(following)
+        waiting += [k for i in (method.ingredients if method else ()) for k in i.lines]
+    return seen
+
+
+def _natural(number: str) -> tuple[str, int, str]:
+    head = number.rstrip("0123456789abcdefghijklmnopqrstuvwxyz")
+    digits = "".join(filter(str.isdigit, number[len(head) :]))
+    return head, int(digits or 0), number
+
+
+# -- guesses ------------------------------------------------------------------------
+
+
+def guesses(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Finding]:
+    """What the plan leaned on without knowing it, each once, by subject."""
+    found: dict[tuple[str, str], None] = {}
+    closest = _closest_use(wants)
+    for number, promises in shelf.promises.items():
+        if promises:
+            bottle = shelf.bottle[number]
+            for text in _about(facts, shelf, bottle, closest.get(number, Closeness.PRESENT)):
+                found[(number, text)] = None
+    for want in wants:
+        if want.need.requirement.closeness_guessed:
+            found[
+                (
+                    want.need.line.key,
+                    f"no closeness written in {want.need.recipe.code}: close assumed",
+                )
+            ] = None
+        for part in want.tree():
+            if part.method and part.method.minutes_guessed:
+                found[
+                    (part.line, f"no hands-on time written: {part.method.minutes} min assumed")
+                ] = None
+    row = [Finding(subject, text) for subject, text in found]
+    return sorted(row, key=lambda f: (_natural(f.subject), f.text))
+
+
+def _closest_use(wants: Iterable[Want]) -> dict[str, Closeness]:
+    order = list(Closeness)
+    closest: dict[str, Closeness] = {}
+    for root in wants:
+        closeness = root.need.requirement.closeness
+        for want in root.tree():
+            for promise in want.promises:
+                known = closest.get(promise.bottle, Closeness.PRESENT)
+                closest[promise.bottle] = min(known, closeness, key=order.index)
+    return closest
+
+
+def _about(facts: Facts, shelf: Shelf, bottle: Bottle, closest: Closeness) -> Iterable[str]:
+    line = facts.lines[bottle.line]
+    last = max(promise.on for promise in shelf.promises[bottle.number])
+    judged = shelf.verdict_planned(bottle.number, last)
+    printed = bottle.record.printed
+    if printed and printed.ambiguous:
+        readings = " or ".join(_spelt(day) for day in printed.readings)
+        yield f'printed "{printed.text}" may be {readings}: planned on the earlier; which is it?'
+    if bottle.record.opened_guessed:
+        yield "opened, day not written: counted from the day it was received"
+    if judged.condition is Condition.WATCH:
+        yield f"used though its check is overdue ({judged.decided_by})"
+    yield from _about_strength(line, judged, closest)
+    doubt = inherited_doubt(facts, bottle)
+    if doubt:
+        yield doubt
+    if bottle.remark:
+        yield f'remark on it: "{bottle.remark}": look before using'
+
+
+def _about_strength(line: Line, judged: Verdict, closest: Closeness) -> Iterable[str]:
+    strengths = judged.strengths
+    if line.form is Form.SOLID or strengths.expected is None or strengths.nominal is None:
+        return
+    expected = say_strength(line, strengths.expected)
+    if abs(strengths.expected / strengths.nominal - 1) > 1e-3 and strengths.found is None:
+        yield f"expected {expected} by its rule of fading from the label: never titrated"
+    elif strengths.found is None and closest in (Closeness.CLOSE, Closeness.EXACT):
+        yield f"label strength {line.strength_text} taken as it stands: never titrated"
+    elif strengths.found is not None and abs(strengths.expected / strengths.found - 1) > 1e-3:
+        found = say_strength(line, strengths.found)
+        yield f"expected {expected}, carried forward from {found} found {strengths.found_on}"
+
+
+def inherited_doubt(facts: Facts, bottle: Bottle) -> str:
+    """The doubt a made bottle has from a parent overdue or set aside; "" if none.
+
+    A parent overdue its recheck on the day the child was made, or set aside
+    since, marks the child; a parent's date does not.
+    """
+    parents = {b.number: b for b in facts.bottles if b.number in bottle.lineage}
+    for number in bottle.lineage:
+        parent = parents.get(number)
+        if parent is None or bottle.record.made is None:
+            continue
+        judged = verdict(parent.record, facts.lines[parent.line].rules, bottle.record.made)
+        if judged.condition is Condition.WATCH:
+            days = (bottle.record.made - judged.good_until).days if judged.good_until else 0
+            return f"made from {number} {days} d after its recheck fell due: in doubt with it"
+        if parent.record.set_aside:
+            return f"made from {number}, since set aside ({parent.record.set_aside})"
+    return ""
+
+
+def _spelt(day: date) -> str:
+    return f"{day.day} {day:%B %Y}"

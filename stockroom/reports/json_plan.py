@@ -1,0 +1,258 @@
+"""The same answers as data. The keys are the contract of design section 6.
+
+Amounts are numbers beside a unit (g, cm3, items), to six figures and never
+short of a whole one; days are ISO text; money is a number of pounds.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from datetime import date
+from typing import TYPE_CHECKING, Any
+
+from stockroom.findings import Finding
+from stockroom.measure.amounts import BASE_UNIT, PER_UNIT, Kind
+from stockroom.planning.decisions import (
+    Answer,
+    CheckToDo,
+    Draw,
+    Level,
+    Make,
+    Order,
+    PastBottle,
+    Plan,
+    Short,
+    Use,
+)
+from stockroom.reports.sheet import is_bottle
+from stockroom.reports.words import rounded
+
+if TYPE_CHECKING:
+    from stockroom.planning.ready import Readiness
+
+Data = dict[str, Any]
+
+
+def plan_json(plan: Plan) -> Data:
+    """The whole plan. Lists keep the planner's order, which is by day, then number."""
+    return _top(plan) | {
+        "needs": [_need(need) for need in plan.needs],
+        "makes": [_make(make) for make in plan.makes],
+        "past": [_past(bottle) for bottle in plan.past],
+        "usage": [_use(use) for use in plan.usage],
+        "drawn": [_use(use) for use in plan.drawn],
+        "orders": [_order(order) for order in plan.orders],
+        "short": [_short(short) for short in plan.short],
+        "checks": [_check(check) for check in plan.checks],
+        "levels": [_level(level) for level in plan.levels],
+        "guesses": [_finding(finding) for finding in plan.guesses],
+        "notes": [_finding(finding) for finding in plan.notes],
+    }
+
+
+def fresh_json(plan: Plan) -> Data:
+    """What to make up, as in the plan's `makes`."""
+    return _top(plan) | {"makes": [_make(make) for make in plan.makes]}
+
+
+def past_json(plan: Plan, on: date) -> Data:
+    """What is past, weak, undated or unchecked on a day, as in the plan's `past`."""
+    return _top(plan) | {"on": on.isoformat(), "past": [_past(bottle) for bottle in plan.past]}
+
+
+def usage_json(plan: Plan) -> Data:
+    """What the term uses (`usage`), and what the entries say was drawn so far (`drawn`)."""
+    return _top(plan) | {
+        "usage": [_use(use) for use in plan.usage],
+        "drawn": [_use(use) for use in plan.drawn],
+    }
+
+
+def buying_json(plan: Plan) -> Data:
+    """What to order (`orders`) and the days lines fall below their level (`levels`)."""
+    return _top(plan) | {
+        "orders": [_order(order) for order in plan.orders],
+        "levels": [_level(level) for level in plan.levels],
+    }
+
+
+def ready_json(readiness: Readiness, *, as_at: date, practice: bool) -> Data:
+    """Whether a booking or a day is ready, and what there is still to do."""
+    return {
+        "as_at": as_at.isoformat(),
+        "practice": practice,
+        "ready": readiness.ready,
+        "title": readiness.title,
+        "on": readiness.on.isoformat(),
+        "to_do": list(readiness.to_do),
+        "needs": [_need(need) for need in readiness.needs],
+        "makes": [_make(make) for make in readiness.makes],
+        "checks": [_check(check) for check in readiness.checks],
+        "strengths": list(readiness.strengths),
+    }
+
+
+def why_json(ref: str, reasons: Iterable[str], *, as_at: date, practice: bool) -> Data:
+    """The reasons behind one line of the plan."""
+    top = {"as_at": as_at.isoformat(), "practice": practice}
+    return top | {"ref": ref, "reasons": list(reasons)}
+
+
+def _top(plan: Plan) -> Data:
+    return {
+        "as_at": plan.as_at.isoformat(),
+        "practice": plan.house.practice,
+        "period": {"from": plan.start.isoformat(), "to": plan.end.isoformat()},
+    }
+
+
+def _measured(micro: int, kind: Kind) -> Data:
+    return {"amount": rounded(micro / PER_UNIT[kind], 6), "unit": BASE_UNIT[kind]}
+
+
+def _number(micro: int, kind: Kind = Kind.VOLUME) -> float:
+    return rounded(micro / PER_UNIT[kind], 6)
+
+
+def _iso(when: date | None) -> str | None:
+    return when.isoformat() if when else None
+
+
+def _need(need: Answer) -> Data:
+    return {
+        "ref": need.ref,
+        "booking": need.booking.number,
+        "recipe": need.booking.recipe,
+        "title": need.recipe_title,
+        "dept": need.booking.department,
+        "on": need.booking.on.isoformat(),
+        "item": need.item,
+        "strength": need.strength,
+        **_measured(need.amount, need.kind),
+        "closeness": need.closeness,
+        "fresh": need.fresh,
+        "outcome": need.outcome.value,
+        # what is still to be made or bought has no bottle yet: `make` and `order` name it
+        "from": [_from_bottle(draw) for draw in need.draws if draw.bottle],
+        "make": need.make or None,
+        "order": need.order or None,
+        "reasons": list(need.reasons),
+    }
+
+
+def _from_bottle(draw: Draw) -> Data:
+    return {"bottle": draw.bottle, **_measured(draw.amount, draw.kind)}
+
+
+def _source(draw: Draw) -> Data:
+    if draw.bottle:
+        return _from_bottle(draw)
+    origin = {"item": draw.item or draw.line} | ({"make": draw.make} if draw.make else {})
+    return origin | _measured(draw.amount, draw.kind)
+
+
+def _make(make: Make) -> Data:
+    return {
+        "id": make.id,
+        "item": make.item,
+        "strength": make.strength,
+        "volume": _number(make.volume),
+        "unit": BASE_UNIT[Kind.VOLUME],
+        "needed": _number(make.needed),
+        "earliest": make.earliest.isoformat(),
+        "latest": make.latest.isoformat(),
+        "on": make.on.isoformat(),
+        "finish_on": _iso(make.finish_on),
+        "ready": make.ready.isoformat(),
+        "good_until": _iso(make.good_until),
+        "fresh": make.fresh,
+        "minutes": make.minutes,
+        "for": list(make.bookings),
+        "sources": [_source(draw) for draw in make.sources],
+        "heel": _number(make.heel),
+        "heel_kept": make.heel_kept,
+        "steps": make.steps,
+        "cautions": list(make.cautions),
+        "reasons": list(make.reasons),
+    }
+
+
+def _past(bottle: PastBottle) -> Data:
+    return {
+        "bottle": bottle.bottle,
+        "item": bottle.item,
+        "condition": bottle.condition.value,
+        "good_until": _iso(bottle.good_until),
+        "decided_by": bottle.decided_by,
+        "matters_for": list(bottle.matters_for),
+    }
+
+
+def _use(use: Use) -> Data:
+    return {
+        "item": use.item,
+        "strength": use.strength,
+        "form": use.form,
+        **_measured(use.amount, use.kind),
+        "spare": _number(use.spare, use.kind),
+        "by_booking": {number: _number(amount, use.kind) for number, amount in use.by_booking},
+    }
+
+
+def _order(order: Order) -> Data:
+    return {
+        "id": order.id,
+        "item": order.item,
+        "pack": order.pack,
+        "packs": order.packs,
+        "need_by": order.need_by.isoformat(),
+        "order_by": order.order_by.isoformat(),
+        "arrives": order.arrives.isoformat(),
+        "late_by_open_days": order.late,
+        "cost": order.pence / 100,
+        "shares": {department: pence / 100 for department, pence in order.shares},
+        "for": list(order.for_bookings),
+        "reasons": list(order.reasons),
+    }
+
+
+def _short(short: Short) -> Data:
+    return {
+        "ref": short.ref,
+        "booking": short.booking,
+        "item": short.item,
+        "strength": short.strength,
+        **_measured(short.amount, short.kind),
+        "reason": short.reason,
+    }
+
+
+def _check(check: CheckToDo) -> Data:
+    return {
+        **_about(check.subject, otherwise="subject"),
+        "item": check.item,
+        "what": check.what,
+        "not_before": check.not_before.isoformat(),
+        "by": check.by.isoformat(),
+        "best": check.best.isoformat(),
+        "for": list(check.bookings),
+        "reason": check.reason,
+    }
+
+
+def _level(level: Level) -> Data:
+    return {
+        "item": level.item,
+        "on": level.on.isoformat(),
+        "left": _number(level.left, level.kind),
+        "level": _number(level.level, level.kind),
+        "unit": BASE_UNIT[level.kind],
+    }
+
+
+def _finding(finding: Finding) -> Data:
+    return _about(finding.subject, otherwise="item") | {"text": finding.text}
+
+
+def _about(subject: str, *, otherwise: str) -> Data:
+    return {"bottle" if is_bottle(subject) else otherwise: subject}

@@ -1,0 +1,85 @@
+"""Is everything good on the day, and why: the answers a demonstrator reads on a phone."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from stockroom.planning.decisions import Answer, CheckToDo, Outcome
+from stockroom.reports.makes_text import makes_by_day
+from stockroom.reports.sheet import PRACTICE, columns, foot, page, section, wrap
+from stockroom.reports.words import amount, counted, day, listed, named, source
+
+if TYPE_CHECKING:
+    from stockroom.planning.ready import Readiness
+
+
+def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> str:
+    """First line YES or NO with the count of things to do; then what they are.
+
+    The answer comes first even in the practice college, which says PRACTICE on
+    the same line.
+    """
+    parts = [
+        f"{_verdict(readiness)}{f'   {PRACTICE}' if practice else ''}\n"
+        + wrap(f"{readiness.title}, {day(readiness.on)}", width),
+        section(
+            "TO DO", [wrap(f"[ ] {each}", width, hang=6, indent=2) for each in readiness.to_do]
+        ),
+        section("MAKE", makes_by_day(readiness.makes, width)),
+        section("CHECK", check_lines(readiness.checks, width)),
+        section("NEEDS", need_lines(readiness.needs, width)),
+        section("TRUE STRENGTHS", [wrap(each, width, indent=2) for each in readiness.strengths]),
+        foot(width, f"stockroom why {_puzzling(readiness)}", "stockroom plan"),
+    ]
+    return page(parts)
+
+
+def why_text(reasons: tuple[str, ...], *, practice: bool = False) -> str:
+    """The reasons, a line each and never broken: five lines stay five lines."""
+    return "\n".join([PRACTICE, *reasons] if practice else reasons)
+
+
+def check_lines(checks: tuple[CheckToDo, ...], width: int) -> list[str]:
+    """Titrations and looks to do, best day first, with the days they may be done between."""
+    ordered = sorted(checks, key=lambda check: (check.best, check.subject))
+    return columns([(day(check.best), _check(check)) for check in ordered], width)
+
+
+def need_lines(needs: tuple[Answer, ...], width: int) -> list[str]:
+    """One need a row: reference, outcome, and what of, from where."""
+    return columns([(need.ref, need.outcome.value, served(need)) for need in needs], width)
+
+
+def served(need: Answer) -> str:
+    """A need and how it is served: "starch 0.5 % w/v 88 cm³ from M03"."""
+    wanted = f"{named(need.item, need.strength)} {amount(need.amount, need.kind)}"
+    if need.outcome in (Outcome.SHORT, Outcome.REFUSED):
+        return f"{wanted} (see {need.order})" if need.order else wanted
+    origin = [*_bottles(need), need.make, need.order]
+    shown = " + ".join(each for each in origin if each)
+    return f"{wanted} from {shown}" if shown else wanted
+
+
+def _bottles(need: Answer) -> list[str]:
+    drawn = [draw for draw in need.draws if draw.bottle]
+    if len(drawn) == 1 and drawn[0].amount == need.amount:
+        return [drawn[0].bottle]  # the amount has just been said
+    return [source(draw) for draw in drawn]
+
+
+def _verdict(readiness: Readiness) -> str:
+    if readiness.ready:
+        return "YES"
+    return f"NO: {counted(len(readiness.to_do), 'thing')} to do"
+
+
+def _puzzling(readiness: Readiness) -> str:
+    open_needs = [need.ref for need in readiness.needs if need.outcome is not Outcome.HAVE]
+    return next(iter([*open_needs, *(need.ref for need in readiness.needs)]), "REF")
+
+
+def _check(check: CheckToDo) -> str:
+    window = f"between {day(check.not_before)} and {day(check.by)}"
+    hangs = f", for {listed(check.bookings)}" if check.bookings else ""
+    reason = f": {check.reason}" if check.reason else ""
+    return f"{check.what} {check.subject} {check.item}, {window}{hangs}{reason}"

@@ -1,0 +1,95 @@
+"""Days, amounts, strengths and marks, the way every sheet writes them."""
+
+from __future__ import annotations
+
+import math
+import re
+from collections.abc import Iterable
+from datetime import date
+
+from stockroom.keeping.verdict import Condition
+from stockroom.measure.amounts import PER_UNIT, Amount, Kind
+from stockroom.measure.days import MONTHS
+from stockroom.measure.formats import format_amount
+from stockroom.planning.decisions import Draw
+
+# Not strftime: its names follow the machine's language, and a printed sheet must not.
+_WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
+
+TIED = "\u00a0"
+"""A space no line is broken at; `sheet.wrap` turns it back into a plain one."""
+
+MARKS: dict[Condition, str] = {
+    Condition.SOUND: "●",
+    Condition.WATCH: "◕",
+    Condition.WEAK: "○",
+    Condition.PAST: "○",
+    Condition.NO_DATE: "◌",
+    Condition.SET_ASIDE: "▩",
+    Condition.NOT_FOUND: "–",
+    Condition.GONE: "×",
+}
+"""Shapes that tell themselves apart in black and white; the word always follows."""
+
+
+def marked(condition: Condition) -> str:
+    """The mark and the word of a condition: "● sound"."""
+    return f"{MARKS[condition]}{TIED}{condition.value.replace(' ', TIED)}"
+
+
+def day(when: date) -> str:
+    """A day with its weekday, ISO, kept on one line: "Mon 2027-01-25"."""
+    return f"{_WEEKDAYS[when.weekday()]}{TIED}{when.isoformat()}"
+
+
+def day_heading(when: date) -> str:
+    """A day as a heading reads it: "Mon 25 Jan 2027"."""
+    return f"{_WEEKDAYS[when.weekday()]} {when.day} {MONTHS[when.month - 1][:3]} {when.year}"
+
+
+def rounded(number: float, figures: int) -> float:
+    """`number` to so many significant figures; no figure left of the point is lost."""
+    if not number:
+        return 0.0
+    places = figures - 1 - math.floor(math.log10(abs(number)))
+    return round(number, max(0, places))
+
+
+def amount(micro: int, kind: Kind) -> str:
+    """Micro-units as a person measures them: four figures and the unit, "27.5 cm³"."""
+    shown = Amount(kind, round(rounded(micro / PER_UNIT[kind], 4) * PER_UNIT[kind]))
+    return re.sub(r"\s", TIED, format_amount(shown))
+
+
+def raised(text: str) -> str:
+    """Text with its cm3 and dm3 written as they are printed: cm³, dm³."""
+    return re.sub(r"\b([cdm]m)3\b", r"\1³", text)
+
+
+def named(item: str, strength: str) -> str:
+    """An item with its strength: "sodium thiosulfate 0.200 mol/dm³"."""
+    return raised(f"{item} {strength.replace(' ', TIED)}".strip())
+
+
+def counted(number: int, noun: str) -> str:
+    """A count with its noun: "1 guess", "3 guesses", "2 bookings"."""
+    if number == 1:
+        return f"1 {noun}"
+    return f"{number} {noun}{'es' if noun.endswith(('s', 'h', 'x')) else 's'}"
+
+
+def listed(names: Iterable[str]) -> str:
+    """Names in a row: "K08, K09"."""
+    return ", ".join(names)
+
+
+def source(draw: Draw) -> str:
+    """One source of a make or a need: "27.5 cm³ of S01", "5 g of starch, soluble (M03)"."""
+    origin = draw.bottle or named(draw.item, "")
+    made = f" ({draw.make})" if draw.make and not draw.bottle else ""
+    return f"{amount(draw.amount, draw.kind)} of {origin}{made}"
+
+
+def money(pence: int) -> str:
+    """Pence as pounds: "£14.50"."""
+    return f"£{pence // 100}.{pence % 100:02d}"

@@ -1,0 +1,100 @@
+"""The store as a whole: made, filled from tables, asked what day it stands on."""
+
+from __future__ import annotations
+
+from datetime import date
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from stockroom import clock
+from stockroom.errors import StoreTrouble
+from stockroom.service.answers import Done
+from stockroom.store import reading
+
+if TYPE_CHECKING:
+    from sqlmodel import Session
+
+    from stockroom.store.desk import Desk
+
+HOUSE = "house"
+"""Who stands in the ledger for rows that came in with a folder of tables."""
+
+
+def seeds_folder() -> Path:
+    """Where the tables that travel with the program are: in a wheel, else in the checkout."""
+    package = Path(__file__).resolve().parent.parent
+    inside = package / "seeds_data"
+    return inside if inside.is_dir() else package.parent / "seeds_data"
+
+
+def make_practice(path: Path) -> None:
+    """Make the invented college at `path`; an earlier practice store there is renamed.
+
+    Raises: StoreTrouble when what stands there is a house of one's own.
+    """
+    if path.exists():
+        _put_by(path)
+    new_store(path, tables=seeds_folder() / "college")
+
+
+def _put_by(path: Path) -> None:
+    if not is_practice(path):
+        raise StoreTrouble(
+            f"{path} is a house of one's own, not a practice store; it was left alone.",
+            "Give the practice store another place with --store PATH.",
+        )
+    path.replace(path.with_suffix(".old.sqlite"))
+    for leftover in (Path(f"{path}-wal"), Path(f"{path}-shm")):
+        leftover.unlink(missing_ok=True)
+
+
+def new_store(path: Path, *, tables: Path | None = None) -> Done:
+    """Make a store at `path`, empty or from a folder of CSV tables.
+
+    Raises: StoreTrouble when something is there already; BadInput listing the
+    faults of the tables, and then no store is left behind.
+    """
+    from stockroom.store.engine import create
+    from stockroom.store.seeding import load_tables
+
+    create(path, fill=None if tables is None else lambda s: load_tables(_desk(s, HOUSE), tables))
+    filled = f" from the tables in {tables}" if tables else ""
+    following = "stockroom plan" if tables else "stockroom add line item=… form=solid"
+    return Done(f"Made {path}{filled}.", next=following, practice=is_practice(path))
+
+
+def add_row(path: Path, table: str, values: dict[str, str], *, by: str) -> Done:
+    """Add one row to a table, its cells given by column name.
+
+    Raises: UnknownName for a table or column that is not there; BadInput naming the column.
+    """
+    from stockroom.store import seeding
+    from stockroom.store.engine import writing
+
+    with writing(path) as session:
+        seeding.add_row(_desk(session, by), table, values)
+    first = next(iter(values.values()), "")
+    return Done(f"Added to {table}: {first}.", practice=is_practice(path))
+
+
+def table_columns(table: str) -> list[str]:
+    """The columns of a table as typed. Raises: UnknownName with the nearest three."""
+    from stockroom.store import seeding
+
+    return seeding.table_columns(table)
+
+
+def is_practice(path: Path) -> bool:
+    """Whether the store is the invented college. Raises: StoreTrouble."""
+    return reading.house_value(path, "practice") == "yes"
+
+
+def day_for(path: Path, given: date | None) -> date:
+    """The day to answer for: the one given, else the practice day, else today."""
+    return given or reading.practice_day(path) or clock.today()
+
+
+def _desk(session: Session, by: str) -> Desk:
+    from stockroom.store.desk import Desk
+
+    return Desk(session, by=by, today=clock.today(), at=clock.now())

@@ -1,0 +1,44 @@
+"""Every table and its columns, for the reading half, which never imports `tables.py`.
+
+A test holds this against the SQLModel classes, column by column.
+"""
+
+from __future__ import annotations
+
+COLUMNS: dict[str, tuple[str, ...]] = {
+    table: tuple(names.split())
+    for table, names in {
+        "house": "setting value source",
+        "term": "id term starts_on ends_on source",
+        "closure": "id starts_on ends_on reason source",
+        "place": "id place name temperature_c meant_for source",
+        "department": "id department name left_pence source",
+        "balance": "id balance step source",
+        "balance_away": "id balance_id starts_on ends_on",
+        "vessel": "id vessel size source",
+        "substance": "id substance formula molar_mass cas storage_group peroxide_former source",
+        "other_name": "id substance_id name",
+        "line": "id key item substance_id form kind strength unit strength_text formula"
+        " molar_mass assay density level largest_batch never_kept vented_cap keep_note source",
+        "keeping_rule": "id line_id rule lasts_count lasts_unit counted_from purpose safety"
+        " decay_order rate at_c factor_per_10c above upto colder_than warmer_than source",
+        "method": "id line_id minutes minutes_guessed finish_minutes stands_hours titrated"
+        " smallest_batch steps cautions source",
+        "ingredient": "id line_id ingredient_id alternative role per_dm3 only_if_held source",
+        "pack": "id line_id size text pence lead supplier source",
+        "recipe": "id recipe version title never_kept waste handling assessment source",
+        "requirement": "id recipe_id number line_id lowest highest strength_text amount per"
+        " closeness closeness_guessed tolerance fresh freshest_days spare may_differ"
+        " found_within_days note source",
+        "bar": "id recipe_id substance_id reason source",
+        "swap": "id recipe_id line_id instead_id factor note source",
+        "booking": "id number recipe_id on_day minute groups spare department_id firmness room"
+        " source",
+        "booking_change": "id booking_id entered_on entered_at by what before after",
+        "bottle": "id number line_id size received_on made_on printed_text printed_readings cap"
+        " remark made_here source",
+        "parent": "id bottle_id parent_id",
+        "entry": "id bottle_id kind happened_on entered_on entered_at by change strength"
+        " strength_text passed place_id reason note booking puts_right",
+    }.items()
+}

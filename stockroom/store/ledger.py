@@ -1,0 +1,179 @@
+"""The ledger: one function writes an entry, and nothing takes one away.
+
+A bottle's balance is the sum of its changes. What happened and what was typed
+when are kept apart, so Friday's draw can be entered on Monday.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable
+from dataclasses import dataclass
+from datetime import date, datetime
+
+from sqlalchemy import func, text
+from sqlmodel import Session, col, select
+
+from stockroom.errors import BadDate, BadInput, NotEnough
+from stockroom.measure.amounts import Amount, Kind
+from stockroom.measure.days import spell_day
+from stockroom.measure.formats import format_amount
+from stockroom.store.kinds import BEGINNINGS, STANDING, EntryKind
+from stockroom.store.tables import Booking, Bottle, Entry, Line
+
+
+@dataclass(frozen=True, slots=True)
+class Stamp:
+    """When it happened, when it was entered, and the initials of who entered it."""
+
+    happened_on: date
+    entered_on: date
+    entered_at: datetime
+    by: str
+
+
+@dataclass(frozen=True, slots=True)
+class Event:
+    """What happened. `change` is signed, in micro-units; blank means nothing to say."""
+
+    kind: EntryKind
+    change: int = 0
+    strength: float | None = None
+    strength_text: str = ""
+    passed: bool | None = None
+    place_id: int | None = None
+    reason: str = ""
+    note: str = ""
+    booking: str = ""
+    puts_right: int | None = None
+
+
+def append(session: Session, bottle: Bottle, event: Event, stamp: Stamp) -> Entry:
+    """Write one entry and return it, numbered.
+
+    A change that happened before a later count leaves that count true: what was
+    counted was seen, so the difference is evened out on the day of the count.
+
+    Raises: BadInput without initials; BadDate before the bottle was there;
+    NotEnough for more than the bottle holds.
+    """
+    if not stamp.by.strip():
+        raise BadInput("Whose initials?", "Add --by T1, or set STOCKROOM_BY.")
+    _check_begun(session, bottle, event, stamp.happened_on)
+    count = _count_after(session, bottle, event, stamp.happened_on) if event.change else None
+    evening = _evening(count, event) if count else None
+    if evening and count and evening.change > 0:
+        _write(session, bottle, evening, stamp, count.happened_on)
+    entry = _write(session, bottle, event, stamp, stamp.happened_on)
+    if evening and count and evening.change < 0:
+        _write(session, bottle, evening, stamp, count.happened_on)
+    return entry
+
+
+def left(session: Session, bottle: Bottle) -> int:
+    """What the bottle holds, in micro-units: the sum of everything ever entered for it."""
+    total = select(func.coalesce(func.sum(Entry.change), 0)).where(Entry.bottle_id == bottle.id)
+    return int(session.exec(total).one())
+
+
+def entries_of(session: Session, bottle: Bottle) -> list[Entry]:
+    """The entries that still hold, in the order things happened; put-right pairs left out."""
+    kept = select(Entry).where(Entry.bottle_id == bottle.id, text(STANDING))
+    return list(session.exec(kept.order_by(col(Entry.happened_on), col(Entry.id))))
+
+
+def amount_of(session: Session, bottle: Bottle, micro: int) -> Amount:
+    """Micro-units of what is in the bottle as an amount with its kind."""
+    return Amount(Kind(session.get_one(Line, bottle.line_id).kind), micro)
+
+
+def next_bottle_number(session: Session, *, made_here: bool) -> str:
+    """The next label number: B for bought, S for made here; numbers are never used again."""
+    return _next("S" if made_here else "B", session.exec(select(Bottle.number)).all())
+
+
+def next_booking_number(session: Session) -> str:
+    """The next booking number: K and digits."""
+    return _next("K", session.exec(select(Booking.number)).all())
+
+
+def _next(letter: str, used: Iterable[str]) -> str:
+    numbers = [
+        int(match[1]) for number in used if (match := re.fullmatch(rf"{letter}(\d+)[a-z]*", number))
+    ]
+    return f"{letter}{max(numbers, default=0) + 1:02d}"
+
+
+def _write(
+    session: Session, bottle: Bottle, event: Event, stamp: Stamp, happened_on: date
+) -> Entry:
+    _check_enough(session, bottle, event)
+    assert bottle.id is not None
+    entry = Entry(
+        bottle_id=bottle.id,
+        kind=event.kind.value,
+        happened_on=happened_on,
+        entered_on=stamp.entered_on,
+        entered_at=stamp.entered_at.isoformat(sep=" "),
+        by=stamp.by.strip(),
+        change=event.change,
+        strength=event.strength,
+        strength_text=event.strength_text,
+        passed=event.passed,
+        place_id=event.place_id,
+        reason=event.reason,
+        note=event.note,
+        booking=event.booking,
+        puts_right=event.puts_right,
+    )
+    session.add(entry)
+    # numbered at once: the next sum, and the trigger, must see it
+    session.flush()
+    return entry
+
+
+def _check_enough(session: Session, bottle: Bottle, event: Event) -> None:
+    if event.change >= 0:
+        return
+    held = left(session, bottle)
+    if held + event.change < 0:
+        has = format_amount(amount_of(session, bottle, held))
+        asked = format_amount(amount_of(session, bottle, -event.change))
+        raise NotEnough(
+            f"{bottle.number} holds {has}; {asked} asked.", "Count it, then put it right."
+        )
+
+
+def _check_begun(session: Session, bottle: Bottle, event: Event, on: date) -> None:
+    if event.kind in BEGINNINGS:
+        return
+    first = [entry.happened_on for entry in entries_of(session, bottle) if entry.kind in BEGINNINGS]
+    begun = first[0] if first else bottle.made_on or bottle.received_on
+    if begun is None or on < begun:
+        how = "was made" if bottle.made_here else "arrived"
+        when = spell_day(begun) if begun else "(day not known)"
+        raise BadDate(
+            f"{event.kind.capitalize()} {spell_day(on)} is before {bottle.number} {how} {when}.",
+            "One of these days is wrong.",
+        )
+
+
+def _count_after(session: Session, bottle: Bottle, event: Event, happened_on: date) -> Entry | None:
+    """The first count, still standing, of a later day than the change took effect."""
+    original = session.get(Entry, event.puts_right) if event.puts_right else None
+    since = original.happened_on if original else happened_on
+    counts = [
+        entry
+        for entry in entries_of(session, bottle)
+        if entry.kind == EntryKind.COUNTED and entry.happened_on > since
+    ]
+    return counts[0] if counts else None
+
+
+def evening_note(count_id: int | None) -> str:
+    """The note on the entry that keeps an earlier count true."""
+    return f"keeps the count of entry {count_id} as it was"
+
+
+def _evening(count: Entry, event: Event) -> Event:
+    return Event(EntryKind.COUNTED, change=-event.change, note=evening_note(count.id))

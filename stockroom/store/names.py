@@ -1,0 +1,225 @@
+"""Any name finds it: keys, items, other names, formulas, registry numbers, parts of words.
+
+Nothing is ever created by a lookup: no match shows the three nearest, and two
+matches are listed for the person to choose from.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable
+from typing import TypeVar
+
+from sqlmodel import Session, SQLModel, col, select
+
+from stockroom.chemistry.strength import canonical
+from stockroom.errors import BadInput, StockroomError, UnknownName
+from stockroom.measure.parsing import parse_strength
+from stockroom.measure.reading import tidy
+from stockroom.store.tables import (
+    Booking,
+    Bottle,
+    Department,
+    Line,
+    OtherName,
+    Place,
+    Recipe,
+    Substance,
+)
+
+Table = TypeVar("Table", bound=SQLModel)
+
+_MOST_LISTED = 8
+_BARE_NUMBER = re.compile(r"[0-9]+([.,][0-9]+)?")
+
+
+def plain(text: str) -> str:
+    """A name as it is compared: spaces, look-alike characters and capitals settled."""
+    return tidy(text).casefold()
+
+
+def unknown(what: str, text: str, choices: Iterable[str]) -> UnknownName:
+    """The error for a name nobody knows, with the three nearest as its hint."""
+    near = nearest(text, choices)
+    hint = f"Nearest: {'; '.join(near)}." if near else f"There is no {what} at all yet."
+    return UnknownName(f'No {what} "{text.strip()}".', hint)
+
+
+def nearest(text: str, choices: Iterable[str]) -> list[str]:
+    """The three choices most like `text`, the likest first; ties by the alphabet."""
+    from rapidfuzz import fuzz, process
+
+    ordered = sorted(set(choices))
+    found = process.extract(plain(text), ordered, scorer=fuzz.WRatio, processor=plain, limit=3)
+    return [name for name, _, _ in found]
+
+
+def find_line(session: Session, text: str) -> Line:
+    """The stock line a name, with or without a strength, stands for: "hypo 0.1 M", "KI 0.100".
+
+    Raises: UnknownName with the nearest three; BadInput listing the choices when several fit.
+    """
+    return Lines(session).find(text)
+
+
+class Lines:
+    """Every line with all the names it answers to; read once, `add` as rows come in."""
+
+    def __init__(self, session: Session) -> None:
+        self._session = session
+        self._lines: dict[str, Line] = {}
+        self._named: dict[str, list[Line]] = {}
+        self._substances: dict[int | None, Substance] = {
+            row.id: row for row in session.exec(select(Substance))
+        }
+        self._others: dict[int, list[str]] = {}
+        for other in session.exec(select(OtherName).order_by(col(OtherName.id))):
+            self._others.setdefault(other.substance_id, []).append(other.name)
+        for line in session.exec(select(Line).order_by(col(Line.id))):
+            self.add(line)
+
+    def add(self, line: Line) -> None:
+        """Let a line be found from now on."""
+        self._lines[plain(line.key)] = line
+        for name in self._names(line):
+            self._named.setdefault(name, []).append(line)
+
+    def find(self, text: str) -> Line:
+        """As `find_line`."""
+        exact = self._lines.get(plain(text))
+        if exact is not None:
+            return exact
+        words = tidy(text).split()
+        # the longest name first, so that "sulfuric acid 2.00" is not read as "sulfuric" of "acid"
+        for end in range(len(words), 0, -1):
+            named = self._named.get(_spelt(" ".join(words[:end])), [])
+            fitting = self._at_strength(named, " ".join(words[end:]))
+            if fitting:
+                return _only(text, fitting)
+        return self._by_part(text)
+
+    def _names(self, line: Line) -> list[str]:
+        substance = self._substance(line)
+        names = [line.item, line.formula]
+        if substance is not None and substance.id is not None:
+            names += [substance.substance, substance.formula, substance.cas]
+            names += self._others.get(substance.id, [])
+        return list(dict.fromkeys(_spelt(name) for name in names if name))
+
+    def _substance(self, line: Line) -> Substance | None:
+        if line.substance_id is not None and line.substance_id not in self._substances:
+            found = self._session.get_one(Substance, line.substance_id)
+            others = select(OtherName).where(OtherName.substance_id == line.substance_id)
+            self._substances[line.substance_id] = found
+            self._others[line.substance_id] = [row.name for row in self._session.exec(others)]
+        return self._substances.get(line.substance_id)
+
+    def _at_strength(self, named: list[Line], written: str) -> list[Line]:
+        if not named or not written:
+            return named
+        wanted = f"{written} mol/dm3" if _BARE_NUMBER.fullmatch(written) else written
+        return [line for line in named if self._is_strength(line, wanted)]
+
+    def _is_strength(self, line: Line, wanted: str) -> bool:
+        if plain(line.strength_text) == plain(wanted):
+            return True
+        substance = self._substance(line)
+        try:
+            asked = canonical(
+                parse_strength(wanted),
+                molar_mass=substance.molar_mass if substance else None,
+                density=line.density,
+            )
+        except StockroomError:
+            return False
+        if line.strength is None or asked.unit != line.unit:
+            return False
+        # labels are written to three figures, so half a part in a thousand is the same strength
+        return abs(asked.value - line.strength) <= 5e-4 * line.strength
+
+    def _by_part(self, text: str) -> Line:
+        part = plain(text)
+        fitting = [line for key, line in self._lines.items() if part and part in key]
+        if not fitting:
+            names = {line.key for line in self._lines.values()}
+            raise unknown("stock line", text, names)
+        return _only(text, fitting)
+
+
+def _spelt(name: str) -> str:
+    # the three ways of writing a hydrate's dot
+    return re.sub(r"[*.](?=[0-9]*H2O)", "·", tidy(name)).casefold()
+
+
+def _only(text: str, fitting: list[Line]) -> Line:
+    if len(fitting) == 1:
+        return fitting[0]
+    items = [line for line in fitting if plain(line.item) == plain(text)]
+    if len(items) == 1:
+        return items[0]
+    keys = sorted(line.key for line in fitting)
+    listed = "; ".join(keys[:_MOST_LISTED]) + ("; …" if len(keys) > _MOST_LISTED else "")
+    raise BadInput(f'"{text.strip()}" could be {len(keys)} things: {listed}.', "Say which.")
+
+
+def find_bottle(session: Session, text: str) -> Bottle:
+    """The bottle with that number. Raises: UnknownName with the nearest three."""
+    return _by_column(session, Bottle, "number", text, "bottle")
+
+
+def find_booking(session: Session, text: str) -> Booking:
+    """The booking with that number. Raises: UnknownName with the nearest three."""
+    return _by_column(session, Booking, "number", text, "booking")
+
+
+def find_place(session: Session, text: str) -> Place:
+    """The place by its short or its long name. Raises: UnknownName with the nearest three."""
+    return _by_column(session, Place, "place", text, "place", "name")
+
+
+def find_department(session: Session, text: str) -> Department:
+    """The department by code or name. Raises: UnknownName with the nearest three."""
+    return _by_column(session, Department, "department", text, "department", "name")
+
+
+def find_substance(session: Session, text: str) -> Substance:
+    """The substance by name, another name, formula or registry number.
+
+    Raises: UnknownName with the nearest three.
+    """
+    others = select(OtherName)
+    for other in session.exec(others):
+        if _spelt(other.name) == _spelt(text):
+            return session.get_one(Substance, other.substance_id)
+    for row in session.exec(select(Substance).order_by(col(Substance.id))):
+        if _spelt(text) in {_spelt(row.formula), _spelt(row.cas)} - {""}:
+            return row
+    return _by_column(session, Substance, "substance", text, "substance")
+
+
+def find_recipe(session: Session, text: str, version: int | None = None) -> Recipe:
+    """The recipe by code or title; the newest version unless one is named.
+
+    Raises: UnknownName with the nearest three codes.
+    """
+    rows = list(session.exec(select(Recipe).order_by(col(Recipe.version).desc())))
+    named = [row for row in rows if plain(text) in (plain(row.recipe), plain(row.title))]
+    for row in named:
+        if version is None or row.version == version:
+            return row
+    if named:
+        raise UnknownName(
+            f"{named[0].recipe} has no version {version}.", f"The newest is {named[0].version}."
+        )
+    raise unknown("recipe", text, (f"{row.recipe} {row.title}" for row in rows))
+
+
+def _by_column(
+    session: Session, table: type[Table], column: str, text: str, what: str, *also: str
+) -> Table:
+    rows = list(session.exec(select(table)))
+    for name in (column, *also):
+        for row in rows:
+            if plain(str(getattr(row, name))) == plain(text) != "":
+                return row
+    raise unknown(what, text, (str(getattr(row, column)) for row in rows))

@@ -1,0 +1,109 @@
+"""Open a store for reading only, through the plain driver: nothing heavy is imported."""
+
+from __future__ import annotations
+
+import sqlite3
+from collections.abc import Iterator
+from contextlib import contextmanager
+from dataclasses import dataclass
+from datetime import date
+from pathlib import Path
+from typing import Any
+
+from stockroom.errors import StoreTrouble
+from stockroom.store.columns import COLUMNS
+from stockroom.store.trouble import (
+    BUSY_SECONDS,
+    check_revision,
+    check_there,
+    foreign,
+    translated,
+)
+
+Row = sqlite3.Row
+
+
+@dataclass(frozen=True, slots=True)
+class Reader:
+    """A store held still at one moment: what others write meanwhile is not seen."""
+
+    connection: sqlite3.Connection
+
+    def rows(self, table: str, tail: str = "ORDER BY id", *values: Any) -> list[Row]:
+        """The rows of a table with all its columns; `tail` is the SQL after the table."""
+        # COLUMNS is ours, so nothing typed by a person ever becomes SQL
+        names = ", ".join(f'"{name}"' for name in COLUMNS[table])
+        return self.ask(f"SELECT {names} FROM {table} {tail}", *values)
+
+    def pairs(self, sql: str, *values: Any) -> dict[Any, Any]:
+        """The answer to a two-column question, first column to second."""
+        return {row[0]: row[1] for row in self.ask(sql, *values)}
+
+    def ask(self, sql: str, *values: Any) -> list[Row]:
+        """The rows any other question gives."""
+        # rows are named on the cursor, so that a connection lent by the writing half stays as it was
+        cursor = self.connection.cursor()
+        cursor.row_factory = sqlite3.Row
+        return cursor.execute(sql, values).fetchall()
+
+
+@contextmanager
+def reading(path: Path) -> Iterator[Reader]:
+    """A reader on the store at `path`.
+
+    Raises: StoreTrouble when it is missing, damaged, no store at all or too new.
+    """
+    check_there(path)
+    with translated(path):
+        connection = _connect(path)
+        try:
+            check_revision(path, _revision(connection, path))
+            connection.execute("BEGIN")
+            yield Reader(connection)
+        finally:
+            connection.close()
+
+
+def house_value(path: Path, key: str) -> str | None:
+    """One house setting as text; None when it is not set."""
+    with reading(path) as reader:
+        found = reader.rows("house", "WHERE setting = ?", key)
+    return str(found[0]["value"]) if found else None
+
+
+def practice_day(path: Path) -> date | None:
+    """The day a practice store opens on; None for a house of one's own."""
+    written = house_value(path, "practice_day")
+    return date.fromisoformat(written) if written else None
+
+
+def _connect(path: Path) -> sqlite3.Connection:
+    address = path.resolve().as_uri()
+    connection = _opened(f"{address}?mode=ro")
+    try:
+        connection.execute("SELECT 1 FROM sqlite_master LIMIT 1")
+    except sqlite3.OperationalError as error:
+        connection.close()
+        if error.sqlite_errorname.startswith("SQLITE_CANTOPEN") and not _being_written(path):
+            # a folder that may not be written to: no lock file can be made, and none is needed
+            return _opened(f"{address}?immutable=1")
+        raise
+    return connection
+
+
+def _opened(address: str) -> sqlite3.Connection:
+    return sqlite3.connect(address, uri=True, timeout=BUSY_SECONDS, isolation_level=None)
+
+
+def _being_written(path: Path) -> bool:
+    return Path(f"{path}-wal").exists()
+
+
+def _revision(connection: sqlite3.Connection, path: Path) -> str | None:
+    names = {row[0] for row in connection.execute("SELECT name FROM sqlite_master")}
+    if not {"alembic_version", "entry", "house"} <= names:
+        raise foreign(path)
+    row = connection.execute("SELECT version_num FROM alembic_version").fetchone()
+    if row is None:
+        raise StoreTrouble(f"{path} carries no layout mark.", "Put the last good copy back.")
+    return str(row[0])

@@ -1,0 +1,130 @@
+"""Readers for the tables that describe the house: settings, days, places, equipment."""
+
+from __future__ import annotations
+
+from sqlmodel import SQLModel, col, select
+
+from stockroom.errors import BadDate, BadInput
+from stockroom.measure.amounts import Amount
+from stockroom.measure.days import parse_day, parse_time
+from stockroom.measure.reading import read_number
+from stockroom.store.desk import Desk
+from stockroom.store.fields import Fields
+from stockroom.store.names import plain, unknown
+from stockroom.store.tables import (
+    Balance,
+    BalanceAway,
+    Closure,
+    Department,
+    House,
+    Place,
+    Term,
+    Vessel,
+)
+
+_YES_NO = ("practice", "finish_day_before")
+_WHOLE = ("margin_open_days", "lead_open_days", "session_minutes")
+_VOLUMES = ("batch_step_cm3", "heel_floor_cm3")
+_TIMES = ("staffed_from", "staffed_to")
+SETTINGS = ("name", "practice_day", *_YES_NO, *_WHOLE, *_VOLUMES, *_TIMES)
+
+
+def read_setting(desk: Desk, fields: Fields) -> None:
+    """One house setting; a setting given again takes the place of the old value."""
+    setting = fields.need("setting")
+    if setting not in SETTINGS:
+        raise unknown("house setting", setting, SETTINGS)
+    value = fields.need("value")
+    _check_setting(setting, value)
+    desk.session.merge(House(setting=setting, value=value, source=fields.text("source")))
+
+
+def _check_setting(setting: str, value: str) -> None:
+    if setting in _TIMES:
+        parse_time(value, where=setting)
+    elif setting == "practice_day":
+        parse_day(value, where=setting)
+    elif setting in _YES_NO and value not in ("yes", "no"):
+        raise BadInput(f'{setting} "{value}" is neither yes nor no.', "Write yes or no.")
+    elif setting in (*_WHOLE, *_VOLUMES):
+        number = read_number(value, where=setting)
+        if setting in _WHOLE and number != int(number):
+            raise BadInput(f'{setting} "{value}" is not a whole number.', "Give a whole number.")
+
+
+def read_term(desk: Desk, fields: Fields) -> None:
+    """A term; two terms never overlap."""
+    name = new_name(desk, Term, "term", fields.need("term"))
+    first, last = fields.span("from", "to")
+    for other in desk.session.exec(select(Term)):
+        if other.starts_on <= last and first <= other.ends_on:
+            raise BadDate(
+                f"{name} ({first} to {last}) overlaps {other.term}"
+                f" ({other.starts_on} to {other.ends_on}).",
+                "Move one of them.",
+            )
+    row = Term(term=name, starts_on=first, ends_on=last, source=fields.text("source"))
+    desk.save(row)
+
+
+def read_closure(desk: Desk, fields: Fields) -> None:
+    """Days the house is shut."""
+    first, last = fields.span("from", "to")
+    reason, source = fields.text("reason"), fields.text("source")
+    desk.save(Closure(starts_on=first, ends_on=last, reason=reason, source=source))
+
+
+def read_place(desk: Desk, fields: Fields) -> None:
+    """A place bottles stand at."""
+    row = Place(
+        place=new_name(desk, Place, "place", fields.need("place")),
+        name=fields.text("name"),
+        temperature_c=fields.signed("temperature_c"),
+        meant_for=fields.text("meant_for"),
+        source=fields.text("source"),
+    )
+    desk.save(row)
+
+
+def read_department(desk: Desk, fields: Fields) -> None:
+    """A department and the pounds it has left; blank means no limit is kept."""
+    row = Department(
+        department=new_name(desk, Department, "department", fields.need("department")),
+        name=fields.text("name"),
+        left_pence=fields.pence("left_gbp"),
+        source=fields.text("source"),
+    )
+    desk.save(row)
+
+
+def read_balance(desk: Desk, fields: Fields) -> None:
+    """A balance, or a further absence of one already entered."""
+    name = fields.need("balance")
+    found = desk.session.exec(select(Balance).where(Balance.balance == name)).first()
+    step = fields.number("step_g")
+    if found is None:
+        if not step:
+            raise BadInput(f"step_g of {name} is blank or 0.", "Give its step, as 0.01.")
+        found = Balance(balance=name, step=Amount.grams(step).micro, source=fields.text("source"))
+        desk.save(found)
+    if fields.text("away_from"):
+        first, last = fields.span("away_from", "away_to")
+        assert found.id is not None
+        desk.save(BalanceAway(balance_id=found.id, starts_on=first, ends_on=last))
+
+
+def read_vessel(desk: Desk, fields: Fields) -> None:
+    """A vessel to make up in."""
+    name = new_name(desk, Vessel, "vessel", fields.need("vessel"))
+    size = fields.volume("size_cm3")
+    if not size:
+        raise BadInput(f"size_cm3 of {name} is blank or 0.", "Give what it holds, as 2000.")
+    desk.save(Vessel(vessel=name, size=size, source=fields.text("source")))
+
+
+def new_name(desk: Desk, table: type[SQLModel], column: str, name: str) -> str:
+    """The name itself, when no row of the table has it yet. Raises: BadInput."""
+    names = desk.session.exec(select(col(getattr(table, column)))).all()
+    if plain(name) in {plain(str(other)) for other in names}:
+        raise BadInput(f'There is already a {column} "{name}".', "Give another name.")
+    return name

@@ -1,0 +1,174 @@
+"""Rows into facts: a store as the planner sees it, as at one day.
+
+Plain driver, a handful of questions, sums taken in SQL. `snapshot_lines.py`
+reads what does not move (lines, methods, recipes), `snapshot_bottles.py` what
+stands on the shelves.
+"""
+
+from __future__ import annotations
+
+from datetime import date, timedelta
+from pathlib import Path
+
+from stockroom.errors import BadDate
+from stockroom.measure.amounts import Amount
+from stockroom.measure.days import parse_time
+from stockroom.measure.workdays import Calendar
+from stockroom.planning.facts import (
+    Balance,
+    Booking,
+    Department,
+    Facts,
+    Firmness,
+    House,
+    Place,
+)
+from stockroom.store.reading import Reader, Row, reading
+from stockroom.store.snapshot_bottles import bottles_of, drawn_of
+from stockroom.store.snapshot_lines import lines_of, methods_of, recipes_of
+
+SPAN = timedelta(days=90)
+"""How far ahead to look when no term is written down: about a term."""
+
+
+def facts(path: Path, as_at: date, start: date | None = None, end: date | None = None) -> Facts:
+    """Everything the planner may know of the store at `path`, as at one day.
+
+    Entries that happened later are left out, and bottles that were not there
+    yet. The period is the term `as_at` lies in, else the next one, else 90
+    days from `as_at`; `start` and `end` take its place where given.
+
+    Raises: StoreTrouble; BadDate when the period runs backwards.
+    """
+    with reading(path) as reader:
+        return facts_from(reader, as_at, start, end)
+
+
+def facts_from(
+    reader: Reader, as_at: date, start: date | None = None, end: date | None = None
+) -> Facts:
+    """The same as `facts`, from a store already open."""
+    settings = {row["setting"]: row["value"] for row in reader.rows("house", "")}
+    first, last = _period(reader, as_at, start, end)
+    return Facts(
+        as_at=as_at,
+        start=start or first,
+        end=end or last,
+        calendar=_calendar(reader, settings),
+        house=_house(reader, settings),
+        lines=lines_of(reader),
+        methods=methods_of(reader),
+        recipes=recipes_of(reader),
+        bookings=_bookings(reader, settings, min(first, start or first, as_at), end or last),
+        bottles=bottles_of(reader, as_at),
+        balances=_balances(reader),
+        departments=_departments(reader),
+        places=_places(reader),
+        drawn=drawn_of(reader, as_at),
+    )
+
+
+def _period(reader: Reader, as_at: date, start: date | None, end: date | None) -> tuple[date, date]:
+    """The term the period falls in; its last day never before the first day asked for."""
+    asked = start or as_at
+    terms = reader.rows("term", "WHERE ends_on >= ? ORDER BY starts_on LIMIT 1", asked.isoformat())
+    first, last = (_span(terms[0])) if terms else (asked, asked + SPAN)
+    if (end or last) < (start or first):
+        raise BadDate(
+            f"The plan would run from {start or first} to {end or last}, backwards.",
+            "Give --from a day before --to.",
+        )
+    return first, last
+
+
+def _span(row: Row) -> tuple[date, date]:
+    return date.fromisoformat(row["starts_on"]), date.fromisoformat(row["ends_on"])
+
+
+def _calendar(reader: Reader, settings: dict[str, str]) -> Calendar:
+    closed = tuple(_span(row) for row in reader.rows("closure", "ORDER BY starts_on, id"))
+    usual = Calendar()
+    return Calendar(
+        closed,
+        _minute(settings.get("staffed_from"), usual.open_from),
+        _minute(settings.get("staffed_to"), usual.open_to),
+    )
+
+
+def _minute(written: str | None, usual: int) -> int:
+    return parse_time(written) if written else usual
+
+
+def _house(reader: Reader, settings: dict[str, str]) -> House:
+    usual = House()
+    vessels = [row["size"] for row in reader.rows("vessel")]
+    return House(
+        name=settings.get("name", usual.name),
+        practice=settings.get("practice") == "yes",
+        margin_days=int(settings.get("margin_open_days", usual.margin_days)),
+        default_lead=int(settings.get("lead_open_days", usual.default_lead)),
+        batch_step=_volume(settings.get("batch_step_cm3", "50")),
+        heel_floor=_volume(settings.get("heel_floor_cm3", "50")),
+        finish_day_before=settings.get("finish_day_before", "yes") == "yes",
+        largest_vessel=max(vessels, default=None),
+    )
+
+
+def _volume(cubic: str) -> int:
+    return Amount.cm3(float(cubic)).micro
+
+
+def _bookings(
+    reader: Reader, settings: dict[str, str], first: date, last: date
+) -> tuple[Booking, ...]:
+    lasts = int(settings.get("session_minutes", "100"))
+    recipes = {row["id"]: (row["recipe"], row["version"]) for row in reader.rows("recipe")}
+    payers = reader.pairs("SELECT id, department FROM department")
+    rows = reader.rows(
+        "booking",
+        "WHERE on_day BETWEEN ? AND ? ORDER BY on_day, minute, number",
+        first.isoformat(),
+        last.isoformat(),
+    )
+    return tuple(_booking(row, recipes, payers, lasts) for row in rows)
+
+
+def _booking(
+    row: Row, recipes: dict[int, tuple[str, int]], payers: dict[int, str], lasts: int
+) -> Booking:
+    recipe, version = recipes[row["recipe_id"]]
+    return Booking(
+        number=row["number"],
+        recipe=recipe,
+        version=version,
+        on=date.fromisoformat(row["on_day"]),
+        minute=row["minute"],
+        groups=row["groups"],
+        spare=row["spare"],
+        department=payers[row["department_id"]],
+        firmness=Firmness(row["firmness"]),
+        room=row["room"],
+        lasts_minutes=lasts,
+    )
+
+
+def _balances(reader: Reader) -> tuple[Balance, ...]:
+    away: dict[int, list[tuple[date, date]]] = {}
+    for row in reader.rows("balance_away", "ORDER BY starts_on, id"):
+        away.setdefault(row["balance_id"], []).append(_span(row))
+    return tuple(
+        Balance(row["balance"], row["step"], tuple(away.get(row["id"], ())))
+        for row in reader.rows("balance")
+    )
+
+
+def _departments(reader: Reader) -> tuple[Department, ...]:
+    rows = reader.rows("department")
+    return tuple(Department(row["department"], row["name"], row["left_pence"]) for row in rows)
+
+
+def _places(reader: Reader) -> tuple[Place, ...]:
+    return tuple(
+        Place(row["place"], row["name"], row["temperature_c"], row["meant_for"])
+        for row in reader.rows("place")
+    )

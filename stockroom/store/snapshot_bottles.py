@@ -1,0 +1,217 @@
+"""Rows into facts: what stands on the shelves, and the record of each bottle.
+
+Entries put right are left out together with the entries that put them right,
+so the picture of any day is as if the slip had never happened.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+from datetime import date
+
+from stockroom.keeping.record import Check, CheckKind, Record, Stay
+from stockroom.measure.days import PrintedDate
+from stockroom.planning.facts import Bottle, Drawn
+from stockroom.store.kinds import BEGINNINGS, DAY_NOT_WRITTEN, STANDING, EntryKind
+from stockroom.store.reading import Reader, Row
+
+_QUIET = (EntryKind.DRAWN, EntryKind.COUNTED, EntryKind.SPILLED, EntryKind.LENT)
+_STAYS = (*BEGINNINGS, EntryKind.MOVED, EntryKind.TURNED_UP)
+_CHECKS = {
+    EntryKind.FOUND: CheckKind.FOUND,
+    EntryKind.LOOKED: CheckKind.LOOKED,
+    EntryKind.TESTED: CheckKind.TESTED,
+}
+
+
+@dataclass(frozen=True, slots=True)
+class _Shelf:
+    """What every bottle's row is read beside."""
+
+    lines: dict[int, Row]
+    places: dict[int, Row]
+    left: dict[int, int]
+    events: dict[int, list[Row]]
+    lineage: dict[int, tuple[str, ...]]
+
+
+def bottles_of(reader: Reader, as_at: date) -> tuple[Bottle, ...]:
+    """Every bottle there on a day, by number; an emptied one stays until it is discarded."""
+    shelf = _shelf(reader, as_at.isoformat(), "")
+    rows = reader.rows("bottle", "ORDER BY number")
+    bottles = (_bottle(row, shelf) for row in rows if _begun(shelf.events.get(row["id"])))
+    return tuple(bottle for bottle in bottles if bottle.left or not bottle.record.gone)
+
+
+def bottle_of(reader: Reader, number: str, as_at: date) -> Bottle | None:
+    """One bottle as at a day, gone or not; None when it was not there yet."""
+    rows = reader.rows("bottle", "WHERE number = ?", number)
+    if not rows:
+        return None
+    shelf = _shelf(reader, as_at.isoformat(), f" AND bottle_id = {int(rows[0]['id'])}")
+    return _bottle(rows[0], shelf) if _begun(shelf.events.get(rows[0]["id"])) else None
+
+
+def _shelf(reader: Reader, day: str, only: str) -> _Shelf:
+    return _Shelf(
+        lines={row["id"]: row for row in reader.rows("line")},
+        places={row["id"]: row for row in reader.rows("place")},
+        left=_left(reader, day, only),
+        events=_events(reader, day, only),
+        lineage=_lineage(reader),
+    )
+
+
+def drawn_of(reader: Reader, as_at: date) -> tuple[Drawn, ...]:
+    """What was really drawn up to a day, oldest first; spills, loans and counts are not draws."""
+    rows = reader.ask(
+        "SELECT bottle.number, line.key, happened_on, -change FROM entry"
+        " JOIN bottle ON bottle.id = bottle_id JOIN line ON line.id = line_id"
+        f" WHERE entry.kind = ? AND happened_on <= ? AND {STANDING}"
+        " ORDER BY happened_on, entry.id",
+        EntryKind.DRAWN,
+        as_at.isoformat(),
+    )
+    return tuple(
+        Drawn(number, line, date.fromisoformat(day), amount) for number, line, day, amount in rows
+    )
+
+
+def _left(reader: Reader, day: str, only: str) -> dict[int, int]:
+    return reader.pairs(
+        "SELECT bottle_id, SUM(change) FROM entry"
+        f" WHERE happened_on <= ? AND {STANDING}{only} GROUP BY bottle_id",
+        day,
+    )
+
+
+def _events(reader: Reader, day: str, only: str) -> dict[int, list[Row]]:
+    marks = ", ".join("?" * len(_QUIET))
+    rows = reader.rows(
+        "entry",
+        f"WHERE happened_on <= ? AND kind NOT IN ({marks}) AND {STANDING}{only}"
+        " ORDER BY happened_on, id",
+        day,
+        *_QUIET,
+    )
+    found: dict[int, list[Row]] = {}
+    for row in rows:
+        found.setdefault(row["bottle_id"], []).append(row)
+    return found
+
+
+def _begun(events: list[Row] | None) -> bool:
+    return any(row["kind"] in BEGINNINGS for row in events or ())
+
+
+def _lineage(reader: Reader) -> dict[int, tuple[str, ...]]:
+    parents: dict[int, list[int]] = {}
+    for row in reader.rows("parent"):
+        parents.setdefault(row["bottle_id"], []).append(row["parent_id"])
+    numbers = reader.pairs("SELECT id, number FROM bottle")
+    return {
+        child: tuple(numbers[one] for one in _ancestors(child, parents, numbers))
+        for child in parents
+    }
+
+
+def _ancestors(child: int, parents: dict[int, list[int]], numbers: dict[int, str]) -> list[int]:
+    """Parents, then grandparents and so on; within a generation by number."""
+    seen: list[int] = []
+    generation = [child]
+    while generation:
+        above = {one for bottle in generation for one in parents.get(bottle, ())}
+        generation = sorted(above - {child, *seen}, key=lambda one: numbers[one])
+        seen += generation
+    return seen
+
+
+def _bottle(row: Row, shelf: _Shelf) -> Bottle:
+    events = shelf.events[row["id"]]
+    line = shelf.lines[row["line_id"]]
+    record = _record(row, events, line, shelf.places)
+    return Bottle(
+        number=row["number"],
+        line=line["key"],
+        left=shelf.left[row["id"]],
+        size=row["size"],
+        record=record,
+        place=record.stays[-1].place if record.stays else "",
+        remark=row["remark"],
+        cap=row["cap"],
+        made_here=bool(row["made_here"]),
+        lineage=shelf.lineage.get(row["id"], ()),
+    )
+
+
+def _record(row: Row, events: list[Row], line: Row, places: dict[int, Row]) -> Record:
+    kinds = {event["kind"] for event in events}
+    received = _day(row["received_on"])
+    opened, guessed = _opened(events, received)
+    return Record(
+        received=received,
+        opened=opened,
+        opened_guessed=guessed,
+        made=_day(row["made_on"]),
+        printed=_printed(row),
+        nominal=line["strength"],
+        checks=tuple(_checks(events)),
+        stays=tuple(_stays(events, places)),
+        set_aside=_set_aside(events),
+        not_found=_not_found(events),
+        gone=EntryKind.DISCARDED in kinds,
+    )
+
+
+def _day(written: str | None) -> date | None:
+    return date.fromisoformat(written) if written else None
+
+
+def _opened(events: list[Row], received: date | None) -> tuple[date | None, bool]:
+    # the first opening counts; one without a day counts as opened when it was received
+    for event in events:
+        if event["kind"] == EntryKind.OPENED:
+            guessed = event["note"] == DAY_NOT_WRITTEN
+            return (received, True) if guessed else (_day(event["happened_on"]), False)
+    return None, False
+
+
+def _printed(row: Row) -> PrintedDate | None:
+    if not row["printed_text"]:
+        return None
+    readings = tuple(date.fromisoformat(day) for day in row["printed_readings"].split(";") if day)
+    return PrintedDate(row["printed_text"], readings)
+
+
+def _checks(events: list[Row]) -> Iterator[Check]:
+    for event in events:
+        if event["kind"] in _CHECKS:
+            kind = _CHECKS[EntryKind(event["kind"])]
+            passed = event["passed"] is None or bool(event["passed"])
+            yield Check(date.fromisoformat(event["happened_on"]), kind, passed, event["strength"])
+
+
+def _stays(events: list[Row], places: dict[int, Row]) -> Iterator[Stay]:
+    for event in events:
+        if event["kind"] in _STAYS and event["place_id"] is not None:
+            place = places[event["place_id"]]
+            since = date.fromisoformat(event["happened_on"])
+            yield Stay(since, place["place"], place["temperature_c"])
+
+
+def _set_aside(events: list[Row]) -> str:
+    """Why it stands apart: the last reason no good look or test has cleared since."""
+    reason = ""
+    for event in events:
+        looked = event["kind"] in (EntryKind.LOOKED, EntryKind.TESTED)
+        if event["kind"] == EntryKind.SET_ASIDE or (looked and not event["passed"]):
+            reason = event["reason"] or event["note"] or "did not pass when looked at"
+        elif looked or event["kind"] == EntryKind.TURNED_UP:
+            reason = ""
+    return reason
+
+
+def _not_found(events: list[Row]) -> bool:
+    last = [row["kind"] for row in events if row["kind"] in (EntryKind.LOST, EntryKind.TURNED_UP)]
+    return bool(last) and last[-1] == EntryKind.LOST

@@ -1,0 +1,352 @@
+"""The tables of a store. `migrations/` builds exactly these; a test compares them.
+
+Amounts are whole micro-units (µg, µL, micro-items), money whole pence, days ISO
+dates, times minutes after midnight, strengths in the line's own unit with the
+text as written beside them. Blank text is "", an unknown figure NULL. Amounts are
+BIGINT, since a 32-bit column elsewhere than in SQLite ends at 2 kg.
+
+No `from __future__ import annotations` here, alone in the project: SQLModel
+reads the annotations of its classes while they are being made.
+"""
+
+from datetime import date
+
+from sqlalchemy import BigInteger, Column, ForeignKey, Integer, UniqueConstraint
+from sqlmodel import Field, SQLModel
+
+
+class House(SQLModel, table=True):
+    """What is settled once for the whole house, one setting a row."""
+
+    setting: str = Field(primary_key=True)
+    value: str
+    source: str = ""
+
+
+class Term(SQLModel, table=True):
+    """A term by name, with its first and last day."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    term: str = Field(unique=True)
+    starts_on: date
+    ends_on: date
+    source: str = ""
+
+
+class Closure(SQLModel, table=True):
+    """Days the house is shut, besides weekends."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    starts_on: date
+    ends_on: date
+    reason: str = ""
+    source: str = ""
+
+
+class Place(SQLModel, table=True):
+    """Where bottles stand."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    place: str = Field(unique=True)
+    name: str = ""
+    temperature_c: float | None = None
+    meant_for: str = ""
+    source: str = ""
+
+
+class Department(SQLModel, table=True):
+    """Who pays."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    department: str = Field(unique=True)
+    name: str = ""
+    left_pence: int | None = None
+    source: str = ""
+
+
+class Balance(SQLModel, table=True):
+    """A balance and its step in µg."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    balance: str = Field(unique=True)
+    step: int = Field(sa_type=BigInteger)
+    source: str = ""
+
+
+class BalanceAway(SQLModel, table=True):
+    """Days a balance is away."""
+
+    __tablename__ = "balance_away"
+
+    id: int | None = Field(default=None, primary_key=True)
+    balance_id: int = Field(foreign_key="balance.id")
+    starts_on: date
+    ends_on: date
+
+
+class Vessel(SQLModel, table=True):
+    """A flask or carboy to make up in, and what it holds in µL."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    vessel: str = Field(unique=True)
+    size: int = Field(sa_type=BigInteger)
+    source: str = ""
+
+
+class Substance(SQLModel, table=True):
+    """What something is chemically; `formula` is of what dissolves, without its water."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    substance: str = Field(unique=True)
+    formula: str = ""
+    molar_mass: float | None = None
+    cas: str = ""
+    storage_group: str = ""
+    peroxide_former: str = ""
+    source: str = ""
+
+
+class OtherName(SQLModel, table=True):
+    """Another name a substance answers to."""
+
+    __tablename__ = "other_name"
+    __table_args__ = (UniqueConstraint("substance_id", "name"),)
+
+    id: int | None = Field(default=None, primary_key=True)
+    substance_id: int = Field(foreign_key="substance.id")
+    name: str
+
+
+class Line(SQLModel, table=True):
+    """A kind of thing a bottle can hold. `molar_mass` is of the formula really inside."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    key: str = Field(unique=True)
+    item: str
+    substance_id: int | None = Field(default=None, foreign_key="substance.id")
+    form: str
+    kind: str
+    strength: float | None = None
+    unit: str = ""
+    strength_text: str = ""
+    formula: str = ""
+    molar_mass: float | None = None
+    assay: float = 1.0
+    density: float | None = None
+    level: int | None = Field(default=None, sa_type=BigInteger)
+    largest_batch: int | None = Field(default=None, sa_type=BigInteger)
+    never_kept: str = ""
+    vented_cap: bool = False
+    keep_note: str = ""
+    source: str = ""
+
+
+class KeepingRule(SQLModel, table=True):
+    """One ageing rule of a line; `rate` is per day in the line's unit."""
+
+    __tablename__ = "keeping_rule"
+
+    id: int | None = Field(default=None, primary_key=True)
+    line_id: int = Field(foreign_key="line.id")
+    rule: str
+    lasts_count: int | None = None
+    lasts_unit: str = ""
+    counted_from: str = ""
+    purpose: str = ""
+    safety: bool = False
+    decay_order: int | None = None
+    rate: float | None = None
+    at_c: float | None = None
+    factor_per_10c: float | None = None
+    above: float | None = None
+    upto: float | None = None
+    colder_than: float | None = None
+    warmer_than: float | None = None
+    source: str = ""
+
+
+class Method(SQLModel, table=True):
+    """How a line is made; cautions are separated by semicolons."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    line_id: int = Field(foreign_key="line.id", unique=True)
+    minutes: int = 15
+    minutes_guessed: bool = False
+    finish_minutes: int = 0
+    stands_hours: float = 0.0
+    titrated: bool = False
+    smallest_batch: int = Field(default=0, sa_type=BigInteger)
+    steps: str = ""
+    cautions: str = ""
+    source: str = ""
+
+
+class Ingredient(SQLModel, table=True):
+    """One alternative for one thing a method takes; `per_dm3` in micro-units per dm³."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    line_id: int = Field(foreign_key="line.id")
+    ingredient_id: int = Field(foreign_key="line.id")
+    alternative: int = 1
+    role: str = "solute"
+    per_dm3: int | None = Field(default=None, sa_type=BigInteger)
+    only_if_held: bool = False
+    source: str = ""
+
+
+class Pack(SQLModel, table=True):
+    """A size a supplier sells."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    line_id: int = Field(foreign_key="line.id")
+    size: int = Field(sa_type=BigInteger)
+    text: str
+    pence: int
+    lead: int | None = None
+    supplier: str = ""
+    source: str = ""
+
+
+class Recipe(SQLModel, table=True):
+    """One version of a practical or demonstration."""
+
+    __table_args__ = (UniqueConstraint("recipe", "version"),)
+
+    id: int | None = Field(default=None, primary_key=True)
+    recipe: str
+    version: int = 1
+    title: str
+    never_kept: str = ""
+    waste: str = ""
+    handling: str = ""
+    assessment: str = ""
+    source: str = ""
+
+
+class Requirement(SQLModel, table=True):
+    """One line of a recipe."""
+
+    __table_args__ = (UniqueConstraint("recipe_id", "number"),)
+
+    id: int | None = Field(default=None, primary_key=True)
+    recipe_id: int = Field(foreign_key="recipe.id")
+    number: int
+    line_id: int = Field(foreign_key="line.id")
+    lowest: float | None = None
+    highest: float | None = None
+    strength_text: str = ""
+    amount: int = Field(sa_type=BigInteger)
+    per: str
+    closeness: str
+    closeness_guessed: bool = False
+    tolerance: float | None = None
+    fresh: bool = False
+    freshest_days: int | None = None
+    spare: bool = True
+    may_differ: float | None = None
+    found_within_days: int | None = None
+    note: str = ""
+    source: str = ""
+
+
+class Bar(SQLModel, table=True):
+    """A substance a recipe must never meet, and why."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    recipe_id: int = Field(foreign_key="recipe.id")
+    substance_id: int = Field(foreign_key="substance.id")
+    reason: str
+    source: str = ""
+
+
+class Swap(SQLModel, table=True):
+    """An allowed swap in a recipe: mass × `factor`."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    recipe_id: int = Field(foreign_key="recipe.id")
+    line_id: int = Field(foreign_key="line.id")
+    instead_id: int = Field(foreign_key="line.id")
+    factor: float | None = None
+    note: str = ""
+    source: str = ""
+
+
+class Booking(SQLModel, table=True):
+    """A recipe version on a day. `spare` in thousandths."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    number: str = Field(unique=True)
+    recipe_id: int = Field(foreign_key="recipe.id")
+    on_day: date
+    minute: int
+    groups: int
+    spare: int
+    department_id: int = Field(foreign_key="department.id")
+    firmness: str = "firm"
+    room: str = ""
+    source: str = ""
+
+
+class BookingChange(SQLModel, table=True):
+    """What was changed of a booking, by whom; appended, never altered."""
+
+    __tablename__ = "booking_change"
+
+    id: int | None = Field(default=None, primary_key=True)
+    booking_id: int = Field(foreign_key="booking.id")
+    entered_on: date
+    entered_at: str
+    by: str
+    what: str
+    before: str = ""
+    after: str = ""
+
+
+class Bottle(SQLModel, table=True):
+    """One container with a number that is never used again; what is left is in `entry`."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    number: str = Field(unique=True)
+    line_id: int = Field(foreign_key="line.id")
+    size: int = Field(sa_type=BigInteger)
+    received_on: date | None = None
+    made_on: date | None = None
+    printed_text: str = ""
+    printed_readings: str = ""
+    cap: str = ""
+    remark: str = ""
+    made_here: bool = False
+    source: str = ""
+
+
+class Parent(SQLModel, table=True):
+    """The bottle a made bottle was made from."""
+
+    __table_args__ = (UniqueConstraint("bottle_id", "parent_id"),)
+
+    id: int | None = Field(default=None, primary_key=True)
+    bottle_id: int = Field(foreign_key="bottle.id")
+    parent_id: int = Field(foreign_key="bottle.id")
+
+
+class Entry(SQLModel, table=True):
+    """One line of the ledger; triggers refuse to alter or remove it."""
+
+    id: int | None = Field(default=None, primary_key=True)
+    bottle_id: int = Field(foreign_key="bottle.id", index=True)
+    kind: str
+    happened_on: date
+    entered_on: date
+    entered_at: str
+    by: str
+    change: int = Field(default=0, sa_type=BigInteger)
+    strength: float | None = None
+    strength_text: str = ""
+    passed: bool | None = None
+    place_id: int | None = Field(default=None, foreign_key="place.id")
+    reason: str = ""
+    note: str = ""
+    booking: str = ""
+    puts_right: int | None = Field(
+        default=None, sa_column=Column(Integer, ForeignKey("entry.id"), unique=True)
+    )

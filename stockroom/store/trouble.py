@@ -1,0 +1,121 @@
+"""What goes wrong between us and the file, said in words a technician can act on.
+
+The plain driver's errors become `StoreTrouble` (or `NotEnough`, from the trigger
+that guards every balance). Light: reading commands import this.
+"""
+
+from __future__ import annotations
+
+import sqlite3
+from collections.abc import Iterator
+from contextlib import contextmanager
+from pathlib import Path
+
+from stockroom.errors import NotEnough, Refused, StoreTrouble
+
+REVISIONS = ("0001",)
+"""The migrations this program knows, oldest first; the last is what it writes."""
+
+BUSY_SECONDS = 5.0
+"""How long a writer waits for another before it gives up. Source: the job, number 68."""
+
+
+def missing(path: Path) -> StoreTrouble:
+    """The error for a store that is not there."""
+    return StoreTrouble(
+        f"No store at {path}.",
+        "Make one with `stockroom new`, or try the practice college: `stockroom demo`.",
+    )
+
+
+def foreign(path: Path) -> StoreTrouble:
+    """The error for a file that is something else."""
+    return StoreTrouble(
+        f"{path} is not a stockroom store.", "Give the right file with --store PATH."
+    )
+
+
+def damaged(path: Path) -> StoreTrouble:
+    """The error for a store that can no longer be read through."""
+    return StoreTrouble(
+        f"The store {path} is damaged and cannot be read to its end.",
+        "Nothing was changed. Put the last good copy back with `stockroom restore`.",
+    )
+
+
+def check_there(path: Path) -> None:
+    """Pass when a file stands at the path. Raises: StoreTrouble."""
+    if path.is_dir():
+        raise StoreTrouble(f"{path} is a folder, not a store.", "Name the file inside it.")
+    if not path.exists():
+        raise missing(path)
+
+
+def check_revision(path: Path, revision: str | None) -> None:
+    """Pass when the store was written in the layout this program knows.
+
+    Raises: StoreTrouble for a file with no layout mark, or with a newer one.
+    """
+    if revision is None:
+        raise foreign(path)
+    if revision != REVISIONS[-1]:
+        raise StoreTrouble(
+            f"{path} was written by a newer stockroom (revision {revision};"
+            f" this one knows up to {REVISIONS[-1]}).",
+            "Upgrade the program; nothing was changed.",
+        )
+
+
+def in_words(error: sqlite3.Error, path: Path) -> Refused:
+    """The driver's error as one of ours, quoting the file it is about."""
+    name = str(getattr(error, "sqlite_errorname", ""))
+    text = str(error)
+    if text.startswith("NOTENOUGH"):
+        return NotEnough("That is more than the bottle holds; nothing was saved.", "Count it.")
+    if text.startswith("KEPT"):
+        return StoreTrouble(text.removeprefix("KEPT "), "Add a new entry instead: put-right.")
+    for start, words in _WORDS.items():
+        if name.startswith(start):
+            return StoreTrouble(words[0].format(path=path), words[1])
+    if name.startswith("SQLITE_NOTADB") or "no such table" in text:
+        return foreign(path)
+    if name.startswith("SQLITE_CORRUPT"):
+        return damaged(path)
+    return StoreTrouble(f"The store {path} cannot be used: {text}.", "Nothing was saved.")
+
+
+_WORDS = {
+    "SQLITE_BUSY": (
+        "Busy: somebody else is writing to {path}; nothing was saved.",
+        "Try again in a moment.",
+    ),
+    "SQLITE_LOCKED": (
+        "Busy: somebody else is writing to {path}; nothing was saved.",
+        "Try again in a moment.",
+    ),
+    "SQLITE_READONLY": (
+        "{path} may be read but not written; nothing was saved.",
+        "Ask for the right to write to that file and its folder.",
+    ),
+    "SQLITE_FULL": (
+        "The disc that holds {path} is full; nothing was saved.",
+        "Make room, then enter it again.",
+    ),
+    "SQLITE_CANTOPEN": (
+        "{path} cannot be opened.",
+        "Look whether the folder is there and may be written to.",
+    ),
+    "SQLITE_IOERR": (
+        "The disc that holds {path} did not answer; nothing was saved.",
+        "Look at the disc or the network drive, then try again.",
+    ),
+}
+
+
+@contextmanager
+def translated(path: Path) -> Iterator[None]:
+    """Turn the plain driver's errors inside the block into ours. Raises: Refused."""
+    try:
+        yield
+    except sqlite3.Error as error:
+        raise in_words(error, path) from error

@@ -1,0 +1,97 @@
+"""Commands that only read start light: the heavy libraries stay on the shelf.
+
+Each command runs in an interpreter of its own, which says on leaving what it had
+loaded. pydantic is not on the list: whether the command line needs it is typer's
+affair, not ours.
+"""
+
+from __future__ import annotations
+
+import os
+import subprocess
+import sys
+from pathlib import Path
+
+import pytest
+
+HEAVY = "sqlmodel sqlalchemy alembic pint scipy fastapi matplotlib numpy".split()
+TELL = "loaded on leaving: "
+
+# {act} is what is being tried; the rest reports, however it ends
+HARNESS = """
+import atexit, sys
+
+def tell():
+    heavy = [name for name in {heavy!r} if name in sys.modules]
+    print({tell!r} + " ".join(heavy), file=sys.stderr)
+
+atexit.register(tell)
+{act}
+"""
+RUN = "from stockroom.cli.main import run\nraise SystemExit(run())"
+
+READING = [
+    ["plan"],
+    ["plan", "--json"],
+    ["fresh"],
+    ["past"],
+    ["past", "--on", "2027-02-10"],
+    ["usage"],
+    ["buying"],
+    ["ready", "K01"],
+    ["why", "K01"],
+    ["--help"],
+    ["plan", "--help"],
+    ["--version"],
+]
+
+
+def left_loaded(act: str, *argv: str, folder: Path) -> tuple[list[str], str]:
+    """The heavy libraries loaded after `act`, and what it printed.
+
+    Raises AssertionError where the run broke down or never told: that proves nothing.
+    """
+    code = HARNESS.format(heavy=HEAVY, tell=TELL, act=act)
+    ran = subprocess.run(
+        [sys.executable, "-c", code, *argv],
+        capture_output=True,
+        text=True,
+        encoding="utf-8",
+        cwd=folder,
+        env={**os.environ, "NO_COLOR": "1", "COLUMNS": "100", "PYTHONIOENCODING": "utf-8"},
+    )
+    assert "Traceback" not in ran.stderr, ran.stderr
+    # `ready` ends with 1 when there is something to do
+    assert ran.returncode in ((0, 1) if "ready" in argv else (0,)), ran.stderr
+    *_, told = [line for line in ran.stderr.splitlines() if line.startswith(TELL)]
+    return told.removeprefix(TELL).split(), ran.stdout
+
+
+@pytest.mark.parametrize("words", READING, ids=" ".join)
+def test_a_reading_command_loads_nothing_heavy(
+    words: list[str], practice: Path, tmp_path: Path
+) -> None:
+    loaded, out = left_loaded(RUN, "--store", str(practice), *words, folder=tmp_path)
+    assert loaded == []
+    assert out.strip(), "it answered nothing, so it cannot have read"
+
+
+@pytest.mark.parametrize("library", ["pint", "sqlalchemy", "numpy"])
+def test_a_planted_heavy_import_is_told(library: str, tmp_path: Path) -> None:
+    loaded, _ = left_loaded(f"import {library}", folder=tmp_path)
+    assert library in loaded
+
+
+def test_a_heavy_import_just_before_leaving_is_told(tmp_path: Path) -> None:
+    loaded, _ = left_loaded("import sqlmodel\nraise SystemExit(0)", folder=tmp_path)
+    assert {"sqlmodel", "sqlalchemy"} <= set(loaded)
+
+
+def test_a_run_that_breaks_down_is_no_proof(tmp_path: Path) -> None:
+    with pytest.raises(AssertionError, match="ZeroDivisionError"):
+        left_loaded("1 / 0", folder=tmp_path)
+
+
+def test_a_command_that_fails_is_no_proof(tmp_path: Path) -> None:
+    with pytest.raises(AssertionError, match="no such bottle"):
+        left_loaded("raise SystemExit('no such bottle')", folder=tmp_path)

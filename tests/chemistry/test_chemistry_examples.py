@@ -1,0 +1,15 @@
+"""The examples in the docstrings hold."""
+
+from __future__ import annotations
+
+import doctest
+import importlib
+
+import pytest
+
+
+@pytest.mark.parametrize("name", ["formula", "making", "strength", "weighing"])
+def test_the_examples_in_the_docstrings_hold(name: str) -> None:
+    tried = doctest.testmod(importlib.import_module(f"stockroom.chemistry.{name}"))
+    assert tried.attempted > 0
+    assert tried.failed == 0

@@ -1,0 +1,129 @@
+"""What every test may ask for: the practice store, a copy to write in, and the command line.
+
+    practice    the store of the invented college, built once and only read
+    own         a copy of it, for one test to write in
+    stockroom   runs a command in this process and gives back what it printed
+
+A typed test names the last one with `if TYPE_CHECKING: from conftest import Stockroom`.
+"""
+
+from __future__ import annotations
+
+import contextlib
+import hashlib
+import io
+import json
+import shutil
+import sys
+from collections.abc import Callable, Iterator
+from dataclasses import dataclass
+from pathlib import Path
+from typing import Any, Protocol
+
+import pytest
+from hypothesis import settings
+
+# a busy machine is slow now and then, and no test here is about time
+settings.register_profile("stockroom", deadline=None)
+settings.load_profile("stockroom")
+
+
+@dataclass(frozen=True)
+class Result:
+    """What one command left behind: its exit code and what it wrote on each stream."""
+
+    code: int
+    out: str
+    err: str
+
+    @property
+    def json(self) -> Any:
+        """Standard output read as JSON. Raises ValueError, quoting it, where it is not."""
+        try:
+            return json.loads(self.out)
+        except ValueError as trouble:
+            said = f"exit {self.code}, out {self.out[:300]!r}, err {self.err[:300]!r}"
+            raise ValueError(f"not JSON: {said}") from trouble
+
+
+class Stockroom(Protocol):
+    """`stockroom("plan", "--json", store=own)`: one command line, in this process.
+
+    `store` is put in front as `--store`; `typed` is what stands on standard input.
+    """
+
+    def __call__(self, *words: str, store: Path | None = None, typed: str = "") -> Result: ...
+
+
+@pytest.fixture(scope="session")
+def practice(tmp_path_factory: pytest.TempPathFactory) -> Iterator[Path]:
+    """The path of the practice store, built once. Only for reading: writers take `own`."""
+    from stockroom.service.database import make_practice
+
+    path = tmp_path_factory.mktemp("practice") / "practice.sqlite"
+    make_practice(path)
+    before = _digest(path)
+    yield path
+    assert _digest(path) == before, "a test wrote in the shared practice store: let it take `own`"
+
+
+@pytest.fixture
+def own(practice: Path, tmp_path: Path) -> Path:
+    """The path of a copy of the practice store that this test alone may change."""
+    return Path(shutil.copy(practice, tmp_path / "own.sqlite"))
+
+
+@pytest.fixture
+def stockroom(monkeypatch: pytest.MonkeyPatch, tmp_path: Path) -> Stockroom:
+    """Runs commands in this process, away from the stores and the settings of whoever tests."""
+    monkeypatch.delenv("STOCKROOM_STORE", raising=False)
+    monkeypatch.setenv("NO_COLOR", "1")
+    monkeypatch.setenv("COLUMNS", "100")
+    # the user's data folder, wherever the platform puts it, and files a command writes
+    monkeypatch.setenv("XDG_DATA_HOME", str(tmp_path / "data"))
+    monkeypatch.setenv("HOME", str(tmp_path))
+    monkeypatch.chdir(tmp_path)
+
+    def call(*words: str, store: Path | None = None, typed: str = "") -> Result:
+        argv = [*([] if store is None else ["--store", str(store)]), *words]
+        monkeypatch.setattr(sys, "stdin", io.StringIO(typed))
+        return _run(argv)
+
+    return call
+
+
+def _run(argv: list[str]) -> Result:
+    """One command with both streams caught; bytes (a PDF, a workbook) may be written too."""
+    from stockroom.cli.main import run
+
+    # it may give back its code or leave with it, as the console script allows
+    command: Callable[[list[str]], object] = run
+    out, err = _stream(), _stream()
+    with contextlib.redirect_stdout(out), contextlib.redirect_stderr(err):
+        try:
+            code = command(argv)
+        except SystemExit as leaving:
+            code = leaving.code
+    return _result(code, _written(out), _written(err))
+
+
+def _result(code: object, out: str, err: str) -> Result:
+    # as the interpreter does it: nothing is 0, and words go to standard error with 1
+    if code is None or isinstance(code, int):
+        return Result(int(code or 0), out, err)
+    return Result(1, out, f"{err}{code}\n")
+
+
+def _stream() -> io.TextIOWrapper:
+    return io.TextIOWrapper(io.BytesIO(), encoding="utf-8", newline="")
+
+
+def _written(stream: io.TextIOWrapper) -> str:
+    stream.flush()
+    inside = stream.buffer
+    assert isinstance(inside, io.BytesIO)
+    return inside.getvalue().decode("utf-8", errors="replace")
+
+
+def _digest(path: Path) -> str:
+    return hashlib.sha256(path.read_bytes()).hexdigest()
