@@ -204,7 +204,7 @@ class HandReadiness:
     """Stands for `planning.ready.Readiness`: the same fields."""
 
     ready: bool = False
-    title: str = "K08 Iodine clock"
+    title: str = "K08 Iodine clock, 2027-01-26"
     on: date = date(2027, 1, 26)
     to_do: tuple[str, ...] = ("make M03 in the morning",)
     needs: tuple[Answer, ...] = NEEDS[:2]

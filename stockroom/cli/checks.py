@@ -56,7 +56,35 @@ def look(
     show_done(shared, checks.look(shared.path, bottle, passed=good, note=note, **when(shared, on)))
 
 
-def lost(ctx: typer.Context, bottle: Bottle, on: Happened = None) -> None:
+def tested(
+    ctx: typer.Context,
+    bottle: Bottle,
+    passed: Annotated[
+        bool | None,
+        typer.Option("--passed/--failed", help="What the test said.", show_default=False),
+    ] = None,
+    note: Annotated[str, typer.Option(help="How it was tested, and what was read.")] = "",
+    on: Happened = None,
+) -> None:
+    """A peroxide-former was tested: only this moves its safety date.
+
+    Example: stockroom tested B29 --passed --note "strip, nothing to be seen" --by T1
+    """
+    from stockroom.service import checks
+
+    if passed is None:
+        raise BadInput(f"{bottle}: did it pass or fail?", "Add --passed or --failed.")
+    shared = of(ctx)
+    done = checks.tested(shared.path, bottle, passed=passed, note=note, **when(shared, on))
+    show_done(shared, done)
+
+
+def lost(
+    ctx: typer.Context,
+    bottle: Bottle,
+    note: Annotated[str, typer.Option(help="Where it was looked for.")] = "",
+    on: Happened = None,
+) -> None:
     """A bottle cannot be found: no plan counts on it until it turns up.
 
     Example: stockroom lost B28 --by T2
@@ -64,7 +92,7 @@ def lost(ctx: typer.Context, bottle: Bottle, on: Happened = None) -> None:
     from stockroom.service import checks
 
     shared = of(ctx)
-    show_done(shared, checks.lost(shared.path, bottle, **when(shared, on)))
+    show_done(shared, checks.lost(shared.path, bottle, note=note, **when(shared, on)))
 
 
 def turned_up(
@@ -82,7 +110,7 @@ def turned_up(
     from stockroom.service import checks
 
     shared = of(ctx)
-    show_done(shared, checks.turned_up(shared.path, bottle, place=place, **when(shared, on)))
+    show_done(shared, checks.turned_up(shared.path, bottle, place, **when(shared, on)))
 
 
 def spoil(

@@ -40,8 +40,9 @@ def suggest(command: str) -> None:
 
 def _done_text(done: Done) -> str:
     from stockroom.reports.sheet import PRACTICE
+    from stockroom.reports.words import raised
 
-    lines = [done.text, *(f"  {detail}" for detail in done.details)]
+    lines = [raised(done.text), *(f"  {raised(detail)}" for detail in done.details)]
     return "\n".join([PRACTICE, *lines] if done.practice else lines)
 
 

@@ -132,7 +132,13 @@ def draw(
     show_done(shared, done)
 
 
-def count(ctx: typer.Context, bottle: Bottle, amount: AmountText, on: Happened = None) -> None:
+def count(
+    ctx: typer.Context,
+    bottle: Bottle,
+    amount: AmountText,
+    walk: Annotated[str, typer.Option(metavar="NAME", help="The round of counting.")] = "",
+    on: Happened = None,
+) -> None:
     """A bottle was counted: what is left becomes what was found.
 
     Example: stockroom count B06 "640 g" --by T2
@@ -140,10 +146,17 @@ def count(ctx: typer.Context, bottle: Bottle, amount: AmountText, on: Happened =
     from stockroom.service import stock
 
     shared = of(ctx)
-    show_done(shared, stock.count(shared.path, bottle, amount_of(amount), **when(shared, on)))
+    done = stock.count(shared.path, bottle, amount_of(amount), walk=walk, **when(shared, on))
+    show_done(shared, done)
 
 
-def spill(ctx: typer.Context, bottle: Bottle, amount: AmountText, on: Happened = None) -> None:
+def spill(
+    ctx: typer.Context,
+    bottle: Bottle,
+    amount: AmountText,
+    note: Annotated[str, typer.Option(help="How it came about.")] = "",
+    on: Happened = None,
+) -> None:
     """Some was spilled: taken off what is left, never counted as used.
 
     Example: stockroom spill B18 "2 g" --by T1
@@ -151,7 +164,25 @@ def spill(ctx: typer.Context, bottle: Bottle, amount: AmountText, on: Happened =
     from stockroom.service import stock
 
     shared = of(ctx)
-    show_done(shared, stock.spill(shared.path, bottle, amount_of(amount), **when(shared, on)))
+    done = stock.spill(shared.path, bottle, amount_of(amount), note=note, **when(shared, on))
+    show_done(shared, done)
+
+
+def lend(
+    ctx: typer.Context,
+    bottle: Bottle,
+    amount: AmountText,
+    to: Annotated[str, typer.Option(metavar="WHOM", help="Who has it now.")] = "",
+    on: Happened = None,
+) -> None:
+    """Some was lent: taken off what is left, never counted as used.
+
+    Example: stockroom lend B32 "10 g" --to "the physics store" --by T1
+    """
+    from stockroom.service import stock
+
+    shared = of(ctx)
+    show_done(shared, stock.lend(shared.path, bottle, amount_of(amount), to=to, **when(shared, on)))
 
 
 def move(

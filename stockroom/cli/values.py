@@ -45,7 +45,9 @@ def whole(text: str, where: str) -> int:
     try:
         return int(text)
     except ValueError:
-        raise BadInput(f"{where} {text!r} is not a whole number.", f"Write {where} 12.") from None
+        raise BadInput(
+            f"{where} {text!r} is not a whole number.", "Write a plain one, as 12."
+        ) from None
 
 
 def whole_or_none(text: str | None, where: str) -> int | None:
@@ -57,7 +59,9 @@ def percent(text: str, where: str) -> float:
     """A per cent from 0 up, with or without its sign. Raises: BadInput."""
     value = _number(text)
     if not (math.isfinite(value) and value >= 0):
-        raise BadInput(f"{where} {text!r} is not a per cent from 0 up.", f"Write {where} 10.")
+        raise BadInput(
+            f"{where} {text!r} is not a per cent from 0 up.", "Write a plain number, as 10."
+        )
     return value
 
 
@@ -67,7 +71,9 @@ def number_or_none(text: str | None, where: str) -> float | None:
         return None
     value = _number(text)
     if not (math.isfinite(value) and value > 0):
-        raise BadInput(f"{where} {text!r} is not a number above 0.", f"Write {where} 1.18.")
+        raise BadInput(
+            f"{where} {text!r} is not a number above 0.", "Write a plain number, as 1.18."
+        )
     return value
 
 

@@ -11,6 +11,7 @@ from stockroom.planning.facts import Form, Line
 
 UL_PER_DM3 = 1_000_000
 
+_SAME = 1e-5
 _WRITTEN = re.compile(r"([0-9.]+) ?([^0-9 ].*)")
 
 
@@ -90,6 +91,8 @@ def say_strength(line: Line, value: float | None) -> str:
     """
     if value is None:
         return "unknown"
+    if line.strength and abs(value / line.strength - 1) < _SAME:
+        return line.strength_text.replace("dm3", "dm³")
     written = _WRITTEN.fullmatch(line.strength_text)
     if not written or not line.strength or "w/w" in line.strength_text:
         return format_strength(value, line.unit)

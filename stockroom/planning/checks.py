@@ -11,7 +11,7 @@ from collections.abc import Iterable
 from datetime import date
 
 from stockroom.keeping.rules import Purpose
-from stockroom.planning.decisions import CheckToDo
+from stockroom.planning.decisions import CheckToDo, Order
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import Closeness, Facts, Line
 from stockroom.planning.fitness import found_valid_from
@@ -23,13 +23,15 @@ from stockroom.planning.wants import Settled, Want
 _TITRATE, _LOOK = "titrate", "look"
 
 
-def checks(facts: Facts, wants: list[Want], batches: list[Batch], shelf: Shelf) -> list[CheckToDo]:
+def checks(
+    facts: Facts, wants: list[Want], batches: list[Batch], buying: list[Order], shelf: Shelf
+) -> list[CheckToDo]:
     """Every check to do, by the day it must be done, then by subject."""
     found = [
         *_exact_from_bottles(facts, wants, shelf),
         *_exact_from_batches(facts, batches),
         *_rechecks(facts, wants, shelf),
-        *_looks(facts, wants, batches, shelf),
+        *_looks(facts, wants, batches, buying, shelf),
     ]
     return sorted(found, key=lambda c: (c.by, c.subject, c.what))
 
@@ -122,7 +124,7 @@ def _due(shelf: Shelf, number: str, on: date) -> date:
 
 
 def _looks(
-    facts: Facts, wants: list[Want], batches: list[Batch], shelf: Shelf
+    facts: Facts, wants: list[Want], batches: list[Batch], buying: list[Order], shelf: Shelf
 ) -> Iterable[CheckToDo]:
     """Bottles only a look keeps out of use, where something else is made or bought instead."""
     made_in = {id(want): batch for batch in batches for want in batch.wants}
@@ -137,12 +139,14 @@ def _looks(
         days = [_start(want, made_in) for want in stuck]
         by = facts.calendar.on_or_before(min(days))
         needs = list({want.ref: want.need for want in stuck}.values())
-        saved = sorted({b.id for w in stuck for b in [_batch_of(w, made_in)] if b})
+        saved = {b.id: b for w in stuck for b in [_batch_of(w, made_in)] if b}
         why = "a good look would bring it back into use"
         if saved:
-            why += f" and save or change {', '.join(saved)}"
-        if any(part.to_buy for want in stuck for part in want.tree()):
-            why += " and the buying behind it"
+            why += f" and save or change {', '.join(sorted(saved))}"
+        behind = {source.line.key for batch in saved.values() for source in batch.sources}
+        behind &= {order.line for order in buying}
+        if behind:
+            why += f", perhaps the order of {', '.join(sorted(behind))} too"
         yield _check(facts, number, line, _LOOK, facts.as_at, by, needs, why)
 
 

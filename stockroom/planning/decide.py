@@ -12,7 +12,7 @@ from stockroom.planning.explode import Need
 from stockroom.planning.facts import Facts, Form
 from stockroom.planning.make import Batch, Source, keeps
 from stockroom.planning.shelf import Promise, Shelf
-from stockroom.planning.timing import ready_at
+from stockroom.planning.timing import hours, ready_at
 from stockroom.planning.wants import Settled, Want
 from stockroom.planning.windows import good_until
 from stockroom.safety.cautions import cautions_for
@@ -84,8 +84,8 @@ def _draw(facts: Facts, promise: Promise, shelf: Shelf) -> Draw:
 
 def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> list[str]:
     words = [want.need.sum_in_words]
-    for promise in want.promises if want.settled is Settled.HELD else ():
-        words.append(_why_this_bottle(facts, want.need, promise, shelf))
+    held = want.promises if want.settled is Settled.HELD else []
+    words += [_why_this_bottle(facts, want.need, promise, shelf) for promise in held]
     if batch:
         with_whom = [need.booking.number for need in batch.needs]
         shared = [
@@ -144,7 +144,7 @@ def _make(facts: Facts, batch: Batch) -> Make:
         heel_kept=kept,
         good_until=until,
         steps=batch.method.steps,
-        cautions=_cautions(facts, batch),
+        cautions=_cautions(batch),
         reasons=tuple(_make_reasons(facts, batch, kept)),
     )
 
@@ -153,12 +153,15 @@ def _ready_day(facts: Facts, batch: Batch) -> date:
     return ready_at(batch.start, batch.method, facts.calendar)[0]
 
 
-def _cautions(facts: Facts, batch: Batch) -> tuple[str, ...]:
-    groups = [
-        (source.line.storage_group, source.line.form is Form.SOLID) for source in batch.sources
-    ]
-    general = cautions_for(groups, vented=batch.line.vented_cap, never_kept=batch.line.never_kept)
-    return tuple(dict.fromkeys([*batch.method.cautions, *general]))
+def _cautions(batch: Batch) -> tuple[str, ...]:
+    """The house's own words for the method; the general ones where it wrote none."""
+    written = batch.method.cautions
+    groups = [(x.line.storage_group, x.line.form is Form.SOLID) for x in batch.sources]
+    vented = batch.line.vented_cap and not any("vented" in text.lower() for text in written)
+    general = cautions_for(
+        [] if written else groups, vented=vented, never_kept=batch.line.never_kept
+    )
+    return tuple(dict.fromkeys([*written, *general]))
 
 
 def _source(source: Source) -> Draw:
@@ -176,15 +179,13 @@ def _source(source: Source) -> Draw:
 
 
 def _make_reasons(facts: Facts, batch: Batch, kept: bool) -> list[str]:
-    line = batch.line
     parts = [
         f"{item.wants[0].ref if len(item.wants) == 1 else _refs(item.wants)} "
         f"{say(item.volume, Kind.VOLUME)}"
         for item in batch.run.items
     ]
     words = [f"for {' + '.join(parts)}"]
-    for source in batch.sources:
-        words.append(_source_reason(source))
+    words += [_source_reason(source) for source in batch.sources]
     words += batch.reasons
     words.append(_day_reason(batch))
     if batch.heel and batch.heel > facts.house.batch_step:
@@ -209,7 +210,8 @@ def _source_reason(source: Source) -> str:
     words = f"{amount} of {source.bottle} at {expected}"
     if source.line.strength and abs(source.strength / source.line.strength - 1) > 1e-3:
         by_label = round(source.amount * source.strength / source.line.strength)
-        words += f" (the label's {source.line.strength_text} would say {say(by_label, source.line.kind)})"
+        label, said = source.line.strength_text, say(by_label, source.line.kind)
+        words += f" (the label's {label} would say {said})"
     return words
 
 
@@ -218,7 +220,8 @@ def _day_reason(batch: Batch) -> str:
     for_day = min(item.use_on for item in batch.run.items)
     if first.fresh:
         return f"fresh: made on the morning of {for_day}"
-    stands = f", stands {batch.method.stands_hours:.2g} h" if batch.method.stands_hours else ""
+    standing = batch.method.stands_hours
+    stands = f", stands {hours(standing)}" if standing else ""
     return f"the last day that is ready for {for_day}{stands}: {batch.start[0]}"
 
 
@@ -239,6 +242,6 @@ def shorts(wants: Iterable[Want]) -> list[Short]:
                     need.amount,
                     need.line.kind,
                     reason,
-                )  # fmt: skip
+                )
             )
     return row

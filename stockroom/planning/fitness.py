@@ -6,9 +6,8 @@ from datetime import date, timedelta
 
 from stockroom.keeping.rules import RuleKind
 from stockroom.keeping.verdict import Verdict
-from stockroom.measure.formats import format_strength
 from stockroom.measure.periods import add
-from stockroom.planning.amounts import strong_enough
+from stockroom.planning.amounts import say_strength, strong_enough
 from stockroom.planning.facts import (
     TOLERANCE,
     Bottle,
@@ -39,8 +38,7 @@ def judge_for_dilution(line: Line, product: Line, per_dm3: int | None) -> Judge:
         strength = judged.strengths.expected
         if per_dm3 is not None or strong_enough(line, strength, product):
             return ""
-        held = "unknown" if strength is None else format_strength(strength, line.unit)
-        wanted = format_strength(product.strength or 0.0, product.unit)
+        held, wanted = say_strength(line, strength), say_strength(product, product.strength)
         return f"too weak: {held}, and {wanted} is to be made"
 
     return judge
@@ -86,8 +84,8 @@ def wrong_strength(requirement: Requirement, strength: float | None, line: Line)
     if low * (1 - _SLACK) <= strength <= high * (1 + _SLACK):
         return ""
     side = "too weak" if strength < low else "too strong"
-    edge = format_strength(low if strength < low else high, line.unit)
-    return f"{side}: {format_strength(strength, line.unit)} on the day, limit {edge}"
+    edge = say_strength(line, low if strength < low else high)
+    return f"{side}: {say_strength(line, strength)} on the day, limit {edge}"
 
 
 def found_valid_from(requirement: Requirement, line: Line, on: date) -> date:

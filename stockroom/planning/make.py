@@ -130,7 +130,7 @@ class _Making:
                 groups.setdefault(_signature(self.facts, want), []).append(want)
             for signature in sorted(groups, key=str):
                 self._make_line(self.facts.lines[key], groups[signature])
-        self.batches.sort(key=lambda b: (b.start[0], not b.fresh, b.line.key, b.needs[0].rank))
+        self.batches.sort(key=lambda b: (b.start, b.line.key, b.needs[0].rank))
         for number, batch in enumerate(self.batches, 1):
             batch.id = f"M{number:02d}"
         return Made(self.batches, self.taken, self.unmet)

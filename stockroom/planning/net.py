@@ -18,7 +18,7 @@ from stockroom.planning.facts import Facts, Form, Line, Method
 from stockroom.planning.fitness import judge_for_dilution, judge_for_need
 from stockroom.planning.order_of_lines import settling_order
 from stockroom.planning.shelf import Judge, Promise, Shelf, solute_held
-from stockroom.planning.timing import Moment, deadline_for, earliest_ready, latest_start
+from stockroom.planning.timing import Moment, deadline_for, earliest_ready, hours, latest_start
 from stockroom.planning.wants import Settled, Want
 from stockroom.planning.windows import earliest_start
 from stockroom.safety.bars import barred_by
@@ -235,19 +235,31 @@ class _Netting:
 
     def _make(self, want: Want, line: Line) -> None:
         method = self.facts.methods[line.key]
+        fresh = want.under is None and want.need.requirement.fresh
         want.method = method
-        want.latest = latest_start(want.deadline, method, self.facts.calendar, self.facts.as_at)
+        want.latest = self._latest(want, method)
         if want.latest is None:
             self._cannot(want, line, method)
-            return
-        fresh = want.under is None and want.need.requirement.fresh
-        if fresh and want.latest[0] != want.need.on:
+        elif fresh and want.latest[0] != want.need.on:
             want.settled = Settled.SHORT
             want.reasons.append(_not_by_then(want, line, method))
-            return
-        want.earliest = want.latest[0] if fresh else self._earliest(want, line)
-        want.settled = Settled.MAKE
-        self._add_parts(want, line, method)
+        else:
+            want.earliest = want.latest[0] if fresh else self._earliest(want, line)
+            want.settled = Settled.MAKE
+            self._add_parts(want, line, method)
+
+    def _latest(self, want: Want, method: Method) -> Moment | None:
+        """The last start in time; too late for the day before, the morning itself will do."""
+        calendar, floor = self.facts.calendar, self.facts.as_at
+        found = latest_start(want.deadline, method, calendar, floor)
+        own_time = (want.need.on, want.need.booking.minute)
+        if found is not None or want.under is not None or want.deadline == own_time:
+            return found
+        found = latest_start(own_time, method, calendar, floor)
+        if found is not None:
+            want.deadline = own_time
+            want.reasons.append("too late for the day before, as the house has it")
+        return found
 
     def _earliest(self, want: Want, line: Line) -> date:
         assert want.latest is not None
@@ -258,7 +270,7 @@ class _Netting:
         want.settled = Settled.SHORT
         start = latest_start(want.deadline, method, self.facts.calendar, date.min.replace(year=2))
         day = f"; work had to start by {start[0]}" if start else ""
-        stands = f"stands {method.stands_hours:g} h, " if method.stands_hours else ""
+        stands = f"stands {hours(method.stands_hours)}, " if method.stands_hours else ""
         want.reasons.append(
             f"cannot: {line.key} {stands}booked {want.need.on}, "
             f"and today is {self.facts.as_at}{day}"

@@ -12,6 +12,7 @@ from stockroom.planning.amounts import say
 from stockroom.planning.decisions import Level, Make, Order
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import Booking, Facts, Form, Recipe
+from stockroom.planning.shelf import Shelf
 from stockroom.safety.neighbours import tight_caps, wrong_neighbours
 
 HEAVY_DAY_MINUTES = 300
@@ -24,6 +25,7 @@ def notes(
     makes: list[Make],
     orders: list[Order],
     levels: list[Level],
+    shelf: Shelf,
 ) -> list[Finding]:
     """Everything worth saying that is neither a need nor a guess, in a fixed order."""
     bookings = list({need.booking.number: (need.booking, need.recipe) for need in needs}.values())
@@ -34,6 +36,7 @@ def notes(
         *_money(facts, orders),
         *_levels(levels),
         *_shelf(facts),
+        *_remarks(shelf),
         *_shops(facts, needs),
     ]
 
@@ -120,8 +123,19 @@ def _shelf(facts: Facts) -> Iterable[Finding]:
             yield Finding(bottle.number, text)
         judged = verdict(bottle.record, rules, facts.end)
         if judged.safety and judged.condition is Condition.PAST:
-            text = f"safety date {judged.good_until} ({judged.decided_by}): then do not open or move it; ask"
+            text = (
+                f"safety date {judged.good_until} ({judged.decided_by}): "
+                "past it, do not open or move it; ask"
+            )
             yield Finding(bottle.number, text)
+
+
+def _remarks(shelf: Shelf) -> Iterable[Finding]:
+    """What somebody wrote on a bottle the plan draws on."""
+    for number in sorted(number for number, made in shelf.promises.items() if made):
+        remark = shelf.bottle[number].remark
+        if remark:
+            yield Finding(number, f'remark on the bottle: "{remark}"')
 
 
 def _shops(facts: Facts, needs: tuple[Need, ...]) -> Iterable[Finding]:

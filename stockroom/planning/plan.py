@@ -19,12 +19,12 @@ from stockroom.planning.usage import drawn_so_far, usage
 from stockroom.planning.wants import Settled, Want
 
 
-def plan(facts: Facts) -> Plan:
+def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
     """Decide what becomes of every need from `as_at` to the end of the facts' period.
 
     Bookings before the period's start are planned too, since they draw on the
     same bottles, and then left out of what is shown. Usage covers the whole
-    period, done or to come.
+    period, done or to come. `past` is told for `past_day`, else for `as_at`.
     """
     needs = explode(facts, standing(facts.bookings, facts.as_at, facts.end))
     netted = net(facts, needs)
@@ -40,15 +40,15 @@ def plan(facts: Facts) -> Plan:
         house=facts.house,
         needs=_with_orders(answers(facts, netted.wants, batches, shelf), netted.wants, buying),
         makes=tuple(making),
-        past=tuple(past_on(facts, needs, facts.as_at)),
+        past=tuple(past_on(facts, netted.wants, past_day or facts.as_at)),
         usage=tuple(usage_of_period(facts)),
         drawn=tuple(drawn_so_far(facts, facts.drawn)),
         orders=tuple(buying),
         short=tuple(shorts(netted.wants)),
-        checks=tuple(checks(facts, netted.wants, batches, shelf)),
+        checks=tuple(checks(facts, netted.wants, batches, buying, shelf)),
         levels=tuple(levels),
         guesses=tuple(guesses(facts, netted.wants, shelf)),
-        notes=tuple(notes(facts, needs, making, buying, levels)),
+        notes=tuple(notes(facts, needs, making, buying, levels, shelf)),
     )
     return _shown(whole, max(facts.start, facts.as_at))
 

@@ -9,7 +9,6 @@ from stockroom.findings import Finding
 from stockroom.keeping.verdict import Condition, Verdict, verdict
 from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import PastBottle
-from stockroom.planning.explode import Need
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
 from stockroom.planning.shelf import Shelf
 from stockroom.planning.wants import Want
@@ -17,53 +16,45 @@ from stockroom.planning.wants import Want
 _TOLD = frozenset(Condition) - {Condition.SOUND, Condition.GONE}
 
 
-def past_on(facts: Facts, needs: Iterable[Need], on: date) -> list[PastBottle]:
+def past_on(facts: Facts, wants: Iterable[Want], on: date) -> list[PastBottle]:
     """Every bottle that is not sound on a day, by number, with the bookings it matters for.
 
-    Those are the bookings from that day on that ask for its line or for
-    something made from it.
+    Those are the bookings from that day on that draw on it, or would have if
+    it were sound.
     """
-    asked = _who_asks(facts, [need for need in needs if need.on >= on])
+    concerned = _concerned(wants, on)
     row = []
     for bottle in sorted(facts.bottles, key=lambda b: _natural(b.number)):
         judged = verdict(bottle.record, facts.lines[bottle.line].rules, on)
         if judged.condition in _TOLD:
-            row.append(_past(facts, bottle, judged, asked.get(bottle.line, ())))
+            row.append(_past(facts, bottle, judged, concerned.get(bottle.number, ())))
     return row
+
+
+def _concerned(wants: Iterable[Want], on: date) -> dict[str, tuple[str, ...]]:
+    concerned: dict[str, list[str]] = {}
+    for want in [part for root in wants if root.need.on >= on for part in root.tree()]:
+        touched = [number for number, _ in want.passed_over]
+        for number in [*touched, *(promise.bottle for promise in want.promises)]:
+            bookings = concerned.setdefault(number, [])
+            if want.need.booking.number not in bookings:
+                bookings.append(want.need.booking.number)
+    return {number: tuple(bookings) for number, bookings in concerned.items()}
 
 
 def _past(facts: Facts, bottle: Bottle, judged: Verdict, bookings: tuple[str, ...]) -> PastBottle:
     line = facts.lines[bottle.line]
     words = judged.decided_by
     expected = judged.strengths.expected
-    if judged.condition is Condition.WATCH and expected is not None and line.strength:
-        if abs(expected / line.strength - 1) > 0.01:
-            words += f"; expected {say_strength(line, expected)} (label {line.strength_text})"
+    known = expected is not None and line.strength
+    if judged.condition is Condition.WATCH and known and _apart(expected, line.strength):
+        words += f"; expected {say_strength(line, expected)} (label {line.strength_text})"
     item = " ".join(filter(None, (line.item, line.strength_text)))
     return PastBottle(bottle.number, item, judged.condition, judged.good_until, words, bookings)
 
 
-def _who_asks(facts: Facts, needs: Iterable[Need]) -> dict[str, tuple[str, ...]]:
-    asked: dict[str, list[str]] = {}
-    for need in needs:
-        for key in lines_behind(facts, need.line.key):
-            bookings = asked.setdefault(key, [])
-            if need.booking.number not in bookings:
-                bookings.append(need.booking.number)
-    return {key: tuple(bookings) for key, bookings in asked.items()}
-
-
-def lines_behind(facts: Facts, key: str) -> list[str]:
-    """A line and every line it may be made from, down to the bought ones."""
-    seen, waiting = [], [key]
-    while waiting:
-        following = waiting.pop()
-        if following in seen:
-            continue
-        seen.append(following)
-        method = facts.methods.get(following)
-        waiting += [k for i in (method.ingredients if method else ()) for k in i.lines]
-    return seen
+def _apart(one: float | None, other: float | None) -> bool:
+    return bool(one and other) and abs((one or 0) / (other or 1) - 1) > 0.01
 
 
 def _natural(number: str) -> tuple[str, int, str]:
@@ -123,14 +114,12 @@ def _about(facts: Facts, shelf: Shelf, bottle: Bottle, closest: Closeness) -> It
         yield f'printed "{printed.text}" may be {readings}: planned on the earlier; which is it?'
     if bottle.record.opened_guessed:
         yield "opened, day not written: counted from the day it was received"
-    if judged.condition is Condition.WATCH:
-        yield f"used though its check is overdue ({judged.decided_by})"
+    if judged.condition is Condition.WATCH and closest is not Closeness.EXACT:
+        yield f"its check falls due before it is used ({judged.decided_by})"
     yield from _about_strength(line, judged, closest)
     doubt = inherited_doubt(facts, bottle)
     if doubt:
         yield doubt
-    if bottle.remark:
-        yield f'remark on it: "{bottle.remark}": look before using'
 
 
 def _about_strength(line: Line, judged: Verdict, closest: Closeness) -> Iterable[str]:

@@ -85,3 +85,8 @@ def deadline_for(
     if method.stands_hours and not method.finish_minutes:
         return day_before, calendar.open_to
     return calendar.before(on, 1), calendar.open_to
+
+
+def hours(number: float) -> str:
+    """A standing time in words: \"48 h\", or \"40 min\" under an hour."""
+    return f"{number:g} h" if number >= 1 else f"{round(number * 60)} min"

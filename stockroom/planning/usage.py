@@ -12,42 +12,48 @@ from collections.abc import Iterable
 from stockroom.planning.amounts import draw_for
 from stockroom.planning.decisions import Use
 from stockroom.planning.explode import Need, amount_needed
-from stockroom.planning.facts import Drawn, Facts, Ingredient, Line
+from stockroom.planning.facts import Drawn, Facts, Form, Ingredient, Line
 
 SOLUTION = "solution"
 STOCK = "stock"
 BOUGHT = "bought"
 
 
+Totals = dict[tuple[str, str, str], dict[str, int]]
+"""(form, line key, strength as asked for) to booking to micro-units."""
+
+
 def usage(facts: Facts, needs: Iterable[Need]) -> list[Use]:
     """Totals of the needs: what the classes get ("solution"), what made lines give to
     others ("stock"), and what comes out of bought bottles ("bought"); by form, then line.
+
+    A solution bought as it is used stands under both "solution" and "bought".
     """
-    totals: dict[tuple[str, str], dict[str, int]] = {}
-    spare: dict[str, int] = {}
+    totals: Totals = {}
+    spare: dict[tuple[str, str, str], int] = {}
     for need in needs:
-        made = need.line.key in facts.methods or not _bought(facts, need.line)
-        form = SOLUTION if made else BOUGHT
-        _add(totals, form, need.line.key, need.booking.number, need.amount)
+        asked = need.requirement.strength_text or need.line.strength_text
+        form = SOLUTION if need.line.form is Form.SOLUTION else BOUGHT
+        key = (form, need.line.key, asked if form == SOLUTION else need.line.strength_text)
+        _add(totals, key, need.booking.number, need.amount)
         plain = amount_needed(need.requirement, need.booking.groups, 0)
-        spare[need.line.key] = spare.get(need.line.key, 0) + need.amount - plain
+        spare[key] = spare.get(key, 0) + need.amount - plain
+        if form == SOLUTION and _bought(facts, need.line):
+            bought = (BOUGHT, need.line.key, need.line.strength_text)
+            _add(totals, bought, need.booking.number, need.amount)
         _explode_into(facts, totals, need, need.line, need.amount)
     order = {SOLUTION: 0, STOCK: 1, BOUGHT: 2}
-    return [
-        _use(facts.lines[key], form, by_booking, spare.get(key, 0) if form != STOCK else 0)
-        for (form, key), by_booking in sorted(totals.items(), key=lambda t: (order[t[0][0]], t[0]))
-    ]
+    keys = sorted(totals, key=lambda key: (order[key[0]], *key[1:]))
+    return [_use(facts.lines[key[1]], key, totals[key], spare.get(key, 0)) for key in keys]
 
 
 def drawn_so_far(facts: Facts, drawn: Iterable[Drawn]) -> list[Use]:
     """What was really drawn, by line, from the ledger: put-right entries already left out."""
-    totals: dict[tuple[str, str], dict[str, int]] = {}
+    totals: Totals = {}
     for draw in drawn:
-        _add(totals, "drawn", draw.line, draw.bottle, draw.amount)
-    return [
-        _use(facts.lines[key], "drawn", by_bottle, 0)
-        for (_, key), by_bottle in sorted(totals.items())
-    ]
+        line = facts.lines[draw.line]
+        _add(totals, ("drawn", line.key, line.strength_text), draw.bottle, draw.amount)
+    return [_use(facts.lines[key[1]], key, by, 0) for key, by in sorted(totals.items())]
 
 
 def _bought(facts: Facts, line: Line) -> bool:
@@ -56,15 +62,13 @@ def _bought(facts: Facts, line: Line) -> bool:
     )
 
 
-def _explode_into(
-    facts: Facts, totals: dict[tuple[str, str], dict[str, int]], need: Need, line: Line, volume: int
-) -> None:
+def _explode_into(facts: Facts, totals: Totals, need: Need, line: Line, volume: int) -> None:
     method = facts.methods.get(line.key)
     for ingredient in method.ingredients if method else ():
         source = facts.lines[_plain_choice(ingredient)]
         amount = draw_for(source, source.strength, line, volume, ingredient.per_dm3)
-        form = STOCK if source.key in facts.methods else BOUGHT
-        _add(totals, form, source.key, need.booking.number, amount)
+        form = BOUGHT if _bought(facts, source) else STOCK
+        _add(totals, (form, source.key, source.strength_text), need.booking.number, amount)
         _explode_into(facts, totals, need, source, amount)
 
 
@@ -74,19 +78,17 @@ def _plain_choice(ingredient: Ingredient) -> str:
     return choices[0] if choices else ingredient.lines[0]
 
 
-def _add(
-    totals: dict[tuple[str, str], dict[str, int]], form: str, key: str, who: str, amount: int
-) -> None:
-    by_booking = totals.setdefault((form, key), {})
+def _add(totals: Totals, key: tuple[str, str, str], who: str, amount: int) -> None:
+    by_booking = totals.setdefault(key, {})
     by_booking[who] = by_booking.get(who, 0) + amount
 
 
-def _use(line: Line, form: str, by_booking: dict[str, int], spare: int) -> Use:
+def _use(line: Line, key: tuple[str, str, str], by_booking: dict[str, int], spare: int) -> Use:
     return Use(
         line=line.key,
         item=line.item,
-        strength=line.strength_text,
-        form=form,
+        strength=key[2],
+        form=key[0],
         amount=sum(by_booking.values()),
         kind=line.kind,
         by_booking=tuple(by_booking.items()),

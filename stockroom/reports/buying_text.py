@@ -6,7 +6,7 @@ from collections import Counter
 
 from stockroom.planning.decisions import Order, Plan
 from stockroom.reports.sheet import columns, foot, head, page, section, spanning, wrap
-from stockroom.reports.words import TIED, amount, counted, day, listed, money
+from stockroom.reports.words import TIED, amount, counted, day, listed, money, raised
 
 
 def buying_text(plan: Plan, width: int) -> str:
@@ -31,7 +31,7 @@ def level_section(plan: Plan, width: int) -> str:
     rows = [
         (
             day(level.on),
-            f"{level.item}: {amount(level.left, level.kind)} left, "
+            f"{raised(level.line)}: {amount(level.left, level.kind)} left, "
             f"level {amount(level.level, level.kind)}",
         )
         for level in sorted(plan.levels, key=lambda level: (level.on, level.item))
@@ -51,11 +51,13 @@ def _order(order: Order, width: int, reasons: int) -> list[str]:
     bought = f"{order.packs}{TIED}×{TIED}{order.pack.replace(' ', TIED)}"
     first = f"{day(order.order_by)}  {order.item}, {bought}, {money(order.pence)}{late}"
     needed = f"{order.id}: needed {day(order.need_by)}, comes {day(order.arrives)} if ordered now"
-    paid = ", ".join(f"{department} {money(pence)}" for department, pence in order.shares)
-    details = [needed, f"for {listed(order.for_bookings)}" if order.for_bookings else ""]
-    details += [f"paid by {paid}" if paid else "", *order.reasons[:reasons]]
-    shown = [wrap(detail, width, indent=18, hang=18) for detail in details if detail]
-    return [wrap(first, width, indent=2, hang=18), *shown]
+    served = f"; for {listed(order.for_bookings)}" if order.for_bookings else ""
+    paid = ", ".join(f"{department}{TIED}{money(pence)}" for department, pence in order.shares)
+    details = [f"{needed}{served}{'; paid by ' + paid if paid else ''}", *order.reasons[:reasons]]
+    return [
+        wrap(first, width, indent=2, hang=18),
+        *(wrap(detail, width, indent=18, hang=18) for detail in details),
+    ]
 
 
 def _shares(plan: Plan, width: int) -> list[str]:

@@ -243,6 +243,7 @@ def _check(check: CheckToDo) -> Data:
 def _level(level: Level) -> Data:
     return {
         "item": level.item,
+        "line": level.line,
         "on": level.on.isoformat(),
         "left": _number(level.left, level.kind),
         "level": _number(level.level, level.kind),

@@ -43,9 +43,11 @@ def _make_lines(make: Make, width: int, *, steps: bool) -> list[str]:
     size = amount(make.volume, Kind.VOLUME)
     hands_on = f"{make.minutes}{TIED}min hands-on"
     first = f"{make.id}{fresh} {named(make.item, make.strength)}, {size}, {hands_on}"
-    details = [_from(make), f"for {listed(make.bookings)}" if make.bookings else "", _when(make)]
-    details += [_heel(make), make.steps if steps else ""]
-    shown = [wrap(detail, width, indent=8, hang=8) for detail in details if detail]
+    served = f"for {listed(make.bookings)}" if make.bookings else ""
+    details = [each for each in (_from(make), served, _when(make), _heel(make)) if each]
+    # the bench sheet gives each its line; the plan, read at a desk, keeps them together
+    below = [*details, make.steps] if steps else ["; ".join(details)]
+    shown = [wrap(each, width, indent=8, hang=8) for each in below if each]
     return [wrap(first, width, indent=2, hang=8), *shown]
 
 
@@ -55,7 +57,9 @@ def _from(make: Make) -> str:
 
 def _when(make: Make) -> str:
     parts = [f"ready {day(make.ready)}"] if make.ready != make.on else []
-    parts += [f"good until {day(make.good_until)}"] if make.good_until else []
+    if make.good_until:
+        same = make.good_until == make.on
+        parts.append("that day only" if same else f"good until {day(make.good_until)}")
     return ", ".join(parts)
 
 

@@ -24,6 +24,8 @@ from stockroom.reports.sheet import (
 )
 from stockroom.reports.words import TIED, amount, counted, day, named
 
+_LONGEST = max(len(outcome) for outcome in Outcome)
+
 
 def plan_text(plan: Plan, width: int) -> str:
     """The whole plan in sections, empty ones left off; no line longer than `width`."""
@@ -84,8 +86,15 @@ def _booking(needs: list[Answer], width: int) -> list[str]:
         f"{booking.recipe} {needs[0].recipe_title}, {counted(booking.groups, 'group')}, "
         f"{booking.department}, {booking.firmness}: {outcome_counts(tuple(needs))}"
     )
-    each = "; ".join(f"{need.outcome} {served(need)}" for need in needs)
-    return [wrap(first, width, indent=2, hang=7), wrap(each, width, indent=7, hang=7)]
+    return [wrap(first, width, indent=2, hang=7), *_by_outcome(needs, width)]
+
+
+def _by_outcome(needs: list[Answer], width: int) -> list[str]:
+    rows = []
+    for outcome in Outcome:
+        alike = [served(need) for need in needs if need.outcome is outcome]
+        rows += [(outcome.value.ljust(_LONGEST), "; ".join(alike))] if alike else []
+    return columns(rows, width, indent=7)
 
 
 def _counts(plan: Plan) -> str:

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 from stockroom.planning.decisions import Answer, CheckToDo, Outcome
 from stockroom.reports.makes_text import makes_by_day
 from stockroom.reports.sheet import PRACTICE, columns, foot, page, section, wrap
-from stockroom.reports.words import amount, counted, day, listed, named, source
+from stockroom.reports.words import amount, counted, day, listed, named, raised, source
 
 if TYPE_CHECKING:
     from stockroom.planning.ready import Readiness
@@ -21,7 +21,7 @@ def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> s
     """
     parts = [
         f"{_verdict(readiness)}{f'   {PRACTICE}' if practice else ''}\n"
-        + wrap(f"{readiness.title}, {day(readiness.on)}", width),
+        + wrap(readiness.title, width),
         section(
             "TO DO", [wrap(f"[ ] {each}", width, hang=6, indent=2) for each in readiness.to_do]
         ),
@@ -36,7 +36,8 @@ def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> s
 
 def why_text(reasons: tuple[str, ...], *, practice: bool = False) -> str:
     """The reasons, a line each and never broken: five lines stay five lines."""
-    return "\n".join([PRACTICE, *reasons] if practice else reasons)
+    lines = [raised(reason) for reason in reasons]
+    return "\n".join([PRACTICE, *lines] if practice else lines)
 
 
 def check_lines(checks: tuple[CheckToDo, ...], width: int) -> list[str]:

@@ -6,8 +6,12 @@ from stockroom.planning.decisions import Plan, Use
 from stockroom.reports.sheet import columns, foot, head, page, section, spanning
 from stockroom.reports.words import TIED, amount, named
 
-SOLUTION = "solution"
-"""`Use.form` of a line made here; anything else is in bought form."""
+FORMS = {
+    "solution": "SOLUTIONS",
+    "stock": "STOCK SOLUTIONS THEY ARE MADE FROM",
+    "bought": "IN BOUGHT FORM",
+}
+"""Each `Use.form` with its heading, in the order they are printed."""
 
 
 def usage_text(plan: Plan, width: int) -> str:
@@ -16,12 +20,12 @@ def usage_text(plan: Plan, width: int) -> str:
     A dilution is counted once: as itself among the solutions, and in the bought
     form it is made from.
     """
-    solutions = [use for use in plan.usage if use.form == SOLUTION]
-    bought = [use for use in plan.usage if use.form != SOLUTION]
     parts = [
         head(plan, width, f"What is used {spanning(plan)}"),
-        section("SOLUTIONS", _lines(solutions, width)),
-        section("IN BOUGHT FORM", _lines(bought, width)),
+        *(
+            section(heading, _lines([use for use in plan.usage if use.form == form], width))
+            for form, heading in FORMS.items()
+        ),
         section("DRAWN SO FAR (from the entries)", _lines(list(plan.drawn), width)),
         "" if plan.usage or plan.drawn else "Nothing is used in this period.",
         foot(width, "stockroom buying", "stockroom plan"),

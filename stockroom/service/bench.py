@@ -151,9 +151,9 @@ def _diluted(
             "Add --of with the name or the formula.",
         )
     if wanted.value > stock.value * (1 + _SAME):
-        held = format_number(strength.value * stock.value / wanted.value)
+        held = f"{format_number(strength.value * stock.value / wanted.value)} {strength.unit}"
         raise NotAllowed(
-            f"Cannot reach {text} from {source}: it holds {held} {strength.unit}.",
+            f"Cannot reach {text} from {source if source == held else f'{source} ({held})'}.",
             "Open a stronger bottle or lower the need.",
         )
     taken = volume_of_stock(cubic, wanted.value, stock.value, unit=stock.unit)

@@ -12,9 +12,8 @@ from stockroom.service.answers import Done
 from stockroom.store import reading
 
 if TYPE_CHECKING:
-    from sqlmodel import Session
-
     from stockroom.store.desk import Desk
+    from stockroom.store.engine import Session
 
 HOUSE = "house"
 """Who stands in the ledger for rows that came in with a folder of tables."""

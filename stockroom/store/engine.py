@@ -13,7 +13,7 @@ from alembic.config import Config
 from sqlalchemy import Connection, Engine, create_engine, event, text
 from sqlalchemy.exc import DBAPIError
 from sqlalchemy.pool import NullPool
-from sqlmodel import Session
+from sqlmodel import Session as Session
 
 from stockroom.errors import StoreTrouble
 from stockroom.store.reading import Reader

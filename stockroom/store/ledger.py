@@ -148,14 +148,17 @@ def _check_begun(session: Session, bottle: Bottle, event: Event, on: date) -> No
     if event.kind in BEGINNINGS:
         return
     first = [entry.happened_on for entry in entries_of(session, bottle) if entry.kind in BEGINNINGS]
-    begun = first[0] if first else bottle.made_on or bottle.received_on
-    if begun is None or on < begun:
-        how = "was made" if bottle.made_here else "arrived"
-        when = spell_day(begun) if begun else "(day not known)"
-        raise BadDate(
-            f"{event.kind.capitalize()} {spell_day(on)} is before {bottle.number} {how} {when}.",
-            "One of these days is wrong.",
-        )
+    if not first or on < first[0]:
+        what = f"{event.kind.capitalize()} {spell_day(on)}"
+        raise before_it_was_there(bottle, what, first[0] if first else None)
+
+
+def before_it_was_there(bottle: Bottle, what: str, begun: date | None) -> BadDate:
+    """The error for something said of a bottle earlier than it arrived or was made."""
+    day = begun or bottle.made_on or bottle.received_on
+    how = "was made" if bottle.made_here else "arrived"
+    when = f" {spell_day(day)}" if day else ""
+    return BadDate(f"{what} is before {bottle.number} {how}{when}.", "One of these is wrong.")
 
 
 def _count_after(session: Session, bottle: Bottle, event: Event, happened_on: date) -> Entry | None:
@@ -168,6 +171,11 @@ def _count_after(session: Session, bottle: Bottle, event: Event, happened_on: da
         if entry.kind == EntryKind.COUNTED and entry.happened_on > since
     ]
     return counts[0] if counts else None
+
+
+def made_note(number: str) -> str:
+    """The note on a draw that went into a bottle made here."""
+    return f"into {number}"
 
 
 def evening_note(count_id: int | None) -> str:

@@ -7,7 +7,6 @@ matches are listed for the person to choose from.
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable
 from typing import TypeVar
 
 from sqlmodel import Session, SQLModel, col, select
@@ -16,6 +15,7 @@ from stockroom.chemistry.strength import canonical
 from stockroom.errors import BadInput, StockroomError, UnknownName
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.reading import tidy
+from stockroom.store.likeness import plain, unknown
 from stockroom.store.tables import (
     Booking,
     Bottle,
@@ -31,27 +31,6 @@ Table = TypeVar("Table", bound=SQLModel)
 
 _MOST_LISTED = 8
 _BARE_NUMBER = re.compile(r"[0-9]+([.,][0-9]+)?")
-
-
-def plain(text: str) -> str:
-    """A name as it is compared: spaces, look-alike characters and capitals settled."""
-    return tidy(text).casefold()
-
-
-def unknown(what: str, text: str, choices: Iterable[str]) -> UnknownName:
-    """The error for a name nobody knows, with the three nearest as its hint."""
-    near = nearest(text, choices)
-    hint = f"Nearest: {'; '.join(near)}." if near else f"There is no {what} at all yet."
-    return UnknownName(f'No {what} "{text.strip()}".', hint)
-
-
-def nearest(text: str, choices: Iterable[str]) -> list[str]:
-    """The three choices most like `text`, the likest first; ties by the alphabet."""
-    from rapidfuzz import fuzz, process
-
-    ordered = sorted(set(choices))
-    found = process.extract(plain(text), ordered, scorer=fuzz.WRatio, processor=plain, limit=3)
-    return [name for name, _, _ in found]
 
 
 def find_line(session: Session, text: str) -> Line:
@@ -172,6 +151,11 @@ def find_booking(session: Session, text: str) -> Booking:
     return _by_column(session, Booking, "number", text, "booking")
 
 
+def number_in_use(session: Session, text: str) -> bool:
+    """Whether a booking carries that number already."""
+    return plain(text) in {plain(number) for number in session.exec(select(Booking.number))}
+
+
 def find_place(session: Session, text: str) -> Place:
     """The place by its short or its long name. Raises: UnknownName with the nearest three."""
     return _by_column(session, Place, "place", text, "place", "name")
@@ -195,6 +179,11 @@ def find_substance(session: Session, text: str) -> Substance:
         if _spelt(text) in {_spelt(row.formula), _spelt(row.cas)} - {""}:
             return row
     return _by_column(session, Substance, "substance", text, "substance")
+
+
+def substance_of(session: Session, line: Line) -> Substance | None:
+    """The substance a line holds, None for mixtures and sundries."""
+    return session.get(Substance, line.substance_id) if line.substance_id else None
 
 
 def find_recipe(session: Session, text: str, version: int | None = None) -> Recipe:

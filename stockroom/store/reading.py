@@ -41,7 +41,7 @@ class Reader:
 
     def ask(self, sql: str, *values: Any) -> list[Row]:
         """The rows any other question gives."""
-        # rows are named on the cursor, so that a connection lent by the writing half stays as it was
+        # named on the cursor: a connection lent by the writing half stays as it was
         cursor = self.connection.cursor()
         cursor.row_factory = sqlite3.Row
         return cursor.execute(sql, values).fetchall()

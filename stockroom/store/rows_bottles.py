@@ -19,9 +19,9 @@ from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.kinds import DAY_NOT_WRITTEN, EntryKind
 from stockroom.store.ledger import Event, append, left
-from stockroom.store.names import find_bottle, find_place
+from stockroom.store.names import find_bottle, find_place, substance_of
 from stockroom.store.rows_house import new_name
-from stockroom.store.rows_lines import in_own_unit, substance_of
+from stockroom.store.rows_lines import in_own_unit
 from stockroom.store.tables import Bottle, Entry, Line, Parent
 
 _TAKES = (EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.LENT)
@@ -192,7 +192,7 @@ def _event(
 def _found(desk: Desk, fields: Fields, line: Line) -> tuple[float | None, str]:
     written = fields.need("strength")
     strength = parse_strength(written, where="strength")
-    value, _ = in_own_unit(strength, substance_of(desk, line), line.density, line.unit)
+    value, _ = in_own_unit(strength, substance_of(desk.session, line), line.density, line.unit)
     return value, written
 
 

@@ -10,7 +10,7 @@ from stockroom.measure.days import parse_day, parse_time
 from stockroom.measure.reading import read_number
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.names import plain, unknown
+from stockroom.store.likeness import plain, unknown
 from stockroom.store.tables import (
     Balance,
     BalanceAway,

@@ -16,7 +16,7 @@ from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.planning.facts import Form
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.names import find_substance
+from stockroom.store.names import find_substance, substance_of
 from stockroom.store.rows_house import new_name
 from stockroom.store.tables import (
     Ingredient,
@@ -129,11 +129,6 @@ def in_own_unit(
     return found.value, found.unit
 
 
-def substance_of(desk: Desk, line: Line) -> Substance | None:
-    """The substance a line holds, None for mixtures and sundries."""
-    return desk.session.get(Substance, line.substance_id) if line.substance_id else None
-
-
 def read_rule(desk: Desk, fields: Fields) -> None:
     """One ageing rule of a line; rates are turned to the line's unit per day."""
     line = desk.line(fields.need("line"))
@@ -166,7 +161,7 @@ def read_rule(desk: Desk, fields: Fields) -> None:
 
 
 def _bound(desk: Desk, fields: Fields, line: Line, column: str) -> float | None:
-    return strength_of(fields, column, substance_of(desk, line), line.density)[0]
+    return strength_of(fields, column, substance_of(desk.session, line), line.density)[0]
 
 
 def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
@@ -188,7 +183,7 @@ def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
 def _own_units(desk: Desk, fields: Fields, line: Line) -> float:
     unit = fields.need("rate_of")
     one = parse_strength(f"1 {unit}", where="rate_of")
-    value, _ = in_own_unit(one, substance_of(desk, line), line.density, line.unit)
+    value, _ = in_own_unit(one, substance_of(desk.session, line), line.density, line.unit)
     if value is None:
         raise MissingFigure(f'A rate cannot be given in "{unit}".', "Give it in % w/v or mol/dm3.")
     return value

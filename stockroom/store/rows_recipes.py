@@ -10,9 +10,9 @@ from stockroom.measure.parsing import parse_strength_range
 from stockroom.planning.facts import Closeness, Firmness, Per
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.names import find_department, find_recipe, find_substance
+from stockroom.store.names import find_department, find_recipe, find_substance, substance_of
 from stockroom.store.rows_house import new_name
-from stockroom.store.rows_lines import in_own_unit, substance_of
+from stockroom.store.rows_lines import in_own_unit
 from stockroom.store.tables import Bar, Booking, Line, Recipe, Requirement, Swap
 
 MOST_GROUPS = 200
@@ -88,7 +88,7 @@ def _strengths(desk: Desk, fields: Fields, line: Line) -> tuple[float | None, fl
     written = fields.text("strength")
     if not written:
         return line.strength, line.strength, line.strength_text
-    substance = substance_of(desk, line)
+    substance = substance_of(desk.session, line)
     low, high = parse_strength_range(written, where="strength")
     lowest, _ = in_own_unit(low, substance, line.density, line.unit)
     highest, _ = in_own_unit(high, substance, line.density, line.unit)

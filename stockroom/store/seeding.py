@@ -18,7 +18,7 @@ from stockroom.errors import BadInput, StockroomError, UnknownName
 from stockroom.store import rows_bottles, rows_house, rows_lines, rows_recipes
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.names import unknown
+from stockroom.store.likeness import unknown
 from stockroom.store.rows_bottles import Step
 
 Value = TypeVar("Value")

@@ -48,13 +48,13 @@ def facts_from(
     reader: Reader, as_at: date, start: date | None = None, end: date | None = None
 ) -> Facts:
     """The same as `facts`, from a store already open."""
-    settings = {row["setting"]: row["value"] for row in reader.rows("house", "")}
+    settings = _settings(reader)
     first, last = _period(reader, as_at, start, end)
     return Facts(
         as_at=as_at,
         start=start or first,
         end=end or last,
-        calendar=_calendar(reader, settings),
+        calendar=calendar_of(reader),
         house=_house(reader, settings),
         lines=lines_of(reader),
         methods=methods_of(reader),
@@ -66,6 +66,10 @@ def facts_from(
         places=_places(reader),
         drawn=drawn_of(reader, as_at),
     )
+
+
+def _settings(reader: Reader) -> dict[str, str]:
+    return {row["setting"]: row["value"] for row in reader.rows("house", "")}
 
 
 def _period(reader: Reader, as_at: date, start: date | None, end: date | None) -> tuple[date, date]:
@@ -85,7 +89,9 @@ def _span(row: Row) -> tuple[date, date]:
     return date.fromisoformat(row["starts_on"]), date.fromisoformat(row["ends_on"])
 
 
-def _calendar(reader: Reader, settings: dict[str, str]) -> Calendar:
+def calendar_of(reader: Reader) -> Calendar:
+    """The open days and staffed hours of the house."""
+    settings = _settings(reader)
     closed = tuple(_span(row) for row in reader.rows("closure", "ORDER BY starts_on, id"))
     usual = Calendar()
     return Calendar(

@@ -15,6 +15,12 @@ from sqlalchemy import BigInteger, Column, ForeignKey, Integer, UniqueConstraint
 from sqlmodel import Field, SQLModel
 
 
+class Numbered(SQLModel):
+    """What every table but the settings has: a row number."""
+
+    id: int | None = Field(default=None, primary_key=True)
+
+
 class House(SQLModel, table=True):
     """What is settled once for the whole house, one setting a row."""
 
@@ -23,30 +29,27 @@ class House(SQLModel, table=True):
     source: str = ""
 
 
-class Term(SQLModel, table=True):
+class Term(Numbered, table=True):
     """A term by name, with its first and last day."""
 
-    id: int | None = Field(default=None, primary_key=True)
     term: str = Field(unique=True)
     starts_on: date
     ends_on: date
     source: str = ""
 
 
-class Closure(SQLModel, table=True):
+class Closure(Numbered, table=True):
     """Days the house is shut, besides weekends."""
 
-    id: int | None = Field(default=None, primary_key=True)
     starts_on: date
     ends_on: date
     reason: str = ""
     source: str = ""
 
 
-class Place(SQLModel, table=True):
+class Place(Numbered, table=True):
     """Where bottles stand."""
 
-    id: int | None = Field(default=None, primary_key=True)
     place: str = Field(unique=True)
     name: str = ""
     temperature_c: float | None = None
@@ -54,49 +57,44 @@ class Place(SQLModel, table=True):
     source: str = ""
 
 
-class Department(SQLModel, table=True):
+class Department(Numbered, table=True):
     """Who pays."""
 
-    id: int | None = Field(default=None, primary_key=True)
     department: str = Field(unique=True)
     name: str = ""
     left_pence: int | None = None
     source: str = ""
 
 
-class Balance(SQLModel, table=True):
+class Balance(Numbered, table=True):
     """A balance and its step in µg."""
 
-    id: int | None = Field(default=None, primary_key=True)
     balance: str = Field(unique=True)
     step: int = Field(sa_type=BigInteger)
     source: str = ""
 
 
-class BalanceAway(SQLModel, table=True):
+class BalanceAway(Numbered, table=True):
     """Days a balance is away."""
 
     __tablename__ = "balance_away"
 
-    id: int | None = Field(default=None, primary_key=True)
     balance_id: int = Field(foreign_key="balance.id")
     starts_on: date
     ends_on: date
 
 
-class Vessel(SQLModel, table=True):
+class Vessel(Numbered, table=True):
     """A flask or carboy to make up in, and what it holds in µL."""
 
-    id: int | None = Field(default=None, primary_key=True)
     vessel: str = Field(unique=True)
     size: int = Field(sa_type=BigInteger)
     source: str = ""
 
 
-class Substance(SQLModel, table=True):
+class Substance(Numbered, table=True):
     """What something is chemically; `formula` is of what dissolves, without its water."""
 
-    id: int | None = Field(default=None, primary_key=True)
     substance: str = Field(unique=True)
     formula: str = ""
     molar_mass: float | None = None
@@ -106,21 +104,19 @@ class Substance(SQLModel, table=True):
     source: str = ""
 
 
-class OtherName(SQLModel, table=True):
+class OtherName(Numbered, table=True):
     """Another name a substance answers to."""
 
     __tablename__ = "other_name"
     __table_args__ = (UniqueConstraint("substance_id", "name"),)
 
-    id: int | None = Field(default=None, primary_key=True)
     substance_id: int = Field(foreign_key="substance.id")
     name: str
 
 
-class Line(SQLModel, table=True):
+class Line(Numbered, table=True):
     """A kind of thing a bottle can hold. `molar_mass` is of the formula really inside."""
 
-    id: int | None = Field(default=None, primary_key=True)
     key: str = Field(unique=True)
     item: str
     substance_id: int | None = Field(default=None, foreign_key="substance.id")
@@ -141,12 +137,11 @@ class Line(SQLModel, table=True):
     source: str = ""
 
 
-class KeepingRule(SQLModel, table=True):
+class KeepingRule(Numbered, table=True):
     """One ageing rule of a line; `rate` is per day in the line's unit."""
 
     __tablename__ = "keeping_rule"
 
-    id: int | None = Field(default=None, primary_key=True)
     line_id: int = Field(foreign_key="line.id")
     rule: str
     lasts_count: int | None = None
@@ -165,10 +160,9 @@ class KeepingRule(SQLModel, table=True):
     source: str = ""
 
 
-class Method(SQLModel, table=True):
+class Method(Numbered, table=True):
     """How a line is made; cautions are separated by semicolons."""
 
-    id: int | None = Field(default=None, primary_key=True)
     line_id: int = Field(foreign_key="line.id", unique=True)
     minutes: int = 15
     minutes_guessed: bool = False
@@ -181,10 +175,9 @@ class Method(SQLModel, table=True):
     source: str = ""
 
 
-class Ingredient(SQLModel, table=True):
+class Ingredient(Numbered, table=True):
     """One alternative for one thing a method takes; `per_dm3` in micro-units per dm³."""
 
-    id: int | None = Field(default=None, primary_key=True)
     line_id: int = Field(foreign_key="line.id")
     ingredient_id: int = Field(foreign_key="line.id")
     alternative: int = 1
@@ -194,10 +187,9 @@ class Ingredient(SQLModel, table=True):
     source: str = ""
 
 
-class Pack(SQLModel, table=True):
+class Pack(Numbered, table=True):
     """A size a supplier sells."""
 
-    id: int | None = Field(default=None, primary_key=True)
     line_id: int = Field(foreign_key="line.id")
     size: int = Field(sa_type=BigInteger)
     text: str
@@ -207,12 +199,11 @@ class Pack(SQLModel, table=True):
     source: str = ""
 
 
-class Recipe(SQLModel, table=True):
+class Recipe(Numbered, table=True):
     """One version of a practical or demonstration."""
 
     __table_args__ = (UniqueConstraint("recipe", "version"),)
 
-    id: int | None = Field(default=None, primary_key=True)
     recipe: str
     version: int = 1
     title: str
@@ -223,12 +214,11 @@ class Recipe(SQLModel, table=True):
     source: str = ""
 
 
-class Requirement(SQLModel, table=True):
+class Requirement(Numbered, table=True):
     """One line of a recipe."""
 
     __table_args__ = (UniqueConstraint("recipe_id", "number"),)
 
-    id: int | None = Field(default=None, primary_key=True)
     recipe_id: int = Field(foreign_key="recipe.id")
     number: int
     line_id: int = Field(foreign_key="line.id")
@@ -249,20 +239,18 @@ class Requirement(SQLModel, table=True):
     source: str = ""
 
 
-class Bar(SQLModel, table=True):
+class Bar(Numbered, table=True):
     """A substance a recipe must never meet, and why."""
 
-    id: int | None = Field(default=None, primary_key=True)
     recipe_id: int = Field(foreign_key="recipe.id")
     substance_id: int = Field(foreign_key="substance.id")
     reason: str
     source: str = ""
 
 
-class Swap(SQLModel, table=True):
+class Swap(Numbered, table=True):
     """An allowed swap in a recipe: mass × `factor`."""
 
-    id: int | None = Field(default=None, primary_key=True)
     recipe_id: int = Field(foreign_key="recipe.id")
     line_id: int = Field(foreign_key="line.id")
     instead_id: int = Field(foreign_key="line.id")
@@ -271,10 +259,9 @@ class Swap(SQLModel, table=True):
     source: str = ""
 
 
-class Booking(SQLModel, table=True):
+class Booking(Numbered, table=True):
     """A recipe version on a day. `spare` in thousandths."""
 
-    id: int | None = Field(default=None, primary_key=True)
     number: str = Field(unique=True)
     recipe_id: int = Field(foreign_key="recipe.id")
     on_day: date
@@ -287,12 +274,11 @@ class Booking(SQLModel, table=True):
     source: str = ""
 
 
-class BookingChange(SQLModel, table=True):
+class BookingChange(Numbered, table=True):
     """What was changed of a booking, by whom; appended, never altered."""
 
     __tablename__ = "booking_change"
 
-    id: int | None = Field(default=None, primary_key=True)
     booking_id: int = Field(foreign_key="booking.id")
     entered_on: date
     entered_at: str
@@ -302,10 +288,9 @@ class BookingChange(SQLModel, table=True):
     after: str = ""
 
 
-class Bottle(SQLModel, table=True):
+class Bottle(Numbered, table=True):
     """One container with a number that is never used again; what is left is in `entry`."""
 
-    id: int | None = Field(default=None, primary_key=True)
     number: str = Field(unique=True)
     line_id: int = Field(foreign_key="line.id")
     size: int = Field(sa_type=BigInteger)
@@ -319,20 +304,18 @@ class Bottle(SQLModel, table=True):
     source: str = ""
 
 
-class Parent(SQLModel, table=True):
+class Parent(Numbered, table=True):
     """The bottle a made bottle was made from."""
 
     __table_args__ = (UniqueConstraint("bottle_id", "parent_id"),)
 
-    id: int | None = Field(default=None, primary_key=True)
     bottle_id: int = Field(foreign_key="bottle.id")
     parent_id: int = Field(foreign_key="bottle.id")
 
 
-class Entry(SQLModel, table=True):
+class Entry(Numbered, table=True):
     """One line of the ledger; triggers refuse to alter or remove it."""
 
-    id: int | None = Field(default=None, primary_key=True)
     bottle_id: int = Field(foreign_key="bottle.id", index=True)
     kind: str
     happened_on: date

@@ -70,7 +70,7 @@ def test_a_caution_is_printed_once_a_day() -> None:
 def test_a_booking_tells_its_outcomes_and_its_needs() -> None:
     text = plan_text(PLAN, 120)
     assert "R01 Iodine clock, 8 groups, CH, firm: have 1, make 1" in text
-    assert "make hydrogen peroxide 0.100 mol/dm³ 528 cm³ from M03" in text
+    assert "make     hydrogen peroxide 0.100 mol/dm³ 528 cm³ from M03" in text
 
 
 def test_the_next_command_asks_about_what_is_short() -> None:

@@ -1,0 +1,88 @@
+"""Is everything good for a booking, or for all of a day? Yes, or what is still to do."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from datetime import date
+
+from stockroom.planning.amounts import say, say_strength
+from stockroom.planning.decisions import Answer, CheckToDo, Make, Outcome, Plan
+from stockroom.planning.facts import Facts
+
+
+@dataclass(frozen=True, slots=True)
+class Readiness:
+    """The answer for one booking or one day. `to_do` is empty when `ready`."""
+
+    ready: bool
+    title: str
+    on: date
+    to_do: tuple[str, ...]
+    needs: tuple[Answer, ...]
+    makes: tuple[Make, ...]
+    checks: tuple[CheckToDo, ...]
+    strengths: tuple[str, ...]
+
+
+def readiness(
+    facts: Facts, plan: Plan, numbers: tuple[str, ...], title: str, on: date
+) -> Readiness:
+    """Whether these bookings have all they need as things stand on the plan's day.
+
+    A make still to be done, an order still to come, a check still to do or
+    anything short is something to do; nothing booked is ready.
+    """
+    wanted = set(numbers)
+    needs = tuple(answer for answer in plan.needs if answer.booking.number in wanted)
+    makes = tuple(make for make in plan.makes if wanted & set(make.bookings))
+    checks = tuple(check for check in plan.checks if _must(check) and wanted & set(check.bookings))
+    to_do = (*_shorts(plan, wanted), *_buys(needs), *_makes(makes), *_checks(checks))
+    return Readiness(not to_do, title, on, to_do, needs, makes, checks, _strengths(facts, needs))
+
+
+def _must(check: CheckToDo) -> bool:
+    # a look only saves work; a titration is what an exact or overdue strength waits for
+    return check.what != "look"
+
+
+def _shorts(plan: Plan, wanted: set[str]) -> list[str]:
+    return [
+        f"short: {say(s.amount, s.kind)} of {s.item} {s.strength} for {s.booking}: {s.reason}"
+        for s in plan.short
+        if s.booking in wanted
+    ]
+
+
+def _buys(needs: tuple[Answer, ...]) -> list[str]:
+    return [
+        f"buy: {say(n.amount, n.kind)} of {n.item}".rstrip() + (f" ({n.order})" if n.order else "")
+        for n in needs
+        if n.outcome is Outcome.BUY
+    ]
+
+
+def _makes(makes: tuple[Make, ...]) -> list[str]:
+    return [
+        f"make {make.id} on {make.on}: {make.item} {make.strength}".rstrip()
+        + (" (fresh, that morning)" if make.fresh else "")
+        for make in makes
+    ]
+
+
+def _checks(checks: tuple[CheckToDo, ...]) -> list[str]:
+    return [
+        f"{c.what} {c.subject} ({c.item}) between {c.not_before} and {c.by}: {c.reason}"
+        for c in checks
+    ]
+
+
+def _strengths(facts: Facts, needs: tuple[Answer, ...]) -> tuple[str, ...]:
+    """The strength each class really gets, from the bottles chosen: for the board."""
+    row = []
+    for need in needs:
+        line = facts.lines[need.line]
+        for draw in need.draws:
+            if draw.strength is not None and line.strength:
+                said = say_strength(line, draw.strength)
+                row.append(f"{need.item} {said} (label {line.strength_text}, {draw.bottle})")
+    return tuple(dict.fromkeys(row))

@@ -1,0 +1,207 @@
+"""Bookings: made, shifted, dropped. Every change is also appended to the booking's record."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from datetime import date
+from pathlib import Path
+
+from stockroom import clock
+from stockroom.errors import BadInput, NotAllowed
+from stockroom.measure.days import format_time, spell_day
+from stockroom.measure.formats import format_number
+from stockroom.planning.facts import Firmness
+from stockroom.service.answers import Done
+from stockroom.service.work import initials
+from stockroom.store import names
+from stockroom.store.engine import Session, reader_in, writing
+from stockroom.store.ledger import next_booking_number
+from stockroom.store.likeness import unknown
+from stockroom.store.rows_recipes import checked_groups, checked_spare
+from stockroom.store.snapshot import calendar_of
+from stockroom.store.tables import Booking, BookingChange, Department, House, Recipe
+
+
+@dataclass(frozen=True, slots=True)
+class Hand:
+    """Who changes a booking, on what day."""
+
+    session: Session
+    today: date
+    by: str
+
+    def record(self, booking: Booking, what: str, before: str, after: str) -> None:
+        """Append one change to the booking's record."""
+        assert booking.id is not None
+        change = BookingChange(
+            booking_id=booking.id,
+            entered_on=self.today,
+            entered_at=clock.now().isoformat(sep=" "),
+            by=self.by,
+            what=what,
+            before=before,
+            after=after,
+        )
+        self.session.add(change)
+
+    def done(self, text: str) -> Done:
+        """The answer, saying whether this is the practice store."""
+        setting = self.session.get(House, "practice")
+        practice = setting is not None and setting.value == "yes"
+        return Done(text, next="stockroom plan", practice=practice)
+
+
+def book(
+    path: Path,
+    number: str | None,
+    recipe: str,
+    on: date,
+    time: int,
+    groups: int,
+    department: str,
+    *,
+    spare: float | None = None,
+    firmness: str = "firm",
+    room: str = "",
+    version: int | None = None,
+    keep: bool = False,
+    today: date,
+    by: str,
+) -> Done:
+    """Book a recipe: the next number unless one is given, the newest version unless one is.
+
+    `time` in minutes after midnight, `spare` in per cent (10 when None).
+    Raises: BadInput for groups outside 1-200, spare over 50 %, no department or
+    a number in use; UnknownName; NotAllowed on a closed day unless `keep`.
+    """
+    firm = _firmness(firmness)
+    with writing(path) as session:
+        hand = Hand(session, today, initials(by))
+        found = names.find_recipe(session, recipe, version)
+        payer = _payer(session, department)
+        _check_open(session, on, keep=keep)
+        assert found.id is not None and payer.id is not None
+        booking = Booking(
+            number=_number(session, number),
+            recipe_id=found.id,
+            on_day=on,
+            minute=time,
+            groups=checked_groups(groups),
+            spare=checked_spare(spare),
+            department_id=payer.id,
+            firmness=firm,
+            room=room,
+        )
+        session.add(booking)
+        session.flush()
+        hand.record(booking, "booked", "", _in_words(session, booking))
+        return hand.done(f"Booked {booking.number}: {_in_words(session, booking)}.")
+
+
+def _firmness(word: str) -> Firmness:
+    if word not in [firm.value for firm in Firmness]:
+        raise unknown("firmness", word, [firm.value for firm in Firmness])
+    return Firmness(word)
+
+
+def _payer(session: Session, department: str) -> Department:
+    if not department.strip():
+        raise BadInput(
+            f'Department "{department}": a booking needs to know who pays.', "Add --dept CH."
+        )
+    return names.find_department(session, department)
+
+
+def _number(session: Session, number: str | None) -> str:
+    if number is None:
+        return next_booking_number(session)
+    if names.number_in_use(session, number):
+        raise BadInput(f"{number} is booked already.", "Leave the number out for the next one.")
+    return number.strip()
+
+
+def _check_open(session: Session, on: date, *, keep: bool) -> None:
+    if not keep and not calendar_of(reader_in(session)).is_open(on):
+        raise NotAllowed(f"{spell_day(on)} is closed. Keep it?", "Add --keep-closed to keep it.")
+
+
+def _in_words(session: Session, booking: Booking) -> str:
+    recipe = session.get_one(Recipe, booking.recipe_id)
+    groups = "1 group" if booking.groups == 1 else f"{booking.groups} groups"
+    return (
+        f"{recipe.recipe} {recipe.title}, {spell_day(booking.on_day)}"
+        f" {format_time(booking.minute)}, {groups}, {format_number(booking.spare / 10)} % spare,"
+        f" {booking.firmness}"
+    )
+
+
+def shift(
+    path: Path,
+    booking: str,
+    *,
+    on: date | None = None,
+    time: int | None = None,
+    groups: int | None = None,
+    firmness: str | None = None,
+    keep: bool = False,
+    today: date,
+    by: str,
+) -> Done:
+    """Change a booking's day, time, groups or firmness; what it was stays on record.
+
+    Raises: UnknownName; BadInput when nothing would change, or for groups
+    outside 1-200; NotAllowed on a closed day unless `keep`.
+    """
+    wanted: dict[str, object] = {"on_day": on, "minute": time, "groups": groups}
+    wanted["firmness"] = None if firmness is None else _firmness(firmness)
+    with writing(path) as session:
+        hand = Hand(session, today, initials(by))
+        found = names.find_booking(session, booking)
+        if on is not None:
+            _check_open(session, on, keep=keep)
+        if groups is not None:
+            checked_groups(groups)
+        changes = [
+            _change(hand, found, column, value)
+            for column, value in wanted.items()
+            if value is not None and value != getattr(found, column)
+        ]
+        if not changes:
+            raise BadInput(
+                f"{found.number} is so already: {_in_words(session, found)}.",
+                "Say what changes with --on, --at, --groups or --firmness.",
+            )
+        return hand.done(f"{found.number}: {'; '.join(changes)}.")
+
+
+_SAID = {"on_day": "day", "minute": "time", "groups": "groups", "firmness": "firmness"}
+
+
+def _change(hand: Hand, booking: Booking, column: str, value: object) -> str:
+    before, after = _say(column, getattr(booking, column)), _say(column, value)
+    setattr(booking, column, value)
+    hand.session.add(booking)
+    hand.record(booking, _SAID[column], before, after)
+    return f"{_SAID[column]} {before} → {after}"
+
+
+def _say(column: str, value: object) -> str:
+    if isinstance(value, date):
+        return value.isoformat()
+    return format_time(int(str(value))) if column == "minute" else str(value)
+
+
+def cancel(path: Path, booking: str, *, today: date, by: str) -> Done:
+    """Drop a booking: it leaves the plan, what was made for it stays as stock.
+
+    Raises: UnknownName; NotAllowed when it is dropped already, or done.
+    """
+    with writing(path) as session:
+        hand = Hand(session, today, initials(by))
+        found = names.find_booking(session, booking)
+        if found.firmness in (Firmness.DROPPED, Firmness.DONE):
+            raise NotAllowed(
+                f"{found.number} is {found.firmness} already.", "Book it again if it is wanted."
+            )
+        _change(hand, found, "firmness", Firmness.DROPPED.value)
+        return hand.done(f"Dropped {found.number}: {_in_words(session, found)}.")

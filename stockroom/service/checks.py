@@ -1,0 +1,211 @@
+"""What is learnt of a bottle: strengths found, looks, tests, losses, doubts."""
+
+from __future__ import annotations
+
+from datetime import date
+from pathlib import Path
+
+from stockroom.errors import BadAmount, BadInput, NotAllowed
+from stockroom.keeping.rules import RuleKind
+from stockroom.measure.days import spell_day
+from stockroom.measure.formats import format_strength
+from stockroom.measure.strengths import Strength
+from stockroom.service.answers import Done
+from stockroom.service.work import Work, check_at_hand, working
+from stockroom.store.history import children, rule_kinds
+from stockroom.store.kinds import EntryKind
+from stockroom.store.ledger import Event
+from stockroom.store.names import substance_of
+from stockroom.store.rows_lines import in_own_unit
+from stockroom.store.tables import Bottle, Line
+
+UNUSUAL = 0.25
+"""Further than this part from the label, a found strength is asked about. Source: the job, 15."""
+
+
+def found(
+    path: Path,
+    bottle: str,
+    strength: Strength,
+    *,
+    sure: bool = False,
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Write a strength that was measured; its recheck counts from that day.
+
+    Raises: NotAllowed when it is more than 25 % from the label, unless `sure`;
+    BadAmount for a strength without a number; MissingFigure for a missing density.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        checked = work.bottle(bottle)
+        check_at_hand(work, checked)
+        line = work.line(checked)
+        value, unit = in_own_unit(
+            strength, substance_of(work.session, line), line.density, line.unit
+        )
+        if value is None or unit != line.unit:
+            raise BadAmount(
+                f'"{strength.text}" cannot be set beside {line.key}.', f"Give it in {line.unit}."
+            )
+        _check_usual(line, value, sure=sure)
+        event = Event(EntryKind.FOUND, strength=value, strength_text=strength.text)
+        entry = work.write(checked, event)
+        text = f"{work.called(checked)} found {format_strength(value, unit)}, {spell_day(work.on)}."
+        return work.done(
+            text,
+            checked,
+            entry,
+            following=f"stockroom label {checked.number}",
+            details=_until(work, checked),
+        )
+
+
+def _check_usual(line: Line, value: float, *, sure: bool) -> None:
+    if sure or not line.strength:
+        return
+    if abs(value - line.strength) > UNUSUAL * line.strength:
+        raise NotAllowed(
+            f"Unusual: {format_strength(value, line.unit)} against"
+            f" {format_strength(line.strength, line.unit)}.",
+            "Check the units, or confirm with --sure.",
+        )
+
+
+def look(
+    path: Path,
+    bottle: str,
+    *,
+    passed: bool,
+    note: str = "",
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Write a look by eye: a good one re-dates the bottle, a bad one sets it aside.
+
+    Raises: NotAllowed for what is never kept, gone or not found.
+    """
+    kind = EntryKind.LOOKED
+    return _check(path, bottle, kind, passed, note, on=on, today=today, by=by)
+
+
+def tested(
+    path: Path,
+    bottle: str,
+    *,
+    passed: bool,
+    note: str = "",
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Write a peroxide-former's named test, the only check that moves a safety date.
+
+    Raises: NotAllowed when the line has no such rule, or the bottle is not at hand.
+    """
+    kind = EntryKind.TESTED
+    return _check(path, bottle, kind, passed, note, on=on, today=today, by=by)
+
+
+def _check(
+    path: Path,
+    bottle: str,
+    kind: EntryKind,
+    passed: bool,
+    note: str,
+    *,
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    with working(path, on=on, today=today, by=by) as work:
+        checked = work.bottle(bottle)
+        check_at_hand(work, checked)
+        _check_keeps(work, checked, kind)
+        entry = work.write(checked, Event(kind, passed=passed, note=note))
+        verb = "looked at" if kind is EntryKind.LOOKED else "tested"
+        outcome = "passed" if passed else "did not pass: set aside"
+        details = _until(work, checked) if passed else _made_from(work, checked)
+        text = f"{work.called(checked)} {verb} {spell_day(work.on)}, {outcome}."
+        return work.done(text, checked, entry, details=details)
+
+
+def _check_keeps(work: Work, bottle: Bottle, kind: EntryKind) -> None:
+    line = work.line(bottle)
+    kinds = rule_kinds(work.session, line)
+    if line.never_kept or RuleKind.NEVER in kinds:
+        raise NotAllowed(
+            f"{line.key} is never kept. There is no test that extends it.",
+            "Destroy it, and say so.",
+        )
+    if kind is EntryKind.TESTED and RuleKind.TEST not in kinds:
+        raise NotAllowed(
+            f"{line.key} has no test of its own that would re-date it.",
+            f"Enter a look or a strength for {bottle.number}.",
+        )
+
+
+def _until(work: Work, bottle: Bottle) -> tuple[str, ...]:
+    after = work.verdict(bottle)
+    if after.good_until is None:
+        return ()
+    return (f"Now {after.condition}, until {spell_day(after.good_until)}: {after.decided_by}.",)
+
+
+def lost(path: Path, bottle: str, *, note: str = "", on: date | None, today: date, by: str) -> Done:
+    """Say that a bottle cannot be found: it leaves the plan, and its last place is shown.
+
+    Raises: NotAllowed when it is missing already, or gone.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        missed = work.bottle(bottle)
+        place = check_at_hand(work, missed).place
+        entry = work.write(missed, Event(EntryKind.LOST, reason=note))
+        last = f"; it last stood at {place}" if place else ""
+        text = f"Not found: {work.called(missed)}{last}."
+        following = f"stockroom turned-up {missed.number} --place …"
+        return work.done(text, missed, entry, following=following)
+
+
+def turned_up(
+    path: Path, bottle: str, place: str | None, *, on: date | None, today: date, by: str
+) -> Done:
+    """Say where a bottle turned up (its last place when None); it wants a look.
+
+    Raises: NotAllowed when nobody missed it, or it is gone; UnknownName for the place.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        found_again = work.bottle(bottle)
+        seen = work.seen(found_again)
+        if seen.record.gone or not seen.record.not_found:
+            state = "gone" if seen.record.gone else f"in use, at {seen.place or 'no place'}"
+            raise NotAllowed(
+                f"{found_again.number} was not missing: it is {state}.",
+                f"To stand it elsewhere: stockroom move {found_again.number} PLACE.",
+            )
+        where = place or seen.place
+        place_id = work.place_id(where) if where else None
+        entry = work.write(found_again, Event(EntryKind.TURNED_UP, place_id=place_id))
+        text = f"{work.called(found_again)} turned up{f' at {where}' if where else ''}."
+        return work.done(text, found_again, entry, following=f"stockroom look {found_again.number}")
+
+
+def spoil(path: Path, bottle: str, reason: str, *, on: date | None, today: date, by: str) -> Done:
+    """Set a bottle aside at once, and list what was made from it.
+
+    Raises: BadInput without a reason; NotAllowed when it is gone or not found.
+    """
+    if not reason.strip():
+        raise BadInput(f"Why set {bottle} aside?", "One word is enough, but I need it: --why …")
+    with working(path, on=on, today=today, by=by) as work:
+        spoiled = work.bottle(bottle)
+        check_at_hand(work, spoiled)
+        entry = work.write(spoiled, Event(EntryKind.SET_ASIDE, reason=reason.strip()))
+        text = f"Set aside {work.called(spoiled)}: {reason.strip()}."
+        return work.done(text, spoiled, entry, details=_made_from(work, spoiled))
+
+
+def _made_from(work: Work, bottle: Bottle) -> tuple[str, ...]:
+    return tuple(f"Made from it: {work.called(child)}." for child in children(work.session, bottle))

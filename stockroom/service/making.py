@@ -1,0 +1,209 @@
+"""Making up: what went into it is drawn, what came of it is a new bottle with its parents."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from datetime import date
+from pathlib import Path
+
+from stockroom.errors import BadAmount, NotAllowed, NotEnough, StockroomError
+from stockroom.keeping.rules import RuleKind
+from stockroom.keeping.verdict import USABLE, Verdict, verdict
+from stockroom.measure.amounts import Amount, Kind
+from stockroom.measure.formats import format_amount, format_strength
+from stockroom.planning.amounts import draw_for
+from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
+from stockroom.service.answers import Done
+from stockroom.service.taking import open_if_sealed, take
+from stockroom.service.work import Work, check_in_use, working
+from stockroom.store import names, tables
+from stockroom.store.kinds import EntryKind
+from stockroom.store.ledger import Event, made_note, next_bottle_number
+from stockroom.store.snapshot import facts_from
+
+
+@dataclass(frozen=True, slots=True)
+class Source:
+    """A bottle that gives one ingredient: how much of it, in micro-units, and its verdict."""
+
+    bottle: Bottle
+    line: Line
+    amount: int
+    verdict: Verdict
+
+    @property
+    def words(self) -> str:
+        """The draw in words, with the strength it was worked out from."""
+        amount = format_amount(Amount(self.line.kind, self.amount))
+        expected = self.verdict.strengths.expected
+        if self.line.form is Form.SOLID or expected is None:
+            return f"{amount} of {self.bottle.number} {self.line.key}"
+        basis = self.verdict.strengths.basis
+        strength = f"{format_strength(expected, self.line.unit)}, from its {basis} strength"
+        return f"{amount} of {self.bottle.number} {self.line.key} ({strength})"
+
+
+def make_up(
+    path: Path,
+    line: str,
+    volume: Amount,
+    *,
+    sources: list[str],
+    place: str | None,
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Make so much of a line: draws, the new bottle and its parents in one piece, or nothing.
+
+    `sources` are bottle numbers, one for each ingredient that is not to be
+    chosen here; the choice is the good one going past soonest that is enough.
+    Raises: NotAllowed for what is never kept, has no method, or a source that
+    does not belong; NotEnough, MissingFigure, UnknownName, BadAmount.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        known = facts_from(work.reader, work.on)
+        product = known.lines[names.find_line(work.session, line).key]
+        method = _method(known, product)
+        _check_volume(product, volume)
+        given = [_given(work, known, number) for number in sources]
+        _check_belong(method, given)
+        chosen = [_source(known, product, part, given, volume.micro) for part in method.ingredients]
+        return _write(work, product, volume, chosen, place)
+
+
+def _method(known: Facts, product: Line) -> Method:
+    never = next((rule for rule in product.rules if rule.kind is RuleKind.NEVER), None)
+    if product.never_kept or never:
+        reason = f": {product.never_kept}" if product.never_kept else ""
+        raise NotAllowed(
+            f"{product.item[:1].upper()}{product.item[1:]} is never kept{reason.rstrip('.')}."
+            " There is no test that extends it.",
+            "Mix it just before use and destroy it after.",
+        )
+    method = known.methods.get(product.key)
+    if method is None or not method.ingredients:
+        raise NotAllowed(
+            f"{product.key} has no method: nothing says what it is made from.",
+            f"stockroom add ingredients line='{product.key}' ingredient=…",
+        )
+    return method
+
+
+def _check_volume(product: Line, volume: Amount) -> None:
+    if volume.kind is not Kind.VOLUME or volume.micro <= 0:
+        raise BadAmount(
+            f"{format_amount(volume)} of {product.key} cannot be made up.", "Give a volume, in cm³."
+        )
+
+
+def _given(work: Work, known: Facts, number: str) -> Bottle:
+    row = work.bottle(number)
+    check_in_use(work, row)
+    return next(bottle for bottle in known.bottles if bottle.number == row.number)
+
+
+def _check_belong(method: Method, given: list[Bottle]) -> None:
+    for place, bottle in enumerate(given):
+        fits = [part for part in method.ingredients if bottle.line in part.lines]
+        if not fits:
+            takes = " or ".join(line for part in method.ingredients for line in part.lines)
+            raise NotAllowed(
+                f"{bottle.number} holds {bottle.line}; {method.line} is made from {takes}.",
+                "Name another bottle with --from.",
+            )
+        if any(other.line in fits[0].lines for other in given[:place]):
+            raise NotAllowed(
+                f"{bottle.number} is a second source of {bottle.line}; one bottle gives each"
+                " ingredient.",
+                "Make two batches, each from one bottle.",
+            )
+
+
+def _source(
+    known: Facts, product: Line, part: Ingredient, given: list[Bottle], volume: int
+) -> Source:
+    named = [bottle for bottle in given if bottle.line in part.lines]
+    if named:
+        return _judged(known, product, part, named[0], volume)
+    for key in part.lines:
+        found = _soonest(known, product, part, key, volume)
+        if found is not None:
+            return found
+    raise NotEnough(
+        f"No bottle of {' or '.join(part.lines)} is good and holds enough for"
+        f" {format_amount(Amount(Kind.VOLUME, volume))} of {product.key}.",
+        "Make less, or name a bottle with --from.",
+    )
+
+
+def _judged(known: Facts, product: Line, part: Ingredient, bottle: Bottle, volume: int) -> Source:
+    line = known.lines[bottle.line]
+    judged = verdict(bottle.record, line.rules, known.as_at)
+    if judged.safety and judged.condition not in USABLE:
+        raise NotAllowed(
+            f"{bottle.number} is {judged.condition}: {judged.decided_by}.",
+            "Do not open or move it: ask.",
+        )
+    amount = draw_for(line, judged.strengths.expected, product, volume, part.per_dm3)
+    return Source(bottle, line, amount, judged)
+
+
+def _soonest(known: Facts, product: Line, part: Ingredient, key: str, volume: int) -> Source | None:
+    """The good bottle of a line that holds enough and goes past first; ties by number."""
+    fitting = []
+    for bottle in known.bottles:
+        if bottle.line != key:
+            continue
+        try:
+            source = _judged(known, product, part, bottle, volume)
+        except StockroomError:
+            # too weak, of unknown strength or not safe to open: another may do
+            continue
+        if source.verdict.condition in USABLE and source.amount <= bottle.left:
+            fitting.append(source)
+    return min(fitting, key=_past_first, default=None)
+
+
+def _past_first(source: Source) -> tuple[date, str]:
+    return source.verdict.good_until or date.max, source.bottle.number
+
+
+def _write(
+    work: Work, product: Line, volume: Amount, chosen: list[Source], place: str | None
+) -> Done:
+    bottle = _new_bottle(work, product, volume)
+    details: list[str] = []
+    for source in chosen:
+        row = work.bottle(source.bottle.number)
+        details += open_if_sealed(work, row)
+        note = made_note(bottle.number)
+        take(work, row, Event(EntryKind.DRAWN, change=-source.amount, note=note))
+        details.append(f"Took {source.words}.")
+        _link(work, bottle, row)
+    place_id = work.place_id(place) if place else None
+    entry = work.write(bottle, Event(EntryKind.MADE, change=volume.micro, place_id=place_id))
+    judged = work.verdict(bottle)
+    until = f"; good until {judged.good_until}" if judged.good_until else ""
+    text = f"Made {bottle.number}: {format_amount(volume)} of {product.key}{until}."
+    return work.done(text, work.bottle(bottle.number), entry, details=tuple(details))
+
+
+def _new_bottle(work: Work, product: Line, volume: Amount) -> tables.Bottle:
+    line = names.find_line(work.session, product.key)
+    assert line.id is not None
+    bottle = tables.Bottle(
+        number=next_bottle_number(work.session, made_here=True),
+        line_id=line.id,
+        size=volume.micro,
+        made_on=work.on,
+        made_here=True,
+    )
+    work.session.add(bottle)
+    work.session.flush()
+    return bottle
+
+
+def _link(work: Work, bottle: tables.Bottle, source: tables.Bottle) -> None:
+    assert bottle.id is not None and source.id is not None
+    work.session.add(tables.Parent(bottle_id=bottle.id, parent_id=source.id))

@@ -1,0 +1,88 @@
+"""What the plan says: the term, a day's past bottles, one booking's readiness, one why.
+
+Each opens the store for reading only, so nothing heavy is loaded.
+"""
+
+from __future__ import annotations
+
+from datetime import date
+from pathlib import Path
+
+from stockroom.errors import BadInput
+from stockroom.measure.days import parse_day
+from stockroom.planning.decisions import Plan
+from stockroom.planning.facts import Facts, Firmness
+from stockroom.planning.plan import plan
+from stockroom.planning.ready import Readiness, readiness
+from stockroom.planning.why import instead as may_stand_in
+from stockroom.planning.why import why as reasons_for
+from stockroom.service.finding import line_among
+from stockroom.store.likeness import unknown
+from stockroom.store.snapshot import facts
+
+
+def term_plan(
+    path: Path, *, as_at: date, start: date | None = None, end: date | None = None
+) -> Plan:
+    """The plan from `as_at`, for the term or for the period given."""
+    return plan(facts(path, as_at, start, end))
+
+
+def past_on(path: Path, *, as_at: date, on: date) -> Plan:
+    """A plan whose `past` is told for the day `on`, from what is known as at `as_at`."""
+    known = facts(path, as_at)
+    return plan(known, past_day=on)
+
+
+def ready(path: Path, ref: str, *, as_at: date) -> Readiness:
+    """Is everything good for a booking number, or for all bookings of a day?
+
+    Raises UnknownName for a booking that does not exist, BadDate for a day
+    that cannot be read.
+    """
+    known = facts(path, as_at)
+    booking = next((b for b in known.bookings if b.number.lower() == ref.strip().lower()), None)
+    if booking is not None:
+        whole = plan(_reaching(path, known, booking.on))
+        recipe = known.recipes[booking.recipe, booking.version]
+        title = f"{booking.number} {recipe.title}, {booking.on}"
+        if booking.firmness in (Firmness.DONE, Firmness.DROPPED):
+            title += f" ({booking.firmness})"
+        return readiness(known, whole, (booking.number,), title, booking.on)
+    if not any(character.isdigit() for character in ref) or "-" not in ref:
+        raise _no_such(known, ref)
+    day = parse_day(ref)
+    known = _reaching(path, known, day)
+    numbers = tuple(b.number for b in known.bookings if b.on == day)
+    title = f"{day}: {', '.join(numbers) or 'nothing booked'}"
+    return readiness(known, plan(known), numbers, title, day)
+
+
+def _reaching(path: Path, known: Facts, day: date) -> Facts:
+    """The same facts, over a period that holds the day."""
+    if day <= known.end:
+        return known
+    return facts(path, known.as_at, known.start, day)
+
+
+def _no_such(known: Facts, ref: str) -> BadInput:
+    return unknown("booking", ref, [booking.number for booking in known.bookings])
+
+
+def why(path: Path, ref: str, *, as_at: date, instead: str | None = None) -> tuple[str, ...]:
+    """The reasons behind a need, make, order, bottle or item; or whether a swap may be made.
+
+    At most five lines. Raises UnknownName when nothing of that name is known.
+    """
+    known = facts(path, as_at)
+    whole = plan(known)
+    if instead is not None:
+        other = line_among(known, instead)
+        lines = may_stand_in(known, whole, ref, other.key)
+    else:
+        lines = reasons_for(known, whole, ref)
+    if not lines:
+        names = [*(a.booking.number for a in whole.needs), *(m.id for m in whole.makes)]
+        names += [*(o.id for o in whole.orders), *(b.number for b in known.bottles), *known.lines]
+        raise unknown("line of the plan, bottle or item", ref, names)
+    return lines

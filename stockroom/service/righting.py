@@ -1,0 +1,59 @@
+"""Undoing an entry without rubbing it out: what may be undone, and what goes with it."""
+
+from __future__ import annotations
+
+from stockroom.errors import NotAllowed, UnknownName
+from stockroom.measure.days import spell_day
+from stockroom.service.work import Work
+from stockroom.store.history import children, noted, undone_by
+from stockroom.store.kinds import BEGINNINGS, EntryKind
+from stockroom.store.ledger import Event, entries_of, evening_note, made_note
+from stockroom.store.tables import Bottle, Entry
+
+
+def standing(work: Work, number: int) -> Entry:
+    """The entry, when it may still be put right.
+
+    Raises: UnknownName; NotAllowed when it was put right already, or is itself a putting-right.
+    """
+    entry = work.session.get(Entry, number)
+    if entry is None:
+        raise UnknownName(f"No entry {number} in the ledger.", "stockroom why BOTTLE lists them.")
+    if entry.kind == EntryKind.PUT_RIGHT:
+        raise NotAllowed(
+            f"Entry {number} is a putting-right itself.", "Enter what really happened instead."
+        )
+    again = undone_by(work.session, entry)
+    if again is not None:
+        raise NotAllowed(
+            f"Entry {number} was put right by {again.by} on {spell_day(again.happened_on)}.",
+            "Enter what really happened instead.",
+        )
+    return entry
+
+
+def check_nothing_leans(work: Work, bottle: Bottle, wrong: Entry) -> None:
+    """Pass unless other entries need this one to be true. Raises: NotAllowed, listing them."""
+    if wrong.kind not in BEGINNINGS:
+        return
+    later = [entry for entry in entries_of(work.session, bottle) if entry.id != wrong.id]
+    listed = [f"entry {entry.id} {entry.kind} {entry.happened_on}" for entry in later]
+    listed += [f"{work.called(child)} made from it" for child in children(work.session, bottle)]
+    if listed:
+        raise NotAllowed(
+            f"{bottle.number} has later entries: {'; '.join(listed)}.", "Put those right first."
+        )
+
+
+def reverse(work: Work, wrong: Entry, reason: str) -> Entry:
+    """Write the entry that undoes another. Raises: NotEnough when the balance would not bear it."""
+    bottle = work.session.get_one(Bottle, wrong.bottle_id)
+    event = Event(EntryKind.PUT_RIGHT, change=-wrong.change, reason=reason, puts_right=wrong.id)
+    return work.write(bottle, event)
+
+
+def with_it(work: Work, bottle: Bottle, wrong: Entry) -> list[Entry]:
+    """What was written only because of an entry: the draws of a make, a count's evenings."""
+    notes = {EntryKind.MADE: made_note(bottle.number), EntryKind.COUNTED: evening_note(wrong.id)}
+    note = notes.get(EntryKind(wrong.kind))
+    return noted(work.session, note) if note else []

@@ -1,0 +1,295 @@
+"""What happens at the shelf: bottles arrive, are opened, drawn from, moved, counted, discarded.
+
+Each function is one unit of work and writes at least one ledger entry. `on` is
+the day it happened (today when None), `today` the day it is entered, `by` the
+initials. Making up is in `making.py`; looks, titrations and losses in `checks.py`.
+"""
+
+from __future__ import annotations
+
+from datetime import date
+from pathlib import Path
+
+from stockroom.errors import BadDate, BadInput, NotAllowed
+from stockroom.measure.amounts import Amount
+from stockroom.measure.days import PrintedDate, parse_printed, spell_day
+from stockroom.measure.formats import format_amount
+from stockroom.service.answers import Done
+from stockroom.service.righting import check_nothing_leans, reverse, standing, with_it
+from stockroom.service.taking import check_not_barred, open_if_sealed, opening_of, take
+from stockroom.service.work import (
+    Work,
+    check_amount,
+    check_at_hand,
+    check_in_use,
+    check_kind,
+    doubts,
+    working,
+)
+from stockroom.store import names
+from stockroom.store.kinds import EntryKind
+from stockroom.store.ledger import Event, left, next_bottle_number
+from stockroom.store.tables import Bottle, Line
+
+MOST_AT_ONCE = 100
+
+
+def arrive(
+    path: Path,
+    line: str,
+    size: Amount,
+    *,
+    printed: str | None,
+    place: str,
+    count: int = 1,
+    opened: date | None = None,
+    note: str = "",
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Put bottles that came on the shelf; each gets a number of its own.
+
+    `size` is what one holds; `printed` the date as printed on it, or "none",
+    which must be said; `opened` the day it was opened, if it was.
+    Raises: BadInput, UnknownName, BadAmount, BadDate.
+    """
+    date_printed = _printed(printed)
+    if not 1 <= count <= MOST_AT_ONCE:
+        raise BadInput(f"{count} bottles?", f"Give 1 to {MOST_AT_ONCE}.")
+    with working(path, on=on, today=today, by=by) as work:
+        found = names.find_line(work.session, line)
+        check_amount(found, size)
+        event = Event(
+            EntryKind.ARRIVED, change=size.micro, place_id=work.place_id(place), note=note
+        )
+        bottles = [_new_bottle(work, found, size, date_printed, note) for _ in range(count)]
+        entries = [work.write(bottle, event) for bottle in bottles]
+        if opened is not None:
+            _write_openings(work, bottles, opened)
+        numbers = ", ".join(bottle.number for bottle in bottles)
+        each = format_amount(size) + (" each" if count > 1 else "")
+        text = f"{numbers}: {found.key}, {each}, at {place}."
+        return work.done(text, bottles[0], entries[0])
+
+
+def _printed(printed: str | None) -> PrintedDate | None:
+    if printed is None or not printed.strip():
+        raise BadInput(
+            f'Printed date "{printed or ""}": "none printed" must be chosen.',
+            "Add --printed 03/2027, or --printed none.",
+        )
+    return parse_printed(printed)
+
+
+def _new_bottle(
+    work: Work, line: Line, size: Amount, printed: PrintedDate | None, remark: str
+) -> Bottle:
+    assert line.id is not None
+    bottle = Bottle(
+        number=next_bottle_number(work.session, made_here=False),
+        line_id=line.id,
+        size=size.micro,
+        received_on=work.on,
+        printed_text=printed.text if printed else "",
+        printed_readings=";".join(day.isoformat() for day in printed.readings) if printed else "",
+        remark=remark,
+    )
+    work.session.add(bottle)
+    work.session.flush()
+    return bottle
+
+
+def _write_openings(work: Work, bottles: list[Bottle], opened: date) -> None:
+    if opened < work.on:
+        raise BadDate(
+            f"Opened {spell_day(opened)} is before it arrived {spell_day(work.on)}.",
+            "One of these is wrong.",
+        )
+    if opened > work.stamp.entered_on:
+        raise BadDate(
+            f"Opened {spell_day(opened)} is still to come:"
+            f" today is {spell_day(work.stamp.entered_on)}.",
+            "Leave it sealed, and enter the opening on its day.",
+        )
+    for bottle in bottles:
+        work.write(bottle, Event(EntryKind.OPENED), on=opened)
+
+
+def open_bottle(path: Path, bottle: str, *, on: date | None, today: date, by: str) -> Done:
+    """Write the day a bottle was opened, and say how long it is good now.
+
+    Raises: NotAllowed when it was opened already (the first day is kept), gone or not found.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        found = work.bottle(bottle)
+        check_at_hand(work, found)
+        first = opening_of(work, found)
+        if first is not None:
+            raise NotAllowed(
+                f"{found.number} was opened on {spell_day(first.happened_on)}; that day is kept.",
+                f"If it is wrong, put entry {first.id} right first.",
+            )
+        entry = work.write(found, Event(EntryKind.OPENED))
+        after = work.verdict(found)
+        until = f"; good until {spell_day(after.good_until)}" if after.good_until else ""
+        why = f" ({after.decided_by})" if until else ""
+        return work.done(f"Opened {work.called(found)}{until}{why}.", found, entry)
+
+
+def draw(
+    path: Path,
+    bottle: str,
+    amount: Amount,
+    *,
+    booking: str | None = None,
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Take so much from a bottle; a sealed one is opened by it.
+
+    Raises: NotEnough when less is left; NotAllowed when it is not found, set
+    aside, gone, or barred by the booking's recipe; BadAmount for the wrong kind.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        found = work.bottle(bottle)
+        check_amount(work.line(found), amount)
+        check_in_use(work, found)
+        served = names.find_booking(work.session, booking) if booking else None
+        if served is not None:
+            check_not_barred(work, found, served)
+        number = served.number if served else ""
+        details = (*open_if_sealed(work, found), *doubts(work, found))
+        entry = take(work, found, Event(EntryKind.DRAWN, change=-amount.micro, booking=number))
+        text = f"Drew {format_amount(amount)} from {work.called(found)}; {_remains(work, found)}."
+        return work.done(text, found, entry, details=details)
+
+
+def _remains(work: Work, bottle: Bottle) -> str:
+    return f"{work.say(bottle, left(work.session, bottle))} left"
+
+
+def spill(
+    path: Path,
+    bottle: str,
+    amount: Amount,
+    *,
+    note: str = "",
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Write off what was spilled: its own reason, kept out of consumption. Raises: as `draw`."""
+    event = Event(EntryKind.SPILLED, change=-amount.micro, note=note)
+    with working(path, on=on, today=today, by=by) as work:
+        return _write_off(work, bottle, amount, event, "Spilled")
+
+
+def lend(
+    path: Path, bottle: str, amount: Amount, *, to: str, on: date | None, today: date, by: str
+) -> Done:
+    """Write off what was lent, and to whom. Raises: BadInput when nobody is named; as `draw`."""
+    if not to.strip():
+        raise BadInput(f"{format_amount(amount)} of {bottle} lent to whom?", "Say to whom.")
+    event = Event(EntryKind.LENT, change=-amount.micro, reason=f"to {to.strip()}")
+    with working(path, on=on, today=today, by=by) as work:
+        return _write_off(work, bottle, amount, event, "Lent")
+
+
+def _write_off(work: Work, bottle: str, amount: Amount, event: Event, verb: str) -> Done:
+    found = work.bottle(bottle)
+    check_amount(work.line(found), amount)
+    check_at_hand(work, found)
+    entry = take(work, found, event)
+    said = f"{verb} {format_amount(amount)} of {work.called(found)}"
+    to = f" {event.reason}" if event.reason else ""
+    return work.done(f"{said}{to}; {_remains(work, found)}.", found, entry)
+
+
+def move(path: Path, bottle: str, place: str, *, on: date | None, today: date, by: str) -> Done:
+    """Stand a bottle somewhere else.
+
+    Raises: UnknownName with the nearest places; NotAllowed when it is gone or not found.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        found = work.bottle(bottle)
+        before = check_at_hand(work, found).place
+        entry = work.write(found, Event(EntryKind.MOVED, place_id=work.place_id(place)))
+        start = f" from {before}" if before else ""
+        return work.done(f"Moved {work.called(found)}{start} to {place}.", found, entry)
+
+
+def count(
+    path: Path,
+    bottle: str,
+    amount: Amount,
+    *,
+    walk: str = "",
+    on: date | None,
+    today: date,
+    by: str,
+) -> Done:
+    """Write what is really in a bottle; the difference is an entry, nothing is rubbed out.
+
+    Zero is a count. `walk` names the round of counting. Raises: BadAmount for the wrong kind.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        found = work.bottle(bottle)
+        check_kind(work.line(found), amount)
+        change = amount.micro - check_at_hand(work, found).left
+        entry = work.write(found, Event(EntryKind.COUNTED, change=change, note=walk))
+        text = f"Counted {format_amount(amount)} of {work.called(found)}"
+        return work.done(f"{text}{_difference(work, found, change)}.", found, entry)
+
+
+def _difference(work: Work, bottle: Bottle, change: int) -> str:
+    if change == 0:
+        return ", as entered"
+    return f"; {work.say(bottle, abs(change))} {'more' if change > 0 else 'less'} than entered"
+
+
+def discard(
+    path: Path, bottle: str, *, how: str, why: str, on: date | None, today: date, by: str
+) -> Done:
+    """Throw a bottle away: it is gone, its number and its history stay.
+
+    Raises: BadInput unless it is said how and why; NotAllowed when it is gone already.
+    """
+    for name, said in (("How", how), ("Why", why)):
+        if not said.strip():
+            raise BadInput(f"{name} was {bottle} discarded?", f"Add --{name.lower()} and a word.")
+    with working(path, on=on, today=today, by=by) as work:
+        found = work.bottle(bottle)
+        check_at_hand(work, found)
+        held = left(work.session, found)
+        event = Event(EntryKind.DISCARDED, change=-held, reason=why.strip(), note=how.strip())
+        entry = work.write(found, event)
+        text = f"Discarded {work.called(found)}, {work.say(found, held)}: {how.strip()}."
+        return work.done(text, found, entry)
+
+
+def put_right(
+    path: Path, entry: int, reason: str, *, on: date | None, today: date, by: str
+) -> Done:
+    """Undo one entry without rubbing it out: totals are as if it had never happened.
+
+    The draws of a make are put right with it.
+    Raises: UnknownName; BadInput without a reason; NotAllowed when it is put right
+    already, is a putting-right itself, or has later entries leaning on it (they
+    are listed); NotEnough when the balance would fall below nothing.
+    """
+    if not reason.strip():
+        raise BadInput(f"Why is entry {entry} wrong?", "One word is enough: --why …")
+    with working(path, on=on, today=today, by=by) as work:
+        wrong = standing(work, entry)
+        bottle = work.session.get_one(Bottle, wrong.bottle_id)
+        check_nothing_leans(work, bottle, wrong)
+        others = with_it(work, bottle, wrong)
+        written = reverse(work, wrong, reason.strip())
+        for other in others:
+            reverse(work, other, reason.strip())
+        what = f"{wrong.kind} {spell_day(wrong.happened_on)} by {wrong.by}"
+        text = f"Put right entry {entry}: {bottle.number} {what}; {_remains(work, bottle)}."
+        details = tuple(f"Entry {other.id} put right with it." for other in others)
+        return work.done(text, bottle, written, details=details)

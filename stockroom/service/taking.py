@@ -1,0 +1,57 @@
+"""What every draw from a bottle goes through, whoever it is for."""
+
+from __future__ import annotations
+
+from stockroom.errors import NotAllowed, NotEnough
+from stockroom.measure.days import spell_day
+from stockroom.service.work import Work
+from stockroom.store.kinds import EntryKind
+from stockroom.store.ledger import Event, entries_of
+from stockroom.store.names import substance_of
+from stockroom.store.snapshot_lines import recipes_of
+from stockroom.store.tables import Booking, Bottle, Entry, Recipe
+
+
+def take(work: Work, bottle: Bottle, event: Event) -> Entry:
+    """Write what leaves a bottle. Raises: NotEnough, saying who drew last when that was today."""
+    try:
+        return work.write(bottle, event)
+    except NotEnough as error:
+        raise NotEnough(f"{error.message}{_drawn_today(work, bottle)}", error.hint) from error
+
+
+def _drawn_today(work: Work, bottle: Bottle) -> str:
+    draws = [
+        entry
+        for entry in entries_of(work.session, bottle)
+        if entry.kind == EntryKind.DRAWN and entry.entered_on == work.stamp.entered_on
+    ]
+    last = max(draws, key=lambda entry: entry.id or 0, default=None)
+    return f" {last.by} drew {work.say(bottle, -last.change)} today." if last else ""
+
+
+def opening_of(work: Work, bottle: Bottle) -> Entry | None:
+    """The entry that opened the bottle, None while it is sealed."""
+    opened = (entry for entry in entries_of(work.session, bottle) if entry.kind == EntryKind.OPENED)
+    return next(opened, None)
+
+
+def open_if_sealed(work: Work, bottle: Bottle) -> tuple[str, ...]:
+    """Write the opening that a draw from a sealed bought bottle implies, and say so."""
+    if bottle.made_here or opening_of(work, bottle) is not None:
+        return ()
+    work.write(bottle, Event(EntryKind.OPENED, note="by the first draw"))
+    return (f"{bottle.number} was sealed: opened {spell_day(work.on)}.",)
+
+
+def check_not_barred(work: Work, bottle: Bottle, booking: Booking) -> None:
+    """Pass unless the booking's recipe bars what the bottle holds. Raises: NotAllowed."""
+    recipe = work.session.get_one(Recipe, booking.recipe_id)
+    substance = substance_of(work.session, work.line(bottle))
+    for bar in recipes_of(work.reader)[recipe.recipe, recipe.version].bars:
+        if substance is not None and bar.substance == substance.substance:
+            raise NotAllowed(
+                f"{booking.number} is {recipe.recipe}, {recipe.title}, which bars"
+                f" {bar.substance}: {bar.reason}.",
+                "Use what the recipe names.",
+            )

@@ -1,0 +1,184 @@
+"""One unit of work at the shelf: the store open for writing, and who does it when."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from contextlib import contextmanager
+from dataclasses import dataclass, replace
+from datetime import date
+from pathlib import Path
+
+from stockroom import clock
+from stockroom.errors import BadAmount, BadDate, BadInput, NotAllowed
+from stockroom.keeping.verdict import Condition, Verdict, verdict
+from stockroom.measure.amounts import Amount, Kind
+from stockroom.measure.days import spell_day
+from stockroom.measure.formats import format_amount
+from stockroom.planning import facts
+from stockroom.service.answers import Done
+from stockroom.store import names
+from stockroom.store.engine import Session, reader_in, writing
+from stockroom.store.kinds import EntryKind
+from stockroom.store.ledger import Event, Stamp, append, before_it_was_there, entries_of
+from stockroom.store.reading import Reader
+from stockroom.store.snapshot_bottles import bottle_of
+from stockroom.store.snapshot_lines import lines_of
+from stockroom.store.tables import Bottle, Entry, House, Line
+
+
+@dataclass(frozen=True, slots=True)
+class Work:
+    """The open session, the stamp its entries carry, and whether this is practice."""
+
+    session: Session
+    stamp: Stamp
+    practice: bool
+
+    @property
+    def on(self) -> date:
+        """The day it happened."""
+        return self.stamp.happened_on
+
+    @property
+    def reader(self) -> Reader:
+        """The reading half, on this very transaction."""
+        return reader_in(self.session)
+
+    def bottle(self, number: str) -> Bottle:
+        """The bottle with that number. Raises: UnknownName."""
+        return names.find_bottle(self.session, number)
+
+    def line(self, bottle: Bottle) -> Line:
+        """What the bottle holds."""
+        return self.session.get_one(Line, bottle.line_id)
+
+    def place_id(self, place: str) -> int | None:
+        """The place by its name. Raises: UnknownName with the nearest."""
+        return names.find_place(self.session, place).id
+
+    def write(self, bottle: Bottle, event: Event, *, on: date | None = None) -> Entry:
+        """Append one entry under this work's stamp. Raises: as `ledger.append`."""
+        stamp = self.stamp if on is None else replace(self.stamp, happened_on=on)
+        return append(self.session, bottle, event, stamp)
+
+    def seen(self, bottle: Bottle) -> facts.Bottle:
+        """The bottle as the planner would see it that day. Raises: BadDate before it was there."""
+        found = bottle_of(self.reader, bottle.number, self.on)
+        if found is None:
+            raise before_it_was_there(bottle, spell_day(self.on), None)
+        return found
+
+    def verdict(self, bottle: Bottle) -> Verdict:
+        """The verdict on the bottle that day."""
+        rules = lines_of(self.reader)[self.line(bottle).key].rules
+        return verdict(self.seen(bottle).record, rules, self.on)
+
+    def say(self, bottle: Bottle, micro: int) -> str:
+        """Micro-units of what the bottle holds, in words."""
+        return format_amount(Amount(Kind(self.line(bottle).kind), micro))
+
+    def called(self, bottle: Bottle) -> str:
+        """The bottle's number and what is in it."""
+        return f"{bottle.number} {self.line(bottle).key}"
+
+    def done(
+        self,
+        text: str,
+        bottle: Bottle,
+        entry: Entry,
+        *,
+        following: str = "",
+        details: tuple[str, ...] = (),
+    ) -> Done:
+        """What was saved, as the answer to whoever asked."""
+        return Done(text, bottle.number, entry.id, following, self.practice, details)
+
+
+@contextmanager
+def working(path: Path, *, on: date | None, today: date, by: str) -> Iterator[Work]:
+    """One unit of work: saved when the block ends well, else nothing is.
+
+    `on` is the day it happened, today when not said; it is entered today.
+    Raises: BadInput without initials, BadDate for a day to come, StoreTrouble.
+    """
+    initials(by)
+    happened = on or today
+    if happened > today:
+        raise BadDate(
+            f"{spell_day(happened)} is still to come: today is {spell_day(today)}.",
+            "Give the day it happened with --on.",
+        )
+    with writing(path) as session:
+        setting = session.get(House, "practice")
+        stamp = Stamp(happened, today, clock.now(), by)
+        yield Work(session, stamp, practice=setting is not None and setting.value == "yes")
+
+
+def initials(by: str) -> str:
+    """The initials, when there are any. Raises: BadInput."""
+    if not by.strip():
+        raise BadInput("Whose initials?", "Add --by T1, or set STOCKROOM_BY.")
+    return by.strip()
+
+
+def check_amount(line: Line, amount: Amount) -> Amount:
+    """The amount, when it is more than nothing and of the line's kind. Raises: BadAmount."""
+    check_kind(line, amount)
+    if amount.micro <= 0:
+        raise BadAmount(f"{format_amount(amount)} of {line.key} is nothing.", "How much was it?")
+    return amount
+
+
+def check_kind(line: Line, amount: Amount) -> None:
+    """Pass when the amount is of the line's kind. Raises: BadAmount."""
+    if amount.kind != line.kind:
+        raise BadAmount(
+            f"{line.key} is measured by {line.kind}, and {format_amount(amount)} is not.",
+            "Give it in g, cm³ or items, as on its label.",
+        )
+
+
+def check_at_hand(work: Work, bottle: Bottle) -> facts.Bottle:
+    """The bottle as seen, when it is on the shelf at all.
+
+    Raises: NotAllowed when it is gone or was not found.
+    """
+    seen = work.seen(bottle)
+    if seen.record.gone:
+        raise NotAllowed(
+            f"{bottle.number} is gone: {_last(work, bottle, EntryKind.DISCARDED)}.",
+            "Use another bottle.",
+        )
+    if seen.record.not_found:
+        raise NotAllowed(
+            f"{bottle.number} was not found: {_last(work, bottle, EntryKind.LOST)}."
+            " So it is found? Where?",
+            f"stockroom turned-up {bottle.number} --place …",
+        )
+    return seen
+
+
+def check_in_use(work: Work, bottle: Bottle) -> facts.Bottle:
+    """The bottle as seen, when it may be drawn from. Raises: NotAllowed, with the reason."""
+    seen = check_at_hand(work, bottle)
+    if seen.record.set_aside:
+        raise NotAllowed(
+            f"{bottle.number} is set aside: {seen.record.set_aside}.",
+            "Use another, or look at it and say whether it passed.",
+        )
+    return seen
+
+
+def _last(work: Work, bottle: Bottle, kind: EntryKind) -> str:
+    entries = [entry for entry in entries_of(work.session, bottle) if entry.kind == kind]
+    entry = entries[-1]
+    said = entry.reason or entry.note
+    return f"{spell_day(entry.happened_on)}, {entry.by}" + (f", {said}" if said else "")
+
+
+def doubts(work: Work, bottle: Bottle) -> tuple[str, ...]:
+    """One line when the bottle is not sound that day: worth knowing, and no reason to refuse."""
+    found = work.verdict(bottle)
+    if found.condition is Condition.SOUND:
+        return ()
+    return (f"{bottle.number} is {found.condition}: {found.decided_by}.",)

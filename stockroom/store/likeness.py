@@ -1,0 +1,29 @@
+"""The names most like one that nobody knows. Light: the reading side uses it too."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from stockroom.errors import UnknownName
+from stockroom.measure.reading import tidy
+
+
+def plain(text: str) -> str:
+    """A name as it is compared: spaces, look-alike characters and capitals settled."""
+    return tidy(text).casefold()
+
+
+def unknown(what: str, text: str, choices: Iterable[str]) -> UnknownName:
+    """The error for a name nobody knows, with the three nearest as its hint."""
+    near = nearest(text, choices)
+    hint = f"Nearest: {'; '.join(near)}." if near else f"There is no {what} at all yet."
+    return UnknownName(f'No {what} "{text.strip()}".', hint)
+
+
+def nearest(text: str, choices: Iterable[str]) -> list[str]:
+    """The three choices most like `text`, the likest first; ties by the alphabet."""
+    from rapidfuzz import fuzz, process
+
+    ordered = sorted(set(choices))
+    found = process.extract(plain(text), ordered, scorer=fuzz.WRatio, processor=plain, limit=3)
+    return [name for name, _, _ in found]

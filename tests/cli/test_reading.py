@@ -1,0 +1,113 @@
+"""The reading commands, on the practice college."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+import pytest
+
+if TYPE_CHECKING:
+    from pathlib import Path
+
+    from conftest import Stockroom
+
+READING = [
+    ("plan",),
+    ("fresh",),
+    ("past",),
+    ("usage",),
+    ("buying",),
+    ("why", "K15"),
+    ("ready", "K11"),
+    ("ready", "2027-03-23"),
+]
+
+
+@pytest.mark.parametrize("words", READING)
+def test_practice_is_said_on_the_first_line_and_in_json(
+    stockroom: Stockroom, practice: Path, words: tuple[str, ...]
+) -> None:
+    assert "PRACTICE" in stockroom(*words, store=practice).out.splitlines()[0]
+    assert stockroom(*words, "--json", store=practice).json["practice"] is True
+
+
+@pytest.mark.parametrize("words", READING)
+@pytest.mark.parametrize("columns", [60, 80])
+def test_lines_fit_the_terminal(
+    stockroom: Stockroom,
+    practice: Path,
+    monkeypatch: pytest.MonkeyPatch,
+    words: tuple[str, ...],
+    columns: int,
+) -> None:
+    if words[0] == "why":
+        pytest.skip("a reason is a line, however long: the terminal wraps it")
+    monkeypatch.setenv("COLUMNS", str(columns))
+    out = stockroom(*words, store=practice).out
+    assert max(map(len, out.splitlines())) <= columns
+
+
+def test_a_plan_with_shorts_is_still_a_plan(stockroom: Stockroom, practice: Path) -> None:
+    result = stockroom("plan", store=practice)
+    assert result.code == 0
+    assert "CANNOT BE DONE" in result.out
+
+
+def test_lithium_is_told_late_by_six_open_days(stockroom: Stockroom, practice: Path) -> None:
+    # scenario T26
+    (order,) = (
+        each
+        for each in stockroom("buying", "--json", store=practice).json["orders"]
+        if each["item"] == "lithium chloride"
+    )
+    assert (order["order_by"], order["late_by_open_days"]) == ("2026-12-11", 6)
+
+
+def test_strong_peroxide_for_k15_is_had_from_b02(stockroom: Stockroom, practice: Path) -> None:
+    # scenario T07
+    needs = stockroom("plan", "--json", store=practice).json["needs"]
+    (peroxide,) = (each for each in needs if each["ref"] == "K15.1")
+    assert peroxide["outcome"] == "have"
+    assert peroxide["from"] == [{"bottle": "B02", "amount": 180, "unit": "cm3"}]
+
+
+def test_a_period_narrows_what_is_made(stockroom: Stockroom, practice: Path) -> None:
+    words = ("fresh", "--from", "2027-01-25", "--to", "2027-01-29", "--json")
+    days = {make["on"] for make in stockroom(*words, store=practice).json["makes"]}
+    assert days
+    assert all("2027-01-18" <= day <= "2027-01-29" for day in days)
+
+
+def test_as_at_changes_what_is_past_and_needs_no_clock(
+    stockroom: Stockroom, practice: Path
+) -> None:
+    early = stockroom("past", "--as-at", "2026-12-20", "--json", store=practice).json
+    assert early["as_at"] == "2026-12-20"
+    assert "S09" not in [each["bottle"] for each in early["past"]]
+
+
+def test_not_ready_leaves_with_1_and_says_no_first(stockroom: Stockroom, practice: Path) -> None:
+    result = stockroom("ready", "K11", store=practice)
+    assert result.code == 1
+    assert result.out.startswith("NO: ")
+
+
+def test_ready_leaves_with_0_and_says_yes_first(stockroom: Stockroom, practice: Path) -> None:
+    result = stockroom("ready", "K19", store=practice)
+    assert (result.code, result.out[:3]) == (0, "YES")
+
+
+def test_why_takes_five_lines_or_fewer(stockroom: Stockroom, practice: Path) -> None:
+    for ref in ("K15", "K15.1", "K01.1", "S05", "lithium chloride"):
+        assert len(stockroom("why", ref, "--json", store=practice).json["reasons"]) <= 5
+
+
+def test_a_barred_acid_is_refused_with_its_reason(stockroom: Stockroom, practice: Path) -> None:
+    # scenario T32
+    out = stockroom("why", "K11", "--instead", "hydrochloric acid", store=practice).out
+    assert "refused" in out
+    assert "chlor" in out
+
+
+def test_the_same_question_gets_the_same_answer(stockroom: Stockroom, practice: Path) -> None:
+    assert stockroom("plan", store=practice).out == stockroom("plan", store=practice).out

@@ -1,0 +1,85 @@
+from __future__ import annotations
+
+import shlex
+
+import pytest
+import typer
+
+from stockroom.cli.main import app, value_options
+from stockroom.cli.shared import Shared, pull
+from stockroom.errors import BadInput
+
+OPTIONS = {"draw": frozenset({"--note", "--for"}), "plan": frozenset({"--from"})}
+
+
+def pulled(line: str) -> tuple[Shared, list[str]]:
+    return pull(shlex.split(line), OPTIONS)
+
+
+@pytest.mark.parametrize(
+    "line",
+    [
+        "--store a.sqlite --as-at 2027-01-04 --json plan --from 2027-01-25",
+        "plan --from 2027-01-25 --store a.sqlite --as-at 2027-01-04 --json",
+        "--json plan --store=a.sqlite --from 2027-01-25 --as-at=2027-01-04",
+    ],
+)
+def test_shared_options_may_stand_anywhere(line: str) -> None:
+    shared, left = pulled(line)
+    assert shared == Shared(store="a.sqlite", as_at="2027-01-04", json=True)
+    assert left == ["plan", "--from", "2027-01-25"]
+
+
+@pytest.mark.parametrize("value", ["--json", "--by", "--store=x"])
+def test_the_value_of_an_option_is_never_taken_for_a_shared_one(value: str) -> None:
+    shared, left = pulled(f"draw S05 200cm3 --note {value}")
+    assert shared == Shared()
+    assert left == ["draw", "S05", "200cm3", "--note", value]
+
+
+def test_only_the_options_of_the_command_named_take_values() -> None:
+    assert pulled("plan --note --json")[0].json
+
+
+def test_a_later_word_does_not_name_another_command() -> None:
+    shared, _ = pulled("draw plan --from --json")
+    assert shared.json
+
+
+def test_nothing_after_two_dashes_is_touched() -> None:
+    shared, left = pulled("draw -- S05 --json")
+    assert (shared.json, left) == (False, ["draw", "--", "S05", "--json"])
+
+
+@pytest.mark.parametrize("line", ["plan --store", "plan --as-at", "plan --by --json", "--store="])
+def test_a_missing_value_is_asked_for(line: str) -> None:
+    with pytest.raises(BadInput, match="after it"):
+        pulled(line)
+
+
+def test_two_different_stores_are_refused_and_both_quoted() -> None:
+    with pytest.raises(BadInput, match=r"'a'.*'b'"):
+        pulled("plan --store a --store b")
+
+
+def test_the_same_store_twice_is_no_trouble() -> None:
+    assert pulled("--store a plan --store a")[0].store == "a"
+
+
+def test_an_amount_below_zero_stays_one_word() -> None:
+    assert pulled("draw S05 '-5 cm3'")[1] == ["draw", "S05", " -5 cm3"]
+
+
+def test_initials_come_from_the_line_before_the_environment(
+    monkeypatch: pytest.MonkeyPatch,
+) -> None:
+    monkeypatch.setenv("STOCKROOM_BY", "T2")
+    assert Shared(by="T1").initials == "T1"
+    assert Shared().initials == "T2"
+
+
+def test_the_value_options_are_read_off_the_commands_themselves() -> None:
+    options = value_options(typer.main.get_command(app))
+    assert {"--for", "--on"} <= options["draw"]
+    assert "--sure" not in options["found"]
+    assert not {"--good", "--bad"} & options["look"]
