@@ -2,6 +2,7 @@
 
     practice    the store of the invented college, built once and only read
     own         a copy of it, for one test to write in
+    term        its plan for the term, as at 2027-01-04
     stockroom   runs a command in this process and gives back what it printed
 
 A typed test names the last one with `if TYPE_CHECKING: from conftest import Stockroom`.
@@ -17,11 +18,15 @@ import shutil
 import sys
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
+from datetime import date
 from pathlib import Path
-from typing import Any, Protocol
+from typing import TYPE_CHECKING, Any, Protocol
 
 import pytest
 from hypothesis import settings
+
+if TYPE_CHECKING:
+    from stockroom.planning.decisions import Plan
 
 # a busy machine is slow now and then, and no test here is about time
 settings.register_profile("stockroom", deadline=None)
@@ -71,6 +76,14 @@ def practice(tmp_path_factory: pytest.TempPathFactory) -> Iterator[Path]:
 def own(practice: Path, tmp_path: Path) -> Path:
     """The path of a copy of the practice store that this test alone may change."""
     return Path(shutil.copy(practice, tmp_path / "own.sqlite"))
+
+
+@pytest.fixture(scope="session")
+def term(practice: Path) -> Plan:
+    """The college's plan for the whole term, as at its first day, 2027-01-04."""
+    from stockroom.service.plan import term_plan
+
+    return term_plan(practice, as_at=date(2027, 1, 4))
 
 
 @pytest.fixture

@@ -8,7 +8,7 @@ from typing import Annotated
 import typer
 
 from stockroom.cli.printing import show, show_done, suggest, width
-from stockroom.cli.shared import of
+from stockroom.cli.shared import Shared, of
 from stockroom.errors import BadInput
 
 
@@ -28,7 +28,9 @@ def demo(ctx: typer.Context) -> None:
     make_practice(path)
     answer = term_plan(path, as_at=day_for(path, shared.given_day))
     show(shared, lambda: plan_text(answer, width()), lambda: plan_json(answer))
-    suggest("stockroom why K15 (the practice store is kept until the next demo)")
+    # a house of one's own is opened before the practice one, so then the place must be said
+    named = "" if Shared().path == path else f"--store {path} "
+    suggest(f"stockroom {named}why K15")
 
 
 def new(

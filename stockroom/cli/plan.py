@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from datetime import date
-from typing import TYPE_CHECKING, Annotated
+from typing import Annotated, TypedDict
 
 import typer
 
@@ -11,9 +11,6 @@ from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared, of
 from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
-
-if TYPE_CHECKING:
-    from stockroom.planning.decisions import Plan
 
 From = Annotated[
     str | None,
@@ -31,9 +28,10 @@ def plan(ctx: typer.Context, start: From = None, end: To = None) -> None:
     """
     from stockroom.reports.json_plan import plan_json
     from stockroom.reports.plan_text import plan_text
+    from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    answer = _planned(shared, start, end)
+    answer = term_plan(shared.path, **_asked(shared, start, end))
     show(shared, lambda: plan_text(answer, width()), lambda: plan_json(answer))
 
 
@@ -44,9 +42,10 @@ def fresh(ctx: typer.Context, start: From = None, end: To = None) -> None:
     """
     from stockroom.reports.json_plan import fresh_json
     from stockroom.reports.makes_text import fresh_text
+    from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    answer = _planned(shared, start, end)
+    answer = term_plan(shared.path, **_asked(shared, start, end))
     show(shared, lambda: fresh_text(answer, width()), lambda: fresh_json(answer))
 
 
@@ -76,9 +75,10 @@ def usage(ctx: typer.Context, start: From = None, end: To = None) -> None:
     """
     from stockroom.reports.json_plan import usage_json
     from stockroom.reports.usage_text import usage_text
+    from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    answer = _planned(shared, start, end)
+    answer = term_plan(shared.path, **_asked(shared, start, end))
     show(shared, lambda: usage_text(answer, width()), lambda: usage_json(answer))
 
 
@@ -89,9 +89,10 @@ def buying(ctx: typer.Context) -> None:
     """
     from stockroom.reports.buying_text import buying_text
     from stockroom.reports.json_plan import buying_json
+    from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    answer = _planned(shared, None, None)
+    answer = term_plan(shared.path, as_at=shared.today)
     show(shared, lambda: buying_text(answer, width()), lambda: buying_json(answer))
 
 
@@ -148,14 +149,15 @@ def why(
     )
 
 
-def _planned(shared: Shared, start: str | None, end: str | None) -> Plan:
-    from stockroom.service.plan import term_plan
+class _Asked(TypedDict):
+    as_at: date
+    start: date | None
+    end: date | None
 
+
+def _asked(shared: Shared, start: str | None, end: str | None) -> _Asked:
+    """The day to look from and the period. Raises: BadDate; BadInput when it runs backwards."""
     first, last = day_or_none(start, "--from"), day_or_none(end, "--to")
-    _in_order(first, last)
-    return term_plan(shared.path, as_at=shared.today, start=first, end=last)
-
-
-def _in_order(first: date | None, last: date | None) -> None:
     if first and last and last < first:
         raise BadInput(f"--to {last} is before --from {first}.", "Turn them round.")
+    return _Asked(as_at=shared.today, start=first, end=last)

@@ -8,7 +8,6 @@ from pathlib import Path
 from stockroom.errors import BadAmount, BadInput, NotAllowed
 from stockroom.keeping.rules import RuleKind
 from stockroom.measure.days import spell_day
-from stockroom.measure.formats import format_strength
 from stockroom.measure.strengths import Strength
 from stockroom.service.answers import Done
 from stockroom.service.work import Work, check_at_hand, working
@@ -49,10 +48,10 @@ def found(
             raise BadAmount(
                 f'"{strength.text}" cannot be set beside {line.key}.', f"Give it in {line.unit}."
             )
-        _check_usual(line, value, sure=sure)
+        _check_usual(line, strength, value, sure=sure)
         event = Event(EntryKind.FOUND, strength=value, strength_text=strength.text)
         entry = work.write(checked, event)
-        text = f"{work.called(checked)} found {format_strength(value, unit)}, {spell_day(work.on)}."
+        text = f"{work.called(checked)} found {strength.text}, {spell_day(work.on)}."
         return work.done(
             text,
             checked,
@@ -62,13 +61,12 @@ def found(
         )
 
 
-def _check_usual(line: Line, value: float, *, sure: bool) -> None:
+def _check_usual(line: Line, strength: Strength, value: float, *, sure: bool) -> None:
     if sure or not line.strength:
         return
     if abs(value - line.strength) > UNUSUAL * line.strength:
         raise NotAllowed(
-            f"Unusual: {format_strength(value, line.unit)} against"
-            f" {format_strength(line.strength, line.unit)}.",
+            f"Unusual: {strength.text} against {line.strength_text}.",
             "Check the units, or confirm with --sure.",
         )
 

@@ -20,7 +20,7 @@ HOUSE = "house"
 
 
 def seeds_folder() -> Path:
-    """Where the tables that travel with the program are: in a wheel, else in the checkout."""
+    """Where the tables that travel with the program are: inside it, else beside it."""
     package = Path(__file__).resolve().parent.parent
     inside = package / "seeds_data"
     return inside if inside.is_dir() else package.parent / "seeds_data"

@@ -176,9 +176,9 @@ def _write(
     details: list[str] = []
     for source in chosen:
         row = work.bottle(source.bottle.number)
-        details += open_if_sealed(work, row)
         note = made_note(bottle.number)
-        take(work, row, Event(EntryKind.DRAWN, change=-source.amount, note=note))
+        drawn = take(work, row, Event(EntryKind.DRAWN, change=-source.amount, note=note))
+        details += open_if_sealed(work, row, drawn)
         details.append(f"Took {source.words}.")
         _link(work, bottle, row)
     place_id = work.place_id(place) if place else None

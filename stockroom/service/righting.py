@@ -7,7 +7,7 @@ from stockroom.measure.days import spell_day
 from stockroom.service.work import Work
 from stockroom.store.history import children, noted, undone_by
 from stockroom.store.kinds import BEGINNINGS, EntryKind
-from stockroom.store.ledger import Event, entries_of, evening_note, made_note
+from stockroom.store.ledger import Event, entries_of, evening_note, made_note, opened_note
 from stockroom.store.tables import Bottle, Entry
 
 
@@ -18,7 +18,9 @@ def standing(work: Work, number: int) -> Entry:
     """
     entry = work.session.get(Entry, number)
     if entry is None:
-        raise UnknownName(f"No entry {number} in the ledger.", "stockroom why BOTTLE lists them.")
+        raise UnknownName(
+            f"No entry {number} in the ledger.", "Each answer ends with the number of its entry."
+        )
     if entry.kind == EntryKind.PUT_RIGHT:
         raise NotAllowed(
             f"Entry {number} is a putting-right itself.", "Enter what really happened instead."
@@ -53,7 +55,22 @@ def reverse(work: Work, wrong: Entry, reason: str) -> Entry:
 
 
 def with_it(work: Work, bottle: Bottle, wrong: Entry) -> list[Entry]:
-    """What was written only because of an entry: the draws of a make, a count's evenings."""
-    notes = {EntryKind.MADE: made_note(bottle.number), EntryKind.COUNTED: evening_note(wrong.id)}
+    """What was written only because of an entry.
+
+    The draws of a make, the opening a draw implied, what evened out an earlier count.
+    """
+    notes = {
+        EntryKind.MADE: made_note(bottle.number),
+        EntryKind.DRAWN: opened_note(wrong.id),
+        EntryKind.COUNTED: evening_note(wrong.id),
+    }
     note = notes.get(EntryKind(wrong.kind))
+    if wrong.kind == EntryKind.DRAWN and _drawn_again(work, bottle, wrong):
+        # another draw needs it open, whoever opened it
+        return []
     return noted(work.session, note) if note else []
+
+
+def _drawn_again(work: Work, bottle: Bottle, wrong: Entry) -> bool:
+    entries = entries_of(work.session, bottle)
+    return any(e.kind == EntryKind.DRAWN and e.id != wrong.id for e in entries)

@@ -58,7 +58,7 @@ def arrive(
     if not 1 <= count <= MOST_AT_ONCE:
         raise BadInput(f"{count} bottles?", f"Give 1 to {MOST_AT_ONCE}.")
     with working(path, on=on, today=today, by=by) as work:
-        found = names.find_line(work.session, line)
+        found = names.find_line(work.session, line, kind=size.kind)
         check_amount(found, size)
         event = Event(
             EntryKind.ARRIVED, change=size.micro, place_id=work.place_id(place), note=note
@@ -160,8 +160,9 @@ def draw(
         if served is not None:
             check_not_barred(work, found, served)
         number = served.number if served else ""
-        details = (*open_if_sealed(work, found), *doubts(work, found))
+        doubtful = doubts(work, found)
         entry = take(work, found, Event(EntryKind.DRAWN, change=-amount.micro, booking=number))
+        details = (*open_if_sealed(work, found, entry), *doubtful)
         text = f"Drew {format_amount(amount)} from {work.called(found)}; {_remains(work, found)}."
         return work.done(text, found, entry, details=details)
 

@@ -6,7 +6,7 @@ from stockroom.errors import NotAllowed, NotEnough
 from stockroom.measure.days import spell_day
 from stockroom.service.work import Work
 from stockroom.store.kinds import EntryKind
-from stockroom.store.ledger import Event, entries_of
+from stockroom.store.ledger import Event, entries_of, opened_note
 from stockroom.store.names import substance_of
 from stockroom.store.snapshot_lines import recipes_of
 from stockroom.store.tables import Booking, Bottle, Entry, Recipe
@@ -36,11 +36,11 @@ def opening_of(work: Work, bottle: Bottle) -> Entry | None:
     return next(opened, None)
 
 
-def open_if_sealed(work: Work, bottle: Bottle) -> tuple[str, ...]:
+def open_if_sealed(work: Work, bottle: Bottle, drawn: Entry) -> tuple[str, ...]:
     """Write the opening that a draw from a sealed bought bottle implies, and say so."""
     if bottle.made_here or opening_of(work, bottle) is not None:
         return ()
-    work.write(bottle, Event(EntryKind.OPENED, note="by the first draw"))
+    work.write(bottle, Event(EntryKind.OPENED, note=opened_note(drawn.id)))
     return (f"{bottle.number} was sealed: opened {spell_day(work.on)}.",)
 
 

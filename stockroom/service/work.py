@@ -91,7 +91,9 @@ class Work:
         details: tuple[str, ...] = (),
     ) -> Done:
         """What was saved, as the answer to whoever asked."""
-        return Done(text, bottle.number, entry.id, following, self.practice, details)
+        # the number is what put-right asks for, should this prove a slip
+        told = f"{text} Entry {entry.id}."
+        return Done(told, bottle.number, entry.id, following, self.practice, details)
 
 
 @contextmanager

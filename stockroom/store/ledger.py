@@ -178,6 +178,11 @@ def made_note(number: str) -> str:
     return f"into {number}"
 
 
+def opened_note(draw_id: int | None) -> str:
+    """The note on an opening nobody entered: a sealed bottle was drawn from."""
+    return f"by the draw of entry {draw_id}"
+
+
 def evening_note(count_id: int | None) -> str:
     """The note on the entry that keeps an earlier count true."""
     return f"keeps the count of entry {count_id} as it was"

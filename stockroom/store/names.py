@@ -33,12 +33,13 @@ _MOST_LISTED = 8
 _BARE_NUMBER = re.compile(r"[0-9]+([.,][0-9]+)?")
 
 
-def find_line(session: Session, text: str) -> Line:
+def find_line(session: Session, text: str, *, kind: str = "") -> Line:
     """The stock line a name, with or without a strength, stands for: "hypo 0.1 M", "KI 0.100".
 
+    `kind` settles a name that could be a solid or its solution, where an amount tells.
     Raises: UnknownName with the nearest three; BadInput listing the choices when several fit.
     """
-    return Lines(session).find(text)
+    return Lines(session).find(text, kind=kind)
 
 
 class Lines:
@@ -63,7 +64,7 @@ class Lines:
         for name in self._names(line):
             self._named.setdefault(name, []).append(line)
 
-    def find(self, text: str) -> Line:
+    def find(self, text: str, *, kind: str = "") -> Line:
         """As `find_line`."""
         exact = self._lines.get(plain(text))
         if exact is not None:
@@ -74,8 +75,8 @@ class Lines:
             named = self._named.get(_spelt(" ".join(words[:end])), [])
             fitting = self._at_strength(named, " ".join(words[end:]))
             if fitting:
-                return _only(text, fitting)
-        return self._by_part(text)
+                return _only(text, fitting, kind)
+        return self._by_part(text, kind)
 
     def _names(self, line: Line) -> list[str]:
         substance = self._substance(line)
@@ -116,13 +117,13 @@ class Lines:
         # labels are written to three figures, so half a part in a thousand is the same strength
         return abs(asked.value - line.strength) <= 5e-4 * line.strength
 
-    def _by_part(self, text: str) -> Line:
+    def _by_part(self, text: str, kind: str) -> Line:
         part = plain(text)
         fitting = [line for key, line in self._lines.items() if part and part in key]
         if not fitting:
             names = {line.key for line in self._lines.values()}
             raise unknown("stock line", text, names)
-        return _only(text, fitting)
+        return _only(text, fitting, kind)
 
 
 def _spelt(name: str) -> str:
@@ -130,7 +131,8 @@ def _spelt(name: str) -> str:
     return re.sub(r"[*.](?=[0-9]*H2O)", "·", tidy(name)).casefold()
 
 
-def _only(text: str, fitting: list[Line]) -> Line:
+def _only(text: str, fitting: list[Line], kind: str) -> Line:
+    fitting = [line for line in fitting if line.kind == kind] or fitting
     if len(fitting) == 1:
         return fitting[0]
     items = [line for line in fitting if plain(line.item) == plain(text)]
@@ -200,7 +202,8 @@ def find_recipe(session: Session, text: str, version: int | None = None) -> Reci
         raise UnknownName(
             f"{named[0].recipe} has no version {version}.", f"The newest is {named[0].version}."
         )
-    raise unknown("recipe", text, (f"{row.recipe} {row.title}" for row in rows))
+    codes, titles = {row.recipe for row in rows}, {row.title for row in rows}
+    raise unknown("recipe", text, codes | titles)
 
 
 def _by_column(

@@ -100,7 +100,7 @@ TABLE = [
     ("draw B28 1g" + BY, 1, "B28"),
     ("open B01" + BY, 1, "B01"),
     ('make "ammoniacal silver" 100cm3' + BY, 1, "never kept"),
-    ('found S02 "0.2 mol/dm3"' + BY, 1, "0.2 mol/dm³"),
+    ('found S02 "0.2 mol/dm3"' + BY, 1, "0.2 mol/dm"),
     (BOOKED + " --on 2027-02-16 --at 09:15 --groups 12 --dept CH", 1, "2027"),
     # strengths
     ('found S02 "0.1 %"' + BY, 2, "0.1 %"),

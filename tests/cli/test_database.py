@@ -16,12 +16,13 @@ def test_the_demo_makes_a_store_and_prints_its_plan(stockroom: Stockroom, tmp_pa
     assert result.code == 0
     assert result.out.splitlines()[0] == "PRACTICE"
     assert "Plan as at Mon 2027-01-04" in result.out
-    assert "next: stockroom why K15" in result.err
+    assert f"next: stockroom --store {store} why K15" in result.err
     assert store.exists()
 
 
 def test_the_demo_needs_no_store_named_and_reading_finds_it(stockroom: Stockroom) -> None:
     demo = stockroom("demo", "--json")
+    assert demo.err == "next: stockroom why K15\n"
     assert demo.json == stockroom("plan", "--json").json
 
 

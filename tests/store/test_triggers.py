@@ -1,0 +1,69 @@
+"""The ledger refuses, in the database itself, to be altered, shortened or overdrawn."""
+
+from __future__ import annotations
+
+import sqlite3
+from collections.abc import Iterator
+from pathlib import Path
+
+import pytest
+
+NEW = (
+    "INSERT INTO entry (bottle_id, kind, happened_on, entered_on, entered_at, by, change,"
+    " strength_text, reason, note, booking, puts_right) VALUES"
+    " (:bottle, :kind, '2027-01-04', '2027-01-04', '', 'T1', :change, '', '', '', '', :right)"
+)
+
+
+@pytest.fixture
+def raw(own: Path) -> Iterator[sqlite3.Connection]:
+    connection = sqlite3.connect(own)
+    yield connection
+    connection.close()
+
+
+def bottle(raw: sqlite3.Connection, number: str) -> int:
+    return int(raw.execute("SELECT id FROM bottle WHERE number = ?", (number,)).fetchone()[0])
+
+
+@pytest.mark.parametrize(
+    "statement",
+    [
+        "UPDATE entry SET change = 0 WHERE id = 1",
+        "UPDATE entry SET by = 'T9'",
+        "DELETE FROM entry WHERE id = 1",
+        "DELETE FROM bottle WHERE id = 1",
+        "INSERT OR REPLACE INTO entry SELECT * FROM entry WHERE id = 1",
+    ],
+)
+def test_the_ledger_refuses(raw: sqlite3.Connection, statement: str) -> None:
+    with pytest.raises(sqlite3.IntegrityError, match="^KEPT "):
+        raw.execute(statement)
+
+
+@pytest.mark.parametrize("statement", ["UPDATE booking_change SET by = ''", "DELETE FROM booking_change"])
+def test_the_record_of_a_booking_refuses(raw: sqlite3.Connection, statement: str) -> None:
+    raw.execute(
+        "INSERT INTO booking_change (booking_id, entered_on, entered_at, by, what, before, after)"
+        " VALUES (1, '2027-01-04', '', 'T1', 'groups', '8', '9')"
+    )
+    with pytest.raises(sqlite3.IntegrityError, match="^KEPT "):
+        raw.execute(statement)
+
+
+def test_a_draw_beyond_the_balance_is_refused(raw: sqlite3.Connection) -> None:
+    held = {"bottle": bottle(raw, "S13"), "kind": "drawn", "right": None}
+    raw.execute(NEW, {**held, "change": -130_000})
+    with pytest.raises(sqlite3.IntegrityError, match="^NOTENOUGH "):
+        raw.execute(NEW, {**held, "change": -1})
+
+
+def test_an_entry_is_put_right_once(raw: sqlite3.Connection) -> None:
+    values = {"bottle": bottle(raw, "S13"), "kind": "put right", "change": 0, "right": 1}
+    raw.execute(NEW, values)
+    with pytest.raises(sqlite3.IntegrityError, match="once"):
+        raw.execute(NEW, values)
+
+
+def test_other_rows_may_still_be_altered(raw: sqlite3.Connection) -> None:
+    assert raw.execute("UPDATE booking SET groups = 13 WHERE number = 'K06'").rowcount == 1
