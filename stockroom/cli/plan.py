@@ -42,10 +42,10 @@ def fresh(ctx: typer.Context, start: From = None, end: To = None) -> None:
     """
     from stockroom.reports.json_plan import fresh_json
     from stockroom.reports.makes_text import fresh_text
-    from stockroom.service.plan import term_plan
+    from stockroom.service.plan import to_make
 
     shared = of(ctx)
-    answer = term_plan(shared.path, **_asked(shared, start, end))
+    answer = to_make(shared.path, **_asked(shared, start, end))
     show(shared, lambda: fresh_text(answer, width()), lambda: fresh_json(answer))
 
 

@@ -9,11 +9,9 @@ Chemistry 2e, section 12.4 (CC BY).
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable
 from datetime import date, timedelta
 
 from stockroom.errors import BadAmount
-from stockroom.keeping.record import Stay
 from stockroom.keeping.rules import Law
 
 DAYS_PER_MONTH = 30.4375
@@ -58,26 +56,6 @@ def days_until(start: float, lowest: float, law: Law) -> float:
     if law.order == 1:
         return math.log(start / lowest) / law.rate
     return (1.0 / lowest - 1.0 / start) / law.rate
-
-
-def equivalent_days(
-    law: Law, stays: Iterable[Stay], since: date, until: date, default_c: float | None = None
-) -> float:
-    """Days at the law's own temperature that the stays between two dates amount to.
-
-    Each stretch counts its days times `warmth`. Before the first stay, and
-    where a place has no temperature, `default_c` (None: the law's own) is used.
-    """
-    if until <= since:
-        return 0.0
-    total, day, temperature = 0.0, since, default_c
-    for stay in sorted(stays, key=lambda stay: stay.since):
-        if stay.since <= day:
-            temperature = stay.temperature_c
-        elif stay.since < until:
-            total += (stay.since - day).days * warmth(law, temperature)
-            day, temperature = stay.since, stay.temperature_c
-    return total + (until - day).days * warmth(law, temperature)
 
 
 def falls_below(

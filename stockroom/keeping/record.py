@@ -64,4 +64,12 @@ class Record:
     @property
     def undated(self) -> bool:
         """True when neither received, made nor looked at: nothing to count a life from."""
-        return not (self.received or self.made or any(check.passed for check in self.checks))
+        return self.undated_on(date.max)
+
+    def undated_on(self, day: date) -> bool:
+        """The same, as far as anybody knew on that day."""
+        return not (self.received or self.made or self.first_passed(day))
+
+    def first_passed(self, until: date) -> date | None:
+        """The day of the first passed check up to and including `until`, if any."""
+        return min((c.on for c in self.checks if c.passed and c.on <= until), default=None)

@@ -88,11 +88,15 @@ class Rule:
     source: str = ""
 
     def holds_for(self, strength: float | None, temperature_c: float | None) -> bool:
-        """True when this rule speaks of a bottle of that nominal strength in that place."""
+        """True when this rule speaks of a bottle of that nominal strength in that place.
+
+        Nobody knows how warm an unknown place is, so the rules for cold and for
+        warm ones both hold there, and the shorter life decides.
+        """
         if strength is not None and not _within(strength, self.above, self.upto):
             return False
         if temperature_c is None:
-            return self.colder_than is None and self.warmer_than is None
+            return True
         cold_enough = self.colder_than is None or temperature_c <= self.colder_than
         warm_enough = self.warmer_than is None or temperature_c > self.warmer_than
         return cold_enough and warm_enough

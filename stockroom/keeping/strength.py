@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from datetime import date
 
-from stockroom.keeping.laws import equivalent_days, strength_after
+from stockroom.keeping.laws import strength_after, warmth
 from stockroom.keeping.record import Check, CheckKind, Record
 from stockroom.keeping.rules import Origin, Rule, RuleKind
 
@@ -35,12 +35,16 @@ class Strengths:
 def last_check(record: Record, on: date, *kinds: CheckKind) -> Check | None:
     """The latest passed check of these kinds up to and including `on`, if any."""
     done = [c for c in record.checks if c.kind in kinds and c.on <= on and c.passed]
-    return max(done, key=lambda check: check.on) if done else None
+    # of two on one day the one entered later counts, and max keeps the first it meets
+    return max(reversed(done), key=lambda check: check.on) if done else None
 
 
 def law_of(record: Record, rules: tuple[Rule, ...], on: date) -> Rule | None:
     """The fading rule that speaks of this bottle on that day, if any."""
-    place = temperature_on(record, on)
+    return _law_at(record, rules, temperature_on(record, on))
+
+
+def _law_at(record: Record, rules: tuple[Rule, ...], place: float | None) -> Rule | None:
     for rule in rules:
         if rule.kind is RuleKind.FADES and rule.holds_for(record.nominal, place):
             return rule
@@ -53,13 +57,28 @@ def temperature_on(record: Record, on: date) -> float | None:
     return max(here, key=lambda stay: stay.since).temperature_c if here else None
 
 
-def origin_day(record: Record, origin: Origin) -> date | None:
-    """The day a period from this origin is counted from; None when it has not happened."""
-    if origin is Origin.OPENED:
-        return record.opened
-    if origin is Origin.MADE:
-        return record.made
-    return record.received or record.made
+def stretches(record: Record, on: date) -> list[tuple[date, date, float | None]]:
+    """(from, to, °C) of every place it has stood in up to a day, in order."""
+    stays = sorted((stay for stay in record.stays if stay.since <= on), key=lambda s: s.since)
+    starts = [date.min, *(stay.since for stay in stays)]
+    places = [None, *(stay.temperature_c for stay in stays)]
+    return list(zip(starts, [*starts[1:], on], places, strict=True))
+
+
+def origin_day(record: Record, origin: Origin, on: date) -> date | None:
+    """The day a period from this origin is counted from; None when it has not happened.
+
+    A bottle neither received nor made on a known day counts from its first
+    passed check up to `on`: somebody who looked at it gave it its date.
+    """
+    known = {
+        Origin.OPENED: record.opened,
+        Origin.MADE: record.made,
+        Origin.RECEIVED: record.received or record.made,
+    }[origin]
+    if known or record.received or record.made:
+        return known
+    return record.first_passed(on)
 
 
 def strengths_on(record: Record, rules: tuple[Rule, ...], on: date) -> Strengths:
@@ -77,11 +96,13 @@ def strengths_on(record: Record, rules: tuple[Rule, ...], on: date) -> Strengths
 def _carried(
     record: Record, rules: tuple[Rule, ...], on: date, start: float, found_on: date | None
 ) -> float:
-    rule = law_of(record, rules, on)
-    if rule is None or rule.law is None:
-        return start
-    since = origin_day(record, rule.origin)
-    if since is None:
-        return start
-    begun = max(since, found_on) if found_on else since
-    return strength_after(start, rule.law, equivalent_days(rule.law, record.stays, begun, on))
+    """Stay by stay, each under the rule for its own place: moving never gives strength back."""
+    strength = start
+    for first, last, place in stretches(record, on):
+        rule = _law_at(record, rules, place)
+        since = origin_day(record, rule.origin, on) if rule else None
+        if rule is None or rule.law is None or since is None:
+            continue
+        days = (last - max(first, since, found_on or since)).days * warmth(rule.law, place)
+        strength = strength_after(strength, rule.law, days)
+    return strength

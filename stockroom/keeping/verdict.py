@@ -19,9 +19,13 @@ from stockroom.keeping.strength import (
     last_check,
     origin_day,
     strengths_on,
+    stretches,
     temperature_on,
 )
 from stockroom.measure.periods import add, format_period
+
+# a life split over two stays at one temperature must come out a whole one
+_SLACK = 1e-9
 
 WEAK_BELOW = 0.80
 """A bottle is weak below this part of its label strength: outside even "rough"."""
@@ -90,7 +94,7 @@ def verdict(
     """
     strengths = strengths_on(record, rules, on)
     limits = limits_of(record, rules, on, purpose)
-    unusable = _out_of_use(record)
+    unusable = _out_of_use(record, on)
     if unusable:
         looks = unusable[0] is Condition.NO_DATE and not any(limit.until < on for limit in limits)
         return Verdict(unusable[0], None, unusable[1], strengths, look_would_do=looks)
@@ -129,19 +133,19 @@ def limits_of(
         asked = rule.purpose is Purpose.ANY or rule.purpose is purpose
         dated = _DATED.get(rule.kind)
         if dated and asked and rule.holds_for(record.nominal, place):
-            limit = dated(record, rule, on, place)
+            limit = dated(record, rule, on)
             limits += [limit] if limit else []
     return limits
 
 
-def _out_of_use(record: Record) -> tuple[Condition, str] | None:
+def _out_of_use(record: Record, on: date) -> tuple[Condition, str] | None:
     if record.gone:
         return Condition.GONE, "discarded"
     if record.not_found:
         return Condition.NOT_FOUND, "not found when last looked for"
     if record.set_aside:
         return Condition.SET_ASIDE, record.set_aside
-    if record.undated:
+    if record.undated_on(on):
         return Condition.NO_DATE, "no date on it: needs a look"
     return None
 
@@ -160,78 +164,97 @@ def _printed(record: Record) -> Limit:
     return Limit(record.printed.day, words)
 
 
-def _life(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
-    since = origin_day(record, rule.origin)
+def _life(record: Record, rule: Rule, on: date) -> Limit | None:
+    since = origin_day(record, rule.origin, on)
     if since is None or rule.lasts is None:
         return None
     guessed = rule.origin is Origin.OPENED and record.opened_guessed
     words = f"{rule.origin} {_day(since)}{' (guessed)' if guessed else ''}"
-    return _counted(words, since, rule, place)
+    return _counted(record, rule, on, since, words)
 
 
-def _same_day(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+def _same_day(record: Record, rule: Rule, on: date) -> Limit | None:
     made = record.made
     return Limit(made, f"made {_day(made)}, same day only", rule.safety) if made else None
 
 
-def _recheck(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+def _recheck(record: Record, rule: Rule, on: date) -> Limit | None:
     found = last_check(record, on, CheckKind.FOUND)
-    return _from_check(record, rule, _on(found), "found", place, known=True)
+    return _from_check(record, rule, on, found, known=True)
 
 
-def _look(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+def _look(record: Record, rule: Rule, on: date) -> Limit | None:
     # a titration is at least as good as a look: the house counts from either
     seen = last_check(record, on, CheckKind.LOOKED, CheckKind.FOUND)
-    limit = _from_check(record, rule, _on(seen), seen.kind if seen else "", place)
+    limit = _from_check(record, rule, on, seen)
     return limit and replace(limit, by_look=True)
 
 
-def _test(record: Record, rule: Rule, on: date, place: float | None) -> Limit | None:
+def _never(record: Record, rule: Rule, on: date) -> Limit | None:
+    # used on the day it is mixed or not at all; with no day known it is past already
+    since = record.made or record.received or record.opened
+    until = since or on - timedelta(days=1)
+    return Limit(until, f"made {_day(since)}, never kept" if since else "never kept", safety=True)
+
+
+def _test(record: Record, rule: Rule, on: date) -> Limit | None:
     tested = last_check(record, on, CheckKind.TESTED)
-    limit = _from_check(record, rule, _on(tested), "tested", place)
+    if not tested and not (record.received or record.made or record.opened):
+        # a look dates other things, but how old a peroxide-former is it cannot say
+        words = "nothing says when it was opened, test or discard"
+        return Limit(on - timedelta(days=1), words, safety=True)
+    limit = _from_check(record, rule, on, tested)
     return limit and Limit(limit.until, f"{limit.because}, test or discard", safety=True)
 
 
-def _on(check: Check | None) -> date | None:
-    return check.on if check else None
-
-
 def _from_check(
-    record: Record,
-    rule: Rule,
-    checked: date | None,
-    how: str,
-    place: float | None,
-    *,
-    known: bool = False,
+    record: Record, rule: Rule, on: date, check: Check | None, *, known: bool = False
 ) -> Limit | None:
-    begun = origin_day(record, rule.origin)
-    since = checked or begun
+    since = check.on if check else origin_day(record, rule.origin, on)
     if since is None or rule.lasts is None:
         return None
-    words = f"{how} {_day(since)}" if checked else f"{rule.origin} {_day(since)}, not checked since"
-    return _counted(words, since, rule, place, known=known)
+    how = f"{check.kind if check else rule.origin} {_day(since)}"
+    return _counted(record, rule, on, since, how if check else f"{how}, not checked since", known)
 
 
 def _counted(
-    words: str, since: date, rule: Rule, place: float | None, *, known: bool = False
+    record: Record, rule: Rule, on: date, since: date, words: str, known: bool = False
 ) -> Limit:
     assert rule.lasts is not None
     until = add(since, rule.lasts)
     words = f"{words} + {format_period(rule.lasts)}"
-    if rule.at_c is not None and rule.factor_per_10c and place is not None and place != rule.at_c:
-        scale = rule.factor_per_10c ** ((place - rule.at_c) / 10.0)
-        until = since + timedelta(days=int((until - since).days / scale))
-        words += f" at {rule.at_c:g} °C, {(until - since).days} d at {place:g} °C"
-    return Limit(until, words, rule.safety, known_until=known)
+    here = temperature_on(record, on)
+    warmed = _warmed(record, rule, on, since, until)
+    if warmed != until and here is not None:
+        words += f" at {rule.at_c:g} °C, {(warmed - since).days} d at {here:g} °C"
+    return Limit(warmed, words, rule.safety, known_until=known)
 
 
-_DATED: dict[RuleKind, Callable[[Record, Rule, date, float | None], Limit | None]] = {
+def _warmed(record: Record, rule: Rule, on: date, since: date, until: date) -> date:
+    """The last good day where it stood: each stay uses its life up at its own pace.
+
+    A life used up in a warm place is not given back by moving to a cold one.
+    """
+    if rule.at_c is None or not rule.factor_per_10c:
+        return until
+    pace, day, left = 1.0, since, float((until - since).days)
+    for first, last, place in stretches(record, on):
+        pace = 1.0 if place is None else rule.factor_per_10c ** ((place - rule.at_c) / 10.0)
+        begun = max(first, since)
+        used = max(0, (last - begun).days) * pace
+        if used > left:
+            return begun + timedelta(days=int(left / pace + _SLACK))
+        day, left = max(begun, last), left - used
+    return day + timedelta(days=int(left / pace + _SLACK))
+
+
+_DATED: dict[RuleKind, Callable[[Record, Rule, date], Limit | None]] = {
     RuleKind.LIFE: _life,
     RuleKind.SAME_DAY: _same_day,
     RuleKind.RECHECK: _recheck,
     RuleKind.LOOK: _look,
     RuleKind.TEST: _test,
+    RuleKind.NEVER: _never,
 }
 
 

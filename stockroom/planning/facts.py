@@ -312,7 +312,11 @@ class Drawn:
 
 @dataclass(frozen=True, slots=True)
 class Facts:
-    """Everything the planner may know, as at one day."""
+    """Everything the planner may know, as at one day.
+
+    `start` and `end` bound what is asked about; the plan itself runs on to
+    `horizon` (None: `end`), so that asking about a week does not change it.
+    """
 
     as_at: date
     start: date
@@ -328,3 +332,4 @@ class Facts:
     departments: tuple[Department, ...] = ()
     places: tuple[Place, ...] = ()
     drawn: tuple[Drawn, ...] = ()
+    horizon: date | None = None

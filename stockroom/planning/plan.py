@@ -10,7 +10,7 @@ from stockroom.planning.checks import checks
 from stockroom.planning.decide import answers, makes, shorts
 from stockroom.planning.decisions import Answer, Order, Plan, Use
 from stockroom.planning.explode import explode, standing
-from stockroom.planning.facts import Facts, Firmness
+from stockroom.planning.facts import Drawn, Facts, Firmness
 from stockroom.planning.make import make_up
 from stockroom.planning.net import net
 from stockroom.planning.notes import notes
@@ -20,13 +20,14 @@ from stockroom.planning.wants import Settled, Want
 
 
 def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
-    """Decide what becomes of every need from `as_at` to the end of the facts' period.
+    """Decide what becomes of every need from `as_at` to the horizon; show the period asked for.
 
-    Bookings before the period's start are planned too, since they draw on the
-    same bottles, and then left out of what is shown. Usage covers the whole
-    period, done or to come. `past` is told for `past_day`, else for `as_at`.
+    Bookings before and after that period are planned too, since they draw on
+    the same bottles, and then left out: asking about one week gives that
+    week's part of the term's plan. Usage covers the whole period, done or to
+    come. `past` is told for `past_day`, else for `as_at`.
     """
-    needs = explode(facts, standing(facts.bookings, facts.as_at, facts.end))
+    needs = explode(facts, standing(facts.bookings, facts.as_at, facts.horizon or facts.end))
     netted = net(facts, needs)
     made = make_up(facts, netted.wants, netted.shelf)
     buying = orders(facts, courses(facts, made, netted.missed, netted.shelf), netted.shelf)
@@ -42,7 +43,7 @@ def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
         makes=tuple(making),
         past=tuple(past_on(facts, netted.wants, past_day or facts.as_at)),
         usage=tuple(usage_of_period(facts)),
-        drawn=tuple(drawn_so_far(facts, facts.drawn)),
+        drawn=tuple(drawn_so_far(facts, _in_period(facts))),
         orders=tuple(buying),
         short=tuple(shorts(netted.wants)),
         checks=tuple(checks(facts, netted.wants, batches, buying, shelf)),
@@ -50,7 +51,7 @@ def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
         guesses=tuple(guesses(facts, netted.wants, shelf)),
         notes=tuple(notes(facts, needs, making, buying, levels, shelf)),
     )
-    return _shown(whole, max(facts.start, facts.as_at))
+    return _shown(whole)
 
 
 def usage_of_period(facts: Facts) -> list[Use]:
@@ -71,12 +72,21 @@ def _with_orders(row: list[Answer], wants: list[Want], buying: list[Order]) -> t
     return tuple(replace(answer, order=waits.get(answer.ref, "")) for answer in row)
 
 
-def _shown(whole: Plan, start: date) -> Plan:
-    """Only what serves bookings from the start of the period on."""
-    shown = {answer.booking.number for answer in whole.needs if answer.booking.on >= start}
+def _in_period(facts: Facts) -> list[Drawn]:
+    return [draw for draw in facts.drawn if facts.start <= draw.on <= facts.end]
+
+
+def _shown(whole: Plan) -> Plan:
+    """Only what serves bookings of the period, and what must be done or ordered for them."""
+    needs = tuple(a for a in whole.needs if whole.start <= a.booking.on <= whole.end)
+    shown = {answer.booking.number for answer in needs}
+    if len(needs) == len(whole.needs):
+        return whole
     return replace(
         whole,
-        needs=tuple(a for a in whole.needs if a.booking.number in shown),
+        needs=needs,
         makes=tuple(m for m in whole.makes if shown & set(m.bookings)),
+        orders=tuple(o for o in whole.orders if shown & set(o.for_bookings)),
         short=tuple(s for s in whole.short if s.booking in shown),
+        checks=tuple(c for c in whole.checks if shown & set(c.bookings)),
     )

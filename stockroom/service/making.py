@@ -12,6 +12,7 @@ from stockroom.keeping.verdict import USABLE, Verdict, verdict
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_amount, format_strength
 from stockroom.planning.amounts import draw_for
+from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
 from stockroom.service.answers import Done
 from stockroom.service.taking import open_if_sealed, take
@@ -62,7 +63,7 @@ def make_up(
     does not belong; NotEnough, MissingFigure, UnknownName, BadAmount.
     """
     with working(path, on=on, today=today, by=by) as work:
-        known = facts_from(work.reader, work.on)
+        known = with_derived(facts_from(work.reader, work.on))
         product = known.lines[names.find_line(work.session, line).key]
         method = _method(known, product)
         _check_volume(product, volume)

@@ -5,12 +5,14 @@ Each opens the store for reading only, so nothing heavy is loaded.
 
 from __future__ import annotations
 
+from dataclasses import replace
 from datetime import date
 from pathlib import Path
 
 from stockroom.errors import BadInput
 from stockroom.measure.days import parse_day
-from stockroom.planning.decisions import Plan
+from stockroom.planning.decisions import Make, Plan
+from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Facts, Firmness
 from stockroom.planning.plan import plan
 from stockroom.planning.ready import Readiness, readiness
@@ -21,16 +23,32 @@ from stockroom.store.likeness import unknown
 from stockroom.store.snapshot import facts
 
 
+def _known(path: Path, as_at: date, start: date | None = None, end: date | None = None) -> Facts:
+    return with_derived(facts(path, as_at, start, end))
+
+
 def term_plan(
     path: Path, *, as_at: date, start: date | None = None, end: date | None = None
 ) -> Plan:
     """The plan from `as_at`, for the term or for the period given."""
-    return plan(facts(path, as_at, start, end))
+    return plan(_known(path, as_at, start, end))
+
+
+def to_make(path: Path, *, as_at: date, start: date | None = None, end: date | None = None) -> Plan:
+    """The term's plan with only the makes worked on from `start` to `end`."""
+    whole = term_plan(path, as_at=as_at)
+    first, last = start or whole.start, end or whole.end
+    chosen = tuple(m for m in whole.makes if first <= m.on <= last or _finished(m, first, last))
+    return replace(whole, start=first, end=last, makes=chosen)
+
+
+def _finished(make: Make, first: date, last: date) -> bool:
+    return make.finish_on is not None and first <= make.finish_on <= last
 
 
 def past_on(path: Path, *, as_at: date, on: date) -> Plan:
     """A plan whose `past` is told for the day `on`, from what is known as at `as_at`."""
-    known = facts(path, as_at)
+    known = _known(path, as_at)
     return plan(known, past_day=on)
 
 
@@ -40,7 +58,7 @@ def ready(path: Path, ref: str, *, as_at: date) -> Readiness:
     Raises UnknownName for a booking that does not exist, BadDate for a day
     that cannot be read.
     """
-    known = facts(path, as_at)
+    known = _known(path, as_at)
     booking = next((b for b in known.bookings if b.number.lower() == ref.strip().lower()), None)
     if booking is not None:
         whole = plan(_reaching(path, known, booking.on))
@@ -62,7 +80,7 @@ def _reaching(path: Path, known: Facts, day: date) -> Facts:
     """The same facts, over a period that holds the day."""
     if day <= known.end:
         return known
-    return facts(path, known.as_at, known.start, day)
+    return _known(path, known.as_at, known.start, day)
 
 
 def _no_such(known: Facts, ref: str) -> BadInput:
@@ -74,7 +92,7 @@ def why(path: Path, ref: str, *, as_at: date, instead: str | None = None) -> tup
 
     At most five lines. Raises UnknownName when nothing of that name is known.
     """
-    known = facts(path, as_at)
+    known = _known(path, as_at)
     whole = plan(known)
     if instead is not None:
         other = line_among(known, instead)

@@ -23,17 +23,23 @@ class Fields:
     """The cells of one row by column name. Blank means not known.
 
     `column` is the last one asked for, so that whoever catches an error can say
-    where it stood without every reader repeating it.
+    where it stood without every reader repeating it. `other_names` are those a
+    reader learnt on the way.
     """
 
     def __init__(self, values: dict[str, str]) -> None:
         self._values = {name: value.strip() for name, value in values.items()}
         self.column = ""
+        self.other_names: tuple[str, ...] = ()
 
     def names(self) -> set[str]:
-        """What other rows may call this one by: its first cell, and an item with its strength."""
+        """What other rows may call this one by: its first cell, a line by its substance too."""
         first = next(iter(self._values.values()), "")
-        return {first, f"{first} {self._values.get('strength', '')}".strip()} - {""}
+        return {first, self._values.get("substance", ""), *self.other_names} - {""}
+
+    def cells(self) -> list[str]:
+        """Every cell that is not blank."""
+        return [cell for cell in self._values.values() if cell]
 
     def text(self, column: str) -> str:
         """The cell's text, "" when blank or not given."""

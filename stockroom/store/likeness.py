@@ -21,9 +21,13 @@ def unknown(what: str, text: str, choices: Iterable[str]) -> UnknownName:
 
 
 def nearest(text: str, choices: Iterable[str]) -> list[str]:
-    """The three choices most like `text`, the likest first; ties by the alphabet."""
+    """The three choices most like `text`, the likest first; ties by the fewest slips, then A-Z."""
     from rapidfuzz import fuzz, process
+    from rapidfuzz.distance import OSA
 
+    wanted = plain(text)
     ordered = sorted(set(choices))
-    found = process.extract(plain(text), ordered, scorer=fuzz.WRatio, processor=plain, limit=3)
-    return [name for name, _, _ in found]
+    found = process.extract(wanted, ordered, scorer=fuzz.WRatio, processor=plain, limit=None)
+    # short numbers all score alike; swapped digits ("B60" for "B06") are a single slip
+    ranked = sorted(found, key=lambda hit: (-round(hit[1]), OSA.distance(wanted, plain(hit[0]))))
+    return [name for name, _, _ in ranked[:3]]

@@ -183,6 +183,14 @@ def find_substance(session: Session, text: str) -> Substance:
     return _by_column(session, Substance, "substance", text, "substance")
 
 
+def other_names(session: Session, substance: Substance | None) -> tuple[str, ...]:
+    """The other names of a substance, in the order they were entered."""
+    if substance is None:
+        return ()
+    rows = select(OtherName).where(OtherName.substance_id == substance.id)
+    return tuple(row.name for row in session.exec(rows.order_by(col(OtherName.id))))
+
+
 def substance_of(session: Session, line: Line) -> Substance | None:
     """The substance a line holds, None for mixtures and sundries."""
     return session.get(Substance, line.substance_id) if line.substance_id else None

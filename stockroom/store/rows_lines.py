@@ -16,7 +16,7 @@ from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.planning.facts import Form
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.names import find_substance, substance_of
+from stockroom.store.names import find_substance, other_names, substance_of
 from stockroom.store.rows_house import new_name
 from stockroom.store.tables import (
     Ingredient,
@@ -62,6 +62,7 @@ def read_line(desk: Desk, fields: Fields) -> None:
     item = fields.need("item")
     named = fields.text("substance")
     substance = find_substance(desk.session, named) if named else None
+    fields.other_names = other_names(desk.session, substance)
     form = fields.choice("form", Form)
     kind = _MEASURED.get(form) or fields.choice("measured_in", Kind)
     written = fields.text("strength")

@@ -14,11 +14,11 @@ from functools import partial
 from pathlib import Path
 from typing import TypeVar
 
-from stockroom.errors import BadInput, StockroomError, UnknownName
+from stockroom.errors import BadInput, StockroomError
 from stockroom.store import rows_bottles, rows_house, rows_lines, rows_recipes
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.likeness import unknown
+from stockroom.store.likeness import plain, unknown
 from stockroom.store.rows_bottles import Step
 
 Value = TypeVar("Value")
@@ -101,6 +101,10 @@ TABLES: dict[str, Table] = {
 }
 
 
+NAMED = ("substances", "lines", "places", "departments", "recipes", "bottles")
+"""Tables whose rows others name."""
+
+
 @dataclass(frozen=True, slots=True)
 class TypedRow:
     """One row of a file: the table it is in, its row number there, and its cells."""
@@ -112,7 +116,7 @@ class TypedRow:
 
 @dataclass
 class Faults:
-    """Every fault found so far, each with its place."""
+    """Every fault found so far, each with its place; `broken` names what could not be read."""
 
     told: list[str] = field(default_factory=list)
     broken: set[str] = field(default_factory=set)
@@ -122,14 +126,18 @@ class Faults:
         try:
             return read()
         except StockroomError as error:
-            if not self._follows_from_another(row.fields, error):
-                self.told.append(f"{_where(row)}: {error}")
-            self.broken |= row.fields.names()
+            if not self._follows_from_another(row):
+                self.told.append(f"{row.table}.csv row {row.number}{_placed(row.fields, error)}")
+            if row.table in NAMED:
+                self.broken |= {plain(name) for name in row.fields.names()}
             return None
 
-    def _follows_from_another(self, fields: Fields, error: StockroomError) -> bool:
+    def _follows_from_another(self, row: TypedRow) -> bool:
         # a row nobody could read is told once, not again by each row that names it
-        return isinstance(error, UnknownName) and fields.text(fields.column) in self.broken
+        cells = [plain(cell) for cell in row.fields.cells()]
+        return any(
+            cell == name or cell.startswith(f"{name} ") for name in self.broken for cell in cells
+        )
 
     def stop_if_any(self, folder: Path) -> None:
         """Raises: BadInput listing the first ten, when there are any."""
@@ -145,10 +153,12 @@ class Faults:
         )
 
 
-def _where(row: TypedRow) -> str:
-    place = f"{row.table}.csv row {row.number}"
-    column = row.fields.column
-    return f'{place}, {column} "{row.fields.text(column)}"' if column else place
+def _placed(fields: Fields, error: StockroomError) -> str:
+    """The column and value a fault stood in, then the fault; a column is not named twice."""
+    column = fields.column
+    if not column or error.message.startswith(column):
+        return f": {error}"
+    return f', {column} "{fields.text(column)}": {error}'
 
 
 def load_tables(desk: Desk, folder: Path) -> None:
@@ -275,6 +285,5 @@ def add_row(desk: Desk, table: str, values: dict[str, str]) -> None:
         else:
             rows_bottles.read_history(desk, fields).write()
     except StockroomError as error:
-        column = fields.column
-        shown = f' {column} "{fields.text(column)}"' if column else ""
-        raise type(error)(f"{table}{shown}: {error.message}", error.hint) from error
+        placed = type(error)(error.message)
+        raise type(error)(f"{table}{_placed(fields, placed)}", error.hint) from error

@@ -54,12 +54,15 @@ def facts_from(
         as_at=as_at,
         start=start or first,
         end=end or last,
+        horizon=max(last, end or last),
         calendar=calendar_of(reader),
         house=_house(reader, settings),
         lines=lines_of(reader),
         methods=methods_of(reader),
         recipes=recipes_of(reader),
-        bookings=_bookings(reader, settings, min(first, start or first, as_at), end or last),
+        bookings=_bookings(
+            reader, settings, min(first, start or first, as_at), max(last, end or last)
+        ),
         bottles=bottles_of(reader, as_at),
         balances=_balances(reader),
         departments=_departments(reader),
