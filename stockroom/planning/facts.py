@@ -238,7 +238,8 @@ class Booking:
 class Bottle:
     """One container: what it holds now (micro-units) and the record of its ageing.
 
-    `lineage` names the bottles it was made from, the nearest first. `remark` is
+    `lineage` names the bottles it was made from, the nearest first. `meant_for`
+    the bookings it was made for: what they get was measured in. `remark` is
     what somebody wrote on it. `cap` is "tight" or "vented" where written.
     """
 
@@ -252,6 +253,7 @@ class Bottle:
     cap: str = ""
     made_here: bool = False
     lineage: tuple[str, ...] = ()
+    meant_for: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

@@ -192,7 +192,7 @@ class _Netting:
         return take_for(line, held, want.solute)
 
     def _too_close(self, want: Want, number: str, amount: int) -> bool:
-        if not self.shelf.too_close(number, amount):
+        if not self.shelf.too_close(number, amount, want.need.booking.number):
             return False
         line = self.facts.lines[self.shelf.bottle[number].line]
         held = self.shelf.bottle[number].left
@@ -214,7 +214,7 @@ class _Netting:
             shares.append((number, share))
             missing -= share
         last = shares[-1]
-        if missing or self.shelf.too_close(*last):
+        if missing or self.shelf.too_close(*last, want.need.booking.number):
             return []
         return [(number, share) for number, share in shares if share]
 

@@ -118,12 +118,15 @@ class Shelf:
         self.promises[made.bottle].remove(made)
         self.left[made.bottle] += made.amount
 
-    def too_close(self, number: str, amount: int) -> bool:
-        """True when drawing `amount` leaves too little of a liquid to count on."""
+    def too_close(self, number: str, amount: int, booking: str) -> bool:
+        """True when drawing `amount` leaves too little of a liquid to count on.
+
+        Never for a booking the bottle was made for: its share was measured in.
+        """
         bottle = self.bottle[number]
         line = self.facts.lines[bottle.line]
         after = self.left[number] - amount
-        if line.kind is not Kind.VOLUME or line.form is Form.SUNDRY:
+        if line.kind is not Kind.VOLUME or booking in bottle.meant_for:
             return False
         return after < max(TOO_CLOSE_UL, TOO_CLOSE_PART * bottle.left)
 

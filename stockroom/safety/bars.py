@@ -49,14 +49,15 @@ def offer(
 ) -> tuple[bool, str]:
     """May `instead` stand in for `line`? True or False, and the reason in words.
 
-    `substances` are those of `line` and of `instead`. A bar wins over a swap;
-    what is neither barred nor written as a swap is refused too.
+    `substances` are those of `line` and of `instead`; a swap may be written with
+    either a line's key or its substance. A bar wins over a swap; what is neither
+    barred nor written as a swap is refused too.
     """
     for bar in recipe.bars:
         if bar.substance == substances[1]:
             return False, f"barred: {bar.reason}"
     for swap in recipe.swaps:
-        if instead in (swap.instead, substances[1]) and line in (swap.line, substances[0]):
+        if swap.line in (line, substances[0]) and swap.instead in (instead, substances[1]):
             factor = f", mass × {swap.factor:g}" if swap.factor else ""
             return True, f"allowed{factor}: {swap.note}"
     return False, "not written in the recipe as an allowed swap"

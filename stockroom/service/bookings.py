@@ -94,6 +94,7 @@ def book(
         )
         session.add(booking)
         session.flush()
+        # its first state, so that the record can be read from the beginning
         hand.record(booking, "booked", "", _in_words(session, booking))
         return hand.done(f"Booked {booking.number}: {_in_words(session, booking)}.")
 
@@ -152,6 +153,7 @@ def shift(
     Raises: UnknownName; BadInput when nothing would change, or for groups
     outside 1-200; NotAllowed on a closed day unless `keep`.
     """
+    # None means leave as it is; no column of a booking may become empty
     wanted: dict[str, object] = {"on_day": on, "minute": time, "groups": groups}
     wanted["firmness"] = None if firmness is None else _firmness(firmness)
     with writing(path) as session:

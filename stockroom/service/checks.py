@@ -44,6 +44,7 @@ def found(
         value, unit = in_own_unit(
             strength, substance_of(work.session, line), line.density, line.unit
         )
+        # set beside another unit it would be read as a strength it is not
         if value is None or unit != line.unit:
             raise BadAmount(
                 f'"{strength.text}" cannot be set beside {line.key}.', f"Give it in {line.unit}."
@@ -62,6 +63,7 @@ def found(
 
 
 def _check_usual(line: Line, strength: Strength, value: float, *, sure: bool) -> None:
+    # nothing to compare with, or the person has compared already
     if sure or not line.strength:
         return
     if abs(value - line.strength) > UNUSUAL * line.strength:

@@ -22,6 +22,7 @@ HOUSE = "house"
 def seeds_folder() -> Path:
     """Where the tables that travel with the program are: inside it, else beside it."""
     package = Path(__file__).resolve().parent.parent
+    # a wheel carries the tables inside the package
     inside = package / "seeds_data"
     return inside if inside.is_dir() else package.parent / "seeds_data"
 
@@ -42,6 +43,7 @@ def _put_by(path: Path) -> None:
             f"{path} is a house of one's own, not a practice store; it was left alone.",
             "Give the practice store another place with --store PATH.",
         )
+    # one is kept: somebody may have tried things in it worth looking at again
     path.replace(path.with_suffix(".old.sqlite"))
     for leftover in (Path(f"{path}-wal"), Path(f"{path}-shm")):
         leftover.unlink(missing_ok=True)

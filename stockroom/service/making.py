@@ -14,6 +14,7 @@ from stockroom.measure.formats import format_amount, format_strength
 from stockroom.planning.amounts import draw_for
 from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
+from stockroom.planning.plan import plan
 from stockroom.service.answers import Done
 from stockroom.service.taking import open_if_sealed, take
 from stockroom.service.work import Work, check_in_use, working
@@ -70,7 +71,23 @@ def make_up(
         given = [_given(work, known, number) for number in sources]
         _check_belong(method, given)
         chosen = [_source(known, product, part, given, volume.micro) for part in method.ingredients]
-        return _write(work, product, volume, chosen, place)
+        meant_for = _meant_for(known, product, volume.micro)
+        return _write(work, product, volume, chosen, place, meant_for)
+
+
+def _meant_for(known: Facts, product: Line, volume: int) -> tuple[str, ...]:
+    """The bookings the plan has this line made for next, as far as the volume goes."""
+    whole = plan(known)
+    planned = next((make for make in whole.makes if make.line == product.key), None)
+    if planned is None:
+        return ()
+    served, left = [], volume
+    wanted = {a.booking.number: a.amount for a in whole.needs if a.make == planned.id}
+    for booking in planned.bookings:
+        left -= wanted.get(booking, 0)
+        if left >= 0:
+            served.append(booking)
+    return tuple(served)
 
 
 def _method(known: Facts, product: Line) -> Method:
@@ -141,6 +158,7 @@ def _source(
 def _judged(known: Facts, product: Line, part: Ingredient, bottle: Bottle, volume: int) -> Source:
     line = known.lines[bottle.line]
     judged = verdict(bottle.record, line.rules, known.as_at)
+    # a quality date is the person's to judge; a safety date is not
     if judged.safety and judged.condition not in USABLE:
         raise NotAllowed(
             f"{bottle.number} is {judged.condition}: {judged.decided_by}.",
@@ -171,8 +189,14 @@ def _past_first(source: Source) -> tuple[date, str]:
 
 
 def _write(
-    work: Work, product: Line, volume: Amount, chosen: list[Source], place: str | None
+    work: Work,
+    product: Line,
+    volume: Amount,
+    chosen: list[Source],
+    place: str | None,
+    meant_for: tuple[str, ...],
 ) -> Done:
+    # first, since its number stands in the note of every draw
     bottle = _new_bottle(work, product, volume)
     details: list[str] = []
     for source in chosen:
@@ -183,7 +207,11 @@ def _write(
         details.append(f"Took {source.words}.")
         _link(work, bottle, row)
     place_id = work.place_id(place) if place else None
-    entry = work.write(bottle, Event(EntryKind.MADE, change=volume.micro, place_id=place_id))
+    if meant_for:
+        details.append(f"For {', '.join(meant_for)}, as planned.")
+    booking = ";".join(meant_for)
+    made = Event(EntryKind.MADE, change=volume.micro, place_id=place_id, booking=booking)
+    entry = work.write(bottle, made)
     judged = work.verdict(bottle)
     until = f"; good until {judged.good_until}" if judged.good_until else ""
     text = f"Made {bottle.number}: {format_amount(volume)} of {product.key}{until}."

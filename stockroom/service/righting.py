@@ -36,6 +36,7 @@ def standing(work: Work, number: int) -> Entry:
 
 def check_nothing_leans(work: Work, bottle: Bottle, wrong: Entry) -> None:
     """Pass unless other entries need this one to be true. Raises: NotAllowed, listing them."""
+    # anything else can fall away and leave a story that still holds together
     if wrong.kind not in BEGINNINGS:
         return
     later = [entry for entry in entries_of(work.session, bottle) if entry.id != wrong.id]

@@ -58,6 +58,7 @@ def arrive(
     if not 1 <= count <= MOST_AT_ONCE:
         raise BadInput(f"{count} bottles?", f"Give 1 to {MOST_AT_ONCE}.")
     with working(path, on=on, today=today, by=by) as work:
+        # the size tells a solid from the solution of the same name
         found = names.find_line(work.session, line, kind=size.kind)
         check_amount(found, size)
         event = Event(
@@ -74,6 +75,7 @@ def arrive(
 
 
 def _printed(printed: str | None) -> PrintedDate | None:
+    # a blank could mean "none" or "not looked", and the plan treats them differently
     if printed is None or not printed.strip():
         raise BadInput(
             f'Printed date "{printed or ""}": "none printed" must be chosen.',
@@ -160,6 +162,7 @@ def draw(
         if served is not None:
             check_not_barred(work, found, served)
         number = served.number if served else ""
+        # judged before the draw, which may open a sealed bottle
         doubtful = doubts(work, found)
         entry = take(work, found, Event(EntryKind.DRAWN, change=-amount.micro, booking=number))
         details = (*open_if_sealed(work, found, entry), *doubtful)
@@ -238,6 +241,7 @@ def count(
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_kind(work.line(found), amount)
+        # against what was there on the day of the count, not today
         change = amount.micro - check_at_hand(work, found).left
         entry = work.write(found, Event(EntryKind.COUNTED, change=change, note=walk))
         text = f"Counted {format_amount(amount)} of {work.called(found)}"
@@ -286,6 +290,7 @@ def put_right(
         wrong = standing(work, entry)
         bottle = work.session.get_one(Bottle, wrong.bottle_id)
         check_nothing_leans(work, bottle, wrong)
+        # found before the reversal, which would hide them
         others = with_it(work, bottle, wrong)
         written = reverse(work, wrong, reason.strip())
         for other in others:

@@ -26,6 +26,7 @@ def _drawn_today(work: Work, bottle: Bottle) -> str:
         for entry in entries_of(work.session, bottle)
         if entry.kind == EntryKind.DRAWN and entry.entered_on == work.stamp.entered_on
     ]
+    # by entry number: of two on one day the later typed is the one to name
     last = max(draws, key=lambda entry: entry.id or 0, default=None)
     return f" {last.by} drew {work.say(bottle, -last.change)} today." if last else ""
 
@@ -38,6 +39,7 @@ def opening_of(work: Work, bottle: Bottle) -> Entry | None:
 
 def open_if_sealed(work: Work, bottle: Bottle, drawn: Entry) -> tuple[str, ...]:
     """Write the opening that a draw from a sealed bought bottle implies, and say so."""
+    # what is made here is never sealed
     if bottle.made_here or opening_of(work, bottle) is not None:
         return ()
     work.write(bottle, Event(EntryKind.OPENED, note=opened_note(drawn.id)))

@@ -105,12 +105,14 @@ def working(path: Path, *, on: date | None, today: date, by: str) -> Iterator[Wo
     """
     initials(by)
     happened = on or today
+    # a day to come would sit in every later picture as if it had happened
     if happened > today:
         raise BadDate(
             f"{spell_day(happened)} is still to come: today is {spell_day(today)}.",
             "Give the day it happened with --on.",
         )
     with writing(path) as session:
+        # read inside the work: a store is not opened twice to ask its name
         setting = session.get(House, "practice")
         stamp = Stamp(happened, today, clock.now(), by)
         yield Work(session, stamp, practice=setting is not None and setting.value == "yes")
@@ -126,6 +128,7 @@ def initials(by: str) -> str:
 def check_amount(line: Line, amount: Amount) -> Amount:
     """The amount, when it is more than nothing and of the line's kind. Raises: BadAmount."""
     check_kind(line, amount)
+    # an entry of nothing would only hide a slip
     if amount.micro <= 0:
         raise BadAmount(f"{format_amount(amount)} of {line.key} is nothing.", "How much was it?")
     return amount
@@ -172,6 +175,7 @@ def check_in_use(work: Work, bottle: Bottle) -> facts.Bottle:
 
 
 def _last(work: Work, bottle: Bottle, kind: EntryKind) -> str:
+    # the last of them is the one that still holds
     entries = [entry for entry in entries_of(work.session, bottle) if entry.kind == kind]
     entry = entries[-1]
     said = entry.reason or entry.note

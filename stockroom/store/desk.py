@@ -39,11 +39,13 @@ class Desk:
 
     def save(self, row: SQLModel) -> None:
         """Add a row and number it at once, since the next may refer to it."""
+        # flush and not commit: the whole folder is one piece
         self.session.add(row)
         self.session.flush()
 
     def opening_day(self) -> date:
         """The day the shelves are taken to be as listed: the practice day, else today."""
+        # a practice college must not age with the machine it is tried on
         setting = self.session.exec(select(House).where(House.setting == "practice_day")).first()
         return date.fromisoformat(setting.value) if setting else self.today
 

@@ -44,6 +44,7 @@ def diary(path: Path, bottle: str) -> tuple[Told, ...]:
 
 def _bottle(reader: Reader, number: str) -> Row:
     rows = reader.rows("bottle")
+    # compared in Python: SQL's lower() knows no look-alike letters
     for row in rows:
         if plain(row["number"]) == plain(number):
             return row

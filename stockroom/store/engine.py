@@ -41,6 +41,7 @@ def writing(path: Path) -> Iterator[Session]:
     """
     check_there(path)
     with _borders(path):
+        # rw and not rwc: a mistyped path must not become a new, empty store
         engine = _engine(path, mode="rw")
         try:
             with Session(engine) as session, session.begin():
@@ -52,6 +53,7 @@ def writing(path: Path) -> Iterator[Session]:
 
 def reader_in(session: Session) -> Reader:
     """The reading half on a writer's own connection: it sees what is not saved yet."""
+    # rows still pending in the session would be missing from what the reader sees
     session.flush()
     return Reader(_raw(session.connection()))
 
@@ -71,6 +73,7 @@ def create(path: Path, fill: Callable[[Session], None] | None = None) -> None:
                 with writing(path) as session:
                     fill(session)
         except BaseException:
+            # half a store would be refused as damaged later, by somebody who did not cause it
             for leftover in (path, Path(f"{path}-wal"), Path(f"{path}-shm")):
                 leftover.unlink(missing_ok=True)
             raise
@@ -106,11 +109,13 @@ def _engine(path: Path, *, mode: str) -> Engine:
         opened.execute("PRAGMA foreign_keys = ON")
         return opened
 
+    # no pool: a command writes once, and an idle connection would keep the journal open
     engine = create_engine("sqlite://", creator=connect, poolclass=NullPool)
     event.listen(engine, "begin", _begin_at_once)
     return engine
 
 
+# IMMEDIATE: two readers who both decide to write would each block the other for good
 def _begin_at_once(connection: Connection) -> None:
     connection.exec_driver_sql("BEGIN IMMEDIATE")
 
@@ -121,6 +126,7 @@ def _raw(connection: Connection) -> Any:
 
 def _revision(connection: Connection, path: Path) -> str | None:
     names = set(connection.execute(text("SELECT name FROM sqlite_master")).scalars())
+    # other programs keep an alembic_version too, so our own tables are asked for
     if not {"alembic_version", "entry", "house"} <= names:
         raise foreign(path)
     found = connection.execute(text("SELECT version_num FROM alembic_version")).scalar()

@@ -61,6 +61,7 @@ class Fields:
     def signed(self, column: str) -> float | None:
         """A number that may be below zero, such as a temperature. Raises: BadAmount."""
         found = self.text(column)
+        # amounts are never below zero, temperatures may be
         negative = found.startswith(("-", "−"))
         if not found:
             return None
@@ -74,6 +75,7 @@ class Fields:
             raise BadAmount(f'{column} "{found}" is not a whole number.', "Give a whole number.")
         return None if found is None else int(found)
 
+    # through Decimal: 0.29 pounds as a float is 28.999 pence
     def pence(self, column: str) -> int | None:
         """An amount of pounds as whole pence. Raises: BadAmount for parts of a penny."""
         found = self._decimal(column)
@@ -130,6 +132,7 @@ class Fields:
 
         Raises: BadInput when a column for another kind is filled instead.
         """
+        # a mass typed in the volume column is a slip worth catching, not a blank
         for other in Kind:
             column = f"{stem}_{_SUFFIX[other]}"
             if other is not kind and self.text(column):

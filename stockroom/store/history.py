@@ -30,6 +30,7 @@ def children(session: Session, bottle: Bottle) -> list[Bottle]:
         rows = session.exec(select(Bottle).where(col(Bottle.id).in_(made))).all()
         generation = [row.id for row in rows if row.id not in found]
         found |= {row.id: row for row in rows}
+    # a parent link stays when its make is put right
     really = [row for row in found.values() if is_there(session, row)]
     return sorted(really, key=lambda row: row.number)
 

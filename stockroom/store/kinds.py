@@ -32,6 +32,7 @@ BEGINNINGS = (EntryKind.ARRIVED, EntryKind.MADE)
 DAY_NOT_WRITTEN = "day not written"
 """The note on an opened entry whose day is a guess (the earliest it can have been)."""
 
+# IS NOT NULL matters: NOT IN over a NULL is never true
 STANDING = (
     "entry.puts_right IS NULL"
     " AND entry.id NOT IN (SELECT puts_right FROM entry WHERE puts_right IS NOT NULL)"

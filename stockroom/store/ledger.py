@@ -62,6 +62,7 @@ def append(session: Session, bottle: Bottle, event: Event, stamp: Stamp) -> Entr
     _check_begun(session, bottle, event, stamp.happened_on)
     count = _count_after(session, bottle, event, stamp.happened_on) if event.change else None
     evening = _evening(count, event) if count else None
+    # evened out first when it adds, or a full bottle's late draw would look too large
     if evening and count and evening.change > 0:
         _write(session, bottle, evening, stamp, count.happened_on)
     entry = _write(session, bottle, event, stamp, stamp.happened_on)
@@ -72,6 +73,7 @@ def append(session: Session, bottle: Bottle, event: Event, stamp: Stamp) -> Entr
 
 def left(session: Session, bottle: Bottle) -> int:
     """What the bottle holds, in micro-units: the sum of everything ever entered for it."""
+    # everything, put right or not: the pairs cancel, and the trigger sums the same way
     total = select(func.coalesce(func.sum(Entry.change), 0)).where(Entry.bottle_id == bottle.id)
     return int(session.exec(total).one())
 
@@ -101,6 +103,7 @@ def _next(letter: str, used: Iterable[str]) -> str:
     numbers = [
         int(match[1]) for number in used if (match := re.fullmatch(rf"{letter}(\d+)[a-z]*", number))
     ]
+    # past the highest ever given, so a number on an old label never comes back
     return f"{letter}{max(numbers, default=0) + 1:02d}"
 
 
@@ -133,6 +136,7 @@ def _write(
 
 
 def _check_enough(session: Session, bottle: Bottle, event: Event) -> None:
+    # asked here for the words; the trigger is what holds when two write at once
     if event.change >= 0:
         return
     held = left(session, bottle)
@@ -163,6 +167,7 @@ def before_it_was_there(bottle: Bottle, what: str, begun: date | None) -> BadDat
 
 def _count_after(session: Session, bottle: Bottle, event: Event, happened_on: date) -> Entry | None:
     """The first count, still standing, of a later day than the change took effect."""
+    # a reversal takes effect on the day of the slip, whenever it is entered
     original = session.get(Entry, event.puts_right) if event.puts_right else None
     since = original.happened_on if original else happened_on
     counts = [

@@ -66,6 +66,7 @@ class Lines:
 
     def find(self, text: str, *, kind: str = "") -> Line:
         """As `find_line`."""
+        # a key typed in full is never ambiguous
         exact = self._lines.get(plain(text))
         if exact is not None:
             return exact
@@ -97,6 +98,7 @@ class Lines:
     def _at_strength(self, named: list[Line], written: str) -> list[Line]:
         if not named or not written:
             return named
+        # on this bench a bare number after a name is mol/dm³; alone it would be refused
         wanted = f"{written} mol/dm3" if _BARE_NUMBER.fullmatch(written) else written
         return [line for line in named if self._is_strength(line, wanted)]
 
@@ -110,6 +112,7 @@ class Lines:
                 molar_mass=substance.molar_mass if substance else None,
                 density=line.density,
             )
+        # not a strength after all: the words belong to a name
         except StockroomError:
             return False
         if line.strength is None or asked.unit != line.unit:
@@ -132,6 +135,7 @@ def _spelt(name: str) -> str:
 
 
 def _only(text: str, fitting: list[Line], kind: str) -> Line:
+    # a kind nothing has settles nothing: better to list all the choices
     fitting = [line for line in fitting if line.kind == kind] or fitting
     if len(fitting) == 1:
         return fitting[0]

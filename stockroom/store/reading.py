@@ -58,6 +58,7 @@ def reading(path: Path) -> Iterator[Reader]:
         connection = _connect(path)
         try:
             check_revision(path, _revision(connection, path))
+            # one read transaction, so that balances and entries are of the same moment
             connection.execute("BEGIN")
             yield Reader(connection)
         finally:
@@ -81,6 +82,7 @@ def _connect(path: Path) -> sqlite3.Connection:
     address = path.resolve().as_uri()
     connection = _opened(f"{address}?mode=ro")
     try:
+        # opening is lazy: only the first question shows whether the file can be read
         connection.execute("SELECT 1 FROM sqlite_master LIMIT 1")
     except sqlite3.OperationalError as error:
         connection.close()

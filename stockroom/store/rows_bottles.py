@@ -48,6 +48,7 @@ def read_bottle(desk: Desk, fields: Fields, first_seen: date | None = None) -> l
     bottle = _bottle(desk, fields, line)
     left_on = fields.day("left_on")
     begun = bottle.made_on or bottle.received_on
+    # what happened to it proves that it was there
     undated = min(day for day in (first_seen, left_on or desk.opening_day()) if day)
     return _story(desk, fields, bottle, line, begun or undated, left_on or desk.opening_day())
 
@@ -103,6 +104,7 @@ def _opening(desk: Desk, fields: Fields, bottle: Bottle, begun: date) -> list[St
     written = fields.text("opened")
     if not written or written.lower() == "no":
         return []
+    # opened by somebody, who did not write when
     if written.lower() == "yes":
         event = Event(EntryKind.OPENED, note=DAY_NOT_WRITTEN)
         return [_step(desk, bottle, event, begun, 1)]
@@ -121,6 +123,7 @@ def _step(desk: Desk, bottle: Bottle, event: Event, on: date, rank: int) -> Step
 
 def _count(desk: Desk, bottle: Bottle, held: int, seen: date, begun: date) -> Entry | None:
     change = held - left(desk.session, bottle)
+    # a bottle as full as it came needs no counted entry
     if not change:
         return None
     event = Event(EntryKind.COUNTED, change=change)
@@ -145,6 +148,7 @@ def read_history(desk: Desk, fields: Fields) -> Step:
     if entered and entered < happened:
         raise BadDate(f"Entered {entered} is before it happened, {happened}.", "Swap the days.")
     kind = fields.choice("event", EntryKind)
+    # an arrival typed as history would have no line, size or place
     if kind not in _HISTORY:
         raise BadInput(f'event "{kind}" belongs to the bottles table.', "Add the bottle there.")
     bottle = find_bottle(desk.session, fields.need("bottle"))

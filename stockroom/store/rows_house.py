@@ -36,6 +36,7 @@ def read_setting(desk: Desk, fields: Fields) -> None:
         raise unknown("house setting", setting, SETTINGS)
     value = fields.need("value")
     _check_setting(setting, value)
+    # settings are the one thing replaced and not added to; history does not lean on them
     desk.session.merge(House(setting=setting, value=value, source=fields.text("source")))
 
 
@@ -56,6 +57,7 @@ def read_term(desk: Desk, fields: Fields) -> None:
     """A term; two terms never overlap."""
     name = new_name(desk, Term, "term", fields.need("term"))
     first, last = fields.span("from", "to")
+    # a day in two terms would give two answers to "this term"
     for other in desk.session.exec(select(Term)):
         if other.starts_on <= last and first <= other.ends_on:
             raise BadDate(

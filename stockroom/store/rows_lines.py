@@ -29,6 +29,7 @@ from stockroom.store.tables import (
 )
 
 _MEASURED = {Form.SOLID: Kind.MASS, Form.LIQUID: Kind.VOLUME, Form.SOLUTION: Kind.VOLUME}
+# the mean month and year: a rate is a physical quantity, not a calendar step
 _DAYS_PER = {"day": 1.0, "month": 30.4375, "year": 365.25}
 _WORDS = (StrengthUnit.PARTS, StrengthUnit.SATURATED)
 _USUAL_MINUTES = 15
@@ -44,6 +45,7 @@ def read_substance(desk: Desk, fields: Fields) -> None:
     row = Substance(
         substance=name,
         formula=formula,
+        # worked out now, so that reading never loads the formula library
         molar_mass=molar_mass(formula) if formula else None,
         cas=cas,
         storage_group=fields.text("storage_group"),
@@ -64,6 +66,7 @@ def read_line(desk: Desk, fields: Fields) -> None:
     substance = find_substance(desk.session, named) if named else None
     fields.other_names = other_names(desk.session, substance)
     form = fields.choice("form", Form)
+    # only sundries may be counted, weighed or measured as the house likes
     kind = _MEASURED.get(form) or fields.choice("measured_in", Kind)
     written = fields.text("strength")
     density = fields.number("density_g_cm3")
@@ -175,6 +178,7 @@ def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
     per = fields.need("rate_per")
     if per not in _DAYS_PER:
         raise BadInput(f'rate_per "{per}" is not a time.', "Give day, month or year.")
+    # a first-order rate is a share per time and has no unit of strength
     own = 1.0 if order == 1 else _own_units(desk, fields, line)
     # a zero-order rate is strength per time, a second-order one the inverse of strength per time
     scale = own if order == 0 else 1 / own
@@ -221,6 +225,7 @@ def read_ingredient(desk: Desk, fields: Fields) -> None:
     assert line.id is not None and ingredient.id is not None
     role = fields.text("role") or "solute"
     per_dm3 = fields.amount("per_dm3", Kind(ingredient.kind))
+    # a solvent's amount cannot be worked out from strengths
     if role != "solute" and per_dm3 is None:
         raise BadInput(
             f"How much {ingredient.key} per dm³ of {line.key}?", "Fill per_dm3_g or per_dm3_cm3."

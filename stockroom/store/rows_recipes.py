@@ -87,6 +87,7 @@ def _number(desk: Desk, fields: Fields, recipe: Recipe) -> int:
 def _strengths(desk: Desk, fields: Fields, line: Line) -> tuple[float | None, float | None, str]:
     written = fields.text("strength")
     if not written:
+        # the line's own strength, with the closeness to say how near
         return line.strength, line.strength, line.strength_text
     substance = substance_of(desk.session, line)
     low, high = parse_strength_range(written, where="strength")
@@ -143,6 +144,7 @@ def read_booking(desk: Desk, fields: Fields) -> None:
 
 def checked_groups(groups: int) -> int:
     """The number of groups, when it can be meant. Raises: BadInput."""
+    # 400 is likelier a slip of the keyboard than a class
     if not 1 <= groups <= MOST_GROUPS:
         raise BadInput(f"{groups} groups?", f"Give 1 to {MOST_GROUPS}.")
     return groups

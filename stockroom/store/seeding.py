@@ -135,9 +135,8 @@ class Faults:
     def _follows_from_another(self, row: TypedRow) -> bool:
         # a row nobody could read is told once, not again by each row that names it
         cells = [plain(cell) for cell in row.fields.cells()]
-        return any(
-            cell == name or cell.startswith(f"{name} ") for name in self.broken for cell in cells
-        )
+        begins = tuple(f"{name} " for name in self.broken)
+        return any(cell in self.broken or cell.startswith(begins) for cell in cells)
 
     def stop_if_any(self, folder: Path) -> None:
         """Raises: BadInput listing the first ten, when there are any."""
@@ -169,6 +168,7 @@ def load_tables(desk: Desk, folder: Path) -> None:
     Raises: BadInput listing the first ten faults with file, row, column and value.
     """
     faults = Faults()
+    # read whole first, so that a broken file is told beside the others
     rows = {name: list(_rows(folder, name, faults)) for name in _files(folder)}
     for name, table in TABLES.items():
         for row in rows.get(name, ()):
@@ -187,6 +187,7 @@ def _tell_story(
         day = seen.get(row.fields.text("bottle"))
         told = faults.attempt(row, partial(rows_bottles.read_bottle, desk, row.fields, day))
         steps += [(step, row) for step in told or ()]
+    # after all bottles: a parent may stand further down the file
     for row in bottles:
         faults.attempt(row, partial(rows_bottles.read_parents, desk, row.fields))
     for row in history:

@@ -77,7 +77,9 @@ def _settings(reader: Reader) -> dict[str, str]:
 
 def _period(reader: Reader, as_at: date, start: date | None, end: date | None) -> tuple[date, date]:
     """The term the period falls in; its last day never before the first day asked for."""
+    # a period asked for in another term is that term's
     asked = start or as_at
+    # the earliest not yet over: the one it lies in, else the next
     terms = reader.rows("term", "WHERE ends_on >= ? ORDER BY starts_on LIMIT 1", asked.isoformat())
     first, last = (_span(terms[0])) if terms else (asked, asked + SPAN)
     if (end or last) < (start or first):
@@ -119,6 +121,7 @@ def _house(reader: Reader, settings: dict[str, str]) -> House:
         batch_step=_volume(settings.get("batch_step_cm3", "50")),
         heel_floor=_volume(settings.get("heel_floor_cm3", "50")),
         finish_day_before=settings.get("finish_day_before", "yes") == "yes",
+        # None: no vessel is written down, so none bounds a batch
         largest_vessel=max(vessels, default=None),
     )
 

@@ -16,6 +16,7 @@ from stockroom.planning.facts import Bottle, Drawn
 from stockroom.store.kinds import BEGINNINGS, DAY_NOT_WRITTEN, STANDING, EntryKind
 from stockroom.store.reading import Reader, Row
 
+# these change the balance alone, and the sums in SQL have them already
 _QUIET = (EntryKind.DRAWN, EntryKind.COUNTED, EntryKind.SPILLED, EntryKind.LENT)
 _STAYS = (*BEGINNINGS, EntryKind.MOVED, EntryKind.TURNED_UP)
 _CHECKS = {
@@ -41,6 +42,7 @@ def bottles_of(reader: Reader, as_at: date) -> tuple[Bottle, ...]:
     shelf = _shelf(reader, as_at.isoformat(), "")
     rows = reader.rows("bottle", "ORDER BY number")
     bottles = (_bottle(row, shelf) for row in rows if _begun(shelf.events.get(row["id"])))
+    # gone with something left: the entries disagree, and hiding the bottle would hide that
     return tuple(bottle for bottle in bottles if bottle.left or not bottle.record.gone)
 
 
@@ -49,6 +51,7 @@ def bottle_of(reader: Reader, number: str, as_at: date) -> Bottle | None:
     rows = reader.rows("bottle", "WHERE number = ?", number)
     if not rows:
         return None
+    # an id is a number, so it may stand in the question itself
     shelf = _shelf(reader, as_at.isoformat(), f" AND bottle_id = {int(rows[0]['id'])}")
     return _bottle(rows[0], shelf) if _begun(shelf.events.get(rows[0]["id"])) else None
 
@@ -122,6 +125,7 @@ def _ancestors(child: int, parents: dict[int, list[int]], numbers: dict[int, str
     generation = [child]
     while generation:
         above = {one for bottle in generation for one in parents.get(bottle, ())}
+        # child and seen left out: a loop in the lineage would otherwise never end
         generation = sorted(above - {child, *seen}, key=lambda one: numbers[one])
         seen += generation
     return seen
@@ -142,7 +146,13 @@ def _bottle(row: Row, shelf: _Shelf) -> Bottle:
         cap=row["cap"],
         made_here=bool(row["made_here"]),
         lineage=shelf.lineage.get(row["id"], ()),
+        meant_for=_meant_for(events),
     )
+
+
+def _meant_for(events: list[Row]) -> tuple[str, ...]:
+    made = next((event for event in events if event["kind"] == EntryKind.MADE), None)
+    return tuple(filter(None, made["booking"].split(";"))) if made else ()
 
 
 def _record(row: Row, events: list[Row], line: Row, places: dict[int, Row]) -> Record:
@@ -188,6 +198,7 @@ def _checks(events: list[Row]) -> Iterator[Check]:
     for event in events:
         if event["kind"] in _CHECKS:
             kind = _CHECKS[EntryKind(event["kind"])]
+            # a found strength is a result, neither passed nor failed
             passed = event["passed"] is None or bool(event["passed"])
             yield Check(date.fromisoformat(event["happened_on"]), kind, passed, event["strength"])
 

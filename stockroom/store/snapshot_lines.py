@@ -79,6 +79,7 @@ def _line(
 
 def _rule(row: Row) -> Rule:
     kind = RuleKind(row["rule"])
+    # one pair of columns serves both: a law's temperature, or that of a period
     fades = kind is RuleKind.FADES
     count, unit = row["lasts_count"], row["lasts_unit"]
     return Rule(
@@ -118,6 +119,7 @@ def methods_of(reader: Reader) -> dict[str, Method]:
 
 
 def _method(key: str, row: Row | None, ingredients: tuple[Ingredient, ...]) -> Method:
+    # no time written: counted as the usual and marked, never as none
     if row is None:
         return Method(key, ingredients, minutes_guessed=True)
     return Method(
@@ -152,6 +154,7 @@ def _ingredient(role: str, rows: list[Row], keys: dict[int, str]) -> Ingredient:
     ranked = sorted(rows, key=lambda row: (row["alternative"], row["id"]))
     return Ingredient(
         lines=tuple(keys[row["ingredient_id"]] for row in ranked),
+        # alternatives give the same thing, so the preferred one's amount holds for all
         per_dm3=ranked[0]["per_dm3"],
         only_if_held=frozenset(keys[row["ingredient_id"]] for row in rows if row["only_if_held"]),
         role=role,

@@ -24,6 +24,7 @@ class Numbered(SQLModel):
 class House(SQLModel, table=True):
     """What is settled once for the whole house, one setting a row."""
 
+    # key and value, so that a new setting needs no migration
     setting: str = Field(primary_key=True)
     value: str
     source: str = ""
@@ -52,6 +53,7 @@ class Place(Numbered, table=True):
 
     place: str = Field(unique=True)
     name: str = ""
+    # NULL where nobody hung a thermometer: rules then use their own base temperature
     temperature_c: float | None = None
     meant_for: str = ""
     source: str = ""
@@ -62,6 +64,7 @@ class Department(Numbered, table=True):
 
     department: str = Field(unique=True)
     name: str = ""
+    # NULL: no limit is kept for this department, which is not the same as nothing left
     left_pence: int | None = None
     source: str = ""
 
@@ -119,6 +122,7 @@ class Line(Numbered, table=True):
 
     key: str = Field(unique=True)
     item: str
+    # mixtures and sundries hold no one substance
     substance_id: int | None = Field(default=None, foreign_key="substance.id")
     form: str
     kind: str
@@ -127,6 +131,7 @@ class Line(Numbered, table=True):
     strength_text: str = ""
     formula: str = ""
     molar_mass: float | None = None
+    # a fraction; 1 where the label gives none, which is also the safest guess for weighing
     assay: float = 1.0
     density: float | None = None
     level: int | None = Field(default=None, sa_type=BigInteger)
@@ -144,6 +149,7 @@ class KeepingRule(Numbered, table=True):
 
     line_id: int = Field(foreign_key="line.id")
     rule: str
+    # count and unit apart, so that reading needs no parser
     lasts_count: int | None = None
     lasts_unit: str = ""
     counted_from: str = ""
@@ -165,6 +171,7 @@ class Method(Numbered, table=True):
 
     line_id: int = Field(foreign_key="line.id", unique=True)
     minutes: int = 15
+    # kept, because a plan must own up to what it guessed
     minutes_guessed: bool = False
     finish_minutes: int = 0
     stands_hours: float = 0.0
@@ -194,6 +201,7 @@ class Pack(Numbered, table=True):
     size: int = Field(sa_type=BigInteger)
     text: str
     pence: int
+    # open days; NULL means the house's usual, and the order says so
     lead: int | None = None
     supplier: str = ""
     source: str = ""
@@ -222,6 +230,7 @@ class Requirement(Numbered, table=True):
     recipe_id: int = Field(foreign_key="recipe.id")
     number: int
     line_id: int = Field(foreign_key="line.id")
+    # equal for a plain strength; apart for a range such as 90-100 vol
     lowest: float | None = None
     highest: float | None = None
     strength_text: str = ""
@@ -264,6 +273,7 @@ class Booking(Numbered, table=True):
 
     number: str = Field(unique=True)
     recipe_id: int = Field(foreign_key="recipe.id")
+    # not called "on", which SQL would take for its own
     on_day: date
     minute: int
     groups: int
@@ -296,6 +306,7 @@ class Bottle(Numbered, table=True):
     size: int = Field(sa_type=BigInteger)
     received_on: date | None = None
     made_on: date | None = None
+    # as printed, beside every reading it can have: nothing is settled by storing it
     printed_text: str = ""
     printed_readings: str = ""
     cap: str = ""
@@ -320,6 +331,7 @@ class Entry(Numbered, table=True):
     kind: str
     happened_on: date
     entered_on: date
+    # the moment as text: a local clock reading, never used in a sum
     entered_at: str
     by: str
     change: int = Field(default=0, sa_type=BigInteger)

@@ -45,6 +45,7 @@ def damaged(path: Path) -> StoreTrouble:
 
 def check_there(path: Path) -> None:
     """Pass when a file stands at the path. Raises: StoreTrouble."""
+    # the driver would only say that it cannot open it
     if path.is_dir():
         raise StoreTrouble(f"{path} is a folder, not a store.", "Name the file inside it.")
     if not path.exists():
@@ -68,8 +69,10 @@ def check_revision(path: Path, revision: str | None) -> None:
 
 def in_words(error: sqlite3.Error, path: Path) -> Refused:
     """The driver's error as one of ours, quoting the file it is about."""
+    # absent on errors the driver raises itself, before it asks the library
     name = str(getattr(error, "sqlite_errorname", ""))
     text = str(error)
+    # the two words our triggers begin with
     if text.startswith("NOTENOUGH"):
         return NotEnough("That is more than the bottle holds; nothing was saved.", "Count it.")
     if text.startswith("KEPT"):
@@ -77,6 +80,7 @@ def in_words(error: sqlite3.Error, path: Path) -> Refused:
     for start, words in _WORDS.items():
         if name.startswith(start):
             return StoreTrouble(words[0].format(path=path), words[1])
+    # by name and not by number: each name has several extended numbers
     if name.startswith("SQLITE_NOTADB") or "no such table" in text:
         return foreign(path)
     if name.startswith("SQLITE_CORRUPT"):
@@ -84,6 +88,7 @@ def in_words(error: sqlite3.Error, path: Path) -> Refused:
     return StoreTrouble(f"The store {path} cannot be used: {text}.", "Nothing was saved.")
 
 
+# each says what became of the entry: that is what somebody at the bench needs to know
 _WORDS = {
     "SQLITE_BUSY": (
         "Busy: somebody else is writing to {path}; nothing was saved.",

@@ -50,7 +50,9 @@ def held(path: Path, day: date) -> int:
 
 steps = st.lists(
     st.tuples(
-        st.sampled_from([EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.COUNTED, EntryKind.PUT_RIGHT]),
+        st.sampled_from(
+            [EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.COUNTED, EntryKind.PUT_RIGHT]
+        ),
         st.integers(0, 60),
         st.integers(0, 90),
     ),

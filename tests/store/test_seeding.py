@@ -17,7 +17,8 @@ from stockroom.store.snapshot import facts
 SMALL = {
     "places": "place,name,temperature_c\nA2,solids,20\nF1,refrigerator,5\n",
     "departments": "department,name,left_gbp\nCH,chemistry,120.00\n",
-    "substances": "substance,other_names,formula,cas\nsodium thiosulfate,hypo;thio,Na2S2O3,7772-98-7\n"
+    "substances": "substance,other_names,formula,cas\n"
+    "sodium thiosulfate,hypo;thio,Na2S2O3,7772-98-7\n"
     "sulfuric acid,,H2SO4,\nsodium hypochlorite,,NaClO,\nstarch,,,\n",
     "lines": "item,strength,substance,form,formula,density_g_cm3,measured_in\n"
     "sodium thiosulfate pentahydrate,,sodium thiosulfate,solid,Na2S2O3·5H2O,,\n"
@@ -34,7 +35,8 @@ SMALL = {
     "recipe_lines": "recipe,version,number,line,amount_cm3,per,closeness\n"
     "R1,1,1,sodium thiosulfate 1.00 mol/dm3,160,group,\n",
     "bookings": "booking,recipe,on,time,groups,department\nK1,R1,2027-01-19,09:15,12,CH\n",
-    "bottles": "bottle,line,size_g,size_cm3,received,made,opened,place,left_g,left_cm3,left_on,parents\n"
+    "bottles": "bottle,line,size_g,size_cm3,received,made,opened,place,left_g,left_cm3,left_on,"
+    "parents\n"
     "B01,sodium thiosulfate pentahydrate,1000,,2026-09-01,,2026-09-08,A2,640,,2026-12-18,\n"
     "S01,hypo 1.00 mol/dm3,,1000,,2026-11-16,,F1,,900,2026-12-18,B01\n",
     "history": "number,happened,by,event,bottle,amount_g,amount_cm3,strength,reason,puts_right\n"

@@ -37,24 +37,26 @@ def bottle(raw: sqlite3.Connection, number: str) -> int:
     ],
 )
 def test_the_ledger_refuses(raw: sqlite3.Connection, statement: str) -> None:
-    with pytest.raises(sqlite3.IntegrityError, match="^KEPT "):
+    with pytest.raises(sqlite3.IntegrityError, match=r"^KEPT "):
         raw.execute(statement)
 
 
-@pytest.mark.parametrize("statement", ["UPDATE booking_change SET by = ''", "DELETE FROM booking_change"])
+@pytest.mark.parametrize(
+    "statement", ["UPDATE booking_change SET by = ''", "DELETE FROM booking_change"]
+)
 def test_the_record_of_a_booking_refuses(raw: sqlite3.Connection, statement: str) -> None:
     raw.execute(
         "INSERT INTO booking_change (booking_id, entered_on, entered_at, by, what, before, after)"
         " VALUES (1, '2027-01-04', '', 'T1', 'groups', '8', '9')"
     )
-    with pytest.raises(sqlite3.IntegrityError, match="^KEPT "):
+    with pytest.raises(sqlite3.IntegrityError, match=r"^KEPT "):
         raw.execute(statement)
 
 
 def test_a_draw_beyond_the_balance_is_refused(raw: sqlite3.Connection) -> None:
     held = {"bottle": bottle(raw, "S13"), "kind": "drawn", "right": None}
     raw.execute(NEW, {**held, "change": -130_000})
-    with pytest.raises(sqlite3.IntegrityError, match="^NOTENOUGH "):
+    with pytest.raises(sqlite3.IntegrityError, match=r"^NOTENOUGH "):
         raw.execute(NEW, {**held, "change": -1})
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import contextlib
 import sqlite3
 from collections.abc import Callable
 from datetime import date
@@ -16,15 +17,18 @@ from stockroom.store.engine import writing
 from stockroom.store.snapshot import facts
 
 DAY = date(2027, 1, 4)
+LONG = "x" * 200_000
+"""More than the free pages of the practice store can take."""
 
 
 def read(path: Path) -> None:
     facts(path, DAY)
 
 
-def write(path: Path) -> None:
+def write(path: Path, *statements: str) -> None:
     with writing(path) as session:
-        session.connection().execute(text("UPDATE booking SET groups = 1"))
+        for statement in statements or ("UPDATE booking SET groups = 1",):
+            session.connection().execute(text(statement))
 
 
 BOTH = pytest.mark.parametrize("use", [read, write])
@@ -32,7 +36,7 @@ BOTH = pytest.mark.parametrize("use", [read, write])
 
 @BOTH
 def test_a_missing_store_says_how_to_make_one(tmp_path: Path, use: Callable[[Path], None]) -> None:
-    with pytest.raises(StoreTrouble, match="No store at .*nowhere") as caught:
+    with pytest.raises(StoreTrouble, match=r"No store at .*nowhere") as caught:
         use(tmp_path / "nowhere.sqlite")
     assert "stockroom demo" in caught.value.hint
     assert list(tmp_path.iterdir()) == []
@@ -112,21 +116,19 @@ def test_reading_goes_on_while_somebody_writes(own: Path) -> None:
 def test_a_store_that_cannot_take_more_says_that_nothing_was_saved(
     own: Path, pragma: str, said: str
 ) -> None:
-    long = "x" * 200_000
-    with pytest.raises(StoreTrouble, match=said) as caught, writing(own) as session:
-        session.connection().execute(text(f"PRAGMA {pragma}"))
-        session.connection().execute(text("UPDATE booking SET room = :long"), {"long": long})
+    with pytest.raises(StoreTrouble, match=said) as caught:
+        write(own, f"PRAGMA {pragma}", f"UPDATE booking SET room = '{LONG}'")
     assert "nothing was saved" in caught.value.message
-    assert {booking.room for booking in facts(own, DAY).bookings}.isdisjoint({long})
+    assert LONG not in {booking.room for booking in facts(own, DAY).bookings}
 
 
 def test_what_a_trigger_says_reaches_the_user(own: Path) -> None:
-    with pytest.raises(StoreTrouble, match="never altered"), writing(own) as session:
-        session.connection().execute(text("UPDATE entry SET change = 0"))
+    with pytest.raises(StoreTrouble, match="never altered"):
+        write(own, "UPDATE entry SET change = 0")
 
 
 def test_an_error_of_ones_own_saves_nothing(own: Path) -> None:
-    with pytest.raises(RuntimeError), writing(own) as session:
+    with contextlib.suppress(RuntimeError), writing(own) as session:
         session.connection().execute(text("UPDATE booking SET groups = 199"))
         raise RuntimeError
     assert 199 not in {booking.groups for booking in facts(own, DAY).bookings}

@@ -18,6 +18,7 @@ Column = sa.Column[Any]
 
 def upgrade() -> None:
     """Build the tables, then the triggers that keep the ledger as it was written."""
+    # parents before children: foreign keys are checked as the tables are made
     _house()
     _things()
     _lines()
@@ -42,6 +43,7 @@ def _whole(name: str, *, known: bool = True) -> Column:
     return sa.Column(name, sa.Integer(), nullable=not known)
 
 
+# micrograms outgrow 32 bits at 2 kg, which matters in engines stricter than SQLite
 def _amount(name: str, *, known: bool = True) -> Column:
     return sa.Column(name, sa.BigInteger(), nullable=not known)
 
@@ -114,6 +116,7 @@ def _things() -> None:
     )
     _table(
         "line",
+        # the key is what rows of other tables are typed by, so it may stand once only
         _text("key", unique=True),
         _text("item"),
         _link("substance_id", "substance", known=False),
@@ -289,10 +292,12 @@ def _entries() -> None:
         _text("reason"),
         _text("note"),
         _text("booking"),
+        # unique: the database itself allows one putting-right for each entry
         _link("puts_right", "entry", known=False, unique=True),
     )
 
 
+# KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
 def _never(table: str, action: str, words: str) -> str:
     return (
         f"CREATE TRIGGER {table}_no_{action.lower()} BEFORE {action} ON {table}"

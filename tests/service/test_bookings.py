@@ -1,0 +1,126 @@
+"""Bookings are asked about when they cannot be meant, and every change stays on record."""
+
+from __future__ import annotations
+
+import sqlite3
+from datetime import date
+from pathlib import Path
+from typing import Any
+
+import pytest
+
+from stockroom.errors import BadInput, NotAllowed, StockroomError, UnknownName
+from stockroom.planning.facts import Booking, Firmness
+from stockroom.service import bookings
+from stockroom.service.answers import Done
+from stockroom.store.snapshot import facts
+
+TODAY = date(2027, 1, 11)
+WHO: dict[str, Any] = {"today": TODAY, "by": "P1"}
+
+
+def book(path: Path, **changed: Any) -> Done:
+    usual: dict[str, Any] = {"number": None, "recipe": "R04", "on": date(2027, 3, 9)}
+    usual |= {"time": 555, "groups": 12, "department": "CH"}
+    return bookings.book(path, **(usual | WHO | changed))
+
+
+def seen(path: Path, number: str) -> Booking:
+    return next(one for one in facts(path, TODAY).bookings if one.number == number)
+
+
+def changes(path: Path) -> list[tuple[str, str, str]]:
+    with sqlite3.connect(path) as connection:
+        rows = connection.execute("SELECT what, before, after FROM booking_change ORDER BY id")
+        found = rows.fetchall()
+    connection.close()
+    return found
+
+
+def test_a_booking_gets_the_next_number_and_ten_per_cent_spare(own: Path) -> None:
+    assert book(own).text.startswith("Booked K30: R04 Thiosulfate and acid")
+    booking = seen(own, "K30")
+    assert (booking.groups, booking.spare, booking.minute) == (12, 100, 555)
+    assert (booking.version, booking.firmness) == (1, Firmness.FIRM)
+
+
+def test_a_booking_keeps_the_number_it_is_given(own: Path) -> None:
+    book(own, number="K77", spare=20.0, firmness="pencilled")
+    assert (seen(own, "K77").spare, seen(own, "K77").firmness) == (200, Firmness.PENCILLED)
+
+
+@pytest.mark.parametrize(
+    ("changed", "kind", "said"),
+    [
+        ({"groups": 0}, BadInput, "0 groups"),
+        ({"groups": 400}, BadInput, "400 groups"),
+        ({"spare": 150.0}, BadInput, r"150 %\? Spare is usually 5-20"),
+        ({"recipe": "R4"}, UnknownName, 'No recipe "R4"'),
+        ({"department": ""}, BadInput, "needs to know who pays"),
+        ({"department": "XX"}, UnknownName, 'No department "XX"'),
+        ({"number": "K01"}, BadInput, "K01 is booked already"),
+        ({"firmness": "perhaps"}, UnknownName, 'No firmness "perhaps"'),
+        ({"version": 9}, UnknownName, "R04 has no version 9"),
+        ({"on": date(2027, 3, 8)}, NotAllowed, r"8 March 2027 is closed\. Keep it\?"),
+        ({"on": date(2027, 3, 6)}, NotAllowed, "6 March 2027 is closed"),
+        ({"by": ""}, BadInput, "Whose initials"),
+    ],
+)
+def test_a_booking_that_cannot_be_meant_is_asked_about(
+    own: Path, changed: dict[str, Any], kind: type[StockroomError], said: str
+) -> None:
+    with pytest.raises(kind, match=said):
+        book(own, **changed)
+    assert len(facts(own, TODAY).bookings) == 29
+
+
+def test_a_mistyped_recipe_shows_the_nearest(own: Path) -> None:
+    with pytest.raises(UnknownName) as caught:
+        book(own, recipe="R4")
+    assert caught.value.hint.startswith("Nearest: R04;")
+
+
+def test_a_closed_day_can_be_kept_on_purpose(own: Path) -> None:
+    book(own, on=date(2027, 3, 8), keep=True)
+    assert seen(own, "K30").on == date(2027, 3, 8)
+
+
+def test_a_shift_says_what_was_and_what_is(own: Path) -> None:
+    done = bookings.shift(own, "K06", on=date(2027, 1, 21), groups=13, **WHO)
+    assert done.text == "K06: day 2027-01-20 → 2027-01-21; groups 11 → 13."
+    assert changes(own) == [("day", "2027-01-20", "2027-01-21"), ("groups", "11", "13")]
+    assert (seen(own, "K06").on, seen(own, "K06").groups) == (date(2027, 1, 21), 13)
+
+
+def test_a_shift_of_the_time_is_told_as_a_time(own: Path) -> None:
+    assert "time 11:00 → 14:15" in bookings.shift(own, "K06", time=855, **WHO).text
+
+
+def test_a_booking_may_be_done(own: Path) -> None:
+    bookings.shift(own, "K01", firmness="done", **WHO)
+    assert seen(own, "K01").firmness is Firmness.DONE
+
+
+@pytest.mark.parametrize(
+    ("changed", "kind", "said"),
+    [
+        ({"groups": 11}, BadInput, "K06 is so already"),
+        ({}, BadInput, "K06 is so already"),
+        ({"groups": 201}, BadInput, "201 groups"),
+        ({"on": date(2027, 2, 16)}, NotAllowed, "16 February 2027 is closed"),
+        ({"firmness": "sure"}, UnknownName, 'No firmness "sure"'),
+    ],
+)
+def test_a_shift_that_cannot_be_meant_changes_nothing(
+    own: Path, changed: dict[str, Any], kind: type[StockroomError], said: str
+) -> None:
+    with pytest.raises(kind, match=said):
+        bookings.shift(own, "K06", **(changed | WHO))
+    assert changes(own) == []
+
+
+def test_a_dropped_booking_stays_on_record(own: Path) -> None:
+    bookings.cancel(own, "K06", **WHO)
+    assert changes(own) == [("firmness", "firm", "dropped")]
+    with pytest.raises(NotAllowed, match="K06 is dropped already"):
+        bookings.cancel(own, "K06", **WHO)
