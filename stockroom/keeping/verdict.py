@@ -92,8 +92,11 @@ def verdict(
     Order: gone, not found, set aside, no date, past, watch, weak, sound. Never
     raises; a bottle without limits is sound with no date.
     """
-    strengths = strengths_on(record, rules, on)
-    limits = limits_of(record, rules, on, purpose)
+    return judge(record, limits_of(record, rules, on, purpose), strengths_on(record, rules, on), on)
+
+
+def judge(record: Record, limits: list[Limit], strengths: Strengths, on: date) -> Verdict:
+    """The verdict from limits and strengths already worked out, for whoever asks many times."""
     unusable = _out_of_use(record, on)
     if unusable:
         looks = unusable[0] is Condition.NO_DATE and not any(limit.until < on for limit in limits)

@@ -81,7 +81,7 @@ def _course(line: Line, takes: list[Taken], shelf: Shelf) -> Course:
 
 def _usable(shelf: Shelf, line: Line, on: date) -> list[Bottle]:
     bottles = shelf.in_order(shelf.of_line(line.key), on, Purpose.ANY)
-    return [b for b in bottles if shelf.verdict_planned(b.number, on).condition in USABLE]
+    return [bottle for bottle in bottles if shelf.may_be_used(bottle.number, on)]
 
 
 def _draw_down(pools: dict[str, int], usable: list[Bottle], amount: int) -> int:

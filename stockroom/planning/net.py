@@ -12,12 +12,12 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from datetime import date
 
-from stockroom.planning.amounts import say, solute_in, take_for
+from stockroom.planning.amounts import say, solute_in
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import Facts, Form, Line, Method
-from stockroom.planning.fitness import judge_for_dilution, judge_for_need
 from stockroom.planning.order_of_lines import settling_order
-from stockroom.planning.shelf import Judge, Promise, Shelf, solute_held
+from stockroom.planning.serve import Serving
+from stockroom.planning.shelf import Shelf
 from stockroom.planning.timing import Moment, deadline_for, earliest_ready, hours, latest_start
 from stockroom.planning.wants import Settled, Want
 from stockroom.planning.windows import earliest_start
@@ -76,6 +76,7 @@ class _Netting:
     def __init__(self, facts: Facts) -> None:
         self.facts = facts
         self.shelf = Shelf(facts)
+        self.serving = Serving(facts, self.shelf)
         self.waiting: dict[str, list[Want]] = {}
 
     def settle(self, wants: list[Want]) -> None:
@@ -111,14 +112,14 @@ class _Netting:
         if refused:
             want.settled = Settled.REFUSED
             want.reasons.append(refused)
-        elif self._from_shelf(want, line):
+        elif self.serving.from_shelf(want, line):
             want.settled = Settled.HELD
         elif want.tried + 1 < len(want.choices) and not self._may_make(want, line):
             want.tried += 1
             self._queue(want)
         elif self._may_make(want, line):
             self._make(want, line)
-        elif not self._from_shelf(want, line, last_drops=not self._buyable(want)):
+        elif not self.serving.from_shelf(want, line, last_drops=not self._buyable(want)):
             self._buy(want, line)
 
     def _refusal(self, want: Want, line: Line) -> str:
@@ -140,96 +141,6 @@ class _Netting:
     def _may_make(self, want: Want, line: Line) -> bool:
         held_only = want.ingredient is not None and line.key in want.ingredient.only_if_held
         return line.key in self.facts.methods and not held_only
-
-    # -- from the shelf -------------------------------------------------------------
-
-    def _from_shelf(self, want: Want, line: Line, *, last_drops: bool = False) -> bool:
-        """Promise it from the shelf if that can be done; `last_drops` lifts "too close"."""
-        if line.never_kept:
-            return False
-        good = self._good_bottles(want, line)
-        for number in good:
-            amount = self._amount_from(want, line, number)
-            enough = amount <= self.shelf.left[number]
-            if enough and (last_drops or not self._too_close(want, number, amount)):
-                self._promise(want, line, number, amount)
-                want.settled = Settled.HELD
-                return True
-        together = self._together(want, line, good)
-        for number, amount in together:
-            self._promise(want, line, number, amount)
-        return bool(together)
-
-    def _good_bottles(self, want: Want, line: Line) -> list[str]:
-        judge, on = self._judge(want, line), self._use_day(want)
-        good = []
-        bottles = self.shelf.of_line(line.key)
-        for bottle in self.shelf.in_order(bottles, on, want.purpose):
-            reason = self.shelf.unfit(bottle.number, on, want.purpose, judge)
-            if reason:
-                want.passed_over.append((bottle.number, reason))
-            elif self.shelf.left[bottle.number] > 0:
-                good.append(bottle.number)
-        return good
-
-    def _use_day(self, want: Want) -> date:
-        # an ingredient is used when the make starts, at the latest on its last possible day
-        return want.need.on if want.under is None else want.deadline[0]
-
-    def _judge(self, want: Want, line: Line) -> Judge:
-        if want.under is None:
-            return judge_for_need(want.need.requirement, line, want.need.on)
-        product = self.facts.lines[want.under.line]
-        per_dm3 = want.ingredient.per_dm3 if want.ingredient else None
-        return judge_for_dilution(line, product, per_dm3)
-
-    def _amount_from(self, want: Want, line: Line, number: str | None) -> int:
-        if want.amount is not None:
-            return want.amount
-        assert want.solute is not None
-        day = self._use_day(want)
-        held = solute_held(self.shelf, line, number, day) if number else None
-        return take_for(line, held, want.solute)
-
-    def _too_close(self, want: Want, number: str, amount: int) -> bool:
-        if not self.shelf.too_close(number, amount, want.need.booking.number):
-            return False
-        line = self.facts.lines[self.shelf.bottle[number].line]
-        held = self.shelf.bottle[number].left
-        gone = held - self.shelf.left[number] + amount
-        words = f"{say(gone, line.kind)} of {say(held, line.kind)} in {number}: too close to call"
-        want.passed_over.append((number, words))
-        want.reasons.append(f"{words}, count on a fresh make or bottle")
-        return True
-
-    def _together(self, want: Want, line: Line, good: list[str]) -> list[tuple[str, int]]:
-        """Several bottles for one want: any of a solid, equal strengths of a solution."""
-        alike = [number for number in good if self._alike(want, line, good[0], number)]
-        if len(alike) < 2:
-            return []
-        missing = self._amount_from(want, line, alike[0])
-        shares: list[tuple[str, int]] = []
-        for number in alike:
-            share = min(missing, self.shelf.left[number])
-            shares.append((number, share))
-            missing -= share
-        last = shares[-1]
-        if missing or self.shelf.too_close(*last, want.need.booking.number):
-            return []
-        return [(number, share) for number, share in shares if share]
-
-    def _alike(self, want: Want, line: Line, first: str, number: str) -> bool:
-        day = self._use_day(want)
-        one, other = (solute_held(self.shelf, line, n, day) for n in (first, number))
-        if one is None or other is None:
-            return one is other
-        return abs(other - one) <= _SAME_STRENGTH * one
-
-    def _promise(self, want: Want, line: Line, number: str, amount: int) -> None:
-        judge = self._judge(want, line)
-        made = Promise(number, amount, self._use_day(want), want.ref, want.purpose, judge)
-        self.shelf.promise(made)
-        want.promises.append(made)
 
     # -- by making --------------------------------------------------------------------
 
@@ -264,7 +175,7 @@ class _Netting:
     def _earliest(self, want: Want, line: Line) -> date:
         assert want.latest is not None
         requirement = want.need.requirement if want.under is None else None
-        return earliest_start(self.facts, line, requirement, self._use_day(want), want.latest[0])
+        return earliest_start(self.facts, line, requirement, want.use_day, want.latest[0])
 
     def _cannot(self, want: Want, line: Line, method: Method) -> None:
         want.settled = Settled.SHORT
@@ -278,7 +189,7 @@ class _Netting:
 
     def _add_parts(self, want: Want, line: Line, method: Method) -> None:
         assert want.latest is not None
-        volume = self._amount_from(want, line, None)
+        volume = self.serving.amount_from(want, line)
         for ingredient in method.ingredients:
             part = Want(want.need, ingredient.lines, want.latest, under=want, ingredient=ingredient)
             if ingredient.per_dm3 is not None:
@@ -300,8 +211,8 @@ class _Netting:
         if line.form is Form.SUNDRY:
             want.settled, want.available = Settled.SHOP, self.facts.as_at
             return
-        whole = self._amount_from(want, line, None)
-        self._part_from_jar(want, line)
+        whole = self.serving.amount_from(want, line)
+        self.serving.rest_of_jars(want, line)
         want.to_buy = whole - sum(promise.amount for promise in want.promises)
         arrives = self.arrival(line)
         if not self._can_be_bought(line.key):
@@ -320,17 +231,6 @@ class _Netting:
         line = self.facts.lines[key]
         bought = line.form in (Form.SOLID, Form.LIQUID, Form.SUNDRY) or bool(line.packs)
         return bought and key not in self.facts.methods
-
-    def _part_from_jar(self, want: Want, line: Line) -> None:
-        """Take what there is of a solid; the rest is bought."""
-        if line.form is not Form.SOLID:
-            return
-        missing = self._amount_from(want, line, None)
-        for number in self._good_bottles(want, line):
-            share = min(missing, self.shelf.left[number])
-            if share:
-                self._promise(want, line, number, share)
-                missing -= share
 
     def arrival(self, line: Line) -> date:
         """The open day an order placed today would come, at the shortest lead time known."""

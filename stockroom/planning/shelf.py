@@ -7,12 +7,14 @@ once; a sealed bottle the plan opens ages as opened from that day.
 from __future__ import annotations
 
 from collections import defaultdict
-from collections.abc import Callable, Iterable
+from collections.abc import Callable
 from dataclasses import dataclass, replace
 from datetime import date
 
-from stockroom.keeping.rules import Purpose
-from stockroom.keeping.verdict import USABLE, Verdict, verdict
+from stockroom.keeping.record import CheckKind, Record
+from stockroom.keeping.rules import Origin, Purpose, RuleKind
+from stockroom.keeping.strength import Strengths, strengths_on
+from stockroom.keeping.verdict import USABLE, Limit, Verdict, judge, limits_of
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Bottle, Facts, Form, Line
 
@@ -46,6 +48,13 @@ class Shelf:
         self.promises: dict[str, list[Promise]] = defaultdict(list)
         self._by_line: dict[str, list[Bottle]] = defaultdict(list)
         self._judged: dict[tuple[str, date, Purpose, date | None], Verdict] = {}
+        self._limits: dict[tuple[str, Purpose, date | None], tuple[Record, list[Limit]]] = {}
+        self._strengths: dict[tuple[str, date | None, date | None], Strengths] = {}
+        self._opening_matters = {
+            key
+            for key, line in facts.lines.items()
+            if any(rule.origin is Origin.OPENED for rule in line.rules)
+        }
         for bottle in sorted(facts.bottles, key=lambda b: b.number):
             self._by_line[bottle.line].append(bottle)
 
@@ -67,19 +76,55 @@ class Shelf:
     def verdict(
         self, number: str, on: date, purpose: Purpose = Purpose.ANY, opened: date | None = None
     ) -> Verdict:
-        """Judge a bottle on a day, as opened on `opened` if it is still sealed."""
-        opened = opened if self.is_sealed(number) else None
+        """Judge a bottle on a day from `as_at` on, as opened on `opened` if it is still sealed."""
+        opened = self._opening_that_counts(number, opened)
         key = (number, on, purpose, opened)
         if key not in self._judged:
-            bottle = self.bottle[number]
-            record = replace(bottle.record, opened=opened) if opened else bottle.record
-            rules = self.facts.lines[bottle.line].rules
-            self._judged[key] = verdict(record, rules, on, purpose)
+            record, limits = self._limits_of(number, purpose, opened)
+            strengths = self._strengths_of(number, record, on)
+            self._judged[key] = judge(record, limits, strengths, on)
         return self._judged[key]
+
+    def _opening_that_counts(self, number: str, opened: date | None) -> date | None:
+        # most lines age alike opened or not: one answer then serves every day
+        counts = self.is_sealed(number) and self._line(number).key in self._opening_matters
+        return opened if counts else None
+
+    def _line(self, number: str) -> Line:
+        return self.facts.lines[self.bottle[number].line]
+
+    def _limits_of(
+        self, number: str, purpose: Purpose, opened: date | None
+    ) -> tuple[Record, list[Limit]]:
+        # nothing entered lies after as_at, so a bottle's limits are the same on every later day
+        key = (number, purpose, opened)
+        if key not in self._limits:
+            record = self.bottle[number].record
+            record = replace(record, opened=opened) if opened else record
+            day = max(self.facts.as_at, opened or self.facts.as_at)
+            self._limits[key] = record, limits_of(record, self._line(number).rules, day, purpose)
+        return self._limits[key]
+
+    def _strengths_of(self, number: str, record: Record, on: date) -> Strengths:
+        line = self._line(number)
+        fades = any(rule.kind is RuleKind.FADES for rule in line.rules)
+        key = (number, on if fades else None, record.opened)
+        if key not in self._strengths:
+            self._strengths[key] = strengths_on(record, line.rules, on)
+        return self._strengths[key]
+
+    def usable_until(self, number: str, purpose: Purpose, opened: date | None) -> date:
+        """The last day before any limit that is not a recheck; far off if there is none."""
+        _, limits = self._limits_of(number, purpose, self._opening_that_counts(number, opened))
+        return min((x.until for x in limits if not x.known_until), default=date.max)
 
     def verdict_planned(self, number: str, on: date, purpose: Purpose = Purpose.ANY) -> Verdict:
         """Judge a bottle on a day, opened as the plan so far opens it."""
         return self.verdict(number, on, purpose, self.opening(number))
+
+    def may_be_used(self, number: str, on: date) -> bool:
+        """True when it is sound, watch or weak on a day, as the plan so far opens it."""
+        return self.verdict_planned(number, on).condition in USABLE
 
     def unfit(self, number: str, on: date, purpose: Purpose, judge: Judge) -> str:
         """Why this bottle cannot be drawn on that day for that purpose; "" when it can.
@@ -130,20 +175,26 @@ class Shelf:
             return False
         return after < max(TOO_CLOSE_UL, TOO_CLOSE_PART * bottle.left)
 
-    def in_order(self, bottles: Iterable[Bottle], on: date, purpose: Purpose) -> list[Bottle]:
+    def in_order(self, bottles: list[Bottle], on: date, purpose: Purpose) -> list[Bottle]:
         """Bottles in the order to use them: going past soonest, then open ones, then number.
 
         For an exact purpose the most recently checked comes first.
         """
 
+        matters = any(bottle.line in self._opening_matters for bottle in bottles)
+
         def key(bottle: Bottle) -> tuple[int, date, bool, str]:
-            judged = self.verdict(bottle.number, on, purpose, on)
-            found_on = judged.strengths.found_on
-            recent = -found_on.toordinal() if purpose is Purpose.EXACT and found_on else 0
-            until = judged.usable_until or date.max
+            recent = -_last_found(bottle) if purpose is Purpose.EXACT else 0
+            until = self.usable_until(bottle.number, purpose, on if matters else None)
             return recent, until, self.is_sealed(bottle.number), bottle.number
 
         return sorted(bottles, key=key)
+
+
+def _last_found(bottle: Bottle) -> int:
+    """The day, as a number, of the last strength found of it; 0 when never."""
+    found = [c.on for c in bottle.record.checks if c.kind is CheckKind.FOUND and c.passed]
+    return max(found).toordinal() if found else 0
 
 
 def solute_held(shelf: Shelf, line: Line, number: str, on: date) -> float | None:

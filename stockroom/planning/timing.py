@@ -43,8 +43,11 @@ def latest_start(
 ) -> Moment | None:
     """The last moment work can start and still be ready by `deadline`; None before `floor`.
 
-    Never later in the day than leaves the hands-on minutes inside staffed hours.
+    Never later in the day than leaves the hands-on minutes inside staffed hours;
+    None, too, for work longer than a staffed day.
     """
+    if method.minutes > calendar.open_to - calendar.open_from:
+        return None
     day = calendar.on_or_before(deadline[0])
     while day >= floor:
         if ready_at((day, calendar.open_from), method, calendar) <= deadline:

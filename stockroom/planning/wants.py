@@ -69,6 +69,11 @@ class Want:
         return self.need.ref
 
     @property
+    def use_day(self) -> date:
+        """The day it is used: the booking's, or the last day its make can start."""
+        return self.need.on if self.under is None else self.deadline[0]
+
+    @property
     def purpose(self) -> Purpose:
         """Exact only for the need itself: what it is made from only has to be known."""
         exact = self.under is None and self.need.requirement.closeness is Closeness.EXACT

@@ -45,7 +45,7 @@ def test_what_stands_on_the_shelf_is_had() -> None:
     )  # fmt: skip
     assert outcomes(made) == {"K1.1": Outcome.HAVE}
     assert [(d.bottle, d.amount) for d in answer(made, "K1.1").draws] == [("S1", cm3(500))]
-    assert made.makes == made.orders == made.short == ()
+    assert (made.makes, made.orders, made.short) == ((), (), ())
 
 
 def test_what_is_not_there_is_made_the_open_day_before() -> None:
@@ -108,7 +108,7 @@ def test_the_day_it_can_come_is_in_time_to_make_it() -> None:
     assert make_of(made, HALF).on == day("01-18")
 
 
-# -- several levels ---------------------------------------------------------------------------
+# -- several levels --------------------------------------------------------------------
 
 ACID = solution(2.0, "sulfuric acid")
 WEAK_ACID = solution(0.5, "sulfuric acid")
@@ -157,7 +157,7 @@ def test_a_barred_solvent_refuses_the_need_and_holds_nothing() -> None:
     made = planned(IRON_LINES, recipes=[barring], **IRON_HOUSE)
     assert outcomes(made) == {"K1.1": Outcome.REFUSED}
     assert made.short[0].reason == ("sulfuric acid is barred in R01: throws barium sulfate down")
-    assert made.makes == made.orders == ()
+    assert (made.makes, made.orders) == ((), ())
     assert answer(made, "K1.1").draws == ()
 
 
@@ -189,7 +189,7 @@ def test_a_swap_is_not_taken_by_itself() -> None:
     assert outcomes(made) == {"K1.1": Outcome.SHORT}
 
 
-# -- never kept ---------------------------------------------------------------------------------
+# -- never kept ------------------------------------------------------------------------
 
 SILVER = solution(0.05, "ammoniacal silver", never_kept="can turn explosive")
 
@@ -238,7 +238,7 @@ def test_a_never_kept_make_is_mixed_on_the_day_of_each_booking(
     assert all(a.make == "" or a.booking.minute > 490 for a in made.needs)
 
 
-# -- names and circles ----------------------------------------------------------------------------
+# -- names and circles -----------------------------------------------------------------
 
 
 def test_a_recipe_asking_for_no_stock_line_names_recipe_and_line() -> None:
