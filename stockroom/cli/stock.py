@@ -154,7 +154,7 @@ def spill(
     ctx: typer.Context,
     bottle: Bottle,
     amount: AmountText,
-    note: Annotated[str, typer.Option(help="How it came about.")] = "",
+    note: Annotated[str, typer.Option("--note", "--why", help="How it came about.")] = "",
     on: Happened = None,
 ) -> None:
     """Some was spilled: taken off what is left, never counted as used.

@@ -29,6 +29,11 @@ class Need:
         return self.booking.on
 
     @property
+    def fresh(self) -> bool:
+        """True when it must be made the same morning: the recipe says so, or it is never kept."""
+        return self.requirement.fresh or bool(self.line.never_kept)
+
+    @property
     def rank(self) -> tuple[int, date, int, str, int]:
         """Who is served first: firm before pencilled, then by day, time and number."""
         pencilled = int(self.booking.firmness is Firmness.PENCILLED)

@@ -127,13 +127,30 @@ class _Making:
         for key in settling_order(self.facts):
             groups: dict[tuple[object, ...], list[Want]] = {}
             for want in self.to_make.get(key, []):
-                groups.setdefault(_signature(self.facts, want), []).append(want)
+                groups.setdefault(self._signature(want), []).append(want)
             for signature in sorted(groups, key=str):
                 self._make_line(self.facts.lines[key], groups[signature])
         self.batches.sort(key=lambda b: (b.start, b.line.key, b.needs[0].rank))
         for number, batch in enumerate(self.batches, 1):
             batch.id = f"M{number:02d}"
         return Made(self.batches, self.taken, self.unmet)
+
+    def _signature(self, want: Want) -> tuple[object, ...]:
+        """What it is made from: only wants made from the same things share a batch.
+
+        What goes into one batch is one thing, whichever bottles its parts were
+        promised: it is told by the first of them.
+        """
+        if want.under is not None:
+            batch = self.batch_of[id(want.under)]
+            first = next(part for w in batch.wants for part in w.parts if part.line == want.line)
+            want = first if first.settled is Settled.MAKE else want
+        parts = []
+        for part in want.parts:
+            solid = self.facts.lines[part.line].form is Form.SOLID
+            bottles = () if solid else tuple(promise.bottle for promise in part.promises)
+            parts.append((part.line, part.settled is Settled.MAKE, bottles))
+        return tuple(parts)
 
     def _make_line(self, line: Line, wants: list[Want]) -> None:
         method = self.facts.methods[line.key]
@@ -163,8 +180,8 @@ class _Making:
     def _item_for_need(self, want: Want) -> Item:
         assert want.latest and want.amount is not None
         first = max(want.earliest or want.latest[0], want.ready_from or want.latest[0])
-        fresh = want.need.requirement.fresh
         on, latest = want.need.on, want.latest[0]
+        fresh = latest == on
         first = min(first, latest)
         return Item([want], want.amount, on, want.deadline, first, latest, fresh)
 
@@ -198,9 +215,8 @@ class _Making:
             volume = method.smallest_batch
             reasons.append(f"never less than {say(volume, Kind.VOLUME)} is made")
         weighable, why = self._weighable(line, method, run, volume)
-        if weighable > volume:
-            volume = -(-weighable // step) * step
-            reasons.append(why)
+        volume = max(volume, -(-weighable // step) * step)
+        reasons += [why] if why else []
         return volume, volume - exact, reasons
 
     def _weighable(self, line: Line, method: Method, run: Run, volume: int) -> tuple[int, str]:
@@ -209,7 +225,7 @@ class _Making:
         balance = min(steps, key=lambda b: (b.step, b.name), default=None)
         tolerance = _closest(run)
         if balance is None or tolerance is None:
-            return volume, ""
+            return volume, "No balance that day" if self.facts.balances else ""
         least = least_weighable(balance.step / 1e6, tolerance)
         for source in self._solids(line, method, run):
             grams = draw_for(source[0], None, line, volume, source[1]) / 1e6
@@ -252,7 +268,22 @@ class _Making:
                 assert part.ingredient is not None
                 by_ingredient.setdefault(part.ingredient, []).append(part)
         for ingredient, parts in by_ingredient.items():
+            self._no_more_than_held(batch, ingredient, parts)
+        for ingredient, parts in by_ingredient.items():
             self._draw(batch, ingredient, parts)
+
+    def _no_more_than_held(self, batch: Batch, ingredient: Ingredient, parts: list[Want]) -> None:
+        """Rounding a batch up stops at what the bottles of a solution promised to it hold."""
+        line = self.facts.lines[parts[0].line]
+        promises = [promise for part in parts for promise in part.promises]
+        if line.form is Form.SOLID or not promises:
+            return
+        held = sum(self.shelf.left[number] for number in {p.bottle for p in promises})
+        held += sum(promise.amount for promise in promises)
+        strength = solute_held(self.shelf, line, promises[0].bottle, batch.start[0])
+        wanted = draw_for(line, strength, batch.line, batch.volume, ingredient.per_dm3)
+        if wanted > held:
+            batch.volume, batch.forced = batch.run.needed, 0
 
     def _draw(self, batch: Batch, ingredient: Ingredient, parts: list[Want]) -> None:
         line = self.facts.lines[parts[0].line]
@@ -310,16 +341,6 @@ class _Making:
     def _exact(self, part: Want, line: Line) -> int:
         promised = sum(promise.amount for promise in part.promises)
         return promised + part.to_buy
-
-
-def _signature(facts: Facts, want: Want) -> tuple[object, ...]:
-    """What it is made from: only wants made from the same things share a batch."""
-    parts = []
-    for part in want.parts:
-        solid = facts.lines[part.line].form is Form.SOLID
-        bottles = () if solid else tuple(promise.bottle for promise in part.promises)
-        parts.append((part.line, part.settled is Settled.MAKE, bottles))
-    return tuple(parts)
 
 
 def _closest(run: Run) -> float | None:

@@ -20,7 +20,7 @@ from stockroom.planning.serve import Serving
 from stockroom.planning.shelf import Shelf
 from stockroom.planning.timing import Moment, deadline_for, earliest_ready, hours, latest_start
 from stockroom.planning.wants import Settled, Want
-from stockroom.planning.windows import earliest_start
+from stockroom.planning.windows import earliest_start, will_do
 from stockroom.safety.bars import barred_by
 
 _SAME_STRENGTH = 1e-3
@@ -54,15 +54,14 @@ def net(facts: Facts, needs: tuple[Need, ...]) -> Netted:
 
 
 def _root(facts: Facts, need: Need) -> Want:
-    booking, requirement = need.booking, need.requirement
-    fresh = requirement.fresh or bool(need.line.never_kept)
+    booking = need.booking
     method = facts.methods.get(need.line.key)
     deadline = (booking.on, booking.minute)
     if method:
         deadline = deadline_for(
             booking.on,
             booking.minute,
-            fresh=fresh,
+            fresh=need.fresh,
             method=method,
             calendar=facts.calendar,
             house=facts.house,
@@ -78,11 +77,13 @@ class _Netting:
         self.shelf = Shelf(facts)
         self.serving = Serving(facts, self.shelf)
         self.waiting: dict[str, list[Want]] = {}
+        self.passed: set[str] = set()
 
     def settle(self, wants: list[Want]) -> None:
         for want in wants:
             self._queue(want)
         for key in settling_order(self.facts):
+            self.passed.add(key)
             for want in sorted(self.waiting.get(key, []), key=lambda w: w.need.rank):
                 self._settle_one(want)
         for want in wants:
@@ -104,17 +105,22 @@ class _Netting:
         return False
 
     def _queue(self, want: Want) -> None:
-        self.waiting.setdefault(want.line, []).append(want)
+        if want.line in self.passed:
+            # a later choice whose turn is over: it takes what is left there
+            self._settle_one(want)
+        else:
+            self.waiting.setdefault(want.line, []).append(want)
 
     def _settle_one(self, want: Want) -> None:
         line = self.facts.lines[want.line]
+        more = want.tried + 1 < len(want.choices)
         refused = self._refusal(want, line)
-        if refused:
+        if refused and not more:
             want.settled = Settled.REFUSED
             want.reasons.append(refused)
-        elif self.serving.from_shelf(want, line):
+        elif not refused and self.serving.from_shelf(want, line):
             want.settled = Settled.HELD
-        elif want.tried + 1 < len(want.choices) and not self._may_make(want, line):
+        elif more and (refused or not self._may_make(want, line)):
             want.tried += 1
             self._queue(want)
         elif self._may_make(want, line):
@@ -146,9 +152,9 @@ class _Netting:
 
     def _make(self, want: Want, line: Line) -> None:
         method = self.facts.methods[line.key]
-        fresh = want.under is None and want.need.requirement.fresh
+        fresh = want.under is None and want.need.fresh
         want.method = method
-        want.latest = self._latest(want, method)
+        want.latest = self._latest(want, line, method)
         if want.latest is None:
             self._cannot(want, line, method)
         elif fresh and want.latest[0] != want.need.on:
@@ -159,18 +165,29 @@ class _Netting:
             want.settled = Settled.MAKE
             self._add_parts(want, line, method)
 
-    def _latest(self, want: Want, method: Method) -> Moment | None:
-        """The last start in time; too late for the day before, the morning itself will do."""
-        calendar, floor = self.facts.calendar, self.facts.as_at
-        found = latest_start(want.deadline, method, calendar, floor)
+    def _latest(self, want: Want, line: Line, method: Method) -> Moment | None:
+        """The last start in time and not too early to keep; else the morning itself may do."""
+        found = self._last_good_start(want, line, method, want.deadline)
         own_time = (want.need.on, want.need.booking.minute)
         if found is not None or want.under is not None or want.deadline == own_time:
             return found
-        found = latest_start(own_time, method, calendar, floor)
+        found = self._last_good_start(want, line, method, own_time)
         if found is not None:
+            day_before = self.facts.calendar.before(want.need.on, 1)
+            late = day_before < self.facts.as_at
+            why = "it is too late for that" if late else "it would not keep, or not be ready"
             want.deadline = own_time
-            want.reasons.append("too late for the day before, as the house has it")
+            want.reasons.append(f"not done by {day_before} as the house has it: {why}")
         return found
+
+    def _last_good_start(
+        self, want: Want, line: Line, method: Method, deadline: Moment
+    ) -> Moment | None:
+        found = latest_start(deadline, method, self.facts.calendar, self.facts.as_at)
+        requirement = want.need.requirement if want.under is None else None
+        if found is None or will_do(line, requirement, found[0], want.use_day):
+            return found
+        return None
 
     def _earliest(self, want: Want, line: Line) -> date:
         assert want.latest is not None

@@ -7,7 +7,7 @@ from stockroom.planning.facts import Facts
 
 
 def settling_order(facts: Facts) -> list[str]:
-    """Every line key, each before its ingredients, and first choices before later ones.
+    """Every line key, each before its ingredients.
 
     Raises NotAllowed for a line made, in the end, from itself.
     """
@@ -25,8 +25,6 @@ def _successors(facts: Facts) -> dict[str, list[str]]:
     for method in facts.methods.values():
         for ingredient in method.ingredients:
             after.setdefault(method.line, []).extend(ingredient.lines)
-            for first, second in zip(ingredient.lines, ingredient.lines[1:], strict=False):
-                after.setdefault(first, []).append(second)
     return after
 
 

@@ -9,7 +9,7 @@ from __future__ import annotations
 from collections import defaultdict
 from collections.abc import Callable
 from dataclasses import dataclass, replace
-from datetime import date
+from datetime import date, timedelta
 
 from stockroom.keeping.record import CheckKind, Record
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
@@ -143,11 +143,22 @@ class Shelf:
         return ""
 
     def _unfit_on(self, number: str, on: date, purpose: Purpose, judge: Judge, opened: date) -> str:
+        standing_until = self._ready_on(number)
+        if standing_until and on < standing_until:
+            return f"still standing until {standing_until}"
         judged = self.verdict(number, on, purpose, opened)
         if judged.condition not in USABLE:
             when = f" after {judged.good_until}" if judged.good_until else ""
             return f"{judged.condition}{when} ({judged.decided_by})"
         return judge(self.bottle[number], judged)
+
+    def _ready_on(self, number: str) -> date | None:
+        """The day a made bottle has stood long enough; standing under half a day does not count."""
+        bottle = self.bottle[number]
+        method = self.facts.methods.get(bottle.line)
+        if method is None or bottle.record.made is None or not bottle.made_here:
+            return bottle.record.ready_on
+        return bottle.record.made + timedelta(days=round(method.stands_hours / 24))
 
     def promise(self, made: Promise) -> None:
         """Set aside part of a bottle; the balance never goes below zero."""

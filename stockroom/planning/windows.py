@@ -27,7 +27,7 @@ def earliest_start(
     # the older a batch the less it will do, so the answer splits the days in two
     while low < high:
         middle = (low + high) // 2
-        if _will_do(line, requirement, first + timedelta(days=middle), wanted):
+        if will_do(line, requirement, first + timedelta(days=middle), wanted):
             high = middle
         else:
             low = middle + 1
@@ -36,6 +36,8 @@ def earliest_start(
 
 def good_until(line: Line, made: date) -> date | None:
     """The last good day of a batch of a line made on a day; None when no rule limits it."""
+    if line.never_kept:
+        return made
     return _good_until(line.rules, line.strength, made)
 
 
@@ -46,7 +48,12 @@ def _good_until(rules: tuple[Rule, ...], strength: float | None, made: date) -> 
     return min((x.until for x in limits if not x.known_until), default=None)
 
 
-def _will_do(line: Line, requirement: Requirement | None, made: date, wanted: date) -> bool:
+def will_do(line: Line, requirement: Requirement | None, made: date, wanted: date) -> bool:
+    """True when a batch of a line made on a day will still do on the day it is wanted.
+
+    Life, the recipe's freshest age and fading are looked at; `requirement` None
+    (an ingredient) asks for the life only.
+    """
     until = good_until(line, made)
     if until is not None and until < wanted:
         return False

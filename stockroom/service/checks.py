@@ -57,7 +57,7 @@ def found(
             text,
             checked,
             entry,
-            following=f"stockroom label {checked.number}",
+            following="stockroom plan",
             details=_until(work, checked),
         )
 

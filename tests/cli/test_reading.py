@@ -73,9 +73,17 @@ def test_strong_peroxide_for_k15_is_had_from_b02(stockroom: Stockroom, practice:
 def test_a_period_narrows_what_is_made(stockroom: Stockroom, practice: Path) -> None:
     words = ("fresh", "--from", "2027-01-25", "--to", "2027-01-29", "--json")
     makes = stockroom(*words, store=practice).json["makes"]
-    that_week = {"K07", "K08", "K09", "K10"}
     assert makes
-    assert all(that_week & set(make["for"]) for make in makes)
+    assert {make["on"] for make in makes} <= {f"2027-01-{day}" for day in range(25, 30)}
+    assert {"K08", "K11"} <= {booking for make in makes for booking in make["for"]}
+
+
+def test_a_week_of_the_plan_is_that_week_of_the_term(stockroom: Stockroom, practice: Path) -> None:
+    """Asking about one week changes no batch: its makes are the term's, number and all."""
+    week = stockroom("plan", "--from", "2027-02-01", "--to", "2027-02-05", "--json", store=practice)
+    term = stockroom("plan", "--json", store=practice).json
+    assert {need["booking"] for need in week.json["needs"]} == {"K11", "K12", "K13", "K14"}
+    assert all(make in term["makes"] for make in week.json["makes"])
 
 
 def test_as_at_changes_what_is_past_and_needs_no_clock(
