@@ -51,7 +51,8 @@ def _order(order: Order, width: int, reasons: int) -> list[str]:
     bought = f"{order.packs}{TIED}×{TIED}{order.pack.replace(' ', TIED)}"
     first = f"{day(order.order_by)}  {order.item}, {bought}, {money(order.pence)}{late}"
     when = "now" if order.late else "by then"
-    needed = f"{order.id}: needed {day(order.need_by)}, comes {day(order.arrives)} if ordered {when}"
+    comes = f"comes {day(order.arrives)} if ordered {when}"
+    needed = f"{order.id}: needed {day(order.need_by)}, {comes}"
     served = f"; for {listed(order.for_bookings)}" if order.for_bookings else ""
     paid = ", ".join(f"{department}{TIED}{money(pence)}" for department, pence in order.shares)
     details = [f"{needed}{served}{'; paid by ' + paid if paid else ''}", *order.reasons[:reasons]]
