@@ -202,7 +202,6 @@ def test_the_larger_batch_is_rounded_up_to_the_houses_step() -> None:
     assert dye(0.07, BAL1, step=50).volume == cm3(200)
 
 
-@pytest.mark.xfail(strict=True, reason="all balances away: nothing says so")
 def test_with_all_balances_away_it_says_so() -> None:
     assert "No balance" in "; ".join(dye(0.02, BAL2).reasons)
 
@@ -261,9 +260,6 @@ def test_a_never_kept_heel_is_poured_away() -> None:
     assert not never_less_than_250(line).heel_kept
 
 
-@pytest.mark.xfail(
-    strict=True, reason="a batch rounded up beyond what the stock holds asks to buy a made line"
-)
 def test_rounding_up_never_takes_more_than_the_stock_holds() -> None:
     # 701 cm³ take 140.2 of 147; rounded up to 750 they would take 150
     made = diluted(made_bottle("S1", STOCK, cm3(147)), volume=701, house=House())

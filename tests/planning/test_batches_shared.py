@@ -148,9 +148,6 @@ def test_what_is_made_from_bottles_of_two_strengths_is_not_one_batch() -> None:
     assert [[source.bottle for source in make.sources] for make in made.makes] == [["S1"], ["S2"]]
 
 
-@pytest.mark.xfail(
-    strict=True, reason="a stock whose parts come from two bottles is made whole once for each"
-)
 def test_the_stock_for_a_shared_batch_is_made_once() -> None:
     liquid, stock, weak = (
         solution(s, n) for s, n in ((10.0, "acid"), (1.0, "stock"), (0.1, "weak"))

@@ -160,7 +160,6 @@ def test_an_overdue_check_leaves_a_bottle_usable_and_says_so() -> None:
     assert [check.subject for check in made.checks] == ["S1"]
 
 
-@pytest.mark.xfail(strict=True, reason="the day a made bottle is ready from is not looked at")
 def test_what_still_stands_is_not_drawn_on() -> None:
     standing = made_bottle("S1", TENTH, cm3(500), ready_on=day("01-14"))
     assert outcomes(drawn_on(standing, on="01-12")) == {"K1.1": Outcome.SHORT}

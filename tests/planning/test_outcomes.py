@@ -169,9 +169,6 @@ def test_a_bar_leaves_the_recipes_own_lines_alone() -> None:
     assert set(outcomes(made).values()) == {Outcome.MAKE}
 
 
-@pytest.mark.xfail(
-    strict=True, reason="a barred first choice refuses the need though the second would do"
-)
 def test_a_barred_choice_leaves_the_next_choice_open() -> None:
     either = made_from(IRON, Ingredient((ACID.key, IRON_SALT.key)))
     barring = recipe(wants(IRON, cm3(100)), bars=(Bar("sulfuric acid", "why"),))
@@ -221,9 +218,6 @@ def test_what_is_over_of_a_never_kept_make_is_not_kept() -> None:
     assert not make_of(silver_plan(("K1", "01-06", 840)), SILVER).heel_kept
 
 
-@pytest.mark.xfail(
-    strict=True, reason="never kept but not marked fresh: made for two days, or the day before"
-)
 @pytest.mark.parametrize(
     "bookings",
     [(("K1", "01-12", 840), ("K2", "01-13", 840)), (("K1", "01-12", 481),)],
@@ -262,9 +256,6 @@ A, B = solid("a"), solid("b")
 ONE, TWO = solution(1.0, "one"), solution(1.0, "two")
 
 
-@pytest.mark.xfail(
-    strict=True, reason="choices in opposite order in two methods are told as made from themselves"
-)
 def test_two_methods_may_prefer_the_same_two_solids_in_opposite_order() -> None:
     methods = [
         made_from(ONE, Ingredient((A.key, B.key))),
@@ -277,9 +268,6 @@ def test_two_methods_may_prefer_the_same_two_solids_in_opposite_order() -> None:
     assert outcomes(made) == {"K1.1": Outcome.MAKE}
 
 
-@pytest.mark.xfail(
-    strict=True, reason="derived choices go by key, 10 before 2, and 2 is itself made from 10"
-)
 def test_a_derived_method_may_choose_between_ten_and_two_molar() -> None:
     ten, two, tenth = (solution(strength, "acid") for strength in (10.0, 2.0, 0.1))
     methods = [Method(two.key, ()), Method(tenth.key, ())]
