@@ -36,8 +36,6 @@ from stockroom.planning.facts import (
 from stockroom.planning.plan import plan
 
 MONDAY = date(2027, 1, 4)
-THIOSULFATE_PENTAHYDRATE = 248.18
-"""g/mol of the pentahydrate: the planner is told masses, it does not work them out here."""
 
 
 def day(text: str) -> date:

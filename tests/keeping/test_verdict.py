@@ -222,7 +222,14 @@ THIOSULFATE = (
 
 @pytest.mark.parametrize(
     ("strength", "until"),
-    [(1.0, "07-03"), (0.5, "02-01"), (0.1, "02-01"), (0.05, "01-11"), (0.02, "01-11")],
+    [
+        (1.0, "07-03"),
+        (0.5, "02-01"),
+        (0.1, "02-01"),
+        (0.05, "01-11"),
+        (0.02, "01-11"),
+        (0.05 + 2e-8, "01-11"),
+    ],
 )
 def test_a_life_goes_by_the_band_of_strength(strength: float, until: str) -> None:
     bottle = Record(made=day("01-04"), nominal=strength)

@@ -46,6 +46,11 @@ def test_a_swap_is_known_by_its_substance_too() -> None:
     assert offer(R03, *lines, IRON)[0]
 
 
+def test_a_swap_for_one_line_is_no_swap_for_another() -> None:
+    offered = ("potassium iodide", IRON[1])
+    assert not offer(R03, *offered, offered)[0]
+
+
 def test_a_swap_does_not_work_the_other_way_round() -> None:
     assert not offer(R03, *IRON[::-1], IRON[::-1])[0]
 
