@@ -16,9 +16,10 @@ from datetime import date
 from stockroom.keeping.rules import Purpose
 from stockroom.keeping.verdict import USABLE
 from stockroom.planning.amounts import say
+from stockroom.planning.batch import Taken
 from stockroom.planning.decisions import Level, Order
 from stockroom.planning.facts import Bottle, Facts, Form, Line, Pack
-from stockroom.planning.make import Made, Taken
+from stockroom.planning.make import Made
 from stockroom.planning.shelf import Shelf
 from stockroom.planning.wants import Want
 
@@ -64,9 +65,9 @@ def _course(line: Line, takes: list[Taken], shelf: Shelf) -> Course:
     course = Course(line, takes)
     pools = {bottle.number: bottle.left for bottle in shelf.of_line(line.key)}
     for take in takes:
-        usable = _usable(shelf, line, take.need.on)
-        missing = _draw_down(pools, usable, take.amount)
-        left = sum(pools[bottle.number] for bottle in usable)
+        # drawn on the day of its make, which may be a bottle's last good one
+        missing = _draw_down(pools, _usable(shelf, line, take.start), take.amount)
+        left = sum(pools[bottle.number] for bottle in _usable(shelf, line, take.need.on))
         if missing:
             course.missing += missing
             course.first_missing = course.first_missing or take

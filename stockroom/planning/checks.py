@@ -8,15 +8,17 @@ whose replacement would otherwise be made. Nothing nobody needs is asked for.
 from __future__ import annotations
 
 from collections.abc import Iterable
+from dataclasses import replace
 from datetime import date
 
 from stockroom.keeping.rules import Purpose
+from stockroom.planning.batch import Batch
 from stockroom.planning.decisions import CheckToDo, Order
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import Closeness, Facts, Line
 from stockroom.planning.fitness import found_valid_from
-from stockroom.planning.make import Batch
 from stockroom.planning.shelf import Shelf
+from stockroom.planning.tell import parent_set_aside
 from stockroom.planning.timing import ready_at
 from stockroom.planning.wants import Settled, Want
 
@@ -32,6 +34,7 @@ def checks(
         *_exact_from_batches(facts, batches),
         *_rechecks(facts, wants, shelf),
         *_looks(facts, wants, batches, buying, shelf),
+        *_doubts(facts, wants, shelf),
     ]
     return sorted(found, key=lambda c: (c.by, c.subject, c.what))
 
@@ -147,7 +150,21 @@ def _looks(
         behind &= {order.line for order in buying}
         if behind:
             why += f", perhaps the order of {', '.join(sorted(behind))} too"
-        yield _check(facts, number, line, _LOOK, facts.as_at, by, needs, why)
+        todo = _check(facts, number, line, _LOOK, facts.as_at, by, needs, why)
+        yield replace(todo, optional=True)
+
+
+def _doubts(facts: Facts, wants: list[Want], shelf: Shelf) -> Iterable[CheckToDo]:
+    """Bottles the plan draws on that were made from one since set aside: look before use."""
+    needs = {want.ref: want.need for want in wants}
+    for number, promises in sorted(shelf.promises.items()):
+        bottle = shelf.bottle[number]
+        doubt = parent_set_aside(facts, bottle) if promises else ""
+        if doubt:
+            by = facts.calendar.on_or_before(min(promise.on for promise in promises))
+            served = [needs[p.for_ref] for p in promises if p.for_ref in needs]
+            line = facts.lines[bottle.line]
+            yield _check(facts, number, line, _LOOK, facts.as_at, by, served, doubt)
 
 
 def _batch_of(want: Want, made_in: dict[int, Batch]) -> Batch | None:

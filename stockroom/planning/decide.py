@@ -7,10 +7,10 @@ from datetime import date
 
 from stockroom.measure.amounts import Kind
 from stockroom.planning.amounts import say, say_strength
+from stockroom.planning.batch import Batch, Source, keeps
 from stockroom.planning.decisions import Answer, Draw, Make, Outcome, Short
 from stockroom.planning.explode import Need
-from stockroom.planning.facts import Facts, Form
-from stockroom.planning.make import Batch, Source, keeps
+from stockroom.planning.facts import Drawn, Facts, Form
 from stockroom.planning.shelf import Promise, Shelf
 from stockroom.planning.timing import hours, ready_at
 from stockroom.planning.wants import Settled, Want
@@ -51,9 +51,11 @@ def _number(ref: str) -> tuple[str, int]:
 def _answer(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> Answer:
     need = want.need
     outcome = outcome_of(want)
-    draws = tuple(_draw(facts, promise, shelf) for promise in want.promises)
+    draws = [Draw(d.amount, need.line.kind, bottle=d.bottle, line=d.line) for d in need.drawn]
     if outcome in (Outcome.SHORT, Outcome.REFUSED):
-        draws, batch = (), None
+        batch = None
+    else:
+        draws += [_draw(facts, promise, shelf) for promise in want.promises]
     return Answer(
         ref=need.ref,
         booking=need.booking,
@@ -64,7 +66,7 @@ def _answer(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> Answ
         amount=need.amount,
         kind=need.line.kind,
         outcome=outcome,
-        draws=draws,
+        draws=tuple(draws),
         make=batch.id if batch else "",
         closeness=need.requirement.closeness,
         fresh=need.requirement.fresh,
@@ -84,6 +86,7 @@ def _draw(facts: Facts, promise: Promise, shelf: Shelf) -> Draw:
 
 def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> list[str]:
     words = [want.need.sum_in_words]
+    words += [_already(want.need, drawn) for drawn in want.need.drawn]
     held = want.promises if want.settled is Settled.HELD else []
     words += [_why_this_bottle(facts, want.need, promise, shelf) for promise in held]
     if batch:
@@ -100,6 +103,10 @@ def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> lis
     passed = [(number, why) for number, why in want.passed_over if why not in said]
     words += [f"{number} not used: {why}" for number, why in dict.fromkeys(passed)]
     return words
+
+
+def _already(need: Need, drawn: Drawn) -> str:
+    return f"{say(drawn.amount, need.line.kind)} of {drawn.bottle} already drawn for it {drawn.on}"
 
 
 def _why_this_bottle(facts: Facts, need: Need, promise: Promise, shelf: Shelf) -> str:
@@ -138,7 +145,7 @@ def _make(facts: Facts, batch: Batch) -> Make:
         bookings=tuple(dict.fromkeys(need.booking.number for need in batch.needs)),
         sources=tuple(_source(source) for source in batch.sources),
         fresh=batch.fresh,
-        minutes=batch.method.minutes + batch.method.finish_minutes,
+        minutes=(batch.method.minutes + batch.method.finish_minutes) * batch.vessels,
         finish_on=batch.ready[0] if batch.method.finish_minutes else None,
         heel=batch.heel,
         heel_kept=kept,
@@ -239,7 +246,7 @@ def shorts(wants: Iterable[Want]) -> list[Short]:
                     need.booking.number,
                     need.line.item,
                     strength,
-                    need.amount,
+                    need.missing,
                     need.line.kind,
                     reason,
                 )

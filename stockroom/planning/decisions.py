@@ -150,7 +150,10 @@ class Short:
 
 @dataclass(frozen=True, slots=True)
 class CheckToDo:
-    """A titration or a look to do between two days, and what hangs on it."""
+    """A titration or a look to do between two days, and what hangs on it.
+
+    `optional` marks one that only saves work: nothing waits for it.
+    """
 
     subject: str
     item: str
@@ -160,6 +163,7 @@ class CheckToDo:
     best: date
     bookings: tuple[str, ...]
     reason: str
+    optional: bool = False
 
 
 @dataclass(frozen=True, slots=True)

@@ -8,12 +8,15 @@ from datetime import date
 
 from stockroom.errors import UnknownName
 from stockroom.planning.amounts import say
-from stockroom.planning.facts import Booking, Facts, Firmness, Line, Per, Recipe, Requirement
+from stockroom.planning.facts import Booking, Drawn, Facts, Firmness, Line, Per, Recipe, Requirement
 
 
 @dataclass(frozen=True, slots=True)
 class Need:
-    """One requirement of one booking: so much of a line, on a day. Micro-units."""
+    """One requirement of one booking: so much of a line, on a day. Micro-units.
+
+    `drawn` holds what the ledger says was already drawn for it, bottle by bottle.
+    """
 
     ref: str
     booking: Booking
@@ -22,6 +25,14 @@ class Need:
     line: Line
     amount: int
     sum_in_words: str
+    drawn: tuple[Drawn, ...] = ()
+
+    @property
+    def missing(self) -> int:
+        """What is still to be found: nothing once its amount without spare was drawn."""
+        drawn = sum(draw.amount for draw in self.drawn)
+        plain = amount_needed(self.requirement, self.booking.groups, 0)
+        return 0 if drawn and drawn >= plain else max(0, self.amount - drawn)
 
     @property
     def on(self) -> date:
@@ -88,7 +99,8 @@ def _need(facts: Facts, booking: Booking, recipe: Recipe, requirement: Requireme
     amount = amount_needed(requirement, booking.groups, booking.spare)
     words = _sum_in_words(requirement, booking, line, amount)
     ref = f"{booking.number}.{requirement.number}"
-    return Need(ref, booking, recipe, requirement, line, amount, words)
+    drawn = tuple(d for d in facts.drawn if (d.booking, d.line) == (booking.number, line.key))
+    return Need(ref, booking, recipe, requirement, line, amount, words, drawn)
 
 
 def _recipe_of(facts: Facts, booking: Booking) -> Recipe:

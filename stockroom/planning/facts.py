@@ -310,6 +310,7 @@ class Drawn:
     line: str
     on: date
     amount: int
+    booking: str = ""
 
 
 @dataclass(frozen=True, slots=True)

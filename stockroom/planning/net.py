@@ -66,7 +66,8 @@ def _root(facts: Facts, need: Need) -> Want:
             calendar=facts.calendar,
             house=facts.house,
         )
-    return Want(need, (need.line.key,), deadline, amount=need.amount)
+    settled = Settled.OPEN if need.missing else Settled.HELD
+    return Want(need, (need.line.key,), deadline, amount=need.missing, settled=settled)
 
 
 class _Netting:
@@ -81,7 +82,8 @@ class _Netting:
 
     def settle(self, wants: list[Want]) -> None:
         for want in wants:
-            self._queue(want)
+            if want.settled is Settled.OPEN:
+                self._queue(want)
         for key in settling_order(self.facts):
             self.passed.add(key)
             for want in sorted(self.waiting.get(key, []), key=lambda w: w.need.rank):

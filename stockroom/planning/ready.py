@@ -5,6 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 from datetime import date
 
+from stockroom.keeping.record import CheckKind
+from stockroom.keeping.strength import last_check
 from stockroom.planning.amounts import say, say_strength
 from stockroom.planning.decisions import Answer, CheckToDo, Make, Outcome, Plan
 from stockroom.planning.facts import Facts
@@ -35,14 +37,11 @@ def readiness(
     wanted = set(numbers)
     needs = tuple(answer for answer in plan.needs if answer.booking.number in wanted)
     makes = tuple(make for make in plan.makes if wanted & set(make.bookings))
-    checks = tuple(check for check in plan.checks if _must(check) and wanted & set(check.bookings))
+    checks = tuple(
+        check for check in plan.checks if not check.optional and wanted & set(check.bookings)
+    )
     to_do = (*_shorts(plan, wanted), *_buys(needs), *_makes(makes), *_checks(checks))
     return Readiness(not to_do, title, on, to_do, needs, makes, checks, _strengths(facts, needs))
-
-
-def _must(check: CheckToDo) -> bool:
-    # a look only saves work; a titration is what an exact or overdue strength waits for
-    return check.what != "look"
 
 
 def _shorts(plan: Plan, wanted: set[str]) -> list[str]:
@@ -77,12 +76,15 @@ def _checks(checks: tuple[CheckToDo, ...]) -> list[str]:
 
 
 def _strengths(facts: Facts, needs: tuple[Answer, ...]) -> tuple[str, ...]:
-    """The strength each class really gets, from the bottles chosen: for the board."""
+    """The strength each class really gets, from the bottles chosen, and how it is known."""
+    bottles = {bottle.number: bottle for bottle in facts.bottles}
     row = []
     for need in needs:
         line = facts.lines[need.line]
         for draw in need.draws:
-            if draw.strength is not None and line.strength:
+            if draw.strength is not None and line.strength and draw.bottle in bottles:
                 said = say_strength(line, draw.strength)
-                row.append(f"{need.item} {said} (label {line.strength_text}, {draw.bottle})")
+                found = last_check(bottles[draw.bottle].record, need.booking.on, CheckKind.FOUND)
+                how = f"found {found.on}" if found else "label, not checked"
+                row.append(f"{need.item} {said}: {draw.bottle}, {how}")
     return tuple(dict.fromkeys(row))

@@ -32,6 +32,10 @@ class Serving:
             if enough and (last_drops or not self._too_close(want, number, amount)):
                 self._promise(want, line, [(number, amount)])
                 return True
+            if not enough:
+                left, wanted = self.shelf.left[number], say(amount, line.kind)
+                words = f"only {say(left, line.kind)} of it not promised, {wanted} wanted"
+                want.passed_over.append((number, words))
             good.append(number)
         return self._promise(want, line, self._together(want, line, good))
 

@@ -75,6 +75,10 @@ def guesses(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Finding]:
             bottle = shelf.bottle[number]
             for text in _about(facts, shelf, bottle, closest.get(number, Closeness.PRESENT)):
                 found[(number, text)] = None
+    for want in [part for root in wants for part in root.tree()]:
+        for number, _ in want.passed_over:
+            for text in _two_readings(shelf.bottle[number]):
+                found[(number, text)] = None
     for want in wants:
         if want.need.requirement.closeness_guessed:
             found[
@@ -108,10 +112,7 @@ def _about(facts: Facts, shelf: Shelf, bottle: Bottle, closest: Closeness) -> It
     line = facts.lines[bottle.line]
     last = max(promise.on for promise in shelf.promises[bottle.number])
     judged = shelf.verdict_planned(bottle.number, last)
-    printed = bottle.record.printed
-    if printed and printed.ambiguous:
-        readings = " or ".join(_spelt(day) for day in printed.readings)
-        yield f'printed "{printed.text}" may be {readings}: planned on the earlier; which is it?'
+    yield from _two_readings(bottle)
     if bottle.record.opened_guessed:
         yield "opened, day not written: counted from the day it was received"
     if judged.condition is Condition.WATCH and closest is not Closeness.EXACT:
@@ -120,6 +121,13 @@ def _about(facts: Facts, shelf: Shelf, bottle: Bottle, closest: Closeness) -> It
     doubt = inherited_doubt(facts, bottle)
     if doubt:
         yield doubt
+
+
+def _two_readings(bottle: Bottle) -> Iterable[str]:
+    printed = bottle.record.printed
+    if printed and printed.ambiguous:
+        readings = " or ".join(_spelt(day) for day in printed.readings)
+        yield f'printed "{printed.text}" may be {readings}: planned on the earlier; which is it?'
 
 
 def _about_strength(line: Line, judged: Verdict, closest: Closeness) -> Iterable[str]:
@@ -142,17 +150,32 @@ def inherited_doubt(facts: Facts, bottle: Bottle) -> str:
     A parent overdue its recheck on the day the child was made, or set aside
     since, marks the child; a parent's date does not.
     """
-    parents = {b.number: b for b in facts.bottles if b.number in bottle.lineage}
-    for number in bottle.lineage:
-        parent = parents.get(number)
-        if parent is None or bottle.record.made is None:
-            continue
-        judged = verdict(parent.record, facts.lines[parent.line].rules, bottle.record.made)
-        if judged.condition is Condition.WATCH:
-            days = (bottle.record.made - judged.good_until).days if judged.good_until else 0
-            return f"made from {number} {days} d after its recheck fell due: in doubt with it"
+    return _parent_overdue(facts, bottle) or parent_set_aside(facts, bottle)
+
+
+def _parents(facts: Facts, bottle: Bottle) -> list[Bottle]:
+    by_number = {b.number: b for b in facts.bottles if b.number in bottle.lineage}
+    return [by_number[number] for number in bottle.lineage if number in by_number]
+
+
+def _parent_overdue(facts: Facts, bottle: Bottle) -> str:
+    made = bottle.record.made
+    for parent in _parents(facts, bottle) if made else ():
+        assert made is not None
+        judged = verdict(parent.record, facts.lines[parent.line].rules, made)
+        if judged.condition is Condition.WATCH and judged.good_until:
+            days = (made - judged.good_until).days
+            return (
+                f"made from {parent.number} {days} d after its recheck fell due: in doubt with it"
+            )
+    return ""
+
+
+def parent_set_aside(facts: Facts, bottle: Bottle) -> str:
+    """Which bottle it was made from has been set aside since, and why; "" if none."""
+    for parent in _parents(facts, bottle):
         if parent.record.set_aside:
-            return f"made from {number}, since set aside ({parent.record.set_aside})"
+            return f"made from {parent.number}, since set aside ({parent.record.set_aside})"
     return ""
 
 

@@ -27,6 +27,7 @@ def why(facts: Facts, plan: Plan, ref: str) -> tuple[str, ...]:
         _makes(plan, wanted),
         _orders(plan, wanted),
         _bottles(facts, plan, wanted),
+        _standing(facts, plan, wanted),
         _by_name(plan, wanted),
     ):
         if lines:
@@ -184,6 +185,16 @@ def _promised(plan: Plan, bottle: Bottle) -> str:
     total = say(sum(amount for _, amount, _ in uses), uses[0][2])
     row = ", ".join(f"{ref} {say(amount, kind)}" for ref, amount, kind in uses)
     return f"promised {total}: {row}"
+
+
+def _standing(facts: Facts, plan: Plan, wanted: str) -> list[str]:
+    """What there is to say of a booking the plan leaves out: dropped, done, over, outside."""
+    for booking in facts.bookings:
+        if booking.number.lower() == wanted:
+            title = facts.recipes[booking.recipe, booking.version].title
+            over = f", over as at {plan.as_at}" if booking.on < plan.as_at else ""
+            return [f"{booking.number} {title}, {booking.on}: {booking.firmness}{over}"]
+    return []
 
 
 def _by_name(plan: Plan, wanted: str) -> list[str]:

@@ -237,6 +237,7 @@ def _check(check: CheckToDo) -> Data:
         "best": check.best.isoformat(),
         "for": list(check.bookings),
         "reason": check.reason,
+        "optional": check.optional,
     }
 
 

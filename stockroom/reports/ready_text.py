@@ -28,7 +28,9 @@ def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> s
         section("MAKE", makes_by_day(readiness.makes, width)),
         section("CHECK", check_lines(readiness.checks, width)),
         section("NEEDS", need_lines(readiness.needs, width)),
-        section("TRUE STRENGTHS", [wrap(each, width, indent=2) for each in readiness.strengths]),
+        section(
+            "STRENGTHS ON THE DAY", [wrap(each, width, indent=2) for each in readiness.strengths]
+        ),
         foot(width, f"stockroom why {_puzzling(readiness)}", "stockroom plan"),
     ]
     return page(parts)

@@ -20,7 +20,9 @@ from stockroom.planning.why import instead as may_stand_in
 from stockroom.planning.why import why as reasons_for
 from stockroom.service.finding import line_among
 from stockroom.store.likeness import unknown
+from stockroom.store.reading import reading
 from stockroom.store.snapshot import facts
+from stockroom.store.snapshot_bottles import bottle_of
 
 
 def _known(path: Path, as_at: date, start: date | None = None, end: date | None = None) -> Facts:
@@ -95,12 +97,25 @@ def why(path: Path, ref: str, *, as_at: date, instead: str | None = None) -> tup
     known = _known(path, as_at)
     whole = plan(known)
     if instead is not None:
-        other = line_among(known, instead)
-        lines = may_stand_in(known, whole, ref, other.key)
-    else:
-        lines = reasons_for(known, whole, ref)
+        return _instead(known, whole, ref, instead)
+    lines = reasons_for(known, whole, ref) or _gone(path, ref, as_at)
     if not lines:
         names = [*(a.booking.number for a in whole.needs), *(m.id for m in whole.makes)]
         names += [*(o.id for o in whole.orders), *(b.number for b in known.bottles), *known.lines]
         raise unknown("line of the plan, bottle or item", ref, names)
     return lines
+
+
+def _instead(known: Facts, whole: Plan, ref: str, other: str) -> tuple[str, ...]:
+    lines = may_stand_in(known, whole, ref, line_among(known, other).key)
+    if not lines:
+        asked = [a.booking.number for a in whole.needs] + [a.ref for a in whole.needs]
+        raise unknown("booking or need", ref, asked)
+    return lines
+
+
+def _gone(path: Path, ref: str, as_at: date) -> tuple[str, ...]:
+    """What there is to say of a bottle discarded since."""
+    with reading(path) as reader:
+        bottle = bottle_of(reader, ref.strip().upper(), as_at)
+    return (f"{bottle.number} {bottle.line}: gone, discarded",) if bottle else ()

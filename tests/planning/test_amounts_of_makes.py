@@ -273,9 +273,6 @@ def test_a_class_gets_its_exact_need_from_a_rounded_batch() -> None:
     assert "528" in reasons(made, "K1.1")
 
 
-@pytest.mark.xfail(
-    strict=True, reason="rounded up beyond the jar, a make asks for a solid that nothing orders"
-)
 @pytest.mark.parametrize("smallest", [0, 1000])
 def test_a_make_that_outgrows_its_jar_says_so_or_stops_there(smallest: float) -> None:
     # 775 cm³ of 1 mol/dm³ take 77.5 g of 78; rounded up to 800, or to a litre, they take more

@@ -1,0 +1,85 @@
+"""One batch while it is worked out, where it comes from, and what it takes of bought lines."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from datetime import date
+
+from stockroom.planning.batches import Run
+from stockroom.planning.explode import Need
+from stockroom.planning.facts import Facts, Line, Method
+from stockroom.planning.timing import Moment
+from stockroom.planning.wants import Want
+from stockroom.planning.windows import good_until
+
+
+@dataclass(slots=True)
+class Source:
+    """So much of a line for a batch: from a bottle, or (`bottle` "") made or bought."""
+
+    line: Line
+    amount: int
+    bottle: str = ""
+    strength: float | None = None
+    batch: Batch | None = None
+
+
+@dataclass(slots=True)
+class Batch:
+    """One batch as it is worked out; `decide.py` freezes it into a Make.
+
+    `forced` is what a rule adds to the rounded need (smallest batch, least
+    weighable), µL; `vessels` how many it takes.
+    """
+
+    line: Line
+    method: Method
+    run: Run
+    start: Moment
+    ready: Moment
+    volume: int
+    sources: list[Source] = field(default_factory=list)
+    reasons: list[str] = field(default_factory=list)
+    forced: int = 0
+    vessels: int = 1
+    id: str = ""
+
+    @property
+    def wants(self) -> list[Want]:
+        """Every want it serves, in order."""
+        return sorted(
+            (want for item in self.run.items for want in item.wants), key=lambda w: w.need.rank
+        )
+
+    @property
+    def needs(self) -> list[Need]:
+        """Every need it serves in the end, each once, in order."""
+        return list({want.ref: want.need for want in self.wants}.values())
+
+    @property
+    def heel(self) -> int:
+        """What is left over when all is served, µL."""
+        return max(0, self.volume - self.run.needed)
+
+    @property
+    def fresh(self) -> bool:
+        """True when it is made on the morning of its booking."""
+        return any(item.fresh for item in self.run.items)
+
+
+@dataclass(frozen=True, slots=True)
+class Taken:
+    """So much of a bought line used for a need: what running sums and shares are made of."""
+
+    line: str
+    need: Need
+    amount: int
+    start: date
+
+
+def keeps(facts: Facts, line: Line, heel: int, made: date) -> bool:
+    """True when a heel of this size becomes stock: above the floor, and of a line that keeps."""
+    if heel <= facts.house.heel_floor or line.never_kept:
+        return False
+    until = good_until(line, made)
+    return until is None or until > made

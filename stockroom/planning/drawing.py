@@ -1,0 +1,115 @@
+"""What a batch takes: drawn again for the whole of it, from the bottles promised to its parts."""
+
+from __future__ import annotations
+
+from stockroom.keeping.rules import Purpose
+from stockroom.measure.amounts import Kind
+from stockroom.planning.amounts import draw_for, say
+from stockroom.planning.batch import Batch, Source, Taken
+from stockroom.planning.facts import Facts, Form, Ingredient, Line
+from stockroom.planning.fitness import judge_for_dilution
+from stockroom.planning.shelf import Promise, Shelf, solute_held
+from stockroom.planning.wants import Settled, Want
+
+
+class Drawing:
+    """Draws for batches on a shelf, and keeps account of what bought lines give.
+
+    `taken` is what each need takes of each bought line; `waiting` holds, by
+    want, the sources that a batch still to be dated will fill.
+    """
+
+    def __init__(self, facts: Facts, shelf: Shelf) -> None:
+        self.facts, self.shelf = facts, shelf
+        self.taken: list[Taken] = []
+        self.waiting: dict[int, Source] = {}
+
+    def settle(self, batch: Batch) -> None:
+        """Give the batch its sources: what its parts were promised, drawn again as one."""
+        by_ingredient: dict[Ingredient, list[Want]] = {}
+        for want in batch.wants:
+            for part in want.parts:
+                assert part.ingredient is not None
+                by_ingredient.setdefault(part.ingredient, []).append(part)
+        for ingredient, parts in by_ingredient.items():
+            self._no_more_than_held(batch, ingredient, parts)
+        for ingredient, parts in by_ingredient.items():
+            self._draw(batch, ingredient, parts)
+
+    def _no_more_than_held(self, batch: Batch, ingredient: Ingredient, parts: list[Want]) -> None:
+        """Making more than is needed stops at what the bottles of an ingredient hold."""
+        line = self.facts.lines[parts[0].line]
+        promises = [promise for part in parts for promise in part.promises]
+        if not promises or any(part.to_buy for part in parts):
+            return
+        numbers = {promise.bottle for promise in promises}
+        if line.form is Form.SOLID:
+            numbers |= set(self._jars(batch, ingredient, line))
+        held = sum(self.shelf.left[number] for number in numbers)
+        held += sum(promise.amount for promise in promises)
+        strength = solute_held(self.shelf, line, promises[0].bottle, batch.start[0])
+        wanted = draw_for(line, strength, batch.line, batch.volume, ingredient.per_dm3)
+        if wanted > held:
+            exact = batch.run.needed
+            if batch.forced:
+                batch.reasons.append(
+                    f"made {say(exact, Kind.VOLUME)} all the same: "
+                    f"{', '.join(sorted(numbers))} holds no more"
+                )
+            batch.volume, batch.forced = exact, 0
+
+    def _jars(self, batch: Batch, ingredient: Ingredient, line: Line) -> list[str]:
+        day, judge = batch.start[0], judge_for_dilution(line, batch.line, ingredient.per_dm3)
+        jars = self.shelf.in_order(self.shelf.of_line(line.key), day, Purpose.ANY)
+        fit = [b.number for b in jars if not self.shelf.unfit(b.number, day, Purpose.ANY, judge)]
+        return [number for number in fit if self.shelf.left[number] > 0]
+
+    def _draw(self, batch: Batch, ingredient: Ingredient, parts: list[Want]) -> None:
+        line = self.facts.lines[parts[0].line]
+        if parts[0].settled is Settled.MAKE:
+            amount = draw_for(line, line.strength, batch.line, batch.volume, ingredient.per_dm3)
+            source = Source(line, amount, strength=line.strength)
+            batch.sources.append(source)
+            self.waiting.update({id(part): source for part in parts})
+            return
+        numbers = [promise.bottle for part in parts for promise in part.promises]
+        for part in parts:
+            for promise in part.promises:
+                self.shelf.release(promise)
+        sources = self._from_bottles(batch, ingredient, line, list(dict.fromkeys(numbers)))
+        batch.sources += sources
+        if line.key not in self.facts.methods:
+            self._note_taken(batch, line, parts, sum(source.amount for source in sources))
+
+    def _from_bottles(
+        self, batch: Batch, ingredient: Ingredient, line: Line, numbers: list[str]
+    ) -> list[Source]:
+        """Draw the whole batch's share again: the promised bottles first, then other jars."""
+        day, judge = batch.start[0], judge_for_dilution(line, batch.line, ingredient.per_dm3)
+        if line.form is Form.SOLID:
+            jars = self._jars(batch, ingredient, line)
+            numbers += [number for number in jars if number not in numbers]
+        share_left, sources = 1.0, []
+        for number in numbers:
+            held = solute_held(self.shelf, line, number, day)
+            whole = draw_for(line, held, batch.line, batch.volume, ingredient.per_dm3)
+            amount = min(round(whole * share_left), self.shelf.left[number])
+            if amount:
+                ref = batch.needs[0].ref
+                self.shelf.promise(Promise(number, amount, day, ref, Purpose.ANY, judge))
+                sources.append(Source(line, amount, number, held))
+                share_left -= amount / whole
+        whole = draw_for(line, line.strength, batch.line, batch.volume, ingredient.per_dm3)
+        missing = round(whole * share_left)
+        # a share under a millionth is the rounding of whole micro-units, nothing to buy
+        if missing > 0 and share_left > 1e-6:
+            sources.append(Source(line, missing, strength=line.strength))
+        return sources
+
+    def _note_taken(self, batch: Batch, line: Line, parts: list[Want], drawn: int) -> None:
+        """Share what was drawn among the needs: each its exact part, the forced rest the first."""
+        forced = round(drawn * batch.forced / batch.volume) if batch.volume else 0
+        for number, part in enumerate(parts):
+            exact = part.to_buy + sum(promise.amount for promise in part.promises)
+            amount = exact + (forced if number == 0 else 0)
+            self.taken.append(Taken(line.key, part.need, amount, batch.start[0]))
