@@ -211,3 +211,4 @@ class HandReadiness:
     makes: tuple[Make, ...] = (PEROXIDE,)
     checks: tuple[CheckToDo, ...] = ()
     strengths: tuple[str, ...] = ("sulfuric acid 0.250 mol/dm3",)
+    cautions: tuple[str, ...] = ("R01 no iron near the set",)

@@ -14,7 +14,11 @@ from stockroom.planning.facts import Facts
 
 @dataclass(frozen=True, slots=True)
 class Readiness:
-    """The answer for one booking or one day. `to_do` is empty when `ready`."""
+    """The answer for one booking or one day. `to_do` is empty when `ready`.
+
+    `cautions` is what each recipe says of handling, destroying and waste, and
+    which local risk assessment covers it.
+    """
 
     ready: bool
     title: str
@@ -24,6 +28,7 @@ class Readiness:
     makes: tuple[Make, ...]
     checks: tuple[CheckToDo, ...]
     strengths: tuple[str, ...]
+    cautions: tuple[str, ...] = ()
 
 
 def readiness(
@@ -41,7 +46,7 @@ def readiness(
         check for check in plan.checks if not check.optional and wanted & set(check.bookings)
     )
     to_do = (*_shorts(plan, wanted), *_buys(needs), *_makes(makes), *_checks(checks))
-    return Readiness(not to_do, title, on, to_do, needs, makes, checks, _strengths(facts, needs))
+    return Readiness(not to_do, title, on, to_do, needs, makes, checks, _strengths(facts, needs), _words(facts, wanted))
 
 
 def _shorts(plan: Plan, wanted: set[str]) -> list[str]:
@@ -88,3 +93,15 @@ def _strengths(facts: Facts, needs: tuple[Answer, ...]) -> tuple[str, ...]:
                 how = f"found {found.on}" if found else "label, not checked"
                 row.append(f"{need.item} {said}: {draw.bottle}, {how}")
     return tuple(dict.fromkeys(row))
+
+
+def _words(facts: Facts, wanted: set[str]) -> tuple[str, ...]:
+    booked = {(b.recipe, b.version) for b in facts.bookings if b.number in wanted}
+    row = []
+    for key in sorted(booked):
+        recipe = facts.recipes[key]
+        waste = f"waste: {recipe.waste}" if recipe.waste else ""
+        covered = recipe.assessment or "none named: ask before it runs"
+        said = (recipe.handling, recipe.never_kept, waste, f"local risk assessment: {covered}")
+        row += [f"{recipe.code} {words}" for words in said if words]
+    return tuple(row)

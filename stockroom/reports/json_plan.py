@@ -89,6 +89,7 @@ def ready_json(readiness: Readiness, *, as_at: date, practice: bool) -> Data:
         "makes": [_make(make) for make in readiness.makes],
         "checks": [_check(check) for check in readiness.checks],
         "strengths": list(readiness.strengths),
+        "cautions": list(readiness.cautions),
     }
 
 

@@ -31,6 +31,7 @@ def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> s
         section(
             "STRENGTHS ON THE DAY", [wrap(each, width, indent=2) for each in readiness.strengths]
         ),
+        section("CAUTIONS", [wrap(each, width, indent=2) for each in readiness.cautions]),
         foot(width, f"stockroom why {_puzzling(readiness)}", "stockroom plan"),
     ]
     return page(parts)

@@ -8,15 +8,12 @@ from collections.abc import Iterable, Sequence
 
 from stockroom.planning.decisions import Plan
 from stockroom.reports.words import TIED, counted, day, raised
+from stockroom.safety.cautions import HOUSE_LINE
 
 PRACTICE = "PRACTICE"
 """The first line of every text that comes from the invented college."""
 
-CAUTION = (
-    "Local rules, the supplier's safety data sheet and your employer's risk assessment "
-    "come first: where they say otherwise, do as they say. "
-    'A number here is an estimate unless it says "found" and a day.'
-)
+CAUTION = f'{HOUSE_LINE} A number here is an estimate unless it says "found" and a day.'
 """The house line. the-job section 7, nos. 1 and 16, in our words."""
 
 NARROWEST = 20
