@@ -51,6 +51,12 @@ def _mass_of_part(part: str, place: int, formula: str) -> float:
         raise BadAmount(
             f'Formula "{formula}" begins with a number.', "A number comes only after a dot."
         )
+    if match["units"] == "H20":
+        # twenty hydrogens and nothing else: on a label this is always water
+        raise BadAmount(
+            f'Formula "{formula}": H20 with a zero? Is the letter O meant?',
+            "Write water as H2O.",
+        )
     _check_spelling(match["units"], formula)
     return int(match["times"] or 1) * _mass(match["units"], formula)
 

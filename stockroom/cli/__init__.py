@@ -2,8 +2,8 @@
 
 Lives here: `main` (the list of commands, and every error's way out), `shared`
 (the options that may stand anywhere), `printing` (both streams), and one file
-of commands per subject: `plan`, `stock`, `checks`, `bookings`, `database`,
-`bench`. May import: service, reports, measure, errors, settings, clock.
+of commands per subject: `plan`, `stock`, `checks`, `diary`, `bookings`,
+`database`, `bench`. May import: service, reports, measure, errors, settings, clock.
 Each command imports its service and its report when it runs, so that `--help`
 and the reading commands start at once.
 Open first: `main.py`.

@@ -8,7 +8,7 @@ import typer
 
 from stockroom.cli.printing import show
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import amount_of, number_or_none
+from stockroom.cli.values import amount_of, density_or_none, number_or_none
 
 if TYPE_CHECKING:
     from stockroom.service.bench import Sum
@@ -40,7 +40,8 @@ def strength(
     from stockroom.service import bench
 
     shared = of(ctx)
-    dense = number_or_none(density, "--density")
+    # read as text: typer would refuse a number without quoting what it stood for
+    dense = density_or_none(density, "--density")
     _show(shared, bench.convert(text, of=of_what, to=to, density=dense, store=shared.path))
 
 
@@ -58,6 +59,7 @@ def weigh(
     closeness: Annotated[
         str, typer.Option(metavar="PERCENT", help="How near the mass must be.")
     ] = "5",
+    density: Density = None,
 ) -> None:
     """The mass to weigh for a volume of solution; with --step, whether it can be.
 
@@ -73,6 +75,7 @@ def weigh(
         assay_percent=number_or_none(assay, "--assay"),
         step_g=number_or_none(step, "--step"),
         closeness_percent=number_or_none(closeness, "--closeness") or 5.0,
+        density=density_or_none(density, "--density"),
         store=shared.path,
     )
     _show(shared, weighed)
@@ -103,7 +106,7 @@ def dilute(
         text,
         source=source,
         of=of_what,
-        density=number_or_none(density, "--density"),
+        density=density_or_none(density, "--density"),
         store=shared.path,
         as_at=shared.given_day,
     )

@@ -30,9 +30,7 @@ def book(
     on: Annotated[str, typer.Option("--on", metavar="DATE", help="The day.")],
     at: Annotated[str, typer.Option("--at", metavar="TIME", help="When it starts: 09:15.")],
     groups: Annotated[str, typer.Option(metavar="NUMBER", help="Groups, or performances.")],
-    department: Annotated[
-        str, typer.Option("--dept", metavar="CODE", help="Whose money: CH.")
-    ] = "",
+    department: Annotated[str, typer.Option("--dept", metavar="CODE", help="Whose money: CH.")],
     spare: Annotated[str, typer.Option(metavar="PERCENT", help="How much over.")] = "10",
     firmness: Firm = None,
     room: Annotated[str, typer.Option(metavar="ROOM", help="Where: LAB1.")] = "",

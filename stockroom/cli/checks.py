@@ -1,4 +1,4 @@
-"""What was seen of a bottle: a strength found, a look, lost, turned up, spoiled."""
+"""What was seen of a bottle: a strength found, a look, its date, lost, turned up, spoiled."""
 
 from __future__ import annotations
 
@@ -79,6 +79,26 @@ def tested(
     show_done(shared, done)
 
 
+def printed(
+    ctx: typer.Context,
+    bottle: Bottle,
+    reading: Annotated[
+        str, typer.Argument(metavar="DATE", help="The day that is meant: 2027-05-04.")
+    ],
+    on: Happened = None,
+) -> None:
+    """Say which reading of a printed date is right, where it has two.
+
+    Example: stockroom printed B21 2027-05-04 --by T1
+    """
+    from stockroom.measure.days import parse_day
+    from stockroom.service import checks
+
+    shared = of(ctx)
+    day = parse_day(reading, where="DATE")
+    show_done(shared, checks.printed(shared.path, bottle, day, **when(shared, on)))
+
+
 def lost(
     ctx: typer.Context,
     bottle: Bottle,
@@ -103,7 +123,7 @@ def turned_up(
     ] = None,
     on: Happened = None,
 ) -> None:
-    """A lost bottle turned up: look at it before it is used.
+    """A lost bottle turned up: it is set aside until somebody looks at it.
 
     Example: stockroom turned-up B28 --place A2 --by T2
     """

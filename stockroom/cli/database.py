@@ -1,4 +1,4 @@
-"""The store itself: demo, new, add."""
+"""The store itself: demo, new, add, change."""
 
 from __future__ import annotations
 
@@ -68,8 +68,7 @@ def add(
 
     shared = of(ctx)
     if columns:
-        names = database.table_columns(table)
-        show(shared, lambda: "\n".join(names), lambda: {"table": table, "columns": names})
+        _show_columns(shared, table)
         return
     row = dict(_column_and_value(word) for word in values or [])
     show_done(shared, database.add_row(shared.path, table, row, by=shared.initials))
@@ -80,3 +79,42 @@ def _column_and_value(word: str) -> tuple[str, str]:
     if not equals or not column:
         raise BadInput(f"{word!r} is not COLUMN=VALUE.", "Write it as place=A5.")
     return column.strip(), value.strip()
+
+
+def _show_columns(shared: Shared, table: str) -> None:
+    from stockroom.service.database import column_words, table_columns
+
+    names, words = table_columns(table), column_words(table)
+    size = max(len(name) for name in names)
+    lines = [
+        f"{name:{size}}  {', '.join(words[name])}" if name in words else name for name in names
+    ]
+    show(
+        shared,
+        lambda: "\n".join(lines),
+        lambda: {"table": table, "columns": names, "words": words},
+    )
+
+
+def change(
+    ctx: typer.Context,
+    table: Annotated[str, typer.Argument(metavar="TABLE", help="places, departments, lines...")],
+    key: Annotated[str, typer.Argument(metavar="KEY", help="Which row: its name or its code.")],
+    values: Annotated[list[str], typer.Argument(metavar="COLUMN=VALUE", help="What it is now.")],
+    reason: Annotated[str, typer.Option("--why", help="Why it is changed.")] = "",
+) -> None:
+    """Correct a row of a table; what stood there before stays on record.
+
+    Levels, money left, temperatures, prices, lead times, names and notes: what no earlier
+    entry leans on.
+
+    Example: stockroom change departments CH left_gbp=50 --why "order of May" --by T1
+    """
+    from stockroom.service import database
+
+    shared = of(ctx)
+    row = dict(_column_and_value(word) for word in values)
+    done = database.change_row(
+        shared.path, table, key, row, why=reason, today=shared.today, by=shared.initials
+    )
+    show_done(shared, done)

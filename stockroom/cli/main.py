@@ -6,12 +6,13 @@ import contextlib
 import os
 import sys
 from collections.abc import Callable, Sequence
-from typing import Annotated
+from typing import Annotated, Any
 
 import typer
+import typer.core
 
 from stockroom import __version__
-from stockroom.cli import bench, bookings, checks, database, plan, stock
+from stockroom.cli import bench, bookings, checks, database, diary, plan, stock
 from stockroom.cli.shared import ANYWHERE, pull
 from stockroom.errors import StockroomError
 
@@ -33,6 +34,7 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "found": checks.found,
         "look": checks.look,
         "tested": checks.tested,
+        "printed": checks.printed,
         "move": stock.move,
         "count": stock.count,
         "lost": checks.lost,
@@ -41,6 +43,7 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "spill": stock.spill,
         "lend": stock.lend,
         "discard": stock.discard,
+        "diary": diary.diary,
         "put-right": stock.put_right,
     },
     "Bookings": {
@@ -57,12 +60,35 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "demo": database.demo,
         "new": database.new,
         "add": database.add,
+        "change": database.change,
     },
 }
 """Every command under its heading in the help, in the order it is printed."""
 
+
+class _PlainFlags:
+    """A command whose help shows a flag by its name alone: it takes no value to tell of."""
+
+    def get_params(self, ctx: Any) -> list[Any]:
+        # here and not at each flag, so that --help is shown in the same way
+        params: list[Any] = super().get_params(ctx)  # type: ignore[misc]
+        for param in params:
+            if getattr(param, "is_flag", False):
+                param.metavar = ""
+        return params
+
+
+class _Command(_PlainFlags, typer.core.TyperCommand):
+    """One command."""
+
+
+class _Commands(_PlainFlags, typer.core.TyperGroup):
+    """All of them."""
+
+
 app = typer.Typer(
     name="stockroom",
+    cls=_Commands,
     pretty_exceptions_enable=False,
     context_settings={"help_option_names": ["-h", "--help"]},
     epilog="Try it: stockroom demo",
@@ -72,7 +98,7 @@ app = typer.Typer(
 def _enter_commands() -> None:
     for heading, commands in COMMANDS.items():
         for name, command in commands.items():
-            app.command(name, rich_help_panel=heading, epilog=ANYWHERE)(command)
+            app.command(name, cls=_Command, rich_help_panel=heading, epilog=ANYWHERE)(command)
 
 
 _enter_commands()

@@ -137,6 +137,9 @@ def count(
     bottle: Bottle,
     amount: AmountText,
     walk: Annotated[str, typer.Option(metavar="NAME", help="The round of counting.")] = "",
+    sure: Annotated[
+        bool, typer.Option("--sure", help="Keep it though it is more than the bottle's size.")
+    ] = False,
     on: Happened = None,
 ) -> None:
     """A bottle was counted: what is left becomes what was found.
@@ -146,7 +149,9 @@ def count(
     from stockroom.service import stock
 
     shared = of(ctx)
-    done = stock.count(shared.path, bottle, amount_of(amount), walk=walk, **when(shared, on))
+    # with its unit, since a bare 640 could be grams or cm³
+    counted = amount_of(amount)
+    done = stock.count(shared.path, bottle, counted, walk=walk, sure=sure, **when(shared, on))
     show_done(shared, done)
 
 
@@ -222,7 +227,12 @@ def discard(
 
 def put_right(
     ctx: typer.Context,
-    entry: Annotated[str, typer.Argument(metavar="ENTRY", help="The number of the entry.")],
+    entry: Annotated[
+        str,
+        typer.Argument(
+            metavar="ENTRY", help="The number of the entry; `stockroom diary BOTTLE` shows it."
+        ),
+    ],
     reason: Annotated[str, typer.Option("--why", help="What was meant.")] = "",
     on: Happened = None,
 ) -> None:

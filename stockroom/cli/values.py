@@ -77,6 +77,15 @@ def number_or_none(text: str | None, where: str) -> float | None:
     return value
 
 
+def density_or_none(text: str | None, where: str) -> float | None:
+    """A density in g/cm³ typed after `where`, 0.5 to 20, or None. Raises: BadInput."""
+    value = number_or_none(text, where)
+    # as in the store's own tables, where the same slip is caught
+    if value is not None and not 0.5 <= value <= 20:
+        raise BadInput(f"{where} {text!r} is not between 0.5 and 20.", "In g/cm³, not kg/m³?")
+    return value
+
+
 def _number(text: str) -> float:
     try:
         return float(text.strip().removesuffix("%"))

@@ -43,6 +43,7 @@ _SPREADSHEET_DAYS = range(20_000, 80_000)
 _SPREADSHEET_ORIGIN = date(1899, 12, 30)
 # bounded, as thousands of digits are no number to Python either
 _DIGITS = re.compile(r"[0-9]{1,9}")
+_WHICH_DAY = "Which day is meant?"
 _TIME = re.compile(r"(?P<hours>[0-9]{1,2})[:.](?P<minutes>[0-9]{2})")
 
 
@@ -101,7 +102,12 @@ def parse_printed(
     if plain.lower() in _NO_DATE:
         return None
     shown = f"{where} {quote(text)}"
-    readings = _full_readings(plain, shown, day_first) or _month_readings(plain, shown)
+    try:
+        readings = _full_readings(plain, shown, day_first) or _month_readings(plain, shown)
+    except BadDate as error:
+        # a typed day can be meant otherwise; a label must be looked at again
+        asked = "What is printed on the bottle?" if error.hint == _WHICH_DAY else error.hint
+        raise BadDate(error.message, asked) from None
     if readings:
         return PrintedDate(text.strip(), readings)
     if not re.search(r"[0-9]", plain) and _month_number(plain) is None:
@@ -200,7 +206,7 @@ def _day(year: int, month: int, day: int, shown: str) -> date:
             "Write the date as 2027-03-09, or a printed month as 2027-03.",
         )
     length = f"{MONTHS[month - 1]} {year} has {_length(year, month)} days."
-    raise BadDate(f"{shown}: {length}", "What is printed or written there?")
+    raise BadDate(f"{shown}: {length}", _WHICH_DAY)
 
 
 def _exists(year: int, month: int, day: int) -> bool:

@@ -19,6 +19,9 @@ _RANGE = re.compile(
 )
 _FRACTION = re.compile(r"(?P<unit>[MN]) ?/ ?(?P<parts>[0-9][0-9 .,]*)")
 _PARTS = re.compile(r"(?P<one>[0-9.]+) (?:parts? )?in (?P<total>[0-9][0-9 .,]*)", re.IGNORECASE)
+_FRACTION_OF = re.compile(
+    r"(?:(?P<whole>[0-9]+) )?(?P<over>[0-9]+) ?[/\u2044] ?(?P<under>[1-9][0-9]*) ?(?P<unit>\D.*)"
+)
 _RATIO = re.compile(r"[0-9.]+ ?: ?[0-9.]+")
 _SATURATED = {"saturated", "sat", "sat.", "satd", "saturated solution"}
 
@@ -47,6 +50,7 @@ def parse_amount(text: str, *, expect: Kind | None = None, where: str = "amount"
     plain = tidy(text)
     match = _AMOUNT.fullmatch(plain)
     shown = f"{where} {quote(text)}"
+    _refuse_fraction(plain, shown)
     if match is None:
         raise BadAmount(f"{shown}: how much?", 'Write a number and a unit, as "250 cm3".')
     number = read_number(match["number"], where=where, whole=text)
@@ -56,6 +60,24 @@ def parse_amount(text: str, *, expect: Kind | None = None, where: str = "amount"
     if expect is not None and kind is not expect:
         raise BadAmount(f"{shown} is {_named(kind)}; {_named(expect)} is wanted.", _ask(expect))
     return Amount(kind, _whole(number * micro, kind, shown))
+
+
+def _refuse_fraction(plain: str, shown: str) -> None:
+    found = _FRACTION_OF.fullmatch(plain)
+    if found is None:
+        return
+    unit = found["unit"]
+    try:
+        _factor(unit, shown)
+    except BadAmount:
+        # "½ full" says nothing until somebody says full of what
+        raise BadAmount(
+            f"{shown}: of how big a bottle?", "Say what is left, in g or cm³."
+        ) from None
+    value = int(found["whole"] or 0) + Decimal(found["over"]) / Decimal(found["under"])
+    raise BadAmount(
+        f"{shown}: a fraction.", f'Write it with a point, as "{float(value):.4g} {unit}".'
+    )
 
 
 def _factor(unit: str, shown: str) -> tuple[Kind, Decimal]:

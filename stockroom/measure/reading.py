@@ -16,6 +16,7 @@ NUMBER = r"[+-]?[0-9][0-9 .,]*(?:[eE][+-]?[0-9]{1,3}(?![0-9]))?"
 _GROUPED = re.compile(r"[+-]?[0-9]{1,3}( [0-9]{3})+(\.[0-9]+)?")
 _PLAIN = re.compile(r"[+-]?[0-9]+(\.[0-9]*)?([eE][+-]?[0-9]{1,3})?")
 _COMMA = re.compile(r"[+-]?(?P<whole>[0-9]+),(?P<rest>[0-9]+)")
+_VULGAR = re.compile("(?<=[0-9])(?=[\u00bc-\u00be\u2150-\u215e])")
 _LONGEST_QUOTE = 60
 
 
@@ -25,7 +26,8 @@ def tidy(text: str) -> str:
     Compatibility forms (superscripts, wide digits, narrow spaces, the micro sign)
     become their plain characters; every dash used as a minus becomes "-".
     """
-    plain = unicodedata.normalize("NFKC", text)
+    # "1½" would come out of the next step as eleven halves
+    plain = unicodedata.normalize("NFKC", _VULGAR.sub(" ", text))
     plain = re.sub(r"[\u2010-\u2012\u2212]", "-", plain)
     return re.sub(r"\s+", " ", plain).strip()
 
@@ -47,7 +49,7 @@ def read_number(number: str, *, where: str, whole: str | None = None) -> Decimal
     """
     text, shown = number.strip(), f"{where} {quote(whole or number)}"
     if text.startswith("-"):
-        raise BadAmount(f"{shown}: less than nothing.", "Give zero or more.")
+        raise BadAmount(f"{shown}: less than nothing.", "Write it without the minus sign.")
     comma = _COMMA.fullmatch(text)
     if comma:
         _refuse_thousands(comma["whole"], comma["rest"], shown)

@@ -62,6 +62,12 @@ class Batch:
         return max(0, self.volume - self.run.needed)
 
     @property
+    def forced_part(self) -> float:
+        """The part a rule forces of what is made over the exact need, 0 to 1; else rounding."""
+        over = self.volume - self.run.needed
+        return min(1.0, self.forced / over) if over > 0 else 0.0
+
+    @property
     def fresh(self) -> bool:
         """True when it is made on the morning of its booking."""
         return any(item.fresh for item in self.run.items)
@@ -69,12 +75,30 @@ class Batch:
 
 @dataclass(frozen=True, slots=True)
 class Taken:
-    """So much of a bought line used for a need: what running sums and shares are made of."""
+    """What a need takes of a bought line: from the shelf by bottle, and still `to_buy`.
+
+    Running sums, orders and shares are made of these. `start` is the day it is
+    wanted: of the make, or of the booking itself.
+    """
 
     line: str
     need: Need
-    amount: int
     start: date
+    held: tuple[tuple[str, int], ...] = ()
+    to_buy: int = 0
+
+    @property
+    def amount(self) -> int:
+        """All of it, micro-units."""
+        return self.to_buy + sum(amount for _, amount in self.held)
+
+
+def taken_for(want: Want, start: date, *, held: int = 0, to_buy: int = 0) -> Taken:
+    """What one want takes, with more forced on it: `held` from its bottles, `to_buy` besides."""
+    row = [(promise.bottle, promise.amount) for promise in want.promises]
+    if held and row:
+        row[-1] = (row[-1][0], row[-1][1] + held)
+    return Taken(want.line, want.need, start, tuple(row), want.to_buy + to_buy)
 
 
 def keeps(facts: Facts, line: Line, heel: int, made: date) -> bool:

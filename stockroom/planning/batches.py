@@ -13,6 +13,7 @@ from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 from datetime import date
 
+from stockroom.planning.numbers import Natural
 from stockroom.planning.timing import Moment
 from stockroom.planning.wants import Want
 
@@ -33,7 +34,7 @@ class Item:
     fresh: bool = False
 
     @property
-    def order(self) -> tuple[date, date, str, int]:
+    def order(self) -> tuple[date, date, Natural, int]:
         """Latest day first; ties by the day of use, then the need's own number."""
         first = min(want.need.rank for want in self.wants)
         return self.latest, self.use_on, first[3], first[4]

@@ -10,15 +10,14 @@ longer), before that the lead time, both in open days.
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass, field, replace
+from dataclasses import dataclass, replace
 from datetime import date
 
-from stockroom.keeping.rules import Purpose
 from stockroom.keeping.verdict import USABLE
 from stockroom.planning.amounts import say
-from stockroom.planning.batch import Taken
+from stockroom.planning.batch import Taken, taken_for
 from stockroom.planning.decisions import Level, Order
-from stockroom.planning.facts import Bottle, Facts, Form, Line, Pack
+from stockroom.planning.facts import Facts, Form, Line, Pack
 from stockroom.planning.make import Made
 from stockroom.planning.shelf import Shelf
 from stockroom.planning.wants import Want
@@ -32,66 +31,52 @@ class Course:
 
     line: Line
     takes: list[Taken]
-    missing: int = 0
-    first_missing: Taken | None = None
     crossing: Taken | None = None
     left_at_crossing: int = 0
     left_at_end: int = 0
-    short_for: dict[str, int] = field(default_factory=dict)
+
+    @property
+    def to_buy(self) -> list[Taken]:
+        """The needs that wait for something to be bought, by day."""
+        return [take for take in self.takes if take.to_buy]
 
     @property
     def trigger(self) -> Taken | None:
         """The first need that makes an order necessary."""
-        found = [take for take in (self.crossing, self.first_missing) if take]
-        return min(found, key=lambda take: take.need.rank[1:], default=None)
+        found = [take for take in (self.crossing, *self.to_buy[:1]) if take]
+        return min(found, key=_by_day, default=None)
+
+
+def _by_day(take: Taken) -> tuple[object, ...]:
+    return take.need.rank[1:]
 
 
 def courses(facts: Facts, made: Made, missed: Iterable[Want], shelf: Shelf) -> list[Course]:
     """Run every bought line that is drawn on through the term, by key."""
     takes: dict[str, list[Taken]] = {}
-    late = [
-        Taken(want.line, want.need, want.to_buy, want.deadline[0])
-        for want in missed
-        if facts.lines[want.line].form is not Form.SUNDRY
-    ]
-    for take in [*made.taken, *late]:
+    for take in [*made.taken, *(taken_for(want, want.deadline[0]) for want in missed)]:
         if take.amount and facts.lines[take.line].form is not Form.SUNDRY:
             takes.setdefault(take.line, []).append(take)
     return [_course(facts.lines[key], takes[key], shelf) for key in sorted(takes)]
 
 
 def _course(line: Line, takes: list[Taken], shelf: Shelf) -> Course:
-    takes = sorted(takes, key=lambda take: take.need.rank[1:])
-    course = Course(line, takes)
-    pools = {bottle.number: bottle.left for bottle in shelf.of_line(line.key)}
-    for take in takes:
-        # drawn on the day of its make, which may be a bottle's last good one
-        missing = _draw_down(pools, _usable(shelf, line, take.start), take.amount)
-        left = sum(pools[bottle.number] for bottle in _usable(shelf, line, take.need.on))
-        if missing:
-            course.missing += missing
-            course.first_missing = course.first_missing or take
-            booking = take.need.booking.number
-            course.short_for[booking] = course.short_for.get(booking, 0) + missing
-        below = line.level is not None and left < line.level
-        if below and course.crossing is None:
+    course = Course(line, sorted(takes, key=_by_day))
+    drawn: dict[str, int] = {}
+    for take in course.takes:
+        for number, amount in take.held:
+            drawn[number] = drawn.get(number, 0) + amount
+        left = left_on(shelf, line, take.need.on, drawn)
+        if line.level is not None and left < line.level and course.crossing is None:
             course.crossing, course.left_at_crossing = take, left
         course.left_at_end = left
     return course
 
 
-def _usable(shelf: Shelf, line: Line, on: date) -> list[Bottle]:
-    bottles = shelf.in_order(shelf.of_line(line.key), on, Purpose.ANY)
-    return [bottle for bottle in bottles if shelf.may_be_used(bottle.number, on)]
-
-
-def _draw_down(pools: dict[str, int], usable: list[Bottle], amount: int) -> int:
-    """Take from usable bottles in order; what could not be had comes back."""
-    for bottle in usable:
-        share = min(amount, pools[bottle.number])
-        pools[bottle.number] -= share
-        amount -= share
-    return amount
+def left_on(shelf: Shelf, line: Line, on: date, drawn: dict[str, int]) -> int:
+    """What stands there, usable on a day, once so much is drawn from each bottle."""
+    usable = [b for b in shelf.of_line(line.key) if shelf.may_be_used(b.number, on)]
+    return sum(max(0, bottle.left - drawn.get(bottle.number, 0)) for bottle in usable)
 
 
 def orders(facts: Facts, runs: Iterable[Course], shelf: Shelf) -> list[Order]:
@@ -106,8 +91,8 @@ def _order(facts: Facts, course: Course, shelf: Shelf) -> Order:
     assert trigger is not None
     line, calendar = course.line, facts.calendar
     level = line.level or 0
-    wanted = course.missing + max(0, level - course.left_at_end)
-    pack, count = choose_packs(line.packs, wanted)
+    wanted = sum(t.to_buy for t in course.to_buy) + max(0, level - course.left_at_end)
+    pack, count = choose_packs(_in_time(facts, line, course), wanted)
     lead = facts.house.default_lead if pack.lead is None else pack.lead
     order_by = order_by_day(facts, trigger, lead)
     pence = pack.pence * count
@@ -126,6 +111,18 @@ def _order(facts: Facts, course: Course, shelf: Shelf) -> Order:
         for_bookings=tuple(dict.fromkeys(take.need.booking.number for take in course.takes)),
         reasons=tuple(_reasons(facts, course, shelf, lead, order_by)),
     )
+
+
+def _in_time(facts: Facts, line: Line, course: Course) -> tuple[Pack, ...]:
+    """The packs that would come before the first need that waits for one; all, if none would."""
+    if not course.to_buy:
+        return line.packs
+    usual, start = facts.house.default_lead, min(take.start for take in course.to_buy)
+    days = {
+        p: facts.calendar.after(facts.as_at, usual if p.lead is None else p.lead)
+        for p in line.packs
+    }
+    return tuple(pack for pack in line.packs if days[pack] <= start) or line.packs
 
 
 def order_by_day(facts: Facts, take: Taken, lead: int) -> date:
@@ -180,10 +177,10 @@ def _reasons(facts: Facts, course: Course, shelf: Shelf, lead: int, order_by: da
             f"below {say(line.level, line.kind)} on {booking.on} "
             f"({booking.number}; {say(course.left_at_crossing, line.kind)} then left)"
         )
-    for number, amount in course.short_for.items():
-        take = next(t for t in course.takes if t.need.booking.number == number)
-        last = order_by_day(facts, take, lead)
-        words.append(f"{say(amount, line.kind)} short for {number}: order by {last} at the latest")
+    for take in course.to_buy:
+        last, number = order_by_day(facts, take, lead), take.need.booking.number
+        amount = say(take.to_buy, line.kind)
+        words.append(f"{amount} short for {number}: order by {last} at the latest")
     unusable = [
         f"{b.number} {v.condition} ({v.decided_by})"
         for b in shelf.of_line(line.key)
@@ -204,19 +201,37 @@ def _numbered(order: Order, number: str) -> Order:
     return replace(order, id=number)
 
 
-def made_levels(facts: Facts, shelf: Shelf) -> list[Level]:
-    """The day each line kept to a level falls below it by what is promised from its bottles."""
+def levels(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Level]:
+    """The day each line kept to a level falls below it, where no order already says so.
+
+    A line made here falls on the day of a booking, by exact needs; a bought one
+    that nobody draws on may stand below its level already.
+    """
+    wanted = [part for root in wants for part in root.tree()]
     found = []
     for line in facts.lines.values():
-        if line.level is None or line.key not in facts.methods:
-            continue
-        bottles = shelf.of_line(line.key)
-        promises = [p for bottle in bottles for p in shelf.promises[bottle.number]]
-        for day in sorted({promise.on for promise in promises}):
-            usable = {b.number: b.left for b in _usable(shelf, line, day)}
-            drawn = sum(p.amount for p in promises if p.on <= day and p.bottle in usable)
-            left = sum(usable.values()) - drawn
-            if left < line.level:
-                found.append(Level(line.key, line.item, day, left, line.level, line.kind))
-                break
+        takes = [want for want in wanted if want.line == line.key]
+        if takes:
+            level = _made_level(line, takes, shelf) if line.key in facts.methods else None
+        else:
+            level = _already_below(facts, line, shelf)
+        found += [level] if level else []
     return sorted(found, key=lambda level: (level.on, level.line))
+
+
+def _made_level(line: Line, takes: list[Want], shelf: Shelf) -> Level | None:
+    drawn: dict[str, int] = {}
+    for want in sorted(takes, key=lambda want: want.need.rank[1:]):
+        for promise in want.promises:
+            drawn[promise.bottle] = drawn.get(promise.bottle, 0) + promise.amount
+        left = left_on(shelf, line, want.need.on, drawn)
+        if line.level is not None and left < line.level:
+            return Level(line.key, line.item, want.need.on, left, line.level, line.kind)
+    return None
+
+
+def _already_below(facts: Facts, line: Line, shelf: Shelf) -> Level | None:
+    left = left_on(shelf, line, facts.as_at, {})
+    if line.level is None or left >= line.level:
+        return None
+    return Level(line.key, line.item, facts.as_at, left, line.level, line.kind)

@@ -79,7 +79,9 @@ def _exact_from_bottles(facts: Facts, wants: list[Want], shelf: Shelf) -> Iterab
         found = shelf.verdict(number, facts.as_at).strengths.found_on
         for first, by, served in titration_days(facts, line, needs, found):
             why = f"found {found}" if found else "never found"
-            yield _check(facts, number, line, _TITRATE, first, by, served, f"{why}; exact")
+            first = max(first, shelf.ready_on(number) or first)
+            todo = _check(facts, number, line, _TITRATE, first, by, served, f"{why}; exact")
+            yield _the_day_before(facts, todo)
 
 
 def _exact_from_batches(facts: Facts, batches: list[Batch]) -> Iterable[CheckToDo]:
@@ -95,10 +97,9 @@ def _exact_from_batches(facts: Facts, batches: list[Batch]) -> Iterable[CheckToD
         found = ready if batch.method.titrated else None
         for first, by, served in titration_days(facts, batch.line, needs, found):
             since = f"found {found} when finished" if found else "not titrated when made"
-            start = max(first, ready)
-            yield _check(
-                facts, batch.id, batch.line, _TITRATE, start, by, served, f"{since}; exact"
-            )
+            start, why = max(first, ready), f"{since}; exact"
+            todo = _check(facts, batch.id, batch.line, _TITRATE, start, by, served, why)
+            yield _the_day_before(facts, todo)
 
 
 def _rechecks(facts: Facts, wants: list[Want], shelf: Shelf) -> Iterable[CheckToDo]:
@@ -187,6 +188,10 @@ def _check(
     reason: str,
 ) -> CheckToDo:
     by = max(by, facts.as_at)
-    best = _best(facts, by, max(first, facts.as_at)) if "exact" in reason else by
     bookings = tuple(dict.fromkeys(need.booking.number for need in needs))
-    return CheckToDo(subject, line.key, what, max(first, facts.as_at), by, best, bookings, reason)
+    return CheckToDo(subject, line.key, what, max(first, facts.as_at), by, by, bookings, reason)
+
+
+def _the_day_before(facts: Facts, todo: CheckToDo) -> CheckToDo:
+    """Best done the open day before it is wanted, so that the class slip can be printed."""
+    return replace(todo, best=_best(facts, todo.by, todo.not_before))

@@ -11,6 +11,7 @@ from stockroom.planning.batch import Batch, Source, keeps
 from stockroom.planning.decisions import Answer, Draw, Make, Outcome, Short
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import Drawn, Facts, Form
+from stockroom.planning.numbers import Natural, natural
 from stockroom.planning.shelf import Promise, Shelf
 from stockroom.planning.timing import hours, ready_at
 from stockroom.planning.wants import Settled, Want
@@ -43,9 +44,9 @@ def answers(
     return sorted(row, key=lambda a: (a.booking.on, a.booking.minute, *_number(a.ref)))
 
 
-def _number(ref: str) -> tuple[str, int]:
+def _number(ref: str) -> tuple[Natural, int]:
     booking, _, number = ref.rpartition(".")
-    return booking, int(number)
+    return natural(booking), int(number)
 
 
 def _answer(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> Answer:
@@ -98,6 +99,12 @@ def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> lis
         words.append(f"made as {batch.id} on {batch.start[0]}{together}")
     if want.settled is Settled.SHOP:
         words.append(f"bought at a shop by {facts.calendar.before(want.need.on, 1)}")
+    if outcome_of(want) in (Outcome.SHORT, Outcome.REFUSED):
+        swaps = [swap for swap in want.need.recipe.swaps if swap.line == want.need.line.key]
+        words += [f"{swap.instead} is allowed instead: {swap.note}" for swap in swaps]
+    for part in want.tree()[1:] if outcome_of(want) is Outcome.BUY else ():
+        words += part.reasons
+        words += [f"{number} not used: {why}" for number, why in dict.fromkeys(part.passed_over)]
     said = " ".join(want.reasons)
     words += list(dict.fromkeys(want.reasons))
     passed = [(number, why) for number, why in want.passed_over if why not in said]
@@ -147,6 +154,7 @@ def _make(facts: Facts, batch: Batch) -> Make:
         fresh=batch.fresh,
         minutes=(batch.method.minutes + batch.method.finish_minutes) * batch.vessels,
         finish_on=batch.ready[0] if batch.method.finish_minutes else None,
+        finishing=batch.method.finish_minutes * batch.vessels,
         heel=batch.heel,
         heel_kept=kept,
         good_until=until,

@@ -65,7 +65,10 @@ class Answer:
 
 @dataclass(frozen=True, slots=True)
 class Make:
-    """One batch to make up. `on` is the day work starts, `ready` the day it can be used."""
+    """One batch to make up. `on` is the day work starts, `ready` the day it can be used.
+
+    `minutes` is all hands-on work, `finishing` the part of it done on `finish_on`.
+    """
 
     id: str
     line: str
@@ -82,6 +85,7 @@ class Make:
     fresh: bool
     minutes: int
     finish_on: date | None = None
+    finishing: int = 0
     heel: int = 0
     heel_kept: bool = False
     good_until: date | None = None

@@ -5,7 +5,7 @@ from __future__ import annotations
 from stockroom.keeping.rules import Purpose
 from stockroom.measure.amounts import Kind
 from stockroom.planning.amounts import draw_for, say
-from stockroom.planning.batch import Batch, Source, Taken
+from stockroom.planning.batch import Batch, Source, Taken, taken_for
 from stockroom.planning.facts import Facts, Form, Ingredient, Line
 from stockroom.planning.fitness import judge_for_dilution
 from stockroom.planning.shelf import Promise, Shelf, solute_held
@@ -16,13 +16,15 @@ class Drawing:
     """Draws for batches on a shelf, and keeps account of what bought lines give.
 
     `taken` is what each need takes of each bought line; `waiting` holds, by
-    want, the sources that a batch still to be dated will fill.
+    want, the sources that a batch still to be dated will fill. `outgrown` tells
+    that rounding batches up asked for more than there is anywhere in a chain.
     """
 
     def __init__(self, facts: Facts, shelf: Shelf) -> None:
         self.facts, self.shelf = facts, shelf
         self.taken: list[Taken] = []
         self.waiting: dict[int, Source] = {}
+        self.outgrown = False
 
     def settle(self, batch: Batch) -> None:
         """Give the batch its sources: what its parts were promised, drawn again as one."""
@@ -76,13 +78,19 @@ class Drawing:
         for part in parts:
             for promise in part.promises:
                 self.shelf.release(promise)
-        sources = self._from_bottles(batch, ingredient, line, list(dict.fromkeys(numbers)))
+        unique, to_buy = list(dict.fromkeys(numbers)), any(part.to_buy for part in parts)
+        sources = self._from_bottles(batch, ingredient, line, unique, to_buy)
         batch.sources += sources
         if line.key not in self.facts.methods:
-            self._note_taken(batch, line, parts, sum(source.amount for source in sources))
+            self._note_taken(batch, line, parts, sources)
 
     def _from_bottles(
-        self, batch: Batch, ingredient: Ingredient, line: Line, numbers: list[str]
+        self,
+        batch: Batch,
+        ingredient: Ingredient,
+        line: Line,
+        numbers: list[str],
+        to_buy: bool,
     ) -> list[Source]:
         """Draw the whole batch's share again: the promised bottles first, then other jars."""
         day, judge = batch.start[0], judge_for_dilution(line, batch.line, ingredient.per_dm3)
@@ -103,13 +111,27 @@ class Drawing:
         missing = round(whole * share_left)
         # a share under a millionth is the rounding of whole micro-units, nothing to buy
         if missing > 0 and share_left > 1e-6:
+            self.outgrown |= not to_buy
             sources.append(Source(line, missing, strength=line.strength))
         return sources
 
-    def _note_taken(self, batch: Batch, line: Line, parts: list[Want], drawn: int) -> None:
-        """Share what was drawn among the needs: each its exact part, the forced rest the first."""
-        forced = round(drawn * batch.forced / batch.volume) if batch.volume else 0
-        for number, part in enumerate(parts):
-            exact = part.to_buy + sum(promise.amount for promise in part.promises)
-            amount = exact + (forced if number == 0 else 0)
-            self.taken.append(Taken(line.key, part.need, amount, batch.start[0]))
+    def _note_taken(self, batch: Batch, line: Line, parts: list[Want], got: list[Source]) -> None:
+        """Share what was drawn among the needs: each its exact part, the forced rest in proportion.
+
+        Rounding a batch up is left out of account: running sums follow the exact needs.
+        """
+        exact = [part.to_buy + sum(p.amount for p in part.promises) for part in parts]
+        bought = sum(source.amount for source in got if not source.bottle)
+        held = sum(source.amount for source in got if source.bottle)
+        over_bought = max(0, bought - sum(part.to_buy for part in parts))
+        over_held = max(0, held + bought - sum(exact) - over_bought)
+        over_held = round(over_held * batch.forced_part)
+        for part, amount in zip(parts, exact, strict=True):
+            share = amount / sum(exact) if sum(exact) else 0.0
+            taken = taken_for(
+                part,
+                batch.start[0],
+                held=round(over_held * share),
+                to_buy=round(over_bought * share),
+            )
+            self.taken.append(taken)

@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from datetime import date
 
 from stockroom.errors import UnknownName
 from stockroom.planning.amounts import say
 from stockroom.planning.facts import Booking, Drawn, Facts, Firmness, Line, Per, Recipe, Requirement
+from stockroom.planning.numbers import Natural, natural
 
 
 @dataclass(frozen=True, slots=True)
@@ -45,11 +46,12 @@ class Need:
         return self.requirement.fresh or bool(self.line.never_kept)
 
     @property
-    def rank(self) -> tuple[int, date, int, str, int]:
+    def rank(self) -> tuple[int, date, int, Natural, int]:
         """Who is served first: firm before pencilled, then by day, time and number."""
         pencilled = int(self.booking.firmness is Firmness.PENCILLED)
         booking = self.booking
-        return pencilled, booking.on, booking.minute, booking.number, self.requirement.number
+        number = natural(booking.number)
+        return pencilled, booking.on, booking.minute, number, self.requirement.number
 
 
 def explode(facts: Facts, bookings: Iterable[Booking]) -> tuple[Need, ...]:
@@ -57,13 +59,23 @@ def explode(facts: Facts, bookings: Iterable[Booking]) -> tuple[Need, ...]:
 
     Raises UnknownName for a recipe or stock line the facts do not hold.
     """
+    drawn = _drawn_for(facts)
     needs = [
-        _need(facts, booking, recipe, requirement)
-        for booking in sorted(bookings, key=lambda b: (b.on, b.minute, b.number))
+        _need(facts, booking, recipe, requirement, drawn)
+        for booking in sorted(bookings, key=lambda b: (b.on, b.minute, natural(b.number)))
         for recipe in [_recipe_of(facts, booking)]
         for requirement in recipe.requirements
     ]
     return tuple(needs)
+
+
+def _drawn_for(facts: Facts) -> dict[tuple[str, str], list[Drawn]]:
+    """By booking and line, what the ledger says was drawn; each draw serves one need."""
+    row: dict[tuple[str, str], list[Drawn]] = {}
+    for draw in facts.drawn:
+        if draw.booking:
+            row.setdefault((draw.booking, draw.line), []).append(draw)
+    return row
 
 
 def standing(bookings: Iterable[Booking], start: date, end: date) -> list[Booking]:
@@ -88,7 +100,13 @@ def count_of(per: Per, groups: int) -> int:
     return groups if per in (Per.GROUP, Per.PERFORMANCE) else 1
 
 
-def _need(facts: Facts, booking: Booking, recipe: Recipe, requirement: Requirement) -> Need:
+def _need(
+    facts: Facts,
+    booking: Booking,
+    recipe: Recipe,
+    requirement: Requirement,
+    drawn: dict[tuple[str, str], list[Drawn]],
+) -> Need:
     line = facts.lines.get(requirement.line)
     if line is None:
         raise UnknownName(
@@ -99,8 +117,21 @@ def _need(facts: Facts, booking: Booking, recipe: Recipe, requirement: Requireme
     amount = amount_needed(requirement, booking.groups, booking.spare)
     words = _sum_in_words(requirement, booking, line, amount)
     ref = f"{booking.number}.{requirement.number}"
-    drawn = tuple(d for d in facts.drawn if (d.booking, d.line) == (booking.number, line.key))
-    return Need(ref, booking, recipe, requirement, line, amount, words, drawn)
+    mine = _take(drawn.get((booking.number, line.key), []), amount)
+    return Need(ref, booking, recipe, requirement, line, amount, words, mine)
+
+
+def _take(draws: list[Drawn], amount: int) -> tuple[Drawn, ...]:
+    """Use up draws to this amount; what is over is left for the recipe's next line of the kind."""
+    mine = []
+    while draws and amount > 0:
+        draw = draws.pop(0)
+        share = min(draw.amount, amount)
+        mine.append(replace(draw, amount=share))
+        if draw.amount > share:
+            draws.insert(0, replace(draw, amount=draw.amount - share))
+        amount -= share
+    return tuple(mine)
 
 
 def _recipe_of(facts: Facts, booking: Booking) -> Recipe:

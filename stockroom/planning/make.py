@@ -11,7 +11,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from stockroom.planning.amounts import draw_for
-from stockroom.planning.batch import Batch, Taken
+from stockroom.planning.batch import Batch, Taken, taken_for
 from stockroom.planning.batches import Item, Run, cut
 from stockroom.planning.drawing import Drawing
 from stockroom.planning.facts import Facts, Form, Ingredient, Line, Method
@@ -25,10 +25,14 @@ from stockroom.planning.windows import earliest_start
 
 @dataclass(slots=True)
 class Made:
-    """All batches in the order of their days, and what each need takes of bought lines."""
+    """All batches in the order of their days, and what each need takes of bought lines.
+
+    `outgrown`: rounding up asked for more than there is; exact batches would not.
+    """
 
     batches: list[Batch]
     taken: list[Taken]
+    outgrown: bool = False
 
 
 def make_up(facts: Facts, wants: list[Want], shelf: Shelf) -> Made:
@@ -53,8 +57,7 @@ class _Making:
             if want.settled is Settled.MAKE:
                 self.to_make.setdefault(want.line, []).append(want)
         if root.settled in (Settled.HELD, Settled.BUY) and root.line not in self.facts.methods:
-            amount = root.to_buy + sum(promise.amount for promise in root.promises)
-            self.drawing.taken.append(Taken(root.line, root.need, amount, root.need.on))
+            self.drawing.taken.append(taken_for(root, root.need.on))
 
     def run(self) -> Made:
         for key in settling_order(self.facts):
@@ -66,7 +69,7 @@ class _Making:
         self.batches.sort(key=lambda b: (b.start, b.line.key, b.needs[0].rank))
         for number, batch in enumerate(self.batches, 1):
             batch.id = f"M{number:02d}"
-        return Made(self.batches, self.drawing.taken)
+        return Made(self.batches, self.drawing.taken, self.drawing.outgrown)
 
     def _signature(self, want: Want) -> tuple[object, ...]:
         """What it is made from: only wants made from the same things share a batch.

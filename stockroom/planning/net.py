@@ -12,6 +12,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from datetime import date
 
+from stockroom.measure.days import format_time
 from stockroom.planning.amounts import say, solute_in
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import Facts, Form, Line, Method
@@ -22,9 +23,6 @@ from stockroom.planning.timing import Moment, deadline_for, earliest_ready, hour
 from stockroom.planning.wants import Settled, Want
 from stockroom.planning.windows import earliest_start, will_do
 from stockroom.safety.bars import barred_by
-
-_SAME_STRENGTH = 1e-3
-"""Bottles whose expected strengths agree this closely (as a fraction) may be put together."""
 
 
 @dataclass(slots=True)
@@ -280,14 +278,10 @@ def _not_by_then(want: Want, line: Line, method: Method) -> str:
     minutes = method.minutes + round(60 * method.stands_hours)
     return (
         f"cannot: {line.key} takes {minutes} min on the morning of {want.need.on}, "
-        f"and that day leaves no staffed time before {_clock(want.need.booking.minute)}"
+        f"and that day leaves no staffed time before {format_time(want.need.booking.minute)}"
     )
 
 
 def _not_made_not_sold(want: Want, line: Line) -> str:
     why = "; ".join(f"{number} {reason}" for number, reason in want.passed_over[:2])
     return f"no method and no supplier for {line.key}" + (f" ({why})" if why else "")
-
-
-def _clock(minute: int) -> str:
-    return f"{minute // 60:02d}:{minute % 60:02d}"

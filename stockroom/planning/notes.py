@@ -8,6 +8,7 @@ from stockroom.findings import Finding
 from stockroom.keeping.laws import warmth
 from stockroom.keeping.strength import law_of, temperature_on
 from stockroom.keeping.verdict import Condition, verdict
+from stockroom.measure.days import format_time
 from stockroom.planning.amounts import say
 from stockroom.planning.decisions import Level, Make, Order
 from stockroom.planning.explode import Need
@@ -33,6 +34,7 @@ def notes(
         *_hours(facts, [booking for booking, _ in bookings]),
         *_never_kept(bookings),
         *_heavy_days(makes),
+        *_full_mornings(facts, makes),
         *_money(facts, orders),
         *_levels(levels),
         *_shelf(facts),
@@ -46,15 +48,15 @@ def _hours(facts: Facts, bookings: list[Booking]) -> Iterable[Finding]:
     for booking in bookings:
         if not calendar.is_open(booking.on):
             yield Finding(booking.number, f"{booking.on} is a closed day: keep it?")
-        elif booking.minute + booking.lasts_minutes > calendar.open_to + 60 or (
-            booking.minute >= calendar.open_to
+        elif booking.minute < calendar.open_from or (
+            booking.minute + booking.lasts_minutes > calendar.open_to
         ):
-            end = _clock(booking.minute + booking.lasts_minutes)
+            end = format_time(booking.minute + booking.lasts_minutes)
             yield Finding(
                 booking.number,
-                f"{_clock(booking.minute)} to {end} is outside staffed hours "
-                f"({_clock(calendar.open_from)} to {_clock(calendar.open_to)}): "
-                f"someone must be here from {_clock(booking.minute - _MIX_BEFORE)}",
+                f"{format_time(booking.minute)} to {end} is outside staffed hours "
+                f"({format_time(calendar.open_from)} to {format_time(calendar.open_to)}): "
+                f"someone must be here from {format_time(booking.minute - _MIX_BEFORE)}",
             )
 
 
@@ -62,10 +64,12 @@ def _never_kept(bookings: list[tuple[Booking, Recipe]]) -> Iterable[Finding]:
     for booking, recipe in bookings:
         if recipe.never_kept:
             ends = booking.minute + booking.lasts_minutes
+            mix = format_time(booking.minute - _MIX_BEFORE)
+            destroy = format_time(ends + _DESTROY_AFTER)
             yield Finding(
                 booking.number,
-                f"{booking.on}: mix not before {_clock(booking.minute - _MIX_BEFORE)}, destroy by "
-                f"{_clock(ends + _DESTROY_AFTER)} and tick it with initials. {recipe.never_kept}",
+                f"{booking.on}: mix not before {mix}, destroy by {destroy} and tick it with "
+                f"initials. {recipe.never_kept}",
             )
 
 
@@ -73,14 +77,32 @@ def _heavy_days(makes: list[Make]) -> Iterable[Finding]:
     minutes: dict[str, int] = {}
     movable: dict[str, list[str]] = {}
     for make in makes:
-        day = make.on.isoformat()
-        minutes[day] = minutes.get(day, 0) + make.minutes
+        day, finished = make.on.isoformat(), (make.finish_on or make.on).isoformat()
+        minutes[day] = minutes.get(day, 0) + make.minutes - make.finishing
+        minutes[finished] = minutes.get(finished, 0) + make.finishing
         if make.earliest < make.on:
-            movable.setdefault(day, []).append(make.id)
-    for day, total in sorted(minutes.items()):
+            movable.setdefault(make.on.isoformat(), []).append(make.id)
+    for day_text, total in sorted(minutes.items()):
         if total > HEAVY_DAY_MINUTES:
-            earlier = ", ".join(movable.get(day, [])) or "none"
-            yield Finding(day, f"{total} min hands-on; could be made earlier: {earlier}")
+            earlier = ", ".join(movable.get(day_text, [])) or "none"
+            yield Finding(day_text, f"{total} min hands-on; could be made earlier: {earlier}")
+
+
+def _full_mornings(facts: Facts, makes: list[Make]) -> Iterable[Finding]:
+    """Mornings whose fresh makes do not fit before the first class they are for."""
+    begins = {booking.number: booking.minute for booking in facts.bookings}
+    opens = facts.calendar.open_from
+    for day in sorted({make.on for make in makes if make.fresh}):
+        row = [make for make in makes if make.fresh and make.on == day]
+        first = min(begins[number] for make in row for number in make.bookings)
+        due = [m for m in row if min(begins[number] for number in m.bookings) == first]
+        minutes = sum(make.minutes for make in due)
+        if minutes > first - opens:
+            yield Finding(
+                day.isoformat(),
+                f"{len(due)} fresh makes take {minutes} min before {format_time(first)}, "
+                f"and {first - opens} min are staffed: somebody earlier, or two at once",
+            )
 
 
 def _money(facts: Facts, orders: list[Order]) -> Iterable[Finding]:
@@ -102,8 +124,8 @@ def _levels(levels: list[Level]) -> Iterable[Finding]:
     for level in levels:
         yield Finding(
             level.line,
-            f"falls below {say(level.level, level.kind)} on {level.on} "
-            f"({say(level.left, level.kind)} then left): make more",
+            f"below {say(level.level, level.kind)} from {level.on} "
+            f"({say(level.left, level.kind)} then left): see to more",
         )
 
 
@@ -111,7 +133,11 @@ def _shelf(facts: Facts) -> Iterable[Finding]:
     meant = {place.name: place.meant_for for place in facts.places}
     here = [b for b in facts.bottles if b.left and not b.record.gone and not b.record.not_found]
     group = {b.number: facts.lines[b.line].storage_group for b in here}
-    yield from wrong_neighbours((b.number, group[b.number], meant.get(b.place, "")) for b in here)
+    beside: dict[str, set[str]] = {}
+    for bottle in here:
+        beside.setdefault(bottle.place, {meant.get(bottle.place, "")}).add(group[bottle.number])
+    pairs = [(b.number, group[b.number], one) for b in here for one in sorted(beside[b.place])]
+    yield from wrong_neighbours(pairs)
     yield from tight_caps((b.number, b.cap, facts.lines[b.line].vented_cap) for b in here)
     for bottle in here:
         rules = facts.lines[bottle.line].rules
@@ -144,7 +170,3 @@ def _shops(facts: Facts, needs: tuple[Need, ...]) -> Iterable[Finding]:
             by = facts.calendar.before(need.on, 1)
             amount = say(need.amount, need.line.kind)
             yield Finding(need.booking.number, f"{amount} of {need.line.item} from a shop by {by}")
-
-
-def _clock(minute: int) -> str:
-    return f"{minute // 60:02d}:{minute % 60:02d}"

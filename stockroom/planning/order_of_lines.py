@@ -7,7 +7,9 @@ from stockroom.planning.facts import Facts
 
 
 def settling_order(facts: Facts) -> list[str]:
-    """Every line key, each before its ingredients.
+    """Every line key, each before its ingredients, and earlier choices before later ones.
+
+    Where two methods choose in opposite order the earlier-named line goes first.
 
     Raises NotAllowed for a line made, in the end, from itself.
     """
@@ -22,10 +24,30 @@ def settling_order(facts: Facts) -> list[str]:
 
 def _successors(facts: Facts) -> dict[str, list[str]]:
     after: dict[str, list[str]] = {}
-    for method in facts.methods.values():
+    methods = [method for _, method in sorted(facts.methods.items())]
+    for method in methods:
         for ingredient in method.ingredients:
             after.setdefault(method.line, []).extend(ingredient.lines)
+    for method in methods:
+        for ingredient in method.ingredients:
+            for first, second in zip(ingredient.lines, ingredient.lines[1:], strict=False):
+                if not _leads(after, second, first):
+                    after.setdefault(first, []).append(second)
     return after
+
+
+def _leads(after: dict[str, list[str]], start: str, goal: str) -> bool:
+    """True when `goal` comes after `start`, directly or through others."""
+    seen: set[str] = set()
+    waiting = [start]
+    while waiting:
+        key = waiting.pop()
+        if key == goal:
+            return True
+        if key not in seen:
+            seen.add(key)
+            waiting += after.get(key, [])
+    return False
 
 
 def _visit(

@@ -5,14 +5,14 @@ from __future__ import annotations
 from dataclasses import replace
 from datetime import date
 
-from stockroom.planning.buy import courses, made_levels, orders
+from stockroom.planning.buy import courses, levels, orders
 from stockroom.planning.checks import checks
 from stockroom.planning.decide import answers, makes, shorts
 from stockroom.planning.decisions import Answer, Order, Plan, Use
-from stockroom.planning.explode import explode, standing
+from stockroom.planning.explode import Need, explode, standing
 from stockroom.planning.facts import Drawn, Facts, Firmness
-from stockroom.planning.make import make_up
-from stockroom.planning.net import net
+from stockroom.planning.make import Made, make_up
+from stockroom.planning.net import Netted, net
 from stockroom.planning.notes import notes
 from stockroom.planning.tell import guesses, past_on
 from stockroom.planning.usage import drawn_so_far, usage
@@ -28,12 +28,11 @@ def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
     come. `past` is told for `past_day`, else for `as_at`.
     """
     needs = explode(facts, standing(facts.bookings, facts.as_at, facts.horizon or facts.end))
-    netted = net(facts, needs)
-    made = make_up(facts, netted.wants, netted.shelf)
+    netted, made = _settled(facts, needs)
     buying = orders(facts, courses(facts, made, netted.missed, netted.shelf), netted.shelf)
     batches, shelf = made.batches, netted.shelf
     making = makes(facts, batches)
-    levels = made_levels(facts, shelf)
+    below = levels(facts, netted.wants, shelf)
     whole = Plan(
         as_at=facts.as_at,
         start=facts.start,
@@ -47,11 +46,20 @@ def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
         orders=tuple(buying),
         short=tuple(shorts(netted.wants)),
         checks=tuple(checks(facts, netted.wants, batches, buying, shelf)),
-        levels=tuple(levels),
+        levels=tuple(below),
         guesses=tuple(guesses(facts, netted.wants, shelf)),
-        notes=tuple(notes(facts, needs, making, buying, levels, shelf)),
+        notes=tuple(notes(facts, needs, making, buying, below, shelf)),
     )
     return _shown(whole)
+
+
+def _settled(facts: Facts, needs: tuple[Need, ...]) -> tuple[Netted, Made]:
+    """Netted and made up; to the exact need where rounding up asks for more than there is."""
+    netted = net(facts, needs)
+    made = make_up(facts, netted.wants, netted.shelf)
+    if made.outgrown and facts.house.batch_step > 1:
+        return _settled(replace(facts, house=replace(facts.house, batch_step=1)), needs)
+    return netted, made
 
 
 def usage_of_period(facts: Facts) -> list[Use]:
@@ -82,6 +90,7 @@ def _shown(whole: Plan) -> Plan:
     shown = {answer.booking.number for answer in needs}
     if len(needs) == len(whole.needs):
         return whole
+    others = {answer.booking.number for answer in whole.needs} - shown
     return replace(
         whole,
         needs=needs,
@@ -89,4 +98,5 @@ def _shown(whole: Plan) -> Plan:
         orders=tuple(o for o in whole.orders if shown & set(o.for_bookings)),
         short=tuple(s for s in whole.short if s.booking in shown),
         checks=tuple(c for c in whole.checks if shown & set(c.bookings)),
+        notes=tuple(n for n in whole.notes if n.subject not in others),
     )

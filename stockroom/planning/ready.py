@@ -46,7 +46,8 @@ def readiness(
         check for check in plan.checks if not check.optional and wanted & set(check.bookings)
     )
     to_do = (*_shorts(plan, wanted), *_buys(needs), *_makes(makes), *_checks(checks))
-    return Readiness(not to_do, title, on, to_do, needs, makes, checks, _strengths(facts, needs), _words(facts, wanted))
+    strengths, cautions = _strengths(facts, needs), _words(facts, wanted)
+    return Readiness(not to_do, title, on, to_do, needs, makes, checks, strengths, cautions)
 
 
 def _shorts(plan: Plan, wanted: set[str]) -> list[str]:

@@ -5,10 +5,11 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from stockroom.planning.amounts import say, take_for
-from stockroom.planning.facts import Facts, Form, Line
+from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
 from stockroom.planning.fitness import judge_for_dilution, judge_for_need
 from stockroom.planning.shelf import Judge, Promise, Shelf, solute_held
 from stockroom.planning.wants import Settled, Want
+from stockroom.safety.bars import barred_by
 
 _SAME_STRENGTH = 1e-3
 """Bottles whose expected strengths agree this closely (as a fraction) may be put together."""
@@ -64,11 +65,25 @@ class Serving:
         judge = self._judge(want, line)
         bottles = [b for b in self.shelf.of_line(line.key) if self.shelf.left[b.number] > 0]
         for bottle in self.shelf.in_order(bottles, want.use_day, want.purpose):
-            reason = self.shelf.unfit(bottle.number, want.use_day, want.purpose, judge)
+            reason = self._barred(want, bottle) or self.shelf.unfit(
+                bottle.number, want.use_day, want.purpose, judge
+            )
             if reason:
                 want.passed_over.append((bottle.number, reason))
             else:
                 yield bottle.number
+
+    def _barred(self, want: Want, bottle: Bottle) -> str:
+        """Why the recipe bars what this bottle was made from; "" if it does not."""
+        recipe = want.need.recipe
+        own = {self.facts.lines[one.line].substance for one in recipe.requirements}
+        for number in bottle.lineage if recipe.bars else ():
+            parent = self.shelf.bottle.get(number)
+            substance = self.facts.lines[parent.line].substance if parent else ""
+            reason = barred_by(recipe, substance, own)
+            if reason:
+                return f"made from {number}, {substance}, barred in {recipe.code}: {reason}"
+        return ""
 
     def _judge(self, want: Want, line: Line) -> Judge:
         if want.under is None:
@@ -104,6 +119,8 @@ class Serving:
         return shares
 
     def _alike(self, want: Want, line: Line, first: str, number: str) -> bool:
+        if want.under is None and want.need.requirement.closeness is Closeness.PRESENT:
+            return True
         one, other = (solute_held(self.shelf, line, n, want.use_day) for n in (first, number))
         if one is None or other is None:
             return one is other

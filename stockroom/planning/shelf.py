@@ -17,6 +17,7 @@ from stockroom.keeping.strength import Strengths, strengths_on
 from stockroom.keeping.verdict import USABLE, Limit, Verdict, judge, limits_of
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Bottle, Facts, Form, Line
+from stockroom.planning.numbers import Natural, natural
 
 TOO_CLOSE_UL = 5_000
 TOO_CLOSE_PART = 0.03
@@ -55,7 +56,7 @@ class Shelf:
             for key, line in facts.lines.items()
             if any(rule.origin is Origin.OPENED for rule in line.rules)
         }
-        for bottle in sorted(facts.bottles, key=lambda b: b.number):
+        for bottle in sorted(facts.bottles, key=lambda b: natural(b.number)):
             self._by_line[bottle.line].append(bottle)
 
     def of_line(self, key: str) -> list[Bottle]:
@@ -143,7 +144,7 @@ class Shelf:
         return ""
 
     def _unfit_on(self, number: str, on: date, purpose: Purpose, judge: Judge, opened: date) -> str:
-        standing_until = self._ready_on(number)
+        standing_until = self.ready_on(number)
         if standing_until and on < standing_until:
             return f"still standing until {standing_until}"
         judged = self.verdict(number, on, purpose, opened)
@@ -152,7 +153,7 @@ class Shelf:
             return f"{judged.condition}{when} ({judged.decided_by})"
         return judge(self.bottle[number], judged)
 
-    def _ready_on(self, number: str) -> date | None:
+    def ready_on(self, number: str) -> date | None:
         """The day a made bottle has stood long enough; standing under half a day does not count."""
         bottle = self.bottle[number]
         method = self.facts.methods.get(bottle.line)
@@ -194,10 +195,10 @@ class Shelf:
 
         matters = any(bottle.line in self._opening_matters for bottle in bottles)
 
-        def key(bottle: Bottle) -> tuple[int, date, bool, str]:
+        def key(bottle: Bottle) -> tuple[int, date, bool, Natural]:
             recent = -_last_found(bottle) if purpose is Purpose.EXACT else 0
             until = self.usable_until(bottle.number, purpose, on if matters else None)
-            return recent, until, self.is_sealed(bottle.number), bottle.number
+            return recent, until, self.is_sealed(bottle.number), natural(bottle.number)
 
         return sorted(bottles, key=key)
 

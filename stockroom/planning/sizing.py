@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import math
+
 from stockroom.chemistry.weighing import least_weighable
 from stockroom.measure.amounts import PER_UNIT, Kind
 from stockroom.measure.formats import format_number
@@ -52,19 +54,23 @@ class Sizing:
         return volume, volume - exact, reasons
 
     def _weighable(self, run: Run, volume: int) -> tuple[int, str]:
-        """The least volume whose solids can be weighed closely enough on the day, and why."""
+        """The least volume whose solids can all be weighed closely enough, and why."""
+        grams = [
+            draw_for(solid, None, self.line, volume, per_dm3) / _MICROGRAMS
+            for solid, per_dm3 in self._solids(run)
+        ]
         here = [balance for balance in self.facts.balances if balance.here(run.on)]
         balance = min(here, key=lambda b: (b.step, b.name), default=None)
-        if balance is None:
-            return volume, "No balance that day" if self.facts.balances else ""
-        tolerance = _closest(run)
+        if not grams or balance is None:
+            return volume, "No balance that day" if grams and self.facts.balances else ""
+        tolerance, least_of_all = _closest(run), min(grams)
         least = least_weighable(balance.step / _MICROGRAMS, tolerance)
-        for solid, per_dm3 in self._solids(run):
-            grams = draw_for(solid, None, self.line, volume, per_dm3) / _MICROGRAMS
-            if 0 < grams < least:
-                scaled = round(volume * least / grams)
-                return scaled, _too_little(grams, least, tolerance, balance, scaled)
-        return volume, ""
+        if not 0 < least_of_all < least:
+            return volume, ""
+        scaled = round(volume * least / least_of_all)
+        if self.most and scaled > self.most:
+            return volume, _through_an_intermediate(least_of_all, least, volume)
+        return scaled, _too_little(least_of_all, least, tolerance, balance, scaled)
 
     def _solids(self, run: Run) -> list[tuple[Line, int | None]]:
         parts = run.items[0].wants[0].parts
@@ -99,4 +105,14 @@ def _too_little(grams: float, least: float, tolerance: float, balance: Balance, 
         f"{format_number(grams, 3)} g is too little to weigh to {100 * tolerance:g} % on "
         f"{balance.name} ({step} g): {format_number(least, 3)} g in "
         f"{say(volume, Kind.VOLUME)} instead"
+    )
+
+
+def _through_an_intermediate(grams: float, least: float, volume: int) -> str:
+    """Where no vessel holds a batch that can be weighed: a stronger one, diluted."""
+    times = math.ceil(least / grams)
+    return (
+        f"{format_number(grams, 3)} g is too little to weigh: weigh "
+        f"{format_number(grams * times, 3)} g into {say(volume, Kind.VOLUME)}, then dilute "
+        f"1 in {times}"
     )

@@ -10,6 +10,7 @@ from stockroom.keeping.verdict import Condition, Verdict, verdict
 from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import PastBottle
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
+from stockroom.planning.numbers import natural
 from stockroom.planning.shelf import Shelf
 from stockroom.planning.wants import Want
 
@@ -24,7 +25,7 @@ def past_on(facts: Facts, wants: Iterable[Want], on: date) -> list[PastBottle]:
     """
     concerned = _concerned(wants, on)
     row = []
-    for bottle in sorted(facts.bottles, key=lambda b: _natural(b.number)):
+    for bottle in sorted(facts.bottles, key=lambda b: natural(b.number)):
         judged = verdict(bottle.record, facts.lines[bottle.line].rules, on)
         if judged.condition in _TOLD:
             row.append(_past(facts, bottle, judged, concerned.get(bottle.number, ())))
@@ -57,12 +58,6 @@ def _apart(one: float | None, other: float | None) -> bool:
     return bool(one and other) and abs((one or 0) / (other or 1) - 1) > 0.01
 
 
-def _natural(number: str) -> tuple[str, int, str]:
-    head = number.rstrip("0123456789abcdefghijklmnopqrstuvwxyz")
-    digits = "".join(filter(str.isdigit, number[len(head) :]))
-    return head, int(digits or 0), number
-
-
 # -- guesses ------------------------------------------------------------------------
 
 
@@ -93,7 +88,7 @@ def guesses(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Finding]:
                     (part.line, f"no hands-on time written: {part.method.minutes} min assumed")
                 ] = None
     row = [Finding(subject, text) for subject, text in found]
-    return sorted(row, key=lambda f: (_natural(f.subject), f.text))
+    return sorted(row, key=lambda f: (natural(f.subject), f.text))
 
 
 def _closest_use(wants: Iterable[Want]) -> dict[str, Closeness]:

@@ -64,7 +64,7 @@ def convert(
     stuff = solute(of, lines)
     strength = _strength(text, stuff)
     unit = parse_strength(f"1 {to}", where="--to")
-    density = _density(density, strength, stuff, lines)
+    density, assumed = _density(density, strength, stuff, lines)
     conc = _canonical(strength, stuff, density)
     value = express(
         conc,
@@ -76,7 +76,7 @@ def convert(
     )
     value /= unit.value or 1.0  # "mM" is a thousandth of mol/dm3
     shown = f"{format_number(value)} {to}"
-    return Sum(f"{text} {stuff.name} is {shown}", value, to, _figures(stuff, density))
+    return Sum(f"{text} {stuff.name} is {shown}", value, to, _figures(stuff, density, assumed))
 
 
 def weigh(
@@ -87,18 +87,23 @@ def weigh(
     assay_percent: float | None = None,
     step_g: float | None = None,
     closeness_percent: float = 5.0,
+    density: float | None = None,
     store: Path | None = None,
 ) -> Sum:
     """The g to weigh of the form `of` for a volume of the strength `text`.
 
     `assay_percent` takes the place of the label's where given. With the balance's
     `step_g`, a mass too small for the closeness brings two offers: a larger batch,
-    or ten times as strong and diluted. Raises: BadInput, UnknownName, MissingFigure.
+    or ten times as strong and diluted. `density` in g/cm³ is the solution's, for % w/w.
+    Raises: BadInput, UnknownName, MissingFigure.
     """
-    stuff = solid(of, house_lines(store))
+    lines = house_lines(store)
+    stuff = solid(of, lines)
     assay = stuff.assay if assay_percent is None else _fraction(assay_percent)
     cubic = _cubic(volume)
-    conc = _canonical(_strength(text, stuff), stuff, None)
+    strength = _strength(text, stuff)
+    density, assumed = _density(density, strength, stuff, lines)
+    conc = _canonical(strength, stuff, density)
     # g/dm³ over a "molar mass" of 1 g/g is the same sum by mass
     unit_mass = stuff.molar_mass if conc.unit == PER_MOLE else 1.0
     if unit_mass is None:
@@ -108,7 +113,7 @@ def weigh(
         )
     mass = mass_for(cubic, conc.value, molar_mass=unit_mass, assay=assay)
     answer = f"{_grams(mass)} of {stuff.name}, made up to {_cm3(cubic)}"
-    used = (*_figures(stuff, None), f"assay {format_number(assay * 100)} %")
+    used = (*_figures(stuff, density, assumed), f"assay {format_number(assay * 100)} %")
     offers = _offers(mass, cubic, step_g, closeness_percent / 100) if step_g else ()
     return Sum(answer, mass, "g", (*used, *offers, *_caution(stuff)))
 
@@ -136,12 +141,18 @@ def dilute(
     lines = house_lines(store)
     stuff = solute(of, lines) if of else _guessed(text, source)
     strong = _strength(source, stuff)
-    density = _density(density, strong, stuff, lines)
-    return _diluted(cubic, text, _canonical(strong, stuff, density), source, stuff, density)
+    density, assumed = _density(density, strong, stuff, lines)
+    figures = _figures(stuff, density, assumed)
+    return _diluted(cubic, text, _canonical(strong, stuff, density), source, stuff, figures)
 
 
 def _diluted(
-    cubic: float, text: str, stock: Concentration, source: str, stuff: Stuff, density: float | None
+    cubic: float,
+    text: str,
+    stock: Concentration,
+    source: str,
+    stuff: Stuff,
+    figures: tuple[str, ...],
 ) -> Sum:
     strength = _strength(text, stuff)
     wanted = _canonical(strength, stuff, None)
@@ -150,6 +161,7 @@ def _diluted(
             f"{text} and {source} cannot be compared without a molar mass.",
             "Add --of with the name or the formula.",
         )
+    # diluting never makes stronger; evaporating is no job for a bench sum
     if wanted.value > stock.value * (1 + _SAME):
         held = f"{format_number(strength.value * stock.value / wanted.value)} {strength.unit}"
         raise NotAllowed(
@@ -159,10 +171,11 @@ def _diluted(
     taken = volume_of_stock(cubic, wanted.value, stock.value, unit=stock.unit)
     answer = f"{_cm3(taken)} of {source} {stuff.name}".strip() + f", made up to {_cm3(cubic)}"
     comes_to = f"{source} is {format_strength(stock.value, stock.unit)}"
-    return Sum(answer, taken, "cm3", (comes_to, *_figures(stuff, density), *_caution(stuff)))
+    return Sum(answer, taken, "cm3", (comes_to, *figures, *_caution(stuff)))
 
 
 def _from_bottle(cubic: float, text: str, number: str, store: Path, as_at: date | None) -> Sum:
+    # loaded here: a sum without a bottle opens no store and needs no rules
     from stockroom.keeping.verdict import verdict
     from stockroom.service.database import day_for
     from stockroom.store.snapshot import facts
@@ -176,7 +189,8 @@ def _from_bottle(cubic: float, text: str, number: str, store: Path, as_at: date 
     if expected is None:
         raise MissingFigure(f"{number} has no strength to dilute from.", "Titrate it first.")
     stock = Concentration(expected, line.unit)
-    answer = _diluted(cubic, text, stock, number, of_line(line), None)
+    stuff = of_line(line)
+    answer = _diluted(cubic, text, stock, number, stuff, _figures(stuff, None))
     basis = f"expected on {on} from its {judged.strengths.basis} strength; {judged.condition}"
     return Sum(
         answer.text,
@@ -205,6 +219,7 @@ def _guessed(text: str, source: str) -> Stuff:
 
 
 def _strength(text: str, stuff: Stuff) -> Strength:
+    # a bare number is asked about here, where the likely answer is known
     bare = re.fullmatch(r"\s*[\d.,]+\s*%?\s*", text)
     if bare and stuff.molar_mass and abs(stuff.molar_mass - MOLAR_MASS) < 0.1:
         raise ask_vol(text)
@@ -226,10 +241,12 @@ def _canonical(strength: Strength, stuff: Stuff, density: float | None) -> Conce
 
 def _density(
     given: float | None, strength: Strength, stuff: Stuff, lines: list[Stuff]
-) -> float | None:
+) -> tuple[float | None, str]:
+    """The density to use, and whose it is where nobody gave it."""
     if given is not None or strength.unit is not StrengthUnit.WW:
-        return given
-    return density_of(strength.value, stuff, lines)
+        return given, ""
+    found = density_of(strength.value, stuff, lines)
+    return found, f"assumed, that of {stuff.substance} {strength.text}" if found else ""
 
 
 def _fraction(assay_percent: float) -> float:
@@ -254,6 +271,7 @@ def _offers(mass: float, cubic: float, step: float, closeness: float) -> tuple[s
     least = least_weighable(step, closeness)
     if mass >= least:
         return (f"one step of the balance, {step:g} g, is {error} of it",)
+    # both ways out are offered, since which wastes less depends on what keeps
     weighed, batch = batch_to_weigh(mass, cubic, least)
     flask = batch / _INTERMEDIATE
     part = cubic / _INTERMEDIATE
@@ -264,9 +282,11 @@ def _offers(mass: float, cubic: float, step: float, closeness: float) -> tuple[s
     )
 
 
-def _figures(stuff: Stuff, density: float | None) -> tuple[str, ...]:
+def _figures(stuff: Stuff, density: float | None, assumed: str = "") -> tuple[str, ...]:
     mass = f"molar mass {stuff.molar_mass:.2f} g/mol" if stuff.molar_mass else ""
     dense = f"density {format_number(density)} g/cm³" if density else ""
+    # a figure nobody gave must be seen to be one: the label may say another
+    dense += f" ({assumed}; give --density off the label)" if assumed else ""
     return tuple(figure for figure in (mass, dense) if figure)
 
 

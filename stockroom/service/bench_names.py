@@ -44,6 +44,7 @@ def solute(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     The item of that name, else the substance. `lines` are the house's own and
     come first. Raises: UnknownName with the nearest names; BadAmount for a bad formula.
     """
+    # one's own line comes first: its assay and density are off the bottle in hand
     known = [*lines, *_shipped_lines()]
     asked = _formulas().get(of.strip()) or _substance_of(of)
     named = [stuff for stuff in known if _same(stuff.name, of, asked)]
@@ -59,6 +60,7 @@ def solid(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     anhydrous salt weighed for the hydrate makes a solution half as strong again.
     Raises: BadInput naming the forms; UnknownName; BadAmount.
     """
+    # a formula names its hydrate itself, so there is no form left to ask about
     if of.strip() in _formulas():
         return _by_formula(of, [])
     asked = _substance_of(of)
@@ -106,8 +108,10 @@ def of_line(line: Line) -> Stuff:
 def density_of(percent_ww: float, stuff: Stuff, lines: Iterable[Stuff] = ()) -> float | None:
     """The g/cm³ of that substance at that % w/w, where a line says; else None."""
     text = f"{percent_ww:g} % w/w"
+    # a formula was asked for, and the lines are kept under names
+    named = _formulas().get(stuff.substance, stuff.substance)
     for line in [*lines, *_shipped_lines()]:
-        if line.substance == stuff.substance and line.strength_text == text and line.density:
+        if line.substance == named and line.strength_text == text and line.density:
             return line.density
     return None
 
@@ -120,6 +124,7 @@ def _by_formula(of: str, known: list[Stuff]) -> Stuff:
         except BadAmount as bad:
             trouble = f" {bad.message}"
     names = sorted({stuff.name for stuff in known} | set(_other_names()))
+    # by the standard library: a slip in a bench sum must not load the matcher of the store
     near = get_close_matches(of.casefold(), names, n=3, cutoff=0.3)
     nearest = f"Nearest: {'; '.join(near)}." if near else ""
     raise UnknownName(

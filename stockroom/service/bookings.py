@@ -7,7 +7,7 @@ from datetime import date
 from pathlib import Path
 
 from stockroom import clock
-from stockroom.errors import BadInput, NotAllowed
+from stockroom.errors import BadDate, BadInput, NotAllowed
 from stockroom.measure.days import format_time, spell_day
 from stockroom.measure.formats import format_number
 from stockroom.planning.facts import Firmness
@@ -15,6 +15,7 @@ from stockroom.service.answers import Done
 from stockroom.service.work import initials
 from stockroom.store import names
 from stockroom.store.engine import Session, reader_in, writing
+from stockroom.store.history import terms
 from stockroom.store.ledger import next_booking_number
 from stockroom.store.likeness import unknown
 from stockroom.store.rows_recipes import checked_groups, checked_spare
@@ -44,11 +45,11 @@ class Hand:
         )
         self.session.add(change)
 
-    def done(self, text: str) -> Done:
+    def done(self, text: str, details: tuple[str, ...] = ()) -> Done:
         """The answer, saying whether this is the practice store."""
         setting = self.session.get(House, "practice")
         practice = setting is not None and setting.value == "yes"
-        return Done(text, next="stockroom plan", practice=practice)
+        return Done(text, next="stockroom plan", practice=practice, details=details)
 
 
 def book(
@@ -72,16 +73,18 @@ def book(
 
     `time` in minutes after midnight, `spare` in per cent (10 when None).
     Raises: BadInput for groups outside 1-200, spare over 50 %, no department or
-    a number in use; UnknownName; NotAllowed on a closed day unless `keep`.
+    a number in use; BadDate before today; UnknownName; NotAllowed on a closed
+    day unless `keep`.
     """
     firm = _firmness(firmness)
     with writing(path) as session:
         hand = Hand(session, today, initials(by))
         found = names.find_recipe(session, recipe, version)
         payer = _payer(session, department)
-        _check_open(session, on, keep=keep)
+        _check_day(hand, on, keep=keep)
         assert found.id is not None and payer.id is not None
         booking = Booking(
+            # checked inside the transaction, or two desks could be given one number
             number=_number(session, number),
             recipe_id=found.id,
             on_day=on,
@@ -96,7 +99,8 @@ def book(
         session.flush()
         # its first state, so that the record can be read from the beginning
         hand.record(booking, "booked", "", _in_words(session, booking))
-        return hand.done(f"Booked {booking.number}: {_in_words(session, booking)}.")
+        text = f"Booked {booking.number}: {_in_words(session, booking)}."
+        return hand.done(text, _outside_terms(session, on))
 
 
 def _firmness(word: str) -> Firmness:
@@ -106,6 +110,7 @@ def _firmness(word: str) -> Firmness:
 
 
 def _payer(session: Session, department: str) -> Department:
+    # money is split by department to the penny, and a guess here would be paid by somebody
     if not department.strip():
         raise BadInput(
             f'Department "{department}": a booking needs to know who pays.', "Add --dept CH."
@@ -114,6 +119,7 @@ def _payer(session: Session, department: str) -> Department:
 
 
 def _number(session: Session, number: str | None) -> str:
+    # numbers on printed sheets must stay true, so a free one is always a new one
     if number is None:
         return next_booking_number(session)
     if names.number_in_use(session, number):
@@ -121,9 +127,23 @@ def _number(session: Session, number: str | None) -> str:
     return number.strip()
 
 
-def _check_open(session: Session, on: date, *, keep: bool) -> None:
-    if not keep and not calendar_of(reader_in(session)).is_open(on):
+def _check_day(hand: Hand, on: date, *, keep: bool) -> None:
+    # nothing can be made ready for a day gone by, so another year was meant
+    if on < hand.today:
+        raise BadDate(
+            f"{spell_day(on)} is past: today is {spell_day(hand.today)}.",
+            "Check the year, or say with --as-at which day to think of as today.",
+        )
+    if not keep and not calendar_of(reader_in(hand.session)).is_open(on):
         raise NotAllowed(f"{spell_day(on)} is closed. Keep it?", "Add --keep-closed to keep it.")
+
+
+def _outside_terms(session: Session, on: date) -> tuple[str, ...]:
+    """One line when terms are written down and the day lies in none of them."""
+    spans = terms(session)
+    if not spans or any(first <= on <= last for first, last in spans):
+        return ()
+    return (f"{spell_day(on)} is outside every term.",)
 
 
 def _in_words(session: Session, booking: Booking) -> str:
@@ -151,7 +171,8 @@ def shift(
     """Change a booking's day, time, groups or firmness; what it was stays on record.
 
     Raises: UnknownName; BadInput when nothing would change, or for groups
-    outside 1-200; NotAllowed on a closed day unless `keep`.
+    outside 1-200; BadDate before today; NotAllowed on a closed day unless
+    `keep`, and for a booking dropped or done unless its firmness is given.
     """
     # None means leave as it is; no column of a booking may become empty
     wanted: dict[str, object] = {"on_day": on, "minute": time, "groups": groups}
@@ -159,8 +180,11 @@ def shift(
     with writing(path) as session:
         hand = Hand(session, today, initials(by))
         found = names.find_booking(session, booking)
+        # said outright, a firmness is the way back into the plan
+        if firmness is None:
+            _check_in_use(found)
         if on is not None:
-            _check_open(session, on, keep=keep)
+            _check_day(hand, on, keep=keep)
         if groups is not None:
             checked_groups(groups)
         changes = [
@@ -173,7 +197,16 @@ def shift(
                 f"{found.number} is so already: {_in_words(session, found)}.",
                 "Say what changes with --on, --at, --groups or --firmness.",
             )
-        return hand.done(f"{found.number}: {'; '.join(changes)}.")
+        details = _outside_terms(session, found.on_day) if on is not None else ()
+        return hand.done(f"{found.number}: {'; '.join(changes)}.", details)
+
+
+def _check_in_use(booking: Booking) -> None:
+    if booking.firmness in (Firmness.DROPPED, Firmness.DONE):
+        raise NotAllowed(
+            f"{booking.number} is {booking.firmness}: the plan no longer counts it.",
+            "To bring it back, add --firmness firm.",
+        )
 
 
 _SAID = {"on_day": "day", "minute": "time", "groups": "groups", "firmness": "firmness"}
@@ -201,6 +234,7 @@ def cancel(path: Path, booking: str, *, today: date, by: str) -> Done:
     with writing(path) as session:
         hand = Hand(session, today, initials(by))
         found = names.find_booking(session, booking)
+        # dropping twice would leave two answers to who dropped it, and when
         if found.firmness in (Firmness.DROPPED, Firmness.DONE):
             raise NotAllowed(
                 f"{found.number} is {found.firmness} already.", "Book it again if it is wanted."

@@ -10,12 +10,13 @@ from stockroom.keeping.rules import RuleKind
 from stockroom.measure.days import spell_day
 from stockroom.measure.strengths import Strength
 from stockroom.service.answers import Done
-from stockroom.service.work import Work, check_at_hand, working
+from stockroom.service.work import Work, check_at_hand, unsettled, working
 from stockroom.store.history import children, rule_kinds
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event
 from stockroom.store.names import substance_of
-from stockroom.store.rows_lines import in_own_unit
+from stockroom.store.printed import check_reading
+from stockroom.store.rows_lines import check_has_strength, in_own_unit
 from stockroom.store.tables import Bottle, Line
 
 UNUSUAL = 0.25
@@ -41,6 +42,7 @@ def found(
         checked = work.bottle(bottle)
         check_at_hand(work, checked)
         line = work.line(checked)
+        check_has_strength(line, checked.number)
         value, unit = in_own_unit(
             strength, substance_of(work.session, line), line.density, line.unit
         )
@@ -125,8 +127,10 @@ def _check(
         check_at_hand(work, checked)
         _check_keeps(work, checked, kind)
         entry = work.write(checked, Event(kind, passed=passed, note=note))
+        # one body for both, since a look and a test differ in what they may re-date only
         verb = "looked at" if kind is EntryKind.LOOKED else "tested"
         outcome = "passed" if passed else "did not pass: set aside"
+        # a bad look throws doubt on whatever was made from the bottle
         details = _until(work, checked) if passed else _made_from(work, checked)
         text = f"{work.called(checked)} {verb} {spell_day(work.on)}, {outcome}."
         return work.done(text, checked, entry, details=details)
@@ -140,6 +144,7 @@ def _check_keeps(work: Work, bottle: Bottle, kind: EntryKind) -> None:
             f"{line.key} is never kept. There is no test that extends it.",
             "Destroy it, and say so.",
         )
+    # a test that no rule asks for would re-date nothing, and look as if it had
     if kind is EntryKind.TESTED and RuleKind.TEST not in kinds:
         raise NotAllowed(
             f"{line.key} has no test of its own that would re-date it.",
@@ -151,7 +156,28 @@ def _until(work: Work, bottle: Bottle) -> tuple[str, ...]:
     after = work.verdict(bottle)
     if after.good_until is None:
         return ()
-    return (f"Now {after.condition}, until {spell_day(after.good_until)}: {after.decided_by}.",)
+    until, past = spell_day(after.good_until), after.good_until < work.on
+    said = f"Still {after.condition}: good until" if past else f"Now {after.condition}, until"
+    # where the printed date decides, whoever looked has the label in hand
+    settle = unsettled(work, bottle) if after.decided_by.startswith("printed") else ()
+    return (f"{said} {until}: {after.decided_by}.", *settle)
+
+
+def printed(
+    path: Path, bottle: str, reading: date, *, on: date | None, today: date, by: str
+) -> Done:
+    """Write which reading of a printed date is right; a later word takes the place of an earlier.
+
+    Raises: BadDate for a day the printed date cannot mean; NotAllowed when there
+    is nothing to settle, or the bottle is gone or not found.
+    """
+    with working(path, on=on, today=today, by=by) as work:
+        read = work.bottle(bottle)
+        check_at_hand(work, read)
+        entry = work.write(read, Event(EntryKind.DATE_READ, note=check_reading(read, reading)))
+        text = f'{work.called(read)}: printed "{read.printed_text}" is {spell_day(reading)}.'
+        details = _until(work, read)
+        return work.done(text, read, entry, following="stockroom plan", details=details)
 
 
 def lost(path: Path, bottle: str, *, note: str = "", on: date | None, today: date, by: str) -> Done:
@@ -161,6 +187,7 @@ def lost(path: Path, bottle: str, *, note: str = "", on: date | None, today: dat
     """
     with working(path, on=on, today=today, by=by) as work:
         missed = work.bottle(bottle)
+        # asked before the entry: afterwards the bottle is no longer at hand
         place = check_at_hand(work, missed).place
         entry = work.write(missed, Event(EntryKind.LOST, reason=note))
         last = f"; it last stood at {place}" if place else ""
@@ -178,6 +205,7 @@ def turned_up(
     """
     with working(path, on=on, today=today, by=by) as work:
         found_again = work.bottle(bottle)
+        # not check_at_hand, which refuses just the bottles that can turn up
         seen = work.seen(found_again)
         if seen.record.gone or not seen.record.not_found:
             state = "gone" if seen.record.gone else f"in use, at {seen.place or 'no place'}"
@@ -189,7 +217,13 @@ def turned_up(
         place_id = work.place_id(where) if where else None
         entry = work.write(found_again, Event(EntryKind.TURNED_UP, place_id=place_id))
         text = f"{work.called(found_again)} turned up{f' at {where}' if where else ''}."
-        return work.done(text, found_again, entry, following=f"stockroom look {found_again.number}")
+        return work.done(
+            text,
+            found_again,
+            entry,
+            following=f"stockroom look {found_again.number}",
+            details=("Set aside until somebody has looked at it.",),
+        )
 
 
 def spoil(path: Path, bottle: str, reason: str, *, on: date | None, today: date, by: str) -> Done:

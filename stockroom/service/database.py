@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from datetime import date
 from pathlib import Path
 from typing import TYPE_CHECKING
 
 from stockroom import clock
-from stockroom.errors import StoreTrouble
+from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 from stockroom.service.answers import Done
 from stockroom.store import reading
 
@@ -58,9 +59,14 @@ def new_store(path: Path, *, tables: Path | None = None) -> Done:
     from stockroom.store.engine import create
     from stockroom.store.seeding import load_tables
 
-    create(path, fill=None if tables is None else lambda s: load_tables(_desk(s, HOUSE), tables))
+    def fill(session: Session) -> None:
+        if tables is not None:
+            load_tables(_desk(session, HOUSE), tables)
+            _check_methods(session)
+
+    create(path, fill=fill)
     filled = f" from the tables in {tables}" if tables else ""
-    following = "stockroom plan" if tables else "stockroom add line item=… form=solid"
+    following = "stockroom plan" if tables else "stockroom add lines item=… form=solid"
     return Done(f"Made {path}{filled}.", next=following, practice=is_practice(path))
 
 
@@ -74,15 +80,61 @@ def add_row(path: Path, table: str, values: dict[str, str], *, by: str) -> Done:
 
     with writing(path) as session:
         seeding.add_row(_desk(session, by), table, values)
+        if table in _MAKES_METHODS:
+            _check_methods(session)
+    # the first cell names the row in every table, so it is enough to tell it by
     first = next(iter(values.values()), "")
     return Done(f"Added to {table}: {first}.", practice=is_practice(path))
 
 
+def change_row(
+    path: Path, table: str, key: str, values: dict[str, str], *, why: str, today: date, by: str
+) -> Done:
+    """Correct a row of a table, its new cells given by column name; the old ones stay on record.
+
+    Raises: UnknownName for a table, row or column that is not there; NotAllowed for a
+    column that earlier entries lean on; BadInput without a reason or initials.
+    """
+    from stockroom.service.work import initials
+    from stockroom.store.changing import change_row as change
+    from stockroom.store.engine import writing
+
+    with writing(path) as session:
+        desk = replace(_desk(session, initials(by)), today=today)
+        changes = change(desk, table, key, values, why)
+    return Done(f"Changed {'; '.join(changes)}.", next="stockroom plan", practice=is_practice(path))
+
+
+# a method without ingredients can close a circle too: they follow from the strengths
+_MAKES_METHODS = ("methods", "ingredients")
+
+
+def _check_methods(session: Session) -> None:
+    """Pass when no method goes round in a circle. Raises: BadInput naming the chain."""
+    from stockroom.planning.derive import with_derived
+    from stockroom.planning.order_of_lines import settling_order
+    from stockroom.store.engine import reader_in
+    from stockroom.store.snapshot import facts_from
+
+    try:
+        settling_order(with_derived(facts_from(reader_in(session), clock.today())))
+    except NotAllowed as error:
+        # every later question would fail on it, so it is never saved
+        raise BadInput(f"{error.message} Nothing was saved.", error.hint) from error
+
+
 def table_columns(table: str) -> list[str]:
     """The columns of a table as typed. Raises: UnknownName with the nearest three."""
-    from stockroom.store import seeding
+    from stockroom.store import layout
 
-    return seeding.table_columns(table)
+    return layout.table_columns(table)
+
+
+def column_words(table: str) -> dict[str, tuple[str, ...]]:
+    """The words each column takes that takes only a few, for one table."""
+    from stockroom.store import layout
+
+    return layout.column_words(table)
 
 
 def is_practice(path: Path) -> bool:

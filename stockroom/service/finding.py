@@ -13,6 +13,7 @@ def line_among(known: Facts, text: str) -> Line:
     """
     wanted = plain(text)
     lines = [known.lines[key] for key in sorted(known.lines)]
+    # from the exact to the vague: a whole name never loses to a part of another
     by_key = [line for line in lines if wanted == plain(line.key)]
     by_name = [line for line in lines if wanted in (plain(line.item), plain(line.substance))]
     by_part = [line for line in lines if wanted in plain(line.key)]

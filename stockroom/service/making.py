@@ -8,7 +8,7 @@ from pathlib import Path
 
 from stockroom.errors import BadAmount, NotAllowed, NotEnough, StockroomError
 from stockroom.keeping.rules import RuleKind
-from stockroom.keeping.verdict import USABLE, Verdict, verdict
+from stockroom.keeping.verdict import USABLE, Condition, Verdict, verdict
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_amount, format_strength
 from stockroom.planning.amounts import draw_for
@@ -64,6 +64,7 @@ def make_up(
     does not belong; NotEnough, MissingFigure, UnknownName, BadAmount.
     """
     with working(path, on=on, today=today, by=by) as work:
+        # as on the day of making: a draw entered late is made from what was there then
         known = with_derived(facts_from(work.reader, work.on))
         product = known.lines[names.find_line(work.session, line).key]
         method = _method(known, product)
@@ -77,6 +78,7 @@ def make_up(
 
 def _meant_for(known: Facts, product: Line, volume: int) -> tuple[str, ...]:
     """The bookings the plan has this line made for next, as far as the volume goes."""
+    # what the plan meant it for is kept with the bottle, or another class would be given it
     whole = plan(known)
     planned = next((make for make in whole.makes if make.line == product.key), None)
     if planned is None:
@@ -141,6 +143,7 @@ def _check_belong(method: Method, given: list[Bottle]) -> None:
 def _source(
     known: Facts, product: Line, part: Ingredient, given: list[Bottle], volume: int
 ) -> Source:
+    # whoever names a bottle has it in hand: no other is preferred to it
     named = [bottle for bottle in given if bottle.line in part.lines]
     if named:
         return _judged(known, product, part, named[0], volume)
@@ -204,7 +207,8 @@ def _write(
         note = made_note(bottle.number)
         drawn = take(work, row, Event(EntryKind.DRAWN, change=-source.amount, note=note))
         details += open_if_sealed(work, row, drawn)
-        details.append(f"Took {source.words}.")
+        details += [f"Took {source.words}.", *_doubt(source)]
+        # the lineage is how a spoiled source finds what was made from it
         _link(work, bottle, row)
     place_id = work.place_id(place) if place else None
     if meant_for:
@@ -216,6 +220,14 @@ def _write(
     until = f"; good until {judged.good_until}" if judged.good_until else ""
     text = f"Made {bottle.number}: {format_amount(volume)} of {product.key}{until}."
     return work.done(text, work.bottle(bottle.number), entry, details=tuple(details))
+
+
+def _doubt(source: Source) -> tuple[str, ...]:
+    # the person at the bench has the bottle in hand and decides; the record must show it
+    if source.verdict.condition in (Condition.SOUND, Condition.WATCH):
+        return ()
+    number, judged = source.bottle.number, source.verdict
+    return (f"{number} is {judged.condition} ({judged.decided_by}): used all the same.",)
 
 
 def _new_bottle(work: Work, product: Line, volume: Amount) -> tables.Bottle:

@@ -9,7 +9,7 @@ from dataclasses import replace
 from datetime import date
 from pathlib import Path
 
-from stockroom.errors import BadInput
+from stockroom.errors import BadDate, BadInput
 from stockroom.measure.days import parse_day
 from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.derive import with_derived
@@ -50,8 +50,9 @@ def _finished(make: Make, first: date, last: date) -> bool:
 
 def past_on(path: Path, *, as_at: date, on: date) -> Plan:
     """A plan whose `past` is told for the day `on`, from what is known as at `as_at`."""
-    known = _known(path, as_at)
-    return plan(known, past_day=on)
+    # an earlier day is told as it stood then, not with what has happened since
+    known = _known(path, min(as_at, on))
+    return replace(plan(known, past_day=on), as_at=as_at)
 
 
 def ready(path: Path, ref: str, *, as_at: date) -> Readiness:
@@ -66,12 +67,17 @@ def ready(path: Path, ref: str, *, as_at: date) -> Readiness:
         whole = plan(_reaching(path, known, booking.on))
         recipe = known.recipes[booking.recipe, booking.version]
         title = f"{booking.number} {recipe.title}, {booking.on}"
-        if booking.firmness in (Firmness.DONE, Firmness.DROPPED):
-            title += f" ({booking.firmness})"
-        return readiness(known, whole, (booking.number,), title, booking.on)
-    if not any(character.isdigit() for character in ref) or "-" not in ref:
-        raise _no_such(known, ref)
-    day = parse_day(ref)
+        answer = readiness(known, whole, (booking.number,), title, booking.on)
+        over = booking.on < as_at or booking.firmness in (Firmness.DONE, Firmness.DROPPED)
+        if not over:
+            return answer
+        state = booking.firmness if booking.on >= as_at else f"over as at {as_at}"
+        return replace(answer, ready=False, to_do=(f"{booking.number} is {state}: not planned",))
+    try:
+        day = parse_day(ref)
+    except BadDate as error:
+        # "K99" is a number mistyped, "31/02/2027" a day that is not there
+        raise (error if sum(map(str.isdigit, ref)) > 3 else _no_such(known, ref)) from None
     known = _reaching(path, known, day)
     numbers = tuple(b.number for b in known.bookings if b.on == day)
     title = f"{day}: {', '.join(numbers) or 'nothing booked'}"

@@ -19,7 +19,8 @@ def standing(work: Work, number: int) -> Entry:
     entry = work.session.get(Entry, number)
     if entry is None:
         raise UnknownName(
-            f"No entry {number} in the ledger.", "Each answer ends with the number of its entry."
+            f"No entry {number} in the ledger.",
+            "Each answer ends with the number of its entry; stockroom diary BOTTLE lists them all.",
         )
     if entry.kind == EntryKind.PUT_RIGHT:
         raise NotAllowed(
@@ -50,6 +51,7 @@ def check_nothing_leans(work: Work, bottle: Bottle, wrong: Entry) -> None:
 
 def reverse(work: Work, wrong: Entry, reason: str) -> Entry:
     """Write the entry that undoes another. Raises: NotEnough when the balance would not bear it."""
+    # written today under the slip's own bottle, whoever asks: the pair must cancel there
     bottle = work.session.get_one(Bottle, wrong.bottle_id)
     event = Event(EntryKind.PUT_RIGHT, change=-wrong.change, reason=reason, puts_right=wrong.id)
     return work.write(bottle, event)

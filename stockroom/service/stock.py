@@ -10,11 +10,12 @@ from __future__ import annotations
 from datetime import date
 from pathlib import Path
 
-from stockroom.errors import BadDate, BadInput, NotAllowed
+from stockroom.errors import BadInput, NotAllowed
 from stockroom.measure.amounts import Amount
-from stockroom.measure.days import PrintedDate, parse_printed, spell_day
+from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_amount
 from stockroom.service.answers import Done
+from stockroom.service.arriving import date_printed, new_bottle, told_of_printed, write_openings
 from stockroom.service.righting import check_nothing_leans, reverse, standing, with_it
 from stockroom.service.taking import check_not_barred, open_if_sealed, opening_of, take
 from stockroom.service.work import (
@@ -28,8 +29,8 @@ from stockroom.service.work import (
 )
 from stockroom.store import names
 from stockroom.store.kinds import EntryKind
-from stockroom.store.ledger import Event, left, next_bottle_number
-from stockroom.store.tables import Bottle, Line
+from stockroom.store.ledger import Event, left, overfull
+from stockroom.store.tables import Bottle
 
 MOST_AT_ONCE = 100
 
@@ -54,7 +55,7 @@ def arrive(
     which must be said; `opened` the day it was opened, if it was.
     Raises: BadInput, UnknownName, BadAmount, BadDate.
     """
-    date_printed = _printed(printed)
+    on_label = date_printed(printed)
     if not 1 <= count <= MOST_AT_ONCE:
         raise BadInput(f"{count} bottles?", f"Give 1 to {MOST_AT_ONCE}.")
     with working(path, on=on, today=today, by=by) as work:
@@ -64,58 +65,14 @@ def arrive(
         event = Event(
             EntryKind.ARRIVED, change=size.micro, place_id=work.place_id(place), note=note
         )
-        bottles = [_new_bottle(work, found, size, date_printed, note) for _ in range(count)]
+        bottles = [new_bottle(work, found, size, on_label, note) for _ in range(count)]
         entries = [work.write(bottle, event) for bottle in bottles]
         if opened is not None:
-            _write_openings(work, bottles, opened)
+            write_openings(work, bottles, opened)
         numbers = ", ".join(bottle.number for bottle in bottles)
         each = format_amount(size) + (" each" if count > 1 else "")
         text = f"{numbers}: {found.key}, {each}, at {place}."
-        return work.done(text, bottles[0], entries[0])
-
-
-def _printed(printed: str | None) -> PrintedDate | None:
-    # a blank could mean "none" or "not looked", and the plan treats them differently
-    if printed is None or not printed.strip():
-        raise BadInput(
-            f'Printed date "{printed or ""}": "none printed" must be chosen.',
-            "Add --printed 03/2027, or --printed none.",
-        )
-    return parse_printed(printed)
-
-
-def _new_bottle(
-    work: Work, line: Line, size: Amount, printed: PrintedDate | None, remark: str
-) -> Bottle:
-    assert line.id is not None
-    bottle = Bottle(
-        number=next_bottle_number(work.session, made_here=False),
-        line_id=line.id,
-        size=size.micro,
-        received_on=work.on,
-        printed_text=printed.text if printed else "",
-        printed_readings=";".join(day.isoformat() for day in printed.readings) if printed else "",
-        remark=remark,
-    )
-    work.session.add(bottle)
-    work.session.flush()
-    return bottle
-
-
-def _write_openings(work: Work, bottles: list[Bottle], opened: date) -> None:
-    if opened < work.on:
-        raise BadDate(
-            f"Opened {spell_day(opened)} is before it arrived {spell_day(work.on)}.",
-            "One of these is wrong.",
-        )
-    if opened > work.stamp.entered_on:
-        raise BadDate(
-            f"Opened {spell_day(opened)} is still to come:"
-            f" today is {spell_day(work.stamp.entered_on)}.",
-            "Leave it sealed, and enter the opening on its day.",
-        )
-    for bottle in bottles:
-        work.write(bottle, Event(EntryKind.OPENED), on=opened)
+        return work.done(text, bottles[0], entries[0], details=told_of_printed(work, bottles[0]))
 
 
 def open_bottle(path: Path, bottle: str, *, on: date | None, today: date, by: str) -> Done:
@@ -126,6 +83,7 @@ def open_bottle(path: Path, bottle: str, *, on: date | None, today: date, by: st
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_at_hand(work, found)
+        # a later opening would lengthen a life that is running already
         first = opening_of(work, found)
         if first is not None:
             raise NotAllowed(
@@ -158,6 +116,7 @@ def draw(
         found = work.bottle(bottle)
         check_amount(work.line(found), amount)
         check_in_use(work, found)
+        # found before anything is written: a draw for a booking nobody knows is refused whole
         served = names.find_booking(work.session, booking) if booking else None
         if served is not None:
             check_not_barred(work, found, served)
@@ -195,7 +154,9 @@ def lend(
 ) -> Done:
     """Write off what was lent, and to whom. Raises: BadInput when nobody is named; as `draw`."""
     if not to.strip():
-        raise BadInput(f"{format_amount(amount)} of {bottle} lent to whom?", "Say to whom.")
+        raise BadInput(
+            f"{format_amount(amount)} of {bottle} lent to whom?", 'Add --to "the physics store".'
+        )
     event = Event(EntryKind.LENT, change=-amount.micro, reason=f"to {to.strip()}")
     with working(path, on=on, today=today, by=by) as work:
         return _write_off(work, bottle, amount, event, "Lent")
@@ -218,6 +179,7 @@ def move(path: Path, bottle: str, place: str, *, on: date | None, today: date, b
     """
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
+        # where it stood decides how fast it aged, so the answer names both places
         before = check_at_hand(work, found).place
         entry = work.write(found, Event(EntryKind.MOVED, place_id=work.place_id(place)))
         start = f" from {before}" if before else ""
@@ -230,17 +192,25 @@ def count(
     amount: Amount,
     *,
     walk: str = "",
+    sure: bool = False,
     on: date | None,
     today: date,
     by: str,
 ) -> Done:
     """Write what is really in a bottle; the difference is an entry, nothing is rubbed out.
 
-    Zero is a count. `walk` names the round of counting. Raises: BadAmount for the wrong kind.
+    Zero is a count. `walk` names the round of counting. Raises: BadAmount for the
+    wrong kind; NotAllowed for over 5 % more than the bottle's size, unless `sure`.
     """
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_kind(work.line(found), amount)
+        if overfull(found, amount.micro) and not sure:
+            raise NotAllowed(
+                f"{found.number} holds {work.say(found, found.size)} when full;"
+                f" {format_amount(amount)} counted?",
+                "Check the unit, or confirm with --sure.",
+            )
         # against what was there on the day of the count, not today
         change = amount.micro - check_at_hand(work, found).left
         entry = work.write(found, Event(EntryKind.COUNTED, change=change, note=walk))
@@ -267,6 +237,7 @@ def discard(
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_at_hand(work, found)
+        # what is left goes with it, or a bottle that is gone would still hold something
         held = left(work.session, found)
         event = Event(EntryKind.DISCARDED, change=-held, reason=why.strip(), note=how.strip())
         entry = work.write(found, event)

@@ -13,7 +13,7 @@ from stockroom.store.tables import Booking, Bottle, Entry, Recipe
 
 
 def take(work: Work, bottle: Bottle, event: Event) -> Entry:
-    """Write what leaves a bottle. Raises: NotEnough, saying who drew last when that was today."""
+    """Write what leaves a bottle. Raises: NotEnough, saying who drew last if entered today."""
     try:
         return work.write(bottle, event)
     except NotEnough as error:
@@ -28,7 +28,12 @@ def _drawn_today(work: Work, bottle: Bottle) -> str:
     ]
     # by entry number: of two on one day the later typed is the one to name
     last = max(draws, key=lambda entry: entry.id or 0, default=None)
-    return f" {last.by} drew {work.say(bottle, -last.change)} today." if last else ""
+    if last is None:
+        return ""
+    # Monday may enter what Friday drew
+    dated = last.happened_on != work.stamp.entered_on
+    day = f"on {spell_day(last.happened_on)}, entered today" if dated else "today"
+    return f" {last.by} drew {work.say(bottle, -last.change)} {day}."
 
 
 def opening_of(work: Work, bottle: Bottle) -> Entry | None:
@@ -48,6 +53,7 @@ def open_if_sealed(work: Work, bottle: Bottle, drawn: Entry) -> tuple[str, ...]:
 
 def check_not_barred(work: Work, bottle: Bottle, booking: Booking) -> None:
     """Pass unless the booking's recipe bars what the bottle holds. Raises: NotAllowed."""
+    # the version that was booked, whatever newer one bars or allows
     recipe = work.session.get_one(Recipe, booking.recipe_id)
     substance = substance_of(work.session, work.line(bottle))
     for bar in recipes_of(work.reader)[recipe.recipe, recipe.version].bars:

@@ -11,9 +11,9 @@ from pathlib import Path
 from stockroom import clock
 from stockroom.errors import BadAmount, BadDate, BadInput, NotAllowed
 from stockroom.keeping.verdict import Condition, Verdict, verdict
-from stockroom.measure.amounts import Amount, Kind
+from stockroom.measure.amounts import BASE_UNIT, Amount, Kind
 from stockroom.measure.days import spell_day
-from stockroom.measure.formats import format_amount
+from stockroom.measure.formats import format_amount, unit_mark
 from stockroom.planning import facts
 from stockroom.service.answers import Done
 from stockroom.store import names
@@ -63,6 +63,7 @@ class Work:
 
     def seen(self, bottle: Bottle) -> facts.Bottle:
         """The bottle as the planner would see it that day. Raises: BadDate before it was there."""
+        # through the reading half, so that both halves judge a bottle by the same facts
         found = bottle_of(self.reader, bottle.number, self.on)
         if found is None:
             raise before_it_was_there(bottle, spell_day(self.on), None)
@@ -139,7 +140,7 @@ def check_kind(line: Line, amount: Amount) -> None:
     if amount.kind != line.kind:
         raise BadAmount(
             f"{line.key} is measured by {line.kind}, and {format_amount(amount)} is not.",
-            "Give it in g, cm³ or items, as on its label.",
+            f"Give it in {unit_mark(BASE_UNIT[Kind(line.kind)])}.",
         )
 
 
@@ -169,7 +170,7 @@ def check_in_use(work: Work, bottle: Bottle) -> facts.Bottle:
     if seen.record.set_aside:
         raise NotAllowed(
             f"{bottle.number} is set aside: {seen.record.set_aside}.",
-            "Use another, or look at it and say whether it passed.",
+            f"Use another, or look at it: stockroom look {bottle.number} --good, or --bad.",
         )
     return seen
 
@@ -188,3 +189,15 @@ def doubts(work: Work, bottle: Bottle) -> tuple[str, ...]:
     if found.condition is Condition.SOUND:
         return ()
     return (f"{bottle.number} is {found.condition}: {found.decided_by}.",)
+
+
+def unsettled(work: Work, bottle: Bottle) -> tuple[str, ...]:
+    """One line when its printed date has two readings and nobody has said which is right."""
+    printed = work.seen(bottle).record.printed
+    if printed is None or not printed.ambiguous:
+        return ()
+    listed = " or ".join(spell_day(day) for day in printed.readings)
+    return (
+        f'Printed "{printed.text}" can be {listed}: planned on the earlier. To settle it:'
+        f" stockroom printed {bottle.number} {printed.readings[-1]}, or {printed.readings[0]}.",
+    )

@@ -38,6 +38,7 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         "bottle": "id number line_id size received_on made_on printed_text printed_readings cap"
         " remark made_here source",
         "parent": "id bottle_id parent_id",
+        "row_change": "id table_name row_key column_name before after why by entered_on entered_at",
         "entry": "id bottle_id kind happened_on entered_on entered_at by change strength"
         " strength_text passed place_id reason note booking puts_right",
     }.items()

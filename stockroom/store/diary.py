@@ -13,7 +13,11 @@ from stockroom.store.reading import Reader, Row, reading
 
 @dataclass(frozen=True, slots=True)
 class Told:
-    """One entry. `puts_right` is the entry it undoes, `undone_by` the one that undid it."""
+    """One entry. `puts_right` is the entry it undoes, `undone_by` the one that undid it.
+
+    `left` is what the bottle holds after it. An entry put right and the one that
+    did it leave that as it was, as if the slip had never happened.
+    """
 
     entry: int
     happened: date
@@ -21,6 +25,7 @@ class Told:
     by: str
     kind: str
     change: Amount
+    left: Amount
     said: str = ""
     place: str = ""
     booking: str = ""
@@ -28,21 +33,41 @@ class Told:
     undone_by: int | None = None
 
 
+@dataclass(frozen=True, slots=True)
+class Diary:
+    """The story of one bottle: its number, the line it holds, and its entries."""
+
+    bottle: str
+    line: str
+    entries: tuple[Told, ...]
+
+
 def diary(path: Path, bottle: str) -> tuple[Told, ...]:
     """Everything entered for a bottle, in the order it happened.
 
     Raises: UnknownName with the nearest three numbers; StoreTrouble.
     """
+    return diary_of(path, bottle).entries
+
+
+def diary_of(path: Path, bottle: str) -> Diary:
+    """The same, with the bottle's number and what it holds. Raises: as `diary`."""
     with reading(path) as reader:
         row = _bottle(reader, bottle)
-        kind = Kind(reader.rows("line", "WHERE id = ?", row["line_id"])[0]["kind"])
+        line = reader.rows("line", "WHERE id = ?", row["line_id"])[0]
         places = reader.pairs("SELECT id, place FROM place")
         undone = reader.pairs("SELECT puts_right, id FROM entry WHERE puts_right IS NOT NULL")
         entries = reader.rows("entry", "WHERE bottle_id = ? ORDER BY happened_on, id", row["id"])
-        return tuple(_told(entry, kind, places, undone) for entry in entries)
+        told, left = [], 0
+        for entry in entries:
+            if entry["id"] not in undone and entry["puts_right"] is None:
+                left += entry["change"]
+            told.append(_told(entry, Amount(Kind(line["kind"]), left), places, undone))
+        return Diary(row["number"], line["key"], tuple(told))
 
 
 def _bottle(reader: Reader, number: str) -> Row:
+    # every bottle, gone ones too: it is their story that is asked for last
     rows = reader.rows("bottle")
     # compared in Python: SQL's lower() knows no look-alike letters
     for row in rows:
@@ -51,7 +76,7 @@ def _bottle(reader: Reader, number: str) -> Row:
     raise unknown("bottle", number, (row["number"] for row in rows))
 
 
-def _told(entry: Row, kind: Kind, places: dict[int, str], undone: dict[int, int]) -> Told:
+def _told(entry: Row, left: Amount, places: dict[int, str], undone: dict[int, int]) -> Told:
     said = [entry["strength_text"], entry["reason"], entry["note"]]
     if entry["passed"] is not None:
         said.insert(0, "passed" if entry["passed"] else "did not pass")
@@ -61,7 +86,8 @@ def _told(entry: Row, kind: Kind, places: dict[int, str], undone: dict[int, int]
         entered=date.fromisoformat(entry["entered_on"]),
         by=entry["by"],
         kind=entry["kind"],
-        change=Amount(kind, entry["change"]),
+        change=Amount(left.kind, entry["change"]),
+        left=left,
         said="; ".join(part for part in said if part),
         place=places.get(entry["place_id"], ""),
         booking=entry["booking"],

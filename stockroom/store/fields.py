@@ -32,6 +32,10 @@ class Fields:
         self.column = ""
         self.other_names: tuple[str, ...] = ()
 
+    def at(self, column: str) -> None:
+        """Say that whatever is wrong next stands in this column."""
+        self.column = column
+
     def names(self) -> set[str]:
         """What other rows may call this one by: its first cell, a line by its substance too."""
         first = next(iter(self._values.values()), "")
@@ -67,6 +71,18 @@ class Fields:
             return None
         value = float(read_number(found[1:] if negative else found, where=column))
         return -value if negative else value
+
+    def within(self, column: str, least: float, most: float, doubt: str) -> float | None:
+        """A number from `least` to `most`, None when blank; `doubt` asks what else was meant.
+
+        Raises: BadAmount, quoting the cell as typed.
+        """
+        found = self.signed(column)
+        if found is not None and not least <= found <= most:
+            raise BadAmount(
+                f'{column} "{self._values[column]}" is not between {least:g} and {most:g}.', doubt
+            )
+        return found
 
     def whole(self, column: str) -> int | None:
         """A whole number of zero or more, None when blank. Raises: BadAmount."""
@@ -119,6 +135,7 @@ class Fields:
 
     def choice(self, column: str, choices: type[Choice], usual: Choice | None = None) -> Choice:
         """One of a fixed list of words. Raises: BadInput naming them all."""
+        # spreadsheets like to begin a cell with a capital
         found = self.text(column).lower() if usual is not None else self.need(column).lower()
         if not found and usual is not None:
             return usual

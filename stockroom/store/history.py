@@ -2,12 +2,23 @@
 
 from __future__ import annotations
 
+from datetime import date
+
 from sqlalchemy import text
 from sqlmodel import Session, col, select
 
 from stockroom.store.kinds import BEGINNINGS, STANDING
 from stockroom.store.ledger import entries_of
-from stockroom.store.tables import Booking, BookingChange, Bottle, Entry, KeepingRule, Line, Parent
+from stockroom.store.tables import (
+    Booking,
+    BookingChange,
+    Bottle,
+    Entry,
+    KeepingRule,
+    Line,
+    Parent,
+    Term,
+)
 
 
 def undone_by(session: Session, entry: Entry) -> Entry | None:
@@ -48,5 +59,12 @@ def rule_kinds(session: Session, line: Line) -> set[str]:
 
 def changes_of(session: Session, booking: Booking) -> list[BookingChange]:
     """What was ever changed of a booking, the earliest first."""
+    # by number and not by day: two changes may be entered on one day
     made = select(BookingChange).where(BookingChange.booking_id == booking.id)
     return list(session.exec(made.order_by(col(BookingChange.id))))
+
+
+def terms(session: Session) -> list[tuple[date, date]]:
+    """The first and last day of every term written down, the earliest first."""
+    rows = session.exec(select(Term).order_by(col(Term.starts_on)))
+    return [(row.starts_on, row.ends_on) for row in rows]

@@ -16,6 +16,7 @@ class EntryKind(StrEnum):
     FOUND = "found"
     LOOKED = "looked"
     TESTED = "tested"
+    DATE_READ = "date read"
     MOVED = "moved"
     LOST = "lost"
     TURNED_UP = "turned up"
@@ -31,6 +32,9 @@ BEGINNINGS = (EntryKind.ARRIVED, EntryKind.MADE)
 
 DAY_NOT_WRITTEN = "day not written"
 """The note on an opened entry whose day is a guess (the earliest it can have been)."""
+
+TURNED_UP = "turned up: needs a look"
+"""Why a bottle that turned up stands apart until somebody has looked at it."""
 
 # IS NOT NULL matters: NOT IN over a NULL is never true
 STANDING = (

@@ -21,6 +21,9 @@ from stockroom.measure.formats import format_amount
 from stockroom.store.kinds import BEGINNINGS, STANDING, EntryKind
 from stockroom.store.tables import Booking, Bottle, Entry, Line
 
+FULLEST = 1.05
+"""More than this part of a bottle's size in it is a slip. Common practice, no source."""
+
 
 @dataclass(frozen=True, slots=True)
 class Stamp:
@@ -87,6 +90,12 @@ def entries_of(session: Session, bottle: Bottle) -> list[Entry]:
 def amount_of(session: Session, bottle: Bottle, micro: int) -> Amount:
     """Micro-units of what is in the bottle as an amount with its kind."""
     return Amount(Kind(session.get_one(Line, bottle.line_id).kind), micro)
+
+
+def overfull(bottle: Bottle, micro: int) -> bool:
+    """Whether so many micro-units are over 5 % more than the bottle holds when full."""
+    # makers fill a little over; a size that nobody wrote down is 0 and tells nothing
+    return 0 < bottle.size * FULLEST < micro
 
 
 def next_bottle_number(session: Session, *, made_here: bool) -> str:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 import sqlite3
 from collections.abc import Iterator
 from contextlib import contextmanager
@@ -18,6 +19,7 @@ from stockroom.store.trouble import (
     check_there,
     foreign,
     translated,
+    unfinished,
 )
 
 Row = sqlite3.Row
@@ -80,25 +82,37 @@ def practice_day(path: Path) -> date | None:
 
 def _connect(path: Path) -> sqlite3.Connection:
     address = path.resolve().as_uri()
-    connection = _opened(f"{address}?mode=ro")
+    # a reader that may write nothing cannot clear away the side files it opens the store with
+    connection = _opened(f"{address}?mode={'rw' if os.access(path, os.W_OK) else 'ro'}")
     try:
         # opening is lazy: only the first question shows whether the file can be read
         connection.execute("SELECT 1 FROM sqlite_master LIMIT 1")
+        connection.execute("PRAGMA query_only = ON")
     except sqlite3.OperationalError as error:
         connection.close()
-        if error.sqlite_errorname.startswith("SQLITE_CANTOPEN") and not _being_written(path):
-            # a folder that may not be written to: no lock file can be made, and none is needed
-            return _opened(f"{address}?immutable=1")
+        if not error.sqlite_errorname.startswith(_NO_SIDE_FILES):
+            raise
+        if _holds_entries(Path(f"{path}-wal")):
+            raise unfinished(path) from error
+        # a folder that may not be written to: no lock file can be made, and none is needed
+        return _opened(f"{address}?immutable=1")
+    except sqlite3.Error:
+        connection.close()
         raise
     return connection
+
+
+# what the driver says when it can neither make the side files nor use those that are there
+_NO_SIDE_FILES = ("SQLITE_CANTOPEN", "SQLITE_READONLY")
 
 
 def _opened(address: str) -> sqlite3.Connection:
     return sqlite3.connect(address, uri=True, timeout=BUSY_SECONDS, isolation_level=None)
 
 
-def _being_written(path: Path) -> bool:
-    return Path(f"{path}-wal").exists()
+def _holds_entries(journal: Path) -> bool:
+    # an empty one was left by a reader; only one with pages in it has something to add
+    return journal.exists() and journal.stat().st_size > 0
 
 
 def _revision(connection: sqlite3.Connection, path: Path) -> str | None:

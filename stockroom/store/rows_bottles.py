@@ -11,22 +11,24 @@ from collections.abc import Callable
 from dataclasses import dataclass, replace
 from datetime import date
 
-from stockroom.errors import BadDate, BadInput, UnknownName
+from stockroom.errors import BadAmount, BadDate, BadInput, UnknownName
 from stockroom.measure.amounts import Kind
 from stockroom.measure.days import PrintedDate, parse_printed
+from stockroom.measure.formats import format_amount
 from stockroom.measure.parsing import parse_strength
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.kinds import DAY_NOT_WRITTEN, EntryKind
-from stockroom.store.ledger import Event, append, left
+from stockroom.store.ledger import Event, amount_of, append, left, overfull
 from stockroom.store.names import find_bottle, find_place, substance_of
+from stockroom.store.printed import check_reading
 from stockroom.store.rows_house import new_name
-from stockroom.store.rows_lines import in_own_unit
+from stockroom.store.rows_lines import check_has_strength, in_own_unit
 from stockroom.store.tables import Bottle, Entry, Line, Parent
 
 _TAKES = (EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.LENT)
 _LEAVES = (EntryKind.COUNTED, EntryKind.DISCARDED)
-_HISTORY = frozenset(EntryKind) - {EntryKind.ARRIVED, EntryKind.MADE}
+HISTORY = frozenset(EntryKind) - {EntryKind.ARRIVED, EntryKind.MADE}
 _ANSWERED = (EntryKind.LOOKED, EntryKind.TESTED)
 
 
@@ -91,6 +93,7 @@ def _story(
     steps += _opening(desk, fields, bottle, begun)
     held = fields.amount("left", Kind(line.kind))
     if held is not None:
+        _check_fits(desk, bottle, held)
         steps.append(Step(max(seen, begun), 2, lambda: _count(desk, bottle, held, seen, begun)))
     reason = fields.text("set_aside")
     if reason:
@@ -98,6 +101,14 @@ def _story(
         aside = Event(EntryKind.SET_ASIDE, reason=reason)
         steps.append(_step(desk, bottle, aside, max(seen, begun) if dated else begun, 4))
     return steps
+
+
+def _check_fits(desk: Desk, bottle: Bottle, held: int) -> None:
+    if overfull(bottle, held):
+        full, asked = (
+            format_amount(amount_of(desk.session, bottle, micro)) for micro in (bottle.size, held)
+        )
+        raise BadAmount(f"{bottle.number} holds {full} when full; {asked} left?", "Read it again.")
 
 
 def _opening(desk: Desk, fields: Fields, bottle: Bottle, begun: date) -> list[Step]:
@@ -149,7 +160,7 @@ def read_history(desk: Desk, fields: Fields) -> Step:
         raise BadDate(f"Entered {entered} is before it happened, {happened}.", "Swap the days.")
     kind = fields.choice("event", EntryKind)
     # an arrival typed as history would have no line, size or place
-    if kind not in _HISTORY:
+    if kind not in HISTORY:
         raise BadInput(f'event "{kind}" belongs to the bottles table.', "Add the bottle there.")
     bottle = find_bottle(desk.session, fields.need("bottle"))
     number, by = fields.text("number"), fields.need("by")
@@ -180,6 +191,11 @@ def _event(
         raise BadInput(f"How much of {bottle.number} was counted?", "Fill the amount column.")
     if kind in _ANSWERED:
         fields.need("passed")
+    if kind is EntryKind.DATE_READ:
+        # the day chosen stands where other rows give a reason
+        return Event(kind, note=check_reading(bottle, fields.need_day("reason")))
+    if kind is EntryKind.FOUND:
+        check_has_strength(line, bottle.number)
     strength, written = _found(desk, fields, line) if kind is EntryKind.FOUND else (None, "")
     place = fields.text("place")
     return Event(

@@ -26,6 +26,8 @@ _YES_NO = ("practice", "finish_day_before")
 _WHOLE = ("margin_open_days", "lead_open_days", "session_minutes")
 _VOLUMES = ("batch_step_cm3", "heel_floor_cm3")
 _TIMES = ("staffed_from", "staffed_to")
+# colder than any freezer here, hotter than any oven a bottle is kept in
+_COLDEST, _HOTTEST = -90, 120
 SETTINGS = ("name", "practice_day", *_YES_NO, *_WHOLE, *_VOLUMES, *_TIMES)
 
 
@@ -79,19 +81,25 @@ def read_closure(desk: Desk, fields: Fields) -> None:
 def read_place(desk: Desk, fields: Fields) -> None:
     """A place bottles stand at."""
     row = Place(
-        place=new_name(desk, Place, "place", fields.need("place")),
+        place=new_name(desk, Place, "place", fields.need("place"), typed="places"),
         name=fields.text("name"),
-        temperature_c=fields.signed("temperature_c"),
+        temperature_c=temperature_of(fields, "temperature_c"),
         meant_for=fields.text("meant_for"),
         source=fields.text("source"),
     )
     desk.save(row)
 
 
+def temperature_of(fields: Fields, column: str) -> float | None:
+    """A place's temperature in °C, -90 to 120; None when blank. Raises: BadAmount."""
+    return fields.within(column, _COLDEST, _HOTTEST, "In °C, and not in kelvin?")
+
+
 def read_department(desk: Desk, fields: Fields) -> None:
     """A department and the pounds it has left; blank means no limit is kept."""
+    code = fields.need("department")
     row = Department(
-        department=new_name(desk, Department, "department", fields.need("department")),
+        department=new_name(desk, Department, "department", code, typed="departments"),
         name=fields.text("name"),
         left_pence=fields.pence("left_gbp"),
         source=fields.text("source"),
@@ -124,9 +132,19 @@ def read_vessel(desk: Desk, fields: Fields) -> None:
     desk.save(Vessel(vessel=name, size=size, source=fields.text("source")))
 
 
-def new_name(desk: Desk, table: type[SQLModel], column: str, name: str) -> str:
-    """The name itself, when no row of the table has it yet. Raises: BadInput."""
+def new_name(
+    desk: Desk, table: type[SQLModel], column: str, name: str, *, what: str = "", typed: str = ""
+) -> str:
+    """The name itself, when no row of the table has it yet.
+
+    `what` a row is called, if not as its column; `typed` names the table for
+    those whose rows can be corrected. Raises: BadInput.
+    """
     names = desk.session.exec(select(col(getattr(table, column)))).all()
     if plain(name) in {plain(str(other)) for other in names}:
-        raise BadInput(f'There is already a {column} "{name}".', "Give another name.")
+        mend = f"To correct it: stockroom change {typed} '{name}' COLUMN=VALUE --why …"
+        raise BadInput(
+            f'There is already a {what or column} "{name}".',
+            mend if typed else "Give another name.",
+        )
     return name

@@ -1,15 +1,13 @@
-"""Readers for substances, stock lines, how they keep, how they are made, how they are bought."""
+"""Readers for substances, stock lines and how they keep."""
 
 from __future__ import annotations
 
-from sqlmodel import col, select
-
 from stockroom.chemistry.formula import check_cas, molar_mass
 from stockroom.chemistry.strength import canonical
-from stockroom.errors import BadInput, MissingFigure
+from stockroom.errors import BadInput, MissingFigure, NotAllowed
+from stockroom.keeping.laws import DAYS_PER_MONTH
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
-from stockroom.measure.amounts import Amount, Kind
-from stockroom.measure.formats import format_amount
+from stockroom.measure.amounts import Kind
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.periods import parse_period
 from stockroom.measure.strengths import Strength, StrengthUnit
@@ -17,22 +15,15 @@ from stockroom.planning.facts import Form
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.names import find_substance, other_names, substance_of
-from stockroom.store.rows_house import new_name
-from stockroom.store.tables import (
-    Ingredient,
-    KeepingRule,
-    Line,
-    Method,
-    OtherName,
-    Pack,
-    Substance,
-)
+from stockroom.store.rows_house import new_name, temperature_of
+from stockroom.store.tables import KeepingRule, Line, OtherName, Substance
 
 _MEASURED = {Form.SOLID: Kind.MASS, Form.LIQUID: Kind.VOLUME, Form.SOLUTION: Kind.VOLUME}
 # the mean month and year: a rate is a physical quantity, not a calendar step
-_DAYS_PER = {"day": 1.0, "month": 30.4375, "year": 365.25}
+DAYS_PER = {"day": 1.0, "month": DAYS_PER_MONTH, "year": 12 * DAYS_PER_MONTH}
 _WORDS = (StrengthUnit.PARTS, StrengthUnit.SATURATED)
-_USUAL_MINUTES = 15
+# ether at 0.71 is the lightest liquid on a bench, mercury at 13.5 the heaviest; common knowledge
+_LIGHTEST, _HEAVIEST = 0.5, 20
 
 
 def read_substance(desk: Desk, fields: Fields) -> None:
@@ -69,11 +60,15 @@ def read_line(desk: Desk, fields: Fields) -> None:
     # only sundries may be counted, weighed or measured as the house likes
     kind = _MEASURED.get(form) or fields.choice("measured_in", Kind)
     written = fields.text("strength")
-    density = fields.number("density_g_cm3")
+    key = f"{item} {written}".strip()
+    # the cell to look at is the item's, though the strength is part of the name
+    fields.at("item")
+    new_name(desk, Line, "key", key, what="stock line", typed="lines")
+    density = _density_of(fields)
     strength, unit = strength_of(fields, "strength", substance, density)
     formula = fields.text("formula")
     row = Line(
-        key=new_name(desk, Line, "key", f"{item} {written}".strip()),
+        key=key,
         item=item,
         substance_id=substance.id if substance else None,
         form=form,
@@ -83,7 +78,7 @@ def read_line(desk: Desk, fields: Fields) -> None:
         strength_text=written,
         formula=formula,
         molar_mass=_mass_inside(formula, substance),
-        assay=fields.part("assay_percent", most=100) or 1.0,
+        assay=_assay_of(fields),
         density=density,
         level=fields.amount("level", kind),
         largest_batch=fields.volume("largest_batch_cm3"),
@@ -94,6 +89,17 @@ def read_line(desk: Desk, fields: Fields) -> None:
     )
     desk.save(row)
     desk.lines.add(row)
+
+
+def _density_of(fields: Fields) -> float | None:
+    """A density in g/cm³, 0.5 to 20; None when blank. Raises: BadAmount."""
+    return fields.within("density_g_cm3", _LIGHTEST, _HEAVIEST, "In g/cm³, and not in kg/m³?")
+
+
+def _assay_of(fields: Fields) -> float:
+    # below 1 % it is likelier a fraction, or a solution that wants a strength
+    percent = fields.within("assay_percent", 1, 100, "In per cent, as on the label?")
+    return 1.0 if percent is None else percent / 100
 
 
 def _mass_inside(formula: str, substance: Substance | None) -> float | None:
@@ -133,6 +139,16 @@ def in_own_unit(
     return found.value, found.unit
 
 
+def check_has_strength(line: Line, number: str) -> None:
+    """Pass when a strength can be found in a bottle of the line. Raises: NotAllowed."""
+    if line.kind != Kind.VOLUME:
+        raise NotAllowed(
+            f"{number} {line.key} is measured by {line.kind}: it is no solution and has no"
+            " strength to find.",
+            "Enter the result for the solution made from it.",
+        )
+
+
 def read_rule(desk: Desk, fields: Fields) -> None:
     """One ageing rule of a line; rates are turned to the line's unit per day."""
     line = desk.line(fields.need("line"))
@@ -153,12 +169,12 @@ def read_rule(desk: Desk, fields: Fields) -> None:
         safety=fields.flag("safety"),
         decay_order=order,
         rate=rate,
-        at_c=fields.signed("at_c"),
+        at_c=temperature_of(fields, "at_c"),
         factor_per_10c=fields.number("factor_per_10c"),
         above=_bound(desk, fields, line, "stronger_than"),
         upto=_bound(desk, fields, line, "up_to_strength"),
-        colder_than=fields.signed("colder_than_c"),
-        warmer_than=fields.signed("warmer_than_c"),
+        colder_than=temperature_of(fields, "colder_than_c"),
+        warmer_than=temperature_of(fields, "warmer_than_c"),
         source=fields.text("source"),
     )
     desk.save(row)
@@ -176,13 +192,13 @@ def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
     if rate is None:
         raise BadInput("rate is blank.", "Give the rate, in the unit rate_of per rate_per.")
     per = fields.need("rate_per")
-    if per not in _DAYS_PER:
+    if per not in DAYS_PER:
         raise BadInput(f'rate_per "{per}" is not a time.', "Give day, month or year.")
     # a first-order rate is a share per time and has no unit of strength
     own = 1.0 if order == 1 else _own_units(desk, fields, line)
     # a zero-order rate is strength per time, a second-order one the inverse of strength per time
     scale = own if order == 0 else 1 / own
-    return order, rate * scale / _DAYS_PER[per]
+    return order, rate * scale / DAYS_PER[per]
 
 
 def _own_units(desk: Desk, fields: Fields, line: Line) -> float:
@@ -192,77 +208,3 @@ def _own_units(desk: Desk, fields: Fields, line: Line) -> float:
     if value is None:
         raise MissingFigure(f'A rate cannot be given in "{unit}".', "Give it in % w/v or mol/dm3.")
     return value
-
-
-def read_method(desk: Desk, fields: Fields) -> None:
-    """How a line is made; blank minutes count as the usual, and are marked as a guess."""
-    line = desk.line(fields.need("line"))
-    assert line.id is not None
-    if desk.session.exec(select(Method).where(Method.line_id == line.id)).first():
-        raise BadInput(f"{line.key} has a method already.", "Give one method for each line.")
-    minutes = fields.whole("minutes")
-    row = Method(
-        line_id=line.id,
-        minutes=_USUAL_MINUTES if minutes is None else minutes,
-        minutes_guessed=minutes is None,
-        finish_minutes=fields.whole("finish_minutes") or 0,
-        stands_hours=fields.number("stands_h") or 0.0,
-        titrated=fields.flag("titrated"),
-        smallest_batch=fields.volume("smallest_batch_cm3") or 0,
-        steps=fields.text("steps"),
-        cautions=fields.text("cautions"),
-        source=fields.text("source"),
-    )
-    desk.save(row)
-
-
-def read_ingredient(desk: Desk, fields: Fields) -> None:
-    """One alternative for one ingredient of a line; nothing is made from itself."""
-    line = desk.line(fields.need("line"))
-    ingredient = desk.line(fields.need("ingredient"))
-    if line.id == ingredient.id:
-        raise BadInput(f"{line.key} would be made from itself.", "Name what it is made from.")
-    assert line.id is not None and ingredient.id is not None
-    role = fields.text("role") or "solute"
-    per_dm3 = fields.amount("per_dm3", Kind(ingredient.kind))
-    # a solvent's amount cannot be worked out from strengths
-    if role != "solute" and per_dm3 is None:
-        raise BadInput(
-            f"How much {ingredient.key} per dm³ of {line.key}?", "Fill per_dm3_g or per_dm3_cm3."
-        )
-    row = Ingredient(
-        line_id=line.id,
-        ingredient_id=ingredient.id,
-        alternative=fields.whole("alternative") or 1,
-        role=role,
-        per_dm3=per_dm3,
-        only_if_held=fields.flag("only_if_held"),
-        source=fields.text("source"),
-    )
-    desk.save(row)
-
-
-def read_pack(desk: Desk, fields: Fields) -> None:
-    """A size a supplier sells, and its price."""
-    line = desk.line(fields.need("line"))
-    assert line.id is not None
-    kind = Kind(line.kind)
-    size = fields.amount("size", kind)
-    if not size:
-        raise BadInput(f"The pack of {line.key} has no size.", "Fill the size column.")
-    pence = fields.pence("price_gbp")
-    if pence is None:
-        raise BadInput(f"The pack of {line.key} has no price.", "Fill price_gbp, 0 if it is free.")
-    row = Pack(
-        line_id=line.id,
-        size=size,
-        text=format_amount(Amount(kind, size)),
-        pence=pence,
-        lead=fields.whole("lead_open_days"),
-        supplier=fields.text("supplier_ref"),
-        source=fields.text("source"),
-    )
-    same = select(Pack).where(Pack.line_id == line.id, Pack.size == size).order_by(col(Pack.id))
-    if any(other.supplier == row.supplier for other in desk.session.exec(same)):
-        raise BadInput(f"{line.key} has a pack of {row.text} already.", "Give another size.")
-    desk.save(row)

@@ -62,6 +62,7 @@ def read_requirement(desk: Desk, fields: Fields) -> None:
         amount=amount,
         per=fields.choice("per", Per),
         closeness=fields.choice("closeness", Closeness, Closeness.CLOSE),
+        # a plan owns up to what it leans on and nobody said
         closeness_guessed=not fields.text("closeness"),
         tolerance=fields.part("tolerance_percent", most=100),
         fresh=fields.flag("fresh"),
@@ -101,6 +102,7 @@ def read_bar(desk: Desk, fields: Fields) -> None:
     recipe = _recipe(desk, fields)
     substance = find_substance(desk.session, fields.need("substance"))
     assert recipe.id is not None and substance.id is not None
+    # without its reason a bar is taken for a slip and worked round
     reason, source = fields.need("reason"), fields.text("source")
     desk.save(Bar(recipe_id=recipe.id, substance_id=substance.id, reason=reason, source=source))
 

@@ -81,6 +81,7 @@ def _period(reader: Reader, as_at: date, start: date | None, end: date | None) -
     asked = start or as_at
     # the earliest not yet over: the one it lies in, else the next
     terms = reader.rows("term", "WHERE ends_on >= ? ORDER BY starts_on LIMIT 1", asked.isoformat())
+    # without a term there is still a plan: ninety days are about one
     first, last = (_span(terms[0])) if terms else (asked, asked + SPAN)
     if (end or last) < (start or first):
         raise BadDate(

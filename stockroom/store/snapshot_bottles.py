@@ -13,7 +13,7 @@ from datetime import date
 from stockroom.keeping.record import Check, CheckKind, Record, Stay
 from stockroom.measure.days import PrintedDate
 from stockroom.planning.facts import Bottle, Drawn
-from stockroom.store.kinds import BEGINNINGS, DAY_NOT_WRITTEN, STANDING, EntryKind
+from stockroom.store.kinds import BEGINNINGS, DAY_NOT_WRITTEN, STANDING, TURNED_UP, EntryKind
 from stockroom.store.reading import Reader, Row
 
 # these change the balance alone, and the sums in SQL have them already
@@ -69,7 +69,7 @@ def _shelf(reader: Reader, day: str, only: str) -> _Shelf:
 def drawn_of(reader: Reader, as_at: date) -> tuple[Drawn, ...]:
     """What was really drawn up to a day, oldest first; spills, loans and counts are not draws."""
     rows = reader.ask(
-        "SELECT bottle.number, line.key, happened_on, -change FROM entry"
+        "SELECT bottle.number, line.key, happened_on, -change, entry.booking FROM entry"
         " JOIN bottle ON bottle.id = bottle_id JOIN line ON line.id = line_id"
         f" WHERE entry.kind = ? AND happened_on <= ? AND {STANDING}"
         " ORDER BY happened_on, entry.id",
@@ -77,7 +77,8 @@ def drawn_of(reader: Reader, as_at: date) -> tuple[Drawn, ...]:
         as_at.isoformat(),
     )
     return tuple(
-        Drawn(number, line, date.fromisoformat(day), amount) for number, line, day, amount in rows
+        Drawn(number, line, date.fromisoformat(day), amount, booking)
+        for number, line, day, amount, booking in rows
     )
 
 
@@ -164,7 +165,7 @@ def _record(row: Row, events: list[Row], line: Row, places: dict[int, Row]) -> R
         opened=opened,
         opened_guessed=guessed,
         made=_day(row["made_on"]),
-        printed=_printed(row),
+        printed=_printed(row, events),
         nominal=line["strength"],
         checks=tuple(_checks(events)),
         stays=tuple(_stays(events, places)),
@@ -187,9 +188,13 @@ def _opened(events: list[Row], received: date | None) -> tuple[date | None, bool
     return None, False
 
 
-def _printed(row: Row) -> PrintedDate | None:
+def _printed(row: Row, events: list[Row]) -> PrintedDate | None:
     if not row["printed_text"]:
         return None
+    # the last word counts: whoever settled it wrongly may settle it again
+    settled = [_day(event["note"]) for event in events if event["kind"] == EntryKind.DATE_READ]
+    if settled and settled[-1]:
+        return PrintedDate(row["printed_text"], (settled[-1],))
     readings = tuple(date.fromisoformat(day) for day in row["printed_readings"].split(";") if day)
     return PrintedDate(row["printed_text"], readings)
 
@@ -218,7 +223,10 @@ def _set_aside(events: list[Row]) -> str:
         looked = event["kind"] in (EntryKind.LOOKED, EntryKind.TESTED)
         if event["kind"] == EntryKind.SET_ASIDE or (looked and not event["passed"]):
             reason = event["reason"] or event["note"] or "did not pass when looked at"
-        elif looked or event["kind"] == EntryKind.TURNED_UP:
+        elif event["kind"] == EntryKind.TURNED_UP:
+            # what was wrong with it before it went is no better for its absence
+            reason = reason or TURNED_UP
+        elif looked or (event["kind"] == EntryKind.FOUND and reason == TURNED_UP):
             reason = ""
     return reason
 

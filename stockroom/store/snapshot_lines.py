@@ -152,6 +152,7 @@ def _ingredients(reader: Reader, keys: dict[int, str]) -> dict[int, tuple[Ingred
 
 def _ingredient(role: str, rows: list[Row], keys: dict[int, str]) -> Ingredient:
     ranked = sorted(rows, key=lambda row: (row["alternative"], row["id"]))
+    # one ingredient for all alternatives: the planner chooses, and needs them side by side
     return Ingredient(
         lines=tuple(keys[row["ingredient_id"]] for row in ranked),
         # alternatives give the same thing, so the preferred one's amount holds for all

@@ -298,6 +298,23 @@ class BookingChange(Numbered, table=True):
     after: str = ""
 
 
+class RowChange(Numbered, table=True):
+    """What was corrected in a table of the house, by whom and why; appended, never altered."""
+
+    __tablename__ = "row_change"
+
+    # names and not numbers, so that one table records for all of them
+    table_name: str
+    row_key: str
+    column_name: str
+    before: str = ""
+    after: str = ""
+    why: str
+    by: str
+    entered_on: date
+    entered_at: str
+
+
 class Bottle(Numbered, table=True):
     """One container with a number that is never used again; what is left is in `entry`."""
 

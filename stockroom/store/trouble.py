@@ -39,7 +39,15 @@ def damaged(path: Path) -> StoreTrouble:
     """The error for a store that can no longer be read through."""
     return StoreTrouble(
         f"The store {path} is damaged and cannot be read to its end.",
-        "Nothing was changed. Put the last good copy back with `stockroom restore`.",
+        "Nothing was changed. Put the last good copy of the file back.",
+    )
+
+
+def unfinished(path: Path) -> StoreTrouble:
+    """The error for a store whose last writer was cut off, where nobody may finish for it."""
+    return StoreTrouble(
+        f"{path} was not closed properly, and may not be written to from here.",
+        f"Copy it together with {path.name}-wal to a folder of your own, and read it there.",
     )
 
 

@@ -177,3 +177,9 @@ def test_only_one_last_digit_passes(digit: int, number: str) -> None:
     else:
         with pytest.raises(BadAmount):
             check_cas(changed)
+
+
+@pytest.mark.parametrize("formula", ["C2H2O4.2H20", "CuSO4·5H20", "H20"])
+def test_a_zero_in_water_is_asked_about(formula: str) -> None:
+    with pytest.raises(BadAmount, match="Is the letter O meant"):
+        molar_mass(formula)

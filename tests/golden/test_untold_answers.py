@@ -57,8 +57,13 @@ def test_sulfuric_acid_is_too_close_so_more_is_made(term: Plan) -> None:
     [fresh] = makes_of(term, "sulfuric acid 2.00 mol/dm3")
     assert fresh.bookings == ("K25",)
     assert "B13" in sources(fresh)
-    assert term.levels[0].line == "sulfuric acid 2.00 mol/dm3"
-    assert term.levels[0].on == date(2027, 2, 1)
+
+
+def test_stocks_below_their_level_are_told_on_the_day_of_a_booking(term: Plan) -> None:
+    """S04 passes 1 000 with K21's acid on 4 March; B35 has no date, so potassium chloride is 0."""
+    told = {level.line: (level.on, level.left) for level in term.levels}
+    assert told["sulfuric acid 2.00 mol/dm3"][0] == date(2027, 3, 4)
+    assert told["potassium chloride"] == (FIRST_DAY, 0)
 
 
 def test_strontium_serves_one_class_whole_and_never_two_in_part(term: Plan) -> None:

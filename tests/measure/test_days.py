@@ -188,3 +188,12 @@ def test_one_of_the_readings_is_the_day_that_was_meant(day: date) -> None:
     printed = parse_printed(f"{day:%d/%m/%y}")
     assert printed is not None
     assert day in printed.readings
+
+
+def test_a_typed_day_that_does_not_exist_is_not_looked_for_on_a_label() -> None:
+    with pytest.raises(BadDate) as typed:
+        parse_day("31/04/2027", where="--as-at")
+    with pytest.raises(BadDate) as printed:
+        parse_printed("31/04/2027")
+    assert typed.value.hint == "Which day is meant?"
+    assert printed.value.hint == "What is printed on the bottle?"

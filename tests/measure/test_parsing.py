@@ -151,3 +151,20 @@ def test_text_to_amount_to_text_is_stable(kind: Kind, millionths: int) -> None:
 def test_whole_thousandths_survive_the_round_trip(kind: Kind, thousandths: int) -> None:
     amount = Amount(kind, thousandths * PER_UNIT[kind] // 1000)
     assert parse_amount(format_amount(amount)) == amount
+
+
+@pytest.mark.parametrize(
+    ("text", "written"),
+    [("½ L", '"0.5 L"'), ("1½ L", '"1.5 L"'), ("1/2 L", '"0.5 L"'), ("2 1/4 dm3", '"2.25 dm3"')],
+)
+def test_a_fraction_is_shown_with_a_point_instead(text: str, written: str) -> None:
+    with pytest.raises(BadAmount) as caught:
+        parse_amount(text)
+    assert f'"{text}"' in caught.value.message
+    assert written in caught.value.hint
+
+
+def test_less_than_nothing_is_not_told_that_nothing_would_do() -> None:
+    with pytest.raises(BadAmount) as caught:
+        parse_amount("-10 cm3")
+    assert caught.value.hint == "Write it without the minus sign."

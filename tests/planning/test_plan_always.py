@@ -238,7 +238,9 @@ def test_a_class_gets_one_strength_and_one_near_enough(facts: Facts) -> None:
         got = sorted(one.strength for one in need.draws if one.strength is not None)
         if limits and need.outcome is Outcome.HAVE:
             assert all(limits[0] - 1e-6 <= strength <= limits[1] + 1e-6 for strength in got)
-        assert all(more <= less * 1.0011 for less, more in pairwise(got))
+        # where presence is enough, two strengths may go on one bench
+        if limits:
+            assert all(more <= less * 1.0011 for less, more in pairwise(got))
 
 
 @given(small_houses(), st.randoms(use_true_random=False))

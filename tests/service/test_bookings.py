@@ -9,7 +9,7 @@ from typing import Any
 
 import pytest
 
-from stockroom.errors import BadInput, NotAllowed, StockroomError, UnknownName
+from stockroom.errors import BadDate, BadInput, NotAllowed, StockroomError, UnknownName
 from stockroom.planning.facts import Booking, Firmness
 from stockroom.service import bookings
 from stockroom.service.answers import Done
@@ -124,3 +124,30 @@ def test_a_dropped_booking_stays_on_record(own: Path) -> None:
     assert changes(own) == [("firmness", "firm", "dropped")]
     with pytest.raises(NotAllowed, match="K06 is dropped already"):
         bookings.cancel(own, "K06", **WHO)
+
+
+@pytest.mark.parametrize("firmness", ["dropped", "done"])
+def test_a_booking_out_of_the_plan_is_shifted_only_with_its_firmness(
+    own: Path, firmness: str
+) -> None:
+    bookings.shift(own, "K06", firmness=firmness, **WHO)
+    with pytest.raises(NotAllowed, match=f"K06 is {firmness}"):
+        bookings.shift(own, "K06", groups=3, **WHO)
+    bookings.shift(own, "K06", groups=3, firmness="firm", **WHO)
+    assert (seen(own, "K06").groups, seen(own, "K06").firmness) == (3, Firmness.FIRM)
+
+
+def test_a_day_gone_by_is_no_day_to_book(own: Path) -> None:
+    past = date(2026, 3, 9)
+    with pytest.raises(BadDate, match="9 March 2026 is past: today is 11 January 2027") as caught:
+        book(own, on=past)
+    assert "Check the year" in caught.value.hint
+    with pytest.raises(BadDate, match="9 March 2026 is past"):
+        bookings.shift(own, "K06", on=past, **WHO)
+
+
+def test_a_day_outside_every_term_is_said(own: Path) -> None:
+    assert book(own, on=date(2028, 5, 11)).details == ("11 May 2028 is outside every term.",)
+    assert book(own).details == ()
+    shifted = bookings.shift(own, "K06", on=date(2028, 5, 11), **WHO)
+    assert shifted.details == ("11 May 2028 is outside every term.",)

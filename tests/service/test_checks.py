@@ -8,11 +8,11 @@ from typing import Any
 
 import pytest
 
-from stockroom.errors import BadAmount, BadInput, NotAllowed
+from stockroom.errors import BadAmount, BadDate, BadInput, NotAllowed, StockroomError
 from stockroom.keeping.record import CheckKind
 from stockroom.measure.parsing import parse_strength
 from stockroom.planning.facts import Bottle
-from stockroom.service import checks
+from stockroom.service import checks, stock
 from stockroom.store.snapshot import facts
 
 TODAY = date(2027, 1, 11)
@@ -118,3 +118,70 @@ def test_what_turned_up_is_back_where_it_stood(own: Path) -> None:
 def test_only_a_missing_bottle_turns_up(own: Path) -> None:
     with pytest.raises(NotAllowed, match="S01 was not missing: it is in use, at D1"):
         checks.turned_up(own, "S01", "D1", **WHO)
+
+
+def test_a_solid_has_no_strength_to_find(own: Path) -> None:
+    with pytest.raises(NotAllowed, match=r"B06 .* is measured by mass: it is no solution"):
+        checks.found(own, "B06", parse_strength("1.4 mol/dm3"), **WHO)
+
+
+def printed(path: Path, number: str) -> tuple[date, ...]:
+    found = seen(path, number).record.printed
+    return found.readings if found else ()
+
+
+def test_a_date_with_two_readings_is_settled_by_saying_which(own: Path) -> None:
+    assert printed(own, "B21") == (date(2027, 4, 5), date(2027, 5, 4))
+    done = checks.printed(own, "B21", date(2027, 5, 4), **WHO)
+    assert printed(own, "B21") == (date(2027, 5, 4),)
+    assert done.details[0].startswith("Now sound, until 4 May 2027")
+
+
+def test_a_date_read_wrongly_can_be_read_again_or_put_right(own: Path) -> None:
+    checks.printed(own, "B21", date(2027, 5, 4), **WHO)
+    again = checks.printed(own, "B21", date(2027, 4, 5), **WHO)
+    assert printed(own, "B21") == (date(2027, 4, 5),)
+    stock.put_right(own, again.entry or 0, "misread", **WHO)
+    assert printed(own, "B21") == (date(2027, 5, 4),)
+
+
+@pytest.mark.parametrize(
+    ("bottle", "day", "kind", "said"),
+    [
+        ("B21", date(2027, 6, 4), BadDate, "5 April 2027 or 4 May 2027, and not 4 June 2027"),
+        ("B06", date(2027, 6, 4), BadDate, "B06 has no printed date"),
+        ("B22", date(2026, 12, 31), NotAllowed, "can only be 31 December 2026"),
+    ],
+)
+def test_a_reading_the_label_does_not_give_is_refused(
+    own: Path, bottle: str, day: date, kind: type[StockroomError], said: str
+) -> None:
+    with pytest.raises(kind, match=said):
+        checks.printed(own, bottle, day, **WHO)
+
+
+def test_what_turned_up_waits_for_a_look(own: Path) -> None:
+    checks.turned_up(own, "B28", "A2", **WHO)
+    assert seen(own, "B28").record.set_aside == "turned up: needs a look"
+    checks.look(own, "B28", passed=True, **WHO)
+    assert seen(own, "B28").record.set_aside == ""
+
+
+def test_a_strength_found_since_is_as_good_as_a_look(own: Path) -> None:
+    checks.lost(own, "S02", **WHO)
+    checks.turned_up(own, "S02", None, **WHO)
+    checks.found(own, "S02", parse_strength("0.0987 M"), **WHO)
+    assert seen(own, "S02").record.set_aside == ""
+
+
+def test_what_was_set_aside_before_it_was_lost_stays_so(own: Path) -> None:
+    checks.spoil(own, "S05", "yellow tinge", **WHO)
+    checks.lost(own, "S05", **WHO)
+    checks.turned_up(own, "S05", None, **WHO)
+    checks.found(own, "S05", parse_strength("2.00 M"), **WHO)
+    assert seen(own, "S05").record.set_aside == "yellow tinge"
+
+
+def test_a_look_at_a_bottle_past_its_printed_date_says_still_past(own: Path) -> None:
+    done = checks.look(own, "B03", passed=True, **WHO)
+    assert done.details[0].startswith("Still past: good until 31 October 2026")

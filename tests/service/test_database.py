@@ -8,7 +8,7 @@ from pathlib import Path
 import pytest
 
 from stockroom import clock
-from stockroom.errors import StoreTrouble
+from stockroom.errors import BadInput, StoreTrouble, UnknownName
 from stockroom.service import database
 from stockroom.store.snapshot import facts
 
@@ -57,3 +57,53 @@ def test_two_practice_stores_hold_the_same_facts(practice: Path, tmp_path: Path)
     again = tmp_path / "again.sqlite"
     database.make_practice(again)
     assert facts(again, date(2027, 1, 4)) == facts(practice, date(2027, 1, 4))
+
+
+@pytest.fixture
+def house(tmp_path: Path) -> Path:
+    path = tmp_path / "ours.sqlite"
+    database.new_store(path)
+    for item in ("alpha", "beta", "gamma"):
+        database.add_row(path, "lines", {"item": item, "form": "solid"}, by="T1")
+    return path
+
+
+def from_(path: Path, line: str, source: str) -> None:
+    row = {"line": line, "ingredient": source}
+    database.add_row(path, "ingredients", row, by="T1")
+
+
+def test_methods_that_go_round_in_a_circle_are_refused(house: Path) -> None:
+    from_(house, "alpha", "beta")
+    from_(house, "beta", "gamma")
+    with pytest.raises(BadInput, match="alpha from beta from gamma from alpha"):
+        from_(house, "gamma", "alpha")
+    methods = facts(house, date(2027, 1, 4)).methods
+    assert sorted(methods) == ["alpha", "beta"]
+
+
+def test_a_method_that_follows_from_the_strengths_can_close_a_circle(house: Path) -> None:
+    salt = {"item": "salt", "substance": "salt", "form": "solution"}
+    database.add_row(house, "substances", {"substance": "salt", "formula": "NaCl"}, by="T1")
+    for strength in ("0.1 mol/dm3", "1 mol/dm3"):
+        database.add_row(house, "lines", salt | {"strength": strength}, by="T1")
+    from_(house, "salt 1 mol/dm3", "salt 0.1 mol/dm3")
+    # nothing but the stronger one is there to make the weaker from
+    with pytest.raises(BadInput, match=r"Made from itself: salt 0\.1"):
+        database.add_row(house, "methods", {"line": "salt 0.1 mol/dm3"}, by="T1")
+
+
+def test_tables_with_a_circle_make_no_store(tmp_path: Path) -> None:
+    tables = tmp_path / "tables"
+    tables.mkdir()
+    (tables / "lines.csv").write_text("item,form\nalpha,solid\nbeta,solid\n", encoding="utf-8")
+    rows = "line,ingredient\nalpha,beta\nbeta,alpha\n"
+    (tables / "ingredients.csv").write_text(rows, encoding="utf-8")
+    with pytest.raises(BadInput, match="alpha from beta from alpha"):
+        database.new_store(tmp_path / "round.sqlite", tables=tables)
+    assert not (tmp_path / "round.sqlite").exists()
+
+
+def test_an_ingredient_that_is_no_line_is_refused(house: Path) -> None:
+    with pytest.raises(UnknownName, match='No stock line "unobtainium"'):
+        from_(house, "alpha", "unobtainium")

@@ -134,3 +134,15 @@ def test_a_make_whose_last_draw_fails_draws_nothing(own: Path) -> None:
     with pytest.raises(NotEnough, match=f"{acid} holds 100 cm³; 500 cm³ asked"):
         make(own, "ammonium iron(II) sulfate 0.100 mol/dm3", 500, "B11", acid)
     assert facts(own, TODAY) == before
+
+
+def test_a_source_gone_past_is_used_all_the_same_and_said(own: Path) -> None:
+    # B22 ascorbic acid was good until 31 December 2026: scenario section 4
+    done = make(own, "ascorbic acid 0.1 % w/v", 100, "B22")
+    [told] = [detail for detail in done.details if "used all the same" in detail]
+    assert told.startswith("B22 is past (printed")
+
+
+def test_a_sound_source_needs_no_words(own: Path) -> None:
+    done = make(own, "sodium thiosulfate 1.00 mol/dm3", 1000, "B06")
+    assert not [detail for detail in done.details if "used all the same" in detail]

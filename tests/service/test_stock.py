@@ -213,3 +213,50 @@ def test_what_is_gone_takes_no_more_entries(own: Path) -> None:
     for again in moves:
         with pytest.raises(NotAllowed, match="S14 is gone: 11 January 2027, T1, past"):
             again()
+
+
+def test_a_printed_date_with_two_readings_says_how_it_is_settled(own: Path) -> None:
+    done = arrive(own, printed="04/05/27")
+    assert done.details == (
+        'Printed "04/05/27" can be 5 April 2027 or 4 May 2027: planned on the earlier. To settle'
+        " it: stockroom printed B46 2027-05-04, or 2027-04-05.",
+    )
+
+
+def test_a_printed_date_past_already_says_so(own: Path) -> None:
+    assert arrive(own, printed="02/2020").details == (
+        'Printed "02/2020" is past: good until 29 February 2020.',
+    )
+
+
+def test_words_for_a_printed_date_are_sent_to_the_note(own: Path) -> None:
+    with pytest.raises(BadDate) as caught:
+        arrive(own, printed="best before Easter")
+    assert '(--printed none --note "best before Easter")' in caught.value.hint
+
+
+def test_more_than_the_bottle_holds_is_asked_about(own: Path) -> None:
+    with pytest.raises(NotAllowed, match="B06 holds 1 000 g when full; 9 999 g counted"):
+        stock.count(own, "B06", Amount.grams(9999), **WHO)
+    stock.count(own, "B06", Amount.grams(1040), **WHO)
+    stock.count(own, "B06", Amount.grams(9999), sure=True, **WHO)
+    assert seen(own, "B06").left == Amount.grams(9999).micro
+
+
+def test_an_earlier_draw_entered_today_is_told_with_its_day(own: Path) -> None:
+    stock.draw(own, "S13", Amount.cm3(100), on=date(2027, 1, 8), today=TODAY, by="TT")
+    with pytest.raises(NotEnough, match="TT drew 100 cm³ on 8 January 2027, entered today"):
+        stock.draw(own, "S13", Amount.cm3(100), **WHO)
+
+
+def test_a_bottle_that_turned_up_is_not_drawn_from_before_a_look(own: Path) -> None:
+    from stockroom.service import checks
+
+    checks.turned_up(own, "B28", "A2", **WHO)
+    with pytest.raises(NotAllowed, match="B28 is set aside: turned up: needs a look"):
+        stock.draw(own, "B28", Amount.grams(1), **WHO)
+
+
+def test_a_draw_for_a_booking_is_told_to_the_planner_with_it(own: Path) -> None:
+    stock.draw(own, "S13", Amount.cm3(10), booking="k16", **WHO)
+    assert [one.booking for one in facts(own, TODAY).drawn if one.bottle == "S13"][-1] == "K16"

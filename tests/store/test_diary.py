@@ -30,3 +30,8 @@ def test_an_unknown_bottle_shows_the_nearest(practice: Path) -> None:
     with pytest.raises(UnknownName, match='"B60"') as caught:
         diary(practice, "B60")
     assert "B06" in caught.value.hint
+
+
+def test_what_is_left_after_each_entry_leaves_the_slip_out(practice: Path) -> None:
+    left = [entry.left.number for entry in diary(practice, "B06")]
+    assert left == [1000, 1000, 690, 690, 690, 640]

@@ -11,7 +11,7 @@ from stockroom.errors import BadAmount, BadDate, BadInput, StockroomError, Unkno
 from stockroom.measure.amounts import Amount
 from stockroom.planning.facts import Closeness, Facts
 from stockroom.service.database import add_row, new_store, table_columns
-from stockroom.store.seeding import TABLES
+from stockroom.store.layout import TABLES
 from stockroom.store.snapshot import facts
 
 SMALL = {
@@ -238,7 +238,12 @@ def test_two_terms_never_overlap(tables: Path) -> None:
         ("house", {"setting": "staffed_from", "value": "8"}, BadDate, "not a time of day"),
         ("packs", {"line": "B01", "size_g": "5"}, UnknownName, "No stock line"),
         ("packs", {"line": "borax", "size_g": "5", "price_gbp": "-1"}, UnknownName, "No stock"),
-        ("lines", {"item": "x", "form": "solid", "assay_percent": "101"}, BadAmount, "over 100"),
+        (
+            "lines",
+            {"item": "x", "form": "solid", "assay_percent": "101"},
+            BadAmount,
+            "between 1 and 100",
+        ),
         ("history", {"happened": "2027-01-04", "event": "made"}, BadInput, "bottles table"),
     ],
 )
@@ -268,3 +273,92 @@ def test_every_table_of_the_college_is_one_we_read() -> None:
     files = {path.stem for path in (seeds_folder() / "college").glob("*.csv")}
     assert files == set(TABLES)
     assert table_columns("places") == ["place", "name", "temperature_c", "meant_for", "source"]
+
+
+@pytest.mark.parametrize("table", ["lines", "substances", "places", "departments", "recipes"])
+@pytest.mark.parametrize("state", ["is missing", "is empty"])
+def test_a_table_without_rows_is_named_before_what_follows_from_it(
+    tables: Path, table: str, state: str
+) -> None:
+    path = tables / f"{table}.csv"
+    if state == "is missing":
+        path.unlink()
+    else:
+        path.write_text(path.read_text(encoding="utf-8").splitlines()[0] + "\n", encoding="utf-8")
+    first = refused(tables).splitlines()[1]
+    assert first.startswith(f"  {table}.csv {state}: ")
+
+
+def test_what_follows_from_a_table_without_rows_is_held_back(tables: Path) -> None:
+    (tables / "lines.csv").unlink()
+    said = refused(tables)
+    assert "1 fault in the tables" in said
+    assert "No stock line" not in said
+    assert "5 rows of other tables name a stock line" in said
+
+
+def test_what_follows_from_a_table_nobody_can_read_is_held_back(tables: Path) -> None:
+    (tables / "lines.csv").write_bytes("item,form\nsäure,solid\n".encode("latin-1"))
+    said = refused(tables)
+    assert "1 fault in the tables" in said
+    assert "lines.csv: not UTF-8" in said
+
+
+@pytest.mark.parametrize(
+    ("table", "values", "said"),
+    [
+        ("lines", {"item": "x", "form": "liquid", "density_g_cm3": "1200"}, "not in kg/m³?"),
+        ("lines", {"item": "x", "form": "liquid", "density_g_cm3": "0.4"}, "between 0.5 and 20"),
+        ("lines", {"item": "x", "form": "solid", "assay_percent": "0.97"}, "In per cent"),
+        ("lines", {"item": "x", "form": "solid", "level_g": "-5"}, "less than nothing"),
+        ("places", {"place": "Z1", "temperature_c": "-300"}, 'temperature_c "-300"'),
+        ("places", {"place": "Z1", "temperature_c": "293"}, "not in kelvin?"),
+        ("packs", {"line": "borax", "size_g": "1", "price_gbp": "-1"}, "less than nothing"),
+        ("packs", {"line": "borax", "size_g": "1", "price_gbp": ""}, "0 if it is free"),
+        (
+            "packs",
+            {"line": "borax", "size_g": "1", "price_gbp": "1", "lead_open_days": "401"},
+            "between 0 and 400",
+        ),
+        (
+            "bottles",
+            {"bottle": "B99", "line": "borax", "size_g": "5", "left_g": "500"},
+            "B99 holds 5 g when full; 500 g left?",
+        ),
+        ("substances", {"substance": "x", "formula": "C2H2O4.2H20"}, "Is the letter O meant"),
+    ],
+)
+def test_a_figure_no_bench_knows_is_asked_about(
+    own: Path, table: str, values: dict[str, str], said: str
+) -> None:
+    add_row(own, "lines", {"item": "borax", "form": "solid"}, by="T1")
+    with pytest.raises(StockroomError) as caught:
+        add_row(own, table, values, by="T1")
+    assert said in str(caught.value)
+
+
+def test_a_line_added_twice_is_told_by_its_item(own: Path) -> None:
+    add_row(own, "lines", {"item": "borax", "form": "solid"}, by="T1")
+    with pytest.raises(BadInput) as caught:
+        add_row(own, "lines", {"item": "borax", "form": "solid"}, by="T1")
+    assert caught.value.message == ('lines, item "borax": There is already a stock line "borax".')
+    assert "stockroom change lines 'borax'" in caught.value.hint
+
+
+def test_a_date_read_in_the_tables_settles_the_bottle(tables: Path, tmp_path: Path) -> None:
+    path = tables / "bottles.csv"
+    text = path.read_text(encoding="utf-8").replace("parents\n", "parents,printed\n")
+    text = text.replace("2026-12-18,\n", "2026-12-18,,04/05/27\n").replace("B01\n", "B01,\n")
+    path.write_text(text, encoding="utf-8")
+    rows = (tables / "history.csv").read_text(encoding="utf-8")
+    rows += "5,2026-12-21,T1,date read,B01,,,,2027-05-04,\n"
+    (tables / "history.csv").write_text(rows, encoding="utf-8")
+    new_store(tmp_path / "read.sqlite", tables=tables)
+    bottle = facts(tmp_path / "read.sqlite", date(2027, 1, 4)).bottles[0]
+    assert bottle.record.printed is not None
+    assert bottle.record.printed.readings == (date(2027, 5, 4),)
+
+
+def test_a_solid_has_no_strength_in_the_tables_either(tables: Path) -> None:
+    change(tables, "history", "found,S01", "found,B01")
+    assert "has no strength to find" in refused(tables)

@@ -69,3 +69,20 @@ def test_an_entry_is_put_right_once(raw: sqlite3.Connection) -> None:
 
 def test_other_rows_may_still_be_altered(raw: sqlite3.Connection) -> None:
     assert raw.execute("UPDATE booking SET groups = 13 WHERE number = 'K06'").rowcount == 1
+
+
+@pytest.mark.parametrize(
+    "statement",
+    [
+        "UPDATE row_change SET by = ''",
+        "DELETE FROM row_change",
+        "INSERT OR REPLACE INTO row_change SELECT * FROM row_change",
+    ],
+)
+def test_the_record_of_a_correction_refuses(raw: sqlite3.Connection, statement: str) -> None:
+    raw.execute(
+        "INSERT INTO row_change (table_name, row_key, column_name, before, after, why, by,"
+        " entered_on, entered_at) VALUES ('places', 'A2', 'name', '', 'x', 'y', 'T1', '', '')"
+    )
+    with pytest.raises(sqlite3.IntegrityError, match=r"^KEPT "):
+        raw.execute(statement)

@@ -77,8 +77,9 @@ def test_another_programs_database_is_left_alone(
 def test_a_store_cut_short_is_called_damaged(own: Path, part: float) -> None:
     whole = own.read_bytes()
     own.write_bytes(whole[: int(len(whole) * part)])
-    with pytest.raises(StoreTrouble, match="damaged"):
+    with pytest.raises(StoreTrouble, match="damaged") as caught:
         read(own)
+    assert caught.value.hint.endswith("Put the last good copy of the file back.")
 
 
 @BOTH

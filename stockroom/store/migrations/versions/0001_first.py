@@ -24,6 +24,7 @@ def upgrade() -> None:
     _lines()
     _recipes()
     _bookings()
+    _changes()
     _bottles()
     _entries()
     for trigger in TRIGGERS:
@@ -255,6 +256,11 @@ def _bookings() -> None:
     )
 
 
+def _changes() -> None:
+    told = ("table_name", "row_key", "column_name", "before", "after", "why", "by")
+    _table("row_change", *[_text(name) for name in told], _day("entered_on"), _text("entered_at"))
+
+
 def _bottles() -> None:
     _table(
         "bottle",
@@ -319,9 +325,12 @@ TRIGGERS = (
     _never("entry", "DELETE", "A ledger entry is never removed."),
     _never("booking_change", "UPDATE", "The record of a booking is never altered."),
     _never("booking_change", "DELETE", "The record of a booking is never removed."),
+    _never("row_change", "UPDATE", "The record of a correction is never altered."),
+    _never("row_change", "DELETE", "The record of a correction is never removed."),
     _never("bottle", "DELETE", "A bottle number is never used again."),
     _no_overwrite("entry"),
     _no_overwrite("booking_change"),
+    _no_overwrite("row_change"),
     "CREATE TRIGGER entry_put_right_once BEFORE INSERT ON entry"
     " WHEN EXISTS (SELECT 1 FROM entry WHERE puts_right = NEW.puts_right)"
     " BEGIN SELECT RAISE(ABORT, 'KEPT An entry is put right once.'); END",

@@ -1,0 +1,28 @@
+"""The story of one bottle, for whoever wants the number of an entry or its reason."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from pathlib import Path
+
+from stockroom.service.database import is_practice
+from stockroom.store.diary import Diary, diary_of
+
+# handed on by name: the command line may not reach into the store
+from stockroom.store.diary import Told as Told
+
+
+@dataclass(frozen=True, slots=True)
+class Story:
+    """A bottle's diary, and whether it stands in the practice store."""
+
+    diary: Diary
+    practice: bool
+
+
+def story(path: Path, bottle: str) -> Story:
+    """Everything ever entered for a bottle, slips and their putting-right included.
+
+    Raises: UnknownName with the nearest three numbers; StoreTrouble.
+    """
+    return Story(diary_of(path, bottle), is_practice(path))
