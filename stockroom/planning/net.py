@@ -46,9 +46,31 @@ def net(facts: Facts, needs: tuple[Need, ...]) -> Netted:
         if not new:
             settled = [*wants, *failed.values()]
             return Netted(sorted(settled, key=lambda w: w.need.rank), netting.shelf, missed)
-        for root in new:
+        for root in _to_drop(new, netting.shelf):
             failed[root.ref] = root
             missed += [part for part in root.tree() if part.to_buy]
+
+
+def _to_drop(failing: list[Want], shelf: Shelf) -> list[Want]:
+    """Those that fail whatever the others do; else, of those that only clash, the last in rank.
+
+    A need may be short only because another failing one holds its bottle: once
+    that one is dropped there is enough, so it is settled again first.
+    """
+    holders: dict[str, set[str]] = {}
+    for root in failing:
+        for want in root.tree():
+            for promise in want.promises:
+                holders.setdefault(promise.bottle, set()).add(root.ref)
+    alone = [root for root in failing if not _clashes(root, holders, shelf)]
+    return alone or [max(failing, key=lambda root: root.need.rank)]
+
+
+def _clashes(root: Want, holders: dict[str, set[str]], shelf: Shelf) -> bool:
+    """True when a bottle of a line it lacks is held for another need that fails."""
+    lacking = [w for w in root.tree() if w.settled is Settled.SHORT and not w.parts]
+    bottles = [b.number for want in lacking for key in want.choices for b in shelf.of_line(key)]
+    return any(holders.get(number, set()) - {root.ref} for number in bottles)
 
 
 def _root(facts: Facts, need: Need) -> Want:
@@ -197,6 +219,11 @@ class _Netting:
     def _cannot(self, want: Want, line: Line, method: Method) -> None:
         want.settled = Settled.SHORT
         start = latest_start(want.deadline, method, self.facts.calendar, date.min.replace(year=2))
+        if start and start[0] >= self.facts.as_at:
+            want.reasons.append(
+                f"cannot: {line.key} made on {start[0]} would not do on {want.use_day}"
+            )
+            return
         day = f"; work had to start by {start[0]}" if start else ""
         stands = f"stands {hours(method.stands_hours)}, " if method.stands_hours else ""
         want.reasons.append(
