@@ -62,7 +62,7 @@ class Drawing:
 
     def _jars(self, batch: Batch, ingredient: Ingredient, line: Line) -> list[str]:
         day, judge = batch.start[0], judge_for_dilution(line, batch.line, ingredient.per_dm3)
-        jars = self.shelf.in_order(self.shelf.of_line(line.key), day, Purpose.ANY)
+        jars = self.shelf.in_order(line.key, day, Purpose.ANY)
         fit = [b.number for b in jars if not self.shelf.unfit(b.number, day, Purpose.ANY, judge)]
         return [number for number in fit if self.shelf.left[number] > 0]
 

@@ -63,8 +63,9 @@ class Serving:
     def _good_bottles(self, want: Want, line: Line) -> Iterator[str]:
         """Bottles that will do, in the order to use them; the others are noted with why not."""
         judge = self._judge(want, line)
-        bottles = [b for b in self.shelf.of_line(line.key) if self.shelf.left[b.number] > 0]
-        for bottle in self.shelf.in_order(bottles, want.use_day, want.purpose):
+        for bottle in self.shelf.in_order(line.key, want.use_day, want.purpose):
+            if self.shelf.left[bottle.number] <= 0:
+                continue
             reason = self._barred(want, bottle) or self.shelf.unfit(
                 bottle.number, want.use_day, want.purpose, judge
             )

@@ -14,7 +14,7 @@ from datetime import date, timedelta
 from stockroom.keeping.record import CheckKind, Record
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
 from stockroom.keeping.strength import Strengths, strengths_on
-from stockroom.keeping.verdict import USABLE, Limit, Verdict, judge, limits_of
+from stockroom.keeping.verdict import USABLE, Condition, Limit, Verdict, judge, limits_of
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Bottle, Facts, Form, Line
 from stockroom.planning.numbers import Natural, natural
@@ -51,6 +51,8 @@ class Shelf:
         self._judged: dict[tuple[str, date, Purpose, date | None], Verdict] = {}
         self._limits: dict[tuple[str, Purpose, date | None], tuple[Record, list[Limit]]] = {}
         self._strengths: dict[tuple[str, date | None, date | None], Strengths] = {}
+        self._orders: dict[tuple[str, Purpose], list[Bottle]] = {}
+        self._in_use: dict[str, bool] = {}
         self._opening_matters = {
             key
             for key, line in facts.lines.items()
@@ -125,7 +127,12 @@ class Shelf:
 
     def may_be_used(self, number: str, on: date) -> bool:
         """True when it is sound, watch or weak on a day, as the plan so far opens it."""
-        return self.verdict_planned(number, on).condition in USABLE
+        if number not in self._in_use:
+            # lost, set aside, undated or gone: the same on every day from as_at on
+            condition = self.verdict(number, self.facts.as_at).condition
+            self._in_use[number] = condition in USABLE or condition is Condition.PAST
+        opened = self.opening(number)
+        return self._in_use[number] and self.usable_until(number, Purpose.ANY, opened) >= on
 
     def unfit(self, number: str, on: date, purpose: Purpose, judge: Judge) -> str:
         """Why this bottle cannot be drawn on that day for that purpose; "" when it can.
@@ -187,20 +194,24 @@ class Shelf:
             return False
         return after < max(TOO_CLOSE_UL, TOO_CLOSE_PART * bottle.left)
 
-    def in_order(self, bottles: list[Bottle], on: date, purpose: Purpose) -> list[Bottle]:
-        """Bottles in the order to use them: going past soonest, then open ones, then number.
+    def in_order(self, key: str, on: date, purpose: Purpose) -> list[Bottle]:
+        """A line's bottles in the order to use them: going past soonest, then open ones, by number.
 
         For an exact purpose the most recently checked comes first.
         """
+        if key in self._opening_matters:
+            return self._sorted(key, on, purpose)
+        if (key, purpose) not in self._orders:
+            self._orders[key, purpose] = self._sorted(key, None, purpose)
+        return self._orders[key, purpose]
 
-        matters = any(bottle.line in self._opening_matters for bottle in bottles)
-
-        def key(bottle: Bottle) -> tuple[int, date, bool, Natural]:
+    def _sorted(self, key: str, opened: date | None, purpose: Purpose) -> list[Bottle]:
+        def rank(bottle: Bottle) -> tuple[int, date, bool, Natural]:
             recent = -_last_found(bottle) if purpose is Purpose.EXACT else 0
-            until = self.usable_until(bottle.number, purpose, on if matters else None)
+            until = self.usable_until(bottle.number, purpose, opened)
             return recent, until, self.is_sealed(bottle.number), natural(bottle.number)
 
-        return sorted(bottles, key=key)
+        return sorted(self.of_line(key), key=rank)
 
 
 def _last_found(bottle: Bottle) -> int:

@@ -30,6 +30,7 @@ def usage(facts: Facts, needs: Iterable[Need]) -> list[Use]:
     A solution bought as it is used stands under both "solution" and "bought".
     """
     totals: Totals = {}
+    bought_lines = _bought(facts)
     spare: dict[tuple[str, str, str], int] = {}
     for need in needs:
         asked = need.requirement.strength_text or need.line.strength_text
@@ -38,10 +39,10 @@ def usage(facts: Facts, needs: Iterable[Need]) -> list[Use]:
         _add(totals, key, need.booking.number, need.amount)
         plain = amount_needed(need.requirement, need.booking.groups, 0)
         spare[key] = spare.get(key, 0) + need.amount - plain
-        if form == SOLUTION and _bought(facts, need.line):
+        if form == SOLUTION and need.line.key in bought_lines:
             bought = (BOUGHT, need.line.key, need.line.strength_text)
             _add(totals, bought, need.booking.number, need.amount)
-        _explode_into(facts, totals, need, need.line, need.amount)
+        _explode_into(facts, totals, bought_lines, need, need.line, need.amount)
     order = {SOLUTION: 0, STOCK: 1, BOUGHT: 2}
     keys = sorted(totals, key=lambda key: (order[key[0]], *key[1:]))
     return [_use(facts.lines[key[1]], key, totals[key], spare.get(key, 0)) for key in keys]
@@ -56,20 +57,22 @@ def drawn_so_far(facts: Facts, drawn: Iterable[Drawn]) -> list[Use]:
     return [_use(facts.lines[key[1]], key, by, 0) for key, by in sorted(totals.items())]
 
 
-def _bought(facts: Facts, line: Line) -> bool:
-    return line.key not in facts.methods and not any(
-        bottle.made_here for bottle in facts.bottles if bottle.line == line.key
-    )
+def _bought(facts: Facts) -> set[str]:
+    """The lines that come in bottles: without a method, and none of them made here."""
+    made_here = {bottle.line for bottle in facts.bottles if bottle.made_here}
+    return facts.lines.keys() - facts.methods.keys() - made_here
 
 
-def _explode_into(facts: Facts, totals: Totals, need: Need, line: Line, volume: int) -> None:
+def _explode_into(
+    facts: Facts, totals: Totals, bought_lines: set[str], need: Need, line: Line, volume: int
+) -> None:
     method = facts.methods.get(line.key)
     for ingredient in method.ingredients if method else ():
         source = facts.lines[_plain_choice(ingredient)]
         amount = draw_for(source, source.strength, line, volume, ingredient.per_dm3)
-        form = BOUGHT if _bought(facts, source) else STOCK
+        form = BOUGHT if source.key in bought_lines else STOCK
         _add(totals, (form, source.key, source.strength_text), need.booking.number, amount)
-        _explode_into(facts, totals, need, source, amount)
+        _explode_into(facts, totals, bought_lines, need, source, amount)
 
 
 def _plain_choice(ingredient: Ingredient) -> str:
