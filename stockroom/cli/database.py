@@ -7,7 +7,7 @@ from typing import Annotated
 
 import typer
 
-from stockroom.cli.printing import show, show_done, suggest, width
+from stockroom.cli.printing import show, show_done, suggest, tell, width
 from stockroom.cli.shared import Shared, of
 from stockroom.errors import BadInput
 
@@ -25,9 +25,11 @@ def demo(ctx: typer.Context) -> None:
 
     shared = of(ctx)
     path = practice_store(shared.store)
-    make_practice(path)
+    kept = make_practice(path)
     answer = term_plan(path, as_at=day_for(path, shared.given_day))
     show(shared, lambda: plan_text(answer, width()), lambda: plan_json(answer))
+    if kept is not None:
+        tell(f"The earlier practice store is kept as {kept}.")
     # a house of one's own is opened before the practice one, so then the place must be said
     named = "" if Shared().path == path else f"--store {path} "
     suggest(f"stockroom {named}why K15")

@@ -35,7 +35,12 @@ def show_done(shared: Shared, done: Done) -> None:
 def suggest(command: str) -> None:
     """Say on standard error which command to try next; nothing for an empty one."""
     if command:
-        print(f"next: {command}", file=sys.stderr)
+        tell(f"next: {command}")
+
+
+def tell(line: str) -> None:
+    """Say on standard error what is worth knowing and is no part of the answer."""
+    print(line, file=sys.stderr)
 
 
 def _done_text(done: Done) -> str:

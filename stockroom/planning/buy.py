@@ -128,8 +128,8 @@ def _in_time(facts: Facts, line: Line, course: Course) -> tuple[Pack, ...]:
 def order_by_day(facts: Facts, take: Taken, lead: int) -> date:
     """The last open day to order on: need day, less the margin, less the lead time."""
     calendar = facts.calendar
-    margin = max(facts.house.margin_days, calendar.between(take.start, take.need.on))
-    return calendar.before(calendar.before(take.need.on, margin), lead)
+    in_hand = calendar.before(take.need.on, facts.house.margin_days)
+    return calendar.before(min(in_hand, calendar.on_or_before(take.start)), lead)
 
 
 def choose_packs(packs: tuple[Pack, ...], wanted: int) -> tuple[Pack, int]:

@@ -27,12 +27,27 @@ _OUTCOMES = {
 }
 
 
-def outcome_of(want: Want) -> Outcome:
+def outcome_of(want: Want, batch: Batch | None = None) -> Outcome:
     """What becomes of a need: a make that waits for something to be bought is a buy."""
     if want.settled is Settled.MAKE:
-        waits = any(part.to_buy for part in want.tree())
+        waits = any(part.to_buy for part in want.tree()) or (batch is not None and _waits(batch))
         return Outcome.BUY if waits else Outcome.MAKE
     return _OUTCOMES[want.settled]
+
+
+def _waits(batch: Batch) -> bool:
+    return bool(lines_to_buy(batch))
+
+
+def lines_to_buy(batch: Batch) -> list[str]:
+    """The lines a batch, or one it is made from, still has to be bought of, in order."""
+    lines: list[str] = []
+    for source in batch.sources:
+        if source.batch:
+            lines += lines_to_buy(source.batch)
+        elif not source.bottle:
+            lines.append(source.line.key)
+    return lines
 
 
 def answers(
@@ -51,7 +66,7 @@ def _number(ref: str) -> tuple[Natural, int]:
 
 def _answer(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> Answer:
     need = want.need
-    outcome = outcome_of(want)
+    outcome = outcome_of(want, batch)
     draws = [Draw(d.amount, need.line.kind, bottle=d.bottle, line=d.line) for d in need.drawn]
     if outcome in (Outcome.SHORT, Outcome.REFUSED):
         batch = None
@@ -72,6 +87,7 @@ def _answer(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> Answ
         closeness=need.requirement.closeness,
         fresh=need.requirement.fresh,
         reasons=tuple(_reasons(facts, want, batch, shelf)),
+        waits_for=tuple(dict.fromkeys(part.line for part in want.tree() if part.to_buy)),
     )
 
 

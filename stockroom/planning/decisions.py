@@ -44,7 +44,10 @@ class Draw:
 
 @dataclass(frozen=True, slots=True)
 class Answer:
-    """One need and what becomes of it. `ref` is the booking and line number, "K08.2"."""
+    """One need and what becomes of it. `ref` is the booking and line number, "K08.2".
+
+    `waits_for` names the lines whose lack leaves it short.
+    """
 
     ref: str
     booking: Booking
@@ -61,6 +64,7 @@ class Answer:
     closeness: str = ""
     fresh: bool = False
     reasons: tuple[str, ...] = ()
+    waits_for: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

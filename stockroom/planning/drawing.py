@@ -16,29 +16,32 @@ class Drawing:
     """Draws for batches on a shelf, and keeps account of what bought lines give.
 
     `taken` is what each need takes of each bought line; `waiting` holds, by
-    want, the sources that a batch still to be dated will fill. `outgrown` tells
-    that rounding batches up asked for more than there is anywhere in a chain.
+    want, the sources that a batch still to be dated will fill; `outgrown` the
+    lines whose batches, made bigger than needed, ask for more than there is.
     """
 
     def __init__(self, facts: Facts, shelf: Shelf) -> None:
         self.facts, self.shelf = facts, shelf
         self.taken: list[Taken] = []
         self.waiting: dict[int, Source] = {}
-        self.outgrown = False
+        self.outgrown: set[str] = set()
 
     def settle(self, batch: Batch) -> None:
         """Give the batch its sources: what its parts were promised, drawn again as one."""
-        by_ingredient: dict[Ingredient, list[Want]] = {}
+        groups: dict[tuple[Ingredient, str, bool], list[Want]] = {}
         for want in batch.wants:
             for part in want.parts:
                 assert part.ingredient is not None
-                by_ingredient.setdefault(part.ingredient, []).append(part)
-        for ingredient, parts in by_ingredient.items():
-            self._no_more_than_held(batch, ingredient, parts)
-        for ingredient, parts in by_ingredient.items():
-            self._draw(batch, ingredient, parts)
+                key = (part.ingredient, part.line, part.settled is Settled.MAKE)
+                groups.setdefault(key, []).append(part)
+        for (ingredient, _, _), parts in groups.items():
+            self._no_more_than_held(batch, ingredient, parts, share_of(batch, parts))
+        for (ingredient, _, _), parts in groups.items():
+            self._draw(batch, ingredient, parts, share_of(batch, parts))
 
-    def _no_more_than_held(self, batch: Batch, ingredient: Ingredient, parts: list[Want]) -> None:
+    def _no_more_than_held(
+        self, batch: Batch, ingredient: Ingredient, parts: list[Want], share: float
+    ) -> None:
         """Making more than is needed stops at what the bottles of an ingredient hold."""
         line = self.facts.lines[parts[0].line]
         promises = [promise for part in parts for promise in part.promises]
@@ -51,7 +54,7 @@ class Drawing:
         held += sum(promise.amount for promise in promises)
         strength = solute_held(self.shelf, line, promises[0].bottle, batch.start[0])
         wanted = draw_for(line, strength, batch.line, batch.volume, ingredient.per_dm3)
-        if wanted > held:
+        if round(wanted * share) > held:
             exact = batch.run.needed
             if batch.forced:
                 batch.reasons.append(
@@ -66,11 +69,11 @@ class Drawing:
         fit = [b.number for b in jars if not self.shelf.unfit(b.number, day, Purpose.ANY, judge)]
         return [number for number in fit if self.shelf.left[number] > 0]
 
-    def _draw(self, batch: Batch, ingredient: Ingredient, parts: list[Want]) -> None:
+    def _draw(self, batch: Batch, ingredient: Ingredient, parts: list[Want], share: float) -> None:
         line = self.facts.lines[parts[0].line]
         if parts[0].settled is Settled.MAKE:
             amount = draw_for(line, line.strength, batch.line, batch.volume, ingredient.per_dm3)
-            source = Source(line, amount, strength=line.strength)
+            source = Source(line, round(amount * share), strength=line.strength)
             batch.sources.append(source)
             self.waiting.update({id(part): source for part in parts})
             return
@@ -79,7 +82,7 @@ class Drawing:
             for promise in part.promises:
                 self.shelf.release(promise)
         unique, to_buy = list(dict.fromkeys(numbers)), any(part.to_buy for part in parts)
-        sources = self._from_bottles(batch, ingredient, line, unique, to_buy)
+        sources = self._from_bottles(batch, ingredient, line, unique, share, to_buy)
         batch.sources += sources
         if line.key not in self.facts.methods:
             self._note_taken(batch, line, parts, sources)
@@ -90,14 +93,15 @@ class Drawing:
         ingredient: Ingredient,
         line: Line,
         numbers: list[str],
+        share: float,
         to_buy: bool,
     ) -> list[Source]:
-        """Draw the whole batch's share again: the promised bottles first, then other jars."""
+        """Draw this share of an ingredient again: the promised bottles first, then other jars."""
         day, judge = batch.start[0], judge_for_dilution(line, batch.line, ingredient.per_dm3)
         if line.form is Form.SOLID:
             jars = self._jars(batch, ingredient, line)
             numbers += [number for number in jars if number not in numbers]
-        share_left, sources = 1.0, []
+        share_left, sources = share, []
         for number in numbers:
             held = solute_held(self.shelf, line, number, day)
             whole = draw_for(line, held, batch.line, batch.volume, ingredient.per_dm3)
@@ -111,7 +115,7 @@ class Drawing:
         missing = round(whole * share_left)
         # a share under a millionth is the rounding of whole micro-units, nothing to buy
         if missing > 0 and share_left > 1e-6:
-            self.outgrown |= not to_buy
+            self.outgrown |= set() if to_buy else _chain(batch)
             sources.append(Source(line, missing, strength=line.strength))
         return sources
 
@@ -135,3 +139,28 @@ class Drawing:
                 to_buy=round(over_bought * share),
             )
             self.taken.append(taken)
+
+
+def _chain(batch: Batch) -> set[str]:
+    """The line of a batch and every line made from it for the same needs."""
+    lines: set[str] = set()
+    for want in batch.wants:
+        above: Want | None = want
+        while above is not None:
+            lines.add(above.line)
+            above = above.under
+    return lines
+
+
+def share_of(batch: Batch, parts: list[Want]) -> float:
+    """How much of an ingredient of a batch these parts are, 0 to 1: all, unless some are
+    held and others made.
+    """
+    every = [p for w in batch.wants for p in w.parts if p.ingredient == parts[0].ingredient]
+    if len(parts) == len(every):
+        return 1.0
+    return _basis(parts) / _basis(every)
+
+
+def _basis(parts: list[Want]) -> float:
+    return sum(p.solute if p.solute is not None else float(p.amount or 0) for p in parts) or 1.0

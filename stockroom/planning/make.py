@@ -13,7 +13,7 @@ from dataclasses import dataclass
 from stockroom.planning.amounts import draw_for
 from stockroom.planning.batch import Batch, Taken, taken_for
 from stockroom.planning.batches import Item, Run, cut
-from stockroom.planning.drawing import Drawing
+from stockroom.planning.drawing import Drawing, share_of
 from stockroom.planning.facts import Facts, Form, Ingredient, Line, Method
 from stockroom.planning.order_of_lines import settling_order
 from stockroom.planning.shelf import Shelf
@@ -27,22 +27,29 @@ from stockroom.planning.windows import earliest_start
 class Made:
     """All batches in the order of their days, and what each need takes of bought lines.
 
-    `outgrown`: rounding up asked for more than there is; exact batches would not.
+    `outgrown`: lines whose batches, bigger than needed, ask for more than there is.
     """
 
     batches: list[Batch]
     taken: list[Taken]
-    outgrown: bool = False
+    outgrown: frozenset[str] = frozenset()
 
 
-def make_up(facts: Facts, wants: list[Want], shelf: Shelf) -> Made:
-    """Turn every want to be made into batches with days, volumes and sources."""
-    return _Making(facts, wants, shelf).run()
+def make_up(
+    facts: Facts, wants: list[Want], shelf: Shelf, exact: frozenset[str] = frozenset()
+) -> Made:
+    """Turn every want to be made into batches with days, volumes and sources.
+
+    Lines in `exact` are made to the exact need, no more.
+    """
+    return _Making(facts, wants, shelf, exact).run()
 
 
 class _Making:
-    def __init__(self, facts: Facts, wants: list[Want], shelf: Shelf) -> None:
-        self.facts = facts
+    def __init__(
+        self, facts: Facts, wants: list[Want], shelf: Shelf, exact: frozenset[str]
+    ) -> None:
+        self.facts, self.exact = facts, exact
         self.drawing = Drawing(facts, shelf)
         self.batch_of: dict[int, Batch] = {}
         self.batches: list[Batch] = []
@@ -69,7 +76,7 @@ class _Making:
         self.batches.sort(key=lambda b: (b.start, b.line.key, b.needs[0].rank))
         for number, batch in enumerate(self.batches, 1):
             batch.id = f"M{number:02d}"
-        return Made(self.batches, self.drawing.taken, self.drawing.outgrown)
+        return Made(self.batches, self.drawing.taken, frozenset(self.drawing.outgrown))
 
     def _signature(self, want: Want) -> tuple[object, ...]:
         """What it is made from: only wants made from the same things share a batch.
@@ -79,8 +86,8 @@ class _Making:
         """
         if want.under is not None:
             batch = self.batch_of[id(want.under)]
-            first = next(part for w in batch.wants for part in w.parts if part.line == want.line)
-            want = first if first.settled is Settled.MAKE else want
+            alike = (p for w in batch.wants for p in w.parts if p.ingredient == want.ingredient)
+            want = next(p for p in alike if (p.line, p.settled) == (want.line, want.settled))
         parts = []
         for part in want.parts:
             solid = self.facts.lines[part.line].form is Form.SOLID
@@ -90,7 +97,7 @@ class _Making:
 
     def _make_line(self, line: Line, wants: list[Want]) -> None:
         method = self.facts.methods[line.key]
-        sizing = Sizing(self.facts, line, method)
+        sizing = Sizing(self.facts, line, method, exact=line.key in self.exact)
         items = self._items(line, method, wants)
         for run in cut(items, most=sizing.most, cost_of=sizing.cost):
             self.drawing.settle(self._batch(line, method, run, sizing))
@@ -123,7 +130,8 @@ class _Making:
     def _item_for_batch(self, line: Line, method: Method, batch: Batch, wants: list[Want]) -> Item:
         ingredient = wants[0].ingredient
         assert ingredient is not None
-        volume = draw_for(line, line.strength, batch.line, batch.volume, ingredient.per_dm3)
+        whole = draw_for(line, line.strength, batch.line, batch.volume, ingredient.per_dm3)
+        volume = round(whole * share_of(batch, wants))
         latest = latest_start(batch.start, method, self.facts.calendar, self.facts.as_at)
         assert latest is not None, f"{line.key} cannot be ready for {batch.line.key}"
         first = earliest_start(self.facts, line, None, batch.start[0], latest[0])

@@ -48,7 +48,7 @@ def net(facts: Facts, needs: tuple[Need, ...]) -> Netted:
             return Netted(sorted(settled, key=lambda w: w.need.rank), netting.shelf, missed)
         for root in _to_drop(new, netting.shelf):
             failed[root.ref] = root
-            missed += [part for part in root.tree() if part.to_buy]
+            missed += [w for w in root.tree() if w.to_buy and w.settled is Settled.SHORT]
 
 
 def _to_drop(failing: list[Want], shelf: Shelf) -> list[Want]:
@@ -255,14 +255,15 @@ class _Netting:
         if line.form is Form.SUNDRY:
             want.settled, want.available = Settled.SHOP, self.facts.as_at
             return
+        if not self._can_be_bought(line.key):
+            want.settled = Settled.SHORT
+            want.reasons.append(_not_made_not_sold(want, line))
+            return
         whole = self.serving.amount_from(want, line)
         self.serving.rest_of_jars(want, line)
         want.to_buy = whole - sum(promise.amount for promise in want.promises)
         arrives = self.arrival(line)
-        if not self._can_be_bought(line.key):
-            want.settled = Settled.SHORT
-            want.reasons.append(_not_made_not_sold(want, line))
-        elif arrives <= want.deadline[0]:
+        if arrives <= want.deadline[0]:
             want.settled, want.available = Settled.BUY, arrives
             want.reasons.append(f"{say(want.to_buy, line.kind)} of {line.key} to be bought")
         else:

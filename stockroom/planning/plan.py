@@ -5,10 +5,11 @@ from __future__ import annotations
 from dataclasses import replace
 from datetime import date
 
+from stockroom.planning.batch import Batch
 from stockroom.planning.buy import courses, levels, orders
 from stockroom.planning.checks import checks
-from stockroom.planning.decide import answers, makes, shorts
-from stockroom.planning.decisions import Answer, Order, Plan, Use
+from stockroom.planning.decide import answers, lines_to_buy, makes, shorts
+from stockroom.planning.decisions import Answer, Order, Outcome, Plan, Use
 from stockroom.planning.explode import Need, explode, standing
 from stockroom.planning.facts import Drawn, Facts, Firmness
 from stockroom.planning.make import Made, make_up
@@ -16,7 +17,6 @@ from stockroom.planning.net import Netted, net
 from stockroom.planning.notes import notes
 from stockroom.planning.tell import guesses, past_on
 from stockroom.planning.usage import drawn_so_far, usage
-from stockroom.planning.wants import Settled, Want
 
 
 def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
@@ -38,7 +38,7 @@ def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
         start=facts.start,
         end=facts.end,
         house=facts.house,
-        needs=_with_orders(answers(facts, netted.wants, batches, shelf), netted.wants, buying),
+        needs=tuple(_with_orders(answers(facts, netted.wants, batches, shelf), batches, buying)),
         makes=tuple(making),
         past=tuple(past_on(facts, netted.wants, past_day or facts.as_at)),
         usage=tuple(usage_of_period(facts)),
@@ -54,12 +54,14 @@ def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
 
 
 def _settled(facts: Facts, needs: tuple[Need, ...]) -> tuple[Netted, Made]:
-    """Netted and made up; to the exact need where rounding up asks for more than there is."""
-    netted = net(facts, needs)
-    made = make_up(facts, netted.wants, netted.shelf)
-    if made.outgrown and facts.house.batch_step > 1:
-        return _settled(replace(facts, house=replace(facts.house, batch_step=1)), needs)
-    return netted, made
+    """Netted and made up; to the exact need where anything more asks for more than there is."""
+    exact: frozenset[str] = frozenset()
+    while True:
+        netted = net(facts, needs)
+        made = make_up(facts, netted.wants, netted.shelf, exact)
+        if made.outgrown <= exact:
+            return netted, made
+        exact |= made.outgrown
 
 
 def usage_of_period(facts: Facts) -> list[Use]:
@@ -69,15 +71,19 @@ def usage_of_period(facts: Facts) -> list[Use]:
     return usage(facts, explode(facts, wanted))
 
 
-def _with_orders(row: list[Answer], wants: list[Want], buying: list[Order]) -> tuple[Answer, ...]:
+def _with_orders(row: list[Answer], batches: list[Batch], buying: list[Order]) -> list[Answer]:
+    """Each need that waits for an order given the order's number: the first it waits for."""
     by_line = {order.line: order.id for order in buying}
-    waits = {
-        want.ref: by_line[part.line]
-        for want in wants
-        for part in want.tree()
-        if part.to_buy and part.line in by_line and want.settled is not Settled.REFUSED
-    }
-    return tuple(replace(answer, order=waits.get(answer.ref, "")) for answer in row)
+    bought = {batch.id: lines_to_buy(batch) for batch in batches}
+    answers = []
+    for answer in row:
+        waiting = [answer.line, *bought.get(answer.make, ())]
+        if answer.outcome is Outcome.SHORT:
+            waiting += answer.waits_for
+        orders = [by_line[key] for key in waiting if key in by_line]
+        waits = answer.outcome in (Outcome.BUY, Outcome.SHORT)
+        answers.append(replace(answer, order=orders[0]) if waits and orders else answer)
+    return answers
 
 
 def _in_period(facts: Facts) -> list[Drawn]:

@@ -18,10 +18,13 @@ _MICROGRAMS = PER_UNIT[Kind.MASS]
 
 
 class Sizing:
-    """The sizes of batches of one line by its method. Volumes in µL."""
+    """The sizes of batches of one line by its method. Volumes in µL.
 
-    def __init__(self, facts: Facts, line: Line, method: Method) -> None:
-        self.facts, self.line, self.method = facts, line, method
+    `exact` makes no more than is needed, whatever the house's steps and least batches.
+    """
+
+    def __init__(self, facts: Facts, line: Line, method: Method, *, exact: bool = False) -> None:
+        self.facts, self.line, self.method, self.exact = facts, line, method, exact
         sizes = (line.largest_batch, facts.house.largest_vessel)
         self.most = min((size for size in sizes if size), default=None)
 
@@ -39,6 +42,8 @@ class Sizing:
 
     def volume(self, run: Run) -> tuple[int, int, list[str]]:
         """Real volume, the part of it a rule forced on us, and why."""
+        if self.exact:
+            return run.needed, 0, ["made to the exact need: there is no more to make it from"]
         step = max(1, self.facts.house.batch_step)
         exact = -(-run.needed // step) * step
         volume, reasons = exact, []

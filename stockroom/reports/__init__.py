@@ -1,7 +1,7 @@
 """Reports: decisions turned to words, tables and JSON.
 
 Lives here: one file per thing people read (`plan_text`, `makes_text`,
-`past_text`, `usage_text`, `buying_text`, `ready_text`), `json_plan` for the
+`past_text`, `usage_text`, `buying_text`, `ready_text`, `diary_text`), `json_plan` for the
 same answers as data, `words` for days, amounts and marks, `sheet` for the
 headings, wrapping and foot they all share.
 May import: planning, keeping, safety, chemistry, measure, errors, findings.

@@ -5,10 +5,13 @@ from __future__ import annotations
 from datetime import date
 from pathlib import Path
 
-from stockroom.errors import BadAmount, BadInput, NotAllowed
+from stockroom.errors import BadInput, NotAllowed, StockroomError
 from stockroom.keeping.rules import RuleKind
 from stockroom.measure.days import spell_day
 from stockroom.measure.strengths import Strength
+from stockroom.planning.decisions import Draw
+from stockroom.planning.derive import with_derived
+from stockroom.planning.plan import plan
 from stockroom.service.answers import Done
 from stockroom.service.work import Work, check_at_hand, unsettled, working
 from stockroom.store.history import children, rule_kinds
@@ -16,7 +19,8 @@ from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event
 from stockroom.store.names import substance_of
 from stockroom.store.printed import check_reading
-from stockroom.store.rows_lines import check_has_strength, in_own_unit
+from stockroom.store.rows_lines import check_has_strength, number_beside
+from stockroom.store.snapshot import facts_from
 from stockroom.store.tables import Bottle, Line
 
 UNUSUAL = 0.25
@@ -43,14 +47,7 @@ def found(
         check_at_hand(work, checked)
         line = work.line(checked)
         check_has_strength(line, checked.number)
-        value, unit = in_own_unit(
-            strength, substance_of(work.session, line), line.density, line.unit
-        )
-        # set beside another unit it would be read as a strength it is not
-        if value is None or unit != line.unit:
-            raise BadAmount(
-                f'"{strength.text}" cannot be set beside {line.key}.', f"Give it in {line.unit}."
-            )
+        value = number_beside(strength, substance_of(work.session, line), line)
         _check_usual(line, strength, value, sure=sure)
         event = Event(EntryKind.FOUND, strength=value, strength_text=strength.text)
         entry = work.write(checked, event)
@@ -183,17 +180,19 @@ def printed(
 def lost(path: Path, bottle: str, *, note: str = "", on: date | None, today: date, by: str) -> Done:
     """Say that a bottle cannot be found: it leaves the plan, and its last place is shown.
 
+    The bookings the plan would have drawn on it for are named.
     Raises: NotAllowed when it is missing already, or gone.
     """
     with working(path, on=on, today=today, by=by) as work:
         missed = work.bottle(bottle)
         # asked before the entry: afterwards the bottle is no longer at hand
         place = check_at_hand(work, missed).place
+        hit = _drawn_on_for(work, missed)
         entry = work.write(missed, Event(EntryKind.LOST, reason=note))
         last = f"; it last stood at {place}" if place else ""
         text = f"Not found: {work.called(missed)}{last}."
         following = f"stockroom turned-up {missed.number} --place …"
-        return work.done(text, missed, entry, following=following)
+        return work.done(text, missed, entry, following=following, details=hit)
 
 
 def turned_up(
@@ -227,7 +226,7 @@ def turned_up(
 
 
 def spoil(path: Path, bottle: str, reason: str, *, on: date | None, today: date, by: str) -> Done:
-    """Set a bottle aside at once, and list what was made from it.
+    """Set a bottle aside at once; list what was made from it and the bookings that lean on it.
 
     Raises: BadInput without a reason; NotAllowed when it is gone or not found.
     """
@@ -236,10 +235,31 @@ def spoil(path: Path, bottle: str, reason: str, *, on: date | None, today: date,
     with working(path, on=on, today=today, by=by) as work:
         spoiled = work.bottle(bottle)
         check_at_hand(work, spoiled)
+        hit = _drawn_on_for(work, spoiled)
         entry = work.write(spoiled, Event(EntryKind.SET_ASIDE, reason=reason.strip()))
         text = f"Set aside {work.called(spoiled)}: {reason.strip()}."
-        return work.done(text, spoiled, entry, details=_made_from(work, spoiled))
+        return work.done(text, spoiled, entry, details=(*_made_from(work, spoiled), *hit))
 
 
 def _made_from(work: Work, bottle: Bottle) -> tuple[str, ...]:
     return tuple(f"Made from it: {work.called(child)}." for child in children(work.session, bottle))
+
+
+def _drawn_on_for(work: Work, bottle: Bottle) -> tuple[str, ...]:
+    """One line naming the bookings the plan draws on the bottle for; asked before it leaves it."""
+    # from the day of entry and not the day it happened: what is over can no longer be helped
+    try:
+        known = with_derived(facts_from(work.reader, work.stamp.entered_on))
+        whole = plan(known)
+    except StockroomError as error:
+        # a spoiled bottle must be set aside whatever else is wrong in the house
+        return (f"Which bookings it was for is not known, as no plan can be made: {error.message}",)
+    hit = {need.booking.number for need in whole.needs if _drawn_on(bottle, need.draws)}
+    hit |= {one for make in whole.makes if _drawn_on(bottle, make.sources) for one in make.bookings}
+    # in the order of the bookings, which is by day and number
+    listed = ", ".join(booking.number for booking in known.bookings if booking.number in hit)
+    return (f"Drawn on by the plan for {listed}: stockroom plan",) if listed else ()
+
+
+def _drawn_on(bottle: Bottle, draws: tuple[Draw, ...]) -> bool:
+    return any(draw.bottle == bottle.number for draw in draws)

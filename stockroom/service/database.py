@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 from dataclasses import replace
 from datetime import date
 from pathlib import Path
@@ -28,26 +29,55 @@ def seeds_folder() -> Path:
     return inside if inside.is_dir() else package.parent / "seeds_data"
 
 
-def make_practice(path: Path) -> None:
+def make_practice(path: Path) -> Path | None:
     """Make the invented college at `path`; an earlier practice store there is renamed.
 
+    Gives the earlier one's new place, None when there was none.
     Raises: StoreTrouble when what stands there is a house of one's own.
     """
-    if path.exists():
-        _put_by(path)
+    kept = _put_by(path) if path.exists() else None
     new_store(path, tables=seeds_folder() / "college")
+    return kept
 
 
-def _put_by(path: Path) -> None:
+def _put_by(path: Path) -> Path:
     if not is_practice(path):
         raise StoreTrouble(
             f"{path} is a house of one's own, not a practice store; it was left alone.",
             "Give the practice store another place with --store PATH.",
         )
-    # one is kept: somebody may have tried things in it worth looking at again
-    path.replace(path.with_suffix(".old.sqlite"))
-    for leftover in (Path(f"{path}-wal"), Path(f"{path}-shm")):
-        leftover.unlink(missing_ok=True)
+    try:
+        # kept: somebody may have tried things in it worth looking at again
+        kept = _free_place(path)
+        # the journal goes along, and first: it may hold entries the file does not have yet
+        for end in ("-wal", ""):
+            if Path(f"{path}{end}").exists():
+                Path(f"{path}{end}").replace(f"{kept}{end}")
+        Path(f"{path}-shm").unlink(missing_ok=True)
+    except OSError as error:
+        raise StoreTrouble(
+            f"{path} cannot be put by: {error.strerror}.", "Choose another --store PATH."
+        ) from error
+    return kept
+
+
+def _free_place(path: Path) -> Path:
+    """A name beside `path` that nothing has yet, held by an empty file."""
+    later = (f".old-{count}.sqlite" for count in itertools.count(2))
+    places = map(path.with_suffix, itertools.chain([".old.sqlite"], later))
+    return next(place for place in places if _held(place))
+
+
+def _held(place: Path) -> bool:
+    # another store's journal would be read as this one's
+    if Path(f"{place}-wal").exists():
+        return False
+    try:
+        # made and not asked for: between the question and the move somebody may take it
+        place.touch(exist_ok=False)
+    except FileExistsError:
+        return False
+    return True
 
 
 def new_store(path: Path, *, tables: Path | None = None) -> Done:
@@ -76,12 +106,16 @@ def add_row(path: Path, table: str, values: dict[str, str], *, by: str) -> Done:
     Raises: UnknownName for a table or column that is not there; BadInput naming the column.
     """
     from stockroom.store import seeding
-    from stockroom.store.engine import writing
+    from stockroom.store.engine import reader_in, writing
+    from stockroom.store.snapshot import calendar_of
 
     with writing(path) as session:
         seeding.add_row(_desk(session, by), table, values)
         if table in _MAKES_METHODS:
             _check_methods(session)
+        if table == "house":
+            # one new hour beside the usual other one can run backwards, and stop every plan
+            calendar_of(reader_in(session))
     # the first cell names the row in every table, so it is enough to tell it by
     first = next(iter(values.values()), "")
     return Done(f"Added to {table}: {first}.", practice=is_practice(path))

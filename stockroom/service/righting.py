@@ -49,6 +49,26 @@ def check_nothing_leans(work: Work, bottle: Bottle, wrong: Entry) -> None:
         )
 
 
+def check_nothing_later(work: Work, bottle: Bottle) -> None:
+    """Pass unless the bottle was still there on a later day. Raises: NotAllowed, naming the entry.
+
+    Being missed later is no sign of it: what was thrown away is missed.
+    """
+    later = [
+        entry
+        for entry in entries_of(work.session, bottle)
+        if entry.happened_on > work.on and entry.kind != EntryKind.LOST
+    ]
+    if later:
+        # the last of them: a day after the first might still be too early
+        last = later[-1]
+        raise NotAllowed(
+            f"{bottle.number} was there after {spell_day(work.on)}: entry {last.id},"
+            f" {last.kind} {spell_day(last.happened_on)} by {last.by}.",
+            f"Give --on {last.happened_on} or later, or put entry {last.id} right first.",
+        )
+
+
 def reverse(work: Work, wrong: Entry, reason: str) -> Entry:
     """Write the entry that undoes another. Raises: NotEnough when the balance would not bear it."""
     # written today under the slip's own bottle, whoever asks: the pair must cancel there

@@ -16,8 +16,20 @@ from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_amount
 from stockroom.service.answers import Done
 from stockroom.service.arriving import date_printed, new_bottle, told_of_printed, write_openings
-from stockroom.service.righting import check_nothing_leans, reverse, standing, with_it
-from stockroom.service.taking import check_not_barred, open_if_sealed, opening_of, take
+from stockroom.service.righting import (
+    check_nothing_later,
+    check_nothing_leans,
+    reverse,
+    standing,
+    with_it,
+)
+from stockroom.service.taking import (
+    check_not_barred,
+    open_if_sealed,
+    opening_of,
+    still_standing,
+    take,
+)
 from stockroom.service.work import (
     Work,
     check_amount,
@@ -115,16 +127,18 @@ def draw(
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_amount(work.line(found), amount)
-        check_in_use(work, found)
+        seen = check_in_use(work, found)
         # found before anything is written: a draw for a booking nobody knows is refused whole
         served = names.find_booking(work.session, booking) if booking else None
         if served is not None:
             check_not_barred(work, found, served)
         number = served.number if served else ""
         # judged before the draw, which may open a sealed bottle
-        doubtful = doubts(work, found)
-        entry = take(work, found, Event(EntryKind.DRAWN, change=-amount.micro, booking=number))
-        details = (*open_if_sealed(work, found, entry), *doubtful)
+        doubtful, stands = doubts(work, found), still_standing(work, seen)
+        event = Event(EntryKind.DRAWN, change=-amount.micro, booking=number, note=stands)
+        entry = take(work, found, event)
+        noted = (f"{stands}: noted",) if stands else ()
+        details = (*open_if_sealed(work, found, entry), *doubtful, *noted)
         text = f"Drew {format_amount(amount)} from {work.called(found)}; {_remains(work, found)}."
         return work.done(text, found, entry, details=details)
 
@@ -229,7 +243,8 @@ def discard(
 ) -> Done:
     """Throw a bottle away: it is gone, its number and its history stay.
 
-    Raises: BadInput unless it is said how and why; NotAllowed when it is gone already.
+    Raises: BadInput unless it is said how and why; NotAllowed when it is gone already,
+    or has an entry of a later day, which is named.
     """
     for name, said in (("How", how), ("Why", why)):
         if not said.strip():
@@ -237,6 +252,7 @@ def discard(
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_at_hand(work, found)
+        check_nothing_later(work, found)
         # what is left goes with it, or a bottle that is gone would still hold something
         held = left(work.session, found)
         event = Event(EntryKind.DISCARDED, change=-held, reason=why.strip(), note=how.strip())

@@ -2,13 +2,16 @@
 
 from __future__ import annotations
 
+from datetime import timedelta
+
 from stockroom.errors import NotAllowed, NotEnough
 from stockroom.measure.days import spell_day
+from stockroom.planning import facts
 from stockroom.service.work import Work
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, entries_of, opened_note
 from stockroom.store.names import substance_of
-from stockroom.store.snapshot_lines import recipes_of
+from stockroom.store.snapshot_lines import methods_of, recipes_of
 from stockroom.store.tables import Booking, Bottle, Entry, Recipe
 
 
@@ -43,12 +46,39 @@ def opening_of(work: Work, bottle: Bottle) -> Entry | None:
 
 
 def open_if_sealed(work: Work, bottle: Bottle, drawn: Entry) -> tuple[str, ...]:
-    """Write the opening that a draw from a sealed bought bottle implies, and say so."""
+    """Write the opening that a draw from a sealed bought bottle implies, and say so.
+
+    Says so too when the bottle's opening is dated after the draw.
+    """
     # what is made here is never sealed
-    if bottle.made_here or opening_of(work, bottle) is not None:
+    if bottle.made_here:
         return ()
+    opening = opening_of(work, bottle)
+    if opening is not None:
+        return _opened_later(bottle, opening, drawn)
     work.write(bottle, Event(EntryKind.OPENED, note=opened_note(drawn.id)))
     return (f"{bottle.number} was sealed: opened {spell_day(work.on)}.",)
+
+
+def _opened_later(bottle: Bottle, opening: Entry, drawn: Entry) -> tuple[str, ...]:
+    if opening.happened_on <= drawn.happened_on:
+        return ()
+    # not mended here: the draw's day may be the slip, and the first opening is kept
+    opened = spell_day(opening.happened_on)
+    return (
+        f"{bottle.number} drawn before it was opened on {opened}: put the opening right"
+        f" (entry {opening.id}), or the draw (entry {drawn.id}).",
+    )
+
+
+def still_standing(work: Work, bottle: facts.Bottle) -> str:
+    """Until when the bottle has yet to stand, in words; "" when it has stood long enough."""
+    method = methods_of(work.reader).get(bottle.line)
+    if method is None or bottle.record.made is None or not bottle.made_here:
+        return ""
+    # in whole days, as the plan counts them: under half a day does not count
+    ready = bottle.record.made + timedelta(days=round(method.stands_hours / 24))
+    return f"still standing until {spell_day(ready)}" if work.on < ready else ""
 
 
 def check_not_barred(work: Work, bottle: Bottle, booking: Booking) -> None:

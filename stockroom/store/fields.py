@@ -19,6 +19,14 @@ _SUFFIX = {Kind.MASS: "g", Kind.VOLUME: "cm3", Kind.ITEMS: "items"}
 _MAKE = {Kind.MASS: Amount.grams, Kind.VOLUME: Amount.cm3, Kind.ITEMS: Amount.items}
 
 
+def yes_or_no(text: str, *, where: str) -> bool:
+    """Whether a word says yes: "Yes", "y", "true", "1". Raises: BadInput when it says neither."""
+    found = text.lower()
+    if found not in _YES | _NO:
+        raise BadInput(f'{where} "{text}" is neither yes nor no.', "Write yes or no.")
+    return found in _YES
+
+
 class Fields:
     """The cells of one row by column name. Blank means not known.
 
@@ -108,10 +116,8 @@ class Fields:
 
     def flag(self, column: str, *, usual: bool = False) -> bool:
         """A yes or a no, `usual` when blank. Raises: BadInput."""
-        found = self.text(column).lower()
-        if found and found not in _YES | _NO:
-            raise BadInput(f'{column} "{found}" is neither yes nor no.', "Write yes or no.")
-        return found in _YES if found else usual
+        found = self.text(column)
+        return yes_or_no(found, where=column) if found else usual
 
     def day(self, column: str) -> date | None:
         """A day, None when blank. Raises: BadDate."""

@@ -23,7 +23,7 @@ from stockroom.store.ledger import Event, amount_of, append, left, overfull
 from stockroom.store.names import find_bottle, find_place, substance_of
 from stockroom.store.printed import check_reading
 from stockroom.store.rows_house import new_name
-from stockroom.store.rows_lines import check_has_strength, in_own_unit
+from stockroom.store.rows_lines import check_has_strength, number_beside
 from stockroom.store.tables import Bottle, Entry, Line, Parent
 
 _TAKES = (EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.LENT)
@@ -58,20 +58,20 @@ def read_bottle(desk: Desk, fields: Fields, first_seen: date | None = None) -> l
 def _bottle(desk: Desk, fields: Fields, line: Line) -> Bottle:
     number = new_name(desk, Bottle, "number", fields.need("bottle"))
     printed = _printed(fields)
-    made = fields.day("made")
+    # our numbers: S for what is made here; but a supplier's jar may be numbered S77 as well
+    made, received = fields.day("made"), fields.day("received")
     assert line.id is not None
     bottle = Bottle(
         number=number,
         line_id=line.id,
         size=fields.amount("size", Kind(line.kind)) or 0,
-        received_on=fields.day("received"),
+        received_on=received,
         made_on=made,
         printed_text=printed.text if printed else "",
         printed_readings=";".join(day.isoformat() for day in printed.readings) if printed else "",
         cap=fields.text("cap"),
         remark=fields.text("remark"),
-        # our numbers: S for solutions made here, whether or not the day was written
-        made_here=made is not None or number.upper().startswith("S"),
+        made_here=made is not None or (received is None and number.upper().startswith("S")),
         source=fields.text("source"),
     )
     desk.save(bottle)
@@ -209,11 +209,10 @@ def _event(
     )
 
 
-def _found(desk: Desk, fields: Fields, line: Line) -> tuple[float | None, str]:
+def _found(desk: Desk, fields: Fields, line: Line) -> tuple[float, str]:
     written = fields.need("strength")
     strength = parse_strength(written, where="strength")
-    value, _ = in_own_unit(strength, substance_of(desk.session, line), line.density, line.unit)
-    return value, written
+    return number_beside(strength, substance_of(desk.session, line), line), written
 
 
 def _reversal(desk: Desk, number: str, event: Event) -> Event:

@@ -2,14 +2,16 @@
 
 from __future__ import annotations
 
+from decimal import Decimal
+
 from sqlmodel import SQLModel, col, select
 
-from stockroom.errors import BadDate, BadInput
+from stockroom.errors import BadAmount, BadDate, BadInput
 from stockroom.measure.amounts import Amount
-from stockroom.measure.days import parse_day, parse_time
+from stockroom.measure.days import format_time, parse_day, parse_time
 from stockroom.measure.reading import read_number
 from stockroom.store.desk import Desk
-from stockroom.store.fields import Fields
+from stockroom.store.fields import Fields, yes_or_no
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.tables import (
     Balance,
@@ -23,36 +25,74 @@ from stockroom.store.tables import (
 )
 
 _YES_NO = ("practice", "finish_day_before")
-_WHOLE = ("margin_open_days", "lead_open_days", "session_minutes")
 _VOLUMES = ("batch_step_cm3", "heel_floor_cm3")
+# over a year of open days: a slip, or a supplier nobody would wait for
+LONGEST_LEAD = 400
+# wider than any house needs; beyond them a figure is in another unit, or a slip
+_BOUNDS: dict[str, tuple[Decimal | int, int]] = {
+    "margin_open_days": (0, 100),
+    "lead_open_days": (0, LONGEST_LEAD),
+    "session_minutes": (1, 600),
+    # nothing can be measured to less than a microlitre
+    "batch_step_cm3": (Decimal("0.001"), 10_000),
+    "heel_floor_cm3": (0, 10_000),
+}
 _TIMES = ("staffed_from", "staffed_to")
 # colder than any freezer here, hotter than any oven a bottle is kept in
 _COLDEST, _HOTTEST = -90, 120
-SETTINGS = ("name", "practice_day", *_YES_NO, *_WHOLE, *_VOLUMES, *_TIMES)
+SETTINGS = ("name", "practice_day", *_YES_NO, *_BOUNDS, *_TIMES)
 
 
 def read_setting(desk: Desk, fields: Fields) -> None:
-    """One house setting; a setting given again takes the place of the old value."""
+    """One house setting; a setting given again takes the place of the old value.
+
+    Raises: BadInput for a value that no plan could read.
+    """
     setting = fields.need("setting")
     if setting not in SETTINGS:
         raise unknown("house setting", setting, SETTINGS)
-    value = fields.need("value")
-    _check_setting(setting, value)
+    value = _canonical(setting, fields.need("value"))
+    if setting in _TIMES:
+        _check_hours(desk, setting, value)
     # settings are the one thing replaced and not added to; history does not lean on them
     desk.session.merge(House(setting=setting, value=value, source=fields.text("source")))
 
 
-def _check_setting(setting: str, value: str) -> None:
+def _canonical(setting: str, value: str) -> str:
+    """A setting in the one way of writing that every plan reads. Raises: BadInput, quoting it."""
     if setting in _TIMES:
-        parse_time(value, where=setting)
-    elif setting == "practice_day":
-        parse_day(value, where=setting)
-    elif setting in _YES_NO and value not in ("yes", "no"):
-        raise BadInput(f'{setting} "{value}" is neither yes nor no.', "Write yes or no.")
-    elif setting in (*_WHOLE, *_VOLUMES):
-        number = read_number(value, where=setting)
-        if setting in _WHOLE and number != int(number):
-            raise BadInput(f'{setting} "{value}" is not a whole number.', "Give a whole number.")
+        return format_time(parse_time(value, where=setting))
+    if setting == "practice_day":
+        return parse_day(value, where=setting).isoformat()
+    if setting in _YES_NO:
+        return "yes" if yes_or_no(value, where=setting) else "no"
+    if setting in _BOUNDS:
+        return _number(setting, value)
+    return value
+
+
+def _number(setting: str, value: str) -> str:
+    number = read_number(value, where=setting)
+    least, most = _BOUNDS[setting]
+    if not least <= number <= most:
+        raise BadAmount(
+            f'{setting} "{value}" is not between {least} and {most}.', "Check the figure."
+        )
+    if setting not in _VOLUMES and number != int(number):
+        raise BadAmount(f'{setting} "{value}" is not a whole number.', "Give a whole number.")
+    # as plain digits: "2.0", "1 000" and "1e3" are all read differently or not at all
+    return f"{number.normalize():f}"
+
+
+def _check_hours(desk: Desk, setting: str, value: str) -> None:
+    # compared with what was said alone: of two new hours the first must not meet a usual one
+    said = {row.setting: row.value for row in desk.session.exec(select(House))} | {setting: value}
+    start, end = (said.get(name) for name in _TIMES)
+    if start and end and parse_time(start) >= parse_time(end):
+        raise BadDate(
+            f'{setting} "{value}": staffed from {start} to {end} runs backwards.',
+            "Give the later of the two hours first, or check both.",
+        )
 
 
 def read_term(desk: Desk, fields: Fields) -> None:

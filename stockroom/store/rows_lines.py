@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from stockroom.chemistry.formula import check_cas, molar_mass
 from stockroom.chemistry.strength import canonical
-from stockroom.errors import BadInput, MissingFigure, NotAllowed
+from stockroom.errors import BadAmount, BadInput, NotAllowed
 from stockroom.keeping.laws import DAYS_PER_MONTH
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
 from stockroom.measure.amounts import Kind
+from stockroom.measure.formats import unit_mark
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.periods import parse_period
 from stockroom.measure.strengths import Strength, StrengthUnit
@@ -65,7 +66,7 @@ def read_line(desk: Desk, fields: Fields) -> None:
     fields.at("item")
     new_name(desk, Line, "key", key, what="stock line", typed="lines")
     density = _density_of(fields)
-    strength, unit = strength_of(fields, "strength", substance, density)
+    strength, unit = _strength_of(fields, substance, density)
     formula = fields.text("formula")
     row = Line(
         key=key,
@@ -109,15 +110,15 @@ def _mass_inside(formula: str, substance: Substance | None) -> float | None:
     return molar_mass(formula) if formula else substance.molar_mass
 
 
-def strength_of(
-    fields: Fields, column: str, substance: Substance | None, density: float | None
+def _strength_of(
+    fields: Fields, substance: Substance | None, density: float | None
 ) -> tuple[float | None, str]:
-    """The strength in a cell in its line's own unit; None for "saturated" and "1 in 10"."""
+    # the line's own strength settles the unit that all others are set beside
     unit = "mol/dm3" if substance and substance.molar_mass else "g/dm3"
-    written = fields.text(column)
+    written = fields.text("strength")
     if not written:
         return None, unit
-    return in_own_unit(parse_strength(written, where=column), substance, density, unit)
+    return in_own_unit(parse_strength(written, where="strength"), substance, density, unit)
 
 
 def in_own_unit(
@@ -137,6 +138,34 @@ def in_own_unit(
         of=substance.substance if substance else "",
     )
     return found.value, found.unit
+
+
+def beside(strength: Strength, substance: Substance | None, line: Line) -> float | None:
+    """A strength as a number in its line's unit; None for "saturated" and "1 in 10".
+
+    Raises: MissingFigure; BadAmount when it comes out in another unit than the line's.
+    """
+    value, unit = in_own_unit(strength, substance, line.density, line.unit)
+    # set beside another unit it would be read as a strength it is not
+    if unit != line.unit:
+        raise _not_beside(strength, line)
+    return value
+
+
+def number_beside(strength: Strength, substance: Substance | None, line: Line) -> float:
+    """As `beside`, for where words say nothing. Raises: BadAmount for those as well."""
+    value = beside(strength, substance, line)
+    if value is None:
+        raise _not_beside(strength, line)
+    return value
+
+
+def _not_beside(strength: Strength, line: Line) -> BadAmount:
+    counted = unit_mark(line.unit)
+    return BadAmount(
+        f'"{strength.text}" cannot be set beside {line.key}, which is counted in {counted}.',
+        f"Give it in {line.unit}.",
+    )
 
 
 def check_has_strength(line: Line, number: str) -> None:
@@ -181,7 +210,12 @@ def read_rule(desk: Desk, fields: Fields) -> None:
 
 
 def _bound(desk: Desk, fields: Fields, line: Line, column: str) -> float | None:
-    return strength_of(fields, column, substance_of(desk.session, line), line.density)[0]
+    written = fields.text(column)
+    if not written:
+        return None
+    # a bound without a number would bound nothing, and the rule hold for every strength
+    strength = parse_strength(written, where=column)
+    return number_beside(strength, substance_of(desk.session, line), line)
 
 
 def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
@@ -204,7 +238,4 @@ def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
 def _own_units(desk: Desk, fields: Fields, line: Line) -> float:
     unit = fields.need("rate_of")
     one = parse_strength(f"1 {unit}", where="rate_of")
-    value, _ = in_own_unit(one, substance_of(desk.session, line), line.density, line.unit)
-    if value is None:
-        raise MissingFigure(f'A rate cannot be given in "{unit}".', "Give it in % w/v or mol/dm3.")
-    return value
+    return number_beside(one, substance_of(desk.session, line), line)

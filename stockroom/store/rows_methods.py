@@ -9,11 +9,10 @@ from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_amount
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.tables import Ingredient, Method, Pack
+from stockroom.store.rows_house import LONGEST_LEAD
+from stockroom.store.tables import Ingredient, Line, Method, Pack
 
 _USUAL_MINUTES = 15
-# over a year of open days: a slip, or a supplier nobody would wait for
-_LONGEST_LEAD = 400
 
 
 def read_method(desk: Desk, fields: Fields) -> None:
@@ -39,7 +38,10 @@ def read_method(desk: Desk, fields: Fields) -> None:
 
 
 def read_ingredient(desk: Desk, fields: Fields) -> None:
-    """One alternative for one ingredient of a line; nothing is made from itself."""
+    """One alternative for one ingredient of a line; nothing is made from itself.
+
+    Raises: BadInput for an amount that differs from that of an alternative already there.
+    """
     line = desk.line(fields.need("line"))
     ingredient = desk.line(fields.need("ingredient"))
     if line.id == ingredient.id:
@@ -52,6 +54,7 @@ def read_ingredient(desk: Desk, fields: Fields) -> None:
         raise BadInput(
             f"How much {ingredient.key} per dm³ of {line.key}?", "Fill per_dm3_g or per_dm3_cm3."
         )
+    _check_alternatives(desk, line, role, (ingredient, per_dm3))
     row = Ingredient(
         line_id=line.id,
         ingredient_id=ingredient.id,
@@ -62,6 +65,30 @@ def read_ingredient(desk: Desk, fields: Fields) -> None:
         source=fields.text("source"),
     )
     desk.save(row)
+
+
+def _check_alternatives(desk: Desk, line: Line, role: str, new: tuple[Line, int | None]) -> None:
+    # one amount serves all alternatives: 30 g beside 500 cm³ would be planned as one of them
+    same = select(Ingredient).where(Ingredient.line_id == line.id, Ingredient.role == role)
+    for row in desk.session.exec(same.order_by(col(Ingredient.id))):
+        old = desk.session.get_one(Line, row.ingredient_id), row.per_dm3
+        if _amount_asked(*old) != _amount_asked(*new):
+            raise BadInput(
+                f"{line.key}, {role}: {_said(*old)} or {_said(*new)}? Alternatives stand in for"
+                " each other, so their amounts must be the same.",
+                "Give both the same amount, or add the other way as a stock line of its own.",
+            )
+
+
+def _amount_asked(ingredient: Line, per_dm3: int | None) -> tuple[int, str] | None:
+    # worked out from the strengths, solids and solutions may stand side by side
+    return None if per_dm3 is None else (per_dm3, ingredient.kind)
+
+
+def _said(ingredient: Line, per_dm3: int | None) -> str:
+    if per_dm3 is None:
+        return f"{ingredient.key} as its strength asks"
+    return f"{format_amount(Amount(Kind(ingredient.kind), per_dm3))} of {ingredient.key} per dm³"
 
 
 def read_pack(desk: Desk, fields: Fields) -> None:
@@ -98,5 +125,5 @@ def price_of(fields: Fields) -> int:
 
 def lead_of(fields: Fields) -> int | None:
     """A lead time in open days, 0 to 400; None, the house's usual, when blank. Raises: BadAmount"""
-    fields.within("lead_open_days", 0, _LONGEST_LEAD, "In open days?")
+    fields.within("lead_open_days", 0, LONGEST_LEAD, "In open days?")
     return fields.whole("lead_open_days")

@@ -12,7 +12,7 @@ from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.names import find_department, find_recipe, find_substance, substance_of
 from stockroom.store.rows_house import new_name
-from stockroom.store.rows_lines import in_own_unit
+from stockroom.store.rows_lines import beside, number_beside
 from stockroom.store.tables import Bar, Booking, Line, Recipe, Requirement, Swap
 
 MOST_GROUPS = 200
@@ -92,9 +92,9 @@ def _strengths(desk: Desk, fields: Fields, line: Line) -> tuple[float | None, fl
         return line.strength, line.strength, line.strength_text
     substance = substance_of(desk.session, line)
     low, high = parse_strength_range(written, where="strength")
-    lowest, _ = in_own_unit(low, substance, line.density, line.unit)
-    highest, _ = in_own_unit(high, substance, line.density, line.unit)
-    return lowest, highest, written
+    # where the line's strength is words, so is the requirement's: "saturated", "1 in 10"
+    read = beside if line.strength is None else number_beside
+    return read(low, substance, line), read(high, substance, line), written
 
 
 def read_bar(desk: Desk, fields: Fields) -> None:

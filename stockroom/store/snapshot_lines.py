@@ -155,7 +155,7 @@ def _ingredient(role: str, rows: list[Row], keys: dict[int, str]) -> Ingredient:
     # one ingredient for all alternatives: the planner chooses, and needs them side by side
     return Ingredient(
         lines=tuple(keys[row["ingredient_id"]] for row in ranked),
-        # alternatives give the same thing, so the preferred one's amount holds for all
+        # entry refuses alternatives whose amounts differ, so the first one's holds for all
         per_dm3=ranked[0]["per_dm3"],
         only_if_held=frozenset(keys[row["ingredient_id"]] for row in rows if row["only_if_held"]),
         role=role,

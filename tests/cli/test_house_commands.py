@@ -33,6 +33,15 @@ def test_a_second_demo_keeps_the_first_beside_it(stockroom: Stockroom, tmp_path:
     assert (tmp_path / "practice.old.sqlite").exists()
 
 
+def test_a_second_demo_says_where_the_first_is_kept(stockroom: Stockroom, tmp_path: Path) -> None:
+    store = tmp_path / "practice.sqlite"
+    stockroom("demo", store=store)
+    (tmp_path / "practice.old.sqlite").write_text("ours", encoding="utf-8")
+    said = stockroom("demo", store=store).err
+    assert f"kept as {tmp_path / 'practice.old-2.sqlite'}." in said
+    assert (tmp_path / "practice.old.sqlite").read_text(encoding="utf-8") == "ours"
+
+
 def test_the_demo_never_replaces_a_house_of_ones_own(stockroom: Stockroom, tmp_path: Path) -> None:
     store = tmp_path / "house.sqlite"
     stockroom("new", store=store)

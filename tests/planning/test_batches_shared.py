@@ -174,3 +174,26 @@ def test_minutes_come_before_waste() -> None:
     made = two_classes(line, ("01-20", "01-20"), (35, 35), house=rough_steps)
     assert shares(made) == [("K0", "K1")]
     assert make_of(made, line).heel == cm3(20)
+
+
+def three_weeks(*volumes: float) -> list[tuple[str, ...]]:
+    """How three weekly classes of a line that keeps ten days share batches of whole 100 cm³."""
+    line = solution(0.1, rules=(keeps(10),))
+    row = [(f"K{n}", on) for n, on in enumerate(("01-12", "01-19", "01-26"))]
+    made = planned(
+        [SALT, line], methods=[made_from(line, SALT)],
+        recipes=[recipe(wants(line, cm3(v)), code=f"K{n}") for n, v in enumerate(volumes)],
+        bookings=[booking(number, on, recipe=number) for number, on in row], bottles=[JAR],
+        house=House(batch_step=cm3(100), heel_floor=cm3(100)),
+    )  # fmt: skip
+    return shares(made)
+
+
+def test_of_as_many_makes_those_are_chosen_that_throw_least_away() -> None:
+    # K1 with K2 throws away 30 + 0 cm³; with K0 it would be 90 + 40
+    assert three_weeks(70, 40, 60) == [("K0",), ("K1", "K2")]
+
+
+def test_of_as_many_makes_and_as_much_waste_the_later_are_chosen() -> None:
+    # K2 made a week later keeps longer: K1 goes with K0
+    assert three_weeks(100, 100, 100) == [("K0", "K1"), ("K2",)]

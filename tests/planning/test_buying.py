@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import Any
 
 import pytest
@@ -29,7 +30,7 @@ from stockroom.keeping.rules import Origin
 from stockroom.measure.workdays import Calendar
 from stockroom.planning.buy import choose_packs, share_out
 from stockroom.planning.decisions import Order, Outcome, Plan
-from stockroom.planning.facts import Department
+from stockroom.planning.facts import Department, Line
 
 QUILLMERE = Calendar(
     closed=(
@@ -123,13 +124,13 @@ IRON_SALT = solid("iron salt", 392.14, packs=(pack(g(500), 13.80),), level=g(100
 IRON = solution(0.1, "iron(II)", rules=(keeps(2),))
 
 
-def iron(held: float = 130) -> Plan:
+def iron(held: float = 130, salt: Line = IRON_SALT) -> Plan:
     groups = {"K11": ("02-02", 1320.0), "K13": ("02-04", 1320.0), "K25": ("03-18", 1056.0)}
     return planned(
-        [IRON_SALT, IRON], methods=[made_from(IRON, IRON_SALT, minutes=20)],
+        [salt, IRON], methods=[made_from(IRON, salt, minutes=20)],
         recipes=[recipe(wants(IRON, cm3(v)), code=number) for number, (_, v) in groups.items()],
         bookings=[booking(number, on, recipe=number) for number, (on, _) in groups.items()],
-        bottles=[bought_bottle("B11", IRON_SALT, g(held), "2024-02-05", opened=day("2024-02-12"))],
+        bottles=[bought_bottle("B11", salt, g(held), "2024-02-05", opened=day("2024-02-12"))],
         calendar=QUILLMERE,
     )  # fmt: skip
 
@@ -149,10 +150,14 @@ def test_above_its_level_to_the_end_nothing_is_ordered() -> None:
     assert len(iron(held=244.9).orders) == 1
 
 
-def test_a_level_is_filled_up_again() -> None:
-    # 130 − 144.9 + 500 stands above 100; at a pack of 100 g two are wanted
-    small = solid("iron salt", 392.14, packs=(pack(g(100), 5.0),), level=g(100))
-    assert choose_packs(small.packs, g(14.9) + g(100))[1] == 2
+@pytest.mark.parametrize(
+    ("held", "size", "packs"),
+    # 144.9 g are used: of 130, the 14.9 short and the level of 100; of 200, from 55.1 up to it
+    [(130, 114, 2), (130, 115, 1), (200, 44, 2), (200, 45, 1)],
+)
+def test_a_level_is_filled_up_again(held: float, size: float, packs: int) -> None:
+    salt = replace(IRON_SALT, packs=(pack(g(size), 5.0),))
+    assert order(iron(held, salt)).packs == packs
 
 
 def test_a_made_line_says_the_day_it_falls_below() -> None:

@@ -125,7 +125,7 @@ def recipes(draw: st.DrawFn, lines: list[Line]) -> list[Recipe]:
 
 @st.composite
 def small_houses(draw: st.DrawFn) -> Facts:
-    salt = solid(packs=draw(st.sampled_from([(), (pack(g(100), 5, lead=8),)])))
+    salt = solid(packs=draw(st.sampled_from(PACKS)), level=draw(st.sampled_from([None, g(20)])))
     lines = draw(solutions())
     bookings = [
         booking(
@@ -145,6 +145,9 @@ def small_houses(draw: st.DrawFn) -> Facts:
 
 
 STEPS = (cm3(1), cm3(50))
+ONE_PACK = pack(g(100), 5, lead=8)
+# the second is dearer and comes sooner, so that price and time pull apart
+PACKS = ((), (ONE_PACK,), (ONE_PACK, pack(g(100), 9, lead=3)))
 
 
 @dataclass(frozen=True)
@@ -313,14 +316,47 @@ def solute_in_one(line: Line, source: Draw) -> float:
 
 @given(small_houses())
 def test_only_what_can_be_bought_is_left_to_buy(facts: Facts) -> None:
-    # batches of exactly what is needed: one made larger may ask for more than there is
-    exact = {key: replace(method, smallest_batch=0) for key, method in facts.methods.items()}
-    made = plan(replace(facts, house=House(batch_step=cm3(1)), methods=exact))
+    made = plan(facts)
     for make in made.makes:
-        for one in make.sources:
-            if not one.bottle and not one.make:
-                assert facts.lines[one.line].form is Form.SOLID
-                assert one.line in {order.line for order in made.orders}
+        for one in unmet(make):
+            assert facts.lines[one.line].form is Form.SOLID
+            assert one.line in {order.line for order in made.orders}
+
+
+def unmet(make: Make) -> list[Draw]:
+    """What a make takes of things nobody has yet: neither a bottle nor another make gives it."""
+    return [one for one in make.sources if not one.bottle and not one.make]
+
+
+def chain_of(made: Plan, make: Make) -> Iterator[Make]:
+    """A make and every make it is made from, however far back."""
+    yield make
+    for one in make.sources:
+        for other in made.makes:
+            if other.id == one.make:
+                yield from chain_of(made, other)
+
+
+@given(small_houses())
+def test_what_comes_out_buy_waits_for_an_order_that_comes_in_time(facts: Facts) -> None:
+    made = plan(facts)
+    orders = {order.id: order for order in made.orders}
+    for need in made.needs:
+        if need.outcome is Outcome.BUY:
+            (batch,) = (make for make in made.makes if make.id == need.make)
+            chain = chain_of(made, batch)
+            days = [make.on for make in chain for one in unmet(make)
+                    if one.line == orders[need.order].line]  # fmt: skip
+            assert days
+            assert orders[need.order].arrives <= min(days)
+
+
+@given(small_houses())
+def test_no_make_starts_before_an_order_it_waits_for_has_come(facts: Facts) -> None:
+    made = plan(facts)
+    comes = {order.line: order.arrives for order in made.orders}
+    for make in made.makes:
+        assert all(comes[one.line] <= make.on for one in unmet(make))
 
 
 @settings(max_examples=60)

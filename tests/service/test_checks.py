@@ -93,6 +93,43 @@ def test_setting_aside_lists_what_was_made_from_it(own: Path) -> None:
     assert seen(own, "B16").record.set_aside == "rust specks"
 
 
+# worked out by hand from the plan: S01 gives 0.200 to K05 and K06, 0.500 to K17, the rest 0.0500
+LEANS_ON_S01 = "Drawn on by the plan for K05, K06, K08, K09, K17, K24, K28: stockroom plan"
+
+
+def test_setting_aside_names_the_bookings_that_lean_on_it(own: Path) -> None:
+    done = checks.spoil(own, "S01", "cloudy", **WHO)
+    assert done.details[-1] == LEANS_ON_S01
+
+
+def test_a_need_served_straight_from_a_lost_bottle_is_named(own: Path) -> None:
+    done = checks.lost(own, "S11", **WHO)
+    assert done.details == ("Drawn on by the plan for K07: stockroom plan",)
+
+
+def test_what_is_over_by_the_day_of_entry_is_not_named(own: Path) -> None:
+    late: dict[str, Any] = {"on": TODAY, "today": date(2027, 1, 22), "by": "T1"}
+    named = checks.lost(own, "S01", **late).details[0]
+    assert "K05" not in named
+    assert "K28" in named
+
+
+def test_losing_what_no_booking_leans_on_names_none(own: Path) -> None:
+    assert checks.lost(own, "S14", **WHO).details == ()
+
+
+def test_a_bottle_is_set_aside_though_no_plan_can_be_made(
+    own: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    def fail(known: object) -> object:
+        raise BadInput("A method goes round.", "Mend it.")
+
+    monkeypatch.setattr(checks, "plan", fail)
+    done = checks.spoil(own, "S01", "cloudy", **WHO)
+    assert "no plan can be made: A method goes round." in done.details[-1]
+    assert seen(own, "S01").record.set_aside == "cloudy"
+
+
 def test_setting_aside_wants_a_word(own: Path) -> None:
     with pytest.raises(BadInput, match="Why set B16 aside") as caught:
         checks.spoil(own, "B16", "", **WHO)

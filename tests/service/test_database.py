@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import sqlite3
 from datetime import date
 from pathlib import Path
 
@@ -34,6 +35,50 @@ def test_an_earlier_practice_store_is_put_by(own: Path) -> None:
     put_by = own.with_suffix(".old.sqlite")
     assert "Z1" in {place.name for place in facts(put_by, date(2027, 1, 4)).places}
     assert "Z1" not in {place.name for place in facts(own, date(2027, 1, 4)).places}
+
+
+def test_a_house_that_has_the_name_of_an_earlier_practice_store_is_left_alone(own: Path) -> None:
+    ours = own.with_suffix(".old.sqlite")
+    database.new_store(ours)
+    before = ours.read_bytes()
+    kept = database.make_practice(own)
+    assert ours.read_bytes() == before
+    assert kept == own.with_name("own.old-2.sqlite")
+    assert database.is_practice(own.with_name("own.old-2.sqlite"))
+
+
+def test_each_earlier_practice_store_is_kept(own: Path) -> None:
+    for place in ("Z1", "Z2", "Z3"):
+        database.add_row(own, "places", {"place": place}, by="T1")
+        database.make_practice(own)
+    kept = [own.with_name(f"own.old{end}.sqlite") for end in ("", "-2", "-3")]
+    placed = [{one.name for one in facts(path, date(2027, 1, 4)).places} for path in kept]
+    assert [sorted(each & {"Z1", "Z2", "Z3"}) for each in placed] == [["Z1"], ["Z2"], ["Z3"]]
+
+
+def test_a_name_whose_journal_is_another_stores_is_not_taken(own: Path) -> None:
+    journal = own.with_name("own.old.sqlite-wal")
+    journal.write_bytes(b"somebody's entries")
+    assert database.make_practice(own) == own.with_name("own.old-2.sqlite")
+    assert journal.read_bytes() == b"somebody's entries"
+
+
+def test_entries_still_in_the_journal_go_along(own: Path) -> None:
+    with sqlite3.connect(own) as held:
+        held.execute("SELECT 1 FROM house").fetchall()
+        # another program has it open, so what is added now stays in the journal
+        database.add_row(own, "places", {"place": "Z1"}, by="T1")
+        assert own.with_name("own.sqlite-wal").stat().st_size > 0
+        kept = database.make_practice(own)
+    held.close()
+    assert kept is not None
+    assert "Z1" in {place.name for place in facts(kept, date(2027, 1, 4)).places}
+    assert "Z1" not in {place.name for place in facts(own, date(2027, 1, 4)).places}
+
+
+def test_a_first_practice_store_puts_nothing_by(tmp_path: Path) -> None:
+    assert database.make_practice(tmp_path / "first.sqlite") is None
+    assert sorted(path.name for path in tmp_path.iterdir()) == ["first.sqlite"]
 
 
 def test_a_house_of_ones_own_is_never_made_a_practice_store(tmp_path: Path) -> None:

@@ -123,6 +123,69 @@ def test_a_draw_from_a_sealed_bottle_opens_it(own: Path) -> None:
     assert seen(own, "B02").record.opened == TODAY
 
 
+def test_a_draw_dated_before_the_opening_says_so(own: Path) -> None:
+    opened = stock.open_bottle(own, "B02", **WHO)
+    friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T1"}
+    done = stock.draw(own, "B02", Amount.cm3(10), **friday)
+    assert done.details[0] == (
+        "B02 drawn before it was opened on 11 January 2027: put the opening right"
+        f" (entry {opened.entry}), or the draw (entry {done.entry})."
+    )
+
+
+def test_the_opening_can_be_put_right_as_told(own: Path) -> None:
+    opened = stock.open_bottle(own, "B02", **WHO)
+    friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T1"}
+    stock.draw(own, "B02", Amount.cm3(10), **friday)
+    stock.put_right(own, opened.entry or 0, "opened on Friday", **WHO)
+    stock.open_bottle(own, "B02", **friday)
+    assert seen(own, "B02").record.opened == date(2027, 1, 8)
+
+
+@pytest.mark.parametrize("day", [date(2027, 1, 11), date(2027, 1, 12)])
+def test_a_draw_on_the_day_of_the_opening_or_later_is_not_asked_about(own: Path, day: date) -> None:
+    stock.open_bottle(own, "B02", **WHO)
+    done = stock.draw(own, "B02", Amount.cm3(10), on=day, today=date(2027, 1, 12), by="T1")
+    assert not any("before it was opened" in detail for detail in done.details)
+
+
+def limewater(path: Path) -> str:
+    return make_up(path, "limewater saturated", Amount.cm3(500), sources=[], place=None, **WHO)
+
+
+def make_up(path: Path, *args: Any, **more: Any) -> str:
+    from stockroom.service import making
+
+    return making.make_up(path, *args, **more).bottle
+
+
+def test_a_draw_from_what_still_stands_is_noted(own: Path) -> None:
+    # limewater stands 24 h: scenario section 4
+    number = limewater(own)
+    done = stock.draw(own, number, Amount.cm3(10), **WHO)
+    assert done.details == ("still standing until 12 January 2027: noted",)
+    assert diary(own, number)[-1].said == "still standing until 12 January 2027"
+
+
+def test_a_draw_from_what_has_stood_is_not_noted(own: Path) -> None:
+    number = limewater(own)
+    tomorrow: dict[str, Any] = {"on": None, "today": date(2027, 1, 12), "by": "T1"}
+    assert stock.draw(own, number, Amount.cm3(10), **tomorrow).details == ()
+    assert diary(own, number)[-1].said == ""
+
+
+@pytest.mark.parametrize(("hours", "noted"), [("11", False), ("13", True)])
+def test_standing_under_half_a_day_does_not_count(own: Path, hours: str, noted: bool) -> None:
+    from stockroom.service.database import add_row
+
+    line = "sodium chloride 2 mol/dm3"
+    brine = {"item": "sodium chloride", "substance": "sodium chloride", "form": "solution"}
+    add_row(own, "lines", {**brine, "strength": "2 mol/dm3"}, by="T1")
+    add_row(own, "methods", {"line": line, "stands_h": hours}, by="T1")
+    number = make_up(own, line, Amount.cm3(100), sources=["B40"], place=None, **WHO)
+    assert bool(stock.draw(own, number, Amount.cm3(10), **WHO).details) is noted
+
+
 def test_a_draw_from_a_bottle_gone_past_says_so(own: Path) -> None:
     done = stock.draw(own, "S09", Amount.cm3(10), **WHO)
     assert done.details[0].startswith("S09 is past")
@@ -201,6 +264,38 @@ def test_a_move_to_an_unknown_place_offers_the_nearest(own: Path) -> None:
 def test_discarding_wants_both_how_and_why(own: Path, how: str, why: str, said: str) -> None:
     with pytest.raises(BadInput, match=f"{said} S14 discarded"):
         stock.discard(own, "S14", how=how, why=why, **WHO)
+
+
+def test_a_bottle_is_not_discarded_before_it_was_drawn_from(own: Path) -> None:
+    drawn = stock.draw(own, "S05", Amount.cm3(50), **WHO)
+    friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T2"}
+    said = rf"S05 was there after 8 January 2027: entry {drawn.entry}, drawn 11 January 2027 by T1"
+    with pytest.raises(NotAllowed, match=said):
+        stock.discard(own, "S05", how="acid waste", why="past", **friday)
+    assert not seen(own, "S05").record.gone
+
+
+def test_a_bottle_is_discarded_on_the_day_it_was_drawn_from(own: Path) -> None:
+    stock.draw(own, "S05", Amount.cm3(50), **WHO)
+    stock.discard(own, "S05", how="acid waste", why="past", **WHO)
+    assert "S05" not in {bottle.number for bottle in facts(own, TODAY).bottles}
+
+
+def test_a_later_draw_put_right_is_no_reason_against_a_discard(own: Path) -> None:
+    drawn = stock.draw(own, "S05", Amount.cm3(50), **WHO)
+    stock.put_right(own, drawn.entry or 0, "another bottle", **WHO)
+    friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T2"}
+    stock.discard(own, "S05", how="acid waste", why="past", **friday)
+    assert "S05" not in {bottle.number for bottle in facts(own, TODAY).bottles}
+
+
+def test_what_was_missed_later_may_have_been_thrown_away(own: Path) -> None:
+    from stockroom.service import checks
+
+    checks.lost(own, "S05", **WHO)
+    friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T2"}
+    stock.discard(own, "S05", how="acid waste", why="past", **friday)
+    assert "S05" not in {bottle.number for bottle in facts(own, TODAY).bottles}
 
 
 def test_what_is_gone_takes_no_more_entries(own: Path) -> None:

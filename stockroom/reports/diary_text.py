@@ -1,0 +1,98 @@
+"""The story of one bottle: every entry with its number, slips and their putting-right included."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from datetime import date
+from typing import Any
+
+from stockroom.measure.amounts import Amount
+from stockroom.measure.formats import format_amount
+from stockroom.reports.sheet import PRACTICE, columns
+from stockroom.reports.words import raised
+
+_HEADING = ("entry", "happened", "entered", "by", "what", "amount", "left", "")
+
+
+# a row of its own, because the ledger's are the store's, and reports know no store
+@dataclass(frozen=True, slots=True)
+class DiaryRow:
+    """One entry: `left` is what the bottle holds after it, `change` signed.
+
+    `puts_right` is the entry it undoes, `undone_by` the one that undid it.
+    """
+
+    entry: int
+    happened: date
+    entered: date
+    by: str
+    kind: str
+    change: Amount
+    left: Amount
+    said: str = ""
+    place: str = ""
+    booking: str = ""
+    puts_right: int | None = None
+    undone_by: int | None = None
+
+
+def diary_text(
+    bottle: str, item: str, entries: Sequence[DiaryRow], width: int, *, practice: bool
+) -> str:
+    """A bottle's entries under a heading, one a row, in the order they are given."""
+    rows = [_HEADING, *(_cells(told) for told in entries)]
+    lines = [raised(f"{bottle} {item}"), *columns(rows, width, indent=0)]
+    return "\n".join([PRACTICE, *lines] if practice else lines)
+
+
+def _cells(told: DiaryRow) -> tuple[str, ...]:
+    # a plus sign sets what came in apart from what was counted to be there
+    change = f"{'+' if told.change.micro > 0 else ''}{format_amount(told.change)}"
+    return (
+        str(told.entry),
+        told.happened.isoformat(),
+        told.entered.isoformat(),
+        told.by,
+        f"{told.kind} (put right by {told.undone_by})" if told.undone_by else told.kind,
+        change if told.change.micro else "",
+        format_amount(told.left),
+        _said(told),
+    )
+
+
+def _said(told: DiaryRow) -> str:
+    mends = f"puts right {told.puts_right}" if told.puts_right else ""
+    to = f"at {told.place}" if told.place else ""
+    booking = f"for {told.booking.replace(';', ', ')}" if told.booking else ""
+    return "; ".join(part for part in (mends, to, booking, told.said) if part)
+
+
+def diary_json(
+    bottle: str, item: str, entries: Sequence[DiaryRow], *, practice: bool
+) -> dict[str, Any]:
+    """The same as data: amounts are numbers in `unit`, days are ISO text."""
+    return {
+        "bottle": bottle,
+        "item": item,
+        "practice": practice,
+        "entries": [_entry(told) for told in entries],
+    }
+
+
+def _entry(told: DiaryRow) -> dict[str, Any]:
+    return {
+        "entry": told.entry,
+        "happened": told.happened.isoformat(),
+        "entered": told.entered.isoformat(),
+        "by": told.by,
+        "what": told.kind,
+        "amount": told.change.number,
+        "left": told.left.number,
+        "unit": told.left.unit,
+        "place": told.place,
+        "booking": told.booking,
+        "said": told.said,
+        "puts_right": told.puts_right,
+        "put_right_by": told.undone_by,
+    }
