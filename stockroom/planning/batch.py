@@ -93,12 +93,23 @@ class Taken:
         return self.to_buy + sum(amount for _, amount in self.held)
 
 
-def taken_for(want: Want, start: date, *, held: int = 0, to_buy: int = 0) -> Taken:
-    """What one want takes, with more forced on it: `held` from its bottles, `to_buy` besides."""
-    row = [(promise.bottle, promise.amount) for promise in want.promises]
-    if held and row:
-        row[-1] = (row[-1][0], row[-1][1] + held)
-    return Taken(want.line, want.need, start, tuple(row), want.to_buy + to_buy)
+def taken_for(want: Want, start: date, held: int, to_buy: int, bottles: list[str]) -> Taken:
+    """What one want takes: `held` from its bottles (else from `bottles`), and `to_buy` besides."""
+    row: dict[str, int] = {}
+    for promise in want.promises:
+        share = min(promise.amount, held)
+        row[promise.bottle] = row.get(promise.bottle, 0) + share
+        held -= share
+    last = next(iter([*reversed(bottles), *row]), "")
+    if held and last:
+        row[last] = row.get(last, 0) + held
+    return Taken(want.line, want.need, start, tuple(row.items()), to_buy)
+
+
+def taken_alone(want: Want, start: date) -> Taken:
+    """What a want takes as netting left it: its promises, and what is to be bought."""
+    held = sum(promise.amount for promise in want.promises)
+    return taken_for(want, start, held, want.to_buy, [])
 
 
 def keeps(facts: Facts, line: Line, heel: int, made: date) -> bool:

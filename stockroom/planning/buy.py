@@ -15,7 +15,7 @@ from datetime import date
 
 from stockroom.keeping.verdict import USABLE
 from stockroom.planning.amounts import say
-from stockroom.planning.batch import Taken, taken_for
+from stockroom.planning.batch import Taken, taken_alone
 from stockroom.planning.decisions import Level, Order
 from stockroom.planning.facts import Facts, Form, Line, Pack
 from stockroom.planning.make import Made
@@ -54,7 +54,7 @@ def _by_day(take: Taken) -> tuple[object, ...]:
 def courses(facts: Facts, made: Made, missed: Iterable[Want], shelf: Shelf) -> list[Course]:
     """Run every bought line that is drawn on through the term, by key."""
     takes: dict[str, list[Taken]] = {}
-    for take in [*made.taken, *(taken_for(want, want.deadline[0]) for want in missed)]:
+    for take in [*made.taken, *(taken_alone(want, want.deadline[0]) for want in missed)]:
         if take.amount and facts.lines[take.line].form is not Form.SUNDRY:
             takes.setdefault(take.line, []).append(take)
     return [_course(facts.lines[key], takes[key], shelf) for key in sorted(takes)]
@@ -94,7 +94,8 @@ def _order(facts: Facts, course: Course, shelf: Shelf) -> Order:
     wanted = sum(t.to_buy for t in course.to_buy) + max(0, level - course.left_at_end)
     pack, count = choose_packs(_in_time(facts, line, course), wanted)
     lead = facts.house.default_lead if pack.lead is None else pack.lead
-    order_by = order_by_day(facts, trigger, lead)
+    # a later need may have to be started sooner than the first
+    order_by = min(order_by_day(facts, take, lead) for take in (trigger, *course.to_buy))
     pence = pack.pence * count
     return Order(
         id="",
@@ -114,15 +115,14 @@ def _order(facts: Facts, course: Course, shelf: Shelf) -> Order:
 
 
 def _in_time(facts: Facts, line: Line, course: Course) -> tuple[Pack, ...]:
-    """The packs that would come before the first need that waits for one; all, if none would."""
-    if not course.to_buy:
+    """The packs that come before the first need that can still wait for one; all, if none can."""
+    usual, after = facts.house.default_lead, facts.calendar.after
+    leads = {p: after(facts.as_at, usual if p.lead is None else p.lead) for p in line.packs}
+    soonest = min(leads.values(), default=facts.as_at)
+    starts = [take.start for take in course.to_buy if take.start >= soonest]
+    if not starts:
         return line.packs
-    usual, start = facts.house.default_lead, min(take.start for take in course.to_buy)
-    days = {
-        p: facts.calendar.after(facts.as_at, usual if p.lead is None else p.lead)
-        for p in line.packs
-    }
-    return tuple(pack for pack in line.packs if days[pack] <= start) or line.packs
+    return tuple(pack for pack, arrives in leads.items() if arrives <= min(starts))
 
 
 def order_by_day(facts: Facts, take: Taken, lead: int) -> date:

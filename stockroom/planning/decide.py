@@ -30,13 +30,8 @@ _OUTCOMES = {
 def outcome_of(want: Want, batch: Batch | None = None) -> Outcome:
     """What becomes of a need: a make that waits for something to be bought is a buy."""
     if want.settled is Settled.MAKE:
-        waits = any(part.to_buy for part in want.tree()) or (batch is not None and _waits(batch))
-        return Outcome.BUY if waits else Outcome.MAKE
+        return Outcome.BUY if batch is not None and lines_to_buy(batch) else Outcome.MAKE
     return _OUTCOMES[want.settled]
-
-
-def _waits(batch: Batch) -> bool:
-    return bool(lines_to_buy(batch))
 
 
 def lines_to_buy(batch: Batch) -> list[str]:
@@ -115,10 +110,10 @@ def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> lis
         words.append(f"made as {batch.id} on {batch.start[0]}{together}")
     if want.settled is Settled.SHOP:
         words.append(f"bought at a shop by {facts.calendar.before(want.need.on, 1)}")
-    if outcome_of(want) in (Outcome.SHORT, Outcome.REFUSED):
+    if outcome_of(want, batch) in (Outcome.SHORT, Outcome.REFUSED):
         swaps = [swap for swap in want.need.recipe.swaps if swap.line == want.need.line.key]
         words += [f"{swap.instead} is allowed instead: {swap.note}" for swap in swaps]
-    for part in want.tree()[1:] if outcome_of(want) is Outcome.BUY else ():
+    for part in want.tree()[1:] if outcome_of(want, batch) is Outcome.BUY else ():
         words += part.reasons
         words += [f"{number} not used: {why}" for number, why in dict.fromkeys(part.passed_over)]
     said = " ".join(want.reasons)

@@ -126,18 +126,15 @@ class Drawing:
         """
         exact = [part.to_buy + sum(p.amount for p in part.promises) for part in parts]
         bought = sum(source.amount for source in got if not source.bottle)
-        held = sum(source.amount for source in got if source.bottle)
-        over_bought = max(0, bought - sum(part.to_buy for part in parts))
-        over_held = max(0, held + bought - sum(exact) - over_bought)
-        over_held = round(over_held * batch.forced_part)
+        waiting = sum(part.to_buy for part in parts)
+        forced = round((sum(source.amount for source in got) - sum(exact)) * batch.forced_part)
         for part, amount in zip(parts, exact, strict=True):
-            share = amount / sum(exact) if sum(exact) else 0.0
-            taken = taken_for(
-                part,
-                batch.start[0],
-                held=round(over_held * share),
-                to_buy=round(over_bought * share),
-            )
+            weight = amount / sum(exact) if sum(exact) else 0.0
+            # a batch made earlier may find in a jar what its part alone had to wait for
+            to_buy = round(bought * (part.to_buy / waiting if waiting else weight))
+            held = amount + round(max(0, forced) * weight) - to_buy
+            bottles = [source.bottle for source in got if source.bottle]
+            taken = taken_for(part, batch.start[0], max(0, held), to_buy, bottles)
             self.taken.append(taken)
 
 

@@ -11,7 +11,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from stockroom.planning.amounts import draw_for
-from stockroom.planning.batch import Batch, Taken, taken_for
+from stockroom.planning.batch import Batch, Taken, taken_alone
 from stockroom.planning.batches import Item, Run, cut
 from stockroom.planning.drawing import Drawing, share_of
 from stockroom.planning.facts import Facts, Form, Ingredient, Line, Method
@@ -64,7 +64,7 @@ class _Making:
             if want.settled is Settled.MAKE:
                 self.to_make.setdefault(want.line, []).append(want)
         if root.settled in (Settled.HELD, Settled.BUY) and root.line not in self.facts.methods:
-            self.drawing.taken.append(taken_for(root, root.need.on))
+            self.drawing.taken.append(taken_alone(root, root.need.on))
 
     def run(self) -> Made:
         for key in settling_order(self.facts):

@@ -18,6 +18,7 @@ from stockroom.safety.neighbours import tight_caps, wrong_neighbours
 
 HEAVY_DAY_MINUTES = 300
 _MIX_BEFORE, _DESTROY_AFTER = 30, 30
+_DAY_MINUTES = 24 * 60
 
 
 def notes(
@@ -51,12 +52,12 @@ def _hours(facts: Facts, bookings: list[Booking]) -> Iterable[Finding]:
         elif booking.minute < calendar.open_from or (
             booking.minute + booking.lasts_minutes > calendar.open_to
         ):
-            end = format_time(booking.minute + booking.lasts_minutes)
+            end = _clock(booking.minute + booking.lasts_minutes)
             yield Finding(
                 booking.number,
-                f"{format_time(booking.minute)} to {end} is outside staffed hours "
-                f"({format_time(calendar.open_from)} to {format_time(calendar.open_to)}): "
-                f"someone must be here from {format_time(booking.minute - _MIX_BEFORE)}",
+                f"{_clock(booking.minute)} to {end} is outside staffed hours "
+                f"({_clock(calendar.open_from)} to {_clock(calendar.open_to)}): "
+                f"someone must be here from {_clock(booking.minute - _MIX_BEFORE)}",
             )
 
 
@@ -64,8 +65,8 @@ def _never_kept(bookings: list[tuple[Booking, Recipe]]) -> Iterable[Finding]:
     for booking, recipe in bookings:
         if recipe.never_kept:
             ends = booking.minute + booking.lasts_minutes
-            mix = format_time(booking.minute - _MIX_BEFORE)
-            destroy = format_time(ends + _DESTROY_AFTER)
+            mix = _clock(booking.minute - _MIX_BEFORE)
+            destroy = _clock(ends + _DESTROY_AFTER)
             yield Finding(
                 booking.number,
                 f"{booking.on}: mix not before {mix}, destroy by {destroy} and tick it with "
@@ -100,7 +101,7 @@ def _full_mornings(facts: Facts, makes: list[Make]) -> Iterable[Finding]:
         if minutes > first - opens:
             yield Finding(
                 day.isoformat(),
-                f"{len(due)} fresh makes take {minutes} min before {format_time(first)}, "
+                f"{len(due)} fresh makes take {minutes} min before {_clock(first)}, "
                 f"and {first - opens} min are staffed: somebody earlier, or two at once",
             )
 
@@ -170,3 +171,10 @@ def _shops(facts: Facts, needs: tuple[Need, ...]) -> Iterable[Finding]:
             by = facts.calendar.before(need.on, 1)
             amount = say(need.amount, need.line.kind)
             yield Finding(need.booking.number, f"{amount} of {need.line.item} from a shop by {by}")
+
+
+def _clock(minute: int) -> str:
+    """A time of day; past midnight it says which day."""
+    days, rest = divmod(minute, _DAY_MINUTES)
+    which = {0: "", 1: " the day after", -1: " the day before"}.get(days, f" {days} days on")
+    return format_time(rest) + which
