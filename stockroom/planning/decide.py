@@ -111,7 +111,8 @@ def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> lis
     if want.settled is Settled.SHOP:
         words.append(f"bought at a shop by {facts.calendar.before(want.need.on, 1)}")
     if outcome_of(want, batch) in (Outcome.SHORT, Outcome.REFUSED):
-        swaps = [swap for swap in want.need.recipe.swaps if swap.line == want.need.line.key]
+        allowed = sorted(want.need.recipe.swaps, key=lambda swap: swap.instead)
+        swaps = [swap for swap in allowed if swap.line == want.need.line.key]
         words += [f"{swap.instead} is allowed instead: {swap.note}" for swap in swaps]
     for part in want.tree()[1:] if outcome_of(want, batch) is Outcome.BUY else ():
         words += part.reasons

@@ -34,9 +34,11 @@ class Drawing:
                 assert part.ingredient is not None
                 key = (part.ingredient, part.line, part.settled is Settled.MAKE)
                 groups.setdefault(key, []).append(part)
-        for (ingredient, _, _), parts in groups.items():
+        # the solute first, as a person reads it; then by name, whatever the order of the rows
+        row = sorted(groups.items(), key=lambda g: (g[0][0].role != "solute", *g[0][1:]))
+        for (ingredient, _, _), parts in row:
             self._no_more_than_held(batch, ingredient, parts, share_of(batch, parts))
-        for (ingredient, _, _), parts in groups.items():
+        for (ingredient, _, _), parts in row:
             self._draw(batch, ingredient, parts, share_of(batch, parts))
 
     def _no_more_than_held(

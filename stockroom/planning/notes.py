@@ -111,7 +111,7 @@ def _money(facts: Facts, orders: list[Order]) -> Iterable[Finding]:
     for order in orders:
         for code, pence in order.shares:
             spent[code] = spent.get(code, 0) + pence
-    for department in facts.departments:
+    for department in sorted(facts.departments, key=lambda one: one.code):
         total, left = spent.get(department.code, 0), department.left_pence
         if left is not None and total > left:
             yield Finding(
