@@ -124,7 +124,7 @@ def test_an_earlier_pencilled_need_that_waits_dates_the_order(jar: float) -> Non
 # -- what a smallest batch forces, shared -----------------------------------------------
 
 
-LEAST = {"method": {"smallest_batch": cm3(800)}}
+LEAST: dict[str, Any] = {"method": {"smallest_batch": cm3(800)}}
 
 
 def test_what_a_smallest_batch_forces_is_bought_and_paid_in_proportion() -> None:
