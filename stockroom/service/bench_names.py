@@ -17,6 +17,7 @@ from pathlib import Path
 from stockroom.chemistry.formula import molar_mass
 from stockroom.errors import BadAmount, BadInput, StoreTrouble, UnknownName
 from stockroom.planning.facts import Form, Line
+from stockroom.store.likeness import plain
 
 _FORMULA = re.compile(r"[A-Z(\[][A-Za-z0-9()\[\].·•*]*")
 
@@ -134,17 +135,17 @@ def _by_formula(of: str, known: list[Stuff]) -> Stuff:
 
 
 def _same(name: str, *asked: str) -> bool:
-    return name.casefold() in {each.strip().casefold() for each in asked}
+    return plain(name) in {plain(each) for each in asked}
 
 
 def _substance_of(of: str) -> str:
-    return _other_names().get(of.strip().casefold(), of)
+    return _other_names().get(plain(of), of)
 
 
 @lru_cache(maxsize=1)
 def _other_names() -> dict[str, str]:
     return {
-        name.strip().casefold(): row["substance"]
+        plain(name): row["substance"]
         for row in _table("substances")
         for name in (row["substance"], *row["other_names"].split(";"))
         if name.strip()

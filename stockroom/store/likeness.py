@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterable
 
 from stockroom.errors import UnknownName
@@ -9,8 +10,9 @@ from stockroom.measure.reading import tidy
 
 
 def plain(text: str) -> str:
-    """A name as it is compared: spaces, look-alike characters and capitals settled."""
-    return tidy(text).casefold()
+    """A name as it is compared: spaces, commas, look-alike characters and capitals settled."""
+    # "sodium thiosulfate anhydrous" and "..., anhydrous" are one name; "2,4-" keeps its comma
+    return re.sub(r",\s+", " ", tidy(text)).casefold()
 
 
 def unknown(what: str, text: str, choices: Iterable[str]) -> UnknownName:

@@ -131,7 +131,7 @@ class Lines:
 
 def _spelt(name: str) -> str:
     # the three ways of writing a hydrate's dot
-    return re.sub(r"[*.](?=[0-9]*H2O)", "·", tidy(name)).casefold()
+    return plain(re.sub(r"[*.](?=[0-9]*H2O)", "·", tidy(name)))
 
 
 def _only(text: str, fitting: list[Line], kind: str) -> Line:

@@ -98,3 +98,9 @@ def test_a_number_nobody_has_is_answered_with_the_nearest(
     result = stockroom("dilute", "1 L", "0.1 M", "--from", "B99", store=practice)
     assert result.code == 2
     assert "'B99'" in result.err
+
+
+def test_a_comma_in_a_name_may_be_left_out(stockroom: Stockroom) -> None:
+    """T24: a litre of 1.00 thiosulfate takes 158.1 g of the anhydrous form, however it is named."""
+    for name in ("sodium thiosulfate, anhydrous", "Sodium thiosulfate anhydrous"):
+        assert "158.1" in stockroom("weigh", "1 L", "1.00 mol/dm3", "--of", name).out
