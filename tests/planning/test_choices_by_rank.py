@@ -150,26 +150,40 @@ def test_it_comes_from_a_stronger_solution_then_a_solid_then_a_liquid(
 # -- rounding beyond what there is ------------------------------------------------------
 
 
-def chained(jar: float, volume: float, step: float = 50, **more: Any) -> Plan:
-    """1 mol/dm³ made from a jar of so many g at 100 g/dm³, and so many cm³ of 0.1 from that."""
+BESIDE = solution(0.1, "beside")
+
+
+def chained(jar: float, volume: float) -> Plan:
+    """1 mol/dm³ made from a jar of so many g at 100 g/dm³, and so many cm³ of 0.1 from that.
+
+    Beside it 101 cm³ of another line, from a jar with plenty.
+    """
     salt, strong, weak = solid(), solution(1.0, "strong"), solution(0.1, "weak")
+    methods = [made_from(strong, salt), made_from(weak, strong), made_from(BESIDE, OTHER)]
     return planned(
-        [salt, strong, weak], methods=[made_from(strong, salt), made_from(weak, strong)],
-        recipes=[recipe(wants(weak, cm3(volume)))], bookings=[booking("K1", "02-12")],
-        bottles=[bought_bottle("B1", salt, g(jar))], house=House(batch_step=cm3(step)), **more,
+        [salt, strong, weak, OTHER, BESIDE], methods=methods,
+        recipes=[recipe(wants(weak, cm3(volume)), wants(BESIDE, cm3(101)))],
+        bookings=[booking("K1", "02-12")],
+        bottles=[bought_bottle("B1", salt, g(jar)), bought_bottle("B2", OTHER, g(500))],
+        house=House(batch_step=cm3(50)),
     )  # fmt: skip
+
+
+def volumes(made: Plan) -> dict[str, int]:
+    return {make.item: make.volume for make in made.makes}
 
 
 def test_where_rounding_up_outgrows_a_chain_the_exact_need_is_made() -> None:
     # 1 001 cm³ of 0.1 take 10.01 g; rounded to 1 050 they would take 10.5 of the 10.2 there are
     made = chained(10.2, 1001)
-    assert outcomes(made) == {"K1.1": Outcome.MAKE}
-    assert [make.volume for make in made.makes] == [cm3(100.1), cm3(1001)]
+    assert answer(made, "K1.1").outcome is Outcome.MAKE
+    assert volumes(made) == {"strong": cm3(100.1), "weak": cm3(1001), "beside": cm3(150)}
     assert made.orders == ()
 
 
 def test_where_the_chain_is_long_enough_it_is_rounded_up() -> None:
-    assert [make.volume for make in chained(15, 1001).makes] == [cm3(150), cm3(1050)]
+    whole = {"strong": cm3(150), "weak": cm3(1050), "beside": cm3(150)}
+    assert volumes(chained(15, 1001)) == whole
 
 
 def test_the_exact_need_beyond_the_jar_is_still_bought() -> None:

@@ -11,6 +11,7 @@ from houses import (
     cm3,
     day,
     g,
+    keeps,
     made_bottle,
     made_from,
     make_of,
@@ -32,10 +33,11 @@ PENCILLED = Firmness.PENCILLED
 
 def salted(*bookings: tuple[Booking, float], salt: Line, jar: float = 0, **more: Any) -> Plan:
     """The plan of bookings, each with its cm³ of 0.5 mol/dm³: 50 g of salt to the dm³."""
-    method = made_from(HALF, salt, **more.pop("method", {}))
+    line = more.pop("line", HALF)
+    method = made_from(line, salt, **more.pop("method", {}))
     return planned(
-        [salt, HALF], methods=[method],
-        recipes=[recipe(wants(HALF, cm3(v)), code=one.recipe) for one, v in bookings],
+        [salt, line], methods=[method],
+        recipes=[recipe(wants(line, cm3(v)), code=one.recipe) for one, v in bookings],
         bookings=[one for one, _ in bookings],
         bottles=[bought_bottle("B1", salt, g(jar))] if jar else [], **more,
     )  # fmt: skip
@@ -77,7 +79,10 @@ def test_the_cheapest_of_the_packs_that_come_in_time(on: str, chosen: Pack) -> N
 
 def test_the_first_of_those_that_wait_settles_which_packs_come_in_time() -> None:
     row = (class_on("K1", "01-14"), 100), (class_on("K2", "03-10"), 100)
-    assert order(salted(*row, salt=solid(packs=(CHEAP, DEAR)))).pence == DEAR.pence
+    short_lived = solution(0.5, rules=(keeps(7),))
+    made = salted(*row, salt=solid(packs=(CHEAP, DEAR)), line=short_lived)
+    assert [make.bookings for make in made.makes] == [("K1",), ("K2",)]
+    assert order(made).pence == DEAR.pence
 
 
 def test_a_pack_without_a_lead_time_comes_when_the_house_assumes() -> None:
@@ -119,6 +124,32 @@ def test_an_earlier_pencilled_need_that_waits_dates_the_order(jar: float) -> Non
     made = salted(*row, salt=salt, jar=jar)
     assert order(made).need_by == day("02-02")
     assert order(made).for_bookings == ("K1", "K2")
+
+
+def test_an_order_is_dated_from_whatever_must_be_started_first() -> None:
+    # the slow one for Friday 12 February starts Friday 5, the quick one for Thursday on Wednesday
+    salt, slow = solid(packs=(DEAR,)), solution(0.25, "slow")
+    made = planned(
+        [salt, HALF, slow], methods=[made_from(HALF, salt), made_from(slow, salt, stands_hours=96)],
+        recipes=[recipe(wants(HALF, cm3(100))), recipe(wants(slow, cm3(100)), code="R02")],
+        bookings=[booking("K1", "02-11"), booking("K2", "02-12", recipe="R02")],
+    )  # fmt: skip
+    assert (order(made).need_by, order(made).order_by) == (day("02-11"), day("02-02"))
+    assert order(made).arrives == make_of(made, slow).on == day("02-05")
+
+
+def test_for_a_booking_on_a_saturday_the_order_still_comes_before_the_make() -> None:
+    made = salted(
+        (class_on("K1", "02-13"), 100), salt=solid(packs=(DEAR,)), method={"stands_hours": 96.0}
+    )
+    assert order(made).arrives == make_of(made, HALF).on == day("02-08")
+
+
+def test_a_need_that_is_missed_does_not_let_the_slow_pack_serve_the_next() -> None:
+    row = (class_on("K1", "01-05"), 100), (class_on("K2", "01-14"), 100)
+    made = salted(*row, salt=solid(packs=(CHEAP, DEAR)))
+    assert outcomes(made) == {"K1.1": Outcome.SHORT, "K2.1": Outcome.BUY}
+    assert (order(made).pence, order(made).arrives) == (DEAR.pence, day("01-07"))
 
 
 # -- what a smallest batch forces, shared -----------------------------------------------
