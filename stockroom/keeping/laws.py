@@ -34,6 +34,7 @@ def strength_after(start: float, law: Law, days: float) -> float:
     """
     if law.rate < 0:
         raise BadAmount(f"A rate of {law.rate:g} would gain strength.", "Give a rate of 0 or more.")
+    # asked about a day before it was found, nothing is given back
     if days <= 0 or law.rate == 0 or start <= 0:
         return start
     if law.order == 0:
@@ -49,6 +50,7 @@ def days_until(start: float, lowest: float, law: Law) -> float:
     """Days at the law's temperature until strength has fallen to `lowest`; inf if it never does."""
     if lowest >= start:
         return 0.0
+    # a first- or second-order law never quite reaches nothing
     if law.rate <= 0 or (lowest <= 0 and law.order != 0):
         return math.inf
     if law.order == 0:
@@ -68,6 +70,7 @@ def falls_below(
     days = days_until(start, lowest, law) / warmth(law, temperature_c)
     if start < lowest:
         return since
+    # a century is never, and dates beyond the year 9999 do not exist
     if days > 36525:
         return None
     # at exactly `days` it still stands at `lowest`, so the next whole day is the first below

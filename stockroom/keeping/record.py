@@ -68,6 +68,7 @@ class Record:
 
     def undated_on(self, day: date) -> bool:
         """The same, as far as anybody knew on that day."""
+        # opened is left out: it says when it was used, not how old it was by then
         return not (self.received or self.made or self.first_passed(day))
 
     def first_passed(self, until: date) -> date | None:

@@ -93,6 +93,7 @@ class Rule:
         Nobody knows how warm an unknown place is, so the rules for cold and for
         warm ones both hold there, and the shorter life decides.
         """
+        # a bottle of unknown strength gets every band's rules, and the strictest decides
         if strength is not None and not _within(strength, self.above, self.upto):
             return False
         if temperature_c is None:

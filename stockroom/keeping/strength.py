@@ -60,6 +60,7 @@ def temperature_on(record: Record, on: date) -> float | None:
 def stretches(record: Record, on: date) -> list[tuple[date, date, float | None]]:
     """(from, to, °C) of every place it has stood in up to a day, in order."""
     stays = sorted((stay for stay in record.stays if stay.since <= on), key=lambda s: s.since)
+    # where it stood before the first entry nobody knows, but it aged there all the same
     starts = [date.min, *(stay.since for stay in stays)]
     places = [None, *(stay.temperature_c for stay in stays)]
     return list(zip(starts, [*starts[1:], on], places, strict=True))
@@ -71,6 +72,7 @@ def origin_day(record: Record, origin: Origin, on: date) -> date | None:
     A bottle neither received nor made on a known day counts from its first
     passed check up to `on`: somebody who looked at it gave it its date.
     """
+    # a solution made here was never received: its day made stands for that too
     known = {
         Origin.OPENED: record.opened,
         Origin.MADE: record.made,
@@ -87,6 +89,7 @@ def strengths_on(record: Record, rules: tuple[Rule, ...], on: date) -> Strengths
     A law counted from opening leaves an unopened bottle as strong as its label.
     """
     found = last_check(record, on, CheckKind.FOUND)
+    # a result is carried forward even when old: it still beats a printed label
     start = found.strength if found else record.nominal
     found_on = found.on if found else None
     expected = None if start is None else _carried(record, rules, on, start, found_on)
@@ -101,6 +104,7 @@ def _carried(
     for first, last, place in stretches(record, on):
         rule = _law_at(record, rules, place)
         since = origin_day(record, rule.origin, on) if rule else None
+        # a place without a rule of its own keeps the strength as it is, and says nothing of it
         if rule is None or rule.law is None or since is None:
             continue
         days = (last - max(first, since, found_on or since)).days * warmth(rule.law, place)

@@ -99,6 +99,7 @@ def judge(record: Record, limits: list[Limit], strengths: Strengths, on: date) -
     """The verdict from limits and strengths already worked out, for whoever asks many times."""
     unusable = _out_of_use(record, on)
     if unusable:
+        # a look cannot bring back what a limit of its own has ended
         looks = unusable[0] is Condition.NO_DATE and not any(limit.until < on for limit in limits)
         return Verdict(unusable[0], None, unusable[1], strengths, look_would_do=looks)
     return _judged(strengths, limits, on)
@@ -107,8 +108,10 @@ def judge(record: Record, limits: list[Limit], strengths: Strengths, on: date) -
 def _judged(strengths: Strengths, limits: list[Limit], on: date) -> Verdict:
     hard = [limit for limit in limits if not limit.known_until]
     over = [limit for limit in limits if limit.until < on]
+    # what ended its use before what ended our knowledge of it
     deciding = _deciding([x for x in over if not x.known_until] or over or limits)
     condition, until, because = Condition.SOUND, deciding.until, deciding.because
+    # weak comes after: a bottle past is not used, however strong
     if over:
         condition = Condition.WATCH if deciding.known_until else Condition.PAST
     elif _is_weak(strengths):
@@ -131,6 +134,7 @@ def limits_of(
 ) -> list[Limit]:
     """Every dated limit that speaks of this bottle, in the order of the rules."""
     place = temperature_on(record, on)
+    # the maker's date counts beside the house's own and is not moved by it
     limits = [_printed(record)] if record.printed and record.printed.day else []
     for rule in rules:
         asked = rule.purpose is Purpose.ANY or rule.purpose is purpose
@@ -142,6 +146,7 @@ def limits_of(
 
 
 def _out_of_use(record: Record, on: date) -> tuple[Condition, str] | None:
+    # what has left the house comes first: the rest is history
     if record.gone:
         return Condition.GONE, "discarded"
     if record.not_found:
@@ -156,6 +161,7 @@ def _out_of_use(record: Record, on: date) -> tuple[Condition, str] | None:
 def _deciding(limits: list[Limit]) -> Limit:
     if not limits:
         return Limit(date.max, "no limit set")
+    # the words break a tie, so that the rules' order in the table does not
     return min(limits, key=lambda limit: (limit.until, limit.known_until, limit.because))
 
 

@@ -11,6 +11,7 @@ from stockroom.planning.facts import Form, Line
 
 UL_PER_DM3 = 1_000_000
 
+# a sum may change a strength's last digits, and that must not change how it is printed
 _SAME = 1e-5
 _WRITTEN = re.compile(r"([0-9.]+) ?([^0-9 ].*)")
 
@@ -39,6 +40,7 @@ def take_for(line: Line, strength: float | None, solute: float) -> int:
     A solid uses its own formula and assay; a liquid or solution its strength on
     the day (nominal when None). Raises MissingFigure when neither is known.
     """
+    # to the nearest and not up: a class that wants spare has it in its need already
     if line.form is Form.SOLID and line.solute_per_gram:
         return round(solute / line.solute_per_gram * 1_000_000)
     held = line.strength if strength is None else strength
@@ -63,6 +65,7 @@ def draw_for(
     out from the strengths. Raises NotAllowed when the bottle is weaker than the
     product has to be, MissingFigure when a strength is not known.
     """
+    # a written amount holds whatever the bottle found: it is a recipe, not a sum
     if per_dm3 is not None:
         return round(volume_ul * per_dm3 / UL_PER_DM3)
     if not strong_enough(ingredient, bottle_strength, product):
@@ -80,6 +83,7 @@ def strong_enough(ingredient: Line, strength: float | None, product: Line) -> bo
     if ingredient.form is Form.SOLID or product.strength is None:
         return True
     held = ingredient.strength if strength is None else strength
+    # a bottle of exactly the strength asked for is used neat, whatever its last digit
     return held is not None and held >= product.strength * (1 - 1e-9)
 
 

@@ -114,6 +114,7 @@ def taken_alone(want: Want, start: date) -> Taken:
 
 def keeps(facts: Facts, line: Line, heel: int, made: date) -> bool:
     """True when a heel of this size becomes stock: above the floor, and of a line that keeps."""
+    # a bottle of dregs costs a label and a place, and nobody counts on it
     if heel <= facts.house.heel_floor or line.never_kept:
         return False
     until = good_until(line, made)

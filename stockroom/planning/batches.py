@@ -65,6 +65,7 @@ def cut(
     (it is then made in several vessels); two together may not. O(n²) in items,
     stopping at the first run that cannot be.
     """
+    # by latest day, since the first due sets the day of whatever shares its batch
     row = sorted(items, key=lambda item: item.order)
     best: list[tuple[Cost, int]] = [((0, 0, 0), 0)]
     for end in range(1, len(row) + 1):
@@ -72,6 +73,7 @@ def cut(
             (_plus(best[end - len(run.items)][0], run, cost_of(run)), end - len(run.items))
             for run in _runs_ending(row, end, most)
         ]
+        # compared as a row of figures: no rate of exchange between minutes and waste is known
         best.append(min(choices))
     return _cuts(row, best, most)
 
@@ -87,6 +89,7 @@ def _runs_ending(row: list[Item], end: int, most: int | None) -> Iterator[Run]:
 
 
 def _plus(so_far: Cost, run: Run, cost: tuple[int, int]) -> Cost:
+    # the day counts backwards, so that the least cost is the latest make, the freshest
     return so_far[0] + cost[0], so_far[1] + cost[1], so_far[2] - run.on.toordinal()
 
 

@@ -48,6 +48,7 @@ class Course:
 
 
 def _by_day(take: Taken) -> tuple[object, ...]:
+    # firm or pencilled does not matter here: stock is used up in the order of the days
     return take.need.rank[1:]
 
 
@@ -63,6 +64,7 @@ def courses(facts: Facts, made: Made, missed: Iterable[Want], shelf: Shelf) -> l
 def _course(line: Line, takes: list[Taken], shelf: Shelf) -> Course:
     course = Course(line, sorted(takes, key=_by_day))
     drawn: dict[str, int] = {}
+    # bottle by bottle: one that goes past takes only what is left of it out of the sum
     for take in course.takes:
         for number, amount in take.held:
             drawn[number] = drawn.get(number, 0) + amount
@@ -83,6 +85,7 @@ def orders(facts: Facts, runs: Iterable[Course], shelf: Shelf) -> list[Order]:
     """What to order, the soonest order-by first."""
     found = [_order(facts, course, shelf) for course in runs if course.trigger]
     found.sort(key=lambda order: (order.order_by, order.line))
+    # numbered only once sorted, so that O01 is the first to send off
     return [_numbered(order, f"O{number:02d}") for number, order in enumerate(found, 1)]
 
 
@@ -91,6 +94,7 @@ def _order(facts: Facts, course: Course, shelf: Shelf) -> Order:
     assert trigger is not None
     line, calendar = course.line, facts.calendar
     level = line.level or 0
+    # one order for the whole term: what a second delivery would cost is not known
     wanted = sum(t.to_buy for t in course.to_buy) + max(0, level - course.left_at_end)
     pack, count = choose_packs(_in_time(facts, line, course), wanted)
     lead = facts.house.default_lead if pack.lead is None else pack.lead
@@ -105,6 +109,7 @@ def _order(facts: Facts, course: Course, shelf: Shelf) -> Order:
         packs=count,
         need_by=trigger.need.on,
         order_by=order_by,
+        # as if ordered on the last day that will do: whoever orders sooner can only gain
         arrives=calendar.after(max(facts.as_at, order_by), lead),
         late=calendar.between(order_by, facts.as_at),
         pence=pence,
@@ -128,6 +133,7 @@ def _in_time(facts: Facts, line: Line, course: Course) -> tuple[Pack, ...]:
 def order_by_day(facts: Facts, take: Taken, lead: int) -> date:
     """The last open day to order on: need day, less the margin, less the lead time."""
     calendar = facts.calendar
+    # the margin is for a late van; a make that starts before it is the stricter of the two
     in_hand = calendar.before(take.need.on, facts.house.margin_days)
     return calendar.before(min(in_hand, calendar.on_or_before(take.start)), lead)
 
@@ -138,6 +144,7 @@ def choose_packs(packs: tuple[Pack, ...], wanted: int) -> tuple[Pack, int]:
     Ties go to the fewest packs, then the smallest. No pack known: a pack of
     size 0 that says so, one of it.
     """
+    # one size only: a mixture may save pennies, and leaves two sizes on the shelf to date
     choices = [(p.pence * n, n, p.size, p) for p in packs for n in [max(1, -(-wanted // p.size))]]
     if not choices:
         return _NO_PACK, 1
@@ -164,6 +171,7 @@ def share_out(pence: int, parts: dict[str, int]) -> tuple[tuple[str, int], ...]:
 def _by_department(takes: list[Taken]) -> dict[str, int]:
     parts: dict[str, int] = {}
     for take in takes:
+        # by what each draws, held or bought: who books first would else never pay
         code = take.need.booking.department
         parts[code] = parts.get(code, 0) + take.amount
     return parts
@@ -211,6 +219,7 @@ def levels(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Level]:
     found = []
     for line in facts.lines.values():
         takes = [want for want in wanted if want.line == line.key]
+        # a bought line that is drawn on has its order to say so
         if takes:
             level = _made_level(line, takes, shelf) if line.key in facts.methods else None
         else:

@@ -52,6 +52,7 @@ def titration_days(
     last = found_on
     for need in sorted(needs, key=lambda n: n.rank[1:]):
         oldest = found_valid_from(need.requirement, line, need.on)
+        # the same rule as covering points by the fewest stretches: late, and only when needed
         if last is not None and last >= oldest:
             if row:
                 # one already planned serves this need too, if it is not done too early
@@ -65,6 +66,7 @@ def titration_days(
 
 def _best(facts: Facts, by: date, not_before: date) -> date:
     """The open day before, if the window holds one; else the day itself."""
+    # on the day itself a bad result leaves no time for anything else
     return max(facts.calendar.before(by, 1), not_before)
 
 
@@ -79,6 +81,7 @@ def _exact_from_bottles(facts: Facts, wants: list[Want], shelf: Shelf) -> Iterab
         found = shelf.verdict(number, facts.as_at).strengths.found_on
         for first, by, served in titration_days(facts, line, needs, found):
             why = f"found {found}" if found else "never found"
+            # what has not stood its time would be titrated too soon
             first = max(first, shelf.ready_on(number) or first)
             todo = _check(facts, number, line, _TITRATE, first, by, served, f"{why}; exact")
             yield _the_day_before(facts, todo)
@@ -94,6 +97,7 @@ def _exact_from_batches(facts: Facts, batches: list[Batch]) -> Iterable[CheckToD
         if not needs:
             continue
         ready = ready_at(batch.start, batch.method, facts.calendar)[0]
+        # a make titrated when finished has its first strength from then, without being asked
         found = ready if batch.method.titrated else None
         for first, by, served in titration_days(facts, batch.line, needs, found):
             since = f"found {found} when finished" if found else "not titrated when made"
@@ -106,6 +110,7 @@ def _rechecks(facts: Facts, wants: list[Want], shelf: Shelf) -> Iterable[CheckTo
     exact = {p.bottle for w in wants if w.purpose is Purpose.EXACT for p in w.promises}
     needs = {want.ref: want.need for want in wants}
     for number, promises in sorted(shelf.promises.items()):
+        # its titration is asked for already, and more strictly
         if number in exact:
             continue
         line = facts.lines[shelf.bottle[number].line]
@@ -115,6 +120,7 @@ def _rechecks(facts: Facts, wants: list[Want], shelf: Shelf) -> Iterable[CheckTo
         if not due or not late:
             continue
         before_use = facts.calendar.on_or_before(late[0])
+        # in time if it can be, so that it is never to watch; else before it is used
         by = facts.calendar.on_or_before(due) if due >= facts.as_at else before_use
         served = [needs[p.for_ref] for p in promises if p.on > due and p.for_ref in needs]
         why = f"its recheck {'falls' if due >= facts.as_at else 'fell'} due {due}"
@@ -152,6 +158,7 @@ def _looks(
         if behind:
             why += f", perhaps the order of {', '.join(sorted(behind))} too"
         todo = _check(facts, number, line, _LOOK, facts.as_at, by, needs, why)
+        # the plan stands without it: nobody is kept waiting for a look
         yield replace(todo, optional=True)
 
 
@@ -187,6 +194,7 @@ def _check(
     needs: list[Need],
     reason: str,
 ) -> CheckToDo:
+    # what should have been done last week is asked for today
     by = max(by, facts.as_at)
     bookings = tuple(dict.fromkeys(need.booking.number for need in needs))
     return CheckToDo(subject, line.key, what, max(first, facts.as_at), by, by, bookings, reason)

@@ -49,6 +49,7 @@ def answers(
     facts: Facts, wants: Iterable[Want], batches: list[Batch], shelf: Shelf
 ) -> list[Answer]:
     """One answer per need, in the order of the bookings."""
+    # by identity: a want is changed while it is settled, so it cannot be a key itself
     made_in = {id(want): batch for batch in batches for want in batch.wants}
     row = [_answer(facts, want, made_in.get(id(want)), shelf) for want in wants]
     return sorted(row, key=lambda a: (a.booking.on, a.booking.minute, *_number(a.ref)))
@@ -102,6 +103,7 @@ def _reasons(facts: Facts, want: Want, batch: Batch | None, shelf: Shelf) -> lis
     held = want.promises if want.settled is Settled.HELD else []
     words += [_why_this_bottle(facts, want.need, promise, shelf) for promise in held]
     if batch:
+        # whoever takes a bottle away should know whose else it is
         with_whom = [need.booking.number for need in batch.needs]
         shared = [
             number for number in dict.fromkeys(with_whom) if number != want.need.booking.number
@@ -206,6 +208,7 @@ def _source(source: Source) -> Draw:
 
 
 def _make_reasons(facts: Facts, batch: Batch, kept: bool) -> list[str]:
+    # what an ingredient serves is a batch for many: their numbers alone, or the line runs over
     parts = [
         f"{item.wants[0].ref if len(item.wants) == 1 else _refs(item.wants)} "
         f"{say(item.volume, Kind.VOLUME)}"

@@ -29,6 +29,7 @@ def _solute(facts: Facts, product: Line) -> tuple[Ingredient, ...]:
     if product.strength is None:
         return ()
     same = [line for _, line in sorted(facts.lines.items()) if line.substance == product.substance]
+    # diluting needs more strength than the product; equal strength is the product itself
     stronger = [line for line in same if _stronger(line, product)]
     solutions = [line.key for line in stronger if line.form is Form.SOLUTION]
     solids = [line.key for line in same if line.form is Form.SOLID]

@@ -37,6 +37,7 @@ class Drawing:
         # the solute first, as a person reads it; then by name, whatever the order of the rows
         row = sorted(groups.items(), key=lambda g: (g[0][0].role != "solute", *g[0][1:]))
         for (ingredient, _, _), parts in row:
+            # every ingredient first: the shortest one settles the volume for all
             self._no_more_than_held(batch, ingredient, parts, share_of(batch, parts))
         for (ingredient, _, _), parts in row:
             self._draw(batch, ingredient, parts, share_of(batch, parts))
@@ -50,6 +51,7 @@ class Drawing:
         if not promises or any(part.to_buy for part in parts):
             return
         numbers = {promise.bottle for promise in promises}
+        # any jar of a solid will do; another bottle of a solution may be of another strength
         if line.form is Form.SOLID:
             numbers |= set(self._jars(batch, ingredient, line))
         held = sum(self.shelf.left[number] for number in numbers)
@@ -80,6 +82,7 @@ class Drawing:
             self.waiting.update({id(part): source for part in parts})
             return
         numbers = [promise.bottle for part in parts for promise in part.promises]
+        # given back before it is drawn again, or the shelf would count it twice
         for part in parts:
             for promise in part.promises:
                 self.shelf.release(promise)

@@ -33,6 +33,7 @@ class Need:
         """What is still to be found: nothing once its amount without spare was drawn."""
         drawn = sum(draw.amount for draw in self.drawn)
         plain = amount_needed(self.requirement, self.booking.groups, 0)
+        # spare is for accidents: a class that was served without it wants no more
         return 0 if drawn and drawn >= plain else max(0, self.amount - drawn)
 
     @property
@@ -50,6 +51,7 @@ class Need:
         """Who is served first: firm before pencilled, then by day, time and number."""
         pencilled = int(self.booking.firmness is Firmness.PENCILLED)
         booking = self.booking
+        # the number last: a draw of lots, but one that always falls the same way
         number = natural(booking.number)
         return pencilled, booking.on, booking.minute, number, self.requirement.number
 
@@ -92,6 +94,7 @@ def amount_needed(requirement: Requirement, groups: int, spare: int) -> int:
     total = requirement.amount * count_of(requirement.per, groups)
     if not requirement.spare:
         return total
+    # in whole numbers throughout: a float would now and then round a whole one up by one
     return -(-total * (1000 + spare) // 1000)
 
 
@@ -117,6 +120,7 @@ def _need(
     amount = amount_needed(requirement, booking.groups, booking.spare)
     words = _sum_in_words(requirement, booking, line, amount)
     ref = f"{booking.number}.{requirement.number}"
+    # the ledger names the booking and not the recipe line, so the first of a kind is filled
     mine = _take(drawn.get((booking.number, line.key), []), amount)
     return Need(ref, booking, recipe, requirement, line, amount, words, mine)
 

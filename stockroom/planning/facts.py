@@ -266,6 +266,7 @@ class Balance:
 
     def here(self, day: date) -> bool:
         """True when it can be used that day."""
+        # both days away: it goes off in the morning and comes back in the evening
         return not any(first <= day <= last for first, last in self.away)
 
 

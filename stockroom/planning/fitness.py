@@ -17,6 +17,7 @@ from stockroom.planning.facts import (
 )
 from stockroom.planning.shelf import Judge
 
+# a bottle found at exactly the limit will do, whatever the last binary digit says
 _SLACK = 1e-9
 
 
@@ -36,6 +37,7 @@ def judge_for_dilution(line: Line, product: Line, per_dm3: int | None) -> Judge:
 
     def judge(_: Bottle, judged: Verdict) -> str:
         strength = judged.strengths.expected
+        # where the recipe gives an amount, strength was weighed up by whoever wrote it
         if per_dm3 is not None or strong_enough(line, strength, product):
             return ""
         held, wanted = say_strength(line, strength), say_strength(product, product.strength)
@@ -47,6 +49,7 @@ def judge_for_dilution(line: Line, product: Line, per_dm3: int | None) -> Judge:
 def too_old(requirement: Requirement, bottle: Bottle, on: date) -> str:
     """Why the bottle is not fresh enough for the recipe line on the day; "" if it is."""
     made = bottle.record.made
+    # a bought bottle has no day made, and is never fresh
     if requirement.fresh and made != on:
         return "must be made the same morning"
     if requirement.freshest_days is None or made is None:
@@ -67,6 +70,7 @@ def bounds(requirement: Requirement) -> tuple[float, float] | None:
     low, high = requirement.lowest, requirement.highest
     if low is None or high is None or requirement.closeness is Closeness.PRESENT:
         return None
+    # whoever wrote a range has thought of the tolerance; it is not widened again
     if high > low:
         return low, high
     part = requirement.may_differ or requirement.tolerance or TOLERANCE[requirement.closeness]

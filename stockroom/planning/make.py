@@ -68,11 +68,13 @@ class _Making:
 
     def run(self) -> Made:
         for key in settling_order(self.facts):
+            # two strengths of stock in one batch would give a strength nobody has worked out
             groups: dict[tuple[object, ...], list[Want]] = {}
             for want in self.to_make.get(key, []):
                 groups.setdefault(self._signature(want), []).append(want)
             for signature in sorted(groups, key=str):
                 self._make_line(self.facts.lines[key], groups[signature])
+        # numbered at the end, in the order of the days, as a person works through them
         self.batches.sort(key=lambda b: (b.start, b.line.key, b.needs[0].rank))
         for number, batch in enumerate(self.batches, 1):
             batch.id = f"M{number:02d}"
@@ -145,6 +147,7 @@ class _Making:
         deadline = min(item.deadline for item in run.items)
         calendar = self.facts.calendar
         start = latest_start(deadline, method, calendar, run.on)
+        # the last start may fall on a later day than the one chosen: then its morning will do
         start = start if start and start[0] == run.on else (run.on, calendar.open_from)
         volume, forced, reasons = sizing.volume(run)
         ready = ready_at(start, method, calendar)

@@ -106,6 +106,7 @@ class _Netting:
                 self._queue(want)
         for key in settling_order(self.facts):
             self.passed.add(key)
+            # sorted anew on each line: who falls back to it keeps the place of its booking
             for want in sorted(self.waiting.get(key, []), key=lambda w: w.need.rank):
                 self._settle_one(want)
         for want in wants:
@@ -142,6 +143,7 @@ class _Netting:
             want.reasons.append(refused)
         elif not refused and self.serving.from_shelf(want, line):
             want.settled = Settled.HELD
+        # a next choice is tried before buying, since what is held costs nothing
         elif more and (refused or not self._may_make(want, line)):
             want.tried += 1
             self._queue(want)
@@ -167,6 +169,7 @@ class _Netting:
         return frozenset(self.facts.lines[key].substance for key in keys if key in self.facts.lines)
 
     def _may_make(self, want: Want, line: Line) -> bool:
+        # a stock made for this alone would be weighed out and then diluted: twice the work
         held_only = want.ingredient is not None and line.key in want.ingredient.only_if_held
         return line.key in self.facts.methods and not held_only
 
@@ -279,6 +282,7 @@ class _Netting:
 
     def arrival(self, line: Line) -> date:
         """The open day an order placed today would come, at the shortest lead time known."""
+        # the dearest pack may be the quickest; whether it is worth it is for the order to say
         leads = [pack.lead for pack in line.packs if pack.lead is not None]
         lead = min(leads, default=self.facts.house.default_lead)
         return self.facts.calendar.after(self.facts.as_at, lead)
@@ -291,6 +295,7 @@ class _Netting:
         if want.settled is not Settled.MAKE or want.method is None or want.latest is None:
             return (want.available, 0) if want.available else today
         ready = max([today, *(self._available(part) for part in want.parts)])
+        # what is ready after the hour work must start serves only the next open day
         first = ready[0] if ready[1] <= want.latest[1] else self.facts.calendar.after(ready[0], 1)
         want.ready_from, done = earliest_ready(first, want.method, self.facts.calendar)
         if want.ready_from > want.latest[0]:

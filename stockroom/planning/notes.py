@@ -16,7 +16,9 @@ from stockroom.planning.facts import Booking, Facts, Form, Recipe
 from stockroom.planning.shelf import Shelf
 from stockroom.safety.neighbours import tight_caps, wrong_neighbours
 
+# five hours of hands-on work fill a day, since classes take the rest: ours, no source
 HEAVY_DAY_MINUTES = 300
+# common practice, no source
 _MIX_BEFORE, _DESTROY_AFTER = 30, 30
 _DAY_MINUTES = 24 * 60
 
@@ -79,6 +81,7 @@ def _heavy_days(makes: list[Make]) -> Iterable[Finding]:
     movable: dict[str, list[str]] = {}
     for make in makes:
         day, finished = make.on.isoformat(), (make.finish_on or make.on).isoformat()
+        # filtering on Monday what was started on Friday is Monday's work
         minutes[day] = minutes.get(day, 0) + make.minutes - make.finishing
         minutes[finished] = minutes.get(finished, 0) + make.finishing
         if make.earliest < make.on:
@@ -95,6 +98,7 @@ def _full_mornings(facts: Facts, makes: list[Make]) -> Iterable[Finding]:
     opens = facts.calendar.open_from
     for day in sorted({make.on for make in makes if make.fresh}):
         row = [make for make in makes if make.fresh and make.on == day]
+        # later classes are left out: while the first is in, there is time for theirs
         first = min(begins[number] for make in row for number in make.bookings)
         due = [m for m in row if min(begins[number] for number in m.bookings) == first]
         minutes = sum(make.minutes for make in due)
@@ -132,6 +136,7 @@ def _levels(levels: list[Level]) -> Iterable[Finding]:
 
 def _shelf(facts: Facts) -> Iterable[Finding]:
     meant = {place.name: place.meant_for for place in facts.places}
+    # an empty bottle waits to be washed and is no danger to anybody
     here = [b for b in facts.bottles if b.left and not b.record.gone and not b.record.not_found]
     group = {b.number: facts.lines[b.line].storage_group for b in here}
     beside: dict[str, set[str]] = {}
@@ -148,6 +153,7 @@ def _shelf(facts: Facts) -> Iterable[Finding]:
             times = warmth(rule.law, place)
             text = f"stands at {place:g} °C and fades {times:.1f} times as fast there: move it"
             yield Finding(bottle.number, text)
+        # at the end of the term, so that it is dealt with before and not after
         judged = verdict(bottle.record, rules, facts.end)
         if judged.safety and judged.condition is Condition.PAST:
             text = (

@@ -13,6 +13,7 @@ _NUMBERED = re.compile(r"(\D*)(\d*)(.*)", re.DOTALL)
 @lru_cache(maxsize=65536)
 def natural(number: str) -> Natural:
     """A key that sorts label numbers as a person does: letters, then the number, then the rest."""
+    # a label may carry anything; only its first number counts as one
     match = _NUMBERED.fullmatch(number)
     assert match is not None, number
     return match[1], int(match[2] or 0), match[3]

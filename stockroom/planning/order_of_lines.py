@@ -31,6 +31,7 @@ def _successors(facts: Facts) -> dict[str, list[str]]:
     for method in methods:
         for ingredient in method.ingredients:
             for first, second in zip(ingredient.lines, ingredient.lines[1:], strict=False):
+                # two methods of opposite taste are no circle: only what is made from itself is
                 if not _leads(after, second, first):
                     after.setdefault(first, []).append(second)
     return after
@@ -63,6 +64,7 @@ def _visit(
         chain = " from ".join((*path[path.index(key) :], key))
         raise NotAllowed(f"Made from itself: {chain}.", "Mend the method of one of them.")
     state[key] = 1
+    # by name, so that the rows' order in the tables cannot change a plan
     for following in sorted(set(after.get(key, []))):
         _visit(following, after, state, order, (*path, key))
     state[key] = 2

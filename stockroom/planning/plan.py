@@ -59,6 +59,7 @@ def _settled(facts: Facts, needs: tuple[Need, ...]) -> tuple[Netted, Made]:
     while True:
         netted = net(facts, needs)
         made = make_up(facts, netted.wants, netted.shelf, exact)
+        # only the chains that ran dry are made exact: the others keep their round figures
         if made.outgrown <= exact:
             return netted, made
         exact |= made.outgrown
@@ -73,6 +74,7 @@ def usage_of_period(facts: Facts) -> list[Use]:
 
 def _with_orders(row: list[Answer], batches: list[Batch], buying: list[Order]) -> list[Answer]:
     """Each need that waits for an order given the order's number: the first it waits for."""
+    # a line has one order at most
     by_line = {order.line: order.id for order in buying}
     bought = {batch.id: lines_to_buy(batch) for batch in batches}
     answers = []
@@ -94,6 +96,7 @@ def _shown(whole: Plan) -> Plan:
     """Only what serves bookings of the period, and what must be done or ordered for them."""
     needs = tuple(a for a in whole.needs if whole.start <= a.booking.on <= whole.end)
     shown = {answer.booking.number for answer in needs}
+    # nothing left out: then what hangs on no booking is not left out either
     if len(needs) == len(whole.needs):
         return whole
     others = {answer.booking.number for answer in whole.needs} - shown

@@ -42,6 +42,7 @@ def readiness(
     wanted = set(numbers)
     needs = tuple(answer for answer in plan.needs if answer.booking.number in wanted)
     makes = tuple(make for make in plan.makes if wanted & set(make.bookings))
+    # a look that only saves a make is no reason to say no
     checks = tuple(
         check for check in plan.checks if not check.optional and wanted & set(check.bookings)
     )

@@ -11,6 +11,7 @@ from stockroom.planning.shelf import Judge, Promise, Shelf, solute_held
 from stockroom.planning.wants import Settled, Want
 from stockroom.safety.bars import barred_by
 
+# a fifth of what an exact line allows, so that putting together never decides a need
 _SAME_STRENGTH = 1e-3
 """Bottles whose expected strengths agree this closely (as a fraction) may be put together."""
 
@@ -24,6 +25,7 @@ class Serving:
 
     def from_shelf(self, want: Want, line: Line, *, last_drops: bool = False) -> bool:
         """Promise it from the shelf if that can be done; `last_drops` lifts "too close"."""
+        # whatever stands there should have been destroyed: it is never counted on
         if line.never_kept:
             return False
         good = []
@@ -42,6 +44,7 @@ class Serving:
 
     def rest_of_jars(self, want: Want, line: Line) -> None:
         """Promise what there is of a solid, however little; the rest is for buying."""
+        # solids only: the rest of a solution and a new bottle of it would be two strengths
         if line.form is not Form.SOLID:
             return
         missing = self.amount_from(want, line)
@@ -78,6 +81,7 @@ class Serving:
         """Why the recipe bars what this bottle was made from; "" if it does not."""
         recipe = want.need.recipe
         own = {self.facts.lines[one.line].substance for one in recipe.requirements}
+        # what it was made from is still in it, whatever its own label says
         for number in bottle.lineage if recipe.bars else ():
             parent = self.shelf.bottle.get(number)
             substance = self.facts.lines[parent.line].substance if parent else ""
@@ -115,6 +119,7 @@ class Serving:
             share = min(missing, self.shelf.left[number])
             shares.append((number, share))
             missing -= share
+        # only the last of them is left with something in it
         if missing or self.shelf.too_close(*shares[-1], want.need.booking.number):
             return []
         return shares

@@ -58,6 +58,7 @@ class Shelf:
             for key, line in facts.lines.items()
             if any(rule.origin is Origin.OPENED for rule in line.rules)
         }
+        # sorted once here, and every tie further on is broken by it
         for bottle in sorted(facts.bottles, key=lambda b: natural(b.number)):
             self._by_line[bottle.line].append(bottle)
 
@@ -170,6 +171,7 @@ class Shelf:
 
     def promise(self, made: Promise) -> None:
         """Set aside part of a bottle; the balance never goes below zero."""
+        # a fault of the planner and not of the user's tables, so no StockroomError
         if made.amount > self.left[made.bottle]:
             raise AssertionError(
                 f"{made.bottle} promised {made.amount} of {self.left[made.bottle]}"
@@ -190,6 +192,7 @@ class Shelf:
         bottle = self.bottle[number]
         line = self.facts.lines[bottle.line]
         after = self.left[number] - amount
+        # what clings to glass and pipettes is never got out; a solid is weighed to the last
         if line.kind is not Kind.VOLUME or booking in bottle.meant_for:
             return False
         return after < max(TOO_CLOSE_UL, TOO_CLOSE_PART * bottle.left)

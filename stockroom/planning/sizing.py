@@ -37,6 +37,7 @@ class Sizing:
         volume, _, _ = self.volume(run)
         minutes = (self.method.minutes + self.method.finish_minutes) * self.vessels(volume)
         minutes += self.method.finish_minutes * len(self.retitrations(run))
+        # a heel that becomes stock is not thrown away, so it costs nothing here
         kept = keeps(self.facts, self.line, volume - run.needed, run.on)
         return minutes, 0 if kept else volume - run.needed
 
@@ -51,6 +52,7 @@ class Sizing:
             volume = self.method.smallest_batch
             reasons.append(f"never less than {say(volume, Kind.VOLUME)} is made")
         weighable, why = self._weighable(run, volume)
+        # more of it and not a finer figure: the balance is what it is
         volume = max(volume, -(-weighable // step) * step)
         reasons += [why] if why else []
         if self.vessels(volume) > 1 and self.most:
@@ -65,6 +67,7 @@ class Sizing:
             for solid, per_dm3 in self._solids(run)
         ]
         here = [balance for balance in self.facts.balances if balance.here(run.on)]
+        # the finest there that day; whether it is free that hour nobody enters
         balance = min(here, key=lambda b: (b.step, b.name), default=None)
         if not grams or balance is None:
             return volume, "No balance that day" if grams and self.facts.balances else ""
@@ -73,6 +76,7 @@ class Sizing:
         if not 0 < least_of_all < least:
             return volume, ""
         scaled = round(volume * least / least_of_all)
+        # several vessels would each be weighed for, and each too little again
         if self.most and scaled > self.most:
             return volume, _through_an_intermediate(least_of_all, least, volume)
         return scaled, _too_little(least_of_all, least, tolerance, balance, scaled)

@@ -35,6 +35,7 @@ def past_on(facts: Facts, wants: Iterable[Want], on: date) -> list[PastBottle]:
 def _concerned(wants: Iterable[Want], on: date) -> dict[str, tuple[str, ...]]:
     concerned: dict[str, list[str]] = {}
     for want in [part for root in wants if root.need.on >= on for part in root.tree()]:
+        # also where it was not taken: that is where its being past hurts
         touched = [number for number, _ in want.passed_over]
         for number in [*touched, *(promise.bottle for promise in want.promises)]:
             bookings = concerned.setdefault(number, [])
@@ -55,6 +56,7 @@ def _past(facts: Facts, bottle: Bottle, judged: Verdict, bookings: tuple[str, ..
 
 
 def _apart(one: float | None, other: float | None) -> bool:
+    # a hundredth is about what a burette and an indicator leave open: common practice, no source
     return bool(one and other) and abs((one or 0) / (other or 1) - 1) > 0.01
 
 
@@ -71,6 +73,7 @@ def guesses(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Finding]:
             for text in _about(facts, shelf, bottle, closest.get(number, Closeness.PRESENT)):
                 found[(number, text)] = None
     for want in [part for root in wants for part in root.tree()]:
+        # a date read too early is what may have kept it out
         for number, _ in want.passed_over:
             for text in _two_readings(shelf.bottle[number]):
                 found[(number, text)] = None
@@ -92,6 +95,7 @@ def guesses(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Finding]:
 
 
 def _closest_use(wants: Iterable[Want]) -> dict[str, Closeness]:
+    # a bottle may serve a titration and a rinse: it is doubted for the stricter
     order = list(Closeness)
     closest: dict[str, Closeness] = {}
     for root in wants:
@@ -130,6 +134,7 @@ def _about_strength(line: Line, judged: Verdict, closest: Closeness) -> Iterable
     if line.form is Form.SOLID or strengths.expected is None or strengths.nominal is None:
         return
     expected = say_strength(line, strengths.expected)
+    # under a thousandth the figures print alike, and a guess of nothing is noise
     if abs(strengths.expected / strengths.nominal - 1) > 1e-3 and strengths.found is None:
         yield f"expected {expected} by its rule of fading from the label: never titrated"
     elif strengths.found is None and closest in (Closeness.CLOSE, Closeness.EXACT):
@@ -145,6 +150,7 @@ def inherited_doubt(facts: Facts, bottle: Bottle) -> str:
     A parent overdue its recheck on the day the child was made, or set aside
     since, marks the child; a parent's date does not.
     """
+    # one is enough: either sends the same person to the same bottle
     return _parent_overdue(facts, bottle) or parent_set_aside(facts, bottle)
 
 

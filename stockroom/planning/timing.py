@@ -32,6 +32,7 @@ def ready_at(start: Moment, method: Method, calendar: Calendar) -> Moment:
         return stood
     day, minute = stood
     day_open = calendar.on_or_after(day)
+    # standing ends when it ends, also on a Sunday night; hands wait for the doors
     minute = max(minute, calendar.open_from) if day_open == day else calendar.open_from
     if minute + method.finish_minutes > calendar.open_to:
         day_open, minute = calendar.after(day_open, 1), calendar.open_from
@@ -46,9 +47,11 @@ def latest_start(
     Never later in the day than leaves the hands-on minutes inside staffed hours;
     None, too, for work longer than a staffed day.
     """
+    # hands-on work is not left half done overnight
     if method.minutes > calendar.open_to - calendar.open_from:
         return None
     day = calendar.on_or_before(deadline[0])
+    # day by day and not by a sum: closures and a second spell of work leave no formula
     while day >= floor:
         if ready_at((day, calendar.open_from), method, calendar) <= deadline:
             return day, _latest_minute(day, deadline, method, calendar)
@@ -57,6 +60,7 @@ def latest_start(
 
 
 def _latest_minute(day: date, deadline: Moment, method: Method, calendar: Calendar) -> int:
+    # by halves, since a later start is never ready sooner
     early, late = calendar.open_from, max(calendar.open_from, calendar.open_to - method.minutes)
     while early < late:
         middle = (early + late + 1) // 2
@@ -85,6 +89,7 @@ def deadline_for(
     if fresh or not house.finish_day_before:
         return on, minute
     day_before = on - timedelta(days=1)
+    # nobody need be there while it stands, so a Sunday will do for its last day
     if method.stands_hours and not method.finish_minutes:
         return day_before, calendar.open_to
     return calendar.before(on, 1), calendar.open_to

@@ -37,6 +37,7 @@ def usage(facts: Facts, needs: Iterable[Need]) -> list[Use]:
         form = SOLUTION if need.line.form is Form.SOLUTION else BOUGHT
         key = (form, need.line.key, asked if form == SOLUTION else need.line.strength_text)
         _add(totals, key, need.booking.number, need.amount)
+        # told apart for whoever has to justify the term's spending
         plain = amount_needed(need.requirement, need.booking.groups, 0)
         spare[key] = spare.get(key, 0) + need.amount - plain
         if form == SOLUTION and need.line.key in bought_lines:
@@ -68,6 +69,7 @@ def _explode_into(
 ) -> None:
     method = facts.methods.get(line.key)
     for ingredient in method.ingredients if method else ():
+        # the choice a bare cupboard would force: what is held this term is gone by next
         source = facts.lines[_plain_choice(ingredient)]
         amount = draw_for(source, source.strength, line, volume, ingredient.per_dm3)
         form = BOUGHT if source.key in bought_lines else STOCK

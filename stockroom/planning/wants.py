@@ -71,11 +71,13 @@ class Want:
     @property
     def use_day(self) -> date:
         """The day it is used: the booking's, or the last day its make can start."""
+        # the latest start, not the day chosen in the end: a bottle good then is good before
         return self.need.on if self.under is None else self.deadline[0]
 
     @property
     def purpose(self) -> Purpose:
         """Exact only for the need itself: what it is made from only has to be known."""
+        # a stock is measured by what it was found to be, so its batch need not be exact
         exact = self.under is None and self.need.requirement.closeness is Closeness.EXACT
         return Purpose.EXACT if exact else Purpose.ANY
 
@@ -83,6 +85,7 @@ class Want:
     def tolerance(self) -> float | None:
         """How far off its amount may be, as a fraction; None when only presence matters."""
         requirement = self.need.requirement
+        # the recipe's own figure before the word, which only stands for one
         return requirement.tolerance or TOLERANCE[requirement.closeness]
 
     def tree(self) -> list[Want]:

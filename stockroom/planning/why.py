@@ -13,6 +13,7 @@ from stockroom.planning.facts import Bottle, Facts, Form
 from stockroom.planning.tell import inherited_doubt
 from stockroom.safety.bars import offer
 
+# what fits on a phone beside a bench, and what a person reads at all
 LINES = 5
 
 
@@ -30,6 +31,7 @@ def why(facts: Facts, plan: Plan, ref: str) -> tuple[str, ...]:
         _standing(facts, plan, wanted),
         _by_name(plan, wanted),
     ):
+        # numbers before names: nobody names a substance "M14"
         if lines:
             return folded(lines)
     return ()
@@ -51,6 +53,7 @@ def instead(facts: Facts, plan: Plan, ref: str, other: str) -> tuple[str, ...]:
     if not answers:
         return ()
     rulings = [_ruling(facts, answer, other) for answer in answers]
+    # a booking may want a line twice: a swap allowed for one of them is the news
     allowed = [words for good, words in rulings if good]
     return folded(allowed or dict.fromkeys(words for _, words in rulings))
 
@@ -80,6 +83,7 @@ def _needs(plan: Plan, wanted: str) -> list[str]:
 
 
 def _by_outcome(answers: list[Answer], plan: Plan) -> Iterable[str]:
+    # the worst first, since the fifth line swallows the rest
     for outcome in (Outcome.REFUSED, Outcome.SHORT, Outcome.BUY, Outcome.MAKE, Outcome.HAVE):
         row = [a for a in answers if a.outcome is outcome]
         if not row:

@@ -36,6 +36,7 @@ def earliest_start(
 
 def good_until(line: Line, made: date) -> date | None:
     """The last good day of a batch of a line made on a day; None when no rule limits it."""
+    # whatever its rules say: never kept is used the day it is mixed
     if line.never_kept:
         return made
     return _good_until(line.rules, line.strength, made)
@@ -44,6 +45,7 @@ def good_until(line: Line, made: date) -> date | None:
 @lru_cache(maxsize=4096)
 def _good_until(rules: tuple[Rule, ...], strength: float | None, made: date) -> date | None:
     record = Record(made=made, nominal=strength)
+    # a recheck ends what is known of its strength and not its use
     limits = limits_of(record, rules, made, Purpose.ANY)
     return min((x.until for x in limits if not x.known_until), default=None)
 

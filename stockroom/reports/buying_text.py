@@ -22,6 +22,7 @@ def buying_text(plan: Plan, width: int) -> str:
 
 def order_lines(plan: Plan, width: int, *, reasons: int = 1) -> list[str]:
     """Orders by order-by day; each with what, cost, shares, and up to so many reasons."""
+    # by item within a day, so that one supplier's things can be ticked off by name
     ordered = sorted(plan.orders, key=lambda order: (order.order_by, order.item, order.id))
     return [line for order in ordered for line in _order(order, width, reasons)]
 
@@ -67,5 +68,6 @@ def _shares(plan: Plan, width: int) -> list[str]:
     for order in plan.orders:
         pence.update(dict(order.shares))
     rows = [(department, money(share)) for department, share in sorted(pence.items())]
+    # from the orders and not the shares, so that a lost penny would show
     rows += [("all", money(sum(order.pence for order in plan.orders)))] if rows else []
     return columns(rows, width)

@@ -108,6 +108,7 @@ def _top(plan: Plan) -> Data:
 
 
 def _measured(micro: int, kind: Kind) -> Data:
+    # six figures: enough for any sum, and none of the float's tail
     return {"amount": rounded(micro / PER_UNIT[kind], 6), "unit": BASE_UNIT[kind]}
 
 
@@ -210,6 +211,7 @@ def _order(order: Order) -> Data:
         "order_by": order.order_by.isoformat(),
         "arrives": order.arrives.isoformat(),
         "late_by_open_days": order.late,
+        # pounds as a number, as the contract has it; pence stay whole inside
         "cost": order.pence / 100,
         "shares": {department: pence / 100 for department, pence in order.shares},
         "for": list(order.for_bookings),
@@ -258,4 +260,5 @@ def _finding(finding: Finding) -> Data:
 
 
 def _about(subject: str, *, otherwise: str) -> Data:
+    # a finding carries no kind, so the label's shape has to tell
     return {"bottle" if is_bottle(subject) else otherwise: subject}

@@ -23,6 +23,7 @@ def makes_by_day(makes: tuple[Make, ...], width: int, *, steps: bool = False) ->
 
     Each caution is printed once a day, under the first make it belongs to.
     """
+    # whoever is in on the second day reads only that day
     days = sorted({make.on for make in makes} | {m.finish_on for m in makes if m.finish_on})
     return [line for when in days for line in _one_day(makes, when, width, steps=steps)]
 
@@ -76,6 +77,7 @@ def _finishing(make: Make, width: int) -> str:
 
 
 def _cautions(make: Make, said: set[str], width: int) -> list[str]:
+    # the tenth "acid into water" of a page is read by nobody
     new = [caution for caution in make.cautions if caution not in said]
     said.update(new)
     return [wrap(f"! {caution}", width, indent=8, hang=10) for caution in new]

@@ -13,6 +13,7 @@ def past_text(plan: Plan, on: date, width: int) -> str:
     """The bottles not to be counted on, and the first booking each matters for."""
     about = f"Not sound on {day(on)}, as at {day(plan.as_at)}: {counted(len(plan.past), 'bottle')}"
     body = section("PAST, WEAK, UNDATED", past_lines(plan, width))
+    # a command that can be typed as it stands beats one with a gap in it
     one = plan.past[0].bottle if plan.past else "BOTTLE"
     following = foot(width, f"stockroom why {one}", f"stockroom look {one} --good")
     return page([head(plan, width, about), body or "Every bottle is sound.", following])

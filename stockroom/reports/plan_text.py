@@ -59,12 +59,14 @@ def cannot_lines(plan: Plan, width: int) -> list[str]:
         )
         for short in plan.short
     ]
+    # a refusal without an amount short would else be told nowhere
     rows += [_refused(need) for need in plan.needs if _untold(need, told)]
     return columns(rows, width)
 
 
 def booking_lines(plan: Plan, width: int) -> list[str]:
     """One line a booking with its outcome counts, and its needs under it."""
+    # grouping only joins neighbours
     ordered = sorted(plan.needs, key=lambda need: (need.booking.on, need.booking.number))
     lines: list[str] = []
     for _, group in groupby(ordered, key=lambda need: need.booking.number):

@@ -39,12 +39,14 @@ def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> s
 
 def why_text(reasons: tuple[str, ...], *, practice: bool = False) -> str:
     """The reasons, a line each and never broken: five lines stay five lines."""
+    # not wrapped: the promise is five lines, and a terminal folds them itself
     lines = [raised(reason) for reason in reasons]
     return "\n".join([PRACTICE, *lines] if practice else lines)
 
 
 def check_lines(checks: tuple[CheckToDo, ...], width: int) -> list[str]:
     """Titrations and looks to do, best day first, with the days they may be done between."""
+    # by the day to do them and not the last day allowed: it is a list of work
     ordered = sorted(checks, key=lambda check: (check.best, check.subject))
     return columns([(day(check.best), _check(check)) for check in ordered], width)
 
@@ -57,6 +59,7 @@ def need_lines(needs: tuple[Answer, ...], width: int) -> list[str]:
 def served(need: Answer) -> str:
     """A need and how it is served: "starch 0.5 % w/v 88 cm³ from M03"."""
     wanted = f"{named(need.item, need.strength)} {amount(need.amount, need.kind)}"
+    # nothing serves it, so "from" would promise something
     if need.outcome in (Outcome.SHORT, Outcome.REFUSED):
         return f"{wanted} (see {need.order})" if need.order else wanted
     origin = [*_bottles(need), need.make, need.order]

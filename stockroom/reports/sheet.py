@@ -28,6 +28,7 @@ def wrap(text: str, width: int, *, indent: int = 0, hang: int | None = None) -> 
     later = indent + 2 if hang is None else hang
     filled = textwrap.fill(
         raised(text),
+        # a window pulled to nothing would else give one letter a line, or an error
         max(width, NARROWEST),
         initial_indent=" " * indent,
         subsequent_indent=" " * later,
@@ -75,6 +76,7 @@ def columns(rows: Sequence[Sequence[str]], width: int, *, indent: int = 2) -> li
         return []
     widths = [max(len(cell) for cell in column) for column in zip(*rows, strict=True)][:-1]
     start = indent + sum(widths) + 2 * len(widths)
+    # a column of ten letters is no column
     below = start > 2 * width // 3
     return [_row(row, widths, width, indent, start, below=below) for row in rows]
 
@@ -92,6 +94,7 @@ def _row(
 
 def guesses(plan: Plan, width: int) -> str:
     """The guesses leaned on, count first; "nothing guessed" when there are none."""
+    # said also when there are none: silence would read as not looked for
     if not plan.guesses:
         return "GUESSES: nothing guessed"
     lines = [wrap(f"{each.subject}: {each.text}", width, indent=2) for each in plan.guesses]

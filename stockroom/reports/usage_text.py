@@ -38,6 +38,7 @@ def _lines(uses: list[Use], width: int) -> list[str]:
 
 
 def _about(use: Use) -> str:
+    # of it, not besides: the total has it in already
     spare = f", {amount(use.spare, use.kind)} of it spare" if use.spare > 0 else ""
     each = ", ".join(f"{number}{TIED}{amount(part, use.kind)}" for number, part in use.by_booking)
     return f"{named(use.item, use.strength)}{spare}{': ' + each if each else ''}"

@@ -51,6 +51,7 @@ def rounded(number: float, figures: int) -> float:
     """`number` to so many significant figures; no figure left of the point is lost."""
     if not number:
         return 0.0
+    # 1 234 cm³ stays 1 234 with three figures asked for: a measured whole is not rounded off
     places = figures - 1 - math.floor(math.log10(abs(number)))
     return round(number, max(0, places))
 
