@@ -12,7 +12,17 @@ import typer
 import typer.core
 
 from stockroom import __version__
-from stockroom.cli import bench, bookings, checks, database, diary, plan, stock
+from stockroom.cli import (
+    bench_dilute,
+    bench_strength,
+    bench_weigh,
+    bookings,
+    checks,
+    database,
+    diary,
+    plan,
+    stock,
+)
 from stockroom.cli.shared import ANYWHERE, pull
 from stockroom.errors import StockroomError
 
@@ -52,9 +62,9 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "cancel": bookings.cancel,
     },
     "Bench sums (no store needed)": {
-        "strength": bench.strength,
-        "weigh": bench.weigh,
-        "dilute": bench.dilute,
+        "strength": bench_strength.strength,
+        "weigh": bench_weigh.weigh,
+        "dilute": bench_dilute.dilute,
     },
     "The house": {
         "demo": database.demo,

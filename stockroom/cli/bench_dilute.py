@@ -1,0 +1,43 @@
+"""The bench sum for what to dilute."""
+
+from __future__ import annotations
+
+from typing import Annotated
+
+import typer
+
+from stockroom.cli.bench import Density, StrengthText, Volume, show_sum
+from stockroom.cli.shared import of
+from stockroom.cli.values import amount_of, density_or_none
+
+
+def dilute(
+    ctx: typer.Context,
+    volume: Volume,
+    text: StrengthText,
+    of_what: Annotated[
+        str,
+        typer.Option("--of", metavar="NAME", help="A name or a formula; a bottle says its own."),
+    ] = "",
+    source: Annotated[
+        str, typer.Option("--from", metavar="STRENGTH|BOTTLE", help='"91 vol", or B01.')
+    ] = "",
+    density: Density = None,
+) -> None:
+    """The volume of a stronger solution to take for a dilution.
+
+    Example: stockroom dilute "500 cm3" "0.100 mol/dm3" --from "91 vol" --of "hydrogen peroxide"
+    """
+    from stockroom.service import bench_dilute
+
+    shared = of(ctx)
+    diluted = bench_dilute.dilute(
+        amount_of(volume),
+        text,
+        source=source,
+        of=of_what,
+        density=density_or_none(density, "--density"),
+        store=shared.path,
+        as_at=shared.given_day,
+    )
+    show_sum(shared, diluted)
