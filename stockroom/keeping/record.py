@@ -22,12 +22,18 @@ class CheckKind(StrEnum):
 
 @dataclass(frozen=True, slots=True)
 class Check:
-    """One dated check. `strength` is in the line's own unit, for a found strength only."""
+    """One dated check.
+
+    `strength` and its standard `uncertainty` are in the line's own unit, for a found
+    strength only; `peroxide_mg_kg`, counted as H2O2, is for a peroxide-former's test only.
+    """
 
     on: date
     kind: CheckKind
     passed: bool = True
     strength: float | None = None
+    uncertainty: float | None = None
+    peroxide_mg_kg: float | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -52,13 +52,17 @@ class Law:
 
     order 0: unit/day; order 1: 1/day; order 2: 1/(unit·day). The rate is
     multiplied by `factor_per_10c` for each 10 °C above `at_c`. None for either
-    means temperature is left out of account.
+    means temperature is left out of account. `ea_kj_mol` is an activation energy in
+    the place of the factor. A law with a name, such as "hypochlorite", has its own
+    rate, and the figures here say nothing.
     """
 
     order: int
     rate: float
     at_c: float | None = None
     factor_per_10c: float | None = None
+    ea_kj_mol: float | None = None
+    named: str = ""
 
 
 @dataclass(frozen=True, slots=True)
@@ -70,7 +74,8 @@ class Rule:
     `upto` bound the nominal strength (above < strength ≤ upto), `colder_than`
     and `warmer_than` the place. `at_c` with `factor_per_10c` shortens `lasts` in a warmer
     place and lengthens it in a colder one. `safety` dates are never moved by a
-    quality check. `source` says who says so.
+    quality check. `source` says who says so, and `house` that the house
+    set it itself in the place of a starter value.
     """
 
     kind: RuleKind
@@ -86,6 +91,7 @@ class Rule:
     colder_than: float | None = None
     warmer_than: float | None = None
     source: str = ""
+    house: bool = False
 
     def holds_for(self, strength: float | None, temperature_c: float | None) -> bool:
         """True when this rule speaks of a bottle of that nominal strength in that place.

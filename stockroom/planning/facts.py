@@ -271,6 +271,26 @@ class Balance:
 
 
 @dataclass(frozen=True, slots=True)
+class Glass:
+    """A piece of measuring glass: size and finest mark in µL, and the days it is away.
+
+    `kind` is pipette, graduated pipette, burette, flask or cylinder; `glass_class`
+    is "A", "B" or "" where nobody looked.
+    """
+
+    name: str
+    kind: str
+    size: int
+    glass_class: str = ""
+    step: int | None = None
+    away: tuple[tuple[date, date], ...] = ()
+
+    def here(self, day: date) -> bool:
+        """True when it can be used that day."""
+        return not any(first <= day <= last for first, last in self.away)
+
+
+@dataclass(frozen=True, slots=True)
 class Department:
     """Who pays: code, name, and pence left for the term (None: no limit kept)."""
 
@@ -333,6 +353,7 @@ class Facts:
     bookings: tuple[Booking, ...] = ()
     bottles: tuple[Bottle, ...] = ()
     balances: tuple[Balance, ...] = ()
+    glassware: tuple[Glass, ...] = ()
     departments: tuple[Department, ...] = ()
     places: tuple[Place, ...] = ()
     drawn: tuple[Drawn, ...] = ()

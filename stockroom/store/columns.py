@@ -16,12 +16,21 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         "balance": "id balance step source",
         "balance_away": "id balance_id starts_on ends_on",
         "vessel": "id vessel size source",
-        "substance": "id substance formula molar_mass cas storage_group peroxide_former source",
+        "glassware": "id glass kind size glass_class step source",
+        "glassware_away": "id glassware_id starts_on ends_on",
+        "reading": "id place_id at centi",
+        "substance": "id substance formula molar_mass cas storage_group peroxide_former density"
+        " note source",
+        "hazard": "id substance_id hazard_class h_code from_percent below_percent basis route ate"
+        " m_factor percent_of how source",
+        "hazard_text": "id line_id signal_word statements pictograms sheet why by entered_on"
+        " entered_at",
         "other_name": "id substance_id name",
         "line": "id key item substance_id form kind strength unit strength_text formula"
         " molar_mass assay density level largest_batch never_kept vented_cap keep_note source",
         "keeping_rule": "id line_id rule lasts_count lasts_unit counted_from purpose safety"
-        " decay_order rate at_c factor_per_10c above upto colder_than warmer_than source",
+        " decay_order rate at_c factor_per_10c ea_kj_mol named_law above upto colder_than"
+        " warmer_than source house in_use",
         "method": "id line_id minutes minutes_guessed finish_minutes stands_hours titrated"
         " smallest_batch steps cautions source",
         "ingredient": "id line_id ingredient_id alternative role per_dm3 only_if_held source",
@@ -40,6 +49,6 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         "parent": "id bottle_id parent_id",
         "row_change": "id table_name row_key column_name before after why by entered_on entered_at",
         "entry": "id bottle_id kind happened_on entered_on entered_at by change strength"
-        " strength_text passed place_id reason note booking puts_right",
+        " strength_text uncertainty peroxide_mg_kg passed place_id reason note booking puts_right",
     }.items()
 }

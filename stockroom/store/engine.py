@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import sqlite3
 from collections.abc import Callable, Iterator
-from contextlib import contextmanager
+from contextlib import closing, contextmanager
 from pathlib import Path
 from typing import Any
 
@@ -19,10 +19,11 @@ from stockroom.errors import StoreTrouble
 from stockroom.store.reading import Reader
 from stockroom.store.trouble import (
     BUSY_SECONDS,
-    check_revision,
+    REVISIONS,
     check_there,
     foreign,
     in_words,
+    is_older,
     translated,
 )
 
@@ -45,10 +46,33 @@ def writing(path: Path) -> Iterator[Session]:
         engine = _engine(path, mode="rw")
         try:
             with Session(engine) as session, session.begin():
-                check_revision(path, _revision(session.connection(), path))
+                if is_older(path, _revision(session.connection(), path)):
+                    put_by(path)
+                    migrate(session.connection())
                 yield session
         finally:
             engine.dispose()
+
+
+def bring_up_to_date(path: Path) -> None:
+    """Bring a store in an earlier layout to the newest, after putting a copy beside it.
+
+    Raises: StoreTrouble when it cannot be written; the store is then as it was.
+    """
+    with writing(path):
+        pass
+
+
+def put_by(path: Path) -> Path:
+    """Copy a store beside itself before its layout is changed; the copy's path.
+
+    A copy that is there already is left alone: it is of the same, older layout.
+    """
+    copy = path.with_name(f"{path.name}.before-{REVISIONS[-1]}")
+    if not copy.exists():
+        with closing(sqlite3.connect(path)) as held, closing(sqlite3.connect(copy)) as new:
+            held.backup(new)
+    return copy
 
 
 def reader_in(session: Session) -> Reader:

@@ -8,7 +8,14 @@ from dataclasses import dataclass
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Closeness, Firmness, Form, Per
-from stockroom.store import rows_bottles, rows_house, rows_lines, rows_methods, rows_recipes
+from stockroom.store import (
+    rows_bottles,
+    rows_hazards,
+    rows_house,
+    rows_lines,
+    rows_methods,
+    rows_recipes,
+)
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.likeness import unknown
@@ -38,9 +45,17 @@ TABLES: dict[str, Table] = {
     "departments": _table("department name left_gbp", rows_house.read_department),
     "balances": _table("balance step_g away_from away_to", rows_house.read_balance),
     "vessels": _table("vessel size_cm3", rows_house.read_vessel),
+    "glassware": _table(
+        "glass kind size_cm3 class step_cm3 away_from away_to", rows_house.read_glassware
+    ),
     "substances": _table(
-        "substance other_names formula cas storage_group peroxide_former",
+        "substance other_names formula cas storage_group peroxide_former density_g_cm3 note",
         rows_lines.read_substance,
+    ),
+    "hazards": _table(
+        "substance hazard_class h_code from_percent below_percent basis route ate m_factor"
+        " percent_of how",
+        rows_hazards.read_hazard,
     ),
     "lines": _table(
         "item strength substance form formula assay_percent density_g_cm3 level_g level_cm3"
@@ -49,7 +64,8 @@ TABLES: dict[str, Table] = {
     ),
     "keeping": _table(
         "line rule lasts counted_from purpose safety order rate rate_of rate_per at_c"
-        " factor_per_10c stronger_than up_to_strength colder_than_c warmer_than_c",
+        " factor_per_10c ea_kj_mol named_law stronger_than up_to_strength colder_than_c"
+        " warmer_than_c",
         rows_lines.read_rule,
     ),
     "methods": _table(
@@ -104,6 +120,10 @@ _YES_NO = ("yes", "no")
 
 WORDS: dict[tuple[str, str], Iterable[str]] = {
     ("house", "setting"): rows_house.SETTINGS,
+    ("glassware", "kind"): rows_house.GLASS_KINDS,
+    ("glassware", "class"): rows_house.GLASS_CLASSES,
+    ("hazards", "basis"): rows_hazards.BASES,
+    ("hazards", "route"): rows_hazards.ROUTES,
     ("lines", "form"): Form,
     ("lines", "measured_in"): Kind,
     ("lines", "vented_cap"): _YES_NO,
@@ -112,6 +132,7 @@ WORDS: dict[tuple[str, str], Iterable[str]] = {
     ("keeping", "purpose"): Purpose,
     ("keeping", "safety"): _YES_NO,
     ("keeping", "order"): ("0", "1", "2"),
+    ("keeping", "named_law"): rows_lines.NAMED_LAWS,
     ("keeping", "rate_per"): tuple(rows_lines.DAYS_PER),
     ("methods", "titrated"): _YES_NO,
     ("ingredients", "only_if_held"): _YES_NO,

@@ -43,6 +43,8 @@ class Event:
     change: int = 0
     strength: float | None = None
     strength_text: str = ""
+    uncertainty: float | None = None
+    peroxide_mg_kg: float | None = None
     passed: bool | None = None
     place_id: int | None = None
     reason: str = ""
@@ -131,6 +133,8 @@ def _write(
         change=event.change,
         strength=event.strength,
         strength_text=event.strength_text,
+        uncertainty=event.uncertainty,
+        peroxide_mg_kg=event.peroxide_mg_kg,
         passed=event.passed,
         place_id=event.place_id,
         reason=event.reason,

@@ -15,9 +15,9 @@ from stockroom.errors import StoreTrouble
 from stockroom.store.columns import COLUMNS
 from stockroom.store.trouble import (
     BUSY_SECONDS,
-    check_revision,
     check_there,
     foreign,
+    is_older,
     translated,
     unfinished,
 )
@@ -57,9 +57,8 @@ def reading(path: Path) -> Iterator[Reader]:
     """
     check_there(path)
     with translated(path):
-        connection = _connect(path)
+        connection = _up_to_date(path)
         try:
-            check_revision(path, _revision(connection, path))
             # one read transaction, so that balances and entries are of the same moment
             connection.execute("BEGIN")
             yield Reader(connection)
@@ -78,6 +77,24 @@ def practice_day(path: Path) -> date | None:
     """The day a practice store opens on; None for a house of one's own."""
     written = house_value(path, "practice_day")
     return date.fromisoformat(written) if written else None
+
+
+def _up_to_date(path: Path) -> sqlite3.Connection:
+    """A connection to the store, brought to the newest layout first where it is older."""
+    connection = _connect(path)
+    try:
+        older = is_older(path, _revision(connection, path))
+    except BaseException:
+        connection.close()
+        raise
+    if not older:
+        return connection
+    connection.close()
+    # loaded here: it happens once in the life of a store, and reading stays light
+    from stockroom.store.engine import bring_up_to_date
+
+    bring_up_to_date(path)
+    return _connect(path)
 
 
 def _connect(path: Path) -> sqlite3.Connection:

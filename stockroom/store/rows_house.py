@@ -18,6 +18,8 @@ from stockroom.store.tables import (
     BalanceAway,
     Closure,
     Department,
+    Glassware,
+    GlasswareAway,
     House,
     Place,
     Term,
@@ -170,6 +172,43 @@ def read_vessel(desk: Desk, fields: Fields) -> None:
     if not size:
         raise BadInput(f"size_cm3 of {name} is blank or 0.", "Give what it holds, as 2000.")
     desk.save(Vessel(vessel=name, size=size, source=fields.text("source")))
+
+
+GLASS_KINDS = ("pipette", "graduated pipette", "burette", "flask", "cylinder")
+GLASS_CLASSES = ("A", "B")
+
+
+def read_glassware(desk: Desk, fields: Fields) -> None:
+    """A piece of measuring glass, or a further absence of one already entered."""
+    name = fields.need("glass")
+    found = desk.session.exec(select(Glassware).where(Glassware.glass == name)).first()
+    if found is None:
+        found = _new_glass(name, fields)
+        desk.save(found)
+    if fields.text("away_from"):
+        first, last = fields.span("away_from", "away_to")
+        assert found.id is not None
+        desk.save(GlasswareAway(glassware_id=found.id, starts_on=first, ends_on=last))
+
+
+def _new_glass(name: str, fields: Fields) -> Glassware:
+    kind, size = fields.need("kind").lower(), fields.volume("size_cm3")
+    if kind not in GLASS_KINDS:
+        raise unknown("kind of glassware", kind, GLASS_KINDS)
+    if not size:
+        raise BadInput(f"size_cm3 of {name} is blank or 0.", "Give what it measures, as 25.")
+    glass_class = fields.text("class").upper().removesuffix("S")
+    if glass_class and glass_class not in GLASS_CLASSES:
+        raise BadInput(f'class "{glass_class}" of {name} is not A, AS or B.', "Read the glass.")
+    step = fields.volume("step_cm3")
+    return Glassware(
+        glass=name,
+        kind=kind,
+        size=size,
+        glass_class=glass_class,
+        step=step or None,
+        source=fields.text("source"),
+    )
 
 
 def new_name(

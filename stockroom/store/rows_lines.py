@@ -15,12 +15,14 @@ from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.planning.facts import Form
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
+from stockroom.store.likeness import unknown
 from stockroom.store.names import find_substance, other_names, substance_of
 from stockroom.store.rows_house import new_name, temperature_of
 from stockroom.store.tables import KeepingRule, Line, OtherName, Substance
 
 _MEASURED = {Form.SOLID: Kind.MASS, Form.LIQUID: Kind.VOLUME, Form.SOLUTION: Kind.VOLUME}
 # the mean month and year: a rate is a physical quantity, not a calendar step
+NAMED_LAWS = ("hypochlorite",)
 DAYS_PER = {"day": 1.0, "month": DAYS_PER_MONTH, "year": 12 * DAYS_PER_MONTH}
 _WORDS = (StrengthUnit.PARTS, StrengthUnit.SATURATED)
 # ether at 0.71 is the lightest liquid on a bench, mercury at 13.5 the heaviest; common knowledge
@@ -42,6 +44,8 @@ def read_substance(desk: Desk, fields: Fields) -> None:
         cas=cas,
         storage_group=fields.text("storage_group"),
         peroxide_former=fields.text("peroxide_former"),
+        density=_density_of(fields),
+        note=fields.text("note"),
         source=fields.text("source"),
     )
     desk.save(row)
@@ -186,7 +190,9 @@ def read_rule(desk: Desk, fields: Fields) -> None:
     lasts = fields.need("lasts") if dated else fields.text("lasts")
     period = parse_period(lasts, where="lasts") if lasts else None
     fades = kind is RuleKind.FADES
-    order, rate = _decay(desk, fields, line) if fades else (None, None)
+    named = _named_law(fields) if fades else ""
+    order, rate = (None, None) if named or not fades else _decay(desk, fields, line)
+    factor, energy = _warmth(fields)
     assert line.id is not None
     row = KeepingRule(
         line_id=line.id,
@@ -199,7 +205,9 @@ def read_rule(desk: Desk, fields: Fields) -> None:
         decay_order=order,
         rate=rate,
         at_c=temperature_of(fields, "at_c"),
-        factor_per_10c=fields.number("factor_per_10c"),
+        factor_per_10c=factor,
+        ea_kj_mol=energy,
+        named_law=named,
         above=_bound(desk, fields, line, "stronger_than"),
         upto=_bound(desk, fields, line, "up_to_strength"),
         colder_than=temperature_of(fields, "colder_than_c"),
@@ -216,6 +224,27 @@ def _bound(desk: Desk, fields: Fields, line: Line, column: str) -> float | None:
     # a bound without a number would bound nothing, and the rule hold for every strength
     strength = parse_strength(written, where=column)
     return number_beside(strength, substance_of(desk.session, line), line)
+
+
+def _named_law(fields: Fields) -> str:
+    named = fields.text("named_law").lower()
+    if named and named not in NAMED_LAWS:
+        raise unknown("named law", named, NAMED_LAWS)
+    return named
+
+
+def _warmth(fields: Fields) -> tuple[float | None, float | None]:
+    """The factor per 10 °C or the activation energy in kJ/mol: one of them at most."""
+    factor, energy = fields.number("factor_per_10c"), fields.number("ea_kj_mol")
+    if factor is not None and energy is not None:
+        raise BadInput(
+            f"factor_per_10c {factor:g} and ea_kj_mol {energy:g} say the same thing twice.",
+            "Give one of them.",
+        )
+    # above any reaction a bottle lasts through; a figure in J/mol would land here
+    if energy is not None and not 0 < energy <= 400:
+        raise BadAmount(f"ea_kj_mol {energy:g} is not between 0 and 400.", "In kJ/mol?")
+    return factor, energy
 
 
 def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:

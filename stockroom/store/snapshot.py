@@ -20,6 +20,7 @@ from stockroom.planning.facts import (
     Department,
     Facts,
     Firmness,
+    Glass,
     House,
     Place,
 )
@@ -65,6 +66,7 @@ def facts_from(
         ),
         bottles=bottles_of(reader, as_at),
         balances=_balances(reader),
+        glassware=_glassware(reader),
         departments=_departments(reader),
         places=_places(reader),
         drawn=drawn_of(reader, as_at),
@@ -172,6 +174,23 @@ def _balances(reader: Reader) -> tuple[Balance, ...]:
     return tuple(
         Balance(row["balance"], row["step"], tuple(away.get(row["id"], ())))
         for row in reader.rows("balance")
+    )
+
+
+def _glassware(reader: Reader) -> tuple[Glass, ...]:
+    away: dict[int, list[tuple[date, date]]] = {}
+    for row in reader.rows("glassware_away", "ORDER BY starts_on, id"):
+        away.setdefault(row["glassware_id"], []).append(_span(row))
+    return tuple(
+        Glass(
+            row["glass"],
+            row["kind"],
+            row["size"],
+            row["glass_class"],
+            row["step"],
+            tuple(away.get(row["id"], ())),
+        )
+        for row in reader.rows("glassware")
     )
 
 

@@ -205,7 +205,14 @@ def _checks(events: list[Row]) -> Iterator[Check]:
             kind = _CHECKS[EntryKind(event["kind"])]
             # a found strength is a result, neither passed nor failed
             passed = event["passed"] is None or bool(event["passed"])
-            yield Check(date.fromisoformat(event["happened_on"]), kind, passed, event["strength"])
+            yield Check(
+                date.fromisoformat(event["happened_on"]),
+                kind,
+                passed,
+                event["strength"],
+                event["uncertainty"],
+                event["peroxide_mg_kg"],
+            )
 
 
 def _stays(events: list[Row], places: dict[int, Row]) -> Iterator[Stay]:

@@ -28,7 +28,9 @@ Value = TypeVar("Value")
 
 def lines_of(reader: Reader) -> dict[str, Line]:
     """Every stock line by key, in the order they were entered."""
-    rules = _by_owner(reader, "keeping_rule", "line_id", _rule)
+    # a starter rule that the house replaced stays in the table, out of use
+    in_use = "WHERE in_use ORDER BY id"
+    rules = _by_owner(reader, "keeping_rule", "line_id", _rule, tail=in_use)
     packs = _by_owner(reader, "pack", "line_id", _pack)
     substances = {row["id"]: row for row in reader.rows("substance")}
     return {
@@ -43,10 +45,15 @@ def lines_of(reader: Reader) -> dict[str, Line]:
 
 
 def _by_owner(
-    reader: Reader, table: str, owner: str, build: Callable[[Row], Value]
+    reader: Reader,
+    table: str,
+    owner: str,
+    build: Callable[[Row], Value],
+    *,
+    tail: str = "ORDER BY id",
 ) -> dict[int, list[Value]]:
     found: dict[int, list[Value]] = {}
-    for row in reader.rows(table):
+    for row in reader.rows(table, tail):
         found.setdefault(row[owner], []).append(build(row))
     return found
 
@@ -96,11 +103,20 @@ def _rule(row: Row) -> Rule:
         colder_than=row["colder_than"],
         warmer_than=row["warmer_than"],
         source=row["source"],
+        house=bool(row["house"]),
     )
 
 
 def _law(row: Row) -> Law:
-    return Law(row["decay_order"], row["rate"], row["at_c"], row["factor_per_10c"])
+    # a named law brings its own rate, and the second order is only where it is looked up
+    return Law(
+        2 if row["decay_order"] is None else row["decay_order"],
+        row["rate"] or 0.0,
+        row["at_c"],
+        row["factor_per_10c"],
+        row["ea_kj_mol"],
+        row["named_law"],
+    )
 
 
 def _pack(row: Row) -> Pack:

@@ -95,6 +95,39 @@ class Vessel(Numbered, table=True):
     source: str = ""
 
 
+class Glassware(Numbered, table=True):
+    """A kind of measuring glass and its size and finest mark in µL; `glass_class` A, B or ""."""
+
+    glass: str = Field(unique=True)
+    kind: str
+    size: int = Field(sa_type=BigInteger)
+    glass_class: str = ""
+    # NULL for glass with a single mark
+    step: int | None = Field(default=None, sa_type=BigInteger)
+    source: str = ""
+
+
+class GlasswareAway(Numbered, table=True):
+    """Days a piece of glassware is away."""
+
+    __tablename__ = "glassware_away"
+
+    glassware_id: int = Field(foreign_key="glassware.id")
+    starts_on: date
+    ends_on: date
+
+
+class Reading(Numbered, table=True):
+    """One temperature a logger wrote, in hundredths of °C; `at` is local, to the minute."""
+
+    # a second file over the same days adds nothing twice
+    __table_args__ = (UniqueConstraint("place_id", "at"),)
+
+    place_id: int = Field(foreign_key="place.id")
+    at: str
+    centi: int
+
+
 class Substance(Numbered, table=True):
     """What something is chemically; `formula` is of what dissolves, without its water."""
 
@@ -104,6 +137,9 @@ class Substance(Numbered, table=True):
     cas: str = ""
     storage_group: str = ""
     peroxide_former: str = ""
+    # of the pure liquid, g/cm³ at 20 °C
+    density: float | None = None
+    note: str = ""
     source: str = ""
 
 
@@ -115,6 +151,26 @@ class OtherName(Numbered, table=True):
 
     substance_id: int = Field(foreign_key="substance.id")
     name: str
+
+
+class Hazard(Numbered, table=True):
+    """One limit or class of a substance that the house holds in place of the shipped ones.
+
+    A band counts from `from_percent` to below `below_percent`, by mass.
+    """
+
+    substance_id: int = Field(foreign_key="substance.id")
+    hazard_class: str
+    h_code: str
+    from_percent: float | None = None
+    below_percent: float | None = None
+    basis: str
+    route: str = ""
+    ate: float | None = None
+    m_factor: float | None = None
+    percent_of: str = ""
+    how: str = ""
+    source: str = ""
 
 
 class Line(Numbered, table=True):
@@ -159,11 +215,32 @@ class KeepingRule(Numbered, table=True):
     rate: float | None = None
     at_c: float | None = None
     factor_per_10c: float | None = None
+    ea_kj_mol: float | None = None
+    named_law: str = ""
     above: float | None = None
     upto: float | None = None
     colder_than: float | None = None
     warmer_than: float | None = None
     source: str = ""
+    # a rule the house set itself; the starter's that it replaced stays, out of use
+    house: bool = False
+    in_use: bool = True
+
+
+class HazardText(Numbered, table=True):
+    """What the supplier's sheet says of a line; the last one entered counts."""
+
+    __tablename__ = "hazard_text"
+
+    line_id: int = Field(foreign_key="line.id")
+    signal_word: str = ""
+    statements: str
+    pictograms: str = ""
+    sheet: str
+    why: str = ""
+    by: str
+    entered_on: date
+    entered_at: str
 
 
 class Method(Numbered, table=True):
@@ -354,6 +431,9 @@ class Entry(Numbered, table=True):
     change: int = Field(default=0, sa_type=BigInteger)
     strength: float | None = None
     strength_text: str = ""
+    # standard uncertainty of `strength`, in the same unit
+    uncertainty: float | None = None
+    peroxide_mg_kg: float | None = None
     passed: bool | None = None
     place_id: int | None = Field(default=None, foreign_key="place.id")
     reason: str = ""

@@ -13,7 +13,7 @@ from pathlib import Path
 
 from stockroom.errors import NotEnough, Refused, StoreTrouble
 
-REVISIONS = ("0001",)
+REVISIONS = ("0001", "0002")
 """The migrations this program knows, oldest first; the last is what it writes."""
 
 BUSY_SECONDS = 5.0
@@ -60,19 +60,20 @@ def check_there(path: Path) -> None:
         raise missing(path)
 
 
-def check_revision(path: Path, revision: str | None) -> None:
-    """Pass when the store was written in the layout this program knows.
+def is_older(path: Path, revision: str | None) -> bool:
+    """True when the store is in an earlier layout of this program, and can be brought up.
 
     Raises: StoreTrouble for a file with no layout mark, or with a newer one.
     """
     if revision is None:
         raise foreign(path)
-    if revision != REVISIONS[-1]:
+    if revision not in REVISIONS:
         raise StoreTrouble(
             f"{path} was written by a newer stockroom (revision {revision};"
             f" this one knows up to {REVISIONS[-1]}).",
             "Upgrade the program; nothing was changed.",
         )
+    return revision != REVISIONS[-1]
 
 
 def in_words(error: sqlite3.Error, path: Path) -> Refused:

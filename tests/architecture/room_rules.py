@@ -52,6 +52,8 @@ OUTSIDE: dict[str, frozenset[str]] = {
     "sqlalchemy": frozenset({"store"}),
     "alembic": frozenset({"store"}),
     "sqlite3": frozenset({"store"}),
+    "scipy": frozenset({"chemistry", "keeping"}),
+    "uncertainties": frozenset({"chemistry"}),
     "rapidfuzz": frozenset({"store", "service"}),
     "platformdirs": frozenset({ROOT}),
     "fastapi": frozenset({"web"}),

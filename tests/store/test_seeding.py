@@ -271,7 +271,8 @@ def test_every_table_of_the_college_is_one_we_read() -> None:
     from stockroom.service.database import seeds_folder
 
     files = {path.stem for path in (seeds_folder() / "college").glob("*.csv")}
-    assert files == set(TABLES)
+    # the limits shipped with the program serve every house; a table of its own replaces them
+    assert files == set(TABLES) - {"hazards"}
     assert table_columns("places") == ["place", "name", "temperature_c", "meant_for", "source"]
 
 

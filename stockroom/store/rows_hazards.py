@@ -1,0 +1,66 @@
+"""Reader for the house's own hazard limits, which stand in place of the shipped ones."""
+
+from __future__ import annotations
+
+import re
+
+from stockroom.errors import BadAmount, BadInput
+from stockroom.store.desk import Desk
+from stockroom.store.fields import Fields
+from stockroom.store.likeness import unknown
+from stockroom.store.names import find_substance
+from stockroom.store.tables import Hazard
+
+BASES = ("specific", "harmonised", "none")
+ROUTES = ("oral", "dermal", "gas", "vapour", "dust")
+_CODE = re.compile(r"(H[2-4][0-9]{2}[A-Za-z]{0,2}|EUH[0-9]{3}[A-Z]?)")
+
+
+def read_hazard(desk: Desk, fields: Fields) -> None:
+    """One limit or class of a substance. Raises: BadInput, BadAmount, UnknownName."""
+    substance = find_substance(desk.session, fields.need("substance"))
+    basis = fields.need("basis").lower()
+    if basis not in BASES:
+        raise unknown("basis", basis, BASES)
+    route = fields.text("route").lower()
+    if route and route not in ROUTES:
+        raise unknown("route", route, ROUTES)
+    lowest, below = _band(fields)
+    assert substance.id is not None
+    desk.save(
+        Hazard(
+            substance_id=substance.id,
+            hazard_class=fields.text("hazard_class") if basis == "none" else _class(fields),
+            h_code=_code(fields) if basis != "none" else "",
+            from_percent=lowest,
+            below_percent=below,
+            basis=basis,
+            route=route,
+            ate=fields.number("ate"),
+            m_factor=fields.number("m_factor"),
+            percent_of=fields.text("percent_of"),
+            how=fields.text("how"),
+            source=fields.text("source"),
+        )
+    )
+
+
+def _class(fields: Fields) -> str:
+    return fields.need("hazard_class")
+
+
+def _code(fields: Fields) -> str:
+    code = fields.need("h_code")
+    if _CODE.fullmatch(code) is None:
+        raise BadInput(f'h_code "{code}" is no hazard statement.', "It looks like H314 or EUH031.")
+    return code
+
+
+def _band(fields: Fields) -> tuple[float | None, float | None]:
+    lowest = fields.within("from_percent", 0, 100, "In per cent by mass?")
+    below = fields.within("below_percent", 0, 100, "In per cent by mass?")
+    if lowest is not None and below is not None and below <= lowest:
+        raise BadAmount(
+            f"from {lowest:g} % to below {below:g} % holds nothing.", "Swap the two, or leave one."
+        )
+    return lowest, below
