@@ -9,6 +9,7 @@ import typer
 
 from stockroom.cli.printing import show, show_done, suggest, tell, width
 from stockroom.cli.shared import Shared, of
+from stockroom.cli.values import column_and_value
 from stockroom.errors import BadInput
 
 
@@ -40,15 +41,24 @@ def new(
     tables: Annotated[
         Path | None, typer.Option("--from", metavar="FOLDER", help="CSV tables to fill it with.")
     ] = None,
+    starter: Annotated[
+        bool, typer.Option("--starter", help="Fill it with common substances and stock lines.")
+    ] = False,
 ) -> None:
-    """Make an empty store, or one filled from a folder of CSV tables.
+    """Make an empty store, the starter house, or one filled from a folder of CSV tables.
 
-    Example: stockroom new --from my_tables
+    The starter house has no bottles: common substances, stock lines, methods and lives,
+    each a starter value until the house says otherwise.
+
+    Example: stockroom new --starter
     """
-    from stockroom.service.database import new_store
+    from stockroom.service.database import new_store, starter_folder
     from stockroom.settings import own_store
 
     shared = of(ctx)
+    if starter and tables is not None:
+        raise BadInput(f"--starter or --from {tables}, not both.", "Add the other's rows later.")
+    tables = starter_folder() if starter else tables
     show_done(shared, new_store(own_store(shared.store), tables=tables))
 
 
@@ -72,15 +82,8 @@ def add(
     if columns:
         _show_columns(shared, table)
         return
-    row = dict(_column_and_value(word) for word in values or [])
+    row = dict(column_and_value(word) for word in values or [])
     show_done(shared, database.add_row(shared.path, table, row, by=shared.initials))
-
-
-def _column_and_value(word: str) -> tuple[str, str]:
-    column, equals, value = word.partition("=")
-    if not equals or not column:
-        raise BadInput(f"{word!r} is not COLUMN=VALUE.", "Write it as place=A5.")
-    return column.strip(), value.strip()
 
 
 def _show_columns(shared: Shared, table: str) -> None:
@@ -115,7 +118,7 @@ def change(
     from stockroom.service import database
 
     shared = of(ctx)
-    row = dict(_column_and_value(word) for word in values)
+    row = dict(column_and_value(word) for word in values)
     done = database.change_row(
         shared.path, table, key, row, why=reason, today=shared.today, by=shared.initials
     )

@@ -20,6 +20,7 @@ from stockroom.cli import (
     checks,
     database,
     diary,
+    house_rules,
     plan,
     stock,
 )
@@ -71,6 +72,7 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "new": database.new,
         "add": database.add,
         "change": database.change,
+        "rule": house_rules.rule,
     },
 }
 """Every command under its heading in the help, in the order it is printed."""

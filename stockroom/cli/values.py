@@ -91,3 +91,11 @@ def _number(text: str) -> float:
         return float(text.strip().removesuffix("%"))
     except ValueError:
         return math.nan
+
+
+def column_and_value(word: str) -> tuple[str, str]:
+    """A cell typed as COLUMN=VALUE. Raises: BadInput quoting it."""
+    column, equals, value = word.partition("=")
+    if not equals or not column:
+        raise BadInput(f"{word!r} is not COLUMN=VALUE.", "Write it as place=A5.")
+    return column.strip(), value.strip()

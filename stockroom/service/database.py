@@ -80,6 +80,11 @@ def _held(place: Path) -> bool:
     return True
 
 
+def starter_folder() -> Path:
+    """The tables of the starter house: common substances and stock lines, and how they keep."""
+    return seeds_folder() / "starter"
+
+
 def new_store(path: Path, *, tables: Path | None = None) -> Done:
     """Make a store at `path`, empty or from a folder of CSV tables.
 
@@ -91,7 +96,9 @@ def new_store(path: Path, *, tables: Path | None = None) -> Done:
 
     def fill(session: Session) -> None:
         if tables is not None:
-            load_tables(_desk(session, HOUSE), tables)
+            # what came with the program is a starter value until the house says otherwise
+            ours = tables.resolve().parent == seeds_folder().resolve()
+            load_tables(replace(_desk(session, HOUSE), starter=ours), tables)
             _check_methods(session)
 
     create(path, fill=fill)

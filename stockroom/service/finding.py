@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+
 from stockroom.planning.facts import Facts, Line
 from stockroom.store.likeness import plain, unknown
 
@@ -11,8 +13,13 @@ def line_among(known: Facts, text: str) -> Line:
 
     Raises UnknownName with the nearest three.
     """
+    return line_in(known.lines, text)
+
+
+def line_in(held: Mapping[str, Line], text: str) -> Line:
+    """The same, among lines by key."""
     wanted = plain(text)
-    lines = [known.lines[key] for key in sorted(known.lines)]
+    lines = [held[key] for key in sorted(held)]
     # from the exact to the vague: a whole name never loses to a part of another
     by_key = [line for line in lines if wanted == plain(line.key)]
     by_name = [line for line in lines if wanted in (plain(line.item), plain(line.substance))]
@@ -20,4 +27,4 @@ def line_among(known: Facts, text: str) -> Line:
     for found in (by_key, by_name, by_part):
         if found:
             return found[0]
-    raise unknown("stock line", text, known.lines)
+    raise unknown("stock line", text, held)

@@ -76,7 +76,7 @@ def change_row(desk: Desk, table: str, key: str, values: dict[str, str], why: st
         desk.save(row)
         after = column.said(row)
         if before != after:
-            _record(desk, table, named, name, (before, after), why.strip())
+            record_change(desk, table, named, name, (before, after), why.strip())
             told.append(f"{named}: {name} {before or 'blank'} → {after or 'blank'}")
     if not told:
         raise BadInput(f"{named} of {table} is so already.", "Say what changes: COLUMN=VALUE.")
@@ -106,9 +106,10 @@ def _check_columns(table: str, changeable: Changeable, values: dict[str, str]) -
         raise unknown(f"column of {table}", name, changeable.columns)
 
 
-def _record(
+def record_change(
     desk: Desk, table: str, key: str, column: str, change: tuple[str, str], why: str
 ) -> None:
+    """Keep one change of a row: what stood there, what stands there now, who, when and why."""
     row = RowChange(
         table_name=table,
         row_key=key,

@@ -25,6 +25,8 @@ class Desk:
     by: str
     today: date
     at: datetime
+    starter: bool = False
+    """True while the program's own tables are read: their rules are not the house's."""
     numbered: dict[str, int] = field(default_factory=dict)
     """Entries by the number their history row gave them."""
 

@@ -15,6 +15,7 @@ from stockroom.store import (
     rows_lines,
     rows_methods,
     rows_recipes,
+    rows_rules,
 )
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
@@ -66,7 +67,7 @@ TABLES: dict[str, Table] = {
         "line rule lasts counted_from purpose safety order rate rate_of rate_per at_c"
         " factor_per_10c ea_kj_mol named_law stronger_than up_to_strength colder_than_c"
         " warmer_than_c",
-        rows_lines.read_rule,
+        rows_rules.read_rule,
     ),
     "methods": _table(
         "line minutes finish_minutes stands_h titrated smallest_batch_cm3 steps cautions",
@@ -132,8 +133,8 @@ WORDS: dict[tuple[str, str], Iterable[str]] = {
     ("keeping", "purpose"): Purpose,
     ("keeping", "safety"): _YES_NO,
     ("keeping", "order"): ("0", "1", "2"),
-    ("keeping", "named_law"): rows_lines.NAMED_LAWS,
-    ("keeping", "rate_per"): tuple(rows_lines.DAYS_PER),
+    ("keeping", "named_law"): rows_rules.NAMED_LAWS,
+    ("keeping", "rate_per"): tuple(rows_rules.DAYS_PER),
     ("methods", "titrated"): _YES_NO,
     ("ingredients", "only_if_held"): _YES_NO,
     ("recipe_lines", "per"): Per,

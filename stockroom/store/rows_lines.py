@@ -4,26 +4,19 @@ from __future__ import annotations
 
 from stockroom.chemistry.formula import check_cas, molar_mass
 from stockroom.chemistry.strength import canonical
-from stockroom.errors import BadAmount, BadInput, NotAllowed
-from stockroom.keeping.laws import DAYS_PER_MONTH
-from stockroom.keeping.rules import Origin, Purpose, RuleKind
+from stockroom.errors import BadAmount, NotAllowed
 from stockroom.measure.amounts import Kind
 from stockroom.measure.formats import unit_mark
 from stockroom.measure.parsing import parse_strength
-from stockroom.measure.periods import parse_period
 from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.planning.facts import Form
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.likeness import unknown
-from stockroom.store.names import find_substance, other_names, substance_of
-from stockroom.store.rows_house import new_name, temperature_of
-from stockroom.store.tables import KeepingRule, Line, OtherName, Substance
+from stockroom.store.names import find_substance, other_names
+from stockroom.store.rows_house import new_name
+from stockroom.store.tables import Line, OtherName, Substance
 
 _MEASURED = {Form.SOLID: Kind.MASS, Form.LIQUID: Kind.VOLUME, Form.SOLUTION: Kind.VOLUME}
-# the mean month and year: a rate is a physical quantity, not a calendar step
-NAMED_LAWS = ("hypochlorite",)
-DAYS_PER = {"day": 1.0, "month": DAYS_PER_MONTH, "year": 12 * DAYS_PER_MONTH}
 _WORDS = (StrengthUnit.PARTS, StrengthUnit.SATURATED)
 # ether at 0.71 is the lightest liquid on a bench, mercury at 13.5 the heaviest; common knowledge
 _LIGHTEST, _HEAVIEST = 0.5, 20
@@ -180,91 +173,3 @@ def check_has_strength(line: Line, number: str) -> None:
             " strength to find.",
             "Enter the result for the solution made from it.",
         )
-
-
-def read_rule(desk: Desk, fields: Fields) -> None:
-    """One ageing rule of a line; rates are turned to the line's unit per day."""
-    line = desk.line(fields.need("line"))
-    kind = fields.choice("rule", RuleKind)
-    dated = kind in (RuleKind.LIFE, RuleKind.RECHECK, RuleKind.LOOK, RuleKind.TEST)
-    lasts = fields.need("lasts") if dated else fields.text("lasts")
-    period = parse_period(lasts, where="lasts") if lasts else None
-    fades = kind is RuleKind.FADES
-    named = _named_law(fields) if fades else ""
-    order, rate = (None, None) if named or not fades else _decay(desk, fields, line)
-    factor, energy = _warmth(fields)
-    assert line.id is not None
-    row = KeepingRule(
-        line_id=line.id,
-        rule=kind,
-        lasts_count=period.count if period else None,
-        lasts_unit=period.unit if period else "",
-        counted_from=fields.choice("counted_from", Origin, Origin.MADE),
-        purpose=fields.choice("purpose", Purpose, Purpose.ANY),
-        safety=fields.flag("safety"),
-        decay_order=order,
-        rate=rate,
-        at_c=temperature_of(fields, "at_c"),
-        factor_per_10c=factor,
-        ea_kj_mol=energy,
-        named_law=named,
-        above=_bound(desk, fields, line, "stronger_than"),
-        upto=_bound(desk, fields, line, "up_to_strength"),
-        colder_than=temperature_of(fields, "colder_than_c"),
-        warmer_than=temperature_of(fields, "warmer_than_c"),
-        source=fields.text("source"),
-    )
-    desk.save(row)
-
-
-def _bound(desk: Desk, fields: Fields, line: Line, column: str) -> float | None:
-    written = fields.text(column)
-    if not written:
-        return None
-    # a bound without a number would bound nothing, and the rule hold for every strength
-    strength = parse_strength(written, where=column)
-    return number_beside(strength, substance_of(desk.session, line), line)
-
-
-def _named_law(fields: Fields) -> str:
-    named = fields.text("named_law").lower()
-    if named and named not in NAMED_LAWS:
-        raise unknown("named law", named, NAMED_LAWS)
-    return named
-
-
-def _warmth(fields: Fields) -> tuple[float | None, float | None]:
-    """The factor per 10 °C or the activation energy in kJ/mol: one of them at most."""
-    factor, energy = fields.number("factor_per_10c"), fields.number("ea_kj_mol")
-    if factor is not None and energy is not None:
-        raise BadInput(
-            f"factor_per_10c {factor:g} and ea_kj_mol {energy:g} say the same thing twice.",
-            "Give one of them.",
-        )
-    # above any reaction a bottle lasts through; a figure in J/mol would land here
-    if energy is not None and not 0 < energy <= 400:
-        raise BadAmount(f"ea_kj_mol {energy:g} is not between 0 and 400.", "In kJ/mol?")
-    return factor, energy
-
-
-def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
-    order = fields.whole("order")
-    if order not in (0, 1, 2):
-        raise BadInput(f"order {order} is not a law we know.", "Give 0, 1 or 2.")
-    rate = fields.number("rate")
-    if rate is None:
-        raise BadInput("rate is blank.", "Give the rate, in the unit rate_of per rate_per.")
-    per = fields.need("rate_per")
-    if per not in DAYS_PER:
-        raise BadInput(f'rate_per "{per}" is not a time.', "Give day, month or year.")
-    # a first-order rate is a share per time and has no unit of strength
-    own = 1.0 if order == 1 else _own_units(desk, fields, line)
-    # a zero-order rate is strength per time, a second-order one the inverse of strength per time
-    scale = own if order == 0 else 1 / own
-    return order, rate * scale / DAYS_PER[per]
-
-
-def _own_units(desk: Desk, fields: Fields, line: Line) -> float:
-    unit = fields.need("rate_of")
-    one = parse_strength(f"1 {unit}", where="rate_of")
-    return number_beside(one, substance_of(desk.session, line), line)

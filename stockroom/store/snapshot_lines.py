@@ -30,7 +30,7 @@ def lines_of(reader: Reader) -> dict[str, Line]:
     """Every stock line by key, in the order they were entered."""
     # a starter rule that the house replaced stays in the table, out of use
     in_use = "WHERE in_use ORDER BY id"
-    rules = _by_owner(reader, "keeping_rule", "line_id", _rule, tail=in_use)
+    rules = _by_owner(reader, "keeping_rule", "line_id", rule_of, tail=in_use)
     packs = _by_owner(reader, "pack", "line_id", _pack)
     substances = {row["id"]: row for row in reader.rows("substance")}
     return {
@@ -84,7 +84,8 @@ def _line(
     )
 
 
-def _rule(row: Row) -> Rule:
+def rule_of(row: Row) -> Rule:
+    """One ageing rule from its row."""
     kind = RuleKind(row["rule"])
     # one pair of columns serves both: a law's temperature, or that of a period
     fades = kind is RuleKind.FADES

@@ -1,0 +1,155 @@
+"""Reader for how a line keeps: one ageing rule a row."""
+
+from __future__ import annotations
+
+from stockroom.errors import BadAmount, BadInput
+from stockroom.keeping.laws import DAYS_PER_MONTH
+from stockroom.keeping.rules import Origin, Purpose, RuleKind
+from stockroom.measure.parsing import parse_strength
+from stockroom.measure.periods import parse_period
+from stockroom.store.desk import Desk
+from stockroom.store.fields import Fields
+from stockroom.store.likeness import unknown
+from stockroom.store.names import substance_of
+from stockroom.store.rows_house import temperature_of
+from stockroom.store.rows_lines import number_beside
+from stockroom.store.tables import KeepingRule, Line
+
+NAMED_LAWS = ("hypochlorite",)
+"""Laws that bring their own rate, by the name `keeping` knows them by."""
+
+# the mean month and year: a rate is a physical quantity, not a calendar step
+DAYS_PER = {"day": 1.0, "month": DAYS_PER_MONTH, "year": 12 * DAYS_PER_MONTH}
+
+
+def read_rule(desk: Desk, fields: Fields) -> None:
+    """One ageing rule of a line; rates are turned to the line's unit per day."""
+    row = rule_from(desk, fields)
+    row.house = not desk.starter
+    desk.save(row)
+
+
+def rule_from(desk: Desk, fields: Fields) -> KeepingRule:
+    """The row an ageing rule is kept in, not saved yet.
+
+    Raises: BadInput, BadAmount, BadDate and UnknownName for cells that say no rule.
+    """
+    line = desk.line(fields.need("line"))
+    kind = fields.choice("rule", RuleKind)
+    dated = kind in (RuleKind.LIFE, RuleKind.RECHECK, RuleKind.LOOK, RuleKind.TEST)
+    lasts = fields.need("lasts") if dated else fields.text("lasts")
+    period = parse_period(lasts, where="lasts") if lasts else None
+    fades = kind is RuleKind.FADES
+    named = _named_law(fields) if fades else ""
+    order, rate = (None, None) if named or not fades else _decay(desk, fields, line)
+    factor, energy = _warmth(fields)
+    assert line.id is not None
+    return KeepingRule(
+        line_id=line.id,
+        rule=kind,
+        lasts_count=period.count if period else None,
+        lasts_unit=period.unit if period else "",
+        counted_from=fields.choice("counted_from", Origin, Origin.MADE),
+        purpose=fields.choice("purpose", Purpose, Purpose.ANY),
+        safety=fields.flag("safety"),
+        decay_order=order,
+        rate=rate,
+        at_c=temperature_of(fields, "at_c"),
+        factor_per_10c=factor,
+        ea_kj_mol=energy,
+        named_law=named,
+        above=_bound(desk, fields, line, "stronger_than"),
+        upto=_bound(desk, fields, line, "up_to_strength"),
+        colder_than=temperature_of(fields, "colder_than_c"),
+        warmer_than=temperature_of(fields, "warmer_than_c"),
+        source=fields.text("source"),
+    )
+
+
+def cells_of(rule: KeepingRule, line: Line) -> dict[str, str]:
+    """A rule as it would be typed, so that a new one may say only what differs."""
+    lasts = "same day" if rule.lasts_count == 0 else f"{rule.lasts_count} {rule.lasts_unit}"
+    per_day = rule.rate is not None and not rule.named_law
+    numbers = {
+        "at_c": rule.at_c,
+        "factor_per_10c": rule.factor_per_10c,
+        "ea_kj_mol": rule.ea_kj_mol,
+        "colder_than_c": rule.colder_than,
+        "warmer_than_c": rule.warmer_than,
+        "order": rule.decay_order,
+        "rate": rule.rate,
+    }
+    cells = {
+        "lasts": "" if rule.lasts_count is None else lasts,
+        "counted_from": rule.counted_from,
+        "purpose": rule.purpose,
+        "safety": "yes" if rule.safety else "no",
+        "named_law": rule.named_law,
+        "rate_of": line.unit if per_day else "",
+        "rate_per": "day" if per_day else "",
+        "stronger_than": _bound_cell(rule.above, line),
+        "up_to_strength": _bound_cell(rule.upto, line),
+    }
+    return cells | {column: _cell(number) for column, number in numbers.items()}
+
+
+def _cell(number: float | None) -> str:
+    # every digit: a rate typed again must be the rate it was
+    return "" if number is None else f"{number:.17g}"
+
+
+def _bound_cell(bound: float | None, line: Line) -> str:
+    return "" if bound is None else f"{_cell(bound)} {line.unit}"
+
+
+def _bound(desk: Desk, fields: Fields, line: Line, column: str) -> float | None:
+    written = fields.text(column)
+    if not written:
+        return None
+    # a bound without a number would bound nothing, and the rule hold for every strength
+    strength = parse_strength(written, where=column)
+    return number_beside(strength, substance_of(desk.session, line), line)
+
+
+def _named_law(fields: Fields) -> str:
+    named = fields.text("named_law").lower()
+    if named and named not in NAMED_LAWS:
+        raise unknown("named law", named, NAMED_LAWS)
+    return named
+
+
+def _warmth(fields: Fields) -> tuple[float | None, float | None]:
+    """The factor per 10 °C or the activation energy in kJ/mol: one of them at most."""
+    factor, energy = fields.number("factor_per_10c"), fields.number("ea_kj_mol")
+    if factor is not None and energy is not None:
+        raise BadInput(
+            f"factor_per_10c {factor:g} and ea_kj_mol {energy:g} say the same thing twice.",
+            "Give one of them.",
+        )
+    # above any reaction a bottle lasts through; a figure in J/mol would land here
+    if energy is not None and not 0 < energy <= 400:
+        raise BadAmount(f"ea_kj_mol {energy:g} is not between 0 and 400.", "In kJ/mol?")
+    return factor, energy
+
+
+def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
+    order = fields.whole("order")
+    if order not in (0, 1, 2):
+        raise BadInput(f"order {order} is not a law we know.", "Give 0, 1 or 2.")
+    rate = fields.number("rate")
+    if rate is None:
+        raise BadInput("rate is blank.", "Give the rate, in the unit rate_of per rate_per.")
+    per = fields.need("rate_per")
+    if per not in DAYS_PER:
+        raise BadInput(f'rate_per "{per}" is not a time.', "Give day, month or year.")
+    # a first-order rate is a share per time and has no unit of strength
+    own = 1.0 if order == 1 else _own_units(desk, fields, line)
+    # a zero-order rate is strength per time, a second-order one the inverse of strength per time
+    scale = own if order == 0 else 1 / own
+    return order, rate * scale / DAYS_PER[per]
+
+
+def _own_units(desk: Desk, fields: Fields, line: Line) -> float:
+    unit = fields.need("rate_of")
+    one = parse_strength(f"1 {unit}", where="rate_of")
+    return number_beside(one, substance_of(desk.session, line), line)
