@@ -1,15 +1,37 @@
-"""Titres to a found strength: are they concordant, and what do they come to."""
+"""Titres to a found strength: do they agree, what do they come to, and how well is it known.
+
+One sum serves both ways round. With the burette's strength known, the titre finds
+what is in the flask; with a standard weighed or pipetted into the flask, it finds
+what is in the burette. Which reaction, and so in what ratio, is in `reactions.py`.
+"""
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
+from dataclasses import dataclass
 
 from stockroom.chemistry.figures import positive
+from stockroom.chemistry.glassware import Ware
+from stockroom.chemistry.reactions import Titration
+from stockroom.chemistry.uncertainty import (
+    Budget,
+    Doubt,
+    Input,
+    normal,
+    quotient,
+    rectangular,
+    repeatability,
+    triangular,
+)
 from stockroom.errors import BadAmount
 from stockroom.measure.formats import format_number
 
 CONCORDANT_CM3 = 0.1
 """How far apart titres may lie. Common practice, no source."""
+
+EXPANSION_PER_C, SWING_C = 2.1e-4, 4.0
+"""Of water per °C, and how far the room may be from 20 °C. Source: QUAM:2012, example A1."""
 
 _CM3_PER_DM3 = 1000.0
 _BINARY_DUST = 1e-9
@@ -51,3 +73,148 @@ def factor(found: float, nominal: float) -> float:
     Raises: BadAmount for a figure not above 0.
     """
     return positive(found, "found strength") / positive(nominal, "nominal strength")
+
+
+@dataclass(frozen=True, slots=True)
+class Titres:
+    """What the burette said: titres in cm³, the blank taken off each, and the burette."""
+
+    cm3: tuple[float, ...]
+    burette: Ware
+    blank_cm3: float = 0.0
+    within_cm3: float = CONCORDANT_CM3
+
+    def mean(self) -> float:
+        """The mean less the blank, in cm³. Raises: BadAmount as `mean_titre`, and at or below 0."""
+        mean = mean_titre(self.cm3, within_cm3=self.within_cm3)
+        if not math.isfinite(self.blank_cm3) or self.blank_cm3 < 0 or self.blank_cm3 >= mean:
+            raise BadAmount(
+                f"blank {self.blank_cm3:g} cm³ against a titre of {mean:g} cm³ leaves nothing.",
+                "Read the blank again.",
+            )
+        if mean > self.burette.size:
+            raise BadAmount(
+                f"titre {mean:g} cm³ is more than the {self.burette.words} holds.",
+                "Name the burette that was used, or take a smaller sample.",
+            )
+        return mean - self.blank_cm3
+
+    def as_input(self) -> Input:
+        """The titre with its doubts: the burette, the room, and how well the end point repeats."""
+        mean = self.mean()
+        return Input(
+            "titre",
+            mean,
+            (
+                triangular("burette", self.burette.tolerance),
+                _warmth(mean),
+                self._end_point(),
+            ),
+        )
+
+    def _end_point(self) -> Doubt:
+        # two readings, each to half a mark; titres that happen to be equal are no better than that
+        read = rectangular("end point", self.burette.step / 2, times=2).standard
+        read /= math.sqrt(len(self.cm3))
+        if len(self.cm3) < 2:
+            return normal("end point", read)
+        return normal("end point", max(read, repeatability("", self.cm3).standard))
+
+
+@dataclass(frozen=True, slots=True)
+class Measured:
+    """A volume as it was measured out, in cm³, and with what."""
+
+    cm3: float
+    ware: Ware
+
+    def as_input(self, name: str) -> Input:
+        """The volume with its doubts: the glass and the room. Raises: BadAmount not above 0."""
+        volume = positive(self.cm3, name, "cm³")
+        return Input(name, volume, (triangular("glass", self.ware.error), _warmth(volume)))
+
+
+@dataclass(frozen=True, slots=True)
+class Dilution:
+    """So much of the sample made up to so much, before the aliquot was taken."""
+
+    taken: Measured
+    made_up_to: Measured
+
+    def check(self) -> None:
+        """Pass when it thins. Raises: BadAmount for a volume made up to less than itself."""
+        if self.made_up_to.cm3 < self.taken.cm3:
+            raise BadAmount(
+                f"{self.taken.cm3:g} cm³ made up to {self.made_up_to.cm3:g} cm³ is no dilution.",
+                "Write what was taken first: 10 cm3 to 250 cm3.",
+            )
+
+
+@dataclass(frozen=True, slots=True)
+class Standard:
+    """What the flask held of a known substance, as inputs multiplied and divided to mol.
+
+    `over` and `under` are in g, g/mol, mol/dm³ and cm³ so that their quotient times
+    `scale` is in mol.
+    """
+
+    over: tuple[Input, ...]
+    under: tuple[Input, ...] = ()
+    scale: float = 1.0
+
+    @staticmethod
+    def weighed(mass: Input, molar_mass: Input, assay: Input) -> Standard:
+        """A solid weighed straight into the flask."""
+        return Standard((mass, assay), (molar_mass,))
+
+    @staticmethod
+    def pipetted(strength: Input, volume: Measured) -> Standard:
+        """So many cm³ of a standard solution in mol/dm³."""
+        over = (strength, volume.as_input("standard volume"))
+        return Standard(over, scale=1 / _CM3_PER_DM3)
+
+
+def found_in_flask(
+    reaction: Titration,
+    titres: Titres,
+    *,
+    titrant: Input,
+    aliquot: Measured,
+    dilution: Dilution | None = None,
+) -> Budget:
+    """The mol/dm³ of the sample, from a titrant of known strength (mol/dm³).
+
+    `aliquot` is what was pipetted into the flask; where the sample was diluted first,
+    its `dilution` is undone. Raises: BadAmount for figures that cannot be.
+
+    >>> from stockroom.chemistry.glassware import ware
+    >>> from stockroom.chemistry.reactions import titration_of
+    >>> titres = Titres((18.72,), ware("burette", 50, "B", step=0.1))
+    >>> twenty = Measured(20, ware("pipette", 20, "B"))
+    >>> found = found_in_flask(
+    ...     titration_of("KMnO4 on H2O2"), titres, titrant=Input("permanganate", 0.021),
+    ...     aliquot=twenty,
+    ... )
+    >>> round(found.value, 5)
+    0.04914
+    """
+    over = [titrant, titres.as_input()]
+    under = [aliquot.as_input("aliquot")]
+    if dilution is not None:
+        dilution.check()
+        over.append(dilution.made_up_to.as_input("made up to"))
+        under.append(dilution.taken.as_input("taken"))
+    return quotient(over, under, scale=reaction.per_titrant)
+
+
+def found_in_burette(reaction: Titration, titres: Titres, *, standard: Standard) -> Budget:
+    """The mol/dm³ of the titrant, from a known amount of standard in the flask.
+
+    Raises: BadAmount for figures that cannot be.
+    """
+    scale = standard.scale * _CM3_PER_DM3 / reaction.per_titrant
+    return quotient(standard.over, (*standard.under, titres.as_input()), scale=scale)
+
+
+def _warmth(volume_cm3: float) -> Doubt:
+    return rectangular("temperature", volume_cm3 * EXPANSION_PER_C * SWING_C)

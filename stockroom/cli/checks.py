@@ -18,6 +18,11 @@ def found(
     strength: Annotated[
         str, typer.Argument(metavar="STRENGTH", help='With its unit: "0.0987 mol/dm3".')
     ],
+    uncertainty: Annotated[
+        str,
+        typer.Option(metavar="STRENGTH", help='Its standard uncertainty: "0.0002 mol/dm3".'),
+    ] = "",
+    note: Annotated[str, typer.Option(help="How it was found.")] = "",
     sure: Annotated[
         bool, typer.Option("--sure", help="Keep it though it is far from the label.")
     ] = False,
@@ -32,7 +37,11 @@ def found(
 
     shared = of(ctx)
     result = parse_strength(strength)
-    show_done(shared, checks.found(shared.path, bottle, result, sure=sure, **when(shared, on)))
+    spread = parse_strength(uncertainty, where="--uncertainty") if uncertainty else None
+    done = checks.found(
+        shared.path, bottle, result, spread=spread, note=note, sure=sure, **when(shared, on)
+    )
+    show_done(shared, done)
 
 
 def look(

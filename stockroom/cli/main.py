@@ -23,6 +23,7 @@ from stockroom.cli import (
     house_rules,
     plan,
     stock,
+    titrate,
 )
 from stockroom.cli.shared import ANYWHERE, pull
 from stockroom.errors import StockroomError
@@ -66,6 +67,7 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "strength": bench_strength.strength,
         "weigh": bench_weigh.weigh,
         "dilute": bench_dilute.dilute,
+        "titrate": titrate.titrate,
     },
     "The house": {
         "demo": database.demo,

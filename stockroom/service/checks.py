@@ -5,7 +5,7 @@ from __future__ import annotations
 from datetime import date
 from pathlib import Path
 
-from stockroom.errors import BadInput, NotAllowed, StockroomError
+from stockroom.errors import BadAmount, BadInput, NotAllowed, StockroomError
 from stockroom.keeping.rules import RuleKind
 from stockroom.measure.days import spell_day
 from stockroom.measure.strengths import Strength
@@ -32,6 +32,8 @@ def found(
     bottle: str,
     strength: Strength,
     *,
+    spread: Strength | None = None,
+    note: str = "",
     sure: bool = False,
     on: date | None,
     today: date,
@@ -39,6 +41,7 @@ def found(
 ) -> Done:
     """Write a strength that was measured; its recheck counts from that day.
 
+    `spread` is its standard uncertainty, `note` how it was found.
     Raises: NotAllowed when it is more than 25 % from the label, unless `sure`;
     BadAmount for a strength without a number; MissingFigure for a missing density.
     """
@@ -47,11 +50,21 @@ def found(
         check_at_hand(work, checked)
         line = work.line(checked)
         check_has_strength(line, checked.number)
-        value = number_beside(strength, substance_of(work.session, line), line)
+        substance = substance_of(work.session, line)
+        value = number_beside(strength, substance, line)
         _check_usual(line, strength, value, sure=sure)
-        event = Event(EntryKind.FOUND, strength=value, strength_text=strength.text)
+        known = None if spread is None else number_beside(spread, substance, line)
+        _check_spread(strength, value, spread, known)
+        event = Event(
+            EntryKind.FOUND,
+            strength=value,
+            strength_text=strength.text,
+            uncertainty=known,
+            note=note,
+        )
         entry = work.write(checked, event)
-        text = f"{work.called(checked)} found {strength.text}, {spell_day(work.on)}."
+        within = f" (standard uncertainty {spread.text})" if spread else ""
+        text = f"{work.called(checked)} found {strength.text}{within}, {spell_day(work.on)}."
         return work.done(
             text,
             checked,
@@ -69,6 +82,17 @@ def _check_usual(line: Line, strength: Strength, value: float, *, sure: bool) ->
         raise NotAllowed(
             f"Unusual: {strength.text} against {line.strength_text}.",
             "Check the units, or confirm with --sure.",
+        )
+
+
+def _check_spread(
+    strength: Strength, value: float, spread: Strength | None, known: float | None
+) -> None:
+    # as wide as the strength itself says that nothing was found
+    if spread is not None and known is not None and not 0 < known < value:
+        raise BadAmount(
+            f"An uncertainty of {spread.text} on {strength.text} cannot be.",
+            "Give the standard uncertainty, in the strength's own unit.",
         )
 
 
