@@ -102,7 +102,7 @@ TABLES: dict[str, Table] = {
     ),
     "history": _table(
         "number happened entered by event bottle amount_g amount_cm3 amount_items strength"
-        " passed place reason puts_right"
+        " uncertainty peroxide_mg_kg passed place reason puts_right"
     ),
 }
 

@@ -196,23 +196,34 @@ def _event(
         return Event(kind, note=check_reading(bottle, fields.need_day("reason")))
     if kind is EntryKind.FOUND:
         check_has_strength(line, bottle.number)
-    strength, written = _found(desk, fields, line) if kind is EntryKind.FOUND else (None, "")
+    strength, written, spread = (
+        _found(desk, fields, line) if kind is EntryKind.FOUND else (None, "", None)
+    )
     place = fields.text("place")
     return Event(
         kind,
         change=-(amount or 0) if kind in _TAKES else 0,
         strength=strength,
         strength_text=written,
+        uncertainty=spread,
+        peroxide_mg_kg=fields.number("peroxide_mg_kg") if kind is EntryKind.TESTED else None,
         passed=fields.flag("passed") if kind in _ANSWERED else None,
         place_id=find_place(desk.session, place).id if place else None,
         reason=fields.text("reason"),
     )
 
 
-def _found(desk: Desk, fields: Fields, line: Line) -> tuple[float, str]:
+def _found(desk: Desk, fields: Fields, line: Line) -> tuple[float, str, float | None]:
+    """A strength found: its value in the line's unit, as written, and its uncertainty if known."""
+    substance = substance_of(desk.session, line)
+
+    def number(column: str, written: str) -> float:
+        return number_beside(parse_strength(written, where=column), substance, line)
+
+    spread = fields.text("uncertainty")
+    known = number("uncertainty", spread) if spread else None
     written = fields.need("strength")
-    strength = parse_strength(written, where="strength")
-    return number_beside(strength, substance_of(desk.session, line), line), written
+    return number("strength", written), written, known
 
 
 def _reversal(desk: Desk, number: str, event: Event) -> Event:
