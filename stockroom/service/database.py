@@ -102,9 +102,22 @@ def new_store(path: Path, *, tables: Path | None = None) -> Done:
             _check_methods(session)
 
     create(path, fill=fill)
+    if tables == starter_folder():
+        return _started(path)
     filled = f" from the tables in {tables}" if tables else ""
     following = "stockroom plan" if tables else "stockroom add lines item=… form=solid"
     return Done(f"Made {path}{filled}.", next=following, practice=is_practice(path))
+
+
+def _started(path: Path) -> Done:
+    with reading.reading(path) as reader:
+        counted = "SELECT (SELECT COUNT(*) FROM substance), (SELECT COUNT(*) FROM line)"
+        substances, lines = reader.ask(counted)[0]
+    return Done(
+        f"Made {path} with the starter house: {substances} substances, {lines} stock lines.",
+        next="stockroom add terms term=… from=… to=…",
+        details=("No bottles yet. Every life is a starter value until the house says otherwise.",),
+    )
 
 
 def add_row(path: Path, table: str, values: dict[str, str], *, by: str) -> Done:

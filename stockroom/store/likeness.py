@@ -4,11 +4,14 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable
+from functools import lru_cache
 
 from stockroom.errors import UnknownName
 from stockroom.measure.reading import tidy
 
 
+# a folder of tables names the same few hundred things thousands of times
+@lru_cache(maxsize=8192)
 def plain(text: str) -> str:
     """A name as it is compared: spaces, commas, look-alike characters and capitals settled."""
     # "sodium thiosulfate anhydrous" and "..., anhydrous" are one name; "2,4-" keeps its comma

@@ -175,16 +175,22 @@ def find_department(session: Session, text: str) -> Department:
 def find_substance(session: Session, text: str) -> Substance:
     """The substance by name, another name, formula or registry number.
 
-    Raises: UnknownName with the nearest three.
+    Raises: UnknownName with the nearest three; BadInput listing several of one formula.
     """
-    others = select(OtherName)
-    for other in session.exec(others):
+    # as it stands in the table, which is how nearly every row of another table has it
+    exact = session.exec(select(Substance).where(Substance.substance == text.strip())).first()
+    if exact is not None:
+        return exact
+    for other in session.exec(select(OtherName)):
         if _spelt(other.name) == _spelt(text):
             return session.get_one(Substance, other.substance_id)
-    for row in session.exec(select(Substance).order_by(col(Substance.id))):
-        if _spelt(text) in {_spelt(row.formula), _spelt(row.cas)} - {""}:
-            return row
-    return _by_column(session, Substance, "substance", text, "substance")
+    rows = list(session.exec(select(Substance).order_by(col(Substance.id))))
+    fitting = [row for row in rows if _spelt(text) in {_spelt(row.formula), _spelt(row.cas)} - {""}]
+    if len(fitting) > 1:
+        # propanal and propanone are both C3H6O, and only a person knows which is meant
+        listed = " or ".join(row.substance for row in fitting[:_MOST_LISTED])
+        raise BadInput(f'"{text.strip()}" could be {listed}.', "Write the name.")
+    return fitting[0] if fitting else _by_column(session, Substance, "substance", text, "substance")
 
 
 def other_names(session: Session, substance: Substance | None) -> tuple[str, ...]:
