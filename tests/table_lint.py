@@ -35,7 +35,7 @@ DENSITY_WITHIN = 0.01
 # pentane and bromine are the lightest and the heaviest liquid of a teaching shelf, mercury left out
 LIGHTEST, HEAVIEST = 0.6, 3.2
 
-MEMORY = "common practice, no source"
+MEMORY, PARTLY = "from memory", "partly from memory"
 # a key of this list says that the number is confirmed; any other says that there is none to confirm
 CONFIRMED = frozenset(
     {"names", "density-liquid", "density-memory", "density-ethanol", "density-sulfuric"}
@@ -251,7 +251,7 @@ def source_faults(rows: list[Row], sources: list[Row]) -> list[str]:
         found += [f"{row['substance']}: {fault}" for fault in _unsaid(row)]
     used = [known[key] for key in sorted({row["source"] for row in rows} & set(known))]
     for source in used:
-        if "from memory" in source["citation"].casefold() and source["how"] != MEMORY:
+        if "from memory" in source["citation"].casefold() and source["how"] not in (MEMORY, PARTLY):
             found.append(f"{source['key']}: from memory, yet {source['how']!r}")
     return found
 

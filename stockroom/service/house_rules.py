@@ -16,7 +16,8 @@ from stockroom.service.finding import line_in
 
 if TYPE_CHECKING:
     from stockroom.store.engine import Session
-    from stockroom.store.house_rules import Replaced, RuleChange
+    from stockroom.store.house_rules import Replaced
+    from stockroom.store.rule_changes import RuleChange
 
 
 @dataclass(frozen=True, slots=True)
@@ -34,8 +35,8 @@ class Keeping:
 def keeping_of(path: Path, line: str) -> Keeping:
     """How a line keeps. Raises: UnknownName with the nearest names; BadInput when it is several."""
     from stockroom.service.database import is_practice, seeds_folder
-    from stockroom.store.house_rules import changes_of
     from stockroom.store.reading import reading
+    from stockroom.store.rule_changes import changes_of
     from stockroom.store.snapshot_lines import lines_of
     from stockroom.store.sources import citations
 

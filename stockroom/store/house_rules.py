@@ -14,12 +14,11 @@ from stockroom.store.engine import reader_in
 from stockroom.store.faults import told_with_place
 from stockroom.store.fields import Fields
 from stockroom.store.layout import check_columns
-from stockroom.store.reading import Reader
 from stockroom.store.rows_rules import cells_of, rule_from
+from stockroom.store.rule_changes import TABLE
 from stockroom.store.snapshot_lines import rule_of
 from stockroom.store.tables import KeepingRule, Line
 
-TABLE = "keeping"
 SOURCE = "house rule"
 # these say which rule is meant, where a line has several of a kind
 _WHICH = (
@@ -84,32 +83,6 @@ def note_change(desk: Desk, line: Line, kind: str, words: tuple[str, str], why: 
     if not why.strip():
         raise BadInput(f"Why is {kind} of {line.key} changed?", "One word is enough: --why …")
     record_change(desk, TABLE, line.key, kind, words, why.strip())
-
-
-@dataclass(frozen=True, slots=True)
-class RuleChange:
-    """One change of a line's rules, as it was recorded."""
-
-    rule: str
-    before: str
-    after: str
-    why: str
-    by: str
-    on: str
-
-
-def changes_of(reader: Reader, line: str) -> tuple[RuleChange, ...]:
-    """The changes recorded of a line's rules, oldest first."""
-    rows = reader.rows(
-        "row_change", "WHERE table_name = ? AND row_key = ? ORDER BY id", TABLE, line
-    )
-    return tuple(
-        RuleChange(
-            row["column_name"], row["before"], row["after"], row["why"], row["by"],
-            row["entered_on"],
-        )
-        for row in rows
-    )  # fmt: skip
 
 
 def _kind(text: str) -> RuleKind:

@@ -40,9 +40,9 @@ def rule_from(desk: Desk, fields: Fields) -> KeepingRule:
     lasts = fields.need("lasts") if dated else fields.text("lasts")
     period = parse_period(lasts, where="lasts") if lasts else None
     fades = kind is RuleKind.FADES
-    named = _named_law(fields) if fades else ""
+    named = _named_law(fields, line) if fades else ""
     order, rate = (None, None) if named or not fades else _decay(desk, fields, line)
-    factor, energy = _warmth(fields)
+    factor, energy = _warmth(fields, fades=fades)
     assert line.id is not None
     return KeepingRule(
         line_id=line.id,
@@ -111,20 +111,31 @@ def _bound(desk: Desk, fields: Fields, line: Line, column: str) -> float | None:
     return number_beside(strength, substance_of(desk.session, line), line)
 
 
-def _named_law(fields: Fields) -> str:
+def _named_law(fields: Fields, line: Line) -> str:
     named = fields.text("named_law").lower()
     if named and named not in NAMED_LAWS:
         raise unknown("named law", named, NAMED_LAWS)
+    # its rate is of mol/dm³, and no other unit would be told apart from that
+    if named and line.unit != "mol/dm3":
+        raise BadInput(
+            f"The {named} law counts in mol/dm3, and {line.key} in {line.unit}.",
+            "Give the substance its formula, or an order and a rate.",
+        )
     return named
 
 
-def _warmth(fields: Fields) -> tuple[float | None, float | None]:
+def _warmth(fields: Fields, *, fades: bool) -> tuple[float | None, float | None]:
     """The factor per 10 °C or the activation energy in kJ/mol: one of them at most."""
     factor, energy = fields.number("factor_per_10c"), fields.number("ea_kj_mol")
     if factor is not None and energy is not None:
         raise BadInput(
             f"factor_per_10c {factor:g} and ea_kj_mol {energy:g} say the same thing twice.",
             "Give one of them.",
+        )
+    if energy is not None and not fades:
+        raise BadInput(
+            f"ea_kj_mol {energy:g} is of a law, and this rule gives a period.",
+            "Give factor_per_10c for a life that is shorter in the warm.",
         )
     # above any reaction a bottle lasts through; a figure in J/mol would land here
     if energy is not None and not 0 < energy <= 400:

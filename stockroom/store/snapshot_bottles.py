@@ -11,10 +11,12 @@ from dataclasses import dataclass
 from datetime import date
 
 from stockroom.keeping.record import Check, CheckKind, Record, Stay
+from stockroom.keeping.temperatures import TemperatureLog
 from stockroom.measure.days import PrintedDate
 from stockroom.planning.facts import Bottle, Drawn
 from stockroom.store.kinds import BEGINNINGS, DAY_NOT_WRITTEN, STANDING, TURNED_UP, EntryKind
 from stockroom.store.reading import Reader, Row
+from stockroom.store.temperatures import logs_of
 
 # these change the balance alone, and the sums in SQL have them already
 _QUIET = (EntryKind.DRAWN, EntryKind.COUNTED, EntryKind.SPILLED, EntryKind.LENT)
@@ -35,34 +37,48 @@ class _Shelf:
     left: dict[int, int]
     events: dict[int, list[Row]]
     lineage: dict[int, tuple[str, ...]]
+    logs: dict[int, TemperatureLog]
 
 
-def bottles_of(reader: Reader, as_at: date) -> tuple[Bottle, ...]:
-    """Every bottle there on a day, by number; an emptied one stays until it is discarded."""
-    shelf = _shelf(reader, as_at.isoformat(), "")
+def bottles_of(reader: Reader, as_at: date, *, gone: bool = False) -> tuple[Bottle, ...]:
+    """Every bottle there on a day, by number; an emptied one stays until it is discarded.
+
+    With `gone`, those discarded too: what was found of them still teaches.
+    """
+    shelf = _shelf(reader, as_at, logs_of(reader, as_at))
     rows = reader.rows("bottle", "ORDER BY number")
     bottles = (_bottle(row, shelf) for row in rows if _begun(shelf.events.get(row["id"])))
     # gone with something left: the entries disagree, and hiding the bottle would hide that
-    return tuple(bottle for bottle in bottles if bottle.left or not bottle.record.gone)
+    return tuple(one for one in bottles if gone or one.left or not one.record.gone)
 
 
-def bottle_of(reader: Reader, number: str, as_at: date) -> Bottle | None:
-    """One bottle as at a day, gone or not; None when it was not there yet."""
+def bottle_of(
+    reader: Reader, number: str, as_at: date, *, every_log: bool = False
+) -> Bottle | None:
+    """One bottle as at a day, gone or not; None when it was not there yet.
+
+    Temperatures logged where it stood come along where something in it ages by
+    them, or with `every_log`.
+    """
     rows = reader.rows("bottle", "WHERE number = ?", number)
     if not rows:
         return None
     # an id is a number, so it may stand in the question itself
-    shelf = _shelf(reader, as_at.isoformat(), f" AND bottle_id = {int(rows[0]['id'])}")
+    row = int(rows[0]["id"])
+    logs = logs_of(reader, as_at, bottle=row, every=every_log)
+    shelf = _shelf(reader, as_at, logs, f" AND bottle_id = {row}")
     return _bottle(rows[0], shelf) if _begun(shelf.events.get(rows[0]["id"])) else None
 
 
-def _shelf(reader: Reader, day: str, only: str) -> _Shelf:
+def _shelf(reader: Reader, as_at: date, logs: dict[int, TemperatureLog], only: str = "") -> _Shelf:
+    day = as_at.isoformat()
     return _Shelf(
         lines={row["id"]: row for row in reader.rows("line")},
         places={row["id"]: row for row in reader.rows("place")},
         left=_left(reader, day, only),
         events=_events(reader, day, only),
         lineage=_lineage(reader),
+        logs=logs,
     )
 
 
@@ -135,7 +151,7 @@ def _ancestors(child: int, parents: dict[int, list[int]], numbers: dict[int, str
 def _bottle(row: Row, shelf: _Shelf) -> Bottle:
     events = shelf.events[row["id"]]
     line = shelf.lines[row["line_id"]]
-    record = _record(row, events, line, shelf.places)
+    record = _record(row, events, line, shelf)
     return Bottle(
         number=row["number"],
         line=line["key"],
@@ -156,7 +172,7 @@ def _meant_for(events: list[Row]) -> tuple[str, ...]:
     return tuple(filter(None, made["booking"].split(";"))) if made else ()
 
 
-def _record(row: Row, events: list[Row], line: Row, places: dict[int, Row]) -> Record:
+def _record(row: Row, events: list[Row], line: Row, shelf: _Shelf) -> Record:
     kinds = {event["kind"] for event in events}
     received = _day(row["received_on"])
     opened, guessed = _opened(events, received)
@@ -168,7 +184,7 @@ def _record(row: Row, events: list[Row], line: Row, places: dict[int, Row]) -> R
         printed=_printed(row, events),
         nominal=line["strength"],
         checks=tuple(_checks(events)),
-        stays=tuple(_stays(events, places)),
+        stays=tuple(_stays(events, shelf)),
         set_aside=_set_aside(events),
         not_found=_not_found(events),
         gone=EntryKind.DISCARDED in kinds,
@@ -215,12 +231,13 @@ def _checks(events: list[Row]) -> Iterator[Check]:
             )
 
 
-def _stays(events: list[Row], places: dict[int, Row]) -> Iterator[Stay]:
+def _stays(events: list[Row], shelf: _Shelf) -> Iterator[Stay]:
     for event in events:
-        if event["kind"] in _STAYS and event["place_id"] is not None:
-            place = places[event["place_id"]]
+        place_id = event["place_id"]
+        if event["kind"] in _STAYS and place_id is not None:
+            place = shelf.places[place_id]
             since = date.fromisoformat(event["happened_on"])
-            yield Stay(since, place["place"], place["temperature_c"])
+            yield Stay(since, place["place"], place["temperature_c"], shelf.logs.get(place_id))
 
 
 def _set_aside(events: list[Row]) -> str:

@@ -192,7 +192,14 @@ def test_a_planted_fault_is_told(
 
 
 def test_sources_say_how_each_was_come_by() -> None:
-    hows = {"seen", "worked out", "common practice, no source", "invented"}
+    hows = {
+        "seen",
+        "worked out",
+        "from memory",
+        "partly from memory",
+        "common practice, no source",
+        "invented",
+    }
     assert {row["how"] for row in read(SEEDS / "SOURCES.csv")} == hows
 
 

@@ -363,3 +363,83 @@ def test_a_date_read_in_the_tables_settles_the_bottle(tables: Path, tmp_path: Pa
 def test_a_solid_has_no_strength_in_the_tables_either(tables: Path) -> None:
     change(tables, "history", "found,S01", "found,B01")
     assert "has no strength to find" in refused(tables)
+
+
+@pytest.mark.parametrize(
+    ("cells", "told"),
+    [
+        ({"rule": "fades", "named_law": "bleaching"}, 'No named law "bleaching"'),
+        (
+            {"rule": "life", "lasts": "9 d", "ea_kj_mol": "60"},
+            "ea_kj_mol 60 is of a law, and this rule gives a period",
+        ),
+        (
+            {"rule": "life", "lasts": "9 d", "factor_per_10c": "2", "ea_kj_mol": "60"},
+            "say the same thing twice",
+        ),
+        (
+            {"rule": "fades", "order": "1", "rate": "0.1", "rate_per": "day", "ea_kj_mol": "60000"},
+            "is not between 0 and 400",
+        ),
+    ],
+)
+def test_a_rule_that_says_no_law_is_refused(own: Path, cells: dict[str, str], told: str) -> None:
+    from stockroom.errors import StockroomError
+    from stockroom.service.database import add_row
+
+    line = {"line": "hydrogen peroxide 100 vol"}
+    with pytest.raises(StockroomError, match=told):
+        add_row(own, "keeping", line | cells, by="T1")
+
+
+def test_a_named_law_counts_in_mol_per_dm3_alone(own: Path) -> None:
+    from stockroom.errors import BadInput
+    from stockroom.service.database import add_row
+
+    cells = {"line": "starch 0.5 % w/v", "rule": "fades", "named_law": "hypochlorite"}
+    with pytest.raises(BadInput, match="counts in mol/dm3, and starch"):
+        add_row(own, "keeping", cells, by="T1")
+
+
+@pytest.mark.parametrize(
+    ("cells", "told"),
+    [
+        ({"kind": "beaker", "size_cm3": "100"}, 'No kind of glassware "beaker"'),
+        ({"kind": "flask"}, "size_cm3 of X is blank or 0"),
+        ({"kind": "flask", "size_cm3": "100", "class": "C"}, 'class "C" of X is not A, AS or B'),
+    ],
+)
+def test_glassware_that_says_nothing_is_refused(
+    own: Path, cells: dict[str, str], told: str
+) -> None:
+    from stockroom.errors import StockroomError
+    from stockroom.service.database import add_row
+
+    with pytest.raises(StockroomError, match=told):
+        add_row(own, "glassware", {"glass": "X"} | cells, by="T1")
+
+
+@pytest.mark.parametrize(
+    ("cells", "told"),
+    [
+        ({"basis": "guess", "h_code": "H314", "hazard_class": "x"}, 'No basis "guess"'),
+        ({"basis": "specific", "h_code": "314", "hazard_class": "x"}, 'h_code "314" is no hazard'),
+        (
+            {
+                "basis": "specific",
+                "h_code": "H314",
+                "hazard_class": "x",
+                "from_percent": "5",
+                "below_percent": "2",
+            },
+            "holds nothing",
+        ),
+        ({"basis": "harmonised", "h_code": "H301"}, "hazard_class is blank"),
+    ],
+)
+def test_a_limit_that_says_nothing_is_refused(own: Path, cells: dict[str, str], told: str) -> None:
+    from stockroom.errors import StockroomError
+    from stockroom.service.database import add_row
+
+    with pytest.raises(StockroomError, match=told):
+        add_row(own, "hazards", {"substance": "sodium hydroxide"} | cells, by="T1")

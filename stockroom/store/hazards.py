@@ -1,0 +1,142 @@
+"""Hazard limits and suppliers' texts: the table that travels along, and the store's own.
+
+The house's own rows for a substance take the place of all the shipped ones for it. A
+supplier's text is kept with who and when; the last one counts, the older ones stay.
+This half only reads, and loads nothing heavy; `enter_text` is in `hazard_texts.py`.
+"""
+
+from __future__ import annotations
+
+import csv
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, field
+from datetime import date
+from functools import lru_cache
+from pathlib import Path
+from typing import Any
+
+from stockroom.errors import BadInput, StockroomError
+from stockroom.safety.hazards import SheetText
+from stockroom.safety.limits import Basis, Limit, Route
+from stockroom.safety.pictograms import pictograms_for
+from stockroom.safety.statements import codes_in, statement
+from stockroom.store.likeness import plain
+from stockroom.store.reading import Reader
+
+Limits = tuple[Limit, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class LimitBook:
+    """What is held of each substance, by plain name; the house's own before the shipped."""
+
+    shipped: Mapping[str, Limits]
+    own: Mapping[str, Limits] = field(default_factory=dict)
+
+    def of(self, *names: str) -> Limits:
+        """The limits under the first of these names that has any; () for none of them."""
+        wanted = [plain(name) for name in names if name]
+        for held in (self.own, self.shipped):
+            for name in wanted:
+                if held.get(name):
+                    return held[name]
+        return ()
+
+
+@lru_cache(maxsize=2)
+def shipped_limits(folder: Path) -> Mapping[str, Limits]:
+    """The rows of `hazards.csv` in a folder of tables, by plain name of the substance.
+
+    Raises: BadInput quoting the row that cannot be read.
+    """
+    held: dict[str, list[Limit]] = {}
+    with (folder / "hazards.csv").open(encoding="utf-8", newline="") as file:
+        for row in csv.DictReader(file):
+            held.setdefault(plain(row["substance"]), []).append(limit_from(row))
+    return {name: tuple(rows) for name, rows in held.items()}
+
+
+def limit_from(row: Any) -> Limit:
+    """One row of either table as a limit. Raises: BadInput quoting substance and value."""
+    try:
+        limit = Limit(
+            hazard_class=row["hazard_class"],
+            h_code=row["h_code"],
+            basis=Basis(row["basis"]),
+            from_percent=_number(row["from_percent"]),
+            below_percent=_number(row["below_percent"]),
+            route=Route(row["route"]) if row["route"] else None,
+            ate=_number(row["ate"]),
+            m_factor=_number(row["m_factor"]) or 1.0,
+            percent_of=row["percent_of"],
+            how=row["how"],
+            source=row["source"],
+        )
+        _check(limit)
+    except (ValueError, StockroomError) as trouble:
+        raise BadInput(
+            f"hazards: {row['hazard_class'] or row['h_code']!r}: {trouble}", "Mend the row."
+        ) from trouble
+    return limit
+
+
+def _check(limit: Limit) -> None:
+    if limit.basis is Basis.NONE:
+        return
+    statement(limit.h_code)
+    if not limit.supplemental:
+        _check_code(limit)
+
+
+def _check_code(limit: Limit) -> None:
+    expected = limit.kind.statement
+    # some classes are marked with one of several statements, and their rows say which
+    if expected and limit.h_code[:4] != expected:
+        raise BadInput(
+            f"{limit.hazard_class} is {expected}, not {limit.h_code!r}.", "Which of them is meant?"
+        )
+
+
+def _number(written: str | float | None) -> float | None:
+    return None if written in ("", None) else float(written)
+
+
+def limit_book(folder: Path, reader: Reader | None = None) -> LimitBook:
+    """The limits of the tables in `folder`, and those of an open store before them."""
+    return LimitBook(shipped_limits(folder), own_limits(reader) if reader else {})
+
+
+def own_limits(reader: Reader) -> Mapping[str, Limits]:
+    """The limits the house entered itself, by plain name of the substance."""
+    names = reader.pairs("SELECT id, substance FROM substance")
+    held: dict[str, list[Limit]] = {}
+    for row in reader.rows("hazard"):
+        held.setdefault(plain(names[row["substance_id"]]), []).append(limit_from(row))
+    return {name: tuple(rows) for name, rows in held.items()}
+
+
+def texts_of(reader: Reader, line: str) -> tuple[SheetText, ...]:
+    """What was typed from suppliers' sheets for a line, by key; the newest, which counts, first."""
+    rows = reader.rows(
+        "hazard_text", "WHERE line_id = (SELECT id FROM line WHERE key = ?) ORDER BY id DESC", line
+    )
+    return tuple(text_from(row) for row in rows)
+
+
+def text_from(row: Any) -> SheetText:
+    """One row of typed text as a value."""
+    return SheetText(
+        statements=row["statements"],
+        codes=codes_in(row["statements"]),
+        signal_word=row["signal_word"],
+        pictograms=tuple(row["pictograms"].split()),
+        sheet=row["sheet"],
+        why=row["why"],
+        by=row["by"],
+        entered_on=date.fromisoformat(row["entered_on"]),
+    )
+
+
+def symbols_for(codes: Iterable[str]) -> str:
+    """The pictograms the codes of a sheet call for, as they are kept: "GHS05 GHS07"."""
+    return " ".join(pictograms_for(codes))

@@ -1,0 +1,131 @@
+"""Rows of the table of readings, and the temperature records made of them.
+
+A reading is kept in hundredths of a degree at a local clock time to the minute.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from datetime import date, datetime, timedelta
+from typing import TYPE_CHECKING
+
+from stockroom.keeping.temperatures import TemperatureLog, midnight, moment_of
+from stockroom.store.kinds import STANDING
+from stockroom.store.likeness import plain, unknown
+from stockroom.store.reading import Reader, Row
+
+if TYPE_CHECKING:
+    from stockroom.store.engine import Session
+
+PER_DEGREE = 100
+"""A reading counts hundredths of a degree."""
+
+
+def logs_of(
+    reader: Reader, as_at: date, *, bottle: int | None = None, every: bool = False
+) -> dict[int, TemperatureLog]:
+    """The records of the places bottles have stood in, up to a day, by the place's row number.
+
+    Only places where something ages by its warmth, unless `every` is asked for; with
+    `bottle` (its row number) only the places of that one.
+    """
+    # most stores hold no reading at all, and then nothing more is asked
+    if not reader.ask("SELECT 1 FROM reading LIMIT 1"):
+        return {}
+    day = as_at.isoformat()
+    places = reader.pairs(_stood(bottle, every=every), day)
+    logs = {place: log_of(reader, place, _eve(since), day) for place, since in places.items()}
+    return {place: log for place, log in logs.items() if log is not None}
+
+
+def _eve(day: str) -> str:
+    # a day begins between two readings, and the one before midnight tells how
+    return (date.fromisoformat(day) - timedelta(days=1)).isoformat()
+
+
+def _stood(bottle: int | None, *, every: bool) -> str:
+    """The question for each place and the first day a bottle was put there."""
+    warm = (
+        " AND line_id IN (SELECT line_id FROM keeping_rule WHERE factor_per_10c IS NOT NULL"
+        " OR ea_kj_mol IS NOT NULL OR named_law <> '')"
+    )
+    # an id is a number, so it may stand in the question itself
+    only = "" if bottle is None else f" AND bottle_id = {int(bottle)}"
+    return (
+        "SELECT place_id, MIN(happened_on) FROM entry JOIN bottle ON bottle.id = bottle_id"
+        f" WHERE place_id IS NOT NULL AND happened_on <= ? AND {STANDING}{only}"
+        f"{'' if every else warm} GROUP BY place_id"
+    )
+
+
+def log_of(
+    reader: Reader, place_id: int, since: str = "", until: str = "9999"
+) -> TemperatureLog | None:
+    """What is held of a place from one ISO day to another, both included; None when nothing is."""
+    rows = reader.ask(
+        "SELECT at, centi FROM reading WHERE place_id = ? AND at >= ? AND at < ? ORDER BY at",
+        place_id,
+        since,
+        # "T24" comes after every time of its day
+        f"{until}T24",
+    )
+    if not rows:
+        return None
+    return TemperatureLog(_minutes(rows), tuple(row[1] / PER_DEGREE for row in rows))
+
+
+def _minutes(rows: list[Row]) -> tuple[int, ...]:
+    # a year has 365 days and a day 1 440 minutes: each is worked out once, and not per reading
+    texts = [row[0] for row in rows]
+    days = {text: midnight(date.fromisoformat(text)) for text in {text[:10] for text in texts}}
+    clock = {text: 60 * int(text[1:3]) + int(text[4:6]) for text in {text[10:] for text in texts}}
+    return tuple(days[text[:10]] + clock[text[10:]] for text in texts)
+
+
+def place_row(reader: Reader, text: str) -> Row:
+    """The place by its short or its long name. Raises: UnknownName with the nearest three."""
+    rows = reader.rows("place")
+    for column in ("place", "name"):
+        for row in rows:
+            if plain(row[column]) == plain(text) != "":
+                return row
+    raise unknown("place", text, (row["place"] for row in rows))
+
+
+def add_readings(session: Session, place_id: int, readings: Iterable[tuple[int, float]]) -> None:
+    """Append readings of a place, (minute, °C); the caller has left out those that are held."""
+    # here, because the reading half of the store never loads the tables
+    from sqlmodel import insert
+
+    from stockroom.store.tables import Reading
+
+    rows = [
+        {"place_id": place_id, "at": _text(moment_of(minute)), "centi": round(PER_DEGREE * degrees)}
+        for minute, degrees in readings
+    ]
+    if rows:
+        session.connection().execute(insert(Reading), rows)
+
+
+def _text(moment: datetime) -> str:
+    return moment.isoformat(timespec="minutes")
+
+
+def note_file(
+    session: Session, place: str, told: str, *, by: str, today: date, at: datetime
+) -> None:
+    """Keep on record which file brought readings of a place, when and by whom."""
+    from stockroom.store.tables import RowChange
+
+    session.add(
+        RowChange(
+            table_name="readings",
+            row_key=place,
+            column_name="at",
+            after=told,
+            why="a logger's file brought in",
+            by=by,
+            entered_on=today,
+            entered_at=at.isoformat(sep=" "),
+        )
+    )
