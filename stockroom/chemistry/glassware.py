@@ -207,8 +207,8 @@ def smallest_sensible(
     flask or bulb pipette measures its size or nothing. None: not even full.
     Raises: as `ware`, and BadAmount for a closeness not above 0.
 
-    >>> smallest_sensible("graduated pipette", 1, "B", closeness=0.05)
-    0.2
+    >>> smallest_sensible("cylinder", 100, "B", closeness=0.05)
+    20.0
     """
     return least_measurable(ware(kind, size, glass_class, step=step), closeness)
 

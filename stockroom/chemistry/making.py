@@ -37,6 +37,34 @@ def molar_from_mass(
     return moles * _CM3_PER_DM3 / positive(volume_cm3, "volume", "cm³")
 
 
+def volume_from_mass(
+    mass_g: float, molar: float, *, molar_mass: float, assay: float = 1.0
+) -> float:
+    """The cm³ of `molar` mol/dm³ that `mass_g` makes: all there is, made up to what it gives.
+
+    Raises: BadAmount for a figure outside its range.
+
+    >>> round(volume_from_mass(75.6, 0.839, molar_mass=60.052))
+    1500
+    """
+    moles = positive(mass_g, "mass", "g") * content_per_gram(molar_mass, assay)
+    return moles * _CM3_PER_DM3 / positive(molar, "strength", "mol/dm³")
+
+
+def mass_in_form(mass_g: float, *, molar_mass: float, instead: float, assay: float = 1.0) -> float:
+    """The g of another form that hold as much substance as `mass_g` of one.
+
+    `molar_mass` is of the form the mass is for, `instead` of the form in the bottle,
+    both in g/mol and for as many moles of the substance; `assay` is of the latter.
+    Raises: BadAmount for a figure outside its range.
+
+    >>> round(mass_in_form(10.0, molar_mass=159.6, instead=177.6), 2)
+    11.13
+    """
+    moles = positive(mass_g, "mass", "g") / positive(molar_mass, "molar mass", "g/mol")
+    return moles / content_per_gram(instead, assay)
+
+
 def content_per_gram(molar_mass: float, assay: float = 1.0) -> float:
     """The mol of substance in one g of what the bottle holds."""
     return fraction(assay, "assay") / positive(molar_mass, "molar mass", "g/mol")

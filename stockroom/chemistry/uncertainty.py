@@ -209,8 +209,9 @@ def with_spread(value: float, spread: float, *, unit: str = "") -> str:
     """
     if not _not_below_0(spread, "uncertainty"):
         return f"{format_number(value)} {unit_mark(unit)}".rstrip()
-    leading = math.floor(math.log10(spread))
-    places = -leading + (1 if f"{spread:e}"[0] == "1" else 0)
+    # the digit that counts is the one that is printed: 0.0198 is 0.02, and 0.0142 is 0.014
+    two = f"{spread:.1e}"
+    places = -int(two.partition("e")[2]) + (two[0] == "1")
     shown, width = round(value, places), round(spread, places)
     decimals = max(places, 0)
     text = f"{_grouped(shown, decimals)} ± {_grouped(width, decimals)} {unit_mark(unit)}"

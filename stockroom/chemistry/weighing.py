@@ -5,7 +5,33 @@ The sums are the same for a graduated pipette, with cm³ in the place of g.
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 from stockroom.chemistry.figures import positive
+from stockroom.errors import BadAmount
+
+USP_LIMIT = 0.0010
+"""The 0.10 % that twice the repeatability may be of the mass. Source: USP <41>."""
+
+USP_FLOOR = 0.41
+"""Steps of the display that a repeatability never counts below.
+
+Source: USP <41>: the floor of 820 steps was seen, this figure is from memory.
+"""
+
+
+@dataclass(frozen=True, slots=True)
+class Scale:
+    """A balance as the sums see it: its step, and the least it may weigh whatever the step.
+
+    In g; `least` is 0 where only the closeness rule counts, `repeatability` (the spread
+    of repeated weighings, as a standard deviation) where nobody found it.
+    """
+
+    name: str
+    step: float
+    least: float = 0.0
+    repeatability: float = 0.0
 
 
 def least_weighable(step_g: float, closeness: float) -> float:
@@ -20,6 +46,27 @@ def least_weighable(step_g: float, closeness: float) -> float:
     0.5
     """
     return positive(step_g, "balance step", "g") / positive(closeness, "closeness")
+
+
+def least_by_pharmacopoeia(*, repeatability_g: float | None = None, step_g: float = 0.0) -> float:
+    """The least g to weigh so that twice the repeatability is 0.10 % of it.
+
+    `repeatability_g` is the standard deviation of ten or more weighings of one mass;
+    one below 0.41 of the step counts as that, and so does one nobody has found.
+    Raises: BadAmount with neither figure, or for one below 0.
+    Source: USP <41>; Ph. Eur. 2.1.7 has the same figures (from memory).
+
+    >>> round(least_by_pharmacopoeia(repeatability_g=0.00015), 5)
+    0.3
+    """
+    found = 0.0 if repeatability_g is None else positive(repeatability_g, "repeatability", "g")
+    floor = USP_FLOOR * positive(step_g, "balance step", "g") if step_g else 0.0
+    if not max(found, floor):
+        raise BadAmount(
+            f"repeatability {repeatability_g}, balance step {step_g:g} g: nothing to go by.",
+            "Give the balance's step, or the spread of ten weighings.",
+        )
+    return 2 * max(found, floor) / USP_LIMIT
 
 
 def batch_to_weigh(mass_g: float, volume_cm3: float, least_g: float) -> tuple[float, float]:

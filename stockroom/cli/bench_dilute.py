@@ -20,11 +20,18 @@ def dilute(
         typer.Option("--of", metavar="NAME", help="A name or a formula; a bottle says its own."),
     ] = "",
     source: Annotated[
-        str, typer.Option("--from", metavar="STRENGTH|BOTTLE", help='"91 vol", or B01.')
+        str, typer.Option("--from", metavar="STRENGTH|BOTTLE", help='"91 vol", neat, or B01.')
+    ] = "",
+    second: Annotated[
+        str,
+        typer.Option("--with", metavar="STRENGTH|BOTTLE", help="A second one, instead of water."),
     ] = "",
     density: Density = None,
 ) -> None:
-    """The volume of a stronger solution to take for a dilution.
+    """What to take of a stronger solution for a dilution, or of two that are mixed.
+
+    Ethanol gets its water told too, since the volumes do not add. A mass to make, as
+    "500 g", is answered by mass from strengths in % w/w.
 
     Example: stockroom dilute "500 cm3" "0.100 mol/dm3" --from "91 vol" --of "hydrogen peroxide"
     """
@@ -35,6 +42,7 @@ def dilute(
         amount_of(volume),
         text,
         source=source,
+        second=second,
         of=of_what,
         density=density_or_none(density, "--density"),
         store=shared.path,

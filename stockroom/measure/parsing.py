@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 import re
+from dataclasses import replace
 from decimal import ROUND_HALF_EVEN, Decimal
 
 from stockroom.errors import BadAmount
 from stockroom.measure.amounts import PER_UNIT, Amount, Kind
 from stockroom.measure.reading import NUMBER, quote, read_number, tidy
-from stockroom.measure.strengths import Strength, StrengthUnit, unit_of
+from stockroom.measure.strength_words import beside_unit, fraction_of, saturated_of, share_of
+from stockroom.measure.strengths import Strength, StrengthUnit
 
 LARGEST = 1_000_000
 """1000 kg or 1000 dm³: a thousandfold slip is likelier than a teaching store holding more."""
@@ -17,13 +19,9 @@ _AMOUNT = re.compile(rf"(?P<number>{NUMBER}) ?(?P<unit>.*)")
 _RANGE = re.compile(
     r"(?P<low>[0-9][0-9.,]*) ?(?:-|–|to) ?(?P<high>[0-9][0-9.,]*) ?(?P<unit>[^0-9., ].*)"
 )
-_FRACTION = re.compile(r"(?P<unit>[MN]) ?/ ?(?P<parts>[0-9][0-9 .,]*)")
-_PARTS = re.compile(r"(?P<one>[0-9.]+) (?:parts? )?in (?P<total>[0-9][0-9 .,]*)", re.IGNORECASE)
 _FRACTION_OF = re.compile(
     r"(?:(?P<whole>[0-9]+) )?(?P<over>[0-9]+) ?[/\u2044] ?(?P<under>[1-9][0-9]*) ?(?P<unit>\D.*)"
 )
-_RATIO = re.compile(r"[0-9.]+ ?: ?[0-9.]+")
-_SATURATED = {"saturated", "sat", "sat.", "satd", "saturated solution"}
 
 # Beyond these no solution goes, so a unit has slipped. % w/v can pass 100 (sulfuric
 # acid does), but on a bench it nearly always means that the wrong per cent was typed.
@@ -36,7 +34,15 @@ _STRONGEST = {
     StrengthUnit.VOL: 500.0,
     StrengthUnit.PPM_MV: 1e6,
     StrengthUnit.PPM_MM: 1e6,
+    # eight equivalents per mol is the most any reaction here has
+    StrengthUnit.NORMAL: 800.0,
+    StrengthUnit.MOLAL: 1000.0,
+    StrengthUnit.CHLORINE: 100.0,
+    StrengthUnit.CHLORINE_WW: 100.0,
 }
+_COLDEST, _HOTTEST = -50.0, 200.0
+# no pressure or temperature of a room or a pharmacopoeia gives less or more
+_LEAST_GAS, _MOST_GAS = 22.0, 25.0
 
 
 def parse_amount(text: str, *, expect: Kind | None = None, where: str = "amount") -> Amount:
@@ -113,52 +119,31 @@ def _ask(kind: Kind) -> str:
 def parse_strength(text: str, *, where: str = "strength") -> Strength:
     """The strength somebody wrote: "0.15 M", "20 vol", "37 % w/w", "M/50", "1 in 10".
 
-    "1 in 10" is one part in ten parts of the whole. "saturated" carries the value
-    0, which means nothing by itself. The text is kept as written.
-    Raises: BadAmount for a bare "%" or "ppm" (which kind?), "1:10" (two readings),
-    normality, molality, less than nothing, and stronger than any solution.
+    "1 in 10", "1:10" and "1+9" are one part in ten parts of the whole, of what stands
+    after "of". "saturated" carries the value 0, which means nothing by itself. A
+    normality may stand without its reaction: no sum takes it so. Text kept as written.
+    Raises: BadAmount for a bare "%" or "ppm" (which kind?), "1:1" (two readings), "m",
+    less than nothing, and stronger than any solution.
     """
     plain = tidy(text)
     shown = f"{where} {quote(text)}"
     found = _worded(plain, text.strip(), where, shown)
     if found is not None:
-        return found
+        return _checked(found, shown)
     match = _AMOUNT.fullmatch(plain)
     if match is None:
         raise BadAmount(f"{shown}: how strong?", 'Write a number and a unit, as "0.1 mol/dm3".')
     number = read_number(match["number"], where=where, whole=text)
-    unit, scale = unit_of(match["unit"], number=plain, shown=shown)
-    return _checked(Strength(float(number * scale), unit, text.strip()), shown)
+    return _checked(beside_unit(number, match["unit"], text.strip(), shown), shown)
 
 
 def _worded(plain: str, written: str, where: str, shown: str) -> Strength | None:
-    if plain.lower() in _SATURATED:
-        return Strength(0.0, StrengthUnit.SATURATED, written)
-    if _RATIO.fullmatch(plain):
-        raise BadAmount(
-            f"{shown}: 1 in 10 or 1 to 10?", 'Write "1 in 10" for one part in ten of the whole.'
-        )
-    fraction = _FRACTION.fullmatch(plain)
-    if fraction:
-        unit, _ = unit_of(fraction["unit"], number=plain, shown=shown)
-        parts = _positive(fraction["parts"], where, written)
-        return _checked(Strength(float(1 / parts), unit, written), shown)
-    share = _PARTS.fullmatch(plain)
-    return _share(share, written, where, shown) if share else None
-
-
-def _share(share: re.Match[str], written: str, where: str, shown: str) -> Strength:
-    one, total = (_positive(share[part], where, written) for part in ("one", "total"))
-    if total < one:
-        raise BadAmount(f"{shown}: more parts than the whole.", 'Write it as "1 in 10".')
-    return Strength(float(total / one), StrengthUnit.PARTS, written)
-
-
-def _positive(number: str, where: str, written: str) -> Decimal:
-    value = read_number(number, where=where, whole=written)
-    if not value:
-        raise BadAmount(f"{where} {quote(written)}: nothing divides by 0.", 'Write "M/50".')
-    return value
+    share = share_of(plain, written, where, shown)
+    if share is None:
+        return saturated_of(plain, written) or fraction_of(plain, written, where)
+    part, stock = share
+    # "1 in 10 of 36 % w/w" holds a strength of its own, which is read as any other
+    return replace(part, part_of=parse_strength(stock, where=where)) if stock else part
 
 
 def _checked(strength: Strength, shown: str) -> Strength:
@@ -168,7 +153,23 @@ def _checked(strength: Strength, shown: str) -> Strength:
             f"{shown}: nothing is stronger than {most:g} {strength.unit}.",
             "Check the unit; above 100 % w/v, write it in g/dm3.",
         )
+    if strength.celsius is not None and not _COLDEST <= strength.celsius <= _HOTTEST:
+        raise BadAmount(f"{shown}: no solution in water at that temperature.", "Give it in °C.")
+    gas_volume(strength.gas_volume, shown)
     return strength
+
+
+def gas_volume(dm3_per_mol: float | None, shown: str) -> float | None:
+    """The molar volume that "vol" is counted at, in dm³/mol: 22 to 25, or None where not said.
+
+    Raises: BadAmount outside them, quoting `shown`.
+    """
+    if dm3_per_mol is not None and not _LEAST_GAS <= dm3_per_mol <= _MOST_GAS:
+        raise BadAmount(
+            f"{shown}: no gas takes up {dm3_per_mol:g} dm³ a mole on a bench.",
+            "Give 22.414 (0 °C, 1 atm), 22.711 (0 °C, 1 bar) or 24 dm3/mol (room temperature).",
+        )
+    return dm3_per_mol
 
 
 def parse_strength_range(text: str, *, where: str = "strength") -> tuple[Strength, Strength]:

@@ -8,16 +8,21 @@ before the built-in names. The sums themselves are in `bench_strength.py`,
 from __future__ import annotations
 
 import re
-from dataclasses import dataclass
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
+from typing import TYPE_CHECKING
 
-from stockroom.chemistry.peroxide import MOLAR_MASS, ask_vol
-from stockroom.chemistry.strength import Concentration, canonical
-from stockroom.errors import BadAmount
+from stockroom.chemistry.peroxide import MOLAR_MASS, ask_vol, convention
+from stockroom.chemistry.strength import BY_MASS, Concentration, canonical, percent_by_mass
+from stockroom.errors import BadAmount, MissingFigure
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_number
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.strengths import Strength, StrengthUnit
-from stockroom.service.bench_names import Stuff, density_of
+from stockroom.service.bench_names import Stuff, density_of, shipped_density_of
+
+if TYPE_CHECKING:
+    from stockroom.chemistry.normality import Equivalents
 
 _CAUTIONS = {
     "acid": "Acid into water, slowly, stirring, never the reverse; let it cool before the mark.",
@@ -26,6 +31,11 @@ _CAUTIONS = {
     "hypochlorite": "Never near acid (chlorine) or ammonia; vented cap.",
 }
 """By storage group; the-job section 7, nos. 2 to 5, in our words."""
+
+# the same ammonia is 28 % as NH3 and 57.6 % as NH4OH, and labels have both
+_MASSES = frozenset(
+    {StrengthUnit.WW, StrengthUnit.WV, StrengthUnit.GRAMS, StrengthUnit.PPM_MM, StrengthUnit.PPM_MV}
+)
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,35 +54,124 @@ def strength_of(text: str, stuff: Stuff) -> Strength:
 
     Raises: BadAmount for one that cannot be read, or is nothing at all.
     """
-    # a bare number is asked about here, where the likely answer is known
-    bare = re.fullmatch(r"\s*[\d.,]+\s*%?\s*", text)
-    if bare and stuff.molar_mass and abs(stuff.molar_mass - MOLAR_MASS) < 0.1:
+    # a bare number is asked about here, where the likely answer is known; "% vol" is how
+    # spirits are labelled, and on a peroxide bottle it may be either
+    bare = re.fullmatch(r"\s*[\d.,]+\s*(?:%?|%\s*vols?|vols?\s*%)\s*", text, re.IGNORECASE)
+    if bare and _is_peroxide(stuff):
         raise ask_vol(text)
     strength = parse_strength(text)
-    if strength.unit is not StrengthUnit.SATURATED and strength.value <= 0:
-        raise BadAmount(f"strength {text!r} is nothing at all.", "Give a strength above 0.")
+    for each in (strength, strength.part_of):
+        if each and each.unit is not StrengthUnit.SATURATED and each.value <= 0:
+            raise BadAmount(f"strength {text!r} is nothing at all.", "Give a strength above 0.")
     return strength
 
 
 def canonical_of(strength: Strength, stuff: Stuff, density: float | None) -> Concentration:
     """The strength in the unit sums are done in, from what is known of the substance."""
     return canonical(
-        strength,
-        molar_mass=stuff.molar_mass,
+        counted_for(strength, stuff),
+        molar_mass=mass_for(strength.unit, stuff),
         density=density,
         pure_density=density,
+        dry_mass=stuff.dry_mass if strength.unit is StrengthUnit.MOLAL else None,
         of=stuff.name,
     )
 
 
+def mass_for(unit: StrengthUnit, stuff: Stuff) -> float | None:
+    """The g/mol that a strength in `unit` needs; None for one counted in moles by itself."""
+    if unit in (StrengthUnit.MOLAR, StrengthUnit.NORMAL):
+        return None
+    # by far the commonest bench sum, and it loads no formula library
+    if unit is StrengthUnit.VOL and _is_peroxide(stuff):
+        return MOLAR_MASS
+    return stuff.molar_mass
+
+
+def counted_for(strength: Strength, stuff: Stuff) -> Strength:
+    """A normality with its equivalents put in numbers; any other strength as it is.
+
+    The reaction is looked up by every name of the substance. Raises: BadAmount with the
+    readings it may have, where it is not stated.
+    """
+    if strength.unit is not StrengthUnit.NORMAL:
+        return strength
+    return replace(strength, reaction=f"{_equivalents(strength, stuff).per_mole:g} eq per mol")
+
+
+def conventions_of(strength: Strength, stuff: Stuff) -> tuple[str, ...]:
+    """What a strength was counted by, in words: the gas, the reaction, the chlorine, the parts.
+
+    Printed under every sum that used it, so that nobody reads another convention into it.
+    """
+    unit = strength.unit
+    if unit is StrengthUnit.VOL:
+        return (convention(strength.gas_volume),)
+    if unit is StrengthUnit.NORMAL:
+        return (_equivalents(strength, stuff).said,)
+    if unit is StrengthUnit.MOLAL:
+        return ("molality: mol in 1 kg of water",)
+    if unit in (StrengthUnit.CHLORINE, StrengthUnit.CHLORINE_WW):
+        bare = re.search(r"\bppm (?![mw]/)", strength.text, re.IGNORECASE)
+        ppm = ("ppm of available chlorine read as mg in 1 dm³",) if bare else ()
+        return (*ppm, "available chlorine: one ClO⁻ oxidises as one Cl2 does")
+    if unit is StrengthUnit.PARTS:
+        shown = f"{strength.text.split(' of ')[0]} read as one part in"
+        return (f"{shown} {format_number(strength.value)} parts in total",)
+    if stuff.formula == "NH3" and unit in _MASSES:
+        return ("counted as NH3; a label that counts NH4OH is asked for as NH4OH",)
+    return ()
+
+
 def density_for(
-    given: float | None, strength: Strength, stuff: Stuff, lines: list[Stuff]
+    given: float | None, strength: Strength, stuff: Stuff, lines: Sequence[Stuff]
 ) -> tuple[float | None, str]:
-    """The density to use, and whose it is where nobody gave it."""
-    if given is not None or strength.unit is not StrengthUnit.WW:
+    """The density to use, and whose it is where nobody gave it.
+
+    The one given, else that of one's own line of the same % w/w, else the published
+    table's, else a shipped line's. None where the strength needs none, or none is held.
+    Raises: MissingFigure beyond the end of the table, naming its range.
+    """
+    if given is not None or strength.unit not in BY_MASS:
         return given, ""
-    found = density_of(strength.value, stuff, lines)
-    return found, f"assumed, that of {stuff.substance} {strength.text}" if found else ""
+    try:
+        percent = percent_by_mass(
+            strength, molar_mass=stuff.molar_mass, dry_mass=stuff.dry_mass, of=stuff.name
+        )
+    except MissingFigure:
+        return None, ""  # without a molar mass the strength itself will say what it needs
+    own = density_of(percent, stuff, lines)
+    if own is not None:
+        return own, f"that of your own line, {percent:g} % w/w"
+    return _published(percent, stuff)
+
+
+def _published(percent: float, stuff: Stuff) -> tuple[float | None, str]:
+    found = shipped_density_of(percent, stuff)
+    table = tabulated(stuff)
+    if not table or (found is not None and table_ends(table) < percent):
+        whose = f"assumed, that of {stuff.substance} {percent:g} % w/w"
+        return found, whose if found is not None else ""
+    from stockroom.chemistry.densities import density_at
+
+    read = density_at(table, percent)
+    memory = ", from memory" if read.how == "c" else ""
+    return read.value, f"at {read.temperature_c:g} °C: {read.source}{memory}"
+
+
+def tabulated(stuff: Stuff) -> str:
+    """The name under which a density table is held for the substance; empty where none is."""
+    from stockroom.chemistry.densities import covers
+
+    # a table's per cents are of the substance without its water of crystallisation
+    return next((name for name in stuff.names if covers(name) and not stuff.is_hydrate), "")
+
+
+def table_ends(name: str) -> float:
+    """The strongest % w/w that the density table of that name holds."""
+    from stockroom.chemistry.densities import density_at
+
+    return density_at(name, 0.0).high
 
 
 def cubic_of(volume: Amount) -> float:
@@ -108,3 +207,16 @@ def grams(mass: float) -> str:
 def cm3(cubic: float) -> str:
     """A volume in words."""
     return f"{format_number(cubic)} cm³"
+
+
+def _equivalents(strength: Strength, stuff: Stuff) -> Equivalents:
+    from stockroom.chemistry.normality import equivalents
+
+    shown = f'{stuff.name} "{strength.text}"'.strip()
+    return equivalents(strength.reaction, *stuff.names, shown=shown)
+
+
+def _is_peroxide(stuff: Stuff) -> bool:
+    if stuff.formula:
+        return stuff.formula == "H2O2"
+    return stuff.given_mass is not None and abs(stuff.given_mass - MOLAR_MASS) < 0.1

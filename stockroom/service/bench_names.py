@@ -1,23 +1,28 @@
 """What a bench sum knows of a name: the house's own lines, then the tables that travel along.
 
-A sum must work with no store at all, so the practice college's tables of
-substances and lines stand behind the store; a formula stands behind both.
+A sum must work with no store at all, so the tables of substances and lines that are
+shipped (`bench_tables.py`) stand behind the store; a formula stands behind both.
 """
 
 from __future__ import annotations
 
-import csv
 import re
 from collections.abc import Iterable
 from dataclasses import dataclass
 from difflib import get_close_matches
 from functools import lru_cache
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from stockroom.chemistry.formula import molar_mass
 from stockroom.errors import BadAmount, BadInput, StoreTrouble, UnknownName
 from stockroom.planning.facts import Form, Line
+from stockroom.service import bench_tables as shipped
+from stockroom.service.bench_tables import Row, spelt
 from stockroom.store.likeness import plain
+
+if TYPE_CHECKING:
+    from stockroom.store.reading import Reader
 
 _FORMULA = re.compile(r"[A-Z(\[][A-Za-z0-9()\[\].·•*]*")
 
@@ -26,17 +31,61 @@ _FORMULA = re.compile(r"[A-Z(\[][A-Za-z0-9()\[\].·•*]*")
 class Stuff:
     """One form of a substance: g/mol, assay as a fraction, g/cm³; None where not known.
 
-    `strength_text` is the label's strength, which the density belongs to.
+    `strength_text` is the label's strength, which the density belongs to; `given_mass`
+    is the molar mass where somebody said it, else `formula` gives it when asked;
+    `liquid_density` is that of the pure liquid, where one's own table says.
     """
 
     name: str
     substance: str
     form: Form | None
-    molar_mass: float | None
+    given_mass: float | None
     assay: float = 1.0
     density: float | None = None
     strength_text: str = ""
     storage_group: str = ""
+    formula: str = ""
+    liquid_density: float | None = None
+
+    @property
+    def molar_mass(self) -> float | None:
+        """g/mol of this form, its water of crystallisation and all; None where not known.
+
+        Raises: BadAmount for a formula that cannot be read.
+        """
+        if self.given_mass is not None or not self.formula:
+            return self.given_mass
+        # worked out now: a sum that needs none never loads the formula library
+        return molar_mass(self.formula)
+
+    @property
+    def dry_mass(self) -> float | None:
+        """g/mol without the water of crystallisation; None where not known."""
+        if self.is_hydrate:
+            return molar_mass(spelt(self.formula).partition(".")[0])
+        formula = (shipped.row_of(self.substance) or {}).get("formula", "")
+        # a house's line holds the mass of its own form, which may be a hydrate
+        return molar_mass(formula) if formula and not self.formula else self.molar_mass
+
+    @property
+    def is_hydrate(self) -> bool:
+        """Does its formula hold water of crystallisation?"""
+        return "." in spelt(self.formula)
+
+    @property
+    def pure_density(self) -> float | None:
+        """g/cm³ of the pure liquid, where the tables of substances or its own line say."""
+        if self.liquid_density is not None:
+            return self.liquid_density
+        if self.form is Form.LIQUID and self.density and not self.strength_text:
+            return self.density
+        return shipped.density_in(shipped.row_of(self.substance))
+
+    @property
+    def names(self) -> tuple[str, ...]:
+        """What it may be called in the tables of chemistry: name, substance, formula."""
+        formula = self.formula or (shipped.row_of(self.substance) or {}).get("formula", "")
+        return tuple(dict.fromkeys(each for each in (self.name, self.substance, formula) if each))
 
 
 def solute(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
@@ -47,11 +96,18 @@ def solute(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     """
     # one's own line comes first: its assay and density are off the bottle in hand
     known = [*lines, *_shipped_lines()]
-    asked = _formulas().get(of.strip()) or _substance_of(of)
-    named = [stuff for stuff in known if _same(stuff.name, of, asked)]
-    named += [stuff for stuff in _shipped_substances() if _same(stuff.name, asked)]
-    named += [stuff for stuff in known if _same(stuff.substance, asked)]
-    return named[0] if named else _by_formula(of, known)
+    asked = shipped.formulas().get(spelt(of)) or _substance_of(of)
+    wanted = {plain(of), plain(asked)}
+    for stuff in known:
+        if plain(stuff.name) in wanted:
+            return stuff
+    row = shipped.substances().get(plain(asked))
+    if row is not None:
+        return _of_substance(row)
+    for stuff in known:
+        if plain(stuff.substance) == plain(asked):
+            return stuff
+    return _by_formula(of, known)
 
 
 def solid(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
@@ -62,34 +118,46 @@ def solid(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     Raises: BadInput naming the forms; UnknownName; BadAmount.
     """
     # a formula names its hydrate itself, so there is no form left to ask about
-    if of.strip() in _formulas():
+    if spelt(of) in shipped.formulas():
         return _by_formula(of, [])
-    asked = _substance_of(of)
-    solids = [each for each in [*lines, *_shipped_lines()] if each.form is Form.SOLID]
-    exact = [stuff for stuff in solids if _same(stuff.name, of)]
-    forms = {stuff.name: stuff for stuff in reversed(solids) if _same(stuff.substance, asked)}
-    if exact or len(forms) == 1:
-        return exact[0] if exact else next(iter(forms.values()))
+    house = list(lines)
+    own = [each for each in house if each.form is Form.SOLID]
+    solids = [*own, *(each for each in _shipped_lines() if each.form is Form.SOLID)]
+    exact = [stuff for stuff in solids if plain(stuff.name) == plain(of)]
+    if exact:
+        return exact[0]
+    asked = plain(_substance_of(of))
+    # what stands on one's own shelf is meant, before what might stand on any
+    forms = _forms(own, asked) or _forms(solids, asked)
+    if len({_weighed_as(form) for form in forms.values()}) == 1:
+        return next(iter(forms.values()))
     if forms:
         raise BadInput(
             f"{of!r}: which form is in the bottle? {' or '.join(sorted(forms))}.",
             f'Write --of "{min(forms)}".',
         )
-    return solute(of, lines)
+    return solute(of, house)
 
 
 def house_lines(store: Path | None) -> list[Stuff]:
-    """The lines of one's own store; none for the practice college, whose tables are built in."""
+    """The lines of one's own store; none for the practice college, whose tables are built in.
+
+    Behind them its substances, each by all its names, for what it holds and never lists.
+    """
     if store is None or not store.exists():
         return []
-    from stockroom.service.database import day_for, is_practice
-    from stockroom.store.snapshot import facts
+    from stockroom.service.database import is_practice
+    from stockroom.store.reading import reading
+    from stockroom.store.snapshot_lines import lines_of
 
     try:
-        known = {} if is_practice(store) else facts(store, day_for(store, None)).lines
+        if is_practice(store):
+            return []
+        with reading(store) as reader:
+            lines = [of_line(line) for line in lines_of(reader).values()]
+            return lines + _own_substances(reader)
     except StoreTrouble:
         return []  # a sum needs no store, so a damaged one must not stop it
-    return [of_line(line) for line in known.values()]
 
 
 def of_line(line: Line) -> Stuff:
@@ -107,24 +175,60 @@ def of_line(line: Line) -> Stuff:
 
 
 def density_of(percent_ww: float, stuff: Stuff, lines: Iterable[Stuff] = ()) -> float | None:
-    """The g/cm³ of that substance at that % w/w, where a line says; else None."""
+    """The g/cm³ of that substance at that % w/w, where one's own line says; else None."""
     text = f"{percent_ww:g} % w/w"
     # a formula was asked for, and the lines are kept under names
-    named = _formulas().get(stuff.substance, stuff.substance)
-    for line in [*lines, *_shipped_lines()]:
-        if line.substance == named and line.strength_text == text and line.density:
+    named = plain(shipped.formulas().get(stuff.substance, stuff.substance))
+    for line in lines:
+        if line.density and line.strength_text == text and plain(line.substance) == named:
             return line.density
     return None
+
+
+def shipped_density_of(percent_ww: float, stuff: Stuff) -> float | None:
+    """The g/cm³ that a line of the shipped tables has at that % w/w; else None."""
+    return density_of(percent_ww, stuff, _shipped_lines())
+
+
+def _own_substances(reader: Reader) -> list[Stuff]:
+    rows = {row["id"]: row for row in reader.rows("substance")}
+    named = [(row["substance"], row) for row in rows.values()]
+    named += [(row["name"], rows[row["substance_id"]]) for row in reader.rows("other_name")]
+    return [
+        Stuff(
+            name,
+            row["substance"],
+            None,
+            row["molar_mass"],
+            storage_group=row["storage_group"],
+            formula=row["formula"],
+            liquid_density=row["density"],
+        )
+        for name, row in named
+    ]
+
+
+def _forms(solids: Iterable[Stuff], asked: str) -> dict[str, Stuff]:
+    found: dict[str, Stuff] = {}
+    for stuff in solids:
+        if plain(stuff.substance) == asked:
+            found.setdefault(stuff.name, stuff)
+    return found
+
+
+def _weighed_as(stuff: Stuff) -> float | str:
+    # two jars of one form, lumps and powder, weigh the same
+    return stuff.name if stuff.molar_mass is None else round(stuff.molar_mass, 2)
 
 
 def _by_formula(of: str, known: list[Stuff]) -> Stuff:
     trouble = ""
     if _FORMULA.fullmatch(of.strip()):
         try:
-            return Stuff(of.strip(), of.strip(), None, molar_mass(of.strip()))
+            return _of_formula(of.strip())
         except BadAmount as bad:
             trouble = f" {bad.message}"
-    names = sorted({stuff.name for stuff in known} | set(_other_names()))
+    names = sorted({stuff.name for stuff in known} | set(shipped.other_names()))
     # by the standard library: a slip in a bench sum must not load the matcher of the store
     near = get_close_matches(of.casefold(), names, n=3, cutoff=0.3)
     nearest = f"Nearest: {'; '.join(near)}." if near else ""
@@ -134,69 +238,38 @@ def _by_formula(of: str, known: list[Stuff]) -> Stuff:
     )
 
 
-def _same(name: str, *asked: str) -> bool:
-    return plain(name) in {plain(each) for each in asked}
+def _of_formula(of: str) -> Stuff:
+    # of a hydrate, the substance is what stands before the dot
+    substance = shipped.formulas().get(spelt(of).partition(".")[0], of)
+    row = shipped.row_of(substance)
+    group = row["storage_group"] if row else ""
+    return Stuff(of, substance, None, molar_mass(of), storage_group=group, formula=of)
 
 
 def _substance_of(of: str) -> str:
-    return _other_names().get(plain(of), of)
+    return shipped.other_names().get(plain(of), of)
 
 
-@lru_cache(maxsize=1)
-def _other_names() -> dict[str, str]:
-    return {
-        plain(name): row["substance"]
-        for row in _table("substances")
-        for name in (row["substance"], *row["other_names"].split(";"))
-        if name.strip()
-    }
-
-
-@lru_cache(maxsize=1)
-def _formulas() -> dict[str, str]:
-    return {row["formula"]: row["substance"] for row in _table("substances") if row["formula"]}
-
-
-@lru_cache(maxsize=1)
-def _shipped_substances() -> tuple[Stuff, ...]:
-    return tuple(
-        Stuff(
-            row["substance"],
-            row["substance"],
-            None,
-            molar_mass(row["formula"]) if row["formula"] else None,
-            storage_group=row["storage_group"],
-        )
-        for row in _table("substances")
-    )
+def _of_substance(row: Row) -> Stuff:
+    name = row["substance"]
+    return Stuff(name, name, None, None, storage_group=row["storage_group"], formula=row["formula"])
 
 
 @lru_cache(maxsize=1)
 def _shipped_lines() -> tuple[Stuff, ...]:
-    substances = {stuff.name: stuff for stuff in _shipped_substances()}
-    return tuple(_stuff(row, substances.get(row["substance"])) for row in _table("lines"))
+    return tuple(_of_row(row) for row in shipped.lines())
 
 
-def _stuff(row: dict[str, str], substance: Stuff | None) -> Stuff:
-    dissolved = substance.molar_mass if substance else None
+def _of_row(row: Row) -> Stuff:
+    substance = shipped.substances().get(plain(row["substance"]), {})
     return Stuff(
         row["item"],
         row["substance"],
         Form(row["form"]),
-        molar_mass(row["formula"]) if row["formula"] else dissolved,
+        None,
         float(row["assay_percent"] or 100) / 100,
-        float(row["density_g_cm3"]) if row["density_g_cm3"] else None,
+        shipped.density_in(row),
         row["strength"],
-        substance.storage_group if substance else "",
+        substance.get("storage_group", ""),
+        row["formula"] or substance.get("formula", ""),
     )
-
-
-def _table(name: str) -> list[dict[str, str]]:
-    with (_folder() / f"{name}.csv").open(encoding="utf-8", newline="") as file:
-        return list(csv.DictReader(file))
-
-
-def _folder() -> Path:
-    from stockroom.service.database import seeds_folder
-
-    return seeds_folder() / "college"

@@ -1,38 +1,198 @@
-"""Bench sum: a strength turned into another unit."""
+"""Bench sum: a strength turned into another unit.
+
+What is typed is made a concentration first (`bench_known.py`), then said in the unit
+wanted; every convention, density and solubility that took part is named under it.
+"""
 
 from __future__ import annotations
 
+import re
+from dataclasses import dataclass, replace
 from pathlib import Path
 
-from stockroom.chemistry.strength import express
+from stockroom.chemistry.strength import BY_MASS, PER_MOLE, Concentration, express
+from stockroom.errors import BadAmount, BadInput, MissingFigure
 from stockroom.measure.formats import format_number
-from stockroom.measure.parsing import parse_strength
-from stockroom.service.bench import Sum, canonical_of, density_for, figures_of, strength_of
+from stockroom.measure.parsing import gas_volume, parse_strength
+from stockroom.measure.reading import quote
+from stockroom.measure.strengths import Strength, StrengthUnit
+from stockroom.service.bench import (
+    Sum,
+    conventions_of,
+    counted_for,
+    figures_of,
+    mass_for,
+    strength_of,
+    tabulated,
+)
+from stockroom.service.bench_known import Asked, Known, known, pure_density_of
 from stockroom.service.bench_names import house_lines, solute
+
+_ONE_IN = re.compile(r"\s*1 in(?:\s+of\s+(?P<stock>.+))?\s*", re.IGNORECASE)
+_PARTS_BELOW = 1 - 1e-9
+
+
+@dataclass(frozen=True, slots=True)
+class Given:
+    """The figures given with a question, as in `Asked`; `gas` is the dm³/mol to count vol at."""
+
+    density: float | None = None
+    pure_density: float | None = None
+    part_of: str = ""
+    celsius: float | None = None
+    gas: float | None = None
 
 
 def convert(
-    text: str, *, of: str, to: str, density: float | None = None, store: Path | None = None
+    text: str, *, of: str, to: str, given: Given | None = None, store: Path | None = None
 ) -> Sum:
     """The strength `text` of the substance `of` in the unit `to`.
 
-    `density` in g/cm³ is the solution's, or the pure liquid's for % v/v.
+    What is `given` stands before any table; a density is the pure liquid's where nothing
+    but % v/v wants one.
     Raises: BadInput, UnknownName; MissingFigure naming the figure to read off the label.
     """
-    lines = house_lines(store)
-    stuff = solute(of, lines)
-    strength = strength_of(text, stuff)
-    unit = parse_strength(f"1 {to}", where="--to")
-    density, assumed = density_for(density, strength, stuff, lines)
-    conc = canonical_of(strength, stuff, density)
+    given, lines = given or Given(), house_lines(store)
+    figures = (given.density, given.pure_density, given.part_of, given.celsius)
+    asked = Asked(solute(of, lines), tuple(lines), *figures)
+    strength, target = _read(text, to, asked, given.gas)
+    _refuse_unused(strength, target, given)
+    asked = _with_densities(strength, target, asked)
+    held = known(strength, asked, by_mass=target.unit in BY_MASS)
+    if strength.unit is StrengthUnit.PARTS:
+        # the density given was that of what is diluted
+        asked = replace(asked, density=None)
+    value, said = _said_in(target, held, asked)
+    answer = f"{text} {asked.stuff.name} is {_shown(value, to, target)}"
+    mass = figures_of(asked.stuff, None) if _counts_mass(strength, target) else ()
+    notes = (*held.notes, *said, *_not_used(strength, asked.celsius))
+    return Sum(answer, value, to, (*mass, *dict.fromkeys(notes)))
+
+
+def _read(text: str, to: str, asked: Asked, gas: float | None) -> tuple[Strength, Strength]:
+    gas_volume(gas, f"--gas-volume {gas}")
+    strength = _counted_at(strength_of(text, asked.stuff), gas)
+    return strength, _counted_at(_target(to, asked), gas)
+
+
+def _with_densities(strength: Strength, target: Strength, asked: Asked) -> Asked:
+    if BY_MASS & {strength.unit, target.unit} or asked.pure_density is not None:
+        return asked
+    # nothing here has a solution's density, so the one given is the pure liquid's
+    return replace(asked, pure_density=asked.density)
+
+
+def _refuse_unused(strength: Strength, target: Strength, given: Given) -> None:
+    # what is typed and then left out of the sum would be taken for a part of its answer
+    units = {strength.unit, target.unit, *(each.unit for each in (strength.part_of,) if each)}
+    if given.part_of and StrengthUnit.PARTS not in units:
+        raise BadInput(
+            f"--from {given.part_of!r}: nothing here is a part of it.",
+            'Write the strength as "1 in 10", or use: stockroom dilute',
+        )
+    if given.gas and not given.part_of and StrengthUnit.VOL not in units:
+        raise BadInput(f"--gas-volume {given.gas:g}: no vol in this sum.", "Leave it out.")
+
+
+def _not_used(strength: Strength, celsius: float | None) -> tuple[str, ...]:
+    if celsius is None or StrengthUnit.SATURATED in (
+        strength.unit,
+        strength.part_of.unit if strength.part_of else None,
+    ):
+        return ()
+    return (f"{celsius:g} °C took no part: densities are those at the temperature named",)
+
+
+def _counted_at(strength: Strength, gas: float | None) -> Strength:
+    # what is written beside the number is on the label, and stands before what is asked for
+    part_of = _counted_at(strength.part_of, gas) if strength.part_of else None
+    return replace(strength, gas_volume=strength.gas_volume or gas, part_of=part_of)
+
+
+def _target(to: str, asked: Asked) -> Strength:
+    """One of the unit that is wanted; its value is what the number is counted in."""
+    one_in = _ONE_IN.fullmatch(to)
+    if one_in:
+        written = one_in["stock"] or asked.part_of
+        stock = strength_of(written, asked.stuff) if written else None
+        return Strength(1.0, StrengthUnit.PARTS, to.strip(), part_of=stock)
+    try:
+        return parse_strength(f"1 {to}", where="--to")
+    except BadAmount as bad:
+        # the one in front is ours, and nobody typed it
+        raise BadAmount(bad.message.replace(quote(f"1 {to}"), quote(to)), bad.hint) from None
+
+
+def _said_in(target: Strength, held: Known, asked: Asked) -> tuple[float, tuple[str, ...]]:
+    """The concentration in the unit of `target`, and the figures that brought it there."""
+    if target.unit is StrengthUnit.PARTS:
+        return _one_in(target, held, asked)
+    stuff = asked.stuff
+    density, pure = held.density, None
+    said: tuple[str, ...] = ()
+    if target.unit in BY_MASS and density is None:
+        density, said = _density_of(held.conc, asked)
+    elif target.unit is StrengthUnit.VV:
+        pure, said = pure_density_of(asked)
+    one = counted_for(target, stuff)
     value = express(
-        conc,
-        unit.unit,
-        molar_mass=stuff.molar_mass,
+        held.conc,
+        target.unit,
+        molar_mass=mass_for(target.unit, stuff),
         density=density,
-        pure_density=density,
+        pure_density=pure,
+        dry_mass=stuff.dry_mass if target.unit is StrengthUnit.MOLAL else None,
+        reaction=one.reaction,
+        gas_volume=one.gas_volume,
         of=stuff.name,
     )
-    value /= unit.value or 1.0  # "mM" is a thousandth of mol/dm3
-    shown = f"{format_number(value)} {to}"
-    return Sum(f"{text} {stuff.name} is {shown}", value, to, figures_of(stuff, density, assumed))
+    # "mM" is a thousandth of mol/dm3
+    return value / target.value, (*conventions_of(target, stuff), *said)
+
+
+def _one_in(target: Strength, held: Known, asked: Asked) -> tuple[float, tuple[str, ...]]:
+    if target.part_of is None:
+        raise MissingFigure(
+            f"--to {target.text!r}: one part of what?",
+            'Write --to "1 in of 2 mol/dm3", or add --from "2 mol/dm3".',
+        )
+    stock = known(target.part_of, asked, by_mass=False)
+    parts = stock.conc.value / held.conc.value
+    if stock.conc.unit != held.conc.unit or parts < _PARTS_BELOW:
+        raise BadAmount(
+            f"{target.part_of.text} is no stronger than what is to be a part of it.",
+            "Give what it is diluted from.",
+        )
+    meant = f"one part in {format_number(parts)} parts in total, by volume"
+    return parts, (*stock.notes, meant)
+
+
+def _density_of(conc: Concentration, asked: Asked) -> tuple[float | None, tuple[str, ...]]:
+    """The density of so many mol/dm³: the one given, else where its table comes to as many."""
+    if asked.density is not None:
+        return asked.density, figures_of(asked.stuff, asked.density)[-1:]
+    table = tabulated(asked.stuff)
+    if not table:
+        return None, ()
+    from stockroom.chemistry.densities import density_at, in_words, percent_ww_for
+
+    mass = asked.stuff.molar_mass
+    if conc.unit == PER_MOLE:
+        percent = percent_ww_for(table, molar=conc.value, molar_mass=mass)
+    else:
+        percent = percent_ww_for(table, grams_per_dm3=conc.value)
+    found = density_at(table, percent)
+    return found.value, (in_words(found),)
+
+
+def _shown(value: float, to: str, target: Strength) -> str:
+    if target.unit is StrengthUnit.PARTS:
+        stock = f" of {target.part_of.text}" if target.part_of else ""
+        return f"1 in {format_number(value)}{stock}"
+    return f"{format_number(value)} {to}"
+
+
+def _counts_mass(strength: Strength, target: Strength) -> bool:
+    """Did the molar mass take part? Then it is shown."""
+    in_moles = {StrengthUnit.MOLAR, StrengthUnit.VOL, StrengthUnit.NORMAL}
+    return not {strength.unit, target.unit} <= in_moles

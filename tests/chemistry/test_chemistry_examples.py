@@ -8,7 +8,22 @@ import importlib
 import pytest
 
 
-@pytest.mark.parametrize("name", ["formula", "making", "strength", "weighing"])
+@pytest.mark.parametrize(
+    "name",
+    [
+        "densities.lookup",
+        "densities.oiml",
+        "ethanol",
+        "formula",
+        "glassware",
+        "making",
+        "mixing",
+        "strength",
+        "titration",
+        "uncertainty",
+        "weighing",
+    ],
+)
 def test_the_examples_in_the_docstrings_hold(name: str) -> None:
     tried = doctest.testmod(importlib.import_module(f"stockroom.chemistry.{name}"))
     assert tried.attempted > 0

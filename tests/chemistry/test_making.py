@@ -11,9 +11,11 @@ from stockroom.chemistry.formula import molar_mass
 from stockroom.chemistry.making import (
     content_per_gram,
     mass_for,
+    mass_in_form,
     molar_from_mass,
     molarity_of_liquid,
     strength_after,
+    volume_from_mass,
     volume_of_stock,
 )
 from stockroom.chemistry.peroxide import vol_to_molar
@@ -65,14 +67,14 @@ GLUCOSE = molar_mass("C6H12O6")
 
 # Worked preparations: what was asked, our answer, the printed answer, how far its print goes.
 WORKED = [
-    # OpenStax, Chemistry 2e
+    # OpenStax, Chemistry 2e (OSX), all a+b
     ("3.14", molar_from_mass(0.133 * 342.3, 355, molar_mass=342.3), 0.375, 5e-4),
     ("3.16", molar_from_mass(25.2, 500, molar_mass=60.052), 0.839, 5e-4),
     ("3.16 check", molar_from_mass(6.52, 75.0, molar_mass=128.9), 0.674, 5e-4),
     ("3.17", mass_for(250, 5.30, molar_mass=NACL), 77.4, 0.05),
     ("3.17 check", mass_for(250.0, 0.200, molar_mass=110.98), 5.55, 0.005),
-    ("3.18", 75.6 / mass_for(1000, 0.839, molar_mass=60.052), 1.50, 0.005),
-    ("3.18 check", 66.0 / mass_for(1000, 1.50, molar_mass=molar_mass("KBr")), 0.370, 5e-4),
+    ("3.18", volume_from_mass(75.6, 0.839, molar_mass=60.052), 1500, 5),
+    ("3.18 check", volume_from_mass(66.0, 1.50, molar_mass=molar_mass("KBr")), 370, 0.5),
     ("ch. 3, glucose", mass_for(500, 0.30, molar_mass=GLUCOSE), 27, 0.5),
     ("ch. 3, KMnO4", molar_from_mass(0.0908, 500, molar_mass=158.034), 1.15e-3, 5e-6),
     ("ch. 3, HCl", molar_from_mass(868.8, 2000, molar_mass=36.461), 11.9, 0.05),
@@ -83,19 +85,21 @@ WORKED = [
     ("ch. 3, V1", volume_of_stock(25, 0.025, 0.33), 1.9, 0.05),
     ("3.23", molarity_of_liquid(37.2, 1.19, 36.461) * 36.461 / 2, 221, 0.5),
     ("3.23 check", 125_000 / (molarity_of_liquid(37.2, 1.19, 36.461) * 36.461), 282, 0.5),
-    # US Army Medical Department MD0837, Laboratory Mathematics
+    # US Army Medical Department MD0837, Laboratory Mathematics (AM), a+b
     ("MD0837 hydrate", mass_for(250, 2.00, molar_mass=249.6), 124.8, 0.1),
     ("MD0837 H2SO4", 1000 / molarity_of_liquid(95.0, 1.84, 98.08), 56.1, 0.1),
     ("MD0837 HNO3", molarity_of_liquid(70.0, 1.42, 63.013) * 63.013, 994, 0.5),
     ("MD0837 1 to 5 total", strength_after(8, 1.0, 40), 0.2, 1e-12),
-    # the next three have no printed answer there: recomputed
+    ("MD0837 monohydrate", mass_in_form(10.0, molar_mass=159.6, instead=177.6), 11.1, 0.05),
+    # the next three have no printed answer there: recomputed (b)
     ("MD0837 8-2", volume_of_stock(1000, 2.00, molarity_of_liquid(33.0, 1.15, 36.461)), 192.1, 0.2),
     ("MD0837 8-5", volume_of_stock(250, 0.5, molarity_of_liquid(99.7, 1.05, 60.052)), 7.170, 0.008),
     ("MD0837 8-1", volume_of_stock(500, 1 / 3, molarity_of_liquid(85, 1.69, 97.995)), 11.37, 0.012),
-    # Harvey, Modern Analytical Chemistry, examples 2.9 and 2.10
+    # Harvey, Modern Analytical Chemistry, examples 2.9 and 2.10 (HAR), a+b
     ("Harvey NaOH", mass_for(500, 0.20, molar_mass=39.997), 4.0, 0.05),
+    ("Harvey Cu", mass_for(1000, 0.1500 / 63.546, molar_mass=63.546), 0.1500, 5e-5),
     ("Harvey NH3", volume_of_stock(250, 0.10, 14.8), 1.69, 0.005),
-    # British Pharmacopoeia App. I B
+    # British Pharmacopoeia App. I B (BP12, BP13), a+b
     ("BP KIO3", mass_for(1000, 0.05, molar_mass=molar_mass("KIO3")), 10.7, 0.011),
     ("BP NaOH", molar_from_mass(42, 1000, molar_mass=39.997), 1.05, 1.1e-3),
     ("BP thiosulfate", molar_from_mass(25, 1000, molar_mass=THIOSULFATE), 0.1007, 1e-4),
@@ -197,6 +201,20 @@ def test_a_figure_not_above_0_is_refused(figure: float) -> None:
     for sum_of in sums:
         with pytest.raises(BadAmount):
             sum_of()
+
+
+def test_a_mass_for_one_form_is_changed_for_the_other() -> None:
+    # recomputed: 99.27 g of the pentahydrate are 63.24 g of anhydrous thiosulfate
+    grams = mass_in_form(99.27, molar_mass=THIOSULFATE, instead=ANHYDROUS_THIOSULFATE)
+    assert grams == pytest.approx(63.24, abs=0.01)
+
+
+@given(st.floats(1e-3, 100), st.floats(1e-3, 10), st.floats(10, 500), st.floats(0.05, 1))
+def test_a_mass_makes_the_volume_that_takes_it(
+    grams: float, molar: float, mass: float, assay: float
+) -> None:
+    volume = volume_from_mass(grams, molar, molar_mass=mass, assay=assay)
+    assert mass_for(volume, molar, molar_mass=mass, assay=assay) == pytest.approx(grams, rel=1e-9)
 
 
 def test_more_than_all_of_a_liquid_is_refused() -> None:

@@ -4,7 +4,14 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from stockroom.chemistry.peroxide import MOLAR_MASS, VM, ask_vol, molar_to_vol, vol_to_molar
+from stockroom.chemistry.peroxide import (
+    MOLAR_MASS,
+    VM,
+    ask_vol,
+    convention,
+    molar_to_vol,
+    vol_to_molar,
+)
 
 # vol, mol/dm³, g/dm³ of hydrogen peroxide. Recomputed from the pharmacopoeial definition
 # (gas at 0 °C and 1 atm; British and Indian Pharmacopoeias) with 22.414 dm³/mol.
@@ -55,6 +62,52 @@ def test_pharmacopoeial_limits_in_vol(per_cent: float, vol: float) -> None:
     assert molar_to_vol(per_cent * 10 / MOLAR_MASS) == pytest.approx(vol, abs=0.06)
 
 
+# The same table's last column, counted at 24.0 dm³/mol: vol, mol/dm³, % w/v (b).
+@pytest.mark.parametrize(
+    ("vol", "molar", "per_cent"),
+    [
+        (10, 0.833, 2.83),
+        (20, 1.667, 5.67),
+        (30, 2.500, 8.50),
+        (40, 3.333, 11.34),
+        (100, 8.333, 28.35),
+        (110, 9.167, 31.18),
+        (130, 10.83, 36.85),
+    ],
+)
+def test_at_24_dm3_a_mole_the_same_label_means_less(
+    vol: float, molar: float, per_cent: float
+) -> None:
+    assert vol_to_molar(vol, 24) == pytest.approx(molar, rel=1e-3)
+    assert vol_to_molar(vol, 24) * MOLAR_MASS / 10 == pytest.approx(per_cent, rel=2e-3)
+
+
+# UK school safety sheet on peroxide, 2018 (a): its bands agree with 24 dm³/mol and no other.
+@pytest.mark.parametrize(("molar", "vol"), [(8.3, 100), (2.3, 28), (1.5, 18)])
+def test_a_school_sheets_bands_are_counted_at_room_temperature(molar: float, vol: float) -> None:
+    assert molar_to_vol(molar, 24) == pytest.approx(vol, rel=0.015)
+    assert molar_to_vol(molar) < 0.94 * vol
+
+
+def test_at_1_bar_100_vol_is_8_806_molar() -> None:
+    # recomputed with CODATA's molar volume at 0 °C and 100 kPa, 22.711 dm³/mol (b)
+    assert vol_to_molar(100, 22.711) == pytest.approx(8.806, abs=0.001)
+
+
+@pytest.mark.parametrize(
+    ("gas", "said"),
+    [
+        (None, "22.414 dm³ of oxygen a mole (0 °C, 1 atm)"),
+        (22.4, "22.4 dm³ of oxygen a mole (0 °C, 1 atm)"),
+        (22.711, "22.711 dm³ of oxygen a mole (0 °C, 1 bar)"),
+        (24, "24 dm³ of oxygen a mole (room temperature)"),
+        (23.5, "23.5 dm³ of oxygen a mole"),
+    ],
+)
+def test_the_convention_is_named(gas: float | None, said: str) -> None:
+    assert convention(gas) == f"vol counted at {said}"
+
+
 @pytest.mark.parametrize("text", ["100 %", "100", "100%"])
 def test_a_bare_hundred_per_cent_asks_for_vol(text: str) -> None:
     message = ask_vol(text).message
@@ -65,6 +118,6 @@ def test_a_peroxide_label_without_a_number_is_asked_about() -> None:
     assert "how strong is the peroxide?" in ask_vol("%").message
 
 
-@given(st.floats(1e-3, 500))
-def test_vol_there_and_back_is_the_same(vol: float) -> None:
-    assert molar_to_vol(vol_to_molar(vol)) == pytest.approx(vol, rel=1e-9)
+@given(st.floats(1e-3, 500), st.floats(22, 25))
+def test_vol_there_and_back_is_the_same(vol: float, gas: float) -> None:
+    assert molar_to_vol(vol_to_molar(vol, gas), gas) == pytest.approx(vol, rel=1e-9)

@@ -10,6 +10,7 @@ from stockroom.chemistry.strength import (
     canonical,
     express,
     hypochlorite_from_chlorine,
+    percent_by_mass,
 )
 from stockroom.errors import BadAmount, MissingFigure, StockroomError
 from stockroom.measure.parsing import parse_strength
@@ -138,7 +139,53 @@ def test_a_share_or_saturated_has_no_strength_of_its_own(text: str) -> None:
 
 def test_normality_has_no_strength_without_its_reaction() -> None:
     with pytest.raises(BadAmount, match=r'"0\.1 N"'):
-        canonical(Strength(0.1, StrengthUnit.NORMAL, "0.1 N"), molar_mass=98.08)
+        canonical(parse_strength("0.1 N"), molar_mass=98.08)
+
+
+def test_normality_finds_its_reaction_by_the_name_of_the_substance() -> None:
+    found = canonical(parse_strength("0.1 N for acid-base"), molar_mass=None, of="sulfuric acid")
+    assert found == Concentration(0.05, "mol/dm3")
+
+
+# Molality is mol in 1 kg of water, by definition. Sodium chloride of 1 and 10 % w/w as above:
+# 10 g in 990 g of water and 100 g in 900 g, so b = 1000 w / (M (100 - w)), recomputed (b).
+@pytest.mark.parametrize(
+    ("per_cent", "density", "molal"), [(1, 1.0053, 0.17284), (10, 1.0707, 1.90127)]
+)
+def test_molality_is_per_kilogram_of_water(per_cent: int, density: float, molal: float) -> None:
+    mass = molar_mass("NaCl")
+    conc = canonical(parse_strength(f"{per_cent} % w/w"), molar_mass=mass, density=density)
+    found = express(conc, StrengthUnit.MOLAL, molar_mass=mass, density=density)
+    assert found == pytest.approx(molal, rel=2e-4)
+
+
+def test_a_hydrates_own_water_is_water_in_molality() -> None:
+    # 24.968 g of CuSO4·5H2O (0.1 mol) in 75.032 g of water: the crystal brings 0.1·5·18.015 g (b)
+    hydrate, dry = molar_mass("CuSO4·5H2O"), molar_mass("CuSO4")
+    conc = canonical(parse_strength("24.968 % w/w"), molar_mass=hydrate, density=1.2)
+    found = express(conc, StrengthUnit.MOLAL, molar_mass=hydrate, density=1.2, dry_mass=dry)
+    assert found == pytest.approx(0.1 / (0.075032 + 0.0090077), rel=1e-4)
+
+
+def test_more_solute_than_solution_leaves_no_molality() -> None:
+    with pytest.raises(BadAmount, match="leave no water"):
+        express(Concentration(20, "mol/dm3"), StrengthUnit.MOLAL, molar_mass=98.0, density=1.0)
+
+
+@pytest.mark.parametrize(
+    ("text", "percent"), [("5 % w/w", 5), ("50 ppm m/m", 0.005), ("1.90127 mol/kg", 10)]
+)
+def test_strengths_by_mass_turn_into_one_another_without_a_density(
+    text: str, percent: float
+) -> None:
+    found = percent_by_mass(parse_strength(text), molar_mass=molar_mass("NaCl"))
+    assert found == pytest.approx(percent, rel=2e-4)
+
+
+def test_molality_asks_for_the_molar_mass_and_the_density() -> None:
+    for mass, missing in ((None, "molar mass"), (58.44, "density on the label")):
+        with pytest.raises(MissingFigure, match=missing):
+            canonical(parse_strength("1 mol/kg"), molar_mass=mass)
 
 
 @pytest.mark.parametrize("mass", [None, 36.46, 33.8])
@@ -158,6 +205,32 @@ def test_a_density_not_above_0_is_refused(density: float) -> None:
         canonical(parse_strength("37 % w/w"), molar_mass=36.46, density=density)
 
 
+@pytest.mark.parametrize(
+    ("formula", "moles"),
+    [("NaOCl", 1), ("NaOCl·5H2O", 1), ("KOCl", 1), ("Cl2", 1), ("Ca(OCl)2", 2)],
+)
+def test_available_chlorine_counts_each_hypochlorite_as_one_chlorine(
+    formula: str, moles: int
+) -> None:
+    # recomputed: 5 % w/v is 50 g/dm³ of Cl2, 70.906 g/mol (b)
+    found = molar("5 % w/v available chlorine", molar_mass(formula))
+    assert found == pytest.approx(50 / 70.906 / moles, rel=1e-4)
+
+
+def test_bleach_by_mass_of_chlorine_wants_its_density() -> None:
+    # recomputed: 10 % w/w at 1.20 g/cm³ is 120 g/dm³ of Cl2 (b)
+    text = "10 % w/w available chlorine"
+    assert molar(text, molar_mass("NaOCl"), 1.20) == pytest.approx(120 / 70.906, rel=1e-4)
+    with pytest.raises(MissingFigure, match="density on the label"):
+        molar(text, molar_mass("NaOCl"))
+
+
+@pytest.mark.parametrize("formula", ["KCl", "HCl", "Na2SO4"])
+def test_available_chlorine_of_anything_but_bleach_is_refused(formula: str) -> None:
+    with pytest.raises(BadAmount, match="a strength of bleach"):
+        molar("5 % w/v available chlorine", molar_mass(formula))
+
+
 def test_available_chlorine_stands_for_more_hypochlorite() -> None:
     # 5.00 % available chlorine is 5.25 % w/v NaOCl: recomputed from the molar masses
     assert hypochlorite_from_chlorine(5.00) == pytest.approx(5.25, abs=0.005)
@@ -165,19 +238,48 @@ def test_available_chlorine_stands_for_more_hypochlorite() -> None:
     assert hypochlorite_from_chlorine(1) == pytest.approx(ratio, rel=1e-5)
 
 
-CONVERTIBLE = [
-    unit
-    for unit in StrengthUnit
-    if unit not in (StrengthUnit.NORMAL, StrengthUnit.PARTS, StrengthUnit.SATURATED)
-]
+# of two substances, so that every unit is tried: mass in g/mol, density in g/cm³, and the
+# units that only one of them has
+PEROXIDE = (H2O2, (StrengthUnit.CHLORINE, StrengthUnit.CHLORINE_WW))
+BLEACH = (molar_mass("NaOCl"), (StrengthUnit.VOL,))
+WORDS = (StrengthUnit.PARTS, StrengthUnit.SATURATED)
 
 
-@given(st.sampled_from(CONVERTIBLE), st.floats(1e-4, 20))
-def test_there_and_back_is_the_same_in_every_unit(unit: StrengthUnit, value: float) -> None:
-    strength = Strength(value, unit, f"{value} {unit}")
-    conc = canonical(strength, molar_mass=H2O2, density=1.2, pure_density=1.45)
-    back = express(conc, unit, molar_mass=H2O2, density=1.2, pure_density=1.45)
-    assert back == pytest.approx(value, rel=1e-9)
+@st.composite
+def pairs(draw: st.DrawFn) -> tuple[float, StrengthUnit, StrengthUnit]:
+    mass, foreign = draw(st.sampled_from([PEROXIDE, BLEACH]))
+    units = [unit for unit in StrengthUnit if unit not in (*WORDS, *foreign)]
+    return mass, draw(st.sampled_from(units)), draw(st.sampled_from(units))
+
+
+def turned(value: float, mass: float, one: StrengthUnit, other: StrengthUnit) -> float:
+    reaction, gas = "2 equivalents per mol", 24.0
+    strength = Strength(value, one, f"{value} {one}", reaction=reaction, gas_volume=gas)
+    conc = canonical(strength, molar_mass=mass, density=1.2, pure_density=1.45)
+    return express(
+        conc,
+        other,
+        molar_mass=mass,
+        density=1.2,
+        pure_density=1.45,
+        reaction=reaction,
+        gas_volume=gas,
+    )
+
+
+@given(pairs(), st.floats(1e-4, 4))
+def test_there_and_back_is_the_same_for_every_pair_of_units(
+    pair: tuple[float, StrengthUnit, StrengthUnit], value: float
+) -> None:
+    there = turned(value, *pair)
+    assert turned(there, pair[0], pair[2], pair[1]) == pytest.approx(value, rel=1e-9)
+
+
+@given(pairs(), st.floats(1e-4, 4), st.floats(1.001, 2))
+def test_stronger_in_one_unit_is_stronger_in_every_other(
+    pair: tuple[float, StrengthUnit, StrengthUnit], value: float, times: float
+) -> None:
+    assert turned(value * times, *pair) > turned(value, *pair)
 
 
 @given(st.sampled_from(list(StrengthUnit)), st.floats(0, 100), st.booleans())

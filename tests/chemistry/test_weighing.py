@@ -6,7 +6,12 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from stockroom.chemistry.weighing import batch_to_weigh, least_weighable, relative_error
+from stockroom.chemistry.weighing import (
+    batch_to_weigh,
+    least_by_pharmacopoeia,
+    least_weighable,
+    relative_error,
+)
 from stockroom.errors import BadAmount
 
 MASSES = st.floats(1e-4, 100)
@@ -49,6 +54,41 @@ def test_enough_to_weigh_stays_as_it_is() -> None:
     assert batch_to_weigh(0.352, 352, 0.2) == (0.352, 352)
 
 
+# USP <41>: s in g, step in g, least mass in g; its own example a+b, the others b, all exact.
+@pytest.mark.parametrize(
+    ("spread", "step", "least"),
+    [
+        pytest.param(0.00015, 0.0, 0.30000, id="USP's own example"),
+        pytest.param(None, 1.0, 820.0, id="the floor is 820 steps"),
+        pytest.param(0.00003, 0.0001, 0.082, id="floor applies"),
+        pytest.param(0.000006, 0.00001, 0.012, id="floor does not apply"),
+        pytest.param(0.0003, 0.001, 0.820, id="floor applies to a milligram"),
+        pytest.param(0.004, 0.01, 8.2, id="a teaching top-pan balance"),
+    ],
+)
+def test_the_least_mass_by_the_pharmacopoeia(
+    spread: float | None, step: float, least: float
+) -> None:
+    found = least_by_pharmacopoeia(repeatability_g=spread, step_g=step)
+    assert found == pytest.approx(least, rel=1e-12)
+
+
+def test_the_rule_before_2013_is_not_the_one_in_force() -> None:
+    # USP <41>, a+b: 3·s within 0.1 % gave 1000 steps
+    assert least_by_pharmacopoeia(step_g=0.001) < 1000 * 0.001
+
+
+def test_without_a_spread_or_a_step_there_is_nothing_to_go_by() -> None:
+    with pytest.raises(BadAmount, match="repeatability None, balance step 0 g"):
+        least_by_pharmacopoeia()
+
+
+@pytest.mark.parametrize("spread", [0.0, -0.001, float("nan")])
+def test_a_spread_not_above_0_is_refused(spread: float) -> None:
+    with pytest.raises(BadAmount, match="repeatability"):
+        least_by_pharmacopoeia(repeatability_g=spread, step_g=0.001)
+
+
 @pytest.mark.parametrize("figure", [0.0, -1.0, float("nan")])
 def test_a_figure_not_above_0_is_refused(figure: float) -> None:
     sums: list[Callable[[], object]] = [
@@ -73,3 +113,12 @@ def test_a_larger_batch_keeps_its_strength(mass: float, volume: float, least: fl
 @given(st.sampled_from([0.1, 0.01, 0.001]), st.floats(0.005, 0.5))
 def test_the_least_mass_is_just_close_enough(step: float, closeness: float) -> None:
     assert relative_error(step, least_weighable(step, closeness)) == pytest.approx(closeness)
+
+
+@given(st.floats(1e-6, 0.1), st.sampled_from([0.1, 0.01, 0.001, 0.0001]))
+def test_the_pharmacopoeia_is_stricter_than_a_tenth_of_a_per_cent_of_a_step(
+    spread: float, step: float
+) -> None:
+    least = least_by_pharmacopoeia(repeatability_g=spread, step_g=step)
+    assert 2 * spread / least <= 0.0010 * (1 + 1e-9)
+    assert least >= 820 * step * (1 - 1e-9)

@@ -173,7 +173,7 @@ def test_a_refusal_says_what_would_do(
 
 def test_an_assumed_density_is_owned_up_to(stockroom: Stockroom) -> None:
     words = ("strength", "36 % w/w", "--of", "HCl", "--to", "mol/dm3")
-    assert "density 1.18 g/cm³ (assumed, that of hydrochloric acid" in stockroom(*words).out
-    assert "assumed" not in stockroom(*words, "--density", "1.18").out
-    dense = stockroom("weigh", "1 L", "36 % w/w", "--of", "HCl").out
-    assert "assumed" in dense
+    assert "give --density off the label" in stockroom(*words).out
+    assert "give --density" not in stockroom(*words, "--density", "1.18").out
+    dense = stockroom("dilute", "1 L", "1 M", "--from", "36 % w/w", "--of", "HCl").out
+    assert "give --density off the label" in dense

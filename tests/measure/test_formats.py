@@ -69,6 +69,8 @@ def test_a_number_that_is_none_is_refused(number: float) -> None:
         (37.0, "% w/w", "37 % w/w"),
         (10, "1 in", "1 in 10"),
         (0, "saturated", "saturated"),
+        (0.5, "mol/kg", "0.5 mol/kg"),
+        (5.0, "% w/v available chlorine", "5 % w/v available chlorine"),
     ],
 )
 def test_a_strength_reads_as_on_a_label(value: float, unit: str, text: str) -> None:

@@ -1,0 +1,199 @@
+"""`stockroom strength`: every unit both ways, with what was used named under the answer."""
+
+from __future__ import annotations
+
+import shlex
+from typing import TYPE_CHECKING
+
+import pytest
+
+if TYPE_CHECKING:
+    from pathlib import Path
+
+    from conftest import Stockroom
+
+PEROXIDE = "hydrogen peroxide"
+
+# text, substance, unit, figures given, value, tolerance. (a) seen, (b) recomputed, (c) memory
+SUMS = [
+    # peroxide: definition in the pharmacopoeias (b); 24 dm³/mol as school guidance counts (b)
+    ("100 vol", PEROXIDE, "mol/dm3", "", 8.923, 1e-3),
+    ("100 vol at 24 dm3/mol", PEROXIDE, "mol/dm3", "", 8.333, 1e-3),
+    ("100 vol", PEROXIDE, "mol/dm3", "--gas-volume 24", 8.333, 1e-3),
+    ("100 vol", PEROXIDE, "mol/dm3", "--gas-volume 22.711", 8.806, 1e-3),
+    ("8.3 M", PEROXIDE, "vol at 24 dm3/mol", "", 99.6, 1e-3),
+    ("30 % w/v", PEROXIDE, "vol", "", 98.8, 2e-3),
+    ("100 vol", PEROXIDE, "% w/w", "--density 1.102", 27.5, 1e-2),
+    ("100 vol", PEROXIDE, "% w/w", "", 27.5, 1e-2),
+    ("50 % w/w", PEROXIDE, "M", "--density 1.19662", 17.5897, 1e-4),  # tutor's page (a+b)
+    # normality: US Army course MD0837 (b)
+    ("10.41 M", "HCl", "Eq/L for acid-base", "", 10.41, 1e-4),
+    ("0.566 N, 3 equivalents per mol", "H3PO4", "mM", "", 188.7, 1e-3),
+    ("0.1 N (KMnO4 to Mn2+)", "KMnO4", "mol/dm3", "", 0.02, 1e-6),
+    ("0.02 M", "potassium permanganate", "N (to Mn2+)", "", 0.1, 1e-6),
+    # available chlorine: the-job section 8 (b)
+    ("5.00 % w/v available chlorine", "bleach", "% w/v", "", 5.25, 1e-3),
+    ("5.25 % w/v", "bleach", "% w/v available chlorine", "", 5.00, 1e-3),
+    ("1000 ppm available chlorine", "bleach", "mM", "", 14.10, 1e-3),
+    ("12 % w/w available chlorine", "bleach", "M", "--density 1.2", 2.031, 1e-3),
+    # molality and per cents by mass: worked out from the definitions (b)
+    ("10 % w/w", "sucrose", "mol/kg", "", 0.3246, 1e-3),
+    ("10 % w/w", "NaCl", "mol/kg", "", 1.9013, 1e-3),
+    ("1.9013 mol/kg", "NaCl", "M", "--density 1.0707", 1.8321, 1e-3),
+    ("24.968 % w/w", "CuSO4.5H2O", "mol/kg", "", 1.1898, 1e-3),
+    ("100 ppm m/m", "NaCl", "% w/w", "", 0.01, 1e-6),
+    # one part in ten in all: US Army course MD0837 (a)
+    ("1 in 10 of 36 % w/w", "HCl", "M", "--density 1.18", 1.165, 1e-3),
+    ("1:5", "HCl", "M", '--from "2 M"', 0.4, 1e-6),
+    ("1+9 of 100 vol", PEROXIDE, "vol", "", 10, 1e-6),
+    ("0.2 M", "HCl", "1 in", '--from "2 M"', 10, 1e-6),
+    ("0.2 M", "HCl", "1 in of 2 M", "", 10, 1e-6),
+    # density tables: ethanol by OIML R 22 (b), the others CRC 20 °C (a+b)
+    ("96 % v/v", "ethanol", "% w/w", "", 93.84, 2e-4),
+    ("62.39 % w/w", "ethanol", "% v/v", "", 70, 2e-4),
+    ("50 % v/v", "ethanol", "M", "", 8.566, 1e-3),
+    ("30 % w/w", "HCl", "M", "", 9.456, 1e-3),
+    ("9.456 M", "HCl", "% w/w", "", 30, 1e-3),
+    ("40 % w/w", "NaOH", "M", "", 14.300, 1e-3),
+    ("3.729 M", "sulfuric acid", "% w/w", "", 30, 1e-3),
+    # saturated: solubilities from memory (c)
+    ("saturated at 20 °C", "limewater", "M", "", 0.022, 0.1),
+    ("saturated", "NaCl", "% w/w", "--temperature 20", 26.4, 5e-3),
+    ("saturated at 20 °C", "NaCl", "mol/kg", "", 6.14, 1e-2),
+    ("1 in 2 of saturated at 20 °C", "calcium hydroxide", "M", "", 0.011, 0.1),
+    # neat liquids by volume: Harvey, example 2.9c (a+b), 80 cm³ in 2 dm³
+    ("4 % v/v", "ethanoic acid", "g/dm3", "--density 1.05", 42, 1e-6),
+]
+
+
+def ask(text: str, of: str, to: str, given: str = "") -> tuple[str, ...]:
+    return ("strength", text, "--of", of, "--to", to, *shlex.split(given))
+
+
+@pytest.mark.parametrize(("text", "of", "to", "given", "value", "within"), SUMS)
+def test_a_strength_is_turned(
+    stockroom: Stockroom, text: str, of: str, to: str, given: str, value: float, within: float
+) -> None:
+    answer = stockroom(*ask(text, of, to, given), "--json").json
+    assert answer["value"] == pytest.approx(value, rel=within)
+
+
+SAID = [
+    ("20 vol", PEROXIDE, "M", "", "vol counted at 22.414 dm³ of oxygen a mole (0 °C, 1 atm)"),
+    ("20 vol", PEROXIDE, "M", "--gas-volume 24", "24 dm³ of oxygen a mole (room temperature)"),
+    ("2 M", PEROXIDE, "vol", "", "vol counted at 22.414 dm³"),
+    ("0.1 N (to Mn2+)", "KMnO4", "M", "", "5 equivalents per mol (MnO4⁻ + 8 H⁺ + 5 e⁻"),
+    ("1:10", "HCl", "M", '--from "2 M"', "1:10 read as one part in 10 parts in total"),
+    ("500 ppm available chlorine", "bleach", "M", "", "read as mg in 1 dm³"),
+    ("37 % w/w", "HCl", "M", "", "density 1.184 g/cm³ (at 20 °C: CRC Handbook"),
+    ("12 M", "HCl", "% w/w", "", "from memory"),
+    ("1 mol/kg", "NaCl", "% w/w", "", "molality: mol in 1 kg of water"),
+    ("saturated at 20 °C", "limewater", "M", "", "0.173 g Ca(OH)2 in 100 g of water at 20 °C"),
+    ("28 % w/w", "ammonium hydroxide", "M", "", "counted as NH3"),
+    ("96 % v/v", "ethanol", "M", "", "pure liquid: density 0.7892 g/cm³ at 20 °C (OIML"),
+    ("37 % w/w", "HCl", "M", "--temperature 30", "30 °C took no part"),
+]
+
+
+@pytest.mark.parametrize(("text", "of", "to", "given", "said"), SAID)
+def test_what_was_used_is_named(
+    stockroom: Stockroom, text: str, of: str, to: str, given: str, said: str
+) -> None:
+    assert said in stockroom(*ask(text, of, to, given)).out
+
+
+REFUSED = [
+    ("0.1 N", "KMnO4", "M", "", 2, "5 to Mn2+; 3 to MnO2; 1 to MnO4 2-"),
+    ("0.1 N", "KMnO4", "M", "", 2, 'potassium permanganate "0.1 N"'),
+    ("0.02 M", "KMnO4", "N", "", 2, "5 to Mn2+"),
+    ("1 in 10", "HCl", "M", "", 1, '"1 in 10": one part of what?'),
+    ("1:1", "HCl", "M", "", 2, "parts of the whole, or parts to parts?"),
+    ("saturated", "NaCl", "M", "", 1, "at what temperature?"),
+    ("saturated at 60 °C", "Na2CO3", "mol/kg", "", 1, "held from 0 to 30 °C"),
+    ("saturated at 20 °C", "starch", "% w/w", "", 1, "I need g in 100 g of water"),
+    ("saturated at 40 °C", "NaCl", "M", "", 1, "I need its density"),
+    ("45 % w/w", "HCl", "M", "", 1, "only up to 40 % w/w (CRC Handbook"),
+    ("25 M", "HCl", "% w/w", "", 1, "the most its density is held for"),
+    ("5 % w/w", "glucose", "M", "", 1, "I need the density on the label"),
+    ("0.5 M", "glucose", "mol/kg", "", 1, "I need the density on the label"),
+    ("5 % v/v", "glucose", "M", "", 1, "density of the pure liquid"),
+    ("5 % w/v available chlorine", "NaCl", "M", "", 2, "a strength of bleach"),
+    ("100 % vol", PEROXIDE, "M", "", 2, "Do you mean 100 vol"),
+    ("100 vol at 30 dm3/mol", PEROXIDE, "M", "", 2, "no gas takes up 30 dm³"),
+    ("100 vol", PEROXIDE, "M", "--gas-volume 30", 2, "--gas-volume 30"),
+    ("2 M", "HCl", "g/dm3", "--gas-volume 24", 2, "no vol in this sum"),
+    ("2 M", "HCl", "g/dm3", '--from "3 M"', 2, "nothing here is a part of it"),
+    ("2 M", "HCl", "1 in", "", 1, "one part of what?"),
+    ("2 M", "HCl", "1 in of 1 M", "", 2, "no stronger than"),
+    ("2 M", "NaCl", "saturated", "", 2, '--to "saturated": I do not know'),
+    ("saturated", "NaCl", "% w/w", "--temperature warm", 2, "'warm' is not a temperature"),
+    ("2 m", "NaCl", "M", "", 2, "molality or metres?"),
+]
+
+
+@pytest.mark.parametrize(("text", "of", "to", "given", "code", "says"), REFUSED)
+def test_what_is_doubtful_is_refused_with_what_to_read_off(
+    stockroom: Stockroom, text: str, of: str, to: str, given: str, code: int, says: str
+) -> None:
+    result = stockroom(*ask(text, of, to, given))
+    assert (result.code, result.out) == (code, "")
+    assert says in result.err
+
+
+def test_the_figure_given_stands_before_the_table(stockroom: Stockroom) -> None:
+    words = ask("36 % w/w", "HCl", "M", "--density 1.2")
+    assert stockroom(*words, "--json").json["value"] == pytest.approx(11.85, rel=1e-3)
+
+
+@pytest.fixture
+def house(stockroom: Stockroom, tmp_path: Path) -> Path:
+    """A store of one's own with one acid, its label and its other name."""
+    store = tmp_path / "house.sqlite"
+    by = ("--by", "T1")
+    acid = ("substance=muriatic acid", "formula=HCl", "other_names=spirits of salt", "source=x")
+    line = ("item=muriatic acid", "strength=36 % w/w", "substance=muriatic acid", "form=liquid")
+    assert stockroom("new", store=store).code == 0
+    assert stockroom("add", "substances", *acid, *by, store=store).err == ""
+    words = ("add", "lines", *line, "density_g_cm3=1.20", "source=x", *by)
+    assert stockroom(*words, store=store).code == 0
+    return store
+
+
+@pytest.mark.parametrize("name", ["muriatic acid", "spirits of salt"])
+def test_ones_own_line_stands_before_the_table(
+    stockroom: Stockroom, house: Path, name: str
+) -> None:
+    # 36 % at 1.20 g/cm³ of one's own label is 11.85 mol/dm³, and 11.64 by the table
+    out = stockroom(*ask("36 % w/w", name, "M"), store=house).out
+    assert f"36 % w/w {name} is 11.85 M" in out
+    assert "that of your own line" in out
+
+
+def test_a_damaged_store_does_not_stop_a_sum(stockroom: Stockroom, tmp_path: Path) -> None:
+    store = tmp_path / "house.sqlite"
+    store.write_text("no store at all")
+    assert "1.785" in stockroom(*ask("20 vol", PEROXIDE, "M"), store=store).out
+
+
+def test_a_substance_of_the_starter_tables_is_known(stockroom: Stockroom) -> None:
+    # zinc nitrate is in no table of the practice college
+    assert "18.94 g" in stockroom(*ask("0.1 M", "zinc nitrate", "g/dm3")).out
+
+
+@pytest.mark.parametrize(
+    ("text", "of", "one", "other"),
+    [
+        ("12.5", PEROXIDE, "vol", "% w/w"),
+        ("0.35", "NaOH", "mol/kg", "mol/dm3"),
+        ("7.25", "sulfuric acid", "N for acid-base", "% w/w"),
+        ("3.5", "bleach", "% w/v available chlorine", "mol/dm3"),
+        ("42", "ethanol", "% v/v", "mol/kg"),
+    ],
+)
+def test_there_and_back_again_is_the_same(
+    stockroom: Stockroom, text: str, of: str, one: str, other: str
+) -> None:
+    there = stockroom(*ask(f"{text} {one}", of, other), "--json").json["value"]
+    back = stockroom(*ask(f"{there!r} {other}", of, one), "--json").json["value"]
+    # the JSON answer is rounded to six figures
+    assert back == pytest.approx(float(text), rel=1e-5)

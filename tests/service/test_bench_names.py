@@ -1,0 +1,78 @@
+from __future__ import annotations
+
+import shutil
+from collections.abc import Iterator
+from pathlib import Path
+
+import pytest
+
+from stockroom.errors import BadInput, UnknownName
+from stockroom.planning.facts import Form
+from stockroom.service import bench_names, bench_tables
+from stockroom.service.bench_names import Stuff, solid, solute
+from stockroom.service.database import seeds_folder
+
+CACHED = (
+    bench_tables.substances,
+    bench_tables.lines,
+    bench_tables.other_names,
+    bench_tables.formulas,
+    bench_names._shipped_lines,
+)
+
+
+@pytest.fixture
+def college_only(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Iterator[None]:
+    """The program with the practice college's tables and no starter folder beside them."""
+    shutil.copytree(seeds_folder() / "college", tmp_path / "college")
+    for table in CACHED:
+        table.cache_clear()
+    monkeypatch.setattr(bench_tables, "_seeds", lambda: tmp_path)
+    yield
+    for table in CACHED:
+        table.cache_clear()
+
+
+@pytest.mark.usefixtures("college_only")
+def test_without_the_starter_folder_the_college_answers() -> None:
+    assert solute("hypo").substance == "sodium thiosulfate"
+    with pytest.raises(UnknownName, match="zinc nitrate"):
+        solute("zinc nitrate")
+
+
+def test_the_starter_tables_are_found_by_any_name() -> None:
+    assert solute("cerium(IV) sulfate").formula == solute("ceric sulfate").formula == "Ce(SO4)2"
+
+
+@pytest.mark.parametrize(
+    ("of", "dry", "hydrated"),
+    [("CuSO4·5H2O", 159.61, 249.68), ("copper(II) sulfate pentahydrate", 159.61, 249.68)],
+)
+def test_a_hydrate_knows_its_mass_without_its_water(of: str, dry: float, hydrated: float) -> None:
+    stuff = solute(of)
+    assert stuff.dry_mass == pytest.approx(dry, abs=0.01)
+    assert stuff.molar_mass == pytest.approx(hydrated, abs=0.01)
+    assert stuff.substance == "copper(II) sulfate"
+
+
+def test_a_formula_that_two_substances_share_names_neither() -> None:
+    assert solute("C4H10O").name == "C4H10O"
+
+
+def test_two_jars_of_one_form_need_no_asking() -> None:
+    jars = [Stuff(name, "soda", Form.SOLID, 105.99) for name in ("lumps", "powder")]
+    assert solid("soda", jars).name == "lumps"
+
+
+def test_two_forms_on_ones_own_shelf_are_asked_about() -> None:
+    jars = [
+        Stuff("dry soda", "soda", Form.SOLID, 105.99),
+        Stuff("soda crystals", "soda", Form.SOLID, 286.14),
+    ]
+    with pytest.raises(BadInput, match="dry soda or soda crystals"):
+        solid("soda", jars)
+
+
+def test_ones_own_jar_stands_before_what_others_keep() -> None:
+    jar = Stuff("my thiosulfate", "sodium thiosulfate", Form.SOLID, 248.18)
+    assert solid("hypo", [jar]) is jar
