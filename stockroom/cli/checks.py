@@ -72,19 +72,32 @@ def tested(
         bool | None,
         typer.Option("--passed/--failed", help="What the test said.", show_default=False),
     ] = None,
+    peroxide: Annotated[
+        str,
+        typer.Option(metavar="MG_PER_KG", help='As H2O2: "12 mg/kg"; says itself if it passed.'),
+    ] = "",
+    seen: Annotated[
+        str, typer.Option(help="Crystals, cloudy, a stuck cap: it overrules the number.")
+    ] = "",
     note: Annotated[str, typer.Option(help="How it was tested, and what was read.")] = "",
     on: Happened = None,
 ) -> None:
     """A peroxide-former was tested: only this moves its safety date.
 
-    Example: stockroom tested B29 --passed --note "strip, nothing to be seen" --by T1
+    Example: stockroom tested B29 --peroxide "12 mg/kg" --note "strip" --by T1
     """
     from stockroom.service import checks
 
-    if passed is None:
-        raise BadInput(f"{bottle}: did it pass or fail?", "Add --passed or --failed.")
     shared = of(ctx)
-    done = checks.tested(shared.path, bottle, passed=passed, note=note, **when(shared, on))
+    done = checks.tested(
+        shared.path,
+        bottle,
+        passed=passed,
+        peroxide=peroxide,
+        seen=seen,
+        note=note,
+        **when(shared, on),
+    )
     show_done(shared, done)
 
 

@@ -1,17 +1,205 @@
 """The usual caution beside its step, worked out from what goes into a make.
 
-Offered beside any caution the house wrote for the method itself. All are common
-practice, no source; local rules, the supplier's safety data sheet and the
-employer's risk assessment come first.
+Offered beside any caution the house wrote for the method itself. Marks: a = the fact was
+read on a page (makers of peroxide, universities, a chemistry weekly), c = common practice,
+no source. Local rules, the supplier's safety data sheet and the employer's risk
+assessment come first.
 """
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Collection, Iterable
+from dataclasses import dataclass
+from enum import StrEnum
+
+from stockroom.safety.peroxide_formers import DO_NOT_TOUCH, SIGNS, class_of
 
 HOUSE_LINE = (
     "Local rules, the supplier's safety data sheet and your employer's risk assessment "
     "come first: where they differ from this page, they are right."
+)
+
+ESTIMATE = 'A number here is an estimate unless it says "found" and a day.'
+
+
+class Step(StrEnum):
+    """Where in the work a caution belongs."""
+
+    BEGIN = "before you begin"
+    OPEN = "opening the bottle"
+    MIX = "mixing"
+    KEEP = "keeping"
+    LABEL = "labelling"
+    USE = "at the bench"
+    WASTE = "clearing away"
+
+
+MAKING = frozenset({Step.OPEN, Step.MIX, Step.KEEP})
+"""The steps of making up; the others belong to the class, the label and the waste."""
+
+
+@dataclass(frozen=True, slots=True)
+class Goes:
+    """One thing that goes into the work: its substance, storage group and form.
+
+    `strong` means concentrated as bought, where that changes what can happen.
+    """
+
+    substance: str
+    group: str = ""
+    solid: bool = False
+    strong: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class Caution:
+    """One caution: its number in the list of the job, its step, its words and its mark.
+
+    It speaks of these groups and substances; `solid` None: in any form; `strong`: only
+    of the concentrated. `key` has the words, parted by |, that tell it has been said already.
+    """
+
+    number: int
+    step: Step
+    text: str
+    how: str
+    key: str
+    groups: frozenset[str] = frozenset()
+    substances: frozenset[str] = frozenset()
+    solid: bool | None = None
+    strong: bool = False
+
+    def speaks_of(self, thing: Goes) -> bool:
+        """True when the thing is of its kind, in its form and strong enough."""
+        if thing.group not in self.groups and thing.substance not in self.substances:
+            return False
+        right_form = self.solid is None or thing.solid is self.solid
+        return right_form and (thing.strong or not self.strong)
+
+
+def _of(words: str) -> frozenset[str]:
+    return frozenset(part.strip() for part in words.split("|") if part.strip())
+
+
+_ACIDS = _of("acid|oxidising acid")
+_METALS = _of(
+    "barium chloride|barium nitrate|barium hydroxide|barium carbonate|copper(II) sulfate"
+    "|copper(II) chloride|copper(II) nitrate|copper(II) oxide|basic copper(II) carbonate"
+    "|silver nitrate|silver sulfate|ammoniacal silver|potassium permanganate|manganese dioxide"
+    "|manganese(II) sulfate|manganese(II) chloride|lead(II) nitrate|lead(II) ethanoate"
+    "|lead(II) bromide|lead(II) oxide|lead(IV) oxide|nickel(II) sulfate|nickel(II) chloride"
+    "|nickel(II) nitrate|cobalt(II) chloride|cobalt(II) sulfate|cobalt(II) nitrate"
+    "|potassium dichromate|potassium chromate|ammonium dichromate|sodium dichromate|zinc sulfate"
+)
+_HALOGENATED = _of(
+    "dichloromethane|trichloromethane|chlorobenzene|bromobenzene|1-bromobutane|1-chlorobutane"
+    "|1-iodobutane|bromoethane|tetrachloroethene|2-bromo-2-methylpropane|2-chloro-2-methylpropane"
+)
+
+CAUTIONS: tuple[Caution, ...] = (
+    Caution(1, Step.BEGIN, HOUSE_LINE, "c", "come first"),
+    Caution(
+        2, Step.MIX, "Acid into water, slowly and stirring, never water into acid; let it cool.",
+        "c", "into water", groups=_ACIDS, solid=False, strong=True,
+    ),
+    Caution(
+        2, Step.MIX, "Sulfuric acid gives the most heat: cool it before making up to the mark.",
+        "c", "cool", substances=_of("sulfuric acid"), solid=False, strong=True,
+    ),
+    Caution(
+        3, Step.MIX, "Alkali into water in small portions, stirring: it boils if hurried.",
+        "c", "portions", substances=_of(
+            "sodium hydroxide|potassium hydroxide|lithium hydroxide|barium hydroxide|calcium oxide"
+        ), solid=True,
+    ),
+    Caution(
+        4, Step.KEEP, "Vented cap, cool and dark, never filled to the brim, nothing poured back; "
+        "no metal scoops: iron, copper, manganese, dust and alkali make gas and heat.",
+        "a", "vented", groups=_of("peroxide|hypochlorite"),
+    ),
+    Caution(
+        5, Step.MIX, "Bleach never with acid (chlorine), nor with ammonia (chloramines); stored "
+        "apart, its waste apart.",
+        "a", "chlorine", groups=_of("hypochlorite"),
+    ),
+    Caution(
+        5, Step.WASTE, "Ammonia never with bleach: it gives chloramines.",
+        "c", "chloramines", substances=_of("ammonia"),
+    ),
+    Caution(
+        6, Step.MIX, "Ammoniacal silver is never kept: mix it just before, in clean glass, and let "
+        "no residue dry. Cold does not make it safe. Destroy it at once with an excess of "
+        "chloride or of dilute acid, and rinse every vessel.",
+        "a", "destroy", substances=_of("ammoniacal silver"),
+    ),
+    Caution(
+        8, Step.WASTE, "Oxidising and nitric waste: a vented container of its own, no more than "
+        "two thirds full, never one that held solvent; cool it first.",
+        "a", "two thirds", groups=_of("oxidiser|oxidising acid"), substances=_of("nitric acid"),
+    ),
+    Caution(
+        9, Step.OPEN, "Under pressure when warm: open the strong bottle in the fume cupboard.",
+        "c", "fume cupboard", substances=_of("ammonia|hydrochloric acid"), solid=False,
+        strong=True,
+    ),
+    Caution(
+        10, Step.OPEN, "Bromine: fume cupboard and gloves, with thiosulfate solution to hand.",
+        "a", "thiosulfate", substances=_of("bromine"),
+    ),
+    Caution(
+        10, Step.USE, "Thiosulfate and acid give sulfur dioxide: good ventilation, and stop it in "
+        "carbonate.",
+        "c", "sulfur dioxide", substances=_of("sodium thiosulfate"),
+    ),
+    Caution(
+        11, Step.OPEN, "Glacial ethanoic acid burns skin and catches fire, and freezes in a cold "
+        "store near 16 °C: thaw it standing in warm water.",
+        "c", "freezes", substances=_of("ethanoic acid"), strong=True,
+    ),
+    Caution(
+        12, Step.MIX, "Flammable: no flame in the room.",
+        "c", "flame", groups=_of("flammable"), solid=False,
+    ),
+    Caution(
+        12, Step.USE, "Flame tests by damp splint or an approved spray, never by pouring alcohol "
+        "near a flame.",
+        "c", "splint", substances=_of("ethanol|methanol"), solid=False,
+    ),
+    Caution(
+        13, Step.WASTE, "Collect the residues: local limits decide what may go down a sink.",
+        "c", "residues", substances=_METALS | _HALOGENATED,
+    ),
+    Caution(
+        14, Step.LABEL, "Hazard text goes with strength: a stronger make needs a new label.",
+        "a", "new label", groups=_ACIDS | _of("alkali|peroxide|hypochlorite|organic acid"),
+    ),
+    Caution(
+        15, Step.BEGIN, "Never taste, never smell it direct, never find out by trial: what has no "
+        "label is unknown.",
+        "a", "taste", substances=_of("unknown"),
+    ),
+    Caution(16, Step.BEGIN, ESTIMATE, "c", "estimate"),
+    Caution(
+        17, Step.BEGIN, "Not alone and not after hours, where the house list names it.",
+        "c", "alone", groups=_of("cyanide|toxic|water-reactive|oxidising acid"),
+        substances=_of("bromine|phenol|ammoniacal silver"),
+    ),
+    Caution(
+        18, Step.KEEP, "Looks count as well as dates: mould or brown, pour it away.",
+        "c", "mould|brown", substances=_of(
+            "iron(II) sulfate|ammonium iron(II) sulfate|iron(II) chloride|sodium sulfite"
+            "|sodium disulfite|starch|glucose|fructose|sucrose|maltose|lactose"
+        ), solid=False,
+    ),
+)  # fmt: skip
+"""The cautions of the job, section 7, in our words; no. 7, of peroxide-formers, is below."""
+
+PAST_TESTING = Caution(
+    7,
+    Step.OPEN,
+    f"Makes peroxides. Past its test date, or with {SIGNS}: {DO_NOT_TOUCH}.",
+    "a",
+    "crystals",
 )
 
 _LIQUIDS = {
@@ -45,3 +233,30 @@ def cautions_for(
     if never_kept:
         words.append(f"Never kept: {never_kept}")
     return tuple(dict.fromkeys(words))
+
+
+def cautions_about(
+    things: Iterable[Goes],
+    *,
+    said: Collection[str] = (),
+    steps: Collection[Step] = frozenset(Step),
+) -> tuple[Caution, ...]:
+    """What the list says of these things at these steps, in the order of the steps.
+
+    What somebody `said` already, by its telling word, is left out. The lines for every
+    page (nos. 1 and 16) are never among them: they stand at its foot.
+    """
+    known = " ".join(said).casefold()
+    found = dict.fromkeys(each for thing in things for each in _speaking_of(thing))
+    kept = [each for each in found if each.step in steps and not _said(each, known)]
+    order = list(Step)
+    return tuple(sorted(kept, key=lambda each: (order.index(each.step), each.number)))
+
+
+def _said(each: Caution, known: str) -> bool:
+    return any(word in known for word in each.key.split("|"))
+
+
+def _speaking_of(thing: Goes) -> list[Caution]:
+    former = [PAST_TESTING] if class_of(thing.substance) else []
+    return [each for each in CAUTIONS if each.speaks_of(thing)] + former

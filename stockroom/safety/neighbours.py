@@ -1,21 +1,142 @@
 """Groups that must not share a place, and caps that must let gas out.
 
-Common practice, no source looked up; the house's own rules come first.
+Each pair has its reason, who says so, and a mark: a = read, c = common practice, no
+source. The house's own rules come first. An older transport table (IMDG) is held
+against these in the tests; it tells no acid from an alkali, so nothing is taken from it.
 """
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
 
 from stockroom.findings import Finding
+from stockroom.safety.peroxide_formers import class_of
 
-APART: dict[frozenset[str], str] = {
-    frozenset({"acid", "hypochlorite"}): "bleach beside acid: chlorine if they meet",
-    frozenset({"acid", "alkali"}): "acid beside alkali: heat if they meet",
-    frozenset({"oxidiser", "flammable"}): "oxidiser beside flammable: fire",
-    frozenset({"peroxide", "flammable"}): "peroxide beside flammable: fire",
-    frozenset({"hypochlorite", "flammable"}): "bleach beside flammable: heat and fumes",
+
+@dataclass(frozen=True, slots=True)
+class Ruling:
+    """Why two groups stand apart, who says so, and how that is known."""
+
+    reason: str
+    source: str
+    how: str
+
+
+_KENTUCKY = "Univ. of Kentucky page after Prudent Practices 2011, sect. 5"
+_PRUDENT = "Prudent Practices 2011, storage groups"
+_NOTRE_DAME = "Univ. of Notre Dame page"
+_MIT = "MIT page"
+_EUH = "what EUH031 and EUH032 mean: with acid, toxic gas"
+_TRADE = "common practice, no source"
+
+# group, group: reason | source | mark
+_PAIRS = f"""
+acid + hypochlorite: bleach beside acid: chlorine if they meet | {_EUH} | c
+acid + alkali: acid beside alkali: heat if they meet | {_NOTRE_DAME} | a
+acid + cyanide: cyanide beside acid: hydrogen cyanide if they meet | {_EUH} | c
+acid + sulfide: sulfide beside acid: hydrogen sulfide if they meet | {_EUH} | c
+acid + thiocyanate: thiocyanate beside acid: very toxic gas if they meet | {_EUH} | c
+acid + azide: azide beside acid: very toxic, explosive gas if they meet | {_EUH} | c
+acid + flammable: acid beside flammable: fire and fumes | {_KENTUCKY} | a
+acid + metal powder: acid beside metal powder: hydrogen and heat | {_TRADE} | c
+acid + water-reactive: acid beside water-reactive: violent, with gas | {_PRUDENT} | a
+acid + oxidiser: oxidiser beside acid: toxic or explosive gas if they meet | {_TRADE} | c
+acid + oxidising acid: oxidising acid wants a place of its own: heat, fumes | {_MIT} | a
+organic acid + hypochlorite: bleach beside acid: chlorine if they meet | {_EUH} | c
+organic acid + alkali: acid beside alkali: heat if they meet | {_NOTRE_DAME} | a
+organic acid + oxidiser: oxidiser beside organic acid: fire | {_NOTRE_DAME} | a
+organic acid + oxidising acid: oxidising beside organic acid: fire, explosion | {_MIT} | a
+organic acid + peroxide: peroxide beside organic acid: explosive peracid | {_NOTRE_DAME} | a
+organic acid + cyanide: cyanide beside acid: hydrogen cyanide if they meet | {_EUH} | c
+organic acid + sulfide: sulfide beside acid: hydrogen sulfide if they meet | {_EUH} | c
+organic acid + thiocyanate: thiocyanate beside acid: toxic gas if they meet | {_EUH} | c
+organic acid + azide: azide beside acid: very toxic, explosive gas if they meet | {_EUH} | c
+organic acid + water-reactive: acid beside water-reactive: violent, with gas | {_PRUDENT} | a
+organic acid + metal powder: acid beside metal powder: hydrogen and heat | {_TRADE} | c
+oxidising acid + alkali: acid beside alkali: heat if they meet | {_NOTRE_DAME} | a
+oxidising acid + flammable: oxidising acid beside flammable: fire | {_MIT} | a
+oxidising acid + hypochlorite: bleach beside acid: chlorine if they meet | {_EUH} | c
+oxidising acid + cyanide: cyanide beside acid: hydrogen cyanide if they meet | {_EUH} | c
+oxidising acid + sulfide: sulfide beside acid: toxic gas if they meet | {_EUH} | c
+oxidising acid + thiocyanate: thiocyanate beside acid: toxic gas | {_EUH} | c
+oxidising acid + azide: azide beside acid: toxic, explosive gas if they meet | {_EUH} | c
+oxidising acid + metal powder: oxidising acid beside metal powder: fire | {_MIT} | a
+oxidising acid + water-reactive: oxidising acid beside water-reactive: violent | {_PRUDENT} | a
+oxidising acid + peroxide: peroxide beside oxidising acid: gas and heat | {_MIT} | a
+nitric acid + organic acid: nitric beside organic acid: fire, explosion | {_MIT} | a
+nitric acid + flammable: nitric acid beside flammable: fire | {_MIT} | a
+oxidiser + flammable: oxidiser beside flammable: fire | {_KENTUCKY} | a
+oxidiser + metal powder: oxidiser beside metal powder: fire, explosion | {_TRADE} | c
+oxidiser + water-reactive: oxidiser beside water-reactive: fire | {_PRUDENT} | a
+oxidiser + cyanide: oxidiser beside cyanide: explosion if heated together | {_TRADE} | c
+oxidiser + thiocyanate: oxidiser beside thiocyanate: fire, toxic gas | {_TRADE} | c
+oxidiser + sulfide: oxidiser beside sulfide: fire, toxic gas | {_TRADE} | c
+oxidiser + peroxide former: oxidiser beside a peroxide-former: fire | {_NOTRE_DAME} | a
+peroxide + flammable: peroxide beside flammable: fire | {_KENTUCKY} | a
+peroxide + alkali: peroxide beside alkali: it falls apart with gas and heat | makers of peroxide | a
+peroxide + metal powder: peroxide beside metal powder: gas and heat | makers of peroxide | a
+peroxide + water-reactive: peroxide beside water-reactive: violent | {_PRUDENT} | a
+peroxide + peroxide former: peroxide beside a peroxide-former: fire | {_NOTRE_DAME} | a
+peroxide + cyanide: peroxide beside cyanide: heat and gas | {_TRADE} | c
+peroxide + sulfide: peroxide beside sulfide: heat and gas | {_TRADE} | c
+peroxide + thiocyanate: peroxide beside thiocyanate: heat, toxic gas | {_TRADE} | c
+hypochlorite + flammable: bleach beside flammable: heat and fumes | {_TRADE} | c
+hypochlorite + ammonia: bleach beside ammonia: chloramines if they meet | {_TRADE} | c
+hypochlorite + metal powder: bleach beside metal powder: gas and heat | {_TRADE} | c
+hypochlorite + water-reactive: bleach beside water-reactive: violent | {_PRUDENT} | a
+hypochlorite + cyanide: bleach beside cyanide: toxic gas if they meet | {_TRADE} | c
+hypochlorite + peroxide: bleach beside peroxide: they set oxygen free | {_TRADE} | c
+alkali + water-reactive: solution beside water-reactive: hydrogen, fire | {_PRUDENT} | a
+alkali + metal powder: alkali beside metal powder: hydrogen if they meet | {_TRADE} | c
+flammable + water-reactive: flammable beside water-reactive: fire | {_PRUDENT} | a
+oxidiser + gas: oxidiser beside a gas cylinder: fire | {_TRADE} | c
+flammable + gas: flammable beside a gas cylinder: fire | {_TRADE} | c
+"""
+
+
+def _read(rows: str) -> Mapping[frozenset[str], Ruling]:
+    found: dict[frozenset[str], Ruling] = {}
+    for row in rows.strip().splitlines():
+        groups, _, told = row.partition(": ")
+        one, _, other = groups.partition(" + ")
+        reason, source, how = (part.strip() for part in told.split(" | "))
+        found[frozenset({one, other})] = Ruling(reason, source, how)
+    return found
+
+
+RULINGS = _read(_PAIRS)
+
+APART: dict[frozenset[str], str] = {pair: ruling.reason for pair, ruling in RULINGS.items()}
+"""The reason alone, pair by pair."""
+
+_WITHOUT_A_RULE = frozenset({"general", "toxic", "salt"})
+_OF_PLACES = frozenset({"solid", "dark", "cold", "set aside"})
+"""What a place may be kept for that is no storage group: nothing there reacts with it."""
+
+GROUPS = frozenset(group for pair in RULINGS for group in pair) | _WITHOUT_A_RULE
+
+
+_ALSO = {
+    "ammonia": "ammonia",
+    "nitric acid": "nitric acid",
+    "ethanoic acid": "organic acid",
+    "methanoic acid": "organic acid",
 }
+"""Substances that react as more than their storage group says."""
+
+
+def kinds_of(substance: str, group: str) -> tuple[str, ...]:
+    """The groups a bottle counts as beside others: its storage group, and what else it is.
+
+    A peroxide-former stored with the flammables has their rules already.
+
+    >>> kinds_of("ammonia", "alkali"), kinds_of("benzyl alcohol", "general")
+    (('alkali', 'ammonia'), ('general', 'peroxide former'))
+    """
+    also = [_ALSO.get(substance, "")]
+    also += ["peroxide former"] if class_of(substance) and group != "flammable" else []
+    return tuple(dict.fromkeys(kind for kind in (group, *also) if kind))
 
 
 def wrong_neighbours(standing: Iterable[tuple[str, str, str]]) -> list[Finding]:
@@ -29,7 +150,28 @@ def wrong_neighbours(standing: Iterable[tuple[str, str, str]]) -> list[Finding]:
         reason = APART.get(frozenset({group, beside}))
         if reason:
             found.append(Finding(bottle, f"{reason}: move it"))
-    return found
+    # two bottles of one group beside it are one reason
+    return list(dict.fromkeys(found))
+
+
+def not_checked(standing: Iterable[tuple[str, str, str]]) -> list[Finding]:
+    """Findings on groups nobody has a rule for, each once; `standing` as in `wrong_neighbours`.
+
+    A place kept for something that is no group (dark, cold, solids) is passed over, and
+    so is a bottle of no group at all.
+    """
+    strange: dict[str, list[str]] = {}
+    for bottle, group, beside in standing:
+        for each in (group, beside):
+            if each and each not in GROUPS | _OF_PLACES:
+                strange.setdefault(each, []).append(bottle)
+    return [
+        Finding(
+            ", ".join(dict.fromkeys(bottles)),
+            f'neighbours not checked: no rule for the storage group "{group}"',
+        )
+        for group, bottles in sorted(strange.items())
+    ]
 
 
 def tight_caps(bottles: Iterable[tuple[str, str, bool]]) -> list[Finding]:

@@ -12,7 +12,9 @@ from stockroom.measure.strengths import Strength
 from stockroom.planning.decisions import Draw
 from stockroom.planning.derive import with_derived
 from stockroom.planning.plan import plan
+from stockroom.safety.peroxide_formers import Outcome, outcome, read_result
 from stockroom.service.answers import Done
+from stockroom.service.touching import check_not_condemned
 from stockroom.service.work import Work, check_at_hand, unsettled, working
 from stockroom.store.history import children, rule_kinds
 from stockroom.store.kinds import EntryKind
@@ -110,15 +112,17 @@ def look(
 
     Raises: NotAllowed for what is never kept, gone or not found.
     """
-    kind = EntryKind.LOOKED
-    return _check(path, bottle, kind, passed, note, on=on, today=today, by=by)
+    event = Event(EntryKind.LOOKED, passed=passed, note=note)
+    return _check(path, bottle, event, on=on, today=today, by=by)
 
 
 def tested(
     path: Path,
     bottle: str,
     *,
-    passed: bool,
+    passed: bool | None = None,
+    peroxide: str = "",
+    seen: str = "",
     note: str = "",
     on: date | None,
     today: date,
@@ -126,35 +130,64 @@ def tested(
 ) -> Done:
     """Write a peroxide-former's named test, the only check that moves a safety date.
 
-    Raises: NotAllowed when the line has no such rule, or the bottle is not at hand.
+    `peroxide` as written, "12 mg/kg" as H2O2, decides by itself: below 25 its interval
+    starts again, from 25 it is condemned. What was `seen` (crystals, a stuck cap)
+    overrules the number. `passed` is needed without either, and cannot say otherwise than they do.
+    Raises: NotAllowed when the line has no such rule, the bottle is not at hand, or was
+    condemned before; BadInput for neither, or a number that says otherwise; BadAmount for
+    one that cannot be read.
     """
-    kind = EntryKind.TESTED
-    return _check(path, bottle, kind, passed, note, on=on, today=today, by=by)
+    result = read_result(peroxide) if peroxide else None
+    found = outcome(result or 0.0, seen=seen) if seen.strip() or result is not None else None
+    good = _has_passed(bottle, passed, found)
+    words = found.words if found and not found.passed else ""
+    event = Event(EntryKind.TESTED, passed=good, note=note, reason=words, peroxide_mg_kg=result)
+    return _check(path, bottle, event, on=on, today=today, by=by)
 
 
-def _check(
-    path: Path,
-    bottle: str,
-    kind: EntryKind,
-    passed: bool,
-    note: str,
-    *,
-    on: date | None,
-    today: date,
-    by: str,
-) -> Done:
+def _has_passed(bottle: str, passed: bool | None, found: Outcome | None) -> bool:
+    if passed is None:
+        if found is None:
+            raise BadInput(
+                f"{bottle}: did it pass or fail?",
+                'Add --peroxide "12 mg/kg", --passed or --failed.',
+            )
+        return found.passed
+    if passed and found is not None and not found.passed:
+        raise BadInput(f"{bottle} cannot have passed: {found.words}.", "Leave --passed off.")
+    return passed
+
+
+def _check(path: Path, bottle: str, event: Event, *, on: date | None, today: date, by: str) -> Done:
     with working(path, on=on, today=today, by=by) as work:
         checked = work.bottle(bottle)
         check_at_hand(work, checked)
-        _check_keeps(work, checked, kind)
-        entry = work.write(checked, Event(kind, passed=passed, note=note))
+        _check_keeps(work, checked, event.kind)
+        looked, passed = event.kind is EntryKind.LOOKED, bool(event.passed)
+        if passed:
+            check_not_condemned(work, checked)
+        entry = work.write(checked, event)
         # one body for both, since a look and a test differ in what they may re-date only
-        verb = "looked at" if kind is EntryKind.LOOKED else "tested"
-        outcome = "passed" if passed else "did not pass: set aside"
+        verb = "looked at" if looked else "tested"
+        said = "passed" if passed else "did not pass: set aside"
         # a bad look throws doubt on whatever was made from the bottle
         details = _until(work, checked) if passed else _made_from(work, checked)
-        text = f"{work.called(checked)} {verb} {spell_day(work.on)}, {outcome}."
-        return work.done(text, checked, entry, details=details)
+        text = f"{work.called(checked)} {verb} {spell_day(work.on)}, {said}."
+        return work.done(text, checked, entry, details=(*_result(work, checked, event), *details))
+
+
+def _result(work: Work, bottle: Bottle, event: Event) -> tuple[str, ...]:
+    """What was measured or seen means, in words; nothing where there was neither."""
+    if event.reason:
+        return (f"{event.reason[0].upper()}{event.reason[1:]}.",)
+    if event.peroxide_mg_kg is None:
+        return ()
+    substance = substance_of(work.session, work.line(bottle))
+    found = outcome(event.peroxide_mg_kg, substance.peroxide_former if substance else "")
+    if not event.passed:
+        return (f"Failed, though {found.words}.",)
+    lines = (found.words, *found.notes)
+    return tuple(f"{line[0].upper()}{line[1:]}." for line in lines)
 
 
 def _check_keeps(work: Work, bottle: Bottle, kind: EntryKind) -> None:
@@ -181,7 +214,8 @@ def _until(work: Work, bottle: Bottle) -> tuple[str, ...]:
     said = f"Still {after.condition}: good until" if past else f"Now {after.condition}, until"
     # where the printed date decides, whoever looked has the label in hand
     settle = unsettled(work, bottle) if after.decided_by.startswith("printed") else ()
-    return (f"{said} {until}: {after.decided_by}.", *settle)
+    warned = (f"{after.warning.capitalize()}.",) if after.warning else ()
+    return (f"{said} {until}: {after.decided_by}.", *warned, *settle)
 
 
 def printed(

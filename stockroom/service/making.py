@@ -165,7 +165,7 @@ def _judged(known: Facts, product: Line, part: Ingredient, bottle: Bottle, volum
     if judged.safety and judged.condition not in USABLE:
         raise NotAllowed(
             f"{bottle.number} is {judged.condition}: {judged.decided_by}.",
-            "Do not open or move it: ask.",
+            f"{judged.warning.capitalize()}.",
         )
     amount = draw_for(line, judged.strengths.expected, product, volume, part.per_dm3)
     return Source(bottle, line, amount, judged)

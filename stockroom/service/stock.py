@@ -30,6 +30,7 @@ from stockroom.service.taking import (
     still_standing,
     take,
 )
+from stockroom.service.touching import check_may_move, check_may_open
 from stockroom.service.work import (
     Work,
     check_amount,
@@ -90,11 +91,13 @@ def arrive(
 def open_bottle(path: Path, bottle: str, *, on: date | None, today: date, by: str) -> Done:
     """Write the day a bottle was opened, and say how long it is good now.
 
-    Raises: NotAllowed when it was opened already (the first day is kept), gone or not found.
+    Raises: NotAllowed when it was opened already (the first day is kept), gone, not found,
+    past its safety date or condemned by its test.
     """
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_at_hand(work, found)
+        check_may_open(work, found)
         # a later opening would lengthen a life that is running already
         first = opening_of(work, found)
         if first is not None:
@@ -122,12 +125,15 @@ def draw(
     """Take so much from a bottle; a sealed one is opened by it.
 
     Raises: NotEnough when less is left; NotAllowed when it is not found, set
-    aside, gone, or barred by the booking's recipe; BadAmount for the wrong kind.
+    aside, gone, past its safety date, or barred by the booking's recipe; BadAmount
+    for the wrong kind.
     """
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         check_amount(work.line(found), amount)
-        seen = check_in_use(work, found)
+        seen = check_at_hand(work, found)
+        check_may_open(work, found)
+        check_in_use(work, found)
         # found before anything is written: a draw for a booking nobody knows is refused whole
         served = names.find_booking(work.session, booking) if booking else None
         if served is not None:
@@ -173,6 +179,8 @@ def lend(
         )
     event = Event(EntryKind.LENT, change=-amount.micro, reason=f"to {to.strip()}")
     with working(path, on=on, today=today, by=by) as work:
+        # what was spilled has happened; lending can still be left undone
+        check_may_open(work, work.bottle(bottle))
         return _write_off(work, bottle, amount, event, "Lent")
 
 
@@ -189,12 +197,14 @@ def _write_off(work: Work, bottle: str, amount: Amount, event: Event, verb: str)
 def move(path: Path, bottle: str, place: str, *, on: date | None, today: date, by: str) -> Done:
     """Stand a bottle somewhere else.
 
-    Raises: UnknownName with the nearest places; NotAllowed when it is gone or not found.
+    Raises: UnknownName with the nearest places; NotAllowed when it is gone, not found, or
+    past its safety date, when nobody moves it.
     """
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         # where it stood decides how fast it aged, so the answer names both places
         before = check_at_hand(work, found).place
+        check_may_move(work, found)
         entry = work.write(found, Event(EntryKind.MOVED, place_id=work.place_id(place)))
         start = f" from {before}" if before else ""
         return work.done(f"Moved {work.called(found)}{start} to {place}.", found, entry)

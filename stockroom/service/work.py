@@ -188,7 +188,8 @@ def doubts(work: Work, bottle: Bottle) -> tuple[str, ...]:
     found = work.verdict(bottle)
     if found.condition is Condition.SOUND:
         return ()
-    return (f"{bottle.number} is {found.condition}: {found.decided_by}.",)
+    warned = f" {found.warning.capitalize()}." if found.warning else ""
+    return (f"{bottle.number} is {found.condition}: {found.decided_by}.{warned}",)
 
 
 def unsettled(work: Work, bottle: Bottle) -> tuple[str, ...]:

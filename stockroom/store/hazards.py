@@ -28,19 +28,25 @@ Limits = tuple[Limit, ...]
 
 @dataclass(frozen=True, slots=True)
 class LimitBook:
-    """What is held of each substance, by plain name; the house's own before the shipped."""
+    """What is held of each substance, by plain name; the house's own before the shipped.
+
+    The house's own rows are read when they are asked for, so that one that makes no
+    sense spoils the answer for its own substance alone.
+    """
 
     shipped: Mapping[str, Limits]
-    own: Mapping[str, Limits] = field(default_factory=dict)
+    own: Mapping[str, list[Any]] = field(default_factory=dict)
 
     def of(self, *names: str) -> Limits:
-        """The limits under the first of these names that has any; () for none of them."""
+        """The limits under the first of these names that has any; () for none of them.
+
+        Raises: BadInput for a row of the house's own that cannot be read.
+        """
         wanted = [plain(name) for name in names if name]
-        for held in (self.own, self.shipped):
-            for name in wanted:
-                if held.get(name):
-                    return held[name]
-        return ()
+        own = next((self.own[name] for name in wanted if name in self.own), None)
+        if own is not None:
+            return tuple(limit_from(row) for row in own)
+        return next((self.shipped[name] for name in wanted if name in self.shipped), ())
 
 
 @lru_cache(maxsize=2)
@@ -103,16 +109,15 @@ def _number(written: str | float | None) -> float | None:
 
 def limit_book(folder: Path, reader: Reader | None = None) -> LimitBook:
     """The limits of the tables in `folder`, and those of an open store before them."""
-    return LimitBook(shipped_limits(folder), own_limits(reader) if reader else {})
+    return LimitBook(shipped_limits(folder), _own(reader) if reader else {})
 
 
-def own_limits(reader: Reader) -> Mapping[str, Limits]:
-    """The limits the house entered itself, by plain name of the substance."""
+def _own(reader: Reader) -> Mapping[str, list[Any]]:
     names = reader.pairs("SELECT id, substance FROM substance")
-    held: dict[str, list[Limit]] = {}
+    held: dict[str, list[Any]] = {}
     for row in reader.rows("hazard"):
-        held.setdefault(plain(names[row["substance_id"]]), []).append(limit_from(row))
-    return {name: tuple(rows) for name, rows in held.items()}
+        held.setdefault(plain(names[row["substance_id"]]), []).append(row)
+    return held
 
 
 def texts_of(reader: Reader, line: str) -> tuple[SheetText, ...]:

@@ -5,14 +5,16 @@ from __future__ import annotations
 import re
 
 from stockroom.errors import BadAmount, BadInput
+from stockroom.safety.limits import Basis, Route
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
+from stockroom.store.hazards import limit_from
 from stockroom.store.likeness import unknown
 from stockroom.store.names import find_substance
 from stockroom.store.tables import Hazard
 
-BASES = ("specific", "harmonised", "none")
-ROUTES = ("oral", "dermal", "gas", "vapour", "dust")
+BASES = tuple(Basis)
+ROUTES = tuple(Route)
 _CODE = re.compile(r"(H[2-4][0-9]{2}[A-Za-z]{0,2}|EUH[0-9]{3}[A-Z]?)")
 
 
@@ -27,26 +29,28 @@ def read_hazard(desk: Desk, fields: Fields) -> None:
         raise unknown("route", route, ROUTES)
     lowest, below = _band(fields)
     assert substance.id is not None
-    desk.save(
-        Hazard(
-            substance_id=substance.id,
-            hazard_class=fields.text("hazard_class") if basis == "none" else _class(fields),
-            h_code=_code(fields) if basis != "none" else "",
-            from_percent=lowest,
-            below_percent=below,
-            basis=basis,
-            route=route,
-            ate=fields.number("ate"),
-            m_factor=fields.number("m_factor"),
-            percent_of=fields.text("percent_of"),
-            how=fields.text("how"),
-            source=fields.text("source"),
-        )
+    row = Hazard(
+        substance_id=substance.id,
+        hazard_class=_class(fields, basis),
+        h_code=_code(fields) if basis != Basis.NONE else "",
+        from_percent=lowest,
+        below_percent=below,
+        basis=basis,
+        route=route,
+        ate=fields.number("ate"),
+        m_factor=fields.number("m_factor"),
+        percent_of=fields.text("percent_of"),
+        how=fields.text("how"),
+        source=fields.text("source"),
     )
+    fields.at("hazard_class")
+    # read as it will be when it is asked for, so that a row nobody can read is never saved
+    limit_from(row.model_dump())
+    desk.save(row)
 
 
-def _class(fields: Fields) -> str:
-    return fields.need("hazard_class")
+def _class(fields: Fields, basis: str) -> str:
+    return fields.text("hazard_class") if basis == Basis.NONE else fields.need("hazard_class")
 
 
 def _code(fields: Fields) -> str:

@@ -435,6 +435,8 @@ def test_glassware_that_says_nothing_is_refused(
             "holds nothing",
         ),
         ({"basis": "harmonised", "h_code": "H301"}, "hazard_class is blank"),
+        ({"basis": "harmonised", "h_code": "H301", "hazard_class": "Nasty 1"}, "Nasty 1"),
+        ({"basis": "harmonised", "h_code": "H301", "hazard_class": "Skin Corr. 1A"}, "is H314"),
     ],
 )
 def test_a_limit_that_says_nothing_is_refused(own: Path, cells: dict[str, str], told: str) -> None:

@@ -1,0 +1,98 @@
+"""The eighteen cautions of the job stand at their step, and are not said twice.
+
+Facts behind those marked a were read on pages of makers, universities and a chemistry weekly;
+the others are common practice, no source.
+"""
+
+from __future__ import annotations
+
+import pytest
+
+from stockroom.safety.cautions import (
+    CAUTIONS,
+    HOUSE_LINE,
+    MAKING,
+    PAST_TESTING,
+    Goes,
+    Step,
+    cautions_about,
+)
+
+
+def numbers(*things: Goes) -> set[int]:
+    """The numbers of the cautions that speak of these."""
+    return {each.number for each in cautions_about(things)}
+
+
+def test_all_eighteen_are_held() -> None:
+    assert {each.number for each in (*CAUTIONS, PAST_TESTING)} == set(range(1, 19))
+
+
+@pytest.mark.parametrize(
+    ("thing", "number", "step", "words"),
+    [
+        (Goes("sulfuric acid", "acid", strong=True), 2, Step.MIX, "Acid into water"),
+        (Goes("sodium hydroxide", "alkali", solid=True), 3, Step.MIX, "small portions"),
+        (Goes("hydrogen peroxide", "peroxide"), 4, Step.KEEP, "Vented cap"),
+        (Goes("sodium hypochlorite", "hypochlorite"), 4, Step.KEEP, "nothing poured back"),
+        (Goes("sodium hypochlorite", "hypochlorite"), 5, Step.MIX, "chloramines"),
+        (Goes("ammoniacal silver"), 6, Step.MIX, "never kept"),
+        (Goes("cyclohexene", "flammable"), 7, Step.OPEN, "do not open or move it; ask"),
+        (Goes("nitric acid", "acid"), 8, Step.WASTE, "two thirds"),
+        (Goes("ammonia", "alkali", strong=True), 9, Step.OPEN, "fume cupboard"),
+        (Goes("hydrochloric acid", "acid", strong=True), 9, Step.OPEN, "pressure"),
+        (Goes("bromine", "oxidiser"), 10, Step.OPEN, "thiosulfate"),
+        (Goes("sodium thiosulfate"), 10, Step.USE, "sulfur dioxide"),
+        (Goes("ethanoic acid", "flammable", strong=True), 11, Step.OPEN, "freezes"),
+        (Goes("ethanol", "flammable"), 12, Step.MIX, "no flame"),
+        (Goes("ethanol", "flammable"), 12, Step.USE, "splint"),
+        (Goes("silver nitrate", "oxidiser"), 13, Step.WASTE, "Collect the residues"),
+        (Goes("dichloromethane", "toxic"), 13, Step.WASTE, "Collect the residues"),
+        (Goes("hydrochloric acid", "acid"), 14, Step.LABEL, "new label"),
+        (Goes("unknown"), 15, Step.BEGIN, "Never taste"),
+        (Goes("phenol", "toxic"), 17, Step.BEGIN, "Not alone"),
+        (Goes("starch", "general"), 18, Step.KEEP, "pour it away"),
+    ],
+)
+def test_a_caution_stands_at_its_step(thing: Goes, number: int, step: Step, words: str) -> None:
+    found = [c for c in cautions_about([thing]) if c.number == number and c.step is step]
+    assert any(words in caution.text for caution in found)
+
+
+def test_the_lines_for_every_page_stand_at_its_foot() -> None:
+    held = {each.number: each.text for each in CAUTIONS}
+    assert held[1] == HOUSE_LINE
+    assert "estimate" in held[16]
+    assert not {1, 16} & numbers(Goes("sulfuric acid", "acid", strong=True))
+
+
+@pytest.mark.parametrize(
+    ("thing", "number"),
+    [
+        (Goes("hydrochloric acid", "acid"), 9),
+        (Goes("sodium hydroxide", "alkali"), 3),
+        (Goes("starch", "general", solid=True), 18),
+        (Goes("ethanoic acid", "flammable"), 11),
+        (Goes("sodium chloride", "general"), 17),
+    ],
+)
+def test_a_caution_is_not_said_of_another_form_or_strength(thing: Goes, number: int) -> None:
+    assert number not in numbers(thing)
+
+
+def test_what_the_house_has_said_is_not_said_again() -> None:
+    bleach = [Goes("sodium hypochlorite", "hypochlorite")]
+    said = ("Never with acid (chlorine) nor with ammonia (chloramines)", "Vented cap")
+    assert not {4, 5} & {each.number for each in cautions_about(bleach, said=said)}
+
+
+def test_a_make_shows_the_steps_of_making_alone() -> None:
+    found = cautions_about([Goes("silver nitrate", "oxidiser")], steps=MAKING)
+    assert all(caution.step in MAKING for caution in found)
+
+
+def test_they_come_in_the_order_of_the_work_and_once() -> None:
+    acid = Goes("hydrochloric acid", "acid", strong=True)
+    steps = [list(Step).index(each.step) for each in cautions_about([acid, acid])]
+    assert steps == sorted(steps)
+    assert len(cautions_about([acid, acid])) == len(cautions_about([acid]))
