@@ -42,6 +42,11 @@ class Result:
     err: str
 
     @property
+    def said(self) -> str:
+        """Standard output with its line breaks undone, for a sentence that may wrap."""
+        return " ".join(self.out.split())
+
+    @property
     def json(self) -> Any:
         """Standard output read as JSON. Raises ValueError, quoting it, where it is not."""
         try:

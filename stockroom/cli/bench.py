@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from stockroom.cli.printing import show
+from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared
 from stockroom.errors import BadInput
 
@@ -44,7 +44,7 @@ def show_sum(shared: Shared, answer: Sum) -> None:
     practice = answer.practice
     show(
         shared,
-        lambda: bench_text(answer.text, answer.details, practice=practice),
+        lambda: bench_text(answer.text, answer.details, practice=practice, width=width()),
         lambda: bench_json(
             answer.value, answer.unit, answer.text, answer.details, practice=practice
         ),

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from datetime import date
-from typing import Annotated, TypedDict
+from typing import Annotated, Any, TypedDict
 
 import typer
 
@@ -20,8 +20,15 @@ To = Annotated[
     str | None, typer.Option("--to", metavar="DATE", help="Last day; else the last of the term.")
 ]
 
+Cautious = Annotated[
+    bool,
+    typer.Option("--cautious", help="Count every strength at its lower 95 % limit, where known."),
+]
 
-def plan(ctx: typer.Context, start: From = None, end: To = None) -> None:
+
+def plan(
+    ctx: typer.Context, start: From = None, end: To = None, cautious: Cautious = False
+) -> None:
     """The plan of the term: have, make, check, order, and what cannot be done.
 
     Example: stockroom plan --from 2027-01-25 --to 2027-01-29
@@ -31,27 +38,36 @@ def plan(ctx: typer.Context, start: From = None, end: To = None) -> None:
     from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    answer = term_plan(shared.path, **_asked(shared, start, end))
+    answer = term_plan(shared.path, **_asked(shared, start, end), cautious=cautious)
     show(shared, lambda: plan_text(answer, width()), lambda: plan_json(answer))
 
 
-def fresh(ctx: typer.Context, start: From = None, end: To = None) -> None:
+def fresh(
+    ctx: typer.Context, start: From = None, end: To = None, cautious: Cautious = False
+) -> None:
     """What to make up, by day, with its steps and cautions.
 
     Example: stockroom fresh --from 2027-01-25 --to 2027-01-29
     """
-    from stockroom.reports.json_plan import fresh_json
     from stockroom.reports.makes_text import fresh_text
     from stockroom.service.plan import to_make
 
     shared = of(ctx)
-    answer = to_make(shared.path, **_asked(shared, start, end))
-    show(shared, lambda: fresh_text(answer, width()), lambda: fresh_json(answer))
+    answer = to_make(shared.path, **_asked(shared, start, end), cautious=cautious)
+
+    def as_data() -> dict[str, Any]:
+        from stockroom.reports.hazards_text import fresh_with_hazards
+        from stockroom.service.hazards import hazards_of_makes
+
+        return fresh_with_hazards(answer, hazards_of_makes(shared.path, answer))
+
+    show(shared, lambda: fresh_text(answer, width()), as_data)
 
 
 def past(
     ctx: typer.Context,
     on: Annotated[str | None, typer.Option(metavar="DATE", help="The day; else today.")] = None,
+    cautious: Cautious = False,
 ) -> None:
     """What is past, weak, undated or unchecked on a day, and for which booking it matters.
 
@@ -64,11 +80,13 @@ def past(
     shared = of(ctx)
     today = shared.today
     day = day_or_none(on, "--on") or today
-    answer = past_on(shared.path, as_at=today, on=day)
+    answer = past_on(shared.path, as_at=today, on=day, cautious=cautious)
     show(shared, lambda: past_text(answer, day, width()), lambda: past_json(answer, day))
 
 
-def usage(ctx: typer.Context, start: From = None, end: To = None) -> None:
+def usage(
+    ctx: typer.Context, start: From = None, end: To = None, cautious: Cautious = False
+) -> None:
     """What the term uses, by solution and in bought form.
 
     Example: stockroom usage
@@ -78,11 +96,11 @@ def usage(ctx: typer.Context, start: From = None, end: To = None) -> None:
     from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    answer = term_plan(shared.path, **_asked(shared, start, end))
+    answer = term_plan(shared.path, **_asked(shared, start, end), cautious=cautious)
     show(shared, lambda: usage_text(answer, width()), lambda: usage_json(answer))
 
 
-def buying(ctx: typer.Context) -> None:
+def buying(ctx: typer.Context, cautious: Cautious = False) -> None:
     """What to order, by when, why, and whose money it is.
 
     Example: stockroom buying --as-at 2027-01-11
@@ -92,13 +110,14 @@ def buying(ctx: typer.Context) -> None:
     from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    answer = term_plan(shared.path, as_at=shared.today)
+    answer = term_plan(shared.path, as_at=shared.today, cautious=cautious)
     show(shared, lambda: buying_text(answer, width()), lambda: buying_json(answer))
 
 
 def ready(
     ctx: typer.Context,
     ref: Annotated[str, typer.Argument(metavar="BOOKING|DATE", help="K11, or 2027-03-23.")],
+    cautious: Cautious = False,
 ) -> None:
     """Is everything good on the day: first line YES or NO, exit 1 for no.
 
@@ -111,11 +130,11 @@ def ready(
 
     shared = of(ctx)
     today, practice = shared.today, is_practice(shared.path)
-    answer = is_ready(shared.path, ref, as_at=today)
+    answer = is_ready(shared.path, ref, as_at=today, cautious=cautious)
     show(
         shared,
-        lambda: ready_text(answer, width(), practice=practice),
-        lambda: ready_json(answer, as_at=today, practice=practice),
+        lambda: ready_text(answer, width(), practice=practice, cautious=cautious),
+        lambda: ready_json(answer, as_at=today, practice=practice, cautious=cautious),
     )
     raise typer.Exit(0 if answer.ready else 1)
 
@@ -129,6 +148,7 @@ def why(
     instead: Annotated[
         str | None, typer.Option(metavar="NAME", help="Ask about this in its place.")
     ] = None,
+    cautious: Cautious = False,
 ) -> None:
     """The reasons behind one line, in five lines or fewer.
 
@@ -141,11 +161,11 @@ def why(
 
     shared = of(ctx)
     today, practice = shared.today, is_practice(shared.path)
-    reasons = reasons_for(shared.path, ref, as_at=today, instead=instead)
+    reasons = reasons_for(shared.path, ref, as_at=today, instead=instead, cautious=cautious)
     show(
         shared,
-        lambda: why_text(reasons, practice=practice),
-        lambda: why_json(ref, reasons, as_at=today, practice=practice),
+        lambda: why_text(reasons, practice=practice, cautious=cautious),
+        lambda: why_json(ref, reasons, as_at=today, practice=practice, cautious=cautious),
     )
 
 

@@ -6,7 +6,7 @@ from typing import Annotated
 
 import typer
 
-from stockroom.cli.printing import show, show_done
+from stockroom.cli.printing import show, show_done, width
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Happened, when
 from stockroom.cli.values import number_or_none
@@ -85,7 +85,7 @@ def titrate(
         done = service.record(shared.path, bottle, found, sure=sure, **when(shared, on))
         show_done(shared, done)
         return
-    show(shared, lambda: report.titrated_text(found), lambda: report.titrated_json(found))
+    show(shared, lambda: report.titrated_text(found, width()), lambda: report.titrated_json(found))
 
 
 def _cm3(text: str, where: str) -> float:

@@ -77,6 +77,19 @@ def number_or_none(text: str | None, where: str) -> float | None:
     return value
 
 
+def signed_or_none(text: str | None, where: str) -> float | None:
+    """A number that may be below zero typed after `where`, "20 °C" as 20, or None.
+
+    Raises: BadInput.
+    """
+    if text is None:
+        return None
+    value = _number(text.strip().removesuffix("C").removesuffix("°").replace("−", "-"))
+    if not math.isfinite(value):
+        raise BadInput(f"{where} {text!r} is not a number.", "Write a plain one, as 20 or -5.")
+    return value
+
+
 def density_or_none(text: str | None, where: str) -> float | None:
     """A density in g/cm³ typed after `where`, 0.5 to 20, or None. Raises: BadInput."""
     value = number_or_none(text, where)

@@ -6,6 +6,8 @@ from dataclasses import dataclass
 from datetime import date
 from enum import StrEnum
 
+from stockroom.keeping.caution import Caution
+from stockroom.keeping.temperatures import TemperatureLog
 from stockroom.measure.days import PrintedDate
 
 
@@ -38,11 +40,15 @@ class Check:
 
 @dataclass(frozen=True, slots=True)
 class Stay:
-    """Where a bottle stood from a day on: the place's name and its °C, if known."""
+    """Where a bottle stood from a day on: the place's name and its °C, if known.
+
+    `log` is what a logger wrote there; it counts before the place's own °C.
+    """
 
     since: date
     place: str
     temperature_c: float | None
+    log: TemperatureLog | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -51,7 +57,8 @@ class Record:
 
     `nominal` is the label's strength in the line's unit (mol/dm³ or g/dm³).
     `opened_guessed` marks an opened bottle whose day was not written: it counts
-    as opened on the day it was received, the earliest it can have been.
+    as opened on the day it was received, the earliest it can have been. `caution` is
+    there in a plan on the safe side only.
     """
 
     received: date | None = None
@@ -66,6 +73,7 @@ class Record:
     not_found: bool = False
     gone: bool = False
     ready_on: date | None = None
+    caution: Caution | None = None
 
     @property
     def undated(self) -> bool:

@@ -17,15 +17,16 @@ from stockroom.keeping.rules import Origin, Purpose, Rule, RuleKind
 from stockroom.keeping.strength import (
     Strengths,
     last_check,
+    logged_to,
     origin_day,
     strengths_on,
-    stretches,
     temperature_on,
 )
+from stockroom.keeping.warming import warmed_until, where_it_stood
 from stockroom.measure.periods import add, format_period
 
-# a life split over two stays at one temperature must come out a whole one
-_SLACK = 1e-9
+NOT_TO_BE_TOUCHED = "do not open or move it; ask"
+"""What every message about a bottle past its safety date says. Source: the job, 7 no. 7."""
 
 WEAK_BELOW = 0.80
 """A bottle is weak below this part of its label strength: outside even "rough"."""
@@ -83,6 +84,12 @@ class Verdict:
     look_would_do: bool = False
     """True when only a look stands between this bottle and being sound."""
 
+    @property
+    def warning(self) -> str:
+        """What must be said of a bottle past its safety date; "" of any other."""
+        here = self.condition not in USABLE and self.condition is not Condition.GONE
+        return NOT_TO_BE_TOUCHED if self.safety and here else ""
+
 
 def verdict(
     record: Record, rules: tuple[Rule, ...], on: date, purpose: Purpose = Purpose.ANY
@@ -100,12 +107,17 @@ def judge(record: Record, limits: list[Limit], strengths: Strengths, on: date) -
     unusable = _out_of_use(record, on)
     if unusable:
         # a look cannot bring back what a limit of its own has ended
-        looks = unusable[0] is Condition.NO_DATE and not any(limit.until < on for limit in limits)
-        return Verdict(unusable[0], None, unusable[1], strengths, look_would_do=looks)
-    return _judged(strengths, limits, on)
+        over = [limit for limit in limits if limit.until < on]
+        looks = unusable[0] is Condition.NO_DATE and not over
+        # standing apart makes a bottle past its safety date no safer
+        safety = any(limit.safety for limit in over)
+        return Verdict(
+            unusable[0], None, unusable[1], strengths, safety=safety, look_would_do=looks
+        )
+    return _judged(record, strengths, limits, on)
 
 
-def _judged(strengths: Strengths, limits: list[Limit], on: date) -> Verdict:
+def _judged(record: Record, strengths: Strengths, limits: list[Limit], on: date) -> Verdict:
     hard = [limit for limit in limits if not limit.known_until]
     over = [limit for limit in limits if limit.until < on]
     # what ended its use before what ended our knowledge of it
@@ -115,7 +127,7 @@ def _judged(strengths: Strengths, limits: list[Limit], on: date) -> Verdict:
     if over:
         condition = Condition.WATCH if deciding.known_until else Condition.PAST
     elif _is_weak(strengths):
-        condition, because = Condition.WEAK, _weak_words(strengths)
+        condition, because = Condition.WEAK, _weak_words(record, strengths, on)
     return Verdict(
         condition=condition,
         good_until=None if until == date.max else until,
@@ -123,7 +135,8 @@ def _judged(strengths: Strengths, limits: list[Limit], on: date) -> Verdict:
         strengths=strengths,
         recheck_by=min((x.until for x in limits if x.known_until), default=None),
         usable_until=min((x.until for x in hard), default=None),
-        safety=deciding.safety,
+        # a date of another kind that ended its use earlier makes it no safer
+        safety=deciding.safety or any(limit.safety for limit in over),
         look_would_do=condition is Condition.PAST
         and all(x.by_look for x in over if not x.known_until),
     )
@@ -232,29 +245,10 @@ def _counted(
     assert rule.lasts is not None
     until = add(since, rule.lasts)
     words = f"{words} + {format_period(rule.lasts)}"
-    here = temperature_on(record, on)
-    warmed = _warmed(record, rule, on, since, until)
-    if warmed != until and here is not None:
-        words += f" at {rule.at_c:g} °C, {(warmed - since).days} d at {here:g} °C"
+    where, warmed = where_it_stood(record, on), warmed_until(record, rule, on, since, until)
+    if warmed != until and where:
+        words += f" at {rule.at_c:g} °C, {(warmed - since).days} d {where}"
     return Limit(warmed, words, rule.safety, known_until=known)
-
-
-def _warmed(record: Record, rule: Rule, on: date, since: date, until: date) -> date:
-    """The last good day where it stood: each stay uses its life up at its own pace.
-
-    A life used up in a warm place is not given back by moving to a cold one.
-    """
-    if rule.at_c is None or not rule.factor_per_10c:
-        return until
-    pace, day, left = 1.0, since, float((until - since).days)
-    for first, last, place in stretches(record, on):
-        pace = 1.0 if place is None else rule.factor_per_10c ** ((place - rule.at_c) / 10.0)
-        begun = max(first, since)
-        used = max(0, (last - begun).days) * pace
-        if used > left:
-            return begun + timedelta(days=int(left / pace + _SLACK))
-        day, left = max(begun, last), left - used
-    return day + timedelta(days=int(left / pace + _SLACK))
 
 
 _DATED: dict[RuleKind, Callable[[Record, Rule, date], Limit | None]] = {
@@ -273,10 +267,12 @@ def _is_weak(strengths: Strengths) -> bool:
     return strengths.expected < WEAK_BELOW * strengths.nominal
 
 
-def _weak_words(strengths: Strengths) -> str:
+def _weak_words(record: Record, strengths: Strengths, on: date) -> str:
     assert strengths.expected is not None and strengths.nominal
     part = 100 * strengths.expected / strengths.nominal
-    return f"expected at {part:.0f} % of its label strength"
+    words = f"expected at {part:.0f} % of its label strength"
+    logged = logged_to(record, on)
+    return f"{words}, temperatures as logged to {_day(logged)}" if logged else words
 
 
 def _day(day: date) -> str:

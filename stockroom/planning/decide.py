@@ -10,13 +10,14 @@ from stockroom.planning.amounts import say, say_strength
 from stockroom.planning.batch import Batch, Source, keeps
 from stockroom.planning.decisions import Answer, Draw, Make, Outcome, Short
 from stockroom.planning.explode import Need
-from stockroom.planning.facts import Drawn, Facts, Form
+from stockroom.planning.facts import Drawn, Facts, Form, Line
+from stockroom.planning.how_good import how_good
 from stockroom.planning.numbers import Natural, natural
 from stockroom.planning.shelf import Promise, Shelf
 from stockroom.planning.timing import hours, ready_at
 from stockroom.planning.wants import Settled, Want
 from stockroom.planning.windows import good_until
-from stockroom.safety.cautions import cautions_for
+from stockroom.safety.cautions import MAKING, Goes, cautions_about, cautions_for
 
 _OUTCOMES = {
     Settled.HELD: Outcome.HAVE,
@@ -138,7 +139,9 @@ def _why_this_bottle(facts: Facts, need: Need, promise: Promise, shelf: Shelf) -
         basis = (
             f"found {strengths.found_on}" if strengths.found is not None else "label, not checked"
         )
-        words += f", expected {say_strength(need.line, strengths.expected)} on the day ({basis})"
+        expected = say_strength(need.line, strengths.expected)
+        sure = "expected" if strengths.usual is None else "at least"
+        words += f", {sure} {expected} on the day ({basis})"
     until = judged.usable_until
     return words + (f", good until {until}" if until else "")
 
@@ -190,7 +193,16 @@ def _cautions(batch: Batch) -> tuple[str, ...]:
     general = cautions_for(
         [] if written else groups, vented=vented, never_kept=batch.line.never_kept
     )
-    return tuple(dict.fromkeys([*written, *general]))
+    # what the substance itself asks for, unless the house has said as much
+    things = [_goes(line) for line in (*(x.line for x in batch.sources), batch.line)]
+    special = cautions_about(things, said=(*written, *general), steps=MAKING)
+    return tuple(dict.fromkeys([*written, *general, *(each.text for each in special)]))
+
+
+def _goes(line: Line) -> Goes:
+    # a neat liquid is as strong as it is sold; what is dissolved here is not
+    strong = line.form is Form.LIQUID
+    return Goes(line.substance, line.storage_group, line.form is Form.SOLID, strong)
 
 
 def _source(source: Source) -> Draw:
@@ -217,6 +229,8 @@ def _make_reasons(facts: Facts, batch: Batch, kept: bool) -> list[str]:
     words = [f"for {' + '.join(parts)}"]
     words += [_source_reason(source) for source in batch.sources]
     words += batch.reasons
+    good = how_good(facts, batch)
+    words += [good] if good else []
     words.append(_day_reason(batch))
     if batch.heel and batch.heel > facts.house.batch_step:
         where = "kept as stock" if kept else "poured away by the usual route"

@@ -11,6 +11,7 @@ from datetime import date
 from enum import StrEnum
 
 from stockroom.findings import Finding
+from stockroom.keeping.caution import LowerLimits
 from stockroom.keeping.verdict import Condition
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Booking, House
@@ -188,7 +189,10 @@ class Level:
 
 @dataclass(frozen=True, slots=True)
 class Plan:
-    """The whole answer for a period, as at one day."""
+    """The whole answer for a period, as at one day.
+
+    `lower_limits` is there when it was made on the safe side, on lower limits of strength.
+    """
 
     as_at: date
     start: date
@@ -205,3 +209,4 @@ class Plan:
     levels: tuple[Level, ...] = ()
     guesses: tuple[Finding, ...] = ()
     notes: tuple[Finding, ...] = field(default=())
+    lower_limits: LowerLimits | None = None

@@ -12,6 +12,7 @@ from dataclasses import dataclass, field
 from datetime import date
 from enum import StrEnum
 
+from stockroom.keeping.caution import Caution, LowerLimits
 from stockroom.keeping.record import Record
 from stockroom.keeping.rules import Rule
 from stockroom.measure.amounts import Kind
@@ -96,6 +97,8 @@ class Line:
     storage_group: str = ""
     keep_note: str = ""
     packs: tuple[Pack, ...] = ()
+    caution: Caution | None = None
+    """How to doubt what is still to be made of it, in a plan on the safe side."""
 
     @property
     def solute_per_gram(self) -> float | None:
@@ -340,6 +343,7 @@ class Facts:
 
     `start` and `end` bound what is asked about; the plan itself runs on to
     `horizon` (None: `end`), so that asking about a week does not change it.
+    `lower_limits` is there when strengths are at their lower limits.
     """
 
     as_at: date
@@ -358,3 +362,4 @@ class Facts:
     places: tuple[Place, ...] = ()
     drawn: tuple[Drawn, ...] = ()
     horizon: date | None = None
+    lower_limits: LowerLimits | None = None

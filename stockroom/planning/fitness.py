@@ -4,7 +4,9 @@ from __future__ import annotations
 
 from datetime import date, timedelta
 
+from stockroom.chemistry.uncertainty import exact_enough
 from stockroom.keeping.rules import RuleKind
+from stockroom.keeping.strength import Strengths
 from stockroom.keeping.verdict import Verdict
 from stockroom.measure.periods import add
 from stockroom.planning.amounts import say_strength, strong_enough
@@ -19,14 +21,18 @@ from stockroom.planning.shelf import Judge
 
 # a bottle found at exactly the limit will do, whatever the last binary digit says
 _SLACK = 1e-9
+_EXACT = 0.005
 
 
 def judge_for_need(requirement: Requirement, line: Line, on: date) -> Judge:
     """A judge of bottles for a recipe line on a day: freshness, then strength."""
 
     def judge(bottle: Bottle, judged: Verdict) -> str:
-        return too_old(requirement, bottle, on) or wrong_strength(
-            requirement, judged.strengths.expected, line
+        strengths = judged.strengths
+        return (
+            too_old(requirement, bottle, on)
+            or wrong_strength(requirement, strengths.expected, line, strengths.usual)
+            or not_exact(requirement, strengths, line)
         )
 
     return judge
@@ -77,19 +83,44 @@ def bounds(requirement: Requirement) -> tuple[float, float] | None:
     return (low * (1 - part), high * (1 + part)) if part else (low, high)
 
 
-def wrong_strength(requirement: Requirement, strength: float | None, line: Line) -> str:
-    """Why a strength will not do for a recipe line; "" if it will."""
+def wrong_strength(
+    requirement: Requirement, strength: float | None, line: Line, at_most: float | None = None
+) -> str:
+    """Why a strength will not do for a recipe line; "" if it will.
+
+    `at_most` is what it may really be where `strength` is a lower limit: doubting a
+    bottle must not make one that is too strong look right.
+    """
     limits = bounds(requirement)
     if limits is None:
         return ""
     if strength is None:
         return "its strength is not known"
     low, high = limits
-    if low * (1 - _SLACK) <= strength <= high * (1 + _SLACK):
+    if strength < low * (1 - _SLACK):
+        told = f"too weak: {say_strength(line, strength)} on the day"
+        return f"{told}, limit {say_strength(line, low)}"
+    most = strength if at_most is None else at_most
+    if most <= high * (1 + _SLACK):
         return ""
-    side = "too weak" if strength < low else "too strong"
-    edge = say_strength(line, low if strength < low else high)
-    return f"{side}: {say_strength(line, strength)} on the day, limit {edge}"
+    return f"too strong: {say_strength(line, most)} on the day, limit {say_strength(line, high)}"
+
+
+def exactness(requirement: Requirement) -> float:
+    """How closely an exact line wants its strength known, as a fraction."""
+    return requirement.tolerance or TOLERANCE[Closeness.EXACT] or _EXACT
+
+
+def not_exact(requirement: Requirement, strengths: Strengths, line: Line) -> str:
+    """Why what was found is not known well enough for an exact line; "" if it is.
+
+    A result without an uncertainty is taken at its word: many are written so.
+    """
+    known, spread = strengths.expected, strengths.uncertainty
+    if requirement.closeness is not Closeness.EXACT or not known or not spread:
+        return ""
+    words = exact_enough(known, spread, exactness(requirement), unit=line.unit)
+    return f"found {words}" if words else ""
 
 
 def found_valid_from(requirement: Requirement, line: Line, on: date) -> date:

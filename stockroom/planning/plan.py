@@ -49,6 +49,7 @@ def plan(facts: Facts, *, past_day: date | None = None) -> Plan:
         levels=tuple(below),
         guesses=tuple(guesses(facts, netted.wants, shelf)),
         notes=tuple(notes(facts, needs, making, buying, below, shelf)),
+        lower_limits=facts.lower_limits,
     )
     return _shown(whole)
 

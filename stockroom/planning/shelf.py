@@ -112,7 +112,9 @@ class Shelf:
     def _strengths_of(self, number: str, record: Record, on: date) -> Strengths:
         line = self._line(number)
         fades = any(rule.kind is RuleKind.FADES for rule in line.rules)
-        key = (number, on if fades else None, record.opened)
+        # a lower limit falls with the days, even where no rule of fading does
+        daily = fades or record.caution is not None
+        key = (number, on if daily else None, record.opened)
         if key not in self._strengths:
             self._strengths[key] = strengths_on(record, line.rules, on)
         return self._strengths[key]
@@ -158,7 +160,8 @@ class Shelf:
         judged = self.verdict(number, on, purpose, opened)
         if judged.condition not in USABLE:
             when = f" after {judged.good_until}" if judged.good_until else ""
-            return f"{judged.condition}{when} ({judged.decided_by})"
+            warned = f": {judged.warning}" if judged.warning else ""
+            return f"{judged.condition}{when} ({judged.decided_by}){warned}"
         return judge(self.bottle[number], judged)
 
     def ready_on(self, number: str) -> date | None:

@@ -51,6 +51,7 @@ def _past(facts: Facts, bottle: Bottle, judged: Verdict, bookings: tuple[str, ..
     known = expected is not None and line.strength
     if judged.condition is Condition.WATCH and known and _apart(expected, line.strength):
         words += f"; expected {say_strength(line, expected)} (label {line.strength_text})"
+    words += f"; {judged.warning}" if judged.warning else ""
     item = " ".join(filter(None, (line.item, line.strength_text)))
     return PastBottle(bottle.number, item, judged.condition, judged.good_until, words, bookings)
 
@@ -130,16 +131,16 @@ def _two_readings(bottle: Bottle) -> Iterable[str]:
 
 
 def _about_strength(line: Line, judged: Verdict, closest: Closeness) -> Iterable[str]:
-    strengths = judged.strengths
-    if line.form is Form.SOLID or strengths.expected is None or strengths.nominal is None:
+    strengths, likely = judged.strengths, judged.strengths.likely
+    if line.form is Form.SOLID or likely is None or strengths.nominal is None:
         return
-    expected = say_strength(line, strengths.expected)
+    expected = say_strength(line, likely)
     # under a thousandth the figures print alike, and a guess of nothing is noise
-    if abs(strengths.expected / strengths.nominal - 1) > 1e-3 and strengths.found is None:
+    if abs(likely / strengths.nominal - 1) > 1e-3 and strengths.found is None:
         yield f"expected {expected} by its rule of fading from the label: never titrated"
     elif strengths.found is None and closest in (Closeness.CLOSE, Closeness.EXACT):
         yield f"label strength {line.strength_text} taken as it stands: never titrated"
-    elif strengths.found is not None and abs(strengths.expected / strengths.found - 1) > 1e-3:
+    elif strengths.found is not None and abs(likely / strengths.found - 1) > 1e-3:
         found = say_strength(line, strengths.found)
         yield f"expected {expected}, carried forward from {found} found {strengths.found_on}"
 

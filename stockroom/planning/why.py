@@ -153,7 +153,8 @@ def _bottle_lines(facts: Facts, plan: Plan, bottle: Bottle) -> Iterable[str]:
         f"{bottle.number} {line.key}, {left} left in {bottle.place or 'no place'}: "
         f"{judged.condition}{until}"
     )
-    yield f"decided by: {judged.decided_by}"
+    warned = f"; {judged.warning}" if judged.warning else ""
+    yield f"decided by: {judged.decided_by}{warned}"
     if line.form is not Form.SOLID and line.strength:
         yield _three_strengths(facts, bottle, judged, plan.as_at)
     doubt = inherited_doubt(facts, bottle)
@@ -165,10 +166,14 @@ def _bottle_lines(facts: Facts, plan: Plan, bottle: Bottle) -> Iterable[str]:
 def _three_strengths(facts: Facts, bottle: Bottle, judged: Verdict, as_at: date) -> str:
     line, strengths = facts.lines[bottle.line], judged.strengths
     found = f"found {say_strength(line, strengths.found)} on {strengths.found_on}"
-    return (
+    words = (
         f"label {line.strength_text}; {found if strengths.found else 'never found'}; "
-        f"expected {say_strength(line, strengths.expected)} on {as_at}"
+        f"expected {say_strength(line, strengths.likely)} on {as_at}"
     )
+    caution = bottle.record.caution
+    if caution is None:
+        return words
+    return f"{words}; at least {say_strength(line, strengths.expected)}, by {caution.basis}"
 
 
 def _promised(plan: Plan, bottle: Bottle) -> str:

@@ -64,5 +64,6 @@ def will_do(line: Line, requirement: Requirement | None, made: date, wanted: dat
     freshest = requirement.freshest_days
     if freshest is not None and (wanted - made).days > freshest:
         return False
-    strengths = strengths_on(Record(made=made, nominal=line.strength), line.rules, wanted)
-    return not wrong_strength(requirement, strengths.expected, line)
+    record = Record(made=made, nominal=line.strength, caution=line.caution)
+    strengths = strengths_on(record, line.rules, wanted)
+    return not wrong_strength(requirement, strengths.expected, line, strengths.usual)

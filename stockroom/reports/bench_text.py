@@ -4,13 +4,16 @@ from __future__ import annotations
 
 from typing import Any
 
-from stockroom.reports.sheet import PRACTICE
+from stockroom.reports.sheet import PRACTICE, wrap
 from stockroom.reports.words import raised, rounded
 
 
-def bench_text(answer: str, details: tuple[str, ...], *, practice: bool = False) -> str:
+def bench_text(
+    answer: str, details: tuple[str, ...], *, practice: bool = False, width: int = 100
+) -> str:
     """The answer first; then each figure and caution, indented."""
-    lines = [raised(answer), *(f"  {raised(detail)}" for detail in details)]
+    told = (wrap(raised(detail), width, indent=2) for detail in details)
+    lines = [wrap(raised(answer), width), *told]
     return "\n".join([PRACTICE, *lines] if practice else lines)
 
 

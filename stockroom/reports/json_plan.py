@@ -11,6 +11,7 @@ from datetime import date
 from typing import TYPE_CHECKING, Any
 
 from stockroom.findings import Finding
+from stockroom.keeping.caution import LowerLimits
 from stockroom.measure.amounts import BASE_UNIT, PER_UNIT, Kind
 from stockroom.planning.decisions import (
     Answer,
@@ -76,11 +77,14 @@ def buying_json(plan: Plan) -> Data:
     }
 
 
-def ready_json(readiness: Readiness, *, as_at: date, practice: bool) -> Data:
+def ready_json(
+    readiness: Readiness, *, as_at: date, practice: bool, cautious: bool = False
+) -> Data:
     """Whether a booking or a day is ready, and what there is still to do."""
     return {
         "as_at": as_at.isoformat(),
         "practice": practice,
+        "cautious": cautious,
         "ready": readiness.ready,
         "title": readiness.title,
         "on": readiness.on.isoformat(),
@@ -93,9 +97,11 @@ def ready_json(readiness: Readiness, *, as_at: date, practice: bool) -> Data:
     }
 
 
-def why_json(ref: str, reasons: Iterable[str], *, as_at: date, practice: bool) -> Data:
+def why_json(
+    ref: str, reasons: Iterable[str], *, as_at: date, practice: bool, cautious: bool = False
+) -> Data:
     """The reasons behind one line of the plan."""
-    top = {"as_at": as_at.isoformat(), "practice": practice}
+    top = {"as_at": as_at.isoformat(), "practice": practice, "cautious": cautious}
     return top | {"ref": ref, "reasons": list(reasons)}
 
 
@@ -103,8 +109,22 @@ def _top(plan: Plan) -> Data:
     return {
         "as_at": plan.as_at.isoformat(),
         "practice": plan.house.practice,
+        "cautious": plan.lower_limits is not None,
         "period": {"from": plan.start.isoformat(), "to": plan.end.isoformat()},
+    } | _lower_limits(plan.lower_limits)
+
+
+def _lower_limits(limits: LowerLimits | None) -> Data:
+    """By what the bottles of a cautious plan are doubted: a count of each."""
+    if limits is None:
+        return {}
+    counts = {
+        "own_checks": limits.own,
+        "line_checks": limits.line,
+        "uncertainty": limits.doubt,
+        "nothing": limits.nothing,
     }
+    return {"lower_limits": counts}
 
 
 def _measured(micro: int, kind: Kind) -> Data:

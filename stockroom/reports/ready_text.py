@@ -6,22 +6,24 @@ from typing import TYPE_CHECKING
 
 from stockroom.planning.decisions import Answer, CheckToDo, Outcome
 from stockroom.reports.makes_text import makes_by_day
-from stockroom.reports.sheet import PRACTICE, columns, foot, page, section, wrap
+from stockroom.reports.sheet import CAUTIOUS, PRACTICE, columns, foot, page, section, wrap
 from stockroom.reports.words import amount, counted, day, listed, named, raised, source
 
 if TYPE_CHECKING:
     from stockroom.planning.ready import Readiness
 
 
-def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> str:
+def ready_text(
+    readiness: Readiness, width: int, *, practice: bool = False, cautious: bool = False
+) -> str:
     """First line YES or NO with the count of things to do; then what they are.
 
     The answer comes first even in the practice college, which says PRACTICE on
     the same line.
     """
+    about = wrap(readiness.title, width) + (f"\n{CAUTIOUS}" if cautious else "")
     parts = [
-        f"{_verdict(readiness)}{f'   {PRACTICE}' if practice else ''}\n"
-        + wrap(readiness.title, width),
+        f"{_verdict(readiness)}{f'   {PRACTICE}' if practice else ''}\n{about}",
         section(
             "TO DO", [wrap(f"[ ] {each}", width, hang=6, indent=2) for each in readiness.to_do]
         ),
@@ -37,11 +39,12 @@ def ready_text(readiness: Readiness, width: int, *, practice: bool = False) -> s
     return page(parts)
 
 
-def why_text(reasons: tuple[str, ...], *, practice: bool = False) -> str:
+def why_text(reasons: tuple[str, ...], *, practice: bool = False, cautious: bool = False) -> str:
     """The reasons, a line each and never broken: five lines stay five lines."""
     # not wrapped: the promise is five lines, and a terminal folds them itself
     lines = [raised(reason) for reason in reasons]
-    return "\n".join([PRACTICE, *lines] if practice else lines)
+    top = [PRACTICE] * practice + [CAUTIOUS] * cautious
+    return "\n".join([*top, *lines])
 
 
 def check_lines(checks: tuple[CheckToDo, ...], width: int) -> list[str]:

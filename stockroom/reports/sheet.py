@@ -6,12 +6,16 @@ import re
 import textwrap
 from collections.abc import Iterable, Sequence
 
+from stockroom.keeping.caution import LowerLimits
 from stockroom.planning.decisions import Plan
 from stockroom.reports.words import TIED, counted, day, raised
 from stockroom.safety.cautions import HOUSE_LINE
 
 PRACTICE = "PRACTICE"
 """The first line of every text that comes from the invented college."""
+
+CAUTIOUS = "CAUTIOUS, strengths at their lower 95 % limit"
+"""On every text of a plan made on the safe side."""
 
 CAUTION = f'{HOUSE_LINE} A number here is an estimate unless it says "found" and a day.'
 """The house line. the-job section 7, nos. 1 and 16, in our words."""
@@ -49,9 +53,22 @@ def page(parts: Iterable[str]) -> str:
 
 
 def head(plan: Plan, width: int, *about: str) -> str:
-    """The top of a sheet: PRACTICE if it is, the house, and what this sheet is about."""
+    """The top of a sheet: PRACTICE if it is, the house, what it is about, and how cautious."""
     lines = [plan.house.name, *(wrap(line, width) for line in about)]
+    lines += [wrap(safe_side(plan.lower_limits), width)] if plan.lower_limits else []
     return "\n".join([PRACTICE, *lines] if plan.house.practice else lines)
+
+
+def safe_side(limits: LowerLimits) -> str:
+    """How a plan on the safe side doubts its bottles, and how many it cannot."""
+    told = (
+        (limits.own, "by their own checks"),
+        (limits.line, "by the checks of their line"),
+        (limits.doubt, "by the uncertainty of what was found"),
+    )
+    known = [f"{counted(count, 'bottle')} {how}" for count, how in told if count]
+    nothing = f"nothing to be cautious with for {counted(limits.nothing, 'bottle')}"
+    return f"{CAUTIOUS}: {'; '.join([*known, nothing])}, which count as usual."
 
 
 def spanning(plan: Plan) -> str:

@@ -26,10 +26,10 @@ class _Titrated(Protocol):
     def text(self) -> str: ...
 
 
-def titrated_text(found: _Titrated) -> str:
+def titrated_text(found: _Titrated, width: int = 100) -> str:
     """The strength first, then how it comes about, then the caution and the house line."""
     told = (*found.details, f"! {found.reaction.caution}", HOUSE_LINE)
-    return bench_text(found.text, told, practice=found.practice)
+    return bench_text(found.text, told, practice=found.practice, width=width)
 
 
 def titrated_json(found: _Titrated) -> dict[str, Any]:

@@ -21,24 +21,55 @@ from stockroom.planning.why import why as reasons_for
 from stockroom.service.finding import line_among
 from stockroom.store.likeness import unknown
 from stockroom.store.reading import reading
-from stockroom.store.snapshot import facts
-from stockroom.store.snapshot_bottles import bottle_of
+from stockroom.store.snapshot import facts, facts_from
+from stockroom.store.snapshot_bottles import bottle_of, bottles_of
 
 
-def _known(path: Path, as_at: date, start: date | None = None, end: date | None = None) -> Facts:
-    return with_derived(facts(path, as_at, start, end))
+def _known(
+    path: Path,
+    as_at: date,
+    start: date | None = None,
+    end: date | None = None,
+    *,
+    cautious: bool = False,
+) -> Facts:
+    if not cautious:
+        return with_derived(facts(path, as_at, start, end))
+    # loaded here: only a plan on the safe side fits anything
+    from stockroom.planning.cautious import with_caution
+    from stockroom.store.refills import refills_of
+
+    with reading(path) as reader:
+        known = with_derived(facts_from(reader, as_at, start, end))
+        every = bottles_of(reader, as_at, gone=True)
+        return with_caution(known, every, refills_of(reader, as_at))
 
 
 def term_plan(
-    path: Path, *, as_at: date, start: date | None = None, end: date | None = None
+    path: Path,
+    *,
+    as_at: date,
+    start: date | None = None,
+    end: date | None = None,
+    cautious: bool = False,
 ) -> Plan:
-    """The plan from `as_at`, for the term or for the period given."""
-    return plan(_known(path, as_at, start, end))
+    """The plan from `as_at`, for the term or for the period given.
+
+    `cautious`, here and below: every strength at its lower 95 % limit, where there is one.
+    """
+    return plan(_known(path, as_at, start, end, cautious=cautious))
 
 
-def to_make(path: Path, *, as_at: date, start: date | None = None, end: date | None = None) -> Plan:
+def to_make(
+    path: Path,
+    *,
+    as_at: date,
+    start: date | None = None,
+    end: date | None = None,
+    cautious: bool = False,
+) -> Plan:
     """The term's plan with only the makes worked on from `start` to `end`."""
-    whole = term_plan(path, as_at=as_at)
+    whole = term_plan(path, as_at=as_at, cautious=cautious)
     first, last = start or whole.start, end or whole.end
     chosen = tuple(m for m in whole.makes if first <= m.on <= last or _finished(m, first, last))
     return replace(whole, start=first, end=last, makes=chosen)
@@ -48,20 +79,20 @@ def _finished(make: Make, first: date, last: date) -> bool:
     return make.finish_on is not None and first <= make.finish_on <= last
 
 
-def past_on(path: Path, *, as_at: date, on: date) -> Plan:
+def past_on(path: Path, *, as_at: date, on: date, cautious: bool = False) -> Plan:
     """A plan whose `past` is told for the day `on`, from what is known as at `as_at`."""
     # an earlier day is told as it stood then, not with what has happened since
-    known = _known(path, min(as_at, on))
+    known = _known(path, min(as_at, on), cautious=cautious)
     return replace(plan(known, past_day=on), as_at=as_at)
 
 
-def ready(path: Path, ref: str, *, as_at: date) -> Readiness:
+def ready(path: Path, ref: str, *, as_at: date, cautious: bool = False) -> Readiness:
     """Is everything good for a booking number, or for all bookings of a day?
 
     Raises UnknownName for a booking that does not exist, BadDate for a day
     that cannot be read.
     """
-    known = _known(path, as_at)
+    known = _known(path, as_at, cautious=cautious)
     booking = next((b for b in known.bookings if b.number.lower() == ref.strip().lower()), None)
     if booking is not None:
         whole = plan(_reaching(path, known, booking.on))
@@ -88,19 +119,22 @@ def _reaching(path: Path, known: Facts, day: date) -> Facts:
     """The same facts, over a period that holds the day."""
     if day <= known.end:
         return known
-    return _known(path, known.as_at, known.start, day)
+    cautious = known.lower_limits is not None
+    return _known(path, known.as_at, known.start, day, cautious=cautious)
 
 
 def _no_such(known: Facts, ref: str) -> BadInput:
     return unknown("booking", ref, [booking.number for booking in known.bookings])
 
 
-def why(path: Path, ref: str, *, as_at: date, instead: str | None = None) -> tuple[str, ...]:
+def why(
+    path: Path, ref: str, *, as_at: date, instead: str | None = None, cautious: bool = False
+) -> tuple[str, ...]:
     """The reasons behind a need, make, order, bottle or item; or whether a swap may be made.
 
     At most five lines. Raises UnknownName when nothing of that name is known.
     """
-    known = _known(path, as_at)
+    known = _known(path, as_at, cautious=cautious)
     whole = plan(known)
     if instead is not None:
         return _instead(known, whole, ref, instead)

@@ -12,7 +12,7 @@ from hypothesis import strategies as st
 
 from stockroom.chemistry.formula import molar_mass
 from stockroom.chemistry.glassware import ware
-from stockroom.chemistry.reactions import TITRATIONS, titration_of
+from stockroom.chemistry.reactions import TITRATIONS, Titration, titration_of
 from stockroom.chemistry.strength import hypochlorite_from_chlorine
 from stockroom.chemistry.titration import (
     Dilution,
@@ -214,10 +214,8 @@ def test_more_titres_leave_less_doubt() -> None:
     st.sampled_from([5.0, 10.0, 20.0, 25.0]),
 )
 def test_the_two_ways_round_undo_each_other(
-    reaction: object, strength: float, titre: float, aliquot: float
+    held: Titration, strength: float, titre: float, aliquot: float
 ) -> None:
-    assert reaction in TITRATIONS
-    held = TITRATIONS[TITRATIONS.index(reaction)]  # type: ignore[arg-type]
     titres = Titres((titre,), BURETTE)
     sample = found_in_flask(
         held, titres, titrant=Input("titrant", strength), aliquot=measured(aliquot)

@@ -137,7 +137,7 @@ def test_the_words_a_column_takes_are_listed(stockroom: Stockroom) -> None:
 
 def test_flags_are_shown_without_a_kind_of_value(stockroom: Stockroom) -> None:
     for words in (["--help"], ["look", "--help"], ["found", "--help"]):
-        told = stockroom(*words).out
+        told = stockroom(*words).said
         assert "<bool>" not in told
         assert "--help" in told
 
@@ -173,7 +173,7 @@ def test_a_refusal_says_what_would_do(
 
 def test_an_assumed_density_is_owned_up_to(stockroom: Stockroom) -> None:
     words = ("strength", "36 % w/w", "--of", "HCl", "--to", "mol/dm3")
-    assert "give --density off the label" in stockroom(*words).out
-    assert "give --density" not in stockroom(*words, "--density", "1.18").out
-    dense = stockroom("dilute", "1 L", "1 M", "--from", "36 % w/w", "--of", "HCl").out
+    assert "give --density off the label" in stockroom(*words).said
+    assert "give --density" not in stockroom(*words, "--density", "1.18").said
+    dense = stockroom("dilute", "1 L", "1 M", "--from", "36 % w/w", "--of", "HCl").said
     assert "give --density off the label" in dense
