@@ -14,8 +14,6 @@ from stockroom.store.tables import (
     BookingChange,
     Bottle,
     Entry,
-    KeepingRule,
-    Line,
     Parent,
     Term,
 )
@@ -49,12 +47,6 @@ def children(session: Session, bottle: Bottle) -> list[Bottle]:
 def is_there(session: Session, bottle: Bottle) -> bool:
     """Whether the bottle ever came to be: a make or an arrival put right never happened."""
     return any(entry.kind in BEGINNINGS for entry in entries_of(session, bottle))
-
-
-def rule_kinds(session: Session, line: Line) -> set[str]:
-    """The kinds of ageing rule a line carries."""
-    rules = select(KeepingRule.rule).where(KeepingRule.line_id == line.id)
-    return set(session.exec(rules))
 
 
 def changes_of(session: Session, booking: Booking) -> list[BookingChange]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from stockroom.chemistry.densities.labels import density_findings
 from stockroom.chemistry.formula import check_cas, molar_mass
 from stockroom.chemistry.strength import canonical
 from stockroom.errors import BadAmount, NotAllowed
@@ -20,6 +21,8 @@ _MEASURED = {Form.SOLID: Kind.MASS, Form.LIQUID: Kind.VOLUME, Form.SOLUTION: Kin
 _WORDS = (StrengthUnit.PARTS, StrengthUnit.SATURATED)
 # ether at 0.71 is the lightest liquid on a bench, mercury at 13.5 the heaviest; common knowledge
 _LIGHTEST, _HEAVIEST = 0.5, 20
+# labels round, and are read at another temperature; swapped figures are further off than this
+_DENSITY_WITHIN = 0.05
 
 
 def read_substance(desk: Desk, fields: Fields) -> None:
@@ -63,6 +66,7 @@ def read_line(desk: Desk, fields: Fields) -> None:
     fields.at("item")
     new_name(desk, Line, "key", key, what="stock line", typed="lines")
     density = _density_of(fields)
+    _check_density(fields, substance, density)
     strength, unit = _strength_of(fields, substance, density)
     formula = fields.text("formula")
     row = Line(
@@ -92,6 +96,24 @@ def read_line(desk: Desk, fields: Fields) -> None:
 def _density_of(fields: Fields) -> float | None:
     """A density in g/cm³, 0.5 to 20; None when blank. Raises: BadAmount."""
     return fields.within("density_g_cm3", _LIGHTEST, _HEAVIEST, "In g/cm³, and not in kg/m³?")
+
+
+def _check_density(fields: Fields, substance: Substance | None, density: float | None) -> None:
+    """Ask about a density that no solution of that strength has. Raises: BadAmount."""
+    written = fields.text("strength")
+    if density is None or substance is None or not written:
+        return
+    strength = parse_strength(written, where="strength")
+    if strength.unit is not StrengthUnit.WW:
+        return
+    findings = density_findings(
+        substance.substance, strength.value, density, within=_DENSITY_WITHIN
+    )
+    fields.at("density_g_cm3")
+    for finding in findings:
+        raise BadAmount(
+            f"{finding.text}.", "Read the density and the strength off the label again."
+        )
 
 
 def _assay_of(fields: Fields) -> float:

@@ -21,6 +21,7 @@ from stockroom.planning.facts import (
     Requirement,
     Swap,
 )
+from stockroom.store.former_rules import with_former_rules
 from stockroom.store.reading import Reader, Row
 
 Value = TypeVar("Value")
@@ -73,7 +74,9 @@ def _line(
         molar_mass=row["molar_mass"],
         assay=row["assay"],
         density=row["density"],
-        rules=rules,
+        rules=with_former_rules(rules, substance["peroxide_former"], Form(row["form"]))
+        if substance
+        else rules,
         never_kept=row["never_kept"],
         level=row["level"],
         largest_batch=row["largest_batch"],

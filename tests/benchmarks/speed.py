@@ -32,6 +32,20 @@ TABLES = (
 ).split()
 
 
+# a bench sum should answer as fast as a command that reads the store
+COMMANDS = {
+    "past": ["past"],
+    "plan": ["plan"],
+    "plan --cautious": ["plan", "--cautious"],
+    "strength": ["strength", "100 vol", "--of", "hydrogen peroxide", "--to", "mol/dm3"],
+    "weigh": ["weigh", "2 L", "0.200 mol/dm3", "--of", "sodium thiosulfate pentahydrate"],
+    "dilute": ["dilute", "500 cm3", "0.100 mol/dm3", "--from", "B01"],
+    "titrate": ["titrate", "KMnO4 on Fe2+", "24.10", "--titrant", "S08", "--sample", "25 cm3"],
+    "hazards": ["hazards", "sodium hydroxide", "0.40 mol/dm3"],
+    "fades": ["fades", "B01"],
+}
+
+
 def median_seconds(job: Callable[[], object], runs: int = RUNS) -> float:
     """The median time of a job over some runs."""
     times = []
@@ -49,9 +63,10 @@ def start_ups(store: Path) -> None:
         "bare interpreter": [sys.executable, "-c", "pass"],
         "import typer": [sys.executable, "-c", "import typer"],
         "stockroom --help": [sys.executable, "-c", call.format(["--help"])],
-        "stockroom past": [sys.executable, "-c", call.format(["--store", str(store), "past"])],
-        "stockroom plan": [sys.executable, "-c", call.format(["--store", str(store), "plan"])],
     }
+    for name, words in COMMANDS.items():
+        asked = call.format(["--store", str(store), *words])
+        jobs[f"stockroom {name}"] = [sys.executable, "-c", asked]
     times: dict[str, list[float]] = {name: [] for name in jobs}
     for _ in range(RUNS):
         for name, words in jobs.items():

@@ -11,6 +11,7 @@ from stockroom.errors import BadAmount, BadDate, BadInput, StockroomError, Unkno
 from stockroom.measure.amounts import Amount
 from stockroom.planning.facts import Closeness, Facts
 from stockroom.service.database import add_row, new_store, table_columns
+from stockroom.service.house_rules import set_rule
 from stockroom.store.layout import TABLES
 from stockroom.store.snapshot import facts
 
@@ -360,6 +361,21 @@ def test_a_date_read_in_the_tables_settles_the_bottle(tables: Path, tmp_path: Pa
     assert bottle.record.printed.readings == (date(2027, 5, 4),)
 
 
+@pytest.mark.parametrize("spread", ["0 mol/dm3", "0.5 mol/dm3"])
+def test_an_uncertainty_in_the_tables_is_less_than_its_strength(own: Path, spread: str) -> None:
+    cells = {"happened": "2027-01-03", "by": "T1", "event": "found", "bottle": "S02"}
+    with pytest.raises(BadAmount, match=f'uncertainty "{spread}" on 0.099 mol/dm3 cannot be'):
+        add_row(own, "history", cells | {"strength": "0.099 mol/dm3", "uncertainty": spread}, by="")
+
+
+def test_a_test_in_the_tables_cannot_pass_what_its_number_condemns(own: Path) -> None:
+    cells = {"happened": "2027-01-03", "by": "T1", "event": "tested", "bottle": "B29"}
+    with pytest.raises(BadInput, match="B29 cannot have passed: 150 mg/kg, above 100"):
+        add_row(own, "history", cells | {"passed": "yes", "peroxide_mg_kg": "150"}, by="")
+    add_row(own, "history", cells | {"passed": "no", "peroxide_mg_kg": "150"}, by="")
+    add_row(own, "history", cells | {"passed": "yes", "peroxide_mg_kg": "12"}, by="")
+
+
 def test_a_solid_has_no_strength_in_the_tables_either(tables: Path) -> None:
     change(tables, "history", "found,S01", "found,B01")
     assert "has no strength to find" in refused(tables)
@@ -381,40 +397,68 @@ def test_a_solid_has_no_strength_in_the_tables_either(tables: Path) -> None:
             {"rule": "fades", "order": "1", "rate": "0.1", "rate_per": "day", "ea_kj_mol": "60000"},
             "is not between 0 and 400",
         ),
+        (
+            {"rule": "fades", "order": "1", "rate": "0.1", "rate_per": "day", "ea_kj_mol": "60"},
+            "ea_kj_mol 60: from how many °C",
+        ),
+        (
+            {"rule": "life", "lasts": "9 d", "factor_per_10c": "2"},
+            "factor_per_10c 2: from how many °C",
+        ),
+        (
+            {"rule": "life", "lasts": "9 d", "factor_per_10c": "0", "at_c": "20"},
+            "factor_per_10c 0 is not between",
+        ),
+        (
+            {"rule": "fades", "order": "1", "rate": "0.1", "rate_per": "fortnight"},
+            'rate_per "fortnight" is not a time',
+        ),
+        ({"rule": "fades", "order": "1", "rate_per": "day"}, "rate of order 1 is blank"),
+        (
+            {"rule": "fades", "named_law": "hypochlorite"},
+            "is of bleach, and hydrogen peroxide 100 vol is none",
+        ),
     ],
 )
 def test_a_rule_that_says_no_law_is_refused(own: Path, cells: dict[str, str], told: str) -> None:
-    from stockroom.errors import StockroomError
-    from stockroom.service.database import add_row
-
     line = {"line": "hydrogen peroxide 100 vol"}
     with pytest.raises(StockroomError, match=told):
         add_row(own, "keeping", line | cells, by="T1")
 
 
 def test_a_named_law_counts_in_mol_per_dm3_alone(own: Path) -> None:
-    from stockroom.errors import BadInput
-    from stockroom.service.database import add_row
-
     cells = {"line": "starch 0.5 % w/v", "rule": "fades", "named_law": "hypochlorite"}
     with pytest.raises(BadInput, match="counts in mol/dm3, and starch"):
         add_row(own, "keeping", cells, by="T1")
 
 
+def test_a_named_law_takes_no_figures_beside_its_own(own: Path) -> None:
+    cells = {"line": "sodium hypochlorite 12 % w/v", "rule": "fades", "named_law": "hypochlorite"}
+    with pytest.raises(BadInput, match="leave rate, factor_per_10c out"):
+        add_row(own, "keeping", cells | {"rate": "2", "factor_per_10c": "3"}, by="T1")
+
+
+def test_a_rate_of_one_order_is_no_rate_of_another(own: Path) -> None:
+    with pytest.raises(BadInput, match=r"order 0: at what rate.*is one of order 1"):
+        set_rule(
+            own, "hydrogen peroxide 100 vol", "fades", {"order": "0"},
+            why="x", today=date(2027, 1, 4), by="T1",
+        )  # fmt: skip
+
+
 @pytest.mark.parametrize(
     ("cells", "told"),
     [
-        ({"kind": "beaker", "size_cm3": "100"}, 'No kind of glassware "beaker"'),
+        ({"kind": "beaker", "size_cm3": "100"}, 'kind "beaker" is not known'),
         ({"kind": "flask"}, "size_cm3 of X is blank or 0"),
-        ({"kind": "flask", "size_cm3": "100", "class": "C"}, 'class "C" of X is not A, AS or B'),
+        ({"kind": "flask", "size_cm3": "100", "class": "C"}, "class 'C' is not A, AS or B"),
+        ({"kind": "burette", "size_cm3": "50", "step_cm3": "50"}, "not below its size of 50 cm³"),
+        ({"kind": "flask", "size_cm3": "100", "away_to": "2027-02-01"}, "away_from is blank"),
     ],
 )
 def test_glassware_that_says_nothing_is_refused(
     own: Path, cells: dict[str, str], told: str
 ) -> None:
-    from stockroom.errors import StockroomError
-    from stockroom.service.database import add_row
-
     with pytest.raises(StockroomError, match=told):
         add_row(own, "glassware", {"glass": "X"} | cells, by="T1")
 
@@ -440,8 +484,19 @@ def test_glassware_that_says_nothing_is_refused(
     ],
 )
 def test_a_limit_that_says_nothing_is_refused(own: Path, cells: dict[str, str], told: str) -> None:
-    from stockroom.errors import StockroomError
-    from stockroom.service.database import add_row
-
     with pytest.raises(StockroomError, match=told):
         add_row(own, "hazards", {"substance": "sodium hydroxide"} | cells, by="T1")
+
+
+def test_a_density_no_such_solution_has_is_asked_about(own: Path) -> None:
+    from stockroom.errors import BadAmount
+
+    cells = {
+        "item": "fuming acid",
+        "strength": "37 % w/w",
+        "substance": "hydrochloric acid",
+        "form": "liquid",
+    }
+    with pytest.raises(BadAmount, match=r"37 % w/w weighs 1\.18.* not 1\.81"):
+        add_row(own, "lines", cells | {"density_g_cm3": "1.81"}, by="T1")
+    assert "fuming acid" in add_row(own, "lines", cells | {"density_g_cm3": "1.19"}, by="T1").text
