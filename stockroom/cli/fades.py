@@ -19,7 +19,9 @@ What = Annotated[
 ]
 Below = Annotated[
     list[str] | None,
-    typer.Option(metavar="STRENGTH", help="When is it below this? May be repeated."),
+    typer.Option(
+        metavar="STRENGTH", help="When is it below this? Of a bottle, as often as you like."
+    ),
 ]
 Order = Annotated[str | None, typer.Option(metavar="N", help="Of a typed law: 0, 1 or 2.")]
 Rate = Annotated[
@@ -60,8 +62,10 @@ def fades(
     if order is None and rate is None and not law:
         given = [name for name, figure in figures.items() if figure is not None]
         if given:
+            many = "wants" if len(given) == 1 else "want"
             raise BadInput(
-                f"{', '.join(given)} want a law: of which order?", "Add --order and --rate."
+                f"{', '.join(given)} {many} a law: of which order?",
+                "Add --order and --rate; of a bottle ask --as-at the day.",
             )
         _bottle(shared, what, below or [])
         return

@@ -31,11 +31,18 @@ DayFirst = Annotated[
 Heading = Annotated[
     str, typer.Option(metavar="HEADING", help="Which temperature, where there are several.")
 ]
-From = Annotated[str | None, typer.Option("--from", metavar="DATE", help="Look from this day on.")]
-To = Annotated[str | None, typer.Option("--to", metavar="DATE", help="Look up to this day.")]
+From = Annotated[str | None, typer.Option("--from", metavar="DATE", help="From this day on.")]
+To = Annotated[str | None, typer.Option("--to", metavar="DATE", help="Up to this day, included.")]
 Energy = Annotated[
     str | None, typer.Option(metavar="KJ_MOL", help="For the mean kinetic one; else 83.144.")
 ]
+TakeBack = Annotated[
+    bool,
+    typer.Option(
+        "--take-back", help="These days' readings are another place's: out of use, kept on record."
+    ),
+]
+Why = Annotated[str, typer.Option("--why", help="With --take-back: what was wrong.")]
 
 
 def logger(
@@ -50,6 +57,8 @@ def logger(
     first: From = None,
     last: To = None,
     ea: Energy = None,
+    take_back: TakeBack = False,
+    why: Why = "",
 ) -> None:
     """How warm a place really was: bring a logger's table in, or look at what is held.
 
@@ -60,6 +69,13 @@ def logger(
     from stockroom.service.logger import Meant
 
     shared, energy = of(ctx), number_or_none(ea, "--ea")
+    if take_back:
+        if file is not None:
+            raise BadInput(f"--take-back goes by days, and not by {file}.", "Leave the file out.")
+        _take_back(shared, place, first, last, why)
+        return
+    if why:
+        raise BadInput(f"--why {why!r} goes with --take-back.", "Leave --why out.")
     if file is None:
         _look(shared, place, first, last, energy)
         return
@@ -78,6 +94,20 @@ def _look(
 
     start, end = day_or_none(first, "--from"), day_or_none(last, "--to")
     _show(shared, held(shared.path, place, start=start, end=end, energy=energy))
+
+
+def _take_back(shared: Shared, place: str, first: str | None, last: str | None, why: str) -> None:
+    from stockroom.service.logger import taken_back
+
+    start, end = day_or_none(first, "--from"), day_or_none(last, "--to")
+    if start is None or end is None:
+        raise BadInput(
+            f"From which day to which are the readings of {place} taken back?",
+            f"Add --from and --to. What is held, and who brought it: stockroom logger {place}",
+        )
+    today, by = shared.today, shared.initials
+    _show(shared, taken_back(shared.path, place, start, end, why=why, today=today, by=by))
+    suggest(f"stockroom logger {place}")
 
 
 def _bring_in(shared: Shared, place: str, file: Path, meant: Meant, energy: float | None) -> None:

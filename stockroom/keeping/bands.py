@@ -28,6 +28,22 @@ def band_faults(rules: Iterable[Rule], unit: str) -> list[str]:
     return told
 
 
+def overlapping(rule: Rule, rules: Iterable[Rule]) -> list[Rule]:
+    """Those of a line's other rules that say the same kind of thing of the same bottles.
+
+    The earlier of two dates counts, so a longer life beside a shorter one never does.
+    """
+    alike = ("kind", "origin", "purpose")
+    return [
+        other
+        for other in rules
+        if other != rule
+        and all(getattr(other, name) == getattr(rule, name) for name in alike)
+        and max(_above(rule), _above(other)) < min(_upto(rule), _upto(other))
+        and max(_warmer(rule), _warmer(other)) < min(_colder(rule), _colder(other))
+    ]
+
+
 def _alike(rules: Iterable[Rule]) -> dict[tuple[object, ...], list[Rule]]:
     found: dict[tuple[object, ...], list[Rule]] = {}
     for rule in rules:
@@ -55,6 +71,14 @@ def _above(rule: Rule) -> float:
 
 def _upto(rule: Rule) -> float:
     return math.inf if rule.upto is None else rule.upto
+
+
+def _warmer(rule: Rule) -> float:
+    return -math.inf if rule.warmer_than is None else rule.warmer_than
+
+
+def _colder(rule: Rule) -> float:
+    return math.inf if rule.colder_than is None else rule.colder_than
 
 
 def _said(low: float, high: float, unit: str) -> str:

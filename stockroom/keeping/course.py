@@ -80,7 +80,8 @@ class Course:
 class Fading:
     """A bottle and its course. `shown` is the label's unit and how many one of `unit` makes.
 
-    `cited` is where the law's figures come from.
+    `label` is the strength as it stands on the label, "" for none; `cited` is where the
+    law's figures come from.
     """
 
     bottle: str
@@ -89,6 +90,7 @@ class Fading:
     shown: tuple[str, float]
     on: date
     course: Course
+    label: str = ""
     cited: str = ""
     practice: bool = False
 

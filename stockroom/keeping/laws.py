@@ -23,6 +23,10 @@ DAYS_PER_MONTH = 30.4375
 NAMED = (hypochlorite.NAME,)
 """The laws that bring their own figures."""
 
+FACTORS = (1.0, 20.0)
+"""What a typed factor per 10 °C may be: nothing keeps better for standing warm, and 20 at room
+temperature is an energy of over 200 kJ/mol. Ours, no source."""
+
 # a century is never: what lasts longer is not dated
 _NEVER_DAYS = 36525
 

@@ -12,7 +12,7 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from datetime import date, timedelta
 
-from stockroom.errors import MissingFigure, NotAllowed
+from stockroom.errors import BadAmount, MissingFigure, NotAllowed
 from stockroom.findings import Finding
 from stockroom.keeping.arrhenius import R, kelvin
 from stockroom.keeping.fits import (
@@ -167,6 +167,13 @@ def monthly_loss(start: float, law: Law) -> float:
 
 
 def _heights(series: Series, order: int) -> tuple[float, ...]:
+    for on, strength in zip(series.days, series.strengths, strict=True):
+        if order and strength <= 0:
+            raise BadAmount(
+                f"{series.bottle} was found at {strength:g} on {on}, and no law of order {order}"
+                " comes to nothing.",
+                "A slip? stockroom put-right. Else ask with --order 0.",
+            )
     return tuple(straightened(strength, order) for strength in series.strengths)
 
 
@@ -178,8 +185,13 @@ def _check_days(series: Series) -> None:
         return
     raise MissingFigure(
         f"{_so_far(series)}; a rate with its limits wants {ENOUGH_DAYS} different days.",
-        f"Titrate {series.bottle} once more after {_next_check(series)}.",
+        f"Titrate {series.bottle} {_more(series)} {_next_check(series)}.",
     )
+
+
+def _more(series: Series) -> str:
+    wanted = ENOUGH_DAYS - series.distinct
+    return "once more after" if wanted < 2 else f"on {wanted} more days, the first after"
 
 
 def _so_far(series: Series) -> str:

@@ -14,7 +14,7 @@ _BOTH = re.compile(r"date[\s/_,-]*(?:and\s+)?time|time[\s_-]*stamp|datum[\s/_,-]
 _DATE = re.compile(r"\b(?:date|datum|day)\b")
 _TIME = re.compile(r"\b(?:time|uhrzeit|zeit|hour|logged|recorded|when)\b")
 _TEMPERATURE = re.compile(
-    r"temp|celsius|fahrenheit|°\s*[cf]\b|^t$|^[cf]$|\bdeg(?:rees?)?\.?\s*[cf]\b"
+    r"temp|celsius|fahrenheit|°\s*[cf]\b|^t$|^[cf]$|\bdeg(?:rees?)?\.?\s*[cf]\b|[(\[]\s*[cf]\s*[)\]]"
 )
 _NOT_ITSELF = re.compile(r"alarm|limit|\b(?:high|low|min|max|set|dew|wet)\b|dew|minimum|maximum")
 _FAHRENHEIT = re.compile(r"fahrenheit|°\s*f\b|\bdeg(?:rees?)?\.?\s*f\b|[(\[/_,]\s*f\b|^f$|\sf$")
@@ -55,7 +55,8 @@ def columns_of(table: list[list[str]], column: str = "") -> Columns:
         if any(map(_dated, cells)) and _headless(cells) is not None:
             break
         moment = _moment_in(names)
-        if moment and any(_TEMPERATURE.search(name) for name in names):
+        asked = bool(column) and any(column.casefold().strip() in name for name in names)
+        if moment and (asked or any(_TEMPERATURE.search(name) for name in names)):
             at = _temperature_in(cells, names, column)
             return Columns(moment, at, row + 1, len(cells), cells[at], scale_of(cells[at]))
     return _without_headings(table, column)
@@ -102,10 +103,13 @@ def _without_headings(table: list[list[str]], column: str) -> Columns:
     first = table[0]
     moment = _headless(first)
     if moment is None or column:
+        # what a program writes about itself has fewer cells than the headings
+        widest = max(table[:_PREAMBLE], key=len)
         raise BadInput(
-            f"I find no headings for time and temperature; the first row is"
-            f" {quote(' | '.join(first))}.",
-            'Put "time" and "temperature °C" over the two columns.',
+            f"I find no headings for time and temperature; the nearest is"
+            f" {quote(' | '.join(widest))}.",
+            "Name the temperature's heading with --column, or write"
+            ' "time" and "temperature °C" over the two columns.',
         )
     return Columns(moment, moment[-1] + 1, 0, len(first))
 

@@ -7,8 +7,10 @@ from stockroom.measure.formats import format_number, format_strength, unit_mark
 from stockroom.measure.periods import format_period
 
 
-def rule_in_words(rule: Rule, unit: str) -> str:
+def rule_in_words(rule: Rule, unit: str, label: tuple[str, float] | None = None) -> str:
     """One rule on one line; `unit` is the line's, "mol/dm3" or "g/dm3".
+
+    With `label`, a unit and how many of it one `unit` makes, bands are told in that.
 
     >>> from stockroom.measure.periods import Period
     >>> rule_in_words(Rule(RuleKind.LIFE, Period(28, "days")), "mol/dm3")
@@ -17,7 +19,7 @@ def rule_in_words(rule: Rule, unit: str) -> str:
     words = [f"{rule.kind}: {_what(rule, unit)}" if _what(rule, unit) else str(rule.kind)]
     if rule.purpose is not Purpose.ANY:
         words.append(f"for {rule.purpose} use")
-    words += [part for part in (_band(rule, unit), _place(rule)) if part]
+    words += [part for part in (_band(rule, *(label or (unit, 1.0))), _place(rule)) if part]
     if rule.safety:
         words.append("a safety date")
     return ", ".join(words)
@@ -48,9 +50,9 @@ def _law(law: Law, unit: str) -> str:
     return words
 
 
-def _band(rule: Rule, unit: str) -> str:
-    above = f"above {format_strength(rule.above, unit)}" if rule.above is not None else ""
-    upto = f"up to {format_strength(rule.upto, unit)}" if rule.upto is not None else ""
+def _band(rule: Rule, unit: str, one: float) -> str:
+    above = f"above {format_strength(rule.above * one, unit)}" if rule.above is not None else ""
+    upto = f"up to {format_strength(rule.upto * one, unit)}" if rule.upto is not None else ""
     return " ".join(part for part in (above, upto) if part)
 
 

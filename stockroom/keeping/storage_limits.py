@@ -40,6 +40,8 @@ class Warmth:
     `place` is its short name, `title` its long one; `below` and `above` are the hours
     outside `limits`, the kind of place its temperature makes it. `added` and `already` count a
     file's readings and `told` is what was done to the file; empty when only looking.
+    `taken` is what was just taken back, in words, and `noted` what was brought in and
+    taken back before, a line each.
     """
 
     place: str
@@ -53,6 +55,8 @@ class Warmth:
     added: int | None = None
     already: int | None = None
     told: tuple[str, ...] = ()
+    taken: str = ""
+    noted: tuple[str, ...] = ()
     practice: bool = False
 
 

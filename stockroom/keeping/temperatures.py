@@ -24,8 +24,9 @@ from stockroom.keeping.arrhenius import MKT_EA, Response, kinetic_response, temp
 
 MINUTES_PER_DAY = 1440
 
-GAP_STEPS, GAP_MINUTES = 3, MINUTES_PER_DAY
-"""Readings further apart than 3 usual steps and than a day leave a gap. Ours, no source."""
+GAP_STEPS, GAP_MINUTES, GAP_MOST = 3, MINUTES_PER_DAY, 7 * MINUTES_PER_DAY
+"""Readings further apart than 3 usual steps and than a day leave a gap, and further apart than
+a week always. Ours, no source."""
 
 # a life split over two stays at one temperature must come out a whole one
 _SLACK = 1e-9
@@ -203,10 +204,10 @@ class TemperatureLog:
 
 
 def gap_limit(minutes: tuple[int, ...]) -> int:
-    """The longest time between two readings that is no gap: 3 usual steps, or a day if longer."""
+    """The longest time between two readings that is no gap: 3 usual steps, from a day to a week."""
     steps = sorted(map(operator.sub, minutes[1:], minutes))
     usual = steps[len(steps) // 2] if steps else 0
-    return max(GAP_STEPS * usual, GAP_MINUTES)
+    return min(max(GAP_STEPS * usual, GAP_MINUTES), GAP_MOST)
 
 
 @dataclass(frozen=True, slots=True)

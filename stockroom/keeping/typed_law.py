@@ -12,6 +12,7 @@ from stockroom.keeping import hypochlorite
 from stockroom.keeping.arrhenius import ea_of, q10_of
 from stockroom.keeping.laws import (
     DAYS_PER_MONTH,
+    FACTORS,
     Kinetics,
     check_law,
     days_to_part,
@@ -21,6 +22,7 @@ from stockroom.keeping.laws import (
     strength_after,
     warmth,
 )
+from stockroom.keeping.logger_file import COLDEST_C, WARMEST_C
 from stockroom.keeping.rules import Law
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.reading import NUMBER, read_number, tidy
@@ -37,6 +39,8 @@ DAYS_PER = {
 }
 _SHORT = {"s": "second", "sec": "second", "min": "minute", "h": "hour", "hr": "hour"}
 _SHORT |= {"d": "day", "wk": "week", "mo": "month", "y": "year", "yr": "year"}
+# beyond any unit's: a slip in the zeros, and too long to print
+_FASTEST = 1e15
 _DURATION = re.compile(rf"(?P<number>{NUMBER}) ?(?P<unit>[a-z]+)\.?", re.IGNORECASE)
 # g/mol, so that 12 % w/v of it can be told in mol/dm³; source: formula mass, see `formula.py`
 _NAOCL = 74.442
@@ -120,6 +124,7 @@ def fading_sum(
 
 def law_typed(typed: Typed) -> Law:
     """The law of figures as typed, its rate turned to days. Raises: BadInput, BadAmount."""
+    _check_places(typed)
     if typed.named:
         return _named(typed)
     if typed.order is None or typed.rate is None:
@@ -133,12 +138,30 @@ def law_typed(typed: Typed) -> Law:
             f"The rate at {typed.at_c or 0:g} °C says nothing of {typed.to_c:g} °C by itself.",
             "Add --ea in kJ/mol, or --factor per 10 °C.",
         )
+    least, most = FACTORS
+    if typed.factor is not None and not least <= typed.factor <= most:
+        raise BadAmount(
+            f"A factor of {typed.factor:g} per 10 °C is not between {least:g} and {most:g}.",
+            "How many times faster in a place 10 °C warmer, as 2.5?",
+        )
+    if typed.rate > 0 and not 1 / _FASTEST <= typed.rate <= _FASTEST:
+        raise BadAmount(f"A rate of {typed.rate:g} is no figure of a law.", "Check its zeros.")
     rate = typed.rate / DAYS_PER[_unit(typed.per)]
     return check_law(Law(typed.order, rate, typed.at_c, typed.factor, typed.energy))
 
 
+def _check_places(typed: Typed) -> None:
+    for name, figure in (("--at", typed.at_c), ("--to", typed.to_c)):
+        if figure is not None and not COLDEST_C <= figure <= WARMEST_C:
+            raise BadAmount(
+                f"{name} {figure:g} °C is not between {COLDEST_C:g} and {WARMEST_C:g}.",
+                "In °C, and not in kelvin or °F?",
+            )
+
+
 def _named(typed: Typed) -> Law:
     given = {"--order": typed.order, "--rate": typed.rate, "--ea": typed.energy}
+    law = check_law(Law(2, 0.0, typed.at_c, named=typed.named.lower()))
     extra = [name for name, figure in (given | {"--factor": typed.factor}).items() if figure]
     if extra:
         raise BadInput(
@@ -147,7 +170,7 @@ def _named(typed: Typed) -> Law:
         )
     if typed.at_c is None and typed.to_c is None:
         raise BadInput("At how many °C does it stand?", "Add --at, as --at 20.")
-    return check_law(Law(2, 0.0, typed.at_c, named=typed.named.lower()))
+    return law
 
 
 def _unit(name: str) -> str:

@@ -270,7 +270,9 @@ def _is_weak(strengths: Strengths) -> bool:
 def _weak_words(record: Record, strengths: Strengths, on: date) -> str:
     assert strengths.expected is not None and strengths.nominal
     part = 100 * strengths.expected / strengths.nominal
-    words = f"expected at {part:.0f} % of its label strength"
+    # on the safe side it is a limit, and not what is expected
+    known = "expected at" if strengths.usual is None else "to be counted on for only"
+    words = f"{known} {part:.0f} % of its label strength"
     logged = logged_to(record, on)
     return f"{words}, temperatures as logged to {_day(logged)}" if logged else words
 

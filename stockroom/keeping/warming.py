@@ -14,6 +14,9 @@ def where_it_stood(record: Record, on: date) -> str:
     """How warm it stood, in words: logged, where a logger wrote, else its place's own °C."""
     here, logged = temperature_on(record, on), logged_to(record, on)
     place = "" if here is None else f"at {here:g} °C"
+    warmths = {each.temperature_c for each in stretches(record, on)[1:] if each.first < each.last}
+    if place and len(warmths | {here}) > 1:
+        place = f"where it stood, now {place}"
     # the days to come are not logged yet, and the reader must see what was
     told = f"as logged to {logged.isoformat()}" if logged else ""
     return ", else ".join(part for part in (told, place) if part)

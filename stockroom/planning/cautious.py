@@ -12,6 +12,7 @@ from dataclasses import replace
 from datetime import date
 
 from stockroom.keeping.caution import Basis, LowerLimits
+from stockroom.keeping.record import Record
 from stockroom.keeping.safe_side import SafeSide, Witness, safe_side
 from stockroom.planning.facts import Bottle, Facts, Form, Line
 from stockroom.planning.numbers import natural
@@ -25,8 +26,11 @@ def with_caution(
     `every` is every bottle there ever was, gone ones too: their checks teach. `topped_up`
     is the last day each was, by number.
     """
-    taught = witnesses(every, topped_up or {})
-    sides = {key: _side(facts, line, taught.get(key, [])) for key, line in facts.lines.items()}
+    taught, held = witnesses(every, topped_up or {}), _by_line(facts.bottles)
+    sides = {
+        key: _side(line, held.get(key, {}), taught.get(key, []), facts.as_at)
+        for key, line in facts.lines.items()
+    }
     bottles = tuple(_doubted(bottle, sides[bottle.line]) for bottle in facts.bottles)
     lines = {key: replace(line, caution=sides[key].fresh) for key, line in facts.lines.items()}
     counted = [bottle for bottle in bottles if bottle.left and has_strength(lines[bottle.line])]
@@ -49,11 +53,15 @@ def has_strength(line: Line) -> bool:
     return line.strength is not None and line.form is not Form.SOLID
 
 
-def _side(facts: Facts, line: Line, taught: list[Witness]) -> SafeSide:
-    if not has_strength(line):
-        return SafeSide({})
-    held = {bottle.number: bottle.record for bottle in facts.bottles if bottle.line == line.key}
-    return safe_side(line.rules, held, taught, facts.as_at)
+def _by_line(bottles: Iterable[Bottle]) -> dict[str, dict[str, Record]]:
+    found: dict[str, dict[str, Record]] = {}
+    for bottle in bottles:
+        found.setdefault(bottle.line, {})[bottle.number] = bottle.record
+    return found
+
+
+def _side(line: Line, held: dict[str, Record], taught: list[Witness], as_at: date) -> SafeSide:
+    return safe_side(line.rules, held, taught, as_at) if has_strength(line) else SafeSide({})
 
 
 def _doubted(bottle: Bottle, side: SafeSide) -> Bottle:

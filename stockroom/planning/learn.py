@@ -9,6 +9,7 @@ from datetime import date
 
 from stockroom.errors import MissingFigure
 from stockroom.findings import Finding
+from stockroom.keeping.arrhenius import Response, q10_of
 from stockroom.keeping.caution import Basis, Caution, Lower
 from stockroom.keeping.fits import reach_of, strength_at
 from stockroom.keeping.laws import first_below, response_of
@@ -67,7 +68,8 @@ class Lesson:
     `start` is the strength a loss is a part of: the label's, else what the checks say it
     began at. `decides` is the bottle that falls below `lowest` first. `own_scatter` is the
     same life and bottle when separate lines each keep their own scatter. `at_c` is
-    the °C the rate is for, None when not known.
+    the °C the rate is for, None when not known. `by_law` is true when ages were counted
+    at the °C of the law, and not by the calendar.
     """
 
     about: str
@@ -82,6 +84,7 @@ class Lesson:
     other_lives: tuple[tuple[float, float], ...]
     own_scatter: tuple[str, float] | None
     at_c: float | None
+    by_law: bool
     bottles: tuple[Taught, ...]
     left_out: tuple[Finding, ...]
 
@@ -94,6 +97,11 @@ class Lesson:
     def checked_to(self) -> float:
         """The greatest age, in days, at which anything was found."""
         return max(age for one in self.learnt.series for age in one.ages)
+
+    @property
+    def checks(self) -> int:
+        """How many strengths it was learnt from."""
+        return sum(len(one.days) for one in self.learnt.series)
 
     def monthly(self, rate: float) -> float:
         """Per cent of `start` lost in the first month at a rate; 0 for none or a gain."""
@@ -125,6 +133,7 @@ def lesson(line: Line, witnesses: Iterable[Witness], question: Question) -> Less
         other_lives=tuple((p, learnt.life(p * start)[1]) for p in PARTS if p != question.part),
         own_scatter=_own_scatter(learnt, lowest),
         at_c=_temperature(learnt, records),
+        by_law=_response(learnt) is not None,
         bottles=tuple(_taught(learnt, records, question.as_at, lowest)),
         left_out=(*learnt.left_out, *left_out),
     )
@@ -143,7 +152,20 @@ def fading_cells(found: Lesson) -> dict[str, str]:
         "at_c": "" if found.at_c is None else f"{found.at_c:g}",
         "ea_kj_mol": "" if law.ea_kj_mol is None else f"{law.ea_kj_mol:.4g}",
     }
-    return {column: cell for column, cell in (cells | _which(found)).items() if cell}
+    told = {column: cell for column, cell in (cells | _which(found)).items() if cell}
+    own = found.learnt.rule.law
+    # unsaid, the °C of the old rate would stay beside the new one
+    stale = found.at_c is None and own is not None and own.at_c is not None
+    return told | ({"at_c": ""} if stale else {})
+
+
+def in_short(found: Lesson) -> str:
+    """What was learnt, for the record: "4 checks: 1.1 % a month at 20 °C, 0.69 to 1.6"."""
+    rates = (found.rate.low, found.rate.value, found.rate.high)
+    low, value, high = (format_number(found.monthly(rate), 2) for rate in rates)
+    checks = f"{found.checks} check{'' if found.checks == 1 else 's'}"
+    at = "" if found.at_c is None else f" at {found.at_c:g} °C"
+    return f"{checks}: {value} % a month{at}, {low} to {high}"
 
 
 def life_cells(found: Lesson) -> dict[str, str]:
@@ -153,8 +175,22 @@ def life_cells(found: Lesson) -> dict[str, str]:
     """
     if not 1 <= found.life < math.inf or found.question.since:
         return {}
+    places = {column: cell for column, cell in _which(found).items() if column.endswith("_c")}
     # rounded down: on its last day the limit must still hold
-    return {"lasts": f"{math.floor(found.life)} d", "counted_from": found.origin.value}
+    lasts = {"lasts": f"{math.floor(found.life)} d", "counted_from": found.origin.value}
+    return lasts | _life_warmth(found) | places
+
+
+def _life_warmth(found: Lesson) -> dict[str, str]:
+    """The °C the life is for, with how much faster it is over in the warm: a factor only."""
+    law = found.learnt.law(found.rate.value)
+    if not found.by_law or found.at_c is None:
+        return {}
+    factor = law.factor_per_10c
+    if factor is None and law.ea_kj_mol is not None:
+        factor = q10_of(law.ea_kj_mol, found.at_c)
+    cells = {"at_c": f"{found.at_c:g}", "factor_per_10c": format_number(factor or 1.0, 3)}
+    return cells if factor else {}
 
 
 def _which(found: Lesson) -> dict[str, str]:
@@ -162,7 +198,8 @@ def _which(found: Lesson) -> dict[str, str]:
     rule, unit = found.learnt.rule, found.line.unit
     bounds = {"stronger_than": rule.above, "up_to_strength": rule.upto}
     places = {"colder_than_c": rule.colder_than, "warmer_than_c": rule.warmer_than}
-    cells = {column: f"{x:.10g} {unit}" for column, x in bounds.items() if x is not None}
+    # seven figures are as near as a rule tells two strengths apart
+    cells = {column: f"{x:.7g} {unit}" for column, x in bounds.items() if x is not None}
     return cells | {column: f"{x:g}" for column, x in places.items() if x is not None}
 
 
@@ -218,8 +255,12 @@ def _origin(learnt: Learnt, record: Record) -> Origin:
     return learnt.rule.origin
 
 
+def _response(learnt: Learnt) -> Response | None:
+    return response_of(learnt.rule.law) if learnt.rule.law else None
+
+
 def _temperature(learnt: Learnt, records: dict[str, Record]) -> float | None:
-    response = response_of(learnt.rule.law) if learnt.rule.law else None
+    response = _response(learnt)
     if response:
         return response.at_c
     stood = {

@@ -16,6 +16,8 @@ from stockroom.reports.words import day, raised
 _ORDERS = {0: "zero order", 1: "first order", 2: "second order"}
 # a rate counted in these says nothing of moments: times are then told in days
 _LONG = ("week", "month", "year")
+# as with a bottle, what lasts longer is not counted
+_CENTURY = 36525
 
 
 def fades_sum_text(found: FadingSum, width: int) -> str:
@@ -88,6 +90,10 @@ def _exactly(found: FadingSum, days: float) -> str:
 
 
 def _told(found: FadingSum, days: float, say: Any) -> str:
+    if days > _CENTURY:
+        return "more than a hundred years"
+    if 0 < days < DAYS_PER["second"]:
+        return "less than a second"
     unit = "day" if found.per in _LONG else found.per
     told = say(days / DAYS_PER[unit])
     return f"{told} {unit}{'' if told == '1' else 's'}"

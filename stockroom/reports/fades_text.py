@@ -9,6 +9,7 @@ from datetime import date
 from typing import Any
 
 from stockroom.keeping.course import Course, Fading, Mark, Stood
+from stockroom.keeping.laws import response_of
 from stockroom.keeping.rule_words import rule_in_words
 from stockroom.measure.formats import format_number, unit_mark
 from stockroom.reports.sheet import CAUTION, PRACTICE, columns, wrap
@@ -29,9 +30,16 @@ class Scale:
     def __init__(self, unit: str, one: float) -> None:
         self.unit, self.one = unit_mark(unit), one
 
-    def expected(self, strength: float) -> str:
-        """A strength nobody found, to two figures."""
-        return f"{two(strength * self.one)}{TIED}{self.unit}"
+    def expected(self, strength: float, start: float | None = None) -> str:
+        """A strength nobody found, to two figures.
+
+        To more where two would read stronger than the `start` it has come from.
+        """
+        rounded = float(f"{strength * self.one:.1e}")
+        if start is None or rounded <= start * self.one:
+            return f"{two(strength * self.one)}{TIED}{self.unit}"
+        over = float(f"{strength * self.one:.2e}") > start * self.one
+        return self.written(strength, 4 if over else 3)
 
     def written(self, strength: float, figures: int = 4) -> str:
         """A strength from a label or a titration."""
@@ -42,8 +50,8 @@ def fades_text(of: Fading, width: int) -> str:
     """The course of one bottle under its name, one thing a row."""
     found, scale = of.course, Scale(*of.shown)
     rows = [
-        *_strengths(found, scale),
-        ("law", _law(found, of.unit)),
+        *_strengths(of, scale),
+        *_law(of),
         *([("figures", of.cited)] if of.cited else []),
         *_warmth(found),
         *_lives(found),
@@ -55,9 +63,10 @@ def fades_text(of: Fading, width: int) -> str:
     return "\n".join([PRACTICE, *lines] if of.practice else lines)
 
 
-def _strengths(found: Course, scale: Scale) -> list[tuple[str, str]]:
+def _strengths(of: Fading, scale: Scale) -> list[tuple[str, str]]:
+    found = of.course
     known = found.strengths
-    rows = [("label", "none" if known.nominal is None else scale.written(known.nominal))]
+    rows = [("label", "none" if known.nominal is None else _label(of, known.nominal, scale))]
     if known.found is not None and known.found_on is not None:
         doubt = ""
         if known.uncertainty is not None:
@@ -68,11 +77,21 @@ def _strengths(found: Course, scale: Scale) -> list[tuple[str, str]]:
     return [*rows, ("expected", _expected(found, scale))]
 
 
+def _label(of: Fading, nominal: float, scale: Scale) -> str:
+    own = scale.written(nominal)
+    if not of.label:
+        return own
+    text = raised(of.label)
+    # a label in % w/w is counted in another unit from here on
+    return text if text.endswith(scale.unit) else f"{text} ({own})"
+
+
 def _expected(found: Course, scale: Scale) -> str:
     known = found.strengths
     if known.expected is None:
         return "not known: no strength on its label, and none found"
-    words = f"{scale.expected(known.expected)}, from what its {_basis(found)}"
+    start = known.nominal if known.found is None else known.found
+    words = f"{scale.expected(known.expected, start)}, from what its {_basis(found)}"
     if known.lowest is not None and known.highest is not None:
         # a range of two figures would often be no range
         low, high = (scale.written(end, 3) for end in (known.lowest, known.highest))
@@ -86,17 +105,30 @@ def _basis(found: Course) -> str:
     return "last result was" if found.strengths.basis == "found" else "label says"
 
 
-def _law(found: Course, unit: str) -> str:
+def _law(of: Fading) -> list[tuple[str, str]]:
+    found = of.course
     if found.rule is None:
-        return "no law of fading is entered for this line: its strength is taken to stay"
-    words = rule_in_words(found.rule, unit) + ("; a rule of the house" * found.rule.house)
+        # what has no strength has none to keep
+        stays = "no law of fading is entered for this line: its strength is taken to stay"
+        return [("law", stays)] if found.strengths.expected is not None else []
+    words = rule_in_words(found.rule, of.unit, of.shown)
+    words += "; a rule of the house" * found.rule.house
     if found.since is None:
-        return f"{words}; not {found.rule.origin} yet, so as strong as its label"
-    return f"{words}; counted from {day(found.since)}"
+        return [("law", f"{words}; not {found.rule.origin} yet, so as strong as its label")]
+    return [("law", f"{words}; counted from {day(found.since)}")]
+
+
+def _own_c(found: Course) -> float | None:
+    """The °C its law counts from; None where it leaves warmth out of account."""
+    law = found.rule.law if found.rule else None
+    response = response_of(law) if law else None
+    return response.at_c if response else None
 
 
 def _warmth(found: Course) -> list[tuple[str, str]]:
-    rows = [("stood", _stay(stay)) for stay in found.stood] or [("stood", "no place written down")]
+    own = _own_c(found)
+    rows = [("stood", _stay(stay, own)) for stay in found.stood]
+    rows = rows or [("stood", "no place written down")]
     if found.kinetic is not None:
         since = found.strengths.found_on or found.since
         words = f"mean kinetic temperature {found.kinetic:.1f} °C"
@@ -104,26 +136,35 @@ def _warmth(found: Course) -> list[tuple[str, str]]:
     return rows
 
 
-def _stay(stay: Stood) -> str:
-    own = "its own °C not known" if stay.temperature_c is None else f"{stay.temperature_c:g} °C"
+def _stay(stay: Stood, counted_c: float | None) -> str:
+    counted = "" if counted_c is None else f", counted at {counted_c:g}{TIED}°C"
+    own = f"with its own °C not known{counted}"
+    if stay.temperature_c is not None:
+        own = f"at {stay.temperature_c:g}{TIED}°C"
     words = f"{stay.place} {stay.since} to {stay.until}"
     if not stay.logged_days:
-        return f"{words} at {own}" if stay.temperature_c is not None else f"{words}, {own}"
-    kinetic = f", mean kinetic {stay.kinetic:.1f} °C" if stay.kinetic is not None else ""
+        return f"{words} {own}"
+    kinetic = f", mean kinetic {stay.kinetic:.1f}{TIED}°C" if stay.kinetic is not None else ""
     whole = (stay.until - stay.since).days
-    rest = "" if stay.logged_days >= whole else f", the rest at {own}"
-    return f"{words}, logged {two(stay.logged_days)} of {whole} days{kinetic}{rest}"
+    rest = "" if stay.logged_days >= whole else f", the rest {own}"
+    days, hours = stay.logged_days, two(24 * stay.logged_days)
+    logged = two(days) if days >= 1 else f"{hours}{TIED}h"
+    return f"{words}, logged {logged} of {whole} days{kinetic}{rest}"
 
 
 def _lives(found: Course) -> list[tuple[str, str]]:
     if found.rule is None or found.strengths.expected is None:
         return []
-    where = "" if found.here_c is None else f" at {found.here_c:g} °C"
+    plain = _own_c(found) is None
+    where = "" if plain or found.here_c is None else f" at {found.here_c:g} °C"
     if found.t90 is None or found.half is None:
         return [("t90", f"never{where}")]
-    return [
-        ("t90", f"a tenth is gone in {two(found.t90)} days{where}, half in {two(found.half)} days")
-    ]
+    times = f"a tenth is gone in {two(found.t90)} days{where}, half in {two(found.half)} days"
+    # of order 1 it takes as long from any strength
+    law = found.rule.law
+    of_label = law is not None and law.order != 1 and found.strengths.nominal
+    warmth = "warmth is left out of account: the law names no factor per 10 °C"
+    return [("t90", times + ", from its label" * bool(of_label)), *[("", warmth)] * plain]
 
 
 def _marks(of: Fading, scale: Scale) -> list[tuple[str, str]]:
@@ -145,13 +186,18 @@ def _mark(mark: Mark, scale: Scale, today: date) -> str:
     when = f"on {day(mark.on)}" if mark.on else "never in a hundred years"
     when = "already" if mark.on and mark.on <= today else when
     if mark.by is None:
-        named = mark.what if mark.what[0].isdigit() else scale.written(mark.strength)
-        own = scale.written(mark.strength)
-        same = raised(named).replace(TIED, " ") == own.replace(TIED, " ")
+        named, own = mark.what, scale.written(mark.strength)
+        same = _alike(named) == _alike(own)
         return f"below {named}{'' if same else f' ({own})'} {when}"
     held = "strong enough" if mark.in_time else "TOO WEAK by then"
     need = f"{mark.what} on {day(mark.by)} wants {scale.written(mark.strength)}"
     return f"{need}: {held}, below it {when}"
+
+
+def _alike(text: str) -> str:
+    """A strength without what may be written in two ways: "97.0 vol" and "97 vol"."""
+    number, _, unit = raised(text).replace(TIED, " ").partition(" ")
+    return f"{float(number):g} {unit}" if number.replace(".", "", 1).isdigit() else text
 
 
 def fades_json(of: Fading) -> dict[str, Any]:

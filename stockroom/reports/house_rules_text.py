@@ -39,6 +39,8 @@ class _Keeping(Protocol):
     @property
     def sources(self) -> Mapping[str, str]: ...
     @property
+    def shown(self) -> tuple[str, float]: ...
+    @property
     def practice(self) -> bool: ...
 
 
@@ -49,7 +51,7 @@ def rules_text(keeping: _Keeping, width: int = 100) -> str:
     if not keeping.rules:
         lines.append("  no ageing rule: it counts as good until somebody says otherwise")
     for rule in keeping.rules:
-        lines.append(wrap(rule_in_words(rule, keeping.unit), width, indent=2))
+        lines.append(wrap(rule_in_words(rule, keeping.unit, keeping.shown), width, indent=2))
         lines.append(wrap(_whose(rule, keeping.sources), width, indent=4))
     if keeping.changes:
         lines.append("Changed")

@@ -10,7 +10,7 @@ from stockroom.keeping.fits import Fit
 from stockroom.keeping.pooling import LEVEL, Test
 from stockroom.measure.formats import format_number, unit_mark
 from stockroom.planning.amounts import say_strength
-from stockroom.planning.learn import Lesson, Taught, fading_cells, life_cells
+from stockroom.planning.learn import Lesson, Taught, fading_cells, in_short, life_cells
 from stockroom.reports.sheet import PRACTICE, columns, foot, page, section, wrap
 from stockroom.reports.words import TIED, counted, day, listed, rounded
 
@@ -98,8 +98,13 @@ def _loss(found: Lesson) -> str:
     loss = _monthly(found)
     value, high = (format_number(loss[key], 2) for key in ("value", "high"))
     low = format_number(loss["low"], 2) if found.rate.clear else "none"
-    words = f"It loses {value}{TIED}% a month, {low} to {high} (95{TIED}% interval)"
+    words = f"It loses {value}{TIED}% a month{_at(found)}, {low} to {high} (95{TIED}% interval)"
     return words + ("." if found.rate.clear else ": too early to tell it from no loss at all.")
+
+
+def _at(found: Lesson) -> str:
+    """The °C the answer is for, where one is known: elsewhere it is another."""
+    return "" if found.at_c is None else f" at {found.at_c:g}{TIED}°C"
 
 
 def _keeps(found: Lesson) -> str:
@@ -107,12 +112,12 @@ def _keeps(found: Lesson) -> str:
     needed = say_strength(found.line, found.lowest)
     if found.life <= 0:
         return f"It keeps no time at {percent}{TIED}%: the limit starts below {needed}."
-    whose = f", as {found.decides} does" if _differ(found) else ""
+    whose = f"; {found.decides}, which falls below it first, decides" if _differ(found) else ""
     if math.isinf(found.life):
         return f"It never falls below {percent}{TIED}% of its label ({needed})."
     return (
-        f"Keep it {_days(found.life)} for {percent}{TIED}% of its label ({needed}){whose}: so long "
-        f"its mean is above that, 95{TIED}% sure."
+        f"Keep it {_days(found.life)}{_at(found)} for {percent}{TIED}% of its label ({needed}): so "
+        f"long its mean is above that, 95{TIED}% sure{whose}."
     )
 
 
@@ -138,11 +143,12 @@ def _grounds(found: Lesson) -> list[str]:
     learnt, rate = found.learnt, found.rate
     per = {1: "a day", 0: f"{unit_mark(found.line.unit)} a day"}
     unit = per.get(learnt.order, f"per {unit_mark(found.line.unit)} and day")
-    low, value, high = (format_number(x, 3) for x in (rate.low, rate.value, rate.high))
-    counted_from = found.question.since or found.origin
-    warm = "" if found.at_c is None else f" at {found.at_c:g} °C"
+    value, high = (format_number(x, 3) for x in (rate.value, rate.high))
+    # a rate below nothing would be a gain, and is told as the loss above is
+    low = format_number(rate.low, 3) if rate.clear else "none"
+    since = found.question.since or found.origin
     told = [
-        f"order {learnt.order}, {value} {unit}{warm}, {low} to {high}; days from {counted_from}",
+        f"order {learnt.order}, {value} {unit}{_at(found)}, {low} to {high}; days from {since}",
         "; ".join(_other(part, life) for part, life in found.other_lives),
     ]
     return [*told, *_tests(found), *_doubts(found)]
@@ -160,7 +166,7 @@ def _tests(found: Lesson) -> list[str]:
         bottle, life = found.own_scatter
         told.append(
             f"to the tenth, {_tenths(found.life)} with one scatter for all; with each bottle's own "
-            f"{_tenths(life)}, as {bottle} does"
+            f"{_tenths(life)}, and {bottle} decides"
         )
     return told
 
@@ -178,8 +184,8 @@ def _doubts(found: Lesson) -> list[str]:
     told = []
     if found.checked_to < found.life < math.inf:
         told.append(
-            f"nothing was checked older than {counted(math.floor(found.checked_to), 'day')}: "
-            "titrate again before the keeping time is over"
+            f"nothing was checked older than {counted(math.floor(found.checked_to), 'day')}"
+            f"{_at(found) if found.by_law else ''}: titrate again before the keeping time is over"
         )
     if found.at_c is None:
         told.append("where it stood was not of one known temperature: the rate is for what it was")
@@ -198,10 +204,7 @@ def _bottle(found: Lesson, one: Taught) -> tuple[str, str]:
 
 def _command(found: Lesson, rule: str, cells: dict[str, str], by: str) -> str:
     typed = " ".join(f"{column}={_quoted(cell)}" for column, cell in cells.items())
-    checks = sum(len(one.days) for one in found.learnt.series)
-    loss = _monthly(found)
-    low, value, high = (format_number(loss[key], 2) for key in ("low", "value", "high"))
-    why = f"{counted(checks, 'check')}: {value} % a month, {low} to {high}"
+    why = in_short(found)
     return f'stockroom rule "{found.line.key}" {rule} {typed} --why "{why}" --by {by}'
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 from datetime import date
 from pathlib import Path
 
@@ -12,6 +12,7 @@ from stockroom.errors import BadAmount, MissingFigure, NotAllowed, StockroomErro
 from stockroom.keeping import hypochlorite
 from stockroom.keeping.course import Fading, Mark, course
 from stockroom.keeping.record import Record
+from stockroom.keeping.rule_words import rule_in_words
 from stockroom.keeping.rules import Rule
 from stockroom.keeping.typed_law import FadingSum
 from stockroom.keeping.typed_law import Typed as Typed
@@ -24,6 +25,7 @@ from stockroom.planning.fitness import bounds
 from stockroom.service.database import seeds_folder
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import Reader, reading
+from stockroom.store.rule_changes import RuleChange, changes_of
 from stockroom.store.snapshot import facts_from
 from stockroom.store.snapshot_bottles import bottle_of
 from stockroom.store.sources import citations
@@ -50,8 +52,9 @@ def fading(path: Path, number: str, *, as_at: date, below: tuple[str, ...] = ())
     """
     with reading(path) as reader:
         known = facts_from(reader, as_at)
-        found = _number(reader, number)
+        found = _number(reader, number, known)
         bottle = bottle_of(reader, found, as_at, every_log=True)
+        changes = changes_of(reader, bottle.line) if bottle else ()
     if bottle is None:
         raise UnknownName(f"{found} was not there yet on {as_at}.", "Give a later day.")
     line = known.lines[bottle.line]
@@ -65,10 +68,11 @@ def fading(path: Path, number: str, *, as_at: date, below: tuple[str, ...] = ())
         bottle=found,
         line=line.key,
         unit=line.unit,
-        shown=_shown(line),
+        shown=label_unit(line),
         on=as_at,
         course=runs,
-        cited=_cited(runs.rule),
+        label=line.strength_text,
+        cited=_cited(runs.rule, line, changes),
         practice=known.house.practice,
     )
 
@@ -83,24 +87,40 @@ def fading_sum(
     return sum_of(text, typed, below=below, after=after, today=today or clock.today())
 
 
-def _number(reader: Reader, text: str) -> str:
+def _number(reader: Reader, text: str, known: Facts) -> str:
     numbers = [str(row[0]) for row in reader.ask("SELECT number FROM bottle ORDER BY id")]
     for number in numbers:
         if plain(number) == plain(text):
             return number
+    line = _line_named(known, text)
+    held = [bottle.number for bottle in known.bottles if line and bottle.line == line]
+    if line:
+        here = f"Bottles of it: {', '.join(held)}." if held else "No bottle of it is here."
+        raise UnknownName(f"{line} is a line, and a bottle is asked for.", here)
     raise unknown("bottle", text, numbers)
 
 
-def _cited(rule: Rule | None) -> str:
+def _line_named(known: Facts, text: str) -> str:
+    """The line a text names in full, "" where it names none."""
+    names = {plain(line.key): line.key for line in known.lines.values()}
+    return names.get(plain(text), "") if text.strip() else ""
+
+
+def _cited(rule: Rule | None, line: Line, changes: Iterable[RuleChange]) -> str:
     if rule is None:
         return ""
+    if rule.house:
+        words = rule_in_words(rule, line.unit)
+        said = [one for one in changes if one.rule == rule.kind and one.after == words]
+        if said:
+            return f"house rule of {said[-1].on}, {said[-1].by}: {said[-1].why}"
     # a house may say which law it goes by, and the law still has its own source
     if rule.law is not None and rule.law.named == hypochlorite.NAME:
         return hypochlorite.SOURCE
     return citations(seeds_folder()).get(rule.source, rule.source)
 
 
-def _shown(line: Line) -> tuple[str, float]:
+def label_unit(line: Line) -> tuple[str, float]:
     """The unit of the label where it is a fixed multiple of the line's own, else that."""
     try:
         label = parse_strength(line.strength_text)

@@ -10,7 +10,7 @@ from stockroom.errors import BadInput, NotAllowed
 from stockroom.keeping.safe_side import Witness
 from stockroom.planning.cautious import has_strength, witnesses
 from stockroom.planning.facts import Bottle, Line
-from stockroom.planning.learn import PART, Lesson, Question, fading_cells, lesson
+from stockroom.planning.learn import PART, Lesson, Question, fading_cells, in_short, lesson
 from stockroom.service.answers import Done
 from stockroom.service.finding import line_in
 from stockroom.store.likeness import unknown
@@ -38,6 +38,8 @@ def learn(
     fall; MissingFigure where there are too few checks, with when to do the next.
     """
     with reading(path) as reader:
+        if not name.strip():
+            raise BadInput(f'Of which line or bottle? "{name}" names none.', "stockroom learn S02")
         bottles = bottles_of(reader, as_at, gone=True)
         bottle = next((b for b in bottles if b.number.lower() == name.strip().lower()), None)
         lines = lines_of(reader)
@@ -64,6 +66,9 @@ def use(path: Path, found: Lesson, *, why: str, today: date, by: str) -> Done:
             "Titrate it again later in its life.",
         )
     cells = fading_cells(found)
+    if why.strip():
+        # what it rests on is kept with the reason, so that a later reader can judge it
+        why = f"{why.strip()} ({in_short(found)})"
     return set_rule(path, found.line.key, "fades", cells, why=why, today=today, by=by)
 
 

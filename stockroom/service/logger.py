@@ -17,8 +17,16 @@ from stockroom.keeping.temperatures import TemperatureLog, moment_of
 from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_number
 from stockroom.service.database import is_practice
-from stockroom.store.reading import Row, reading
-from stockroom.store.temperatures import add_readings, log_of, note_file, place_row
+from stockroom.store.reading import Reader, Row, reading
+from stockroom.store.temperatures import (
+    add_readings,
+    log_of,
+    note_file,
+    noted_of,
+    place_row,
+    span_in_words,
+    take_back,
+)
 
 # warmer than any place a laboratory stores in: a file that does not say is asked about
 _DOUBTED_C, _OFF_C, _NEAR_C = 50.0, 15.0, 8.0
@@ -57,8 +65,8 @@ def held(
     with reading(path) as reader:
         row = place_row(reader, place)
         days = [day.isoformat() if day else usual for day, usual in ((start, ""), (end, "9999"))]
-        log = log_of(reader, row["id"], *days)
-    return replace(_warmth(row, log, energy), practice=is_practice(path))
+        log, noted = log_of(reader, row["id"], *days), _noted(reader, row)
+    return replace(_warmth(row, log, energy), noted=noted, practice=is_practice(path))
 
 
 def bring_in(
@@ -75,10 +83,13 @@ def bring_in(
 
     Readings that are held already are passed over. Raises: BadInput for a file that
     cannot be read; NotAllowed for °F and for gaps, unless they are accepted; BadDate
-    for readings to come and for a clock that went back; UnknownName for the place.
+    for readings to come and for a clock that went back; UnknownName for the place;
+    BadInput without initials.
     """
+    from stockroom.service.work import initials
     from stockroom.store.engine import reader_in, writing
 
+    whose = initials(by)
     found = read_logger(
         _text(file), day_first=meant.day_first, scale=meant.scale, column=meant.column
     )
@@ -93,14 +104,63 @@ def bring_in(
         _check_gaps(before, new, accept=meant.accept_gaps)
         add_readings(session, row["id"], new)
         if new:
-            told = f"{file.name}: {len(new)} readings"
-            note_file(session, row["place"], told, by=by, today=today, at=clock.now())
+            first, last = (moment_of(new[at][0]).isoformat("T", "minutes") for at in (0, -1))
+            told = f"{file.name}: {span_in_words(len(new), first, last)}"
+            note_file(session, row["place"], told, by=whose, today=today, at=clock.now())
     return replace(
         _warmth(row, log, energy),
         added=len(new),
         already=len(log.minutes) - len(new),
         told=found.told,
         practice=is_practice(path),
+    )
+
+
+def taken_back(
+    path: Path, place: str, start: date, end: date, *, why: str, today: date, by: str
+) -> Warmth:
+    """Take the readings of some days, both included, out of use; what is left of the place.
+
+    They were brought into the wrong place: they are kept, with who, when and why, and
+    the right ones may then be brought in. Raises: UnknownName for the place; BadDate for
+    days that run backwards; BadInput without a reason or initials, and where nothing is held.
+    """
+    from stockroom.service.work import initials
+    from stockroom.store.engine import reader_in, writing
+
+    if end < start:
+        raise BadDate(f"{start} to {end} runs backwards.", "Swap --from and --to.")
+    if not why.strip():
+        raise BadInput(
+            f"Why are the readings of {place} taken back?", "One word is enough: --why …"
+        )
+    with writing(path) as session:
+        reader = reader_in(session)
+        row = place_row(reader, place)
+        told = take_back(
+            session,
+            row,
+            (start, end),
+            why=why.strip(),
+            by=initials(by),
+            today=today,
+            at=clock.now(),
+        )
+        if not told:
+            raise BadInput(
+                f"{row['place']} holds no readings from {start} to {end}.",
+                f"What it holds: stockroom logger {row['place']}",
+            )
+        left = log_of(reader, row["id"])
+    return replace(_warmth(row, left, None), taken=told, practice=is_practice(path))
+
+
+def _noted(reader: Reader, row: Row) -> tuple[str, ...]:
+    return tuple(
+        f"taken back {one.on} by {one.by}: {one.told}: {one.why}"
+        if one.taken_back
+        else f"brought in {one.on}{f' by {one.by}' if one.by else ''}: {one.told}"
+        for one in noted_of(reader, row["place"])
     )
 
 
@@ -159,7 +219,8 @@ def _new(before: TemperatureLog | None, log: TemperatureLog) -> list[tuple[int, 
             raise NotAllowed(
                 f"{_at(moment_of(minute))}: {known[minute]:g} °C is held, and the file says"
                 f" {degrees:g} °C. Nothing was added.",
-                "Another logger? What was read is never written over.",
+                "Another logger? What was read is never written over. If what is held is the"
+                " wrong one: stockroom logger PLACE --take-back.",
             )
     return new
 

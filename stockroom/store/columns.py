@@ -19,6 +19,7 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         "glassware": "id glass kind size glass_class step source",
         "glassware_away": "id glassware_id starts_on ends_on",
         "reading": "id place_id at centi",
+        "reading_taken_back": "id place_id at centi change_id",
         "substance": "id substance formula molar_mass cas storage_group peroxide_former density"
         " note source",
         "hazard": "id substance_id hazard_class h_code from_percent below_percent basis route ate"

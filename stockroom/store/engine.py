@@ -5,6 +5,8 @@ from __future__ import annotations
 import sqlite3
 from collections.abc import Callable, Iterator
 from contextlib import closing, contextmanager
+from filecmp import cmp
+from itertools import count
 from pathlib import Path
 from typing import Any
 
@@ -66,13 +68,28 @@ def bring_up_to_date(path: Path) -> None:
 def put_by(path: Path) -> Path:
     """Copy a store beside itself before its layout is changed; the copy's path.
 
-    A copy that is there already is left alone: it is of the same, older layout.
+    A copy of that very store is left alone, and one of another is never written over:
+    the new one then has a number behind its name. Raises: OSError, sqlite3.Error.
     """
-    copy = path.with_name(f"{path.name}.before-{REVISIONS[-1]}")
-    if not copy.exists():
-        with closing(sqlite3.connect(path)) as held, closing(sqlite3.connect(copy)) as new:
+    fresh = path.with_name(f"{path.name}.before-{REVISIONS[-1]}.part")
+    # left by somebody who was cut off
+    fresh.unlink(missing_ok=True)
+    try:
+        with closing(sqlite3.connect(path)) as held, closing(sqlite3.connect(fresh)) as new:
             held.backup(new)
+        copy = _place_for(fresh)
+        # named only now that it is whole: half a copy must never pass for one
+        fresh.replace(copy)
+    finally:
+        fresh.unlink(missing_ok=True)
     return copy
+
+
+def _place_for(fresh: Path) -> Path:
+    """The name for a copy: that of one exactly like it, else the first that is free."""
+    name = fresh.with_suffix("")
+    names = (name if n == 1 else name.with_name(f"{name.name}-{n}") for n in count(1))
+    return next(each for each in names if not each.exists() or cmp(fresh, each, shallow=False))
 
 
 def reader_in(session: Session) -> Reader:

@@ -9,21 +9,25 @@ from __future__ import annotations
 
 import csv
 from collections.abc import Iterable, Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from datetime import date
 from functools import lru_cache
 from pathlib import Path
 from typing import Any
 
 from stockroom.errors import BadInput, StockroomError
+from stockroom.safety.acute import CODES
+from stockroom.safety.grounds import HOUSE
 from stockroom.safety.hazards import SheetText
-from stockroom.safety.limits import Basis, Limit, Route
+from stockroom.safety.limits import ACUTE, Basis, Limit, Route
 from stockroom.safety.pictograms import pictograms_for
 from stockroom.safety.statements import codes_in, statement
 from stockroom.store.likeness import plain
-from stockroom.store.reading import Reader
+from stockroom.store.reading import Reader, Row
 
 Limits = tuple[Limit, ...]
+Cells = Row | Mapping[str, Any]
+"""One row by column: of the shipped table all text, of the store's own as it is kept."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -35,17 +39,18 @@ class LimitBook:
     """
 
     shipped: Mapping[str, Limits]
-    own: Mapping[str, list[Any]] = field(default_factory=dict)
+    own: Mapping[str, list[Row]] = field(default_factory=dict)
 
     def of(self, *names: str) -> Limits:
         """The limits under the first of these names that has any; () for none of them.
 
-        Raises: BadInput for a row of the house's own that cannot be read.
+        The house's own are marked as its own. Raises: BadInput for one of those that
+        cannot be read.
         """
         wanted = [plain(name) for name in names if name]
         own = next((self.own[name] for name in wanted if name in self.own), None)
         if own is not None:
-            return tuple(limit_from(row) for row in own)
+            return tuple(replace(limit_from(row), how=HOUSE) for row in own)
         return next((self.shipped[name] for name in wanted if name in self.shipped), ())
 
 
@@ -62,7 +67,7 @@ def shipped_limits(folder: Path) -> Mapping[str, Limits]:
     return {name: tuple(rows) for name, rows in held.items()}
 
 
-def limit_from(row: Any) -> Limit:
+def limit_from(row: Cells) -> Limit:
     """One row of either table as a limit. Raises: BadInput quoting substance and value."""
     try:
         limit = Limit(
@@ -101,6 +106,21 @@ def _check_code(limit: Limit) -> None:
         raise BadInput(
             f"{limit.hazard_class} is {expected}, not {limit.h_code!r}.", "Which of them is meant?"
         )
+    ways = {row[int(limit.hazard_class[-1]) - 1] for row in CODES.values()} if _acute(limit) else ()
+    if ways and limit.h_code not in ways:
+        raise BadInput(
+            f"{limit.hazard_class} is {', '.join(sorted(ways))}, not {limit.h_code!r}.",
+            "Which of them is meant?",
+        )
+    if ways and limit.route is not None and limit.route is not limit.counted_by:
+        raise BadInput(
+            f"{limit.h_code} is {limit.way_in}, not {str(limit.route)!r}.",
+            "Mend the route, or the statement.",
+        )
+
+
+def _acute(limit: Limit) -> bool:
+    return limit.kind.ladder == ACUTE
 
 
 def _number(written: str | float | None) -> float | None:
@@ -112,9 +132,9 @@ def limit_book(folder: Path, reader: Reader | None = None) -> LimitBook:
     return LimitBook(shipped_limits(folder), _own(reader) if reader else {})
 
 
-def _own(reader: Reader) -> Mapping[str, list[Any]]:
+def _own(reader: Reader) -> Mapping[str, list[Row]]:
     names = reader.pairs("SELECT id, substance FROM substance")
-    held: dict[str, list[Any]] = {}
+    held: dict[str, list[Row]] = {}
     for row in reader.rows("hazard"):
         held.setdefault(plain(names[row["substance_id"]]), []).append(row)
     return held
@@ -128,7 +148,7 @@ def texts_of(reader: Reader, line: str) -> tuple[SheetText, ...]:
     return tuple(text_from(row) for row in rows)
 
 
-def text_from(row: Any) -> SheetText:
+def text_from(row: Row) -> SheetText:
     """One row of typed text as a value."""
     return SheetText(
         statements=row["statements"],

@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 from sqlmodel import col, select
 
-from stockroom.errors import BadInput, UnknownName
+from stockroom.errors import BadInput, NotAllowed, UnknownName
 from stockroom.keeping.rules import Rule, RuleKind
 from stockroom.store.changing import record_change
 from stockroom.store.desk import Desk
@@ -14,7 +15,7 @@ from stockroom.store.engine import reader_in
 from stockroom.store.faults import told_with_place
 from stockroom.store.fields import Fields
 from stockroom.store.layout import check_columns
-from stockroom.store.rows_rules import cells_of, rule_from
+from stockroom.store.rows_rules import cells_of, check_room, rule_from
 from stockroom.store.rule_changes import TABLE
 from stockroom.store.snapshot_lines import rule_of
 from stockroom.store.tables import KeepingRule, Line
@@ -24,6 +25,9 @@ SOURCE = "house rule"
 _WHICH = (
     "purpose", "stronger_than", "up_to_strength", "colder_than_c", "warmer_than_c"
 )  # fmt: skip
+_BOUNDS = ("stronger_than", "up_to_strength")
+# as near as `Rule.holds_for` tells two strengths apart
+_CLOSE = 1e-6
 # giving the first takes the others away: they say the same thing in another way
 _INSTEAD = {
     "ea_kj_mol": ("factor_per_10c",),
@@ -46,12 +50,18 @@ def set_rule(desk: Desk, line_text: str, kind: str, cells: dict[str, str]) -> Re
     """Put a rule of the house in the place of the one it speaks instead of.
 
     `cells` are columns of the keeping table; what they do not say stays as it was.
-    Raises: UnknownName, BadInput, BadAmount, BadDate, each naming the column.
+    Raises: UnknownName, BadInput, BadAmount, BadDate, each naming the column; NotAllowed
+    for what is never kept.
     """
     line = desk.line(line_text)
     check_columns(TABLE, cells)
     old = _meant(desk, line, _kind(kind), cells)
+    _check_never(line, old)
     kept = cells_of(old, line) if old else {}
+    # a bound typed again is the one that is there, to its last figure
+    again = [column for column in _BOUNDS if old and cells.get(column)]
+    cells = {column: cell for column, cell in cells.items() if column not in again}
+    _check_rate(kept, cells)
     # a new word for a rate ends the old one, whichever way that was written
     for column, others in _INSTEAD.items():
         if cells.get(column):
@@ -59,6 +69,7 @@ def set_rule(desk: Desk, line_text: str, kind: str, cells: dict[str, str]) -> Re
     fields = Fields({"line": line.key, "rule": kind} | kept | cells | {"source": SOURCE})
     with told_with_place(TABLE, fields):
         row = rule_from(desk, fields)
+        check_room(fields, row)
     row.house = True
     _out_of_use(desk, old)
     desk.save(row)
@@ -66,10 +77,14 @@ def set_rule(desk: Desk, line_text: str, kind: str, cells: dict[str, str]) -> Re
 
 
 def withdraw_rule(desk: Desk, line_text: str, kind: str, cells: dict[str, str]) -> Replaced:
-    """Take a rule out of use with nothing in its place. Raises: UnknownName when there is none."""
+    """Take a rule out of use with nothing in its place.
+
+    Raises: UnknownName when there is none; NotAllowed for what is never kept.
+    """
     line = desk.line(line_text)
     check_columns(TABLE, cells)
     old = _meant(desk, line, _kind(kind), cells)
+    _check_never(line, old)
     if old is None:
         raise UnknownName(
             f"{line.key} has no rule {kind!r} to withdraw.", f'Look: stockroom rule "{line.key}".'
@@ -97,7 +112,7 @@ def _meant(desk: Desk, line: Line, kind: RuleKind, cells: dict[str, str]) -> Kee
     found = list(desk.session.exec(asked.order_by(col(KeepingRule.id))))
     which = {column: cells[column] for column in _WHICH if cells.get(column)}
     if which:
-        return next((row for row in found if _speaks_of(desk, line, row, which)), None)
+        found = [row for row in found if _speaks_of(desk, line, row, which)]
     if len(found) > 1:
         raise BadInput(
             f"{line.key} has {len(found)} {kind} rules: which one?",
@@ -106,13 +121,39 @@ def _meant(desk: Desk, line: Line, kind: RuleKind, cells: dict[str, str]) -> Kee
     return found[0] if found else None
 
 
+def _check_rate(kept: dict[str, str], cells: dict[str, str]) -> None:
+    order, before = cells.get("order", ""), kept.get("order", "")
+    # 0.01 a day of order 1 and 0.01 mol/dm3 a day of order 0 have nothing but the figure in common
+    if order and before and order != before and not cells.get("rate"):
+        raise BadInput(
+            f"order {order}: at what rate? {float(kept['rate']):.3g} is one of order {before}.",
+            "Give rate, rate_of and rate_per as well.",
+        )
+
+
 def _speaks_of(desk: Desk, line: Line, row: KeepingRule, which: dict[str, str]) -> bool:
     # read as a rule would be, so that 0.5 M and 0.500 mol/dm3 are the same bound
     wanted = rule_from(
         desk, Fields(cells_of(row, line) | {"line": line.key, "rule": row.rule} | which)
     )
     own = ("purpose", "above", "upto", "colder_than", "warmer_than")
-    return all(getattr(wanted, name) == getattr(row, name) for name in own)
+    return all(_same(getattr(wanted, name), getattr(row, name)) for name in own)
+
+
+def _same(one: str | float | None, two: str | float | None) -> bool:
+    """Alike, numbers to what a rule itself tells apart: a printed bound has fewer figures."""
+    if isinstance(one, float) and isinstance(two, float):
+        return math.isclose(one, two, rel_tol=_CLOSE)
+    return one == two
+
+
+def _check_never(line: Line, old: KeepingRule | None) -> None:
+    # the line itself says so too, and no house value makes it safe to stand
+    if old is not None and old.rule == RuleKind.NEVER and line.never_kept:
+        raise NotAllowed(
+            f"{line.key}: this is never kept. There is no test that extends it.",
+            "Mix it just before use, and destroy what is left the same hour.",
+        )
 
 
 def _out_of_use(desk: Desk, row: KeepingRule | None) -> None:

@@ -5,7 +5,10 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
 
+from stockroom.chemistry.glassware import GlassKind
+from stockroom.keeping.laws import NAMED as NAMED_LAWS
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
+from stockroom.keeping.typed_law import DAYS_PER
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Closeness, Firmness, Form, Per
 from stockroom.store import (
@@ -121,8 +124,8 @@ _YES_NO = ("yes", "no")
 
 WORDS: dict[tuple[str, str], Iterable[str]] = {
     ("house", "setting"): rows_house.SETTINGS,
-    ("glassware", "kind"): rows_house.GLASS_KINDS,
-    ("glassware", "class"): rows_house.GLASS_CLASSES,
+    ("glassware", "kind"): GlassKind,
+    ("glassware", "class"): ("A", "B"),
     ("hazards", "basis"): rows_hazards.BASES,
     ("hazards", "route"): rows_hazards.ROUTES,
     ("lines", "form"): Form,
@@ -133,8 +136,8 @@ WORDS: dict[tuple[str, str], Iterable[str]] = {
     ("keeping", "purpose"): Purpose,
     ("keeping", "safety"): _YES_NO,
     ("keeping", "order"): ("0", "1", "2"),
-    ("keeping", "named_law"): rows_rules.NAMED_LAWS,
-    ("keeping", "rate_per"): tuple(rows_rules.DAYS_PER),
+    ("keeping", "named_law"): NAMED_LAWS,
+    ("keeping", "rate_per"): tuple(DAYS_PER),
     ("methods", "titrated"): _YES_NO,
     ("ingredients", "only_if_held"): _YES_NO,
     ("recipe_lines", "per"): Per,

@@ -16,6 +16,7 @@ from stockroom.measure.amounts import Kind
 from stockroom.measure.days import PrintedDate, parse_printed
 from stockroom.measure.formats import format_amount
 from stockroom.measure.parsing import parse_strength
+from stockroom.safety.peroxide_formers import outcome
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.kinds import DAY_NOT_WRITTEN, EntryKind
@@ -206,11 +207,26 @@ def _event(
         strength=strength,
         strength_text=written,
         uncertainty=spread,
-        peroxide_mg_kg=fields.number("peroxide_mg_kg") if kind is EntryKind.TESTED else None,
+        peroxide_mg_kg=_peroxide(fields, bottle) if kind is EntryKind.TESTED else None,
         passed=fields.flag("passed") if kind in _ANSWERED else None,
         place_id=find_place(desk.session, place).id if place else None,
         reason=fields.text("reason"),
     )
+
+
+def _peroxide(fields: Fields, bottle: Bottle) -> float | None:
+    """The mg/kg of a test, as H2O2. Raises: BadInput when it says that the test was failed."""
+    result = fields.number("peroxide_mg_kg")
+    if result is None:
+        return None
+    means = outcome(result)
+    # a number that condemns a bottle must never start its safety date again
+    if fields.flag("passed") and not means.passed:
+        raise BadInput(
+            f"{bottle.number} cannot have passed: {means.words}.",
+            "Write passed=no; if the number is a slip, mend it.",
+        )
+    return result
 
 
 def _found(desk: Desk, fields: Fields, line: Line) -> tuple[float, str, float | None]:
@@ -220,10 +236,17 @@ def _found(desk: Desk, fields: Fields, line: Line) -> tuple[float, str, float | 
     def number(column: str, written: str) -> float:
         return number_beside(parse_strength(written, where=column), substance, line)
 
+    written = fields.need("strength")
+    value = number("strength", written)
     spread = fields.text("uncertainty")
     known = number("uncertainty", spread) if spread else None
-    written = fields.need("strength")
-    return number("strength", written), written, known
+    # as wide as the strength itself says that nothing was found
+    if known is not None and not 0 < known < value:
+        raise BadAmount(
+            f'uncertainty "{spread}" on {written} cannot be.',
+            "Give the standard uncertainty, in the strength's own unit.",
+        )
+    return value, written, known
 
 
 def _reversal(desk: Desk, number: str, event: Event) -> Event:

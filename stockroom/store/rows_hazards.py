@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 
+from stockroom.chemistry.formula import molar_mass
 from stockroom.errors import BadAmount, BadInput
 from stockroom.safety.limits import Basis, Route
 from stockroom.store.desk import Desk
@@ -15,6 +16,9 @@ from stockroom.store.tables import Hazard
 
 BASES = tuple(Basis)
 ROUTES = tuple(Route)
+CHLORINE = "available chlorine"
+"""A per cent that counts this is turned into it; any other way is the formula of a hydrate."""
+
 _CODE = re.compile(r"(H[2-4][0-9]{2}[A-Za-z]{0,2}|EUH[0-9]{3}[A-Z]?)")
 
 
@@ -37,9 +41,9 @@ def read_hazard(desk: Desk, fields: Fields) -> None:
         below_percent=below,
         basis=basis,
         route=route,
-        ate=fields.number("ate"),
-        m_factor=fields.number("m_factor"),
-        percent_of=fields.text("percent_of"),
+        ate=_above_nothing(fields, "ate"),
+        m_factor=_above_nothing(fields, "m_factor"),
+        percent_of=_counted(fields),
         how=fields.text("how"),
         source=fields.text("source"),
     )
@@ -47,6 +51,22 @@ def read_hazard(desk: Desk, fields: Fields) -> None:
     # read as it will be when it is asked for, so that a row nobody can read is never saved
     limit_from(row.model_dump())
     desk.save(row)
+
+
+def _above_nothing(fields: Fields, column: str) -> float | None:
+    found = fields.number(column)
+    if found == 0:
+        raise BadAmount(f"{column} 0 is none.", "Give one above 0, or leave it blank.")
+    return found
+
+
+def _counted(fields: Fields) -> str:
+    """What the per cent counts: the substance as dissolved, its chlorine, or a formula."""
+    way = fields.text("percent_of")
+    # a formula nobody can read would stop every later question about the substance
+    if way and way != CHLORINE:
+        molar_mass(way)
+    return way
 
 
 def _class(fields: Fields, basis: str) -> str:

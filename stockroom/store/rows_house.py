@@ -2,10 +2,12 @@
 
 from __future__ import annotations
 
+from datetime import date
 from decimal import Decimal
 
 from sqlmodel import SQLModel, col, select
 
+from stockroom.chemistry.glassware import GlassKind, class_of
 from stockroom.errors import BadAmount, BadDate, BadInput
 from stockroom.measure.amounts import Amount
 from stockroom.measure.days import format_time, parse_day, parse_time
@@ -159,10 +161,10 @@ def read_balance(desk: Desk, fields: Fields) -> None:
             raise BadInput(f"step_g of {name} is blank or 0.", "Give its step, as 0.01.")
         found = Balance(balance=name, step=Amount.grams(step).micro, source=fields.text("source"))
         desk.save(found)
-    if fields.text("away_from"):
-        first, last = fields.span("away_from", "away_to")
+    away = _absence(fields)
+    if away:
         assert found.id is not None
-        desk.save(BalanceAway(balance_id=found.id, starts_on=first, ends_on=last))
+        desk.save(BalanceAway(balance_id=found.id, starts_on=away[0], ends_on=away[1]))
 
 
 def read_vessel(desk: Desk, fields: Fields) -> None:
@@ -174,10 +176,6 @@ def read_vessel(desk: Desk, fields: Fields) -> None:
     desk.save(Vessel(vessel=name, size=size, source=fields.text("source")))
 
 
-GLASS_KINDS = ("pipette", "graduated pipette", "burette", "flask", "cylinder")
-GLASS_CLASSES = ("A", "B")
-
-
 def read_glassware(desk: Desk, fields: Fields) -> None:
     """A piece of measuring glass, or a further absence of one already entered."""
     name = fields.need("glass")
@@ -185,22 +183,24 @@ def read_glassware(desk: Desk, fields: Fields) -> None:
     if found is None:
         found = _new_glass(name, fields)
         desk.save(found)
-    if fields.text("away_from"):
-        first, last = fields.span("away_from", "away_to")
+    away = _absence(fields)
+    if away:
         assert found.id is not None
-        desk.save(GlasswareAway(glassware_id=found.id, starts_on=first, ends_on=last))
+        desk.save(GlasswareAway(glassware_id=found.id, starts_on=away[0], ends_on=away[1]))
 
 
 def _new_glass(name: str, fields: Fields) -> Glassware:
-    kind, size = fields.need("kind").lower(), fields.volume("size_cm3")
-    if kind not in GLASS_KINDS:
-        raise unknown("kind of glassware", kind, GLASS_KINDS)
+    kind = fields.choice("kind", GlassKind)
+    # read for its check alone: what nobody looked at stays blank
+    glass_class = fields.text("class") and class_of(fields.text("class"))
+    step, size = fields.volume("step_cm3"), fields.volume("size_cm3")
     if not size:
         raise BadInput(f"size_cm3 of {name} is blank or 0.", "Give what it measures, as 25.")
-    glass_class = fields.text("class").upper().removesuffix("S")
-    if glass_class and glass_class not in GLASS_CLASSES:
-        raise BadInput(f'class "{glass_class}" of {name} is not A, AS or B.', "Read the glass.")
-    step = fields.volume("step_cm3")
+    if step and step >= size:
+        raise BadAmount(
+            f"step_cm3 of {name} is not below its size of {fields.text('size_cm3')} cm³.",
+            "Give its finest mark, as 0.1; none for glass with one mark.",
+        )
     return Glassware(
         glass=name,
         kind=kind,
@@ -209,6 +209,13 @@ def _new_glass(name: str, fields: Fields) -> Glassware:
         step=step or None,
         source=fields.text("source"),
     )
+
+
+def _absence(fields: Fields) -> tuple[date, date] | None:
+    """The days something is away; None when it is not. Raises: BadInput, BadDate for half of it."""
+    # one day without the other is a slip, whichever of them it is
+    away = fields.text("away_from") or fields.text("away_to")
+    return fields.span("away_from", "away_to") if away else None
 
 
 def new_name(

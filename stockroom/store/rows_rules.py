@@ -3,28 +3,29 @@
 from __future__ import annotations
 
 from stockroom.errors import BadAmount, BadInput
-from stockroom.keeping.laws import DAYS_PER_MONTH
+from stockroom.keeping import hypochlorite
+from stockroom.keeping.laws import FACTORS, NAMED
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
+from stockroom.keeping.typed_law import DAYS_PER
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.periods import parse_period
+from stockroom.planning.facts import Form
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.likeness import unknown
-from stockroom.store.names import substance_of
+from stockroom.store.names import other_names, substance_of
 from stockroom.store.rows_house import temperature_of
 from stockroom.store.rows_lines import number_beside
 from stockroom.store.tables import KeepingRule, Line
 
-NAMED_LAWS = ("hypochlorite",)
-"""Laws that bring their own rate, by the name `keeping` knows them by."""
-
-# the mean month and year: a rate is a physical quantity, not a calendar step
-DAYS_PER = {"day": 1.0, "month": DAYS_PER_MONTH, "year": 12 * DAYS_PER_MONTH}
+# what a named law settles by itself
+_OF_A_LAW = ("order", "rate", "rate_of", "rate_per", "factor_per_10c", "ea_kj_mol")
 
 
 def read_rule(desk: Desk, fields: Fields) -> None:
     """One ageing rule of a line; rates are turned to the line's unit per day."""
     row = rule_from(desk, fields)
+    check_room(fields, row)
     row.house = not desk.starter
     desk.save(row)
 
@@ -40,21 +41,22 @@ def rule_from(desk: Desk, fields: Fields) -> KeepingRule:
     lasts = fields.need("lasts") if dated else fields.text("lasts")
     period = parse_period(lasts, where="lasts") if lasts else None
     fades = kind is RuleKind.FADES
-    named = _named_law(fields, line) if fades else ""
+    named = _named_law(desk, fields, line) if fades else ""
     order, rate = (None, None) if named or not fades else _decay(desk, fields, line)
-    factor, energy = _warmth(fields, fades=fades)
+    at_c = temperature_of(fields, "at_c")
+    factor, energy = _warmth(fields, at_c, fades=fades)
     assert line.id is not None
     return KeepingRule(
         line_id=line.id,
         rule=kind,
         lasts_count=period.count if period else None,
         lasts_unit=period.unit if period else "",
-        counted_from=fields.choice("counted_from", Origin, Origin.MADE),
+        counted_from=fields.choice("counted_from", Origin, _usual_origin(kind, line)),
         purpose=fields.choice("purpose", Purpose, Purpose.ANY),
-        safety=fields.flag("safety"),
+        safety=fields.flag("safety", usual=kind is RuleKind.TEST),
         decay_order=order,
         rate=rate,
-        at_c=temperature_of(fields, "at_c"),
+        at_c=at_c,
         factor_per_10c=factor,
         ea_kj_mol=energy,
         named_law=named,
@@ -64,6 +66,28 @@ def rule_from(desk: Desk, fields: Fields) -> KeepingRule:
         warmer_than=temperature_of(fields, "warmer_than_c"),
         source=fields.text("source"),
     )
+
+
+def _usual_origin(kind: RuleKind, line: Line) -> Origin:
+    # what makes peroxides is dated from its opening; a solid was made by nobody here, so
+    # counted from that day it would keep for ever
+    if kind is RuleKind.TEST:
+        return Origin.OPENED
+    return Origin.MADE if line.form == Form.SOLUTION else Origin.RECEIVED
+
+
+def check_room(fields: Fields, row: KeepingRule) -> None:
+    """Refuse a band or a range of places that holds nothing, and so would never count.
+
+    Raises: BadAmount.
+    """
+    for lower, low, upper, high in (
+        ("stronger_than", row.above, "up_to_strength", row.upto),
+        ("warmer_than_c", row.warmer_than, "colder_than_c", row.colder_than),
+    ):
+        if low is not None and high is not None and low >= high:
+            told = f"{lower} {fields.text(lower)} and {upper} {fields.text(upper)}"
+            raise BadAmount(f"{told} leave nothing between.", "Swap them, or leave one out.")
 
 
 def cells_of(rule: KeepingRule, line: Line) -> dict[str, str]:
@@ -111,20 +135,42 @@ def _bound(desk: Desk, fields: Fields, line: Line, column: str) -> float | None:
     return number_beside(strength, substance_of(desk.session, line), line)
 
 
-def _named_law(fields: Fields, line: Line) -> str:
+def _named_law(desk: Desk, fields: Fields, line: Line) -> str:
     named = fields.text("named_law").lower()
-    if named and named not in NAMED_LAWS:
-        raise unknown("named law", named, NAMED_LAWS)
+    if not named:
+        return ""
+    if named not in NAMED:
+        raise unknown("named law", named, NAMED)
     # its rate is of mol/dm³, and no other unit would be told apart from that
-    if named and line.unit != "mol/dm3":
+    if line.unit != hypochlorite.UNIT:
         raise BadInput(
-            f"The {named} law counts in mol/dm3, and {line.key} in {line.unit}.",
+            f"The {named} law counts in {hypochlorite.UNIT}, and {line.key} in {line.unit}.",
             "Give the substance its formula, or an order and a rate.",
+        )
+    if not _is_bleach(desk, line):
+        raise BadInput(
+            f"The {named} law is of bleach, and {line.key} is none.", "Give an order and a rate."
+        )
+    extra = [column for column in _OF_A_LAW if fields.text(column)]
+    fields.at("named_law")
+    if extra:
+        raise BadInput(
+            f"The {named} law brings its own figures: leave {', '.join(extra)} out.",
+            "It wants only at_c, the temperature where the place has none.",
         )
     return named
 
 
-def _warmth(fields: Fields, *, fades: bool) -> tuple[float | None, float | None]:
+def _is_bleach(desk: Desk, line: Line) -> bool:
+    """By its storage group, or by one of the names of what it holds."""
+    held = substance_of(desk.session, line)
+    names = (held.substance, held.storage_group, *other_names(desk.session, held)) if held else ()
+    return any(hypochlorite.NAME in name.lower() for name in names)
+
+
+def _warmth(
+    fields: Fields, at_c: float | None, *, fades: bool
+) -> tuple[float | None, float | None]:
     """The factor per 10 °C or the activation energy in kJ/mol: one of them at most."""
     factor, energy = fields.number("factor_per_10c"), fields.number("ea_kj_mol")
     if factor is not None and energy is not None:
@@ -140,6 +186,20 @@ def _warmth(fields: Fields, *, fades: bool) -> tuple[float | None, float | None]
     # above any reaction a bottle lasts through; a figure in J/mol would land here
     if energy is not None and not 0 < energy <= 400:
         raise BadAmount(f"ea_kj_mol {energy:g} is not between 0 and 400.", "In kJ/mol?")
+    least, most = FACTORS
+    if factor is not None and not least <= factor <= most:
+        fields.at("factor_per_10c")
+        raise BadAmount(
+            f"factor_per_10c {factor:g} is not between {least:g} and {most:g}.",
+            "How many times faster in a place 10 °C warmer, as 2.5?",
+        )
+    if at_c is None and (factor or energy):
+        fields.at("at_c")
+        given = f"factor_per_10c {factor:g}" if factor else f"ea_kj_mol {energy:g}"
+        raise BadInput(
+            f"{given}: from how many °C is it counted?",
+            "Give at_c, the temperature of the rate or of the life, as 20.",
+        )
     return factor, energy
 
 
@@ -149,10 +209,12 @@ def _decay(desk: Desk, fields: Fields, line: Line) -> tuple[int, float]:
         raise BadInput(f"order {order} is not a law we know.", "Give 0, 1 or 2.")
     rate = fields.number("rate")
     if rate is None:
-        raise BadInput("rate is blank.", "Give the rate, in the unit rate_of per rate_per.")
+        raise BadInput(
+            f"rate of order {order} is blank.", "Give the rate, in the unit rate_of per rate_per."
+        )
     per = fields.need("rate_per")
     if per not in DAYS_PER:
-        raise BadInput(f'rate_per "{per}" is not a time.', "Give day, month or year.")
+        raise BadInput(f'rate_per "{per}" is not a time.', f"Give one of {', '.join(DAYS_PER)}.")
     # a first-order rate is a share per time and has no unit of strength
     own = 1.0 if order == 1 else _own_units(desk, fields, line)
     # a zero-order rate is strength per time, a second-order one the inverse of strength per time

@@ -68,7 +68,7 @@ def facts_from(
         balances=_balances(reader),
         glassware=_glassware(reader),
         departments=_departments(reader),
-        places=_places(reader),
+        places=places_of(reader),
         drawn=drawn_of(reader, as_at),
     )
 
@@ -167,20 +167,24 @@ def _booking(
     )
 
 
+def _away(reader: Reader, table: str, owner: str) -> dict[int, tuple[tuple[date, date], ...]]:
+    """The days each thing is away, by its row number, in order."""
+    found: dict[int, tuple[tuple[date, date], ...]] = {}
+    for row in reader.rows(table, "ORDER BY starts_on, id"):
+        found[row[owner]] = (*found.get(row[owner], ()), _span(row))
+    return found
+
+
 def _balances(reader: Reader) -> tuple[Balance, ...]:
-    away: dict[int, list[tuple[date, date]]] = {}
-    for row in reader.rows("balance_away", "ORDER BY starts_on, id"):
-        away.setdefault(row["balance_id"], []).append(_span(row))
+    away = _away(reader, "balance_away", "balance_id")
     return tuple(
-        Balance(row["balance"], row["step"], tuple(away.get(row["id"], ())))
+        Balance(row["balance"], row["step"], away.get(row["id"], ()))
         for row in reader.rows("balance")
     )
 
 
 def _glassware(reader: Reader) -> tuple[Glass, ...]:
-    away: dict[int, list[tuple[date, date]]] = {}
-    for row in reader.rows("glassware_away", "ORDER BY starts_on, id"):
-        away.setdefault(row["glassware_id"], []).append(_span(row))
+    away = _away(reader, "glassware_away", "glassware_id")
     return tuple(
         Glass(
             row["glass"],
@@ -188,7 +192,7 @@ def _glassware(reader: Reader) -> tuple[Glass, ...]:
             row["size"],
             row["glass_class"],
             row["step"],
-            tuple(away.get(row["id"], ())),
+            away.get(row["id"], ()),
         )
         for row in reader.rows("glassware")
     )
@@ -199,7 +203,8 @@ def _departments(reader: Reader) -> tuple[Department, ...]:
     return tuple(Department(row["department"], row["name"], row["left_pence"]) for row in rows)
 
 
-def _places(reader: Reader) -> tuple[Place, ...]:
+def places_of(reader: Reader) -> tuple[Place, ...]:
+    """Every place of the house."""
     return tuple(
         Place(row["place"], row["name"], row["temperature_c"], row["meant_for"])
         for row in reader.rows("place")

@@ -164,12 +164,23 @@ def _bottle(row: Row, shelf: _Shelf) -> Bottle:
         made_here=bool(row["made_here"]),
         lineage=shelf.lineage.get(row["id"], ()),
         meant_for=_meant_for(events),
+        known_by=_known_by(events),
     )
 
 
+def _made(events: list[Row]) -> Row | None:
+    return next((event for event in events if event["kind"] == EntryKind.MADE), None)
+
+
 def _meant_for(events: list[Row]) -> tuple[str, ...]:
-    made = next((event for event in events if event["kind"] == EntryKind.MADE), None)
+    made = _made(events)
     return tuple(filter(None, made["booking"].split(";"))) if made else ()
+
+
+def _known_by(events: list[Row]) -> str:
+    # no check of the bottle's own, so it dates nothing: only the words of how it is known
+    made = _made(events)
+    return str(made["strength_text"]) if made else ""
 
 
 def _record(row: Row, events: list[Row], line: Row, shelf: _Shelf) -> Record:

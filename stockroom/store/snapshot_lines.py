@@ -21,7 +21,7 @@ from stockroom.planning.facts import (
     Requirement,
     Swap,
 )
-from stockroom.store.former_rules import with_former_rules
+from stockroom.store.former_rules import formers_of, with_former_rules
 from stockroom.store.reading import Reader, Row
 
 Value = TypeVar("Value")
@@ -34,11 +34,14 @@ def lines_of(reader: Reader) -> dict[str, Line]:
     rules = _by_owner(reader, "keeping_rule", "line_id", rule_of, tail=in_use)
     packs = _by_owner(reader, "pack", "line_id", _pack)
     substances = {row["id"]: row for row in reader.rows("substance")}
+    formers = formers_of(reader)
     return {
         row["key"]: _line(
             row,
             substances.get(row["substance_id"]),
-            tuple(rules.get(row["id"], ())),
+            with_former_rules(
+                rules.get(row["id"], ()), formers.get(row["key"], ""), Form(row["form"])
+            ),
             tuple(packs.get(row["id"], ())),
         )
         for row in reader.rows("line")
@@ -74,9 +77,7 @@ def _line(
         molar_mass=row["molar_mass"],
         assay=row["assay"],
         density=row["density"],
-        rules=with_former_rules(rules, substance["peroxide_former"], Form(row["form"]))
-        if substance
-        else rules,
+        rules=rules,
         never_kept=row["never_kept"],
         level=row["level"],
         largest_batch=row["largest_batch"],

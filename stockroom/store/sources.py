@@ -1,9 +1,17 @@
-"""The citations behind the source keys of the tables that travel with the program."""
+"""Where the tables that travel with the program are, and the citations behind their source keys."""
 
 from __future__ import annotations
 
 import csv
 from pathlib import Path
+
+
+def seeds_folder() -> Path:
+    """Where the tables that travel with the program are: inside it, else beside it."""
+    package = Path(__file__).resolve().parent.parent
+    # a wheel carries the tables inside the package
+    inside = package / "seeds_data"
+    return inside if inside.is_dir() else package.parent / "seeds_data"
 
 
 def citations(folder: Path) -> dict[str, str]:

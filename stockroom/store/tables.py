@@ -31,6 +31,7 @@ from stockroom.store.tables_house import (
     Numbered,
     Place,
     Reading,
+    ReadingTakenBack,
     Term,
     Vessel,
 )
@@ -77,6 +78,7 @@ __all__ = [
     "Parent",
     "Place",
     "Reading",
+    "ReadingTakenBack",
     "Recipe",
     "Requirement",
     "RowChange",

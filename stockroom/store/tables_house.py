@@ -5,7 +5,7 @@ No `from __future__ import annotations`: see `tables.py`.
 
 from datetime import date
 
-from sqlalchemy import BigInteger, UniqueConstraint
+from sqlalchemy import BigInteger, Index, UniqueConstraint
 from sqlmodel import Field, SQLModel
 
 
@@ -120,3 +120,15 @@ class Reading(Numbered, table=True):
     place_id: int = Field(foreign_key="place.id")
     at: str
     centi: int
+
+
+class ReadingTakenBack(Numbered, table=True):
+    """A reading that was brought into the wrong place, with the change that took it back."""
+
+    __tablename__ = "reading_taken_back"
+    __table_args__ = (Index("reading_taken_back_at", "place_id", "at"),)
+
+    place_id: int = Field(foreign_key="place.id")
+    at: str
+    centi: int
+    change_id: int = Field(foreign_key="row_change.id")

@@ -6,16 +6,21 @@ A reading is kept in hundredths of a degree at a local clock time to the minute.
 from __future__ import annotations
 
 from collections.abc import Iterable
+from dataclasses import dataclass
 from datetime import date, datetime, timedelta
 from typing import TYPE_CHECKING
 
 from stockroom.keeping.temperatures import TemperatureLog, midnight, moment_of
+from stockroom.measure.formats import format_number
 from stockroom.store.kinds import STANDING
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import Reader, Row
 
 if TYPE_CHECKING:
     from stockroom.store.engine import Session
+
+_TABLE = "readings"
+_SPAN = "WHERE place_id = :place AND at >= :first AND at < :last"
 
 PER_DEGREE = 100
 """A reading counts hundredths of a degree."""
@@ -111,21 +116,101 @@ def _text(moment: datetime) -> str:
     return moment.isoformat(timespec="minutes")
 
 
+@dataclass(frozen=True, slots=True)
+class Noted:
+    """What was done to a place's readings, as it was recorded: brought in, or taken back."""
+
+    told: str
+    taken_back: bool
+    why: str
+    by: str
+    on: str
+
+
+def noted_of(reader: Reader, place: str) -> tuple[Noted, ...]:
+    """What was brought in and taken back of a place, oldest first."""
+    rows = reader.rows(
+        "row_change", "WHERE table_name = ? AND row_key = ? ORDER BY id", _TABLE, place
+    )
+    return tuple(
+        Noted(row["after"] or row["before"], not row["after"], row["why"], row["by"],
+              row["entered_on"])
+        for row in rows
+    )  # fmt: skip
+
+
 def note_file(
     session: Session, place: str, told: str, *, by: str, today: date, at: datetime
 ) -> None:
     """Keep on record which file brought readings of a place, when and by whom."""
+    _note(session, place, ("", told), "a logger's file brought in", by=by, today=today, at=at)
+
+
+def take_back(
+    session: Session,
+    place: Row,
+    days: tuple[date, date],
+    *,
+    why: str,
+    by: str,
+    today: date,
+    at: datetime,
+) -> str:
+    """Take a place's readings of some days, both included, out of use: which, in words.
+
+    They are kept, with who, when and why. "" and nothing done where none is held.
+    """
+    from sqlalchemy import text
+
+    span = {"place": place["id"], "first": days[0].isoformat(), "last": f"{days[1]}T24"}
+    link = session.connection()
+    count, first, last = link.execute(
+        text(f"SELECT count(*), min(at), max(at) FROM reading {_SPAN}"), span
+    ).one()
+    if not count:
+        return ""
+    told = span_in_words(count, first, last)
+    change = _note(session, place["place"], (told, ""), why, by=by, today=today, at=at)
+    kept = "INSERT INTO reading_taken_back (place_id, at, centi, change_id)"
+    link.execute(
+        text(f"{kept} SELECT place_id, at, centi, :change FROM reading {_SPAN}"),
+        span | {"change": change},
+    )
+    link.execute(text(f"DELETE FROM reading {_SPAN}"), span)
+    return told
+
+
+def span_in_words(count: int, first: str, last: str) -> str:
+    """So many readings and from when to when: "2 readings, 2027-01-04 00:00 to …"."""
+    readings = f"{format_number(count)} reading{'' if count == 1 else 's'}"
+    return f"{readings}, {first.replace('T', ' ')} to {last.replace('T', ' ')}"
+
+
+def _note(
+    session: Session,
+    place: str,
+    change: tuple[str, str],
+    why: str,
+    *,
+    by: str,
+    today: date,
+    at: datetime,
+) -> int:
     from stockroom.store.tables import RowChange
 
-    session.add(
-        RowChange(
-            table_name="readings",
-            row_key=place,
-            column_name="at",
-            after=told,
-            why="a logger's file brought in",
-            by=by,
-            entered_on=today,
-            entered_at=at.isoformat(sep=" "),
-        )
+    row = RowChange(
+        table_name=_TABLE,
+        row_key=place,
+        column_name="at",
+        before=change[0],
+        after=change[1],
+        why=why,
+        by=by,
+        entered_on=today,
+        entered_at=at.isoformat(sep=" "),
     )
+    session.add(row)
+    # numbered at once: what is taken back names the change that took it
+    session.flush()
+    assert row.id is not None
+    return row.id

@@ -15,6 +15,12 @@ if TYPE_CHECKING:
 BLEACH = ("fades", "12.5 % w/v", "--order", "2", "--rate", "0.0090", "--per", "month")
 
 
+@pytest.fixture(autouse=True)
+def initials(monkeypatch: pytest.MonkeyPatch) -> None:
+    """Whose hand brings a record in, where a test does not say."""
+    monkeypatch.setenv("STOCKROOM_BY", "T1")
+
+
 @pytest.fixture
 def week(tmp_path: Path) -> str:
     """A week of hourly readings of the refrigerator, before the practice day."""
@@ -103,7 +109,7 @@ def test_a_law_outside_its_range_is_marked_a_guess(stockroom: Stockroom) -> None
 @pytest.mark.parametrize(
     ("words", "told"),
     [
-        (("fades", "B01", "--at", "20"), "--at want a law"),
+        (("fades", "B01", "--at", "20"), "--at wants a law"),
         (("fades", "12 % w/v", "--order", "1.5", "--rate", "1"), "'1.5' is not a whole number"),
         (("fades", "12 % w/v", "--order", "1", "--rate", "fast"), "'fast' is not a number"),
         (("fades", "12 % w/v", "--order", "1", "--rate", "-1"), "would gain strength"),
@@ -176,3 +182,125 @@ def test_the_verdict_says_that_it_goes_by_the_record(
     assert stockroom("logger", "H1", "hot.csv", store=own).code == 0
     out = stockroom("past", store=own).out
     assert "temperatures as logged to 2027-01-02" in " ".join(out.split())
+
+
+BY = ("--by", "T1")
+
+
+def test_nothing_is_expected_stronger_than_it_was_found(stockroom: Stockroom, own: Path) -> None:
+    # to two figures 0.0985 would read 0.099
+    stockroom("found", "S02", "0.0985 mol/dm3", "--on", "2027-01-04", *BY, store=own)
+    assert "expected 0.0985 mol/dm³" in stockroom("fades", "S02", store=own).said
+
+
+def test_a_label_is_told_as_it_stands(stockroom: Stockroom, practice: Path) -> None:
+    told = stockroom("fades", "B14", store=practice).said
+    assert "label 36 % w/w (11.65 mol/dm³)" in told
+    # to two figures it would be 12, and stronger than its label
+    assert "expected 11.65 mol/dm³" in told
+
+
+def test_a_law_without_a_factor_says_so(stockroom: Stockroom, practice: Path) -> None:
+    told = stockroom("fades", "B01", store=practice).said
+    assert "half in 2 100 days warmth is left out of account" in told
+    assert "left out of account" not in stockroom("fades", "B05a", store=practice).said
+
+
+def test_a_place_without_temperature_says_what_it_counts_as(
+    stockroom: Stockroom, own: Path
+) -> None:
+    stockroom("add", "places", "place=N1", *BY, store=own)
+    stockroom("move", "B05a", "N1", "--on", "2027-01-02", *BY, store=own)
+    told = stockroom("fades", "B05a", store=own).said
+    assert "N1 2027-01-02 to 2027-01-04 with its own °C not known, counted at 20 °C" in told
+
+
+def test_a_line_in_the_place_of_a_bottle_names_its_bottles(
+    stockroom: Stockroom, practice: Path
+) -> None:
+    refused = stockroom("fades", "hydrogen peroxide 100 vol", store=practice)
+    assert (refused.code, "Bottles of it: B01, B02." in refused.err) == (2, True), refused.err
+
+
+@pytest.mark.parametrize(
+    ("words", "told"),
+    [
+        (("--factor", "0.5"), "A factor of 0.5 per 10 °C is not between 1 and 20"),
+        (("--ea", "80", "--to", "500"), "--to 500 °C is not between -90 and 120"),
+        (("--rate", "1e-300"), "A rate of 1e-300 is no figure of a law"),
+        (("--law", "bleach"), 'No law is called "bleach"'),
+    ],
+)
+def test_a_slip_in_a_typed_law_is_asked_about(
+    stockroom: Stockroom, words: tuple[str, ...], told: str
+) -> None:
+    law = () if "--law" in words else ("--order", "1", "--at", "20", "--rate", "0.1")
+    refused = stockroom("fades", "1 M", *law, *words)
+    assert (refused.code, told in refused.err) == (2, True), refused.err
+
+
+@pytest.mark.parametrize(("rate", "told"), [("1e-9", "more than a hundred"), ("1e9", "less than")])
+def test_times_beyond_any_use_are_not_spelt_out(stockroom: Stockroom, rate: str, told: str) -> None:
+    assert f"gone in {told}" in stockroom("fades", "1 M", "--order", "1", "--rate", rate).out
+
+
+# -- a record brought into the wrong place ------------------------------------------------
+
+
+def test_a_record_of_another_place_is_noticed(stockroom: Stockroom, own: Path, week: str) -> None:
+    told = stockroom("logger", "H1", week, *BY, store=own).said
+    assert "its mean is 22 °C below that: of another place?" in told
+
+
+def test_readings_are_taken_back_and_the_right_ones_come_in(
+    stockroom: Stockroom, own: Path, week: str
+) -> None:
+    stockroom("logger", "H1", week, *BY, store=own)
+    span = ("--from", "2026-12-21", "--to", "2026-12-27")
+    done = stockroom("logger", "H1", "--take-back", *span, "--why", "of F1", *BY, store=own)
+    assert done.code == 0, done.err
+    assert "taken back 168 readings, 2026-12-21 00:00 to 2026-12-27 23:00" in done.said
+    assert "added 168; 0 were held already" in stockroom("logger", "H1", week, store=own).out
+
+
+def test_what_was_done_to_a_places_record_is_told(
+    stockroom: Stockroom, own: Path, week: str
+) -> None:
+    stockroom("logger", "H1", week, *BY, store=own)
+    span = ("--from", "2026-12-22", "--to", "2026-12-22")
+    stockroom("logger", "H1", "--take-back", *span, "--why", "of F1", *BY, store=own)
+    record = stockroom("logger", "H1", "--json", store=own).json["record"]
+    whole = "168 readings, 2026-12-21 00:00 to 2026-12-27 23:00"
+    assert record == [
+        f"brought in 2027-01-04 by T1: week.csv: {whole}",
+        "taken back 2027-01-04 by T1: 24 readings, 2026-12-22 00:00 to 2026-12-22 23:00: of F1",
+    ]
+
+
+@pytest.mark.parametrize(
+    ("words", "told"),
+    [
+        (("--why", "x", *BY), "From which day to which"),
+        (("--from", "2026-12-21", "--to", "2026-12-27", *BY), "Why are the readings"),
+        (("--from", "2026-12-21", "--to", "2026-12-27", "--why", "x", "--by", " "), "initials"),
+        (("--from", "2026-12-27", "--to", "2026-12-21", "--why", "x", *BY), "runs backwards"),
+        (("--from", "2025-12-21", "--to", "2025-12-27", "--why", "x", *BY), "holds no readings"),
+        (("week.csv",), "goes by days"),
+    ],
+)
+def test_a_taking_back_that_says_too_little_is_refused(
+    stockroom: Stockroom, own: Path, week: str, words: tuple[str, ...], told: str
+) -> None:
+    stockroom("logger", "F1", week, *BY, store=own)
+    refused = stockroom("logger", "F1", "--take-back", *words, store=own)
+    assert (refused.code, told in refused.err) == (2, True), refused.err
+    assert stockroom("logger", "F1", "--json", store=own).json["count"] == 168
+
+
+def test_a_record_nobody_signs_is_refused(
+    stockroom: Stockroom, own: Path, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    monkeypatch.delenv("STOCKROOM_BY")
+    (tmp_path / "week.csv").write_text("time,°C\n2027-01-01 00:00,5\n2027-01-01 01:00,5\n", "utf-8")
+    result = stockroom("logger", "F1", "week.csv", store=own)
+    assert (result.code, "Whose initials?" in result.err) == (2, True)

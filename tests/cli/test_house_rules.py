@@ -142,3 +142,82 @@ def test_a_rule_typed_in_is_the_houses_own(stockroom: Stockroom, own: Path) -> N
     stockroom("add", "keeping", f"line={STARCH}", "rule=look", "lasts=2 d", "--by", "T1", store=own)
     rules = stockroom("rule", STARCH, "--json", store=own).json["rules"]
     assert [rule["whose"] for rule in rules] == ["starter value", "house rule"]
+
+
+BY = ("--why", "x", "--by", "T1")
+
+
+def test_a_word_that_fits_several_rules_is_asked_about(stockroom: Stockroom, own: Path) -> None:
+    for band in ("colder_than_c=10", "warmer_than_c=10"):
+        stockroom("rule", STARCH, "life", "lasts=2 d", band, *BY, store=own)
+    refused = stockroom("rule", STARCH, "life", "lasts=9 d", "purpose=any", *BY, store=own)
+    assert (refused.code, "has 3 life rules: which one?" in refused.err) == (2, True)
+
+
+def test_a_bound_with_fewer_figures_is_the_one_that_is_there(
+    stockroom: Stockroom, own: Path
+) -> None:
+    line = "hydrogen peroxide 100 vol"
+    for bound in ("stronger_than=50 vol", "up_to_strength=50 vol"):
+        stockroom("rule", line, "life", "lasts=10 d", bound, *BY, store=own)
+    # 50 vol is 4.46149727… mol/dm³
+    said = stockroom(
+        "rule", line, "life", "lasts=8 d", "stronger_than=4.461497 mol/dm3", *BY, store=own
+    )
+    assert said.code == 0, said.err
+    assert "life: 10 days from made, above 4.461 mol/dm³ → life: 8 days" in said.said
+
+
+@pytest.mark.parametrize(
+    ("cells", "told"),
+    [
+        (("colder_than_c=10", "warmer_than_c=20"), "warmer_than_c 20 and colder_than_c 10 leave"),
+        (("stronger_than=4 g/dm3", "up_to_strength=3 g/dm3"), "leave nothing between"),
+        (("at_c=20", "factor_per_10c=0.5"), "factor_per_10c 0.5 is not between 1 and 20"),
+        (("at_c=20", "factor_per_10c=35"), "factor_per_10c 35 is not between 1 and 20"),
+    ],
+)
+def test_a_rule_that_holds_nowhere_or_runs_backwards_is_refused(
+    stockroom: Stockroom, own: Path, cells: tuple[str, ...], told: str
+) -> None:
+    refused = stockroom("rule", STARCH, "life", "lasts=2 d", *cells, *BY, store=own)
+    assert (refused.code, told in refused.err) == (2, True), refused.err
+
+
+def test_a_longer_life_beside_a_shorter_one_is_told_not_to_count(
+    stockroom: Stockroom, own: Path
+) -> None:
+    said = stockroom("rule", STARCH, "life", "lasts=9 d", "colder_than_c=8", *BY, store=own).said
+    assert "life: 3 days from made: holds there too, and the earlier day counts." in said
+
+
+@pytest.mark.parametrize("kind", ["same day", "never kept"])
+def test_what_its_name_says_wants_no_cells(stockroom: Stockroom, own: Path, kind: str) -> None:
+    said = stockroom("rule", STARCH, kind, *BY, store=own)
+    assert (said.code, f"no such rule → {kind}." in said.said) == (0, True), said.err
+
+
+@pytest.mark.parametrize("how", [("--withdraw",), ("safety=no",)])
+def test_what_is_never_kept_stays_so(stockroom: Stockroom, own: Path, how: tuple[str, ...]) -> None:
+    refused = stockroom("rule", "ammoniacal silver", "never kept", *how, *BY, store=own)
+    assert (refused.code, "There is no test that extends it" in refused.err) == (1, True)
+
+
+@pytest.mark.parametrize(
+    ("cells", "warned"), [("lasts=12 months", True), ("safety=no", True), ("lasts=3 months", False)]
+)
+def test_a_looser_safety_date_is_allowed_with_a_word_of_caution(
+    stockroom: Stockroom, own: Path, cells: str, warned: bool
+) -> None:
+    said = stockroom("rule", "cyclohexene", "test or discard", cells, *BY, store=own)
+    assert (said.code, "It was a safety date" in said.said) == (0, warned), said.err
+
+
+def test_a_bottles_number_stands_for_its_line(stockroom: Stockroom, practice: Path) -> None:
+    lines = stockroom("rule", "b01", store=practice).out.splitlines()
+    assert lines[1] == "hydrogen peroxide 100 vol"
+
+
+def test_no_name_is_no_line(stockroom: Stockroom, practice: Path) -> None:
+    refused = stockroom("rule", " ", store=practice)
+    assert (refused.code, "names none" in refused.err) == (2, True)

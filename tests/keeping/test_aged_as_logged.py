@@ -17,6 +17,7 @@ from stockroom.keeping.rules import Law, Origin, Rule, RuleKind
 from stockroom.keeping.strength import aged, day_below, doubts_of, strengths_on
 from stockroom.keeping.temperatures import TemperatureLog
 from stockroom.keeping.verdict import Condition, limits_of, verdict
+from stockroom.keeping.warming import where_it_stood
 
 MONDAY = day("01-04")
 # the house's planning figure: common practice, no source
@@ -216,3 +217,10 @@ def test_a_mark_is_dated_and_held_against_the_day_it_is_wanted() -> None:
 def test_a_bottle_without_law_or_strength_has_less_to_tell() -> None:
     found = course(Record(made=MONDAY), (), day("02-04"), [Mark("half", 0.5)])
     assert (found.rule, found.t90, found.marks, found.kinetic) == (None, None, (), None)
+
+
+def test_a_life_used_up_in_two_places_is_not_told_as_one() -> None:
+    record = bottle(Stay(MONDAY, "A1", 18.0), Stay(MONDAY + timedelta(7), "H1", 28.0))
+    later = MONDAY + timedelta(14)
+    assert where_it_stood(record, MONDAY + timedelta(3)) == "at 18 °C"
+    assert where_it_stood(record, later) == "where it stood, now at 28 °C"

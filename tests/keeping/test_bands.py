@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from stockroom.keeping.bands import band_faults
+from stockroom.keeping.bands import band_faults, overlapping
 from stockroom.keeping.rules import Origin, Purpose, Rule, RuleKind
 from stockroom.measure.periods import Period
 
@@ -42,3 +42,15 @@ def test_rules_for_another_purpose_or_origin_are_no_second_rule() -> None:
         life(0.2, None, origin=Origin.OPENED),
     ]
     assert band_faults(rules, "mol/dm3") == []
+
+
+def test_rules_that_hold_for_the_same_bottles_are_found() -> None:
+    rule, wide, cold = life(0.1, 0.5), life(None, None, 9), life(0.1, 0.5, 30, colder_than=8)
+    warm, strong = life(0.1, 0.5, 3, warmer_than=8), life(0.5, None)
+    assert overlapping(rule, [rule, wide, cold, warm, strong]) == [wide, cold, warm]
+    assert overlapping(cold, [rule, wide, cold, warm, strong]) == [rule, wide]
+
+
+def test_another_purpose_or_origin_is_another_thing_said() -> None:
+    exact, opened = life(None, None, purpose=Purpose.EXACT), life(None, None, origin=Origin.OPENED)
+    assert overlapping(life(None, None), [exact, opened]) == []

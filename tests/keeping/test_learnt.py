@@ -210,7 +210,7 @@ def test_two_checks_each_teach_together_where_one_alone_would_not() -> None:
 def test_one_check_is_too_few_and_the_next_day_is_told() -> None:
     with pytest.raises(MissingFigure, match="One check of S02 so far") as refused:
         learn_bottle(series((30, 0.1)), 1)
-    assert "once more after 2026-12-02" in refused.value.hint
+    assert "on 2 more days, the first after 2026-12-02" in refused.value.hint
 
 
 def test_two_checks_are_too_few_but_say_what_they_can() -> None:
@@ -276,7 +276,7 @@ def test_figures_exactly_on_a_line_are_asked_about() -> None:
 
 
 def test_a_strength_of_nothing_fits_no_exponential() -> None:
-    with pytest.raises(BadAmount, match="strength of 0"):
+    with pytest.raises(BadAmount, match="S02 was found at 0 on 2026-12-04"):
         learn_bottle(series((0, 0.1), (30, 0.05), (60, 0.0)), 1)
 
 

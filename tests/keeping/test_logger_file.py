@@ -236,3 +236,18 @@ def test_what_a_logger_writes_comes_back(steps: list[tuple[int, int]], mark: str
         rows.append((when, tenths / 10))
     lines = [f"{at.isoformat(' ', 'minutes')}{mark}{celsius}" for at, celsius in rows]
     assert read_logger(table(f"time{mark}temp °C", *lines)).readings == tuple(rows)
+
+
+@pytest.mark.parametrize("heading", ["Ch1 (C)", "Channel 1 [C]", "T1 ( c )"])
+def test_a_scale_in_brackets_marks_the_temperature(heading: str) -> None:
+    rows = (f"Date,Time,{heading}", "2027-01-22,10:00:00,5.1", "2027-01-22,10:30:00,5.3")
+    found = read_logger(table("Logger EL", "Serial: 1", *rows))
+    assert (found.readings, found.stated) == (BOTH, "C")
+
+
+def test_a_heading_that_says_nothing_is_read_when_named() -> None:
+    text = table("Time,Reading", "2027-01-22 10:00,5.1", "2027-01-22 10:30,5.3")
+    with pytest.raises(BadInput, match="the nearest is") as refused:
+        read_logger(text)
+    assert "--column" in refused.value.hint
+    assert read_logger(text, column="reading").readings == BOTH

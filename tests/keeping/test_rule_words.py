@@ -48,3 +48,9 @@ DAYS = Period(28, "days")
 )
 def test_a_rule_says_what_it_means(rule: Rule, said: str) -> None:
     assert rule_in_words(rule, "mol/dm3") == said
+
+
+def test_a_band_can_be_told_in_the_unit_of_the_label() -> None:
+    rule = Rule(RuleKind.RECHECK, Period(90, "days"), Origin.OPENED, above=4.461497)
+    told = rule_in_words(rule, "mol/dm3", ("vol", 11.207))
+    assert told == "recheck: 90 days from opened, above 50 vol"

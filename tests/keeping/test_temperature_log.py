@@ -224,3 +224,9 @@ def test_freezers_and_ovens_have_no_limits_here(celsius: float | None) -> None:
 
 def test_the_kinetic_response_has_its_own_gas_constant() -> None:
     assert kinetic_response().theta == pytest.approx(10_000, abs=0.5)
+
+
+def test_two_readings_a_month_apart_tell_nothing_of_the_time_between() -> None:
+    # three of their own steps would be a quarter of a year
+    assert logged(5.0, 5.0, every=30 * 1440).gap_limit == 7 * 1440
+    assert logged(*[5.0] * 5, every=7 * 1440).gap_limit == 7 * 1440

@@ -175,9 +175,8 @@ def _poison(limit: Limit) -> Iterator[str]:
     if limit.route is None:
         yield f"{limit.h_code} has no route"
         return
-    way_in = limit.way_in
-    if CODES[way_in][category - 1] != limit.h_code:
-        yield f"{limit.h_code} is not category {category} {way_in}"
+    if CODES[limit.way_in][category - 1] != limit.h_code:
+        yield f"{limit.h_code} is not category {category} {limit.way_in}"
     low = ([0.0, *LIMITS[limit.route]])[category - 1]
     if limit.ate is not None and not low < limit.ate <= LIMITS[limit.route][category - 1]:
         yield f"an estimate of {limit.ate:g} is not category {category}"
@@ -251,7 +250,8 @@ PLANTED = [
     ("band_faults", "sodium hydroxide", "H315", {"from_percent": "3"}),
     ("band_faults", "sodium hydroxide", "H315", {"below_percent": "4"}),
     ("acute_faults", "phenol", "H301", {"route": ""}),
-    ("acute_faults", "phenol", "H301", {"route": "dermal"}),
+    ("row_faults", "phenol", "H301", {"route": "dermal"}),
+    ("row_faults", "phenol", "H301", {"h_code": "H302"}),
     ("acute_faults", "phenol", "H301", {"ate": "1200"}),
     ("factor_faults", "silver nitrate", "H410", {"m_factor": "25"}),
     ("factor_faults", "silver nitrate", "H314", {"m_factor": "10"}),

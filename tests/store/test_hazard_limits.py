@@ -11,6 +11,7 @@ from sqlmodel import select
 
 from stockroom.errors import BadInput
 from stockroom.safety.limits import Basis
+from stockroom.service.database import add_row
 from stockroom.service.hazards import hazards_of, hazards_of_makes
 from stockroom.service.plan import to_make
 from stockroom.store.engine import writing
@@ -58,6 +59,22 @@ def test_a_row_that_makes_no_sense_is_quoted(own: Path, hazard_class: str, code:
     enter(own, "sodium hydroxide", hazard_class, code)
     with pytest.raises(BadInput, match=r"Skin Corr\. "):
         hazards_of(own, "S06")
+
+
+@pytest.mark.parametrize(
+    ("cells", "told"),
+    [
+        ({"percent_of": "Zz9"}, '"Zz" is no element'),
+        ({"m_factor": "0"}, "m_factor 0 is none"),
+        ({"ate": "0"}, "ate 0 is none"),
+    ],
+)
+def test_a_figure_that_would_spoil_every_answer_is_not_taken(
+    own: Path, cells: dict[str, str], told: str
+) -> None:
+    row = {"substance": "sodium hydroxide", "hazard_class": "Skin Corr. 1B", "h_code": "H314"}
+    with pytest.raises(BadInput, match=told):
+        add_row(own, "hazards", row | {"basis": "harmonised"} | cells, by="T1")
 
 
 def test_it_spoils_no_other_answer_and_no_list_of_makes(own: Path) -> None:

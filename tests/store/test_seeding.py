@@ -438,12 +438,30 @@ def test_a_named_law_takes_no_figures_beside_its_own(own: Path) -> None:
         add_row(own, "keeping", cells | {"rate": "2", "factor_per_10c": "3"}, by="T1")
 
 
+def kept(own: Path, line: str, rule: str, cells: dict[str, str], *, withdraw: bool = False) -> str:
+    day = date(2027, 1, 4)
+    return set_rule(own, line, rule, cells, withdraw=withdraw, why="x", today=day, by="T1").text
+
+
+@pytest.mark.parametrize(
+    ("line", "rule", "told"),
+    [
+        ("cyclohexene, unstabilised", "test or discard", "from opened, a safety date"),
+        ("potassium iodide", "life", "life: 90 days from received"),
+        ("sodium thiosulfate 0.100 mol/dm3", "life", "life: 90 days from made"),
+    ],
+)
+def test_a_life_is_counted_from_a_day_the_bottle_has(
+    own: Path, line: str, rule: str, told: str
+) -> None:
+    if rule == "test or discard":
+        kept(own, line, rule, {}, withdraw=True)
+    assert told in kept(own, line, rule, {"lasts": "90 d"})
+
+
 def test_a_rate_of_one_order_is_no_rate_of_another(own: Path) -> None:
     with pytest.raises(BadInput, match=r"order 0: at what rate.*is one of order 1"):
-        set_rule(
-            own, "hydrogen peroxide 100 vol", "fades", {"order": "0"},
-            why="x", today=date(2027, 1, 4), by="T1",
-        )  # fmt: skip
+        kept(own, "hydrogen peroxide 100 vol", "fades", {"order": "0"})
 
 
 @pytest.mark.parametrize(

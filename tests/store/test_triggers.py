@@ -86,3 +86,45 @@ def test_the_record_of_a_correction_refuses(raw: sqlite3.Connection, statement: 
     )
     with pytest.raises(sqlite3.IntegrityError, match=r"^KEPT "):
         raw.execute(statement)
+
+
+@pytest.fixture
+def reading(raw: sqlite3.Connection) -> tuple[int, str, int]:
+    """A reading of a logger, as its row."""
+    row = (1, "2027-01-04T09:00", 500)
+    raw.execute("INSERT INTO reading (place_id, at, centi) VALUES (?, ?, ?)", row)
+    return row
+
+
+def change_row(raw: sqlite3.Connection) -> int:
+    named = "table_name, row_key, column_name, before, after, why, by, entered_on, entered_at"
+    marks = "'readings', 'F1', 'at', '', '', '', '', '2027-01-04', ''"
+    return int(raw.execute(f"INSERT INTO row_change ({named}) VALUES ({marks})").lastrowid or 0)
+
+
+def keep(raw: sqlite3.Connection, row: tuple[int, str, int]) -> None:
+    named = "place_id, at, centi, change_id"
+    raw.execute(
+        f"INSERT INTO reading_taken_back ({named}) VALUES (?, ?, ?, ?)", (*row, change_row(raw))
+    )
+
+
+def test_a_reading_goes_only_where_it_is_kept(
+    raw: sqlite3.Connection, reading: tuple[int, str, int]
+) -> None:
+    keep(raw, (reading[0], reading[1], 600))
+    with pytest.raises(sqlite3.IntegrityError, match=r"^KEPT What a logger read is never removed"):
+        raw.execute("DELETE FROM reading")
+    keep(raw, reading)
+    assert raw.execute("DELETE FROM reading").rowcount == 1
+
+
+@pytest.mark.parametrize(
+    "statement", ["UPDATE reading_taken_back SET centi = 0", "DELETE FROM reading_taken_back"]
+)
+def test_what_was_taken_back_stays(
+    raw: sqlite3.Connection, reading: tuple[int, str, int], statement: str
+) -> None:
+    keep(raw, reading)
+    with pytest.raises(sqlite3.IntegrityError, match=r"^KEPT What was taken back is never"):
+        raw.execute(statement)

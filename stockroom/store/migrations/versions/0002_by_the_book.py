@@ -22,6 +22,7 @@ def upgrade() -> None:
     _readings()
     _hazards()
     _columns()
+    op.execute(TYPED_BY_THE_HOUSE)
     for trigger in TRIGGERS:
         op.execute(trigger)
 
@@ -118,8 +119,35 @@ def _columns() -> None:
     op.add_column("entry", _number("peroxide_mg_kg"))
 
 
-TRIGGERS = tuple(
-    f"CREATE TRIGGER hazard_text_no_{action.lower()} BEFORE {action} ON hazard_text"
-    f" BEGIN SELECT RAISE(ABORT, 'KEPT What a sheet said is never {past}.'); END"
-    for action, past in (("UPDATE", "altered"), ("DELETE", "removed"))
+# before there was a starter house, whoever filled a store of their own typed its rules
+TYPED_BY_THE_HOUSE = (
+    "UPDATE keeping_rule SET house = TRUE WHERE NOT EXISTS"
+    " (SELECT 1 FROM house WHERE setting = 'practice' AND value = 'yes')"
+)
+
+
+# KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
+def _kept(table: str, what: str, alike: str) -> tuple[str, ...]:
+    def never(name: str, when: str, past: str, only: str = "") -> str:
+        return (
+            f"CREATE TRIGGER {table}_no_{name} BEFORE {when} ON {table}{only}"
+            f" BEGIN SELECT RAISE(ABORT, 'KEPT {what} is never {past}.'); END"
+        )
+
+    # INSERT OR REPLACE would remove the old row without waking the DELETE trigger
+    there = f" WHEN EXISTS (SELECT 1 FROM {table} WHERE {alike})"
+    return (
+        never("update", "UPDATE", "altered"),
+        never("delete", "DELETE", "removed"),
+        never("overwrite", "INSERT", "written over", there),
+    )
+
+
+TRIGGERS = (
+    *_kept("hazard_text", "What a sheet said", "id = NEW.id"),
+    *_kept(
+        "reading",
+        "What a logger read",
+        "id = NEW.id OR (place_id = NEW.place_id AND at = NEW.at)",
+    ),
 )
