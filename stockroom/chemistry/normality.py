@@ -103,7 +103,7 @@ def _ask(reaction: str, rows: tuple[Reaction, ...], of: str, shown: str) -> BadA
     doubt = f'"{reaction}" does not say which' if reaction else "normality depends on the reaction"
     return BadAmount(
         f"{shown}: {doubt}. Equivalents per mol of {of}: {said}.",
-        f'Write it as "0.1 N {_worded(rows[0])}".',
+        f'Say it after the N, as "N {_worded(rows[0])}".',
     )
 
 

@@ -117,6 +117,22 @@ _TABLES = (
 )  # fmt: skip
 
 
+_HELPED = {
+    "iodine": "dissolve it first in a little water with about twice its mass of potassium iodide",
+    "i2": "dissolve it first in a little water with about twice its mass of potassium iodide",
+}
+"""What brings into solution what water alone does not. Common practice, no source."""
+
+
+def helped_by(*names: str) -> str:
+    """How a substance is brought into solution that water alone does not take; else empty.
+
+    >>> helped_by("iodine")
+    'dissolve it first in a little water with about twice its mass of potassium iodide'
+    """
+    return next((_HELPED[name.casefold()] for name in names if name.casefold() in _HELPED), "")
+
+
 def solubility(celsius: float, *names: str) -> Solubility:
     """What dissolves of a substance at a temperature, by any of its names or its formula.
 

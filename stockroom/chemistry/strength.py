@@ -11,6 +11,7 @@ from dataclasses import dataclass
 from stockroom.chemistry.figures import positive
 from stockroom.chemistry.peroxide import vol_to_molar
 from stockroom.errors import BadAmount, MissingFigure
+from stockroom.measure.formats import format_strength
 from stockroom.measure.strengths import Strength, StrengthUnit
 
 PER_MOLE = "mol/dm3"
@@ -73,7 +74,7 @@ class _Figures:
     def _known(self, figure: float | None, name: str, wanted: str) -> float:
         if figure is None:
             raise MissingFigure(
-                f"{self.shown}: I need the {name} to turn {wanted} into mol/dm³.",
+                f"{self.shown}: I need the {name} to go between {wanted} and mol/dm³.",
                 "Read it off the label or the supplier's data sheet.",
             )
         return positive(figure, name)
@@ -129,7 +130,7 @@ def express(
     a normality is for, `gas_volume` the dm³/mol that vol is to be counted at.
     Raises: as `canonical`, and BadAmount when a per cent comes out above 100.
     """
-    shown = f"{of} {conc.value:g} {conc.unit}".strip()
+    shown = f"{of} {format_strength(conc.value, conc.unit)}".strip()
     figures = _Figures(molar_mass, density, pure_density, dry_mass, of, shown)
     if unit == conc.unit:
         return conc.value

@@ -30,9 +30,17 @@ from stockroom.measure.formats import format_number
 CONCORDANT_CM3 = 0.1
 """How far apart titres may lie. Common practice, no source."""
 
+FACTORS, REPEATABILITY = (0.90, 1.10), 0.002
+"""What a volumetric solution may be of its nominal strength, and its titres' relative spread.
+
+Source: British Pharmacopoeia, appendix on volumetric solutions, as seen in a reprint; that
+the 0.2 % is a relative standard deviation is from memory.
+"""
+
 EXPANSION_PER_C, SWING_C = 2.1e-4, 4.0
 """Of water per °C, and how far the room may be from 20 °C. Source: QUAM:2012, example A1."""
 
+_AGREE = 2
 _CM3_PER_DM3 = 1000.0
 _BINARY_DUST = 1e-9
 
@@ -51,9 +59,38 @@ def mean_titre(titres_cm3: Sequence[float], *, within_cm3: float = CONCORDANT_CM
     spread = max(titres_cm3) - min(titres_cm3)
     if spread > within_cm3 + _BINARY_DUST:
         raise BadAmount(
-            f"Not concordant ({format_number(spread, 2)} cm³).", "Add another or keep as rough."
+            f"Not concordant ({format_number(spread, 2)} cm³).", _leave_out(titres_cm3, within_cm3)
         )
     return sum(titres_cm3) / len(titres_cm3)
+
+
+def _leave_out(titres_cm3: Sequence[float], within_cm3: float) -> str:
+    """What to do with titres that disagree: the most that do agree, and those that do not."""
+    rising = sorted(titres_cm3)
+    runs = [
+        [each for each in rising[start:] if each - rising[start] <= within_cm3 + _BINARY_DUST]
+        for start in range(len(rising))
+    ]
+    agreeing = max(runs, key=len)
+    # to the burette's hundredth, upwards: within what is said here they do agree
+    apart = math.ceil((rising[-1] - rising[0]) * 100 - _BINARY_DUST) / 100
+    rough = f"keep as rough: --within {apart:g}"
+    # two runs of one length: nobody but the one who titrated can tell which
+    if len(agreeing) < _AGREE or sum(len(run) == len(agreeing) for run in runs) > 1:
+        return f"Add another, or {rough}."
+    rest = ", ".join(f"{each:.2f}" for each in rising if each not in agreeing)
+    kept = ", ".join(f"{each:.2f}" for each in agreeing)
+    return f"{kept} agree: leave out {rest}, add another, or {rough}."
+
+
+def repeatability_of(titres_cm3: Sequence[float]) -> float | None:
+    """The relative standard deviation of the titres, a fraction; None for fewer than two."""
+    count = len(titres_cm3)
+    if count < _AGREE:
+        return None
+    # of one titre, where `repeatability` has that of their mean
+    single = repeatability("", titres_cm3).standard * math.sqrt(count)
+    return single * count / math.fsum(titres_cm3)
 
 
 def found_by_titre(moles: float, titre_cm3: float, *, ratio: float) -> float:
@@ -129,7 +166,10 @@ class Measured:
     ware: Ware
 
     def as_input(self, name: str) -> Input:
-        """The volume with its doubts: the glass and the room. Raises: BadAmount not above 0."""
+        """The volume, named so, with its doubts: the glass and the room.
+
+        Raises: BadAmount not above 0.
+        """
         volume = positive(self.cm3, name, "cm³")
         return Input(name, volume, (triangular("glass", self.ware.error), _warmth(volume)))
 
@@ -163,15 +203,25 @@ class Standard:
     scale: float = 1.0
 
     @staticmethod
-    def weighed(mass: Input, molar_mass: Input, assay: Input) -> Standard:
-        """A solid weighed straight into the flask."""
-        return Standard((mass, assay), (molar_mass,))
+    def weighed(mass: Input, molar_mass: Input, assay: Input, *, per_mole: float = 1.0) -> Standard:
+        """A solid weighed straight into the flask; a mole of it holds `per_mole` of what counts."""
+        return Standard((mass, assay), (molar_mass,), per_mole)
 
     @staticmethod
     def pipetted(strength: Input, volume: Measured) -> Standard:
         """So many cm³ of a standard solution in mol/dm³."""
         over = (strength, volume.as_input("standard volume"))
         return Standard(over, scale=1 / _CM3_PER_DM3)
+
+    def aliquot(self, taken: Measured, made_up_to: Measured) -> Standard:
+        """Of this, made up to so much, so much was taken. Raises: BadAmount for more than all."""
+        if taken.cm3 > made_up_to.cm3:
+            raise BadAmount(
+                f"{taken.cm3:g} cm³ out of {made_up_to.cm3:g} cm³ is more than there is.",
+                "The flask it was made up in comes with the standard, the pipette with --sample.",
+            )
+        over = (*self.over, taken.as_input("aliquot"))
+        return Standard(over, (*self.under, made_up_to.as_input("made up to")), self.scale)
 
 
 def found_in_flask(
@@ -180,15 +230,15 @@ def found_in_flask(
     *,
     titrant: Input,
     aliquot: Measured,
-    dilution: Dilution | None = None,
+    dilutions: Sequence[Dilution] = (),
 ) -> Budget:
     """The mol/dm³ of the sample, from a titrant of known strength (mol/dm³).
 
-    `aliquot` is what was pipetted into the flask; where the sample was diluted first,
-    its `dilution` is undone. Raises: BadAmount for figures that cannot be.
+    `aliquot` is what was pipetted into the flask; where the sample was diluted first, in
+    one step or in more, its `dilutions` are undone. Raises: BadAmount for figures that cannot be.
 
     >>> from stockroom.chemistry.glassware import ware
-    >>> from stockroom.chemistry.reactions import titration_of
+    >>> from stockroom.chemistry.reaction_names import titration_of
     >>> titres = Titres((18.72,), ware("burette", 50, "B", step=0.1))
     >>> twenty = Measured(20, ware("pipette", 20, "B"))
     >>> found = found_in_flask(
@@ -200,10 +250,11 @@ def found_in_flask(
     """
     over = [titrant, titres.as_input()]
     under = [aliquot.as_input("aliquot")]
-    if dilution is not None:
+    for number, dilution in enumerate(dilutions, start=1):
         dilution.check()
-        over.append(dilution.made_up_to.as_input("made up to"))
-        under.append(dilution.taken.as_input("taken"))
+        which = f" {number}" if len(dilutions) > 1 else ""
+        over.append(dilution.made_up_to.as_input(f"made up to{which}"))
+        under.append(dilution.taken.as_input(f"taken{which}"))
     return quotient(over, under, scale=reaction.per_titrant)
 
 

@@ -3,13 +3,16 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Iterator, Mapping
+from contextlib import contextmanager
+from types import MappingProxyType
 from typing import TYPE_CHECKING, Annotated
 
 import typer
 
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared
-from stockroom.errors import BadInput
+from stockroom.errors import BadInput, MissingFigure
 
 if TYPE_CHECKING:
     from stockroom.service.bench import Sum
@@ -27,6 +30,82 @@ StrengthText = Annotated[
 Volume = Annotated[str, typer.Argument(metavar="VOLUME", help='How much to make: "2.00 L".')]
 
 
+NO_UNITS: Mapping[str, float] = MappingProxyType({"": 1.0})
+PER_CENT: Mapping[str, float] = MappingProxyType({"": 1.0, "%": 1.0, "percent": 1.0})
+GRAMS: Mapping[str, float] = MappingProxyType({"": 1.0, "g": 1.0, "mg": 0.001})
+CUBIC: Mapping[str, float] = MappingProxyType({"": 1.0, "cm3": 1.0, "ml": 1.0, "cc": 1.0})
+PER_MOLE: Mapping[str, float] = MappingProxyType({"": 1.0, "dm3/mol": 1.0, "l/mol": 1.0})
+_PER_CM3: Mapping[str, float] = MappingProxyType(
+    {"": 1.0, "g/cm3": 1.0, "g/ml": 1.0, "gcm-3": 1.0, "gml-1": 1.0, "kg/l": 1.0, "kg/dm3": 1.0}
+    | {"kg/m3": 0.001, "kgm-3": 0.001, "g/l": 0.001, "g/dm3": 0.001}
+)
+_LIGHTEST, _HEAVIEST = 0.5, 20.0
+
+
+def figure(
+    text: str | None,
+    where: str,
+    *,
+    like: str,
+    units: Mapping[str, float] = NO_UNITS,
+    zero: bool = False,
+) -> float | None:
+    """A number above 0 typed after the option `where`, or None; "1,18 g/cm3" as 1.18.
+
+    `units` are those that may stand behind it, with what each is multiplied by; `like` is
+    shown as what may be written. With `zero`, 0 will do.
+    Raises: BadInput; BadAmount for "1,000", which has two readings.
+    """
+    if text is None:
+        return None
+    from stockroom.measure.reading import NUMBER, read_number, tidy
+
+    shown = f"{where} {text.strip()!r}"
+    read = re.fullmatch(rf"(?P<number>{NUMBER}) ?(?P<unit>.*)", tidy(text))
+    unit = re.sub(r"[ .·]", "", read["unit"]).lower() if read else ""
+    if read is None or unit not in units or read["number"].startswith("-"):
+        raise BadInput(f"{shown} is not a number {_above(zero)}.", f"Write it as {like}.")
+    value = float(read_number(read["number"], where=where, whole=text)) * units[unit]
+    if not (value > 0 or (zero and value == 0)) or value == float("inf"):
+        raise BadInput(f"{shown} is not a number {_above(zero)}.", f"Write it as {like}.")
+    return value
+
+
+def _above(zero: bool) -> str:
+    return "from 0 up" if zero else "above 0"
+
+
+def density_of(text: str | None, where: str) -> float | None:
+    """A density in g/cm³ typed after `where`, 0.5 to 20, or None; "1180 kg/m3" is 1.18.
+
+    Raises: BadInput.
+    """
+    value = figure(text, where, like="1.18", units=_PER_CM3)
+    # as in the store's own tables, where the same slip is caught
+    if value is not None and not _LIGHTEST <= value <= _HEAVIEST:
+        raise BadInput(f"{where} {text!r} is not between 0.5 and 20.", "In g/cm³, not kg/m³?")
+    return value
+
+
+@contextmanager
+def asking_density() -> Iterator[None]:
+    """Where a sum wants a density, the option that gives one is named in the hint."""
+    try:
+        yield
+    except MissingFigure as missing:
+        if "density" not in missing.message or "--density" in missing.hint:
+            raise
+        raise MissingFigure(missing.message, f"{missing.hint} Add it as --density.") from None
+
+
+def closeness_of(text: str) -> float:
+    """A closeness in per cent, above 0 and below 100. Raises: BadInput."""
+    value = figure(text, "--closeness", like="5", units=PER_CENT) or 0.0
+    if value >= 100:
+        raise BadInput(f"--closeness {value:g} % is not above 0 and below 100.", "Write it as 5.")
+    return value
+
+
 def celsius_or_none(text: str | None, where: str) -> float | None:
     """A temperature typed after the option `where`, "20 °C" as 20, or None. Raises: BadInput."""
     if text is None:
@@ -39,13 +118,6 @@ def celsius_or_none(text: str | None, where: str) -> float | None:
 
 def show_sum(shared: Shared, answer: Sum) -> None:
     """Print the answer of a bench sum, in words or as JSON."""
-    from stockroom.reports.bench_text import bench_json, bench_text
+    from stockroom.reports.bench_text import sum_json, sum_text
 
-    practice = answer.practice
-    show(
-        shared,
-        lambda: bench_text(answer.text, answer.details, practice=practice, width=width()),
-        lambda: bench_json(
-            answer.value, answer.unit, answer.text, answer.details, practice=practice
-        ),
-    )
+    show(shared, lambda: sum_text(answer, width()), lambda: sum_json(answer))

@@ -6,9 +6,17 @@ from typing import Annotated
 
 import typer
 
-from stockroom.cli.bench import Density, StrengthText, Volume, show_sum
+from stockroom.cli.bench import (
+    Density,
+    StrengthText,
+    Volume,
+    asking_density,
+    closeness_of,
+    density_of,
+    show_sum,
+)
 from stockroom.cli.shared import of
-from stockroom.cli.values import amount_of, density_or_none
+from stockroom.cli.values import amount_of
 
 
 def dilute(
@@ -27,6 +35,9 @@ def dilute(
         typer.Option("--with", metavar="STRENGTH|BOTTLE", help="A second one, instead of water."),
     ] = "",
     density: Density = None,
+    closeness: Annotated[
+        str, typer.Option(metavar="PERCENT", help="How near it must be measured.")
+    ] = "5",
 ) -> None:
     """What to take of a stronger solution for a dilution, or of two that are mixed.
 
@@ -38,14 +49,16 @@ def dilute(
     from stockroom.service import bench_dilute
 
     shared = of(ctx)
-    diluted = bench_dilute.dilute(
-        amount_of(volume),
-        text,
-        source=source,
-        second=second,
-        of=of_what,
-        density=density_or_none(density, "--density"),
-        store=shared.path,
-        as_at=shared.given_day,
-    )
+    with asking_density():
+        diluted = bench_dilute.dilute(
+            amount_of(volume),
+            text,
+            source=source,
+            second=second,
+            of=of_what,
+            density=density_of(density, "--density"),
+            closeness=closeness_of(closeness) / 100,
+            store=shared.path,
+            as_at=shared.given_day,
+        )
     show_sum(shared, diluted)

@@ -6,9 +6,18 @@ from typing import Annotated
 
 import typer
 
-from stockroom.cli.bench import Density, Of, StrengthText, celsius_or_none, show_sum
+from stockroom.cli.bench import (
+    PER_MOLE,
+    Density,
+    Of,
+    StrengthText,
+    asking_density,
+    celsius_or_none,
+    density_of,
+    figure,
+    show_sum,
+)
 from stockroom.cli.shared import of
-from stockroom.cli.values import density_or_none, number_or_none
 
 
 def strength(
@@ -43,10 +52,12 @@ def strength(
     shared = of(ctx)
     # read as text: typer would refuse a number without quoting what it stood for
     given = Given(
-        density_or_none(density, "--density"),
-        density_or_none(pure_density, "--pure-density"),
+        density_of(density, "--density"),
+        density_of(pure_density, "--pure-density"),
         part_of,
         celsius_or_none(temperature, "--temperature"),
-        number_or_none(gas_volume, "--gas-volume"),
+        figure(gas_volume, "--gas-volume", like="24", units=PER_MOLE),
     )
-    show_sum(shared, convert(text, of=of_what, to=to, given=given, store=shared.path))
+    with asking_density():
+        turned = convert(text, of=of_what, to=to, given=given, store=shared.path)
+    show_sum(shared, turned)

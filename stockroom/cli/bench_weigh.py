@@ -2,17 +2,25 @@
 
 from __future__ import annotations
 
-import re
-from typing import TYPE_CHECKING, Annotated
+from typing import Annotated
 
 import typer
 
-from stockroom.cli.bench import Density, Of, StrengthText, Volume, show_sum
+from stockroom.cli.bench import (
+    GRAMS,
+    Density,
+    Of,
+    StrengthText,
+    Volume,
+    asking_density,
+    closeness_of,
+    density_of,
+    figure,
+    show_sum,
+)
+from stockroom.cli.bench_assay import assay_of
 from stockroom.cli.shared import of
-from stockroom.cli.values import amount_of, density_or_none, number_or_none
-
-if TYPE_CHECKING:
-    from stockroom.service.bench_task import Assay
+from stockroom.cli.values import amount_of
 
 
 def weigh(
@@ -22,7 +30,9 @@ def weigh(
     of_what: Of,
     assay: Annotated[
         str | None,
-        typer.Option(metavar="PERCENT", help='Off the label, "99.9 ± 0.1"; else the line\'s own.'),
+        typer.Option(
+            metavar="PERCENT", help='Off the label: "99.9 ± 0.1", "≥97 %"; else the line\'s own.'
+        ),
     ] = None,
     step: Annotated[
         str | None,
@@ -49,24 +59,18 @@ def weigh(
     from stockroom.service.bench_tools import Minimum
 
     shared = of(ctx)
+    spread = figure(repeatability, "--repeatability", like="0.0002", units=GRAMS)
     asked = Asked(
         amount_of(volume),
         text,
         of_what,
-        assay=_assay(assay),
-        step=number_or_none(step, "--step"),
-        closeness_percent=number_or_none(closeness, "--closeness") or 5.0,
-        density=density_or_none(density, "--density"),
+        assay=assay_of(assay),
+        step=figure(step, "--step", like="0.01", units=GRAMS),
+        closeness_percent=closeness_of(closeness),
+        density=density_of(density, "--density"),
         flask=flask,
-        minimum=Minimum(minimum.lower(), number_or_none(repeatability, "--repeatability")),
+        minimum=Minimum(minimum.lower(), spread),
     )
-    show_sum(shared, bench_weigh.weigh(asked, store=shared.path, as_at=shared.given_day))
-
-
-def _assay(text: str | None) -> Assay:
-    """ "99.9 ± 0.1" as the figure and how far off it may be."""
-    from stockroom.service.bench_task import Assay
-
-    figure, _, within = re.sub(r"\+/?-", "±", text or "").partition("±")
-    percent = number_or_none(figure.strip() if text is not None else None, "--assay")
-    return Assay(percent, number_or_none(within.strip() or None, "--assay") or 0.0)
+    with asking_density():
+        weighed = bench_weigh.weigh(asked, store=shared.path, as_at=shared.given_day)
+    show_sum(shared, weighed)

@@ -48,6 +48,9 @@ def arrive(
         str, typer.Option(metavar="NUMBER", help="How many alike; each gets a number.")
     ] = "1",
     opened: Annotated[str, typer.Option(metavar="no|DATE", help="When it was opened.")] = "no",
+    cap: Annotated[
+        str, typer.Option(metavar="vented|tight", help="Its cap; not looked at if left out.")
+    ] = "",
     note: Annotated[str, typer.Option(help="Anything written on it.")] = "",
     on: Happened = None,
 ) -> None:
@@ -66,6 +69,7 @@ def arrive(
         place=place,
         count=whole(count, "--count"),
         opened=None if opened == "no" else day_or_none(opened, "--opened"),
+        cap=cap,
         note=note,
         **when(shared, on),
     )

@@ -8,7 +8,7 @@ from decimal import ROUND_HALF_EVEN, Decimal
 
 from stockroom.errors import BadAmount
 from stockroom.measure.amounts import PER_UNIT, Amount, Kind
-from stockroom.measure.reading import NUMBER, quote, read_number, tidy
+from stockroom.measure.reading import NUMBER, quote, read_number, refuse_bare_point, tidy
 from stockroom.measure.strength_words import beside_unit, fraction_of, saturated_of, share_of
 from stockroom.measure.strengths import Strength, StrengthUnit
 
@@ -40,6 +40,7 @@ _STRONGEST = {
     StrengthUnit.CHLORINE: 100.0,
     StrengthUnit.CHLORINE_WW: 100.0,
 }
+_ABOVE = {StrengthUnit.WV: "Check the unit; if it is meant, write it in g/dm3."}
 _COLDEST, _HOTTEST = -50.0, 200.0
 # no pressure or temperature of a room or a pharmacopoeia gives less or more
 _LEAST_GAS, _MOST_GAS = 22.0, 25.0
@@ -57,6 +58,7 @@ def parse_amount(text: str, *, expect: Kind | None = None, where: str = "amount"
     match = _AMOUNT.fullmatch(plain)
     shown = f"{where} {quote(text)}"
     _refuse_fraction(plain, shown)
+    refuse_bare_point(plain, shown)
     if match is None:
         raise BadAmount(f"{shown}: how much?", 'Write a number and a unit, as "250 cm3".')
     number = read_number(match["number"], where=where, whole=text)
@@ -80,9 +82,13 @@ def _refuse_fraction(plain: str, shown: str) -> None:
         raise BadAmount(
             f"{shown}: of how big a bottle?", "Say what is left, in g or cm³."
         ) from None
+    raise _a_fraction(found, shown)
+
+
+def _a_fraction(found: re.Match[str], shown: str) -> BadAmount:
     value = int(found["whole"] or 0) + Decimal(found["over"]) / Decimal(found["under"])
-    raise BadAmount(
-        f"{shown}: a fraction.", f'Write it with a point, as "{float(value):.4g} {unit}".'
+    return BadAmount(
+        f"{shown}: a fraction.", f'Write it with a point, as "{float(value):.4g} {found["unit"]}".'
     )
 
 
@@ -130,11 +136,31 @@ def parse_strength(text: str, *, where: str = "strength") -> Strength:
     found = _worded(plain, text.strip(), where, shown)
     if found is not None:
         return _checked(found, shown)
+    _refuse_two_figures(plain, shown)
+    refuse_bare_point(plain, shown)
     match = _AMOUNT.fullmatch(plain)
     if match is None:
-        raise BadAmount(f"{shown}: how strong?", 'Write a number and a unit, as "0.1 mol/dm3".')
+        raise BadAmount(f"{shown}: how strong?", _how_to_write(plain))
     number = read_number(match["number"], where=where, whole=text)
     return _checked(beside_unit(number, match["unit"], text.strip(), shown), shown)
+
+
+def _refuse_two_figures(plain: str, shown: str) -> None:
+    """Pass when one figure is written. Raises: BadAmount for a fraction, a range and a ±."""
+    fraction = _FRACTION_OF.fullmatch(plain)
+    if fraction:
+        raise _a_fraction(fraction, shown)
+    if _RANGE.fullmatch(plain):
+        raise BadAmount(f"{shown}: a range, and one figure is wanted.", "Write the one meant.")
+    if "±" in plain:
+        raise BadAmount(f"{shown}: one figure is wanted.", "Leave out the ± and what follows it.")
+
+
+def _how_to_write(plain: str) -> str:
+    warm = re.fullmatch(r"(sat[a-z.]*.*?) ?(-?[0-9.]+)", plain, re.IGNORECASE)
+    if warm:
+        return f'Write "{warm[1]} {warm[2]} °C".'
+    return 'Write a number and a unit, as "0.1 mol/dm3".'
 
 
 def _worded(plain: str, written: str, where: str, shown: str) -> Strength | None:
@@ -147,11 +173,12 @@ def _worded(plain: str, written: str, where: str, shown: str) -> Strength | None
 
 
 def _checked(strength: Strength, shown: str) -> Strength:
-    most = _STRONGEST.get(strength.unit)
+    unit = strength.unit
+    most = _STRONGEST.get(unit)
     if most is not None and strength.value > most:
         raise BadAmount(
-            f"{shown}: nothing is stronger than {most:g} {strength.unit}.",
-            "Check the unit; above 100 % w/v, write it in g/dm3.",
+            f"{shown}: {'more' if unit in _ABOVE else 'nothing is stronger'} than {most:g} {unit}.",
+            _ABOVE.get(unit, "Check the figure and its unit."),
         )
     if strength.celsius is not None and not _COLDEST <= strength.celsius <= _HOTTEST:
         raise BadAmount(f"{shown}: no solution in water at that temperature.", "Give it in °C.")

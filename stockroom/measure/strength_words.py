@@ -12,7 +12,7 @@ from decimal import Decimal
 
 from stockroom.errors import BadAmount
 from stockroom.measure.reading import quote, read_number
-from stockroom.measure.strengths import Strength, StrengthUnit, unit_of
+from stockroom.measure.strengths import Strength, StrengthUnit, unit_of, which_of
 
 _SHARE = re.compile(
     r"(?P<one>[0-9.]+) (?:parts? )?in (?P<total>[0-9][0-9 .,]*)(?: parts?)?(?P<rest>(?: .*)?)",
@@ -20,6 +20,7 @@ _SHARE = re.compile(
 )
 _RATIO = re.compile(r"(?P<one>[0-9.]+) ?: ?(?P<total>[0-9][0-9 .,]*)(?P<rest>(?: .*)?)")
 _PLUS = re.compile(r"\(?(?P<one>[0-9.]+) ?\+ ?(?P<total>[0-9.]+)\)?(?P<rest>(?: .*)?)")
+_TO = re.compile(r"(?P<one>[0-9.]+) (?:parts? )?to (?P<total>[0-9.]+)(?: parts?)?", re.IGNORECASE)
 _OF = re.compile(r"of (?P<stock>.+)", re.IGNORECASE)
 # a pharmacy's ratio says itself what is in what: "1 in 1000 w/v" is 0.1 g in 100 cm³
 _KINDS = {
@@ -79,6 +80,7 @@ def share_of(plain: str, written: str, where: str, shown: str) -> tuple[Strength
     Raises: BadAmount when the parts are more than the whole, for "1:1" and for "2:5".
     Source: "1:5" is one part in five in all, US Army course MD0837; "1+9", ISO practice.
     """
+    _refuse_to(plain, shown)
     found = _SHARE.fullmatch(plain) or _RATIO.fullmatch(plain) or _PLUS.fullmatch(plain)
     if found is None:
         return None
@@ -87,12 +89,12 @@ def share_of(plain: str, written: str, where: str, shown: str) -> tuple[Strength
     if found.re is _PLUS:
         total += one
     elif found.re is _RATIO and (one != 1 or total == 1):
-        raise BadAmount(
-            f"{shown}: parts of the whole, or parts to parts?",
-            f'Write "{found["one"]} in {found["total"]}" or "{found["one"]}+{found["total"]}".',
-        )
+        raise _which_parts(found, shown)
     if total < one:
-        raise BadAmount(f"{shown}: more parts than the whole.", 'Write it as "1 in 10".')
+        raise BadAmount(
+            f"{shown}: more parts than the whole.",
+            f'Write "{found["total"].strip()} in {found["one"]}".',
+        )
     kind = _KINDS.get(found["rest"].strip().lower())
     if kind is not None:
         return Strength(float(100 * one / total), kind, written), ""
@@ -105,6 +107,21 @@ def share_of(plain: str, written: str, where: str, shown: str) -> tuple[Strength
     return Strength(float(total / one), StrengthUnit.PARTS, written), stock[
         "stock"
     ] if stock else ""
+
+
+def _refuse_to(plain: str, shown: str) -> None:
+    # "1 to 10" is said of one in ten and of one and ten
+    found = _TO.fullmatch(plain)
+    if found:
+        raise _which_parts(found, shown)
+
+
+def _which_parts(found: re.Match[str], shown: str) -> BadAmount:
+    one, total = found["one"], found["total"].strip()
+    return BadAmount(
+        f"{shown}: parts of the whole, or parts to parts?",
+        f'Write "{one} in {total}" or "{one}+{total}".',
+    )
 
 
 def saturated_of(plain: str, written: str) -> Strength | None:
@@ -125,7 +142,7 @@ def fraction_of(plain: str, written: str, where: str) -> Strength | None:
     found = _FRACTION.fullmatch(plain)
     if found is None or (found["unit"] == "M" and found["reaction"]):
         return None
-    value = float(1 / above_nothing(found["parts"], where, written))
+    value = float(1 / above_nothing(found["parts"], where, written, like=f"{found['unit']}/50"))
     unit = StrengthUnit.MOLAR if found["unit"] == "M" else StrengthUnit.NORMAL
     return Strength(value, unit, written, reaction=_bare(found["reaction"] or ""))
 
@@ -147,6 +164,7 @@ def beside_unit(number: Decimal, unit: str, written: str, shown: str) -> Strengt
         # a bleach label's bare ppm is mg in 1 dm³; whoever shows the answer says so
         named = chlorine["unit"] + chlorine["kind"]
         named = "ppm m/v" if named.lower() == "ppm" else named
+        _refuse_bare_per_cent(named, written, shown)
         found, scale = unit_of(named, number=written, shown=shown)
         kind, share = _chlorine_as(found, shown)
         return Strength(float(number * scale * share), kind, written)
@@ -154,12 +172,20 @@ def beside_unit(number: Decimal, unit: str, written: str, shown: str) -> Strengt
     return Strength(float(number * scale), kind, written)
 
 
-def above_nothing(number: str, where: str, written: str) -> Decimal:
-    """Typed digits above 0. Raises: BadAmount."""
+def above_nothing(number: str, where: str, written: str, *, like: str = "1 in 10") -> Decimal:
+    """Typed digits above 0. Raises: BadAmount, with `like` as what may be written."""
     value = read_number(number, where=where, whole=written)
     if not value:
-        raise BadAmount(f"{where} {quote(written)}: nothing divides by 0.", 'Write "M/50".')
+        raise BadAmount(f"{where} {quote(written)}: nothing divides by 0.", f'Write "{like}".')
     return value
+
+
+def _refuse_bare_per_cent(unit: str, written: str, shown: str) -> None:
+    if unit.strip() == "%":
+        raise BadAmount(
+            f"{shown}: Which: g in 100 cm³ (% w/v) or g in 100 g (% w/w)?",
+            which_of(written, "%", ("w/v", "w/w")),
+        )
 
 
 def _chlorine_as(unit: StrengthUnit, shown: str) -> tuple[StrengthUnit, Decimal]:

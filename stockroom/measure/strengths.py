@@ -42,6 +42,7 @@ class Strength:
     What stood beside the unit: `reaction`, what a normality refers to, else empty;
     `gas_volume`, the dm³/mol that "vol" is counted at, and `celsius`, at which it is
     saturated, where stated; `part_of`, what "1 in 10" is one part of, where stated.
+    `counted_as` is the formula of a part ("N", "NO3") that the number as written was of.
     """
 
     value: float
@@ -51,6 +52,7 @@ class Strength:
     gas_volume: float | None = None
     celsius: float | None = None
     part_of: Strength | None = None
+    counted_as: str = ""
 
 
 _ONE = Decimal(1)
@@ -128,18 +130,9 @@ _SPELLINGS = _spellings()
 # Units that say something, but not enough to be a strength: the question to ask back.
 _ASK: dict[str, tuple[str, str]] = {
     "": ("{number} of what?", 'Add the unit, as "{number} mol/dm3".'),
-    "%": (
-        "Which: g in 100 cm³ (% w/v), g in 100 g (% w/w), or cm³ in 100 cm³ (% v/v)?",
-        "Write % w/v, % w/w or % v/v after the number.",
-    ),
-    "ppm": (
-        "Which: mg in 1 dm³ (ppm m/v) or mg in 1 kg (ppm m/m)?",
-        "Write ppm m/v or ppm m/m after the number.",
-    ),
-    "ppb": (
-        "Which: µg in 1 dm³ (ppb m/v) or µg in 1 kg (ppb m/m)?",
-        "Write ppb m/v or ppb m/m after the number.",
-    ),
+    "%": ("Which: g in 100 cm³ (% w/v), g in 100 g (% w/w), or cm³ in 100 cm³ (% v/v)?", ""),
+    "ppm": ("Which: mg in 1 dm³ (ppm m/v) or mg in 1 kg (ppm m/m)?", ""),
+    "ppb": ("Which: µg in 1 dm³ (ppb m/v) or µg in 1 kg (ppb m/m)?", ""),
     "ppt": ("parts per thousand or per million million?", "Write g/dm3, or ng/dm3."),
     "n": ("normality is written with a capital N.", 'Write "{number}" with N and the reaction.'),
     "m": (
@@ -151,6 +144,7 @@ _ASK: dict[str, tuple[str, str]] = {
     "eq": ("equivalents in how much?", 'Write "eq/dm3" and the reaction after the number.'),
 }
 _ASK |= {"mg": _ASK["g"], "mmol": _ASK["mol"], "meq": _ASK["eq"]}
+_KINDS = {"%": ("w/v", "w/w", "v/v"), "ppm": ("m/v", "m/m"), "ppb": ("m/v", "m/m")}
 
 
 def unit_of(unit_text: str, *, number: str, shown: str) -> tuple[StrengthUnit, Decimal]:
@@ -168,6 +162,7 @@ def unit_of(unit_text: str, *, number: str, shown: str) -> tuple[StrengthUnit, D
     for asked in (key, key.lower(), *unit_text.split()[:1]):
         if asked in _ASK:
             question, hint = _ASK[asked]
+            hint = which_of(number, asked, _KINDS[asked]) if asked in _KINDS else hint
             raise BadAmount(
                 f"{shown}: {question.format(number=number)}", hint.format(number=number)
             )
@@ -175,6 +170,14 @@ def unit_of(unit_text: str, *, number: str, shown: str) -> tuple[StrengthUnit, D
         f'{shown}: I do not know "{unit_text}" as a strength.',
         "Use mol/dm3, g/dm3, % w/v, % w/w, % v/v, vol, ppm m/v, mol/kg, N or 1 in 10.",
     )
+
+
+def which_of(written: str, unit: str, kinds: tuple[str, ...]) -> str:
+    """What to write instead, in full: the strength once with each of the kinds put in."""
+    # "per cent" has no sign to put the kind behind
+    pattern = re.compile(f"(?:{re.escape(unit)}|per ?cent)", re.IGNORECASE)
+    *others, last = (f'"{pattern.sub(f"{unit} {kind}", written, count=1)}"' for kind in kinds)
+    return f"Write {', '.join(others)} or {last}."
 
 
 _IN_FULL = (

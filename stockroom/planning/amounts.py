@@ -97,8 +97,37 @@ def say_strength(line: Line, value: float | None) -> str:
         return "unknown"
     if line.strength and abs(value / line.strength - 1) < _SAME:
         return line.strength_text.replace("dm3", "dm³")
+    scale, unit = label_scale(line)
+    if unit == line.unit:
+        return format_strength(value, line.unit)
+    return f"{format_number(value * scale, 3)} {unit}"
+
+
+def label_scale(line: Line) -> tuple[float, str]:
+    """What turns a strength in the line's unit into the label's own, and that unit as printed.
+
+    Per cents by mass do not go with the strength in a straight line: 1 and the line's unit.
+
+    >>> from stockroom.planning.facts import Form
+    >>> line = Line("a", "a", "a", Form.SOLUTION, Kind.VOLUME, 8.0, "mol/dm3", "90 vol")
+    >>> label_scale(line)
+    (11.25, 'vol')
+    """
     written = _WRITTEN.fullmatch(line.strength_text)
     if not written or not line.strength or "w/w" in line.strength_text:
-        return format_strength(value, line.unit)
-    scaled = value / line.strength * float(written[1])
-    return f"{format_number(scaled, 3)} {written[2].replace('dm3', 'dm³')}"
+        return 1.0, line.unit
+    return float(written[1]) / line.strength, written[2].replace("dm3", "dm³")
+
+
+def per_cent_by_mass(line: Line) -> float | None:
+    """The % w/w of a liquid or solution by its label; None where it cannot be told.
+
+    Without a density it counts as light as water, which puts what is denser too high.
+    """
+    if line.form is Form.SOLID or not line.strength:
+        return None
+    written = _WRITTEN.fullmatch(line.strength_text)
+    if written and "w/w" in line.strength_text:
+        return float(written[1])
+    grams = line.molar_mass if line.unit == "mol/dm3" else 1.0
+    return line.strength * grams / (10.0 * (line.density or 1.0)) if grams else None

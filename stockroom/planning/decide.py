@@ -5,19 +5,19 @@ from __future__ import annotations
 from collections.abc import Iterable
 from datetime import date
 
-from stockroom.measure.amounts import Kind
 from stockroom.planning.amounts import say, say_strength
 from stockroom.planning.batch import Batch, Source, keeps
 from stockroom.planning.decisions import Answer, Draw, Make, Outcome, Short
 from stockroom.planning.explode import Need
-from stockroom.planning.facts import Drawn, Facts, Form, Line
-from stockroom.planning.how_good import how_good
+from stockroom.planning.facts import Drawn, Facts, Form
+from stockroom.planning.known import how_known
+from stockroom.planning.make_card import cautions_of, reasons_of
+from stockroom.planning.measuring import measured
 from stockroom.planning.numbers import Natural, natural
 from stockroom.planning.shelf import Promise, Shelf
-from stockroom.planning.timing import hours, ready_at
+from stockroom.planning.timing import ready_at
 from stockroom.planning.wants import Settled, Want
 from stockroom.planning.windows import good_until
-from stockroom.safety.cautions import MAKING, Goes, cautions_about, cautions_for
 
 _OUTCOMES = {
     Settled.HELD: Outcome.HAVE,
@@ -136,9 +136,7 @@ def _why_this_bottle(facts: Facts, need: Need, promise: Promise, shelf: Shelf) -
     strengths = judged.strengths
     words = f"{say(promise.amount, need.line.kind)} from {promise.bottle}"
     if strengths.expected is not None and need.line.form is not Form.SOLID:
-        basis = (
-            f"found {strengths.found_on}" if strengths.found is not None else "label, not checked"
-        )
+        basis = how_known(shelf.bottle[promise.bottle], strengths)
         expected = say_strength(need.line, strengths.expected)
         sure = "expected" if strengths.usual is None else "at least"
         words += f", {sure} {expected} on the day ({basis})"
@@ -155,6 +153,7 @@ def _make(facts: Facts, batch: Batch) -> Make:
     line, run = batch.line, batch.run
     kept = keeps(facts, line, batch.heel, run.on)
     until = good_until(line, run.on)
+    good, poor = measured(facts, batch)
     return Make(
         id=batch.id,
         line=line.key,
@@ -176,33 +175,14 @@ def _make(facts: Facts, batch: Batch) -> Make:
         heel_kept=kept,
         good_until=until,
         steps=batch.method.steps,
-        cautions=_cautions(batch),
-        reasons=tuple(_make_reasons(facts, batch, kept)),
+        cautions=cautions_of(batch),
+        too_little=tuple(poor),
+        reasons=tuple(reasons_of(facts, batch, kept=kept, drawn=[*good, *poor])),
     )
 
 
 def _ready_day(facts: Facts, batch: Batch) -> date:
     return ready_at(batch.start, batch.method, facts.calendar)[0]
-
-
-def _cautions(batch: Batch) -> tuple[str, ...]:
-    """The house's own words for the method; the general ones where it wrote none."""
-    written = batch.method.cautions
-    groups = [(x.line.storage_group, x.line.form is Form.SOLID) for x in batch.sources]
-    vented = batch.line.vented_cap and not any("vented" in text.lower() for text in written)
-    general = cautions_for(
-        [] if written else groups, vented=vented, never_kept=batch.line.never_kept
-    )
-    # what the substance itself asks for, unless the house has said as much
-    things = [_goes(line) for line in (*(x.line for x in batch.sources), batch.line)]
-    special = cautions_about(things, said=(*written, *general), steps=MAKING)
-    return tuple(dict.fromkeys([*written, *general, *(each.text for each in special)]))
-
-
-def _goes(line: Line) -> Goes:
-    # a neat liquid is as strong as it is sold; what is dissolved here is not
-    strong = line.form is Form.LIQUID
-    return Goes(line.substance, line.storage_group, line.form is Form.SOLID, strong)
 
 
 def _source(source: Source) -> Draw:
@@ -217,56 +197,6 @@ def _source(source: Source) -> Draw:
         source.amount, kind, item=source.line.key, line=source.line.key, make=made,
         strength=source.strength,
     )  # fmt: skip
-
-
-def _make_reasons(facts: Facts, batch: Batch, kept: bool) -> list[str]:
-    # what an ingredient serves is a batch for many: their numbers alone, or the line runs over
-    parts = [
-        f"{item.wants[0].ref if len(item.wants) == 1 else _refs(item.wants)} "
-        f"{say(item.volume, Kind.VOLUME)}"
-        for item in batch.run.items
-    ]
-    words = [f"for {' + '.join(parts)}"]
-    words += [_source_reason(source) for source in batch.sources]
-    words += batch.reasons
-    good = how_good(facts, batch)
-    words += [good] if good else []
-    words.append(_day_reason(batch))
-    if batch.heel and batch.heel > facts.house.batch_step:
-        where = "kept as stock" if kept else "poured away by the usual route"
-        words.append(f"{say(batch.heel, Kind.VOLUME)} over: {where}")
-    return words
-
-
-def _refs(wants: list[Want]) -> str:
-    return "/".join(dict.fromkeys(want.need.booking.number for want in wants))
-
-
-def _source_reason(source: Source) -> str:
-    amount = say(source.amount, source.line.kind)
-    if not source.bottle:
-        return f"{amount} of {source.line.key}, " + (
-            "made first" if source.batch else "to be bought"
-        )
-    if source.line.form is Form.SOLID or source.strength is None:
-        return f"{amount} of {source.line.key} from {source.bottle}"
-    expected = say_strength(source.line, source.strength)
-    words = f"{amount} of {source.bottle} at {expected}"
-    if source.line.strength and abs(source.strength / source.line.strength - 1) > 1e-3:
-        by_label = round(source.amount * source.strength / source.line.strength)
-        label, said = source.line.strength_text, say(by_label, source.line.kind)
-        words += f" (the label's {label} would say {said})"
-    return words
-
-
-def _day_reason(batch: Batch) -> str:
-    first = batch.run.items[0]
-    for_day = min(item.use_on for item in batch.run.items)
-    if first.fresh:
-        return f"fresh: made on the morning of {for_day}"
-    standing = batch.method.stands_hours
-    stands = f", stands {hours(standing)}" if standing else ""
-    return f"the last day that is ready for {for_day}{stands}: {batch.start[0]}"
 
 
 def shorts(wants: Iterable[Want]) -> list[Short]:

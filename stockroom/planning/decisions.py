@@ -73,6 +73,8 @@ class Make:
     """One batch to make up. `on` is the day work starts, `ready` the day it can be used.
 
     `minutes` is all hands-on work, `finishing` the part of it done on `finish_on`.
+    `too_little` tells the draws that nothing in the house measures closely enough, and the
+    way out; `reasons` has them too.
     """
 
     id: str
@@ -97,11 +99,15 @@ class Make:
     steps: str = ""
     cautions: tuple[str, ...] = ()
     reasons: tuple[str, ...] = ()
+    too_little: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
 class PastBottle:
-    """A bottle that is past, weak, undated, overdue a check, set aside or not found."""
+    """A bottle that is past, weak, undated, overdue a check, set aside or not found.
+
+    `look_would_do`: a good look, and nothing else, would bring it back into use.
+    """
 
     bottle: str
     item: str
@@ -109,6 +115,7 @@ class PastBottle:
     good_until: date | None
     decided_by: str
     matters_for: tuple[str, ...] = ()
+    look_would_do: bool = False
 
 
 @dataclass(frozen=True, slots=True)

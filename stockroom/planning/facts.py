@@ -28,8 +28,11 @@ class Closeness(StrEnum):
     PRESENT = "present"
 
 
+EXACT = 0.005
+"""How closely an exact line wants its strength, as a fraction. Design section 2."""
+
 TOLERANCE: dict[Closeness, float | None] = {
-    Closeness.EXACT: 0.005,
+    Closeness.EXACT: EXACT,
     Closeness.CLOSE: 0.05,
     Closeness.ROUGH: 0.20,
     Closeness.PRESENT: None,
@@ -243,7 +246,8 @@ class Bottle:
 
     `lineage` names the bottles it was made from, the nearest first. `meant_for`
     the bookings it was made for: what they get was measured in. `remark` is
-    what somebody wrote on it. `cap` is "tight" or "vented" where written.
+    what somebody wrote on it. `cap` is "tight" or "vented" where written. `known_by` says
+    how a strength nobody found of it is known: "by dilution of S01, found 2026-12-04".
     """
 
     number: str
@@ -257,6 +261,7 @@ class Bottle:
     made_here: bool = False
     lineage: tuple[str, ...] = ()
     meant_for: tuple[str, ...] = ()
+    known_by: str = ""
 
 
 @dataclass(frozen=True, slots=True)

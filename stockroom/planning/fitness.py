@@ -11,6 +11,7 @@ from stockroom.keeping.verdict import Verdict
 from stockroom.measure.periods import add
 from stockroom.planning.amounts import say_strength, strong_enough
 from stockroom.planning.facts import (
+    EXACT,
     TOLERANCE,
     Bottle,
     Closeness,
@@ -21,7 +22,6 @@ from stockroom.planning.shelf import Judge
 
 # a bottle found at exactly the limit will do, whatever the last binary digit says
 _SLACK = 1e-9
-_EXACT = 0.005
 
 
 def judge_for_need(requirement: Requirement, line: Line, on: date) -> Judge:
@@ -108,18 +108,19 @@ def wrong_strength(
 
 def exactness(requirement: Requirement) -> float:
     """How closely an exact line wants its strength known, as a fraction."""
-    return requirement.tolerance or TOLERANCE[Closeness.EXACT] or _EXACT
+    return requirement.tolerance or EXACT
 
 
 def not_exact(requirement: Requirement, strengths: Strengths, line: Line) -> str:
     """Why what was found is not known well enough for an exact line; "" if it is.
 
-    A result without an uncertainty is taken at its word: many are written so.
+    Held against the result itself, which is what was known so well; whether that much is
+    left is for `wrong_strength`. One without an uncertainty is taken at its word.
     """
-    known, spread = strengths.expected, strengths.uncertainty
-    if requirement.closeness is not Closeness.EXACT or not known or not spread:
+    found, spread = strengths.found, strengths.uncertainty
+    if requirement.closeness is not Closeness.EXACT or not found or not spread:
         return ""
-    words = exact_enough(known, spread, exactness(requirement), unit=line.unit)
+    words = exact_enough(found, spread, exactness(requirement), unit=line.unit)
     return f"found {words}" if words else ""
 
 

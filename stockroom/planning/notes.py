@@ -12,9 +12,9 @@ from stockroom.measure.days import format_time
 from stockroom.planning.amounts import say
 from stockroom.planning.decisions import Level, Make, Order
 from stockroom.planning.explode import Need
-from stockroom.planning.facts import Booking, Facts, Form, Line, Recipe
+from stockroom.planning.facts import Booking, Facts, Form, Recipe
 from stockroom.planning.shelf import Shelf
-from stockroom.safety.neighbours import kinds_of, not_checked, tight_caps, wrong_neighbours
+from stockroom.planning.standing import standing_there, where_things_stand
 
 # five hours of hands-on work fill a day, since classes take the rest: ours, no source
 HEAVY_DAY_MINUTES = 300
@@ -135,23 +135,8 @@ def _levels(levels: list[Level]) -> Iterable[Finding]:
 
 
 def _shelf(facts: Facts) -> Iterable[Finding]:
-    meant = {place.name: place.meant_for for place in facts.places}
-    # an empty bottle waits to be washed and is no danger to anybody
-    here = [b for b in facts.bottles if b.left and not b.record.gone and not b.record.not_found]
-    kinds = {b.number: _kinds(facts.lines[b.line]) for b in here}
-    beside: dict[str, set[str]] = {}
-    for bottle in here:
-        beside.setdefault(bottle.place, {meant.get(bottle.place, "")}).update(kinds[bottle.number])
-    pairs = [
-        (b.number, kind, one)
-        for b in here
-        for kind in kinds[b.number]
-        for one in sorted(beside[b.place])
-    ]
-    yield from wrong_neighbours(pairs)
-    yield from not_checked(pairs)
-    yield from tight_caps((b.number, b.cap, facts.lines[b.line].vented_cap) for b in here)
-    for bottle in here:
+    yield from where_things_stand(facts.bottles, facts.lines, facts.places)
+    for bottle in standing_there(facts.bottles):
         rules = facts.lines[bottle.line].rules
         rule = law_of(bottle.record, rules, facts.as_at)
         place = temperature_on(bottle.record, facts.as_at)
@@ -167,10 +152,6 @@ def _shelf(facts: Facts) -> Iterable[Finding]:
                 "past it, do not open or move it; ask"
             )
             yield Finding(bottle.number, text)
-
-
-def _kinds(line: Line) -> tuple[str, ...]:
-    return kinds_of(line.substance, line.storage_group)
 
 
 def _remarks(shelf: Shelf) -> Iterable[Finding]:

@@ -5,19 +5,22 @@ from __future__ import annotations
 from dataclasses import dataclass
 from datetime import date
 
-from stockroom.keeping.record import CheckKind
-from stockroom.keeping.strength import last_check
+from stockroom.keeping.strength import strengths_on
 from stockroom.planning.amounts import say, say_strength
 from stockroom.planning.decisions import Answer, CheckToDo, Make, Outcome, Plan
-from stockroom.planning.facts import Facts
+from stockroom.planning.facts import Facts, Recipe
+from stockroom.planning.known import how_known
+from stockroom.planning.make_card import goes_of
+from stockroom.safety.cautions import Caution, Step, cautions_about
 
 
 @dataclass(frozen=True, slots=True)
 class Readiness:
     """The answer for one booking or one day. `to_do` is empty when `ready`.
 
-    `cautions` is what each recipe says of handling, destroying and waste, and
-    which local risk assessment covers it.
+    `cautions` is what each recipe says of handling, destroying and waste, which local
+    risk assessment covers it, and what the list of cautions says besides of using what
+    the classes get, and of clearing it away.
     """
 
     ready: bool
@@ -47,7 +50,8 @@ def readiness(
         check for check in plan.checks if not check.optional and wanted & set(check.bookings)
     )
     to_do = (*_shorts(plan, wanted), *_buys(needs), *_makes(makes), *_checks(checks))
-    strengths, cautions = _strengths(facts, needs), _words(facts, wanted)
+    strengths = _strengths(facts, needs)
+    cautions = (*_words(facts, wanted), *_at_the_bench(facts, needs))
     return Readiness(not to_do, title, on, to_do, needs, makes, checks, strengths, cautions)
 
 
@@ -91,19 +95,40 @@ def _strengths(facts: Facts, needs: tuple[Answer, ...]) -> tuple[str, ...]:
         for draw in need.draws:
             if draw.strength is not None and line.strength and draw.bottle in bottles:
                 said = say_strength(line, draw.strength)
-                found = last_check(bottles[draw.bottle].record, need.booking.on, CheckKind.FOUND)
-                how = f"found {found.on}" if found else "label, not checked"
-                row.append(f"{need.item} {said}: {draw.bottle}, {how}")
+                bottle = bottles[draw.bottle]
+                known = strengths_on(bottle.record, line.rules, need.booking.on)
+                row.append(f"{need.item} {said}: {draw.bottle}, {how_known(bottle, known)}")
     return tuple(dict.fromkeys(row))
 
 
 def _words(facts: Facts, wanted: set[str]) -> tuple[str, ...]:
-    booked = {(b.recipe, b.version) for b in facts.bookings if b.number in wanted}
     row = []
-    for key in sorted(booked):
-        recipe = facts.recipes[key]
+    for recipe in _recipes(facts, wanted):
         waste = f"waste: {recipe.waste}" if recipe.waste else ""
         covered = recipe.assessment or "none named: ask before it runs"
         said = (recipe.handling, recipe.never_kept, waste, f"local risk assessment: {covered}")
         row += [f"{recipe.code} {words}" for words in said if words]
     return tuple(row)
+
+
+def _recipes(facts: Facts, wanted: set[str]) -> list[Recipe]:
+    booked = {(b.recipe, b.version) for b in facts.bookings if b.number in wanted}
+    return [facts.recipes[key] for key in sorted(booked)]
+
+
+def _at_the_bench(facts: Facts, needs: tuple[Answer, ...]) -> tuple[str, ...]:
+    """The cautions of using these things and of clearing them away, each once, unless said."""
+    items: dict[Caution, list[str]] = {}
+    for need in needs:
+        # each recipe's own words cover its own class, and no other of that day
+        recipe = facts.recipes[need.booking.recipe, need.booking.version]
+        said = (recipe.handling, recipe.never_kept, recipe.waste)
+        thing = goes_of(facts.lines[need.line])
+        for caution in cautions_about([thing], said=said, steps=(Step.USE, Step.WASTE)):
+            items.setdefault(caution, []).append(need.item)
+    order = list(Step)
+    row = sorted(items.items(), key=lambda pair: (order.index(pair[0].step), pair[0].number))
+    return tuple(
+        f"{caution.step} ({'; '.join(dict.fromkeys(names))}): {caution.text}"
+        for caution, names in row
+    )

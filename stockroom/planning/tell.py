@@ -2,17 +2,21 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
+from dataclasses import replace
 from datetime import date
 
 from stockroom.findings import Finding
+from stockroom.keeping.rules import Purpose, RuleKind
 from stockroom.keeping.verdict import Condition, Verdict, verdict
 from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import PastBottle
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
+from stockroom.planning.fitness import found_valid_from
 from stockroom.planning.numbers import natural
 from stockroom.planning.shelf import Shelf
-from stockroom.planning.wants import Want
+from stockroom.planning.wants import Settled, Want
+from stockroom.safety.peroxide_formers import class_of
 
 _TOLD = frozenset(Condition) - {Condition.SOUND, Condition.GONE}
 
@@ -26,9 +30,11 @@ def past_on(facts: Facts, wants: Iterable[Want], on: date) -> list[PastBottle]:
     concerned = _concerned(wants, on)
     row = []
     for bottle in sorted(facts.bottles, key=lambda b: natural(b.number)):
-        judged = verdict(bottle.record, facts.lines[bottle.line].rules, on)
+        line = facts.lines[bottle.line]
+        judged = verdict(bottle.record, line.rules, on)
         if judged.condition in _TOLD:
-            row.append(_past(facts, bottle, judged, concerned.get(bottle.number, ())))
+            told = _past(facts, bottle, judged, concerned.get(bottle.number, ()))
+            row.append(replace(told, look_would_do=_look_would_do(line, judged)))
     return row
 
 
@@ -47,13 +53,22 @@ def _concerned(wants: Iterable[Want], on: date) -> dict[str, tuple[str, ...]]:
 def _past(facts: Facts, bottle: Bottle, judged: Verdict, bookings: tuple[str, ...]) -> PastBottle:
     line = facts.lines[bottle.line]
     words = judged.decided_by
-    expected = judged.strengths.expected
+    # what it is expected to be, in a plan on its lower limits too
+    expected = judged.strengths.likely
     known = expected is not None and line.strength
     if judged.condition is Condition.WATCH and known and _apart(expected, line.strength):
         words += f"; expected {say_strength(line, expected)} (label {line.strength_text})"
     words += f"; {judged.warning}" if judged.warning else ""
     item = " ".join(filter(None, (line.item, line.strength_text)))
     return PastBottle(bottle.number, item, judged.condition, judged.good_until, words, bookings)
+
+
+def _look_would_do(line: Line, judged: Verdict) -> bool:
+    """Whether to suggest a look: never at what must not be opened, or has a test instead."""
+    tested = class_of(line.substance) or any(rule.kind is RuleKind.TEST for rule in line.rules)
+    # what nobody can name does not come back into use by being looked at
+    aside = judged.condition is Condition.SET_ASIDE and line.substance not in ("", "unknown")
+    return not (judged.warning or tested) and (judged.look_would_do or aside)
 
 
 def _apart(one: float | None, other: float | None) -> bool:
@@ -64,35 +79,58 @@ def _apart(one: float | None, other: float | None) -> bool:
 # -- guesses ------------------------------------------------------------------------
 
 
-def guesses(facts: Facts, wants: Iterable[Want], shelf: Shelf) -> list[Finding]:
+def guesses(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> list[Finding]:
     """What the plan leaned on without knowing it, each once, by subject."""
-    found: dict[tuple[str, str], None] = {}
+    told = (
+        *_of_bottles(facts, wants, shelf),
+        *_of_dates(wants, shelf),
+        *_of_needs(facts, wants, shelf),
+    )
+    row = [Finding(subject, text) for subject, text in dict.fromkeys(told)]
+    return sorted(row, key=lambda f: (natural(f.subject), f.text))
+
+
+def _of_bottles(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> Iterable[tuple[str, str]]:
     closest = _closest_use(wants)
     for number, promises in shelf.promises.items():
         if promises:
             bottle = shelf.bottle[number]
             for text in _about(facts, shelf, bottle, closest.get(number, Closeness.PRESENT)):
-                found[(number, text)] = None
+                yield number, text
+
+
+def _of_dates(wants: Sequence[Want], shelf: Shelf) -> Iterable[tuple[str, str]]:
     for want in [part for root in wants for part in root.tree()]:
         # a date read too early is what may have kept it out
         for number, _ in want.passed_over:
             for text in _two_readings(shelf.bottle[number]):
-                found[(number, text)] = None
+                yield number, text
+
+
+def _of_needs(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> Iterable[tuple[str, str]]:
     for want in wants:
+        for number in _taken_at_its_word(facts, want, shelf):
+            yield number, "its found strength has no uncertainty: taken as exact enough"
         if want.need.requirement.closeness_guessed:
-            found[
-                (
-                    want.need.line.key,
-                    f"no closeness written in {want.need.recipe.code}: close assumed",
-                )
-            ] = None
+            recipe = want.need.recipe.code
+            yield want.need.line.key, f"no closeness written in {recipe}: close assumed"
         for part in want.tree():
             if part.method and part.method.minutes_guessed:
-                found[
-                    (part.line, f"no hands-on time written: {part.method.minutes} min assumed")
-                ] = None
-    row = [Finding(subject, text) for subject, text in found]
-    return sorted(row, key=lambda f: (natural(f.subject), f.text))
+                minutes = part.method.minutes
+                yield part.line, f"no hands-on time written: {minutes} min assumed"
+
+
+def _taken_at_its_word(facts: Facts, want: Want, shelf: Shelf) -> Iterable[str]:
+    """The bottles that serve an exact need by a result nobody said the uncertainty of."""
+    if want.purpose is not Purpose.EXACT or want.settled is not Settled.HELD:
+        return
+    for promise in want.promises:
+        known = shelf.verdict_planned(promise.bottle, promise.on, promise.purpose).strengths
+        line = facts.lines[shelf.bottle[promise.bottle].line]
+        oldest = found_valid_from(want.need.requirement, line, want.need.on)
+        # one too old is titrated again before it serves, and is not leaned on
+        if known.uncertainty is None and known.found_on and known.found_on >= oldest:
+            yield promise.bottle
 
 
 def _closest_use(wants: Iterable[Want]) -> dict[str, Closeness]:
@@ -117,7 +155,7 @@ def _about(facts: Facts, shelf: Shelf, bottle: Bottle, closest: Closeness) -> It
         yield "opened, day not written: counted from the day it was received"
     if judged.condition is Condition.WATCH and closest is not Closeness.EXACT:
         yield f"its check falls due before it is used ({judged.decided_by})"
-    yield from _about_strength(line, judged, closest)
+    yield from _about_strength(line, judged, closest, bottle.known_by)
     doubt = inherited_doubt(facts, bottle)
     if doubt:
         yield doubt
@@ -130,14 +168,21 @@ def _two_readings(bottle: Bottle) -> Iterable[str]:
         yield f'printed "{printed.text}" may be {readings}: planned on the earlier; which is it?'
 
 
-def _about_strength(line: Line, judged: Verdict, closest: Closeness) -> Iterable[str]:
+def _about_strength(
+    line: Line, judged: Verdict, closest: Closeness, known_by: str
+) -> Iterable[str]:
     strengths, likely = judged.strengths, judged.strengths.likely
     if line.form is Form.SOLID or likely is None or strengths.nominal is None:
         return
     expected = say_strength(line, likely)
     # under a thousandth the figures print alike, and a guess of nothing is noise
     if abs(likely / strengths.nominal - 1) > 1e-3 and strengths.found is None:
-        yield f"expected {expected} by its rule of fading from the label: never titrated"
+        start = f", {known_by}" if known_by else " from the label"
+        yield f"expected {expected} by its rule of fading{start}: never titrated"
+    elif strengths.found is None and known_by:
+        # the factor is carried, and close enough; an exact line wants a result of its own
+        if closest is Closeness.EXACT:
+            yield f"{line.strength_text} {known_by}: never titrated itself"
     elif strengths.found is None and closest in (Closeness.CLOSE, Closeness.EXACT):
         yield f"label strength {line.strength_text} taken as it stands: never titrated"
     elif strengths.found is not None and abs(likely / strengths.found - 1) > 1e-3:

@@ -166,8 +166,9 @@ def _bottle_lines(facts: Facts, plan: Plan, bottle: Bottle) -> Iterable[str]:
 def _three_strengths(facts: Facts, bottle: Bottle, judged: Verdict, as_at: date) -> str:
     line, strengths = facts.lines[bottle.line], judged.strengths
     found = f"found {say_strength(line, strengths.found)} on {strengths.found_on}"
+    known = found if strengths.found else bottle.known_by or "never found"
     words = (
-        f"label {line.strength_text}; {found if strengths.found else 'never found'}; "
+        f"label {line.strength_text}; {known}; "
         f"expected {say_strength(line, strengths.likely)} on {as_at}"
     )
     caution = bottle.record.caution

@@ -11,13 +11,17 @@ from stockroom.reports.sheet import PRACTICE, page, section, wrap
 from stockroom.reports.words import raised, rounded
 from stockroom.safety.cautions import HOUSE_LINE
 from stockroom.safety.clp import NOT_ENTERED
+from stockroom.safety.grounds import HOUSE, MARKS, MEMORY, OURS, weakest
 from stockroom.safety.hazards import Hazards, SheetText
 from stockroom.safety.pictograms import PICTOGRAMS
 from stockroom.safety.precautions import NUMBERING, PRECAUTIONS
 from stockroom.safety.statements import Statement, statement
 
 _NOTHING = "No statement follows from the limits held."
-_START = "A starting point, worked out from published limits."
+_START = "A starting point, worked out from limits"
+_SEEN = f"{_START} seen in print."
+_REMEMBERED = f"{_START} of which some are from memory: check them against the regulation."
+_OWN = f"{_START} of which some are the house's own."
 
 
 def hazards_text(found: Hazards, width: int) -> str:
@@ -27,12 +31,13 @@ def hazards_text(found: Hazards, width: int) -> str:
     parts = [
         top,
         _label(found, width),
-        section("DECIDED BY", [wrap(text, width, indent=2) for text in _deciding(found)]),
+        section("DECIDED BY", [wrap(text, width, indent=2) for text in _decided_by(found)]),
         section("NOTES", [wrap(text, width, indent=2) for text in _notes(found)]),
         _precautions(found, width),
         section("CAUTIONS", [wrap(text, width, indent=2) for text in found.cautions]),
         section("BEFORE THAT", [wrap(_sheet_line(one), width, indent=2) for one in found.older]),
-        wrap(f"{'' if found.sheet else _START + ' '}{HOUSE_LINE}", width, hang=0),
+        section("SOURCES", [wrap(text, width, indent=2) for text in _sources(found)]),
+        wrap(f"{_how_good(found)} {HOUSE_LINE}".strip(), width, hang=0),
     ]
     return page(parts)
 
@@ -83,6 +88,52 @@ def _deciding(found: Hazards) -> list[str]:
     return list(found.worked_out.deciding)
 
 
+def _decided_by(found: Hazards) -> list[str]:
+    """The deciding lines, each with the mark of what it rests on that is known least well."""
+    if found.sheet:
+        return _deciding(found)
+    behind: dict[str, list[str]] = {}
+    for each in found.known:
+        behind.setdefault(each.statement, []).append(each.how)
+    return [
+        f"{text} ({MARKS[weakest(behind.get(text.partition(':')[0], ()))]})"
+        for text in _deciding(found)
+    ]
+
+
+def _sources(found: Hazards) -> list[str]:
+    """Each source once, after the statements that rest on it."""
+    if found.sheet:
+        return []
+    cited = dict(found.sources)
+    if not found.known:
+        # that nothing follows rests on limits too
+        return [_cited(each.how, cited[each.source]) for each in found.worked_out.weighed]
+    behind: dict[tuple[bool, str], list[str]] = {}
+    for each in found.known:
+        behind.setdefault((each.how == HOUSE, each.source), []).append(each.statement)
+    return [
+        f"{', '.join(codes)}: {_cited(HOUSE if own else '', cited[source])}"
+        for (own, source), codes in behind.items()
+    ]
+
+
+def _cited(how: str, citation: str) -> str:
+    if how != HOUSE:
+        return citation
+    return f"the house's own row, {citation or 'no source written'}"
+
+
+def _how_good(found: Hazards) -> str:
+    """Whether the limits weighed were seen, remembered or the house's own, in one sentence."""
+    hows = [each.how for each in found.worked_out.weighed]
+    if found.sheet or not hows:
+        return ""
+    if weakest(how for how in hows if how != OURS) == MEMORY:
+        return _REMEMBERED
+    return _OWN if HOUSE in hows else _SEEN
+
+
 def _notes(found: Hazards) -> list[str]:
     if not found.entered:
         # how strong nothing is known of tells nobody anything
@@ -110,7 +161,9 @@ def _precautions(found: Hazards, width: int) -> str:
 def hazards_json(found: Hazards) -> dict[str, Any]:
     """The same as data; `statements` are H codes, `supplemental` EUH codes, `wording` their text.
 
-    `basis` is "supplier's sheet", "worked out", or "not entered: look it up".
+    `basis` is "supplier's sheet", "worked out", or "not entered: look it up". `known` says of
+    each statement how it is known (a seen, b worked out, c from memory, house, ours, sheet)
+    and by which source; `sources` are their citations.
     """
     codes = (*_codes(found), *found.worked_out.precautions)
     top = {
@@ -132,6 +185,7 @@ def hazards_json(found: Hazards) -> dict[str, Any]:
                 for c in found.contents
             ],
             "wording": {code: _text(found, code) for code in codes},
+            "sources": dict(found.sources),
             "notes": _notes(found),
             "cautions": list(found.cautions),
             "worked_out": {
@@ -155,6 +209,10 @@ def label_json(found: Hazards) -> dict[str, Any]:
         "precautions": [] if found.sheet else list(found.worked_out.precautions),
         "classes": [] if found.sheet else list(found.worked_out.classes),
         "deciding": _deciding(found),
+        "known": [
+            {"statement": each.statement, "how": each.how, "source": each.source}
+            for each in found.known
+        ],
         "not_entered": list(found.worked_out.unknown),
         "notes": _notes(found),
     }

@@ -19,10 +19,7 @@ def fresh_text(plan: Plan, width: int) -> str:
 
 
 def makes_by_day(makes: tuple[Make, ...], width: int, *, steps: bool = False) -> list[str]:
-    """Makes under day headings; a make with work on a second day stands under both.
-
-    Each caution is printed once a day, under the first make it belongs to.
-    """
+    """Makes under day headings, each with its own cautions; two days' work stands under both."""
     # whoever is in on the second day reads only that day
     days = sorted({make.on for make in makes} | {m.finish_on for m in makes if m.finish_on})
     return [line for when in days for line in _one_day(makes, when, width, steps=steps)]
@@ -32,10 +29,10 @@ def _one_day(makes: tuple[Make, ...], when: date, width: int, *, steps: bool) ->
     starting = [make for make in makes if make.on == when]
     finishing = [make for make in makes if make.finish_on == when and make.on != when]
     lines = [f" {day_heading(when)}"]
-    said: set[str] = set()
     for make in starting:
         lines += _make_lines(make, width, steps=steps)
-        lines += _cautions(make, said, width)
+        # under every make, however often: whoever makes the second has not read the first
+        lines += [wrap(f"! {caution}", width, indent=8, hang=10) for caution in make.cautions]
     return lines + [_finishing(make, width) for make in finishing]
 
 
@@ -45,7 +42,8 @@ def _make_lines(make: Make, width: int, *, steps: bool) -> list[str]:
     hands_on = f"{make.minutes}{TIED}min hands-on"
     first = f"{make.id}{fresh} {named(make.item, make.strength)}, {size}, {hands_on}"
     served = f"for {listed(make.bookings)}" if make.bookings else ""
-    details = [each for each in (_from(make), served, _when(make), _heel(make)) if each]
+    told = (_from(make), served, _when(make), _heel(make), *make.too_little)
+    details = [each for each in told if each]
     # the bench sheet gives each its line; the plan, read at a desk, keeps them together
     below = [*details, make.steps] if steps else ["; ".join(details)]
     shown = [wrap(each, width, indent=8, hang=8) for each in below if each]
@@ -74,13 +72,6 @@ def _heel(make: Make) -> str:
 def _finishing(make: Make, width: int) -> str:
     text = f"{make.id} {named(make.item, make.strength)}: finish what was started {day(make.on)}"
     return wrap(text, width, indent=2, hang=8)
-
-
-def _cautions(make: Make, said: set[str], width: int) -> list[str]:
-    # the tenth "acid into water" of a page is read by nobody
-    new = [caution for caution in make.cautions if caution not in said]
-    said.update(new)
-    return [wrap(f"! {caution}", width, indent=8, hang=10) for caution in new]
 
 
 def _foot(plan: Plan, width: int) -> str:

@@ -15,7 +15,9 @@ def past_text(plan: Plan, on: date, width: int) -> str:
     body = section("PAST, WEAK, UNDATED", past_lines(plan, width))
     # a command that can be typed as it stands beats one with a gap in it
     one = plan.past[0].bottle if plan.past else "BOTTLE"
-    following = foot(width, f"stockroom why {one}", f"stockroom look {one} --good")
+    # what must not be opened, or has failed its test, is never to be looked at
+    looks = [f"stockroom look {b.bottle} --good" for b in plan.past if b.look_would_do]
+    following = foot(width, f"stockroom why {one}", *looks[:1])
     return page([head(plan, width, about), body or "Every bottle is sound.", following])
 
 

@@ -9,7 +9,7 @@ from collections.abc import Iterable, Sequence
 from stockroom.keeping.caution import LowerLimits
 from stockroom.planning.decisions import Plan
 from stockroom.reports.words import TIED, counted, day, raised
-from stockroom.safety.cautions import HOUSE_LINE
+from stockroom.safety.cautions import ESTIMATE, HOUSE_LINE
 
 PRACTICE = "PRACTICE"
 """The first line of every text that comes from the invented college."""
@@ -17,8 +17,8 @@ PRACTICE = "PRACTICE"
 CAUTIOUS = "CAUTIOUS, strengths at their lower 95 % limit"
 """On every text of a plan made on the safe side."""
 
-CAUTION = f'{HOUSE_LINE} A number here is an estimate unless it says "found" and a day.'
-"""The house line. the-job section 7, nos. 1 and 16, in our words."""
+CAUTION = f"{HOUSE_LINE} {ESTIMATE}"
+"""The foot of every sheet: cautions nos. 1 and 16 of `safety/cautions.py`."""
 
 NARROWEST = 20
 

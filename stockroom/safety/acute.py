@@ -13,6 +13,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 
 from stockroom.safety.classes import CLASSES
+from stockroom.safety.grounds import RULE
 from stockroom.safety.limits import (
     ACUTE,
     NEAR,
@@ -22,6 +23,7 @@ from stockroom.safety.limits import (
     Limit,
     Part,
     Route,
+    grounds_of,
     in_words,
     nearly,
     reached,
@@ -52,7 +54,7 @@ CODES: dict[str, tuple[str, str, str, str]] = {
     "inhaled": ("H330", "H330", "H331", "H332"),
 }
 
-_MUCH_UNKNOWN = 10.0
+_MUCH_UNKNOWN, _ALL_KNOWN = 10.0, 100.0
 _RELEVANT = (0.1, 0.1, 0.1, 1.0)
 """From how many per cent an ingredient of category 1 to 4 counts. Source: Annex I, c."""
 
@@ -69,7 +71,7 @@ def _worst(mixture: list[Ingredient], way_in: str, unknown: float) -> list[Found
         return []
     # a mixture is never a worse poison than what is in it, whatever rounding an estimate has
     begin = min(_category(row) for _, row in rows)
-    whole = 100.0 - unknown if unknown > _MUCH_UNKNOWN else 100.0
+    whole = _ALL_KNOWN - unknown if unknown > _MUCH_UNKNOWN else _ALL_KNOWN
     for category in range(begin, 5):
         parts = [_part(each, row, category, whole) for each, row in rows if _adds(row, category)]
         share = summed(parts)
@@ -77,7 +79,7 @@ def _worst(mixture: list[Ingredient], way_in: str, unknown: float) -> list[Found
             code = CODES[way_in][category - 1]
             words = in_words(code, parts) + _estimate(rows, category, share)
             kind = CLASSES[f"Acute Tox. {category}"]
-            return [Found(kind, code, words, not reached(share), way_in)]
+            return [Found(kind, code, words, not reached(share), way_in, grounds_of(parts))]
     return []
 
 
@@ -101,30 +103,31 @@ def _adds(row: Limit, category: int) -> bool:
 
 
 def _part(each: Ingredient, row: Limit, category: int, whole: float) -> Part:
-    return each.part(row, _edge(row, category) * whole / 100.0)
+    # by its estimate; by its own limit the rule is asked only for what of the rest is unknown
+    rule = None if _published(row) and whole == _ALL_KNOWN else RULE
+    return each.part(row, _edge(row, category) * whole / _ALL_KNOWN, rule)
+
+
+def _published(row: Limit) -> bool:
+    return row.basis is Basis.SPECIFIC and bool(row.from_percent)
 
 
 def _edge(row: Limit, category: int) -> float:
     """The per cent at which this ingredient alone brings a mixture into the category."""
     # a published limit says from where its own category holds; the rest follows from the estimate
-    if row.basis is Basis.SPECIFIC and row.from_percent:
+    if row.from_percent and _published(row):
         return row.from_percent
-    limit = LIMITS[_route(row)][category - 1]
+    limit = LIMITS[row.counted_by][category - 1]
     return min(100.0, 100.0 * estimate_of(row) / limit)
 
 
 def estimate_of(row: Limit) -> float:
     """The acute toxicity estimate of a row, or the one that stands for its category."""
-    return row.ate or CONVERTED[_route(row)][_category(row) - 1]
-
-
-def _route(row: Limit) -> Route:
-    # breathed as what is not said: of a mist less is wanted than of a vapour, the safer side
-    return row.route or Route.DUST
+    return row.ate or CONVERTED[row.counted_by][_category(row) - 1]
 
 
 def _estimate(rows: list[tuple[Ingredient, Limit]], category: int, share: float) -> str:
-    routes = {_route(row) for _, row in rows}
+    routes = {row.counted_by for _, row in rows}
     # estimates of a vapour and of a dust are in the same unit and do not compare
     if len(routes) > 1:
         return ""

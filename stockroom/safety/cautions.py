@@ -9,7 +9,7 @@ assessment come first.
 from __future__ import annotations
 
 from collections.abc import Collection, Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from enum import StrEnum
 
 from stockroom.safety.peroxide_formers import DO_NOT_TOUCH, SIGNS, class_of
@@ -38,17 +38,40 @@ MAKING = frozenset({Step.OPEN, Step.MIX, Step.KEEP})
 """The steps of making up; the others belong to the class, the label and the waste."""
 
 
+_GLACIAL = "ethanoic acid"
+
+NEAT = 90.0
+"""About the % w/w from which ethanoic acid freezes in a cold store and catches fire.
+
+Common practice, no source.
+"""
+
+
 @dataclass(frozen=True, slots=True)
 class Goes:
     """One thing that goes into the work: its substance, storage group and form.
 
-    `strong` means concentrated as bought, where that changes what can happen.
+    `strong` means concentrated as bought, where that changes what can happen; `percent`
+    is by mass, where it is known; `former` its class of peroxide-former, if its name does
+    not say it.
     """
 
     substance: str
     group: str = ""
     solid: bool = False
     strong: bool = False
+    percent: float | None = None
+    former: str = ""
+
+    @property
+    def neat(self) -> bool:
+        """True when it is nearly pure: glacial, of ethanoic acid."""
+        return self.strong if self.percent is None else self.percent >= NEAT
+
+    @property
+    def kind(self) -> str:
+        """The group it is handled as: its storage group, unless it is too weak to burn."""
+        return "organic acid" if self.substance == _GLACIAL and not self.neat else self.group
 
 
 @dataclass(frozen=True, slots=True)
@@ -56,7 +79,9 @@ class Caution:
     """One caution: its number in the list of the job, its step, its words and its mark.
 
     It speaks of these groups and substances; `solid` None: in any form; `strong`: only
-    of the concentrated. `key` has the words, parted by |, that tell it has been said already.
+    of the concentrated. `key` has the words, parted by |, that tell it has been said already;
+    `parts` the same for each thing it says, where some may have been said and others not.
+    `also` are further steps it belongs to.
     """
 
     number: int
@@ -68,19 +93,38 @@ class Caution:
     substances: frozenset[str] = frozenset()
     solid: bool | None = None
     strong: bool = False
+    neat: bool = False
+    also: frozenset[Step] = frozenset()
+    parts: tuple[tuple[str, str], ...] = ()
 
     def speaks_of(self, thing: Goes) -> bool:
         """True when the thing is of its kind, in its form and strong enough."""
-        if thing.group not in self.groups and thing.substance not in self.substances:
+        if thing.kind not in self.groups and thing.substance not in self.substances:
             return False
         right_form = self.solid is None or thing.solid is self.solid
-        return right_form and (thing.strong or not self.strong)
+        enough = (thing.strong or not self.strong) and (thing.neat or not self.neat)
+        return right_form and enough
+
+    def unsaid(self, known: str) -> Caution | None:
+        """What is left of it after `known`, a text in lower case; None when nothing is."""
+        if not self.parts:
+            return None if _has(known, self.key) else self
+        left = [words for key, words in self.parts if not _has(known, key)]
+        if len(left) == len(self.parts):
+            return self
+        text = ", ".join(left)
+        return replace(self, text=f"{text[0].upper()}{text[1:]}.") if left else None
+
+
+def _has(known: str, key: str) -> bool:
+    return any(word in known for word in key.split("|"))
 
 
 def _of(words: str) -> frozenset[str]:
     return frozenset(part.strip() for part in words.split("|") if part.strip())
 
 
+_CLASS = frozenset({Step.USE})
 _ACIDS = _of("acid|oxidising acid")
 _METALS = _of(
     "barium chloride|barium nitrate|barium hydroxide|barium carbonate|copper(II) sulfate"
@@ -115,12 +159,19 @@ CAUTIONS: tuple[Caution, ...] = (
     Caution(
         4, Step.KEEP, "Vented cap, cool and dark, never filled to the brim, nothing poured back; "
         "no metal scoops: iron, copper, manganese, dust and alkali make gas and heat.",
-        "a", "vented", groups=_of("peroxide|hypochlorite"),
+        "a", "vented", groups=_of("peroxide|hypochlorite"), parts=(
+            ("vented", "vented cap"),
+            ("dark|cold", "cool and dark"),
+            ("brim", "never filled to the brim"),
+            ("poured back|return", "nothing poured back"),
+            ("metal", "no metal scoops: iron, copper, manganese, dust and alkali make gas "
+             "and heat"),
+        ),
     ),
     Caution(
         5, Step.MIX, "Bleach never with acid (chlorine), nor with ammonia (chloramines); stored "
         "apart, its waste apart.",
-        "a", "chlorine", groups=_of("hypochlorite"),
+        "a", "chlorine", groups=_of("hypochlorite"), also=_CLASS,
     ),
     Caution(
         5, Step.WASTE, "Ammonia never with bleach: it gives chloramines.",
@@ -140,11 +191,11 @@ CAUTIONS: tuple[Caution, ...] = (
     Caution(
         9, Step.OPEN, "Under pressure when warm: open the strong bottle in the fume cupboard.",
         "c", "fume cupboard", substances=_of("ammonia|hydrochloric acid"), solid=False,
-        strong=True,
+        strong=True, also=_CLASS,
     ),
     Caution(
         10, Step.OPEN, "Bromine: fume cupboard and gloves, with thiosulfate solution to hand.",
-        "a", "thiosulfate", substances=_of("bromine"),
+        "a", "thiosulfate", substances=_of("bromine"), also=_CLASS,
     ),
     Caution(
         10, Step.USE, "Thiosulfate and acid give sulfur dioxide: good ventilation, and stop it in "
@@ -152,13 +203,21 @@ CAUTIONS: tuple[Caution, ...] = (
         "c", "sulfur dioxide", substances=_of("sodium thiosulfate"),
     ),
     Caution(
+        10, Step.USE, "Sulfites and acid give sulfur dioxide, which can set off asthma: good "
+        "ventilation, and never more together than the work asks for.",
+        "c", "sulfur dioxide", substances=_of(
+            "sodium sulfite|sodium disulfite|potassium disulfite|sodium hydrogensulfite"
+            "|sodium dithionite"
+        ),
+    ),
+    Caution(
         11, Step.OPEN, "Glacial ethanoic acid burns skin and catches fire, and freezes in a cold "
         "store near 16 °C: thaw it standing in warm water.",
-        "c", "freezes", substances=_of("ethanoic acid"), strong=True,
+        "c", "freezes", substances=_of(_GLACIAL), neat=True, also=_CLASS,
     ),
     Caution(
         12, Step.MIX, "Flammable: no flame in the room.",
-        "c", "flame", groups=_of("flammable"), solid=False,
+        "c", "flame", groups=_of("flammable"), solid=False, also=_CLASS,
     ),
     Caution(
         12, Step.USE, "Flame tests by damp splint or an approved spray, never by pouring alcohol "
@@ -200,39 +259,8 @@ PAST_TESTING = Caution(
     f"Makes peroxides. Past its test date, or with {SIGNS}: {DO_NOT_TOUCH}.",
     "a",
     "crystals",
+    also=_CLASS,
 )
-
-_LIQUIDS = {
-    "acid": "Acid into water, slowly and stirring, never water into acid; let it cool.",
-    "alkali": "Corrosive: eye protection; open in the fume cupboard if it is concentrated.",
-    "oxidiser": "Oxidiser: keep away from anything that burns; eye protection.",
-    "peroxide": "Peroxide: eye protection, clean glass, nothing metal, nothing poured back.",
-    "hypochlorite": "Bleach never meets acid (chlorine) or ammonia; rinse apart.",
-    "flammable": "Flammable: no flame in the room.",
-}
-_SOLIDS = {
-    "alkali": "Alkali into water in small portions, stirring: it boils if hurried.",
-    "oxidiser": "Oxidiser: keep off paper and off anything that burns; wipe up spills wet.",
-}
-_VENTED = "Vented cap, cool and dark, never filled to the brim."
-
-
-def cautions_for(
-    groups: Iterable[tuple[str, bool]], *, vented: bool = False, never_kept: str = ""
-) -> tuple[str, ...]:
-    """Cautions for a make from its ingredients' storage groups (group, is it a solid).
-
-    A group without an entry adds nothing. Order follows the ingredients.
-    """
-    words = []
-    for group, solid in groups:
-        caution = (_SOLIDS if solid else _LIQUIDS).get(group)
-        words += [caution] if caution else []
-    if vented:
-        words.append(_VENTED)
-    if never_kept:
-        words.append(f"Never kept: {never_kept}")
-    return tuple(dict.fromkeys(words))
 
 
 def cautions_about(
@@ -243,20 +271,26 @@ def cautions_about(
 ) -> tuple[Caution, ...]:
     """What the list says of these things at these steps, in the order of the steps.
 
-    What somebody `said` already, by its telling word, is left out. The lines for every
-    page (nos. 1 and 16) are never among them: they stand at its foot.
+    What somebody `said` already, by its telling word, is left out, and of a caution that
+    says several things only those. One of several steps is given at the first asked for.
+    The lines for every page (nos. 1 and 16) are never among them: they stand at its foot.
     """
     known = " ".join(said).casefold()
     found = dict.fromkeys(each for thing in things for each in _speaking_of(thing))
-    kept = [each for each in found if each.step in steps and not _said(each, known)]
+    at_step = (_at(each, steps) for each in found)
+    kept = [left for each in at_step if each and (left := each.unsaid(known))]
     order = list(Step)
     return tuple(sorted(kept, key=lambda each: (order.index(each.step), each.number)))
 
 
-def _said(each: Caution, known: str) -> bool:
-    return any(word in known for word in each.key.split("|"))
+def _at(each: Caution, steps: Collection[Step]) -> Caution | None:
+    """The caution at the first of these steps that it belongs to; None when it is at none."""
+    if each.step in steps:
+        return each
+    further = [step for step in Step if step in steps and step in each.also]
+    return replace(each, step=further[0]) if further else None
 
 
 def _speaking_of(thing: Goes) -> list[Caution]:
-    former = [PAST_TESTING] if class_of(thing.substance) else []
+    former = [PAST_TESTING] if thing.former or class_of(thing.substance) else []
     return [each for each in CAUTIONS if each.speaks_of(thing)] + former

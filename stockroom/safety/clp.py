@@ -15,7 +15,9 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 
 from stockroom.safety import acute, mixture, physical, water_life
+from stockroom.safety.grounds import Ground, RestsOn, distinct
 from stockroom.safety.limits import Found, Ingredient
+from stockroom.safety.physical import Allergens, Supplement
 from stockroom.safety.pictograms import pictograms_of, signal_word
 from stockroom.safety.precautions import precautions_for
 from stockroom.safety.statements import without_duplicates
@@ -29,15 +31,23 @@ PH_RULE = (
 )
 """Source: Annex I, 3.2.3.1.2, seen."""
 
+METALS_RULE = (
+    "H290, corrosive to metals, is not worked out: suppliers print it on most mineral acids,"
+    " alkalis and bleach, and a weak one may have nothing else on its label"
+)
+"""From memory; a teaching handout seen has it on 1 to 3 mol/dm³ acids."""
+
 
 @dataclass(frozen=True, slots=True)
 class Classification:
     """What a mixture is classed and marked as, and why.
 
     `classes` names each with its category; `statements` are H codes less the needless
-    ones, `supplemental` EUH codes; `deciding` has one line for each of them. `notes`
-    say what was taken on the safer side or has to be looked up. `unknown` names
-    ingredients of which nothing is held; `entered` is False when that is all of them.
+    ones, `supplemental` EUH codes; `deciding` has one line for each of them, and `rests_on`
+    how each is known and whose figure it is. `weighed` is every figure that was asked,
+    those that gave no statement too. `notes` say what was taken on the safer side or has
+    to be looked up. `unknown` names ingredients of which nothing is held; `entered` is
+    False when that is all of them.
     """
 
     classes: tuple[str, ...] = ()
@@ -51,6 +61,8 @@ class Classification:
     unknown: tuple[str, ...] = ()
     allergens: tuple[str, ...] = ()
     entered: bool = True
+    rests_on: tuple[RestsOn, ...] = ()
+    weighed: tuple[Ground, ...] = ()
 
 
 def classify(ingredients: Iterable[Ingredient]) -> Classification:
@@ -66,8 +78,10 @@ def classify(ingredients: Iterable[Ingredient]) -> Classification:
     codes = [each.h_code for each in found]
     supplemental = physical.supplemental_in(known, codes)
     allergens = _allergens(known, codes)
-    statements = without_duplicates([*codes, *(code for code, _, _ in supplemental), *allergens])
+    named = [_NAMING] if allergens.names else []
+    statements = without_duplicates([*codes, *(each.code for each in supplemental), *named])
     kinds = [each.kind for each in found]
+    rests_on = _rests_on(found, supplemental, allergens, statements)
     return Classification(
         classes=tuple(each.name for each in found),
         statements=tuple(code for code in statements if not code.startswith("EUH")),
@@ -78,8 +92,10 @@ def classify(ingredients: Iterable[Ingredient]) -> Classification:
         deciding=_deciding(found, supplemental, allergens, statements),
         notes=_notes(known, found, supplemental, unknown),
         unknown=unknown,
-        allergens=tuple(allergens.get("EUH208", ())) if "EUH208" in statements else (),
+        allergens=allergens.names if _NAMING in statements else (),
         entered=bool(known) or not given,
+        rests_on=rests_on,
+        weighed=_weighed(known, rests_on),
     )
 
 
@@ -93,38 +109,65 @@ def _all_found(known: Sequence[Ingredient], unknown: float) -> list[Found]:
     return sorted(found, key=lambda each: (each.h_code, each.name))
 
 
-def _allergens(known: Sequence[Ingredient], codes: Sequence[str]) -> dict[str, list[str]]:
+_NAMING = "EUH208"
+
+
+def _allergens(known: Sequence[Ingredient], codes: Sequence[str]) -> Allergens:
     # a mixture that is itself classed as sensitising says so, and names nothing
-    if {"H317", "H334"} & set(codes):
-        return {}
-    named = physical.allergens_in(known)
-    return {"EUH208": named} if named else {}
+    return Allergens() if {"H317", "H334"} & set(codes) else physical.allergens_in(known)
 
 
 def _deciding(
     found: Sequence[Found],
-    supplemental: Sequence[tuple[str, str, str]],
-    allergens: dict[str, list[str]],
+    supplemental: Sequence[Supplement],
+    allergens: Allergens,
     kept: Sequence[str],
 ) -> tuple[str, ...]:
     words = [(each.h_code, each.deciding) for each in found]
-    words += [(code, text) for code, text, _ in supplemental]
-    words += [(code, f"{code}: contains {', '.join(who)}") for code, who in allergens.items()]
+    words += [(each.code, each.deciding) for each in supplemental]
+    words += [(_NAMING, f"{_NAMING}: contains {', '.join(allergens.names)}")]
     return tuple(dict.fromkeys(text for code, text in words if code in kept))
+
+
+def _rests_on(
+    found: Sequence[Found],
+    supplemental: Sequence[Supplement],
+    allergens: Allergens,
+    kept: Sequence[str],
+) -> tuple[RestsOn, ...]:
+    behind: dict[str, list[Ground]] = {code: [] for code in kept}
+    pairs = [(each.h_code, each.grounds) for each in found]
+    pairs += [(each.code, each.grounds) for each in supplemental]
+    for code, grounds in (*pairs, (_NAMING, allergens.grounds)):
+        if code in behind:
+            behind[code] += grounds
+    return tuple(
+        RestsOn(code, ground.how, ground.source)
+        for code, grounds in behind.items()
+        for ground in distinct(grounds)
+    )
+
+
+def _weighed(known: Sequence[Ingredient], rests_on: Sequence[RestsOn]) -> tuple[Ground, ...]:
+    rows = [row.ground for each in known for row in each.limits]
+    # of the general rules only those behind what is kept: H314 needs none for its H318
+    return distinct([*rows, *(Ground(each.how, each.source) for each in rests_on)])
 
 
 def _notes(
     known: Sequence[Ingredient],
     found: Sequence[Found],
-    supplemental: Sequence[tuple[str, str, str]],
+    supplemental: Sequence[Supplement],
     unknown: Sequence[str],
 ) -> tuple[str, ...]:
     notes = [f"{name}: hazards {NOT_ENTERED}" for name in unknown]
     notes += [f"near a limit, so the safer side: {each.deciding}" for each in found if each.near]
     notes += physical.notes_on(known)
-    notes += [note for _, _, note in supplemental if note]
+    notes += [each.note for each in supplemental if each.note]
     if any(_acid_or_alkali(each) for each in known) and not _corrosive(found):
         notes.append(PH_RULE)
+    if any(_eats_metals(each) for each in known):
+        notes.append(METALS_RULE)
     return tuple(dict.fromkeys(notes))
 
 
@@ -138,6 +181,14 @@ def _acid_or_alkali(each: Ingredient) -> bool:
         return True
     return not each.group and any(row.h_code == "H314" for row in each.limits)
 
+
+def _eats_metals(each: Ingredient) -> bool:
+    return each.group in _EATING and each.percent >= _EATING_FROM
+
+
+_EATING = frozenset({"acid", "oxidising acid", "alkali", "hypochlorite"})
+_EATING_FROM = 0.1
+"""Per cent by mass from which the note on metals is worth its line: ours, no source."""
 
 _ACIDS_AND_ALKALIS = ("acid", "alkali", "hypochlorite")
 

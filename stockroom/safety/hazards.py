@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from datetime import date
 
 from stockroom.safety.clp import Classification
+from stockroom.safety.grounds import SHEET, RestsOn
 
 
 @dataclass(frozen=True, slots=True)
@@ -46,6 +47,7 @@ class Hazards:
     that is. `sheet` is the supplier's text that counts, `older` those before it, the
     newest first. `worked_out` is always there, so that the two can be compared.
     `cautions` are the usual ones for what is in it; `practice` marks the invented college.
+    `sources` has each source key behind it, with its citation.
     """
 
     what: str
@@ -59,6 +61,7 @@ class Hazards:
     notes: tuple[str, ...] = ()
     cautions: tuple[str, ...] = ()
     practice: bool = False
+    sources: tuple[tuple[str, str], ...] = ()
 
     @property
     def signal_word(self) -> str:
@@ -88,6 +91,13 @@ class Hazards:
     def entered(self) -> bool:
         """True when there is anything to go by: a sheet, or limits of something in it."""
         return self.sheet is not None or self.worked_out.entered
+
+    @property
+    def known(self) -> tuple[RestsOn, ...]:
+        """For each statement how it is known and whose it is: the sheet's, or the limits'."""
+        if self.sheet is None:
+            return self.worked_out.rests_on
+        return tuple(RestsOn(code, SHEET, self.sheet.sheet) for code in self.sheet.codes)
 
     @property
     def missing_from_sheet(self) -> tuple[str, ...]:

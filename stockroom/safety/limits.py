@@ -12,11 +12,13 @@ from enum import StrEnum
 
 from stockroom.errors import BadAmount
 from stockroom.safety.classes import HazardClass, class_of
+from stockroom.safety.grounds import RULE, Ground, distinct
 
 NEAR = 0.95
 """From this part of a limit up the safer side is taken, with a note: ours, no source."""
 
 _EXACT = 1e-9
+_PURE = 100 * (1 - _EXACT)
 
 ACUTE, BREATHING = "acute", "breathing"
 
@@ -54,7 +56,7 @@ class Limit:
     up to the pure substance. `ate` is an acute toxicity estimate in mg/kg, mg/dm³ of
     air or ppm. `percent_of` names what the per cent counts when it is not the
     substance as dissolved: "available chlorine", or the formula of a hydrate.
-    `how`: a = seen, b = worked out, c = from memory. A supplemental statement has no class.
+    `how` is one of the marks of `grounds.py`. A supplemental statement has no class.
     """
 
     hazard_class: str
@@ -75,6 +77,11 @@ class Limit:
         return class_of(self.hazard_class)
 
     @property
+    def ground(self) -> Ground:
+        """How it is known, and whose figure it is."""
+        return Ground(self.how, self.source)
+
+    @property
     def supplemental(self) -> bool:
         """True for EUH statements, which belong to no class."""
         return self.h_code.startswith("EUH")
@@ -92,8 +99,16 @@ class Limit:
 
     @property
     def way_in(self) -> str:
-        """ "oral", "dermal" or "inhaled": the three ways a poison is told of."""
-        return str(self.route) if self.route in (Route.ORAL, Route.DERMAL) else "inhaled"
+        """ "oral", "dermal" or "inhaled", as its statement says: H302, H312 or H332."""
+        # the statement is on the label, so it is believed before a route left out or mistyped
+        return {"H30": "oral", "H31": "dermal"}.get(self.h_code[:3], "inhaled")
+
+    @property
+    def counted_by(self) -> Route:
+        """The route its estimate counts by; of a mist less is wanted, so it stands for no route."""
+        by_code = {"oral": Route.ORAL, "dermal": Route.DERMAL}.get(self.way_in)
+        breathed = self.route in (Route.VAPOUR, Route.DUST, Route.GAS)
+        return by_code or (self.route if self.route and breathed else Route.DUST)
 
 
 @dataclass(frozen=True, slots=True)
@@ -132,9 +147,15 @@ class Ingredient:
         """The per cent as this row counts it; as dissolved when nobody worked the other out."""
         return dict(self.counted).get(limit.percent_of, self.percent)
 
-    def part(self, row: Limit, edge: float) -> Part:
-        """Its part on the way to a class by one row, in the per cent that row counts."""
-        return Part(self.substance, self.percent_for(row), edge, row.percent_of)
+    def part(self, row: Limit, edge: float, rule: Ground | None = None) -> Part:
+        """Its part on the way to a class by one row, in the per cent that row counts.
+
+        `rule` gave the edge; None where the row's own limit did. The pure substance has
+        its own class, and no rule for mixtures is asked.
+        """
+        asked = rule is not None and self.percent < _PURE
+        grounds = (row.ground, rule) if asked and rule else (row.ground,)
+        return Part(self.substance, self.percent_for(row), edge, row.percent_of, grounds)
 
     def held(self, *ladders: str) -> tuple[Limit, ...]:
         """The rows on these ladders that count.
@@ -160,12 +181,16 @@ def _undisplaced(rows: list[Limit]) -> tuple[Limit, ...]:
 
 @dataclass(frozen=True, slots=True)
 class Part:
-    """One ingredient's share of the way to a class: its per cent, and the edge by itself."""
+    """One ingredient's share of the way to a class: its per cent, and the edge by itself.
+
+    `grounds` are what the edge rests on.
+    """
 
     substance: str
     percent: float
     edge: float
     counted: str = ""
+    grounds: tuple[Ground, ...] = ()
 
     @property
     def as_counted(self) -> str:
@@ -182,13 +207,17 @@ class Part:
 
 @dataclass(frozen=True, slots=True)
 class Found:
-    """A class the mixture has, the limit that decides it in words, and whether only nearly."""
+    """A class the mixture has, the limit that decides it in words, and whether only nearly.
+
+    `grounds` are what that limit rests on.
+    """
 
     kind: HazardClass
     h_code: str
     deciding: str
     near: bool = False
     way_in: str = ""
+    grounds: tuple[Ground, ...] = ()
 
     @property
     def name(self) -> str:
@@ -215,6 +244,12 @@ def nearly(share: float) -> bool:
 def summed(parts: list[Part], *, most: float = math.inf) -> float:
     """How far the parts together have come; no further than `most` when that is given."""
     return min(most, sum(part.share for part in parts))
+
+
+def grounds_of(parts: list[Part]) -> tuple[Ground, ...]:
+    """What the parts rest on together; that several add up is a rule of its own."""
+    added = (RULE,) if len(parts) > 1 else ()
+    return distinct([*(ground for part in parts for ground in part.grounds), *added])
 
 
 def in_words(h_code: str, parts: list[Part]) -> str:

@@ -12,8 +12,10 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Iterable
+from dataclasses import dataclass
 
 from stockroom.safety.classes import CLASSES
+from stockroom.safety.grounds import RULE, RULE_SEEN, Ground, distinct
 from stockroom.safety.limits import (
     BREATHING,
     NEAR,
@@ -22,6 +24,7 @@ from stockroom.safety.limits import (
     Ingredient,
     Limit,
     Part,
+    grounds_of,
     in_words,
     nearly,
     reached,
@@ -37,10 +40,30 @@ _CORROSIVE = ("Skin Corr. 1A", "Skin Corr. 1B", "Skin Corr. 1C", "Skin Corr. 1")
 _SKIN, _EYE = "Skin Irrit. 2", "Eye Irrit. 2"
 _DAMAGE = "Eye Dam. 1"
 
-# (added up, by itself): what does not add up, a strong acid or base, counts from less
-_BURNS = (5.0, 1.0)
-_DAMAGES = (3.0, 1.0)
-_IRRITATES = (10.0, 3.0)
+
+@dataclass(frozen=True, slots=True)
+class General:
+    """A general limit in per cent, and by itself for a strong acid or base, which adds to nothing.
+
+    `seen` when the limit was read; by itself none was.
+    """
+
+    limit: float
+    by_itself: float
+    seen: bool = False
+
+    def edge(self, row: Limit) -> float:
+        """Where the row's class begins by this limit."""
+        return self.by_itself if row.basis is Basis.NOT_ADDITIVE else self.limit
+
+    def rule(self, row: Limit) -> Ground:
+        """The rule that says so, with its mark."""
+        return RULE_SEEN if self.seen and row.basis is not Basis.NOT_ADDITIVE else RULE
+
+
+_BURNS = General(5.0, 1.0, seen=True)
+_DAMAGES = General(3.0, 1.0)
+_IRRITATES = General(10.0, 3.0)
 # a corrosive ingredient irritates from a tenth of what an irritant needs
 _BURNS_A_LITTLE = 1.0
 
@@ -56,7 +79,8 @@ def highest(rungs: Iterable[tuple[str, str, list[Part]]]) -> list[Found]:
     for name, h_code, parts in rungs:
         share = summed(parts)
         if parts and nearly(share):
-            return [Found(CLASSES[name], h_code, in_words(h_code, parts), not reached(share))]
+            words, near = in_words(h_code, parts), not reached(share)
+            return [Found(CLASSES[name], h_code, words, near, grounds=grounds_of(parts))]
     return []
 
 
@@ -74,12 +98,18 @@ def nearest(parts: Iterable[Part], relevant: float = _RELEVANT) -> Part | None:
     return part if part and part.percent >= min(relevant, part.edge) * NEAR else None
 
 
-def edge_of(row: Limit, general: tuple[float, float]) -> float:
+def edge_of(row: Limit, general: General) -> float:
     """Where a row's class begins: its own limit, else the general one for its kind."""
     if row.basis is Basis.SPECIFIC:
         # a limit with no lower end holds from the least that is ever relevant
         return row.from_percent or _TRACE
-    return general[row.basis is Basis.NOT_ADDITIVE]
+    return general.edge(row)
+
+
+def own_part(each: Ingredient, row: Limit, general: General) -> Part:
+    """The part by the row's own class: by its own limit, else by the general one."""
+    rule = None if row.basis is Basis.SPECIFIC else general.rule(row)
+    return each.part(row, edge_of(row, general), rule)
 
 
 # -- skin and eyes ----------------------------------------------------------------------
@@ -90,7 +120,9 @@ def _skin_and_eyes(mixture: list[Ingredient]) -> list[Found]:
     skin = highest([*burning, (_SKIN, "H315", shares(mixture, _irritating_skin))])
     if skin and skin[0].kind.name in _CORROSIVE:
         # what burns skin burns eyes; H314 says so, and makes the second statement needless
-        return [*skin, Found(CLASSES[_DAMAGE], "H318", "H318: corrosive to skin")]
+        grounds = distinct([*skin[0].grounds, RULE])
+        burnt = Found(CLASSES[_DAMAGE], "H318", "H318: corrosive to skin", grounds=grounds)
+        return [*skin, burnt]
     damaging = (_DAMAGE, "H318", shares(mixture, _damaging_eyes))
     return [*skin, *highest([damaging, (_EYE, "H319", shares(mixture, _irritating_eyes))])]
 
@@ -100,7 +132,7 @@ def _burning(name: str) -> Share:
 
     def share(each: Ingredient) -> Part | None:
         rows = [row for row in _burns(each) if row.kind.rank <= CLASSES[name].rank]
-        return nearest(each.part(row, edge_of(row, _BURNS)) for row in rows)
+        return nearest(own_part(each, row, _BURNS) for row in rows)
 
     return share
 
@@ -112,27 +144,28 @@ def _burns(each: Ingredient) -> list[Limit]:
 def _irritating_skin(each: Ingredient) -> Part | None:
     own = [row for row in each.held("skin") if row.hazard_class == _SKIN]
     if own:
-        return nearest(each.part(row, edge_of(row, _IRRITATES)) for row in own)
+        return nearest(own_part(each, row, _IRRITATES) for row in own)
     edges = [(row, min(_BURNS_A_LITTLE, edge_of(row, _BURNS))) for row in _burns(each)]
-    return nearest(each.part(row, edge) for row, edge in edges)
+    return nearest(each.part(row, edge, RULE) for row, edge in edges)
 
 
 def _damaging_eyes(each: Ingredient) -> Part | None:
     damaging, burning = _eye_rows(each)
-    parts = [each.part(row, edge_of(row, _DAMAGES)) for row in damaging]
+    parts = [own_part(each, row, _DAMAGES) for row in damaging]
     # without eye limits of its own the general 3 % holds, though it burns skin only from more
-    most = math.inf if _has_own_eye_limits(each) else _DAMAGES[0]
-    return nearest([*parts, *(each.part(r, min(most, edge_of(r, _BURNS))) for r in burning)])
+    most = math.inf if _has_own_eye_limits(each) else _DAMAGES.limit
+    edges = [(row, min(most, edge_of(row, _BURNS))) for row in burning]
+    return nearest([*parts, *(each.part(row, edge, RULE) for row, edge in edges)])
 
 
 def _irritating_eyes(each: Ingredient) -> Part | None:
     own = [row for row in each.held("eye") if row.hazard_class == _EYE]
     if own:
-        return nearest(each.part(row, edge_of(row, _IRRITATES)) for row in own)
+        return nearest(own_part(each, row, _IRRITATES) for row in own)
     damaging, burning = _eye_rows(each)
     rows = damaging if _has_own_eye_limits(each) else [*damaging, *burning]
     edges = [(row, min(_BURNS_A_LITTLE, edge_of(row, _DAMAGES))) for row in rows]
-    return nearest(each.part(row, edge) for row, edge in edges)
+    return nearest(each.part(row, edge, RULE) for row, edge in edges)
 
 
 def _eye_rows(each: Ingredient) -> tuple[list[Limit], list[Limit]]:
@@ -146,10 +179,10 @@ def _has_own_eye_limits(each: Ingredient) -> bool:
 
 # -- lungs --------------------------------------------------------------------------------
 
-_BREATHED = (20.0, 20.0)
+_BREATHED = General(20.0, 20.0)
 """The guide value of Annex I, 3.8.3.4.5, from memory."""
 
-_ASPIRATED = (10.0, 10.0)
+_ASPIRATED = General(10.0, 10.0, seen=True)
 
 
 def _breathing(mixture: list[Ingredient]) -> list[Found]:
@@ -163,7 +196,7 @@ def _breathing(mixture: list[Ingredient]) -> list[Found]:
 def _by_breath(h_code: str) -> Share:
     def share(each: Ingredient) -> Part | None:
         rows = each.held(f"{BREATHING} {h_code}")
-        return nearest(each.part(row, edge_of(row, _BREATHED)) for row in rows)
+        return nearest(own_part(each, row, _BREATHED) for row in rows)
 
     return share
 
@@ -173,7 +206,7 @@ def _aspiration(mixture: list[Ingredient]) -> list[Found]:
 
     def share(each: Ingredient) -> Part | None:
         rows = each.held("aspiration")
-        return nearest(each.part(row, edge_of(row, _ASPIRATED)) for row in rows)
+        return nearest(own_part(each, row, _ASPIRATED) for row in rows)
 
     return highest([("Asp. Tox. 1", "H304", shares(mixture, share))])
 
@@ -203,10 +236,17 @@ _ALONE = {
     "STOT RE 2": 10.0,
     "Ozone 1": _TRACE,
 }
-"""From how many per cent one ingredient gives the mixture its class. Source: Annex I, c."""
+"""From how many per cent one ingredient gives the mixture its class.
+
+Source: Annex I, from memory; organs harmed by repeated exposure as a German guide has it, seen.
+"""
+_SEEN_LADDER = "organs, repeated"
 
 _LESSER = {"STOT SE 1": ("STOT SE 2", "H371"), "STOT RE 1": ("STOT RE 2", "H373")}
-"""Category 1 from 1 to below 10 % makes the mixture category 2. Source: German guide, seen."""
+"""Category 1 from 1 to below 10 % makes the mixture category 2.
+
+Source: a German guide for STOT RE, seen; for STOT SE from memory.
+"""
 
 
 def _alone(mixture: list[Ingredient]) -> list[Found]:
@@ -233,9 +273,10 @@ def _worst_alone(mixture: list[Ingredient], ladder: str) -> list[Found]:
 
 
 def _rungs_of(each: Ingredient, row: Limit) -> list[tuple[str, str, Part]]:
-    general = (_ALONE[row.hazard_class],) * 2
-    own = (row.hazard_class, row.h_code, each.part(row, edge_of(row, general)))
+    limit = _ALONE[row.hazard_class]
+    general = General(limit, limit, seen=row.ladder == _SEEN_LADDER)
+    own = (row.hazard_class, row.h_code, own_part(each, row, general))
     lesser = _LESSER.get(row.hazard_class)
     if lesser is None or row.basis is Basis.SPECIFIC:
         return [own]
-    return [own, (*lesser, each.part(row, _RELEVANT))]
+    return [own, (*lesser, each.part(row, _RELEVANT, general.rule(row)))]

@@ -1,16 +1,18 @@
 """Groups that must not share a place, and caps that must let gas out.
 
-Each pair has its reason, who says so, and a mark: a = read, c = common practice, no
-source. The house's own rules come first. An older transport table (IMDG) is held
-against these in the tests; it tells no acid from an alkali, so nothing is taken from it.
+Each pair has its reason, who says so, and a mark: a = read, c = from memory, or common
+practice without a source. The house's own rules come first. An older transport table
+(IMDG) is held against these in the tests; it tells no acid from an alkali, so nothing is
+taken from it.
 """
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
 
 from stockroom.findings import Finding
+from stockroom.safety.kinds import also
 from stockroom.safety.peroxide_formers import class_of
 
 
@@ -29,6 +31,7 @@ _NOTRE_DAME = "Univ. of Notre Dame page"
 _MIT = "MIT page"
 _EUH = "what EUH031 and EUH032 mean: with acid, toxic gas"
 _TRADE = "common practice, no source"
+_LISTS = "lists of incompatible chemicals in Prudent Practices and the CRC Handbook"
 
 # group, group: reason | source | mark
 _PAIRS = f"""
@@ -92,6 +95,46 @@ alkali + metal powder: alkali beside metal powder: hydrogen if they meet | {_TRA
 flammable + water-reactive: flammable beside water-reactive: fire | {_PRUDENT} | a
 oxidiser + gas: oxidiser beside a gas cylinder: fire | {_TRADE} | c
 flammable + gas: flammable beside a gas cylinder: fire | {_TRADE} | c
+oxidising acid + oxidiser: oxidiser beside oxidising acid: fire, explosive gas | {_TRADE} | c
+hypochlorite + sulfide: bleach beside sulfide: heat and fumes if they meet | {_TRADE} | c
+hypochlorite + thiocyanate: bleach beside thiocyanate: toxic gas if they meet | {_TRADE} | c
+acid + sulfite: sulfite beside acid: sulfur dioxide if they meet | {_EUH} | c
+organic acid + sulfite: sulfite beside acid: sulfur dioxide if they meet | {_EUH} | c
+oxidising acid + sulfite: sulfite beside acid: sulfur dioxide, heat | {_EUH} | c
+oxidiser + sulfite: oxidiser beside sulfite: heat if they meet | {_TRADE} | c
+acid + fluoride: fluoride beside acid: hydrogen fluoride if they meet | {_EUH} | c
+organic acid + fluoride: fluoride beside acid: hydrogen fluoride if they meet | {_EUH} | c
+oxidising acid + fluoride: fluoride beside acid: hydrogen fluoride if they meet | {_EUH} | c
+acid + hexacyanoferrate: hexacyanoferrate beside acid: hydrogen cyanide, if hot | {_EUH} | c
+oxidising acid + hexacyanoferrate: hexacyanoferrate beside acid: toxic gas | {_EUH} | c
+hypochlorite + ammonium salt: bleach beside an ammonium salt: chloramines | {_TRADE} | c
+chlorate + ammonium salt: chlorate beside an ammonium salt: explosive together | {_TRADE} | c
+halogen + ammonia: halogen beside ammonia: explosive if they meet | {_TRADE} | c
+alkali metal + chlorinated solvent: alkali metal beside it: explosion | {_TRADE} | c
+metal powder + chlorinated solvent: metal powder beside it: heat, explosion | {_TRADE} | c
+oxidiser + fuel: oxidiser beside what burns: fire, with permanganate unlit | {_NOTRE_DAME} | a
+oxidiser + phenylamine: oxidiser beside phenylamine: fire | {_LISTS} | c
+chlorate + sugar: chlorate beside sugar or starch: explosive together | {_LISTS} | c
+calcium hypochlorite + fuel: dry bleach beside it: takes fire by itself | {_LISTS} | c
+calcium hypochlorite + phenylamine: dry bleach beside phenylamine: fire | {_LISTS} | c
+oxidising acid + fuel: oxidising acid beside what burns: fire, explosion | {_LISTS} | c
+oxidising acid + sugar: oxidising acid beside sugar or starch: fire, explosion | {_LISTS} | c
+oxidising acid + phenylamine: oxidising acid beside phenylamine: fire | {_LISTS} | c
+oxidising acid + metal: oxidising acid beside metal: fire, explosion | {_LISTS} | c
+nitric acid + fuel: nitric acid beside what burns: fire, poisonous gas | {_LISTS} | c
+oxidising acid + peroxide former: oxidising acid beside a peroxide-former: fire | {_LISTS} | c
+nitric acid + peroxide former: nitric acid beside a peroxide-former: fire | {_LISTS} | c
+nitric acid + phenylamine: nitric acid beside phenylamine: takes fire by itself | {_LISTS} | c
+nitric acid + metal: nitric acid beside metal: brown, very poisonous gas | {_LISTS} | c
+nitric acid + metal powder: nitric acid beside metal powder: poisonous gas, fire | {_LISTS} | c
+peroxide + fuel: peroxide beside what burns: fire | {_LISTS} | c
+peroxide + phenylamine: peroxide beside phenylamine: fire | {_LISTS} | c
+peroxide + metal: peroxide beside metal: gas and heat | {_LISTS} | c
+nitrite + ammonium salt: nitrite beside an ammonium salt: explosive together | {_LISTS} | c
+silver salt + ammonia: silver beside ammonia: what they give explodes once dry | {_LISTS} | c
+hypochlorite + sulfite: bleach beside sulfite: heat and poisonous gas | {_LISTS} | c
+trichloromethane + alkali: trichloromethane beside alkali: violent if they meet | {_LISTS} | c
+trichloromethane + ketone: trichloromethane beside a ketone: violent with alkali | {_LISTS} | c
 """
 
 
@@ -114,16 +157,10 @@ _WITHOUT_A_RULE = frozenset({"general", "toxic", "salt"})
 _OF_PLACES = frozenset({"solid", "dark", "cold", "set aside"})
 """What a place may be kept for that is no storage group: nothing there reacts with it."""
 
+_NAMED = 4
+"""How many neighbours a note names: whoever goes to move one sees the others."""
+
 GROUPS = frozenset(group for pair in RULINGS for group in pair) | _WITHOUT_A_RULE
-
-
-_ALSO = {
-    "ammonia": "ammonia",
-    "nitric acid": "nitric acid",
-    "ethanoic acid": "organic acid",
-    "methanoic acid": "organic acid",
-}
-"""Substances that react as more than their storage group says."""
 
 
 def kinds_of(substance: str, group: str) -> tuple[str, ...]:
@@ -134,31 +171,64 @@ def kinds_of(substance: str, group: str) -> tuple[str, ...]:
     >>> kinds_of("ammonia", "alkali"), kinds_of("benzyl alcohol", "general")
     (('alkali', 'ammonia'), ('general', 'peroxide former'))
     """
-    also = [_ALSO.get(substance, "")]
-    also += ["peroxide former"] if class_of(substance) and group != "flammable" else []
-    return tuple(dict.fromkeys(kind for kind in (group, *also) if kind))
+    former = ["peroxide former"] if class_of(substance) and group != "flammable" else []
+    return tuple(dict.fromkeys(kind for kind in (group, *also(substance), *former) if kind))
 
 
-def wrong_neighbours(standing: Iterable[tuple[str, str, str]]) -> list[Finding]:
-    """Findings on bottles that stand where they should not.
+@dataclass(frozen=True, slots=True)
+class Stands:
+    """A bottle where it stands: the groups it counts as, the place, what that is kept for."""
 
-    `standing` is (bottle, its storage group, the place's own group or the
-    groups beside it) pair by pair; a pair without a rule is passed over.
+    bottle: str
+    kinds: tuple[str, ...]
+    place: str
+    meant_for: str = ""
+
+
+def wrong_neighbours(standing: Iterable[Stands]) -> list[Finding]:
+    """Findings on bottles that stand where they should not: beside which, where, and why not.
+
+    In the order given, one for a bottle and a reason; a pair without a rule is passed over.
     """
-    found = []
-    for bottle, group, beside in standing:
-        reason = APART.get(frozenset({group, beside}))
-        if reason:
-            found.append(Finding(bottle, f"{reason}: move it"))
-    # two bottles of one group beside it are one reason
-    return list(dict.fromkeys(found))
+    row = list(standing)
+    there: dict[str, dict[str, list[str]]] = {}
+    for each in row:
+        for kind in each.kinds:
+            there.setdefault(each.place, {}).setdefault(kind, []).append(each.bottle)
+    return [found for each in row for found in _wrong(each, there.get(each.place, {}))]
+
+
+def _wrong(each: Stands, there: Mapping[str, list[str]]) -> Iterator[Finding]:
+    beside: dict[str, list[str]] = {}
+    kept = {APART.get(frozenset({kind, each.meant_for}), "") for kind in each.kinds}
+    for kind in each.kinds:
+        for other in sorted({*there, each.meant_for}):
+            reason = APART.get(frozenset({kind, other}))
+            if reason:
+                beside.setdefault(reason, []).extend(there.get(other, ()))
+    for reason, numbers in beside.items():
+        others = [number for number in dict.fromkeys(numbers) if number != each.bottle]
+        if others or reason in kept:
+            yield Finding(each.bottle, _words(each, others, reason, kept=reason in kept))
+
+
+def _words(each: Stands, others: list[str], reason: str, *, kept: bool) -> str:
+    more = len(others) - _NAMED
+    listed = ", ".join(others[:_NAMED]) + (f" and {more} more" if more > 0 else "")
+    where = f"in {each.place}" + (f", kept for {each.meant_for}" if kept else "")
+    stands = f"stands beside {listed} {where}" if others else f"stands {where}"
+    # what the place is kept for says which of the two has to go
+    belongs = each.meant_for in each.kinds and others
+    goes = "it" if kept else "the other" if belongs else "one"
+    return f"{stands}: {reason.replace(': ', ', ')}: move {goes}"
 
 
 def not_checked(standing: Iterable[tuple[str, str, str]]) -> list[Finding]:
-    """Findings on groups nobody has a rule for, each once; `standing` as in `wrong_neighbours`.
+    """Findings on groups nobody has a rule for, each once.
 
-    A place kept for something that is no group (dark, cold, solids) is passed over, and
-    so is a bottle of no group at all.
+    `standing` is (bottle, its storage group, the place's own group or a group beside it)
+    pair by pair. A place kept for something that is no group (dark, cold, solids) is
+    passed over, and so is a bottle of no group at all.
     """
     strange: dict[str, list[str]] = {}
     for bottle, group, beside in standing:

@@ -26,13 +26,20 @@ A a diisopropyl ether|divinylacetylene|vinylidene chloride|potassium|sodium amid
 B a diethyl ether|tetrahydrofuran|1,4-dioxane|acetal|ethanal|benzyl alcohol|butan-2-ol|propan-2-ol
 B a cyclohexene|cumene|dicyclopentadiene|methylacetylene|cellosolve|chlorofluoroethylene
 B c diglyme|glyme|decalin|tetralin|4-methylpentan-2-one|furan|diacetylene|cyclooctene
-B c methylcyclopentane|hexan-2-ol
+B c methylcyclopentane|hexan-2-ol|cyclohexanol|cyclopentene|4-methylpentan-2-ol|pentan-2-ol
+B c heptan-4-ol|cyclohex-2-en-1-ol|1-phenylethanol|ethoxyethene
 C a styrene|butadiene|tetrafluoroethylene|vinylacetylene|vinyl acetate|vinyl chloride
 C a vinylpyridine|chloroprene
-C c acrylic acid|acrylonitrile|methyl methacrylate|chlorotrifluoroethylene
+C c acrylic acid|acrylonitrile|methyl methacrylate|chlorotrifluoroethylene|buta-1,3-diene
 D c acrolein|methyl tert-butyl ether|di-n-propyl ether|isoamyl ether|tetrahydropyran
 """
-"""Class, mark, members. Butadiene, chloroprene and tetrafluoroethylene are A as liquid monomer."""
+"""Class, mark, members."""
+
+_LIQUID_MONOMERS = frozenset({"butadiene", "buta-1,3-diene", "chloroprene", "tetrafluoroethylene"})
+"""Class C, and class A as liquid monomer. Source: the same university lists (a)."""
+
+_VINYL_ETHER, _VINYL_ETHER_CLASS = "vinyl ether", "B"
+"""The whole family, whatever it carries. Source: the Ohio and New Mexico State lists (a)."""
 
 _CLASS_OF = {
     name: row.split(maxsplit=2)[0]
@@ -41,9 +48,18 @@ _CLASS_OF = {
 }
 
 
-def class_of(substance: str) -> str:
-    """The class of a substance by its name in the tables; "" for one not on the lists."""
-    return _CLASS_OF.get(substance, "")
+def class_of(substance: str, *, liquid: bool = False) -> str:
+    """The class of a substance by its name in the tables; "" for one not on the lists.
+
+    `liquid` tells the liquid monomer from the gas, where the lists have them in two classes.
+
+    >>> class_of("butadiene"), class_of("butadiene", liquid=True), class_of("ethyl vinyl ether")
+    ('C', 'A', 'B')
+    """
+    name = " ".join(substance.split()).casefold()
+    if liquid and name in _LIQUID_MONOMERS:
+        return "A"
+    return _CLASS_OF.get(name) or (_VINYL_ETHER_CLASS if _VINYL_ETHER in name else "")
 
 
 @dataclass(frozen=True, slots=True)

@@ -10,8 +10,10 @@ from __future__ import annotations
 
 import math
 from collections.abc import Iterable
+from dataclasses import dataclass
 
 from stockroom.safety.classes import CLASSES, PHYSICAL
+from stockroom.safety.grounds import RULE, RULE_SEEN, SAFER_SIDE, Ground, distinct
 from stockroom.safety.limits import (
     NEAR,
     Basis,
@@ -41,12 +43,17 @@ def found_in(ingredients: Iterable[Ingredient]) -> list[Found]:
 
 def _worst(mixture: list[Ingredient], ladder: str) -> list[Found]:
     found = [
-        Found(row.kind, row.h_code, _in_words(row, part), not reached(part.share))
+        _found(row, part)
         for each in mixture
         for row in each.held(ladder)
         if nearly((part := _part(each, row)).share)
     ]
     return sorted(found, key=lambda each: (each.kind.rank, each.near, each.deciding))[:1]
+
+
+def _found(row: Limit, part: Part) -> Found:
+    near = not reached(part.share)
+    return Found(row.kind, row.h_code, _in_words(row, part), near, grounds=part.grounds)
 
 
 def _in_words(row: Limit, part: Part) -> str:
@@ -56,12 +63,15 @@ def _in_words(row: Limit, part: Part) -> str:
 
 
 def _part(each: Ingredient, row: Limit) -> Part:
-    edge = PURE
     if row.basis is Basis.SPECIFIC:
-        edge = row.from_percent or 0.1
-    elif row.ladder == _FLAMMABLE:
-        edge = _FLAMMABLE_FROM
-    return each.part(row, edge)
+        return each.part(row, row.from_percent or 0.1)
+    if row.ladder == _FLAMMABLE:
+        return each.part(row, _FLAMMABLE_FROM, _unless_pure(each, row))
+    return each.part(row, PURE)
+
+
+def _unless_pure(each: Ingredient, row: Limit) -> Ground | None:
+    return SAFER_SIDE if each.percent_for(row) < PURE else None
 
 
 def notes_on(ingredients: Iterable[Ingredient]) -> list[str]:
@@ -114,26 +124,35 @@ reacts violently with it.
 _BY_CORROSION = "EUH071"
 
 
+@dataclass(frozen=True, slots=True)
+class Supplement:
+    """An EUH statement the mixture has, the limit in words, a note on it, what it rests on."""
+
+    code: str
+    deciding: str
+    note: str
+    grounds: tuple[Ground, ...]
+
+
 def supplemental_in(
     ingredients: Iterable[Ingredient], statements: Iterable[str]
-) -> list[tuple[str, str, str]]:
-    """(statement, deciding limit, note) of each EUH the mixture has; `statements` are its H codes.
+) -> list[Supplement]:
+    """Each EUH statement the mixture has; `statements` are its H codes.
 
     EUH071 goes with poison breathed in when the mixture is also corrosive: Annex II, seen.
     """
     codes = set(statements)
     breathed = codes & {"H330", "H331", "H332"} and "H314" in codes
-    found: dict[str, tuple[str, str, str]] = {}
+    found: dict[str, Supplement] = {}
     for each in ingredients:
         for row in each.limits:
             if not row.supplemental or (row.h_code == _BY_CORROSION and not breathed):
                 continue
-            part = each.part(row, _supplemental_edge(row))
+            part = _supplemental_part(each, row)
             if nearly(part.share):
-                note = (
-                    "" if row.basis is Basis.SPECIFIC or part.percent >= PURE else _unpublished(row)
-                )
-                found.setdefault(row.h_code, (row.h_code, _euh_in_words(row, part), note))
+                note = _unpublished(row) if SAFER_SIDE in part.grounds else ""
+                words = _euh_in_words(row, part)
+                found.setdefault(row.h_code, Supplement(row.h_code, words, note, part.grounds))
     return list(found.values())
 
 
@@ -143,31 +162,51 @@ def _euh_in_words(row: Limit, part: Part) -> str:
     return _in_words(row, part)
 
 
-def _supplemental_edge(row: Limit) -> float:
+def _supplemental_part(each: Ingredient, row: Limit) -> Part:
     if row.basis is Basis.SPECIFIC:
-        return row.from_percent or 0.1
-    return 0.1 if row.h_code == _BY_CORROSION else _SHOWN_FROM.get(row.h_code, PURE)
+        return each.part(row, row.from_percent or 0.1)
+    # it follows from the mixture's own classes, so no limit is wanting
+    if row.h_code == _BY_CORROSION:
+        return each.part(row, 0.1, RULE_SEEN)
+    return each.part(row, _shown_from(row), _unless_pure(each, row))
+
+
+def _shown_from(row: Limit) -> float:
+    return _SHOWN_FROM.get(row.h_code, PURE)
 
 
 def _unpublished(row: Limit) -> str:
-    # EUH071 follows from the mixture's own classes, so no limit is wanting
-    if row.h_code == _BY_CORROSION:
-        return ""
-    return f"{row.h_code}: no limit is published; shown from {_supplemental_edge(row):g} %"
+    return f"{row.h_code}: no limit is published; shown from {_shown_from(row):g} %"
 
 
 _ALLERGENS = {"Resp. Sens. 1A": 0.1, "Skin Sens. 1A": 0.1}
 
 
-def allergens_in(ingredients: Iterable[Ingredient]) -> list[str]:
+@dataclass(frozen=True, slots=True)
+class Allergens:
+    """The substances that EUH208 names, and what the limits behind it rest on."""
+
+    names: tuple[str, ...] = ()
+    grounds: tuple[Ground, ...] = ()
+
+
+def allergens_in(ingredients: Iterable[Ingredient]) -> Allergens:
     """Substances that EUH208 names: sensitisers from a tenth of the limit that gives the class.
 
     Source: Annex II, 2.8 and Table 3.4.6, from memory.
     """
-    named = []
-    for each in ingredients:
-        for row in each.held("skin allergy", "lung allergy"):
-            limit = row.from_percent or _ALLERGENS.get(row.hazard_class, 1.0)
-            if each.percent_for(row) >= limit / 10:
-                named.append(each.substance)
-    return list(dict.fromkeys(named))
+    parts = [
+        part
+        for each in ingredients
+        for row in each.held("skin allergy", "lung allergy")
+        if reached((part := _tenth(each, row)).share)
+    ]
+    return Allergens(
+        tuple(dict.fromkeys(part.substance for part in parts)),
+        distinct(ground for part in parts for ground in part.grounds),
+    )
+
+
+def _tenth(each: Ingredient, row: Limit) -> Part:
+    limit = row.from_percent or _ALLERGENS.get(row.hazard_class, 1.0)
+    return each.part(row, limit / 10, RULE)

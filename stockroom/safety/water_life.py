@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
+from stockroom.safety.grounds import RULE
 from stockroom.safety.limits import Basis, Found, Ingredient, Limit, Part
 from stockroom.safety.mixture import Share, highest, nearest, shares
 
@@ -38,7 +39,7 @@ def found_in(ingredients: Iterable[Ingredient]) -> list[Found]:
 
 def _at_once(each: Ingredient) -> Part | None:
     rows = each.held("water life")
-    return nearest((each.part(row, _edge(row, 1.0)) for row in rows), _relevant(rows))
+    return nearest((_part(each, row, 1.0) for row in rows), _relevant(rows))
 
 
 def _lasting(name: str) -> Share:
@@ -46,7 +47,7 @@ def _lasting(name: str) -> Share:
 
     def share(each: Ingredient) -> Part | None:
         rows = [row for row in each.held("water life, lasting") if _place(row) < len(weights)]
-        parts = (each.part(row, _edge(row, weights[_place(row)], name)) for row in rows)
+        parts = (_part(each, row, weights[_place(row)], name) for row in rows)
         return nearest(parts, _relevant(rows))
 
     return share
@@ -56,11 +57,11 @@ def _place(row: Limit) -> int:
     return row.kind.rank
 
 
-def _edge(row: Limit, weight: float, name: str = "") -> float:
+def _part(each: Ingredient, row: Limit, weight: float, name: str = "") -> Part:
     if row.basis is Basis.SPECIFIC and row.from_percent:
-        return row.from_percent
+        return each.part(row, row.from_percent)
     factor = 1.0 if name == _CHRONIC[-1] else row.m_factor
-    return _SUM / (weight * factor)
+    return each.part(row, _SUM / (weight * factor), RULE)
 
 
 def _relevant(rows: Iterable[Limit]) -> float:

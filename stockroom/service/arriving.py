@@ -7,10 +7,13 @@ from datetime import date
 from stockroom.errors import BadDate, BadInput
 from stockroom.measure.amounts import Amount
 from stockroom.measure.days import PrintedDate, parse_printed, spell_day
+from stockroom.measure.formats import format_amount
 from stockroom.service.work import Work, unsettled
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, next_bottle_number
 from stockroom.store.tables import Bottle, Line
+
+MOST_AT_ONCE = 100
 
 
 def date_printed(printed: str | None) -> PrintedDate | None:
@@ -37,8 +40,14 @@ def date_printed(printed: str | None) -> PrintedDate | None:
         ) from error
 
 
+def check_number(count: int) -> None:
+    """Pass for a number of bottles that may arrive at once. Raises: BadInput."""
+    if not 1 <= count <= MOST_AT_ONCE:
+        raise BadInput(f"{count} bottles?", f"Give 1 to {MOST_AT_ONCE}.")
+
+
 def new_bottle(
-    work: Work, line: Line, size: Amount, printed: PrintedDate | None, remark: str
+    work: Work, line: Line, size: Amount, printed: PrintedDate | None, remark: str, cap: str = ""
 ) -> Bottle:
     """A bought bottle with the next number, saved but without entries."""
     assert line.id is not None
@@ -51,10 +60,17 @@ def new_bottle(
         printed_text=printed.text if printed else "",
         printed_readings=";".join(day.isoformat() for day in printed.readings) if printed else "",
         remark=remark,
+        cap=cap,
     )
     work.session.add(bottle)
     work.session.flush()
     return bottle
+
+
+def arrived(bottles: list[Bottle], line: Line, size: Amount) -> str:
+    """What came, in words: "B46, B47: lithium chloride, 100 g each"."""
+    each = format_amount(size) + (" each" if len(bottles) > 1 else "")
+    return f"{', '.join(bottle.number for bottle in bottles)}: {line.key}, {each}"
 
 
 def write_openings(work: Work, bottles: list[Bottle], opened: date) -> None:

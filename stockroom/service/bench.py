@@ -1,4 +1,4 @@
-"""What the bench sums share: the answer's shape, the figures they look up, their cautions.
+"""What the bench sums share: the answer's shape and the figures they look up.
 
 Every sum works with no store. Where there is one, the house's own lines come
 before the built-in names. The sums themselves are in `bench_strength.py`,
@@ -17,36 +17,45 @@ from stockroom.chemistry.strength import BY_MASS, Concentration, canonical, perc
 from stockroom.errors import BadAmount, MissingFigure
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_number
-from stockroom.measure.parsing import parse_strength
 from stockroom.measure.strengths import Strength, StrengthUnit
+from stockroom.service.bench_counted import counted_in_words, read_strength, refuse_a_density
 from stockroom.service.bench_names import Stuff, density_of, shipped_density_of
 
 if TYPE_CHECKING:
     from stockroom.chemistry.normality import Equivalents
 
-_CAUTIONS = {
-    "acid": "Acid into water, slowly, stirring, never the reverse; let it cool before the mark.",
-    "alkali": "Into water in portions, stirring: it heats; let it cool before the mark.",
-    "peroxide": "Vented cap, cool, dark; nothing goes back into the bottle.",
-    "hypochlorite": "Never near acid (chlorine) or ammonia; vented cap.",
-}
-"""By storage group; the-job section 7, nos. 2 to 5, in our words."""
-
 # the same ammonia is 28 % as NH3 and 57.6 % as NH4OH, and labels have both
+_LABELS_DIFFER = 0.02  # 18 °C or 25 °C, and a rounded label, come to less than this
 _MASSES = frozenset(
     {StrengthUnit.WW, StrengthUnit.WV, StrengthUnit.GRAMS, StrengthUnit.PPM_MM, StrengthUnit.PPM_MV}
 )
 
 
 @dataclass(frozen=True, slots=True)
+class Named:
+    """An amount with what it is of: "water", 297.4, "cm3"."""
+
+    what: str
+    value: float
+    unit: str
+
+
+@dataclass(frozen=True, slots=True)
 class Sum:
-    """One answer: in words, as a number in `unit`, and the figures it used."""
+    """One answer: in words, as a number in `unit`, and the figures it used.
+
+    `amounts` are all that the answer names, in its order; `ways` are other ways to the
+    same, each a row of amounts; `cautions` belong to the work itself.
+    """
 
     text: str
     value: float
     unit: str
     details: tuple[str, ...] = ()
     practice: bool = False
+    amounts: tuple[Named, ...] = ()
+    ways: tuple[tuple[Named, ...], ...] = ()
+    cautions: tuple[str, ...] = ()
 
 
 def strength_of(text: str, stuff: Stuff) -> Strength:
@@ -59,7 +68,8 @@ def strength_of(text: str, stuff: Stuff) -> Strength:
     bare = re.fullmatch(r"\s*[\d.,]+\s*(?:%?|%\s*vols?|vols?\s*%)\s*", text, re.IGNORECASE)
     if bare and _is_peroxide(stuff):
         raise ask_vol(text)
-    strength = parse_strength(text)
+    refuse_a_density(text, stuff)
+    strength = read_strength(text, stuff)
     for each in (strength, strength.part_of):
         if each and each.unit is not StrengthUnit.SATURATED and each.value <= 0:
             raise BadAmount(f"strength {text!r} is nothing at all.", "Give a strength above 0.")
@@ -67,7 +77,10 @@ def strength_of(text: str, stuff: Stuff) -> Strength:
 
 
 def canonical_of(strength: Strength, stuff: Stuff, density: float | None) -> Concentration:
-    """The strength in the unit sums are done in, from what is known of the substance."""
+    """The strength in the unit sums are done in, from what is known of the substance.
+
+    Raises: BadAmount; MissingFigure naming the figure.
+    """
     return canonical(
         counted_for(strength, stuff),
         molar_mass=mass_for(strength.unit, stuff),
@@ -118,9 +131,9 @@ def conventions_of(strength: Strength, stuff: Stuff) -> tuple[str, ...]:
     if unit is StrengthUnit.PARTS:
         shown = f"{strength.text.split(' of ')[0]} read as one part in"
         return (f"{shown} {format_number(strength.value)} parts in total",)
-    if stuff.formula == "NH3" and unit in _MASSES:
+    if stuff.formula == "NH3" and unit in _MASSES and not strength.counted_as:
         return ("counted as NH3; a label that counts NH4OH is asked for as NH4OH",)
-    return ()
+    return counted_in_words(strength, stuff)
 
 
 def density_for(
@@ -144,6 +157,28 @@ def density_for(
     if own is not None:
         return own, f"that of your own line, {percent:g} % w/w"
     return _published(percent, stuff)
+
+
+def doubt_of_density(given: float | None, strength: Strength, stuff: Stuff) -> tuple[str, ...]:
+    """A word where the density given is far from the table's for that strength.
+
+    Nothing where they agree, or where no table is held.
+    """
+    table = tabulated(stuff)
+    if given is None or not table:
+        return ()
+    from stockroom.chemistry.densities import density_at
+
+    try:
+        percent = percent_by_mass(
+            strength, molar_mass=stuff.molar_mass, dry_mass=stuff.dry_mass, of=stuff.name
+        )
+        held = density_at(table, percent).value
+    except MissingFigure:
+        return ()
+    if abs(given / held - 1) <= _LABELS_DIFFER:
+        return ()
+    return (f"! {given:g} g/cm³ given, and the table has {held:.3f}: read the label again",)
 
 
 def _published(percent: float, stuff: Stuff) -> tuple[float | None, str]:
@@ -193,10 +228,9 @@ def figures_of(stuff: Stuff, density: float | None, assumed: str = "") -> tuple[
     return tuple(figure for figure in (mass, dense) if figure)
 
 
-def caution_of(stuff: Stuff) -> tuple[str, ...]:
-    """The caution of its storage group, marked, if it has one."""
-    caution = _CAUTIONS.get(stuff.storage_group)
-    return (f"! {caution}",) if caution else ()
+def of_which(typed: str, notes: tuple[str, ...]) -> tuple[str, ...]:
+    """Notes of which the density says whose it is, where two strengths have one each."""
+    return tuple(f"{typed}: {note}" if note.startswith("density") else note for note in notes)
 
 
 def grams(mass: float) -> str:

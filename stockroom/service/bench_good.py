@@ -15,6 +15,7 @@ from stockroom.errors import BadAmount, BadInput, MissingFigure
 from stockroom.measure.formats import format_number
 from stockroom.measure.strengths import StrengthUnit
 from stockroom.service.bench import cm3
+from stockroom.service.bench_counted import as_written
 from stockroom.service.bench_steps import per_cent
 from stockroom.service.bench_task import Task
 from stockroom.service.bench_tools import Tools
@@ -25,6 +26,7 @@ _UNKNOWN_FORMULA = 1.2e-4
 The widest of the common salts by the limits of `atomic_weights.py`.
 """
 
+_TOLD = 3  # shares of a budget that are printed: the rest is small beside them
 _NO_NUMBER = frozenset({StrengthUnit.SATURATED, StrengthUnit.PARTS})
 
 
@@ -36,8 +38,8 @@ def how_good(task: Task, steps: Sequence[Step]) -> tuple[str, ...]:
     how = by_what(steps)
     if not how or task.strength.unit in _NO_NUMBER:
         return ()
-    budget = made(_as_made(task, steps), steps, _bottle_inputs(task))
-    unit, closeness = str(task.strength.unit), task.asked.closeness
+    value, unit = as_written(_as_made(task, steps), task.strength, task.stuff)
+    budget, closeness = made(value, steps, _bottle_inputs(task)), task.asked.closeness
     shown = with_spread(budget.value, budget.expanded(), unit=unit)
     first = "the first: " if len(steps) > 1 or steps[0].volume != task.cubic else ""
     with_a = f"for ±{per_cent(closeness)} with a {how.replace(', ', ' and a ')}"
@@ -70,7 +72,9 @@ def _nominal(cubic: float) -> tuple[Ware | None, tuple[str, ...]]:
         return ware("flask", cubic, "B"), ()
     except BadAmount:
         found = _cylinder(cubic, must=False)
-        size = f"a {format_number(found.size)} cm³ cylinder" if found else "no vessel I know"
+        if found is None:
+            return None, (f"no vessel is held for {cm3(cubic)}: its own error is not counted",)
+        size = f"a {format_number(found.size)} cm³ cylinder"
         return found, (f"{cm3(cubic)} is no flask's size: taken as made up in {size}",)
 
 
@@ -94,12 +98,20 @@ def _as_made(task: Task, steps: Sequence[Step]) -> float:
 
 
 def _mostly(budget: Budget, steps: Sequence[Step]) -> str:
-    parts = []
-    for name, share in budget.components[:3]:
-        # with one step, "flask" is plain enough; with more, it must be said whose
-        said = name.rpartition(": ")[2] if len(steps) == 1 else name
-        parts.append(f"{said} {per_cent(share / budget.value)}")
-    return f"standard uncertainty {per_cent(budget.relative)}, most from {', '.join(parts)}"
+    shares = [(_said(name, len(steps) > 1), share) for name, share in budget.components[:_TOLD]]
+    parts = ", ".join(f"{name} {per_cent(share / budget.value)}" for name, share in shares)
+    return f"standard uncertainty {per_cent(budget.relative)}, most from {parts}"
+
+
+def _said(name: str, many: bool) -> str:
+    """ "mass 1: balance" of several steps as "balance (step 1)"; of one step, the doubt alone."""
+    quantity, _, doubt = name.rpartition(": ")
+    what, _, number = quantity.rpartition(" ")
+    if doubt == "temperature" and quantity.startswith("taken"):
+        doubt = "temperature of what is taken"
+    if quantity in ("molar mass", "assay"):
+        return quantity
+    return f"{doubt} (step {number})" if many and what and number.isdecimal() else doubt
 
 
 def _bottle_inputs(task: Task) -> tuple[Input, ...]:

@@ -13,7 +13,7 @@ from typing import TYPE_CHECKING
 from stockroom.chemistry.densities import density_at, in_words, percent_ww_for
 from stockroom.chemistry.ethanol import is_ethanol
 from stockroom.chemistry.strength import BY_MASS, PER_MOLE, Concentration, percent_by_mass
-from stockroom.errors import BadAmount, MissingFigure, NotAllowed
+from stockroom.errors import BadAmount, MissingFigure
 from stockroom.measure.amounts import Amount
 from stockroom.measure.formats import format_strength
 from stockroom.measure.parsing import parse_strength
@@ -24,11 +24,14 @@ from stockroom.service.bench import (
     conventions_of,
     density_for,
     figures_of,
+    of_which,
     strength_of,
     tabulated,
 )
+from stockroom.service.bench_cautions import STRONG_PERCENT
 from stockroom.service.bench_known import Asked, Known, known, pure_density_of
 from stockroom.service.bench_names import Stuff, of_line
+from stockroom.service.bottle_strength import standing
 
 if TYPE_CHECKING:
     from stockroom.planning.facts import Bottle, Line
@@ -46,8 +49,11 @@ _PER_VOLUME = frozenset(
         StrengthUnit.CHLORINE,
     }
 )
+_GRAMS_PER_PERCENT = 10.0  # in 1 dm³, at the density of water
 _COUNTS_MOLES = frozenset({StrengthUnit.MOLAR, StrengthUnit.VOL, StrengthUnit.NORMAL})
 _NEAT = "neat"
+_ALSO_NEAT = frozenset({_NEAT, "pure", "undiluted", "glacial"})
+_SAME = 1e-4  # of a strength: nobody measures closer, and molar masses are rounded
 _PURE = Strength(100.0, StrengthUnit.WW, _NEAT)
 
 
@@ -97,6 +103,42 @@ class Held:
         if self.neat and wanted.unit is StrengthUnit.VV:
             return 100.0
         return self.strength.value if _kind(self.strength) == _kind(wanted) else None
+
+    def same_as(self, wanted: Held) -> bool:
+        """Is it as strong as that, written alike or by what both come to?"""
+        if self.found is None and not self.neat and _kind(self.strength) == _kind(wanted.strength):
+            return abs(self.strength.value - wanted.strength.value) <= _SAME * self.strength.value
+        try:
+            mine, other = self.known().conc, wanted.known().conc
+        except (MissingFigure, BadAmount):
+            return False
+        return mine.unit == other.unit and abs(mine.value - other.value) <= _SAME * other.value
+
+    @property
+    def strong(self) -> bool:
+        """Is it concentrated, as bought? False where nothing is known that would tell."""
+        if self.neat:
+            return True
+        try:
+            return self.percent_ww() >= STRONG_PERCENT
+        except (MissingFigure, BadAmount):
+            return self._grams_per_dm3() >= STRONG_PERCENT * _GRAMS_PER_PERCENT
+
+    def _grams_per_dm3(self) -> float:
+        try:
+            conc = self.known().conc
+        except (MissingFigure, BadAmount):
+            return 0.0
+        per_mole = self.asked.stuff.molar_mass if conc.unit == PER_MOLE else 1.0
+        return conc.value * (per_mole or 0.0)
+
+    @property
+    def uses_density(self) -> bool:
+        """Would a density given for it take part in a sum?"""
+        counted = (StrengthUnit.VV, StrengthUnit.SATURATED)
+        inner = self.strength.part_of
+        units = {self.strength.unit, *((inner.unit,) if inner else ())}
+        return self.neat or bool(units & (BY_MASS | set(counted)))
 
     def percent_ww(self) -> float:
         """Its % w/w. Raises: MissingFigure where no table turns it into one; BadAmount."""
@@ -195,7 +237,8 @@ class Task:
         if self.wanted.by_mass:
             conc = self.wanted.known().conc
             comes_to = f"{strength.text} is {format_strength(conc.value, conc.unit)}"
-            return (*conventions_of(strength, self.stuff), comes_to, self.wanted.density()[1])
+            dense = of_which(strength.text, (self.wanted.density()[1],))
+            return (*conventions_of(strength, self.stuff), comes_to, *dense)
         try:
             return conventions_of(strength, self.stuff)
         except BadAmount:
@@ -204,7 +247,7 @@ class Task:
 
 def from_text(typed: str, asked: Asked) -> Held:
     """A side typed as a strength, or as "neat". Raises: BadAmount."""
-    if typed.strip().casefold() == _NEAT:
+    if typed.strip().casefold() in _ALSO_NEAT:
         return _neat(typed, asked)
     strength = strength_of(typed, asked.stuff)
     if strength.unit is StrengthUnit.VV:
@@ -220,27 +263,19 @@ def from_bottle(bottle: Bottle, line: Line, on: date, given: float | None = None
     where the label states no strength. Raises: MissingFigure for any other without one;
     NotAllowed past its safety date.
     """
-    from stockroom.keeping.verdict import Condition, verdict
-
-    judged = verdict(bottle.record, line.rules, on)
-    number, expected = bottle.number, judged.strengths.expected
-    if judged.safety and judged.condition is Condition.PAST:
-        raise NotAllowed(
-            f"{number} is past its safety date {judged.good_until} ({judged.decided_by}).",
-            "Do not open or move it; tell whoever answers for it.",
-        )
+    found = standing(bottle, line, on)
     stuff = of_line(line)
     asked = Asked(stuff, (stuff,), given)
-    if expected is not None:
-        note = f"expected on {on} from its {judged.strengths.basis} strength; {judged.condition}"
-        strength = Strength(expected, StrengthUnit(line.unit), number)
-        return Held(number, strength, asked, Concentration(expected, line.unit), note)
+    if found.expected is not None:
+        strength = Strength(found.expected, StrengthUnit(found.unit), found.number)
+        conc = Concentration(found.expected, found.unit)
+        return Held(found.number, strength, asked, conc, found.note)
     if line.form is not Form.LIQUID:
-        raise MissingFigure(f"{number} has no strength to dilute from.", "Titrate it first.")
+        raise MissingFigure(f"{found.number} has no strength to dilute from.", "Titrate it first.")
     if not line.strength_text:
-        return replace(_neat(number, asked), note=f"neat; {judged.condition}")
-    note = f"{line.strength_text} by its label, not found; {judged.condition}"
-    return Held(number, parse_strength(line.strength_text), asked, note=note)
+        return replace(_neat(found.number, asked), note=f"neat; {found.condition}")
+    note = f"{line.strength_text} by its label, not found; {found.condition}"
+    return Held(found.number, parse_strength(line.strength_text), asked, note=note)
 
 
 def _neat(typed: str, asked: Asked) -> Held:

@@ -17,6 +17,7 @@ from stockroom.service.bench import (
     canonical_of,
     conventions_of,
     density_for,
+    doubt_of_density,
     figures_of,
     strength_of,
     table_ends,
@@ -29,6 +30,7 @@ if TYPE_CHECKING:
 
 _ROOM_FROM, _ROOM_TO = 15.0, 25.0  # °C: a density at 20 °C holds within half a per cent
 _ANY_DENSITY = 1.0
+_PURE = Strength(100.0, StrengthUnit.WW, "100 % w/w")
 
 
 @dataclass(frozen=True, slots=True)
@@ -76,7 +78,8 @@ def known(strength: Strength, asked: Asked, *, by_mass: bool) -> Known:
         return Known(canonical_of(strength, asked.stuff, _ANY_DENSITY), _ANY_DENSITY, notes)
     density, assumed = density_for(asked.density, strength, asked.stuff, asked.lines)
     shown = figures_of(asked.stuff, density, assumed)[-1:] if density else ()
-    return Known(canonical_of(strength, asked.stuff, density), density, (*notes, *shown))
+    doubt = doubt_of_density(asked.density, strength, asked.stuff)
+    return Known(canonical_of(strength, asked.stuff, density), density, (*notes, *shown, *doubt))
 
 
 def pure_density_of(asked: Asked) -> tuple[float | None, tuple[str, ...]]:
@@ -87,7 +90,8 @@ def pure_density_of(asked: Asked) -> tuple[float | None, tuple[str, ...]]:
     stuff, table = asked.stuff, tabulated(asked.stuff)
     given = asked.pure_density
     if given is not None:
-        return given, (f"density of the pure liquid {format_number(given)} g/cm³, as given",)
+        said = f"density of the pure liquid {format_number(given)} g/cm³, as given"
+        return given, (said, *doubt_of_density(given, _PURE, stuff))
     if table and table_ends(table) == 100:
         from stockroom.chemistry.densities import density_at, in_words
 

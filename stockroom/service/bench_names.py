@@ -9,7 +9,6 @@ from __future__ import annotations
 import re
 from collections.abc import Iterable
 from dataclasses import dataclass
-from difflib import get_close_matches
 from functools import lru_cache
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -18,6 +17,7 @@ from stockroom.chemistry.formula import molar_mass
 from stockroom.errors import BadAmount, BadInput, StoreTrouble, UnknownName
 from stockroom.planning.facts import Form, Line
 from stockroom.service import bench_tables as shipped
+from stockroom.service.bench_spelling import known_spelling, nearest
 from stockroom.service.bench_tables import Row, spelt
 from stockroom.store.likeness import plain
 
@@ -96,6 +96,7 @@ def solute(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     """
     # one's own line comes first: its assay and density are off the bottle in hand
     known = [*lines, *_shipped_lines()]
+    of = _as_held(of, known)
     asked = shipped.formulas().get(spelt(of)) or _substance_of(of)
     wanted = {plain(of), plain(asked)}
     for stuff in known:
@@ -117,12 +118,15 @@ def solid(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     anhydrous salt weighed for the hydrate makes a solution half as strong again.
     Raises: BadInput naming the forms; UnknownName; BadAmount.
     """
-    # a formula names its hydrate itself, so there is no form left to ask about
-    if spelt(of) in shipped.formulas():
-        return _by_formula(of, [])
     house = list(lines)
     own = [each for each in house if each.form is Form.SOLID]
     solids = [*own, *(each for each in _shipped_lines() if each.form is Form.SOLID)]
+    of = _as_held(of, house)
+    substance = shipped.formulas().get(spelt(of))
+    # a formula names its hydrate itself, so there is no form left to ask about; what is
+    # bought as a liquid alone is that liquid, and no litre is weighed of a gas
+    if substance and (_forms(solids, plain(substance)) or not _poured(substance, house)):
+        return _by_formula(of, [])
     exact = [stuff for stuff in solids if plain(stuff.name) == plain(of)]
     if exact:
         return exact[0]
@@ -137,6 +141,13 @@ def solid(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
             f'Write --of "{min(forms)}".',
         )
     return solute(of, house)
+
+
+def jar_of(stuff: Stuff) -> Stuff | None:
+    """The shipped line of that very solid, as it is bought; None where none is of its mass."""
+    same = [each for each in _shipped_lines() if plain(each.substance) == plain(stuff.substance)]
+    solids = (each for each in same if each.form is Form.SOLID)
+    return next((each for each in solids if _weighed_as(each) == _weighed_as(stuff)), None)
 
 
 def house_lines(store: Path | None) -> list[Stuff]:
@@ -221,20 +232,29 @@ def _weighed_as(stuff: Stuff) -> float | str:
     return stuff.name if stuff.molar_mass is None else round(stuff.molar_mass, 2)
 
 
+def _as_held(of: str, known: Iterable[Stuff]) -> str:
+    # one's own name for it is not to be spelt otherwise
+    return of if any(plain(of) == plain(each.name) for each in known) else known_spelling(of)
+
+
+def _poured(substance: str, house: Iterable[Stuff]) -> bool:
+    """Is it bought as a liquid, or as a solution that nobody weighs?"""
+    row, named = shipped.row_of(substance) or {}, plain(substance)
+    lines = (*house, *_shipped_lines())
+    liquid = any(each.form is Form.LIQUID and plain(each.substance) == named for each in lines)
+    return liquid or row.get("storage_group") == "peroxide"
+
+
 def _by_formula(of: str, known: list[Stuff]) -> Stuff:
     trouble = ""
-    if _FORMULA.fullmatch(of.strip()):
+    if _FORMULA.fullmatch(spelt(of)):
         try:
-            return _of_formula(of.strip())
+            return _of_formula(spelt(of))
         except BadAmount as bad:
             trouble = f" {bad.message}"
-    names = sorted({stuff.name for stuff in known} | set(shipped.other_names()))
-    # by the standard library: a slip in a bench sum must not load the matcher of the store
-    near = get_close_matches(of.casefold(), names, n=3, cutoff=0.3)
-    nearest = f"Nearest: {'; '.join(near)}." if near else ""
+    names = [*shipped.other_names(), *(stuff.name for stuff in known)]
     raise UnknownName(
-        f"{of!r} is neither a name I know nor a formula.{trouble}",
-        f"{nearest} Or give its formula, as --of Na2CO3.".strip(),
+        f"{of!r} is neither a name I know nor a formula.{trouble}", nearest(of, names)
     )
 
 
@@ -243,7 +263,10 @@ def _of_formula(of: str) -> Stuff:
     substance = shipped.formulas().get(spelt(of).partition(".")[0], of)
     row = shipped.row_of(substance)
     group = row["storage_group"] if row else ""
-    return Stuff(of, substance, None, molar_mass(of), storage_group=group, formula=of)
+    whole = shipped.formulas().get(spelt(of), of)
+    # a formula that two substances have is called by neither's name
+    name = (shipped.form_named(of) if substance != of else "") or whole
+    return Stuff(name, substance, None, molar_mass(of), storage_group=group, formula=of)
 
 
 def _substance_of(of: str) -> str:

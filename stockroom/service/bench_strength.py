@@ -13,7 +13,7 @@ from pathlib import Path
 from stockroom.chemistry.strength import BY_MASS, PER_MOLE, Concentration, express
 from stockroom.errors import BadAmount, BadInput, MissingFigure
 from stockroom.measure.formats import format_number
-from stockroom.measure.parsing import gas_volume, parse_strength
+from stockroom.measure.parsing import gas_volume
 from stockroom.measure.reading import quote
 from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.service.bench import (
@@ -25,10 +25,13 @@ from stockroom.service.bench import (
     strength_of,
     tabulated,
 )
+from stockroom.service.bench_counted import read_strength
 from stockroom.service.bench_known import Asked, Known, known, pure_density_of
-from stockroom.service.bench_names import house_lines, solute
+from stockroom.service.bench_names import Stuff, house_lines, solute
 
 _ONE_IN = re.compile(r"\s*1 in(?:\s+of\s+(?P<stock>.+))?\s*", re.IGNORECASE)
+_BEGINS_WITH_NUMBER = re.compile(r"[0-9.]|[MN] ?/ ?[0-9]")
+_WORTH_A_LOOK = {PER_MOLE: 8.0, "g/dm3": 300.0}  # every table goes further than this
 _PARTS_BELOW = 1 - 1e-9
 
 
@@ -56,7 +59,8 @@ def convert(
     figures = (given.density, given.pure_density, given.part_of, given.celsius)
     asked = Asked(solute(of, lines), tuple(lines), *figures)
     strength, target = _read(text, to, asked, given.gas)
-    _refuse_unused(strength, target, given)
+    units = _units(strength, target)
+    _refuse_unused(units, given)
     asked = _with_densities(strength, target, asked)
     held = known(strength, asked, by_mass=target.unit in BY_MASS)
     if strength.unit is StrengthUnit.PARTS:
@@ -65,7 +69,7 @@ def convert(
     value, said = _said_in(target, held, asked)
     answer = f"{text} {asked.stuff.name} is {_shown(value, to, target)}"
     mass = figures_of(asked.stuff, None) if _counts_mass(strength, target) else ()
-    notes = (*held.notes, *said, *_not_used(strength, asked.celsius))
+    notes = (*held.notes, *said, *_beyond(held.conc, asked.stuff), *_not_used(units, given))
     return Sum(answer, value, to, (*mass, *dict.fromkeys(notes)))
 
 
@@ -82,9 +86,14 @@ def _with_densities(strength: Strength, target: Strength, asked: Asked) -> Asked
     return replace(asked, pure_density=asked.density)
 
 
-def _refuse_unused(strength: Strength, target: Strength, given: Given) -> None:
+def _units(*strengths: Strength) -> frozenset[StrengthUnit]:
+    """Every unit that takes part, that of what is diluted too."""
+    inner = [each.part_of for each in strengths if each.part_of]
+    return frozenset(each.unit for each in (*strengths, *inner))
+
+
+def _refuse_unused(units: frozenset[StrengthUnit], given: Given) -> None:
     # what is typed and then left out of the sum would be taken for a part of its answer
-    units = {strength.unit, target.unit, *(each.unit for each in (strength.part_of,) if each)}
     if given.part_of and StrengthUnit.PARTS not in units:
         raise BadInput(
             f"--from {given.part_of!r}: nothing here is a part of it.",
@@ -94,13 +103,37 @@ def _refuse_unused(strength: Strength, target: Strength, given: Given) -> None:
         raise BadInput(f"--gas-volume {given.gas:g}: no vol in this sum.", "Leave it out.")
 
 
-def _not_used(strength: Strength, celsius: float | None) -> tuple[str, ...]:
-    if celsius is None or StrengthUnit.SATURATED in (
-        strength.unit,
-        strength.part_of.unit if strength.part_of else None,
-    ):
+def _not_used(units: frozenset[StrengthUnit], given: Given) -> tuple[str, ...]:
+    """The figures given that no part of this sum asked for."""
+    dense = BY_MASS | {StrengthUnit.VV, StrengthUnit.SATURATED, StrengthUnit.PARTS}
+    told = []
+    if given.density is not None and not units & dense:
+        told.append(f"density {given.density:g} g/cm³ took no part")
+    if given.pure_density is not None and StrengthUnit.VV not in units:
+        told.append(f"--pure-density {given.pure_density:g} took no part: nothing here is % v/v")
+    if given.celsius is not None and StrengthUnit.SATURATED not in units:
+        told.append(
+            f"{given.celsius:g} °C took no part: densities are those at the temperature named"
+        )
+    return tuple(told)
+
+
+def _beyond(conc: Concentration, stuff: Stuff) -> tuple[str, ...]:
+    """A word where a strength is above all that its density table holds."""
+    least = _WORTH_A_LOOK.get(conc.unit, 0.0)
+    table = tabulated(stuff) if conc.value > least else ""
+    if not table:
         return ()
-    return (f"{celsius:g} °C took no part: densities are those at the temperature named",)
+    from stockroom.chemistry.densities import percent_ww_for
+
+    try:
+        if conc.unit == PER_MOLE:
+            percent_ww_for(table, molar=conc.value, molar_mass=stuff.molar_mass)
+        else:
+            percent_ww_for(table, grams_per_dm3=conc.value)
+    except MissingFigure as trouble:
+        return (f"! is it meant? {trouble.message}",)
+    return ()
 
 
 def _counted_at(strength: Strength, gas: float | None) -> Strength:
@@ -116,11 +149,22 @@ def _target(to: str, asked: Asked) -> Strength:
         written = one_in["stock"] or asked.part_of
         stock = strength_of(written, asked.stuff) if written else None
         return Strength(1.0, StrengthUnit.PARTS, to.strip(), part_of=stock)
+    return _one_of(to, asked)
+
+
+def _one_of(to: str, asked: Asked) -> Strength:
+    if not to.strip() or _BEGINS_WITH_NUMBER.match(to.strip()):
+        shown = f"--to {quote(to)}: "
+        what = "a unit alone is wanted, without a number." if to.strip() else "which unit?"
+        raise BadAmount(f"{shown}{what}", 'Write --to mol/dm3, or "% w/w".')
     try:
-        return parse_strength(f"1 {to}", where="--to")
+        found = read_strength(f"1 {to}", asked.stuff, where="--to")
+        return replace(found, text=to.strip())
     except BadAmount as bad:
         # the one in front is ours, and nobody typed it
-        raise BadAmount(bad.message.replace(quote(f"1 {to}"), quote(to)), bad.hint) from None
+        message = bad.message.replace(quote(f"1 {to}"), quote(to))
+        hint = bad.hint.replace('"1 ', '"').replace(" after the number", "")
+        raise BadAmount(message, hint) from None
 
 
 def _said_in(target: Strength, held: Known, asked: Asked) -> tuple[float, tuple[str, ...]]:

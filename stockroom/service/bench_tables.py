@@ -7,6 +7,8 @@ there is passed over. Nothing here is turned into a molar mass before it is aske
 from __future__ import annotations
 
 import csv
+import re
+import unicodedata
 from collections import Counter
 from functools import lru_cache
 from pathlib import Path
@@ -18,9 +20,21 @@ _FOLDERS = ("college", "starter")
 _DENSITY = "density_g_cm3"
 
 
+# as chemists draw them; the tables have the formula in the order of the elements
+_DRAWN = {
+    "CH3COOH": "C2H4O2", "CH3CO2H": "C2H4O2", "HCOOH": "CH2O2", "HCO2H": "CH2O2",
+    "CH3OH": "CH4O", "C2H5OH": "C2H6O", "CH3CH2OH": "C2H6O", "CH3COCH3": "C3H6O",
+    "(CH3)2CO": "C3H6O", "H2C2O4": "C2H2O4", "(COOH)2": "C2H2O4", "(CO2H)2": "C2H2O4",
+    "CH3COONa": "C2H3NaO2", "CH3CO2Na": "C2H3NaO2", "NaClO": "NaOCl", "CO(NH2)2": "CH4N2O",
+}  # fmt: skip
+_DOT = re.compile(r" *[·•∙⋅*.] *|\s+(?=[0-9]{0,2}H2O$)")
+
+
 def spelt(formula: str) -> str:
-    """A formula with its hydrate's dot as the tables write it."""
-    return formula.strip().replace("·", ".").replace("*", ".").replace("•", ".")
+    """A formula as the tables write it: digits for subscripts, a plain dot before its water."""
+    plain_digits = unicodedata.normalize("NFKC", formula).strip()
+    salt, dot, water = _DOT.sub(".", plain_digits).partition(".")
+    return f"{_DRAWN.get(salt, salt)}{dot}{water}"
 
 
 @lru_cache(maxsize=1)
@@ -59,6 +73,18 @@ def formulas() -> dict[str, str]:
     times = Counter(row["formula"] for row in rows)
     # butan-1-ol and butan-2-ol share one: the formula alone names neither
     return {row["formula"]: row["substance"] for row in rows if times[row["formula"]] == 1}
+
+
+@lru_cache(maxsize=1)
+def names() -> frozenset[str]:
+    """Every plain name held: of substances, their other names, and lines."""
+    return frozenset(other_names()) | {plain(row["item"]) for row in lines()}
+
+
+def form_named(formula: str) -> str:
+    """The pure solid of that very formula, by its line's name; empty where none says so."""
+    rows = (row for row in lines() if row["form"] == "solid" and not row["assay_percent"])
+    return next((row["item"] for row in rows if spelt(row["formula"]) == spelt(formula)), "")
 
 
 def row_of(name: str) -> Row | None:

@@ -6,18 +6,18 @@ from dataclasses import dataclass, field, replace
 
 from stockroom.chemistry.made import assay_input
 from stockroom.chemistry.making import mass_for, volume_of_stock
-from stockroom.chemistry.strength import PER_MOLE, Concentration
+from stockroom.chemistry.strength import BY_MASS, PER_MOLE, Concentration
 from stockroom.chemistry.uncertainty import Input
 from stockroom.errors import BadInput, MissingFigure, NotAllowed
 from stockroom.measure.amounts import Amount
 from stockroom.measure.formats import format_number, format_strength
-from stockroom.measure.strengths import Strength
+from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.planning.facts import Form
-from stockroom.service.bench import cm3, cubic_of, figures_of, strength_of
+from stockroom.service.bench import cm3, cubic_of, figures_of, grams, of_which, strength_of
 from stockroom.service.bench_held import Held, from_text
 from stockroom.service.bench_known import Asked as Given
 from stockroom.service.bench_known import known
-from stockroom.service.bench_names import Stuff, solid
+from stockroom.service.bench_names import Stuff, jar_of, solid
 from stockroom.service.bench_tools import Minimum
 
 _ROOM_C = 20.0
@@ -26,17 +26,20 @@ _TABLE_WITHIN = 1.1  # the tables of solubility are good to a tenth at their wor
 _NEVER = 3.0  # warm water and patience do much, but not that
 _WELL_BELOW = 0.5
 _CM3_PER_DM3 = 1000.0
+_GRAMS_PER_CM3 = 1.0  # few salts go so far, and sugar does not
 
 
 @dataclass(frozen=True, slots=True)
 class Assay:
     """The per cent of a solid that is the substance, and ± how much by its label.
 
+    `at_least`: the label states no more than that; the sum counts on the least.
     Raises: BadInput for a per cent that is none.
     """
 
     percent: float | None = None
     within: float = 0.0
+    at_least: bool = False
 
     def __post_init__(self) -> None:
         if self.percent is not None and not 0 < self.percent <= 100:
@@ -52,6 +55,13 @@ class Assay:
         """The assay to use, the label's where none was given, with its doubt."""
         fraction = stuff.assay if self.percent is None else self.percent / 100
         return assay_input(fraction, self.within / 100)
+
+    def words(self, used: Input) -> str:
+        """The assay that was used, as it is printed."""
+        percent = format_number(used.value * 100)
+        spread = f" ± {format_number(self.within)}" if self.within else ""
+        least = ": the least by its label" if self.at_least else ""
+        return f"assay {percent}{spread} %{least}"
 
 
 @dataclass(frozen=True, slots=True)
@@ -115,7 +125,7 @@ def task_of(asked: Asked, lines: list[Stuff]) -> Task:
     Raises: BadInput, UnknownName, MissingFigure; NotAllowed for what is kept as a
     solution, what would not dissolve, and a liquid too weak.
     """
-    stuff = _to_weigh(asked.of, lines)
+    stuff = to_weigh(asked.of, lines)
     cubic, strength = cubic_of(asked.volume), strength_of(asked.text, stuff)
     if stuff.form is Form.SOLUTION:
         raise NotAllowed(
@@ -130,12 +140,31 @@ def task_of(asked: Asked, lines: list[Stuff]) -> Task:
     assay, unit_mass = asked.assay.of(stuff), _per_unit(wanted.conc, stuff)
     strongest, warned = _dissolves(wanted.conc, stuff, unit_mass)
     mass = mass_for(cubic, wanted.conc.value, molar_mass=unit_mass, assay=assay.value)
-    share = f"assay {format_number(assay.value * 100)} %"
-    used = (*warned, *figures_of(stuff, None), *wanted.notes, share)
+    share = asked.assay.words(assay)
+    if not warned and mass > cubic * _GRAMS_PER_CM3:
+        warned = (f"! {grams(mass)} in {cm3(cubic)}: will so much dissolve?",)
+    used = (*warned, *figures_of(stuff, None), *wanted.notes, share, *_left_out(asked, stuff))
     return Task(asked, stuff, strength, cubic, assay, mass, strongest=strongest, used=used)
 
 
-def _to_weigh(of: str, lines: list[Stuff]) -> Stuff:
+def _left_out(asked: Asked, stuff: Stuff) -> tuple[str, ...]:
+    """What was given and took no part, and a purity that the shelf's own jar has not."""
+    told = []
+    if asked.density is not None and not _by_density(strength_of(asked.text, stuff)):
+        told.append(f"density {asked.density:g} g/cm³ took no part")
+    jar = jar_of(stuff) if stuff.form is None and asked.assay.percent is None else None
+    if jar is not None and jar.assay < 1:
+        percent = format_number(jar.assay * 100)
+        told.append(f"a formula counts as pure; as bought, {jar.name}: {percent} %. Give --assay")
+    return tuple(told)
+
+
+def _by_density(strength: Strength) -> bool:
+    units = {strength.unit, *((strength.part_of.unit,) if strength.part_of else ())}
+    return bool(units & (BY_MASS | {StrengthUnit.SATURATED}))
+
+
+def to_weigh(of: str, lines: list[Stuff]) -> Stuff:
     """The form that is weighed or poured; of what is kept diluted too, the liquid itself."""
     found = solid(of, lines)
     if found.form is not Form.SOLUTION:
@@ -156,7 +185,7 @@ def _liquid(
     held = from_text(stuff.strength_text or "neat", Given(stuff, tuple(lines), asked.density))
     poured, notes = _poured(held, strength, cubic, assay.value)
     density, whose = _density(held, stuff)
-    share = (f"assay {format_number(assay.value * 100)} %",) if assay.value != 1 else ()
+    share = (asked.assay.words(assay),) if assay.value != 1 else ()
     used = dict.fromkeys((*figures_of(stuff, None), *notes, whose, *share))
     mass = poured * density if density else None
     told = tuple(filter(None, used))
@@ -176,7 +205,7 @@ def _poured(
     taken = volume_of_stock(
         cubic, wanted.conc.value, stock.conc.value * assay, unit=stock.conc.unit
     )
-    return taken, (*wanted.notes, *stock.notes)
+    return taken, (*of_which(strength.text, wanted.notes), *stock.notes)
 
 
 def _density(held: Held, stuff: Stuff) -> tuple[float | None, str]:
@@ -211,7 +240,7 @@ def _dissolves(
     solubility is not known.
     """
     from stockroom.chemistry.formula import molar_mass
-    from stockroom.chemistry.solubility import solubility
+    from stockroom.chemistry.solubility import helped_by, solubility
 
     dry = stuff.formula.partition(".")[0] if stuff.is_hydrate else ""
     try:
@@ -224,6 +253,9 @@ def _dissolves(
     most = found.grams * _GRAMS_PER_DM3 / molar_mass(found.formula)
     wanted, held = (format_strength(c, conc.unit) for c in (conc.value, float(f"{most:.2g}")))
     saturated = f"saturated at 20 °C is about {held} ({found.source})"
+    helped = helped_by(*stuff.names)
+    if helped and conc.value > most:
+        return None, (f"! In water alone {held} at most: {helped}.",)
     if conc.value > most * _NEVER:
         raise NotAllowed(
             f"{wanted} {stuff.name} will not dissolve: {saturated}.",

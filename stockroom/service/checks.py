@@ -12,9 +12,10 @@ from stockroom.measure.strengths import Strength
 from stockroom.planning.decisions import Draw
 from stockroom.planning.derive import with_derived
 from stockroom.planning.plan import plan
-from stockroom.safety.peroxide_formers import Outcome, outcome, read_result
+from stockroom.safety.peroxide_formers import outcome, read_result
 from stockroom.service.answers import Done
-from stockroom.service.touching import check_not_condemned
+from stockroom.service.peroxide_tests import check_tested, has_passed, result_words
+from stockroom.service.touching import check_may_open, check_not_condemned
 from stockroom.service.work import Work, check_at_hand, unsettled, working
 from stockroom.store.history import children
 from stockroom.store.kinds import EntryKind
@@ -134,29 +135,16 @@ def tested(
     `peroxide` as written, "12 mg/kg" as H2O2, decides by itself: below 25 its interval
     starts again, from 25 it is condemned. What was `seen` (crystals, a stuck cap)
     overrules the number. `passed` is needed without either, and cannot say otherwise than they do.
-    Raises: NotAllowed when the line has no such rule, the bottle is not at hand, or was
-    condemned before; BadInput for neither, or a number that says otherwise; BadAmount for
+    Raises: NotAllowed when it is no peroxide-former and has no such rule, is not at hand,
+    or was condemned before; BadInput for neither, or a number that says otherwise; BadAmount for
     one that cannot be read.
     """
     result = read_result(peroxide) if peroxide else None
     found = outcome(result or 0.0, seen=seen) if seen.strip() or result is not None else None
-    good = _has_passed(bottle, passed, found)
+    good = has_passed(bottle, passed, found)
     words = found.words if found and not found.passed else ""
     event = Event(EntryKind.TESTED, passed=good, note=note, reason=words, peroxide_mg_kg=result)
     return _check(path, bottle, event, on=on, today=today, by=by)
-
-
-def _has_passed(bottle: str, passed: bool | None, found: Outcome | None) -> bool:
-    if passed is None:
-        if found is None:
-            raise BadInput(
-                f"{bottle}: did it pass or fail?",
-                'Add --peroxide "12 mg/kg", --passed or --failed.',
-            )
-        return found.passed
-    if passed and found is not None and not found.passed:
-        raise BadInput(f"{bottle} cannot have passed: {found.words}.", "Leave --passed off.")
-    return passed
 
 
 def _check(path: Path, bottle: str, event: Event, *, on: date | None, today: date, by: str) -> Done:
@@ -174,21 +162,8 @@ def _check(path: Path, bottle: str, event: Event, *, on: date | None, today: dat
         # a bad look throws doubt on whatever was made from the bottle
         details = _until(work, checked) if passed else _made_from(work, checked)
         text = f"{work.called(checked)} {verb} {spell_day(work.on)}, {said}."
-        return work.done(text, checked, entry, details=(*_result(work, checked, event), *details))
-
-
-def _result(work: Work, bottle: Bottle, event: Event) -> tuple[str, ...]:
-    """What was measured or seen means, in words; nothing where there was neither."""
-    if event.reason:
-        return (f"{event.reason[0].upper()}{event.reason[1:]}.",)
-    if event.peroxide_mg_kg is None:
-        return ()
-    substance = substance_of(work.session, work.line(bottle))
-    found = outcome(event.peroxide_mg_kg, substance.peroxide_former if substance else "")
-    if not event.passed:
-        return (f"Failed, though {found.words}.",)
-    lines = (found.words, *found.notes)
-    return tuple(f"{line[0].upper()}{line[1:]}." for line in lines)
+        means = () if looked else result_words(work, checked, event)
+        return work.done(text, checked, entry, details=(*means, *details))
 
 
 def _check_keeps(work: Work, bottle: Bottle, kind: EntryKind) -> None:
@@ -200,12 +175,8 @@ def _check_keeps(work: Work, bottle: Bottle, kind: EntryKind) -> None:
             f"{line.key} is never kept. There is no test that extends it.",
             "Destroy it, and say so.",
         )
-    # a test that no rule asks for would re-date nothing, and look as if it had
-    if kind is EntryKind.TESTED and RuleKind.TEST not in kinds:
-        raise NotAllowed(
-            f"{line.key} has no test of its own that would re-date it.",
-            f"Enter a look or a strength for {bottle.number}.",
-        )
+    if kind is EntryKind.TESTED:
+        check_tested(work, bottle)
 
 
 def _until(work: Work, bottle: Bottle) -> tuple[str, ...]:
@@ -276,13 +247,17 @@ def turned_up(
         place_id = work.place_id(where) if where else None
         entry = work.write(found_again, Event(EntryKind.TURNED_UP, place_id=place_id))
         text = f"{work.called(found_again)} turned up{f' at {where}' if where else ''}."
-        return work.done(
-            text,
-            found_again,
-            entry,
-            following=f"stockroom look {found_again.number}",
-            details=("Set aside until somebody has looked at it.",),
-        )
+        following, said = _to_be_looked_at(work, found_again)
+        return work.done(text, found_again, entry, following=following, details=(said,))
+
+
+def _to_be_looked_at(work: Work, bottle: Bottle) -> tuple[str, str]:
+    """The look a bottle wants that turned up, and the words; no look at what is left alone."""
+    try:
+        check_may_open(work, bottle)
+    except NotAllowed as refused:
+        return "", f"Set aside. {refused.message} {refused.hint}"
+    return f"stockroom look {bottle.number}", "Set aside until somebody has looked at it."
 
 
 def spoil(path: Path, bottle: str, reason: str, *, on: date | None, today: date, by: str) -> Done:

@@ -11,7 +11,7 @@ from typing import TYPE_CHECKING
 from stockroom import clock
 from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 from stockroom.service.answers import Done
-from stockroom.store import reading
+from stockroom.store import reading, sources
 
 if TYPE_CHECKING:
     from stockroom.store.desk import Desk
@@ -23,10 +23,7 @@ HOUSE = "house"
 
 def seeds_folder() -> Path:
     """Where the tables that travel with the program are: inside it, else beside it."""
-    package = Path(__file__).resolve().parent.parent
-    # a wheel carries the tables inside the package
-    inside = package / "seeds_data"
-    return inside if inside.is_dir() else package.parent / "seeds_data"
+    return sources.seeds_folder()
 
 
 def make_practice(path: Path) -> Path | None:

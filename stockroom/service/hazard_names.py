@@ -10,14 +10,15 @@ from collections.abc import Callable, Collection, Mapping
 from dataclasses import dataclass, field
 from datetime import date
 
-from stockroom.errors import BadAmount, BadInput, UnknownName
+from stockroom.errors import BadAmount, BadInput, MissingFigure, UnknownName
 from stockroom.measure.parsing import parse_strength
-from stockroom.planning.facts import Bottle, Line
+from stockroom.planning.facts import Bottle, Form, Line
 from stockroom.safety.clp import NOT_ENTERED
 from stockroom.safety.hazards import SheetText
 from stockroom.service import bench_tables as shipped
 from stockroom.service.bench_names import Stuff, of_line, solute
 from stockroom.service.hazard_contents import Recipes
+from stockroom.store.former_rules import former_class
 from stockroom.store.hazards import LimitBook, limit_book, texts_of
 from stockroom.store.likeness import plain
 from stockroom.store.reading import Reader, Row
@@ -36,12 +37,18 @@ class House:
     bottle: Callable[[str], Bottle | None] = lambda _: None
     numbers: Collection[str] = ()
     substances: tuple[Stuff, ...] = ()
+    formers: Mapping[str, str] = field(default_factory=dict)
 
     def names(self, stuff: Stuff) -> tuple[str, ...]:
         """What its limits may be held under: its own names, then the shipped tables' name."""
         own = (stuff.substance, *self.others.get(stuff.substance, ()), stuff.name)
         named = [shipped.other_names().get(plain(name), "") for name in own if name]
         return (*own, *named)
+
+    def former(self, stuff: Stuff) -> str:
+        """The class of peroxide-former it is, as the house says, else the lists; "" for none."""
+        written, liquid = self.formers.get(stuff.substance, ""), stuff.form is Form.LIQUID
+        return former_class(self.names(stuff), written, liquid=liquid)
 
 
 def shipped_book(reader: Reader | None = None) -> LimitBook:
@@ -70,6 +77,7 @@ def house_of(reader: Reader, as_at: date) -> House:
             for row in rows.values()
             for name in (row["substance"], *others.get(row["substance"], ()))
         ),
+        {row["substance"]: row["peroxide_former"] for row in rows.values()},
     )
 
 
@@ -105,6 +113,26 @@ def stuff_named(house: House, what: str, strength: str | None) -> tuple[Stuff, s
             f"{what!r} is no bottle, line or substance I know: hazards {NOT_ENTERED}.",
             nearest or "Give its name or its formula.",
         ) from None
+
+
+def kept_at(stuff: Stuff) -> str | None:
+    """The strength of what is kept only as a solution: limewater, saturated.
+
+    None for a substance by its own name, and for what is bought as it is.
+    Raises: MissingFigure for one kept at several strengths, or of which nothing says any.
+    """
+    rows = [row for row in shipped.lines() if plain(row["item"]) == plain(stuff.name)]
+    solutions = rows and all(row["form"] == Form.SOLUTION for row in rows)
+    if plain(stuff.name) == plain(stuff.substance) or not solutions:
+        return None
+    strengths = list(dict.fromkeys(row["strength"] for row in rows))
+    if len(strengths) == 1 and strengths[0]:
+        return strengths[0]
+    known = f" It is kept at {' and '.join(strengths)}." if any(strengths) else ""
+    raise MissingFigure(
+        f"{stuff.name}: how strong is it?{known}",
+        "Give a strength, or ask in a store that has its method.",
+    )
 
 
 def line_named(house: House, what: str, strength: str | None) -> Line | None:

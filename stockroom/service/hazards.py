@@ -12,7 +12,7 @@ from dataclasses import replace
 from datetime import date
 from pathlib import Path
 
-from stockroom.errors import MissingFigure, StockroomError
+from stockroom.errors import BadInput, MissingFigure, StockroomError
 from stockroom.measure.strengths import Strength
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Bottle, Form, Line
@@ -20,14 +20,22 @@ from stockroom.safety.cautions import Goes, cautions_about
 from stockroom.safety.clp import Classification, classify
 from stockroom.safety.hazards import Hazards
 from stockroom.safety.limits import Ingredient
-from stockroom.safety.peroxide_formers import class_of, interval
+from stockroom.safety.peroxide_formers import interval
 from stockroom.service.answers import Done
 from stockroom.service.bench import strength_of
 from stockroom.service.hazard_contents import Part, one, parts_of
-from stockroom.service.hazard_names import House, house_of, line_named, shipped_book, stuff_named
+from stockroom.service.hazard_names import (
+    House,
+    house_of,
+    kept_at,
+    line_named,
+    shipped_book,
+    stuff_named,
+)
 from stockroom.service.hazard_strengths import counted_as, highest_of
 from stockroom.store.likeness import unknown
 from stockroom.store.reading import reading
+from stockroom.store.sources import citations
 
 _BOTTLE = re.compile(r"[BbSs][0-9]+[a-z]?")
 
@@ -41,16 +49,27 @@ def hazards_of(
     is taken as it is, undiluted. A supplier's text for the line takes the place of what
     is worked out. `as_at` left out is the practice day, else today.
     Raises: UnknownName with the nearest; BadAmount for a strength that cannot be read;
-    MissingFigure where it cannot be turned into a per cent by mass.
+    MissingFigure where it cannot be turned into a per cent by mass; BadInput for no name.
     """
     from stockroom.service.database import day_for, is_practice
 
+    if not what.strip():
+        raise BadInput(f"{what!r}: the hazards of what?", "Name a bottle, a line or a substance.")
     if store is None or not store.exists():
-        return _answer(House(shipped_book()), what, strength)
+        return _cited(_answer(House(shipped_book()), what, strength))
     day, practice = day_for(store, as_at), is_practice(store)
     with reading(store) as reader:
         found = _answer(house_of(reader, day), what, strength)
-    return replace(found, practice=practice)
+    return replace(_cited(found), practice=practice)
+
+
+def _cited(found: Hazards) -> Hazards:
+    """The same with the citation of every source it rests on or weighed."""
+    from stockroom.service.database import seeds_folder
+
+    held = citations(seeds_folder())
+    keys = dict.fromkeys(each.source for each in found.worked_out.weighed)
+    return replace(found, sources=tuple((key, held.get(key, key)) for key in keys))
 
 
 def _answer(house: House, what: str, strength: str | None) -> Hazards:
@@ -91,22 +110,24 @@ def of_kept_line(house: House, line: Line, bottle: Bottle | None = None) -> Haza
         line=line.key,
         sheet=texts[0] if texts else None,
         older=texts[1:],
-        notes=(*_notes(parts), *lacking),
-        cautions=_cautions(parts),
+        notes=(*_notes(house, parts), *lacking),
+        cautions=_cautions(house, parts),
     )
 
 
 def _of_substance(house: House, what: str, strength: str | None) -> Hazards:
     stuff, typed = stuff_named(house, what, strength)
-    amount: Strength | None = strength_of(typed, stuff) if typed else None
+    meant = typed or kept_at(stuff)
+    amount: Strength | None = strength_of(meant, stuff) if meant else None
     part = one(stuff, amount)
+    whose = "as asked" if typed else "as it is usually kept"
     return Hazards(
         what=f"{stuff.name} {typed or ''}".strip(),
-        strength=f"as asked, {amount.text}" if amount else "as it is, undiluted",
+        strength=f"{whose}, {amount.text}" if amount else "as it is, undiluted",
         worked_out=classify(_ingredients(house, [part])),
         contents=(part.content,),
-        notes=_notes([part]),
-        cautions=_cautions([part]),
+        notes=_notes(house, [part]),
+        cautions=_cautions(house, [part]),
     )
 
 
@@ -125,21 +146,19 @@ def _ingredient(house: House, part: Part) -> Ingredient:
     )
 
 
-def _notes(parts: Sequence[Part]) -> tuple[str, ...]:
+def _notes(house: House, parts: Sequence[Part]) -> tuple[str, ...]:
     notes = [f"{part.stuff.name}: {part.note}" for part in parts if part.note]
     notes += [
-        _forms_peroxide(part)
+        _forms_peroxide(part.stuff.substance or part.stuff.name, former)
         for part in parts
-        if class_of(part.stuff.substance) and part.percent >= _STRONG
+        if (former := house.former(part.stuff)) and part.percent >= _STRONG
     ]
     return tuple(dict.fromkeys(notes))
 
 
-def _forms_peroxide(part: Part) -> str:
-    substance = part.stuff.substance
-    cls = class_of(substance)
-    with_it, without = (interval(cls, opened=True, stabilised=yes) for yes in (True, False))
-    said = f"{substance}: peroxide-former of class {cls}; once opened, {without.in_words}"
+def _forms_peroxide(substance: str, former: str) -> str:
+    with_it, without = (interval(former, opened=True, stabilised=yes) for yes in (True, False))
+    said = f"{substance}: peroxide-former of class {former}; once opened, {without.in_words}"
     return said if with_it == without else f"{said}, with a stabiliser {with_it.in_words}"
 
 
@@ -147,15 +166,21 @@ _STRONG = 20.0
 """Per cent by mass from which an acid or ammonia is concentrated here: ours, no source."""
 
 
-def _cautions(parts: Iterable[Part]) -> tuple[str, ...]:
-    found = cautions_about(_goes(part) for part in parts)
+def _cautions(house: House, parts: Iterable[Part]) -> tuple[str, ...]:
+    found = cautions_about(_goes(house, part) for part in parts)
     return tuple(f"{each.step}: {each.text}" for each in found)
 
 
-def _goes(part: Part) -> Goes:
+def _goes(house: House, part: Part) -> Goes:
     stuff = part.stuff
-    solid = stuff.form is Form.SOLID
-    return Goes(stuff.substance, stuff.storage_group, solid, part.percent >= _STRONG)
+    return Goes(
+        stuff.substance,
+        stuff.storage_group,
+        solid=stuff.form is Form.SOLID,
+        strong=part.percent >= _STRONG,
+        percent=part.percent,
+        former=house.former(stuff),
+    )
 
 
 def hazards_of_makes(store: Path, plan: Plan) -> dict[str, Hazards]:

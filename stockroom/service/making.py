@@ -14,9 +14,12 @@ from stockroom.measure.formats import format_amount, format_strength
 from stockroom.planning.amounts import draw_for
 from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
+from stockroom.planning.known import by_dilution
 from stockroom.planning.plan import plan
 from stockroom.service.answers import Done
+from stockroom.service.standing import told_of_place
 from stockroom.service.taking import open_if_sealed, take
+from stockroom.service.touching import check_may_open
 from stockroom.service.work import Work, check_in_use, working
 from stockroom.store import names, tables
 from stockroom.store.kinds import EntryKind
@@ -40,8 +43,10 @@ class Source:
         expected = self.verdict.strengths.expected
         if self.line.form is Form.SOLID or expected is None:
             return f"{amount} of {self.bottle.number} {self.line.key}"
-        basis = self.verdict.strengths.basis
-        strength = f"{format_strength(expected, self.line.unit)}, from its {basis} strength"
+        basis = f"from its {self.verdict.strengths.basis} strength"
+        if self.verdict.strengths.found is None and self.bottle.known_by:
+            basis = self.bottle.known_by
+        strength = f"{format_strength(expected, self.line.unit)}, {basis}"
         return f"{amount} of {self.bottle.number} {self.line.key} ({strength})"
 
 
@@ -73,7 +78,8 @@ def make_up(
         _check_belong(method, given)
         chosen = [_source(known, product, part, given, volume.micro) for part in method.ingredients]
         meant_for = _meant_for(known, product, volume.micro)
-        return _write(work, product, volume, chosen, place, meant_for)
+        carried = _carried(method, chosen)
+        return _write(work, product, volume, chosen, place, meant_for, carried)
 
 
 def _meant_for(known: Facts, product: Line, volume: int) -> tuple[str, ...]:
@@ -119,6 +125,8 @@ def _check_volume(product: Line, volume: Amount) -> None:
 
 def _given(work: Work, known: Facts, number: str) -> Bottle:
     row = work.bottle(number)
+    # first, since what is said of a bottle set aside is to look at it
+    check_may_open(work, row)
     check_in_use(work, row)
     return next(bottle for bottle in known.bottles if bottle.number == row.number)
 
@@ -198,6 +206,7 @@ def _write(
     chosen: list[Source],
     place: str | None,
     meant_for: tuple[str, ...],
+    carried: str,
 ) -> Done:
     # first, since its number stands in the note of every draw
     bottle = _new_bottle(work, product, volume)
@@ -214,12 +223,36 @@ def _write(
     if meant_for:
         details.append(f"For {', '.join(meant_for)}, as planned.")
     booking = ";".join(meant_for)
-    made = Event(EntryKind.MADE, change=volume.micro, place_id=place_id, booking=booking)
+    if carried:
+        details.append(f"Known {carried}: close enough; an exact line wants it titrated.")
+    made = Event(
+        EntryKind.MADE,
+        change=volume.micro,
+        # what the draw was worked out to give: the label's strength, whatever the source's was
+        strength=product.strength if carried else None,
+        strength_text=carried,
+        place_id=place_id,
+        booking=booking,
+    )
     entry = work.write(bottle, made)
+    details += told_of_place(work, bottle)
     judged = work.verdict(bottle)
     until = f"; good until {judged.good_until}" if judged.good_until else ""
     text = f"Made {bottle.number}: {format_amount(volume)} of {product.key}{until}."
     return work.done(text, work.bottle(bottle.number), entry, details=tuple(details))
+
+
+def _carried(method: Method, chosen: list[Source]) -> str:
+    """How the strength of the make is known, where what was found of its source gives it."""
+    solutes = [
+        source
+        for part, source in zip(method.ingredients, chosen, strict=True)
+        if part.per_dm3 is None and source.line.form is not Form.SOLID
+    ]
+    # of two solutes neither alone says how strong it is
+    if len(solutes) != 1:
+        return ""
+    return by_dilution(solutes[0].bottle, solutes[0].verdict.strengths)
 
 
 def _doubt(source: Source) -> tuple[str, ...]:

@@ -15,7 +15,15 @@ from stockroom.measure.amounts import Amount
 from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_amount
 from stockroom.service.answers import Done
-from stockroom.service.arriving import date_printed, new_bottle, told_of_printed, write_openings
+from stockroom.service.arriving import (
+    arrived,
+    check_number,
+    date_printed,
+    new_bottle,
+    told_of_printed,
+    write_openings,
+)
+from stockroom.service.counting import difference, which_it_was
 from stockroom.service.righting import (
     check_nothing_later,
     check_nothing_leans,
@@ -23,16 +31,18 @@ from stockroom.service.righting import (
     standing,
     with_it,
 )
+from stockroom.service.standing import cap_of, told_of_place
 from stockroom.service.taking import (
     check_not_barred,
     open_if_sealed,
     opening_of,
+    remains,
     still_standing,
     take,
+    write_off,
 )
 from stockroom.service.touching import check_may_move, check_may_open
 from stockroom.service.work import (
-    Work,
     check_amount,
     check_at_hand,
     check_in_use,
@@ -45,8 +55,6 @@ from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, left, overfull
 from stockroom.store.tables import Bottle
 
-MOST_AT_ONCE = 100
-
 
 def arrive(
     path: Path,
@@ -57,6 +65,7 @@ def arrive(
     place: str,
     count: int = 1,
     opened: date | None = None,
+    cap: str = "",
     note: str = "",
     on: date | None,
     today: date,
@@ -64,13 +73,12 @@ def arrive(
 ) -> Done:
     """Put bottles that came on the shelf; each gets a number of its own.
 
-    `size` is what one holds; `printed` the date as printed on it, or "none",
-    which must be said; `opened` the day it was opened, if it was.
+    `size` is what one holds; `printed` the date as printed on it, or "none", which
+    must be said; `opened` the day it was opened, if it was; `cap` vented, tight or blank.
     Raises: BadInput, UnknownName, BadAmount, BadDate.
     """
-    on_label = date_printed(printed)
-    if not 1 <= count <= MOST_AT_ONCE:
-        raise BadInput(f"{count} bottles?", f"Give 1 to {MOST_AT_ONCE}.")
+    on_label, closed_by = date_printed(printed), cap_of(cap)
+    check_number(count)
     with working(path, on=on, today=today, by=by) as work:
         # the size tells a solid from the solution of the same name
         found = names.find_line(work.session, line, kind=size.kind)
@@ -78,14 +86,14 @@ def arrive(
         event = Event(
             EntryKind.ARRIVED, change=size.micro, place_id=work.place_id(place), note=note
         )
-        bottles = [new_bottle(work, found, size, on_label, note) for _ in range(count)]
+        bottles = [new_bottle(work, found, size, on_label, note, closed_by) for _ in range(count)]
         entries = [work.write(bottle, event) for bottle in bottles]
         if opened is not None:
             write_openings(work, bottles, opened)
-        numbers = ", ".join(bottle.number for bottle in bottles)
-        each = format_amount(size) + (" each" if count > 1 else "")
-        text = f"{numbers}: {found.key}, {each}, at {place}."
-        return work.done(text, bottles[0], entries[0], details=told_of_printed(work, bottles[0]))
+        text = f"{arrived(bottles, found, size)}, at {place}."
+        # those that came together are alike, so what is said of one holds for all
+        details = (*told_of_printed(work, bottles[0]), *told_of_place(work, bottles[0]))
+        return work.done(text, bottles[0], entries[0], details=details)
 
 
 def open_bottle(path: Path, bottle: str, *, on: date | None, today: date, by: str) -> Done:
@@ -145,12 +153,8 @@ def draw(
         entry = take(work, found, event)
         noted = (f"{stands}: noted",) if stands else ()
         details = (*open_if_sealed(work, found, entry), *doubtful, *noted)
-        text = f"Drew {format_amount(amount)} from {work.called(found)}; {_remains(work, found)}."
+        text = f"Drew {format_amount(amount)} from {work.called(found)}; {remains(work, found)}."
         return work.done(text, found, entry, details=details)
-
-
-def _remains(work: Work, bottle: Bottle) -> str:
-    return f"{work.say(bottle, left(work.session, bottle))} left"
 
 
 def spill(
@@ -166,7 +170,7 @@ def spill(
     """Write off what was spilled: its own reason, kept out of consumption. Raises: as `draw`."""
     event = Event(EntryKind.SPILLED, change=-amount.micro, note=note)
     with working(path, on=on, today=today, by=by) as work:
-        return _write_off(work, bottle, amount, event, "Spilled")
+        return write_off(work, bottle, amount, event, "Spilled")
 
 
 def lend(
@@ -181,21 +185,11 @@ def lend(
     with working(path, on=on, today=today, by=by) as work:
         # what was spilled has happened; lending can still be left undone
         check_may_open(work, work.bottle(bottle))
-        return _write_off(work, bottle, amount, event, "Lent")
-
-
-def _write_off(work: Work, bottle: str, amount: Amount, event: Event, verb: str) -> Done:
-    found = work.bottle(bottle)
-    check_amount(work.line(found), amount)
-    check_at_hand(work, found)
-    entry = take(work, found, event)
-    said = f"{verb} {format_amount(amount)} of {work.called(found)}"
-    to = f" {event.reason}" if event.reason else ""
-    return work.done(f"{said}{to}; {_remains(work, found)}.", found, entry)
+        return write_off(work, bottle, amount, event, "Lent")
 
 
 def move(path: Path, bottle: str, place: str, *, on: date | None, today: date, by: str) -> Done:
-    """Stand a bottle somewhere else.
+    """Stand a bottle somewhere else; wrong neighbours there are told, never refused.
 
     Raises: UnknownName with the nearest places; NotAllowed when it is gone, not found, or
     past its safety date, when nobody moves it.
@@ -207,7 +201,8 @@ def move(path: Path, bottle: str, place: str, *, on: date | None, today: date, b
         check_may_move(work, found)
         entry = work.write(found, Event(EntryKind.MOVED, place_id=work.place_id(place)))
         start = f" from {before}" if before else ""
-        return work.done(f"Moved {work.called(found)}{start} to {place}.", found, entry)
+        text = f"Moved {work.called(found)}{start} to {place}."
+        return work.done(text, found, entry, details=told_of_place(work, found))
 
 
 def count(
@@ -223,7 +218,8 @@ def count(
 ) -> Done:
     """Write what is really in a bottle; the difference is an entry, nothing is rubbed out.
 
-    Zero is a count. `walk` names the round of counting. Raises: BadAmount for the
+    Zero is a count. `walk` names the round of counting. Less of a solution than entered,
+    with nothing drawn, is asked about: water lost, or not written down. Raises: BadAmount for the
     wrong kind; NotAllowed for over 5 % more than the bottle's size, unless `sure`.
     """
     with working(path, on=on, today=today, by=by) as work:
@@ -236,16 +232,13 @@ def count(
                 "Check the unit, or confirm with --sure.",
             )
         # against what was there on the day of the count, not today
-        change = amount.micro - check_at_hand(work, found).left
+        before = check_at_hand(work, found).left
+        # asked before the entry, which would itself be the last count
+        details = which_it_was(work, found, before, amount.micro)
+        change = amount.micro - before
         entry = work.write(found, Event(EntryKind.COUNTED, change=change, note=walk))
         text = f"Counted {format_amount(amount)} of {work.called(found)}"
-        return work.done(f"{text}{_difference(work, found, change)}.", found, entry)
-
-
-def _difference(work: Work, bottle: Bottle, change: int) -> str:
-    if change == 0:
-        return ", as entered"
-    return f"; {work.say(bottle, abs(change))} {'more' if change > 0 else 'less'} than entered"
+        return work.done(f"{text}{difference(work, found, change)}.", found, entry, details=details)
 
 
 def discard(
@@ -293,6 +286,6 @@ def put_right(
         for other in others:
             reverse(work, other, reason.strip())
         what = f"{wrong.kind} {spell_day(wrong.happened_on)} by {wrong.by}"
-        text = f"Put right entry {entry}: {bottle.number} {what}; {_remains(work, bottle)}."
+        text = f"Put right entry {entry}: {bottle.number} {what}; {remains(work, bottle)}."
         details = tuple(f"Entry {other.id} put right with it." for other in others)
         return work.done(text, bottle, written, details=details)

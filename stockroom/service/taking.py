@@ -5,11 +5,14 @@ from __future__ import annotations
 from datetime import timedelta
 
 from stockroom.errors import NotAllowed, NotEnough
+from stockroom.measure.amounts import Amount
 from stockroom.measure.days import spell_day
+from stockroom.measure.formats import format_amount
 from stockroom.planning import facts
-from stockroom.service.work import Work
+from stockroom.service.answers import Done
+from stockroom.service.work import Work, check_amount, check_at_hand
 from stockroom.store.kinds import EntryKind
-from stockroom.store.ledger import Event, entries_of, opened_note
+from stockroom.store.ledger import Event, entries_of, left, opened_note
 from stockroom.store.names import substance_of
 from stockroom.store.snapshot_lines import methods_of, recipes_of
 from stockroom.store.tables import Booking, Bottle, Entry, Recipe
@@ -21,6 +24,22 @@ def take(work: Work, bottle: Bottle, event: Event) -> Entry:
         return work.write(bottle, event)
     except NotEnough as error:
         raise NotEnough(f"{error.message}{_drawn_today(work, bottle)}", error.hint) from error
+
+
+def write_off(work: Work, bottle: str, amount: Amount, event: Event, verb: str) -> Done:
+    """Take what left a bottle without being drawn: spilled or lent. Raises: as `stock.draw`."""
+    found = work.bottle(bottle)
+    check_amount(work.line(found), amount)
+    check_at_hand(work, found)
+    entry = take(work, found, event)
+    said = f"{verb} {format_amount(amount)} of {work.called(found)}"
+    to = f" {event.reason}" if event.reason else ""
+    return work.done(f"{said}{to}; {remains(work, found)}.", found, entry)
+
+
+def remains(work: Work, bottle: Bottle) -> str:
+    """What is left in a bottle now, in words."""
+    return f"{work.say(bottle, left(work.session, bottle))} left"
 
 
 def _drawn_today(work: Work, bottle: Bottle) -> str:

@@ -1,36 +1,41 @@
-"""A titration: titres in, a found strength out, and the bottle re-dated by it.
+"""A titration: titres in, a found strength out.
 
-Works with no store; with one, the burette's solution may be named by its bottle,
-and the result may be written to a bottle as a found strength with its uncertainty.
+Works with no store; with one, a solution or a standard may be named by its bottle. What
+the flask held is read in `titrate_standard.py`, a known strength in `titrate_known.py`,
+and `titrate_bottle.py` writes the result to a bottle.
 """
 
 from __future__ import annotations
 
-import re
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from datetime import date
+from decimal import ROUND_HALF_UP, Decimal
 from pathlib import Path
 
-from stockroom.chemistry.reactions import Titration, titration_of
+from stockroom.chemistry.peroxide import MOLAR_MASS, convention, molar_to_vol
+from stockroom.chemistry.reactions import Titration
 from stockroom.chemistry.titration import (
     CONCORDANT_CM3,
-    Standard,
+    REPEATABILITY,
     Titres,
     found_in_burette,
     found_in_flask,
+    repeatability_of,
 )
-from stockroom.chemistry.uncertainty import Budget, Input, exact_enough, normal, with_spread
-from stockroom.errors import BadAmount, BadInput, MissingFigure
-from stockroom.measure.amounts import Amount, Kind
+from stockroom.chemistry.uncertainty import Budget, exact_enough, with_spread
+from stockroom.errors import BadAmount, BadInput
 from stockroom.measure.formats import format_number, format_strength
-from stockroom.measure.parsing import parse_amount
-from stockroom.measure.strengths import Strength, StrengthUnit
-from stockroom.service.answers import Done
-from stockroom.service.titrate_typed import burette_of, dilution_of, molar_of, pipetted, volume_of
+from stockroom.planning.facts import EXACT
+from stockroom.service import titrate_standard
+from stockroom.service.bench_names import house_lines
+from stockroom.service.titrate_known import known_strength
+from stockroom.service.titrate_standard import in_flask
+from stockroom.service.titrate_stuff import Reagent, Where, reaction_of
+from stockroom.service.titrate_typed import burette_of, dilutions_of, pipetted, volume_of
 
-_EXACT = 0.005
-_BOTTLE = re.compile(r"[A-Za-z]\d+[a-z]?")
+_STRONGEST = 100.0
+"""mol/dm³: as in `measure/parsing.py`, beyond it a unit has slipped."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -38,9 +43,10 @@ class Asked:
     """A titration as typed. Exactly one of `titrant` and `standard` is given.
 
     `titrant`: the strength in the burette, or its bottle. `standard`: what the flask
-    held, "25.00 cm3 of 0.0167 mol/dm3" or "0.1675 g". `sample` is the aliquot of
-    an unknown; `dilution` "10 cm3 to 250 cm3" what was done to it before;
-    `uncertainty` the standard uncertainty of the strength that is known.
+    held, "25.00 cm3 of 0.0167 mol/dm3", "0.1675 g of sodium oxalate", or "… in 250 cm3".
+    `sample` is the aliquot of an unknown, or of a standard that was made up; `dilution`
+    "10 cm3 to 250 cm3" what was done to an unknown before, in steps; `uncertainty` the standard
+    uncertainty of the strength that is known.
     """
 
     reaction: str
@@ -51,6 +57,7 @@ class Asked:
     sample: str = ""
     dilution: str = ""
     assay_percent: float | None = None
+    assay_within: float = 0.0
     blank_cm3: float = 0.0
     within_cm3: float = CONCORDANT_CM3
     burette_cm3: float = 50.0
@@ -58,8 +65,26 @@ class Asked:
 
 
 @dataclass(frozen=True, slots=True)
+class Shown:
+    """The same strength in another unit, with its standard uncertainty in it."""
+
+    value: float
+    uncertainty: float
+    unit: str
+
+    @property
+    def text(self) -> str:
+        """The strength with its expanded uncertainty."""
+        return with_spread(self.value, 2 * self.uncertainty, unit=self.unit)
+
+
+@dataclass(frozen=True, slots=True)
 class Titrated:
-    """What a titration came to: the strength found of `substance`, with its budget."""
+    """What a titration came to: the strength found of `substance`, with its budget.
+
+    `weighed` is the standard that was; `also` says the result in other units;
+    `repeatability` is the titres' relative standard deviation, a fraction.
+    """
 
     reaction: Titration
     substance: str
@@ -67,6 +92,15 @@ class Titrated:
     budget: Budget
     details: tuple[str, ...]
     practice: bool = False
+    weighed: Reagent | None = None
+    also: tuple[Shown, ...] = ()
+    repeatability: float | None = None
+    standardised: bool = False
+
+    @property
+    def assay(self) -> float:
+        """What part of the standard that was weighed counted, a fraction; 1 where none was."""
+        return self.weighed.assay if self.weighed else 1.0
 
     @property
     def text(self) -> str:
@@ -77,7 +111,8 @@ class Titrated:
 
 def titrate(asked: Asked, *, store: Path | None = None, as_at: date | None = None) -> Titrated:
     """The strength a titration finds. Raises: BadInput, BadAmount, UnknownName, MissingFigure."""
-    reaction = titration_of(asked.reaction)
+    where = Where(store, as_at, house_lines(store))
+    reaction = reaction_of(asked.reaction, where)
     titres = Titres(
         tuple(asked.titres),
         burette_of(asked.burette_cm3, asked.glass_class),
@@ -91,49 +126,128 @@ def titrate(asked: Asked, *, store: Path | None = None, as_at: date | None = Non
             f"--titrant for the {reaction.titrant} in the burette, or --standard for the"
             f" {reaction.titrand} in the flask.",
         )
-    where = _Where(store, as_at)
-    if asked.standard:
-        return _standardised(asked, reaction, titres, where)
-    return _sampled(asked, reaction, titres, where)
+    work = _standardised if asked.standard else _sampled
+    found = work(asked, reaction, titres, where)
+    _refuse_absurd(found)
+    return replace(found, repeatability=repeatability_of(titres.cm3))
 
 
-def _standardised(asked: Asked, reaction: Titration, titres: Titres, where: _Where) -> Titrated:
-    if asked.sample or asked.dilution:
-        raise BadInput(
-            f"--sample or --dilution beside --standard {asked.standard!r}: the flask holds one.",
-            "Say what the flask held as --standard alone.",
+def _refuse_absurd(found: Titrated) -> None:
+    if found.budget.value > _STRONGEST:
+        raise BadAmount(
+            f"{found.substance} would be {format_strength(found.budget.value, 'mol/dm3')}: nothing"
+            " is that strong.",
+            "Check the units of the mass, the volumes and the strength.",
         )
-    standard, said, practice = _standard(asked, reaction, where)
-    budget = found_in_burette(reaction, titres, standard=standard)
-    told = (*_how(reaction, titres), said, *_told(budget))
-    return Titrated(reaction, reaction.titrant, reaction.titrant_formula, budget, told, practice)
 
 
-def _sampled(asked: Asked, reaction: Titration, titres: Titres, where: _Where) -> Titrated:
+def _standardised(asked: Asked, reaction: Titration, titres: Titres, where: Where) -> Titrated:
+    if asked.dilution:
+        raise BadInput(
+            f"--dilution beside --standard {asked.standard!r}: that is for a sample.",
+            'Write what it was made up to with it: "0.3562 g of sodium oxalate in 250 cm3".',
+        )
+    held = in_flask(
+        titrate_standard.Asked(
+            asked.standard,
+            asked.sample,
+            asked.uncertainty,
+            asked.assay_percent,
+            asked.glass_class,
+            asked.assay_within,
+        ),
+        reaction,
+        where,
+    )
+    budget = found_in_burette(reaction, titres, standard=held.standard)
+    repeat = volumetric_repeatability(repeatability_of(titres.cm3))
+    told = (*_how(reaction, titres), *held.words, *_told(budget, held.exact_if), *repeat)
+    return _titrated(
+        reaction, reaction.titrant, reaction.titrant_formula, budget, told,
+        practice=held.practice, weighed=held.weighed, standardised=True,
+    )  # fmt: skip
+
+
+def _sampled(asked: Asked, reaction: Titration, titres: Titres, where: Where) -> Titrated:
     if not asked.sample:
         raise BadInput(
             f"How much {reaction.titrand} was in the flask?",
             'Add --sample "25.00 cm3": what the pipette measured.',
         )
-    named = (reaction.titrant, reaction.titrant_formula)
-    known = _known(asked.titrant, named, asked, where, "--titrant")
+    if asked.assay_percent is not None:
+        raise BadInput(
+            f"--assay {asked.assay_percent:g} beside --titrant {asked.titrant!r}: nothing was"
+            " weighed.",
+            "Leave it out.",
+        )
+    known = known_strength(asked.titrant, reaction.burette, asked.uncertainty, "--titrant", where)
     aliquot = pipetted(volume_of(asked.sample, "--sample"), asked.glass_class)
-    dilution = dilution_of(asked.dilution, asked.glass_class)
+    dilutions = dilutions_of(asked.dilution, asked.glass_class)
     budget = found_in_flask(
-        reaction, titres, titrant=known.strength, aliquot=aliquot, dilution=dilution
+        reaction, titres, titrant=known.strength, aliquot=aliquot, dilutions=dilutions
     )
-    told = (*_how(reaction, titres), known.words, *_told(budget))
-    titrand, formula = reaction.titrand, reaction.titrand_formula
-    return Titrated(reaction, titrand, formula, budget, told, known.practice)
+    told = (*_how(reaction, titres), *known.words, *_told(budget, known.exact_if))
+    return _titrated(
+        reaction, reaction.titrand, reaction.titrand_formula, budget, told, practice=known.practice
+    )
+
+
+def _titrated(
+    reaction: Titration,
+    substance: str,
+    formula: str,
+    budget: Budget,
+    told: tuple[str, ...],
+    *,
+    practice: bool,
+    weighed: Reagent | None = None,
+    standardised: bool = False,
+) -> Titrated:
+    """The result, and how bottles of it are labelled where that is not in mol/dm³."""
+    also, by = _also(budget, formula)
+    said = (f"that is {' or '.join(each.text for each in also)}; {by}",) if also else ()
+    return Titrated(
+        reaction, substance, formula, budget, (*said, *told), practice, weighed, also,
+        standardised=standardised,
+    )  # fmt: skip
+
+
+def _also(budget: Budget, formula: str) -> tuple[tuple[Shown, ...], str]:
+    if formula == "H2O2":
+        vol, percent = molar_to_vol(1.0), MOLAR_MASS / 10
+        return (_scaled(budget, vol, "vol"), _scaled(budget, percent, "% w/v")), convention()
+    if formula in ("NaOCl", "Ca(OCl)2"):
+        return _chlorine(budget, formula)
+    return (), ""
+
+
+def _chlorine(budget: Budget, formula: str) -> tuple[tuple[Shown, ...], str]:
+    from stockroom.chemistry.formula import molar_mass
+    from stockroom.chemistry.strength import Concentration, express
+    from stockroom.measure.strengths import StrengthUnit
+
+    unit = StrengthUnit.CHLORINE
+    one = express(Concentration(1.0, "mol/dm3"), unit, molar_mass=molar_mass(formula))
+    return (_scaled(budget, one, unit),), "one ClO⁻ oxidises as one Cl2 does"
+
+
+def _scaled(budget: Budget, one: float, unit: str) -> Shown:
+    return Shown(budget.value * one, budget.standard * one, unit)
 
 
 def _how(reaction: Titration, titres: Titres) -> tuple[str, ...]:
     listed = ", ".join(f"{titre:.2f}" for titre in titres.cm3)
     spread = max(titres.cm3) - min(titres.cm3)
-    mean = f"mean titre {titres.mean():.2f} cm³ of {listed}"
+    mean = f"mean titre {_to_hundredths(titres.mean())} cm³ of {listed}"
     mean += f"; they lie {spread:.2f} cm³ apart" if len(titres.cm3) > 1 else "; one alone"
     mean += f"; blank {titres.blank_cm3:.2f} cm³ taken off" if titres.blank_cm3 else ""
-    return (mean, f"{reaction.equation}: {_ratio(reaction)}")
+    ending = f", to the {reaction.end_point}" if reaction.end_point else ""
+    return (mean, f"{reaction.equation}: {_ratio(reaction)}{ending}")
+
+
+def _to_hundredths(cm3: float) -> Decimal:
+    # by what is written: 22.425 lies below its half in binary, and 25.325 above
+    return Decimal(repr(round(cm3, 6))).quantize(Decimal("0.01"), ROUND_HALF_UP)
 
 
 def _ratio(reaction: Titration) -> str:
@@ -146,148 +260,27 @@ def _ratio(reaction: Titration) -> str:
     )
 
 
-def _told(budget: Budget) -> tuple[str, ...]:
+def _told(budget: Budget, exact_if: str) -> tuple[str, ...]:
     parts = ", ".join(f"{name} {format_number(share, 2)}" for name, share in budget.components[:3])
-    enough = exact_enough(budget.value, budget.standard, _EXACT, how="for an exact line")
+    line = f"an exact line (±{EXACT:.1%})".replace("%", " %")
+    if exact_enough(budget.value, budget.standard, EXACT):
+        percent = format_number(100 * budget.expanded() / budget.value, 3)
+        enough = f"known to ±{percent} % (k = 2): not exact enough for {line}"
+    else:
+        enough = f"exact enough for {line}"
+        # what nobody knows the doubt of may spoil it all: it is never called exact without a word
+        enough += f", if {exact_if} is exact: its uncertainty is not known" if exact_if else ""
     return (
         f"standard uncertainty {format_number(budget.standard, 2)} mol/dm³; most from {parts}",
-        enough or "exact enough for an exact line (±0.5 %)",
+        enough,
     )
 
 
-def _standard(asked: Asked, reaction: Titration, where: _Where) -> tuple[Standard, str, bool]:
-    amount, _, strength = asked.standard.partition(" of ")
-    held = parse_amount(amount, where="--standard")
-    if held.kind is Kind.MASS:
-        return (*_weighed(asked, reaction, amount, held), False)
-    if not strength:
-        raise BadInput(
-            f"--standard {asked.standard!r}: how strong is it?",
-            'Write "25.00 cm3 of 0.0167 mol/dm3", or the mass that was weighed into the flask.',
-        )
-    named = (reaction.titrand, reaction.titrand_formula)
-    known = _known(strength, named, asked, where, "--standard")
-    volume = pipetted(held.number, asked.glass_class)
-    return Standard.pipetted(known.strength, volume), known.words, known.practice
-
-
-def _weighed(asked: Asked, reaction: Titration, text: str, held: Amount) -> tuple[Standard, str]:
-    from stockroom.chemistry.formula import molar_mass
-    from stockroom.chemistry.uncertainty import rectangular
-
-    # the last figure written is what the balance showed
-    decimals = len(text.strip().split()[0].replace(",", ".").partition(".")[2])
-    step = 10.0**-decimals
-    mass = Input("mass", held.number, (rectangular("balance", step, times=2),))
-    assay = 1.0 if asked.assay_percent is None else asked.assay_percent / 100
-    if not 0 < assay <= 1:
-        raise BadAmount(f"assay {asked.assay_percent:g} % is not above 0 and at most 100.", "")
-    grams_per_mole = molar_mass(reaction.titrand_formula)
-    said = (
-        f"{format_number(held.number)} g of {reaction.titrand_formula},"
-        f" {grams_per_mole:.2f} g/mol, assay {format_number(assay * 100)} %, weighed to {step:g} g"
+def volumetric_repeatability(found: float | None) -> tuple[str, ...]:
+    """A word where titres repeat less well than a volumetric solution's should."""
+    if found is None or found <= REPEATABILITY:
+        return ()
+    return (
+        f"repeatability {format_number(found * 100, 2)} % (relative standard deviation): over the"
+        f" {REPEATABILITY * 100:g} % that the British Pharmacopoeia allows a volumetric solution",
     )
-    return Standard.weighed(mass, Input("molar mass", grams_per_mole), Input("assay", assay)), said
-
-
-@dataclass(frozen=True, slots=True)
-class _Known:
-    """The strength that is known, as an input and in words; is it of the practice store."""
-
-    strength: Input
-    words: str
-    practice: bool = False
-
-
-@dataclass(frozen=True, slots=True)
-class _Where:
-    """The store a bottle is looked up in, and the day."""
-
-    store: Path | None
-    as_at: date | None
-
-
-def _known(text: str, named: tuple[str, str], asked: Asked, where: _Where, option: str) -> _Known:
-    """A strength typed, or that of a bottle; `named` is its substance and formula."""
-    substance, formula = named
-    if where.store is not None and _BOTTLE.fullmatch(text.strip()):
-        return _of_bottle(text.strip(), substance, where.store, where.as_at)
-    molar = molar_of(text, formula, option)
-    if not asked.uncertainty:
-        said = f"the {substance}'s {format_strength(molar, 'mol/dm3')} is taken as exact"
-        return _Known(Input(f"{substance} strength", molar), said)
-    spread = molar_of(asked.uncertainty, formula, "--uncertainty")
-    said = f"the {substance}'s standard uncertainty is {format_strength(spread, 'mol/dm3')}"
-    return _Known(Input(f"{substance} strength", molar, (normal("", spread),)), said)
-
-
-def _of_bottle(number: str, substance: str, store: Path, as_at: date | None) -> _Known:
-    from stockroom.service.bottle_strength import bottle_strength
-
-    held = bottle_strength(store, number, as_at)
-    if held.unit != "mol/dm3":
-        raise MissingFigure(
-            f"{held.number} is counted in {held.unit}, and no titration can use that.",
-            "Give the strength in mol/dm3.",
-        )
-    check_substance(substance, held.number, held.substance, sure=False)
-    doubts = (normal("", held.uncertainty),) if held.uncertainty else ()
-    known = "" if doubts else "; its uncertainty is not known and counts as none"
-    strength = Input(f"{held.number} strength", held.value, doubts)
-    return _Known(strength, f"{held.words}{known}", held.practice)
-
-
-def check_substance(named: str, number: str, substance: str, *, sure: bool) -> None:
-    """Pass when a bottle may hold what a reaction names. Raises: BadInput, unless `sure`."""
-    if sure or named in substance:
-        return
-    raise BadInput(
-        f"{number} holds {substance or 'a mixture'}, and the reaction is of {named}.",
-        "Name the reaction that was run, or confirm with --sure.",
-    )
-
-
-def record(
-    path: Path,
-    bottle: str,
-    found: Titrated,
-    *,
-    sure: bool = False,
-    on: date | None,
-    today: date,
-    by: str,
-) -> Done:
-    """Write what a titration found to a bottle: a dated strength with its uncertainty.
-
-    Raises: BadInput when the bottle holds something else; NotAllowed when it is more than
-    25 % from the label; both unless `sure`.
-    """
-    from stockroom.service import checks
-    from stockroom.service.bottle_strength import substance_in
-
-    held = substance_in(path, bottle)
-    check_substance(found.substance, bottle, held, sure=sure)
-    value, spread = found.budget.value, found.budget.standard
-    note = f"{found.reaction.name}; {found.details[0]}"
-    done = checks.found(
-        path,
-        bottle,
-        _as_strength(value),
-        spread=_as_strength(spread, 2),
-        note=note,
-        sure=sure,
-        on=on,
-        today=today,
-        by=by,
-    )
-    return replace(
-        done, details=(*done.details, *found.details, f"! {found.reaction.caution}", NEW_LABEL)
-    )
-
-
-NEW_LABEL = "Write a new label: the strength found, the day, your initials."
-
-
-def _as_strength(molar: float, figures: int = 5) -> Strength:
-    # rounded in words alone: the ledger keeps the number whole
-    return Strength(molar, StrengthUnit.MOLAR, f"{format_number(molar, figures)} mol/dm3")

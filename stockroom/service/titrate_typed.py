@@ -1,30 +1,86 @@
-"""The words of a titration to measured figures: volumes with their glass, strengths in mol/dm³."""
+"""The words of a titration to figures: masses and their balance, volumes and their glass."""
 
 from __future__ import annotations
 
+import re
+from dataclasses import dataclass
+from decimal import Decimal
+
 from stockroom.chemistry.glassware import Ware, ware
 from stockroom.chemistry.titration import Dilution, Measured
+from stockroom.chemistry.uncertainty import Input, rectangular
 from stockroom.errors import BadAmount, BadInput
 from stockroom.measure.amounts import Kind
-from stockroom.measure.parsing import parse_amount, parse_strength
-from stockroom.measure.strengths import StrengthUnit
+from stockroom.measure.parsing import parse_amount
+from stockroom.measure.reading import quote, tidy
 
 _PIPETTES = (0.5, 1.0, 2.0, 5.0, 10.0, 20.0, 25.0, 50.0, 100.0)
 _FLASKS = (*_PIPETTES[1:], 200.0, 250.0, 500.0, 1000.0, 2000.0, 5000.0)
 # the mark that usual burettes of each size have
 _BURETTES = {1.0: 0.01, 2.0: 0.01, 5.0: 0.02, 10.0: 0.05, 25.0: 0.1, 50.0: 0.1, 100.0: 0.2}
+_MADE_UP = re.compile(
+    r"(?P<what>.+?),? (?:(?:dissolved(?: in (?:\w+ )?water)?,? (?:and )?)?"
+    r"(?:made up|diluted) (?:to|in)|dissolved in|in|to)"
+    r" (?P<volume>[0-9][0-9 .,]*\S+(?: of .+| flask| volumetric flask)?)"
+)
+_AMOUNT = re.compile(
+    r"(?P<amount>[0-9][0-9 .,]*(?:e[+-]?[0-9]+)? ?[A-Za-zμ]+3?) (?:of )?(?P<of>.+)", re.IGNORECASE
+)
+_NUMBER = re.compile(r"[0-9][0-9 .,]*(?:e[+-]?[0-9]+)?", re.IGNORECASE)
 
 
-def dilution_of(text: str, glass_class: str) -> Dilution | None:
-    """ "10 cm3 to 250 cm3" as a dilution; None for nothing. Raises: BadInput, BadAmount."""
-    if not text:
-        return None
+@dataclass(frozen=True, slots=True)
+class Held:
+    """A standard as typed: "0.3562 g", "sodium oxalate", and the "250 cm3" it was made up to."""
+
+    amount: str
+    of: str = ""
+    made_up_to: str = ""
+
+
+def held_of(text: str) -> Held:
+    """ "0.3562 g of sodium oxalate in 250 cm3" in its parts. Raises: BadInput for "0.2 g of"."""
+    plain = tidy(text)
+    made_up = _MADE_UP.fullmatch(plain)
+    what, volume = (made_up["what"], made_up["volume"]) if made_up else (plain, "")
+    found = _AMOUNT.fullmatch(what)
+    amount, of = (found["amount"], found["of"]) if found else (what, "")
+    if what.endswith(" of"):
+        raise BadInput(f"--standard {quote(text)}: of what?", "Name it after the amount.")
+    # "250 cm3 of water" and "250 cm3 flask" are 250 cm³
+    volume = re.sub(r" (?:of .+|(?:volumetric )?flask)$", "", volume)
+    return Held(amount, of, volume)
+
+
+def mass_of(text: str, where: str) -> tuple[Input, float]:
+    """A mass in g with the doubt of its last figure, and that figure's step in g."""
+    amount = parse_amount(text, where=where)
+    number = _NUMBER.match(tidy(text))
+    if amount.kind is not Kind.MASS or amount.micro <= 0 or number is None:
+        raise BadAmount(f"{where} {quote(text)} is not a mass above 0.", "Give it in g, as read.")
+    typed = Decimal(number[0].strip().replace(" ", "").replace(",", "."))
+    # the last figure written is what the balance showed, in whatever unit it was written
+    exponent = typed.as_tuple().exponent
+    step = float(Decimal(1).scaleb(min(int(exponent), 0))) * amount.number / float(typed)
+    return Input("mass", amount.number, (rectangular("balance", step, times=2),)), step
+
+
+def dilutions_of(text: str, glass_class: str) -> tuple[Dilution, ...]:
+    """ "10 cm3 to 250 cm3, then 25 cm3 to 100 cm3" as dilutions, the first done first.
+
+    Raises: BadInput, BadAmount.
+    """
+    steps = re.split(r"[,;]? +then +|[,;] +", text.strip()) if text.strip() else []
+    return tuple(_dilution(step, glass_class) for step in steps)
+
+
+def _dilution(text: str, glass_class: str) -> Dilution:
     taken, to, made = text.partition(" to ")
     if not to:
         raise BadInput(f"--dilution {text!r}: from what to what?", 'Write "10 cm3 to 250 cm3".')
     return Dilution(
         pipetted(volume_of(taken, "--dilution"), glass_class),
-        _made_up(volume_of(made, "--dilution"), glass_class),
+        made_up(volume_of(made, "--dilution"), glass_class),
     )
 
 
@@ -45,7 +101,8 @@ def pipetted(cm3: float, glass_class: str) -> Measured:
     return Measured(cm3, ware("burette", size, glass_class, step=_BURETTES[size]))
 
 
-def _made_up(cm3: float, glass_class: str) -> Measured:
+def made_up(cm3: float, glass_class: str) -> Measured:
+    """A volume made up to the mark of the flask that holds it."""
     size = next((each for each in _FLASKS if each >= cm3), _FLASKS[-1])
     return Measured(cm3, ware("flask", size, glass_class))
 
@@ -53,17 +110,3 @@ def _made_up(cm3: float, glass_class: str) -> Measured:
 def burette_of(cm3: float, glass_class: str) -> Ware:
     """The burette of that size. Raises: BadAmount for a size there is none of."""
     return ware("burette", cm3, glass_class, step=_BURETTES.get(cm3))
-
-
-def molar_of(text: str, formula: str, where: str) -> float:
-    """A strength as mol/dm³, its formula used where the unit needs it. Raises: BadAmount."""
-    from stockroom.chemistry.formula import molar_mass
-    from stockroom.chemistry.strength import canonical
-
-    strength = parse_strength(text, where=where)
-    plain = strength.unit is StrengthUnit.MOLAR
-    # the formula library is loaded for the units that need it alone
-    found = canonical(strength, molar_mass=None if plain else molar_mass(formula), of=where)
-    if found.value <= 0:
-        raise BadAmount(f"{where} {text!r} is nothing at all.", "Give a strength above 0.")
-    return found.value

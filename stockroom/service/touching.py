@@ -1,30 +1,53 @@
 """May this bottle be opened, drawn from or moved at all? Past its safety date, nobody touches it.
 
-A peroxide-former past its test date, and one whose test or look went badly, is left
-where it stands until somebody who knows has been asked. Testing it, and writing that
-it was thrown away, stay possible: those are how it gets out of that state.
+The dates are those of the verdict: a line's own, else the published ones of its class. Beside
+them a peroxide-former is left where it stands when it has no date at all, when it is closed
+and past the date its maker printed, and when a test or a look went badly, until somebody who
+knows has been asked. Testing it, and writing that it was thrown away, stay possible: those
+are how it gets out of that state.
 """
 
 from __future__ import annotations
 
+from dataclasses import dataclass
 from datetime import date
 
 from stockroom.errors import NotAllowed
 from stockroom.keeping.record import Check, CheckKind, Record
 from stockroom.keeping.rules import Rule, RuleKind
+from stockroom.keeping.strength import last_check
 from stockroom.keeping.verdict import limits_of
 from stockroom.measure.days import spell_day
+from stockroom.planning.facts import Form
 from stockroom.safety.peroxide_formers import DO_NOT_TOUCH, Outcome, outcome
 from stockroom.service.work import Work
+from stockroom.store.former_rules import formers_of
 from stockroom.store.snapshot_lines import lines_of
 from stockroom.store.tables import Bottle
+
+UNMOVED = "A"
+"""The class that is discarded on its day, whatever a test says."""
+
+
+@dataclass(frozen=True, slots=True)
+class Known:
+    """What decides whether a bottle may be touched: its record, its rules, its class.
+
+    `former` is the class of peroxide-former it belongs to, "" for none; `neat` is False
+    for a solution, which needs no date for that.
+    """
+
+    record: Record
+    rules: tuple[Rule, ...]
+    former: str = ""
+    neat: bool = True
 
 
 def check_may_open(work: Work, bottle: Bottle) -> None:
     """Pass unless it is past a safety date or its test condemned it. Raises: NotAllowed."""
-    record, rules = _known(work, bottle)
-    _refuse(bottle, past_safety(record, rules, work.on))
-    check = condemning(record, rules, work.on)
+    known = _known(work, bottle)
+    _refuse(bottle, past_safety(known, work.on))
+    check = condemning(known, work.on)
     if check is not None:
         _refuse(bottle, _condemned(check), _after(check))
 
@@ -34,9 +57,9 @@ def check_may_move(work: Work, bottle: Bottle) -> None:
 
     Raises: NotAllowed.
     """
-    record, rules = _known(work, bottle)
-    _refuse(bottle, past_safety(record, rules, work.on))
-    check = condemning(record, rules, work.on)
+    known = _known(work, bottle)
+    _refuse(bottle, past_safety(known, work.on))
+    check = condemning(known, work.on)
     if check is not None and not _may_be_moved(check):
         _refuse(bottle, _condemned(check))
 
@@ -46,8 +69,7 @@ def check_not_condemned(work: Work, bottle: Bottle) -> None:
 
     Raises: NotAllowed.
     """
-    record, rules = _known(work, bottle)
-    check = condemning(record, rules, work.on)
+    check = condemning(_known(work, bottle), work.on)
     # to test it again somebody would have to open it; a slip is put right and not tested away
     if check is not None and check.kind is CheckKind.TESTED:
         raise NotAllowed(
@@ -56,22 +78,55 @@ def check_not_condemned(work: Work, bottle: Bottle) -> None:
         )
 
 
-def _known(work: Work, bottle: Bottle) -> tuple[Record, tuple[Rule, ...]]:
-    return work.seen(bottle).record, lines_of(work.reader)[work.line(bottle).key].rules
+def former_of(work: Work, bottle: Bottle) -> str:
+    """The class of peroxide-former in a bottle, by any name of its substance; "" for none."""
+    return formers_of(work.reader).get(work.line(bottle).key, "")
 
 
-def past_safety(record: Record, rules: tuple[Rule, ...], on: date) -> str:
+def _known(work: Work, bottle: Bottle) -> Known:
+    line = work.line(bottle)
+    rules = lines_of(work.reader)[line.key].rules
+    neat = line.form != Form.SOLUTION
+    return Known(work.seen(bottle).record, rules, former_of(work, bottle), neat)
+
+
+def past_safety(known: Known, on: date) -> str:
     """Why it is past its safety date that day, in words; "" when it is not."""
-    over = [x for x in limits_of(record, rules, on) if x.safety and x.until < on]
+    former = known.former if known.neat else ""
+    if former and _undated(known.record, on):
+        return f"has no date on it and makes peroxides (class {former})"
+    over = (x for x in limits_of(known.record, known.rules, on) if x.safety and x.until < on)
     first = min(over, key=lambda limit: (limit.until, limit.because), default=None)
-    if first is None:
+    if first is not None:
+        return f"is past its safety date, {spell_day(first.until)} ({first.because})"
+    return _past_the_makers(known.record, former, on) if former else ""
+
+
+def _undated(record: Record, on: date) -> bool:
+    """No day of it is known, and nobody has tested it since: a test gives it one."""
+    return not (record.opened or record.received or record.made or _passed(record, on))
+
+
+def _past_the_makers(record: Record, former: str, on: date) -> str:
+    printed = record.printed.day if record.printed else None
+    # once opened the house's dates count, and the maker's says how long it lasts closed
+    if printed is None or record.opened is not None or printed >= on:
         return ""
-    return f"is past its safety date, {spell_day(first.until)} ({first.because})"
+    tested = _passed(record, on)
+    if tested and tested > printed and former != UNMOVED:
+        return ""
+    return f"is past the date its maker printed, {spell_day(printed)}, and makes peroxides"
 
 
-def condemning(record: Record, rules: tuple[Rule, ...], on: date) -> Check | None:
+def _passed(record: Record, on: date) -> date | None:
+    found = last_check(record, on, CheckKind.TESTED)
+    return found.on if found else None
+
+
+def condemning(known: Known, on: date) -> Check | None:
     """The bad test or look that a peroxide-former has not come back from; None for others."""
-    if not any(rule.kind is RuleKind.TEST for rule in rules):
+    record = known.record
+    if not known.former and not any(rule.kind is RuleKind.TEST for rule in known.rules):
         return None
     kinds = (CheckKind.TESTED, CheckKind.LOOKED)
     checks = [check for check in record.checks if check.kind in kinds and check.on <= on]

@@ -14,7 +14,9 @@ from pathlib import Path
 
 import pytest
 
-HEAVY = "sqlmodel sqlalchemy alembic pint scipy fastapi matplotlib numpy".split()
+HEAVY = (
+    "sqlmodel sqlalchemy alembic pint scipy uncertainties rapidfuzz fastapi matplotlib numpy"
+).split()
 TELL = "loaded on leaving: "
 
 # {act} is what is being tried; the rest reports, however it ends
@@ -86,7 +88,7 @@ def test_a_reading_command_loads_nothing_heavy(
     assert out.strip(), "it answered nothing, so it cannot have read"
 
 
-@pytest.mark.parametrize("library", ["pint", "sqlalchemy", "numpy"])
+@pytest.mark.parametrize("library", ["pint", "sqlalchemy", "numpy", "uncertainties"])
 def test_a_planted_heavy_import_is_told(library: str, tmp_path: Path) -> None:
     loaded, _ = left_loaded(f"import {library}", folder=tmp_path)
     assert library in loaded

@@ -12,7 +12,8 @@ from hypothesis import strategies as st
 
 from stockroom.chemistry.formula import molar_mass
 from stockroom.chemistry.glassware import ware
-from stockroom.chemistry.reactions import TITRATIONS, Titration, titration_of
+from stockroom.chemistry.reaction_names import titration_of
+from stockroom.chemistry.reactions import TITRATIONS, Titration
 from stockroom.chemistry.strength import hypochlorite_from_chlorine
 from stockroom.chemistry.titration import (
     Dilution,
@@ -47,13 +48,13 @@ def in_flask(
     taken: float = 0,
     made_up_to: float = 0,
 ) -> float:
-    dilution = Dilution(measured(taken), flask(made_up_to)) if taken else None
+    dilutions = (Dilution(measured(taken), flask(made_up_to)),) if taken else ()
     return found_in_flask(
         titration_of(reaction),
         Titres((titre,), BURETTE),
         titrant=Input("titrant", titrant),
         aliquot=measured(aliquot),
-        dilution=dilution,
+        dilutions=dilutions,
     ).value
 
 
@@ -223,6 +224,44 @@ def test_the_two_ways_round_undo_each_other(
     standard = Standard.pipetted(Input("standard", sample.value), measured(aliquot))
     back = found_in_burette(held, titres, standard=standard)
     assert back.value == pytest.approx(strength, rel=1e-12)
+
+
+def test_two_dilutions_are_both_undone() -> None:
+    tenfold = Dilution(measured(10), flask(100))
+    found = found_in_flask(
+        titration_of("NaOH on HCl"),
+        Titres((20.0,), BURETTE),
+        titrant=Input("titrant", 0.1),
+        aliquot=measured(20),
+        dilutions=(tenfold, tenfold),
+    )
+    assert found.value == pytest.approx(10.0)
+    assert {"taken 1: glass", "made up to 2: glass"} <= {name for name, _ in found.components}
+
+
+def test_a_standard_made_up_and_pipetted_has_the_doubt_of_both() -> None:
+    # 0.3562 g of sodium oxalate in 250 cm³, 10 cm³ of it took 48.33 cm³: a textbook's problem, from
+    # memory; recomputed with 134.00 g/mol
+    standard = weighed(0.3562, "Na2C2O4").aliquot(measured(10), flask(250))
+    titres = Titres((48.36,), BURETTE, blank_cm3=0.03)
+    found = found_in_burette(titration_of("KMnO4 on oxalate"), titres, standard=standard)
+    assert found.value == pytest.approx(8.800e-4, abs=1e-7)
+    assert {"aliquot: glass", "made up to: glass"} <= {name for name, _ in found.components}
+
+
+def test_more_than_was_made_up_cannot_be_pipetted() -> None:
+    with pytest.raises(BadAmount, match="more than there is"):
+        weighed(0.3562, "Na2C2O4").aliquot(measured(100), flask(50))
+
+
+def test_a_mole_of_a_standard_may_hold_two() -> None:
+    # by hand: 0.3250 g of KH(IO3)2 is 0.8335 mmol, 1.667 mmol of iodate and 10 mmol of thiosulfate
+    mass = Input("mass", 0.3250)
+    standard = Standard.weighed(mass, Input("molar mass", 389.91), Input("assay", 1.0), per_mole=2)
+    found = found_in_burette(
+        titration_of("thiosulfate on iodate"), Titres((50.0,), BURETTE), standard=standard
+    )
+    assert found.value == pytest.approx(0.2000, abs=1e-4)
 
 
 @given(st.floats(1.5, 100))

@@ -70,7 +70,7 @@ def test_a_stated_number_needs_no_table(reaction: str) -> None:
         ("redox", "potassium permanganate", '"redox" does not say which'),
         ("acid-base", "phosphoric acid", "1 acid-base, to H2PO4-; 2 acid-base, to HPO4 2-; 3"),
         ("acid-base", "sodium carbonate", "2 acid-base, to CO2; 1 acid-base, to HCO3-"),
-        ("", "sodium hydroxide", '"0.1 N for acid-base"'),
+        ("", "sodium hydroxide", '"N for acid-base"'),
         ("to iodine, with thiosulfate", "potassium iodate", "5 to iodine; 6 to iodide"),
         ("acid-base", "sucrose", "2 equivalents per mol"),
     ],

@@ -117,7 +117,7 @@ def test_saline_of_0_9_per_cent_is_9_grams_per_dm3() -> None:
 def test_per_cent_by_mass_asks_for_the_density_on_the_label(text: str) -> None:
     with pytest.raises(MissingFigure) as caught:
         canonical(parse_strength(text), molar_mass=98.08, of="sulfuric acid")
-    assert "I need the density on the label to turn % into mol/dm³" in caught.value.message
+    assert "I need the density on the label to go between % and mol/dm³" in caught.value.message
     assert f'sulfuric acid "{text}"' in caught.value.message
 
 

@@ -3,7 +3,12 @@ from __future__ import annotations
 import pytest
 
 from stockroom.chemistry.formula import molar_mass
-from stockroom.chemistry.titration import factor, found_by_titre, mean_titre
+from stockroom.chemistry.titration import (
+    factor,
+    found_by_titre,
+    mean_titre,
+    repeatability_of,
+)
 from stockroom.errors import BadAmount
 
 # mol of the standard, titre in cm³, mol of titrant per mol of standard, found mol/dm³, tolerance.
@@ -46,6 +51,37 @@ def test_concordant_titres_give_their_mean() -> None:
 def test_titres_0_4_apart_are_not_concordant() -> None:
     with pytest.raises(BadAmount, match=r"Not concordant \(0\.4 cm³\)"):
         mean_titre([25.0, 25.4])
+
+
+@pytest.mark.parametrize(
+    ("titres", "hint"),
+    [
+        ([25.30, 25.70, 25.35],
+         "25.30, 25.35 agree: leave out 25.70, add another, or keep as rough: --within 0.4."),
+        ([25.0, 25.4], "Add another, or keep as rough: --within 0.4."),
+        # either end might be the one to leave out
+        ([25.3, 25.4, 25.5], "Add another, or keep as rough: --within 0.2."),
+        ([25.1, 25.5, 25.9], "Add another, or keep as rough: --within 0.8."),
+    ],
+)  # fmt: skip
+def test_titres_that_disagree_are_told_what_to_do(titres: list[float], hint: str) -> None:
+    with pytest.raises(BadAmount) as refused:
+        mean_titre(titres)
+    assert refused.value.hint == hint
+
+
+def test_what_is_said_to_be_rough_enough_is() -> None:
+    # 0.123 apart: a hint rounded down would be refused again
+    with pytest.raises(BadAmount, match="Not concordant") as refused:
+        mean_titre([25.0, 25.123])
+    assert "--within 0.13" in refused.value.hint
+    assert mean_titre([25.0, 25.123], within_cm3=0.13) == pytest.approx(25.0615)
+
+
+def test_repeatability_is_the_relative_standard_deviation() -> None:
+    # by hand: 25.30 and 25.40 have a standard deviation of 0.0707, 0.279 % of 25.35
+    assert repeatability_of([25.30, 25.40]) == pytest.approx(0.00279, abs=1e-5)
+    assert repeatability_of([25.3]) is None
 
 
 @pytest.mark.parametrize("titres", [[], [0.0], [25.0, -1.0], [float("nan")]])

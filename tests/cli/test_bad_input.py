@@ -43,6 +43,7 @@ TABLE = [
     ("draw S05 5cm3 --as-at soon" + BY, 2, "soon"),
     (LITHIUM + " --place A2 --printed old", 2, "old"),
     (LITHIUM + " --place A2 --printed 31/02/2028", 2, "31/02/2028"),
+    (LITHIUM + " --place A2 --printed none --cap corked", 2, "corked"),
     (BOOKED + " --on 04/05/27 --at 09:15 --groups 12 --dept CH", 2, "04/05/27"),
     (BOOKED + " --on 2027-01-21 --at 25:00 --groups 12 --dept CH", 2, "25:00"),
     ("shift K06 --on 2027-02-31" + BY, 2, "2027-02-31"),

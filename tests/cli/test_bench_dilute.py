@@ -207,6 +207,112 @@ def test_a_stronger_need_than_the_stock_is_refused_in_its_own_unit(stockroom: St
     assert "Cannot reach 90 vol from 89.1 vol." in result.err
 
 
+@pytest.mark.parametrize(
+    ("words", "said"),
+    [
+        (("1 L", "2 M", "--from", "2.00 M", "--of", "HCl"), "1 000 cm³ of 2.00 M hydrochloric"),
+        (("1 L", "70 % v/v", "--from", "70 % v/v", *ETHANOL), "1 000 cm³ of 70 % v/v ethanol"),
+        (("500 g", "5 % w/w", "--from", "5 % w/w", "--of", "NaCl"), "500 g of 5 % w/w sodium"),
+        (("1 L", "1 M", "--from", "2 M", "--with", "1 M", "--of", "HCl"), "1 000 cm³ of 1 M"),
+        (("1 L", "36.46 g/dm3", "--from", "1 M", "--of", "HCl"), "1 000 cm³ of 1 M"),
+    ],
+)
+def test_what_is_that_strong_already_is_used_as_it_stands(
+    stockroom: Stockroom, words: tuple[str, ...], said: str
+) -> None:
+    out = stockroom("dilute", *words).said
+    assert out.startswith(said)
+    assert out.endswith("as it stands: it is that strong already")
+
+
+@pytest.mark.parametrize("water", ["water", "Deionised water", "0 M", "0.0 mol/dm3", "0 % w/w"])
+def test_water_is_no_second_solution(stockroom: Stockroom, water: str) -> None:
+    words = ("dilute", "500 cm3", "1 M", "--from", "2 M", "--of", "HCl")
+    assert stockroom(*words, "--with", water).out == stockroom(*words).out
+
+
+def test_strong_acids_are_mixed_by_their_densities(stockroom: Stockroom) -> None:
+    """Worked out here by mass: 294.2 g/dm³ wanted, of 1765.4 and 98.08, at the table's densities.
+
+    With volumes taken as additive it would be 58.8 cm³ and 441.2 cm³, which make 487 cm³.
+    """
+    words = ("dilute", "500 cm3", "3 M", "--from", "18 M", "--with", "1 M", *SULFURIC, "--json")
+    found = stockroom(*words).json
+    strong, weak = (each["value"] for each in found["amounts"][:2])
+    assert strong * 18 + weak * 1 == pytest.approx(500 * 3, rel=1e-3)
+    assert strong + weak == pytest.approx(513.3, abs=0.5)
+
+
+def test_dilute_acids_are_mixed_as_volumes(stockroom: Stockroom) -> None:
+    words = ("dilute", "1 L", "1.5 M", "--from", "2 M", "--with", "1 M", "--of", "HCl")
+    assert "500 cm³ of 2 M hydrochloric acid and 500 cm³ of 1 M" in stockroom(*words).said
+
+
+def test_strong_ones_of_no_known_density_are_warned_of(stockroom: Stockroom) -> None:
+    words = ("dilute", "1 L", "3 M", "--from", "5 M", "--with", "1 M", "--of", "CaCl2")
+    assert "! Volumes taken as additive, and these are strong" in stockroom(*words).out
+
+
+def test_too_little_to_measure_is_diluted_in_steps(stockroom: Stockroom) -> None:
+    found = stockroom("dilute", "1 L", "0.001 M", "--from", "12 M", "--of", "HCl", "--json").json
+    assert any("is too little to measure; with usual glass" in each for each in found["details"])
+    first, made, *rest = (each["value"] for each in found["ways"][0])
+    held = first / made
+    for taken, total in zip(rest[::2], rest[1::2], strict=True):
+        held *= taken / total
+    assert 12 * held == pytest.approx(0.001, rel=0.05)
+
+
+def test_the_house_measures_with_its_own_glass(stockroom: Stockroom, practice: Path) -> None:
+    words = ("dilute", "500 cm3", "0.100 mol/dm3", "--from", "91 vol", *PEROXIDE)
+    assert "6.2 cm³ (10 cm³ graduated pipette): within" in stockroom(*words, store=practice).out
+    near = stockroom(*words, "--closeness", "0.5", store=practice).out
+    assert "6.158 cm³ cannot be measured to ±0.5 % into 500 cm³" in near
+
+
+def test_every_amount_is_data(stockroom: Stockroom) -> None:
+    """Reference section 4 (b): 729.17 cm³ and 297.4 cm³, 588.7 g and 296.8 g."""
+    found = stockroom("dilute", "1 L", "70 % v/v", "--from", "96 % v/v", *ETHANOL, "--json").json
+    told = [(each["what"], round(each["value"], 1), each["unit"]) for each in found["amounts"]]
+    assert told == [
+        ("96 % v/v ethanol", 729.2, "cm3"),
+        ("water", 297.4, "cm3"),
+        ("96 % v/v ethanol", 588.7, "g"),
+        ("water", 296.8, "g"),
+        ("come to", 1000.0, "cm3"),
+    ]
+    assert found["value"] == found["amounts"][0]["value"]
+
+
+# the job, section 7: nos. 2, 9, 11 and 12, each for the bottle that is opened
+CAUTIONED = [
+    (("2 M", "--from", "36 % w/w", "--of", "HCl"), "Acid into water"),
+    (("2 M", "--from", "36 % w/w", "--of", "HCl"), "fume cupboard"),
+    (("2 M", "--from", "35 % w/w", "--of", "ammonia"), "fume cupboard"),
+    (("0.1 M", "--from", "neat", "--of", "ethanoic acid"), "burns skin and catches fire"),
+    (("70 % v/v", "--from", "96 % v/v", "--of", "ethanol"), "no flame"),
+    (("2 M", "--from", "50 % w/w", "--of", "NaOH"), "Into water in portions"),
+    (("1 % w/v", "--from", "12 % w/v", "--of", "bleach"), "never with acid"),
+]
+
+
+@pytest.mark.parametrize(("words", "said"), CAUTIONED)
+def test_the_caution_is_that_of_the_bottle_opened(
+    stockroom: Stockroom, words: tuple[str, ...], said: str
+) -> None:
+    assert any(
+        said in each for each in stockroom("dilute", "1 L", *words, "--json").json["cautions"]
+    )
+
+
+@pytest.mark.parametrize("of", ["HCl", "ammonia", "NaOH"])
+def test_a_dilute_one_brings_no_caution_of_the_concentrated(stockroom: Stockroom, of: str) -> None:
+    assert (
+        stockroom("dilute", "1 L", "0.1 M", "--from", "1 M", "--of", of, "--json").json["cautions"]
+        == []
+    )
+
+
 # what cannot be done: the words, the exit code, and what is said
 REFUSED = [
     (("1 L", "3.5 % w/v", "--from", "7 % w/v", "--with", "5 % w/v"), 1, "it must lie between"),
@@ -226,6 +332,9 @@ REFUSED = [
     (("1 L", "1 M", "--from", "0 M"), 2, "nothing at all"),
     (("1 L", "30 M", "--from", "neat", *ETHANOL), 2, "pure ethanol is 17.13 mol/dm³"),
     (("1 L", "1 M", "--from", "36 %", "--of", "HCl"), 2, "Which: g in 100 cm³"),
+    (("1 L", "1 M", "--from", "water", "--of", "HCl"), 2, "1 M is diluted from what?"),
+    (("1 L", "1 M", "--from", "2 M", "--closeness", "100"), 2, "not above 0 and below 100"),
+    (("1 L", "5 M", "--from", "2 mol/dm3"), 1, "Cannot reach 5 M from 2 mol/dm³."),
 ]  # fmt: skip
 
 
@@ -278,6 +387,19 @@ def test_two_substances_are_not_mixed(stockroom: Stockroom, practice: Path) -> N
     assert "hydrogen peroxide and ethanol are different substances." in result.err
 
 
+def test_a_bottle_is_not_what_of_says_it_is_not(stockroom: Stockroom, practice: Path) -> None:
+    words = ("dilute", "1 L", "0.1 M", "--from", "B01", "--of")
+    result = stockroom(*words, "NaOH", store=practice)
+    assert (result.code, result.out) == (2, "")
+    assert "B01 holds hydrogen peroxide, and --of says sodium hydroxide." in result.err
+    assert stockroom(*words, "H2O2", store=practice).code == 0
+
+
+def test_a_day_before_every_bottle_says_so(stockroom: Stockroom, practice: Path) -> None:
+    words = ("dilute", "1 L", "0.1 M", "--from", "B01", "--as-at", "2000-01-01")
+    assert "None was here by that day" in stockroom(*words, store=practice).err
+
+
 def test_a_bottle_past_its_safety_date_is_left_alone(stockroom: Stockroom, practice: Path) -> None:
     """Cyclohexene opened 2026-09-02: test or discard within six months."""
     words = ("dilute", "1 L", "1 % v/v", "--from", "B29", "--as-at", "2027-05-01")
@@ -293,3 +415,12 @@ def test_a_number_nobody_has_is_answered_with_the_nearest(
     result = stockroom("dilute", "1 L", "0.1 M", "--from", "B99", store=practice)
     assert result.code == 2
     assert "'B99'" in result.err
+
+
+@pytest.mark.parametrize(("source", "glacial"), [("25 % w/w", False), ("99.5 % w/w", True)])
+def test_only_glacial_ethanoic_acid_is_said_to_freeze_and_burn(
+    stockroom: Stockroom, practice: Path, source: str, glacial: bool
+) -> None:
+    words = ("dilute", "100 cm3", "1 mol/dm3", "--from", source, "--of", "ethanoic acid")
+    said = stockroom(*words, store=practice).said
+    assert ("freezes" in said, "no flame" in said) == (glacial, glacial)

@@ -61,6 +61,17 @@ SUMS = [
     ("saturated", "NaCl", "% w/w", "--temperature 20", 26.4, 5e-3),
     ("saturated at 20 °C", "NaCl", "mol/kg", "", 6.14, 1e-2),
     ("1 in 2 of saturated at 20 °C", "calcium hydroxide", "M", "", 0.011, 0.1),
+    # counted as a part: molar masses as in formula.py (b); 1000 mg/dm³ of nitrate is 16.13 mM
+    ("1000 ppm m/v as NO3", "potassium nitrate", "mM", "", 16.13, 1e-3),
+    ("100 mg/L as N", "KNO3", "mM", "", 7.139, 1e-3),
+    ("100 mg/L nitrate-N", "KNO3", "mM", "", 7.139, 1e-3),
+    ("0.01 M", "KNO3", "mg/L as nitrate", "", 620.0, 1e-3),
+    ("50 ppm m/v as CaCO3", "calcium chloride", "mM", "", 0.4996, 1e-3),
+    ("1000 ppm m/v as Cu", "CuSO4.5H2O", "g/dm3", "", 3.929, 1e-3),
+    ("1 × 10⁻³ M", "NaOH", "mM", "", 1, 1e-9),
+    ("37 % w/w", "HCl", "M", "--density '1,18 g/cm3'", 11.975, 1e-3),
+    ("37 % w/w", "HCl", "M", "--density '1180 kg/m³'", 11.975, 1e-3),
+    ("100 vol", PEROXIDE, "M", "--gas-volume '24 dm3/mol'", 8.333, 1e-3),
     # neat liquids by volume: Harvey, example 2.9c (a+b), 80 cm³ in 2 dm³
     ("4 % v/v", "ethanoic acid", "g/dm3", "--density 1.05", 42, 1e-6),
 ]
@@ -92,6 +103,12 @@ SAID = [
     ("28 % w/w", "ammonium hydroxide", "M", "", "counted as NH3"),
     ("96 % v/v", "ethanol", "M", "", "pure liquid: density 0.7892 g/cm³ at 20 °C (OIML"),
     ("37 % w/w", "HCl", "M", "--temperature 30", "30 °C took no part"),
+    ("1 M", "HCl", "g/dm3", "--density 1.2", "density 1.2 g/cm³ took no part"),
+    ("1 M", "HCl", "g/dm3", "--pure-density 1.2", "--pure-density 1.2 took no part"),
+    ("98 % w/w", "H2SO4", "M", "--density 1.2", "! 1.2 g/cm³ given, and the table has 1.836"),
+    ("50 M", "HCl", "g/dm3", "", "! is it meant?"),
+    ("100 mg/L as N", "KNO3", "mM", "", "counted as N: 14.01 g of it in 101.1 g"),
+    ("0.1 M", "copper sulphate pentahydrate", "g/dm3", "", "24.97 g"),
 ]
 
 
@@ -128,6 +145,23 @@ REFUSED = [
     ("2 M", "NaCl", "saturated", "", 2, '--to "saturated": I do not know'),
     ("saturated", "NaCl", "% w/w", "--temperature warm", 2, "'warm' is not a temperature"),
     ("2 m", "NaCl", "M", "", 2, "molality or metres?"),
+    ("1000 ppm as N", "KNO3", "M", "", 2, 'Write "1000 ppm m/v as N" or "1000 ppm m/m as N"'),
+    ("10 mg/L as Cl", "KNO3", "M", "", 2, "Cl is not in it"),
+    ("10 mg/L as N", "starch", "M", "", 1, "no formula is held for starch"),
+    ("0.1 M as N", "KNO3", "g/dm3", "", 2, "I do not know"),
+    ("2 M", "NaCl", "0.5 M", "", 2, '--to "0.5 M": a unit alone is wanted'),
+    ("2 M", "NaCl", "M/50", "", 2, "a unit alone is wanted"),
+    ("2 M", "NaCl", "%", "", 2, 'Write "% w/v", "% w/w" or "% v/v".'),
+    ("2 M", "", "g/dm3", "", 2, '--of "": of what?'),
+    ("2 M", "nacl", "g/dm3", "", 2, "NaCl is sodium chloride"),
+    ("2 M", "B03", "g/dm3", "", 2, "Is B03 a bottle?"),
+    ("5 % w/w", "glucose", "M", "", 1, "Add it as --density."),
+    ("0.02 M", "KMnO4", "N", "", 2, 'Say it after the N, as "N (to Mn2+)"'),
+    ("0.880", "ammonia", "M", "", 2, "Ammonia of 0.880 g/cm³ is about 34 % w/w"),
+    ("880", "NH3", "M", "", 2, 'Write "34 % w/w"'),
+    ("0.85", "ammonia", "M", "", 2, "Write the % w/w off the label"),
+    ("5 % w/w", "glucose", "M", "--density x", 2, "Write it as 1.18"),
+    ("20 vol", PEROXIDE, "M", "--gas-volume 0", 2, "Write it as 24"),
 ]
 
 
@@ -138,6 +172,12 @@ def test_what_is_doubtful_is_refused_with_what_to_read_off(
     result = stockroom(*ask(text, of, to, given))
     assert (result.code, result.out) == (code, "")
     assert says in result.err
+
+
+@pytest.mark.parametrize("density", ["1.16", "1.2"])
+def test_a_density_near_the_tables_is_not_doubted(stockroom: Stockroom, density: str) -> None:
+    # 36 % w/w is 1.179 g/cm³; a label at another temperature is no slip
+    assert "!" not in stockroom(*ask("36 % w/w", "HCl", "M", f"--density {density}")).out
 
 
 def test_the_figure_given_stands_before_the_table(stockroom: Stockroom) -> None:

@@ -15,6 +15,7 @@ if TYPE_CHECKING:
 # every event command once, as its help shows it
 EVENTS = [
     'arrive "lithium chloride" "100 g" --printed 2029-01 --place A2',
+    'arrive "hydrogen peroxide 100 vol" "500 cm3" --printed none --place A3 --cap tight',
     "open B02",
     'make "sodium thiosulfate 0.200 mol/dm3" 400cm3 --from S01 --place D1',
     "draw S05 200cm3",
@@ -54,6 +55,25 @@ def test_every_event_answers_a_program_too(stockroom: Stockroom, own: Path, line
     data = stockroom(*shlex.split(line), "--by", "T1", "--json", store=own).json
     assert {"text", "bottle", "entry", "practice"} <= set(data)
     assert data["practice"] is True
+
+
+def test_a_wrong_neighbour_and_a_tight_cap_are_told_and_nothing_is_refused(
+    stockroom: Stockroom, own: Path
+) -> None:
+    line = 'arrive "sodium hypochlorite 12 % w/v" 500cm3 --printed none --place A1 --cap tight'
+    result = stockroom(*shlex.split(line), "--by", "T1", store=own)
+    assert result.code == 0
+    assert "B46: stands beside B13, B14, B15 in A1, kept for acid: bleach beside" in result.said
+    assert "B46: tight cap on a solution that gives off gas" in result.said
+
+
+def test_a_count_that_is_less_offers_two_ways_and_takes_neither(
+    stockroom: Stockroom, own: Path
+) -> None:
+    result = stockroom("count", "S17", "460cm3", "--by", "T1", store=own)
+    assert '×1.043 by now: stockroom found S17 "0.1043 mol/dm³"' in result.said
+    assert "Or drawn, not written down? Then its strength is as it was" in result.said
+    assert "found" not in stockroom("diary", "S17", store=own).out
 
 
 def past(stockroom: Stockroom, own: Path, bottle: str, **words: str) -> dict[str, Any] | None:

@@ -202,6 +202,7 @@ def test_each_make_carries_the_hazards_its_label_will_want(
     ("words", "quoted"),
     [
         (("unobtainium",), "unobtainium"),
+        ((" ",), "' '"),
         (("sodium hydroxide", "5 %"), "5 %"),
         (("sodium hydroxide", "150 % w/w"), "150"),
         (("sodium hydroxide", "-1 mol/dm3"), "-1"),

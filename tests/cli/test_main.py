@@ -126,4 +126,4 @@ def test_a_stream_that_lacks_the_signs_gets_question_marks() -> None:
         text=True,
         check=True,
     )
-    assert "58.44 g of NaCl, made up to 1 000 cm?" in result.stdout
+    assert "58.44 g of sodium chloride, made up to 1 000 cm?" in result.stdout

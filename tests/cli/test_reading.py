@@ -110,6 +110,43 @@ def test_why_takes_five_lines_or_fewer(stockroom: Stockroom, practice: Path) -> 
         assert len(stockroom("why", ref, "--json", store=practice).json["reasons"]) <= 5
 
 
+def test_a_make_says_what_it_is_measured_with_and_how_good_it_will_be(
+    stockroom: Stockroom, practice: Path
+) -> None:
+    # T09: 6.608 cm³ of B01; one mark of 0.1 cm³ is 1.5 % of it
+    said = stockroom("why", "M14", store=practice).said
+    assert "6.608 cm³ of B01: 10 cm³ graduated pipette, ±1.5 %; made to 0.100 ± 0.003" in said
+    assert "±" not in stockroom("plan", store=practice).out
+
+
+def test_every_make_of_an_acid_says_acid_into_water(stockroom: Stockroom, practice: Path) -> None:
+    makes = stockroom("plan", store=practice).out.split("MAKE\n")[1].split("CHECK\n")[0]
+    acids = [part for part in makes.split("\n  M")[1:] if " acid " in part.splitlines()[0]]
+    assert len(acids) > 6
+    assert [
+        part for part in acids if "Acid into water" not in part and "ascorbic" not in part
+    ] == []
+
+
+def test_a_class_is_told_of_flames_peroxides_and_waste(
+    stockroom: Stockroom, practice: Path
+) -> None:
+    said = stockroom("ready", "K17", store=practice).said
+    assert "at the bench (cyclohexene, unstabilised): Makes peroxides." in said
+    assert "(cyclohexene, unstabilised; hexane): Flammable: no flame in the room." in said
+    assert "clearing away (bromine water): Oxidising and nitric waste" in said
+
+
+def test_what_to_do_next_is_never_a_look_at_what_must_not_be_opened(
+    stockroom: Stockroom, practice: Path
+) -> None:
+    # B29 is cyclohexene, past its safety date on 2 March: scenario section 5
+    out = stockroom("past", "--on", "2027-03-10", store=practice).out
+    assert "B29" in out
+    *_, last = out.splitlines()
+    assert last.endswith("stockroom look B35 --good")
+
+
 def test_a_barred_acid_is_refused_with_its_reason(stockroom: Stockroom, practice: Path) -> None:
     # scenario T32
     out = stockroom("why", "K11", "--instead", "hydrochloric acid", store=practice).out

@@ -1,4 +1,4 @@
-"""titrate: titres in, a strength out, and the bottle re-dated."""
+"""titrate: titres in, a strength out, with what it was counted by."""
 
 from __future__ import annotations
 
@@ -7,8 +7,6 @@ from typing import TYPE_CHECKING
 import pytest
 
 if TYPE_CHECKING:
-    from pathlib import Path
-
     from conftest import Stockroom
 
 IODATE = ("thiosulfate on iodate", "25.30", "25.35", "25.35")
@@ -26,6 +24,49 @@ def test_titres_come_to_a_strength_without_a_store(stockroom: Stockroom) -> None
     assert "taken as exact" in said.out
 
 
+def test_peroxide_is_shown_in_vol_and_per_cent_too(stockroom: Stockroom) -> None:
+    # a pharmacopoeia's assay, recomputed: 19.78 vol, 6.004 % w/v
+    words = ("titrate", "KMnO4 on peroxide", "35.30", "--titrant", "0.02 M", "--sample", "10 cm3")
+    said = stockroom(*words, "--dilution", "10 cm3 to 100 cm3")
+    assert "that is 19.78 ± 0.12 vol or 6.00 ± 0.04 % w/v; vol counted at 22.414 dm³" in said.said
+    also = stockroom(*words, "--dilution", "10 cm3 to 100 cm3", "--json").json["also"]
+    assert [each["unit"] for each in also] == ["vol", "% w/v"]
+    assert also[0]["value"] == pytest.approx(19.78, abs=0.01)
+
+
+def test_bleach_is_shown_in_available_chlorine_too(stockroom: Stockroom) -> None:
+    # recomputed: 0.705 mol/dm³ of ClO⁻ is 0.705 × 7.0906 % w/v of chlorine
+    words = ("titrate", "thiosulfate on bleach", "14.10", "--titrant", "0.1 M", "--sample")
+    said = stockroom(*words, "25 cm3", "--dilution", "10 cm3 to 250 cm3", "--json").json
+    assert said["also"][0]["unit"] == "% w/v available chlorine"
+    assert said["also"][0]["value"] == pytest.approx(5.00, abs=0.01)
+
+
+@pytest.mark.parametrize(
+    ("words", "told"),
+    [
+        (PIPETTED, "exact enough for an exact line (±0.5 %), if the iodate's strength is exact"),
+        (("--standard", "0.0892 g"), "if the standard's assay is exact"),
+        (
+            (*PIPETTED, "--uncertainty", "0.00001 M"),
+            "exact enough for an exact line (±0.5 %) Local",
+        ),
+        ((*PIPETTED, "--uncertainty", "0.001 M"), "not exact enough for an exact line (±0.5 %)"),
+    ],
+)
+def test_exact_enough_is_said_with_its_if(
+    stockroom: Stockroom, words: tuple[str, ...], told: str
+) -> None:
+    assert told in stockroom("titrate", *IODATE, *words).said
+
+
+def test_titres_that_repeat_badly_are_told_of(stockroom: Stockroom) -> None:
+    bad = ("titrate", "thiosulfate on iodate", "25.30", "25.40", *PIPETTED)
+    told = "repeatability 0.28 % (relative standard deviation): over the 0.2 %"
+    assert told in stockroom(*bad).said
+    assert "repeatability" not in stockroom("titrate", *IODATE, *PIPETTED).out
+
+
 def test_the_caution_and_the_house_line_stand_with_it(stockroom: Stockroom) -> None:
     said = stockroom("titrate", *OXALATE).out
     assert "! Warm to about 60 °C" in said
@@ -38,23 +79,6 @@ def test_json_gives_the_number_its_unit_and_its_budget(stockroom: Stockroom) -> 
     assert found["unit"] == "mol/dm3"
     shares = [part["uncertainty"] for part in found["budget"]]
     assert sum(share**2 for share in shares) == pytest.approx(found["uncertainty"] ** 2, rel=0.02)
-
-
-def test_a_result_re_dates_the_bottle(stockroom: Stockroom, own: Path) -> None:
-    done = stockroom("titrate", *OXALATE, "--bottle", "S08", "--by", "T1", store=own)
-    assert done.code == 0
-    assert "S08 potassium permanganate 0.0200 mol/dm³ found 0.019298 mol/dm³" in done.out
-    assert "Now sound, until 3 February 2027: found 2027-01-04 + 30 days" in done.out
-    assert "Write a new label" in done.out
-
-
-def test_its_uncertainty_goes_into_the_next_titration(stockroom: Stockroom, own: Path) -> None:
-    iron = ("titrate", "KMnO4 on Fe2+", "24.10", "--titrant", "S08", "--sample", "25 cm3")
-    before = stockroom(*iron, "--json", store=own).json
-    stockroom("titrate", *OXALATE, "--bottle", "S08", "--by", "T1", store=own)
-    after = stockroom(*iron, "--json", store=own).json
-    assert "S08 strength" in {part["from"] for part in after["budget"]}
-    assert after["uncertainty"] > before["uncertainty"]
 
 
 def test_a_dilution_before_the_aliquot_counts(stockroom: Stockroom) -> None:
@@ -72,22 +96,6 @@ def test_a_dilution_before_the_aliquot_counts(stockroom: Stockroom) -> None:
         "--json",
     ).json
     assert said["value"] == pytest.approx(0.2655, abs=1e-4)
-
-
-def test_a_strength_may_be_found_by_hand_with_its_uncertainty(
-    stockroom: Stockroom, own: Path
-) -> None:
-    done = stockroom(
-        "found",
-        "S08",
-        "0.0193 mol/dm3",
-        "--uncertainty",
-        "0.00005 mol/dm3",
-        "--by",
-        "T1",
-        store=own,
-    )
-    assert "found 0.0193 mol/dm³ (standard uncertainty 0.00005 mol/dm³)" in done.out
 
 
 def test_without_a_reaction_all_are_listed(stockroom: Stockroom) -> None:
@@ -108,13 +116,13 @@ def test_without_a_reaction_all_are_listed(stockroom: Stockroom) -> None:
         ),
         (("NaOH on HCl", "20", "--titrant", "0.1 M"), "How much hydrochloric acid"),
         (("NaOH on HCl", "20", "--standard", "25 cm3"), "how strong is it?"),
-        (("NaOH on HCl", "20", "20.4", "--standard", "1 g"), "Not concordant (0.4 cm³)"),
-        (("NaOH on HCl", "twenty", "--standard", "1 g"), "'twenty'"),
-        (("NaOH on HCl", "--standard", "1 g"), "0 titres say nothing"),
-        (("NaOH on HCl", "60", "--standard", "1 g"), "more than the 50 cm³ burette holds"),
-        (("NaOH on HCl", "20", "--standard", "1 g", "--blank", "21"), "leaves nothing"),
-        (("NaOH on HCl", "20", "--standard", "1 g", "--assay", "103"), "assay 103 %"),
-        (("NaOH on HCl", "20", "--standard", "1 g", "--sample", "20 cm3"), "the flask holds one"),
+        (("NaOH on KHP", "20", "20.4", "--standard", "1 g"), "Not concordant (0.4 cm³)"),
+        (("NaOH on KHP", "twenty", "--standard", "1 g"), "'twenty'"),
+        (("NaOH on KHP", "--standard", "1 g"), "0 titres say nothing"),
+        (("NaOH on KHP", "60", "--standard", "1 g"), "more than the 50 cm³ burette holds"),
+        (("NaOH on KHP", "20", "--standard", "1 g", "--blank", "21"), "leaves nothing"),
+        (("NaOH on KHP", "20", "--standard", "1 g", "--assay", "103"), "assay 103 %"),
+        (("NaOH on KHP", "20", "--standard", "1 g", "--sample", "20 cm3"), "it holds one"),
         (
             ("NaOH on HCl", "20", "--titrant", "0.1 M", "--sample", "25 g"),
             "is not a volume above 0",
@@ -132,8 +140,8 @@ def test_without_a_reaction_all_are_listed(stockroom: Stockroom) -> None:
             ),
             "from what to what?",
         ),
-        (("NaOH on HCl", "20", "--standard", "1 g", "--burette", "30"), "none of that size"),
-        (("NaOH on HCl", "20", "--standard", "1 g", "--glass", "C"), "class 'C'"),
+        (("NaOH on KHP", "20", "--standard", "1 g", "--burette", "30"), "none of that size"),
+        (("NaOH on KHP", "20", "--standard", "1 g", "--glass", "C"), "class 'C'"),
     ],
 )
 def test_what_cannot_be_worked_out_is_refused(
@@ -143,35 +151,3 @@ def test_what_cannot_be_worked_out_is_refused(
     assert result.code == 2
     assert told in result.err
     assert result.out == ""
-
-
-@pytest.mark.parametrize(
-    ("bottle", "told", "code"),
-    [
-        ("S01", "S01 holds sodium thiosulfate, and the reaction is of permanganate", 2),
-        ("S99", "S99", 2),
-    ],
-)
-def test_a_result_for_the_wrong_bottle_is_refused(
-    stockroom: Stockroom, own: Path, bottle: str, told: str, code: int
-) -> None:
-    result = stockroom("titrate", *OXALATE, "--bottle", bottle, "--by", "T1", store=own)
-    assert (result.code, told in result.err) == (code, True), result.err
-
-
-def test_a_result_far_from_the_label_is_asked_about(stockroom: Stockroom, own: Path) -> None:
-    far = ("permanganate on oxalate", "25.91", "--standard", "0.2675 g")
-    result = stockroom("titrate", *far, "--bottle", "S08", "--by", "T1", store=own)
-    assert result.code == 1
-    assert "Unusual" in result.err
-
-
-@pytest.mark.parametrize("spread", ["0.02 mol/dm3", "0 mol/dm3"])
-def test_an_uncertainty_that_cannot_be_is_refused(
-    stockroom: Stockroom, own: Path, spread: str
-) -> None:
-    result = stockroom(
-        "found", "S08", "0.0193 mol/dm3", "--uncertainty", spread, "--by", "T1", store=own
-    )
-    assert result.code == 2
-    assert "cannot be" in result.err

@@ -37,6 +37,8 @@ READ = [
     ("0,05 g", Amount.grams(0.05)),
     ("0,125 g", Amount.grams(0.125)),
     ("1e-3 g", Amount.grams(0.001)),
+    ("2 × 10³ cm³", Amount.cm3(2000)),
+    ("5 x 10^-2 g", Amount.grams(0.05)),
     ("0 g", Amount.grams(0)),
     ("1000 kg", Amount.grams(1_000_000)),
     ("3 items", Amount.items(3)),
@@ -85,6 +87,8 @@ REFUSED = [
     ("2 oz", "no unit of this bench"),
     ("3/4 bottle", "how big a bottle"),
     ("½ full", "how big a bottle"),
+    (".5 g", 'Write "0.5 g"'),
+    ("8 x 60 cm3", "do not know the unit"),
 ]
 
 

@@ -79,6 +79,11 @@ READ = [
     ("1 in 1000 w/v", 0.1, StrengthUnit.WV),
     ("1:1000 w/v", 0.1, StrengthUnit.WV),
     ("1 in 10 v/v", 10, StrengthUnit.VV),
+    ("1 × 10⁻³ M", 0.001, StrengthUnit.MOLAR),
+    ("2.5 x 10^-2 mol dm⁻³", 0.025, StrengthUnit.MOLAR),
+    ("1x10-3 M", 0.001, StrengthUnit.MOLAR),
+    ("6·10^(-2) M", 0.06, StrengthUnit.MOLAR),
+    ("2 × 10³ ppm m/v", 2000, StrengthUnit.PPM_MV),
 ]
 
 
@@ -118,6 +123,18 @@ REFUSED = [
     ("conc.", "how strong?"),
     ("", "how strong?"),
     ("5 MM", "I do not know"),
+    (".1 M", 'Write "0.1 M"'),
+    (",5 M", 'Write "0.5 M"'),
+    ("½ M", 'Write it with a point, as "0.5 M"'),
+    ("1/10 M", 'Write it with a point, as "0.1 M"'),
+    ("0.1-0.2 M", "a range, and one figure is wanted"),
+    ("0.1 M ± 0.01", "Leave out the ±"),
+    ("1 to 10", 'Write "1 in 10" or "1+10"'),
+    ("1 in 0", 'Write "1 in 10"'),
+    ("N/0", 'Write "N/50"'),
+    ("10 in 1", 'Write "1 in 10"'),
+    ("180 % w/v", "more than 100 % w/v"),
+    ("saturated at 20", 'Write "saturated at 20 °C"'),
 ]
 
 
@@ -127,6 +144,24 @@ def test_a_doubtful_strength_is_refused_with_its_question(text: str, says: str) 
         parse_strength(text, where="nominal")
     assert says in str(caught.value)
     assert f'nominal "{text}"' in caught.value.message
+
+
+@pytest.mark.parametrize(
+    ("text", "hint"),
+    [
+        ("5 %", 'Write "5 % w/v", "5 % w/w" or "5 % v/v".'),
+        ("5 per cent", 'Write "5 % w/v", "5 % w/w" or "5 % v/v".'),
+        ("1000 ppm of it", 'Write "1000 ppm m/v of it" or "1000 ppm m/m of it".'),
+        ("12 % available chlorine",
+         'Write "12 % w/v available chlorine" or "12 % w/w available chlorine".'),
+    ],
+)  # fmt: skip
+def test_the_question_which_shows_the_whole_strength_as_it_may_be_written(
+    text: str, hint: str
+) -> None:
+    with pytest.raises(BadAmount) as caught:
+        parse_strength(text)
+    assert caught.value.hint == hint
 
 
 def test_a_strength_remembers_how_it_was_written() -> None:

@@ -32,6 +32,7 @@ from stockroom.keeping.record import Check, CheckKind
 from stockroom.keeping.rules import Law, Origin, Rule, RuleKind
 from stockroom.keeping.strength import strengths_on
 from stockroom.keeping.verdict import verdict
+from stockroom.measure.periods import Period
 from stockroom.planning.cautious import with_caution
 from stockroom.planning.decisions import Outcome
 from stockroom.planning.facts import Bottle, Closeness, Facts
@@ -223,6 +224,15 @@ def test_the_reason_says_at_least_and_not_expected() -> None:
     plain = replace(facts, bottles=(OFTEN,), lower_limits=None)
     assert "at least 0.82" in reasons(plan(facts), "K01.1")
     assert "expected 0.836" in reasons(plan(plain), "K01.1")
+
+
+def test_what_is_past_tells_what_is_expected_and_not_the_limit() -> None:
+    line = replace(STOCK, rules=(FADES, Rule(RuleKind.RECHECK, Period(14, "days"))))
+    checked_ago = checked("S05", ("2026-12-10", 0.9), line=line)
+    facts = house([line], bottles=[checked_ago, replace(OFTEN, left=0)])
+    told = [plan(each).past[0].decided_by for each in (facts, with_caution(facts, facts.bottles))]
+    assert "expected 0.867 mol/dm³" in told[0]
+    assert told[1] == told[0]
 
 
 def test_why_tells_all_four_strengths() -> None:

@@ -136,13 +136,16 @@ def shelved(*groups: tuple[str, str], meant_for: str = "", **record: Any) -> lis
     return notes(plan(house(lines, bottles=bottles, places=(Place("P1", "P1", 20.0, meant_for),))))
 
 
-PEROXIDE_FIRE = "peroxide beside flammable: fire: move it"
+PEROXIDE_FIRE = "peroxide beside flammable, fire: move"
 
 
 def test_peroxide_beside_a_flammable_is_told_of_both() -> None:
     # common practice, no source
     row = shelved(("peroxide", "P1"), ("flammable", "P1"))
-    assert row == [("B1", PEROXIDE_FIRE), ("B2", PEROXIDE_FIRE)]
+    assert row == [
+        ("B1", f"stands beside B2 in P1: {PEROXIDE_FIRE} one"),
+        ("B2", f"stands beside B1 in P1: {PEROXIDE_FIRE} one"),
+    ]
 
 
 def test_in_two_places_they_are_not_neighbours() -> None:
@@ -150,7 +153,12 @@ def test_in_two_places_they_are_not_neighbours() -> None:
 
 
 def test_a_place_meant_for_the_other_is_told_with_nobody_beside() -> None:
-    assert shelved(("peroxide", "P1"), meant_for="flammable") == [("B1", PEROXIDE_FIRE)]
+    told = f"stands in P1, kept for flammable: {PEROXIDE_FIRE} it"
+    assert shelved(("peroxide", "P1"), meant_for="flammable") == [("B1", told)]
+
+
+def test_bottles_of_which_no_place_is_known_are_not_neighbours() -> None:
+    assert shelved(("peroxide", ""), ("flammable", "")) == []
 
 
 @pytest.mark.parametrize("state", [{"gone": True}, {"not_found": True}])

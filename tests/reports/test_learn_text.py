@@ -51,8 +51,8 @@ def test_bottles_alike_are_told_as_one_line_with_the_published_life() -> None:
 
 
 def test_of_one_line_no_bottle_is_named_the_worst() -> None:
-    assert "does:" not in told(taught(TABLE_IV))
-    assert "as b5 does:" in told(taught(TABLE_VI))
+    assert "decides" not in told(taught(TABLE_IV))
+    assert "; b5, which falls below it first, decides." in told(taught(TABLE_VI))
 
 
 def test_separate_lines_say_whose_scatter_and_what_the_other_gives() -> None:
@@ -60,7 +60,7 @@ def test_separate_lines_say_whose_scatter_and_what_the_other_gives() -> None:
     # LeBlond 2011 table IX 15.6, JMP 12.0.1 15.84 (a+b)
     assert "Keep it 15 days (2.1 weeks)" in text
     assert "own lines, one scatter" in text
-    assert "15.6 days with one scatter for all; with each bottle's own 15.8 days, as b8" in text
+    assert "15.6 days with one scatter for all; with each bottle's own 15.8 days, and b8" in text
 
 
 def test_as_data_both_lives_are_exact() -> None:

@@ -63,8 +63,9 @@ def test_an_order_in_time_says_nothing_of_lateness() -> None:
     assert "late by" not in plan_text(replace(PLAN, orders=(order,)), 80)
 
 
-def test_a_caution_is_printed_once_a_day() -> None:
-    assert plan_text(PLAN, 120).count(ACID_FIRST) == 1
+def test_every_make_carries_its_own_caution() -> None:
+    # two makes of one day: whoever makes the second has not read the first
+    assert plan_text(PLAN, 120).count(ACID_FIRST) == 2
 
 
 def test_a_booking_tells_its_outcomes_and_its_needs() -> None:

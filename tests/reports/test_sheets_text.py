@@ -11,7 +11,6 @@ from sample_plan import NEEDS, PERMANGANATE, PLAN, HandReadiness, cubic
 
 from stockroom.measure.amounts import Kind
 from stockroom.planning.decisions import Draw, Plan
-from stockroom.reports.bench_text import bench_json, bench_text
 from stockroom.reports.buying_text import buying_text
 from stockroom.reports.makes_text import fresh_text
 from stockroom.reports.past_text import past_text
@@ -104,12 +103,3 @@ def test_five_reasons_stay_five_lines() -> None:
     reasons = tuple("word " * 40 for _ in range(5))
     assert len(why_text(reasons).splitlines()) == 5
     assert why_text(reasons, practice=True).startswith("PRACTICE\n")
-
-
-def test_a_bench_sum_gives_its_answer_first() -> None:
-    assert bench_text("6.16 cm3 of B01", ("density 1.1",)) == "6.16 cm³ of B01\n  density 1.1"
-
-
-def test_a_bench_sum_is_a_number_with_its_unit() -> None:
-    data = bench_json(6.1579123, "cm3", "words", (), practice=False)
-    assert (data["value"], data["unit"]) == (6.15791, "cm3")

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import pytest
 
-from stockroom.safety.cautions import HOUSE_LINE, cautions_for
+from stockroom.safety.cautions import HOUSE_LINE
+from stockroom.safety.group_cautions import cautions_for
 
 
 @pytest.mark.parametrize(

@@ -43,6 +43,7 @@ def test_all_eighteen_are_held() -> None:
         (Goes("hydrochloric acid", "acid", strong=True), 9, Step.OPEN, "pressure"),
         (Goes("bromine", "oxidiser"), 10, Step.OPEN, "thiosulfate"),
         (Goes("sodium thiosulfate"), 10, Step.USE, "sulfur dioxide"),
+        (Goes("sodium disulfite", solid=True), 10, Step.USE, "asthma"),
         (Goes("ethanoic acid", "flammable", strong=True), 11, Step.OPEN, "freezes"),
         (Goes("ethanol", "flammable"), 12, Step.MIX, "no flame"),
         (Goes("ethanol", "flammable"), 12, Step.USE, "splint"),
@@ -80,10 +81,42 @@ def test_a_caution_is_not_said_of_another_form_or_strength(thing: Goes, number: 
     assert number not in numbers(thing)
 
 
+BLEACH = Goes("sodium hypochlorite", "hypochlorite")
+
+
 def test_what_the_house_has_said_is_not_said_again() -> None:
-    bleach = [Goes("sodium hypochlorite", "hypochlorite")]
-    said = ("Never with acid (chlorine) nor with ammonia (chloramines)", "Vented cap")
-    assert not {4, 5} & {each.number for each in cautions_about(bleach, said=said)}
+    said = (
+        "Never with acid (chlorine) nor with ammonia (chloramines)",
+        "Vented cap, dark and cold, not to the brim, nothing returned, nothing metal",
+    )
+    assert not {4, 5} & {each.number for each in cautions_about([BLEACH], said=said)}
+
+
+def test_of_a_caution_of_several_parts_only_what_was_said_is_left_out() -> None:
+    said = ("Vented cap; never return any to the bottle, no metal scoops",)
+    (left,) = (each for each in cautions_about([BLEACH], said=said) if each.number == 4)
+    assert left.text == "Cool and dark, never filled to the brim."
+
+
+def test_the_parts_of_a_caution_are_its_text() -> None:
+    (whole,) = (each for each in CAUTIONS if each.parts)
+    assert all(words in whole.text.casefold() for _, words in whole.parts)
+
+
+@pytest.mark.parametrize(("percent", "said"), [(89.9, set()), (90.0, {11, 12}), (99.5, {11, 12})])
+def test_weak_ethanoic_acid_neither_freezes_nor_burns(percent: float, said: set[int]) -> None:
+    acid = Goes("ethanoic acid", "flammable", strong=True, percent=percent)
+    assert numbers(acid) & {11, 12} == said
+
+
+def test_at_the_bench_the_class_hears_of_flames_and_of_peroxides() -> None:
+    found = cautions_about([Goes("cyclohexene", "flammable")], steps=(Step.USE, Step.WASTE))
+    assert [(each.step, each.number) for each in found] == [(Step.USE, 7), (Step.USE, 12)]
+
+
+def test_a_caution_of_two_steps_is_said_once() -> None:
+    found = [each for each in cautions_about([Goes("bromine")]) if each.number == 10]
+    assert [each.step for each in found] == [Step.OPEN]
 
 
 def test_a_make_shows_the_steps_of_making_alone() -> None:

@@ -9,7 +9,7 @@ from __future__ import annotations
 import pytest
 from limits_held import classed, codes, of
 
-from stockroom.safety.clp import NOT_ENTERED, PH_RULE, classify
+from stockroom.safety.clp import METALS_RULE, NOT_ENTERED, PH_RULE, classify
 from stockroom.safety.limits import Ingredient
 
 # substance, %, statements, pictograms, signal word, and the mark of the limits behind them
@@ -132,6 +132,17 @@ def test_the_ph_that_nobody_holds_is_said() -> None:
     assert PH_RULE in classed(("sodium hydroxide", 0.4)).notes
     assert PH_RULE not in classed(("sodium hydroxide", 3)).notes
     assert PH_RULE not in classed(("sodium chloride", 3)).notes
+
+
+@pytest.mark.parametrize(
+    ("group", "percent", "told"),
+    [("acid", 7.0, True), ("alkali", 0.4, True), ("acid", 0.05, False), ("general", 7.0, False)],
+)
+def test_corrosion_of_metals_is_said_to_be_looked_up(
+    group: str, percent: float, told: bool
+) -> None:
+    found = classify([of("hydrochloric acid", percent, group)])
+    assert (METALS_RULE in found.notes) is told
 
 
 def test_what_only_transport_rules_say_is_a_note() -> None:

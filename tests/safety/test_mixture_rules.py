@@ -94,6 +94,11 @@ def test_a_single_poison_has_the_edges_that_follow_from_its_category(
     assert code not in made_of((0.94 * edge, row))
 
 
+@pytest.mark.parametrize("code", ["H302", "H312", "H332"])
+def test_without_a_route_the_statement_says_how_a_poison_gets_in(code: str) -> None:
+    assert made_of((100.0, Limit("Acute Tox. 4", code))) == (code,)
+
+
 def test_poisons_add_up_by_their_estimates() -> None:
     """100/ATE = 10/100 + 20/500 gives 714 mg/kg: harmful."""
     parts = [(10.0, oral(3, 100)), (20.0, oral(4, 500))]

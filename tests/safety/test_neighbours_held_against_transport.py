@@ -11,7 +11,14 @@ from itertools import combinations
 
 import pytest
 
-from stockroom.safety.neighbours import GROUPS, RULINGS, kinds_of, not_checked, wrong_neighbours
+from stockroom.safety.neighbours import (
+    GROUPS,
+    RULINGS,
+    Stands,
+    kinds_of,
+    not_checked,
+    wrong_neighbours,
+)
 
 CLASSES = "2.1 3 4.1 4.3 5.1 6.1 8".split()
 OLDER_TABLE = """
@@ -84,10 +91,20 @@ def test_every_pair_has_its_reason_its_source_and_its_mark() -> None:
         ("water-reactive", "alkali", "hydrogen"),
         ("oxidiser", "peroxide former", "fire"),
         ("hypochlorite", "ammonia", "chloramines"),
+        ("hypochlorite", "ammonium salt", "chloramines"),
+        ("hypochlorite", "thiocyanate", "toxic gas"),
+        ("acid", "sulfite", "sulfur dioxide"),
+        ("organic acid", "sulfite", "sulfur dioxide"),
+        ("acid", "fluoride", "hydrogen fluoride"),
+        ("acid", "hexacyanoferrate", "hydrogen cyanide"),
+        ("oxidising acid", "oxidiser", "explosive gas"),
+        ("chlorate", "ammonium salt", "explosive"),
+        ("halogen", "ammonia", "explosive"),
+        ("alkali metal", "chlorinated solvent", "explosion"),
     ],
 )
 def test_what_must_stand_apart_is_told_with_its_reason(one: str, other: str, reason: str) -> None:
-    (found,) = wrong_neighbours([("B1", one, other)])
+    (found,) = wrong_neighbours([Stands("B1", (one,), "A1", other)])
     assert reason in found.text
 
 
@@ -96,6 +113,21 @@ def test_a_substance_may_react_as_more_than_its_group() -> None:
     assert kinds_of("ethanoic acid", "flammable") == ("flammable", "organic acid")
     assert kinds_of("cyclohexene", "flammable") == ("flammable",)
     assert kinds_of("benzyl alcohol", "general") == ("general", "peroxide former")
+
+
+@pytest.mark.parametrize(
+    ("substance", "group", "also"),
+    [
+        ("sodium disulfite", "general", "sulfite"),
+        ("sodium fluoride", "toxic", "fluoride"),
+        ("iodine", "oxidiser", "halogen"),
+        ("ammonium chloride", "general", "ammonium salt"),
+        ("potassium chlorate", "oxidiser", "chlorate"),
+        ("dichloromethane", "toxic", "chlorinated solvent"),
+    ],
+)
+def test_what_its_group_does_not_say_its_name_does(substance: str, group: str, also: str) -> None:
+    assert kinds_of(substance, group) == (group, also)
 
 
 def test_a_group_nobody_has_a_rule_for_is_not_checked() -> None:
@@ -110,4 +142,6 @@ def test_groups_with_rules_and_plain_places_are_passed_over() -> None:
 
 
 def test_one_reason_is_told_once() -> None:
-    assert len(wrong_neighbours([("B1", "acid", "alkali"), ("B1", "acid", "alkali")])) == 1
+    # an acid cupboard, and an acid in it
+    shelf = [Stands("B1", ("alkali",), "A1", "acid"), Stands("B2", ("acid",), "A1", "acid")]
+    assert [found.subject for found in wrong_neighbours(shelf)] == ["B1", "B2"]

@@ -102,20 +102,35 @@ def test_opening_never_lengthens_the_time(cls: str, stabilised: bool) -> None:
     assert opened.months <= closed.months
 
 
-# members as on the lists of three universities (a); methyl tert-butyl ether from memory (c)
+# members as on the lists of three universities (a); cyclohexanol, cyclopentene,
+# 4-methylpentan-2-ol and methyl tert-butyl ether (c)
 @pytest.mark.parametrize(
     ("substance", "cls"),
     [
         ("diisopropyl ether", "A"),
         ("cyclohexene", "B"),
         ("propan-2-ol", "B"),
+        ("cyclohexanol", "B"),
         ("styrene", "C"),
         ("methyl tert-butyl ether", "D"),
         ("ethanol", ""),
+        ("cyclopentene", "B"),
+        ("4-methylpentan-2-ol", "B"),
+        ("Ethyl  vinyl ether", "B"),
+        ("butadiene", "C"),
     ],
 )
 def test_a_substance_has_the_class_of_the_lists(substance: str, cls: str) -> None:
     assert class_of(substance) == cls
+
+
+@pytest.mark.parametrize("name", ["butadiene", "chloroprene", "tetrafluoroethylene"])
+def test_a_monomer_kept_as_a_liquid_is_of_class_a(name: str) -> None:
+    assert (class_of(name), class_of(name, liquid=True)) == ("C", "A")
+
+
+def test_no_other_class_depends_on_that() -> None:
+    assert class_of("styrene", liquid=True) == "C"
 
 
 def test_a_class_that_is_none_is_refused() -> None:

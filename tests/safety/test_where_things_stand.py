@@ -4,32 +4,70 @@ from __future__ import annotations
 
 import pytest
 
-from stockroom.safety.neighbours import APART, tight_caps, wrong_neighbours
+from stockroom.safety.neighbours import APART, Stands, tight_caps, wrong_neighbours
 
 
-def test_bleach_in_the_acid_cupboard_is_found() -> None:
+def told(*shelf: tuple[str, str], meant_for: str = "", place: str = "A1") -> list[tuple[str, str]]:
+    """What is found on bottles of these groups in one place."""
+    row = [Stands(bottle, (group,), place, meant_for) for bottle, group in shelf]
+    return [(found.subject, found.text) for found in wrong_neighbours(row)]
+
+
+def test_neighbours_are_named_with_their_place_and_the_reason() -> None:
+    # "a": the Univ. of Notre Dame page
+    assert told(("B01", "acid"), ("B14", "alkali")) == [
+        ("B01", "stands beside B14 in A1: acid beside alkali, heat if they meet: move one"),
+        ("B14", "stands beside B01 in A1: acid beside alkali, heat if they meet: move one"),
+    ]
+
+
+def test_bleach_in_the_acid_cupboard_is_found_with_nobody_beside() -> None:
     # common practice, no source
-    (found,) = wrong_neighbours([("B04", "hypochlorite", "acid")])
-    assert (found.subject, found.text) == (
-        "B04",
-        "bleach beside acid: chlorine if they meet: move it",
-    )
+    assert told(("B04", "hypochlorite"), meant_for="acid") == [
+        ("B04", "stands in A1, kept for acid: bleach beside acid, chlorine if they meet: move it")
+    ]
+
+
+def test_where_the_place_says_who_is_wrong_that_one_is_moved() -> None:
+    bleach, acid = told(("B04", "hypochlorite"), ("B13", "acid"), meant_for="acid")
+    assert bleach[1].startswith("stands beside B13 in A1, kept for acid: bleach")
+    assert bleach[1].endswith("move it")
+    assert acid[1].endswith("move the other")
+
+
+def test_of_many_neighbours_four_are_named() -> None:
+    row = told(("B1", "acid"), *((f"B{n}", "alkali") for n in range(2, 8)))
+    assert row[0][1].startswith("stands beside B2, B3, B4, B5 and 2 more in A1")
 
 
 @pytest.mark.parametrize("pair", sorted(map(sorted, APART)))
 def test_it_does_not_matter_which_of_the_two_was_there_first(pair: list[str]) -> None:
     one, other = pair
-    assert len(wrong_neighbours([("B1", one, other), ("B2", other, one)])) == 2
+    assert len(told(("B1", one), ("B2", other))) == len(told(("B2", other), ("B1", one))) == 2
+
+
+def test_in_two_places_they_are_not_neighbours() -> None:
+    assert wrong_neighbours([Stands("B1", ("acid",), "A1"), Stands("B2", ("alkali",), "A2")]) == []
 
 
 @pytest.mark.parametrize(("group", "beside"), [("acid", "acid"), ("acid", ""), ("salt", "acid")])
 def test_good_and_unknown_neighbours_are_passed_over(group: str, beside: str) -> None:
-    assert wrong_neighbours([("B1", group, beside)]) == []
+    assert told(("B1", group), ("B2", beside), meant_for=beside) == []
 
 
 def test_findings_come_in_the_order_of_the_shelf() -> None:
-    shelf = [("B2", "acid", "alkali"), ("B3", "acid", "acid"), ("B1", "alkali", "acid")]
-    assert [found.subject for found in wrong_neighbours(shelf)] == ["B2", "B1"]
+    row = told(("B2", "acid"), ("B3", "salt"), ("B1", "alkali"))
+    assert [subject for subject, _ in row] == ["B2", "B1"]
+
+
+def test_of_two_reasons_both_are_told() -> None:
+    row = [Stands("B1", ("alkali", "ammonia"), "A1"), Stands("B2", ("acid",), "A1")]
+    row.append(Stands("B3", ("hypochlorite",), "A1"))
+    said = [found.text for found in wrong_neighbours(row) if found.subject == "B1"]
+    assert [text.split(": ")[0] for text in said] == [
+        "stands beside B2 in A1",
+        "stands beside B3 in A1",
+    ]
 
 
 def test_a_tight_cap_is_found_only_where_gas_is_made() -> None:

@@ -17,6 +17,7 @@ CACHED = (
     bench_tables.lines,
     bench_tables.other_names,
     bench_tables.formulas,
+    bench_tables.names,
     bench_names._shipped_lines,
 )
 
@@ -76,3 +77,39 @@ def test_two_forms_on_ones_own_shelf_are_asked_about() -> None:
 def test_ones_own_jar_stands_before_what_others_keep() -> None:
     jar = Stuff("my thiosulfate", "sodium thiosulfate", Form.SOLID, 248.18)
     assert solid("hypo", [jar]) is jar
+
+
+@pytest.mark.parametrize(
+    ("of", "name"),
+    [
+        ("glacial acetic acid", "ethanoic acid, glacial"),
+        ("copper sulphate pentahydrate", "copper(II) sulfate pentahydrate"),
+        ("aluminium nitrate nonahydrate", "Al(NO3)3.9H2O"),
+        ("(COOH)2·2H2O", "oxalic acid dihydrate"),
+        ("CH3COOH", "ethanoic acid"),
+        ("C6H12O6", "C6H12O6"),
+    ],
+)
+def test_another_spelling_finds_the_same_thing(of: str, name: str) -> None:
+    assert solute(of).name == name
+
+
+@pytest.mark.parametrize("of", ["", "  "])
+def test_nothing_is_no_name(of: str) -> None:
+    with pytest.raises(BadInput, match="of what"):
+        solute(of)
+
+
+@pytest.mark.parametrize(
+    ("of", "hint"),
+    [("kmno4", "KMnO4 is potassium permanganate"), ("B03", "Is B03 a bottle?")],
+)
+def test_a_slip_is_answered_with_what_was_meant(of: str, hint: str) -> None:
+    with pytest.raises(UnknownName) as caught:
+        solid(of)
+    assert hint in caught.value.hint
+
+
+def test_ones_own_spelling_stands_before_ours() -> None:
+    jar = Stuff("sodium thiosulphate", "sodium thiosulfate", Form.SOLID, 248.18)
+    assert solid("sodium thiosulphate", [jar]) is jar

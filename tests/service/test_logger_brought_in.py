@@ -12,7 +12,7 @@ import pytest
 
 from stockroom.errors import BadDate, BadInput, NotAllowed, StockroomError, UnknownName
 from stockroom.keeping.strength import strengths_on
-from stockroom.service.logger import Meant, bring_in, held
+from stockroom.service.logger import Meant, bring_in, held, taken_back
 from stockroom.store.snapshot import facts
 
 TODAY = date(2027, 2, 1)
@@ -162,7 +162,7 @@ def test_who_brought_which_file_stays_on_record(own: Path, write: Write) -> None
     with sqlite3.connect(own) as link:
         rows = link.execute("SELECT row_key, after, by FROM row_change").fetchall()
     assert [(place, by) for place, _, by in rows] == [("F1", "T1")]
-    assert rows[0][1].endswith(".csv: 1 readings")
+    assert rows[0][1].endswith(".csv: 1 reading, 2027-01-04 00:00 to 2027-01-04 00:00")
 
 
 def test_what_is_held_is_looked_at_by_days(own: Path, write: Write) -> None:
@@ -209,3 +209,43 @@ def test_a_picture_of_an_earlier_day_knows_no_later_reading(own: Path, write: Wr
     before = expected(own, "B05a", date(2027, 1, 10))
     brought(own, "H1", write(*[40.0] * 48, first=datetime(2027, 1, 12)))
     assert expected(own, "B05a", date(2027, 1, 10)) == before
+
+
+def back(store: Path, place: str, first: date, last: date) -> None:
+    taken_back(store, place, first, last, why="of H2", today=TODAY, by="T1")
+
+
+def test_what_was_taken_back_no_longer_ages_a_bottle(own: Path, write: Write) -> None:
+    before = expected(own, "B05a", date(2027, 1, 31))
+    brought(own, "H1", write(*[45.0] * 24 * 7))
+    assert expected(own, "B05a", date(2027, 1, 31)) < before
+    back(own, "H1", FIRST.date(), date(2027, 1, 31))
+    assert expected(own, "B05a", date(2027, 1, 31)) == before
+
+
+def test_what_was_taken_back_is_kept_beside(own: Path, write: Write) -> None:
+    brought(own, "F1", write(5, 6, 7))
+    back(own, "F1", FIRST.date(), FIRST.date())
+    assert rows_held(own) == 0
+    with sqlite3.connect(own) as link:
+        kept = link.execute("SELECT at, centi, change_id FROM reading_taken_back").fetchall()
+        (change,) = link.execute("SELECT id FROM row_change").fetchall()[-1]
+    assert [row[1:] for row in kept] == [(500, change), (600, change), (700, change)]
+
+
+def test_only_the_days_named_and_the_place_named_are_taken_back(own: Path, write: Write) -> None:
+    for place in ("F1", "H1"):
+        brought(own, place, write(*[20.0] * 72))
+    back(own, "F1", date(2027, 1, 5), date(2027, 1, 5))
+    found = held(own, "F1").summary
+    assert found is not None
+    assert found.count == 48
+    assert rows_held(own) == 48 + 72
+
+
+def test_a_reading_taken_back_twice_is_kept_twice(own: Path, write: Write) -> None:
+    for _ in range(2):
+        brought(own, "F1", write(5))
+        back(own, "F1", FIRST.date(), FIRST.date())
+    with sqlite3.connect(own) as link:
+        assert link.execute("SELECT count(*) FROM reading_taken_back").fetchone() == (2,)

@@ -19,6 +19,7 @@ from stockroom.service.work import working
 if TYPE_CHECKING:
     from collections.abc import Callable
 
+
 # B29 was opened on 2026-09-02: test or discard by 2027-03-02 (scenario, class B, 6 months)
 GOOD, PAST = date(2027, 2, 10), date(2027, 3, 10)
 SAID = NOT_TO_BE_TOUCHED[0].upper() + NOT_TO_BE_TOUCHED[1:]

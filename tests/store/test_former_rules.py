@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import csv
 from datetime import date
 from typing import TYPE_CHECKING
 
@@ -9,10 +10,14 @@ import pytest
 
 from stockroom.keeping.record import Record
 from stockroom.keeping.rules import Origin, Rule, RuleKind
-from stockroom.keeping.verdict import Condition, verdict
+from stockroom.keeping.verdict import Condition, limits_of, verdict
 from stockroom.measure.periods import Period
 from stockroom.planning.facts import Form
-from stockroom.store.former_rules import with_former_rules
+from stockroom.safety.peroxide_formers import class_of
+from stockroom.service.database import new_store, seeds_folder, starter_folder
+from stockroom.store.former_rules import former_class, formers_of, with_former_rules
+from stockroom.store.reading import reading
+from stockroom.store.snapshot_lines import lines_of
 
 if TYPE_CHECKING:
     from pathlib import Path
@@ -33,7 +38,8 @@ def lasts(rules: tuple[Rule, ...]) -> dict[str, tuple[str, int]]:
     [
         ("A", {"opened": ("life", 3), "received": ("life", 6)}),
         ("B", {"opened": ("test or discard", 6), "received": ("test or discard", 12)}),
-        ("C", {"received": ("test or discard", 12)}),
+        # counted from receipt, opened or not; from opening where no day of receipt is known
+        ("C", {"opened": ("test or discard", 12), "received": ("test or discard", 12)}),
         ("D", {"opened": ("test or discard", 6), "received": ("test or discard", 6)}),
         ("", {}),
         ("Z", {}),
@@ -59,6 +65,60 @@ def test_a_quality_date_is_no_safety_date() -> None:
 
 def test_a_solution_of_a_former_is_left_out() -> None:
     assert with_former_rules((), "B", Form.SOLUTION) == ()
+
+
+def test_class_c_opened_on_a_known_day_and_received_on_none_still_goes_past() -> None:
+    opened = Record(opened=date(2026, 1, 5))
+    rules = with_former_rules((), "C", Form.LIQUID)
+    assert verdict(opened, rules, date(2027, 1, 5)).condition is not Condition.PAST
+    assert any(x.until == date(2027, 1, 5) for x in limits_of(opened, rules, date(2027, 1, 6)))
+
+
+# -- which substance is one ---------------------------------------------------------------
+
+
+@pytest.mark.parametrize(
+    ("names", "written", "cls"),
+    [
+        (["THF"], "", "B"),
+        (["ether"], "", "B"),
+        (["isopropanol"], "", "B"),
+        (["MTBE"], "", "D"),
+        (["no. 7", "vinylbenzene"], "", "C"),
+        # the house's own word comes first
+        (["isopropanol"], "d", "D"),
+        (["house mixture"], "A", "A"),
+        (["petroleum ether"], "", ""),
+        (["water", ""], "", ""),
+    ],
+)
+def test_any_name_of_the_tables_finds_the_class(names: list[str], written: str, cls: str) -> None:
+    assert former_class(names, written) == cls
+
+
+def test_the_shipped_tables_and_the_lists_say_the_same() -> None:
+    with (seeds_folder() / "starter" / "substances.csv").open(encoding="utf-8") as file:
+        rows = list(csv.DictReader(file))
+    assert [r["substance"] for r in rows if class_of(r["substance"]) != r["peroxide_former"]] == []
+
+
+def test_a_store_finds_them_by_its_own_other_names(stockroom: Stockroom, own: Path) -> None:
+    by = ("--by", "T1")
+    stockroom("add", "substances", "substance=solvent 4", "other_names=oxolane", *by, store=own)
+    stockroom("add", "lines", "item=S4", "substance=solvent 4", "form=liquid", *by, store=own)
+    with reading(own) as reader:
+        assert formers_of(reader) == {"S4": "B", "cyclohexene, unstabilised": "B"}
+
+
+def test_every_former_of_the_starter_house_has_its_dates_opened_and_closed(
+    tmp_path: Path,
+) -> None:
+    new_store(tmp_path / "starter.sqlite", tables=starter_folder())
+    with reading(tmp_path / "starter.sqlite") as reader:
+        lines, formers = lines_of(reader), formers_of(reader)
+    kept = [lines[key] for key in formers if lines[key].form is not Form.SOLUTION]
+    assert "cyclohexene" in {line.key for line in kept}
+    assert all({"opened", "received"} <= set(lasts(line.rules)) for line in kept)
 
 
 @pytest.mark.parametrize(
