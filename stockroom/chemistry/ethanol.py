@@ -69,6 +69,7 @@ def mass_from_vol(percent_vol: float) -> float:
     93.84
     """
     _checked(percent_vol)
+    # by halving: the density is a table's polynomial in % by mass, with no inverse
     weak, strong = _WATER, _PURE
     for _ in range(_HALVINGS):
         middle = (weak + strong) / 2
@@ -119,6 +120,7 @@ def dilute(volume_cm3: float, wanted_vol: float, stock_vol: float) -> WaterToAdd
     positive(volume_cm3, "volume", "cm³")
     positive(_checked(wanted_vol), "strength", "% v/v")
     _checked(stock_vol)
+    # a strength worked out twice may differ from itself in a float's last bits
     if wanted_vol > stock_vol * (1 + _SAME):
         raise NotAllowed(
             f"Cannot reach {wanted_vol:g} % v/v from {stock_vol:g} % v/v.",

@@ -11,6 +11,10 @@ from stockroom.measure.reading import quote
 
 # the hydrate's dot, as labels, keyboards and copied pages have it
 _DOTS = re.compile(r" *[.*·•∙⋅] *")
+# half molecules of water: NFKC takes "½" apart into 1, a fraction slash and 2
+_HALVES = re.compile(
+    r" *[.*·•∙⋅] *(?:(?P<whole>[0-9]{1,2})[.,]5|(?P<before>[1-9]?)1[/⁄]2) *H2O *$"  # noqa: RUF001
+)
 _PART = re.compile(r"(?P<times>[1-9][0-9]{0,2})? ?(?P<units>[^0-9].*)")
 _SPELT = re.compile(r"(?:[A-Z][a-z]?(?:[1-9][0-9]{0,3})?|[(\[]|[)\]](?:[1-9][0-9]{0,3})?)*")
 _PAIR = re.compile(r"\([^()\[\]]*\)|\[[^()\[\]]*\]")
@@ -28,7 +32,8 @@ def molar_mass(formula: str) -> float:
     """The molar mass of a formula in g/mol, at the usual isotope mixture.
 
     Hydrates may be written CuSO4·5H2O, CuSO4*5H2O or CuSO4.5H2O: a number after
-    the dot multiplies what follows. Subscripts are read as digits.
+    the dot multiplies what follows. Subscripts are read as digits. Of water alone there may
+    be a half more: CaSO4·½H2O, CaSO4.0.5H2O, CaSO4.1/2H2O.
     Raises: BadAmount, quoting it, for anything but element symbols, counts and
     brackets: names, charges, isotopes, "EtOH", and a number in front ("2H2O").
     Source: NIST isotopic masses and abundances, through molmass.
@@ -38,8 +43,30 @@ def molar_mass(formula: str) -> float:
     """
     if len(formula) > _LONGEST:
         raise BadAmount(f"Formula {quote(formula)}: too long.", _HOW_TO_WRITE)
-    plain = _DOTS.sub(".", unicodedata.normalize("NFKC", formula)).strip()
-    return sum(_mass_of_part(part, n, formula) for n, part in enumerate(plain.split(".")))
+    rest, waters = _halves_off(unicodedata.normalize("NFKC", formula))
+    parts = _DOTS.sub(".", rest).strip().split(".")
+    water = waters * _mass("H2O", formula) if waters else 0.0
+    return water + sum(_mass_of_part(part, n, formula) for n, part in enumerate(parts))
+
+
+def with_halves(formula: str) -> str:
+    """The formula with a half molecule of water written one way: CaSO4.1/2H2O as CaSO4.0.5H2O.
+
+    Every other formula is left as it is.
+
+    >>> with_halves("CaSO4·½H2O")
+    'CaSO4.0.5H2O'
+    """
+    rest, waters = _halves_off(unicodedata.normalize("NFKC", formula))
+    return f"{rest}.{waters:g}H2O" if waters else formula
+
+
+def _halves_off(plain: str) -> tuple[str, float]:
+    """What stands before so many and a half of water, and how many; 0 where there is no half."""
+    found = _HALVES.search(plain)
+    if found is None or not found.start():
+        return plain, 0.0
+    return plain[: found.start()], int(found["whole"] or found["before"] or 0) + 0.5
 
 
 def _mass_of_part(part: str, place: int, formula: str) -> float:
@@ -48,9 +75,7 @@ def _mass_of_part(part: str, place: int, formula: str) -> float:
         raise BadAmount(f'Formula "{formula}": {_what_is_missing(part)}.', _HOW_TO_WRITE)
     if match["times"] and not place:
         # molmass would read "2H2O" as heavy water
-        raise BadAmount(
-            f'Formula "{formula}" begins with a number.', "A number comes only after a dot."
-        )
+        raise BadAmount(f'Formula "{formula}" begins with a number.', _number_last(formula))
     if match["units"] == "H20":
         # twenty hydrogens and nothing else: on a label this is always water
         raise BadAmount(
@@ -61,7 +86,15 @@ def _mass_of_part(part: str, place: int, formula: str) -> float:
     return int(match["times"] or 1) * _mass(match["units"], formula)
 
 
-_HOW_TO_WRITE = "Write it as on the label, such as CuSO4.5H2O; for a half, double all of it."
+_HOW_TO_WRITE = "Write it as on the label, such as CuSO4.5H2O or CaSO4.0.5H2O."
+
+
+def _number_last(formula: str) -> str:
+    first, *others = (part for part in _DOTS.sub(".", formula.strip()).split("."))
+    if not others or any(part.endswith("H2O") for part in others):
+        # twice a hemihydrate would weigh twice as much in a mole
+        return "A number comes only after a dot; write half a water as CaSO4.0.5H2O."
+    return f"A number comes only after a dot: write {'.'.join((*others, first))}."
 
 
 def _what_is_missing(part: str) -> str:

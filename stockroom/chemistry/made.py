@@ -1,5 +1,6 @@
 """How good a strength is that was made: the doubts of balance, glass and bottle together.
 
+The doubts of a mass and of a volume stand here once; titrations take them from here too.
 Everything is a product or a quotient, so no library is loaded and a plan may ask for
 every make. Masses in g, volumes in cm³.
 """
@@ -8,10 +9,10 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
+from typing import TYPE_CHECKING
 
 from stockroom.chemistry.figures import positive
 from stockroom.chemistry.glassware import GlassKind, Ware
-from stockroom.chemistry.steps import Step
 from stockroom.chemistry.uncertainty import (
     Budget,
     Doubt,
@@ -23,6 +24,9 @@ from stockroom.chemistry.uncertainty import (
 )
 from stockroom.chemistry.weighing import Scale
 from stockroom.measure.formats import format_number
+
+if TYPE_CHECKING:
+    from stockroom.chemistry.steps import Step
 
 SWING_C = 4.0
 """How far a room's temperature may be from the 20 °C of the glass. Source: QUAM:2012, A1."""
@@ -63,7 +67,6 @@ def volume_input(
     piece: Ware,
     *,
     fills: int = 1,
-    swing_c: float = SWING_C,
     name: str = "volume",
 ) -> Input:
     """A measured volume, with the doubts of tolerance, filling or reading, and temperature.
@@ -73,8 +76,16 @@ def volume_input(
     Source: EURACHEM/CITAC QUAM:2012, examples A1 and A2; the reading of marks is ours.
     """
     glass = triangular(str(piece.kind), fills * piece.tolerance)
-    warm = rectangular("temperature", volume * swing_c * WATER_PER_C)
-    return Input(name, positive(volume, "volume", "cm³"), (glass, _filling(piece, fills), warm))
+    doubts = (glass, _filling(piece, fills), warmth(volume))
+    return Input(name, positive(volume, "volume", "cm³"), doubts)
+
+
+def warmth(volume: float) -> Doubt:
+    """What a room not quite at 20 °C does to a measured volume, in its own unit.
+
+    Source: EURACHEM/CITAC QUAM:2012, example A1.
+    """
+    return rectangular("temperature", volume * SWING_C * WATER_PER_C)
 
 
 def assay_input(assay: float, limit: float = 0.0) -> Input:
@@ -93,6 +104,7 @@ def made(strength: float, steps: Sequence[Step], others: Sequence[Input] = ()) -
     the assay, the molar mass, the stock solution as its own budget's `as_input`.
     Raises: BadAmount for a figure not above 0.
 
+    >>> from stockroom.chemistry.steps import Step
     >>> by_flask = Step(12.41, 500, Scale("balance", 0.01))
     >>> f"{made(0.1000, [by_flask]).standard:.1e}"
     '3.3e-05'

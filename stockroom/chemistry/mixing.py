@@ -222,6 +222,7 @@ def _share(wanted: float, first: float, second: float, unit: str) -> float:
             f"Cannot reach {format_strength(wanted, unit)} from {ends}: it must lie between.",
             "Mixing makes nothing stronger than the stronger, nor weaker than the weaker.",
         )
+    # two equal strengths mix to themselves in any proportion: all of the first, and no 0 / 0
     if high - low <= slack:
         return 1.0
     return min(max((wanted - second) / (first - second), 0.0), 1.0)

@@ -13,6 +13,7 @@ from dataclasses import dataclass
 
 from stockroom.chemistry.figures import positive
 from stockroom.chemistry.glassware import Ware
+from stockroom.chemistry.made import volume_input, warmth
 from stockroom.chemistry.reactions import Titration
 from stockroom.chemistry.uncertainty import (
     Budget,
@@ -36,9 +37,6 @@ FACTORS, REPEATABILITY = (0.90, 1.10), 0.002
 Source: British Pharmacopoeia, appendix on volumetric solutions, as seen in a reprint; that
 the 0.2 % is a relative standard deviation is from memory.
 """
-
-EXPANSION_PER_C, SWING_C = 2.1e-4, 4.0
-"""Of water per °C, and how far the room may be from 20 °C. Source: QUAM:2012, example A1."""
 
 _AGREE = 2
 _CM3_PER_DM3 = 1000.0
@@ -144,7 +142,7 @@ class Titres:
             mean,
             (
                 triangular("burette", self.burette.tolerance),
-                _warmth(mean),
+                warmth(mean),
                 self._end_point(),
             ),
         )
@@ -166,12 +164,12 @@ class Measured:
     ware: Ware
 
     def as_input(self, name: str) -> Input:
-        """The volume, named so, with its doubts: the glass and the room.
+        """The volume, named so, with its doubts: the glass, its filling or reading, the room.
 
+        The rule is that of what is made, `made.volume_input`: one flask, one doubt.
         Raises: BadAmount not above 0.
         """
-        volume = positive(self.cm3, name, "cm³")
-        return Input(name, volume, (triangular("glass", self.ware.error), _warmth(volume)))
+        return volume_input(positive(self.cm3, name, "cm³"), self.ware, name=name)
 
 
 @dataclass(frozen=True, slots=True)
@@ -265,7 +263,3 @@ def found_in_burette(reaction: Titration, titres: Titres, *, standard: Standard)
     """
     scale = standard.scale * _CM3_PER_DM3 / reaction.per_titrant
     return quotient(standard.over, (*standard.under, titres.as_input()), scale=scale)
-
-
-def _warmth(volume_cm3: float) -> Doubt:
-    return rectangular("temperature", volume_cm3 * EXPANSION_PER_C * SWING_C)

@@ -60,6 +60,7 @@ def least_by_pharmacopoeia(*, repeatability_g: float | None = None, step_g: floa
     0.3
     """
     found = 0.0 if repeatability_g is None else positive(repeatability_g, "repeatability", "g")
+    # ten equal weighings show a spread of 0, and no balance is as good as that
     floor = USP_FLOOR * positive(step_g, "balance step", "g") if step_g else 0.0
     if not max(found, floor):
         raise BadAmount(
@@ -79,6 +80,7 @@ def batch_to_weigh(mass_g: float, volume_cm3: float, least_g: float) -> tuple[fl
     positive(volume_cm3, "volume", "cm³")
     if mass_g >= positive(least_g, "least mass", "g"):
         return mass_g, volume_cm3
+    # both by one factor, so that the strength stays what it was
     return least_g, volume_cm3 * (least_g / mass_g)
 
 

@@ -27,7 +27,9 @@ Density = Annotated[
 StrengthText = Annotated[
     str, typer.Argument(metavar="STRENGTH", help='With its unit: "100 vol", "0.200 mol/dm3".')
 ]
-Volume = Annotated[str, typer.Argument(metavar="VOLUME", help='How much to make: "2.00 L".')]
+Volume = Annotated[
+    str, typer.Argument(metavar="VOLUME", help='How much to make: "2.00 L", "500 g".')
+]
 
 
 NO_UNITS: Mapping[str, float] = MappingProxyType({"": 1.0})
@@ -96,6 +98,16 @@ def asking_density() -> Iterator[None]:
         if "density" not in missing.message or "--density" in missing.hint:
             raise
         raise MissingFigure(missing.message, f"{missing.hint} Add it as --density.") from None
+
+
+def name_of(of_what: str, shared: Shared, *, weighed: bool = False) -> str:
+    """What was typed after --of; for the number of a bottle the name of what it holds.
+
+    Raises: UnknownName; NotAllowed for a bottle that must not be opened, or weighed from.
+    """
+    from stockroom.service.bench_spelling import name_in
+
+    return name_in(of_what, shared.path, shared.given_day, weighed=weighed)
 
 
 def closeness_of(text: str) -> float:

@@ -13,6 +13,7 @@ from stockroom.cli.bench import (
     asking_density,
     closeness_of,
     density_of,
+    name_of,
     show_sum,
 )
 from stockroom.cli.shared import of
@@ -55,7 +56,7 @@ def dilute(
             text,
             source=source,
             second=second,
-            of=of_what,
+            of=name_of(of_what, shared),
             density=density_of(density, "--density"),
             closeness=closeness_of(closeness) / 100,
             store=shared.path,

@@ -15,6 +15,7 @@ from stockroom.cli.bench import (
     celsius_or_none,
     density_of,
     figure,
+    name_of,
     show_sum,
 )
 from stockroom.cli.shared import of
@@ -26,7 +27,9 @@ def strength(
     of_what: Of,
     to: Annotated[
         str,
-        typer.Option(metavar="UNIT", help='mol/dm3, "% w/w", vol, mol/kg, "N for acid-base"...'),
+        typer.Option(
+            metavar="UNIT", help='mol/dm3, "% w/w", vol, "mg/dm3 as N", "N for acid-base"...'
+        ),
     ],
     density: Density = None,
     pure_density: Annotated[
@@ -59,5 +62,6 @@ def strength(
         figure(gas_volume, "--gas-volume", like="24", units=PER_MOLE),
     )
     with asking_density():
-        turned = convert(text, of=of_what, to=to, given=given, store=shared.path)
+        named = name_of(of_what, shared)
+        turned = convert(text, of=named, to=to, given=given, store=shared.path)
     show_sum(shared, turned)

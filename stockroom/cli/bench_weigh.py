@@ -16,6 +16,7 @@ from stockroom.cli.bench import (
     closeness_of,
     density_of,
     figure,
+    name_of,
     show_sum,
 )
 from stockroom.cli.bench_assay import assay_of
@@ -52,6 +53,8 @@ def weigh(
 ) -> None:
     """The mass to weigh for a volume of solution, whether it can be, and how good it is.
 
+    A mass to make, as "500 g", is answered by mass, with its water.
+
     Example: stockroom weigh "2.00 L" "0.200 mol/dm3" --of "sodium thiosulfate pentahydrate"
     """
     from stockroom.service import bench_weigh
@@ -63,7 +66,7 @@ def weigh(
     asked = Asked(
         amount_of(volume),
         text,
-        of_what,
+        name_of(of_what, shared, weighed=True),
         assay=assay_of(assay),
         step=figure(step, "--step", like="0.01", units=GRAMS),
         closeness_percent=closeness_of(closeness),

@@ -71,7 +71,10 @@ def logger(
     shared, energy = of(ctx), number_or_none(ea, "--ea")
     if take_back:
         if file is not None:
-            raise BadInput(f"--take-back goes by days, and not by {file}.", "Leave the file out.")
+            raise BadInput(
+                f"--take-back goes by days, and not by {file}.",
+                "Leave the file out, and say --from and --to.",
+            )
         _take_back(shared, place, first, last, why)
         return
     if why:

@@ -26,6 +26,14 @@ ANYWHERE = (
 """Printed under the help of every command."""
 
 
+# the options that may be given again, by command; of any other the second would go unseen
+SEVERAL = {
+    "fades": frozenset({"--below"}),
+    "make": frozenset({"--from"}),
+    "titrate": frozenset({"--dilution"}),
+}
+"""The options that take several values, for each command that has one."""
+
 _WITH_VALUE = {"--store": "a path", "--as-at": "a date", "--by": "initials"}
 
 
@@ -76,22 +84,29 @@ def pull(
 
     `value_options` names, for each command, the options that a value follows:
     in `--note --json` the note is "--json". Nothing after `--` is touched.
-    Raises: BadInput when a value is missing or an option is given two values.
+    Raises: BadInput when a value is missing or an option is given two values, but
+    for the options in `SEVERAL`.
     """
     found: dict[str, str] = {}
+    own: dict[str, str] = {}
     left: list[str] = []
     takes: frozenset[str] | None = None
+    several: frozenset[str] = frozenset()
     rest = iter(words)
     for word in rest:
         if word == "--":
             return _shared(found), [*left, word, *rest]
         if word == "--json" or word.partition("=")[0] in _WITH_VALUE:
             _keep(found, word, rest)
-        elif word in (takes or ()):
-            left += [word, *_next(rest)]
+        elif word.partition("=")[0] in (takes or ()):
+            given = [word] if "=" in word else [word, *_next(rest)]
+            _once(own, given, several)
+            left += given
         else:
             # the first word that is no option names the command
-            takes = value_options.get(word, frozenset()) if _names(word, takes) else takes
+            if _names(word, takes):
+                takes = value_options.get(word, frozenset())
+                several = SEVERAL.get(word, frozenset())
             left.append(_shielded(word))
     return _shared(found), left
 
@@ -103,6 +118,17 @@ def _names(word: str, takes: frozenset[str] | None) -> bool:
 def _next(rest: Iterator[str]) -> list[str]:
     value = next(rest, None)
     return [] if value is None else [value]
+
+
+def _once(own: dict[str, str], given: list[str], several: frozenset[str]) -> None:
+    name, _, value = "=".join(given).partition("=")
+    if name not in several:
+        _one_value(own, name, value)
+
+
+def _one_value(found: dict[str, str], name: str, value: str) -> None:
+    if found.setdefault(name, value) != value:
+        raise BadInput(f"{name} is given twice: {found[name]!r} and {value!r}.", "Give one.")
 
 
 def _keep(found: dict[str, str], word: str, rest: Iterator[str]) -> None:
@@ -117,8 +143,7 @@ def _keep(found: dict[str, str], word: str, rest: Iterator[str]) -> None:
         raise BadInput(
             f"{name} wants {_WITH_VALUE[name]} after it{after}.", "See stockroom --help."
         )
-    if found.setdefault(name, value) != value:
-        raise BadInput(f"{name} is given twice: {found[name]!r} and {value!r}.", "Give one.")
+    _one_value(found, name, value)
 
 
 def _shielded(word: str) -> str:

@@ -17,49 +17,58 @@ if TYPE_CHECKING:
     from stockroom.service.titrate import Titrated
 
 
+Reaction = Annotated[
+    str, typer.Argument(metavar="REACTION", help='"thiosulfate on iodate"; none: list them.')
+]
+Titres = Annotated[
+    list[str] | None, typer.Argument(metavar="TITRE...", help="In cm³, as read: 25.30 25.35.")
+]
+Standard = Annotated[
+    str,
+    typer.Option(metavar="WHAT", help='In the flask: "25.00 cm3 of 0.0167 M", "0.1675 g of KHP".'),
+]
+Titrant = Annotated[
+    str, typer.Option(metavar="STRENGTH|BOTTLE", help="In the burette, where that is known.")
+]
+Uncertainty = Annotated[
+    str, typer.Option(metavar="STRENGTH", help="Standard, of the strength that is known.")
+]
+Sample = Annotated[str, typer.Option(metavar="VOLUME", help="The aliquot in the flask.")]
+Dilution = Annotated[
+    list[str] | None,
+    typer.Option(
+        metavar="A to B", help='Of the sample, before: "10 cm3 to 250 cm3"; again for a second.'
+    ),
+]
+Percent = Annotated[
+    str | None, typer.Option(metavar="PERCENT", help="Of what was weighed; else as its line says.")
+]
+Blank = Annotated[str | None, typer.Option(metavar="CM3", help="Taken off every titre.")]
+Within = Annotated[str, typer.Option(metavar="CM3", help="How far apart titres may lie.")]
+Burette = Annotated[str, typer.Option(metavar="CM3", help="Its size.")]
+Glass = Annotated[str, typer.Option(metavar="A|B", help="The class of the glassware.")]
+Bottle = Annotated[str, typer.Option(metavar="BOTTLE", help="Write the result to this bottle.")]
+Sure = Annotated[
+    bool, typer.Option("--sure", help="Keep it though it is far from the label, or unopened.")
+]
+
+
 def titrate(
     ctx: typer.Context,
-    reaction: Annotated[
-        str, typer.Argument(metavar="REACTION", help='"thiosulfate on iodate"; none: list them.')
-    ] = "",
-    titres: Annotated[
-        list[str] | None, typer.Argument(metavar="TITRE...", help="In cm³, as read: 25.30 25.35.")
-    ] = None,
-    standard: Annotated[
-        str,
-        typer.Option(
-            metavar="WHAT", help='In the flask: "25.00 cm3 of 0.0167 M", "0.1675 g of KHP".'
-        ),
-    ] = "",
-    titrant: Annotated[
-        str, typer.Option(metavar="STRENGTH|BOTTLE", help="In the burette, where that is known.")
-    ] = "",
-    uncertainty: Annotated[
-        str, typer.Option(metavar="STRENGTH", help="Standard, of the strength that is known.")
-    ] = "",
-    sample: Annotated[str, typer.Option(metavar="VOLUME", help="The aliquot in the flask.")] = "",
-    dilution: Annotated[
-        list[str] | None,
-        typer.Option(
-            metavar="A to B", help='Of the sample, before: "10 cm3 to 250 cm3"; again for a second.'
-        ),
-    ] = None,
-    assay: Annotated[
-        str | None,
-        typer.Option(metavar="PERCENT", help="Of what was weighed; else as its line says."),
-    ] = None,
-    blank: Annotated[str | None, typer.Option(metavar="CM3", help="Taken off every titre.")] = None,
-    within: Annotated[
-        str, typer.Option(metavar="CM3", help="How far apart titres may lie.")
-    ] = "0.10",
-    burette: Annotated[str, typer.Option(metavar="CM3", help="Its size.")] = "50",
-    glass: Annotated[str, typer.Option(metavar="A|B", help="The class of the glassware.")] = "B",
-    bottle: Annotated[
-        str, typer.Option(metavar="BOTTLE", help="Write the result to this bottle.")
-    ] = "",
-    sure: Annotated[
-        bool, typer.Option("--sure", help="Keep it though it is far from the label, or unopened.")
-    ] = False,
+    reaction: Reaction = "",
+    titres: Titres = None,
+    standard: Standard = "",
+    titrant: Titrant = "",
+    uncertainty: Uncertainty = "",
+    sample: Sample = "",
+    dilution: Dilution = None,
+    assay: Percent = None,
+    blank: Blank = None,
+    within: Within = "0.10",
+    burette: Burette = "50",
+    glass: Glass = "B",
+    bottle: Bottle = "",
+    sure: Sure = False,
     on: Happened = None,
 ) -> None:
     """Titres in, strength out; with --bottle it is written down and the bottle re-dated.
@@ -89,12 +98,24 @@ def titrate(
         dilution=", then ".join(dilution or []),
         assay_percent=label.percent,
         assay_within=label.within,
-        blank_cm3=_cm3(blank or "0", "--blank", like="0.05", zero=True),
-        within_cm3=_cm3(within, "--within", like="0.10"),
-        burette_cm3=_cm3(burette, "--burette", like="50"),
         glass_class=glass,
+        **_cubic(blank, within, burette),
     )
     found = service.titrate(asked, store=shared.path, as_at=shared.given_day)
+    _tell(shared, found, bottle, sure, on)
+
+
+def _cubic(blank: str | None, within: str, burette: str) -> dict[str, float]:
+    return {
+        "blank_cm3": _cm3(blank or "0", "--blank", like="0.05", zero=True),
+        "within_cm3": _cm3(within, "--within", like="0.10"),
+        "burette_cm3": _cm3(burette, "--burette", like="50"),
+    }
+
+
+def _tell(shared: Shared, found: Titrated, bottle: str, sure: bool, on: str | None) -> None:
+    from stockroom.reports import titrate_text as report
+
     if bottle:
         _record(shared, bottle, found, sure, on)
         return

@@ -69,7 +69,10 @@ def read_logger(
     stated = _scale(columns, body, scale)
     dated = list(_dated(body, columns, stated, day_first))
     if not dated:
-        raise BadInput("There is no temperature in the file.", "Is it the right one?")
+        raise BadInput(
+            f"There is no temperature in the file, in none of its {len(body)} rows.",
+            "Bring in the table of readings; where its heading is unusual, name it with --column.",
+        )
     told = [f"{len(body) - len(dated)} rows without a reading left out"] * (len(body) > len(dated))
     dated, turned = _in_order(dated)
     told += ["newest first in the file: turned round"] * turned
@@ -90,7 +93,10 @@ Dated = tuple[int, datetime, float]
 def _table(text: str) -> list[tuple[int, list[str]]]:
     """Row number and cells of each line that is not blank."""
     if "\0" in text:
-        raise BadInput("The file is no table of text.", "Save it as CSV, and not as a workbook.")
+        raise BadInput(
+            f"The file is no table of text: it begins {text[:8]!r}.",
+            "Save it as CSV, and not as a workbook.",
+        )
     lines = text.splitlines()
     # from the end: what a logger's program writes about itself stands on top
     mark = _separator([line for line in lines if line.strip()][-_LOOKED_AT:])
@@ -109,7 +115,10 @@ def _rows(lines: list[str], mark: str) -> Iterator[tuple[int, list[str]]]:
 
 def _separator(lines: list[str]) -> str:
     if not lines:
-        raise BadInput("The file is empty.", "Bring in the table the logger's program writes.")
+        raise BadInput(
+            "The file is empty: 0 lines.",
+            "Bring in the table the logger's program writes.",
+        )
     # a semicolon first: where it stands, the commas are decimal signs
     for mark in ";\t,":
         if sum(mark in line for line in lines) > len(lines) / 2:

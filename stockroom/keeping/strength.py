@@ -6,15 +6,13 @@ from collections.abc import Iterator
 from dataclasses import dataclass, replace
 from datetime import date
 
+from stockroom.chemistry.uncertainty import COVERAGE
 from stockroom.keeping import hypochlorite
 from stockroom.keeping.caution import ONE_SIDED_95, Caution
 from stockroom.keeping.laws import Kinetics, first_below, kinetics, response_of, strength_after
 from stockroom.keeping.record import Check, CheckKind, Record, Stay
 from stockroom.keeping.rules import Origin, Rule, RuleKind
 from stockroom.keeping.temperatures import Stretch
-
-COVERAGE = 2.0
-"""How many standard uncertainties a range reaches to each side: about 95 %. Source: the GUM."""
 
 
 @dataclass(frozen=True, slots=True)

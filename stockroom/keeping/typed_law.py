@@ -129,10 +129,17 @@ def law_typed(typed: Typed) -> Law:
         return _named(typed)
     if typed.order is None or typed.rate is None:
         wanted = "--order" if typed.order is None else "--rate"
-        raise BadInput(f"A law wants its {wanted}.", "As --order 2 --rate 0.0090 --per month.")
+        other = f"--rate {typed.rate:g}" if typed.order is None else f"--order {typed.order}"
+        said = other if typed.rate is not None or typed.order is not None else "neither"
+        raise BadInput(
+            f"A law wants its {wanted}: {said} was said.", "As --order 2 --rate 0.0090 --per month."
+        )
     warmed = typed.factor is not None or typed.energy is not None
     if warmed and typed.at_c is None:
-        raise BadInput("At how many °C is the rate?", "Add --at, as --at 20.")
+        raise BadInput(
+            f"At how many °C is the rate {typed.rate:g} per {typed.per}?",
+            "Add --at, as --at 20.",
+        )
     if typed.to_c is not None and not warmed:
         raise BadInput(
             f"The rate at {typed.at_c or 0:g} °C says nothing of {typed.to_c:g} °C by itself.",
@@ -169,7 +176,9 @@ def _named(typed: Typed) -> Law:
             "It wants only --at, the temperature.",
         )
     if typed.at_c is None and typed.to_c is None:
-        raise BadInput("At how many °C does it stand?", "Add --at, as --at 20.")
+        raise BadInput(
+            f"At how many °C does it stand, by the {typed.named} law?", "Add --at, as --at 20."
+        )
     return law
 
 

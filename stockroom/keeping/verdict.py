@@ -12,6 +12,7 @@ from dataclasses import dataclass, replace
 from datetime import date, timedelta
 from enum import StrEnum
 
+from stockroom.findings import DO_NOT_TOUCH
 from stockroom.keeping.record import Check, CheckKind, Record
 from stockroom.keeping.rules import Origin, Purpose, Rule, RuleKind
 from stockroom.keeping.strength import (
@@ -25,15 +26,12 @@ from stockroom.keeping.strength import (
 from stockroom.keeping.warming import warmed_until, where_it_stood
 from stockroom.measure.periods import add, format_period
 
-NOT_TO_BE_TOUCHED = "do not open or move it; ask"
-"""What every message about a bottle past its safety date says. Source: the job, 7 no. 7."""
-
 WEAK_BELOW = 0.80
 """A bottle is weak below this part of its label strength: outside even "rough"."""
 
 
 class Condition(StrEnum):
-    """What a bottle is like on a day. Words ours; design section 2."""
+    """What a bottle is like on a day. The words are a house choice."""
 
     SOUND = "sound"
     WATCH = "watch"
@@ -88,7 +86,7 @@ class Verdict:
     def warning(self) -> str:
         """What must be said of a bottle past its safety date; "" of any other."""
         here = self.condition not in USABLE and self.condition is not Condition.GONE
-        return NOT_TO_BE_TOUCHED if self.safety and here else ""
+        return DO_NOT_TOUCH if self.safety and here else ""
 
 
 def verdict(

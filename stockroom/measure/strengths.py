@@ -106,13 +106,14 @@ def _per_cents() -> Spelt:
     table: Spelt = {"g/100g": (StrengthUnit.WW, _ONE), "%abv": (StrengthUnit.VV, _ONE)}
     # "mass" and "weight" are both said; the label and the textbook each have their own
     for unit, kinds in {
-        StrengthUnit.WV: ("w/v", "m/v", "wt/vol", "trade"),
+        StrengthUnit.WV: ("w/v", "m/v", "wt/vol"),
         StrengthUnit.WW: ("w/w", "m/m", "wt/wt", "wt", "bymass", "byweight", "mass"),
         StrengthUnit.VV: ("v/v", "vol/vol", "vol", "byvolume", "volume"),
     }.items():
         for kind in kinds:
             table[f"%{kind}"] = table[f"{kind}%"] = (unit, _ONE)
-    return table
+    # bleach is sold by its chlorine: 1 % trade is 10 g/dm³ of it available (common practice)
+    return table | dict.fromkeys(("%trade", "trade%"), (StrengthUnit.CHLORINE, _ONE))
 
 
 def _parts_per() -> Spelt:

@@ -3,7 +3,8 @@
 Amounts are whole micro-units (µg, µL, micro-items) as in the store; strengths
 are in the line's own unit, mol/dm³ for anything with a formula and g/dm³
 otherwise; days are dates; times are minutes after midnight. `Facts` holds all
-of it. Lines, methods, recipes and bottles refer to each other by key text.
+of it. Lines, methods, recipes and bottles refer to each other by key text. What is
+settled for the house and what stands in it is in `house_facts.py`, and is handed on here.
 """
 
 from __future__ import annotations
@@ -18,26 +19,15 @@ from stockroom.keeping.rules import Rule
 from stockroom.measure.amounts import Kind
 from stockroom.measure.workdays import Calendar
 
-
-class Closeness(StrEnum):
-    """How near its stated strength a need must be served."""
-
-    EXACT = "exact"
-    CLOSE = "close"
-    ROUGH = "rough"
-    PRESENT = "present"
-
-
-EXACT = 0.005
-"""How closely an exact line wants its strength, as a fraction. Design section 2."""
-
-TOLERANCE: dict[Closeness, float | None] = {
-    Closeness.EXACT: EXACT,
-    Closeness.CLOSE: 0.05,
-    Closeness.ROUGH: 0.20,
-    Closeness.PRESENT: None,
-}
-"""Allowed difference as a fraction; None: any strength will do. Design section 2."""
+# the store may see this module and `decisions` only, so the house's values are handed on
+from stockroom.planning.house_facts import EXACT as EXACT
+from stockroom.planning.house_facts import TOLERANCE as TOLERANCE
+from stockroom.planning.house_facts import Balance as Balance
+from stockroom.planning.house_facts import Closeness as Closeness
+from stockroom.planning.house_facts import Department as Department
+from stockroom.planning.house_facts import Glass as Glass
+from stockroom.planning.house_facts import House as House
+from stockroom.planning.house_facts import Place as Place
 
 
 class Per(StrEnum):
@@ -262,73 +252,6 @@ class Bottle:
     lineage: tuple[str, ...] = ()
     meant_for: tuple[str, ...] = ()
     known_by: str = ""
-
-
-@dataclass(frozen=True, slots=True)
-class Balance:
-    """A balance: its step in µg, and the days it is away."""
-
-    name: str
-    step: int
-    away: tuple[tuple[date, date], ...] = ()
-
-    def here(self, day: date) -> bool:
-        """True when it can be used that day."""
-        # both days away: it goes off in the morning and comes back in the evening
-        return not any(first <= day <= last for first, last in self.away)
-
-
-@dataclass(frozen=True, slots=True)
-class Glass:
-    """A piece of measuring glass: size and finest mark in µL, and the days it is away.
-
-    `kind` is pipette, graduated pipette, burette, flask or cylinder; `glass_class`
-    is "A", "B" or "" where nobody looked.
-    """
-
-    name: str
-    kind: str
-    size: int
-    glass_class: str = ""
-    step: int | None = None
-    away: tuple[tuple[date, date], ...] = ()
-
-    def here(self, day: date) -> bool:
-        """True when it can be used that day."""
-        return not any(first <= day <= last for first, last in self.away)
-
-
-@dataclass(frozen=True, slots=True)
-class Department:
-    """Who pays: code, name, and pence left for the term (None: no limit kept)."""
-
-    code: str
-    name: str
-    left_pence: int | None = None
-
-
-@dataclass(frozen=True, slots=True)
-class Place:
-    """Where bottles stand: °C if known, and the storage group it is kept for."""
-
-    name: str
-    title: str
-    temperature_c: float | None = None
-    meant_for: str = ""
-
-
-@dataclass(frozen=True, slots=True)
-class House:
-    """What is settled once for the whole house. Amounts in µL."""
-
-    name: str = "this house"
-    practice: bool = False
-    margin_days: int = 2
-    default_lead: int = 10
-    batch_step: int = 50_000
-    heel_floor: int = 50_000
-    finish_day_before: bool = True
-    largest_vessel: int | None = None
 
 
 @dataclass(frozen=True, slots=True)

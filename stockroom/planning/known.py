@@ -17,7 +17,7 @@ def by_dilution(source: Bottle, strengths: Strengths) -> str:
     """How what is diluted from this bottle is known; "" where the bottle itself is not.
 
     It keeps the factor, since it was measured by it, and names the check; but the check is
-    none of its own. Source: the job, no. 25.
+    none of its own. Common practice, no source.
     """
     if strengths.found is None and not source.known_by:
         return ""

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
-from stockroom.findings import Finding
+from stockroom.findings import DO_NOT_TOUCH, Finding
 from stockroom.keeping.laws import warmth
 from stockroom.keeping.strength import law_of, temperature_on
 from stockroom.keeping.verdict import Condition, verdict
@@ -147,10 +147,7 @@ def _shelf(facts: Facts) -> Iterable[Finding]:
         # at the end of the term, so that it is dealt with before and not after
         judged = verdict(bottle.record, rules, facts.end)
         if judged.safety and judged.condition is Condition.PAST:
-            text = (
-                f"safety date {judged.good_until} ({judged.decided_by}): "
-                "past it, do not open or move it; ask"
-            )
+            text = f"safety date {judged.good_until} ({judged.decided_by}): past it, {DO_NOT_TOUCH}"
             yield Finding(bottle.number, text)
 
 

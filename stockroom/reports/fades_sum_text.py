@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Callable
 from datetime import date
 from typing import Any
 
@@ -89,7 +90,7 @@ def _exactly(found: FadingSum, days: float) -> str:
     return _told(found, days, format_number)
 
 
-def _told(found: FadingSum, days: float, say: Any) -> str:
+def _told(found: FadingSum, days: float, say: Callable[[float], str]) -> str:
     if days > _CENTURY:
         return "more than a hundred years"
     if 0 < days < DAYS_PER["second"]:

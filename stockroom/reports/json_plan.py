@@ -1,4 +1,4 @@
-"""The same answers as data. The keys are the contract of design section 6.
+"""The same answers as data. The keys are a contract: added to, never renamed.
 
 Amounts are numbers beside a unit (g, cm3, items), to six figures and never
 short of a whole one; days are ISO text; money is a number of pounds.

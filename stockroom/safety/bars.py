@@ -53,6 +53,7 @@ def offer(
     either a line's key or its substance. A bar wins over a swap; what is neither
     barred nor written as a swap is refused too.
     """
+    # first, so that no swap can let in what the recipe must never meet
     for bar in recipe.bars:
         if bar.substance == substances[1]:
             return False, f"barred: {bar.reason}"

@@ -12,7 +12,8 @@ from collections.abc import Collection, Iterable
 from dataclasses import dataclass, replace
 from enum import StrEnum
 
-from stockroom.safety.peroxide_formers import DO_NOT_TOUCH, SIGNS, class_of
+from stockroom.findings import DO_NOT_TOUCH
+from stockroom.safety.peroxide_formers import SIGNS, class_of
 
 HOUSE_LINE = (
     "Local rules, the supplier's safety data sheet and your employer's risk assessment "
@@ -76,7 +77,7 @@ class Goes:
 
 @dataclass(frozen=True, slots=True)
 class Caution:
-    """One caution: its number in the list of the job, its step, its words and its mark.
+    """One caution: its number in the list below, its step, its words and its mark.
 
     It speaks of these groups and substances; `solid` None: in any form; `strong`: only
     of the concentrated. `key` has the words, parted by |, that tell it has been said already;
@@ -251,7 +252,7 @@ CAUTIONS: tuple[Caution, ...] = (
         ), solid=False,
     ),
 )  # fmt: skip
-"""The cautions of the job, section 7, in our words; no. 7, of peroxide-formers, is below."""
+"""The cautions of common practice, no source; no. 7, of peroxide-formers, is below."""
 
 PAST_TESTING = Caution(
     7,

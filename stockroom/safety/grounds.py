@@ -67,5 +67,6 @@ def weakest(hows: Iterable[str]) -> str:
     >>> weakest(["a", "c"]), weakest(["a"]), weakest([])
     ('c', 'a', 'c')
     """
+    # a mark misspelt in a table must never make a statement look better known than it is
     ranks = [_BEST_FIRST.index(how if how in _BEST_FIRST else MEMORY) for how in hows]
     return _BEST_FIRST[max(ranks)] if ranks else MEMORY

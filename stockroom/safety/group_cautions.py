@@ -37,4 +37,5 @@ def cautions_for(
         words.append(_VENTED)
     if never_kept:
         words.append(f"Never kept: {never_kept}")
+    # two acids in one make ask for the same care: it is said once, where it first came
     return tuple(dict.fromkeys(words))

@@ -78,6 +78,7 @@ class Hazards:
         """H codes: the sheet's where there is one, else those worked out."""
         if self.sheet is None:
             return self.worked_out.statements
+        # a sheet writes both kinds in one list, and a label keeps them apart
         return tuple(code for code in self.sheet.codes if not code.startswith("EUH"))
 
     @property

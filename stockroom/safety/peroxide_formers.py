@@ -12,6 +12,7 @@ import math
 from dataclasses import dataclass
 
 from stockroom.errors import BadAmount, BadInput
+from stockroom.findings import DO_NOT_TOUCH
 from stockroom.measure.formats import format_number
 
 CLASSES: dict[str, str] = {
@@ -127,9 +128,6 @@ LEFT_ALONE_ABOVE = 100.0
 
 TAKEN_AWAY_UPTO = 20.0
 """mg/kg as H2O2 that one waste service takes without being asked. Source: MIT pages (a)."""
-
-DO_NOT_TOUCH = "do not open or move it; ask"
-"""What every message about such a bottle says. Source: the job, section 7, no. 7 (a)."""
 
 SIGNS = "crystals, solids, cloudiness, an oily layer, a stuck cap or no date on it"
 """Any of these: not opened, whatever a test said. Source: Michigan State; Virginia Tech (a)."""

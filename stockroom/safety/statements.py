@@ -131,6 +131,7 @@ NEEDLESS_BESIDE: dict[str, tuple[str, ...]] = {
     "H411": ("H412", "H413"),
     "H412": ("H413",),
     "H317": ("EUH208",),
+    # H350 is by any route, so "by inhalation" says less
     "H350": ("H350i",),
     "H334": ("EUH208",),
 }

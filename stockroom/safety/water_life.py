@@ -60,6 +60,7 @@ def _place(row: Limit) -> int:
 def _part(each: Ingredient, row: Limit, weight: float, name: str = "") -> Part:
     if row.basis is Basis.SPECIFIC and row.from_percent:
         return each.part(row, row.from_percent)
+    # category 4 is a safety net without figures, so nothing is multiplied on the way to it
     factor = 1.0 if name == _CHRONIC[-1] else row.m_factor
     return each.part(row, _SUM / (weight * factor), RULE)
 

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import replace
 from functools import lru_cache
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -18,74 +18,14 @@ from stockroom.errors import BadAmount, BadInput, StoreTrouble, UnknownName
 from stockroom.planning.facts import Form, Line
 from stockroom.service import bench_tables as shipped
 from stockroom.service.bench_spelling import known_spelling, nearest
+from stockroom.service.bench_stuff import Stuff as Stuff
 from stockroom.service.bench_tables import Row, spelt
 from stockroom.store.likeness import plain
 
 if TYPE_CHECKING:
     from stockroom.store.reading import Reader
 
-_FORMULA = re.compile(r"[A-Z(\[][A-Za-z0-9()\[\].·•*]*")
-
-
-@dataclass(frozen=True, slots=True)
-class Stuff:
-    """One form of a substance: g/mol, assay as a fraction, g/cm³; None where not known.
-
-    `strength_text` is the label's strength, which the density belongs to; `given_mass`
-    is the molar mass where somebody said it, else `formula` gives it when asked;
-    `liquid_density` is that of the pure liquid, where one's own table says.
-    """
-
-    name: str
-    substance: str
-    form: Form | None
-    given_mass: float | None
-    assay: float = 1.0
-    density: float | None = None
-    strength_text: str = ""
-    storage_group: str = ""
-    formula: str = ""
-    liquid_density: float | None = None
-
-    @property
-    def molar_mass(self) -> float | None:
-        """g/mol of this form, its water of crystallisation and all; None where not known.
-
-        Raises: BadAmount for a formula that cannot be read.
-        """
-        if self.given_mass is not None or not self.formula:
-            return self.given_mass
-        # worked out now: a sum that needs none never loads the formula library
-        return molar_mass(self.formula)
-
-    @property
-    def dry_mass(self) -> float | None:
-        """g/mol without the water of crystallisation; None where not known."""
-        if self.is_hydrate:
-            return molar_mass(spelt(self.formula).partition(".")[0])
-        formula = (shipped.row_of(self.substance) or {}).get("formula", "")
-        # a house's line holds the mass of its own form, which may be a hydrate
-        return molar_mass(formula) if formula and not self.formula else self.molar_mass
-
-    @property
-    def is_hydrate(self) -> bool:
-        """Does its formula hold water of crystallisation?"""
-        return "." in spelt(self.formula)
-
-    @property
-    def pure_density(self) -> float | None:
-        """g/cm³ of the pure liquid, where the tables of substances or its own line say."""
-        if self.liquid_density is not None:
-            return self.liquid_density
-        if self.form is Form.LIQUID and self.density and not self.strength_text:
-            return self.density
-        return shipped.density_in(shipped.row_of(self.substance))
-
-    @property
-    def names(self) -> tuple[str, ...]:
-        """What it may be called in the tables of chemistry: name, substance, formula."""
-        formula = self.formula or (shipped.row_of(self.substance) or {}).get("formula", "")
-        return tuple(dict.fromkeys(each for each in (self.name, self.substance, formula) if each))
+_FORMULA = re.compile(r"[1-9]?[A-Z(\[][A-Za-z0-9()\[\].·•*]*")
 
 
 def solute(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
@@ -95,8 +35,12 @@ def solute(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     come first. Raises: UnknownName with the nearest names; BadAmount for a bad formula.
     """
     # one's own line comes first: its assay and density are off the bottle in hand
-    known = [*lines, *_shipped_lines()]
+    own = list(lines)
+    known = [*own, *_shipped_lines()]
     of = _as_held(of, known)
+    meant = shipped.hydrate_meant(of)
+    if meant and not any(each.form and plain(each.name) == plain(of) for each in own):
+        return _by_formula(meant, [])
     asked = shipped.formulas().get(spelt(of)) or _substance_of(of)
     wanted = {plain(of), plain(asked)}
     for stuff in known:
@@ -130,15 +74,21 @@ def solid(of: str, lines: Iterable[Stuff] = ()) -> Stuff:
     exact = [stuff for stuff in solids if plain(stuff.name) == plain(of)]
     if exact:
         return exact[0]
-    asked = plain(_substance_of(of))
+    substance = _substance_of(of)
     # what stands on one's own shelf is meant, before what might stand on any
-    forms = _forms(own, asked) or _forms(solids, asked)
+    forms = _forms(own, plain(substance))
+    meant = shipped.hydrate_meant(of)
+    if meant:
+        hydrate = _by_formula(meant, [])
+        same = {name: each for name, each in forms.items() if _alike(each, hydrate)}
+        forms = same or forms or {hydrate.name: hydrate}
+    forms = forms or _sold(substance, solids)
     if len({_weighed_as(form) for form in forms.values()}) == 1:
         return next(iter(forms.values()))
     if forms:
         raise BadInput(
             f"{of!r}: which form is in the bottle? {' or '.join(sorted(forms))}.",
-            f'Write --of "{min(forms)}".',
+            f'Write --of "{shipped.bought_as(substance) or min(forms)}".',
         )
     return solute(of, house)
 
@@ -219,12 +169,34 @@ def _own_substances(reader: Reader) -> list[Stuff]:
     ]
 
 
+def _sold(substance: str, solids: Iterable[Stuff]) -> dict[str, Stuff]:
+    """The forms that the shipped tables know of a substance; empty where they list none."""
+    forms = _forms(map(_plainly, solids), plain(substance))
+    usual, row = shipped.bought_as(substance), shipped.row_of(substance)
+    if not (usual and row):
+        return forms
+    if not forms:
+        dry = replace(_of_substance(row), name=row["formula"])
+        forms[dry.name] = dry
+    return forms | {usual: _by_formula(usual, [])}
+
+
 def _forms(solids: Iterable[Stuff], asked: str) -> dict[str, Stuff]:
     found: dict[str, Stuff] = {}
     for stuff in solids:
         if plain(stuff.substance) == asked:
             found.setdefault(stuff.name, stuff)
     return found
+
+
+def _alike(one: Stuff, other: Stuff) -> bool:
+    return _weighed_as(one) == _weighed_as(other)
+
+
+def _plainly(stuff: Stuff) -> Stuff:
+    # marble chips are one way to buy calcium carbonate, and no other form of it
+    other = plain(stuff.substance) not in plain(stuff.name) and not stuff.is_hydrate
+    return replace(stuff, name=stuff.substance) if other and stuff.formula else stuff
 
 
 def _weighed_as(stuff: Stuff) -> float | str:
@@ -246,15 +218,17 @@ def _poured(substance: str, house: Iterable[Stuff]) -> bool:
 
 
 def _by_formula(of: str, known: list[Stuff]) -> Stuff:
-    trouble = ""
+    trouble, hint = "", ""
     if _FORMULA.fullmatch(spelt(of)):
         try:
             return _of_formula(spelt(of))
         except BadAmount as bad:
             trouble = f" {bad.message}"
+            # no name is near to it, and the formula knows where its number belongs
+            hint = bad.hint if of.strip()[0].isdigit() else ""
     names = [*shipped.other_names(), *(stuff.name for stuff in known)]
     raise UnknownName(
-        f"{of!r} is neither a name I know nor a formula.{trouble}", nearest(of, names)
+        f"{of!r} is neither a name I know nor a formula.{trouble}", hint or nearest(of, names)
     )
 
 

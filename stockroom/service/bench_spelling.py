@@ -8,9 +8,11 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable, Iterator
+from datetime import date
 from difflib import get_close_matches
+from pathlib import Path
 
-from stockroom.errors import BadInput
+from stockroom.errors import BadInput, NotAllowed, UnknownName
 from stockroom.service import bench_tables as shipped
 from stockroom.service.bench_tables import spelt
 from stockroom.store.likeness import plain
@@ -21,6 +23,7 @@ _SPELT = (
     (re.compile(r"\bcesium", re.IGNORECASE), "caesium"),
 )
 _BOTTLE = re.compile(r"[BS][0-9]+[a-z]?", re.IGNORECASE)
+_SULFUR = "S8"  # the one molecule that is written so
 _FORM_FIRST = re.compile(r"(?P<form>anhydrous|glacial|dry)\s+(?P<name>.+)", re.IGNORECASE)
 _FORM_LAST = re.compile(
     r"(?P<name>.+?),?\s+(?P<form>anhydrous|glacial|(?:mono|hemi|di|tri|tetra|penta|hexa|hepta|octa"
@@ -28,6 +31,7 @@ _FORM_LAST = re.compile(
     re.IGNORECASE,
 )
 _WATERS = {
+    "hemi": 0.5,
     "mono": 1, "di": 2, "tri": 3, "tetra": 4, "penta": 5, "hexa": 6, "hepta": 7, "octa": 8,
     "nona": 9, "deca": 10, "dodeca": 12,
 }  # fmt: skip
@@ -36,16 +40,53 @@ _WATERS = {
 def known_spelling(of: str) -> str:
     """The way of writing `of` that the shipped tables know; `of` itself where none is known.
 
-    Raises: BadInput for nothing at all.
+    Raises: BadInput for nothing at all; UnknownName for the number of a bottle.
     """
     if not of.strip():
         raise BadInput(f'--of "{of.strip()}": of what?', "Write a name or a formula: --of Na2CO3.")
+    if bottle_number(of):
+        # "B17" would be seventeen atoms of boron
+        raise UnknownName(
+            f"{of.strip()} looks like a bottle number; a name or a formula is wanted.",
+            f"Is {of.strip()} a bottle? Give the name of what it holds.",
+        )
     for each in _spellings(of):
         if plain(each) in shipped.names():
             return each
         if spelt(each).partition(".")[0] in shipped.formulas():
             return spelt(each)
     return of
+
+
+def bottle_number(of: str) -> bool:
+    """Is it written like the number of a bottle, B17 or S10a, and no molecule of sulfur?"""
+    return of.strip() != _SULFUR and _BOTTLE.fullmatch(of.strip()) is not None
+
+
+def name_in(of: str, store: Path, as_at: date | None, *, weighed: bool = False) -> str:
+    """The name to go by: for the number of a bottle that of what it holds, else `of` itself.
+
+    `weighed`: it is to be put on a balance, as what is bought by its strength is not.
+    Raises: UnknownName for a bottle that is not there; NotAllowed for one past its safety
+    date, or one that is not weighed from.
+    """
+    if not bottle_number(of) or not store.exists():
+        return of
+    from stockroom.planning.facts import Form
+    from stockroom.service.bottle_strength import bottle_among, standing
+    from stockroom.service.database import day_for
+    from stockroom.store.snapshot import facts
+
+    known = facts(store, day_for(store, as_at))
+    bottle = bottle_among(known, of)
+    line = known.lines[bottle.line]
+    standing(bottle, line, known.as_at)
+    if weighed and line.strength_text and line.form is not Form.SOLID:
+        raise NotAllowed(
+            f"{bottle.number} holds {line.item} {line.strength_text}: it is not weighed from.",
+            f"Use: stockroom dilute, with --from {bottle.number}.",
+        )
+    return line.item if line.form is Form.SOLID else line.substance or line.item
 
 
 def formula_meant(of: str) -> str:
@@ -59,8 +100,6 @@ def nearest(of: str, names: Iterable[str]) -> str:
     meant = formula_meant(of)
     if meant:
         return f"Capitals count in a formula: {meant} is {shipped.formulas()[meant]}."
-    if _BOTTLE.fullmatch(of.strip()):
-        return f"Is {of.strip()} a bottle? Give the name of what it holds."
     # a name held twice, in capitals and without, is one name
     held = {each.casefold(): each for each in names}
     # by the standard library: a slip in a bench sum must not load the matcher of the store
@@ -86,6 +125,9 @@ def _spellings(of: str) -> Iterator[str]:
 
 def _with_water(name: str, word: str) -> str:
     # a hydrate that no line is of is its salt's formula, and so many of water
-    formula = (shipped.row_of(name) or {}).get("formula", "")
+    row = shipped.row_of(name) or {}
+    formula = row.get("formula", "")
+    if word == "anhydrous" and shipped.bought_as(row.get("substance", "")):
+        return formula
     waters = _WATERS.get(word.removesuffix("hydrate"))
     return f"{formula}.{waters}H2O" if formula and waters else ""

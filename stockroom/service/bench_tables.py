@@ -13,6 +13,7 @@ from collections import Counter
 from functools import lru_cache
 from pathlib import Path
 
+from stockroom.chemistry.formula import with_halves
 from stockroom.store.likeness import plain
 
 Row = dict[str, str]
@@ -27,12 +28,69 @@ _DRAWN = {
     "(CH3)2CO": "C3H6O", "H2C2O4": "C2H2O4", "(COOH)2": "C2H2O4", "(CO2H)2": "C2H2O4",
     "CH3COONa": "C2H3NaO2", "CH3CO2Na": "C2H3NaO2", "NaClO": "NaOCl", "CO(NH2)2": "CH4N2O",
 }  # fmt: skip
+# Names of the trade that mean one hydrate and no other form: from memory, as general
+# chemistry has them. The substance's own name leaves the form open, and is not here.
+_HYDRATES = {
+    "NH4Fe(SO4)2.12H2O": ("iron alum", "ferric alum"),
+    "KAl(SO4)2.12H2O": ("alum", "potash alum", "potassium alum"),
+    "NH4Al(SO4)2.12H2O": ("ammonium alum", "ammonia alum"),
+    "KCr(SO4)2.12H2O": ("chrome alum",),
+    "Na2SO4.10H2O": ("Glauber's salt", "Glauber salt"),
+    "CaSO4.2H2O": ("gypsum",),
+    "CaSO4.0.5H2O": ("plaster of Paris", "bassanite"),
+    "Na2B4O7.10H2O": ("borax",),
+    "Na2CO3.10H2O": ("washing soda", "soda crystals", "sal soda"),
+    "MgSO4.7H2O": ("Epsom salts", "Epsom salt"),
+    "CuSO4.5H2O": ("blue vitriol", "bluestone"),
+    "FeSO4.7H2O": ("green vitriol", "copperas"),
+    "ZnSO4.7H2O": ("white vitriol",),
+    "CoSO4.7H2O": ("rose vitriol", "red vitriol"),
+    "(NH4)2Fe(SO4)2.6H2O": ("Mohr's salt", "Mohr salt"),
+    "KNaC4H4O6.4H2O": ("Rochelle salt", "Rochelle salts", "Seignette salt", "Seignette's salt"),
+    "Na2S2O3.5H2O": ("hypo",),
+    "K4Fe(CN)6.3H2O": ("yellow prussiate of potash",),
+    "C4H6O4Pb.3H2O": ("sugar of lead",),
+    "Ca(NO3)2.4H2O": ("Norwegian saltpetre",),
+}
+# The hydrate that is usually bought, where no line that travels along is of it: from memory,
+# as makers list them. Who names the substance alone is asked, since the label decides.
+_BOUGHT_AS = {
+    "aluminium chloride": "AlCl3.6H2O",
+    "aluminium nitrate": "Al(NO3)3.9H2O",
+    "aluminium sulfate": "Al2(SO4)3.16H2O",
+    "ammonium iron(III) sulfate": "NH4Fe(SO4)2.12H2O",
+    "calcium sulfate": "CaSO4.2H2O",
+    "cerium(IV) sulfate": "Ce(SO4)2.4H2O",
+    "chromium(III) chloride": "CrCl3.6H2O",
+    "cobalt(II) nitrate": "Co(NO3)2.6H2O",
+    "cobalt(II) sulfate": "CoSO4.7H2O",
+    "copper(II) nitrate": "Cu(NO3)2.3H2O",
+    "disodium hydrogenphosphate": "Na2HPO4.12H2O",
+    "iron(II) chloride": "FeCl2.4H2O",
+    "iron(III) sulfate": "Fe2(SO4)3.5H2O",
+    "lead(II) ethanoate": "C4H6O4Pb.3H2O",
+    "lithium hydroxide": "LiOH.H2O",
+    "magnesium nitrate": "Mg(NO3)2.6H2O",
+    "manganese(II) chloride": "MnCl2.4H2O",
+    "nickel(II) chloride": "NiCl2.6H2O",
+    "nickel(II) nitrate": "Ni(NO3)2.6H2O",
+    "potassium oxalate": "K2C2O4.H2O",
+    "sodium dichromate": "Na2Cr2O7.2H2O",
+    "sodium dihydrogenphosphate": "NaH2PO4.2H2O",
+    "sodium molybdate": "Na2MoO4.2H2O",
+    "sodium nitroprusside": "Na2Fe(CN)5NO.2H2O",
+    "sodium phosphate": "Na3PO4.12H2O",
+    "sodium sulfate": "Na2SO4.10H2O",
+    "sodium sulfide": "Na2S.9H2O",
+    "zinc ethanoate": "C4H6O4Zn.2H2O",
+    "zinc nitrate": "Zn(NO3)2.6H2O",
+}
 _DOT = re.compile(r" *[·•∙⋅*.] *|\s+(?=[0-9]{0,2}H2O$)")
 
 
 def spelt(formula: str) -> str:
     """A formula as the tables write it: digits for subscripts, a plain dot before its water."""
-    plain_digits = unicodedata.normalize("NFKC", formula).strip()
+    plain_digits = unicodedata.normalize("NFKC", with_halves(formula)).strip()
     salt, dot, water = _DOT.sub(".", plain_digits).partition(".")
     return f"{_DRAWN.get(salt, salt)}{dot}{water}"
 
@@ -73,6 +131,21 @@ def formulas() -> dict[str, str]:
     times = Counter(row["formula"] for row in rows)
     # butan-1-ol and butan-2-ol share one: the formula alone names neither
     return {row["formula"]: row["substance"] for row in rows if times[row["formula"]] == 1}
+
+
+def hydrate_meant(name: str) -> str:
+    """The formula of the one hydrate that a name of the trade means; empty for any other name."""
+    return _trade_names().get(plain(name.replace("\N{RIGHT SINGLE QUOTATION MARK}", "'")), "")
+
+
+def bought_as(substance: str) -> str:
+    """The formula of the hydrate that is usually bought of a substance; empty where none is."""
+    return _BOUGHT_AS.get(substance, "")
+
+
+@lru_cache(maxsize=1)
+def _trade_names() -> dict[str, str]:
+    return {plain(name): formula for formula, named in _HYDRATES.items() for name in named}
 
 
 @lru_cache(maxsize=1)

@@ -9,6 +9,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from stockroom.errors import MissingFigure, NotAllowed, UnknownName
+from stockroom.findings import DO_NOT_TOUCH
 from stockroom.measure.formats import format_strength
 
 if TYPE_CHECKING:
@@ -48,7 +49,7 @@ def standing(bottle: Bottle, line: Line, on: date) -> BottleStrength:
     if judged.safety and judged.condition is Condition.PAST:
         raise NotAllowed(
             f"{bottle.number} is past its safety date {judged.good_until} ({judged.decided_by}).",
-            "Do not open or move it; tell whoever answers for it.",
+            f"{DO_NOT_TOUCH.capitalize()}.",
         )
     last = last_check(bottle.record, on, CheckKind.FOUND)
     basis = f"expected on {on} from its {judged.strengths.basis} strength; {judged.condition}"

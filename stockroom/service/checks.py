@@ -28,7 +28,7 @@ from stockroom.store.snapshot_lines import lines_of
 from stockroom.store.tables import Bottle, Line
 
 UNUSUAL = 0.25
-"""Further than this part from the label, a found strength is asked about. Source: the job, 15."""
+"""Further than this part from the label, a found strength is asked about. A house choice."""
 
 
 def found(

@@ -30,7 +30,7 @@ def which_it_was(work: Work, bottle: Bottle, before: int, counted: int) -> tuple
     """What it may mean that a solution has changed by itself, each with what to do about it.
 
     Nothing is said of other forms, or where something was drawn since it was last known: then
-    a draw written down roughly is the likelier reason. Source: the job, no. 26.
+    a draw written down roughly is the likelier reason. Common practice, no source.
     """
     if work.line(bottle).form != Form.SOLUTION or not counted:
         return ()

@@ -17,7 +17,7 @@ from stockroom.keeping.rules import Rule
 from stockroom.keeping.typed_law import FadingSum
 from stockroom.keeping.typed_law import Typed as Typed
 from stockroom.keeping.typed_law import fading_sum as sum_of
-from stockroom.measure.amounts import Kind
+from stockroom.measure.amounts import BASE_UNIT, Kind
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.planning.facts import Facts, Firmness, Line
@@ -61,7 +61,10 @@ def fading(path: Path, number: str, *, as_at: date, below: tuple[str, ...] = ())
     if bottle.record.gone:
         raise NotAllowed(f"{found} {line.key} is gone: discarded.", f"stockroom diary {found}")
     if line.kind is not Kind.VOLUME:
-        raise NotAllowed(f"{found} {line.key} is no solution: it has no strength.", "")
+        raise NotAllowed(
+            f"{found} {line.key} is no solution: it is counted in {BASE_UNIT[line.kind]}.",
+            f"What is known of it: stockroom diary {found}",
+        )
     marks = [*_typed(below, line), *_of_label(bottle.record), *_booked(known, line)]
     runs = course(bottle.record, line.rules, as_at, marks)
     return Fading(

@@ -18,6 +18,7 @@ from stockroom.chemistry.strength import (
     express,
     percent_by_mass,
 )
+from stockroom.chemistry.uncertainty import COVERAGE
 from stockroom.errors import BadAmount, MissingFigure
 from stockroom.keeping.record import CheckKind, Record
 from stockroom.keeping.strength import last_check
@@ -29,9 +30,6 @@ from stockroom.planning.facts import Form, Line
 from stockroom.safety.limits import Limit
 from stockroom.service.bench import canonical_of, table_ends, tabulated
 from stockroom.service.bench_names import Stuff
-
-COVERAGE = 2.0
-"""A found strength is taken at its value and twice its standard uncertainty."""
 
 AS_BY_MASS = "% w/v taken as % w/w, the safer side in what is denser than water"
 AS_PURE = "approximate: taken as light as the pure liquid, the safer side"

@@ -171,14 +171,14 @@ def _standardised(asked: Asked, reaction: Titration, titres: Titres, where: Wher
 def _sampled(asked: Asked, reaction: Titration, titres: Titres, where: Where) -> Titrated:
     if not asked.sample:
         raise BadInput(
-            f"How much {reaction.titrand} was in the flask?",
+            f"How much {reaction.titrand} was in the flask for --titrant {asked.titrant!r}?",
             'Add --sample "25.00 cm3": what the pipette measured.',
         )
     if asked.assay_percent is not None:
         raise BadInput(
             f"--assay {asked.assay_percent:g} beside --titrant {asked.titrant!r}: nothing was"
             " weighed.",
-            "Leave it out.",
+            "Leave --assay out: it is of a solid that was weighed.",
         )
     known = known_strength(asked.titrant, reaction.burette, asked.uncertainty, "--titrant", where)
     aliquot = pipetted(volume_of(asked.sample, "--sample"), asked.glass_class)

@@ -159,7 +159,8 @@ def _assay(taken: Reagent, asked: Asked) -> float:
     if percent is not None:
         if not 0 < percent <= 100:
             raise BadAmount(
-                f"assay {percent:g} % is not above 0 and at most 100.", "Off the label?"
+                f"assay {percent:g} % is not above 0 and at most 100.",
+                "Read it off the label again: a per cent, as --assay 99.9.",
             )
         return percent / 100
     if not taken.label:

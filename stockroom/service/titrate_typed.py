@@ -6,18 +6,20 @@ import re
 from dataclasses import dataclass
 from decimal import Decimal
 
-from stockroom.chemistry.glassware import Ware, ware
+from stockroom.chemistry.glassware import ISO, GlassKind, Ware, ware
+from stockroom.chemistry.made import mass_input
 from stockroom.chemistry.titration import Dilution, Measured
-from stockroom.chemistry.uncertainty import Input, rectangular
+from stockroom.chemistry.uncertainty import Input
 from stockroom.errors import BadAmount, BadInput
 from stockroom.measure.amounts import Kind
 from stockroom.measure.parsing import parse_amount
 from stockroom.measure.reading import quote, tidy
 
-_PIPETTES = (0.5, 1.0, 2.0, 5.0, 10.0, 20.0, 25.0, 50.0, 100.0)
-_FLASKS = (*_PIPETTES[1:], 200.0, 250.0, 500.0, 1000.0, 2000.0, 5000.0)
-# the mark that usual burettes of each size have
-_BURETTES = {1.0: 0.01, 2.0: 0.01, 5.0: 0.02, 10.0: 0.05, 25.0: 0.1, 50.0: 0.1, 100.0: 0.2}
+_PIPETTES, _FLASKS = (
+    tuple(size for size, _ in ISO[kind].sizes) for kind in (GlassKind.PIPETTE, GlassKind.FLASK)
+)
+# of two burettes of one size the table's coarser is the usual one, and the wider doubt
+_BURETTES = dict(sorted(ISO[GlassKind.BURETTE].sizes))
 _MADE_UP = re.compile(
     r"(?P<what>.+?),? (?:(?:dissolved(?: in (?:\w+ )?water)?,? (?:and )?)?"
     r"(?:made up|diluted) (?:to|in)|dissolved in|in|to)"
@@ -62,7 +64,7 @@ def mass_of(text: str, where: str) -> tuple[Input, float]:
     # the last figure written is what the balance showed, in whatever unit it was written
     exponent = typed.as_tuple().exponent
     step = float(Decimal(1).scaleb(min(int(exponent), 0))) * amount.number / float(typed)
-    return Input("mass", amount.number, (rectangular("balance", step, times=2),)), step
+    return mass_input(amount.number, step), step
 
 
 def dilutions_of(text: str, glass_class: str) -> tuple[Dilution, ...]:

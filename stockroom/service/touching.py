@@ -13,13 +13,14 @@ from dataclasses import dataclass
 from datetime import date
 
 from stockroom.errors import NotAllowed
+from stockroom.findings import DO_NOT_TOUCH
 from stockroom.keeping.record import Check, CheckKind, Record
 from stockroom.keeping.rules import Rule, RuleKind
 from stockroom.keeping.strength import last_check
 from stockroom.keeping.verdict import limits_of
 from stockroom.measure.days import spell_day
 from stockroom.planning.facts import Form
-from stockroom.safety.peroxide_formers import DO_NOT_TOUCH, Outcome, outcome
+from stockroom.safety.peroxide_formers import Outcome, outcome
 from stockroom.service.work import Work
 from stockroom.store.former_rules import formers_of
 from stockroom.store.snapshot_lines import lines_of
@@ -161,10 +162,10 @@ def _may_be_moved(check: Check) -> bool:
 def _after(check: Check) -> str:
     if _may_be_moved(check):
         return "Do not open it. When it has been taken away: stockroom discard."
-    return f"{DO_NOT_TOUCH[0].upper()}{DO_NOT_TOUCH[1:]}."
+    return f"{DO_NOT_TOUCH.capitalize()}."
 
 
 def _refuse(bottle: Bottle, why: str, hint: str = "") -> None:
     if why:
-        untouched = f"{DO_NOT_TOUCH[0].upper()}{DO_NOT_TOUCH[1:]}."
+        untouched = f"{DO_NOT_TOUCH.capitalize()}."
         raise NotAllowed(f"{bottle.number} {why}.", hint or untouched)

@@ -155,7 +155,7 @@ def checked_groups(groups: int) -> int:
 def checked_spare(percent: float | None) -> int:
     """Spare in thousandths from a per cent; 10 % when not said. Raises: BadInput.
 
-    Source: spare is usually 5-20 %, ten unless said: the job, number 31.
+    Spare is usually 5-20 %: common practice, no source; ten unless said is a house choice.
     """
     found = 10.0 if percent is None else percent
     if not 0 <= found <= MOST_SPARE:

@@ -17,7 +17,7 @@ REVISIONS = ("0001", "0002", "0003")
 """The migrations this program knows, oldest first; the last is what it writes."""
 
 BUSY_SECONDS = 5.0
-"""How long a writer waits for another before it gives up. Source: the job, number 68."""
+"""How long a writer waits for another before it gives up. A house choice."""
 
 
 def missing(path: Path) -> StoreTrouble:

@@ -94,6 +94,13 @@ def test_a_planted_heavy_import_is_told(library: str, tmp_path: Path) -> None:
     assert library in loaded
 
 
+def test_the_planner_leaves_the_search_through_dilutions_on_the_shelf() -> None:
+    act = (
+        "import sys, stockroom.planning.plan\nsys.exit('stockroom.chemistry.steps' in sys.modules)"
+    )
+    assert subprocess.run([sys.executable, "-c", act], check=False).returncode == 0
+
+
 def test_a_heavy_import_just_before_leaving_is_told(tmp_path: Path) -> None:
     loaded, _ = left_loaded("import sqlmodel\nraise SystemExit(0)", folder=tmp_path)
     assert {"sqlmodel", "sqlalchemy"} <= set(loaded)

@@ -135,8 +135,11 @@ ODD = [
     "CuSO4.",
     "CuSO4,5H2O",
     "CuSO4x5H2O",
-    "CaSO4.½H2O",
-    "CaSO4.0.5H2O",
+    "CaSO4½H2O",
+    "CaSO4.0.7H2O",
+    "½H2O",
+    ".0.5H2O",
+    "CaSO4.0.5",
     "O: 0.26, 30Si: 0.74",
 ]
 
@@ -147,6 +150,35 @@ def test_an_odd_formula_is_refused_and_quoted(formula: str) -> None:
         molar_mass(formula)
     assert f'"{formula}"' in caught.value.message
     assert caught.value.hint
+
+
+@pytest.mark.parametrize(
+    "formula", ["CaSO4.0.5H2O", "CaSO4·½H2O", "CaSO4.1/2H2O", "CaSO4 · 0.5 H2O", "CaSO4*0,5H2O"]
+)
+def test_half_a_molecule_of_water_is_read(formula: str) -> None:
+    # half of 18.015 on 136.14 g/mol: recomputed from the standard atomic masses
+    assert molar_mass(formula) == pytest.approx(145.15, abs=0.01)
+
+
+def test_more_than_half_a_molecule_and_whole_ones_stay_apart() -> None:
+    water = molar_mass("H2O")
+    dry = molar_mass("Cu(NO3)2")
+    assert molar_mass("Cu(NO3)2.2.5H2O") == pytest.approx(dry + 2.5 * water)
+    assert molar_mass("Cu(NO3)2·2½H2O") == pytest.approx(dry + 2.5 * water)
+    assert molar_mass("Cu(NO3)2.5H2O") == pytest.approx(dry + 5 * water)
+
+
+def test_a_number_in_front_is_shown_its_place() -> None:
+    with pytest.raises(BadAmount) as caught:
+        molar_mass("2PbCO3.Pb(OH)2")
+    assert "Pb(OH)2.2PbCO3" in caught.value.hint
+    assert molar_mass("Pb(OH)2.2PbCO3") == pytest.approx(775.6, abs=0.1)  # recomputed
+
+
+def test_twice_a_hemihydrate_is_refused_and_the_half_shown() -> None:
+    with pytest.raises(BadAmount) as caught:
+        molar_mass("2CaSO4.H2O")
+    assert "CaSO4.0.5H2O" in caught.value.hint
 
 
 def test_a_formula_of_any_length_is_refused_shortly() -> None:

@@ -12,6 +12,7 @@ from hypothesis import strategies as st
 
 from stockroom.chemistry.formula import molar_mass
 from stockroom.chemistry.glassware import ware
+from stockroom.chemistry.made import volume_input
 from stockroom.chemistry.reaction_names import titration_of
 from stockroom.chemistry.reactions import TITRATIONS, Titration
 from stockroom.chemistry.strength import hypochlorite_from_chlorine
@@ -120,7 +121,7 @@ def weighed(grams: float, formula: str | float) -> Standard:
     return Standard.weighed(Input("mass", grams), Input("molar mass", mass), Input("assay", 1.0))
 
 
-# tutor pages, inputs seen and answers recomputed; the first two the job's own numbers
+# tutor pages, inputs seen and answers recomputed; the first two worked out by hand too
 STANDARDISED = [
     ("KMnO4 on oxalate", weighed(0.1675, "Na2C2O4"), 25.91, 0.0193, 5e-5),
     ("NaOH on KHP", weighed(0.5366, 204.22), 13.1606, 0.19965, 1e-4),
@@ -141,7 +142,7 @@ def test_a_titrant_is_standardised_as_worked(
 
 
 def test_a_pipetted_standard_finds_the_thiosulfate() -> None:
-    # the job, section 8: 25.00 cm³ of 0.01667 mol/dm³ iodate, titre 25.33
+    # worked out by hand: 25.00 cm³ of 0.01667 mol/dm³ iodate, titre 25.33
     standard = Standard.pipetted(Input("iodate", 0.01667), measured(25))
     found = found_in_burette(
         titration_of("thiosulfate on iodate"), Titres((25.33,), BURETTE), standard=standard
@@ -195,9 +196,20 @@ def test_the_burette_and_the_pipette_are_in_the_budget() -> None:
         aliquot=measured(25),
     )
     names = {name for name, _ in found.components}
-    assert {"titre: burette", "titre: end point", "aliquot: glass", "titrant"} <= names
+    assert {"titre: burette", "titre: end point", "aliquot: pipette", "titrant"} <= names
     # worked out apart: class B, 0.10/√6 of 24.93 and 0.06/√6 of 25, 0.1 % of the titrant
     assert found.relative == pytest.approx(0.0024, abs=4e-4)
+
+
+@pytest.mark.parametrize("held", [measured(25), flask(250)])
+def test_one_piece_of_glass_has_one_doubt_titrating_and_making(held: Measured) -> None:
+    made = volume_input(held.cm3, held.ware, name="aliquot")
+    assert held.as_input("aliquot") == made
+    assert {doubt.source for doubt in made.doubts} == {
+        str(held.ware.kind),
+        "filling",
+        "temperature",
+    }
 
 
 def test_more_titres_leave_less_doubt() -> None:
@@ -236,7 +248,7 @@ def test_two_dilutions_are_both_undone() -> None:
         dilutions=(tenfold, tenfold),
     )
     assert found.value == pytest.approx(10.0)
-    assert {"taken 1: glass", "made up to 2: glass"} <= {name for name, _ in found.components}
+    assert {"taken 1: pipette", "made up to 2: flask"} <= {name for name, _ in found.components}
 
 
 def test_a_standard_made_up_and_pipetted_has_the_doubt_of_both() -> None:
@@ -246,7 +258,7 @@ def test_a_standard_made_up_and_pipetted_has_the_doubt_of_both() -> None:
     titres = Titres((48.36,), BURETTE, blank_cm3=0.03)
     found = found_in_burette(titration_of("KMnO4 on oxalate"), titres, standard=standard)
     assert found.value == pytest.approx(8.800e-4, abs=1e-7)
-    assert {"aliquot: glass", "made up to: glass"} <= {name for name, _ in found.components}
+    assert {"aliquot: pipette", "made up to: flask"} <= {name for name, _ in found.components}
 
 
 def test_more_than_was_made_up_cannot_be_pipetted() -> None:

@@ -189,7 +189,7 @@ def test_the_smallest_sensible_volume(
 
 
 def test_0_35_cm3_is_enough_at_5_per_cent_and_not_at_2() -> None:
-    # the-job, capability 36
+    # a usual case of the trade
     at_5, at_2 = (smallest_sensible("graduated pipette", 1, closeness=c) for c in (0.05, 0.02))
     assert at_5 is not None
     assert at_2 is not None

@@ -24,7 +24,7 @@ def amounts(found: Design) -> list[tuple[float, float]]:
     return [(round(step.amount, 6), round(step.volume, 6)) for step in found.steps]
 
 
-# the-job, capability 35: 0.176 g on a 0.01 g balance at ±2 %
+# a usual case of the trade: 0.176 g on a 0.01 g balance at ±2 %
 def test_0_176_g_with_no_glass_entered_brings_both_offers() -> None:
     batch, diluted = design(0.176, 176, closeness=0.02, bench=Bench((BAL1,)))
     assert amounts(batch) == [(0.5, 500)]
@@ -49,7 +49,7 @@ def test_enough_to_weigh_is_weighed_as_it_is() -> None:
 
 
 def test_a_finer_balance_needs_no_larger_batch() -> None:
-    # the-job, capability 37: with BAL2 there, and with it away
+    # a usual case of the trade: with BAL2 there, and with it away
     there = design(0.25, 250, closeness=0.02, bench=Bench((BAL1, BAL2), SHELF))[0]
     away = design(0.25, 250, closeness=0.02, bench=BENCH)[0]
     assert (there.steps[0].tool, there.steps[0].amount) == (BAL2, 0.25)
@@ -61,7 +61,7 @@ def test_without_a_balance_nothing_can_be_weighed() -> None:
     assert design(0.176, 176, closeness=0.02, bench=Bench()) == ()
 
 
-# the-job, capability 36: 0.35 cm³ with a 1 cm³ graduated pipette
+# a usual case of the trade: 0.35 cm³ with a 1 cm³ graduated pipette
 def test_0_35_cm3_is_measured_at_once_at_5_per_cent() -> None:
     found = design(0.35, 500, closeness=0.05, bench=BENCH, liquid=True)[0]
     assert amounts(found) == [(0.35, 500)]

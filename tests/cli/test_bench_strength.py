@@ -31,7 +31,7 @@ SUMS = [
     ("0.566 N, 3 equivalents per mol", "H3PO4", "mM", "", 188.7, 1e-3),
     ("0.1 N (KMnO4 to Mn2+)", "KMnO4", "mol/dm3", "", 0.02, 1e-6),
     ("0.02 M", "potassium permanganate", "N (to Mn2+)", "", 0.1, 1e-6),
-    # available chlorine: the-job section 8 (b)
+    # available chlorine: worked out by hand
     ("5.00 % w/v available chlorine", "bleach", "% w/v", "", 5.25, 1e-3),
     ("5.25 % w/v", "bleach", "% w/v available chlorine", "", 5.00, 1e-3),
     ("1000 ppm available chlorine", "bleach", "mM", "", 14.10, 1e-3),
@@ -237,3 +237,12 @@ def test_there_and_back_again_is_the_same(
     back = stockroom(*ask(f"{there!r} {other}", of, one), "--json").json["value"]
     # the JSON answer is rounded to six figures
     assert back == pytest.approx(float(text), rel=1e-5)
+
+
+def test_the_per_cent_of_the_bleach_trade_is_of_chlorine(stockroom: Stockroom) -> None:
+    # 10 g/dm³ of available chlorine to 1 %: Adam and Gordon 1999; 125 / 70.906 recomputed
+    found = stockroom("strength", "12.5 % trade", "--of", "bleach", "--to", "mol/dm3", "--json")
+    assert found.json["value"] == pytest.approx(1.763, abs=0.001)
+    told = stockroom("strength", "12.5 % trade", "--of", "bleach", "--to", "% w/v").out
+    assert "available chlorine" in told
+    assert told.startswith("12.5 % trade sodium hypochlorite is 13.1")

@@ -234,8 +234,9 @@ def test_a_line_in_the_place_of_a_bottle_names_its_bottles(
 def test_a_slip_in_a_typed_law_is_asked_about(
     stockroom: Stockroom, words: tuple[str, ...], told: str
 ) -> None:
-    law = () if "--law" in words else ("--order", "1", "--at", "20", "--rate", "0.1")
-    refused = stockroom("fades", "1 M", *law, *words)
+    law = () if "--law" in words else ("--order", "1", "--at", "20")
+    rate = () if {"--law", "--rate"} & set(words) else ("--rate", "0.1")
+    refused = stockroom("fades", "1 M", *law, *rate, *words)
     assert (refused.code, told in refused.err) == (2, True), refused.err
 
 

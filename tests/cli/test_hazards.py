@@ -17,7 +17,7 @@ NAOH = "sodium hydroxide 2.00 mol/dm3"
 SHEET = ("--sheet", "Example Ltd, 2026-05-01", "--why", "new delivery", "--by", "T1")
 
 
-# the-job 88: 0.40 and 0.55 mol/dm³ print different text; bands as in the reference, F1 (a)
+# a usual case: 0.40 and 0.55 mol/dm³ print different text; bands as in the reference, F1 (a)
 @pytest.mark.parametrize(
     ("name", "strength", "statements", "signal"),
     [

@@ -6,7 +6,7 @@ import pytest
 import typer
 
 from stockroom.cli.main import app, value_options
-from stockroom.cli.shared import Shared, pull
+from stockroom.cli.shared import SEVERAL, Shared, pull
 from stockroom.errors import BadInput
 
 OPTIONS = {"draw": frozenset({"--note", "--for"}), "plan": frozenset({"--from"})}
@@ -83,3 +83,33 @@ def test_the_value_options_are_read_off_the_commands_themselves() -> None:
     assert {"--for", "--on"} <= options["draw"]
     assert "--sure" not in options["found"]
     assert not {"--good", "--bad"} & options["look"]
+
+
+@pytest.mark.parametrize(
+    "line", ["weigh --of HCl --of NaOH", "weigh --of=HCl --of NaOH", "weigh --of HCl --of=NaOH"]
+)
+def test_a_second_value_of_an_option_is_refused_and_both_are_quoted(line: str) -> None:
+    with pytest.raises(BadInput, match="--of is given twice: 'HCl' and 'NaOH'"):
+        pull(shlex.split(line), value_options(typer.main.get_command(app)))
+
+
+@pytest.mark.parametrize(
+    "line", ["weigh --of HCl --of HCl", "titrate --dilution a --dilution b", "x -- --of a --of b"]
+)
+def test_the_same_value_and_an_option_of_several_pass(line: str) -> None:
+    words = shlex.split(line)
+    assert pull(words, value_options(typer.main.get_command(app)))[1] == words
+
+
+def test_the_options_that_take_several_are_all_named() -> None:
+    commands = vars(typer.main.get_command(app))["commands"]
+    found = {
+        name: frozenset(o for param in each.params if _again(param) for o in param.opts)
+        for name, each in commands.items()
+    }
+    assert {name: options for name, options in found.items() if options} == SEVERAL
+
+
+def _again(param: object) -> bool:
+    option = getattr(param, "param_type_name", "") == "option"
+    return option and bool(getattr(param, "multiple", False))

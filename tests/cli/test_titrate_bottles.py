@@ -27,7 +27,7 @@ def test_the_factor_is_in_the_json(stockroom: Stockroom, own: Path) -> None:
     found = stockroom(
         "titrate", *OXALATE, "--bottle", "S08", "--by", "T1", "--json", store=own
     ).json
-    # the job, section 8: factor 0.965
+    # worked out by hand: factor 0.965
     assert found["factor"] == pytest.approx(0.965, abs=5e-4)
     assert found["bottle"] == "S08"
     assert found["in_bottle"]["unit"] == "mol/dm3"

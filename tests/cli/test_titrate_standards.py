@@ -120,7 +120,7 @@ def test_a_standard_may_be_made_up_and_pipetted(stockroom: Stockroom) -> None:
     said = stockroom(*words, "--json").json
     assert said["value"] == pytest.approx(8.800e-4, abs=1e-7)
     doubts = {part["from"] for part in said["budget"]}
-    assert {"mass: balance", "made up to: glass", "aliquot: glass"} <= doubts
+    assert {"mass: balance", "made up to: flask", "aliquot: pipette"} <= doubts
     assert "made up to 250 cm³, of which 10 cm³" in stockroom(*words).said
 
 

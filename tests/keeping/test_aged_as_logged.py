@@ -67,7 +67,7 @@ def test_after_the_record_the_place_counts() -> None:
 
 
 def test_a_life_is_used_up_by_the_record() -> None:
-    # Source: the-job section 8: 90 days at 18 °C and 3.5 per 10 °C are 25.7 days at 28 °C
+    # Worked out by hand: 90 days at 18 °C and 3.5 per 10 °C are 25.7 days at 28 °C
     (limit,) = limits_of(standing(18.0, logged(28.0)), (KEEPS,), day("02-20"))
     assert limit.until == MONDAY + timedelta(25)
     assert limit.because.endswith("25 d as logged to 2027-02-20, else at 18 °C")

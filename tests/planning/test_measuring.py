@@ -1,6 +1,6 @@
 """What a make's liquids are measured with, and the way out where nothing is fine enough.
 
-The 0.35 cm³ of the job, no. 36, and tolerances of the ISO tables held in `chemistry/glassware.py`.
+0.35 cm³, a usual case of the trade, and tolerances of the ISO tables in `chemistry/glassware.py`.
 """
 
 from __future__ import annotations
@@ -74,7 +74,7 @@ def test_a_small_draw_names_its_pipette_and_how_near_that_comes() -> None:
 
 
 def test_a_third_of_a_cubic_centimetre_passes_to_five_per_cent_and_not_to_two() -> None:
-    # the job, no. 36: one mark of 0.01 on 0.35 is 2.9 %
+    # worked out by hand: one mark of 0.01 on 0.35 is 2.9 %
     assert made(diluted(35, *ALL)).too_little == ()
     (poor,) = made(diluted(35, *ALL, tolerance=0.02)).too_little
     assert poor.startswith("0.35 cm³ of B01: nothing here measures it to 2 %")

@@ -15,7 +15,7 @@ from stockroom.reports import json_plan
 if TYPE_CHECKING:
     from stockroom.planning.ready import Readiness
 
-# the contract: design section 6
+# the contract: what scripts may rely on
 KEYS = {
     "needs": "booking recipe on item strength amount unit outcome from make reasons "
     "ref dept closeness",

@@ -1,4 +1,4 @@
-"""The eighteen cautions of the job stand at their step, and are not said twice.
+"""The eighteen cautions of the trade stand at their step, and are not said twice.
 
 Facts behind those marked a were read on pages of makers, universities and a chemistry weekly;
 the others are common practice, no source.

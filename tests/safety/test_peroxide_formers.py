@@ -10,10 +10,9 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from stockroom.errors import BadAmount, BadInput
-from stockroom.keeping.verdict import NOT_TO_BE_TOUCHED
+from stockroom.findings import DO_NOT_TOUCH
 from stockroom.safety.peroxide_formers import (
     CLASSES,
-    DO_NOT_TOUCH,
     class_of,
     interval,
     outcome,
@@ -152,5 +151,6 @@ def test_a_result_in_no_known_unit_is_asked_about(text: str) -> None:
         read_result(text)
 
 
-def test_both_rooms_say_it_in_the_same_words() -> None:
-    assert DO_NOT_TOUCH == NOT_TO_BE_TOUCHED
+def test_what_is_left_alone_ends_with_the_words_of_every_message() -> None:
+    for found in (outcome(101), outcome(1, seen="crystals")):
+        assert found.words.endswith(DO_NOT_TOUCH)

@@ -6,6 +6,7 @@ from pathlib import Path
 
 import pytest
 
+from stockroom.chemistry.formula import molar_mass
 from stockroom.errors import BadInput, UnknownName
 from stockroom.planning.facts import Form
 from stockroom.service import bench_names, bench_tables
@@ -102,12 +103,65 @@ def test_nothing_is_no_name(of: str) -> None:
 
 @pytest.mark.parametrize(
     ("of", "hint"),
-    [("kmno4", "KMnO4 is potassium permanganate"), ("B03", "Is B03 a bottle?")],
+    [
+        ("kmno4", "KMnO4 is potassium permanganate"),
+        ("B03", "Is B03 a bottle?"),
+        ("s10a", "Is s10a a bottle?"),
+    ],
 )
 def test_a_slip_is_answered_with_what_was_meant(of: str, hint: str) -> None:
     with pytest.raises(UnknownName) as caught:
         solid(of)
     assert hint in caught.value.hint
+
+
+@pytest.mark.parametrize(
+    "of", ["S8", "P4", "I2", "O2", "N2", "H2", "Cl2", "Br2", "F2", "O3", "B2H6"]
+)
+def test_the_molecules_of_an_element_are_no_bottles(of: str) -> None:
+    assert solute(of).molar_mass == pytest.approx(molar_mass(of))
+
+
+GLAUBER, DRY = 322.19, 142.04  # g/mol of sodium sulfate with its water and without: recomputed
+
+
+def test_the_dry_form_of_what_is_bought_as_a_hydrate_can_be_asked_for() -> None:
+    for of in ("zinc nitrate anhydrous", "anhydrous zinc nitrate", "Zn(NO3)2"):
+        assert solid(of).molar_mass == pytest.approx(189.39, abs=0.01)  # recomputed
+
+
+def test_a_number_in_front_of_a_formula_is_shown_its_place() -> None:
+    with pytest.raises(UnknownName, match="begins with a number") as caught:
+        solid("2PbCO3.Pb(OH)2")
+    assert "Pb(OH)2.2PbCO3" in caught.value.hint
+
+
+def test_ones_own_jar_of_the_hydrate_meant_is_taken() -> None:
+    jars = [Stuff(f"jar {mass}", "sodium sulfate", Form.SOLID, mass) for mass in (DRY, GLAUBER)]
+    assert solid("Glauber's salt", jars).given_mass == GLAUBER
+
+
+def test_ones_own_line_of_a_trade_name_says_what_it_is() -> None:
+    jar = Stuff("gypsum", "calcium sulfate", Form.SOLID, 136.14)
+    assert solid("gypsum", [jar]) is solute("gypsum", [jar]) is jar
+
+
+def test_a_strength_counts_the_hydrate_a_trade_name_means() -> None:
+    assert solute("Epsom salts").is_hydrate
+    assert not solute("magnesium sulfate").is_hydrate
+
+
+@pytest.mark.parametrize("formula", [*bench_tables._HYDRATES, *bench_tables._BOUGHT_AS.values()])
+def test_every_hydrate_in_the_tables_is_one_of_a_substance_held(formula: str) -> None:
+    salt, _, water = formula.partition(".")
+    assert salt in bench_tables.formulas() or salt == "NH4Al(SO4)2"
+    assert molar_mass(formula) > molar_mass(salt)
+    assert water.endswith("H2O")
+
+
+@pytest.mark.parametrize(("substance", "formula"), bench_tables._BOUGHT_AS.items())
+def test_every_usual_hydrate_is_of_the_substance_it_stands_by(substance: str, formula: str) -> None:
+    assert bench_tables.formulas()[formula.partition(".")[0]] == substance
 
 
 def test_ones_own_spelling_stands_before_ours() -> None:

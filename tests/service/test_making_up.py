@@ -37,7 +37,7 @@ def used(path: Path, before: dict[str, Bottle], number: str) -> float:
     return Amount(kind, before[number].left - after.left).number
 
 
-# scenario sections 8 and 9: T10 14.6 g, T30 810 cm³, T24 158.1 g; the job, section 8
+# scenario sections 8 and 9: T10 14.6 g, T30 810 cm³, T24 158.1 g; worked out by hand
 @pytest.mark.parametrize(
     ("line", "cubic", "source", "amount"),
     [

@@ -96,7 +96,7 @@ def count(path: Path, bottle: str, cubic: float) -> tuple[str, ...]:
 
 
 def test_less_with_nothing_drawn_asks_which_it_was(own: Path) -> None:
-    # the job, no. 26: 500 to 480 cm³ is ×1.042; S17 is barium chloride 0.100, counted at 480
+    # worked out by hand: 500 to 480 cm³ is ×1.042; S17 is barium chloride 0.100, counted at 480
     stock.count(own, "S17", Amount.cm3(500), **WHO)
     lost, drawn = count(own, "S17", 480)
     assert "×1.042 by now" in lost

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING, Any
 import pytest
 
 from stockroom.errors import BadAmount, BadInput, NotAllowed
-from stockroom.keeping.verdict import NOT_TO_BE_TOUCHED
+from stockroom.findings import DO_NOT_TOUCH
 from stockroom.measure.amounts import Amount
 from stockroom.planning.decisions import Outcome
 from stockroom.service import checks, stock
@@ -22,7 +22,7 @@ if TYPE_CHECKING:
 
 # B29 was opened on 2026-09-02: test or discard by 2027-03-02 (scenario, class B, 6 months)
 GOOD, PAST = date(2027, 2, 10), date(2027, 3, 10)
-SAID = NOT_TO_BE_TOUCHED[0].upper() + NOT_TO_BE_TOUCHED[1:]
+SAID = DO_NOT_TOUCH.capitalize()
 
 
 def who(today: date) -> dict[str, Any]:
@@ -64,8 +64,8 @@ def test_throwing_it_away_can_be_written(own: Path) -> None:
 
 def test_every_message_about_it_says_so(own: Path) -> None:
     past = next(b for b in past_on(own, as_at=PAST, on=PAST).past if b.bottle == "B29")
-    assert NOT_TO_BE_TOUCHED in past.decided_by
-    assert any(NOT_TO_BE_TOUCHED in line for line in why(own, "B29", as_at=PAST))
+    assert DO_NOT_TOUCH in past.decided_by
+    assert any(DO_NOT_TOUCH in line for line in why(own, "B29", as_at=PAST))
     look = checks.look(own, "B29", passed=True, **who(PAST))
     assert any(SAID in line for line in look.details)
 
@@ -73,7 +73,7 @@ def test_every_message_about_it_says_so(own: Path) -> None:
 def test_set_aside_it_is_no_safer(own: Path) -> None:
     checks.spoil(own, "B29", "label torn", **who(GOOD))
     with working(own, **who(PAST)) as work:
-        assert work.verdict(work.bottle("B29")).warning == NOT_TO_BE_TOUCHED
+        assert work.verdict(work.bottle("B29")).warning == DO_NOT_TOUCH
     with pytest.raises(NotAllowed, match="past its safety date"):
         stock.move(own, "B29", "A2", **who(PAST))
 

@@ -78,7 +78,7 @@ def refused(folder: Path) -> str:
     return str(caught.value)
 
 
-# 98 % w/w at 1.84 g/cm³ is 18.4 mol/dm³; 12 % w/v NaOCl is 1.612. Source: the job, section 8, and
+# 98 % w/w at 1.84 g/cm³ is 18.4 mol/dm³; 12 % w/v NaOCl is 1.612. Worked out by hand, and
 # worked out: 120 / 74.44
 @pytest.mark.parametrize(
     ("key", "strength", "unit"),
