@@ -3,9 +3,12 @@
 from __future__ import annotations
 
 import csv
+from functools import lru_cache
 from pathlib import Path
 
 
+# asked for every line of a store, and the answer stays while the program runs
+@lru_cache(maxsize=1)
 def seeds_folder() -> Path:
     """Where the tables that travel with the program are: inside it, else beside it."""
     package = Path(__file__).resolve().parent.parent
