@@ -50,15 +50,21 @@ def test_half_lives_by_strength_and_temperature(celsius: float, trade: float, da
 
 @pytest.mark.parametrize(
     ("trade", "celsius", "days"),
-    # half-lives widely reprinted from bleach bulletins: from memory (c), and no better than that;
-    # 10 % at 15 °C is 1.6 times off, the others less than 1.5
-    [(10, 25, 220), (10, 15, 800), (5, 25, 790), (5, 15, 5000)],
+    # half-lives widely reprinted from bleach bulletins: from memory (c), good to a factor of 1.5
+    [(10, 25, 220), (5, 25, 790), (5, 15, 5000)],
 )
 def test_reprinted_half_lives_are_of_the_same_order(
     trade: float, celsius: float, days: float
 ) -> None:
     law = Law(2, 0.0, celsius, named="hypochlorite")
-    assert 1 / 1.65 < days_to_part(molar(trade), 0.5, law) / days < 1.65
+    assert 1 / 1.5 < days_to_part(molar(trade), 0.5, law) / days < 1.5
+
+
+def test_one_reprinted_half_life_does_not_fit_the_law() -> None:
+    # 10 % at 15 °C is reprinted as 800 d (from memory), and the published law gives 1300 d: the
+    # law is kept, and the row is not made to fit by a wider factor for all
+    law = Law(2, 0.0, 15, named="hypochlorite")
+    assert days_to_part(molar(10), 0.5, law) / 800 == pytest.approx(1300 / 800, rel=0.01)
 
 
 def test_its_salt_stays_as_it_was_made() -> None:
