@@ -24,7 +24,8 @@ MAY_IMPORT: dict[str, frozenset[str]] = {
     "chemistry": frozenset({"measure", ROOT}),
     "keeping": frozenset({"chemistry", "measure", ROOT}),
     "safety": frozenset({"chemistry", "measure", ROOT}),
-    "planning": frozenset({"keeping", "safety", "chemistry", "measure", ROOT}),
+    "lots": frozenset({ROOT}),
+    "planning": frozenset({"lots", "keeping", "safety", "chemistry", "measure", ROOT}),
     "store": frozenset({"planning", "keeping", "safety", "chemistry", "measure", ROOT}),
     "service": frozenset({"store", "planning", "keeping", "safety", "chemistry", "measure", ROOT}),
     "reports": frozenset({"planning", "keeping", "safety", "chemistry", "measure", ROOT}),
@@ -40,7 +41,7 @@ ONLY_MODULES: dict[tuple[str, str], frozenset[str]] = {
     ("store", "planning"): frozenset({"stockroom.planning.facts", "stockroom.planning.decisions"}),
 }
 
-PURE = frozenset({"measure", "chemistry", "keeping", "safety", "planning", "reports"})
+PURE = frozenset({"measure", "chemistry", "keeping", "safety", "lots", "planning", "reports"})
 PURE_SEE_OF_ROOT = frozenset({"stockroom.errors", "stockroom.findings"})
 
 # library -> the only rooms that may import it
@@ -53,6 +54,7 @@ OUTSIDE: dict[str, frozenset[str]] = {
     "alembic": frozenset({"store"}),
     "sqlite3": frozenset({"store"}),
     "scipy": frozenset({"chemistry", "keeping"}),
+    "highspy": frozenset({"lots"}),
     "uncertainties": frozenset({"chemistry"}),
     "rapidfuzz": frozenset({"store", "service"}),
     "platformdirs": frozenset({ROOT}),
