@@ -37,9 +37,10 @@ class Sort:
     A batch of volume x in y vessels takes `minutes` · y + `per_cm3` · x of work on the day
     it starts, and `finishing` · y on the day `finish_on[t]` (empty: the same day). Each
     vessel holds at most `largest` and at least `smallest`. `waste` is what a cm³ made and
-    not used costs. `parts` name sorts that come later in the row, so that a sort never
-    comes before what it goes into. `usual` are days it stood under in the plan last
-    printed: among equals one of them is kept.
+    not used costs. Volumes are rounded up to whole `step`s (0: made to the need). `parts`
+    name sorts that come later in the row, so that a sort never comes before what it goes
+    into. `usual` are days it stood under in the plan last printed: among equals one of
+    them is kept.
     """
 
     name: str
@@ -51,6 +52,7 @@ class Sort:
     parts: tuple[Part, ...] = ()
     finishing: float = 0.0
     finish_on: Days = ()
+    step: float = 0.0
     usual: frozenset[int] = frozenset()
 
 

@@ -22,6 +22,9 @@ EARLY = 1e-4
 PENCE_A_MINUTE = 25
 """What a minute of hands-on work is worth, to price what is thrown away. Our choice."""
 
+POUR_AWAY = 1.0
+"""Minutes it takes to pour a dm³ away by the usual route. Our choice."""
+
 
 @dataclass(frozen=True, slots=True)
 class Cost:
