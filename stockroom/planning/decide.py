@@ -6,15 +6,16 @@ from collections.abc import Iterable
 from datetime import date
 
 from stockroom.planning.amounts import say, say_strength
-from stockroom.planning.batch import Batch, Source, keeps
+from stockroom.planning.choosing.shelf import Promise, Shelf
 from stockroom.planning.decisions import Answer, Draw, Make, Outcome, Short
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import Drawn, Facts, Form
 from stockroom.planning.known import how_known
-from stockroom.planning.make_card import cautions_of, reasons_of
-from stockroom.planning.measuring import measured
+from stockroom.planning.making.batch import Batch, Source, keeps
+from stockroom.planning.making.day_chosen import Load, load_of
+from stockroom.planning.making.make_card import cautions_of, reasons_of
+from stockroom.planning.making.measuring import measured
 from stockroom.planning.numbers import Natural, natural
-from stockroom.planning.shelf import Promise, Shelf
 from stockroom.planning.timing import ready_at
 from stockroom.planning.wants import Settled, Want
 from stockroom.planning.windows import good_until
@@ -146,10 +147,11 @@ def _why_this_bottle(facts: Facts, need: Need, promise: Promise, shelf: Shelf) -
 
 def makes(facts: Facts, batches: list[Batch]) -> list[Make]:
     """Every batch as a make, in order of the day work starts."""
-    return [_make(facts, batch) for batch in batches]
+    load = load_of(facts, batches)
+    return [_make(facts, batch, load) for batch in batches]
 
 
-def _make(facts: Facts, batch: Batch) -> Make:
+def _make(facts: Facts, batch: Batch, load: Load) -> Make:
     line, run = batch.line, batch.run
     kept = keeps(facts, line, batch.heel, run.on)
     until = good_until(line, run.on)
@@ -162,13 +164,14 @@ def _make(facts: Facts, batch: Batch) -> Make:
         volume=batch.volume,
         needed=run.needed,
         earliest=max(item.earliest for item in run.items),
-        latest=run.on if len(run.items) == 1 else min(item.latest for item in run.items),
+        latest=min(item.latest for item in run.items),
         on=run.on,
         ready=_ready_day(facts, batch),
         bookings=tuple(dict.fromkeys(need.booking.number for need in batch.needs)),
         sources=tuple(_source(source) for source in batch.sources),
         fresh=batch.fresh,
         minutes=(batch.method.minutes + batch.method.finish_minutes) * batch.vessels,
+        vessels=batch.vessels,
         finish_on=batch.ready[0] if batch.method.finish_minutes else None,
         finishing=batch.method.finish_minutes * batch.vessels,
         heel=batch.heel,
@@ -177,7 +180,7 @@ def _make(facts: Facts, batch: Batch) -> Make:
         steps=batch.method.steps,
         cautions=cautions_of(batch),
         too_little=tuple(poor),
-        reasons=tuple(reasons_of(facts, batch, kept=kept, drawn=[*good, *poor])),
+        reasons=tuple(reasons_of(facts, batch, load, kept=kept, drawn=[*good, *poor])),
     )
 
 

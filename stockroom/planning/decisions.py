@@ -15,6 +15,10 @@ from stockroom.keeping.caution import LowerLimits
 from stockroom.keeping.verdict import Condition
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Booking, House
+from stockroom.planning.order_decisions import Budget as Budget
+from stockroom.planning.order_decisions import Coming as Coming
+from stockroom.planning.order_decisions import Delivery as Delivery
+from stockroom.planning.order_decisions import Instead as Instead
 
 
 class Outcome(StrEnum):
@@ -72,7 +76,8 @@ class Answer:
 class Make:
     """One batch to make up. `on` is the day work starts, `ready` the day it can be used.
 
-    `minutes` is all hands-on work, `finishing` the part of it done on `finish_on`.
+    `minutes` is all hands-on work, `finishing` the part of it done on `finish_on`,
+    in `vessels` at once, which are mixed.
     `too_little` tells the draws that nothing in the house measures closely enough, and the
     way out; `reasons` has them too.
     """
@@ -100,6 +105,7 @@ class Make:
     cautions: tuple[str, ...] = ()
     reasons: tuple[str, ...] = ()
     too_little: tuple[str, ...] = ()
+    vessels: int = 1
 
 
 @dataclass(frozen=True, slots=True)
@@ -120,7 +126,11 @@ class PastBottle:
 
 @dataclass(frozen=True, slots=True)
 class Use:
-    """What the term uses of one line: `made` lines as solutions, others in bought form."""
+    """What the term uses of one line: `made` lines as solutions, others in bought form.
+
+    `groups` are those of its bookings. `before` is what the same term a year before used,
+    for `groups_before`; `basis` says by what that is known: entries, bookings or a table.
+    """
 
     line: str
     item: str
@@ -130,11 +140,22 @@ class Use:
     kind: Kind
     by_booking: tuple[tuple[str, int], ...] = ()
     spare: int = 0
+    groups: int = 0
+    before: int | None = None
+    groups_before: int | None = None
+    basis: str = ""
 
 
 @dataclass(frozen=True, slots=True)
 class Order:
-    """What to buy. `late` counts open days past the order-by day; shares are pence."""
+    """What to buy. `late` counts open days past the order-by day; shares are pence.
+
+    Several sizes together are one set: `pack` names it, `mixture` its sizes with how many
+    of each and the price of one. `falls_below` and `runs_out` are the first days the usable
+    stock is below its level and does not suffice; `keeps_until` how long it lasts unopened,
+    where known. `queried` says that not half of it would be used by then, and `deliveries`
+    how to split it; `instead` what to do when it is late.
+    """
 
     id: str
     line: str
@@ -149,6 +170,18 @@ class Order:
     shares: tuple[tuple[str, int], ...]
     for_bookings: tuple[str, ...] = ()
     reasons: tuple[str, ...] = ()
+    amount: int = 0
+    kind: Kind = Kind.MASS
+    supplier: str = ""
+    mixture: tuple[tuple[str, int, int], ...] = ()
+    falls_below: date | None = None
+    runs_out: date | None = None
+    ask_first: str = ""
+    ask_days: int = 0
+    keeps_until: date | None = None
+    queried: bool = False
+    deliveries: tuple[Delivery, ...] = ()
+    instead: tuple[Instead, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -168,7 +201,9 @@ class Short:
 class CheckToDo:
     """A titration or a look to do between two days, and what hangs on it.
 
-    `optional` marks one that only saves work: nothing waits for it.
+    `not_before` is the first day a result would count, closed or not; `opens` the first open
+    day from then on, and `best` the day to do it. `minutes` is hands-on work. `optional` marks
+    one that only saves work: nothing waits for it, and `worth` is what it saves.
     """
 
     subject: str
@@ -180,11 +215,69 @@ class CheckToDo:
     bookings: tuple[str, ...]
     reason: str
     optional: bool = False
+    opens: date | None = None
+    minutes: int = 0
+    worth: Worth | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class Worth:
+    """What a good look saves: makes no longer done, hands-on minutes, money, shortages.
+
+    `orders` holds each order with the pence less it would cost, `shares` the same pence by
+    department; `serves` the needs that are short without it. `estimated` is True when only
+    what hangs on the bottle was added up, and nothing was planned again.
+    """
+
+    makes: tuple[str, ...] = ()
+    minutes: int = 0
+    orders: tuple[tuple[str, int], ...] = ()
+    shares: tuple[tuple[str, int], ...] = ()
+    serves: tuple[str, ...] = ()
+    estimated: bool = False
+
+
+@dataclass(frozen=True, slots=True)
+class DayLoad:
+    """The hands-on work of one day: minutes, and the limit of the house (0: none is kept).
+
+    `makes` and `checks` are what is worked on; `movable` pairs a make with the earlier day it
+    could be made on, so that all of these moves together keep every day within the limit.
+    """
+
+    day: date
+    minutes: int
+    limit: int
+    makes: tuple[str, ...] = ()
+    checks: tuple[str, ...] = ()
+    movable: tuple[tuple[str, date], ...] = ()
+
+    @property
+    def over(self) -> int:
+        """Minutes over the limit; 0 when within it, or where none is kept."""
+        return max(0, self.minutes - self.limit) if self.limit else 0
+
+
+@dataclass(frozen=True, slots=True)
+class Watch:
+    """A booking whose mixture is never kept: when it may be mixed, and must be gone.
+
+    `not_before` and `destroy_by` are minutes after midnight of its day, 1440 and more the day
+    after. `ticked_by` holds the initials of whoever destroyed it, "" while nobody has.
+    """
+
+    booking: str
+    on: date
+    title: str
+    not_before: int
+    destroy_by: int
+    how: str
+    ticked_by: str = ""
 
 
 @dataclass(frozen=True, slots=True)
 class Level:
-    """The day a line falls below its reorder level, and what is then left."""
+    """The day a line falls below its reorder level, what is then left, and when it runs out."""
 
     line: str
     item: str
@@ -192,6 +285,7 @@ class Level:
     left: int
     level: int
     kind: Kind
+    runs_out: date | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -199,6 +293,8 @@ class Plan:
     """The whole answer for a period, as at one day.
 
     `lower_limits` is there when it was made on the safe side, on lower limits of strength.
+    `kept_as` is the number on its printed copy, "" for one not kept; `changed_since` the number
+    of the plan kept last, and how many changes there are since, where there are any.
     """
 
     as_at: date
@@ -214,6 +310,14 @@ class Plan:
     short: tuple[Short, ...] = ()
     checks: tuple[CheckToDo, ...] = ()
     levels: tuple[Level, ...] = ()
+    on_order: tuple[Coming, ...] = ()
+    budgets: tuple[Budget, ...] = ()
+    differences: tuple[str, ...] = ()
+    """The five biggest differences from the same term a year before, in words."""
     guesses: tuple[Finding, ...] = ()
     notes: tuple[Finding, ...] = field(default=())
+    loads: tuple[DayLoad, ...] = ()
+    watch: tuple[Watch, ...] = ()
     lower_limits: LowerLimits | None = None
+    kept_as: str = ""
+    changed_since: tuple[str, int] | None = None

@@ -9,6 +9,7 @@ settled for the house and what stands in it is in `house_facts.py`, and is hande
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass, field
 from datetime import date
 from enum import StrEnum
@@ -20,6 +21,8 @@ from stockroom.measure.amounts import Kind
 from stockroom.measure.workdays import Calendar
 
 # the store may see this module and `decisions` only, so the house's values are handed on
+from stockroom.planning.changing.happened import Happened as Happened
+from stockroom.planning.changing.happened import HappenedKind as HappenedKind
 from stockroom.planning.house_facts import EXACT as EXACT
 from stockroom.planning.house_facts import TOLERANCE as TOLERANCE
 from stockroom.planning.house_facts import Balance as Balance
@@ -28,6 +31,10 @@ from stockroom.planning.house_facts import Department as Department
 from stockroom.planning.house_facts import Glass as Glass
 from stockroom.planning.house_facts import House as House
 from stockroom.planning.house_facts import Place as Place
+from stockroom.planning.house_facts import Vessel as Vessel
+from stockroom.planning.order_facts import FormerUse as FormerUse
+from stockroom.planning.order_facts import Pack as Pack
+from stockroom.planning.order_facts import Placed as Placed
 
 
 class Per(StrEnum):
@@ -90,6 +97,9 @@ class Line:
     storage_group: str = ""
     keep_note: str = ""
     packs: tuple[Pack, ...] = ()
+    ask_first: str = ""
+    ask_days: int = 0
+    """Whose leave an order needs, and the open days that takes."""
     caution: Caution | None = None
     """How to doubt what is still to be made of it, in a plan on the safe side."""
 
@@ -99,17 +109,6 @@ class Line:
         if self.form is not Form.SOLID:
             return None
         return self.assay * 1000.0 / self.molar_mass if self.molar_mass else self.assay * 1000.0
-
-
-@dataclass(frozen=True, slots=True)
-class Pack:
-    """A size a supplier sells: micro-units, price in pence, lead time in open days."""
-
-    size: int
-    text: str
-    pence: int
-    lead: int | None = None
-    supplier: str = ""
 
 
 @dataclass(frozen=True, slots=True)
@@ -271,7 +270,8 @@ class Facts:
 
     `start` and `end` bound what is asked about; the plan itself runs on to
     `horizon` (None: `end`), so that asking about a week does not change it.
-    `lower_limits` is there when strengths are at their lower limits.
+    `lower_limits` is there when strengths are at their lower limits. `usual` is the days each
+    line's makes had in the plan kept last: among equals those are kept to.
     """
 
     as_at: date
@@ -286,8 +286,16 @@ class Facts:
     bottles: tuple[Bottle, ...] = ()
     balances: tuple[Balance, ...] = ()
     glassware: tuple[Glass, ...] = ()
+    vessels: tuple[Vessel, ...] = ()
     departments: tuple[Department, ...] = ()
     places: tuple[Place, ...] = ()
     drawn: tuple[Drawn, ...] = ()
     horizon: date | None = None
     lower_limits: LowerLimits | None = None
+    usual: Mapping[str, tuple[date, ...]] = field(default_factory=dict)
+    placed: tuple[Placed, ...] = ()
+    """Orders placed this term, and older ones still to come."""
+    year_before: tuple[date, date] | None = None
+    """The same days a year before: a term where one is written down."""
+    former: tuple[FormerUse, ...] = ()
+    former_bookings: tuple[Booking, ...] = ()

@@ -66,6 +66,19 @@ class Glass:
 
 
 @dataclass(frozen=True, slots=True)
+class Vessel:
+    """A flask or carboy to make up in: what it holds in µL, and the days it is away."""
+
+    name: str
+    size: int
+    away: tuple[tuple[date, date], ...] = ()
+
+    def here(self, day: date) -> bool:
+        """True when it can be used that day."""
+        return not any(first <= day <= last for first, last in self.away)
+
+
+@dataclass(frozen=True, slots=True)
 class Department:
     """Who pays: code, name, and pence left for the term (None: no limit kept)."""
 
@@ -96,3 +109,5 @@ class House:
     heel_floor: int = 50_000
     finish_day_before: bool = True
     largest_vessel: int | None = None
+    day_minutes: int = 300
+    """Hands-on minutes that fill a day, since classes take the rest; 0: no limit is kept."""

@@ -10,7 +10,7 @@ from stockroom.planning.amounts import say, say_strength
 from stockroom.planning.decisions import Answer, CheckToDo, Make, Outcome, Plan
 from stockroom.planning.facts import Facts, Recipe
 from stockroom.planning.known import how_known
-from stockroom.planning.make_card import goes_of
+from stockroom.planning.making.make_card import goes_of
 from stockroom.safety.cautions import Caution, Step, cautions_about
 
 

@@ -10,11 +10,11 @@ from stockroom.findings import Finding
 from stockroom.keeping.rules import Purpose, RuleKind
 from stockroom.keeping.verdict import Condition, Verdict, verdict
 from stockroom.planning.amounts import say_strength
+from stockroom.planning.choosing.fitness import found_valid_from
+from stockroom.planning.choosing.shelf import Shelf
 from stockroom.planning.decisions import PastBottle
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
-from stockroom.planning.fitness import found_valid_from
 from stockroom.planning.numbers import natural
-from stockroom.planning.shelf import Shelf
 from stockroom.planning.wants import Settled, Want
 from stockroom.safety.peroxide_formers import class_of
 

@@ -11,9 +11,9 @@ from datetime import date
 from enum import StrEnum
 
 from stockroom.keeping.rules import Purpose
+from stockroom.planning.choosing.shelf import Promise
 from stockroom.planning.explode import Need
 from stockroom.planning.facts import TOLERANCE, Closeness, Ingredient, Method
-from stockroom.planning.shelf import Promise
 from stockroom.planning.timing import Moment
 
 
@@ -36,6 +36,7 @@ class Want:
     `choices` are the lines that may give it, in order; `line` is the one being
     tried. `under` is the want whose make this is an ingredient of. A make may
     start from `earliest` (its keeping) and `ready_from` (what it takes) to `latest`.
+    `on_way` is what comes of `to_buy` with orders already placed, by their numbers.
     """
 
     need: Need
@@ -51,6 +52,7 @@ class Want:
     method: Method | None = None
     parts: list[Want] = field(default_factory=list)
     to_buy: int = 0
+    on_way: list[tuple[str, int]] = field(default_factory=list)
     latest: Moment | None = None
     earliest: date | None = None
     ready_from: date | None = None

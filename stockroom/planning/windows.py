@@ -6,11 +6,11 @@ from datetime import date, timedelta
 from functools import lru_cache
 
 from stockroom.keeping.record import Record
-from stockroom.keeping.rules import Purpose, Rule
+from stockroom.keeping.rules import Purpose, Rule, RuleKind
 from stockroom.keeping.strength import strengths_on
 from stockroom.keeping.verdict import limits_of
+from stockroom.planning.choosing.fitness import wrong_strength
 from stockroom.planning.facts import Facts, Line, Requirement
-from stockroom.planning.fitness import wrong_strength
 
 
 def earliest_start(
@@ -48,6 +48,15 @@ def _good_until(rules: tuple[Rule, ...], strength: float | None, made: date) -> 
     # a recheck ends what is known of its strength and not its use
     limits = limits_of(record, rules, made, Purpose.ANY)
     return min((x.until for x in limits if not x.known_until), default=None)
+
+
+def held(line: Line, made: date, on: date) -> float | None:
+    """The strength a batch made on a day is expected to hold on another, in the line's unit."""
+    # most lines never fade, and need no sum
+    if not any(rule.kind is RuleKind.FADES for rule in line.rules) and line.caution is None:
+        return line.strength
+    record = Record(made=made, nominal=line.strength, caution=line.caution)
+    return strengths_on(record, line.rules, on).expected
 
 
 def will_do(line: Line, requirement: Requirement | None, made: date, wanted: date) -> bool:

@@ -28,7 +28,7 @@ MAY_IMPORT: dict[str, frozenset[str]] = {
     "planning": frozenset({"lots", "keeping", "safety", "chemistry", "measure", ROOT}),
     "store": frozenset({"planning", "keeping", "safety", "chemistry", "measure", ROOT}),
     "service": frozenset({"store", "planning", "keeping", "safety", "chemistry", "measure", ROOT}),
-    "reports": frozenset({"planning", "keeping", "safety", "chemistry", "measure", ROOT}),
+    "reports": frozenset({"lots", "planning", "keeping", "safety", "chemistry", "measure", ROOT}),
     "web": frozenset({"service", "reports", "measure", ROOT}),
     "cli": frozenset({"service", "reports", "measure", ROOT}),
 }

@@ -10,6 +10,7 @@ from __future__ import annotations
 import os
 import subprocess
 import sys
+from datetime import date
 from pathlib import Path
 
 import pytest
@@ -40,6 +41,7 @@ READING = [
     ["past", "--on", "2027-02-10"],
     ["usage"],
     ["buying"],
+    ["on-order"],
     ["ready", "K01"],
     ["why", "K01"],
     ["diary", "B01"],
@@ -48,6 +50,8 @@ READING = [
     ["logger", "A1"],
     ["plan", "--cautious"],
     ["rule", "starch 0.5 % w/v"],
+    ["what-if", "--groups", "K08=11", "--shift", "K13=2027-02-09", "--without", "S01"],
+    ["what-if", "--cancel", "K05", "--book", "R01,2027-02-11,12"],
     ["strength", "100 vol", "--of", "hydrogen peroxide", "--to", "mol/dm3"],
     ["weigh", "2 L", "0.200 mol/dm3", "--of", "sodium thiosulfate pentahydrate"],
     ["dilute", "500 cm3", "0.100 mol/dm3", "--from", "B01"],
@@ -86,6 +90,14 @@ def test_a_reading_command_loads_nothing_heavy(
     loaded, out = left_loaded(RUN, "--store", str(practice), *words, folder=tmp_path)
     assert loaded == []
     assert out.strip(), "it answered nothing, so it cannot have read"
+
+
+def test_what_changed_is_told_with_nothing_heavy(own: Path, tmp_path: Path) -> None:
+    from stockroom.service.printed_plans import keep
+
+    keep(own, as_at=date(2027, 1, 4), by="T1")
+    loaded, out = left_loaded(RUN, "--store", str(own), "changed", folder=tmp_path)
+    assert (loaded, out[:7]) == ([], "nothing")
 
 
 @pytest.mark.parametrize("library", ["pint", "sqlalchemy", "numpy", "uncertainties"])

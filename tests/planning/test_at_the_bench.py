@@ -30,7 +30,7 @@ from stockroom.planning.decisions import Make
 from stockroom.planning.facts import Closeness, Facts, Form, Line
 from stockroom.planning.plan import plan
 from stockroom.planning.ready import readiness
-from stockroom.planning.why import why
+from stockroom.planning.whys.why import why
 from stockroom.safety.cautions import PAST_TESTING
 
 TENTH = solution(0.1)

@@ -28,7 +28,8 @@ from hypothesis import strategies as st
 
 from stockroom.keeping.rules import Origin
 from stockroom.measure.workdays import Calendar
-from stockroom.planning.buy import choose_packs, share_out
+from stockroom.planning.buying.money import share_out
+from stockroom.planning.buying.packs import choose_packs
 from stockroom.planning.decisions import Order, Outcome, Plan
 from stockroom.planning.facts import Department, Line
 

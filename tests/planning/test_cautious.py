@@ -34,11 +34,11 @@ from stockroom.keeping.strength import strengths_on
 from stockroom.keeping.verdict import verdict
 from stockroom.measure.periods import Period
 from stockroom.planning.cautious import with_caution
+from stockroom.planning.choosing.fitness import wrong_strength
 from stockroom.planning.decisions import Outcome
 from stockroom.planning.facts import Bottle, Closeness, Facts
-from stockroom.planning.fitness import wrong_strength
 from stockroom.planning.plan import plan
-from stockroom.planning.why import why
+from stockroom.planning.whys.why import why
 
 LAW = Law(1, 0.0015)
 FADES = Rule(RuleKind.FADES, law=LAW)

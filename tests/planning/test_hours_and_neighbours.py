@@ -57,9 +57,9 @@ def test_a_session_that_fills_the_staffed_hours_is_not_told(minute: int, lasts: 
     ("minute", "lasts", "said"),
     [
         (479, 100, "07:59 to 09:39 is outside staffed hours (08:00 to 16:30): "
-                   "someone must be here from 07:29"),
+                   "someone must be here from 07:29 (07:29 to 08:00 is not staffed)"),
         (890, 101, "14:50 to 16:31 is outside staffed hours (08:00 to 16:30): "
-                   "someone must be here from 14:20"),
+                   "someone must be here from 14:20 (16:30 to 16:31 is not staffed)"),
     ],
 )  # fmt: skip
 def test_a_minute_outside_the_staffed_hours_is_told(minute: int, lasts: int, said: str) -> None:

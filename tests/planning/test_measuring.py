@@ -29,7 +29,7 @@ from hypothesis import strategies as st
 from stockroom.chemistry.glassware import Ware, ware
 from stockroom.planning.decisions import Make
 from stockroom.planning.facts import Closeness, Facts, Glass, House, Ingredient
-from stockroom.planning.glass import best, nearest, vessel_for
+from stockroom.planning.making.glass import best, nearest, vessel_for
 from stockroom.planning.plan import plan
 
 STOCK = solution(10.0, "stock")

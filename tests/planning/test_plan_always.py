@@ -36,6 +36,7 @@ from hypothesis import strategies as st
 from stockroom.keeping.record import Check, CheckKind, Record
 from stockroom.keeping.rules import Law, Origin, Rule, RuleKind
 from stockroom.keeping.verdict import USABLE, verdict
+from stockroom.planning.choosing.fitness import bounds
 from stockroom.planning.decisions import Draw, Make, Outcome, Plan
 from stockroom.planning.facts import (
     Bottle,
@@ -49,7 +50,6 @@ from stockroom.planning.facts import (
     Recipe,
     Requirement,
 )
-from stockroom.planning.fitness import bounds
 from stockroom.planning.plan import plan
 
 LAST = 42

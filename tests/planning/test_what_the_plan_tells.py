@@ -33,7 +33,7 @@ from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Bar, Closeness, Facts, Line, Place, Swap
 from stockroom.planning.plan import plan
 from stockroom.planning.ready import Readiness, readiness
-from stockroom.planning.why import LINES, folded, instead, why
+from stockroom.planning.whys.why import LINES, folded, instead, why
 
 SALT = solid()
 TENTH = solution(0.1)

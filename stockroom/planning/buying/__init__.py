@@ -1,0 +1,1 @@
+"""What to order, by when, in which packs and for whose money; what the term uses."""

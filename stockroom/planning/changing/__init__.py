@@ -1,0 +1,1 @@
+"""Two plans held against each other: what changed, each with its cause, and what would if."""

@@ -1,0 +1,1 @@
+"""What is to be made as batches: told as numbers, and back as makes with their cards."""

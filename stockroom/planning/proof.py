@@ -1,0 +1,84 @@
+"""How near the best there can be a family's makes are: proved by a solver, or how much is open.
+
+A family is a stock and everything made from it. The other makes keep their days, and their
+minutes count against the daily limit.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+
+from stockroom.errors import NotAllowed
+from stockroom.lots.cost import cost_of, load_of
+from stockroom.lots.exact import prove
+from stockroom.lots.families import Family, families, only, part_of
+from stockroom.lots.model import Arrangement, Problem
+from stockroom.lots.objective import Cost
+from stockroom.planning.facts import Facts
+from stockroom.planning.settle import needs_of, settled
+
+
+@dataclass(frozen=True, slots=True)
+class Proved:
+    """A family's lines and makes, what they cost, and the least any plan of them could.
+
+    `best` is the cheapest the solver found, `bound` what nothing is below, in minutes;
+    `gap` the fraction of our cost that might still be saved; `proved`: it is nothing.
+    """
+
+    lines: tuple[str, ...]
+    makes: int
+    ours: Cost
+    best: Cost
+    bound: float
+
+    @property
+    def gap(self) -> float:
+        """From 0 to 1; 0 also where there is nothing to make."""
+        total = self.ours.total
+        return max(0.0, (total - self.bound) / total) if total > 0 else 0.0
+
+    @property
+    def proved(self) -> bool:
+        """True when nothing better exists."""
+        return self.gap < PROVED
+
+
+PROVED = 1e-6
+"""The gap, as a fraction, that is no more than rounding. Our choice."""
+
+
+def proof_of(facts: Facts, key: str, seconds: float) -> Proved:
+    """The proof for the family of one line, in so many seconds of the solver's time.
+
+    Raises NotAllowed when the plan makes nothing of that line; Refused where the solver is
+    not installed.
+    """
+    made = settled(facts, needs_of(facts))[1]
+    problem, arranged = made.numbers.problem, made.arranged
+    family = _family(problem, key)
+    if family is None:
+        raise NotAllowed(
+            f"The plan makes no {key}, so there is nothing to prove.",
+            "Name a line that is made: stockroom fresh lists them.",
+        )
+    part, ours = _by_itself(problem, arranged, family), only(problem, family, arranged)
+    proof = prove(part, seconds=seconds, start=ours)
+    names = tuple(dict.fromkeys(sort.name for sort in part.sorts))
+    return Proved(names, len(ours.batches), cost_of(part, ours), proof.cost, proof.bound)
+
+
+def _family(problem: Problem, key: str) -> Family | None:
+    """Everything that hangs together with any sort of that name."""
+    hit = [family for family in families(problem) if _names(problem, family, key)]
+    return tuple(sorted(number for family in hit for number in family)) or None
+
+
+def _names(problem: Problem, family: Family, key: str) -> bool:
+    return any(problem.sorts[number].name == key for number in family)
+
+
+def _by_itself(problem: Problem, arranged: Arrangement, family: Family) -> Problem:
+    """The family's part of the problem, with what the others do spoken for."""
+    others = tuple(batch for batch in arranged.batches if batch.sort not in family)
+    return replace(part_of(problem, family), busy=tuple(load_of(problem, others)))
