@@ -23,6 +23,7 @@ from stockroom.store.likeness import plain, unknown
 from stockroom.store.names import find_department, find_place
 from stockroom.store.rows_house import temperature_of
 from stockroom.store.rows_methods import lead_of, price_of
+from stockroom.store.rows_orders import ask_days_of
 from stockroom.store.tables import Line, Pack, RowChange
 
 # each table of a store is its own class, and only its columns are of interest here
@@ -185,6 +186,8 @@ CHANGEABLE: dict[str, Changeable] = {
             "level_cm3": _LEVEL,
             "level_items": _LEVEL,
             "keep_note": _text("keep_note"),
+            "ask_first": _text("ask_first"),
+            "ask_days": Column("ask_days", lambda fields, _: ask_days_of(fields), _number),
         },
     ),
     "packs": Changeable(

@@ -16,6 +16,7 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         "balance": "id balance step source",
         "balance_away": "id balance_id starts_on ends_on",
         "vessel": "id vessel size source",
+        "vessel_away": "id vessel_id starts_on ends_on",
         "glassware": "id glass kind size glass_class step source",
         "glassware_away": "id glassware_id starts_on ends_on",
         "reading": "id place_id at centi",
@@ -28,7 +29,8 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         " entered_at",
         "other_name": "id substance_id name",
         "line": "id key item substance_id form kind strength unit strength_text formula"
-        " molar_mass assay density level largest_batch never_kept vented_cap keep_note source",
+        " molar_mass assay density level largest_batch never_kept vented_cap keep_note"
+        " ask_first ask_days source",
         "keeping_rule": "id line_id rule lasts_count lasts_unit counted_from purpose safety"
         " decay_order rate at_c factor_per_10c ea_kj_mol named_law above upto colder_than"
         " warmer_than source house in_use",
@@ -36,6 +38,12 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         " smallest_batch steps cautions source",
         "ingredient": "id line_id ingredient_id alternative role per_dm3 only_if_held source",
         "pack": "id line_id size text pence lead supplier source",
+        "placed": "id number line_id size pack packs pence supplier ordered_on expected_on"
+        " entered_on entered_at by note",
+        "placed_share": "id placed_id department_id pence",
+        "placed_came": "id placed_id entry_id",
+        "placed_change": "id placed_id what before after why happened_on entered_on entered_at by",
+        "former_use": "id line_id starts_on ends_on amount groups source",
         "recipe": "id recipe version title never_kept waste handling assessment source",
         "requirement": "id recipe_id number line_id lowest highest strength_text amount per"
         " closeness closeness_guessed tolerance fresh freshest_days spare may_differ"
@@ -49,6 +57,7 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         " remark made_here source",
         "parent": "id bottle_id parent_id",
         "row_change": "id table_name row_key column_name before after why by entered_on entered_at",
+        "printed_plan": "id number as_at kept_at by cautious digest usual marks decisions",
         "entry": "id bottle_id kind happened_on entered_on entered_at by change strength"
         " strength_text uncertainty peroxide_mg_kg passed place_id reason note booking puts_right",
     }.items()

@@ -42,3 +42,6 @@ STANDING = (
     " AND entry.id NOT IN (SELECT puts_right FROM entry WHERE puts_right IS NOT NULL)"
 )
 """SQL for entries that still hold: neither put right, nor the putting right itself."""
+
+CANCELLED, EXPECTED = "cancelled", "expected"
+"""What may be changed of an order that was placed: given up, or put off to another day."""

@@ -17,6 +17,7 @@ from stockroom.store import (
     rows_house,
     rows_lines,
     rows_methods,
+    rows_orders,
     rows_recipes,
     rows_rules,
 )
@@ -48,7 +49,7 @@ TABLES: dict[str, Table] = {
     "places": _table("place name temperature_c meant_for", rows_house.read_place),
     "departments": _table("department name left_gbp", rows_house.read_department),
     "balances": _table("balance step_g away_from away_to", rows_house.read_balance),
-    "vessels": _table("vessel size_cm3", rows_house.read_vessel),
+    "vessels": _table("vessel size_cm3 away_from away_to", rows_house.read_vessel),
     "glassware": _table(
         "glass kind size_cm3 class step_cm3 away_from away_to", rows_house.read_glassware
     ),
@@ -63,7 +64,8 @@ TABLES: dict[str, Table] = {
     ),
     "lines": _table(
         "item strength substance form formula assay_percent density_g_cm3 level_g level_cm3"
-        " level_items largest_batch_cm3 never_kept vented_cap keep_note measured_in",
+        " level_items largest_batch_cm3 never_kept vented_cap keep_note measured_in ask_first"
+        " ask_days",
         rows_lines.read_line,
     ),
     "keeping": _table(
@@ -83,6 +85,9 @@ TABLES: dict[str, Table] = {
     "packs": _table(
         "line size_g size_cm3 size_items price_gbp lead_open_days supplier_ref",
         rows_methods.read_pack,
+    ),
+    "former_use": _table(
+        "line from to amount_g amount_cm3 amount_items groups", rows_orders.read_former_use
     ),
     "recipes": _table(
         "recipe version title never_kept waste handling assessment_ref", rows_recipes.read_recipe

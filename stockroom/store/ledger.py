@@ -6,8 +6,6 @@ when are kept apart, so Friday's draw can be entered on Monday.
 
 from __future__ import annotations
 
-import re
-from collections.abc import Iterable
 from dataclasses import dataclass
 from datetime import date, datetime
 
@@ -18,6 +16,7 @@ from stockroom.errors import BadDate, BadInput, NotEnough
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_amount
+from stockroom.store.booking_limits import next_number
 from stockroom.store.kinds import BEGINNINGS, STANDING, EntryKind
 from stockroom.store.tables import Booking, Bottle, Entry, Line
 
@@ -102,20 +101,12 @@ def overfull(bottle: Bottle, micro: int) -> bool:
 
 def next_bottle_number(session: Session, *, made_here: bool) -> str:
     """The next label number: B for bought, S for made here; numbers are never used again."""
-    return _next("S" if made_here else "B", session.exec(select(Bottle.number)).all())
+    return next_number("S" if made_here else "B", session.exec(select(Bottle.number)).all())
 
 
 def next_booking_number(session: Session) -> str:
     """The next booking number: K and digits."""
-    return _next("K", session.exec(select(Booking.number)).all())
-
-
-def _next(letter: str, used: Iterable[str]) -> str:
-    numbers = [
-        int(match[1]) for number in used if (match := re.fullmatch(rf"{letter}(\d+)[a-z]*", number))
-    ]
-    # past the highest ever given, so a number on an old label never comes back
-    return f"{letter}{max(numbers, default=0) + 1:02d}"
+    return next_number("K", session.exec(select(Booking.number)).all())
 
 
 def _write(

@@ -26,6 +26,7 @@ from stockroom.store.tables import (
     Place,
     Term,
     Vessel,
+    VesselAway,
 )
 
 _YES_NO = ("practice", "finish_day_before")
@@ -37,6 +38,8 @@ _BOUNDS: dict[str, tuple[Decimal | int, int]] = {
     "margin_open_days": (0, 100),
     "lead_open_days": (0, LONGEST_LEAD),
     "session_minutes": (1, 600),
+    # 0: no limit is kept; a whole day and a night are no figure for hands-on work
+    "day_minutes": (0, 1440),
     # nothing can be measured to less than a microlitre
     "batch_step_cm3": (Decimal("0.001"), 10_000),
     "heel_floor_cm3": (0, 10_000),
@@ -168,12 +171,26 @@ def read_balance(desk: Desk, fields: Fields) -> None:
 
 
 def read_vessel(desk: Desk, fields: Fields) -> None:
-    """A vessel to make up in."""
-    name = new_name(desk, Vessel, "vessel", fields.need("vessel"))
+    """A vessel to make up in, or a further absence of one already entered."""
+    name, away = fields.need("vessel"), _absence(fields)
+    found = desk.session.exec(select(Vessel).where(Vessel.vessel == name)).first()
     size = fields.volume("size_cm3")
-    if not size:
-        raise BadInput(f"size_cm3 of {name} is blank or 0.", "Give what it holds, as 2000.")
-    desk.save(Vessel(vessel=name, size=size, source=fields.text("source")))
+    # the same vessel again without an absence says nothing new: a second one wants its own name
+    if found is None or not away:
+        name = new_name(desk, Vessel, "vessel", name)
+        if not size:
+            raise BadInput(f"size_cm3 of {name} is blank or 0.", "Give what it holds, as 2000.")
+        found = Vessel(vessel=name, size=size, source=fields.text("source"))
+        desk.save(found)
+    if size and size != found.size:
+        raise BadAmount(
+            f"size_cm3 of {name} is {fields.text('size_cm3')} cm³ here, and"
+            f" {found.size / 1000:g} cm³ where it was entered.",
+            "Leave the size blank, or give the other vessel another name.",
+        )
+    if away:
+        assert found.id is not None
+        desk.save(VesselAway(vessel_id=found.id, starts_on=away[0], ends_on=away[1]))
 
 
 def read_glassware(desk: Desk, fields: Fields) -> None:

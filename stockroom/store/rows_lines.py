@@ -15,6 +15,7 @@ from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.names import find_substance, other_names
 from stockroom.store.rows_house import new_name
+from stockroom.store.rows_orders import ask_days_of
 from stockroom.store.tables import Line, OtherName, Substance
 
 _MEASURED = {Form.SOLID: Kind.MASS, Form.LIQUID: Kind.VOLUME, Form.SOLUTION: Kind.VOLUME}
@@ -87,6 +88,8 @@ def read_line(desk: Desk, fields: Fields) -> None:
         never_kept=fields.text("never_kept"),
         vented_cap=fields.flag("vented_cap"),
         keep_note=fields.text("keep_note"),
+        ask_first=fields.text("ask_first"),
+        ask_days=ask_days_of(fields),
         source=fields.text("source"),
     )
     desk.save(row)

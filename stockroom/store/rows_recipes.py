@@ -8,15 +8,13 @@ from stockroom.errors import BadInput
 from stockroom.measure.amounts import Kind
 from stockroom.measure.parsing import parse_strength_range
 from stockroom.planning.facts import Closeness, Firmness, Per
+from stockroom.store.booking_limits import checked_groups, checked_spare
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
 from stockroom.store.names import find_department, find_recipe, find_substance, substance_of
 from stockroom.store.rows_house import new_name
 from stockroom.store.rows_lines import beside, number_beside
 from stockroom.store.tables import Bar, Booking, Line, Recipe, Requirement, Swap
-
-MOST_GROUPS = 200
-MOST_SPARE = 50
 
 
 def read_recipe(desk: Desk, fields: Fields) -> None:
@@ -142,22 +140,3 @@ def read_booking(desk: Desk, fields: Fields) -> None:
         source=fields.text("source"),
     )
     desk.save(row)
-
-
-def checked_groups(groups: int) -> int:
-    """The number of groups, when it can be meant. Raises: BadInput."""
-    # 400 is likelier a slip of the keyboard than a class
-    if not 1 <= groups <= MOST_GROUPS:
-        raise BadInput(f"{groups} groups?", f"Give 1 to {MOST_GROUPS}.")
-    return groups
-
-
-def checked_spare(percent: float | None) -> int:
-    """Spare in thousandths from a per cent; 10 % when not said. Raises: BadInput.
-
-    Spare is usually 5-20 %: common practice, no source; ten unless said is a house choice.
-    """
-    found = 10.0 if percent is None else percent
-    if not 0 <= found <= MOST_SPARE:
-        raise BadInput(f"{found:g} %? Spare is usually 5-20.", f"Give 0 to {MOST_SPARE}.")
-    return round(found * 10)

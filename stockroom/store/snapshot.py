@@ -23,10 +23,13 @@ from stockroom.planning.facts import (
     Glass,
     House,
     Place,
+    Vessel,
 )
+from stockroom.store.printed_plans import usual_of
 from stockroom.store.reading import Reader, Row, reading
 from stockroom.store.snapshot_bottles import bottles_of, drawn_of
 from stockroom.store.snapshot_lines import lines_of, methods_of, recipes_of
+from stockroom.store.snapshot_orders import former_of, placed_of, year_before_of
 
 SPAN = timedelta(days=90)
 """How far ahead to look when no term is written down: about a term."""
@@ -51,6 +54,7 @@ def facts_from(
     """The same as `facts`, from a store already open."""
     settings = _settings(reader)
     first, last = _period(reader, as_at, start, end)
+    before = year_before_of(reader, start or first, end or last)
     return Facts(
         as_at=as_at,
         start=start or first,
@@ -67,9 +71,15 @@ def facts_from(
         bottles=bottles_of(reader, as_at),
         balances=_balances(reader),
         glassware=_glassware(reader),
+        vessels=_vessels(reader),
         departments=_departments(reader),
         places=places_of(reader),
         drawn=drawn_of(reader, as_at),
+        usual=usual_of(reader, as_at),
+        placed=placed_of(reader, as_at, min(first, as_at)),
+        year_before=before,
+        former=former_of(reader, before),
+        former_bookings=_bookings(reader, settings, *before),
     )
 
 
@@ -126,6 +136,7 @@ def _house(reader: Reader, settings: dict[str, str]) -> House:
         finish_day_before=settings.get("finish_day_before", "yes") == "yes",
         # None: no vessel is written down, so none bounds a batch
         largest_vessel=max(vessels, default=None),
+        day_minutes=int(settings.get("day_minutes", usual.day_minutes)),
     )
 
 
@@ -195,6 +206,13 @@ def _glassware(reader: Reader) -> tuple[Glass, ...]:
             away.get(row["id"], ()),
         )
         for row in reader.rows("glassware")
+    )
+
+
+def _vessels(reader: Reader) -> tuple[Vessel, ...]:
+    away = _away(reader, "vessel_away", "vessel_id")
+    return tuple(
+        Vessel(row["vessel"], row["size"], away.get(row["id"], ())) for row in reader.rows("vessel")
     )
 
 

@@ -85,6 +85,8 @@ def _line(
         storage_group=substance["storage_group"] if substance else "",
         keep_note=row["keep_note"],
         packs=packs,
+        ask_first=row["ask_first"],
+        ask_days=row["ask_days"],
     )
 
 

@@ -5,9 +5,9 @@ dates, times minutes after midnight, strengths in the line's own unit with the
 text as written beside them. Blank text is "", an unknown figure NULL. Amounts are
 BIGINT, since a 32-bit column elsewhere than in SQLite ends at 2 kg.
 
-The classes are in `tables_house.py`, `tables_lines.py`, `tables_bookings.py` and
-`tables_ledger.py`. Those have no `from __future__ import annotations`, alone in the
-project: SQLModel reads the annotations of its classes while they are being made.
+The classes are in `tables_house.py`, `tables_lines.py`, `tables_bookings.py`,
+`tables_ledger.py` and `tables_plans.py`. Those have no `from __future__ import annotations`,
+alone in the project: SQLModel reads the annotations of its classes while they are being made.
 """
 
 from __future__ import annotations
@@ -34,6 +34,7 @@ from stockroom.store.tables_house import (
     ReadingTakenBack,
     Term,
     Vessel,
+    VesselAway,
 )
 from stockroom.store.tables_ledger import (
     Bottle,
@@ -52,6 +53,14 @@ from stockroom.store.tables_lines import (
     Pack,
     Substance,
 )
+from stockroom.store.tables_orders import (
+    FormerUse,
+    Placed,
+    PlacedCame,
+    PlacedChange,
+    PlacedShare,
+)
+from stockroom.store.tables_plans import PrintedPlan
 
 __all__ = [
     "Balance",
@@ -63,6 +72,7 @@ __all__ = [
     "Closure",
     "Department",
     "Entry",
+    "FormerUse",
     "Glassware",
     "GlasswareAway",
     "Hazard",
@@ -77,6 +87,11 @@ __all__ = [
     "Pack",
     "Parent",
     "Place",
+    "Placed",
+    "PlacedCame",
+    "PlacedChange",
+    "PlacedShare",
+    "PrintedPlan",
     "Reading",
     "ReadingTakenBack",
     "Recipe",
@@ -86,4 +101,5 @@ __all__ = [
     "Swap",
     "Term",
     "Vessel",
+    "VesselAway",
 ]

@@ -89,6 +89,16 @@ class Vessel(Numbered, table=True):
     source: str = ""
 
 
+class VesselAway(Numbered, table=True):
+    """Days a vessel is away."""
+
+    __tablename__ = "vessel_away"
+
+    vessel_id: int = Field(foreign_key="vessel.id")
+    starts_on: date
+    ends_on: date
+
+
 class Glassware(Numbered, table=True):
     """A kind of measuring glass and its size and finest mark in µL; `glass_class` A, B or ""."""
 

@@ -78,6 +78,9 @@ class Line(Numbered, table=True):
     never_kept: str = ""
     vented_cap: bool = False
     keep_note: str = ""
+    # whose leave an order needs, and the open days it takes to get
+    ask_first: str = ""
+    ask_days: int = 0
     source: str = ""
 
 

@@ -1,18 +1,125 @@
-"""What is on order, and what must be asked for first.
+"""Orders placed and what came of them, leave to be asked first, and earlier terms' use.
 
-Revision: 0004, from 0003.
+Revision: 0004, from 0003. Every new column has a value for the rows already there.
 """
 
 from __future__ import annotations
 
+from typing import Any
+
+import sqlalchemy as sa
+from alembic import op
+
 revision = "0004"
 down_revision = "0003"
 
+Column = sa.Column[Any]
+
 
 def upgrade() -> None:
-    """Nothing yet."""
+    """Add the tables and what guards them, then the two columns of a line."""
+    _orders()
+    _table(
+        "former_use",
+        _link("line_id", "line"),
+        _day("starts_on"),
+        _day("ends_on"),
+        _amount("amount"),
+        sa.Column("groups", sa.Integer(), nullable=True),
+        _text("source"),
+        sa.UniqueConstraint("line_id", "starts_on", "ends_on"),
+    )
+    op.add_column("line", _text("ask_first", server_default=""))
+    op.add_column("line", _whole("ask_days", server_default="0"))
+    for trigger in TRIGGERS:
+        op.execute(trigger)
 
 
 def downgrade() -> None:
     """Refused: what was entered since would be lost."""
     raise NotImplementedError("This layout is never taken back; restore the copy made before it.")
+
+
+def _orders() -> None:
+    _table(
+        "placed",
+        _text("number", unique=True),
+        _link("line_id", "line"),
+        _amount("size"),
+        _text("pack"),
+        _whole("packs"),
+        _whole("pence"),
+        _text("supplier"),
+        _day("ordered_on"),
+        _day("expected_on"),
+        *_stamp(),
+        _text("note"),
+    )
+    _table(
+        "placed_share",
+        _link("placed_id", "placed"),
+        _link("department_id", "department"),
+        _whole("pence"),
+        sa.UniqueConstraint("placed_id", "department_id"),
+    )
+    _table("placed_came", _link("placed_id", "placed"), _link("entry_id", "entry", unique=True))
+    _table(
+        "placed_change",
+        _link("placed_id", "placed"),
+        *[_text(name) for name in ("what", "before", "after", "why")],
+        _day("happened_on"),
+        *_stamp(),
+    )
+
+
+def _stamp() -> tuple[Column, ...]:
+    return _day("entered_on"), _text("entered_at"), _text("by")
+
+
+def _text(name: str, **options: Any) -> Column:
+    return sa.Column(name, sa.String(), nullable=False, **options)
+
+
+def _whole(name: str, **options: Any) -> Column:
+    return sa.Column(name, sa.Integer(), nullable=False, **options)
+
+
+def _amount(name: str) -> Column:
+    return sa.Column(name, sa.BigInteger(), nullable=False)
+
+
+def _day(name: str) -> Column:
+    return sa.Column(name, sa.Date(), nullable=False)
+
+
+def _link(name: str, to: str, **options: Any) -> Column:
+    return sa.Column(name, sa.Integer(), sa.ForeignKey(f"{to}.id"), nullable=False, **options)
+
+
+def _table(name: str, *columns: Any) -> None:
+    op.create_table(name, sa.Column("id", sa.Integer(), primary_key=True), *columns)
+
+
+# KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
+def _kept(table: str, what: str, alike: str = "id = NEW.id") -> tuple[str, ...]:
+    def never(name: str, when: str, past: str, only: str = "") -> str:
+        return (
+            f"CREATE TRIGGER {table}_no_{name} BEFORE {when} ON {table}{only}"
+            f" BEGIN SELECT RAISE(ABORT, 'KEPT {what} is never {past}.'); END"
+        )
+
+    # INSERT OR REPLACE would remove the old row without waking the DELETE trigger
+    there = f" WHEN EXISTS (SELECT 1 FROM {table} WHERE {alike})"
+    return (
+        never("update", "UPDATE", "altered"),
+        never("delete", "DELETE", "removed"),
+        never("overwrite", "INSERT", "written over", there),
+    )
+
+
+TRIGGERS = (
+    *_kept("placed", "An order that was placed", "id = NEW.id OR number = NEW.number"),
+    *_kept("placed_share", "Whose money an order was"),
+    *_kept("placed_came", "What came of an order", "id = NEW.id OR entry_id = NEW.entry_id"),
+    *_kept("placed_change", "The record of an order"),
+)
