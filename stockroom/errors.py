@@ -9,7 +9,8 @@
         ├── MissingFigure   a density, molar mass or strength is needed first
         ├── NotEnough       more asked for than there is
         ├── NotAllowed      barred, never kept, set aside, gone, out of order
-        └── StoreTrouble    the store is missing, busy, damaged, read-only or too new
+        ├── StoreTrouble    the store is missing, busy, damaged, read-only or too new
+        └── BrokenPlan      the plan made breaks a rule of the house, and is not shown
 
 The message quotes the value that was wrong and names the bottle, row or column
 it stood in; the hint says what to do next.
@@ -71,3 +72,7 @@ class NotAllowed(Refused):
 
 class StoreTrouble(Refused):
     """The store is missing, busy, damaged, read-only, or from a newer version."""
+
+
+class BrokenPlan(Refused):
+    """The plan breaks a rule it must keep: a fault of the planner, found before it is shown."""

@@ -27,7 +27,20 @@ Cautious = Annotated[
 
 
 def plan(
-    ctx: typer.Context, start: From = None, end: To = None, cautious: Cautious = False
+    ctx: typer.Context,
+    start: From = None,
+    end: To = None,
+    cautious: Cautious = False,
+    exact: Annotated[
+        str | None,
+        typer.Option(metavar="NAME", help="Prove the makes of this stock and all made from it."),
+    ] = None,
+    seconds: Annotated[
+        float, typer.Option(metavar="N", help="With --exact: the solver's time.")
+    ] = 30.0,
+    keep: Annotated[
+        bool, typer.Option("--keep", help="Keep the term's plan, and give this copy a number.")
+    ] = False,
 ) -> None:
     """The plan of the term: have, make, check, order, and what cannot be done.
 
@@ -36,9 +49,16 @@ def plan(
     from stockroom.reports.json_plan import plan_json
     from stockroom.reports.plan_text import plan_text
     from stockroom.service.plan import term_plan
+    from stockroom.service.printed_plans import keep as keep_plan
 
     shared = of(ctx)
-    answer = term_plan(shared.path, **_asked(shared, start, end), cautious=cautious)
+    if exact is not None:
+        return _prove(shared, exact, seconds, cautious=cautious)
+    asked = _asked(shared, start, end)
+    if keep:
+        answer = keep_plan(shared.path, **asked, cautious=cautious, by=shared.initials)
+    else:
+        answer = term_plan(shared.path, **asked, cautious=cautious)
     show(shared, lambda: plan_text(answer, width()), lambda: plan_json(answer))
 
 
@@ -143,10 +163,10 @@ def why(
     ctx: typer.Context,
     ref: Annotated[
         str,
-        typer.Argument(metavar="REF", help="A booking, need, make, order or bottle: K15, K15.1."),
+        typer.Argument(metavar="REF", help="What is meant: K15, K15.1, M14, O02, S10, a name."),
     ],
     instead: Annotated[
-        str | None, typer.Option(metavar="NAME", help="Ask about this in its place.")
+        str | None, typer.Option(metavar="NAME", help="Why not this: S10, a day, a pack.")
     ] = None,
     cautious: Cautious = False,
 ) -> None:
@@ -166,6 +186,20 @@ def why(
         shared,
         lambda: why_text(reasons, practice=practice, cautious=cautious),
         lambda: why_json(ref, reasons, as_at=today, practice=practice, cautious=cautious),
+    )
+
+
+def _prove(shared: Shared, name: str, seconds: float, *, cautious: bool) -> None:
+    from stockroom.reports.proof_text import proof_json, proof_text
+    from stockroom.service.database import is_practice
+    from stockroom.service.proof import proof
+
+    practice = is_practice(shared.path)
+    told = proof(shared.path, name, seconds=seconds, as_at=shared.today, cautious=cautious)
+    show(
+        shared,
+        lambda: proof_text(told, width(), practice=practice),
+        lambda: proof_json(told, practice=practice),
     )
 
 

@@ -31,6 +31,7 @@ SEVERAL = {
     "fades": frozenset({"--below"}),
     "make": frozenset({"--from"}),
     "titrate": frozenset({"--dilution"}),
+    "what-if": frozenset({"--groups", "--shift", "--without", "--cancel", "--book"}),
 }
 """The options that take several values, for each command that has one."""
 

@@ -52,6 +52,7 @@ def arrive(
         str, typer.Option(metavar="vented|tight", help="Its cap; not looked at if left out.")
     ] = "",
     note: Annotated[str, typer.Option(help="Anything written on it.")] = "",
+    order: Annotated[str, typer.Option(metavar="NUMBER", help="The order it came of: P01.")] = "",
     on: Happened = None,
 ) -> None:
     """A bottle arrived: give it a number and put it away.
@@ -71,6 +72,7 @@ def arrive(
         opened=None if opened == "no" else day_or_none(opened, "--opened"),
         cap=cap,
         note=note,
+        order=order,
         **when(shared, on),
     )
     show_done(shared, done)

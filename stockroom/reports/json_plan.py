@@ -15,7 +15,6 @@ from stockroom.keeping.caution import LowerLimits
 from stockroom.measure.amounts import BASE_UNIT, PER_UNIT, Kind
 from stockroom.planning.decisions import (
     Answer,
-    CheckToDo,
     Draw,
     Level,
     Make,
@@ -25,6 +24,8 @@ from stockroom.planning.decisions import (
     Short,
     Use,
 )
+from stockroom.reports.json_buying import bought_json, more_of_order, year_before
+from stockroom.reports.json_people import check_data, load_data, watch_data
 from stockroom.reports.sheet import is_bottle
 from stockroom.reports.words import rounded
 
@@ -36,19 +37,25 @@ Data = dict[str, Any]
 
 def plan_json(plan: Plan) -> Data:
     """The whole plan. Lists keep the planner's order, which is by day, then number."""
-    return _top(plan) | {
-        "needs": [_need(need) for need in plan.needs],
-        "makes": [_make(make) for make in plan.makes],
-        "past": [_past(bottle) for bottle in plan.past],
-        "usage": [_use(use) for use in plan.usage],
-        "drawn": [_use(use) for use in plan.drawn],
-        "orders": [_order(order) for order in plan.orders],
-        "short": [_short(short) for short in plan.short],
-        "checks": [_check(check) for check in plan.checks],
-        "levels": [_level(level) for level in plan.levels],
-        "guesses": [_finding(finding) for finding in plan.guesses],
-        "notes": [_finding(finding) for finding in plan.notes],
-    }
+    return (
+        _top(plan)
+        | {
+            "needs": [_need(need) for need in plan.needs],
+            "makes": [_make(make) for make in plan.makes],
+            "past": [_past(bottle) for bottle in plan.past],
+            "usage": [_use(use) for use in plan.usage],
+            "drawn": [_use(use) for use in plan.drawn],
+            "orders": [_order(order) for order in plan.orders],
+            "short": [_short(short) for short in plan.short],
+            "checks": [check_data(check) for check in plan.checks],
+            "levels": [_level(level) for level in plan.levels],
+            "guesses": [_finding(finding) for finding in plan.guesses],
+            "notes": [_finding(finding) for finding in plan.notes],
+            "loads": [load_data(load) for load in plan.loads],
+            "watch": [watch_data(watch) for watch in plan.watch],
+        }
+        | bought_json(plan)
+    )
 
 
 def fresh_json(plan: Plan) -> Data:
@@ -66,15 +73,25 @@ def usage_json(plan: Plan) -> Data:
     return _top(plan) | {
         "usage": [_use(use) for use in plan.usage],
         "drawn": [_use(use) for use in plan.drawn],
+        "differences": list(plan.differences),
     }
 
 
 def buying_json(plan: Plan) -> Data:
-    """What to order (`orders`) and the days lines fall below their level (`levels`)."""
-    return _top(plan) | {
-        "orders": [_order(order) for order in plan.orders],
-        "levels": [_level(level) for level in plan.levels],
-    }
+    """What to order (`orders`), what is on its way, the money, and lines below their level."""
+    return (
+        _top(plan)
+        | bought_json(plan)
+        | {
+            "orders": [_order(order) for order in plan.orders],
+            "levels": [_level(level) for level in plan.levels],
+        }
+    )
+
+
+def on_order_json(plan: Plan) -> Data:
+    """What was ordered and has not all come, as in the plan's `on_order`."""
+    return _top(plan) | {"on_order": bought_json(plan)["on_order"]}
 
 
 def ready_json(
@@ -91,7 +108,7 @@ def ready_json(
         "to_do": list(readiness.to_do),
         "needs": [_need(need) for need in readiness.needs],
         "makes": [_make(make) for make in readiness.makes],
-        "checks": [_check(check) for check in readiness.checks],
+        "checks": [check_data(check) for check in readiness.checks],
         "strengths": list(readiness.strengths),
         "cautions": list(readiness.cautions),
     }
@@ -111,7 +128,17 @@ def _top(plan: Plan) -> Data:
         "practice": plan.house.practice,
         "cautious": plan.lower_limits is not None,
         "period": {"from": plan.start.isoformat(), "to": plan.end.isoformat()},
+        "kept_as": plan.kept_as or None,
+        "changed_since": _changed_since(plan),
     } | _lower_limits(plan.lower_limits)
+
+
+def _changed_since(plan: Plan) -> Data | None:
+    """The plan kept last and how many changes there are since; None where there are none."""
+    if plan.changed_since is None:
+        return None
+    number, count = plan.changed_since
+    return {"plan": number, "changes": count}
 
 
 def _lower_limits(limits: LowerLimits | None) -> Data:
@@ -189,6 +216,7 @@ def _make(make: Make) -> Data:
         "good_until": _iso(make.good_until),
         "fresh": make.fresh,
         "minutes": make.minutes,
+        "vessels": make.vessels,
         "for": list(make.bookings),
         "sources": [_source(draw) for draw in make.sources],
         "heel": _number(make.heel),
@@ -218,7 +246,8 @@ def _use(use: Use) -> Data:
         **_measured(use.amount, use.kind),
         "spare": _number(use.spare, use.kind),
         "by_booking": {number: _number(amount, use.kind) for number, amount in use.by_booking},
-    }
+        "groups": use.groups,
+    } | year_before(use)
 
 
 def _order(order: Order) -> Data:
@@ -236,7 +265,7 @@ def _order(order: Order) -> Data:
         "shares": {department: pence / 100 for department, pence in order.shares},
         "for": list(order.for_bookings),
         "reasons": list(order.reasons),
-    }
+    } | more_of_order(order)
 
 
 def _short(short: Short) -> Data:
@@ -250,20 +279,6 @@ def _short(short: Short) -> Data:
     }
 
 
-def _check(check: CheckToDo) -> Data:
-    return {
-        **_about(check.subject, otherwise="subject"),
-        "item": check.item,
-        "what": check.what,
-        "not_before": check.not_before.isoformat(),
-        "by": check.by.isoformat(),
-        "best": check.best.isoformat(),
-        "for": list(check.bookings),
-        "reason": check.reason,
-        "optional": check.optional,
-    }
-
-
 def _level(level: Level) -> Data:
     return {
         "item": level.item,
@@ -271,6 +286,7 @@ def _level(level: Level) -> Data:
         "on": level.on.isoformat(),
         "left": _number(level.left, level.kind),
         "level": _number(level.level, level.kind),
+        "runs_out": _iso(level.runs_out),
         "unit": BASE_UNIT[level.kind],
     }
 

@@ -3,14 +3,17 @@
 from __future__ import annotations
 
 from collections import Counter
+from dataclasses import replace
 from itertools import groupby
 
 from stockroom.measure.days import format_time
 from stockroom.planning.decisions import Answer, Outcome, Plan
 from stockroom.reports.buying_text import level_section, order_lines
+from stockroom.reports.checks_text import check_lines
 from stockroom.reports.makes_text import makes_by_day
 from stockroom.reports.past_text import past_lines
-from stockroom.reports.ready_text import check_lines, served
+from stockroom.reports.people_text import load_section, told_apart, watch_section
+from stockroom.reports.ready_text import served
 from stockroom.reports.sheet import (
     columns,
     foot,
@@ -36,10 +39,12 @@ def plan_text(plan: Plan, width: int) -> str:
             section("ORDER BY", order_lines(plan, width)),
             level_section(plan, width),
             section("MAKE", makes_by_day(plan.makes, width)),
+            load_section(plan, width),
             section("CHECK", check_lines(plan.checks, width)),
+            watch_section(plan, width),
             section("PAST, WEAK, UNDATED", past_lines(plan, width)),
             section("BOOKINGS", booking_lines(plan, width)),
-            notes(plan, width),
+            notes(replace(plan, notes=told_apart(plan)), width),
             guesses(plan, width),
             foot(width, f"stockroom why {_puzzling(plan)}", "stockroom fresh", "stockroom buying"),
         ]

@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from stockroom.planning.decisions import Answer, CheckToDo, Outcome
+from stockroom.planning.decisions import Answer, Outcome
+from stockroom.reports.checks_text import check_lines
 from stockroom.reports.makes_text import makes_by_day
 from stockroom.reports.sheet import CAUTIOUS, PRACTICE, columns, foot, page, section, wrap
-from stockroom.reports.words import amount, counted, day, listed, named, raised, source
+from stockroom.reports.words import amount, counted, named, raised, source
 
 if TYPE_CHECKING:
     from stockroom.planning.ready import Readiness
@@ -47,13 +48,6 @@ def why_text(reasons: tuple[str, ...], *, practice: bool = False, cautious: bool
     return "\n".join([*top, *lines])
 
 
-def check_lines(checks: tuple[CheckToDo, ...], width: int) -> list[str]:
-    """Titrations and looks to do, best day first, with the days they may be done between."""
-    # by the day to do them and not the last day allowed: it is a list of work
-    ordered = sorted(checks, key=lambda check: (check.best, check.subject))
-    return columns([(day(check.best), _check(check)) for check in ordered], width)
-
-
 def need_lines(needs: tuple[Answer, ...], width: int) -> list[str]:
     """One need a row: reference, outcome, and what of, from where."""
     return columns([(need.ref, need.outcome.value, served(need)) for need in needs], width)
@@ -86,10 +80,3 @@ def _verdict(readiness: Readiness) -> str:
 def _puzzling(readiness: Readiness) -> str:
     open_needs = [need.ref for need in readiness.needs if need.outcome is not Outcome.HAVE]
     return next(iter([*open_needs, *(need.ref for need in readiness.needs)]), "REF")
-
-
-def _check(check: CheckToDo) -> str:
-    window = f"between {day(check.not_before)} and {day(check.by)}"
-    hangs = f", for {listed(check.bookings)}" if check.bookings else ""
-    reason = f": {check.reason}" if check.reason else ""
-    return f"{check.what} {check.subject} {check.item}, {window}{hangs}{reason}"

@@ -56,7 +56,18 @@ def head(plan: Plan, width: int, *about: str) -> str:
     """The top of a sheet: PRACTICE if it is, the house, what it is about, and how cautious."""
     lines = [plan.house.name, *(wrap(line, width) for line in about)]
     lines += [wrap(safe_side(plan.lower_limits), width)] if plan.lower_limits else []
+    lines += [wrap(line, width) for line in printed_copy(plan)]
     return "\n".join([PRACTICE, *lines] if plan.house.practice else lines)
+
+
+def printed_copy(plan: Plan) -> list[str]:
+    """The number a plan was kept under, or how far it is from the one kept last; else nothing."""
+    if plan.kept_as:
+        return [f"Plan {plan.kept_as}, kept: what changes from now on is told by stockroom changed"]
+    if plan.changed_since is None:
+        return []
+    number, count = plan.changed_since
+    return [f"{counted(count, 'change')} since plan {number} was kept: stockroom changed"]
 
 
 def safe_side(limits: LowerLimits) -> str:

@@ -3,8 +3,8 @@
 from __future__ import annotations
 
 from stockroom.planning.decisions import Plan, Use
-from stockroom.reports.sheet import columns, foot, head, page, section, spanning
-from stockroom.reports.words import TIED, amount, named
+from stockroom.reports.sheet import columns, foot, head, page, section, spanning, wrap
+from stockroom.reports.words import TIED, amount, counted, named
 
 FORMS = {
     "solution": "SOLUTIONS",
@@ -13,19 +13,27 @@ FORMS = {
 }
 """Each `Use.form` with its heading, in the order they are printed."""
 
+_BESIDE = " (this term, the same term a year before)"
+_KNOWN_BY = {
+    "entries": "as the entries say",
+    "bookings": "as its bookings work out",
+    "table": "as written down",
+}
+
 
 def usage_text(plan: Plan, width: int) -> str:
     """Totals by solution and in bought form, with spare shown apart, and by booking.
 
     A dilution is counted once: as itself among the solutions, and in the bought
-    form it is made from.
+    form it is made from. The year before stands beside it where anything is known of it.
     """
-    parts = [
-        head(plan, width, f"What is used {spanning(plan)}"),
-        *(
-            section(heading, _lines([use for use in plan.usage if use.form == form], width))
-            for form, heading in FORMS.items()
-        ),
+    parts = [head(plan, width, f"What is used {spanning(plan)}")]
+    for form, heading in FORMS.items():
+        uses = [use for use in plan.usage if use.form == form]
+        beside = _BESIDE if _compared(uses) else ""
+        parts.append(section(f"{heading}{beside}", _lines(uses, width)))
+    parts += [
+        _differences(plan, width),
         section("DRAWN SO FAR (from the entries)", _lines(list(plan.drawn), width)),
         "" if plan.usage or plan.drawn else "Nothing is used in this period.",
         foot(width, "stockroom buying", "stockroom plan"),
@@ -33,12 +41,40 @@ def usage_text(plan: Plan, width: int) -> str:
     return page(parts)
 
 
+def _differences(plan: Plan, width: int) -> str:
+    basis = dict.fromkeys(use.basis for use in plan.usage if use.basis)
+    known = ", ".join(_KNOWN_BY.get(each, each) for each in basis)
+    count = counted(len(plan.differences), "difference")
+    heading = f"{count.upper()} FROM THE YEAR BEFORE, THE BIGGEST FIRST ({known})"
+    return section(heading, [wrap(text, width, indent=2) for text in plan.differences])
+
+
+def _compared(uses: list[Use]) -> bool:
+    return any(use.before is not None for use in uses)
+
+
 def _lines(uses: list[Use], width: int) -> list[str]:
-    return columns([(amount(use.amount, use.kind), _about(use)) for use in uses], width)
+    if not _compared(uses):
+        return columns([(amount(use.amount, use.kind), _about(use)) for use in uses], width)
+    return columns(
+        [(amount(use.amount, use.kind), _before(use), _about(use)) for use in uses], width
+    )
+
+
+def _before(use: Use) -> str:
+    return "–" if use.before is None else amount(use.before, use.kind)
 
 
 def _about(use: Use) -> str:
     # of it, not besides: the total has it in already
     spare = f", {amount(use.spare, use.kind)} of it spare" if use.spare > 0 else ""
     each = ", ".join(f"{number}{TIED}{amount(part, use.kind)}" for number, part in use.by_booking)
-    return f"{named(use.item, use.strength)}{spare}{': ' + each if each else ''}"
+    return f"{named(use.item, use.strength)}{spare}{_by_group(use)}{': ' + each if each else ''}"
+
+
+def _by_group(use: Use) -> str:
+    """What each group takes, this year and the year before, where both are known."""
+    if use.before is None or not use.groups or not use.groups_before:
+        return ""
+    now, then = round(use.amount / use.groups), round(use.before / use.groups_before)
+    return f", {amount(now, use.kind)} a group beside {amount(then, use.kind)}"

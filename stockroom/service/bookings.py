@@ -7,18 +7,19 @@ from datetime import date
 from pathlib import Path
 
 from stockroom import clock
-from stockroom.errors import BadDate, BadInput, NotAllowed
+from stockroom.errors import BadInput
 from stockroom.measure.days import format_time, spell_day
 from stockroom.measure.formats import format_number
 from stockroom.planning.facts import Firmness
 from stockroom.service.answers import Done
+from stockroom.service.booking_rules import check_day, check_in_use, check_may_be_dropped
 from stockroom.service.work import initials
 from stockroom.store import names
+from stockroom.store.booking_limits import checked_groups, checked_spare
 from stockroom.store.engine import Session, reader_in, writing
 from stockroom.store.history import terms
 from stockroom.store.ledger import next_booking_number
 from stockroom.store.likeness import unknown
-from stockroom.store.rows_recipes import checked_groups, checked_spare
 from stockroom.store.snapshot import calendar_of
 from stockroom.store.tables import Booking, BookingChange, Department, House, Recipe
 
@@ -128,14 +129,7 @@ def _number(session: Session, number: str | None) -> str:
 
 
 def _check_day(hand: Hand, on: date, *, keep: bool) -> None:
-    # nothing can be made ready for a day gone by, so another year was meant
-    if on < hand.today:
-        raise BadDate(
-            f"{spell_day(on)} is past: today is {spell_day(hand.today)}.",
-            "Check the year, or say with --as-at which day to think of as today.",
-        )
-    if not keep and not calendar_of(reader_in(hand.session)).is_open(on):
-        raise NotAllowed(f"{spell_day(on)} is closed. Keep it?", "Add --keep-closed to keep it.")
+    check_day(on, calendar_of(reader_in(hand.session)), today=hand.today, keep=keep)
 
 
 def _outside_terms(session: Session, on: date) -> tuple[str, ...]:
@@ -182,7 +176,7 @@ def shift(
         found = names.find_booking(session, booking)
         # said outright, a firmness is the way back into the plan
         if firmness is None:
-            _check_in_use(found)
+            check_in_use(found.number, found.firmness)
         if on is not None:
             _check_day(hand, on, keep=keep)
         if groups is not None:
@@ -199,14 +193,6 @@ def shift(
             )
         details = _outside_terms(session, found.on_day) if on is not None else ()
         return hand.done(f"{found.number}: {'; '.join(changes)}.", details)
-
-
-def _check_in_use(booking: Booking) -> None:
-    if booking.firmness in (Firmness.DROPPED, Firmness.DONE):
-        raise NotAllowed(
-            f"{booking.number} is {booking.firmness}: the plan no longer counts it.",
-            "To bring it back, add --firmness firm.",
-        )
 
 
 _SAID = {"on_day": "day", "minute": "time", "groups": "groups", "firmness": "firmness"}
@@ -234,10 +220,6 @@ def cancel(path: Path, booking: str, *, today: date, by: str) -> Done:
     with writing(path) as session:
         hand = Hand(session, today, initials(by))
         found = names.find_booking(session, booking)
-        # dropping twice would leave two answers to who dropped it, and when
-        if found.firmness in (Firmness.DROPPED, Firmness.DONE):
-            raise NotAllowed(
-                f"{found.number} is {found.firmness} already.", "Book it again if it is wanted."
-            )
+        check_may_be_dropped(found.number, found.firmness)
         _change(hand, found, "firmness", Firmness.DROPPED.value)
         return hand.done(f"Dropped {found.number}: {_in_words(session, found)}.")

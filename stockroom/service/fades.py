@@ -20,8 +20,8 @@ from stockroom.keeping.typed_law import fading_sum as sum_of
 from stockroom.measure.amounts import BASE_UNIT, Kind
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.strengths import Strength, StrengthUnit
+from stockroom.planning.choosing.fitness import bounds
 from stockroom.planning.facts import Facts, Firmness, Line
-from stockroom.planning.fitness import bounds
 from stockroom.service.database import seeds_folder
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import Reader, reading

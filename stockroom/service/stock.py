@@ -23,6 +23,7 @@ from stockroom.service.arriving import (
     told_of_printed,
     write_openings,
 )
+from stockroom.service.coming import came_of, may_be_of
 from stockroom.service.counting import difference, which_it_was
 from stockroom.service.righting import (
     check_nothing_later,
@@ -67,6 +68,7 @@ def arrive(
     opened: date | None = None,
     cap: str = "",
     note: str = "",
+    order: str = "",
     on: date | None,
     today: date,
     by: str,
@@ -74,8 +76,9 @@ def arrive(
     """Put bottles that came on the shelf; each gets a number of its own.
 
     `size` is what one holds; `printed` the date as printed on it, or "none", which
-    must be said; `opened` the day it was opened, if it was; `cap` vented, tight or blank.
-    Raises: BadInput, UnknownName, BadAmount, BadDate.
+    must be said; `opened` the day it was opened, if it was; `cap` vented, tight or blank;
+    `order` the number of the order they came of.
+    Raises: BadInput, UnknownName, BadAmount, BadDate; NotAllowed for an order of something else.
     """
     on_label, closed_by = date_printed(printed), cap_of(cap)
     check_number(count)
@@ -90,9 +93,10 @@ def arrive(
         entries = [work.write(bottle, event) for bottle in bottles]
         if opened is not None:
             write_openings(work, bottles, opened)
+        came = came_of(work, order, found, entries) if order else may_be_of(work, found)
         text = f"{arrived(bottles, found, size)}, at {place}."
         # those that came together are alike, so what is said of one holds for all
-        details = (*told_of_printed(work, bottles[0]), *told_of_place(work, bottles[0]))
+        details = (*told_of_printed(work, bottles[0]), *told_of_place(work, bottles[0]), *came)
         return work.done(text, bottles[0], entries[0], details=details)
 
 

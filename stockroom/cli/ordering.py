@@ -1,0 +1,106 @@
+"""Orders placed with a supplier, and what is still to come of them."""
+
+from __future__ import annotations
+
+from typing import Annotated
+
+import typer
+
+from stockroom.cli.printing import show, show_done, width
+from stockroom.cli.shared import of
+from stockroom.cli.stock import Happened, when
+from stockroom.cli.values import amount_of, day_or_none, whole
+from stockroom.errors import BadAmount, BadInput
+
+_HOW = 'Write it as: stockroom order "silver nitrate" 1 "25 g" --price 46.00'
+
+
+def order(
+    ctx: typer.Context,
+    line: Annotated[
+        str | None,
+        typer.Argument(metavar="LINE", help="What it is; or an order of the plan: O02."),
+    ] = None,
+    packs: Annotated[str | None, typer.Argument(metavar="PACKS", help="How many packs.")] = None,
+    pack: Annotated[
+        str | None, typer.Argument(metavar="PACK", help='What one holds: "500 g".')
+    ] = None,
+    price: Annotated[
+        str | None,
+        typer.Option(metavar="POUNDS", help="Of one pack; else as entered for that pack."),
+    ] = None,
+    expected: Annotated[
+        str | None,
+        typer.Option(metavar="DATE", help="The day it should come; else by the lead time."),
+    ] = None,
+    supplier: Annotated[str | None, typer.Option(metavar="NAME", help="Who sells it.")] = None,
+    dept: Annotated[
+        str, typer.Option("--dept", metavar="CODE", help="Whose money, if it is not to be split.")
+    ] = "",
+    cancel: Annotated[
+        str | None, typer.Option(metavar="NUMBER", help="Cancel the rest of this order: P01.")
+    ] = None,
+    put_off: Annotated[
+        str | None,
+        typer.Option(metavar="NUMBER", help="This order comes on another day: give --expected."),
+    ] = None,
+    reason: Annotated[str, typer.Option("--why", help="Why it is cancelled or put off.")] = "",
+    note: Annotated[str, typer.Option(help="Anything to remember of it.")] = "",
+    on: Happened = None,
+) -> None:
+    """Something was ordered: it gets a number, and the plan counts on it from its day.
+
+    Example: stockroom order "silver nitrate" 1 "25 g" --price 46.00 --expected 2027-01-18 --by P1
+    """
+    from stockroom.service import ordering
+
+    shared = of(ctx)
+    due, happened = day_or_none(expected, "--expected"), when(shared, on)
+    _check_one_thing(line, cancel, put_off)
+    if cancel is not None:
+        done = ordering.cancel_order(shared.path, cancel, why=reason, **happened)
+    elif put_off is not None:
+        done = ordering.put_off(shared.path, put_off, expected=due, why=reason, **happened)
+    elif line is not None and packs is None and ordering.is_planned(line):
+        done = ordering.order_planned(shared.path, line, expected=due, **happened)
+    else:
+        if line is None or packs is None or pack is None:
+            raise BadInput(f"How much of {line or 'what'} was ordered?", _HOW)
+        asked = ordering.Asked(
+            line, whole(packs, "PACKS"), amount_of(pack), _pence(price), due, supplier, dept, note
+        )
+        done = ordering.order(shared.path, asked, **happened)
+    show_done(shared, done)
+
+
+def on_order(ctx: typer.Context) -> None:
+    """What was ordered and has not all come: expected when, and what is overdue.
+
+    Example: stockroom on-order
+    """
+    from stockroom.reports.buying_text import on_order_text
+    from stockroom.reports.json_plan import on_order_json
+    from stockroom.service.plan import term_plan
+
+    shared = of(ctx)
+    answer = term_plan(shared.path, as_at=shared.today)
+    show(shared, lambda: on_order_text(answer, width()), lambda: on_order_json(answer))
+
+
+def _check_one_thing(line: str | None, cancel: str | None, put_off: str | None) -> None:
+    given = [name for name in (line, cancel, put_off) if name is not None]
+    if len(given) != 1:
+        said = " and ".join(repr(name) for name in given) or "nothing"
+        raise BadInput(f"order: {said} given.", f"One thing at a time. {_HOW}")
+
+
+def _pence(text: str | None) -> int | None:
+    """Pounds as typed, "£14.50", in whole pence. Raises: BadAmount."""
+    if text is None:
+        return None
+    from stockroom.measure.reading import read_number
+
+    pence = read_number(text.strip().removeprefix("£"), where="--price", whole=text) * 100
+    if pence != int(pence):
+        raise BadAmount(f"--price {text!r} has parts of a penny.", "Give pounds and pence.")
+    return int(pence)
