@@ -31,7 +31,8 @@ def usage_text(plan: Plan, width: int) -> str:
     for form, heading in FORMS.items():
         uses = [use for use in plan.usage if use.form == form]
         beside = _BESIDE if _compared(uses) else ""
-        parts.append(section(f"{heading}{beside}", _lines(uses, width)))
+        title = wrap(f"{heading}{beside}", width)
+        parts.append(section(title, _lines(uses, width)))
     parts += [
         _differences(plan, width),
         section("DRAWN SO FAR (from the entries)", _lines(list(plan.drawn), width)),
@@ -46,7 +47,7 @@ def _differences(plan: Plan, width: int) -> str:
     known = ", ".join(_KNOWN_BY.get(each, each) for each in basis)
     count = counted(len(plan.differences), "difference")
     heading = f"{count.upper()} FROM THE YEAR BEFORE, THE BIGGEST FIRST ({known})"
-    return section(heading, [wrap(text, width, indent=2) for text in plan.differences])
+    return section(wrap(heading, width), [wrap(text, width, indent=2) for text in plan.differences])
 
 
 def _compared(uses: list[Use]) -> bool:

@@ -7,6 +7,7 @@ commands of a page share one copy of the practice store, in the order of the pag
 
 from __future__ import annotations
 
+import doctest
 import re
 import shlex
 import shutil
@@ -22,7 +23,12 @@ if TYPE_CHECKING:
 
 DOCS = Path(__file__).parents[2] / "docs"
 PAGES = sorted(page.name for page in DOCS.glob("*.md"))
-RUN = ("how-things-age.md", "strength-and-uncertainty.md", "data-and-sources.md")
+RUN = (
+    "how-things-age.md",
+    "strength-and-uncertainty.md",
+    "data-and-sources.md",
+    "how-the-plan-is-made.md",
+)
 
 
 @dataclass(frozen=True)
@@ -74,6 +80,12 @@ def test_a_page_prints_what_it_shows(
     for shown in commands:
         result = stockroom(*shown.words, store=store)
         assert missing(shown.lines, result.out + result.err) == [], shown.words
+
+
+def test_the_examples_of_a_page_come_out_as_written() -> None:
+    tried = doctest.testfile(str(DOCS / "how-the-plan-is-made.md"), module_relative=False)
+    assert tried.attempted >= 5
+    assert tried.failed == 0
 
 
 def test_every_page_that_shows_commands_is_run() -> None:
