@@ -8,14 +8,12 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 
-from stockroom.errors import NotAllowed
 from stockroom.lots.cost import cost_of, load_of
-from stockroom.lots.exact import prove
+from stockroom.lots.exact import CLOSED, gap, prove
 from stockroom.lots.families import Family, families, only, part_of
 from stockroom.lots.model import Arrangement, Problem
 from stockroom.lots.objective import Cost
-from stockroom.planning.facts import Facts
-from stockroom.planning.settle import needs_of, settled
+from stockroom.planning.making.make import Made
 
 
 @dataclass(frozen=True, slots=True)
@@ -35,43 +33,31 @@ class Proved:
     @property
     def gap(self) -> float:
         """From 0 to 1; 0 also where there is nothing to make."""
-        total = self.ours.total
-        return max(0.0, (total - self.bound) / total) if total > 0 else 0.0
+        return gap(self.ours.total, self.bound)
 
     @property
     def proved(self) -> bool:
         """True when nothing better exists."""
-        return self.gap < PROVED
+        return self.gap <= CLOSED
 
 
-PROVED = 1e-6
-"""The gap, as a fraction, that is no more than rounding. Our choice."""
+def proof_of(made: Made, key: str, seconds: float) -> Proved:
+    """The proof for the family of one line that is made, in so many seconds of the solver's time.
 
-
-def proof_of(facts: Facts, key: str, seconds: float) -> Proved:
-    """The proof for the family of one line, in so many seconds of the solver's time.
-
-    Raises NotAllowed when the plan makes nothing of that line; Refused where the solver is
-    not installed.
+    Raises Refused where the solver is not installed.
     """
-    made = settled(facts, needs_of(facts))[1]
     problem, arranged = made.numbers.problem, made.arranged
     family = _family(problem, key)
-    if family is None:
-        raise NotAllowed(
-            f"The plan makes no {key}, so there is nothing to prove.",
-            "Name a line that is made: stockroom fresh lists them.",
-        )
     part, ours = _by_itself(problem, arranged, family), only(problem, family, arranged)
     proof = prove(part, seconds=seconds, start=ours)
     names = tuple(dict.fromkeys(sort.name for sort in part.sorts))
     return Proved(names, len(ours.batches), cost_of(part, ours), proof.cost, proof.bound)
 
 
-def _family(problem: Problem, key: str) -> Family | None:
+def _family(problem: Problem, key: str) -> Family:
     """Everything that hangs together with any sort of that name."""
     hit = [family for family in families(problem) if _names(problem, family, key)]
-    return tuple(sorted(number for family in hit for number in family)) or None
+    return tuple(sorted(number for family in hit for number in family))
 
 
 def _names(problem: Problem, family: Family, key: str) -> bool:

@@ -6,7 +6,6 @@ from datetime import date
 from pathlib import Path
 
 from stockroom.errors import BadInput, NotAllowed
-from stockroom.planning.making.groups import grouped
 from stockroom.planning.proof import Proved, proof_of
 from stockroom.planning.settle import needs_of, settled
 from stockroom.service.finding import line_in
@@ -31,8 +30,8 @@ def proof(path: Path, name: str, *, seconds: float, as_at: date, cautious: bool 
         )
     with reading(path) as reader:
         known = known_from(reader, as_at, cautious=cautious)
-    netted, _ = settled(known, needs_of(known))
-    made = {group.line.key: group.line for group in grouped(known, netted.wants)}
-    if not made:
+    made = settled(known, needs_of(known))[1]
+    lines = {group.line.key: group.line for group in made.numbers.groups}
+    if not lines:
         raise NotAllowed("The plan makes nothing, so there is nothing to prove.", "Book first.")
-    return proof_of(known, line_in(made, name).key, seconds)
+    return proof_of(made, line_in(lines, name).key, seconds)

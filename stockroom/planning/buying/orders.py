@@ -3,8 +3,8 @@
 The day stock runs out or falls below its level is the need-by day. Before it
 comes the margin (the house's, or from the start of the make where that is
 longer), before that the lead time and the days it takes to get leave, all in open
-days. `buying_course.py` runs the stock through the term, `buying_packs.py` chooses
-the packs, `buying_late.py` says what to do when it is late, `buying_split.py` what
+days. `course.py` runs the stock through the term, `packs.py` chooses
+the packs, `late.py` says what to do when it is late, `split.py` what
 to do when it would be thrown away.
 """
 

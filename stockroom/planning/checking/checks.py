@@ -1,8 +1,8 @@
 """Step 7: the titrations and looks the plan leans on, each once, late enough and open.
 
 Exact needs want a strength found inside its interval on the day; a bottle used
-past its recheck date wants one before then (`checks_titrations.py`); a look may
-bring back a bottle whose replacement would otherwise be made (`checks_looks.py`).
+past its recheck date wants one before then (`titrations.py`); a look may
+bring back a bottle whose replacement would otherwise be made (`looks.py`).
 Nothing nobody needs is asked for.
 """
 

@@ -9,11 +9,9 @@ from stockroom.chemistry.weighing import least_weighable
 from stockroom.measure.amounts import PER_UNIT, Kind
 from stockroom.measure.formats import format_number
 from stockroom.planning.amounts import draw_for, say
-from stockroom.planning.choosing.fitness import found_valid_from
-from stockroom.planning.facts import Balance, Closeness, Facts, Form, Line, Method
-from stockroom.planning.making.batches import Item, Run
+from stockroom.planning.facts import Balance, Facts, Form, Line, Method
+from stockroom.planning.making.batches import Run
 from stockroom.planning.making.equipment import largest_vessel_on
-from stockroom.planning.timing import ready_at
 from stockroom.planning.wants import Want
 
 _MICROGRAMS = PER_UNIT[Kind.MASS]
@@ -117,21 +115,6 @@ class Sizing:
     def _solids(self, parts: list[Want]) -> list[tuple[Line, int | None]]:
         found = [(self.facts.lines[part.line], part.ingredient) for part in parts]
         return [(x, i.per_dm3) for x, i in found if i is not None and x.form is Form.SOLID]
-
-    def retitrations(self, run: Run) -> list[Item]:
-        """The items for which the batch must be titrated again, as late as each allows."""
-        if not self.method.titrated:
-            return []
-        calendar = self.facts.calendar
-        found = ready_at((run.on, calendar.open_from), self.method, calendar)[0]
-        again = []
-        for item in sorted(run.items, key=lambda item: item.use_on):
-            needs = [want.need for want in item.wants if want.under is None]
-            exact = [n for n in needs if n.requirement.closeness is Closeness.EXACT]
-            if exact and found_valid_from(exact[0].requirement, self.line, item.use_on) > found:
-                again.append(item)
-                found = calendar.before(item.use_on, 1)
-        return again
 
 
 def _closest(run: Run) -> float:

@@ -46,8 +46,9 @@ def _vessels(laid: Walk, make: Make, line: Line, method: Method) -> Iterator[Fau
     share = -(-make.volume // max(1, make.vessels))
     able = [vessel for vessel in laid.facts.vessels if vessel.size >= share]
     # whoever makes it is told beforehand, and how else it can be done
-    said = any(note.subject == make.id for note in laid.plan.notes)
-    if able and not said and not any(vessel.here(make.on) for vessel in able):
+    texts = [note.text for note in laid.plan.notes if note.subject == make.id]
+    said = any(able[0].name in text for text in texts) if able else True
+    if not said and not any(vessel.here(make.on) for vessel in able):
         words = f"{share} µL on {make.on}, {able[0].name} is away, and nothing says so"
         yield Fault(Broken.VESSEL, make.id, words)
 
