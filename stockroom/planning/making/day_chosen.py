@@ -42,6 +42,8 @@ def day_reason(facts: Facts, batch: Batch, load: Load) -> str:
     standing = batch.method.stands_hours
     stands = f", stands {hours(standing)}" if standing else ""
     last = min(item.latest for item in batch.run.items)
+    if batch.start[0] == for_day and any(want.under is None for want in batch.wants):
+        return f"on the morning of {for_day} itself{stands}: the day before would not do any more"
     if batch.start[0] >= last:
         return f"the last day that is ready for {for_day}{stands}: {batch.start[0]}"
     return f"{batch.start[0]}{stands}: {_sooner(facts, batch, load, last)}"

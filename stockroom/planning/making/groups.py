@@ -84,7 +84,8 @@ class _Grouping:
 
     def _signature(self, want: Want) -> Signature:
         if want.under is None:
-            return (*self._own_signature(want), want.ref if want.ref in self.alone else "")
+            alone = want.ref if want.ref in self.alone else ""
+            return (*self._own_signature(want), alone, self._sitting(want))
         above = self.group_of[id(want.under)]
         assert want.ingredient is not None
         whose = want.ref if want.ref in self.alone else ""
@@ -92,13 +93,20 @@ class _Grouping:
             (above.number, want.ingredient), (*self._own_signature(want), whose)
         )
 
+    def _sitting(self, want: Want) -> str:
+        """The class it is mixed for, where nothing of it may stand until another."""
+        booking = want.need.booking
+        never_kept = self.facts.lines[want.line].never_kept
+        return f"{booking.on} {booking.minute}" if never_kept else ""
+
     def _own_signature(self, want: Want) -> Signature:
         # two strengths of stock in one batch would give a strength nobody has worked out
         parts = []
         for part in want.parts:
             solid = self.facts.lines[part.line].form is Form.SOLID
             bottles = () if solid else tuple(promise.bottle for promise in part.promises)
-            parts.append((_shape(part), bottles))
+            # whoever has all of it in hand does not wait for what another has to buy
+            parts.append((_shape(part), part.to_buy > 0, bottles))
         return tuple(parts)
 
 

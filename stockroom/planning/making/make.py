@@ -184,4 +184,5 @@ def _item_for_need(want: Want, shelf: Shelf) -> Item:
     assert want.latest and want.amount is not None
     first, last = window(want, shelf)
     on = want.need.on
-    return Item([want], want.amount, on, want.deadline, first, last, last == on)
+    fresh = want.need.fresh and last == on
+    return Item([want], want.amount, on, want.deadline, first, last, fresh)
