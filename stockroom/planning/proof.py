@@ -1,7 +1,8 @@
 """How near the best there can be a family's makes are: proved by a solver, or how much is open.
 
-A family is a stock and everything made from it. The other makes keep their days, and their
-minutes count against the daily limit.
+A family is a stock and everything made from it. What is proved is the arranging: who shares
+a batch and on which day. The bottles stay given out as they are, and the other makes keep
+their days, their minutes counting against the daily limit.
 """
 
 from __future__ import annotations
@@ -41,27 +42,27 @@ class Proved:
         return self.gap <= CLOSED
 
 
-def proof_of(made: Made, key: str, seconds: float) -> Proved:
-    """The proof for the family of one line that is made, in so many seconds of the solver's time.
+def proof_of(made: Made, keys: frozenset[str], seconds: float) -> Proved:
+    """The proof for the families of lines that are made, in so many seconds of the solver's time.
 
     Raises Refused where the solver is not installed.
     """
     problem, arranged = made.numbers.problem, made.arranged
-    family = _family(problem, key)
+    family = _family(problem, keys)
     part, ours = _by_itself(problem, arranged, family), only(problem, family, arranged)
     proof = prove(part, seconds=seconds, start=ours)
     names = tuple(dict.fromkeys(sort.name for sort in part.sorts))
     return Proved(names, len(ours.batches), cost_of(part, ours), proof.cost, proof.bound)
 
 
-def _family(problem: Problem, key: str) -> Family:
-    """Everything that hangs together with any sort of that name."""
-    hit = [family for family in families(problem) if _names(problem, family, key)]
+def _family(problem: Problem, keys: frozenset[str]) -> Family:
+    """Everything that hangs together with any sort of those names."""
+    hit = [family for family in families(problem) if _names(problem, family, keys)]
     return tuple(sorted(number for family in hit for number in family))
 
 
-def _names(problem: Problem, family: Family, key: str) -> bool:
-    return any(problem.sorts[number].name == key for number in family)
+def _names(problem: Problem, family: Family, keys: frozenset[str]) -> bool:
+    return any(problem.sorts[number].name in keys for number in family)
 
 
 def _by_itself(problem: Problem, arranged: Arrangement, family: Family) -> Problem:

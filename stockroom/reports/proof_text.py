@@ -39,14 +39,21 @@ def proof_json(proof: Proved, *, practice: bool = False) -> dict[str, Any]:
 
 def _verdict(proof: Proved) -> str:
     if proof.proved:
-        return f"proved: no plan of them costs less than {proof.bound:.1f} min (open gap 0 %)"
+        return f"proved: {_least(proof)} (open gap 0 %)"
     return (
-        f"not proved: no plan of them costs less than {proof.bound:.1f} min, "
-        f"so at most {100 * proof.gap:.2f} % could be saved (open gap)"
+        f"not proved: {_least(proof)}, so at most {100 * proof.gap:.2f} % could be saved (open gap)"
+    )
+
+
+def _least(proof: Proved) -> str:
+    # the days and the sharing are proved, and not who got which bottle
+    return (
+        "with the bottles given out as they are, no way of making these "
+        f"costs less than {proof.bound:.1f} min"
     )
 
 
 def _cost(cost: Cost) -> str:
     words = f"{cost.total:.1f} min: {cost.minutes:g} min hands-on"
-    words += f", {cost.waste:.1f} min worth thrown away"
+    words += f", {cost.waste:.1f} min worth thrown away" if cost.waste >= 0.05 else ""
     return words + (f", {cost.over:g} min over the day's limit" if cost.over else "")

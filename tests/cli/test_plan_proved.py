@@ -17,8 +17,24 @@ def test_a_family_is_proved(stockroom: Stockroom, practice: Path) -> None:
     assert answer.code == 0
     assert answer.out.startswith("PRACTICE\n2 lines made together: ammonium iron(II) sulfate")
     assert "sulfuric acid 0.500 mol/dm³" in answer.out
-    assert "proved: no plan of them costs less than" in answer.out
+    assert "no way of making these costs less than" in answer.out
     assert "(open gap 0 %)" in answer.out
+
+
+def test_a_stock_in_a_bottle_stands_for_all_that_is_made_of_its_substance(
+    stockroom: Stockroom, practice: Path
+) -> None:
+    # S01 is 1.00 mol/dm³, and three dilutions are made of it
+    words = ("plan", "--exact", "sodium thiosulfate 1.00 mol/dm3", "--json", *DAY)
+    lines = stockroom(*words, store=practice).json["lines"]
+    assert len(lines) >= 2
+    assert all(line.startswith("sodium thiosulfate") for line in lines)
+
+
+def test_what_the_plan_does_not_make_is_refused(stockroom: Stockroom, practice: Path) -> None:
+    answer = stockroom("plan", "--exact", "ethanol", *DAY, store=practice)
+    assert answer.code == 1
+    assert "The plan makes no ethanol" in answer.err
 
 
 def test_the_proof_as_data(stockroom: Stockroom, practice: Path) -> None:
@@ -58,3 +74,26 @@ def test_without_the_solver_it_says_what_to_install(
     answer = stockroom("plan", "--exact", "starch", *DAY, store=practice)
     assert answer.code == 1
     assert 'pip install "stockroom[exact]"' in answer.err
+
+
+@pytest.mark.parametrize(
+    ("words", "named"),
+    [
+        (("--exact", "starch", "--keep", "--by", "T1"), ("--exact", "--keep")),
+        (("--exact", "starch", "--from", "2027-01-25"), ("--exact", "--from")),
+        (("--exact", "starch", "--to", "2027-01-29"), ("--exact", "--to")),
+        (
+            ("--exact", "starch", "--from", "2027-01-25", "--to", "2027-01-29"),
+            ("--exact", "--from and --to"),
+        ),
+        (("--seconds", "10"), ("--seconds 10", "--exact")),
+        (("--seconds", "30"), ("--seconds 30", "--exact")),
+    ],
+    ids=lambda value: " ".join(value),
+)
+def test_what_does_not_go_together_is_refused_and_not_dropped(
+    stockroom: Stockroom, practice: Path, words: tuple[str, ...], named: tuple[str, ...]
+) -> None:
+    answer = stockroom("plan", *words, *DAY, store=practice)
+    assert (answer.code, answer.out) == (2, "")
+    assert all(word in answer.err for word in named)
