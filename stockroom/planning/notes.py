@@ -7,7 +7,7 @@ from collections.abc import Iterable
 from stockroom.findings import DO_NOT_TOUCH, Finding
 from stockroom.keeping.laws import warmth
 from stockroom.keeping.strength import law_of, temperature_on
-from stockroom.keeping.verdict import Condition, verdict
+from stockroom.keeping.verdict import USABLE, Condition, verdict
 from stockroom.planning.amounts import say
 from stockroom.planning.buying.money import budgets
 from stockroom.planning.choosing.shelf import Shelf
@@ -40,7 +40,7 @@ def notes(
         *_full_mornings(facts, makes),
         *equipment_notes(facts, batches, orders),
         *_money(facts, orders),
-        *_levels(levels),
+        *_levels(facts, levels, shelf),
         *_shelf(facts),
         *_remarks(shelf),
         *_shops(facts, needs),
@@ -78,13 +78,21 @@ def _money(facts: Facts, orders: list[Order]) -> Iterable[Finding]:
             )
 
 
-def _levels(levels: list[Level]) -> Iterable[Finding]:
+def _levels(facts: Facts, levels: list[Level], shelf: Shelf) -> Iterable[Finding]:
     for level in levels:
+        stands = standing_there(shelf.of_line(level.line))
+        # a full jar on the shelf would make the level look wrong
+        out = [
+            f"{say(bottle.left, level.kind)} in {bottle.number} not counted: {judged.condition}"
+            for bottle in stands
+            for judged in [shelf.verdict(bottle.number, facts.as_at)]
+            if judged.condition not in USABLE
+        ]
         none = f", none from {level.runs_out}" if level.runs_out else ""
         yield Finding(
             level.line,
             f"below {say(level.level, level.kind)} from {level.on} "
-            f"({say(level.left, level.kind)} then left{none}): see to more",
+            f"({'; '.join([f'{say(level.left, level.kind)} then left{none}', *out])}): see to more",
         )
 
 

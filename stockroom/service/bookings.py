@@ -96,12 +96,21 @@ def book(
             firmness=firm,
             room=room,
         )
+        twice = _the_same(session, booking)
         session.add(booking)
         session.flush()
         # its first state, so that the record can be read from the beginning
         hand.record(booking, "booked", "", _in_words(session, booking))
         text = f"Booked {booking.number}: {_in_words(session, booking)}."
-        return hand.done(text, _outside_terms(session, on))
+        return hand.done(text, (*twice, *_outside_terms(session, on)))
+
+
+def _the_same(session: Session, booking: Booking) -> tuple[str, ...]:
+    """A question where the like of it is booked at that hour already; nothing where it is not."""
+    found = names.bookings_alike(session, booking)
+    # two classes side by side are nothing unusual, so it is asked and not refused
+    told = f"the same as {', '.join(found)}, at the same hour: is it booked twice?"
+    return (told,) if found else ()
 
 
 def _firmness(word: str) -> Firmness:

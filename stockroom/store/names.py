@@ -233,3 +233,16 @@ def _by_column(
             if plain(str(getattr(row, name))) == plain(text) != "":
                 return row
     raise unknown(what, text, (str(getattr(row, column)) for row in rows))
+
+
+def bookings_alike(session: Session, booking: Booking) -> list[str]:
+    """The numbers of standing bookings of the same recipe, hour, groups and department."""
+    alike = select(Booking).where(
+        Booking.recipe_id == booking.recipe_id,
+        Booking.on_day == booking.on_day,
+        Booking.minute == booking.minute,
+        Booking.groups == booking.groups,
+        Booking.department_id == booking.department_id,
+        Booking.firmness != "dropped",
+    )
+    return sorted(one.number for one in session.exec(alike))

@@ -13,6 +13,7 @@ from houses import (
     house,
     keeps,
     made_from,
+    outcomes,
     pack,
     recipe,
     solid,
@@ -21,9 +22,12 @@ from houses import (
 )
 
 from stockroom.lots.model import Problem
-from stockroom.planning.facts import Facts, Ingredient
-from stockroom.planning.making.as_numbers import as_numbers, share_of, value
+from stockroom.planning.amounts import price
+from stockroom.planning.decisions import Outcome
+from stockroom.planning.facts import Balance, Facts, Ingredient
+from stockroom.planning.making.as_numbers import as_numbers, share_of
 from stockroom.planning.making.groups import grouped
+from stockroom.planning.plan import plan
 from stockroom.planning.settle import needs_of, settled
 
 SALT = solid(packs=(pack(g(500), 10.00),))
@@ -105,8 +109,8 @@ def test_a_share_goes_by_nominal_strengths_unless_the_recipe_gives_it() -> None:
 def test_a_volume_is_worth_what_its_cheapest_pack_would_cost() -> None:
     facts = two_levels()
     # 100 g/mol at £10 for 500 g: 2 p/g, so 0.2 p for a cm³ of 1 mol/dm³ and a tenth of that
-    assert round(1000 * value(facts, STOCK), 9) == 0.2
-    assert round(1000 * value(facts, DILUTE), 9) == 0.02
+    assert round(1000 * price(facts, STOCK), 9) == 0.2
+    assert round(1000 * price(facts, DILUTE), 9) == 0.02
 
 
 def test_what_does_not_keep_is_dearer_to_throw_away() -> None:
@@ -134,3 +138,42 @@ def test_one_need_alone_is_a_sort_of_its_own() -> None:
     netted, _ = settled(facts, needs_of(facts))
     assert len(grouped(facts, netted.wants)) == 1
     assert len(grouped(facts, netted.wants, frozenset({"K02.1"}))) == 2
+
+
+def test_what_is_weighed_is_made_on_a_day_with_a_balance() -> None:
+    away = (day("01-19"), day("01-19"))
+    facts = house(
+        [SALT, STOCK],
+        methods=METHODS[:1],
+        recipes=[recipe(wants(STOCK, cm3(500)))],
+        bookings=[booking("K01", "01-20")],
+        bottles=[JAR],
+        balances=(Balance("BAL1", 10_000, (away,)),),
+    )
+    (make,) = plan(facts).makes
+    assert make.on == day("01-18")
+
+
+def test_nobody_waits_for_what_another_class_has_to_buy() -> None:
+    # 90 g in hand are all the first class wants and a part of the second's
+    facts = house(
+        [SALT, STOCK],
+        methods=METHODS[:1],
+        recipes=[recipe(wants(STOCK, cm3(600)))],
+        bookings=[booking("K01", "01-20"), booking("K02", "01-21")],
+        bottles=[bought_bottle("B01", SALT, g(90))],
+    )
+    made = plan(facts)
+    assert outcomes(made) == {"K01.1": Outcome.MAKE, "K02.1": Outcome.BUY}
+
+
+def test_what_is_never_kept_is_mixed_for_each_sitting() -> None:
+    silver = solution(0.1, never_kept="it becomes explosive")
+    facts = house(
+        [SALT, silver],
+        methods=[made_from(silver, SALT)],
+        recipes=[recipe(wants(silver, cm3(100)))],
+        bookings=[booking("K01", "01-20", 555), booking("K02", "01-20", 800)],
+        bottles=[JAR],
+    )
+    assert [make.bookings for make in plan(facts).makes] == [("K01",), ("K02",)]

@@ -151,3 +151,10 @@ def test_a_day_outside_every_term_is_said(own: Path) -> None:
     assert book(own).details == ()
     shifted = bookings.shift(own, "K06", on=date(2028, 5, 11), **WHO)
     assert shifted.details == ("11 May 2028 is outside every term.",)
+
+
+def test_the_same_class_booked_again_is_asked_about(own: Path) -> None:
+    assert not book(own).details
+    assert book(own).details == ("the same as K30, at the same hour: is it booked twice?",)
+    # another hour is another class
+    assert not book(own, time=700).details

@@ -13,9 +13,9 @@ from functools import lru_cache
 from stockroom.lots.model import Days, Demand, Part, Problem, Sort
 from stockroom.lots.objective import PENCE_A_MINUTE, POUR_AWAY
 from stockroom.measure.workdays import Calendar
-from stockroom.planning.amounts import UL_PER_DM3, draw_for, strong_enough
+from stockroom.planning.amounts import UL_PER_DM3, draw_for, price, strong_enough
 from stockroom.planning.choosing.shelf import Shelf
-from stockroom.planning.facts import Facts, Ingredient, Line, Method
+from stockroom.planning.facts import Facts, Form, Ingredient, Line, Method
 from stockroom.planning.making.groups import Group
 from stockroom.planning.making.sizing import Sizing
 from stockroom.planning.timing import Moment, latest_start, ready_at
@@ -83,7 +83,7 @@ class _Stating:
     def _ask(self, group: Group) -> None:
         for want in group.roots:
             assert want.latest and want.amount is not None
-            first, last = (self._day(day) for day in window(want, self.shelf))
+            first, last = (self._day(day) for day in window(self.facts, want, self.shelf))
             use = self._day(want.need.on)
             volume = want.amount / UL_PER_CM3
             self.demands.append(Demand(group.number, volume, first, last, use))
@@ -124,7 +124,7 @@ class _Stating:
     def _waste(self, group: Group) -> float:
         line = group.line
         until = good_until(line, self.facts.as_at)
-        pence = value(self.facts, line) * UL_PER_CM3
+        pence = price(self.facts, line) * UL_PER_CM3
         # what keeps is stock for another day; nobody knows of whom, so it is not worth nothing
         if until is None or until > self.facts.as_at:
             pence = 0.0
@@ -175,31 +175,31 @@ class _Stating:
         return day
 
 
-def window(want: Want, shelf: Shelf) -> tuple[date, date]:
+def window(facts: Facts, want: Want, shelf: Shelf) -> tuple[date, date]:
     """The first and last day a make for a need may start: it keeps, and all it takes is there."""
     assert want.latest is not None
     last = want.latest[0]
     stood = [shelf.ready_on(p.bottle) for part in want.parts for p in part.promises]
     days = [want.earliest, want.ready_from, *stood]
-    return min(max((day for day in days if day), default=last), last), last
+    first = min(max((day for day in days if day), default=last), last)
+    return first, _weighed_by(facts, want, first, last)
+
+
+def _weighed_by(facts: Facts, want: Want, first: date, last: date) -> date:
+    """The last day, back to `first`, on which there is a balance for what it takes of a solid."""
+    solid = any(facts.lines[part.line].form is Form.SOLID for part in want.parts)
+    day = last
+    while solid and facts.balances and day > first:
+        if any(balance.here(day) for balance in facts.balances):
+            return day
+        day = facts.calendar.before(day, 1)
+    # no day has one: the batch stays where it is, and says so
+    return last
 
 
 def share_of(child: Line, product: Line, ingredient: Ingredient) -> float:
     """How much of a made ingredient goes into the same volume of product, at nominal strength."""
     return draw_for(child, child.strength, product, UL_PER_DM3, ingredient.per_dm3) / UL_PER_DM3
-
-
-def value(facts: Facts, line: Line) -> float:
-    """What a micro-unit of a line costs in pence, by the cheapest pack it is made from."""
-    method = facts.methods.get(line.key)
-    if method is None:
-        return min((pack.pence / pack.size for pack in line.packs), default=0.0)
-    total = 0.0
-    for ingredient in method.ingredients:
-        source = facts.lines[ingredient.lines[0]]
-        amount = draw_for(source, source.strength, line, UL_PER_DM3, ingredient.per_dm3)
-        total += amount / UL_PER_DM3 * value(facts, source)
-    return total
 
 
 @lru_cache(maxsize=65536)

@@ -105,7 +105,7 @@ class _Building:
         built: dict[int, Batch] = {}
         for number in row:
             group = self.numbers.groups[arranged.batches[number].sort]
-            items = [_item_for_need(want, self.shelf) for want in asked.get(number, [])]
+            items = [_item_for_need(self.facts, want, self.shelf) for want in asked.get(number, [])]
             on = self.facts.as_at + timedelta(days=arranged.batches[number].day)
             for above, part in into.get(number, []):
                 items.append(self._item_for_batch(group, built[above], part, on))
@@ -180,9 +180,9 @@ def _parts_of(batch: Batch, ingredient: Ingredient) -> Iterator[Want]:
                 yield part
 
 
-def _item_for_need(want: Want, shelf: Shelf) -> Item:
+def _item_for_need(facts: Facts, want: Want, shelf: Shelf) -> Item:
     assert want.latest and want.amount is not None
-    first, last = window(want, shelf)
+    first, last = window(facts, want, shelf)
     on = want.need.on
     fresh = want.need.fresh and last == on
     return Item([want], want.amount, on, want.deadline, first, last, fresh)
