@@ -9,7 +9,7 @@ from __future__ import annotations
 from math import fsum
 
 from stockroom.lots.model import Arrangement, Batch, Problem
-from stockroom.lots.objective import Cost
+from stockroom.lots.objective import UNUSUAL, Cost
 
 
 def cost_of(problem: Problem, arrangement: Arrangement) -> Cost:
@@ -22,7 +22,7 @@ def cost_of(problem: Problem, arrangement: Arrangement) -> Cost:
     where `busy` alone is over the limit nobody's batch is charged for that. `early`: days
     from each batch's day to its last possible one, the last working day on or before the
     least `last` among all it is given to; 0 for a batch on one of its sort's `usual` days,
-    and for one that goes to nothing.
+    `UNUSUAL` more for one off them where there are any; 0 for one that goes to nothing.
     """
     sorts = problem.sorts
     waste = [sorts[each.sort].waste * each.volume for each in arrangement.batches]
@@ -92,7 +92,8 @@ def _early(problem: Problem, arrangement: Arrangement) -> list[float]:
     early = []
     for batch, day in zip(arrangement.batches, last, strict=True):
         if day < problem.days and batch.day not in problem.sorts[batch.sort].usual:
-            early.append(float(max(open_by[day] - batch.day, 0)))
+            left = UNUSUAL if problem.sorts[batch.sort].usual else 0.0
+            early.append(left + max(open_by[day] - batch.day, 0))
     return early
 
 

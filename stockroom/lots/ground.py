@@ -12,6 +12,7 @@ from math import floor, inf, log
 
 from stockroom.errors import BadInput
 from stockroom.lots.model import Days, Lot, Part, Problem, Sort
+from stockroom.lots.objective import EARLY, UNUSUAL
 
 Item = tuple[int, int, float, int, float, int, int]
 """What is asked of a sort: last and first day of a batch that will do, cm³, day of use,
@@ -25,12 +26,22 @@ Price = list[float]
 class Opening:
     """What opening a batch costs in batches of its parts: `price`, and `beyond` `room` cm³ more.
 
-    `room` None: what there is of the parts reaches for anything.
+    `room` None: what there is of the parts reaches for anything. `tilted` has EARLY for each
+    day taken off, so that the least of a window is its cheapest day, the latest among equals;
+    `known` keeps the day picked for a window.
     """
 
     price: Price
     room: Price | None = None
     beyond: Price = field(default_factory=list)
+    tilted: Price = field(init=False)
+    lowest: float = field(init=False)
+    known: dict[tuple[int, int], tuple[int, float]] = field(default_factory=dict)
+    much: dict[tuple[int, int, float], tuple[int, float]] = field(default_factory=dict)
+
+    def __post_init__(self) -> None:
+        self.tilted = [each - EARLY * day for day, each in enumerate(self.price)]
+        self.lowest = min(self.price, default=0.0)
 
     def at(self, day: int, volume: float) -> float:
         """The cost for so much on one day."""
@@ -71,7 +82,12 @@ and what opening one costs where its own parts ask for nothing."""
 
 @dataclass(slots=True)
 class Making:
-    """One sort: `fix` minutes a vessel, `spare` for each cm³ made beyond need."""
+    """One sort: `fix` minutes a vessel, `spare` for each cm³ made beyond need.
+
+    `unusual`: minutes for a batch off the days of the plan last printed, to break ties.
+    `way`: how its lots were used best so far, −1: not tried; `forced`: the
+    one to use, −1: any.
+    """
 
     number: int
     fix: float
@@ -82,6 +98,7 @@ class Making:
     spare: float
     parts: tuple[Part, ...]
     usual: tuple[int, ...]
+    unusual: float
     sort: Sort
     flat: bool
     alone: Price
@@ -92,6 +109,8 @@ class Making:
     takers: list[tuple[int, int, float]] = field(default_factory=list)
     rows: list[list[Row]] = field(default_factory=list)
     always: Opening = field(init=False)
+    way: int = -1
+    forced: int = -1
 
     def __post_init__(self) -> None:
         """A sort without parts pays nothing on any day it can be made."""
@@ -107,13 +126,23 @@ class Making:
 
 @dataclass(slots=True)
 class Ground:
-    """The whole problem laid out; `room` is what each day has left of the limit."""
+    """The whole problem laid out; `room` is what each day has left of the limit.
+
+    `large`: there is so much of it that rare gains are not looked for; `settled`: the first
+    passes are over.
+    """
 
     problem: Problem
     days: int
     whole: bool
     makings: list[Making]
     room: list[float] | None
+    large: bool
+    settled: bool = False
+
+
+LARGE = 500
+"""Demands above which a problem is large. Our choice."""
 
 
 def lay_out(problem: Problem) -> Ground:
@@ -151,7 +180,7 @@ def lay_out(problem: Problem) -> Ground:
     if problem.limit is not None:
         busy = problem.busy or (0.0,) * problem.days
         room = [max(problem.limit - each, 0.0) for each in busy]
-    return Ground(problem, problem.days, problem.whole, ready, room)
+    return Ground(problem, problem.days, problem.whole, ready, room, len(problem.demands) > LARGE)
 
 
 def back_to(back: Sequence[int], day: int) -> int:
@@ -198,6 +227,7 @@ def _making(
         spare=spare,
         parts=sort.parts,
         usual=tuple(sorted(sort.usual)),
+        unusual=EARLY * UNUSUAL if sort.usual else 0.0,
         sort=sort,
         flat=not sort.parts,
         alone=alone,

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from math import fsum
+
 from stockroom.lots.house import House
 from stockroom.lots.plans import SortPlan
 from stockroom.lots.search import Family
@@ -44,7 +46,7 @@ def _cut_down(house: House, number: int, day: int, volume: float, *, wholly: boo
     if batch is None:
         return
     # a batch made larger than its need lacks nothing of what is poured away
-    served = sum(each[2] for each in plan.shares if each[1] == day)
+    served = fsum(each[2] for each in plan.shares if each[1] == day)
     volume = max(volume - (batch[2] - served), min(volume, 1.0))
     volume -= _put_off(house, number, day)
     mine = sorted(
@@ -63,6 +65,7 @@ def _cut_down(house: House, number: int, day: int, volume: float, *, wholly: boo
 def _put_off(house: House, number: int, day: int) -> float:
     """Leave later days alone to the demands that have them; cm³ that go."""
     plan, making = house.plans[number], house.ground.makings[number]
+    house.cuts += 1
     gone = 0.0
     for place, on, amount in plan.shares if plan else ():
         item = plan.items[place] if plan else None
@@ -84,6 +87,7 @@ def _take_off(
         _cut_down(house, item[5], item[3], less / share, wholly=wholly)
         return
     making = house.ground.makings[number]
+    house.cuts += 1
     for at, each in enumerate(making.items):
         if each[6] == item[6]:
             left = 0.0 if wholly else each[2] - less

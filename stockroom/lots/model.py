@@ -40,7 +40,7 @@ class Sort:
     not used costs. Volumes are rounded up to whole `step`s (0: made to the need). `parts`
     name sorts that come later in the row, so that a sort never comes before what it goes
     into. `usual` are days it stood under in the plan last printed: among equals one of
-    them is kept.
+    them is kept, the last day that would do included.
     """
 
     name: str

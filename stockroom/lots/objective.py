@@ -19,6 +19,12 @@ OVER = 3.0
 EARLY = 1e-4
 """Minutes for each day a batch is started before the last day that would do: ties only."""
 
+UNUSUAL = 100.0
+"""Days early that a batch counts off the days its sort stood under in the plan last printed.
+
+Our choice: 0.01 minute, more than any lateness is worth and less than work that is saved.
+"""
+
 PENCE_A_MINUTE = 25
 """What a minute of hands-on work is worth, to price what is thrown away. Our choice."""
 
@@ -30,7 +36,8 @@ POUR_AWAY = 1.0
 class Cost:
     """The parts of the sum: minutes worked, value wasted and the rest, in minutes; `short` in cm³.
 
-    `over` is in minutes over the limit, `early` in days before the last that would do.
+    `over` is in minutes over the limit, `early` in days before the last that would do, and
+    `UNUSUAL` more for each batch that leaves the days it was printed under.
     """
 
     minutes: float = 0.0

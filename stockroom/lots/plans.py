@@ -8,8 +8,16 @@ from math import inf
 from stockroom.lots.ground import Ground, Item, Making, Opening
 from stockroom.lots.groups import HAIR, Groups, amount_made
 from stockroom.lots.objective import EARLY, SHORT
-from stockroom.lots.programme import OverLimit, Run, cheapest_runs
-from stockroom.lots.serving import WAYS, Serving, serve_what_cannot_be_made, untouched
+from stockroom.lots.picking import OverLimit
+from stockroom.lots.programme import Run, cheapest_runs
+from stockroom.lots.serving import (
+    WAYS,
+    Serving,
+    Way,
+    serve_what_cannot_be_made,
+    untouched,
+    whole_runs,
+)
 from stockroom.lots.top_up import Share, save_vessels
 
 Made = tuple[int, int, float]
@@ -19,7 +27,7 @@ Lost = list[tuple[int, float]]
 """Item's place, and what of it neither a batch nor a lot can give, cm³."""
 
 MANY = 24
-"""With more days of need than this, two ways to use the lots are tried of the four. Our choice."""
+"""With more days of need than this, two ways to use the lots are tried of the five. Our choice."""
 
 
 @dataclass(slots=True, eq=False)
@@ -27,7 +35,8 @@ class SortPlan:
     """The batches of one sort in order of their days, and what each item gets of them.
 
     `cost` counts all but the day's limit, `guided` also what opening batches of parts was
-    thought to cost. `unmet`: items of batches that ask for what cannot be had.
+    thought to cost. `unmet`: items of batches that ask for what cannot be had. `serial`
+    tells it from all others that are kept.
     """
 
     items: list[Item]
@@ -37,6 +46,7 @@ class SortPlan:
     cost: float
     guided: float
     unmet: Lost
+    serial: int = 0
 
 
 def plan_sort(
@@ -49,30 +59,44 @@ def plan_sort(
     serving = untouched(making, items)
     if making.shelf:
         serve_what_cannot_be_made(making, items, serving, whole=ground.whole)
-    refill = not ground.whole
+    refill, hasty = not ground.whole, ground.large
     lost = _take_out_the_lost(items, serving)
-    groups = Groups(items, serving.need)
-    _, runs = cheapest_runs(making, groups, opening, refill=refill, over=over)
     job = _Job(ground, making, items, lost, opening, over)
-    if not making.shelf or not groups.last or sum(serving.left) <= HAIR:
+    groups = Groups(items, serving.need)
+    runs: list[Run] = []
+    ways = _ways(ground, making, len(groups.last)) if any(serving.left) else ()
+    if whole_runs in ways or not ways:
+        _, runs = cheapest_runs(making, groups, opening, refill=refill, over=over, hasty=hasty)
+    if not ways or not groups.last:
         return job.plan(serving, groups, runs)
     best: SortPlan | None = None
-    seen: list[list[float]] = []
-    for way in WAYS if len(groups.last) <= MANY else WAYS[:2]:
+    seen: list[tuple[list[float], list[float]]] = []
+    for way in ways:
         trial = serving.copy()
         way(making, items, trial, (groups, runs), ground.whole)
-        if trial.need in seen:
+        if (trial.need, trial.left) in seen:
             continue
-        seen.append(trial.need)
+        seen.append((trial.need, trial.left))
         rest = Groups(items, trial.need)
-        _, fewer = cheapest_runs(making, rest, opening, refill=refill, over=over)
+        _, fewer = cheapest_runs(making, rest, opening, refill=refill, over=over, hasty=hasty)
         answer = job.plan(trial, rest, fewer)
         if best is None or answer.guided < best.guided - HAIR:
-            best = answer
-        if not rest.last:
+            best, making.way = answer, WAYS.index(way)
+        if not rest.last and not any(trial.left):
             break
     assert best is not None
     return best
+
+
+def _ways(ground: Ground, making: Making, days: int) -> tuple[Way, ...]:
+    """The ways to use lots worth trying: all of them once, then the one that was best before."""
+    if making.forced >= 0:
+        return WAYS[making.forced : making.forced + 1]
+    if ground.large:
+        return WAYS[:1]
+    if making.way >= 0 and ground.settled:
+        return WAYS[making.way : making.way + 1]
+    return WAYS if days <= MANY else WAYS[:2]
 
 
 def _take_out_the_lost(items: list[Item], serving: Serving) -> Lost:
@@ -120,7 +144,7 @@ class _Job:
             if self.over is not None:
                 guide += self.over(day, making.fix * vessels + making.per * made)
             if day not in making.usual:
-                cost += EARLY * (ends[day] - day)
+                cost += EARLY * (ends[day] - day) + making.unusual
             batches.append((day, vessels, made))
         for each, left in zip(making.shelf, serving.left, strict=True):
             cost += each.lot.waste * left

@@ -13,11 +13,12 @@ from math import inf
 from stockroom.lots.ground import Making, back_to
 from stockroom.lots.house import House
 from stockroom.lots.plans import SortPlan
+from stockroom.lots.serving import WAYS
 
 GAIN = 1e-9
 
 PASSES = 2
-"""More change nothing on the terms that were tried. Our choice."""
+"""More change nothing on the terms that were tried; in a large one none is made. Our choice."""
 
 
 class Family:
@@ -59,7 +60,7 @@ class Family:
     def settle(self) -> None:
         """Each sort again by what it now sees, as long as that costs less."""
         self.cost = self.house.cost_of(self.numbers)
-        for _ in range(PASSES):
+        for _ in range(0 if self.house.ground.large else PASSES):
             if not self._try(list(self.numbers)):
                 break
 
@@ -74,6 +75,10 @@ class Family:
             again = house.ground.room is not None and self.off_full_days(stop)
             for making in reversed(parts):
                 again |= self._without_batches(making, stop)
+            for making in self.makings:
+                if making.parts:
+                    again |= self._without_what_it_takes(making, stop)
+                    again |= bool(making.shelf) and self._with_lots_elsewhere(making, stop)
             if not again:
                 for making in parts:
                     again |= self._on_other_days(making, stop)
@@ -119,19 +124,76 @@ class Family:
         """Hide each batch of a part in turn, and its lots, from those who take of it."""
         house, number = self.house, making.number
         found = False
-        askers = sorted({taker for taker, _, _ in making.takers})
         plan = house.plans[number]
         for day in [each[0] for each in plan.batches] if plan else []:
             if house.work >= stop:
                 return found
+            askers = self._takers_on(number, day)
+            if not askers:
+                continue
             house.hidden.add((number, day))
             found |= self._try([*askers, number])
             house.hidden.clear()
         if making.shelf and house.work < stop:
+            askers = {taker for taker, _, _ in making.takers}
             house.lots_hidden.update((taker, number) for taker in askers)
             found |= self._try([*askers, number])
             house.lots_hidden.clear()
         return found
+
+    def _takers_on(self, number: int, day: int) -> set[int]:
+        """The sorts that take of a batch as the plans stand: hidden, it is dearer to no other."""
+        plan = self.house.plans[number]
+        if plan is None:
+            return set()
+        items = plan.items
+        return {items[item][5] for item, on, _ in plan.shares if on == day} - {-1}
+
+    def _without_what_it_takes(self, making: Making, stop: int) -> bool:
+        """Hide all that one batch takes of, and what that takes of, so that they move together."""
+        house, number = self.house, making.number
+        found = False
+        plan = house.plans[number]
+        for day in [each[0] for each in plan.batches] if plan else []:
+            if house.work >= stop:
+                return found
+            below = self._below({(number, day)})
+            if len(below) < 2:
+                continue
+            house.hidden.update(below)
+            found |= self._try([number, *{each for each, _ in below}])
+            house.hidden.clear()
+        return found
+
+    def _with_lots_elsewhere(self, making: Making, stop: int) -> bool:
+        """Use the lots in each of the other ways, and see what its parts come to then."""
+        found = False
+        used = making.way
+        for way in range(len(WAYS)):
+            if way == used or self.house.work >= stop:
+                continue
+            making.forced = way
+            better = self._try([making.number])
+            making.forced = -1
+            if better:
+                found, used = True, way
+        making.way = used
+        return found
+
+    def _below(self, batches: set[tuple[int, int]]) -> set[tuple[int, int]]:
+        """Sort and day of all batches that go into these, into those, and so on."""
+        below: set[tuple[int, int]] = set()
+        for making in self.makings:
+            plan = self.house.plans[making.number]
+            if plan is None or not making.takers:
+                continue
+            items, above = plan.items, batches | below
+            below |= {
+                (making.number, day)
+                for item, day, _ in plan.shares
+                if (items[item][5], items[item][3]) in above
+            }
+        return below
 
     def _on_other_days(self, making: Making, stop: int) -> bool:
         """Show a part's batch on another day, and hide the one before it, or after it."""
@@ -146,15 +208,26 @@ class Family:
             for hidden in (*after, *before):
                 if house.work >= stop:
                     return found
-                house.lured[number] = [day]
-                house.hidden.add((number, hidden))
-                better = self._try([*askers, number])
-                house.lured.clear()
-                house.hidden.clear()
+                better = self._moved(number, hidden, day, askers)
                 if better:
                     found = True
                     break
         return found
+
+    def _moved(self, number: int, before: int, day: int, askers: list[int]) -> bool:
+        """Show a batch on `day`, hide the one there is, with all it takes of, then that alone."""
+        house = self.house
+        one = (number, before)
+        below = self._below({one})
+        for hidden in (below, set[tuple[int, int]]()) if below else (below,):
+            house.lured[number] = [day]
+            house.hidden.update(hidden, [one])
+            better = self._try([*askers, number])
+            house.lured.clear()
+            house.hidden.clear()
+            if better:
+                return True
+        return False
 
     def _days_to_try(self, making: Making) -> list[int]:
         """Last days on which it would still do for somebody's last day, and days its parts have."""

@@ -1,4 +1,4 @@
-"""Which needs the lots on the shelf serve, before anything is made: four ways to try.
+"""Which needs the lots on the shelf serve, before anything is made: five ways to try.
 
 Covering the most is not the same as making the fewest (a lot kept for the one need that
 stands alone may save a batch), so each way is costed with the batches it leaves to make.
@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass
-from math import exp
+from math import exp, fsum
 
 from stockroom.lots.ground import Item, Making
 from stockroom.lots.groups import HAIR, Groups, vessels_for
@@ -85,7 +85,7 @@ def whole_runs(
     groups, runs = cut
     chances = []
     for number, (start, end, fillings) in enumerate(runs):
-        volume = sum(each[1] for each in fillings)
+        volume = fsum(each[1] for each in fillings)
         vessels = vessels_for(making, volume)
         chances.append((-vessels * making.fix / volume, number, start, end, volume))
         surplus = volume - making.largest * (vessels - 1)
@@ -93,7 +93,7 @@ def whole_runs(
             chances.append((-making.fix / surplus, number, start, end, surplus))
     done: set[int] = set()
     for _, number, start, end, volume in sorted(chances):
-        if number in done or volume > sum(serving.left) + HAIR:
+        if number in done or volume > fsum(serving.left) + HAIR:
             continue
         places = range(groups.ends[start - 1] if start else 0, groups.ends[end - 1])
         trial = serving.copy()
@@ -118,9 +118,30 @@ def last_first(
     _pour(making, items, serving, order, whole=whole)
 
 
+def dearest_left_first(
+    making: Making,
+    items: list[Item],
+    serving: Serving,
+    cut: Cut,
+    whole: bool,
+) -> None:
+    """Needs by falling volume, each from the lot that is dearest to throw away and will do."""
+    order = sorted(range(len(items)), key=lambda place: (-items[place][2], place))
+    shelf = sorted(
+        range(len(making.shelf)), key=lambda number: (-making.shelf[number].lot.waste, number)
+    )
+    _pour(making, items, serving, order, whole=whole, lots=shelf)
+
+
 Way = Callable[[Making, list[Item], Serving, Cut, bool], None]
 
-WAYS: tuple[Way, ...] = (whole_runs, first_past_first, hardest_first, last_first)
+WAYS: tuple[Way, ...] = (
+    whole_runs,
+    first_past_first,
+    hardest_first,
+    last_first,
+    dearest_left_first,
+)
 
 
 def _hardest(making: Making, items: list[Item], places: Iterable[int]) -> list[int]:
@@ -141,29 +162,38 @@ def _pour(
     *,
     whole: bool,
     enough: float = float("inf"),
+    lots: Iterable[int] | None = None,
 ) -> float:
-    """Pour lots into items in this order, the lot first past before the others; cm³ given."""
+    """Pour lots into items in this order; cm³ given. `lots`: their order, else first past first."""
     need, left, shelf = serving.need, serving.left, making.shelf
-    given = 0.0
+    row = range(len(left)) if lots is None else lots
+    open_lots = [number for number in row if left[number] > HAIR]
+    poured = 0.0
     for place in order:
         wanted = need[place]
         if wanted <= HAIR:
             continue
-        use, strength = items[place][3], items[place][4]
-        for number, each in enumerate(shelf):
+        if not open_lots:
+            break
+        item = items[place]
+        use, strength = item[3], item[4]
+        emptied = False
+        for number in open_lots:
             there = left[number]
-            if there <= HAIR or (whole and there < wanted - HAIR):
+            if (whole and there < wanted - HAIR) or use > shelf[number].last_day_for(strength):
                 continue
-            if use > each.last_day_for(strength):
-                continue
-            amount = min(there, wanted, enough - given) if not whole else wanted
-            left[number] = max(there - amount, 0.0)
+            amount = wanted if whole else min(there, wanted, enough - poured)
+            there -= amount
+            left[number] = there if there > HAIR else 0.0
+            emptied |= there <= HAIR
             wanted -= amount
-            given += amount
+            poured += amount
             serving.given.append((number, place, amount))
-            if wanted <= HAIR or given >= enough:
+            if wanted <= HAIR or poured >= enough:
                 break
         need[place] = wanted if wanted > HAIR else 0.0
-        if given >= enough:
+        if poured >= enough:
             break
-    return given
+        if emptied:
+            open_lots = [number for number in open_lots if left[number] > HAIR]
+    return poured

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from math import fsum
+
 from stockroom.lots.ground import Item, Making
 from stockroom.lots.groups import HAIR, vessels_for
 
@@ -25,7 +27,7 @@ def save_vessels(
         chances = [
             (largest - room, day)
             for day, room in rooms.items()
-            if day not in tried and largest - room <= sum(rooms.values()) - room + HAIR
+            if day not in tried and largest - room <= fsum(rooms.values()) - room + HAIR
         ]
         if not chances:
             return shares

@@ -3,7 +3,9 @@
 The mix is our choice and follows what a teaching store is like: a Monday to start on, one
 closed Monday more, an empty first week so that everything can be made in time; about half of
 the solutions from solids, a third from those, the rest from those again; lives from the same
-day to a year; classes of two to six solutions on one to five days of a week.
+day to a year. A practical asks for two to six solutions, always at the same strengths; in a
+week it runs on one to five days, on each for one class or, where there are many bookings to
+a solution, for several. So a large term has many bookings and far fewer different needs.
 
     term = term_of(200, seed=3)
     problem = problem_of(term)
@@ -22,6 +24,12 @@ SIZES = {50: (10, 12), 200: (25, 40), 1000: (60, 90), 5000: (150, 225), 20000: (
 
 LIVES = ((0, 8), (1, 5), (3, 7), (7, 15), (14, 15), (30, 15), (90, 15), (180, 10), (365, 10))
 """Days a solution keeps, and how many of a hundred do."""
+
+GRADES = (0.7, 0.8, 0.9, 0.95)
+"""Least strengths recipes ask for: rough, close and strict needs of one solution. Our choice."""
+
+BOOKINGS_TO_A_SOLUTION = 10
+"""With more than so many in a term several classes do a practical on the same day. Our choice."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -150,25 +158,41 @@ def _bookings(
     weeks: int,
     one_strength: bool,
 ) -> list[tuple[int, int, float, float]]:
-    """Practicals of two to six solutions, each on one to five days of a week, cut at `number`."""
-    asked = [_asked(chance, each) for each in solutions]
+    """Runs of practicals, each on one to five days of a week, cut at `number`."""
+    practicals = _practicals(chance, solutions, one_strength)
+    most = max(1, round(2 * number / (BOOKINGS_TO_A_SOLUTION * len(solutions))) - 1)
     rows: list[tuple[int, int, float, float]] = []
     while len(rows) < number:
-        chosen = chance.sample(range(len(solutions)), min(chance.randint(2, 6), len(solutions)))
+        practical = practicals[int(len(practicals) * chance.random() ** 1.5)]
         week = chance.randrange(1, weeks)
         days = [day for day in working if day // 7 == week]
         for day in sorted(chance.sample(days, min(chance.randint(1, 5), len(days)))):
-            for solution in chosen:
-                strength = asked[solution]
-                if not one_strength and chance.random() < 0.3:
-                    strength = _asked(chance, solutions[solution])
-                rows.append((solution, day, strength, float(chance.randrange(20, 620, 20))))
+            for _ in range(chance.randint(1, most)):
+                for solution, strength in practical:
+                    rows.append((solution, day, strength, float(chance.randrange(20, 620, 20))))
     return rows[:number]
 
 
+def _practicals(
+    chance: random.Random, solutions: tuple[Solution, ...], one_strength: bool
+) -> list[list[tuple[int, float]]]:
+    """As many practicals as solutions, each with two to six of them and a strength for each."""
+    asked = [_asked(chance, each) for each in solutions]
+    made = []
+    for _ in solutions:
+        chosen = chance.sample(range(len(solutions)), min(chance.randint(2, 6), len(solutions)))
+        made.append(
+            [
+                (each, asked[each] if one_strength else _asked(chance, solutions[each]))
+                for each in chosen
+            ]
+        )
+    return made
+
+
 def _asked(chance: random.Random, solution: Solution) -> float:
-    """A strength that a batch still holds after standing over a long weekend."""
-    return min(round(chance.uniform(0.70, 0.98), 2), _held(solution))
+    """One of the `GRADES` that a batch still holds after standing over a long weekend."""
+    return min(chance.choice(GRADES), _held(solution))
 
 
 def _held(solution: Solution) -> float:

@@ -151,20 +151,29 @@ def test_as_cheap_as_every_way_tried_where_there_are_few() -> None:
         assert (len(answer.batches), sum(answer.short)) == (fewest, 0.0), seed
 
 
-def test_nearly_always_as_cheap_as_the_proof_and_never_a_batch_dearer() -> None:
+@pytest.mark.parametrize("whole", [False, True])
+def test_nearly_always_as_cheap_as_the_proof_and_never_much_dearer(whole: bool) -> None:
     gaps = []
     for seed in range(0, 84, 3):
-        problem = replace(invented(seed), limit=None)
+        problem = replace(invented(seed), limit=None, whole=whole)
         if any(sort.step for sort in problem.sorts):
             continue
-        proof = prove(problem, seconds=5.0)
+        proof = prove(problem, seconds=2.0 if whole else 5.0)
         if not proof.proved:
             continue
         cost = cost_of(problem, arrange(problem))
         assert cost.short <= proof.cost.short + 0.01, seed
-        dearest = max(sort.minutes + sort.finishing for sort in problem.sorts)
-        assert cost.total <= proof.cost.total + dearest, seed
         gaps.append(cost.total / max(proof.cost.total, 1e-9) - 1)
     assert len(gaps) >= 15
     assert sum(gap <= 1e-6 for gap in gaps) >= 0.9 * len(gaps)
-    assert sum(gaps) <= 0.005 * len(gaps)
+    assert sum(gaps) <= 0.002 * len(gaps)
+    assert max(gaps) <= (0.02 if whole else 0.16)
+
+
+@pytest.mark.parametrize("seed", [10, 42, 89, 107, 125, 146])
+def test_what_was_once_missed_is_found(seed: int) -> None:
+    """A chain moved together, lots used another way, and the lot dearest to throw away first."""
+    problem = replace(invented(seed), limit=None, whole=True)
+    proof = prove(problem, seconds=10.0)
+    assert proof.proved
+    assert cost_of(problem, arrange(problem)).total <= 1.005 * proof.cost.total

@@ -161,6 +161,23 @@ def test_among_equals_the_day_last_printed_is_kept_and_else_the_latest() -> None
     assert days_of(arranged(problem([kept], demands)), 0) == [15]
 
 
+def test_a_usual_day_is_kept_where_a_later_one_would_do_as_well() -> None:
+    kept = Sort("S", 30.0, usual=frozenset({14, 16}))
+    asked = problem([kept], [use(0, 200, 18, life=7)])
+    answer = arranged(asked)
+    assert days_of(answer, 0) == [16]
+    later = Arrangement((replace(answer.batches[0], day=18),), answer.gifts, answer.short)
+    assert cost_of(asked, answer).with_ties < cost_of(asked, later).with_ties
+
+
+def test_a_usual_day_is_left_to_save_minutes() -> None:
+    # one batch on day 21 does for both; on day 18 it would not keep
+    kept = Sort("S", 30.0, usual=frozenset({18}))
+    demands = [use(0, 200, 21, life=7), use(0, 200, 26, life=7)]
+    (batch,) = arranged(problem([kept], demands)).batches
+    assert batch.day == 21
+
+
 def test_what_is_made_is_rounded_up_to_steps_and_to_the_smallest_batch() -> None:
     sort = Sort("S", 30.0, smallest=100.0, largest=500.0, step=50.0)
     for wanted, made in ((20.0, 100.0), (120.0, 150.0), (490.0, 500.0)):
