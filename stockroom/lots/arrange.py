@@ -8,7 +8,10 @@ never timed.
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from stockroom.lots.answer import written_out
+from stockroom.lots.cost import cost_of
 from stockroom.lots.families import families
 from stockroom.lots.ground import lay_out
 from stockroom.lots.house import House
@@ -35,6 +38,24 @@ def arrange(problem: Problem, *, effort: int = EFFORT) -> Arrangement:
 
     Source: the programme is that of Wagner and Whitin (Manag. Sci. 5, 1958) with an age limit.
     """
+    kept = _arranged(problem, effort)
+    if not any(sort.usual for sort in problem.sorts):
+        return kept
+    # a search may go astray for the sake of the usual days, and work counts before those
+    anew = _arranged(_without_usual(problem), effort)
+    saves = cost_of(problem, kept).total - cost_of(problem, anew).total
+    return anew if saves > _SAVES else kept
+
+
+_SAVES = 1e-6
+
+
+def _without_usual(problem: Problem) -> Problem:
+    sorts = tuple(replace(sort, usual=frozenset()) for sort in problem.sorts)
+    return replace(problem, sorts=sorts)
+
+
+def _arranged(problem: Problem, effort: int) -> Arrangement:
     ground = lay_out(problem)
     house = House(ground)
     clans = [Family(house, list(each)) for each in families(problem)]
