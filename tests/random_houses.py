@@ -91,6 +91,8 @@ def mixed(facts: Facts, seed: int) -> Facts:
         bottles=tuple(shuffled(luck, facts.bottles)),
         balances=tuple(shuffled(luck, facts.balances)),
         glassware=tuple(shuffled(luck, facts.glassware)),
+        vessels=tuple(shuffled(luck, facts.vessels)),
+        placed=tuple(shuffled(luck, facts.placed)),
         departments=tuple(shuffled(luck, facts.departments)),
         places=tuple(shuffled(luck, facts.places)),
     )

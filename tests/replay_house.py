@@ -174,3 +174,22 @@ def with_bottle(number: str, **other: Any) -> Facts:
         for b in FACTS.bottles
     )
     return replace(FACTS, bottles=tuple(row))
+
+
+def with_line(**other: Any) -> Facts:
+    """The same house, where something else is written of the salt that is to be bought."""
+    return replace(FACTS, lines=FACTS.lines | {RARE.key: replace(RARE, **other)})
+
+
+def with_pack(**other: Any) -> Facts:
+    """The same house, where that salt is sold otherwise."""
+    return with_line(packs=tuple(replace(one, **other) for one in RARE.packs))
+
+
+def at_noon(number: str, on: str) -> Facts:
+    """The same house, where a booking is on another day, at noon."""
+    row = (
+        replace(one, on=day(on), minute=720) if one.number == number else one
+        for one in FACTS.bookings
+    )
+    return replace(FACTS, bookings=tuple(row))

@@ -14,6 +14,19 @@ from stockroom.errors import BadAmount, BadInput
 
 _HOW = 'Write it as: stockroom order "silver nitrate" 1 "25 g" --price 46.00'
 
+Dept = Annotated[
+    str | None,
+    typer.Option("--dept", metavar="CODE", help="Whose money, if it is not to be split."),
+]
+Cancel = Annotated[
+    str | None, typer.Option(metavar="NUMBER", help="Cancel the rest of this order: P01.")
+]
+PutOff = Annotated[
+    str | None,
+    typer.Option(metavar="NUMBER", help="This order comes on another day: give --expected."),
+]
+Why = Annotated[str | None, typer.Option("--why", help="Why it is cancelled or put off.")]
+
 
 def order(
     ctx: typer.Context,
@@ -34,18 +47,11 @@ def order(
         typer.Option(metavar="DATE", help="The day it should come; else by the lead time."),
     ] = None,
     supplier: Annotated[str | None, typer.Option(metavar="NAME", help="Who sells it.")] = None,
-    dept: Annotated[
-        str, typer.Option("--dept", metavar="CODE", help="Whose money, if it is not to be split.")
-    ] = "",
-    cancel: Annotated[
-        str | None, typer.Option(metavar="NUMBER", help="Cancel the rest of this order: P01.")
-    ] = None,
-    put_off: Annotated[
-        str | None,
-        typer.Option(metavar="NUMBER", help="This order comes on another day: give --expected."),
-    ] = None,
-    reason: Annotated[str, typer.Option("--why", help="Why it is cancelled or put off.")] = "",
-    note: Annotated[str, typer.Option(help="Anything to remember of it.")] = "",
+    dept: Dept = None,
+    cancel: Cancel = None,
+    put_off: PutOff = None,
+    reason: Why = None,
+    note: Annotated[str | None, typer.Option(help="Anything to remember of it.")] = None,
     on: Happened = None,
 ) -> None:
     """Something was ordered: it gets a number, and the plan counts on it from its day.
@@ -53,23 +59,33 @@ def order(
     Example: stockroom order "silver nitrate" 1 "25 g" --price 46.00 --expected 2027-01-18 --by P1
     """
     from stockroom.service import ordering
+    from stockroom.service.order_terms import Asked
 
     shared = of(ctx)
     due, happened = day_or_none(expected, "--expected"), when(shared, on)
     _check_one_thing(line, cancel, put_off)
+    given = {
+        "--price": price, "--expected": expected, "--supplier": supplier, "--dept": dept,
+        "--why": reason, "--note": note,
+    }  # fmt: skip
+    path, why = shared.path, reason or ""
     if cancel is not None:
-        done = ordering.cancel_order(shared.path, cancel, why=reason, **happened)
+        _check_used(f"--cancel {cancel}", given, "--why")
+        done = ordering.cancel_order(path, cancel, why=why, **happened)
     elif put_off is not None:
-        done = ordering.put_off(shared.path, put_off, expected=due, why=reason, **happened)
+        _check_used(f"--put-off {put_off}", given, "--why", "--expected")
+        done = ordering.put_off(path, put_off, expected=due, why=why, **happened)
     elif line is not None and packs is None and ordering.is_planned(line):
-        done = ordering.order_planned(shared.path, line, expected=due, **happened)
+        # its price, seller and shares are those the plan shows, or the sheet would not be true
+        _check_used(line, given, "--expected", "--note")
+        done = ordering.order_planned(path, line, expected=due, note=note or "", **happened)
     else:
+        _check_used("order", given, *(name for name in given if name != "--why"))
         if line is None or packs is None or pack is None:
             raise BadInput(f"How much of {line or 'what'} was ordered?", _HOW)
-        asked = ordering.Asked(
-            line, whole(packs, "PACKS"), amount_of(pack), _pence(price), due, supplier, dept, note
-        )
-        done = ordering.order(shared.path, asked, **happened)
+        count, each = whole(packs, "PACKS"), amount_of(pack)
+        asked = Asked(line, count, each, _pence(price), due, supplier, dept or "", note or "")
+        done = ordering.order(path, asked, **happened)
     show_done(shared, done)
 
 
@@ -92,6 +108,17 @@ def _check_one_thing(line: str | None, cancel: str | None, put_off: str | None) 
     if len(given) != 1:
         said = " and ".join(repr(name) for name in given) or "nothing"
         raise BadInput(f"order: {said} given.", f"One thing at a time. {_HOW}")
+
+
+def _check_used(what: str, given: dict[str, str | None], *used: str) -> None:
+    """Refuse the options that would go unheeded. Raises: BadInput naming them."""
+    unused = [name for name, value in given.items() if value is not None and name not in used]
+    if unused:
+        one = len(unused) == 1
+        raise BadInput(
+            f"{what} takes no {' and no '.join(unused)}: {'it' if one else 'they'} would be lost.",
+            f"Leave {'it' if one else 'them'} out; {what} takes {' and '.join(used)}.",
+        )
 
 
 def _pence(text: str | None) -> int | None:

@@ -25,6 +25,9 @@ Cautious = Annotated[
     typer.Option("--cautious", help="Count every strength at its lower 95 % limit, where known."),
 ]
 
+SOLVER = 30.0
+"""Seconds the solver has where nobody says. Our choice."""
+
 
 def plan(
     ctx: typer.Context,
@@ -36,8 +39,9 @@ def plan(
         typer.Option(metavar="NAME", help="Prove the makes of this stock and all made from it."),
     ] = None,
     seconds: Annotated[
-        float, typer.Option(metavar="N", help="With --exact: the solver's time.")
-    ] = 30.0,
+        float | None,
+        typer.Option(metavar="N", help="With --exact: the solver's time, else 30."),
+    ] = None,
     keep: Annotated[
         bool, typer.Option("--keep", help="Keep the term's plan, and give this copy a number.")
     ] = False,
@@ -52,8 +56,9 @@ def plan(
     from stockroom.service.printed_plans import keep as keep_plan
 
     shared = of(ctx)
+    _check_together(exact, seconds, {"--keep": keep, "--from": start, "--to": end})
     if exact is not None:
-        return _prove(shared, exact, seconds, cautious=cautious)
+        return _prove(shared, exact, SOLVER if seconds is None else seconds, cautious=cautious)
     asked = _asked(shared, start, end)
     if keep:
         answer = keep_plan(shared.path, **asked, cautious=cautious, by=shared.initials)
@@ -187,6 +192,23 @@ def why(
         lambda: why_text(reasons, practice=practice, cautious=cautious),
         lambda: why_json(ref, reasons, as_at=today, practice=practice, cautious=cautious),
     )
+
+
+def _check_together(exact: str | None, seconds: float | None, others: dict[str, object]) -> None:
+    """Pass for options that go together. Raises: BadInput, naming those that do not."""
+    # what is left out without a word is taken to have been done
+    if exact is None and seconds is not None:
+        raise BadInput(
+            f"--seconds {seconds:g} goes with --exact only, and there is none.",
+            'Say what to prove: --exact "starch", or leave --seconds out.',
+        )
+    given = [name for name, value in others.items() if value is not None and value is not False]
+    if exact is not None and given:
+        raise BadInput(
+            f'--exact "{exact}" does not go with {" and ".join(given)}: '
+            "it proves makes of the whole term, and keeps no plan.",
+            "Ask for one, then for the other.",
+        )
 
 
 def _prove(shared: Shared, name: str, seconds: float, *, cautious: bool) -> None:

@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 import re
+from functools import lru_cache
 
 from stockroom.errors import MissingFigure, NotAllowed
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_amount, format_number, format_strength
-from stockroom.planning.facts import Form, Line
+from stockroom.planning.facts import Facts, Form, Ingredient, Line
 
 UL_PER_DM3 = 1_000_000
 
@@ -16,6 +17,7 @@ _SAME = 1e-5
 _WRITTEN = re.compile(r"([0-9.]+) ?([^0-9 ].*)")
 
 
+@lru_cache(maxsize=65536)
 def say(micro: int, kind: Kind) -> str:
     """An amount in words: 264000 µL is "264 cm³"."""
     return format_amount(Amount(kind, micro))
@@ -85,6 +87,25 @@ def strong_enough(ingredient: Line, strength: float | None, product: Line) -> bo
     held = ingredient.strength if strength is None else strength
     # a bottle of exactly the strength asked for is used neat, whatever its last digit
     return held is not None and held >= product.strength * (1 - 1e-9)
+
+
+def price(facts: Facts, line: Line) -> float:
+    """What a micro-unit of a line costs in pence by the cheapest packs; 0 where nobody knows."""
+    method = facts.methods.get(line.key)
+    if method is None:
+        return min((pack.pence / pack.size for pack in line.packs), default=0.0)
+    return sum(_share_of_price(facts, line, ingredient) for ingredient in method.ingredients)
+
+
+def _share_of_price(facts: Facts, line: Line, ingredient: Ingredient) -> float:
+    source = facts.lines[ingredient.lines[0]]
+    if ingredient.per_dm3 is not None:
+        return ingredient.per_dm3 / UL_PER_DM3 * price(facts, source)
+    weighed = source.form is Form.SOLID and source.solute_per_gram
+    if line.strength is None or not (weighed or source.strength):
+        return 0.0
+    amount = take_for(source, None, solute_in(line, UL_PER_DM3))
+    return amount / UL_PER_DM3 * price(facts, source)
 
 
 def say_strength(line: Line, value: float | None) -> str:

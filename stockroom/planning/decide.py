@@ -15,6 +15,7 @@ from stockroom.planning.making.batch import Batch, Source, keeps
 from stockroom.planning.making.day_chosen import Load, load_of
 from stockroom.planning.making.make_card import cautions_of, reasons_of
 from stockroom.planning.making.measuring import measured
+from stockroom.planning.making.weighed import too_little_to_weigh
 from stockroom.planning.numbers import Natural, natural
 from stockroom.planning.timing import ready_at
 from stockroom.planning.wants import Settled, Want
@@ -156,6 +157,7 @@ def _make(facts: Facts, batch: Batch, load: Load) -> Make:
     kept = keeps(facts, line, batch.heel, run.on)
     until = good_until(line, run.on)
     good, poor = measured(facts, batch)
+    poor = [*poor, *too_little_to_weigh(facts, batch)]
     return Make(
         id=batch.id,
         line=line.key,

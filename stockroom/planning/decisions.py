@@ -14,7 +14,7 @@ from stockroom.findings import Finding
 from stockroom.keeping.caution import LowerLimits
 from stockroom.keeping.verdict import Condition
 from stockroom.measure.amounts import Kind
-from stockroom.planning.facts import Booking, House
+from stockroom.planning.facts import Booking, House, Pack
 from stockroom.planning.order_decisions import Budget as Budget
 from stockroom.planning.order_decisions import Coming as Coming
 from stockroom.planning.order_decisions import Delivery as Delivery
@@ -151,10 +151,11 @@ class Order:
     """What to buy. `late` counts open days past the order-by day; shares are pence.
 
     Several sizes together are one set: `pack` names it, `mixture` its sizes with how many
-    of each and the price of one. `falls_below` and `runs_out` are the first days the usable
-    stock is below its level and does not suffice; `keeps_until` how long it lasts unopened,
-    where known. `queried` says that not half of it would be used by then, and `deliveries`
-    how to split it; `instead` what to do when it is late.
+    of each and the price of one, `sold_as` the packs themselves in that order, by whom they
+    are sold. `falls_below` and `runs_out` are the first days the usable stock is below its
+    level and does not suffice; `keeps_until` how long it lasts unopened, where known.
+    `queried` says that not half of it would be used by then, and `deliveries` how to split
+    it; `instead` what to do when it is late.
     """
 
     id: str
@@ -182,6 +183,7 @@ class Order:
     queried: bool = False
     deliveries: tuple[Delivery, ...] = ()
     instead: tuple[Instead, ...] = ()
+    sold_as: tuple[Pack, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -294,7 +296,8 @@ class Plan:
 
     `lower_limits` is there when it was made on the safe side, on lower limits of strength.
     `kept_as` is the number on its printed copy, "" for one not kept; `changed_since` the number
-    of the plan kept last, and how many changes there are since, where there are any.
+    of the plan kept last, and how many changes there are since, where there are any;
+    `kept_unread` is its number where it cannot be read.
     """
 
     as_at: date
@@ -321,3 +324,4 @@ class Plan:
     lower_limits: LowerLimits | None = None
     kept_as: str = ""
     changed_since: tuple[str, int] | None = None
+    kept_unread: str = ""

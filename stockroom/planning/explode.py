@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass, replace
+from dataclasses import dataclass, field, replace
 from datetime import date
 
 from stockroom.errors import UnknownName
@@ -16,7 +16,8 @@ from stockroom.planning.numbers import Natural, natural
 class Need:
     """One requirement of one booking: so much of a line, on a day. Micro-units.
 
-    `drawn` holds what the ledger says was already drawn for it, bottle by bottle.
+    `drawn` holds what the ledger says was already drawn for it, bottle by bottle. `rank`
+    says who is served first: firm before pencilled, then by day, time and number.
     """
 
     ref: str
@@ -27,6 +28,16 @@ class Need:
     amount: int
     sum_in_words: str
     drawn: tuple[Drawn, ...] = ()
+    rank: tuple[int, date, int, Natural, int] = field(init=False, repr=False, compare=False)
+
+    def __post_init__(self) -> None:
+        pencilled = int(self.booking.firmness is Firmness.PENCILLED)
+        booking = self.booking
+        # the number last: a draw of lots, but one that always falls the same way
+        number = natural(booking.number)
+        rank = (pencilled, booking.on, booking.minute, number, self.requirement.number)
+        # worked out once: every sorting of wants asks for it
+        object.__setattr__(self, "rank", rank)
 
     @property
     def missing(self) -> int:
@@ -45,15 +56,6 @@ class Need:
     def fresh(self) -> bool:
         """True when it must be made the same morning: the recipe says so, or it is never kept."""
         return self.requirement.fresh or bool(self.line.never_kept)
-
-    @property
-    def rank(self) -> tuple[int, date, int, Natural, int]:
-        """Who is served first: firm before pencilled, then by day, time and number."""
-        pencilled = int(self.booking.firmness is Firmness.PENCILLED)
-        booking = self.booking
-        # the number last: a draw of lots, but one that always falls the same way
-        number = natural(booking.number)
-        return pencilled, booking.on, booking.minute, number, self.requirement.number
 
 
 def explode(facts: Facts, bookings: Iterable[Booking]) -> tuple[Need, ...]:

@@ -7,7 +7,7 @@ from datetime import date
 
 from stockroom.measure.days import format_time
 from stockroom.planning.facts import Facts, Line, Method
-from stockroom.planning.timing import Moment, hours, latest_start
+from stockroom.planning.timing import Moment, hours, latest_start, ready_at
 from stockroom.planning.wants import Want
 from stockroom.planning.windows import earliest_start, will_do
 
@@ -48,7 +48,7 @@ class MakingTimes:
             return Times(None, None, deadline, self._why_never(want, line, method))
         fresh = want.under is None and want.need.fresh
         if fresh and latest[0] != want.need.on:
-            return Times(None, None, deadline, _not_by_then(want, line, method), said)
+            return Times(None, None, deadline, self._not_by_then(want, line, method), said)
         requirement = want.need.requirement if want.under is None else None
         earliest = latest[0] if fresh else earliest_start(
             self.facts, line, requirement, want.use_day, latest[0]
@@ -89,10 +89,17 @@ class MakingTimes:
             f"and today is {self.facts.as_at}{day}"
         )
 
-
-def _not_by_then(want: Want, line: Line, method: Method) -> str:
-    minutes = method.minutes + round(60 * method.stands_hours)
-    return (
-        f"cannot: {line.key} takes {minutes} min on the morning of {want.need.on}, "
-        f"and that day leaves no staffed time before {format_time(want.need.booking.minute)}"
-    )
+    def _not_by_then(self, want: Want, line: Line, method: Method) -> str:
+        """Why what must be fresh cannot be: "…: ready 08:50, class 08:30"."""
+        on, minutes = want.need.on, method.minutes + round(60 * method.stands_hours)
+        at = format_time(want.need.booking.minute)
+        words = (
+            f"cannot: {line.key} takes {minutes} min on the morning of {on}, "
+            f"and that day leaves no staffed time before {at}"
+        )
+        calendar = self.facts.calendar
+        ready, minute = ready_at((on, calendar.open_from), method, calendar)
+        # nobody is in on a closed day, and what is ready on another day has no hour to compare
+        if ready != on or calendar.on_or_after(on) != on:
+            return words
+        return f"{words}: ready {format_time(minute)}, class {at}"

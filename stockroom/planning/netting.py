@@ -12,6 +12,8 @@ from stockroom.planning.amounts import solute_in
 from stockroom.planning.choosing.lookahead import Lookahead
 from stockroom.planning.choosing.make_or_take import MakeOrTake
 from stockroom.planning.choosing.openings import open_fewest
+from stockroom.planning.choosing.said import explain
+from stockroom.planning.choosing.second_thoughts import IN_TURN, Thought
 from stockroom.planning.choosing.serve import Serving
 from stockroom.planning.choosing.while_good import Sooner, WhileGood
 from stockroom.planning.explode import Need
@@ -27,7 +29,8 @@ class Netting:
     """One attempt on the lines of a family. Not reused: a new one for each attempt.
 
     `strict` serves in rank order and makes as late as may be, whatever that costs in work;
-    `as_late` are needs whose makes are not to be brought forward.
+    `as_late` are needs whose makes are not to be brought forward. `thought` is what is to be
+    done otherwise than in turn, so that nobody is short.
     """
 
     def __init__(
@@ -39,9 +42,11 @@ class Netting:
         *,
         strict: bool = False,
         as_late: frozenset[str] = frozenset(),
+        thought: Thought = IN_TURN,
     ) -> None:
         self.facts, self.serving, self.times, self.order = facts, serving, times, order
-        self.strict, self.as_late = strict, as_late
+        self.strict, self.as_late, self.thought = strict, as_late, thought
+        serving.kept = thought.kept
         self.obtaining = Obtaining(facts, serving)
         self.while_good = WhileGood(facts, serving)
         self.ahead: dict[str, Lookahead] = {}
@@ -64,19 +69,20 @@ class Netting:
         for key in list(self.serving.held):
             open_fewest(self._ahead(self.facts.lines[key]))
         for ahead in self.ahead.values():
-            ahead.explain()
+            explain(ahead.moved.values(), self.serving.holders)
         for want in wants:
             self.obtaining.in_hand(want)
 
     def in_vain(self, wants: list[Want]) -> set[str]:
         """The needs whose makes were brought forward for nothing; the others are told why."""
         found = set()
-        for want in wants:
-            sooner = self.sooner.get(id(want))
-            if sooner and sooner.held(want):
-                want.reasons.append(sooner.words(want))
-            elif sooner:
-                found.add(want.ref)
+        for root in wants if self.sooner else ():
+            for want in root.tree():
+                sooner = self.sooner.get(id(want))
+                if sooner and sooner.held(want):
+                    root.reasons.append(sooner.words(want))
+                elif sooner:
+                    found.add(root.ref)
         return found
 
     def failures(self, wants: list[Want]) -> list[Want]:
@@ -195,11 +201,19 @@ class Netting:
             want.settled = Settled.SHORT
             want.reasons.append(times.cannot)
             return
-        sooner = self.sooner.get(id(want))
+        sooner = self._sooner(want, times)
         want.latest = sooner.start if sooner else times.latest
         want.earliest = times.earliest
         want.settled = Settled.MAKE
         self._add_parts(want, line, method)
+
+    def _sooner(self, want: Want, times: Times) -> Sooner | None:
+        thought = self.thought.days.get((want.ref, want.line))
+        late = want.ref in self.as_late
+        if thought and times.earliest and times.latest and not late:
+            in_time = times.earliest <= thought.start[0] <= times.latest[0]
+            self.sooner |= {id(want): thought} if in_time else {}
+        return self.sooner.get(id(want))
 
     def _add_parts(self, want: Want, line: Line, method: Method) -> None:
         assert want.latest is not None

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Collection
 from datetime import date
+from itertools import islice
 
 from stockroom.planning.amounts import say
 from stockroom.planning.buying.on_way import OnWay, Receipt
@@ -10,6 +12,9 @@ from stockroom.planning.choosing.serve import Serving
 from stockroom.planning.facts import Facts, Form, Line
 from stockroom.planning.timing import Moment, earliest_ready
 from stockroom.planning.wants import Settled, Want
+
+_NAMED = 3
+"""So many holders of a bottle are named; the rest are counted. Our choice."""
 
 
 class Obtaining:
@@ -34,7 +39,7 @@ class Obtaining:
             return
         if not self._can_be_bought(line.key):
             want.settled = Settled.SHORT
-            want.reasons.append(_not_made_not_sold(want, line))
+            want.reasons.append(self._not_made_not_sold(want, line))
             return
         whole = self.serving.amount_from(want, line)
         self.serving.rest_of_jars(want, line)
@@ -113,7 +118,30 @@ class Obtaining:
             )
         return done
 
+    def _not_made_not_sold(self, want: Want, line: Line) -> str:
+        """No way to get any, and of at most two bottles why they will not do."""
+        held = self._promised_away(want)
+        # a second look, to the last drop, has passed the same bottles over once more
+        others = dict.fromkeys(
+            f"{number} {reason}" for number, reason in want.passed_over if number not in held
+        )
+        why = "; ".join([*(f"{number}: {words}" for number, words in held.items()), *others][:2])
+        return f"no method and no supplier for {line.key}" + (f" ({why})" if why else "")
 
-def _not_made_not_sold(want: Want, line: Line) -> str:
-    why = "; ".join(f"{number} {reason}" for number, reason in want.passed_over[:2])
-    return f"no method and no supplier for {line.key}" + (f" ({why})" if why else "")
+    def _promised_away(self, want: Want) -> dict[str, str]:
+        """Who holds the bottles that would do: "80 cm³ of 100 cm³ promised to K02"."""
+        shelf, row = self.serving.shelf, {}
+        for key in want.choices:
+            line = self.facts.lines[key]
+            for bottle in shelf.of_line(key):
+                number, promised = bottle.number, bottle.left - shelf.left[bottle.number]
+                if promised and not self.serving.unfit(want, line, bottle):
+                    total, kind = bottle.left, line.kind
+                    names = _first_few(dict.fromkeys(p.for_ref for p in shelf.promises[number]))
+                    row[number] = f"{say(promised, kind)} of {say(total, kind)} promised to {names}"
+        return row
+
+
+def _first_few(names: Collection[str]) -> str:
+    few = ", ".join(islice(names, _NAMED))
+    return few if len(names) <= _NAMED else f"{few} and {len(names) - _NAMED} more"

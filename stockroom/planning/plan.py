@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 from datetime import date
+from functools import partial
 
 from stockroom.planning.buying.course import Course, courses
 from stockroom.planning.buying.levels import level_queries, levels
@@ -46,7 +47,7 @@ def whole_plan(facts: Facts, *, past_day: date | None = None) -> Plan:
     batches, shelf = made.batches, netted.shelf
     making, told = makes(facts, batches), answers(facts, netted.wants, batches, shelf)
     below = levels(facts, netted.wants, runs, shelf)
-    to_check = checks(facts, netted.wants, batches, buying, shelf, _again)
+    to_check = checks(facts, netted.wants, batches, buying, shelf, partial(_again, netted))
     loads = day_loads(facts, making, to_check)
     watch = watches(needs, _lost(netted))
     used = with_year_before(facts, usage_of_period(facts))
@@ -80,16 +81,16 @@ def whole_plan(facts: Facts, *, past_day: date | None = None) -> Plan:
 
 
 def _worked_out(
-    facts: Facts, needs: tuple[Need, ...]
+    facts: Facts, needs: tuple[Need, ...], like: Netted | None = None
 ) -> tuple[Netted, Made, list[Course], list[Order]]:
-    netted, made = settled(facts, needs)
+    netted, made = settled(facts, needs, like)
     runs = courses(facts, made, netted.missed, netted.shelf)
     return netted, made, runs, orders(facts, runs, netted.shelf)
 
 
-def _again(facts: Facts, needs: tuple[Need, ...]) -> Replanned:
+def _again(like: Netted, facts: Facts, needs: tuple[Need, ...]) -> Replanned:
     """Some of the needs once more, with other facts: what is made, ordered and short."""
-    netted, made, _, buying = _worked_out(facts, needs)
+    netted, made, _, buying = _worked_out(facts, needs, like)
     return Replanned(made.batches, buying, _lost(netted))
 
 

@@ -13,11 +13,16 @@ def needs_of(facts: Facts) -> tuple[Need, ...]:
     return explode(facts, standing(facts.bookings, facts.as_at, facts.horizon or facts.end))
 
 
-def settled(facts: Facts, needs: tuple[Need, ...]) -> tuple[Netted, Made]:
-    """Netted and made up; to the exact need where anything more asks for more than there is."""
+def settled(
+    facts: Facts, needs: tuple[Need, ...], like: Netted | None = None
+) -> tuple[Netted, Made]:
+    """Netted and made up; to the exact need where anything more asks for more than there is.
+
+    `like` is an earlier netting of much the same facts, to learn from.
+    """
     exact: frozenset[str] = frozenset()
     while True:
-        netted = net(facts, needs)
+        like = netted = net(facts, needs, like)
         made = make_up(facts, netted.wants, netted.shelf, exact)
         # only the chains that ran dry are made exact: the others keep their round figures
         if made.outgrown <= exact:

@@ -201,6 +201,9 @@ def inherited_doubt(facts: Facts, bottle: Bottle) -> str:
 
 
 def _parents(facts: Facts, bottle: Bottle) -> list[Bottle]:
+    # most are made from nothing here, and then the bottles need not be gone through
+    if not bottle.lineage:
+        return []
     by_number = {b.number: b for b in facts.bottles if b.number in bottle.lineage}
     return [by_number[number] for number in bottle.lineage if number in by_number]
 

@@ -9,7 +9,7 @@ from stockroom.keeping.record import Record
 from stockroom.keeping.rules import Purpose, Rule, RuleKind
 from stockroom.keeping.strength import strengths_on
 from stockroom.keeping.verdict import limits_of
-from stockroom.planning.choosing.fitness import wrong_strength
+from stockroom.planning.choosing.fitness import bounds, wrong_strength
 from stockroom.planning.facts import Facts, Line, Requirement
 
 
@@ -73,6 +73,8 @@ def will_do(line: Line, requirement: Requirement | None, made: date, wanted: dat
     freshest = requirement.freshest_days
     if freshest is not None and (wanted - made).days > freshest:
         return False
+    if bounds(requirement) is None:
+        return True
     record = Record(made=made, nominal=line.strength, caution=line.caution)
     strengths = strengths_on(record, line.rules, wanted)
     return not wrong_strength(requirement, strengths.expected, line, strengths.usual)

@@ -130,6 +130,7 @@ def _top(plan: Plan) -> Data:
         "period": {"from": plan.start.isoformat(), "to": plan.end.isoformat()},
         "kept_as": plan.kept_as or None,
         "changed_since": _changed_since(plan),
+        "kept_unread": plan.kept_unread or None,
     } | _lower_limits(plan.lower_limits)
 
 

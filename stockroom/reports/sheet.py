@@ -64,6 +64,9 @@ def printed_copy(plan: Plan) -> list[str]:
     """The number a plan was kept under, or how far it is from the one kept last; else nothing."""
     if plan.kept_as:
         return [f"Plan {plan.kept_as}, kept: what changes from now on is told by stockroom changed"]
+    if plan.kept_unread:
+        number = plan.kept_unread
+        return [f"plan {number}, kept last, cannot be read: keep one anew, stockroom plan --keep"]
     if plan.changed_since is None:
         return []
     number, count = plan.changed_since

@@ -11,10 +11,10 @@ from stockroom.measure.days import spell_day
 from stockroom.measure.strengths import Strength
 from stockroom.planning.decisions import Draw
 from stockroom.planning.derive import with_derived
-from stockroom.planning.plan import plan
 from stockroom.safety.peroxide_formers import outcome, read_result
 from stockroom.service.answers import Done
 from stockroom.service.peroxide_tests import check_tested, has_passed, result_words
+from stockroom.service.replayed import replayed_plan
 from stockroom.service.touching import check_may_open, check_not_condemned
 from stockroom.service.work import Work, check_at_hand, unsettled, working
 from stockroom.store.history import children
@@ -285,7 +285,7 @@ def _drawn_on_for(work: Work, bottle: Bottle) -> tuple[str, ...]:
     # from the day of entry and not the day it happened: what is over can no longer be helped
     try:
         known = with_derived(facts_from(work.reader, work.stamp.entered_on))
-        whole = plan(known)
+        whole = replayed_plan(known)
     except StockroomError as error:
         # a spoiled bottle must be set aside whatever else is wrong in the house
         return (f"Which bookings it was for is not known, as no plan can be made: {error.message}",)

@@ -34,7 +34,8 @@ def came_of(work: Work, number: str, line: Line, entries: list[Entry]) -> tuple[
             "One of these is wrong.",
         )
     orders.record_came(work.session, row, entries)
-    stands = orders.as_it_stands(work.session, row, work.on)
+    # as known now: an arrival entered late may come after others of it
+    stands = orders.as_it_stands(work.session, row, work.stamp.entered_on)
     over = stands.came - stands.amount
     if stands.cancelled:
         return (f"{row.number} was cancelled {spell_day(stands.cancelled)}, and it came: noted.",)
@@ -47,7 +48,8 @@ def came_of(work: Work, number: str, line: Line, entries: list[Entry]) -> tuple[
 
 def may_be_of(work: Work, line: Line) -> tuple[str, ...]:
     """One line when an arrival names no order, and one of its line is still to come."""
-    row = [order.number for order in orders.outstanding_of(work.session, line, work.on)]
+    still = orders.outstanding_of(work.session, line, work.stamp.entered_on)
+    row = [order.number for order in still if order.ordered <= work.on]
     if not row:
         return ()
     return (

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 from datetime import date
 from pathlib import Path
 
-from stockroom.errors import BadAmount, NotAllowed, NotEnough, StockroomError
+from stockroom.errors import BadAmount, BrokenPlan, NotAllowed, NotEnough, StockroomError
 from stockroom.keeping.rules import RuleKind
 from stockroom.keeping.verdict import USABLE, Condition, Verdict, verdict
 from stockroom.measure.amounts import Amount, Kind
@@ -15,8 +15,8 @@ from stockroom.planning.amounts import draw_for
 from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
 from stockroom.planning.known import by_dilution
-from stockroom.planning.plan import plan
 from stockroom.service.answers import Done
+from stockroom.service.replayed import replayed_plan
 from stockroom.service.standing import told_of_place
 from stockroom.service.taking import open_if_sealed, take
 from stockroom.service.touching import check_may_open
@@ -85,7 +85,11 @@ def make_up(
 def _meant_for(known: Facts, product: Line, volume: int) -> tuple[str, ...]:
     """The bookings the plan has this line made for next, as far as the volume goes."""
     # what the plan meant it for is kept with the bottle, or another class would be given it
-    whole = plan(known)
+    try:
+        whole = replayed_plan(known)
+    except BrokenPlan:
+        # what was made must be written down all the same, and then for nobody in particular
+        return ()
     planned = next((make for make in whole.makes if make.line == product.key), None)
     if planned is None:
         return ()

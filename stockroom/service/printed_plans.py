@@ -5,7 +5,6 @@ Only `keep` writes; the rest opens the store for reading, so nothing heavy is lo
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from datetime import date
 from pathlib import Path
@@ -13,10 +12,10 @@ from pathlib import Path
 from stockroom.errors import NotAllowed, StoreTrouble
 from stockroom.measure.days import spell_day
 from stockroom.planning.changing.causes import compared
-from stockroom.planning.changing.changes import Change, Comparison
+from stockroom.planning.changing.changes import Comparison
 from stockroom.planning.changing.differences import differences
 from stockroom.planning.changing.kept import KeptPlan, kept_of, usual_days
-from stockroom.planning.changing.kept_form import days_written, digest, read, written
+from stockroom.planning.changing.kept_form import UNREADABLE, days_written, digest, read, written
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Happened
 from stockroom.service.known import known_from
@@ -109,28 +108,32 @@ def changed(path: Path, number: str | None = None, *, as_at: date) -> Changed:
 def beside_the_kept(path: Path, known: Facts, plan: Plan, *, whole: bool) -> Plan:
     """The plan with the number of the one kept last and how many changes there are since.
 
-    As it was where no plan was kept, or nothing changed. `whole` says that it is the
+    As it was where no plan was kept, or nothing changed; with the number alone where the kept
+    one cannot be read, since that is no reason to show none. `whole` says that it is the
     term's, as kept plans are; a part is held against nothing before the rest is made.
     """
     with reading(path) as reader:
         printed = last_kept(reader, known.as_at)
         cautious = known.lower_limits is not None
         # two ways of counting strengths differ everywhere, and nothing happened
-        if printed is None or printed.cautious != cautious:
+        if printed is None:
+            return plan
+        if printed.unread:
+            return replace(plan, kept_unread=printed.number)
+        if printed.cautious != cautious:
             return plan
         if not whole:
             known = known_from(reader, known.as_at, cautious=cautious)
         after = kept_of(known, plan if whole else replayed_plan(known))
         if digest(after) == printed.digest:
             return plan
-        found = _differences(path, reader, printed, after)
+        try:
+            before = read(printed.decisions)
+        except UNREADABLE:
+            return replace(plan, kept_unread=printed.number)
+        found = differences(before, after, _since(reader, printed, after.as_at))
     count = sum(not change.done for change in found)
     return replace(plan, changed_since=(printed.number, count)) if count else plan
-
-
-def _differences(path: Path, reader: Reader, printed: Printed, after: KeptPlan) -> Sequence[Change]:
-    happened = _since(reader, printed, after.as_at)
-    return differences(_read(path, printed), after, happened)
 
 
 def _since(reader: Reader, printed: Printed, as_at: date) -> tuple[Happened, ...]:
@@ -153,10 +156,13 @@ def _printed(reader: Reader, number: str | None, as_at: date) -> Printed:
 
 
 def _read(path: Path, printed: Printed) -> KeptPlan:
-    try:
-        return read(printed.decisions)
-    except (ValueError, TypeError, KeyError) as error:
-        raise StoreTrouble(
-            f"Plan {printed.number} of {path} cannot be read: {error}.",
-            "Keep the plan anew: stockroom plan --keep",
-        ) from error
+    damaged = printed.unread
+    if not damaged:
+        try:
+            return read(printed.decisions)
+        except UNREADABLE as error:
+            damaged = str(error)
+    raise StoreTrouble(
+        f"Plan {printed.number} of {path} cannot be read: {damaged}.",
+        "Keep the plan anew: stockroom plan --keep",
+    )

@@ -112,6 +112,7 @@ class _Supposing:
 
     def carry_out(self) -> Iterator[Happened]:
         """Suppose it all, in a fixed order; what was supposed, in words."""
+        _check_once(self.asked)
         yield from map(self._shift, self.asked.shifts)
         yield from (self._resize(*each) for each in self.asked.groups)
         yield from map(self._cancel, self.asked.cancels)
@@ -131,6 +132,7 @@ class _Supposing:
         check_in_use(booking.number, booking.firmness)
         if shift.on is not None:
             self._check_day(shift.on)
+            self._check_planned(shift.on)
         on, minute = shift.on or booking.on, _else(shift.minute, booking.minute)
         same = (on, minute) == (booking.on, booking.minute)
         _check_other(booking, same, f"on {on} {format_time(minute)}")
@@ -146,12 +148,7 @@ class _Supposing:
     def _book(self, extra: Extra) -> Happened:
         recipe = self._recipe(extra.recipe)
         self._check_day(extra.on)
-        last = self.facts.horizon or self.facts.end
-        if extra.on > last:
-            raise NotAllowed(
-                f"{spell_day(extra.on)} is after the last day planned, {spell_day(last)}.",
-                "Give a day of the term, or another with --as-at.",
-            )
+        self._check_planned(extra.on)
         alike = [b for b in self.facts.bookings if b.recipe == recipe.code]
         model = max(alike, key=lambda b: (b.on, b.minute, b.number), default=None)
         minute = _else(extra.minute, model.minute if model else self.facts.calendar.open_from)
@@ -175,6 +172,8 @@ class _Supposing:
         bottle = self._bottle(number)
         if bottle.record.not_found:
             raise BadInput(f"{bottle.number} was not found as it is.", "Leave it out.")
+        if not bottle.left:
+            raise BadInput(f"{bottle.number} is empty as it is.", "Leave it out.")
         self.facts = suppose.without(self.facts, bottle.number)
         said = f"without {bottle.number}"
         return Happened(HappenedKind.BOTTLE, bottle.number, said, line=bottle.line)
@@ -197,6 +196,11 @@ class _Supposing:
         for bottle in self.facts.bottles:
             if plain(bottle.number) == plain(text):
                 return bottle
+        # one that is no longer there, or not there yet, is no slip of the keyboard
+        for row in self.reader.ask("SELECT number FROM bottle ORDER BY number"):
+            if plain(row["number"]) == plain(text):
+                on = spell_day(self.facts.as_at)
+                raise BadInput(f"{row['number']} is not there on {on} as it is.", "Leave it out.")
         raise unknown("bottle", text, [bottle.number for bottle in self.facts.bottles])
 
     def _recipe(self, text: str) -> Recipe:
@@ -229,6 +233,34 @@ class _Supposing:
     def _check_day(self, on: date) -> None:
         facts, keep = self.facts, self.asked.keep_closed
         check_day(on, facts.calendar, today=facts.as_at, keep=keep)
+
+    def _check_planned(self, on: date) -> None:
+        last = self.facts.horizon or self.facts.end
+        if on > last:
+            raise NotAllowed(
+                f"{spell_day(on)} is after the last day planned, {spell_day(last)}.",
+                "Give a day of the term, or another with --as-at.",
+            )
+
+
+def _check_once(asked: Asked) -> None:
+    """Pass when nothing is asked of one booking or bottle twice. Raises: BadInput, naming it."""
+    cancels = list(asked.cancels)
+    resized, shifted = [each[0] for each in asked.groups], [each.booking for each in asked.shifts]
+    for option, names in (
+        ("--groups", resized),
+        ("--shift", shifted),
+        ("--cancel", cancels),
+        ("--without", list(asked.without)),
+        # a class that is dropped has no groups and no day
+        ("--cancel and --groups", [*set(map(plain, cancels)), *set(map(plain, resized))]),
+        ("--cancel and --shift", [*set(map(plain, cancels)), *set(map(plain, shifted))]),
+    ):
+        seen: set[str] = set()
+        for name in names:
+            if plain(name) in seen:
+                raise BadInput(f"{name.strip()} is named twice, in {option}.", "Name it once.")
+            seen.add(plain(name))
 
 
 def _of(booking: Booking, what: str) -> Happened:

@@ -18,7 +18,6 @@ from stockroom.store.snapshot_orders import placed_of
 from stockroom.store.tables import (
     Entry,
     Line,
-    Pack,
     Placed,
     PlacedCame,
     PlacedChange,
@@ -118,9 +117,3 @@ def record_change(
     )
     session.add(written)
     session.flush()
-
-
-def packs_of(session: Session, line: Line) -> list[Pack]:
-    """The packs a line is sold in, as entered, the largest first."""
-    rows = select(Pack).where(Pack.line_id == line.id)
-    return list(session.exec(rows.order_by(col(Pack.size).desc(), col(Pack.id))))

@@ -13,12 +13,16 @@ from stockroom.store.reading import Reader, Row
 
 TABLE = "printed_plan"
 
+# what another text than was written there comes to
+_DAMAGED = (ValueError, TypeError, AttributeError, RecursionError)
+
 
 @dataclass(frozen=True, slots=True)
 class Printed:
     """One kept plan: its number, as at what day, who kept it, and the decisions as text.
 
-    `marks` is the last row number of each table at that moment.
+    `marks` is the last row number of each table at that moment. `unread` says what in the row
+    is damaged, "" for nothing; the decisions are read, and may still fail, elsewhere.
     """
 
     number: str
@@ -28,6 +32,7 @@ class Printed:
     digest: str
     decisions: str
     marks: dict[str, int]
+    unread: str = ""
 
 
 def last_kept(reader: Reader, as_at: date) -> Printed | None:
@@ -57,12 +62,22 @@ def next_number(reader: Reader) -> str:
 
 
 def usual_of(reader: Reader, as_at: date) -> dict[str, tuple[date, ...]]:
-    """For each line, the days its makes had in the plan kept last; nothing where none was."""
+    """For each line, the days its makes had in the plan kept last; nothing where none was.
+
+    Nothing too where they cannot be read: they only break ties, and no plan fails for that.
+    """
     # one column of one row: every plan asks this, and most houses have a long row there
     rows = reader.ask(
         f"SELECT usual FROM {TABLE} WHERE as_at <= ? ORDER BY id DESC LIMIT 1", as_at.isoformat()
     )
-    days: dict[str, list[str]] = json.loads(rows[0][0]) if rows else {}
+    try:
+        return _days(rows[0][0]) if rows else {}
+    except _DAMAGED:
+        return {}
+
+
+def _days(text: str) -> dict[str, tuple[date, ...]]:
+    days: dict[str, list[str]] = json.loads(text)
     return {line: tuple(map(date.fromisoformat, row)) for line, row in days.items()}
 
 
@@ -73,6 +88,12 @@ def marks(reader: Reader) -> dict[str, int]:
 
 
 def _printed(row: Row) -> Printed:
+    known, unread = {}, ""
+    try:
+        known = _marks(row["marks"])
+        _days(row["usual"])
+    except _DAMAGED as error:
+        unread = str(error)
     return Printed(
         number=row["number"],
         as_at=date.fromisoformat(row["as_at"]),
@@ -80,8 +101,14 @@ def _printed(row: Row) -> Printed:
         cautious=bool(row["cautious"]),
         digest=row["digest"],
         decisions=row["decisions"],
-        marks=json.loads(row["marks"]),
+        marks=known,
+        unread=unread,
     )
+
+
+def _marks(text: str) -> dict[str, int]:
+    found: dict[str, int] = json.loads(text)
+    return {table: int(mark) for table, mark in found.items()}
 
 
 def marks_written(now: dict[str, int]) -> str:

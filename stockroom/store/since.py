@@ -1,8 +1,10 @@
 """What was entered since a plan was kept, told from the row numbers it had then.
 
 Light, as reading is. By number and not by the clock: a clock may be set, and entries
-brought in later may have happened before. What had been entered already but happened
-after the day the plan was made for counts too.
+brought in later may have happened before. Where a plan goes by the day (entries, orders),
+what had been entered already but happened after the day it was made for counts too, and
+what happened after the day looked from does not. A booking, a correction, a row that is
+added and a slip put right hold for every day as soon as they are entered: number alone.
 """
 
 from __future__ import annotations
@@ -43,12 +45,13 @@ def happened_since(
 ) -> tuple[Happened, ...]:
     """Everything entered after the marks, or that happened after the day the plan was made for.
 
-    Entries of days after `as_at` are left out, as they are from the plan itself.
+    Entries and orders of days after `as_at` are left out, as they are from the plan itself.
     """
     return (
         *_bookings(reader, marks),
         *_entries(reader, marks, kept_as_at, as_at),
-        *_placed(reader, marks),
+        *_placed(reader, marks, kept_as_at, as_at),
+        *_placed_changes(reader, marks, kept_as_at, as_at),
         *_corrections(reader, marks),
         *_added(reader, marks),
     )
@@ -61,13 +64,17 @@ def _entries(reader: Reader, marks: Marks, kept_as_at: date, as_at: date) -> Ite
         " place.place AS place FROM entry JOIN bottle ON bottle.id = bottle_id"
         " JOIN line ON line.id = line_id LEFT JOIN place ON place.id = place_id"
         f" WHERE ((entry.id > ? OR happened_on > ?) AND happened_on <= ? AND {STANDING})"
-        # a slip entered and put right since: the plan never knew of either
-        " OR (entry.id > ? AND puts_right <= ?) ORDER BY happened_on, entry.id",
+        # a slip the plan did not know of, entered since or of a later day, is missing from it
+        # with or without its putting right
+        " OR (entry.id > ? AND puts_right IN"
+        " (SELECT id FROM entry WHERE id <= ? AND happened_on <= ?))"
+        " ORDER BY happened_on, entry.id",
         mark,
         kept_as_at.isoformat(),
         as_at.isoformat(),
         mark,
         mark,
+        kept_as_at.isoformat(),
     )
     return map(_entry, rows)
 
@@ -142,20 +149,34 @@ def _bookings(reader: Reader, marks: Marks) -> Iterator[Happened]:
         )
 
 
-def _placed(reader: Reader, marks: Marks) -> Iterator[Happened]:
-    of = " JOIN line ON line.id = line_id WHERE"
+def _placed(reader: Reader, marks: Marks, kept_as_at: date, as_at: date) -> Iterator[Happened]:
     rows = reader.ask(
-        f"SELECT placed.*, line.key AS line_key FROM placed{of} placed.id > ? ORDER BY placed.id",
+        "SELECT placed.*, line.key AS line_key FROM placed JOIN line ON line.id = line_id"
+        " WHERE (placed.id > ? OR ordered_on > ?) AND ordered_on <= ?"
+        " ORDER BY ordered_on, placed.id",
         marks.get("placed", 0),
+        kept_as_at.isoformat(),
+        as_at.isoformat(),
     )
     for row in rows:
         said = f"{row['number']} {row['packs']} × {row['pack']} ordered"
         yield Happened(HappenedKind.ORDERED, row["number"], said, row["line_key"],
                        date.fromisoformat(row["ordered_on"]), row["by"])  # fmt: skip
+
+
+def _placed_changes(
+    reader: Reader, marks: Marks, kept_as_at: date, as_at: date
+) -> Iterator[Happened]:
     rows = reader.ask(
         "SELECT placed_change.*, placed.number, line.key AS line_key FROM placed_change"
-        f" JOIN placed ON placed.id = placed_id{of} placed_change.id > ? ORDER BY placed_change.id",
+        " JOIN placed ON placed.id = placed_id JOIN line ON line.id = line_id"
+        " WHERE (placed_change.id > ? OR happened_on > ?) AND happened_on <= ?"
+        # an order of a later day is in no plan yet, whatever was written beside it
+        " AND ordered_on <= ? ORDER BY happened_on, placed_change.id",
         marks.get("placed_change", 0),
+        kept_as_at.isoformat(),
+        as_at.isoformat(),
+        as_at.isoformat(),
     )
     for row in rows:
         said = f"{row['number']} {row['what']} {row['after']}".rstrip()

@@ -185,6 +185,20 @@ def test_an_unrelated_event_moves_no_make(kept: Callable[..., Result]) -> None:
     assert not any("day" in c["what"] for c in data["changes"] if c["about"] == "make")
 
 
+def test_an_order_of_a_day_since_is_the_cause_and_a_later_one_is_not(
+    at: Callable[..., Result],
+) -> None:
+    """The order is entered first, for a day after the one the plan is then kept for."""
+    order = ("order", "lithium chloride", "2", "100 g", "--price", "14.50")
+    at("01-20", *order, "--expected", "2027-02-01")
+    at("01-11", "plan", "--keep")
+    early = told(at("01-19", "changed", "--json"))
+    assert not any("P01" in c["cause"] + c["text"] for c in (*early["changes"], *early["done"]))
+    data = told(at("01-20", "changed", "--json"))
+    lithium = [c for c in data["done"] if c["item"] == "lithium chloride"]
+    assert ["P01 2 × 100 g ordered 2027-01-20 by T1" in c["text"] for c in lithium] == [True]
+
+
 # -- what if ----------------------------------------------------------------------------------
 
 SAME = [
@@ -267,6 +281,14 @@ def test_a_class_more_takes_after_the_last_of_its_kind(at: Callable[..., Result]
         (("--shift", "K08=2027-01-27,09:00,10:00"), 2, "more than a day and a time"),
         (("--shift", "K08=2027-01-03"), 2, "3 January 2027 is past"),
         (("--shift", "K08=2027-02-15"), 1, "is closed. Keep it?"),
+        (("--shift", "K08=2027-05-11"), 1, "after the last day planned, 26 March 2027"),
+        (("--shift", "K08=2027-05-11,14:00"), 1, "after the last day planned"),
+        (("--groups", "K08=9", "--groups", "k08=10"), 2, "k08 is named twice, in --groups"),
+        (("--shift", "K08=2027-01-27", "--shift", "K08=14:00"), 2, "named twice, in --shift"),
+        (("--cancel", "K05", "--cancel", "K05"), 2, "K05 is named twice, in --cancel"),
+        (("--cancel", "K05", "--groups", "K05=9"), 2, "twice, in --cancel and --groups"),
+        (("--cancel", "K05", "--shift", "K05=14:00"), 2, "twice, in --cancel and --shift"),
+        (("--without", "S03", "--without", "s03"), 2, "named twice, in --without"),
         (("--without", "S99"), 2, "Nearest:"),
         (("--without", "B28"), 2, "B28 was not found as it is"),
         (("--cancel", "K5"), 2, 'No booking "K5"'),
@@ -292,6 +314,20 @@ def test_a_dropped_class_is_not_dropped_twice(at: Callable[..., Result]) -> None
     at("01-04", "cancel", "K05")
     assert at("01-04", "what-if", "--cancel", "K05").code == 1
     assert at("01-04", "what-if", "--groups", "K05=9").code == 1
+
+
+def test_a_class_may_be_resized_and_moved_at_once(at: Callable[..., Result]) -> None:
+    asked = at("01-04", "what-if", "--groups", "K08=11", "--shift", "K08=2027-01-27", "--json")
+    assert told(asked)["if"] == ["K08 on 2027-01-27 09:15", "K08 8 → 11 groups"]
+
+
+def test_an_empty_bottle_and_one_thrown_out_are_said_to_be_so(at: Callable[..., Result]) -> None:
+    at("01-04", "spill", "S13", "130 cm3", "--why", "fell")
+    asked = at("01-04", "what-if", "--without", "S13")
+    assert (asked.code, "S13 is empty as it is" in asked.err) == (2, True)
+    at("01-04", "discard", "B36", "--how", "waste", "--why", "unknown")
+    asked = at("01-04", "what-if", "--without", "B36")
+    assert (asked.code, "B36 is not there on 4 January 2027" in asked.err) == (2, True)
 
 
 def test_a_closed_day_may_be_kept(at: Callable[..., Result]) -> None:

@@ -203,7 +203,8 @@ def test_the_larger_batch_is_rounded_up_to_the_houses_step() -> None:
 
 
 def test_with_all_balances_away_it_says_so() -> None:
-    assert "No balance" in "; ".join(dye(0.02, BAL2).reasons)
+    always = Balance("BAL2", 1_000, ((day("01-04"), day("02-12")),))
+    assert "No balance" in "; ".join(dye(0.02, always).reasons)
 
 
 # -- rounding, smallest batch, heels --------------------------------------------------

@@ -27,7 +27,7 @@ from houses import (
 from stockroom.planning.changing.causes import compared
 from stockroom.planning.changing.changes import About, Change, Comparison, What
 from stockroom.planning.changing.kept import KeptMake, KeptPlan, KeptSource, kept_of, usual_days
-from stockroom.planning.changing.kept_form import digest, read, written
+from stockroom.planning.changing.kept_form import UNREADABLE, digest, read, written
 from stockroom.planning.changing.pairing import paired_makes
 from stockroom.planning.changing.what_if import booked, cancelled, shifted, with_groups, without
 from stockroom.planning.facts import Facts, Happened, HappenedKind
@@ -223,6 +223,24 @@ def test_a_kept_plan_is_read_as_it_was_written(part: str) -> None:
     again = read(written(plan_now))
     assert again == plan_now
     assert getattr(again.makes[0], part) == getattr(make, part)
+
+
+@pytest.mark.parametrize(
+    ("was", "now"),
+    [
+        ('"volume":100000', '"volume":"100000"'),
+        ('"id":"M01"', '"id":1'),
+        ('"on":"2027-01-12"', '"on":"soon"'),
+        ('"makes":[', '"makes":[5,'),
+        ('"makes":', '"mades":'),
+    ],
+)
+def test_another_text_is_no_kept_plan(was: str, now: str) -> None:
+    """Found out when it is read, not where two amounts are compared."""
+    text = written(kept(facts(booking("K01", "01-12", groups=2))))
+    assert was in text
+    with pytest.raises(UNREADABLE):
+        read(text.replace(was, now, 1))
 
 
 def test_the_digest_knows_what_was_decided_and_no_more() -> None:

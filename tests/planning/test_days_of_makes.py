@@ -114,7 +114,7 @@ def test_fresh_leaves_what_stands_too_long_short() -> None:
     assert outcomes(made) == {"K1.1": Outcome.SHORT}
     assert made.short[0].reason == (
         f"cannot: {HALF.key} takes 130 min on the morning of 2027-01-13, "
-        "and that day leaves no staffed time before 09:15"
+        "and that day leaves no staffed time before 09:15: ready 10:10, class 09:15"
     )
 
 

@@ -30,7 +30,7 @@ from hypothesis import strategies as st
 from stockroom.keeping.rules import Origin
 from stockroom.planning.buying.on_way import receipts
 from stockroom.planning.decisions import Outcome, Plan
-from stockroom.planning.facts import Form, Line, Placed
+from stockroom.planning.facts import Form, Line, Placed, Swap
 from stockroom.planning.plan import plan
 
 # 100 g/mol: 1 dm³ of 0.5 takes 50 g
@@ -91,6 +91,52 @@ def test_too_late_for_both_it_is_not_ordered_again() -> None:
     assert "P01 comes 2027-01-25" in made.short[0].reason
     (one,) = made.on_order
     assert [way.what for way in one.instead] == ["borrow", "run without", "another day"]
+
+
+def late_for_one(*orders: Placed, swaps: tuple[Swap, ...] = ()) -> Plan:
+    """One class on 12 January, 50 g wanted, nothing here: what is placed comes too late."""
+    other = solid("other salt", packs=(pack(g(100), 5.0),))
+    return planned(
+        [SALT, other, HALF], methods=[made_from(HALF, SALT)],
+        recipes=[recipe(wants(HALF, cm3(1000)), swaps=swaps)], bookings=[booking("K1", "01-12")],
+        placed=orders,
+    )  # fmt: skip
+
+
+def test_the_ways_round_stand_once_with_the_last_of_two_orders_and_the_sum() -> None:
+    made = late_for_one(placed("P01", "01-18", 30), placed("P02", "01-20", 30))
+    first, last = made.on_order
+    assert first.instead == ()
+    told = {way.what: way.text for way in last.instead}
+    assert told["borrow"] == "borrow 50 g of salt by 2027-01-11 for K1"
+    # both must have come
+    assert "it comes 2027-01-20" in told["another day"]
+
+
+def test_what_is_still_to_be_ordered_too_is_told_with_that_order_alone() -> None:
+    made = late_for_one(placed("P01", "01-25", 30))
+    assert made.on_order[0].instead == ()
+    (order,) = made.orders
+    told = {way.what: way.text for way in order.instead}
+    assert told["borrow"] == "borrow 50 g of salt by 2027-01-11 for K1"
+    assert "it comes 2027-01-25" in told["another day"]
+
+
+def test_a_swap_beside_an_order_sent_off_is_not_told_as_ordered_today() -> None:
+    swap = Swap(HALF.key, "other salt", None, "smells")
+    made = late_for_one(placed("P01", "01-18", 60), swaps=(swap,))
+    told = made.on_order[0].instead[0].text
+    assert told == "take other salt for K1 (smells): none here, so borrow it by 2027-01-11"
+
+
+def test_a_swap_that_is_on_its_way_itself_says_its_number() -> None:
+    swap = Swap(HALF.key, "other salt", None, "smells")
+    coming = replace(placed("P07", "01-14"), line="other salt")
+    made = late_for_one(coming, swaps=(swap,))
+    told = made.orders[0].instead[0].text
+    assert told.endswith("none here, so borrow it by 2027-01-11; P07 comes 2027-01-14")
+    soon = late_for_one(replace(coming, expected=day("01-08")), swaps=(swap,))
+    assert soon.orders[0].instead[0].text.endswith("none here; P07 comes 2027-01-08")
 
 
 def test_a_part_delivery_leaves_the_rest_outstanding() -> None:

@@ -152,7 +152,14 @@ def _house(salt: Line, printed: str = "") -> Facts:
 
 @pytest.mark.parametrize(
     ("days", "said"),
-    [(1, "1 month"), (89, "2 months"), (365, "1 year"), (840, "2.3 years"), (4100, "11 years")],
+    [
+        (1, "1 month"),
+        (89, "2 months"),
+        (365, "1 year"),
+        (765, "2.1 years"),
+        (840, "2.3 years"),
+        (4100, "11 years"),
+    ],
 )
 def test_a_length_of_stock_in_words(days: int, said: str) -> None:
     assert years(timedelta(days=days)) == said

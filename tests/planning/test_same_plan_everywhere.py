@@ -19,10 +19,11 @@ from typing import Any
 
 import pytest
 import random_houses
-from random_houses import mixed, random_house, shuffled
+from houses import day
+from random_houses import VESSELS, mixed, random_house, shuffled
 
 from stockroom.planning.derive import with_derived
-from stockroom.planning.facts import Facts
+from stockroom.planning.facts import Balance, Facts
 from stockroom.planning.plan import plan
 from stockroom.store.snapshot import facts
 
@@ -98,6 +99,38 @@ def test_the_order_of_packs_and_of_what_is_on_its_way_does_not_change_the_plan()
     for seed in range(60):
         known = random_house(seed)
         assert plan(with_other_orders(known, seed)) == plan(known), f"house {seed}"
+
+
+# V1 and V2 are both away on a day in these, and a plan named them as the rows stood
+NAMED_AS_THE_ROWS_STOOD = (9042, 9059, 9065, 5066)
+
+
+@pytest.mark.parametrize("seed", [*NAMED_AS_THE_ROWS_STOOD, *range(500, 530)])
+def test_the_order_of_the_equipment_does_not_change_the_plan(seed: int) -> None:
+    known = replace(random_house(seed), vessels=VESSELS, balances=BALANCES)
+    made = plan(known)
+    for other in range(4):
+        assert plan(with_other_equipment(known, other)) == made, f"house {seed}"
+
+
+# two of a kind, and spans of days that overlap: nothing but its name tells one from the other
+BALANCES = (
+    Balance("B1", 100_000),
+    Balance("B2", 10_000, ((day("01-11"), day("01-22")), (day("01-18"), day("02-05")))),
+    Balance("B3", 10_000, ((day("01-18"), day("01-29")),)),
+)
+
+
+def with_other_equipment(known: Facts, seed: int) -> Facts:
+    """The same house, with vessels and balances, and the days each is away, in another order."""
+    luck = Random(seed)
+    vessels = [replace(v, away=tuple(shuffled(luck, v.away))) for v in known.vessels]
+    balances = [replace(b, away=tuple(shuffled(luck, b.away))) for b in known.balances]
+    return replace(
+        known,
+        vessels=tuple(shuffled(luck, vessels)),
+        balances=tuple(shuffled(luck, balances)),
+    )
 
 
 def with_other_orders(known: Facts, seed: int) -> Facts:

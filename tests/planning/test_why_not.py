@@ -289,8 +289,9 @@ def test_another_pack_says_what_it_costs_and_how_long_it_lasts() -> None:
     assert (made.orders[0].packs, made.orders[0].pence) == (1, 960)
     words = "; ".join(why_not(known, made, "O01", Amount.grams(1000)))
     assert "1 × pack of salt is £30.00, £20.40 dearer than 1 × pack (£9.60)" in words
-    # 5 g in the 82 days from 4 January to 26 March: 1000 g is 200 times that
-    assert "1 000 g would last 45 years at this term's rate (5 g in 82 days)" in words
+    # 5 g in the 81 days from 4 January to 26 March, as in the order: 1000 g is 200 times that
+    assert "1 000 g would last 44 years at this term's rate (5 g in 81 days)" in words
+    assert "it lasts 44 years at this rate" in " ".join(made.orders[0].reasons)
 
 
 def test_a_pack_nobody_sells_says_what_is_sold() -> None:
@@ -305,6 +306,30 @@ def test_another_day_of_an_order_counts_open_days() -> None:
     late = known.calendar.after(order.order_by, 3)
     assert f"3 open days after {order.order_by}" in asked(known, "O01", late)
     assert "is the last day" in asked(known, "O01", known.as_at)
+
+
+def test_leave_to_be_asked_counts_for_another_day_and_another_pack() -> None:
+    known, _ = ordering()
+    asking = replace(known.lines[SALT.key], ask_days=5)
+    known = replace(known, lines={**known.lines, SALT.key: asking})
+    # ten open days and five of asking from Monday 4 January, as the order itself reckons
+    assert "may go on 2027-01-04: it comes 2027-01-25" in asked(known, "O01", known.as_at)
+    words = asked(known, "O01", Amount.grams(1000))
+    assert "ordered today it comes 2027-01-25 (10 open days, 5 more to ask first)" in words
+
+
+def test_two_suppliers_packs_of_one_name_are_told_apart() -> None:
+    dear, cheap = (replace(pack(g(100), price), text="100 g") for price in (9.90, 9.60))
+    sold = (replace(dear, supplier="Southern"), replace(cheap, supplier="Northern"))
+    salt = replace(SALT, packs=sold)
+    known, _ = ordering()
+    known = replace(known, lines={**known.lines, SALT.key: salt})
+    made = plan(known)
+    assert [pack.supplier for pack in made.orders[0].sold_as] == ["Northern"]
+    south = why_not(known, made, "O01", "Southern")
+    assert "£0.30 dearer" in south[0]
+    north = "; ".join(why_not(known, made, "O01", "Northern"))
+    assert "O01 is 1 × 100 g from Northern: £9.60" in north
 
 
 def test_a_bottle_held_does_not_save_an_order_and_says_what_is_in_it() -> None:

@@ -124,7 +124,7 @@ def test_a_bottle_is_set_aside_though_no_plan_can_be_made(
     def fail(known: object) -> object:
         raise BadInput("A method goes round.", "Mend it.")
 
-    monkeypatch.setattr(checks, "plan", fail)
+    monkeypatch.setattr(checks, "replayed_plan", fail)
     done = checks.spoil(own, "S01", "cloudy", **WHO)
     assert "no plan can be made: A method goes round." in done.details[-1]
     assert seen(own, "S01").record.set_aside == "cloudy"

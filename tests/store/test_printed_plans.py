@@ -15,6 +15,7 @@ from stockroom.planning.facts import Happened, HappenedKind
 from stockroom.store.printed_plans import kept_under, last_kept, marks, next_number, usual_of
 from stockroom.store.reading import reading
 from stockroom.store.since import happened_since
+from stockroom.store.snapshot import facts_from
 
 if TYPE_CHECKING:
     from conftest import Stockroom
@@ -67,6 +68,12 @@ def test_the_usual_days_are_of_the_plan_kept_last(raw: sqlite3.Connection, own: 
     with reading(own) as reader:
         assert usual_of(reader, date(2027, 1, 3)) == {}
         assert usual_of(reader, date(2027, 2, 1)) == {"x": (date(2027, 2, 2), date(2027, 2, 9))}
+
+
+def test_the_planner_is_told_the_usual_days(raw: sqlite3.Connection, own: Path) -> None:
+    with reading(own) as reader:
+        known = facts_from(reader, date(2027, 1, 11))
+    assert known.usual == {"x": (date(2027, 1, 12),)}
 
 
 @pytest.mark.parametrize("typed", ["0002", "2", " 2 ", "#2"])
@@ -129,6 +136,73 @@ def test_an_earlier_entry_put_right_is_told(
     assert righted.words == f"S13 entry {entry} put right 2027-01-06 by T2, slip"
 
 
+SLIP = ("draw", "S13", "10 cm3")
+
+
+def test_a_slip_the_kept_plan_did_not_know_of_is_no_cause(own: Path, stockroom: Stockroom) -> None:
+    """Entered before the plan was kept, for a later day, and put right since."""
+    told = stockroom(*SLIP, "--by", "T1", "--as-at", "2027-01-20", store=own)
+    entry = told.out.rsplit("Entry ", 1)[1].split(".")[0]
+    with reading(own) as reader:
+        known = marks(reader)
+    stockroom("put-right", entry, "--why", "slip", "--by", "T1", "--as-at", "2027-01-20", store=own)
+    assert since(own, known, "2027-01-11") == []
+    assert since(own, known, "2027-01-20") == []
+
+
+def test_a_slip_put_right_on_a_later_day_is_gone_from_every_day(
+    own: Path, stockroom: Stockroom
+) -> None:
+    """As the snapshot has it: so the putting right is the cause, whatever its day."""
+    told = stockroom(*SLIP, "--by", "T1", "--as-at", "2027-01-04", store=own)
+    entry = told.out.rsplit("Entry ", 1)[1].split(".")[0]
+    with reading(own) as reader:
+        known = marks(reader)
+    before = bottle_left(own, "S13")
+    stockroom("put-right", entry, "--why", "slip", "--by", "T1", "--as-at", "2027-01-20", store=own)
+    assert bottle_left(own, "S13") == before + 10_000
+    assert [each.subject for each in since(own, known, "2027-01-11")] == ["S13"]
+
+
+def bottle_left(own: Path, number: str) -> int:
+    with reading(own) as reader:
+        known = facts_from(reader, date(2027, 1, 11))
+    return next(bottle.left for bottle in known.bottles if bottle.number == number)
+
+
+LITHIUM = ("order", "lithium chloride", "2", "100 g", "--price", "14.50", "--expected")
+
+
+def test_an_order_counts_from_its_day_whenever_it_was_entered(
+    own: Path, before: dict[str, int], stockroom: Stockroom
+) -> None:
+    stockroom(*LITHIUM, "2027-02-01", "--by", "T1", "--as-at", "2027-01-20", store=own)
+    with reading(own) as reader:
+        known = marks(reader)
+    for marked in (before, known):
+        assert since(own, marked, "2027-01-19") == []
+        (placed,) = since(own, marked, "2027-01-20")
+        assert placed.kind is HappenedKind.ORDERED
+        assert placed.words == "P01 2 × 100 g ordered 2027-01-20 by T1"
+
+
+def test_what_came_of_an_order_counts_from_its_day_too(
+    own: Path, before: dict[str, int], stockroom: Stockroom
+) -> None:
+    stockroom(*LITHIUM, "2027-02-01", "--by", "T1", "--as-at", "2027-01-04", store=own)
+    with reading(own) as reader:
+        ordered = marks(reader)
+    give_up = ("order", "--cancel", "P01", "--why", "sold out", "--by", "T2")
+    stockroom(*give_up, "--as-at", "2027-01-20", store=own)
+    with reading(own) as reader:
+        known = marks(reader)
+    for marked in (ordered, known):
+        assert since(own, marked, "2027-01-19") == []
+        (given_up,) = since(own, marked, "2027-01-20")
+        assert given_up.words.startswith("P01 cancelled 2027-01-20 by T2")
+    assert len(since(own, before, "2027-01-20")) == 2
+
+
 def test_an_entry_known_already_counts_from_its_day(own: Path, stockroom: Stockroom) -> None:
     """Entered before the plan was kept, for a day after the one it was kept for."""
     stockroom("spill", "B18", "2 g", "--why", "x", "--by", "T1", "--as-at", "2027-01-20", store=own)
@@ -154,6 +228,71 @@ def test_a_booking_a_rule_a_price_and_a_closure_are_told(
     assert "K08 groups 8 → 11 (2027-01-11 by T1)" in [each.words for each in told]
     assert {starch, "lithium chloride"} <= {each.line for each in told}
     assert "closed days added" in [each.words for each in told]
+
+
+def test_a_booking_is_of_every_day_once_it_is_changed(
+    own: Path, before: dict[str, int], stockroom: Stockroom
+) -> None:
+    """The plan has no bookings of a day gone by: who changed one is told, whatever the day."""
+    words = ("shift", "K08", "--groups", "11", "--by", "T1", "--as-at", "2027-01-20")
+    stockroom(*words, store=own)
+    told = [each.words for each in since(own, before, "2027-01-11")]
+    assert told == ["K08 groups 8 → 11 (2027-01-20 by T1)"]
+
+
+DAY = ("--as-at", "2027-01-11")
+
+
+def damage(own: Path, **damaged: str) -> None:
+    """A plan 0001 kept on the first day, with this in its row."""
+    connection = sqlite3.connect(own, isolation_level=None)
+    connection.execute(
+        "INSERT INTO printed_plan (number, as_at, kept_at, by, cautious, digest, usual, marks,"
+        " decisions) VALUES ('0001', '2027-01-04', '', 'T1', 0, '', :usual, :marks, :decisions)",
+        {"usual": "{}", "marks": "{}", "decisions": "{}"} | damaged,
+    )
+    connection.close()
+
+
+@pytest.mark.parametrize(
+    "damaged",
+    [
+        {"decisions": "{"},
+        {"decisions": "[]"},
+        {"usual": "{"},
+        {"usual": "[]"},
+        {"usual": '{"starch 0.5 % w/v": 5}'},
+        {"usual": '{"starch 0.5 % w/v": ["soon"]}'},
+        {"marks": "nothing"},
+        {"marks": '{"entry": []}'},
+    ],
+    ids=str,
+)
+def test_a_kept_plan_that_cannot_be_read_stops_no_plan(
+    own: Path, stockroom: Stockroom, damaged: dict[str, str]
+) -> None:
+    before = stockroom("plan", *DAY, "--json", store=own).json
+    damage(own, **damaged)
+    shown = stockroom("plan", *DAY, "--json", store=own)
+    assert (shown.code, shown.err) == (0, "")
+    assert shown.json == before | {"kept_unread": "0001"}
+    refused = stockroom("changed", *DAY, store=own)
+    assert (refused.code, "Plan 0001" in refused.err) == (1, True)
+    assert "cannot be read" in refused.err
+
+
+def test_each_sheet_says_that_it_cannot_and_one_kept_anew_ends_it(
+    own: Path, stockroom: Stockroom
+) -> None:
+    damage(own, usual="{")
+    sheets: list[list[str]] = [["plan"], ["fresh"], ["buying"], ["plan", "--to", "2027-01-29"]]
+    for words in sheets:
+        shown = stockroom(*words, *DAY, store=own)
+        assert (shown.code, shown.err) == (0, "")
+        assert shown.said.count("plan 0001, kept last, cannot be read") == 1
+    assert stockroom("usage", *DAY, store=own).code == 0
+    assert "Plan 0002, kept" in stockroom("plan", "--keep", "--by", "T1", *DAY, store=own).out
+    assert "cannot be read" not in stockroom("plan", *DAY, store=own).said
 
 
 def test_a_kept_plan_that_cannot_be_read_is_said_to_be(

@@ -30,6 +30,12 @@ class Waiting:
     amount: int
 
 
+def together(parts: Iterable[Waiting]) -> Waiting:
+    """All that one need waits for, by the day the first of it is wanted."""
+    row = sorted(parts, key=lambda waiting: waiting.take.start)
+    return Waiting(row[0].take, sum(waiting.amount for waiting in row))
+
+
 @dataclass(slots=True)
 class Course:
     """How a line's stock runs through the term (micro-units).
@@ -51,6 +57,15 @@ class Course:
     falls_below: date | None = None
     left_below: int = 0
     runs_out: date | None = None
+
+    @property
+    def late_for(self) -> dict[str, list[tuple[str, Waiting]]]:
+        """By the need, the orders placed that come too late for it, each with its part."""
+        row: dict[str, list[tuple[str, Waiting]]] = {}
+        for number, late in self.too_late_for.items():
+            for waiting in late:
+                row.setdefault(waiting.take.need.ref, []).append((number, waiting))
+        return row
 
     @property
     def trigger(self) -> Taken | None:
@@ -149,8 +164,16 @@ class _Running:
 def soonest_arrival(facts: Facts, line: Line) -> date:
     """The open day an order placed today would come, at the shortest lead time known."""
     leads = [pack.lead for pack in line.packs if pack.lead is not None]
-    lead = min(leads, default=facts.house.default_lead)
-    return facts.calendar.after(facts.as_at, lead + line.ask_days)
+    return arrives_on(facts, line, facts.as_at, min(leads, default=None))
+
+
+def arrives_on(facts: Facts, line: Line, ordered: date, lead: int | None) -> date:
+    """The open day something comes when leave is asked for, or it is ordered, on a day.
+
+    `lead` is that of its pack in open days; None takes the house's.
+    """
+    days = facts.house.default_lead if lead is None else lead
+    return facts.calendar.after(ordered, days + line.ask_days)
 
 
 def in_hand_day(facts: Facts, take: Taken) -> date:

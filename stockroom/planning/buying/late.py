@@ -10,7 +10,8 @@ from collections.abc import Iterator, Sequence
 from datetime import date
 
 from stockroom.planning.amounts import say
-from stockroom.planning.buying.course import Course, Waiting, soonest_arrival
+from stockroom.planning.buying.course import Course, Waiting, soonest_arrival, together
+from stockroom.planning.buying.on_way import receipts
 from stockroom.planning.choosing.shelf import Shelf
 from stockroom.planning.decisions import Instead
 from stockroom.planning.explode import Need
@@ -26,8 +27,17 @@ def ways_round(facts: Facts, course: Course, shelf: Shelf, arrives: date) -> Ite
     missed = [waiting for waiting in course.waiting if waiting.take.start < arrives]
     if not missed:
         yield _in_time(facts, course, arrives)
+    by_need: dict[str, list[Waiting]] = {}
     for waiting in missed:
-        yield from _for_one(facts, course.line, shelf, waiting, arrives)
+        by_need.setdefault(waiting.take.need.ref, []).append(waiting)
+    for ref, parts in by_need.items():
+        # a part on its way comes too late as well: the class is helped with all of it or not
+        placed = course.late_for.get(ref, [])
+        whole = together([*parts, *(part for _, part in placed)])
+        numbers = {number for number, _ in placed}
+        days = [one.on for one in receipts(facts).get(course.line.key, ()) if one.number in numbers]
+        there = max([arrives, *days])
+        yield from _for_one(facts, course.line, shelf, whole, there, placed=bool(placed))
 
 
 def ways_round_waiting(
@@ -35,7 +45,7 @@ def ways_round_waiting(
 ) -> Iterator[Instead]:
     """The same for those who wait for an order that was placed, and comes too late for them."""
     for waiting in late:
-        yield from _for_one(facts, line, shelf, waiting, arrives)
+        yield from _for_one(facts, line, shelf, waiting, arrives, placed=True)
 
 
 def _in_time(facts: Facts, course: Course, arrives: date) -> Instead:
@@ -51,14 +61,16 @@ def _in_time(facts: Facts, course: Course, arrives: date) -> Instead:
 
 
 def _for_one(
-    facts: Facts, line: Line, shelf: Shelf, waiting: Waiting, arrives: date
+    facts: Facts, line: Line, shelf: Shelf, waiting: Waiting, arrives: date, *, placed: bool = False
 ) -> Iterator[Instead]:
     need, number = waiting.take.need, waiting.take.need.booking.number
     # what should have been in hand yesterday is looked for today
     by = max(facts.as_at, facts.calendar.on_or_before(waiting.take.start))
     for swap in need.recipe.swaps:
         if swap.line in (need.line.key, line.key):
-            yield Instead("swap", by, _swapped(facts, shelf, waiting, swap, line, by), number)
+            much = _enough(facts, waiting, swap, line)
+            words = _swapped(facts, shelf, swap, by, placed=placed)
+            yield Instead("swap", by, f"take {much}{swap.instead} for {number}{words}", number)
     amount = say(waiting.amount, line.kind)
     yield Instead("borrow", by, f"borrow {amount} of {line.key} by {by} for {number}", number)
     told = max(facts.as_at, facts.calendar.before(need.on, 1))
@@ -70,15 +82,19 @@ def _for_one(
         yield Instead("another day", day, moved, number)
 
 
-def _swapped(facts: Facts, shelf: Shelf, waiting: Waiting, swap: Swap, line: Line, by: date) -> str:
+def _enough(facts: Facts, waiting: Waiting, swap: Swap, line: Line) -> str:
+    """How much of what is swapped in will do, where the recipe gives a factor."""
     other = facts.lines.get(swap.instead)
-    number = waiting.take.need.booking.number
-    much = ""
     # the factor is of masses: it says nothing of how much of a solution
     if swap.factor and other is not None and line.form is Form.SOLID is other.form:
-        much = f"{say(round(waiting.amount * swap.factor), line.kind)} of "
-    noted = f" ({swap.note})" if swap.note else ""
-    words = f"take {much}{swap.instead} for {number}{noted}"
+        return f"{say(round(waiting.amount * swap.factor), line.kind)} of "
+    return ""
+
+
+def _swapped(facts: Facts, shelf: Shelf, swap: Swap, by: date, *, placed: bool) -> str:
+    """Whether what is swapped in is here, comes, or must be got; `placed` beside an order sent."""
+    other = facts.lines.get(swap.instead)
+    words = f" ({swap.note})" if swap.note else ""
     if other is None:
         return f"{words}: allowed, and no line of the stock"
     held = sum(
@@ -88,7 +104,14 @@ def _swapped(facts: Facts, shelf: Shelf, waiting: Waiting, swap: Swap, line: Lin
     )
     if held > 0:
         return f"{words}: {say(held, other.kind)} here, wanted by {by}"
+    coming = receipts(facts).get(other.key, [])
+    if coming:
+        borrowed = f", so borrow it by {by}" if coming[0].on > by else ""
+        return f"{words}: none here{borrowed}; {coming[0].number} comes {coming[0].on}"
     comes = soonest_arrival(facts, other)
+    # beside an order that was sent off, "ordered today" would be read as of that order
+    if placed and other.form is not Form.SUNDRY and comes > by:
+        return f"{words}: none here, so borrow it by {by}"
     if other.form is not Form.SUNDRY and comes > by:
         return f"{words}: none here, so borrow it by {by}; ordered today it comes {comes}"
     return f"{words}: none here, get it by {by}"

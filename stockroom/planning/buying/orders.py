@@ -15,7 +15,14 @@ from dataclasses import replace
 
 from stockroom.keeping.verdict import USABLE
 from stockroom.planning.amounts import say
-from stockroom.planning.buying.course import Course, order_by_day, soonest_arrival
+from stockroom.planning.buying.course import (
+    Course,
+    Waiting,
+    arrives_on,
+    order_by_day,
+    soonest_arrival,
+    together,
+)
 from stockroom.planning.buying.late import ways_round, ways_round_waiting
 from stockroom.planning.buying.money import by_department, share_out
 from stockroom.planning.buying.on_way import on_its_way
@@ -51,19 +58,33 @@ def orders(facts: Facts, runs: Iterable[Course], shelf: Shelf) -> list[Order]:
 
 
 def coming(facts: Facts, runs: Iterable[Course], shelf: Shelf) -> list[Coming]:
-    """What is on its way, with the bookings each order serves, the soonest first."""
+    """What is on its way, with the bookings each order serves, the soonest first.
+
+    The ways round for a need stand with the last order it waits for, and only where nothing
+    more must be ordered for it: they then stand with that order of the plan.
+    """
     by_line = {course.line.key: course for course in runs}
-    row = []
-    for one in on_its_way(facts):
-        course = by_line.get(one.line)
-        if course is None:
-            row.append(one)
-            continue
-        served = tuple(course.on_way.get(one.number, ()))
-        late = course.too_late_for.get(one.number, [])
-        ways = tuple(ways_round_waiting(facts, course.line, shelf, late, one.counts))
-        row.append(replace(one, bookings=served, instead=ways))
-    return row
+    row = on_its_way(facts)
+    last = {one.number: place for place, one in enumerate(row)}
+    told: dict[str, list[Waiting]] = {}
+    for course in by_line.values():
+        still = {waiting.take.need.ref for waiting in course.waiting}
+        for ref, late in course.late_for.items():
+            if ref not in still:
+                number = max((number for number, _ in late), key=last.__getitem__)
+                told.setdefault(number, []).append(together(part for _, part in late))
+    return [
+        _served(facts, one, by_line[one.line], shelf, told) if one.line in by_line else one
+        for one in row
+    ]
+
+
+def _served(
+    facts: Facts, one: Coming, course: Course, shelf: Shelf, told: dict[str, list[Waiting]]
+) -> Coming:
+    ways = ways_round_waiting(facts, course.line, shelf, told.get(one.number, ()), one.counts)
+    served = tuple(course.on_way.get(one.number, ()))
+    return replace(one, bookings=served, instead=tuple(ways))
 
 
 def _order(facts: Facts, course: Course, shelf: Shelf, rate: Rate | None) -> Order:
@@ -76,12 +97,13 @@ def _order(facts: Facts, course: Course, shelf: Shelf, rate: Rate | None) -> Ord
     soonest = soonest_arrival(facts, line)
     used = most_used(facts, wanted, rate, soonest, keeps_unopened(facts, line, soonest))
     choice = choose(packs, wanted, used)
-    lead = choice.lead(facts.house.default_lead) + line.ask_days
+    comes_after = choice.lead(facts.house.default_lead)
+    lead = comes_after + line.ask_days
     # a later need may have to be started sooner than the first
     takes = (trigger, *(waiting.take for waiting in course.waiting))
     order_by = min(order_by_day(facts, take, lead) for take in takes)
     # as if ordered on the last day that will do: whoever orders sooner can only gain
-    arrives = calendar.after(max(facts.as_at, order_by), lead)
+    arrives = arrives_on(facts, line, max(facts.as_at, order_by), comes_after)
     late = calendar.between(order_by, facts.as_at)
     keeps = keeps_unopened(facts, line, arrives)
     queried = keeps is not None and 2 * used_by(facts, course, rate, keeps) < choice.size
@@ -102,6 +124,7 @@ def _order(facts: Facts, course: Course, shelf: Shelf, rate: Rate | None) -> Ord
         kind=line.kind,
         supplier=" + ".join(dict.fromkeys(p.supplier for p, _ in choice.packs if p.supplier)),
         mixture=tuple((pack.text, count, pack.pence) for pack, count in choice.packs),
+        sold_as=tuple(pack for pack, _ in choice.packs),
         falls_below=course.falls_below,
         runs_out=course.runs_out,
         ask_first=line.ask_first,
@@ -121,11 +144,7 @@ def _level(line: Line) -> int:
 
 def _in_time(facts: Facts, line: Line, course: Course) -> tuple[Pack, ...]:
     """The packs that come before the first need that can still wait for one; all, if none can."""
-    usual, after = facts.house.default_lead, facts.calendar.after
-    leads = {
-        p: after(facts.as_at, (usual if p.lead is None else p.lead) + line.ask_days)
-        for p in line.packs
-    }
+    leads = {pack: arrives_on(facts, line, facts.as_at, pack.lead) for pack in line.packs}
     soonest = min(leads.values(), default=facts.as_at)
     starts = [w.take.start for w in course.waiting if w.take.start >= soonest]
     if not starts:
@@ -158,7 +177,7 @@ def _about(
     """What else to know of it: lateness, leave, what is on its way, and how long it lasts."""
     line, calendar = course.line, facts.calendar
     if order.late:
-        comes = calendar.after(facts.as_at, choice.lead(facts.house.default_lead) + line.ask_days)
+        comes = arrives_on(facts, line, facts.as_at, choice.lead(facts.house.default_lead))
         yield f"late by {order.late} open days; ordered today it comes {comes}"
     if line.ask_first or line.ask_days:
         days = "1 open day" if line.ask_days == 1 else f"{line.ask_days} open days"

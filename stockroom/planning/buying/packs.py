@@ -208,6 +208,7 @@ def years(span: timedelta) -> str:
     if span >= 10 * YEAR:
         return f"{span.days // 365} years"
     if span >= YEAR:
-        return f"{span.days / 365:.2g} years".replace("1 years", "1 year")
+        figure = f"{span.days / 365:.2g}"
+        return "1 year" if figure == "1" else f"{figure} years"
     months = max(1, span.days * 12 // 365)
     return "1 month" if months == 1 else f"{months} months"

@@ -28,7 +28,11 @@ from stockroom.planning.facts import Firmness
 
 Value = TypeVar("Value", KeptBooking, KeptCheck, KeptMake, KeptNeed, KeptOrder, KeptSource)
 
+UNREADABLE = (ValueError, TypeError, KeyError, AttributeError, RecursionError)
+"""What `read` raises for a text that is no kept plan."""
+
 _DAYS = frozenset("as_at start end on ready finish_on need_by order_by best by".split())
+_PLAIN: dict[str, type] = {"int": int, "str": str, "bool": bool}
 _WORDS: dict[str, type[StrEnum]] = {"kind": Kind, "outcome": Outcome, "firmness": Firmness}
 
 
@@ -38,7 +42,7 @@ def written(kept: KeptPlan) -> str:
 
 
 def read(text: str) -> KeptPlan:
-    """The plan that was written so. Raises ValueError, TypeError or KeyError for another text."""
+    """The plan that was written so. Raises: one of `UNREADABLE` for another text."""
     data = json.loads(text)
     return KeptPlan(
         as_at=date.fromisoformat(data["as_at"]),
@@ -86,14 +90,17 @@ def _plain(value: Any) -> Any:
 
 
 def _several(kind: type[Value], rows: Iterable[dict[str, Any]]) -> tuple[Value, ...]:
-    known = [each.name for each in fields(kind)]
+    known = {each.name: _PLAIN.get(str(each.type)) for each in fields(kind)}
     return tuple(
-        kind(**{name: _value(kind, name, row[name]) for name in known if name in row})
+        kind(**{name: _value(name, of, row[name]) for name, of in known.items() if name in row})
         for row in rows
     )
 
 
-def _value(kind: type[Value], name: str, plain: Any) -> Any:
+def _value(name: str, of: type | None, plain: Any) -> Any:
+    # an amount that is a word would be found out only where two are compared
+    if of is not None and type(plain) is not of:
+        raise TypeError(f"{name} {plain!r} is no {of.__name__}")
     # of an order, "by" would be a day; of nothing here is it initials
     if name in _DAYS:
         return date.fromisoformat(plain) if plain else None

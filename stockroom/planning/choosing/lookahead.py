@@ -8,10 +8,10 @@ give the same plan everywhere.
 
 from __future__ import annotations
 
-import re
-from collections.abc import Container, Iterable, Iterator
-from itertools import combinations, islice
+from collections.abc import Iterable, Iterator
+from itertools import islice
 
+from stockroom.planning.choosing.said import forget
 from stockroom.planning.choosing.serve import Serving, Shares
 from stockroom.planning.choosing.shelf import Shelf
 from stockroom.planning.facts import Line
@@ -26,8 +26,6 @@ TRIES_A_LINE = 2_000
 """The same for all wants of a line together."""
 LONGEST_CHAIN = 4
 CHAIN_TRIES = 100
-_MIXED = 3
-"""Bottles put together for one want, where every way is tried."""
 
 
 class Lookahead:
@@ -229,7 +227,9 @@ class Lookahead:
                     bottle.number, want.use_day, want.purpose, judge, want.use_day
                 )
             ]
-        return [number for number in self._will_do[key] if number not in self._shut]
+        kept, ref = self.serving.kept, want.ref
+        row = [number for number in self._will_do[key] if number not in self._shut]
+        return [number for number in row if (ref, number) not in kept] if kept else row
 
     def ways(self, want: Want, *, every: bool = True) -> Iterator[Shares]:
         """Ways to serve a want from what is left: from one bottle first, then several.
@@ -246,7 +246,7 @@ class Lookahead:
         if len(in_turn) > 1:
             yield in_turn
         if every:
-            yield from self._together(want, fit)
+            yield from self.serving.mixed(want, self.line, fit, fit[: FEW // 2])
 
     def _fit(self, want: Want, number: str) -> bool:
         # it would do unopened, and what does not age from its opening is none the worse for it
@@ -261,22 +261,6 @@ class Lookahead:
             close = enough and self.serving.too_close(want, number, amount)
             if enough and not close and self._fit(want, number):
                 yield [(number, amount)]
-
-    def _together(self, want: Want, fit: list[str]) -> Iterator[Shares]:
-        """Some emptied and the rest from one more, as `Serving.together` does it in one way."""
-        for several in range(1, _MIXED):
-            for emptied in combinations(fit[: FEW // 2], several):
-                if not all(self.serving.alike(want, self.line, emptied[0], n) for n in emptied):
-                    continue
-                given = [(number, self.shelf.left[number]) for number in emptied]
-                missing = self.serving.amount_of(want, self.line, emptied[0])
-                missing -= sum(amount for _, amount in given)
-                for last in fit if missing > 0 else ():
-                    if last in emptied or missing > self.shelf.left[last]:
-                        continue
-                    alike = self.serving.alike(want, self.line, emptied[0], last)
-                    if alike and not self.serving.too_close(want, last, missing):
-                        yield [*given, (last, missing)]
 
     # -- before and after ----------------------------------------------------------------
 
@@ -307,29 +291,3 @@ class Lookahead:
     def _note_moved(self) -> None:
         for want, had in self._before.values():
             self.moved.setdefault(id(want), (want, had))
-
-    def explain(self) -> None:
-        """Say of whoever was moved what became of the bottle it would have had in its turn."""
-        for want, had in self.moved.values():
-            now = {promise.bottle for promise in want.promises}
-            forget(want, now)
-            for number, _ in had:
-                others = [w for k, w in self.serving.holders[number].items() if k != id(want)]
-                if number in now:
-                    continue
-                last = max(others, key=lambda w: w.need.rank, default=None)
-                why = (
-                    f"kept for {last.ref}, which nothing else will serve" if last
-                    else f"not opened: {', '.join(sorted(now))} will do"
-                )  # fmt: skip
-                want.passed_over.append((number, why))
-
-
-def forget(want: Want, numbers: Container[str]) -> None:
-    """Take back what was said against bottles that are used after all."""
-    want.passed_over = [said for said in want.passed_over if said[0] not in numbers]
-    close = re.compile(r" in (\S+): too close to call")
-    want.reasons = [
-        words for words in want.reasons
-        if not (found := close.search(words)) or found[1] not in numbers
-    ]  # fmt: skip

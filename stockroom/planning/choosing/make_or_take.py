@@ -15,10 +15,11 @@ from datetime import date
 
 from stockroom.keeping.rules import Purpose
 from stockroom.lots.objective import PENCE_A_MINUTE
-from stockroom.planning.amounts import UL_PER_DM3, solute_in, take_for
-from stockroom.planning.choosing.lookahead import Lookahead, forget
+from stockroom.planning.amounts import price
+from stockroom.planning.choosing.lookahead import Lookahead
+from stockroom.planning.choosing.said import forget
 from stockroom.planning.choosing.serve import Shares
-from stockroom.planning.facts import Facts, Form, Ingredient, Line
+from stockroom.planning.facts import Facts
 from stockroom.planning.making_times import Times
 from stockroom.planning.wants import Settled, Want
 
@@ -64,7 +65,7 @@ class MakeOrTake:
         self.minutes = method.minutes + method.finish_minutes
         sizes = (self.line.largest_batch, facts.house.largest_vessel)
         self.most = min((size for size in sizes if size), default=None)
-        self.pence = _pence(facts, self.line)
+        self.pence = price(facts, self.line)
         self.windows: dict[int, Window] = {}
 
     def settle(self, asked: list[Want]) -> bool:
@@ -213,22 +214,3 @@ class MakeOrTake:
                 want.passed_over.append(
                     (number, f"kept for {last.ref}, {why}" if last else "kept for others")
                 )
-
-
-def _pence(facts: Facts, line: Line) -> float:
-    """What a micro-unit of a line costs by the cheapest pack it comes from; 0 if unknown."""
-    method = facts.methods.get(line.key)
-    if method is None:
-        return min((pack.pence / pack.size for pack in line.packs), default=0.0)
-    return sum(_share(facts, line, ingredient) for ingredient in method.ingredients)
-
-
-def _share(facts: Facts, line: Line, ingredient: Ingredient) -> float:
-    source = facts.lines[ingredient.lines[0]]
-    if ingredient.per_dm3 is not None:
-        return ingredient.per_dm3 / UL_PER_DM3 * _pence(facts, source)
-    weighed = source.form is Form.SOLID and source.solute_per_gram
-    if line.strength is None or not (weighed or source.strength):
-        return 0.0
-    amount = take_for(source, None, solute_in(line, UL_PER_DM3))
-    return amount / UL_PER_DM3 * _pence(facts, source)

@@ -6,12 +6,13 @@ them. Whoever finds nothing in its turn is found room by `lookahead.py`.
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Mapping
 from datetime import date
+from itertools import combinations
 
 from stockroom.planning.amounts import say, take_for
 from stockroom.planning.choosing.fitness import judge_for_dilution, judge_for_need
-from stockroom.planning.choosing.shelf import Judge, Promise, Shelf, solute_held
+from stockroom.planning.choosing.shelf import Judge, Promise, Shelf, same_house, solute_held
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
 from stockroom.planning.wants import Settled, Want
 from stockroom.safety.bars import barred_by
@@ -19,6 +20,9 @@ from stockroom.safety.bars import barred_by
 # a fifth of what an exact line allows, so that putting together never decides a need
 _SAME_STRENGTH = 1e-3
 """Bottles whose expected strengths agree this closely (as a fraction) may be put together."""
+
+_MIXED = 3
+"""Bottles put together for one want, where every way is tried."""
 
 Shares = list[tuple[str, int]]
 """So much of each bottle."""
@@ -28,16 +32,22 @@ class Serving:
     """Promises bottles of a shelf to wants. One class one strength: one bottle if one will do.
 
     `held` has the wants served from each line so far, `holders` those on each bottle.
+    `kept` names for whom a bottle is kept from a need (`second_thoughts.py`).
     """
 
-    def __init__(self, facts: Facts, shelf: Shelf) -> None:
+    def __init__(self, facts: Facts, shelf: Shelf, like: Serving | None = None) -> None:
         self.facts = facts
         self.shelf = shelf
         self.held: dict[str, dict[int, Want]] = {}
         self.holders: dict[str, dict[int, Want]] = {}
         self.to_last_drop: set[int] = set()
+        self.kept: Mapping[tuple[str, str], str] = {}
         self._judges: dict[tuple[object, ...], Judge] = {}
         self._strengths: dict[tuple[str, date], float | None] = {}
+        if like is not None and same_house(facts, like.facts):
+            new = shelf.changed_since(like.shelf)
+            self._judges = like._judges
+            self._strengths = {k: v for k, v in like._strengths.items() if k[0] not in new}
 
     def start_again(self) -> None:
         """Forget who was served; what was learnt of the bottles is kept."""
@@ -128,6 +138,9 @@ class Serving:
 
     def unfit(self, want: Want, line: Line, bottle: Bottle) -> str:
         """Why a bottle will not do for a want, as promised so far; "" if it will."""
+        kept_for = self.kept.get((want.ref, bottle.number))
+        if kept_for:
+            return f"kept for {kept_for}, which would be short without it"
         return self.barred(want, bottle) or self.shelf.unfit(
             bottle.number, want.use_day, want.purpose, self.judge(want, line)
         )
@@ -195,6 +208,25 @@ class Serving:
         if missing or self.too_close(want, *shares[-1]):
             return []
         return shares
+
+    def mixed(
+        self, want: Want, line: Line, fit: list[str], to_empty: list[str]
+    ) -> Iterator[Shares]:
+        """Some emptied and the rest from one more, as `together` does it in one way."""
+        left = self.shelf.left
+        for several in range(1, _MIXED):
+            for emptied in combinations(to_empty, several):
+                if not all(self.alike(want, line, emptied[0], n) for n in emptied[1:]):
+                    continue
+                given = [(number, left[number]) for number in emptied]
+                missing = self.amount_of(want, line, emptied[0])
+                missing -= sum(amount for _, amount in given)
+                for last in fit if missing > 0 else ():
+                    if last in emptied or missing > left[last]:
+                        continue
+                    alike = self.alike(want, line, emptied[0], last)
+                    if alike and not self.too_close(want, last, missing):
+                        yield [*given, (last, missing)]
 
     def alike(self, want: Want, line: Line, first: str, number: str) -> bool:
         """True when a class may be given some of each of two bottles."""

@@ -30,27 +30,45 @@ TOO_CLOSE_PART = 0.03
 class Shelf:
     """Balances of every bottle less what is promised. Deterministic: ties by number."""
 
-    def __init__(self, facts: Facts) -> None:
+    def __init__(self, facts: Facts, like: Shelf | None = None) -> None:
         self.facts = facts
         self.left = {bottle.number: bottle.left for bottle in facts.bottles}
         self.bottle = {bottle.number: bottle for bottle in facts.bottles}
         self.promises: dict[str, Promises] = defaultdict(Promises)
         self._by_line: dict[str, list[Bottle]] = defaultdict(list)
         self._judged: dict[tuple[str, date, Purpose, date | None], Verdict] = {}
+        self._spells: dict[tuple[str, Purpose, date | None, int], Verdict] = {}
+        self._until: dict[tuple[str, Purpose, date | None], date] = {}
         self._limits: dict[tuple[str, Purpose, date | None], tuple[Record, list[Limit]]] = {}
         self._strengths: dict[tuple[str, date | None, date | None], Strengths] = {}
         self._orders: dict[tuple[str, Purpose, date | None], list[Bottle]] = {}
         self._in_use: dict[str, bool] = {}
         self._sealed: dict[str, bool] = {}
+        self._ages: dict[str, bool] = {}
         self._unfit: dict[tuple[str, date, Judge, Purpose, date | None], str] = {}
-        self._opening_matters = {
-            key
-            for key, line in facts.lines.items()
-            if any(rule.origin is Origin.OPENED for rule in line.rules)
-        }
+        rules = [(key, rule) for key, line in facts.lines.items() for rule in line.rules]
+        self._opening_matters = {key for key, rule in rules if rule.origin is Origin.OPENED}
+        self._fading = {key for key, rule in rules if rule.kind is RuleKind.FADES}
         # sorted once here, and every tie further on is broken by it
         for bottle in sorted(facts.bottles, key=lambda b: natural(b.number)):
             self._by_line[bottle.line].append(bottle)
+        if like is not None and same_house(facts, like.facts):
+            self._learn_from(like)
+
+    def _learn_from(self, like: Shelf) -> None:
+        """Take over what was worked out of every bottle that is still the same."""
+        new = self.changed_since(like)
+        lines = {shelf.bottle[n].line for shelf in (self, like) for n in new if n in shelf.bottle}
+        self._judged = {k: v for k, v in like._judged.items() if k[0] not in new}
+        self._limits = {k: v for k, v in like._limits.items() if k[0] not in new}
+        self._strengths = {k: v for k, v in like._strengths.items() if k[0] not in new}
+        self._unfit = {k: v for k, v in like._unfit.items() if k[0] not in new}
+        self._orders = {k: v for k, v in like._orders.items() if k[0] not in lines}
+
+    def changed_since(self, like: Shelf) -> set[str]:
+        """The numbers of bottles that are not the very same on another shelf."""
+        numbers = self.bottle.keys() | like.bottle.keys()
+        return {n for n in numbers if self.bottle.get(n) is not like.bottle.get(n)}
 
     def of_line(self, key: str) -> list[Bottle]:
         """Every bottle of a line, by number."""
@@ -86,10 +104,19 @@ class Shelf:
         opened = self._opening_that_counts(number, opened)
         key = (number, on, purpose, opened)
         if key not in self._judged:
-            record, limits = self._limits_of(number, purpose, opened)
-            strengths = self._strengths_of(number, record, on)
-            self._judged[key] = judge(record, limits, strengths, on)
+            self._judged[key] = self._judge(number, on, purpose, opened)
         return self._judged[key]
+
+    def _judge(self, number: str, on: date, purpose: Purpose, opened: date | None) -> Verdict:
+        record, limits = self._limits_of(number, purpose, opened)
+        strengths = self._strengths_of(number, record, on)
+        if self.changes_daily(number):
+            return judge(record, limits, strengths, on)
+        # what stays as it is has one verdict on all days between two of its limits
+        key = (number, purpose, opened, sum(limit.until < on for limit in limits))
+        if key not in self._spells:
+            self._spells[key] = judge(record, limits, strengths, on)
+        return self._spells[key]
 
     def _opening_that_counts(self, number: str, opened: date | None) -> date | None:
         # most lines age alike opened or not: one answer then serves every day
@@ -111,19 +138,25 @@ class Shelf:
         return self._limits[key]
 
     def _strengths_of(self, number: str, record: Record, on: date) -> Strengths:
-        line = self._line(number)
-        fades = any(rule.kind is RuleKind.FADES for rule in line.rules)
-        # a lower limit falls with the days, even where no rule of fading does
-        daily = fades or record.caution is not None
-        key = (number, on if daily else None, record.opened)
+        key = (number, on if self.changes_daily(number) else None, record.opened)
         if key not in self._strengths:
-            self._strengths[key] = strengths_on(record, line.rules, on)
+            self._strengths[key] = strengths_on(record, self._line(number).rules, on)
         return self._strengths[key]
+
+    def changes_daily(self, number: str) -> bool:
+        """True for a bottle whose strength is another on every day."""
+        bottle = self.bottle[number]
+        # a lower limit falls with the days, even where no rule of fading does
+        return bottle.line in self._fading or bottle.record.caution is not None
 
     def usable_until(self, number: str, purpose: Purpose, opened: date | None) -> date:
         """The last day before any limit that is not a recheck; far off if there is none."""
-        _, limits = self._limits_of(number, purpose, self._opening_that_counts(number, opened))
-        return min((x.until for x in limits if not x.known_until), default=date.max)
+        key = (number, purpose, self._opening_that_counts(number, opened))
+        if key not in self._until:
+            _, limits = self._limits_of(*key)
+            hard = (limit.until for limit in limits if not limit.known_until)
+            self._until[key] = min(hard, default=date.max)
+        return self._until[key]
 
     def verdict_planned(self, number: str, on: date, purpose: Purpose = Purpose.ANY) -> Verdict:
         """Judge a bottle on a day, opened as the plan so far opens it."""
@@ -160,7 +193,10 @@ class Shelf:
 
     def ages_from_opening(self, number: str) -> bool:
         """True for a bottle still sealed of a line whose life or strength counts from opening."""
-        return self.is_sealed(number) and self._line(number).key in self._opening_matters
+        if number not in self._ages:
+            matters = self.bottle[number].line in self._opening_matters
+            self._ages[number] = matters and self.is_sealed(number)
+        return self._ages[number]
 
     def unfit_opened(
         self, number: str, on: date, purpose: Purpose, judge: Judge, opened: date
@@ -242,6 +278,12 @@ class Shelf:
             return recent, until, self.is_sealed(bottle.number), natural(bottle.number)
 
         return sorted(self.of_line(key), key=rank)
+
+
+def same_house(facts: Facts, other: Facts) -> bool:
+    """True when only what stands on the shelf may differ: the same lines and methods, one day."""
+    same = facts.lines is other.lines and facts.methods is other.methods
+    return same and facts.calendar is other.calendar and facts.as_at == other.as_at
 
 
 def _last_found(bottle: Bottle) -> int:

@@ -61,6 +61,7 @@ class WhileGood:
         self._claimed: dict[str, int] = {}
         self._last: dict[tuple[str, Judge, date, date], date | None] = {}
         self._judges: dict[tuple[str, str, int | None], Judge] = {}
+        self._suits: dict[tuple[str, Judge], bool] = {}
 
     def sooner(
         self, line: Line, method: Method, dated: list[tuple[Want, Times]]
@@ -95,7 +96,7 @@ class WhileGood:
         # where no rule limits its life nobody has said that it keeps for weeks
         if good_until(line, day) is None:
             return None, 0.0
-        start = self._start(day, times.deadline, method)
+        start = self.start(day, times.deadline, method)
         if day < early or start is None:
             return None, 0.0
         keys = list(dict.fromkeys(ingredient.lines[0] for ingredient in waits))
@@ -103,7 +104,8 @@ class WhileGood:
         saves = f"saves {verb} {' and '.join(keys)}"
         return Sooner(start, tuple(waits), saves), sum(self._worth(key) for key in keys)
 
-    def _start(self, day: date, deadline: Moment, method: Method) -> Moment | None:
+    def start(self, day: date, deadline: Moment, method: Method) -> Moment | None:
+        """The latest start on a day that is ready in time; None when the day will not do."""
         calendar = self.facts.calendar
         late = max(calendar.open_from, calendar.open_to - method.minutes)
         for minute in (late, calendar.open_from):
@@ -132,7 +134,7 @@ class WhileGood:
                 continue
             judge = self._judge(source, line, ingredient)
             for bottle in self.shelf.of_line(key):
-                day = self._good_until(bottle, judge, early, late)
+                day = self.bottle_until(bottle, judge, early, late)
                 if day is None or (best[0] and day <= best[1]):
                     continue
                 wanted = self._wanted(source, line, ingredient, volume, bottle.number, day)
@@ -167,7 +169,7 @@ class WhileGood:
             self._judges[key] = judge_for_dilution(source, line, ingredient.per_dm3)
         return self._judges[key]
 
-    def _good_until(self, bottle: Bottle, judge: Judge, early: date, late: date) -> date | None:
+    def bottle_until(self, bottle: Bottle, judge: Judge, early: date, late: date) -> date | None:
         """The last day from `early` to `late` that a bottle would do; None if there is none."""
         key = (bottle.number, judge, early, late)
         if key not in self._last:
@@ -185,6 +187,9 @@ class WhileGood:
 
         if bottle.left <= 0 or early < self.facts.as_at:
             return None
+        ages = self.shelf.ages_from_opening(bottle.number)
+        if not ages and not self.shelf.changes_daily(bottle.number):
+            return self._good_until_one_day(bottle, judge, early, late)
         if fit(late):
             return late
         if not fit(early):
@@ -198,6 +203,23 @@ class WhileGood:
             else:
                 high = middle
         return early + timedelta(days=low)
+
+    def _good_until_one_day(
+        self, bottle: Bottle, judge: Judge, early: date, late: date
+    ) -> date | None:
+        """The same for a bottle that is as it is until its last good day: no day is tried."""
+        number, shelf = bottle.number, self.shelf
+        stands, until = shelf.ready_on(number), shelf.usable_until(number, Purpose.ANY, None)
+        last = min(late, until)
+        if last < early or not shelf.may_be_used(number, early):
+            return None
+        # where the last day is too late for it the first must do, or the days do not split in two
+        if stands and stands > (late if last == late else early):
+            return None
+        if (number, judge) not in self._suits:
+            told = shelf.verdict(number, self.facts.as_at)
+            self._suits[number, judge] = not judge(bottle, told)
+        return last if self._suits[number, judge] else None
 
     # -- whether it pays -----------------------------------------------------------------
 

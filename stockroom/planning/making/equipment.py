@@ -15,14 +15,20 @@ from stockroom.measure.amounts import PER_UNIT, Kind
 from stockroom.measure.formats import format_number
 from stockroom.planning.amounts import say
 from stockroom.planning.decisions import Order
-from stockroom.planning.facts import Balance, Facts, Form, Line
+from stockroom.planning.facts import Balance, Facts, Line
 from stockroom.planning.making.batch import Batch
+from stockroom.planning.making.weighed import grams_of
 
 _MICROGRAMS = PER_UNIT[Kind.MASS]
 _DAMP = (
     "takes up water", "draws water", "hygroscopic", "deliquescent",
     "loses water", "air turns it", "air spoils it",
 )  # fmt: skip
+
+
+def largest_vessel(facts: Facts) -> int | None:
+    """What the largest vessel holds on a day when all are in, µL; None where nothing bounds it."""
+    return max((vessel.size for vessel in facts.vessels), default=facts.house.largest_vessel)
 
 
 def largest_vessel_on(facts: Facts, day: date) -> int | None:
@@ -42,7 +48,7 @@ def equipment_notes(
     on_order = {order.line: order for order in orders}
     for batch in batches:
         yield from _too_big(facts, batch)
-        for line, grams in _weighed(batch).items():
+        for line, grams in grams_of(batch).items():
             yield from _weigh_before(facts, batch, line, grams, on_order)
 
 
@@ -54,21 +60,11 @@ def _too_big(facts: Facts, batch: Batch) -> Iterable[Finding]:
     # without one that would hold it nothing is missing that day in particular
     away = [v for v in facts.vessels if v.size >= each and not v.here(day)]
     if away:
-        gone = ", ".join(f"{v.name} is {_away(v.away, day)}" for v in away)
+        gone = ", ".join(sorted(f"{v.name} is {_away(v.away, day)}" for v in away))
         way = "no vessel is in that day"
         if largest:
             way = f"in {-(-batch.volume // largest)} of {say(largest, Kind.VOLUME)} at most"
         yield Finding(batch.id, f"{say(each, Kind.VOLUME)} on {day}, and {gone}: {way}")
-
-
-def _weighed(batch: Batch) -> dict[Line, float]:
-    """The grams of each solid weighed for one vessel of a batch."""
-    row: dict[Line, float] = {}
-    for source in batch.sources:
-        if source.line.form is Form.SOLID:
-            share = source.amount / batch.vessels / _MICROGRAMS
-            row[source.line] = row.get(source.line, 0.0) + share
-    return row
 
 
 def _weigh_before(
@@ -147,5 +143,5 @@ def _last_day_with(facts: Facts, balance: Balance, before: date) -> date | None:
 
 
 def _away(spans: tuple[tuple[date, date], ...], day: date) -> str:
-    first, last = next((a, b) for a, b in spans if a <= day <= b)
+    first, last = min((a, b) for a, b in spans if a <= day <= b)
     return f"away {first} to {last}" if first != last else f"away on {first}"

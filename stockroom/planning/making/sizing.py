@@ -11,7 +11,7 @@ from stockroom.measure.formats import format_number
 from stockroom.planning.amounts import draw_for, say
 from stockroom.planning.facts import Balance, Facts, Form, Line, Method
 from stockroom.planning.making.batches import Run
-from stockroom.planning.making.equipment import largest_vessel_on
+from stockroom.planning.making.equipment import largest_vessel, largest_vessel_on
 from stockroom.planning.wants import Want
 
 _MICROGRAMS = PER_UNIT[Kind.MASS]
@@ -26,7 +26,7 @@ class Sizing:
 
     def __init__(self, facts: Facts, line: Line, method: Method, *, exact: bool = False) -> None:
         self.facts, self.line, self.method, self.exact = facts, line, method, exact
-        sizes = (line.largest_batch, facts.house.largest_vessel)
+        sizes = (line.largest_batch, largest_vessel(facts))
         self.most = min((size for size in sizes if size), default=None)
 
     def most_on(self, day: date) -> int | None:
@@ -86,7 +86,8 @@ class Sizing:
 
     def _away(self, most: int, day: date) -> str:
         """Which larger vessels are not there that day, in brackets; "" when none is missing."""
-        larger = [v.name for v in self.facts.vessels if v.size > most and not v.here(day)]
+        away = (v for v in self.facts.vessels if v.size > most and not v.here(day))
+        larger = sorted(vessel.name for vessel in away)
         limited = self.line.largest_batch == most
         return f" ({', '.join(larger)} is away on {day})" if larger and not limited else ""
 

@@ -28,6 +28,8 @@ def faults_of_makes(laid: Walk) -> Iterator[Fault]:
             yield Fault(Broken.NAMED, make.id, f"no method for {make.line!r}")
             continue
         yield from _given(laid, make, line)
+        yield from _one_sitting(laid, make, line)
+        yield from _marked(laid, make, line)
         yield from _goes_in(laid, make, line, method)
         yield from _meets_bars(laid, make)
         for giving in laid.givings.get(make.id, []):
@@ -57,6 +59,31 @@ def _still_good(laid: Walk, make: Make, line: Line, giving: Giving) -> Iterator[
     if until is not None and until < giving.on:
         rule = Broken.NEVER_KEPT if line.never_kept else Broken.AGE
         yield Fault(rule, giving.where, f"{make.id} is good until {until}, used {giving.on}")
+
+
+def _one_sitting(laid: Walk, make: Make, line: Line) -> Iterator[Fault]:
+    """Nothing of what is never kept stands until another class."""
+    served = [giving.asked for giving in laid.givings.get(make.id, []) if giving.asked]
+    times = {(asked.booking.on, asked.booking.minute) for asked in served}
+    if line.never_kept and len(times) > 1:
+        classes = ", ".join(sorted({asked.booking.number for asked in served}))
+        words = f"mixed once for {classes}, which begin at {len(times)} times"
+        yield Fault(Broken.ONE_SITTING, make.id, words)
+
+
+def _marked(laid: Walk, make: Make, line: Line) -> Iterator[Fault]:
+    """A make marked fresh is of a line never kept, or a booking it names wants it fresh."""
+    if not make.fresh or line.never_kept:
+        return
+    # of all bookings, since a part of the plan shows a make whole and not all that it serves
+    recipes = (
+        laid.facts.recipes.get((booking.recipe, booking.version))
+        for booking in laid.facts.bookings
+        if booking.number in make.bookings
+    )
+    wanted = [one for recipe in recipes if recipe for one in recipe.requirements]
+    if not any(one.fresh and one.line == make.line for one in wanted):
+        yield Fault(Broken.MARKED, make.id, f"{line.item} marked fresh, and nobody asks for it")
 
 
 def _for_need(laid: Walk, make: Make, line: Line, method: Method, asked: Asked) -> Iterator[Fault]:

@@ -45,6 +45,8 @@ def _as_asked(answer: Answer, asked: Asked) -> Iterator[Fault]:
     if answer.line != asked.line.key or answer.booking != asked.booking:
         words = f"answers {answer.line!r} for {asked.line.key!r} on {asked.booking.on}"
         yield Fault(Broken.ASKED, answer.ref, words)
+    if answer.fresh and not asked.fresh:
+        yield Fault(Broken.MARKED, answer.ref, f"{answer.item} marked fresh, and it need not be")
 
 
 def _adds_up(answer: Answer, asked: Asked) -> Iterator[Fault]:

@@ -1,4 +1,4 @@
-"""The orders and checks of a finished plan: enough, in time, paid for, on a day that will do."""
+"""The orders and checks of a finished plan: enough, in time, on a day that will do."""
 
 from __future__ import annotations
 
@@ -12,6 +12,7 @@ from stockroom.keeping.verdict import limits_of
 from stockroom.planning.decisions import Order
 from stockroom.planning.facts import Facts, Form, Line, Placed
 from stockroom.planning.replaying.exact import said_closed
+from stockroom.planning.replaying.ordering import faults_of_order
 from stockroom.planning.replaying.rules import Broken, Fault
 from stockroom.planning.replaying.walk import ToCome, Walk
 
@@ -36,7 +37,8 @@ def faults_of_orders(laid: Walk) -> Iterator[Fault]:
         line = laid.facts.lines.get(order.line)
         size = _size(line, order) if line else 0
         supplies.setdefault(order.line, []).append(_Supply(size, order.arrives))
-        yield from _shares(order)
+        if line is not None:
+            yield from faults_of_order(laid, order, line, waiting.get(order.line, []))
     for placed in laid.facts.placed:
         if placed.outstanding and placed.line in laid.facts.lines:
             supplies.setdefault(placed.line, []).append(_on_its_way(laid.facts, placed))
@@ -85,12 +87,6 @@ def _on_its_way(facts: Facts, placed: Placed) -> _Supply:
     found = limits_of(Record(received=on, nominal=line.strength), line.rules, on)
     until = min((limit.until for limit in found if not limit.known_until), default=date.max)
     return _Supply(float(placed.outstanding), on, until)
-
-
-def _shares(order: Order) -> Iterator[Fault]:
-    shared = sum(pence for _, pence in order.shares)
-    if shared != order.pence or any(pence < 0 for _, pence in order.shares):
-        yield Fault(Broken.SHARES, order.id, f"shares of {shared}p in {order.pence}p")
 
 
 def faults_of_checks(laid: Walk) -> Iterator[Fault]:

@@ -10,6 +10,7 @@ from __future__ import annotations
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts
 from stockroom.planning.replaying.bottles import faults_of_bottles
+from stockroom.planning.replaying.equipment import faults_of_equipment
 from stockroom.planning.replaying.makes import faults_of_makes
 from stockroom.planning.replaying.needs import faults_of_needs
 from stockroom.planning.replaying.orders import faults_of_checks, faults_of_orders
@@ -31,6 +32,7 @@ def replay(facts: Facts, plan: Plan) -> tuple[Fault, ...]:
         *faults_of_needs(laid),
         *faults_of_bottles(laid),
         *faults_of_makes(laid),
+        *faults_of_equipment(laid),
         *faults_of_times(laid),
         *faults_of_orders(laid),
         *faults_of_checks(laid),

@@ -1,4 +1,4 @@
-"""The hours of a finished plan: vessels, open days, staffed hours, standing, ready in time.
+"""The hours of a finished plan: open days, staffed hours, standing, ready in time.
 
 A make carries days and no hours, so each is taken to begin as early as it can: on its
 day, at opening, once all it is made from is ready. What is too late even so is too late.
@@ -10,7 +10,7 @@ from collections.abc import Iterator
 from datetime import date, timedelta
 
 from stockroom.planning.decisions import Make
-from stockroom.planning.facts import Facts, Line, Method
+from stockroom.planning.facts import Facts, Method
 from stockroom.planning.replaying.rules import Broken, Fault
 from stockroom.planning.replaying.walk import Asked, Walk
 
@@ -21,36 +21,17 @@ _SAID = "not done by"
 
 
 def faults_of_times(laid: Walk) -> Iterator[Fault]:
-    """What is wrong with the days, hours and vessels of makes, in the order of the makes."""
+    """What is wrong with the days and hours of makes, in the order of the makes."""
     begins: dict[str, Moment] = {}
     for make in laid.plan.makes:
-        line, method = laid.facts.lines.get(make.line), laid.facts.methods.get(make.line)
-        if line is None or method is None:
+        method = laid.facts.methods.get(make.line)
+        if make.line not in laid.facts.lines or method is None:
             continue
-        yield from _vessels(laid, make, line, method)
         yield from _days(laid.facts, make, method)
         begin = _begin(laid, make.id, begins, frozenset())
         yield from _hours(laid.facts, make, method, begin)
         ready = ready_after(begin, method, laid.facts)
         yield from _ready(laid, make, method, ready)
-
-
-def _vessels(laid: Walk, make: Make, line: Line, method: Method) -> Iterator[Fault]:
-    """Every vessel is work of its own, and none is filled over its brim."""
-    house, each = laid.facts.house, method.minutes + method.finish_minutes
-    largest = min(filter(None, (line.largest_batch, house.largest_vessel)), default=0)
-    vessels = -(-make.volume // largest) if largest else 1
-    if make.minutes < vessels * each:
-        words = f"{make.volume} µL takes {vessels} vessels, and {make.minutes} min are planned"
-        yield Fault(Broken.VESSEL, make.id, words)
-    share = -(-make.volume // max(1, make.vessels))
-    able = [vessel for vessel in laid.facts.vessels if vessel.size >= share]
-    # whoever makes it is told beforehand, and how else it can be done
-    texts = [note.text for note in laid.plan.notes if note.subject == make.id]
-    said = any(able[0].name in text for text in texts) if able else True
-    if not said and not any(vessel.here(make.on) for vessel in able):
-        words = f"{share} µL on {make.on}, {able[0].name} is away, and nothing says so"
-        yield Fault(Broken.VESSEL, make.id, words)
 
 
 def _days(facts: Facts, make: Make, method: Method) -> Iterator[Fault]:

@@ -142,7 +142,7 @@ def _balance(planned: PlannedShelf, make: Make, day: date) -> list[str]:
     if not solids or not planned.facts.balances:
         return []
     here = [balance for balance in planned.facts.balances if balance.here(day)]
-    away = [balance.name for balance in planned.facts.balances if not balance.here(day)]
+    away = sorted(balance.name for balance in planned.facts.balances if not balance.here(day))
     if not here:
         return [f"no balance that day: {', '.join(away)} away"]
     finest = min(here, key=lambda one: (one.step, one.name))

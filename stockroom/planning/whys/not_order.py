@@ -2,17 +2,21 @@
 
 from __future__ import annotations
 
-from datetime import date
+from datetime import date, timedelta
 
 from stockroom.keeping.record import Record
 from stockroom.keeping.rules import Purpose
 from stockroom.keeping.verdict import USABLE, limits_of, verdict
 from stockroom.measure.amounts import Amount
-from stockroom.measure.formats import format_number
 from stockroom.planning.amounts import say
+from stockroom.planning.buying.course import arrives_on
+from stockroom.planning.buying.packs import years
 from stockroom.planning.decisions import Order
 from stockroom.planning.facts import Bottle, Line, Pack
 from stockroom.planning.whys.planned_shelf import PlannedShelf
+
+# below two years the day still says more than the month: our choice
+_TO_THE_DAY = timedelta(days=730)
 
 
 def other_amount(planned: PlannedShelf, order: Order, other: Amount) -> list[str]:
@@ -69,8 +73,9 @@ def _sold(line: Line) -> str:
 
 def _chosen(planned: PlannedShelf, order: Order) -> Pack | None:
     """The pack an order is of; None for several sizes together, or where none is entered."""
-    packs = [p for p in planned.facts.lines[order.line].packs if p.text == order.pack]
-    return next((p for p in packs if p.pence * order.packs == order.pence), next(iter(packs), None))
+    # by name alone, two suppliers' "100 g" would be taken for each other
+    sold = [pack for pack in planned.facts.lines[order.line].packs if pack in order.sold_as]
+    return sold[0] if len(order.sold_as) == 1 and sold else None
 
 
 def _wanted(planned: PlannedShelf, order: Order) -> int:
@@ -100,24 +105,21 @@ def _term_use(planned: PlannedShelf, order: Order) -> int:
 
 
 def _lasts(planned: PlannedShelf, order: Order, amount: int) -> str:
-    """How long an amount lasts at the rate of what is left of the term, and when they lapse."""
-    plan, line = planned.plan, planned.facts.lines[order.line]
-    days = (plan.end - max(plan.start, plan.as_at)).days + 1
-    use = _term_use(planned, order)
-    if use <= 0 or days <= 0 or amount <= 0:
+    """How long an amount lasts at the rate the packs were chosen by, and when they lapse."""
+    line, rate = planned.facts.lines[order.line], planned.rates.get(order.line)
+    lasts = rate.lasts(amount) if rate else None
+    if rate is None or not lasts:
         return ""
-    lasts = amount / use * days
-    rate = f"{say(use, line.kind)} in {days} days"
-    words = f"{say(amount, line.kind)} would last {_span(lasts)} at this term's rate ({rate})"
+    taken = f"{say(rate.amount, line.kind)} in {rate.days} days"
+    words = f"{say(amount, line.kind)} would last {_span(lasts)} at this term's rate ({taken})"
     until = _good_until(line, order.arrives)
-    if until and (until - order.arrives).days < lasts:
+    if until and until - order.arrives < lasts:
         words += f"; what is left on {until} goes past unused"
     return words
 
 
-def _span(days: float) -> str:
-    years = days / 365.25
-    return f"{format_number(years, 2)} years" if years >= 2 else f"{round(days)} days"
+def _span(lasts: timedelta) -> str:
+    return years(lasts) if lasts >= _TO_THE_DAY else f"{lasts.days} days"
 
 
 def _good_until(line: Line, arrives: date) -> date | None:
@@ -128,20 +130,22 @@ def _good_until(line: Line, arrives: date) -> date | None:
 
 
 def _late(planned: PlannedShelf, order: Order, pack: Pack) -> str:
-    facts = planned.facts
+    facts, line = planned.facts, planned.facts.lines[order.line]
     lead = facts.house.default_lead if pack.lead is None else pack.lead
-    comes = facts.calendar.after(facts.as_at, lead)
+    comes = arrives_on(facts, line, facts.as_at, pack.lead)
+    days = f"{lead} open days{f', {line.ask_days} more to ask first' if line.ask_days else ''}"
     late = f"too late for {order.need_by}" if comes > order.need_by else f"needed {order.need_by}"
-    return f"ordered today it comes {comes} ({lead} open days), {late}"
+    return f"ordered today it comes {comes} ({days}), {late}"
 
 
 def other_day(planned: PlannedShelf, order: Order, day: date) -> list[str]:
     """What ordering on another day would mean."""
-    facts, chosen = planned.facts, _chosen(planned, order)
-    lead = facts.house.default_lead if chosen is None or chosen.lead is None else chosen.lead
+    facts, usual = planned.facts, planned.facts.house.default_lead
+    # of several sizes it has come when the last has
+    leads = [usual if pack.lead is None else pack.lead for pack in order.sold_as]
     if day < facts.as_at:
         return [f"{order.id} on {day}: past, today is {facts.as_at}"]
-    comes = facts.calendar.after(facts.calendar.on_or_after(day), lead)
+    comes = arrives_on(facts, facts.lines[order.line], day, max(leads, default=None))
     if day > order.order_by:
         late = facts.calendar.between(order.order_by, day)
         margin = facts.house.margin_days

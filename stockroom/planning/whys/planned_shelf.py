@@ -8,6 +8,7 @@ from datetime import date
 from functools import cached_property
 
 from stockroom.keeping.rules import Purpose
+from stockroom.planning.buying.packs import Rate, rates
 from stockroom.planning.choosing.fitness import judge_for_dilution, judge_for_need
 from stockroom.planning.choosing.shelf import Judge, Promise, Shelf
 from stockroom.planning.decisions import Answer, Draw, Make, Plan
@@ -43,6 +44,11 @@ class PlannedShelf:
         last = max((answer.booking.on for answer in self.plan.needs), default=self.facts.end)
         bookings = standing(self.facts.bookings, self.facts.as_at, last)
         return {need.ref: need for need in explode(self.facts, bookings)}
+
+    @cached_property
+    def rates(self) -> dict[str, Rate]:
+        """How fast the bookings use each bought line: the rate its packs were chosen by."""
+        return rates(self.facts)
 
     @cached_property
     def claims(self) -> dict[str, list[Claim]]:

@@ -119,7 +119,11 @@ def _kept(table: str, what: str, alike: str = "id = NEW.id") -> tuple[str, ...]:
 
 TRIGGERS = (
     *_kept("placed", "An order that was placed", "id = NEW.id OR number = NEW.number"),
-    *_kept("placed_share", "Whose money an order was"),
+    *_kept(
+        "placed_share",
+        "Whose money an order was",
+        "id = NEW.id OR (placed_id = NEW.placed_id AND department_id = NEW.department_id)",
+    ),
     *_kept("placed_came", "What came of an order", "id = NEW.id OR entry_id = NEW.entry_id"),
     *_kept("placed_change", "The record of an order"),
 )
