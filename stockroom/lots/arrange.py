@@ -43,11 +43,13 @@ def arrange(problem: Problem, *, effort: int = EFFORT) -> Arrangement:
         return kept
     # a search may go astray for the sake of the usual days, and work counts before those
     anew = _arranged(_without_usual(problem), effort)
-    saves = cost_of(problem, kept).total - cost_of(problem, anew).total
+    # both by the same objective, the usual days in it
+    saves = cost_of(problem, kept).with_ties - cost_of(problem, anew).with_ties
     return anew if saves > _SAVES else kept
 
 
 _SAVES = 1e-6
+"""Minutes: less is no more than rounding."""
 
 
 def _without_usual(problem: Problem) -> Problem:
