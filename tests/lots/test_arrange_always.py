@@ -163,11 +163,16 @@ def test_nearly_always_as_cheap_as_the_proof_and_never_much_dearer(whole: bool) 
             continue
         cost = cost_of(problem, arrange(problem))
         assert cost.short <= proof.cost.short + 0.01, seed
+        dearest = max(sort.minutes + sort.finishing for sort in problem.sorts)
+        assert cost.total - proof.cost.total <= dearest + 1e-6, seed
         gaps.append(cost.total / max(proof.cost.total, 1e-9) - 1)
     assert len(gaps) >= 15
     assert sum(gap <= 1e-6 for gap in gaps) >= 0.9 * len(gaps)
     assert sum(gaps) <= 0.002 * len(gaps)
-    assert max(gaps) <= (0.02 if whole else 0.16)
+    # the aim is 2 %; split, one tiny term of these is a cheap vessel dearer, and no other may be
+    beyond = [gap for gap in gaps if gap > 0.02]
+    assert len(beyond) <= (0 if whole else 1)
+    assert max(gaps) <= 0.16
 
 
 @pytest.mark.parametrize("seed", [10, 42, 89, 107, 125, 146])
