@@ -3,10 +3,39 @@
 from __future__ import annotations
 
 import os
+import re
+from dataclasses import dataclass
 from pathlib import Path
 
 STORE_NAME = "stockroom.sqlite"
 PRACTICE_NAME = "practice.sqlite"
+
+
+@dataclass(frozen=True, slots=True)
+class Server:
+    """A store kept by a database server, by its address: postgresql+psycopg://host/name."""
+
+    url: str
+
+    def __str__(self) -> str:
+        """The address as it may be shown: a password in it is left out."""
+        return _PASSWORD.sub(r"\1:***@", self.url)
+
+    def exists(self) -> bool:
+        """True: whether the server answers is found out when it is asked."""
+        return True
+
+
+StoreAt = Path | Server
+"""Where a store is: a file of SQLite, or a server."""
+
+_SERVER = re.compile(r"postgresql(\+psycopg)?://")
+_PASSWORD = re.compile(r"(//[^/@:]*):[^/@]*@")
+
+
+def store_at(text: str) -> StoreAt:
+    """The store an address names: a server where it begins as one, else a file."""
+    return Server(text) if _SERVER.match(text) else Path(text).expanduser()
 
 
 def data_folder() -> Path:
@@ -17,10 +46,10 @@ def data_folder() -> Path:
     return user_data_path("stockroom", appauthor=False)
 
 
-def own_store(given: str | None) -> Path:
-    """The path a house of one's own is kept at: the one given, else the usual one."""
+def own_store(given: str | None) -> StoreAt:
+    """The place a house of one's own is kept at: the one given, else the usual one."""
     named = given or os.environ.get("STOCKROOM_STORE")
-    return Path(named).expanduser() if named else data_folder() / STORE_NAME
+    return store_at(named) if named else data_folder() / STORE_NAME
 
 
 def practice_store(given: str | None) -> Path:
@@ -29,7 +58,7 @@ def practice_store(given: str | None) -> Path:
     return Path(named).expanduser() if named else data_folder() / PRACTICE_NAME
 
 
-def store_to_open(given: str | None) -> Path:
+def store_to_open(given: str | None) -> StoreAt:
     """The store a command opens: one's own; failing that, the practice college."""
     own = own_store(given)
     practice = practice_store(given)

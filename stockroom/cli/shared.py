@@ -11,12 +11,12 @@ import re
 from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
-from pathlib import Path
 
 import typer
 
 from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
+from stockroom.settings import StoreAt
 
 ANYWHERE = (
     "Anywhere in the line: --store PATH (the store; else STOCKROOM_STORE), "
@@ -48,7 +48,7 @@ class Shared:
     json: bool = False
 
     @property
-    def path(self) -> Path:
+    def path(self) -> StoreAt:
         """The store to open: the one given, else the usual one, else the practice college."""
         from stockroom.settings import store_to_open
 

@@ -11,7 +11,6 @@ import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.chemistry.making import volume_of_stock
 from stockroom.chemistry.mixing import part_in
@@ -28,6 +27,7 @@ from stockroom.service.bench_measuring import measured
 from stockroom.service.bench_names import Stuff, house_lines, of_line, solute
 from stockroom.service.bench_tools import Minimum, Tools, tools_on
 from stockroom.service.bottle_strength import bottle_among
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain
 
 _SAME = 1e-9  # two routes to one strength differ in the last bits
@@ -46,7 +46,7 @@ def dilute(
     of: str = "",
     density: float | None = None,
     closeness: float = 0.05,
-    store: Path | None = None,
+    store: StoreAt | None = None,
     as_at: date | None = None,
 ) -> Sum:
     """What to take of `source`, and of `second` where two are mixed, for a volume of `text`.
@@ -238,7 +238,7 @@ class _Shelf:
     practice: bool = False
 
 
-def _shelf(dense: Mapping[str, float | None], store: Path | None, as_at: date | None) -> _Shelf:
+def _shelf(dense: Mapping[str, float | None], store: StoreAt | None, as_at: date | None) -> _Shelf:
     numbers = [each for each in dense if _BOTTLE.fullmatch(each)]
     if not numbers or store is None:
         return _Shelf({}, house_lines(store))

@@ -10,7 +10,6 @@ import re
 from collections.abc import Iterable
 from dataclasses import replace
 from functools import lru_cache
-from pathlib import Path
 from typing import TYPE_CHECKING
 
 from stockroom.chemistry.formula import molar_mass
@@ -20,6 +19,7 @@ from stockroom.service import bench_tables as shipped
 from stockroom.service.bench_spelling import known_spelling, nearest
 from stockroom.service.bench_stuff import Stuff as Stuff
 from stockroom.service.bench_tables import Row, spelt
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain
 
 if TYPE_CHECKING:
@@ -100,7 +100,7 @@ def jar_of(stuff: Stuff) -> Stuff | None:
     return next((each for each in solids if _weighed_as(each) == _weighed_as(stuff)), None)
 
 
-def house_lines(store: Path | None) -> list[Stuff]:
+def house_lines(store: StoreAt | None) -> list[Stuff]:
     """The lines of one's own store; none for the practice college, whose tables are built in.
 
     Behind them its substances, each by all its names, for what it holds and never lists.

@@ -10,11 +10,11 @@ import re
 from collections.abc import Iterable, Iterator
 from datetime import date
 from difflib import get_close_matches
-from pathlib import Path
 
 from stockroom.errors import BadInput, NotAllowed, UnknownName
 from stockroom.service import bench_tables as shipped
 from stockroom.service.bench_tables import spelt
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain
 
 _SPELT = (
@@ -63,7 +63,7 @@ def bottle_number(of: str) -> bool:
     return of.strip() != _SULFUR and _BOTTLE.fullmatch(of.strip()) is not None
 
 
-def name_in(of: str, store: Path, as_at: date | None, *, weighed: bool = False) -> str:
+def name_in(of: str, store: StoreAt, as_at: date | None, *, weighed: bool = False) -> str:
     """The name to go by: for the number of a bottle that of what it holds, else `of` itself.
 
     `weighed`: it is to be put on a balance, as what is bought by its strength is not.

@@ -8,7 +8,6 @@ from __future__ import annotations
 
 import re
 from dataclasses import dataclass, replace
-from pathlib import Path
 
 from stockroom.chemistry.strength import BY_MASS, PER_MOLE, Concentration, express
 from stockroom.errors import BadAmount, BadInput, MissingFigure
@@ -28,6 +27,7 @@ from stockroom.service.bench import (
 from stockroom.service.bench_counted import read_strength
 from stockroom.service.bench_known import Asked, Known, known, pure_density_of
 from stockroom.service.bench_names import Stuff, house_lines, solute
+from stockroom.settings import StoreAt
 
 _ONE_IN = re.compile(r"\s*1 in(?:\s+of\s+(?P<stock>.+))?\s*", re.IGNORECASE)
 _BEGINS_WITH_NUMBER = re.compile(r"[0-9.]|[MN] ?/ ?[0-9]")
@@ -47,7 +47,7 @@ class Given:
 
 
 def convert(
-    text: str, *, of: str, to: str, given: Given | None = None, store: Path | None = None
+    text: str, *, of: str, to: str, given: Given | None = None, store: StoreAt | None = None
 ) -> Sum:
     """The strength `text` of the substance `of` in the unit `to`.
 

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field, replace
 from datetime import date
-from pathlib import Path
 from typing import TYPE_CHECKING
 
 from stockroom.chemistry.glassware import Ware, ware
@@ -13,6 +12,7 @@ from stockroom.chemistry.weighing import Scale, least_by_pharmacopoeia
 from stockroom.errors import BadInput, StockroomError, StoreTrouble
 from stockroom.measure.amounts import PER_UNIT, Kind
 from stockroom.measure.formats import format_number
+from stockroom.settings import StoreAt
 
 if TYPE_CHECKING:
     from stockroom.planning.facts import Balance, Facts, Glass
@@ -69,7 +69,7 @@ class Tools:
 
 
 def tools_on(
-    store: Path | None, as_at: date | None, *, step: float | None, minimum: Minimum
+    store: StoreAt | None, as_at: date | None, *, step: float | None, minimum: Minimum
 ) -> Tools:
     """The house's tools of the day; a `step` given takes the place of its balances.
 
@@ -90,7 +90,7 @@ def tools_on(
     return replace(found, bench=replace(found.bench, scales=scales))
 
 
-def _of_house(store: Path | None, as_at: date | None) -> Tools:
+def _of_house(store: StoreAt | None, as_at: date | None) -> Tools:
     if store is None or not store.exists():
         return Tools(note="no balance entered: give --step for what it can weigh")
     from stockroom.service.database import day_for

@@ -9,7 +9,6 @@ from __future__ import annotations
 
 from dataclasses import replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.chemistry.steps import STRONGEST, Step, design
 from stockroom.measure.amounts import Kind
@@ -37,12 +36,13 @@ from stockroom.service.bench_steps import (
 from stockroom.service.bench_task import Asked, Task, task_of
 from stockroom.service.bench_tools import Tools, tools_on
 from stockroom.service.bench_weigh_mass import weigh_into
+from stockroom.settings import StoreAt
 
 Told = tuple[tuple[str, ...], tuple[tuple[Named, ...], ...]]
 """What there is to say, and the ways as amounts."""
 
 
-def weigh(asked: Asked, *, store: Path | None = None, as_at: date | None = None) -> Sum:
+def weigh(asked: Asked, *, store: StoreAt | None = None, as_at: date | None = None) -> Sum:
     """The g to weigh of a form for a volume of a strength; of a neat liquid the cm³ as well.
 
     An amount too small for the closeness brings the ways to make it all the same, with

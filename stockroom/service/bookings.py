@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from datetime import date
-from pathlib import Path
 
 from stockroom import clock
 from stockroom.errors import BadInput
@@ -14,6 +13,7 @@ from stockroom.planning.facts import Firmness
 from stockroom.service.answers import Done
 from stockroom.service.booking_rules import check_day, check_in_use, check_may_be_dropped
 from stockroom.service.work import initials
+from stockroom.settings import StoreAt
 from stockroom.store import names
 from stockroom.store.booking_limits import checked_groups, checked_spare
 from stockroom.store.engine import Session, reader_in, writing
@@ -54,7 +54,7 @@ class Hand:
 
 
 def book(
-    path: Path,
+    path: StoreAt,
     number: str | None,
     recipe: str,
     on: date,
@@ -160,7 +160,7 @@ def _in_words(session: Session, booking: Booking) -> str:
 
 
 def shift(
-    path: Path,
+    path: StoreAt,
     booking: str,
     *,
     on: date | None = None,
@@ -221,7 +221,7 @@ def _say(column: str, value: object) -> str:
     return format_time(int(str(value))) if column == "minute" else str(value)
 
 
-def cancel(path: Path, booking: str, *, today: date, by: str) -> Done:
+def cancel(path: StoreAt, booking: str, *, today: date, by: str) -> Done:
     """Drop a booking: it leaves the plan, what was made for it stays as stock.
 
     Raises: UnknownName; NotAllowed when it is dropped already, or done.

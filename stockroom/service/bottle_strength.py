@@ -5,12 +5,12 @@ from __future__ import annotations
 from dataclasses import dataclass
 from datetime import date
 from difflib import get_close_matches
-from pathlib import Path
 from typing import TYPE_CHECKING
 
 from stockroom.errors import MissingFigure, NotAllowed, UnknownName
 from stockroom.findings import DO_NOT_TOUCH
 from stockroom.measure.formats import format_strength
+from stockroom.settings import StoreAt
 
 if TYPE_CHECKING:
     from stockroom.planning.facts import Bottle, Facts, Line
@@ -78,7 +78,7 @@ def bottle_among(known: Facts, number: str) -> Bottle:
     )
 
 
-def strength_on(store: Path, number: str, as_at: date | None) -> tuple[BottleStrength, bool]:
+def strength_on(store: StoreAt, number: str, as_at: date | None) -> tuple[BottleStrength, bool]:
     """The strength a bottle is expected to have, and whether the store is the practice one.
 
     Raises: UnknownName; MissingFigure where none is known; NotAllowed past its safety date.
@@ -94,7 +94,7 @@ def strength_on(store: Path, number: str, as_at: date | None) -> tuple[BottleStr
     return found, known.house.practice
 
 
-def substance_in(store: Path, number: str) -> str:
+def substance_in(store: StoreAt, number: str) -> str:
     """The substance a bottle holds, "" for a mixture. Raises: UnknownName."""
     from stockroom.store.reading import reading
 

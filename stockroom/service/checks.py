@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadAmount, BadInput, NotAllowed, StockroomError
 from stockroom.keeping.rules import RuleKind
@@ -17,6 +16,7 @@ from stockroom.service.peroxide_tests import check_tested, has_passed, result_wo
 from stockroom.service.replayed import replayed_plan
 from stockroom.service.touching import check_may_open, check_not_condemned
 from stockroom.service.work import Work, check_at_hand, unsettled, working
+from stockroom.settings import StoreAt
 from stockroom.store.history import children
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event
@@ -32,7 +32,7 @@ UNUSUAL = 0.25
 
 
 def found(
-    path: Path,
+    path: StoreAt,
     bottle: str,
     strength: Strength,
     *,
@@ -101,7 +101,7 @@ def _check_spread(
 
 
 def look(
-    path: Path,
+    path: StoreAt,
     bottle: str,
     *,
     passed: bool,
@@ -119,7 +119,7 @@ def look(
 
 
 def tested(
-    path: Path,
+    path: StoreAt,
     bottle: str,
     *,
     passed: bool | None = None,
@@ -147,7 +147,9 @@ def tested(
     return _check(path, bottle, event, on=on, today=today, by=by)
 
 
-def _check(path: Path, bottle: str, event: Event, *, on: date | None, today: date, by: str) -> Done:
+def _check(
+    path: StoreAt, bottle: str, event: Event, *, on: date | None, today: date, by: str
+) -> Done:
     with working(path, on=on, today=today, by=by) as work:
         checked = work.bottle(bottle)
         check_at_hand(work, checked)
@@ -192,7 +194,7 @@ def _until(work: Work, bottle: Bottle) -> tuple[str, ...]:
 
 
 def printed(
-    path: Path, bottle: str, reading: date, *, on: date | None, today: date, by: str
+    path: StoreAt, bottle: str, reading: date, *, on: date | None, today: date, by: str
 ) -> Done:
     """Write which reading of a printed date is right; a later word takes the place of an earlier.
 
@@ -208,7 +210,9 @@ def printed(
         return work.done(text, read, entry, following="stockroom plan", details=details)
 
 
-def lost(path: Path, bottle: str, *, note: str = "", on: date | None, today: date, by: str) -> Done:
+def lost(
+    path: StoreAt, bottle: str, *, note: str = "", on: date | None, today: date, by: str
+) -> Done:
     """Say that a bottle cannot be found: it leaves the plan, and its last place is shown.
 
     The bookings the plan would have drawn on it for are named.
@@ -227,7 +231,7 @@ def lost(path: Path, bottle: str, *, note: str = "", on: date | None, today: dat
 
 
 def turned_up(
-    path: Path, bottle: str, place: str | None, *, on: date | None, today: date, by: str
+    path: StoreAt, bottle: str, place: str | None, *, on: date | None, today: date, by: str
 ) -> Done:
     """Say where a bottle turned up (its last place when None); it wants a look.
 
@@ -260,7 +264,9 @@ def _to_be_looked_at(work: Work, bottle: Bottle) -> tuple[str, str]:
     return f"stockroom look {bottle.number}", "Set aside until somebody has looked at it."
 
 
-def spoil(path: Path, bottle: str, reason: str, *, on: date | None, today: date, by: str) -> Done:
+def spoil(
+    path: StoreAt, bottle: str, reason: str, *, on: date | None, today: date, by: str
+) -> Done:
     """Set a bottle aside at once; list what was made from it and the bookings that lean on it.
 
     Raises: BadInput without a reason; NotAllowed when it is gone or not found.

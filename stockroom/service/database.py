@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING
 from stockroom import clock
 from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 from stockroom.service.answers import Done
+from stockroom.settings import StoreAt
 from stockroom.store import reading, sources
 
 if TYPE_CHECKING:
@@ -82,7 +83,7 @@ def starter_folder() -> Path:
     return seeds_folder() / "starter"
 
 
-def new_store(path: Path, *, tables: Path | None = None) -> Done:
+def new_store(path: StoreAt, *, tables: Path | None = None) -> Done:
     """Make a store at `path`, empty or from a folder of CSV tables.
 
     Raises: StoreTrouble when something is there already; BadInput listing the
@@ -106,7 +107,7 @@ def new_store(path: Path, *, tables: Path | None = None) -> Done:
     return Done(f"Made {path}{filled}.", next=following, practice=is_practice(path))
 
 
-def _started(path: Path) -> Done:
+def _started(path: StoreAt) -> Done:
     with reading.reading(path) as reader:
         counted = "SELECT (SELECT COUNT(*) FROM substance), (SELECT COUNT(*) FROM line)"
         substances, lines = reader.ask(counted)[0]
@@ -117,7 +118,7 @@ def _started(path: Path) -> Done:
     )
 
 
-def add_row(path: Path, table: str, values: dict[str, str], *, by: str) -> Done:
+def add_row(path: StoreAt, table: str, values: dict[str, str], *, by: str) -> Done:
     """Add one row to a table, its cells given by column name.
 
     Raises: UnknownName for a table or column that is not there; BadInput naming the column.
@@ -139,7 +140,7 @@ def add_row(path: Path, table: str, values: dict[str, str], *, by: str) -> Done:
 
 
 def change_row(
-    path: Path, table: str, key: str, values: dict[str, str], *, why: str, today: date, by: str
+    path: StoreAt, table: str, key: str, values: dict[str, str], *, why: str, today: date, by: str
 ) -> Done:
     """Correct a row of a table, its new cells given by column name; the old ones stay on record.
 
@@ -188,12 +189,12 @@ def column_words(table: str) -> dict[str, tuple[str, ...]]:
     return layout.column_words(table)
 
 
-def is_practice(path: Path) -> bool:
+def is_practice(path: StoreAt) -> bool:
     """Whether the store is the invented college. Raises: StoreTrouble."""
     return reading.house_value(path, "practice") == "yes"
 
 
-def day_for(path: Path, given: date | None) -> date:
+def day_for(path: StoreAt, given: date | None) -> date:
     """The day to answer for: the one given, else the practice day, else today."""
     return given or reading.practice_day(path) or clock.today()
 

@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from pathlib import Path
 
 from stockroom.service.database import is_practice
+from stockroom.settings import StoreAt
 from stockroom.store.diary import Diary, diary_of
 
 # handed on by name: the command line may not reach into the store
@@ -20,7 +20,7 @@ class Story:
     practice: bool
 
 
-def story(path: Path, bottle: str) -> Story:
+def story(path: StoreAt, bottle: str) -> Story:
     """Everything ever entered for a bottle, slips and their putting-right included.
 
     Raises: UnknownName with the nearest three numbers; StoreTrouble.

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
 from datetime import date
-from pathlib import Path
 
 from stockroom import clock
 from stockroom.chemistry.strength import canonical
@@ -23,6 +22,7 @@ from stockroom.measure.strengths import Strength, StrengthUnit
 from stockroom.planning.choosing.fitness import bounds
 from stockroom.planning.facts import Facts, Firmness, Line
 from stockroom.service.database import seeds_folder
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import Reader, reading
 from stockroom.store.rule_changes import RuleChange, changes_of
@@ -44,7 +44,7 @@ _LINEAR = frozenset(
 _TENTH_GONE, _WEAK = 0.9, 0.8
 
 
-def fading(path: Path, number: str, *, as_at: date, below: tuple[str, ...] = ()) -> Fading:
+def fading(path: StoreAt, number: str, *, as_at: date, below: tuple[str, ...] = ()) -> Fading:
     """How a bottle fades, as at a day; `below` are strengths to date, as typed.
 
     Raises: UnknownName with the nearest numbers; NotAllowed for what has no strength;

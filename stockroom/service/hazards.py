@@ -10,7 +10,6 @@ import re
 from collections.abc import Iterable, Sequence
 from dataclasses import replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadInput, MissingFigure, StockroomError
 from stockroom.measure.strengths import Strength
@@ -33,6 +32,7 @@ from stockroom.service.hazard_names import (
     stuff_named,
 )
 from stockroom.service.hazard_strengths import counted_as, highest_of
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import unknown
 from stockroom.store.reading import reading
 from stockroom.store.sources import citations
@@ -41,7 +41,7 @@ _BOTTLE = re.compile(r"[BbSs][0-9]+[a-z]?")
 
 
 def hazards_of(
-    store: Path | None, what: str, strength: str | None = None, *, as_at: date | None = None
+    store: StoreAt | None, what: str, strength: str | None = None, *, as_at: date | None = None
 ) -> Hazards:
     """The hazards of a bottle by number, a line, or a substance (at a strength).
 
@@ -183,7 +183,7 @@ def _goes(house: House, part: Part) -> Goes:
     )
 
 
-def hazards_of_makes(store: Path, plan: Plan) -> dict[str, Hazards]:
+def hazards_of_makes(store: StoreAt, plan: Plan) -> dict[str, Hazards]:
     """The hazards of every line a plan makes, at its label's strength, by key.
 
     Never raises for a line: one that cannot be worked out is "not entered", and says why.
@@ -203,7 +203,7 @@ def _or_not_entered(house: House, key: str) -> Hazards:
 
 
 def enter_text(
-    path: Path,
+    path: StoreAt,
     line: str,
     *,
     text: str,

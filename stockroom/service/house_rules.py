@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections.abc import Iterator
 from dataclasses import dataclass
 from datetime import date
-from pathlib import Path
 from typing import TYPE_CHECKING
 
 from stockroom import clock
@@ -16,6 +15,7 @@ from stockroom.keeping.rules import Rule, RuleKind
 from stockroom.measure.periods import Period, add
 from stockroom.service.answers import Done
 from stockroom.service.finding import line_in
+from stockroom.settings import StoreAt
 
 if TYPE_CHECKING:
     from stockroom.planning.facts import Line
@@ -48,7 +48,7 @@ class Keeping:
     practice: bool = False
 
 
-def keeping_of(path: Path, line: str) -> Keeping:
+def keeping_of(path: StoreAt, line: str) -> Keeping:
     """How a line keeps. Raises: UnknownName with the nearest names; BadInput when it is several."""
     from stockroom.service.database import is_practice, seeds_folder
     from stockroom.service.fades import label_unit
@@ -75,7 +75,7 @@ def _named(reader: Reader, text: str) -> str:
 
 
 def set_rule(
-    path: Path,
+    path: StoreAt,
     line: str,
     rule: str,
     cells: dict[str, str],

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import re
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadInput, NotAllowed
 from stockroom.keeping.safe_side import Witness
@@ -13,6 +12,7 @@ from stockroom.planning.facts import Bottle, Line
 from stockroom.planning.learn import PART, Lesson, Question, fading_cells, in_short, lesson
 from stockroom.service.answers import Done
 from stockroom.service.finding import line_in
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import unknown
 from stockroom.store.reading import Reader, reading
 from stockroom.store.refills import refills_of
@@ -21,7 +21,7 @@ from stockroom.store.snapshot_lines import lines_of
 
 
 def learn(
-    path: Path,
+    path: StoreAt,
     name: str,
     *,
     order: int | None = None,
@@ -51,7 +51,7 @@ def learn(
         return lesson(line, _heard(reader, bottles, bottle, line, as_at), question)
 
 
-def use(path: Path, found: Lesson, *, why: str, today: date, by: str) -> Done:
+def use(path: StoreAt, found: Lesson, *, why: str, today: date, by: str) -> Done:
     """Make the rate found the house's own rule of fading, with who, when and why.
 
     Raises: NotAllowed while the rate may be nothing at all; BadInput without a reason or

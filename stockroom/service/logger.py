@@ -17,6 +17,7 @@ from stockroom.keeping.temperatures import TemperatureLog, moment_of
 from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_number
 from stockroom.service.database import is_practice
+from stockroom.settings import StoreAt
 from stockroom.store.reading import Reader, Row, reading
 from stockroom.store.temperatures import (
     add_readings,
@@ -49,7 +50,7 @@ AS_IT_STANDS = Meant()
 
 
 def held(
-    path: Path,
+    path: StoreAt,
     place: str,
     *,
     start: date | None = None,
@@ -70,7 +71,7 @@ def held(
 
 
 def bring_in(
-    path: Path,
+    path: StoreAt,
     place: str,
     file: Path,
     *,
@@ -117,7 +118,7 @@ def bring_in(
 
 
 def taken_back(
-    path: Path, place: str, start: date, end: date, *, why: str, today: date, by: str
+    path: StoreAt, place: str, start: date, end: date, *, why: str, today: date, by: str
 ) -> Warmth:
     """Take the readings of some days, both included, out of use; what is left of the place.
 

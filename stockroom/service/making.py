@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadAmount, BrokenPlan, NotAllowed, NotEnough, StockroomError
 from stockroom.keeping.rules import RuleKind
@@ -21,6 +20,7 @@ from stockroom.service.standing import told_of_place
 from stockroom.service.taking import open_if_sealed, take
 from stockroom.service.touching import check_may_open
 from stockroom.service.work import Work, check_in_use, working
+from stockroom.settings import StoreAt
 from stockroom.store import names, tables
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, made_note, next_bottle_number
@@ -51,7 +51,7 @@ class Source:
 
 
 def make_up(
-    path: Path,
+    path: StoreAt,
     line: str,
     volume: Amount,
     *,

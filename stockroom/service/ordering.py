@@ -7,7 +7,6 @@ from __future__ import annotations
 
 import re
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadAmount, BadDate, BadInput, NotAllowed
 from stockroom.measure.amounts import Amount, Kind
@@ -29,6 +28,7 @@ from stockroom.service.order_terms import (
     usual_day,
 )
 from stockroom.service.work import Work, check_amount, working
+from stockroom.settings import StoreAt
 from stockroom.store import names, orders
 from stockroom.store.kinds import CANCELLED, EXPECTED
 from stockroom.store.tables import Line, Placed
@@ -44,7 +44,7 @@ def is_planned(text: str) -> bool:
     return _PLANNED.fullmatch(text.strip()) is not None
 
 
-def order(path: Path, asked: Asked, *, on: date | None, today: date, by: str) -> Done:
+def order(path: StoreAt, asked: Asked, *, on: date | None, today: date, by: str) -> Done:
     """Write that something was ordered; the plan counts it from the day it is expected.
 
     Where not said, the price and the lead time are those of the pack as entered, and the
@@ -70,7 +70,7 @@ def order(path: Path, asked: Asked, *, on: date | None, today: date, by: str) ->
 
 
 def order_planned(
-    path: Path,
+    path: StoreAt,
     number: str,
     *,
     expected: date | None,
@@ -103,7 +103,7 @@ def order_planned(
 
 
 def cancel_order(
-    path: Path, number: str, *, why: str, on: date | None, today: date, by: str
+    path: StoreAt, number: str, *, why: str, on: date | None, today: date, by: str
 ) -> Done:
     """Write that the rest of an order will not come; what came of it stays.
 
@@ -123,7 +123,7 @@ def cancel_order(
 
 
 def put_off(
-    path: Path,
+    path: StoreAt,
     number: str,
     *,
     expected: date | None,

@@ -8,7 +8,6 @@ from __future__ import annotations
 
 from dataclasses import replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadDate, BadInput
 from stockroom.measure.days import parse_day
@@ -19,12 +18,13 @@ from stockroom.service.known import known_from
 from stockroom.service.printed_plans import beside_the_kept
 from stockroom.service.replayed import replayed_plan
 from stockroom.service.why import reasons
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import unknown
 from stockroom.store.reading import reading
 
 
 def _known(
-    path: Path,
+    path: StoreAt,
     as_at: date,
     start: date | None = None,
     end: date | None = None,
@@ -36,7 +36,7 @@ def _known(
 
 
 def term_plan(
-    path: Path,
+    path: StoreAt,
     *,
     as_at: date,
     start: date | None = None,
@@ -53,7 +53,7 @@ def term_plan(
 
 
 def to_make(
-    path: Path,
+    path: StoreAt,
     *,
     as_at: date,
     start: date | None = None,
@@ -71,14 +71,14 @@ def _finished(make: Make, first: date, last: date) -> bool:
     return make.finish_on is not None and first <= make.finish_on <= last
 
 
-def past_on(path: Path, *, as_at: date, on: date, cautious: bool = False) -> Plan:
+def past_on(path: StoreAt, *, as_at: date, on: date, cautious: bool = False) -> Plan:
     """A plan whose `past` is told for the day `on`, from what is known as at `as_at`."""
     # an earlier day is told as it stood then, not with what has happened since
     known = _known(path, min(as_at, on), cautious=cautious)
     return replace(replayed_plan(known, past_day=on), as_at=as_at)
 
 
-def ready(path: Path, ref: str, *, as_at: date, cautious: bool = False) -> Readiness:
+def ready(path: StoreAt, ref: str, *, as_at: date, cautious: bool = False) -> Readiness:
     """Is everything good for a booking number, or for all bookings of a day?
 
     Raises UnknownName for a booking that does not exist, BadDate for a day
@@ -107,7 +107,7 @@ def ready(path: Path, ref: str, *, as_at: date, cautious: bool = False) -> Readi
     return readiness(known, replayed_plan(known), numbers, title, day)
 
 
-def _reaching(path: Path, known: Facts, day: date) -> Facts:
+def _reaching(path: StoreAt, known: Facts, day: date) -> Facts:
     """The same facts, over a period that holds the day."""
     if day <= known.end:
         return known
@@ -120,7 +120,7 @@ def _no_such(known: Facts, ref: str) -> BadInput:
 
 
 def why(
-    path: Path, ref: str, *, as_at: date, instead: str | None = None, cautious: bool = False
+    path: StoreAt, ref: str, *, as_at: date, instead: str | None = None, cautious: bool = False
 ) -> tuple[str, ...]:
     """The reasons behind any line of the plan, bottle or name; or why not `instead`.
 

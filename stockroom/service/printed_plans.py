@@ -7,7 +7,6 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import NotAllowed, StoreTrouble
 from stockroom.measure.days import spell_day
@@ -20,6 +19,7 @@ from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Happened
 from stockroom.service.known import known_from
 from stockroom.service.replayed import replayed_plan
+from stockroom.settings import StoreAt
 from stockroom.store.printed_plans import (
     Printed,
     kept_under,
@@ -44,7 +44,7 @@ class Changed:
 
 
 def keep(
-    path: Path,
+    path: StoreAt,
     *,
     as_at: date,
     start: date | None = None,
@@ -85,7 +85,7 @@ def keep(
         return replace(shown, kept_as=row.number)
 
 
-def changed(path: Path, number: str | None = None, *, as_at: date) -> Changed:
+def changed(path: StoreAt, number: str | None = None, *, as_at: date) -> Changed:
     """The plan as at a day against the one kept last, or against that of a number.
 
     Made in the way the kept one was: on the safe side where that was.
@@ -105,7 +105,7 @@ def changed(path: Path, number: str | None = None, *, as_at: date) -> Changed:
     )
 
 
-def beside_the_kept(path: Path, known: Facts, plan: Plan, *, whole: bool) -> Plan:
+def beside_the_kept(path: StoreAt, known: Facts, plan: Plan, *, whole: bool) -> Plan:
     """The plan with the number of the one kept last and how many changes there are since.
 
     As it was where no plan was kept, or nothing changed; with the number alone where the kept
@@ -155,7 +155,7 @@ def _printed(reader: Reader, number: str | None, as_at: date) -> Printed:
     return found
 
 
-def _read(path: Path, printed: Printed) -> KeptPlan:
+def _read(path: StoreAt, printed: Printed) -> KeptPlan:
     damaged = printed.unread
     if not damaged:
         try:

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadInput, NotAllowed
 from stockroom.planning.facts import Line
@@ -12,6 +11,7 @@ from stockroom.planning.proof import Proved, proof_of
 from stockroom.planning.settle import needs_of, settled
 from stockroom.service.finding import line_in
 from stockroom.service.known import known_from
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain
 from stockroom.store.reading import reading
 
@@ -19,7 +19,9 @@ LONGEST_SECONDS = 3600.0
 """Longer than this nobody waits at a desk. Our choice."""
 
 
-def proof(path: Path, name: str, *, seconds: float, as_at: date, cautious: bool = False) -> Proved:
+def proof(
+    path: StoreAt, name: str, *, seconds: float, as_at: date, cautious: bool = False
+) -> Proved:
     """The proof for the stock called so and everything made from it.
 
     `seconds` of the solver's time, above 0 to an hour. Raises BadInput for another figure;

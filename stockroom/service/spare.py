@@ -3,18 +3,18 @@
 from __future__ import annotations
 
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadInput, MissingFigure
 from stockroom.planning.facts import Facts, Recipe
 from stockroom.planning.spare import RecipeSpare, spare_of, spares
 from stockroom.service.finding import line_among
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import Reader, reading
 from stockroom.store.snapshot import facts_from
 
 
-def is_recipe(path: Path, name: str) -> bool:
+def is_recipe(path: StoreAt, name: str) -> bool:
     """True when a name is a recipe's code or its whole title."""
     with reading(path) as reader:
         rows = reader.rows("recipe")
@@ -22,7 +22,7 @@ def is_recipe(path: Path, name: str) -> bool:
     return any(wanted in (plain(row["recipe"]), plain(row["title"])) for row in rows)
 
 
-def learn_spare(path: Path, name: str, *, as_at: date) -> tuple[RecipeSpare, ...]:
+def learn_spare(path: StoreAt, name: str, *, as_at: date) -> tuple[RecipeSpare, ...]:
     """The spare of a recipe (its code, title or a part of it), of the recipe of a booking, of
     every recipe that asks for a line; of all with draws where `name` is "".
 

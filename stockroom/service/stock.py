@@ -8,7 +8,6 @@ initials. Making up is in `making.py`; looks, titrations and losses in `checks.p
 from __future__ import annotations
 
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadInput, NotAllowed
 from stockroom.measure.amounts import Amount
@@ -51,6 +50,7 @@ from stockroom.service.work import (
     doubts,
     working,
 )
+from stockroom.settings import StoreAt
 from stockroom.store import names
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, left, overfull
@@ -58,7 +58,7 @@ from stockroom.store.tables import Bottle
 
 
 def arrive(
-    path: Path,
+    path: StoreAt,
     line: str,
     size: Amount,
     *,
@@ -100,7 +100,7 @@ def arrive(
         return work.done(text, bottles[0], entries[0], details=details)
 
 
-def open_bottle(path: Path, bottle: str, *, on: date | None, today: date, by: str) -> Done:
+def open_bottle(path: StoreAt, bottle: str, *, on: date | None, today: date, by: str) -> Done:
     """Write the day a bottle was opened, and say how long it is good now.
 
     Raises: NotAllowed when it was opened already (the first day is kept), gone, not found,
@@ -125,7 +125,7 @@ def open_bottle(path: Path, bottle: str, *, on: date | None, today: date, by: st
 
 
 def draw(
-    path: Path,
+    path: StoreAt,
     bottle: str,
     amount: Amount,
     *,
@@ -162,7 +162,7 @@ def draw(
 
 
 def spill(
-    path: Path,
+    path: StoreAt,
     bottle: str,
     amount: Amount,
     *,
@@ -178,7 +178,7 @@ def spill(
 
 
 def lend(
-    path: Path, bottle: str, amount: Amount, *, to: str, on: date | None, today: date, by: str
+    path: StoreAt, bottle: str, amount: Amount, *, to: str, on: date | None, today: date, by: str
 ) -> Done:
     """Write off what was lent, and to whom. Raises: BadInput when nobody is named; as `draw`."""
     if not to.strip():
@@ -192,7 +192,7 @@ def lend(
         return write_off(work, bottle, amount, event, "Lent")
 
 
-def move(path: Path, bottle: str, place: str, *, on: date | None, today: date, by: str) -> Done:
+def move(path: StoreAt, bottle: str, place: str, *, on: date | None, today: date, by: str) -> Done:
     """Stand a bottle somewhere else; wrong neighbours there are told, never refused.
 
     Raises: UnknownName with the nearest places; NotAllowed when it is gone, not found, or
@@ -210,7 +210,7 @@ def move(path: Path, bottle: str, place: str, *, on: date | None, today: date, b
 
 
 def count(
-    path: Path,
+    path: StoreAt,
     bottle: str,
     amount: Amount,
     *,
@@ -246,7 +246,7 @@ def count(
 
 
 def discard(
-    path: Path, bottle: str, *, how: str, why: str, on: date | None, today: date, by: str
+    path: StoreAt, bottle: str, *, how: str, why: str, on: date | None, today: date, by: str
 ) -> Done:
     """Throw a bottle away: it is gone, its number and its history stay.
 
@@ -269,7 +269,7 @@ def discard(
 
 
 def put_right(
-    path: Path, entry: int, reason: str, *, on: date | None, today: date, by: str
+    path: StoreAt, entry: int, reason: str, *, on: date | None, today: date, by: str
 ) -> Done:
     """Undo one entry without rubbing it out: totals are as if it had never happened.
 

@@ -11,7 +11,6 @@ from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from datetime import date
 from decimal import ROUND_HALF_UP, Decimal
-from pathlib import Path
 
 from stockroom.chemistry.peroxide import MOLAR_MASS, convention, molar_to_vol
 from stockroom.chemistry.reactions import Titration
@@ -33,6 +32,7 @@ from stockroom.service.titrate_known import known_strength
 from stockroom.service.titrate_standard import in_flask
 from stockroom.service.titrate_stuff import Reagent, Where, reaction_of
 from stockroom.service.titrate_typed import burette_of, dilutions_of, pipetted, volume_of
+from stockroom.settings import StoreAt
 
 _STRONGEST = 100.0
 """mol/dm³: as in `measure/parsing.py`, beyond it a unit has slipped."""
@@ -109,7 +109,7 @@ class Titrated:
         return f"{self.substance} found {shown} (k = 2)"
 
 
-def titrate(asked: Asked, *, store: Path | None = None, as_at: date | None = None) -> Titrated:
+def titrate(asked: Asked, *, store: StoreAt | None = None, as_at: date | None = None) -> Titrated:
     """The strength a titration finds. Raises: BadInput, BadAmount, UnknownName, MissingFigure."""
     where = Where(store, as_at, house_lines(store))
     reaction = reaction_of(asked.reaction, where)

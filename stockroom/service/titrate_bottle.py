@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.chemistry.strength import PER_MOLE, Concentration, express
 from stockroom.chemistry.titration import FACTORS, factor
@@ -19,6 +18,7 @@ from stockroom.service.bench_names import Stuff
 from stockroom.service.titrate import Shown, Titrated, volumetric_repeatability
 from stockroom.service.titrate_known import in_a_mole
 from stockroom.service.titrate_stuff import Where
+from stockroom.settings import StoreAt
 
 NEW_LABEL = "Write a new label: the strength found, the day, your initials."
 
@@ -48,7 +48,7 @@ class _Labelled:
 
 
 def record(
-    path: Path,
+    path: StoreAt,
     bottle: str,
     found: Titrated,
     *,
@@ -86,7 +86,7 @@ def record(
     return Written(replace(done, details=marked), found, shown, times)
 
 
-def _labelled(path: Path, number: str, on: date) -> _Labelled:
+def _labelled(path: StoreAt, number: str, on: date) -> _Labelled:
     from stockroom.store.reading import reading
     from stockroom.store.snapshot_bottles import bottle_of
     from stockroom.store.snapshot_lines import lines_of

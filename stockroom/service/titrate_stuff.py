@@ -10,7 +10,6 @@ import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.chemistry.reaction_forms import moles_in
 from stockroom.chemistry.reaction_names import names_it, sides_of, titration_of
@@ -20,6 +19,7 @@ from stockroom.planning.facts import Form
 from stockroom.service import bench_tables as shipped
 from stockroom.service.bench_names import Stuff, of_line, solid, solute
 from stockroom.service.bench_tables import spelt
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain
 
 _BOTTLE = re.compile(r"[A-Za-z][0-9]+[a-z]?")
@@ -73,7 +73,7 @@ class Reagent:
 class Where:
     """The store a name or a bottle is looked up in, the day, and the house's own lines."""
 
-    store: Path | None
+    store: StoreAt | None
     as_at: date | None
     lines: Sequence[Stuff] = ()
 

@@ -8,7 +8,6 @@ from __future__ import annotations
 from collections.abc import Iterator
 from dataclasses import dataclass
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadInput, NotAllowed
 from stockroom.measure.days import format_time, spell_day
@@ -20,6 +19,7 @@ from stockroom.planning.facts import Booking, Bottle, Facts, Happened, HappenedK
 from stockroom.service.booking_rules import check_day, check_in_use, check_may_be_dropped
 from stockroom.service.known import known_from, on_the_safe_side
 from stockroom.service.replayed import replayed_plan
+from stockroom.settings import StoreAt
 from stockroom.store.booking_limits import checked_groups, checked_spare, next_number
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import Reader, reading
@@ -73,7 +73,7 @@ class Supposed:
     practice: bool
 
 
-def what_if(path: Path, asked: Asked, *, as_at: date) -> Supposed:
+def what_if(path: StoreAt, asked: Asked, *, as_at: date) -> Supposed:
     """The plan as it would be against the plan as it is.
 
     Raises: BadInput when nothing is asked, for groups outside 1-200, and for what is so

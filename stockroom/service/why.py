@@ -7,7 +7,6 @@ from __future__ import annotations
 
 from dataclasses import replace
 from datetime import date
-from pathlib import Path
 
 from stockroom.errors import BadAmount, BadDate, BadInput, UnknownName
 from stockroom.measure.amounts import Amount
@@ -19,12 +18,13 @@ from stockroom.planning.whys.why import why as reasons_for
 from stockroom.planning.whys.why_not import Other, why_not
 from stockroom.service.finding import line_among
 from stockroom.service.replayed import replayed_plan
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import reading
 from stockroom.store.snapshot_bottles import bottle_of
 
 
-def reasons(path: Path, known: Facts, ref: str, instead: str | None) -> tuple[str, ...]:
+def reasons(path: StoreAt, known: Facts, ref: str, instead: str | None) -> tuple[str, ...]:
     """The reasons behind a reference, or why `instead` does not stand in its place.
 
     At most five lines of at most two rows of a terminal. Raises: UnknownName with the
@@ -64,14 +64,14 @@ def _names(known: Facts, whole: Plan) -> list[str]:
     return [*names, *known.lines]
 
 
-def _gone(path: Path, ref: str, as_at: date) -> tuple[str, ...]:
+def _gone(path: StoreAt, ref: str, as_at: date) -> tuple[str, ...]:
     """What there is to say of a bottle discarded since."""
     with reading(path) as reader:
         bottle = bottle_of(reader, ref.strip().upper(), as_at)
     return (f"{bottle.number} {bottle.line}: gone, discarded",) if bottle else ()
 
 
-def _substances(path: Path, ref: str) -> list[str]:
+def _substances(path: StoreAt, ref: str) -> list[str]:
     """The substances a text is another name of: "hypo" is sodium thiosulfate."""
     with reading(path) as reader:
         named = {row["id"]: row["substance"] for row in reader.rows("substance")}
@@ -82,7 +82,7 @@ def _substances(path: Path, ref: str) -> list[str]:
 # -- instead ---------------------------------------------------------------------------------
 
 
-def _instead(path: Path, known: Facts, whole: Plan, ref: str, text: str) -> tuple[str, ...]:
+def _instead(path: StoreAt, known: Facts, whole: Plan, ref: str, text: str) -> tuple[str, ...]:
     if not text.strip():
         raise BadInput(f"Instead of {ref}, what?", "stockroom why K11 --instead S10")
     lines = why_not(known, whole, ref, _other(path, known, whole, ref, text))
@@ -93,7 +93,7 @@ def _instead(path: Path, known: Facts, whole: Plan, ref: str, text: str) -> tupl
     return lines
 
 
-def _other(path: Path, known: Facts, whole: Plan, ref: str, text: str) -> Other:
+def _other(path: StoreAt, known: Facts, whole: Plan, ref: str, text: str) -> Other:
     """What was typed behind --instead: a label's number before a name, a day before an amount."""
     wanted = text.strip().lower()
     for bottle in known.bottles:
@@ -139,7 +139,7 @@ def _sells(known: Facts, whole: Plan, ref: str, text: str) -> bool:
     return any(pack.supplier.lower() == text.strip().lower() for pack in packs if pack.supplier)
 
 
-def _line(path: Path, known: Facts, text: str) -> Other:
+def _line(path: StoreAt, known: Facts, text: str) -> Other:
     names = {plain(x) for n in known.lines.values() for x in (n.key, n.item, n.substance)}
     # another name of a substance before a part of the name of one: "hypo" is no hypochlorite
     others = [] if plain(text) in names else _substances(path, text)
@@ -151,7 +151,7 @@ def _line(path: Path, known: Facts, text: str) -> Other:
         raise trouble
 
 
-def _no_number(path: Path, known: Facts, text: str) -> BadInput:
+def _no_number(path: StoreAt, known: Facts, text: str) -> BadInput:
     gone = _gone(path, text, known.as_at)
     if gone:
         return UnknownName(f"{gone[0]}: it stands in nobody's place.", "Ask about a bottle held.")

@@ -6,7 +6,6 @@ from collections.abc import Iterator
 from contextlib import contextmanager
 from dataclasses import dataclass, replace
 from datetime import date
-from pathlib import Path
 
 from stockroom import clock
 from stockroom.errors import BadAmount, BadDate, BadInput, NotAllowed
@@ -16,6 +15,7 @@ from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_amount, unit_mark
 from stockroom.planning import facts
 from stockroom.service.answers import Done
+from stockroom.settings import StoreAt
 from stockroom.store import names
 from stockroom.store.engine import Session, reader_in, writing
 from stockroom.store.kinds import EntryKind
@@ -98,7 +98,7 @@ class Work:
 
 
 @contextmanager
-def working(path: Path, *, on: date | None, today: date, by: str) -> Iterator[Work]:
+def working(path: StoreAt, *, on: date | None, today: date, by: str) -> Iterator[Work]:
     """One unit of work: saved when the block ends well, else nothing is.
 
     `on` is the day it happened, today when not said; it is entered today.

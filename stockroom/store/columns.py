@@ -54,11 +54,16 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         " source",
         "booking_change": "id booking_id entered_on entered_at by what before after",
         "bottle": "id number line_id size received_on made_on printed_text printed_readings cap"
-        " remark made_here source",
+        " remark made_here source lot assay tare decanted_from",
         "parent": "id bottle_id parent_id",
         "row_change": "id table_name row_key column_name before after why by entered_on entered_at",
         "printed_plan": "id number as_at kept_at by cautious digest usual marks decisions",
         "entry": "id bottle_id kind happened_on entered_on entered_at by change strength"
-        " strength_text uncertainty peroxide_mg_kg passed place_id reason note booking puts_right",
+        " strength_text uncertainty peroxide_mg_kg passed place_id reason note booking puts_right"
+        " about walk_id",
+        "walk": "id name places started_on entered_on entered_at by",
+        "walk_end": "id walk_id ended_on entered_on entered_at by note",
+        "submission": "id token entered_on entered_at by answer",
+        "backup_made": "id place entries digest entered_on entered_at by",
     }.items()
 }

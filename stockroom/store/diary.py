@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from datetime import date
-from pathlib import Path
 
 from stockroom.measure.amounts import Amount, Kind
+from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import Reader, Row, reading
 
@@ -42,7 +42,7 @@ class Diary:
     entries: tuple[Told, ...]
 
 
-def diary(path: Path, bottle: str) -> tuple[Told, ...]:
+def diary(path: StoreAt, bottle: str) -> tuple[Told, ...]:
     """Everything entered for a bottle, in the order it happened.
 
     Raises: UnknownName with the nearest three numbers; StoreTrouble.
@@ -50,7 +50,7 @@ def diary(path: Path, bottle: str) -> tuple[Told, ...]:
     return diary_of(path, bottle).entries
 
 
-def diary_of(path: Path, bottle: str) -> Diary:
+def diary_of(path: StoreAt, bottle: str) -> Diary:
     """The same, with the bottle's number and what it holds. Raises: as `diary`."""
     with reading(path) as reader:
         row = _bottle(reader, bottle)

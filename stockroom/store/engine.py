@@ -18,6 +18,7 @@ from sqlalchemy.pool import NullPool
 from sqlmodel import Session as Session
 
 from stockroom.errors import StoreTrouble
+from stockroom.settings import Server, StoreAt
 from stockroom.store.reading import Reader
 from stockroom.store.trouble import (
     BUSY_SECONDS,
@@ -33,7 +34,7 @@ MIGRATIONS = Path(__file__).parent / "migrations"
 
 
 @contextmanager
-def writing(path: Path) -> Iterator[Session]:
+def writing(path: StoreAt) -> Iterator[Session]:
     """A session on the store at `path`: saved when the block ends well, else nothing is.
 
     The write lock is taken before anything is read, so what the block reads is
@@ -42,6 +43,12 @@ def writing(path: Path) -> Iterator[Session]:
     Raises: StoreTrouble (missing, busy, damaged, read-only, too new, full disc);
     NotEnough when a draw would take a bottle below nothing.
     """
+    if isinstance(path, Server):
+        from stockroom.store import server
+
+        with server.writing(path) as session:
+            yield session
+        return
     check_there(path)
     with _borders(path):
         # rw and not rwc: a mistyped path must not become a new, empty store
@@ -99,11 +106,16 @@ def reader_in(session: Session) -> Reader:
     return Reader(_raw(session.connection()))
 
 
-def create(path: Path, fill: Callable[[Session], None] | None = None) -> None:
+def create(path: StoreAt, fill: Callable[[Session], None] | None = None) -> None:
     """Make a store at `path`, empty or filled by `fill`; a failure leaves no file behind.
 
     Raises: StoreTrouble when something is there already, or it cannot be written.
     """
+    if isinstance(path, Server):
+        from stockroom.store import server
+
+        server.create(path, fill)
+        return
     if path.exists():
         raise StoreTrouble(f"There is already something at {path}.", "Choose another --store PATH.")
     with _borders(path):

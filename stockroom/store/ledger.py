@@ -50,6 +50,8 @@ class Event:
     note: str = ""
     booking: str = ""
     puts_right: int | None = None
+    about: bool = False
+    walk_id: int | None = None
 
 
 def append(session: Session, bottle: Bottle, event: Event, stamp: Stamp) -> Entry:
@@ -132,6 +134,8 @@ def _write(
         note=event.note,
         booking=event.booking,
         puts_right=event.puts_right,
+        about=event.about,
+        walk_id=event.walk_id,
     )
     session.add(entry)
     # numbered at once: the next sum, and the trigger, must see it

@@ -12,6 +12,7 @@ from pathlib import Path
 from typing import Any
 
 from stockroom.errors import StoreTrouble
+from stockroom.settings import Server, StoreAt
 from stockroom.store.columns import COLUMNS
 from stockroom.store.trouble import (
     BUSY_SECONDS,
@@ -50,11 +51,17 @@ class Reader:
 
 
 @contextmanager
-def reading(path: Path) -> Iterator[Reader]:
+def reading(path: StoreAt) -> Iterator[Reader]:
     """A reader on the store at `path`.
 
     Raises: StoreTrouble when it is missing, damaged, no store at all or too new.
     """
+    if isinstance(path, Server):
+        from stockroom.store import server
+
+        with server.reading(path) as reader:
+            yield reader
+        return
     check_there(path)
     with translated(path):
         connection = _up_to_date(path)
@@ -66,14 +73,14 @@ def reading(path: Path) -> Iterator[Reader]:
             connection.close()
 
 
-def house_value(path: Path, key: str) -> str | None:
+def house_value(path: StoreAt, key: str) -> str | None:
     """One house setting as text; None when it is not set."""
     with reading(path) as reader:
         found = reader.rows("house", "WHERE setting = ?", key)
     return str(found[0]["value"]) if found else None
 
 
-def practice_day(path: Path) -> date | None:
+def practice_day(path: StoreAt) -> date | None:
     """The day a practice store opens on; None for a house of one's own."""
     written = house_value(path, "practice_day")
     return date.fromisoformat(written) if written else None

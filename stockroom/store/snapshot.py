@@ -8,7 +8,6 @@ stands on the shelves.
 from __future__ import annotations
 
 from datetime import date, timedelta
-from pathlib import Path
 
 from stockroom.errors import BadDate
 from stockroom.measure.amounts import Amount
@@ -25,6 +24,7 @@ from stockroom.planning.facts import (
     Place,
     Vessel,
 )
+from stockroom.settings import StoreAt
 from stockroom.store.printed_plans import usual_of
 from stockroom.store.reading import Reader, Row, reading
 from stockroom.store.snapshot_bottles import bottles_of, drawn_of
@@ -35,7 +35,7 @@ SPAN = timedelta(days=90)
 """How far ahead to look when no term is written down: about a term."""
 
 
-def facts(path: Path, as_at: date, start: date | None = None, end: date | None = None) -> Facts:
+def facts(path: StoreAt, as_at: date, start: date | None = None, end: date | None = None) -> Facts:
     """Everything the planner may know of the store at `path`, as at one day.
 
     Entries that happened later are left out, and bottles that were not there

@@ -20,6 +20,7 @@ from stockroom.store.tables_bookings import (
     Requirement,
     Swap,
 )
+from stockroom.store.tables_desk import BackupMade, Submission, Walk, WalkEnd
 from stockroom.store.tables_house import (
     Balance,
     BalanceAway,
@@ -63,6 +64,7 @@ from stockroom.store.tables_orders import (
 from stockroom.store.tables_plans import PrintedPlan
 
 __all__ = [
+    "BackupMade",
     "Balance",
     "BalanceAway",
     "Bar",
@@ -97,9 +99,12 @@ __all__ = [
     "Recipe",
     "Requirement",
     "RowChange",
+    "Submission",
     "Substance",
     "Swap",
     "Term",
     "Vessel",
     "VesselAway",
+    "Walk",
+    "WalkEnd",
 ]

@@ -43,6 +43,13 @@ class Bottle(Numbered, table=True):
     remark: str = ""
     made_here: bool = False
     source: str = ""
+    lot: str = ""
+    # as a fraction, where this bottle's own certificate gives one
+    assay: float | None = None
+    # the empty bottle with its cap, in micrograms
+    tare: int | None = Field(default=None, sa_type=BigInteger)
+    # what was poured from one bottle into a smaller one keeps that one's dates and strength
+    decanted_from: int | None = Field(default=None, foreign_key="bottle.id")
 
 
 class Parent(Numbered, table=True):
@@ -78,3 +85,6 @@ class Entry(Numbered, table=True):
     puts_right: int | None = Field(
         default=None, sa_column=Column(Integer, ForeignKey("entry.id"), unique=True)
     )
+    # an estimate by eye; what it left is about right until the bottle is counted
+    about: bool = False
+    walk_id: int | None = Field(default=None, foreign_key="walk.id")

@@ -13,7 +13,7 @@ from pathlib import Path
 
 from stockroom.errors import NotEnough, Refused, StoreTrouble
 
-REVISIONS = ("0001", "0002", "0003", "0004", "0005", "0006")
+REVISIONS = ("0001", "0002", "0003", "0004", "0005", "0006", "0007")
 """The migrations this program knows, oldest first; the last is what it writes."""
 
 BUSY_SECONDS = 5.0

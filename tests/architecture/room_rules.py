@@ -25,10 +25,15 @@ MAY_IMPORT: dict[str, frozenset[str]] = {
     "keeping": frozenset({"chemistry", "measure", ROOT}),
     "safety": frozenset({"chemistry", "measure", ROOT}),
     "lots": frozenset({ROOT}),
+    "bringing": frozenset({"keeping", "chemistry", "measure", ROOT}),
     "planning": frozenset({"lots", "keeping", "safety", "chemistry", "measure", ROOT}),
     "store": frozenset({"planning", "keeping", "safety", "chemistry", "measure", ROOT}),
-    "service": frozenset({"store", "planning", "keeping", "safety", "chemistry", "measure", ROOT}),
-    "reports": frozenset({"lots", "planning", "keeping", "safety", "chemistry", "measure", ROOT}),
+    "service": frozenset(
+        {"store", "planning", "bringing", "keeping", "safety", "chemistry", "measure", ROOT}
+    ),
+    "reports": frozenset(
+        {"lots", "planning", "bringing", "keeping", "safety", "chemistry", "measure", ROOT}
+    ),
     "web": frozenset({"service", "reports", "measure", ROOT}),
     "cli": frozenset({"service", "reports", "measure", ROOT}),
 }
@@ -41,7 +46,9 @@ ONLY_MODULES: dict[tuple[str, str], frozenset[str]] = {
     ("store", "planning"): frozenset({"stockroom.planning.facts", "stockroom.planning.decisions"}),
 }
 
-PURE = frozenset({"measure", "chemistry", "keeping", "safety", "lots", "planning", "reports"})
+PURE = frozenset(
+    {"measure", "chemistry", "keeping", "safety", "lots", "planning", "bringing", "reports"}
+)
 PURE_SEE_OF_ROOT = frozenset({"stockroom.errors", "stockroom.findings"})
 
 # library -> the only rooms that may import it
@@ -57,6 +64,9 @@ OUTSIDE: dict[str, frozenset[str]] = {
     "highspy": frozenset({"lots"}),
     "uncertainties": frozenset({"chemistry"}),
     "rapidfuzz": frozenset({"store", "service"}),
+    "openpyxl": frozenset({"bringing", "reports"}),
+    "charset_normalizer": frozenset({"bringing"}),
+    "psycopg": frozenset({"store"}),
     "platformdirs": frozenset({ROOT}),
     "fastapi": frozenset({"web"}),
     "starlette": frozenset({"web"}),
