@@ -8,6 +8,7 @@ from __future__ import annotations
 import re
 import unicodedata
 from decimal import Decimal
+from functools import lru_cache
 
 from stockroom.errors import BadAmount
 
@@ -27,6 +28,8 @@ _POWER = re.compile(
 _LONGEST_QUOTE = 60
 
 
+# a store's names are tidied again for every word somebody looks up
+@lru_cache(maxsize=8192)
 def tidy(text: str) -> str:
     """`text` stripped, with look-alikes made plain: "cm³" to "cm3", thin spaces to spaces.
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import deque
 from dataclasses import replace
 from datetime import date
 
@@ -11,12 +12,31 @@ from stockroom.planning.facts import Facts
 from stockroom.planning.plan import shown, whole_plan
 from stockroom.planning.replaying.replay import replay
 
+_LAST: deque[tuple[Facts, date | None, Plan]] = deque(maxlen=4)
+"""The last plans of this process beside their facts: the same facts give the same plan."""
+
+
+def forget_plans() -> None:
+    """Forget the plans made so far, so that the next is worked out anew."""
+    _LAST.clear()
+
 
 def replayed_plan(known: Facts, *, past_day: date | None = None) -> Plan:
     """The plan of these facts, `past` told for `past_day` or for the day of the facts.
 
+    Asked again of the same facts, the plan made before is given: a page that is looked at
+    twice, or an event that asks whom it hits, need not wait for what is known.
     Raises BrokenPlan where the replay finds a rule broken: nothing of it is to be shown.
     """
+    for facts, day, made in _LAST:
+        if day == past_day and facts == known:
+            return made
+    made = _replayed(known, past_day)
+    _LAST.append((known, past_day, made))
+    return made
+
+
+def _replayed(known: Facts, past_day: date | None) -> Plan:
     whole = whole_plan(known, past_day=past_day)
     # all of it: what a week shows may lean on a bottle opened for another
     last = known.horizon or known.end

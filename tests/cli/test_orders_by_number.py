@@ -112,6 +112,7 @@ def test_a_broken_plan_places_nothing_by_number_and_blocks_nothing_by_name(
     from stockroom.service import replayed
 
     fault = Fault(Broken.ORDERED, "K01", "not ordered")
+    replayed.forget_plans()
     monkeypatch.setattr(replayed, "replay", lambda *_: (fault,))
     refused = enter("order", "O01")
     assert refused.code == 1

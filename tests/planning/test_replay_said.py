@@ -113,6 +113,8 @@ def broken(monkeypatch: pytest.MonkeyPatch) -> None:
     def forgetful(known: Facts, *, past_day: date | None = None) -> Plan:
         return replace(whole_plan(known, past_day=past_day), orders=())
 
+    # what a test before this one asked may still be known
+    stockroom.service.replayed.forget_plans()
     monkeypatch.setattr(stockroom.service.replayed, "whole_plan", forgetful)
 
 
