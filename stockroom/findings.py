@@ -22,3 +22,16 @@ class Finding:
 
     subject: str
     text: str
+
+
+@dataclass(frozen=True, slots=True)
+class Fault(Finding):
+    """Something in a store that does not hold together, and how to mend it.
+
+    `check` is the word for the kind of fault. A `remark` is worth knowing and wants no
+    mending: it alone never makes a store out of order.
+    """
+
+    check: str
+    mend: str
+    remark: bool = False

@@ -7,6 +7,8 @@ import re
 from dataclasses import dataclass
 from pathlib import Path
 
+from stockroom.errors import BadInput
+
 STORE_NAME = "stockroom.sqlite"
 PRACTICE_NAME = "practice.sqlite"
 
@@ -19,7 +21,7 @@ class Server:
 
     def __str__(self) -> str:
         """The address as it may be shown: a password in it is left out."""
-        return _PASSWORD.sub(r"\1:***@", self.url)
+        return _PASSWORD_TOO.sub(r"\1***", _PASSWORD.sub(r"\1:***@", self.url))
 
     def exists(self) -> bool:
         """True: whether the server answers is found out when it is asked."""
@@ -30,7 +32,9 @@ StoreAt = Path | Server
 """Where a store is: a file of SQLite, or a server."""
 
 _SERVER = re.compile(r"postgresql(\+psycopg)?://")
-_PASSWORD = re.compile(r"(//[^/@:]*):[^/@]*@")
+# up to the last @, since somebody may have left one in a password as it is
+_PASSWORD = re.compile(r"(//[^/@:?]*):[^?]*@")
+_PASSWORD_TOO = re.compile(r"([?&]password=)[^&]*")
 
 
 def store_at(text: str) -> StoreAt:
@@ -53,13 +57,24 @@ def own_store(given: str | None) -> StoreAt:
 
 
 def practice_store(given: str | None) -> Path:
-    """The path the practice college is made at: the one given, else beside the usual one."""
+    """The path the practice college is made at: the one given, else beside the usual one.
+
+    Raises: BadInput for the address of a server.
+    """
     named = given or os.environ.get("STOCKROOM_STORE")
-    return Path(named).expanduser() if named else data_folder() / PRACTICE_NAME
+    found = store_at(named) if named else data_folder() / PRACTICE_NAME
+    if isinstance(found, Server):
+        raise BadInput(
+            f"The practice store is a file, and {found} is a server.",
+            "stockroom --store practice.sqlite demo",
+        )
+    return found
 
 
 def store_to_open(given: str | None) -> StoreAt:
     """The store a command opens: one's own; failing that, the practice college."""
     own = own_store(given)
+    if own.exists():
+        return own
     practice = practice_store(given)
-    return practice if not own.exists() and practice.exists() else own
+    return practice if practice.exists() else own

@@ -6,6 +6,8 @@
     stockroom   runs a command in this process and gives back what it printed
 
 A typed test names the last one with `if TYPE_CHECKING: from conftest import Stockroom`.
+The stores are files, and typed so; with STOCKROOM_TEST_SERVER they stand on a real server,
+and only tests that open them are run: see `server_stores.py`.
 """
 
 from __future__ import annotations
@@ -23,6 +25,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, Any, Protocol
 
 import pytest
+import server_stores
 from hypothesis import settings
 
 if TYPE_CHECKING:
@@ -31,6 +34,12 @@ if TYPE_CHECKING:
 # a busy machine is slow now and then, and no test here is about time
 settings.register_profile("stockroom", deadline=None)
 settings.load_profile("stockroom")
+
+
+def pytest_collection_modifyitems(config: pytest.Config, items: list[pytest.Item]) -> None:
+    left_out = [item for item in items if not server_stores.fits(item)]
+    config.hook.pytest_deselected(items=left_out)
+    items[:] = [item for item in items if server_stores.fits(item)]
 
 
 @dataclass(frozen=True)
@@ -66,8 +75,8 @@ class Stockroom(Protocol):
 
 
 @pytest.fixture(scope="session")
-def practice(tmp_path_factory: pytest.TempPathFactory) -> Iterator[Path]:
-    """The path of the practice store, built once. Only for reading: writers take `own`."""
+def college_file(tmp_path_factory: pytest.TempPathFactory) -> Iterator[Path]:
+    """The path of the practice store in a file, built once. Ask for `practice`."""
     from stockroom.service.database import make_practice
 
     path = tmp_path_factory.mktemp("practice") / "practice.sqlite"
@@ -77,10 +86,31 @@ def practice(tmp_path_factory: pytest.TempPathFactory) -> Iterator[Path]:
     assert _digest(path) == before, "a test wrote in the shared practice store: let it take `own`"
 
 
+@pytest.fixture(scope="session")
+def practice(college_file: Path) -> Iterator[Path]:
+    """The path of the practice store, built once. Only for reading: writers take `own`."""
+    if not server_stores.ADDRESS:
+        yield college_file
+        return
+    from stockroom.store.server_moving import move
+
+    store: Any = server_stores.make(f"practice_{server_stores.own_name()}")
+    move(college_file, store, lambda file, copy: None)
+    # the server itself refuses a test that writes in it
+    server_stores.shut(store)
+    yield store
+    server_stores.drop(store)
+
+
 @pytest.fixture
-def own(practice: Path, tmp_path: Path) -> Path:
+def own(practice: Path, tmp_path: Path) -> Iterator[Path]:
     """The path of a copy of the practice store that this test alone may change."""
-    return Path(shutil.copy(practice, tmp_path / "own.sqlite"))
+    if not isinstance(practice, Path):
+        copy: Any = server_stores.make(f"own_{server_stores.own_name()}", like=practice)
+        yield copy
+        server_stores.drop(copy)
+        return
+    yield Path(shutil.copy(practice, tmp_path / "own.sqlite"))
 
 
 @pytest.fixture(scope="session")

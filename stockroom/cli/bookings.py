@@ -97,13 +97,21 @@ def shift(
     show_done(shared, done)
 
 
-def cancel(ctx: typer.Context, booking: Booking) -> None:
-    """Drop a booking: what was made for it stays as stock.
+def cancel(
+    ctx: typer.Context,
+    booking: Booking,
+    reason: Annotated[str, typer.Option("--why", help="Why it falls out, or comes back.")] = "",
+    undo: Annotated[
+        bool, typer.Option("--undo", help="Take the cancelling back: it is booked as before.")
+    ] = False,
+) -> None:
+    """Drop a booking: makes not done are withdrawn, what was made for it stays as stock.
 
-    Example: stockroom cancel K06 --by T1
+    Example: stockroom cancel K06 --why "class on a trip" --by T1
     """
     from stockroom.service import bookings
 
     shared = of(ctx)
-    done = bookings.cancel(shared.path, booking, today=shared.today, by=shared.initials)
+    change = bookings.take_back if undo else bookings.cancel
+    done = change(shared.path, booking, why=reason, today=shared.today, by=shared.initials)
     show_done(shared, done)

@@ -161,7 +161,7 @@ def spoil(
     reason: Annotated[str, typer.Option("--why", help='What is wrong: "yellow tinge".')] = "",
     on: Happened = None,
 ) -> None:
-    """A bottle is spoiled or suspected: set aside, with what was made from it.
+    """A bottle is spoiled or suspected: it is set aside, what was made from it is in doubt.
 
     Example: stockroom spoil S05 --why "yellow tinge, iron suspected" --by T2
     """

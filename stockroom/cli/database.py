@@ -32,14 +32,14 @@ def demo(ctx: typer.Context) -> None:
     if kept is not None:
         tell(f"The earlier practice store is kept as {kept}.")
     # a house of one's own is opened before the practice one, so then the place must be said
-    named = "" if Shared().path == path else f"--store {path} "
-    suggest(f"stockroom {named}why K15")
+    suggest(shared, "stockroom why K15", at=None if Shared().path == path else path)
 
 
 def new(
     ctx: typer.Context,
     tables: Annotated[
-        Path | None, typer.Option("--from", metavar="FOLDER", help="CSV tables to fill it with.")
+        Path | None,
+        typer.Option("--from", metavar="FOLDER", help="CSV tables, or what was handed out."),
     ] = None,
     starter: Annotated[
         bool, typer.Option("--starter", help="Fill it with common substances and stock lines.")

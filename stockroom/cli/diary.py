@@ -2,20 +2,28 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Annotated
 
 import typer
 
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Bottle
+from stockroom.cli.values import day_or_none
 
 if TYPE_CHECKING:
     from stockroom.reports.diary_text import DiaryRow
     from stockroom.service.diary import Told
 
 
-def diary(ctx: typer.Context, bottle: Bottle) -> None:
+def diary(
+    ctx: typer.Context,
+    bottle: Bottle,
+    known_on: Annotated[
+        str | None,
+        typer.Option(metavar="DATE", help="Only what had been entered by the end of that day."),
+    ] = None,
+) -> None:
     """Every entry of a bottle with its number, as put-right asks for it.
 
     Example: stockroom diary B06
@@ -24,9 +32,9 @@ def diary(ctx: typer.Context, bottle: Bottle) -> None:
     from stockroom.service.diary import story
 
     shared = of(ctx)
-    told = story(shared.path, bottle)
+    told = story(shared.path, bottle, day_or_none(known_on, "--known-on"))
     number, item = told.diary.bottle, told.diary.line
-    rows = [_row(entry) for entry in told.diary.entries]
+    rows = [row_of(entry) for entry in told.diary.entries]
     show(
         shared,
         lambda: diary_text(number, item, rows, width(), practice=told.practice),
@@ -34,7 +42,8 @@ def diary(ctx: typer.Context, bottle: Bottle) -> None:
     )
 
 
-def _row(told: Told) -> DiaryRow:
+def row_of(told: Told) -> DiaryRow:
+    """A row of the report for an entry as the store tells it."""
     from stockroom.reports.diary_text import DiaryRow
 
     return DiaryRow(
@@ -50,4 +59,5 @@ def _row(told: Told) -> DiaryRow:
         booking=told.booking,
         puts_right=told.puts_right,
         undone_by=told.undone_by,
+        about=told.about,
     )

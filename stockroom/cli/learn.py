@@ -54,7 +54,7 @@ def learn(
         return
     if name is None:
         raise BadInput("Learn of what? Nothing was named.", "stockroom learn S02, or learn --spare")
-    today, by, practice = shared.today, shared.initials, is_practice(shared.path)
+    today, by, practice = shared.today, shared.given_initials, is_practice(shared.path)
     found = service.learn(
         shared.path,
         name,
@@ -64,7 +64,7 @@ def learn(
         as_at=today,
     )
     if use:
-        done = service.use(shared.path, found, why=reason, today=today, by=by)
+        done = service.use(shared.path, found, why=reason, today=today, by=shared.initials)
         show_done(shared, done)
         return
     show(

@@ -110,7 +110,7 @@ def _take_back(shared: Shared, place: str, first: str | None, last: str | None, 
         )
     today, by = shared.today, shared.initials
     _show(shared, taken_back(shared.path, place, start, end, why=why, today=today, by=by))
-    suggest(f"stockroom logger {place}")
+    suggest(shared, f"stockroom logger {place}")
 
 
 def _bring_in(shared: Shared, place: str, file: Path, meant: Meant, energy: float | None) -> None:
@@ -126,7 +126,7 @@ def _bring_in(shared: Shared, place: str, file: Path, meant: Meant, energy: floa
         by=shared.initials,
     )
     _show(shared, done)
-    suggest(f"stockroom logger {place}")
+    suggest(shared, f"stockroom logger {place}")
 
 
 def _show(shared: Shared, warmth: Warmth) -> None:

@@ -3,15 +3,18 @@
 from __future__ import annotations
 
 import json
+import shlex
 import shutil
 import sys
 from collections.abc import Callable
 from typing import TYPE_CHECKING, Any
 
 from stockroom.cli.shared import Shared
+from stockroom.settings import store_at
 
 if TYPE_CHECKING:
     from stockroom.service.answers import Done
+    from stockroom.settings import StoreAt
 
 NARROW, USUAL, WIDE = 60, 80, 120
 
@@ -26,16 +29,32 @@ def show(shared: Shared, text: Callable[[], str], data: Callable[[], dict[str, A
     print(json.dumps(data(), ensure_ascii=False, indent=2) if shared.json else text())
 
 
-def show_done(shared: Shared, done: Done) -> None:
-    """Print what was done and, on standard error, the command that usually follows."""
+def show_done(shared: Shared, done: Done, *, at: StoreAt | None = None) -> None:
+    """Print what was done and, on standard error, the command that usually follows.
+
+    `at` is the store that command is for, where it is not the one of this command.
+    """
     show(shared, lambda: _done_text(done), lambda: _done_json(done))
-    suggest(done.next)
+    suggest(shared, done.next, at=at)
 
 
-def suggest(command: str) -> None:
-    """Say on standard error which command to try next; nothing for an empty one."""
+def suggest(shared: Shared, command: str, *, at: StoreAt | None = None) -> None:
+    """Say on standard error which command to try next; nothing for an empty one.
+
+    It opens the store this command was about: the one given with --store, or `at`, where the
+    usual place holds another. A password in a server's address is left out.
+    """
     if command:
-        tell(f"next: {command}")
+        tell(f"next: {_opening(shared, command, at)}")
+
+
+def _opening(shared: Shared, command: str, at: StoreAt | None) -> str:
+    place = at or (store_at(shared.store) if shared.store else None)
+    program, _, rest = command.partition(" ")
+    # a command that names its own store is about that one
+    if place is None or rest.startswith("--store "):
+        return command
+    return f"{program} --store {shlex.quote(str(place))} {rest}"
 
 
 def tell(line: str) -> None:

@@ -8,8 +8,9 @@ from __future__ import annotations
 
 import os
 import re
+import sys
 from collections.abc import Iterator, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from datetime import date
 
 import typer
@@ -28,6 +29,7 @@ ANYWHERE = (
 
 # the options that may be given again, by command; of any other the second would go unseen
 SEVERAL = {
+    "bring-in": frozenset({"--column", "--answer"}),
     "fades": frozenset({"--below"}),
     "make": frozenset({"--from"}),
     "titrate": frozenset({"--dilution"}),
@@ -46,6 +48,8 @@ class Shared:
     as_at: str | None = None
     by: str | None = None
     json: bool = False
+    asked: list[str] = field(default_factory=list, repr=False, compare=False)
+    """The initials asked for at the terminal, once for the whole command."""
 
     @property
     def path(self) -> StoreAt:
@@ -55,9 +59,24 @@ class Shared:
         return store_to_open(self.store)
 
     @property
-    def initials(self) -> str:
-        """Whose hand this is: --by, else STOCKROOM_BY; empty when neither says."""
+    def given_initials(self) -> str:
+        """The initials given with --by, else STOCKROOM_BY; empty when neither says."""
         return self.by if self.by is not None else os.environ.get("STOCKROOM_BY", "")
+
+    @property
+    def initials(self) -> str:
+        """Whose hand this is: the initials given, else asked once at a terminal.
+
+        Empty when nobody says, which is for the use case to refuse.
+        """
+        given = self.given_initials
+        if given.strip() or not at_a_terminal():
+            return given
+        if not self.asked:
+            # on standard error: what is printed may be going into a file
+            print("Whose initials? ", end="", file=sys.stderr, flush=True)
+            self.asked.append(sys.stdin.readline().strip())
+        return self.asked[0]
 
     @property
     def given_day(self) -> date | None:
@@ -70,6 +89,11 @@ class Shared:
         from stockroom.service.database import day_for
 
         return day_for(self.path, self.given_day)
+
+
+def at_a_terminal() -> bool:
+    """Whether somebody sits there who can be asked: no script is ever kept waiting."""
+    return all(stream is not None and stream.isatty() for stream in (sys.stdin, sys.stderr))
 
 
 def of(ctx: typer.Context) -> Shared:

@@ -8,7 +8,15 @@ import typer
 
 from stockroom.cli.printing import show_done
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import amount_of, day_or_none, whole
+from stockroom.cli.values import (
+    amount_of,
+    amount_or_none,
+    day_or_none,
+    drawn_of,
+    fraction_or_none,
+    whole,
+)
+from stockroom.errors import BadInput
 
 if TYPE_CHECKING:
     from datetime import date
@@ -19,6 +27,10 @@ AmountText = Annotated[
 ]
 Happened = Annotated[
     str | None, typer.Option("--on", metavar="DATE", help="The day it happened; else today.")
+]
+Tare = Annotated[
+    str | None,
+    typer.Option(metavar="MASS", help="The empty bottle with its cap; kept with its number."),
 ]
 
 
@@ -38,8 +50,13 @@ def when(shared: Shared, on: str | None) -> When:
 def arrive(
     ctx: typer.Context,
     line: Annotated[str, typer.Argument(metavar="LINE", help="What it is, by any of its names.")],
-    size: AmountText,
-    place: Annotated[str, typer.Option(metavar="PLACE", help="Where it is put away.")],
+    size: Annotated[
+        str | None,
+        typer.Argument(metavar="AMOUNT", help='What one holds: "500 g"; else as last time.'),
+    ] = None,
+    place: Annotated[
+        str | None, typer.Option(metavar="PLACE", help="Where it is put away; else as last time.")
+    ] = None,
     printed: Annotated[
         str | None,
         typer.Option(metavar="DATE|none", help='As printed on it: 2029-01, or "none".'),
@@ -51,11 +68,18 @@ def arrive(
     cap: Annotated[
         str, typer.Option(metavar="vented|tight", help="Its cap; not looked at if left out.")
     ] = "",
+    lot: Annotated[
+        str, typer.Option(metavar="TEXT", help="The maker's lot, if there is one.")
+    ] = "",
+    assay: Annotated[
+        str | None, typer.Option(metavar="PERCENT", help="Of this very bottle: 99.5.")
+    ] = None,
+    tare: Tare = None,
     note: Annotated[str, typer.Option(help="Anything written on it.")] = "",
     order: Annotated[str, typer.Option(metavar="NUMBER", help="The order it came of: P01.")] = "",
     on: Happened = None,
 ) -> None:
-    """A bottle arrived: give it a number and put it away.
+    """A bottle arrived: give it a number and put it away, as last time if it came before.
 
     Example: stockroom arrive "lithium chloride" "100 g" --printed 2029-01 --place A2 --by T1
     """
@@ -65,13 +89,14 @@ def arrive(
     done = stock.arrive(
         shared.path,
         line,
-        amount_of(size),
+        None if size is None else amount_of(size),
         printed=printed,
         place=place,
         count=whole(count, "--count"),
         opened=None if opened == "no" else day_or_none(opened, "--opened"),
         cap=cap,
         note=note,
+        label=stock.Label(lot, fraction_or_none(assay, "--assay"), amount_or_none(tare)),
         order=order,
         **when(shared, on),
     )
@@ -121,21 +146,31 @@ def make(
 def draw(
     ctx: typer.Context,
     bottle: Bottle,
-    amount: AmountText,
+    amount: Annotated[
+        str | None,
+        typer.Argument(
+            metavar="AMOUNT", help='"100 cm3", "20 g", or what is left: "a third left".'
+        ),
+    ] = None,
+    gross: Annotated[
+        str | None,
+        typer.Option(metavar="MASS", help="Instead: what the bottle weighs now, with its cap."),
+    ] = None,
+    tare: Tare = None,
     booking: Annotated[
         str | None, typer.Option("--for", metavar="BOOKING", help="The booking it is for.")
     ] = None,
     on: Happened = None,
 ) -> None:
-    """Some was taken out of a bottle.
+    """Some was taken out of a bottle: how much, how much is left by eye, or what it weighs.
 
     Example: stockroom draw S13 100cm3 --for K16 --by T1
     """
     from stockroom.service import stock
 
     shared = of(ctx)
-    done = stock.draw(shared.path, bottle, amount_of(amount), booking=booking, **when(shared, on))
-    show_done(shared, done)
+    said = drawn_of(bottle, amount, gross, tare)
+    show_done(shared, stock.draw(shared.path, bottle, said, booking=booking, **when(shared, on)))
 
 
 def count(
@@ -184,16 +219,27 @@ def lend(
     bottle: Bottle,
     amount: AmountText,
     to: Annotated[str, typer.Option(metavar="WHOM", help="Who has it now.")] = "",
+    back: Annotated[bool, typer.Option("--back", help="It came back.")] = False,
+    whom: Annotated[
+        str, typer.Option("--from", metavar="WHOM", help="With --back: who had it.")
+    ] = "",
     on: Happened = None,
 ) -> None:
-    """Some was lent: taken off what is left, never counted as used.
+    """Some was lent, or came back: taken off what is left, never counted as used.
 
     Example: stockroom lend B32 "10 g" --to "the physics store" --by T1
     """
     from stockroom.service import stock
 
+    if (back and to) or (whom and not back):
+        raise BadInput(f"{bottle}: lent, or back?", "Lent: --to WHOM. Back: --back --from WHOM.")
     shared = of(ctx)
-    show_done(shared, stock.lend(shared.path, bottle, amount_of(amount), to=to, **when(shared, on)))
+    held, happened = amount_of(amount), when(shared, on)
+    if back:
+        done = stock.lend_back(shared.path, bottle, held, whom=whom, **happened)
+    else:
+        done = stock.lend(shared.path, bottle, held, to=to, **happened)
+    show_done(shared, done)
 
 
 def move(
@@ -229,25 +275,3 @@ def discard(
 
     shared = of(ctx)
     show_done(shared, stock.discard(shared.path, bottle, how=how, why=reason, **when(shared, on)))
-
-
-def put_right(
-    ctx: typer.Context,
-    entry: Annotated[
-        str,
-        typer.Argument(
-            metavar="ENTRY", help="The number of the entry; `stockroom diary BOTTLE` shows it."
-        ),
-    ],
-    reason: Annotated[str, typer.Option("--why", help="What was meant.")] = "",
-    on: Happened = None,
-) -> None:
-    """An entry was wrong: undo it. Both stay to be seen, with who and why.
-
-    Example: stockroom put-right 123 --why "meant 50 g" --by T2
-    """
-    from stockroom.service import stock
-
-    shared = of(ctx)
-    number = whole(entry, "ENTRY")
-    show_done(shared, stock.put_right(shared.path, number, reason, **when(shared, on)))

@@ -132,7 +132,7 @@ def _record(shared: Shared, bottle: str, found: Titrated, sure: bool, on: str | 
         lambda: report.written_text(written, width()),
         lambda: report.written_json(written),
     )
-    suggest(written.done.next)
+    suggest(shared, written.done.next)
 
 
 def _refuse_unwritten(sure: bool, on: str | None) -> None:

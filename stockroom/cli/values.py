@@ -10,6 +10,8 @@ from stockroom.errors import BadInput
 
 if TYPE_CHECKING:
     from stockroom.measure.amounts import Amount
+    from stockroom.measure.by_eye import ByEye
+    from stockroom.service.estimates import Weighed
 
 
 def day_or_none(text: str | None, where: str) -> date | None:
@@ -35,6 +37,45 @@ def amount_of(text: str) -> Amount:
     from stockroom.measure.parsing import parse_amount
 
     return parse_amount(text)
+
+
+def amount_or_none(text: str | None) -> Amount | None:
+    """An amount with its unit, or None. Raises: BadAmount."""
+    return None if text is None else amount_of(text)
+
+
+def drawn_of(
+    bottle: str, amount: str | None, gross: str | None, tare: str | None
+) -> Amount | ByEye | Weighed:
+    """What was drawn from a bottle: an amount, an estimate, or the bottle as it weighs now.
+
+    Raises: BadInput unless one of them is said, and only one; BadAmount.
+    """
+    from stockroom.measure.by_eye import parse_drawn
+    from stockroom.service.estimates import Weighed
+
+    if (amount is None) == (gross is None):
+        both = "" if amount is None else f" {amount} drawn, and {gross} gross:"
+        raise BadInput(
+            f"{bottle}:{both} how much was drawn?",
+            'Give an AMOUNT ("100 cm3", "a third left"), or --gross "812 g".',
+        )
+    if gross is not None:
+        return Weighed(amount_of(gross), amount_or_none(tare))
+    if tare is not None:
+        raise BadInput(f"{bottle}: a tare of {tare}, and no gross.", 'Add --gross "812 g".')
+    return parse_drawn(amount or "")
+
+
+def fraction_or_none(text: str | None, where: str) -> float | None:
+    """An assay typed after `where`, "99.5 %" as 0.995, over 0 to 100 %; or None.
+
+    Raises: BadInput.
+    """
+    value = number_or_none(text, where)
+    if value is not None and value > 100:
+        raise BadInput(f"{where} {text!r} is over 100 %.", "Read it off the label again.")
+    return None if value is None else value / 100
 
 
 def whole(text: str, where: str) -> int:

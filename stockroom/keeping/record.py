@@ -52,13 +52,37 @@ class Stay:
 
 
 @dataclass(frozen=True, slots=True)
+class Blend:
+    """The strength of bottles mixed on a day, worked out from theirs, in the line's unit.
+
+    No check, so it dates nothing: what is expected starts from it until one is made.
+    """
+
+    on: date
+    strength: float
+
+
+@dataclass(frozen=True, slots=True)
+class Bound:
+    """A last good day that no check moves, and what set it, in words.
+
+    What was poured never outlasts the bottle it came from; its own label may say less.
+    """
+
+    until: date
+    because: str
+    safety: bool = False
+
+
+@dataclass(frozen=True, slots=True)
 class Record:
     """The dates, checks and stays of one bottle; None means nobody wrote it down.
 
     `nominal` is the label's strength in the line's unit (mol/dm³ or g/dm³).
     `opened_guessed` marks an opened bottle whose day was not written: it counts
     as opened on the day it was received, the earliest it can have been. `caution` is
-    there in a plan on the safe side only.
+    there in a plan on the safe side only. `blend` and `bound` are there for what was
+    poured from other bottles; `from_undated` where one of those had no date that day.
     """
 
     received: date | None = None
@@ -74,16 +98,23 @@ class Record:
     gone: bool = False
     ready_on: date | None = None
     caution: Caution | None = None
+    blend: Blend | None = None
+    bound: Bound | None = None
+    from_undated: bool = False
 
     @property
     def undated(self) -> bool:
-        """True when neither received, made nor looked at: nothing to count a life from."""
+        """True when no day of it is known, nor printed: nothing to count a life from."""
         return self.undated_on(date.max)
 
     def undated_on(self, day: date) -> bool:
         """The same, as far as anybody knew on that day."""
-        # opened is left out: it says when it was used, not how old it was by then
-        return not (self.received or self.made or self.first_passed(day))
+        # a date printed on it or the day it was opened dates it, though nobody wrote when it came
+        printed = self.printed is not None and self.printed.day is not None
+        known = self.received or self.made or self.opened or printed
+        # pouring it dates nothing, whatever the new bottle or the other part says
+        dated = known and not self.from_undated
+        return not (dated or self.first_passed(day))
 
     def first_passed(self, until: date) -> date | None:
         """The day of the first passed check up to and including `until`, if any."""

@@ -137,11 +137,10 @@ def strengths_on(record: Record, rules: tuple[Rule, ...], on: date) -> Strengths
     if record.caution is not None:
         return _cautious(record, record.caution, rules, on)
     found = last_check(record, on, CheckKind.FOUND)
-    # a result is carried forward even when old: it still beats a printed label
-    start = found.strength if found else record.nominal
+    start, since = _start(record, found)
     if start is None:
         return Strengths(record.nominal, None, found.on if found else None, None)
-    steps = list(_steps(record, rules, on, start, found.on if found else None))
+    steps = list(_steps(record, rules, on, start, since))
     expected = _carried(start, steps)
     if found is None:
         return Strengths(record.nominal, None, None, expected)
@@ -149,14 +148,24 @@ def strengths_on(record: Record, rules: tuple[Rule, ...], on: date) -> Strengths
     return _ranged(known, start, steps)
 
 
+def _start(record: Record, found: Check | None) -> tuple[float | None, date | None]:
+    """The strength that is carried forward, and the day it was that; None from the beginning."""
+    # a result is carried forward even when old: it still beats a printed label
+    if found is not None:
+        return found.strength, found.on
+    if record.blend is not None:
+        return record.blend.strength, record.blend.on
+    return record.nominal, None
+
+
 def _cautious(record: Record, caution: Caution, rules: tuple[Rule, ...], on: date) -> Strengths:
     """As expected, or at a limit of its caution where one is lower: never above the usual."""
     known = strengths_on(replace(record, caution=None), rules, on)
-    start = known.nominal if known.found is None else known.found
+    start, since = _start(record, last_check(record, on, CheckKind.FOUND))
     if start is None or known.expected is None:
         return known
     off = ONE_SIDED_95 * (known.uncertainty or 0.0) if caution.doubted else 0.0
-    steps = _steps(record, caution.carried_by or rules, on, start, known.found_on)
+    steps = _steps(record, caution.carried_by or rules, on, start, since)
     low = _carried(max(0.0, start - off), list(steps))
     limits = caution.least(_age_for(record, caution, on))
     return replace(known, expected=min(known.expected, low, *limits), usual=known.expected)
@@ -186,7 +195,7 @@ def _carried(start: float, steps: list[tuple[Kinetics, float]]) -> float:
 
 
 def _steps(
-    record: Record, rules: tuple[Rule, ...], on: date, start: float, found_on: date | None
+    record: Record, rules: tuple[Rule, ...], on: date, start: float, known_on: date | None
 ) -> Iterator[tuple[Kinetics, float]]:
     """Stay by stay the law and its days, each under the rule for its own place.
 
@@ -200,7 +209,7 @@ def _steps(
         if rule is None or rule.law is None or since is None:
             continue
         law = kinetics(rule.law, made_as)
-        begun = max(stretch.first, since, found_on or since)
+        begun = max(stretch.first, since, known_on or since)
         yield law, stretch.own_days(law.response, begun, stretch.last)
 
 

@@ -147,6 +147,8 @@ def limits_of(
     place = temperature_on(record, on)
     # the maker's date counts beside the house's own and is not moved by it
     limits = [_printed(record)] if record.printed and record.printed.day else []
+    if record.bound is not None:
+        limits.append(Limit(record.bound.until, record.bound.because, record.bound.safety))
     for rule in rules:
         asked = rule.purpose is Purpose.ANY or rule.purpose is purpose
         dated = _DATED.get(rule.kind)

@@ -29,6 +29,14 @@ BASE_UNIT: dict[Kind, str] = {Kind.MASS: "g", Kind.VOLUME: "cm3", Kind.ITEMS: "i
 PER_UNIT: dict[Kind, int] = {Kind.MASS: 1_000_000, Kind.VOLUME: 1_000, Kind.ITEMS: 1}
 """Micrograms in a gram, microlitres in a cm³, and items, which do not come in parts."""
 
+FULLEST_PERCENT = 105
+"""More than this part of a bottle's size in it is a slip. Common practice, no source."""
+
+
+def over_full(size: int, held: int) -> bool:
+    """Whether `held` is past that part of the size, both in micro-units; size 0 is unknown."""
+    return 0 < size * FULLEST_PERCENT < held * 100
+
 
 @total_ordering
 @dataclass(frozen=True, slots=True)

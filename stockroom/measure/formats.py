@@ -27,6 +27,13 @@ def format_amount(amount: Amount) -> str:
     return f"{_plain(exact)} {unit_mark(unit)}"
 
 
+def format_about(amount: Amount) -> str:
+    """An amount judged by eye: "about 167 cm³", no more than three figures after "about"."""
+    # whole things are counted even by eye
+    unit = "item" if amount.kind is Kind.ITEMS and amount.micro == 1 else amount.unit
+    return f"about {format_number(amount.number, _FIGURES - 1)} {unit_mark(unit)}"
+
+
 def format_number(number: float, figures: int = _FIGURES) -> str:
     """A number to so many significant figures, keeping every digit before the point.
 

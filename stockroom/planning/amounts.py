@@ -7,8 +7,8 @@ from functools import lru_cache
 
 from stockroom.errors import MissingFigure, NotAllowed
 from stockroom.measure.amounts import Amount, Kind
-from stockroom.measure.formats import format_amount, format_number, format_strength
-from stockroom.planning.facts import Facts, Form, Ingredient, Line
+from stockroom.measure.formats import format_about, format_amount, format_number, format_strength
+from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line
 
 UL_PER_DM3 = 1_000_000
 
@@ -21,6 +21,14 @@ _WRITTEN = re.compile(r"([0-9.]+) ?([^0-9 ].*)")
 def say(micro: int, kind: Kind) -> str:
     """An amount in words: 264000 µL is "264 cm³"."""
     return format_amount(Amount(kind, micro))
+
+
+def say_left(bottle: Bottle, line: Line) -> str:
+    """What is left in a bottle in words, with "about" while it was judged by eye."""
+    # an empty bottle is seen to be empty
+    if bottle.about and bottle.left:
+        return format_about(Amount(line.kind, bottle.left))
+    return say(bottle.left, line.kind)
 
 
 def solute_in(line: Line, volume_ul: int) -> float:
@@ -39,12 +47,13 @@ def solute_in(line: Line, volume_ul: int) -> float:
 def take_for(line: Line, strength: float | None, solute: float) -> int:
     """Micro-units of `line` that hold `solute` (mmol or mg), at `strength` in its unit.
 
-    A solid uses its own formula and assay; a liquid or solution its strength on
-    the day (nominal when None). Raises MissingFigure when neither is known.
+    A solid uses its own formula and assay (`strength` is then `per_gram` of one bottle); a
+    liquid or solution its strength on the day (nominal when None). Raises MissingFigure when
+    neither is known.
     """
     # to the nearest and not up: a class that wants spare has it in its need already
     if line.form is Form.SOLID and line.solute_per_gram:
-        return round(solute / line.solute_per_gram * 1_000_000)
+        return round(solute / (strength or line.solute_per_gram) * 1_000_000)
     held = line.strength if strength is None else strength
     if not held:
         raise MissingFigure(
@@ -52,6 +61,13 @@ def take_for(line: Line, strength: float | None, solute: float) -> int:
             "Read it off the label, or titrate it and enter what you find.",
         )
     return round(solute / held * 1000.0)
+
+
+def per_gram(line: Line, bottle: Bottle) -> float | None:
+    """Solute in a gram of one bottle of a solid, mmol or mg, by its own assay; None without one."""
+    if bottle.assay is None or not line.solute_per_gram:
+        return None
+    return line.solute_per_gram * bottle.assay / line.assay
 
 
 def draw_for(

@@ -43,7 +43,9 @@ def witnesses(bottles: Iterable[Bottle], topped_up: Mapping[str, date]) -> dict[
     # of two that fall out on one day the first is named, and the rows must not choose it
     for bottle in sorted(bottles, key=lambda bottle: natural(bottle.number)):
         if not bottle.record.set_aside:
-            witness = Witness(bottle.number, bottle.record, topped_up.get(bottle.number))
+            # what was found before it was poured off taught by the bottle it came from
+            own = replace(bottle.record, checks=bottle.record.checks[bottle.inherited :])
+            witness = Witness(bottle.number, own, topped_up.get(bottle.number))
             found.setdefault(bottle.line, []).append(witness)
     return found
 

@@ -192,15 +192,16 @@ def _ready_day(facts: Facts, batch: Batch) -> date:
 
 def _source(source: Source) -> Draw:
     kind = source.line.kind
+    strength = None if source.line.form is Form.SOLID else source.strength
     if source.bottle:
         return Draw(
             source.amount, kind, bottle=source.bottle, line=source.line.key, item=source.line.item,
-            strength=source.strength,
+            strength=strength,
         )  # fmt: skip
     made = source.batch.id if source.batch else ""
     return Draw(
         source.amount, kind, item=source.line.key, line=source.line.key, make=made,
-        strength=source.strength,
+        strength=strength,
     )  # fmt: skip
 
 

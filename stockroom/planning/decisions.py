@@ -291,13 +291,22 @@ class Level:
 
 
 @dataclass(frozen=True, slots=True)
+class LastBackup:
+    """The last good backup a store knows of: its day, None for never, and where it is."""
+
+    on: date | None
+    place: str = ""
+
+
+@dataclass(frozen=True, slots=True)
 class Plan:
     """The whole answer for a period, as at one day.
 
     `lower_limits` is there when it was made on the safe side, on lower limits of strength.
     `kept_as` is the number on its printed copy, "" for one not kept; `changed_since` the number
     of the plan kept last, and how many changes there are since, where there are any;
-    `kept_unread` is its number where it cannot be read.
+    `kept_unread` is its number where it cannot be read. `backup` is the store's last good one,
+    None where nobody asks for it.
     """
 
     as_at: date
@@ -309,6 +318,7 @@ class Plan:
     past: tuple[PastBottle, ...] = ()
     usage: tuple[Use, ...] = ()
     drawn: tuple[Use, ...] = ()
+    written_off: tuple[Use, ...] = ()
     orders: tuple[Order, ...] = ()
     short: tuple[Short, ...] = ()
     checks: tuple[CheckToDo, ...] = ()
@@ -325,3 +335,4 @@ class Plan:
     kept_as: str = ""
     changed_since: tuple[str, int] | None = None
     kept_unread: str = ""
+    backup: LastBackup | None = None

@@ -4,7 +4,8 @@ Amounts are whole micro-units (µg, µL, micro-items) as in the store; strengths
 are in the line's own unit, mol/dm³ for anything with a formula and g/dm³
 otherwise; days are dates; times are minutes after midnight. `Facts` holds all
 of it. Lines, methods, recipes and bottles refer to each other by key text. What is
-settled for the house and what stands in it is in `house_facts.py`, and is handed on here.
+settled for the house and what stands in it is in `house_facts.py`, what the entries say left
+the bottles in `entry_facts.py`, and both are handed on here.
 """
 
 from __future__ import annotations
@@ -23,6 +24,8 @@ from stockroom.measure.workdays import Calendar
 # the store may see this module and `decisions` only, so the house's values are handed on
 from stockroom.planning.changing.happened import Happened as Happened
 from stockroom.planning.changing.happened import HappenedKind as HappenedKind
+from stockroom.planning.entry_facts import Drawn as Drawn
+from stockroom.planning.entry_facts import WrittenOff as WrittenOff
 from stockroom.planning.house_facts import EXACT as EXACT
 from stockroom.planning.house_facts import TOLERANCE as TOLERANCE
 from stockroom.planning.house_facts import Balance as Balance
@@ -237,6 +240,9 @@ class Bottle:
     the bookings it was made for: what they get was measured in. `remark` is
     what somebody wrote on it. `cap` is "tight" or "vented" where written. `known_by` says
     how a strength nobody found of it is known: "by dilution of S01, found 2026-12-04".
+    `about` is True while `left` was judged by eye and not counted since. `lot` and `assay` (a
+    fraction) are this bottle's own, where its label or certificate gives them. The first
+    `inherited` of its checks were made of the bottle it was poured from.
     """
 
     number: str
@@ -251,17 +257,10 @@ class Bottle:
     lineage: tuple[str, ...] = ()
     meant_for: tuple[str, ...] = ()
     known_by: str = ""
-
-
-@dataclass(frozen=True, slots=True)
-class Drawn:
-    """What the ledger says was really drawn from a bottle, for consumption so far."""
-
-    bottle: str
-    line: str
-    on: date
-    amount: int
-    booking: str = ""
+    about: bool = False
+    lot: str = ""
+    assay: float | None = None
+    inherited: int = 0
 
 
 @dataclass(frozen=True, slots=True)
@@ -290,6 +289,7 @@ class Facts:
     departments: tuple[Department, ...] = ()
     places: tuple[Place, ...] = ()
     drawn: tuple[Drawn, ...] = ()
+    written_off: tuple[WrittenOff, ...] = ()
     horizon: date | None = None
     lower_limits: LowerLimits | None = None
     usual: Mapping[str, tuple[date, ...]] = field(default_factory=dict)

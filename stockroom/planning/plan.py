@@ -11,7 +11,7 @@ from stockroom.planning.buying.levels import level_queries, levels
 from stockroom.planning.buying.money import budgets
 from stockroom.planning.buying.on_way import overdue_guesses, overdue_notes, placed_for
 from stockroom.planning.buying.orders import coming, orders
-from stockroom.planning.buying.usage import drawn_so_far, usage
+from stockroom.planning.buying.usage import drawn_so_far, usage, written_off
 from stockroom.planning.buying.year_before import differences, with_year_before
 from stockroom.planning.checking.checks import checks
 from stockroom.planning.checking.worth import Replanned
@@ -61,6 +61,7 @@ def whole_plan(facts: Facts, *, past_day: date | None = None) -> Plan:
         past=tuple(past_on(facts, netted.wants, past_day or facts.as_at)),
         usage=tuple(used),
         drawn=tuple(drawn_so_far(facts, _in_period(facts))),
+        written_off=tuple(written_off(facts)),
         orders=tuple(buying),
         short=tuple(shorts(netted.wants)),
         checks=tuple(to_check),

@@ -15,6 +15,7 @@ from stockroom.planning.choosing.shelf import Shelf
 from stockroom.planning.decisions import PastBottle
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
 from stockroom.planning.numbers import natural
+from stockroom.planning.on_shelf import set_aside_above
 from stockroom.planning.wants import Settled, Want
 from stockroom.safety.peroxide_formers import class_of
 
@@ -151,6 +152,8 @@ def _about(facts: Facts, shelf: Shelf, bottle: Bottle, closest: Closeness) -> It
     last = max(promise.on for promise in shelf.promises[bottle.number])
     judged = shelf.verdict_planned(bottle.number, last)
     yield from _two_readings(bottle)
+    if bottle.about:
+        yield "what is left was judged by eye, and not counted since"
     if bottle.record.opened_guessed:
         yield "opened, day not written: counted from the day it was received"
     if judged.condition is Condition.WATCH and closest is not Closeness.EXACT:
@@ -223,10 +226,7 @@ def _parent_overdue(facts: Facts, bottle: Bottle) -> str:
 
 def parent_set_aside(facts: Facts, bottle: Bottle) -> str:
     """Which bottle it was made from has been set aside since, and why; "" if none."""
-    for parent in _parents(facts, bottle):
-        if parent.record.set_aside:
-            return f"made from {parent.number}, since set aside ({parent.record.set_aside})"
-    return ""
+    return set_aside_above(bottle, facts.bottles)
 
 
 def _spelt(day: date) -> str:

@@ -5,12 +5,16 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date
+from functools import lru_cache
 from typing import Any
 
 from stockroom.measure.amounts import Amount
-from stockroom.measure.formats import format_amount
+from stockroom.measure.formats import format_about, format_amount
 from stockroom.reports.sheet import PRACTICE, columns
 from stockroom.reports.words import raised
+
+# a ledger draws the same amounts again and again; bounded, since it may be longer than memory
+_written = lru_cache(maxsize=8192)(format_amount)
 
 _HEADING = ("entry", "happened", "entered", "by", "what", "amount", "left", "")
 
@@ -35,6 +39,7 @@ class DiaryRow:
     booking: str = ""
     puts_right: int | None = None
     undone_by: int | None = None
+    about: bool = False
 
 
 def diary_text(
@@ -46,17 +51,22 @@ def diary_text(
     return "\n".join([PRACTICE, *lines] if practice else lines)
 
 
+def entry_line(told: DiaryRow) -> str:
+    """One entry on one line of its own, however long."""
+    return "  ".join(cell for cell in _cells(told) if cell)
+
+
 def _cells(told: DiaryRow) -> tuple[str, ...]:
     # a plus sign sets what came in apart from what was counted to be there
-    change = f"{'+' if told.change.micro > 0 else ''}{format_amount(told.change)}"
+    sign = "+" if told.change.micro > 0 else ""
     return (
         str(told.entry),
         told.happened.isoformat(),
         told.entered.isoformat(),
         told.by,
         f"{told.kind} (put right by {told.undone_by})" if told.undone_by else told.kind,
-        change if told.change.micro else "",
-        format_amount(told.left),
+        f"{sign}{_written(told.change)}" if told.change.micro else "",
+        format_about(told.left) if told.about and told.left.micro else _written(told.left),
         _said(told),
     )
 
@@ -90,6 +100,7 @@ def _entry(told: DiaryRow) -> dict[str, Any]:
         "amount": told.change.number,
         "left": told.left.number,
         "unit": told.left.unit,
+        "about": told.about,
         "place": told.place,
         "booking": told.booking,
         "said": told.said,

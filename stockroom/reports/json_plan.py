@@ -45,6 +45,7 @@ def plan_json(plan: Plan) -> Data:
             "past": [_past(bottle) for bottle in plan.past],
             "usage": [_use(use) for use in plan.usage],
             "drawn": [_use(use) for use in plan.drawn],
+            "written_off": [_use(use) for use in plan.written_off],
             "orders": [_order(order) for order in plan.orders],
             "short": [_short(short) for short in plan.short],
             "checks": [check_data(check) for check in plan.checks],
@@ -69,10 +70,11 @@ def past_json(plan: Plan, on: date) -> Data:
 
 
 def usage_json(plan: Plan) -> Data:
-    """What the term uses (`usage`), and what the entries say was drawn so far (`drawn`)."""
+    """What the term uses (`usage`), what was drawn so far, and what was spilled or lent."""
     return _top(plan) | {
         "usage": [_use(use) for use in plan.usage],
         "drawn": [_use(use) for use in plan.drawn],
+        "written_off": [_use(use) for use in plan.written_off],
         "differences": list(plan.differences),
     }
 
@@ -131,6 +133,7 @@ def _top(plan: Plan) -> Data:
         "kept_as": plan.kept_as or None,
         "changed_since": _changed_since(plan),
         "kept_unread": plan.kept_unread or None,
+        "backup": _backup(plan),
     } | _lower_limits(plan.lower_limits)
 
 
@@ -140,6 +143,18 @@ def _changed_since(plan: Plan) -> Data | None:
         return None
     number, count = plan.changed_since
     return {"plan": number, "changes": count}
+
+
+def _backup(plan: Plan) -> Data | None:
+    """The last good backup: `on` None where there is none yet; None where nobody asks for it."""
+    if plan.backup is None:
+        return None
+    on = plan.backup.on
+    return {
+        "on": on.isoformat() if on else None,
+        "days": (plan.as_at - on).days if on else None,
+        "place": plan.backup.place or None,
+    }
 
 
 def _lower_limits(limits: LowerLimits | None) -> Data:

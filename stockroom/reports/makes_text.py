@@ -6,7 +6,7 @@ from datetime import date
 
 from stockroom.measure.amounts import Kind
 from stockroom.planning.decisions import Make, Plan
-from stockroom.reports.sheet import foot, guesses, head, page, section, spanning, wrap
+from stockroom.reports.sheet import backup_age, foot, guesses, head, page, section, spanning, wrap
 from stockroom.reports.words import TIED, amount, counted, day, day_heading, listed, named, source
 
 
@@ -15,7 +15,8 @@ def fresh_text(plan: Plan, width: int) -> str:
     about = f"What to make up {spanning(plan)}: {counted(len(plan.makes), 'make')}"
     lines = makes_by_day(plan.makes, width, steps=True)
     body = section("MAKE", lines) or "Nothing to make up in this period."
-    return page([head(plan, width, about), body, guesses(plan, width), _foot(plan, width)])
+    told = (guesses(plan, width), backup_age(plan, width), _foot(plan, width))
+    return page([head(plan, width, about), body, *told])
 
 
 def makes_by_day(makes: tuple[Make, ...], width: int, *, steps: bool = False) -> list[str]:

@@ -15,6 +15,7 @@ from stockroom.reports.past_text import past_lines
 from stockroom.reports.people_text import load_section, told_apart, watch_section
 from stockroom.reports.ready_text import served
 from stockroom.reports.sheet import (
+    backup_age,
     columns,
     foot,
     guesses,
@@ -46,6 +47,7 @@ def plan_text(plan: Plan, width: int) -> str:
             section("BOOKINGS", booking_lines(plan, width)),
             notes(replace(plan, notes=told_apart(plan)), width),
             guesses(plan, width),
+            backup_age(plan, width),
             foot(width, f"stockroom why {_puzzling(plan)}", "stockroom fresh", "stockroom buying"),
         ]
     )

@@ -97,6 +97,26 @@ def foot(width: int, *commands: str) -> str:
     return "\n".join([*lines, wrap(following, width, hang=6)] if commands else lines)
 
 
+OLD_BACKUP = 7
+"""Days after which a backup is asked for. A house choice."""
+
+
+def backup_age(plan: Plan, width: int) -> str:
+    """One line on the last good backup; nothing where nobody asks for it."""
+    if plan.backup is None:
+        return ""
+    on = plan.backup.on
+    if on is None:
+        return wrap(f"no backup of this store yet: {_MAKE_ONE}", width)
+    age = (plan.as_at - on).days
+    ago = f"{counted(age, 'day')} ago" if age else "today"
+    asked = f": {_MAKE_ONE}" if age > OLD_BACKUP else ""
+    return wrap(f"last good backup {day(on)}, {ago}{asked}", width)
+
+
+_MAKE_ONE = f"stockroom{TIED}backup"
+
+
 def columns(rows: Sequence[Sequence[str]], width: int, *, indent: int = 2) -> list[str]:
     """Rows whose last cell wraps under itself; the others take what their column needs.
 

@@ -13,6 +13,10 @@ FORMS = {
 }
 """Each `Use.form` with its heading, in the order they are printed."""
 
+_APART = {
+    "spilled": "SPILLED (no part of what is used)",
+    "lent": "LENT, AND NOT COME BACK (no part of what is used)",
+}
 _BESIDE = " (this term, the same term a year before)"
 _KNOWN_BY = {
     "entries": "as the entries say",
@@ -36,10 +40,16 @@ def usage_text(plan: Plan, width: int) -> str:
     parts += [
         _differences(plan, width),
         section("DRAWN SO FAR (from the entries)", _lines(list(plan.drawn), width)),
-        "" if plan.usage or plan.drawn else "Nothing is used in this period.",
+        *(_apart(plan, how, heading, width) for how, heading in _APART.items()),
+        "" if plan.usage or plan.drawn or plan.written_off else "Nothing is used in this period.",
         foot(width, "stockroom buying", "stockroom plan"),
     ]
     return page(parts)
+
+
+def _apart(plan: Plan, how: str, heading: str, width: int) -> str:
+    uses = [use for use in plan.written_off if use.form == how]
+    return section(heading, _lines(uses, width))
 
 
 def _differences(plan: Plan, width: int) -> str:

@@ -41,4 +41,6 @@ def check_may_be_dropped(number: str, firmness: str) -> None:
     """Pass for a booking the plan counts. Raises: NotAllowed for one dropped or done."""
     # dropping twice would leave two answers to who dropped it, and when
     if firmness in (Firmness.DROPPED, Firmness.DONE):
-        raise NotAllowed(f"{number} is {firmness} already.", "Book it again if it is wanted.")
+        back = f"Is it wanted? stockroom cancel {number} --undo --why …"
+        hint = back if firmness == Firmness.DROPPED else "Book it again if it is wanted."
+        raise NotAllowed(f"{number} is {firmness} already.", hint)

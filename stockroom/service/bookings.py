@@ -6,18 +6,19 @@ from dataclasses import dataclass
 from datetime import date
 
 from stockroom import clock
-from stockroom.errors import BadInput
+from stockroom.errors import BadInput, NotAllowed
 from stockroom.measure.days import format_time, spell_day
 from stockroom.measure.formats import format_number
 from stockroom.planning.facts import Firmness
 from stockroom.service.answers import Done
+from stockroom.service.booking_effects import extra, kept_as_stock, withdrawn
 from stockroom.service.booking_rules import check_day, check_in_use, check_may_be_dropped
 from stockroom.service.work import initials
 from stockroom.settings import StoreAt
 from stockroom.store import names
 from stockroom.store.booking_limits import checked_groups, checked_spare
 from stockroom.store.engine import Session, reader_in, writing
-from stockroom.store.history import terms
+from stockroom.store.history import changes_of, terms
 from stockroom.store.ledger import next_booking_number
 from stockroom.store.likeness import unknown
 from stockroom.store.snapshot import calendar_of
@@ -96,13 +97,19 @@ def book(
             firmness=firm,
             room=room,
         )
-        twice = _the_same(session, booking)
-        session.add(booking)
-        session.flush()
-        # its first state, so that the record can be read from the beginning
-        hand.record(booking, "booked", "", _in_words(session, booking))
-        text = f"Booked {booking.number}: {_in_words(session, booking)}."
-        return hand.done(text, (*twice, *_outside_terms(session, on)))
+        return _booked(hand, booking)
+
+
+def _booked(hand: Hand, booking: Booking) -> Done:
+    """Save a new booking, and say what is odd about it."""
+    session = hand.session
+    twice = _the_same(session, booking)
+    session.add(booking)
+    session.flush()
+    # its first state, so that the record can be read from the beginning
+    hand.record(booking, "booked", "", _in_words(session, booking))
+    text = f"Booked {booking.number}: {_in_words(session, booking)}."
+    return hand.done(text, (*twice, *_outside_terms(session, booking.on_day)))
 
 
 def _the_same(session: Session, booking: Booking) -> tuple[str, ...]:
@@ -190,25 +197,38 @@ def shift(
             _check_day(hand, on, keep=keep)
         if groups is not None:
             checked_groups(groups)
-        changes = [
-            _change(hand, found, column, value)
-            for column, value in wanted.items()
-            if value is not None and value != getattr(found, column)
-        ]
-        if not changes:
-            raise BadInput(
-                f"{found.number} is so already: {_in_words(session, found)}.",
-                "Say what changes with --on, --at, --groups or --firmness.",
-            )
+        before = found.groups
+        changes = _changes(hand, found, wanted)
         details = _outside_terms(session, found.on_day) if on is not None else ()
+        if found.groups != before:
+            session.flush()
+            recipe = session.get_one(Recipe, found.recipe_id)
+            details += extra(reader_in(session), found, recipe, before)
         return hand.done(f"{found.number}: {'; '.join(changes)}.", details)
+
+
+def _changes(hand: Hand, booking: Booking, wanted: dict[str, object]) -> list[str]:
+    """Change what differs from what is wanted, and say it. Raises: BadInput where nothing does."""
+    changes = [
+        _change(hand, booking, column, value)
+        for column, value in wanted.items()
+        if value is not None and value != getattr(booking, column)
+    ]
+    if not changes:
+        raise BadInput(
+            f"{booking.number} is so already: {_in_words(hand.session, booking)}.",
+            "Say what changes with --on, --at, --groups or --firmness.",
+        )
+    return changes
 
 
 _SAID = {"on_day": "day", "minute": "time", "groups": "groups", "firmness": "firmness"}
 
 
-def _change(hand: Hand, booking: Booking, column: str, value: object) -> str:
+def _change(hand: Hand, booking: Booking, column: str, value: object, why: str = "") -> str:
     before, after = _say(column, getattr(booking, column)), _say(column, value)
+    # the record has no column of its own for it, and is only ever read by people
+    after += f" ({why.strip()})" if why.strip() else ""
     setattr(booking, column, value)
     hand.session.add(booking)
     hand.record(booking, _SAID[column], before, after)
@@ -221,14 +241,45 @@ def _say(column: str, value: object) -> str:
     return format_time(int(str(value))) if column == "minute" else str(value)
 
 
-def cancel(path: StoreAt, booking: str, *, today: date, by: str) -> Done:
-    """Drop a booking: it leaves the plan, what was made for it stays as stock.
+def cancel(path: StoreAt, booking: str, *, why: str = "", today: date, by: str) -> Done:
+    """Drop a booking: it leaves the plan, makes not done are withdrawn, those done stay as stock.
 
     Raises: UnknownName; NotAllowed when it is dropped already, or done.
     """
     with writing(path) as session:
-        hand = Hand(session, today, initials(by))
+        hand, reader = Hand(session, today, initials(by)), reader_in(session)
         found = names.find_booking(session, booking)
         check_may_be_dropped(found.number, found.firmness)
-        _change(hand, found, "firmness", Firmness.DROPPED.value)
-        return hand.done(f"Dropped {found.number}: {_in_words(session, found)}.")
+        # asked before it is dropped: afterwards the plan no longer has them
+        gone = withdrawn(reader, found.number, today)
+        _change(hand, found, "firmness", Firmness.DROPPED.value, why)
+        details = (*gone, *kept_as_stock(reader, found.number, today))
+        return hand.done(f"Dropped {found.number}: {_in_words(session, found)}.", details)
+
+
+def take_back(path: StoreAt, booking: str, *, why: str, today: date, by: str) -> Done:
+    """Take a cancelling back: the booking is as firm as it was before. Both stay on record.
+
+    Raises: UnknownName; NotAllowed for one that is not dropped; BadInput without a reason.
+    """
+    if not why.strip():
+        raise BadInput(f"Why is {booking} taken back?", "One word is enough: --why …")
+    with writing(path) as session:
+        hand = Hand(session, today, initials(by))
+        found = names.find_booking(session, booking)
+        if found.firmness != Firmness.DROPPED:
+            raise NotAllowed(f"{found.number} is not dropped: it is {found.firmness}.")
+        _change(hand, found, "firmness", _before_dropped(session, found), why)
+        past = found.on_day < today
+        told = (f"{spell_day(found.on_day)} is past: it changes no plan.",) if past else ()
+        return hand.done(f"{found.number} is back: {_in_words(session, found)}.", told)
+
+
+def _before_dropped(session: Session, booking: Booking) -> str:
+    """How firm a booking was before it was dropped; firm where nobody wrote that down."""
+    dropped = [one for one in changes_of(session, booking) if _drops(one)]
+    return dropped[-1].before if dropped else Firmness.FIRM.value
+
+
+def _drops(change: BookingChange) -> bool:
+    return change.what == _SAID["firmness"] and change.after.startswith(Firmness.DROPPED.value)

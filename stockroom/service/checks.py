@@ -4,26 +4,26 @@ from __future__ import annotations
 
 from datetime import date
 
-from stockroom.errors import BadAmount, BadInput, NotAllowed, StockroomError
+from stockroom.errors import BadAmount, NotAllowed
 from stockroom.keeping.rules import RuleKind
 from stockroom.measure.days import spell_day
 from stockroom.measure.strengths import Strength
-from stockroom.planning.decisions import Draw
-from stockroom.planning.derive import with_derived
 from stockroom.safety.peroxide_formers import outcome, read_result
 from stockroom.service.answers import Done
+from stockroom.service.hit import drawn_on_for, made_from
 from stockroom.service.peroxide_tests import check_tested, has_passed, result_words
-from stockroom.service.replayed import replayed_plan
+from stockroom.service.righting import check_nothing_later
+from stockroom.service.spoiling import spoil as spoil
+from stockroom.service.taking import last_use, made_from_doubtful
 from stockroom.service.touching import check_may_open, check_not_condemned
-from stockroom.service.work import Work, check_at_hand, unsettled, working
+from stockroom.service.work import Work, check_at_hand, last_said, unsettled, working
 from stockroom.settings import StoreAt
-from stockroom.store.history import children
+from stockroom.store.history import is_poured, parents
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event
 from stockroom.store.names import substance_of
 from stockroom.store.printed import check_reading
 from stockroom.store.rows_lines import check_has_strength, number_beside
-from stockroom.store.snapshot import facts_from
 from stockroom.store.snapshot_lines import lines_of
 from stockroom.store.tables import Bottle, Line
 
@@ -162,7 +162,8 @@ def _check(
         verb = "looked at" if looked else "tested"
         said = "passed" if passed else "did not pass: set aside"
         # a bad look throws doubt on whatever was made from the bottle
-        details = _until(work, checked) if passed else _made_from(work, checked)
+        inherited = made_from_doubtful(work, checked)
+        details = (*_until(work, checked), *inherited) if passed else made_from(work, checked)
         text = f"{work.called(checked)} {verb} {spell_day(work.on)}, {said}."
         means = () if looked else result_words(work, checked, event)
         return work.done(text, checked, entry, details=(*means, *details))
@@ -171,7 +172,7 @@ def _check(
 def _check_keeps(work: Work, bottle: Bottle, kind: EntryKind) -> None:
     line = work.line(bottle)
     # as the plan sees them: with the published test of a peroxide-former nobody wrote one for
-    kinds = {rule.kind for rule in lines_of(work.reader)[line.key].rules}
+    kinds = {rule.kind for rule in lines_of(work.reader, line.key)[line.key].rules}
     if line.never_kept or RuleKind.NEVER in kinds:
         raise NotAllowed(
             f"{line.key} is never kept. There is no test that extends it.",
@@ -204,10 +205,21 @@ def printed(
     with working(path, on=on, today=today, by=by) as work:
         read = work.bottle(bottle)
         check_at_hand(work, read)
+        _check_own_date(work, read)
         entry = work.write(read, Event(EntryKind.DATE_READ, note=check_reading(read, reading)))
         text = f'{work.called(read)}: printed "{read.printed_text}" is {spell_day(reading)}.'
         details = _until(work, read)
         return work.done(text, read, entry, following="stockroom plan", details=details)
+
+
+def _check_own_date(work: Work, bottle: Bottle) -> None:
+    # the maker's date stands on the bottle it was poured from, and is read for both there
+    if is_poured(work.session, bottle):
+        sources = ", ".join(source.number for source in parents(work.session, bottle))
+        raise NotAllowed(
+            f"{bottle.number} was poured from {sources}: a printed date is on that one.",
+            f"stockroom printed {sources.split(', ')[0]} DATE",
+        )
 
 
 def lost(
@@ -216,13 +228,21 @@ def lost(
     """Say that a bottle cannot be found: it leaves the plan, and its last place is shown.
 
     The bookings the plan would have drawn on it for are named.
-    Raises: NotAllowed when it is missing already, or gone.
+    Raises: NotAllowed when it is missing already, or gone, or has an entry of a later day,
+    which is named.
     """
     with working(path, on=on, today=today, by=by) as work:
         missed = work.bottle(bottle)
+        if work.seen(missed).record.not_found:
+            raise NotAllowed(
+                f"{missed.number} is not found already, since"
+                f" {last_said(work, missed, EntryKind.LOST)}; nothing entered.",
+                f"Once it is found: stockroom turned-up {missed.number} --place …",
+            )
         # asked before the entry: afterwards the bottle is no longer at hand
         place = check_at_hand(work, missed).place
-        hit = _drawn_on_for(work, missed)
+        check_nothing_later(work, missed)
+        hit = (*last_use(work, missed), *drawn_on_for(work, missed))
         entry = work.write(missed, Event(EntryKind.LOST, reason=note))
         last = f"; it last stood at {place}" if place else ""
         text = f"Not found: {work.called(missed)}{last}."
@@ -242,7 +262,10 @@ def turned_up(
         # not check_at_hand, which refuses just the bottles that can turn up
         seen = work.seen(found_again)
         if seen.record.gone or not seen.record.not_found:
-            state = "gone" if seen.record.gone else f"in use, at {seen.place or 'no place'}"
+            where = f", at {seen.place or 'no place'}"
+            apart = seen.record.set_aside
+            state = f"set aside ({apart}){where}" if apart else f"in use{where}"
+            state = "gone" if seen.record.gone else state
             raise NotAllowed(
                 f"{found_again.number} was not missing: it is {state}.",
                 f"To stand it elsewhere: stockroom move {found_again.number} PLACE.",
@@ -262,45 +285,3 @@ def _to_be_looked_at(work: Work, bottle: Bottle) -> tuple[str, str]:
     except NotAllowed as refused:
         return "", f"Set aside. {refused.message} {refused.hint}"
     return f"stockroom look {bottle.number}", "Set aside until somebody has looked at it."
-
-
-def spoil(
-    path: StoreAt, bottle: str, reason: str, *, on: date | None, today: date, by: str
-) -> Done:
-    """Set a bottle aside at once; list what was made from it and the bookings that lean on it.
-
-    Raises: BadInput without a reason; NotAllowed when it is gone or not found.
-    """
-    if not reason.strip():
-        raise BadInput(f"Why set {bottle} aside?", "One word is enough, but I need it: --why …")
-    with working(path, on=on, today=today, by=by) as work:
-        spoiled = work.bottle(bottle)
-        check_at_hand(work, spoiled)
-        hit = _drawn_on_for(work, spoiled)
-        entry = work.write(spoiled, Event(EntryKind.SET_ASIDE, reason=reason.strip()))
-        text = f"Set aside {work.called(spoiled)}: {reason.strip()}."
-        return work.done(text, spoiled, entry, details=(*_made_from(work, spoiled), *hit))
-
-
-def _made_from(work: Work, bottle: Bottle) -> tuple[str, ...]:
-    return tuple(f"Made from it: {work.called(child)}." for child in children(work.session, bottle))
-
-
-def _drawn_on_for(work: Work, bottle: Bottle) -> tuple[str, ...]:
-    """One line naming the bookings the plan draws on the bottle for; asked before it leaves it."""
-    # from the day of entry and not the day it happened: what is over can no longer be helped
-    try:
-        known = with_derived(facts_from(work.reader, work.stamp.entered_on))
-        whole = replayed_plan(known)
-    except StockroomError as error:
-        # a spoiled bottle must be set aside whatever else is wrong in the house
-        return (f"Which bookings it was for is not known, as no plan can be made: {error.message}",)
-    hit = {need.booking.number for need in whole.needs if _drawn_on(bottle, need.draws)}
-    hit |= {one for make in whole.makes if _drawn_on(bottle, make.sources) for one in make.bookings}
-    # in the order of the bookings, which is by day and number
-    listed = ", ".join(booking.number for booking in known.bookings if booking.number in hit)
-    return (f"Drawn on by the plan for {listed}: stockroom plan",) if listed else ()
-
-
-def _drawn_on(bottle: Bottle, draws: tuple[Draw, ...]) -> bool:
-    return any(draw.bottle == bottle.number for draw in draws)

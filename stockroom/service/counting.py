@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from stockroom.measure.formats import format_number
+from stockroom.measure.amounts import Amount, Kind
+from stockroom.measure.formats import format_about, format_amount, format_number
 from stockroom.planning.amounts import label_scale
 from stockroom.planning.facts import Form
 from stockroom.service.work import Work
@@ -15,15 +16,20 @@ from stockroom.store.tables import Bottle
 _SEEN = 0.01
 """The part of a bottle that a count by eye can miss: ours, no source."""
 
-_TAKEN = (EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.LENT)
+_TAKEN = (EntryKind.DRAWN, EntryKind.DECANTED, EntryKind.SPILLED, EntryKind.LENT)
 _KNOWN = (*BEGINNINGS, EntryKind.COUNTED)
 
 
-def difference(work: Work, bottle: Bottle, change: int) -> str:
-    """How a count differs from the entries, in words that end a sentence."""
+def difference(work: Work, bottle: Bottle, change: int, *, about: bool = False) -> str:
+    """How a count differs from the entries, in words that end a sentence.
+
+    `about` where either of the two was judged by eye.
+    """
     if change == 0:
         return ", as entered"
-    return f"; {work.say(bottle, abs(change))} {'more' if change > 0 else 'less'} than entered"
+    amount = Amount(Kind(work.line(bottle).kind), abs(change))
+    said = format_about(amount) if about else format_amount(amount)
+    return f"; {said} {'more' if change > 0 else 'less'} than entered"
 
 
 def which_it_was(work: Work, bottle: Bottle, before: int, counted: int) -> tuple[str, ...]:
@@ -62,6 +68,7 @@ def _stronger(work: Work, bottle: Bottle, times: float) -> str:
     expected = work.verdict(bottle).strengths.expected
     if expected is None:
         return ""
-    scale, unit = label_scale(lines_of(work.reader)[work.line(bottle).key])
+    key = work.line(bottle).key
+    scale, unit = label_scale(lines_of(work.reader, key)[key])
     said = f"{format_number(expected * times * scale)} {unit}"
     return f'stockroom found {bottle.number} "{said}" --note "water lost"'

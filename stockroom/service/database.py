@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING
 from stockroom import clock
 from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 from stockroom.service.answers import Done
+from stockroom.service.hand_out import handed_back
 from stockroom.settings import StoreAt
 from stockroom.store import reading, sources
 
@@ -84,12 +85,13 @@ def starter_folder() -> Path:
 
 
 def new_store(path: StoreAt, *, tables: Path | None = None) -> Done:
-    """Make a store at `path`, empty or from a folder of CSV tables.
+    """Make a store at `path`, empty or from a folder: of tables as typed, or as handed out.
 
-    Raises: StoreTrouble when something is there already; BadInput listing the
-    faults of the tables, and then no store is left behind.
+    Raises: StoreTrouble when something is there already, or what was handed out is damaged;
+    BadInput listing the faults of the tables, and then no store is left behind.
     """
     from stockroom.store.engine import create
+    from stockroom.store.manifest import is_handed_out
     from stockroom.store.seeding import load_tables
 
     def fill(session: Session) -> None:
@@ -99,6 +101,8 @@ def new_store(path: StoreAt, *, tables: Path | None = None) -> Done:
             load_tables(replace(_desk(session, HOUSE), starter=ours), tables)
             _check_methods(session)
 
+    if tables is not None and is_handed_out(tables):
+        return handed_back(path, tables)
     create(path, fill=fill)
     if tables == starter_folder():
         return _started(path)

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from datetime import date
 
 from stockroom.service.database import is_practice
 from stockroom.settings import StoreAt
@@ -20,9 +21,10 @@ class Story:
     practice: bool
 
 
-def story(path: StoreAt, bottle: str) -> Story:
+def story(path: StoreAt, bottle: str, known_on: date | None = None) -> Story:
     """Everything ever entered for a bottle, slips and their putting-right included.
 
+    With `known_on`, what had been entered by the end of that day.
     Raises: UnknownName with the nearest three numbers; StoreTrouble.
     """
-    return Story(diary_of(path, bottle), is_practice(path))
+    return Story(diary_of(path, bottle, known_on), is_practice(path))

@@ -5,25 +5,25 @@ from __future__ import annotations
 from dataclasses import dataclass
 from datetime import date
 
-from stockroom.errors import BadAmount, BrokenPlan, NotAllowed, NotEnough, StockroomError
+from stockroom.errors import BadAmount, NotAllowed, NotEnough, StockroomError
 from stockroom.keeping.rules import RuleKind
 from stockroom.keeping.verdict import USABLE, Condition, Verdict, verdict
 from stockroom.measure.amounts import Amount, Kind
-from stockroom.measure.formats import format_amount, format_strength
-from stockroom.planning.amounts import draw_for
+from stockroom.measure.formats import format_amount, format_number, format_strength
+from stockroom.planning.amounts import draw_for, per_gram
 from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
 from stockroom.planning.known import by_dilution
 from stockroom.service.answers import Done
-from stockroom.service.replayed import replayed_plan
+from stockroom.service.heel import meant_for, told_of_make
 from stockroom.service.standing import told_of_place
 from stockroom.service.taking import open_if_sealed, take
 from stockroom.service.touching import check_may_open
 from stockroom.service.work import Work, check_in_use, working
 from stockroom.settings import StoreAt
 from stockroom.store import names, tables
-from stockroom.store.kinds import EntryKind
-from stockroom.store.ledger import Event, made_note, next_bottle_number
+from stockroom.store.kinds import EntryKind, made_note
+from stockroom.store.ledger import Event, next_bottle_number
 from stockroom.store.snapshot import facts_from
 
 
@@ -41,6 +41,9 @@ class Source:
         """The draw in words, with the strength it was worked out from."""
         amount = format_amount(Amount(self.line.kind, self.amount))
         expected = self.verdict.strengths.expected
+        if self.line.form is Form.SOLID and self.bottle.assay is not None:
+            assay = f"assay {format_number(self.bottle.assay * 100)} %, its own"
+            return f"{amount} of {self.bottle.number} {self.line.key} ({assay})"
         if self.line.form is Form.SOLID or expected is None:
             return f"{amount} of {self.bottle.number} {self.line.key}"
         basis = f"from its {self.verdict.strengths.basis} strength"
@@ -77,29 +80,19 @@ def make_up(
         given = [_given(work, known, number) for number in sources]
         _check_belong(method, given)
         chosen = [_source(known, product, part, given, volume.micro) for part in method.ingredients]
-        meant_for = _meant_for(known, product, volume.micro)
-        carried = _carried(method, chosen)
-        return _write(work, product, volume, chosen, place, meant_for, carried)
-
-
-def _meant_for(known: Facts, product: Line, volume: int) -> tuple[str, ...]:
-    """The bookings the plan has this line made for next, as far as the volume goes."""
-    # what the plan meant it for is kept with the bottle, or another class would be given it
-    try:
-        whole = replayed_plan(known)
-    except BrokenPlan:
-        # what was made must be written down all the same, and then for nobody in particular
-        return ()
-    planned = next((make for make in whole.makes if make.line == product.key), None)
-    if planned is None:
-        return ()
-    served, left = [], volume
-    wanted = {a.booking.number: a.amount for a in whole.needs if a.make == planned.id}
-    for booking in planned.bookings:
-        left -= wanted.get(booking, 0)
-        if left >= 0:
-            served.append(booking)
-    return tuple(served)
+        meant = meant_for(known, product, volume.micro)
+        bottle, made, details = _write(
+            work, product, volume, chosen, place, meant.bookings, _carried(method, chosen)
+        )
+        told = told_of_make(known, product, volume, bottle.number, meant)
+        judged = work.verdict(bottle)
+        until = f"; good until {judged.good_until}" if judged.good_until else ""
+        text = f"Made {bottle.number}: {format_amount(volume)} of {product.key}{until}."
+        # last where it stands: that is what there is still time to change
+        details = (*details, *told, *told_of_place(work, bottle))
+        # else it is counted and looked for at no place
+        following = "" if place else f"stockroom move {bottle.number} PLACE"
+        return work.done(text, bottle, made, following=following, details=details)
 
 
 def _method(known: Facts, product: Line) -> Method:
@@ -138,6 +131,11 @@ def _given(work: Work, known: Facts, number: str) -> Bottle:
 def _check_belong(method: Method, given: list[Bottle]) -> None:
     for place, bottle in enumerate(given):
         fits = [part for part in method.ingredients if bottle.line in part.lines]
+        if bottle.line == method.line and not fits:
+            raise NotAllowed(
+                f"{bottle.number} is {bottle.line} already: a solution is not made from itself.",
+                f"Draw from {bottle.number}, or name what it is made from with --from.",
+            )
         if not fits:
             takes = " or ".join(line for part in method.ingredients for line in part.lines)
             raise NotAllowed(
@@ -179,7 +177,10 @@ def _judged(known: Facts, product: Line, part: Ingredient, bottle: Bottle, volum
             f"{bottle.number} is {judged.condition}: {judged.decided_by}.",
             f"{judged.warning.capitalize()}.",
         )
-    amount = draw_for(line, judged.strengths.expected, product, volume, part.per_dm3)
+    # a solid is weighed by this bottle's own assay, as the plan has it
+    solid = line.form is Form.SOLID
+    held = per_gram(line, bottle) if solid else judged.strengths.expected
+    amount = draw_for(line, held, product, volume, part.per_dm3)
     return Source(bottle, line, amount, judged)
 
 
@@ -209,9 +210,9 @@ def _write(
     volume: Amount,
     chosen: list[Source],
     place: str | None,
-    meant_for: tuple[str, ...],
+    bookings: tuple[str, ...],
     carried: str,
-) -> Done:
+) -> tuple[tables.Bottle, tables.Entry, tuple[str, ...]]:
     # first, since its number stands in the note of every draw
     bottle = _new_bottle(work, product, volume)
     details: list[str] = []
@@ -224,9 +225,6 @@ def _write(
         # the lineage is how a spoiled source finds what was made from it
         _link(work, bottle, row)
     place_id = work.place_id(place) if place else None
-    if meant_for:
-        details.append(f"For {', '.join(meant_for)}, as planned.")
-    booking = ";".join(meant_for)
     if carried:
         details.append(f"Known {carried}: close enough; an exact line wants it titrated.")
     made = Event(
@@ -236,14 +234,10 @@ def _write(
         strength=product.strength if carried else None,
         strength_text=carried,
         place_id=place_id,
-        booking=booking,
+        booking=";".join(bookings),
     )
     entry = work.write(bottle, made)
-    details += told_of_place(work, bottle)
-    judged = work.verdict(bottle)
-    until = f"; good until {judged.good_until}" if judged.good_until else ""
-    text = f"Made {bottle.number}: {format_amount(volume)} of {product.key}{until}."
-    return work.done(text, work.bottle(bottle.number), entry, details=tuple(details))
+    return bottle, entry, tuple(details)
 
 
 def _carried(method: Method, chosen: list[Source]) -> str:

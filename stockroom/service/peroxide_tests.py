@@ -65,7 +65,8 @@ def _unmoved(work: Work, bottle: Bottle, former: str) -> tuple[str, ...]:
 
 
 def _moves(work: Work, bottle: Bottle) -> bool:
-    rules = lines_of(work.reader)[work.line(bottle).key].rules
+    key = work.line(bottle).key
+    rules = lines_of(work.reader, key)[key].rules
     return any(rule.kind is RuleKind.TEST for rule in rules)
 
 

@@ -14,6 +14,7 @@ from stockroom.measure.days import parse_day
 from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.facts import Facts, Firmness
 from stockroom.planning.ready import Readiness, readiness
+from stockroom.service.backup_age import with_backup
 from stockroom.service.known import known_from
 from stockroom.service.printed_plans import beside_the_kept
 from stockroom.service.replayed import replayed_plan
@@ -49,7 +50,7 @@ def term_plan(
     """
     known = _known(path, as_at, start, end, cautious=cautious)
     whole = start is None and end is None
-    return beside_the_kept(path, known, replayed_plan(known), whole=whole)
+    return with_backup(path, beside_the_kept(path, known, replayed_plan(known), whole=whole))
 
 
 def to_make(

@@ -17,6 +17,7 @@ from stockroom.planning.changing.kept import KeptPlan, kept_of, usual_days
 from stockroom.planning.changing.kept_form import UNREADABLE, days_written, digest, read, written
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Happened
+from stockroom.service.backup_age import with_backup
 from stockroom.service.known import known_from
 from stockroom.service.replayed import replayed_plan
 from stockroom.settings import StoreAt
@@ -82,7 +83,7 @@ def keep(
             decisions=written(kept),
         )
         session.add(row)
-        return replace(shown, kept_as=row.number)
+        return with_backup(path, replace(shown, kept_as=row.number))
 
 
 def changed(path: StoreAt, number: str | None = None, *, as_at: date) -> Changed:

@@ -6,7 +6,7 @@ from stockroom.errors import BadInput
 from stockroom.planning.standing import where_things_stand
 from stockroom.service.work import Work
 from stockroom.store.snapshot import places_of
-from stockroom.store.snapshot_bottles import bottles_of
+from stockroom.store.snapshot_bottles import bottles_put_at
 from stockroom.store.snapshot_lines import lines_of
 from stockroom.store.tables import Bottle
 
@@ -16,8 +16,13 @@ _CAPS = ("", "vented", "tight")
 def told_of_place(work: Work, bottle: Bottle) -> tuple[str, ...]:
     """The wrong neighbours a bottle has where it stands now, and a tight cap on what makes gas."""
     reader = work.reader
-    # the whole place, as the plan's own notes see it
-    found = where_things_stand(bottles_of(reader, work.on), lines_of(reader), places_of(reader))
+    seen = work.seen(bottle)
+    here = [place for place in reader.rows("place") if place["place"] == seen.place]
+    # all that was ever put there; the rest of the house stands elsewhere
+    beside = bottles_put_at(reader, here[0]["id"], work.on) if here else (seen,)
+    there = [one for one in beside if one.place == seen.place]
+    lines = lines_of(reader, *{one.line for one in there})
+    found = where_things_stand(there, lines, places_of(reader))
     return tuple(f"{one.subject}: {one.text}." for one in found if one.subject == bottle.number)
 
 

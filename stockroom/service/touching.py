@@ -23,8 +23,8 @@ from stockroom.planning.facts import Form
 from stockroom.safety.peroxide_formers import Outcome, outcome
 from stockroom.service.work import Work
 from stockroom.store.former_rules import formers_of
-from stockroom.store.snapshot_lines import lines_of
 from stockroom.store.tables import Bottle
+from stockroom.store.unnamed import LABEL, is_unnamed
 
 UNMOVED = "A"
 """The class that is discarded on its day, whatever a test says."""
@@ -44,8 +44,23 @@ class Known:
     neat: bool = True
 
 
+def check_named(work: Work, bottle: Bottle) -> None:
+    """Pass unless nobody can name what is in it. Raises: NotAllowed, saying how it is named."""
+    if is_unnamed(work.line(bottle).key):
+        number = bottle.number
+        raise NotAllowed(
+            f"{number} is set aside: {work.seen(bottle).record.set_aside}. {LABEL}.",
+            f"Named by evidence: stockroom unknown {number} --is LINE --evidence …;"
+            f" thrown away: stockroom discard {number}.",
+        )
+
+
 def check_may_open(work: Work, bottle: Bottle) -> None:
-    """Pass unless it is past a safety date or its test condemned it. Raises: NotAllowed."""
+    """Pass unless it is past a safety date, condemned by its test, or has no name.
+
+    Raises: NotAllowed.
+    """
+    check_named(work, bottle)
     known = _known(work, bottle)
     _refuse(bottle, past_safety(known, work.on))
     check = condemning(known, work.on)
@@ -58,6 +73,7 @@ def check_may_move(work: Work, bottle: Bottle) -> None:
 
     Raises: NotAllowed.
     """
+    check_named(work, bottle)
     known = _known(work, bottle)
     _refuse(bottle, past_safety(known, work.on))
     check = condemning(known, work.on)
@@ -70,6 +86,7 @@ def check_not_condemned(work: Work, bottle: Bottle) -> None:
 
     Raises: NotAllowed.
     """
+    check_named(work, bottle)
     check = condemning(_known(work, bottle), work.on)
     # to test it again somebody would have to open it; a slip is put right and not tested away
     if check is not None and check.kind is CheckKind.TESTED:
@@ -81,12 +98,13 @@ def check_not_condemned(work: Work, bottle: Bottle) -> None:
 
 def former_of(work: Work, bottle: Bottle) -> str:
     """The class of peroxide-former in a bottle, by any name of its substance; "" for none."""
-    return formers_of(work.reader).get(work.line(bottle).key, "")
+    key = work.line(bottle).key
+    return formers_of(work.reader, key).get(key, "")
 
 
 def _known(work: Work, bottle: Bottle) -> Known:
     line = work.line(bottle)
-    rules = lines_of(work.reader)[line.key].rules
+    rules = work.rules(bottle)
     neat = line.form != Form.SOLUTION
     return Known(work.seen(bottle).record, rules, former_of(work, bottle), neat)
 
@@ -105,7 +123,8 @@ def past_safety(known: Known, on: date) -> str:
 
 def _undated(record: Record, on: date) -> bool:
     """No day of it is known, and nobody has tested it since: a test gives it one."""
-    return not (record.opened or record.received or record.made or _passed(record, on))
+    known = record.opened or record.received or record.made
+    return not ((known and not record.from_undated) or _passed(record, on))
 
 
 def _past_the_makers(record: Record, former: str, on: date) -> str:

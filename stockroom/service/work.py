@@ -2,28 +2,35 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from contextlib import contextmanager
 from dataclasses import dataclass, replace
 from datetime import date
+from typing import TypeVar, cast
 
 from stockroom import clock
 from stockroom.errors import BadAmount, BadDate, BadInput, NotAllowed
+from stockroom.keeping.rules import Rule
 from stockroom.keeping.verdict import Condition, Verdict, verdict
 from stockroom.measure.amounts import BASE_UNIT, Amount, Kind
 from stockroom.measure.days import spell_day
 from stockroom.measure.formats import format_amount, unit_mark
 from stockroom.planning import facts
 from stockroom.service.answers import Done
+from stockroom.service.once import entered_a_moment_ago
 from stockroom.settings import StoreAt
 from stockroom.store import names
+from stockroom.store.desk import Desk
 from stockroom.store.engine import Session, reader_in, writing
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, Stamp, append, before_it_was_there, entries_of
 from stockroom.store.reading import Reader
+from stockroom.store.remembered import answers_in
 from stockroom.store.snapshot_bottles import bottle_of
 from stockroom.store.snapshot_lines import lines_of
-from stockroom.store.tables import Bottle, Entry, House, Line
+from stockroom.store.tables import Bottle, Entry, Line
+
+Value = TypeVar("Value")
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,13 +51,22 @@ class Work:
         """The reading half, on this very transaction."""
         return reader_in(self.session)
 
+    @property
+    def desk(self) -> Desk:
+        """Where rows are read into the store, in this work's name."""
+        stamp = self.stamp
+        return Desk(self.session, stamp.by, stamp.entered_on, stamp.entered_at)
+
     def bottle(self, number: str) -> Bottle:
         """The bottle with that number. Raises: UnknownName."""
         return names.find_bottle(self.session, number)
 
     def line(self, bottle: Bottle) -> Line:
         """What the bottle holds."""
-        return self.session.get_one(Line, bottle.line_id)
+        known, asked = answers_in(self.session), ("line", bottle.line_id)
+        if asked not in known:
+            known[asked] = self.session.get_one(Line, bottle.line_id)
+        return cast(Line, known[asked])
 
     def place_id(self, place: str) -> int | None:
         """The place by its name. Raises: UnknownName with the nearest."""
@@ -64,15 +80,30 @@ class Work:
     def seen(self, bottle: Bottle) -> facts.Bottle:
         """The bottle as the planner would see it that day. Raises: BadDate before it was there."""
         # through the reading half, so that both halves judge a bottle by the same facts
-        found = bottle_of(self.reader, bottle.number, self.on)
+        found = self._once(
+            (bottle.number, self.on), lambda: bottle_of(self.reader, bottle.number, self.on)
+        )
         if found is None:
             raise before_it_was_there(bottle, spell_day(self.on), None)
         return found
 
     def verdict(self, bottle: Bottle) -> Verdict:
         """The verdict on the bottle that day."""
-        rules = lines_of(self.reader)[self.line(bottle).key].rules
-        return verdict(self.seen(bottle).record, rules, self.on)
+        return verdict(self.seen(bottle).record, self.rules(bottle), self.on)
+
+    def rules(self, bottle: Bottle) -> tuple[Rule, ...]:
+        """How what is in the bottle ages."""
+        key = self.line(bottle).key
+        return self._once((key,), lambda: lines_of(self.reader, key)[key].rules)
+
+    def _once(self, asked: tuple[object, ...], ask: Callable[[], Value]) -> Value:
+        """The answer to a question, asked again only when something was written since."""
+        # whatever is still to be written is sent first, which lets go of what was known
+        self.session.flush()
+        known = answers_in(self.session)
+        if asked not in known:
+            known[asked] = ask()
+        return cast(Value, known[asked])
 
     def say(self, bottle: Bottle, micro: int) -> str:
         """Micro-units of what the bottle holds, in words."""
@@ -90,11 +121,14 @@ class Work:
         *,
         following: str = "",
         details: tuple[str, ...] = (),
+        last: int | None = None,
     ) -> Done:
-        """What was saved, as the answer to whoever asked."""
+        """What was saved, as the answer to whoever asked; `last` of the entries, where several."""
         # the number is what put-right asks for, should this prove a slip
-        told = f"{text} Entry {entry.id}."
-        return Done(told, bottle.number, entry.id, following, self.practice, details)
+        several = last is not None and last != entry.id
+        told = f"{text} Entries {entry.id}–{last}." if several else f"{text} Entry {entry.id}."
+        asked = entered_a_moment_ago(self.reader, entry)
+        return Done(told, bottle.number, entry.id, following, self.practice, (*details, *asked))
 
 
 @contextmanager
@@ -114,9 +148,12 @@ def working(path: StoreAt, *, on: date | None, today: date, by: str) -> Iterator
         )
     with writing(path) as session:
         # read inside the work: a store is not opened twice to ask its name
-        setting = session.get(House, "practice")
+        setting = reader_in(session).pairs(_PRACTICE)
         stamp = Stamp(happened, today, clock.now(), by)
-        yield Work(session, stamp, practice=setting is not None and setting.value == "yes")
+        yield Work(session, stamp, practice=setting.get("practice") == "yes")
+
+
+_PRACTICE = "SELECT setting, value FROM house WHERE setting = 'practice'"
 
 
 def initials(by: str) -> str:
@@ -152,12 +189,12 @@ def check_at_hand(work: Work, bottle: Bottle) -> facts.Bottle:
     seen = work.seen(bottle)
     if seen.record.gone:
         raise NotAllowed(
-            f"{bottle.number} is gone: {_last(work, bottle, EntryKind.DISCARDED)}.",
+            f"{bottle.number} is gone: {last_said(work, bottle, EntryKind.DISCARDED)}.",
             "Use another bottle.",
         )
     if seen.record.not_found:
         raise NotAllowed(
-            f"{bottle.number} was not found: {_last(work, bottle, EntryKind.LOST)}."
+            f"{bottle.number} was not found: {last_said(work, bottle, EntryKind.LOST)}."
             " So it is found? Where?",
             f"stockroom turned-up {bottle.number} --place …",
         )
@@ -175,10 +212,10 @@ def check_in_use(work: Work, bottle: Bottle) -> facts.Bottle:
     return seen
 
 
-def _last(work: Work, bottle: Bottle, kind: EntryKind) -> str:
+def last_said(work: Work, bottle: Bottle, kind: EntryKind) -> str:
+    """Who said it last of a bottle, when, and what of it: "8 January 2027, T1, not on D1"."""
     # the last of them is the one that still holds
-    entries = [entry for entry in entries_of(work.session, bottle) if entry.kind == kind]
-    entry = entries[-1]
+    entry = entries_of(work.session, bottle, kind)[-1]
     said = entry.reason or entry.note
     return f"{spell_day(entry.happened_on)}, {entry.by}" + (f", {said}" if said else "")
 

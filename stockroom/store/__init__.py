@@ -6,6 +6,8 @@ Writing goes through `engine.py` (SQLModel); reading for a plan goes through
 for the writing half. Light too: `temperatures`, `hazards`, `refills`, `rule_changes`.
 Open `tables.py` first (the classes are in `tables_*.py`, by subject), then
 `ledger.py`; a typed row is read by `rows_*.py`, and `layout.py` says which.
+On a PostgreSQL server `server.py` reads and `server_writing.py` writes: the same
+questions and tables, so SQL here is only what both engines read.
 """
 
 from __future__ import annotations

@@ -61,9 +61,13 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         "entry": "id bottle_id kind happened_on entered_on entered_at by change strength"
         " strength_text uncertainty peroxide_mg_kg passed place_id reason note booking puts_right"
         " about walk_id",
+        "kept_balance": "bottle_id held",
         "walk": "id name places started_on entered_on entered_at by",
         "walk_end": "id walk_id ended_on entered_on entered_at by note",
         "submission": "id token entered_on entered_at by answer",
         "backup_made": "id place entries digest entered_on entered_at by",
     }.items()
 }
+
+KEPT_BESIDE = frozenset({"kept_balance"})
+"""Tables a trigger fills from others: copied with a store's other rows, they would count twice."""

@@ -65,20 +65,38 @@ def _shipped(folder: Path) -> Mapping[str, str]:
     return held
 
 
-def formers_of(reader: Reader) -> dict[str, str]:
-    """The class of every line of a store whose substance is a peroxide-former, by its key."""
+def formers_of(reader: Reader, *only: str) -> dict[str, str]:
+    """The class of every line of a store whose substance is a peroxide-former, by its key.
+
+    `only` are the keys of the lines asked about; the others are then not read.
+    """
+    of_line, of_substance = lines_named(only)
     names: dict[int, list[str]] = {}
-    for row in reader.rows("other_name"):
+    for row in reader.rows("other_name", of_substance.format("substance_id"), *only):
         names.setdefault(row["substance_id"], []).append(row["name"])
-    held = {row["id"]: row for row in reader.rows("substance")}
+    held = {row["id"]: row for row in reader.rows("substance", of_substance.format("id"), *only)}
     found: dict[str, str] = {}
-    for line in reader.rows("line"):
+    for line in reader.rows("line", of_line.format("key"), *only):
         substance = held.get(line["substance_id"])
         if substance is not None:
             called = (substance["substance"], *names.get(substance["id"], ()))
             liquid = line["form"] == Form.LIQUID
             found[line["key"]] = former_class(called, substance["peroxide_former"], liquid=liquid)
     return {key: cls for key, cls in found.items() if cls}
+
+
+def lines_named(only: tuple[str, ...]) -> tuple[str, str]:
+    """What narrows a question to lines by their keys: of lines, and of their substances.
+
+    Each is SQL with a gap for the column; nothing is narrowed where no key is given.
+    """
+    if not only:
+        return "ORDER BY id", "ORDER BY id"
+    marks = ", ".join("?" * len(only))
+    return (
+        f"WHERE {{}} IN ({marks}) ORDER BY id",
+        f"WHERE {{}} IN (SELECT substance_id FROM line WHERE key IN ({marks})) ORDER BY id",
+    )
 
 
 def with_former_rules(rules: Iterable[Rule], former: str, form: Form) -> tuple[Rule, ...]:

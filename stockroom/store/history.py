@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from datetime import date
 
 from sqlalchemy import text
 from sqlmodel import Session, col, select
 
-from stockroom.store.kinds import BEGINNINGS, STANDING
+from stockroom.store.kinds import BEGINNINGS, POURED, STANDING, EntryKind
 from stockroom.store.ledger import entries_of
 from stockroom.store.tables import (
     Booking,
@@ -24,14 +25,19 @@ def undone_by(session: Session, entry: Entry) -> Entry | None:
     return session.exec(select(Entry).where(Entry.puts_right == entry.id)).first()
 
 
-def noted(session: Session, note: str) -> list[Entry]:
-    """The entries still standing that carry exactly this note, the earliest written first."""
-    kept = select(Entry).where(Entry.note == note, text(STANDING))
+def noted(session: Session, note: str, kind: EntryKind, bottles: Iterable[Bottle]) -> list[Entry]:
+    """The entries of a kind still standing with exactly this note, the earliest written first.
+
+    Of these bottles only. A note of somebody's own may read the same, so the kind counts.
+    """
+    of = [bottle.id for bottle in bottles]
+    kept = select(Entry).where(col(Entry.bottle_id).in_(of), Entry.kind == kind)
+    kept = kept.where(Entry.note == note, text(STANDING))
     return list(session.exec(kept.order_by(col(Entry.id))))
 
 
 def children(session: Session, bottle: Bottle) -> list[Bottle]:
-    """The bottles made from this one, at whatever remove, by number."""
+    """The bottles made or poured from this one, at whatever remove, by number."""
     found: dict[int | None, Bottle] = {}
     generation = [bottle.id]
     while generation:
@@ -46,7 +52,26 @@ def children(session: Session, bottle: Bottle) -> list[Bottle]:
 
 def is_there(session: Session, bottle: Bottle) -> bool:
     """Whether the bottle ever came to be: a make or an arrival put right never happened."""
-    return any(entry.kind in BEGINNINGS for entry in entries_of(session, bottle))
+    return beginning_of(session, bottle) is not None
+
+
+def beginning_of(session: Session, bottle: Bottle) -> Entry | None:
+    """The entry a bottle's story begins with, None where that was put right."""
+    begun = (entry for entry in entries_of(session, bottle) if entry.kind in BEGINNINGS)
+    return next(begun, None)
+
+
+def is_poured(session: Session, bottle: Bottle) -> bool:
+    """Whether it was decanted or mixed, and so keeps what its sources were known to be."""
+    begun = beginning_of(session, bottle)
+    return begun is not None and begun.kind in POURED
+
+
+def parents(session: Session, bottle: Bottle) -> list[Bottle]:
+    """The bottles it was made or poured from itself, by number."""
+    above = select(Parent.parent_id).where(Parent.bottle_id == bottle.id)
+    rows = session.exec(select(Bottle).where(col(Bottle.id).in_(above)))
+    return sorted(rows, key=lambda row: row.number)
 
 
 def changes_of(session: Session, booking: Booking) -> list[BookingChange]:

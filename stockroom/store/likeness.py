@@ -25,6 +25,18 @@ def unknown(what: str, text: str, choices: Iterable[str]) -> UnknownName:
     return UnknownName(f'No {what} "{text.strip()}".', hint)
 
 
+FAR = 70
+"""Below this likeness, out of 100, the nearest name is hardly the one meant. Our choice."""
+
+
+def near(text: str, choices: Iterable[str]) -> bool:
+    """Whether any of the choices is like `text` at all."""
+    from rapidfuzz import fuzz, process
+
+    found = process.extractOne(plain(text), list(choices), scorer=fuzz.WRatio, processor=plain)
+    return found is not None and found[1] >= FAR
+
+
 def nearest(text: str, choices: Iterable[str]) -> list[str]:
     """The three choices most like `text`, the likest first; ties by the fewest slips, then A-Z."""
     from rapidfuzz import fuzz, process

@@ -9,13 +9,14 @@ from __future__ import annotations
 import re
 from typing import TypeVar
 
+from sqlalchemy import literal_column
 from sqlmodel import Session, SQLModel, col, select
 
 from stockroom.chemistry.strength import canonical
 from stockroom.errors import BadInput, StockroomError, UnknownName
 from stockroom.measure.parsing import parse_strength
 from stockroom.measure.reading import tidy
-from stockroom.store.likeness import plain, unknown
+from stockroom.store.likeness import near, plain, unknown
 from stockroom.store.tables import (
     Booking,
     Bottle,
@@ -40,6 +41,11 @@ def find_line(session: Session, text: str, *, kind: str = "") -> Line:
     Raises: UnknownName with the nearest three; BadInput listing the choices when several fit.
     """
     return Lines(session).find(text, kind=kind)
+
+
+def line_keyed(session: Session, key: str) -> Line | None:
+    """The line with exactly this key; None where there is none yet."""
+    return session.exec(select(Line).where(Line.key == key)).first()
 
 
 class Lines:
@@ -92,7 +98,8 @@ class Lines:
             found = self._session.get_one(Substance, line.substance_id)
             others = select(OtherName).where(OtherName.substance_id == line.substance_id)
             self._substances[line.substance_id] = found
-            self._others[line.substance_id] = [row.name for row in self._session.exec(others)]
+            rows = self._session.exec(others.order_by(col(OtherName.id)))
+            self._others[line.substance_id] = [row.name for row in rows]
         return self._substances.get(line.substance_id)
 
     def _at_strength(self, named: list[Line], written: str) -> list[Line]:
@@ -125,8 +132,19 @@ class Lines:
         fitting = [line for key, line in self._lines.items() if part and part in key]
         if not fitting:
             names = {line.key for line in self._lines.values()}
-            raise unknown("stock line", text, names)
+            raise _new_here(text, names)
         return _only(text, fitting, kind)
+
+
+def _new_here(text: str, names: set[str]) -> UnknownName:
+    """The error for a line nobody knows: the nearest, and how it is written down if it is new."""
+    stranger = unknown("stock line", text, names)
+    if not text.strip():
+        return UnknownName('Which stock line is ""?', stranger.hint)
+    if near(text, names):
+        return stranger
+    add = f"stockroom add lines item='{text.strip()}' form=solid"
+    return UnknownName(stranger.message, f"{stranger.hint} If it is new here: {add}")
 
 
 def _spelt(name: str) -> str:
@@ -181,7 +199,7 @@ def find_substance(session: Session, text: str) -> Substance:
     exact = session.exec(select(Substance).where(Substance.substance == text.strip())).first()
     if exact is not None:
         return exact
-    for other in session.exec(select(OtherName)):
+    for other in session.exec(select(OtherName).order_by(col(OtherName.id))):
         if _spelt(other.name) == _spelt(text):
             return session.get_one(Substance, other.substance_id)
     rows = list(session.exec(select(Substance).order_by(col(Substance.id))))
@@ -227,7 +245,12 @@ def find_recipe(session: Session, text: str, version: int | None = None) -> Reci
 def _by_column(
     session: Session, table: type[Table], column: str, text: str, what: str, *also: str
 ) -> Table:
-    rows = list(session.exec(select(table)))
+    # as it stands in the table, which is how nearly everybody writes it
+    held = getattr(table, column)
+    exact = session.exec(select(table).where(col(held).in_((text, text.strip().upper())))).first()
+    if exact is not None:
+        return exact
+    rows = list(session.exec(select(table).order_by(literal_column("id"))))
     for name in (column, *also):
         for row in rows:
             if plain(str(getattr(row, name))) == plain(text) != "":

@@ -73,6 +73,24 @@ def reading(path: StoreAt) -> Iterator[Reader]:
             connection.close()
 
 
+@contextmanager
+def as_it_stands(path: Path) -> Iterator[tuple[Reader, str]]:
+    """A reader on a file in whatever layout it is, and that layout: nothing is brought up.
+
+    Raises: StoreTrouble when it is missing, damaged, no store at all or too new.
+    """
+    check_there(path)
+    with translated(path):
+        connection = _connect(path)
+        try:
+            connection.execute("BEGIN")
+            revision = _revision(connection, path)
+            is_older(path, revision)
+            yield Reader(connection), str(revision)
+        finally:
+            connection.close()
+
+
 def house_value(path: StoreAt, key: str) -> str | None:
     """One house setting as text; None when it is not set."""
     with reading(path) as reader:
@@ -118,7 +136,7 @@ def _connect(path: Path) -> sqlite3.Connection:
             raise
         if _holds_entries(Path(f"{path}-wal")):
             raise unfinished(path) from error
-        # a folder that may not be written to: no lock file can be made, and none is needed
+        # no lock file can be made, in such a folder or on a full disc: then nobody writes either
         return _opened(f"{address}?immutable=1")
     except sqlite3.Error:
         connection.close()
@@ -127,7 +145,7 @@ def _connect(path: Path) -> sqlite3.Connection:
 
 
 # what the driver says when it can neither make the side files nor use those that are there
-_NO_SIDE_FILES = ("SQLITE_CANTOPEN", "SQLITE_READONLY")
+_NO_SIDE_FILES = ("SQLITE_CANTOPEN", "SQLITE_READONLY", "SQLITE_IOERR_SHMSIZE", "SQLITE_FULL")
 
 
 def _opened(address: str) -> sqlite3.Connection:

@@ -19,7 +19,7 @@ from stockroom.measure.parsing import parse_strength
 from stockroom.safety.peroxide_formers import outcome
 from stockroom.store.desk import Desk
 from stockroom.store.fields import Fields
-from stockroom.store.kinds import DAY_NOT_WRITTEN, EntryKind
+from stockroom.store.kinds import BEGINNINGS, DAY_NOT_WRITTEN, EntryKind
 from stockroom.store.ledger import Event, amount_of, append, left, overfull
 from stockroom.store.names import find_bottle, find_place, substance_of
 from stockroom.store.printed import check_reading
@@ -29,7 +29,8 @@ from stockroom.store.tables import Bottle, Entry, Line, Parent
 
 _TAKES = (EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.LENT)
 _LEAVES = (EntryKind.COUNTED, EntryKind.DISCARDED)
-HISTORY = frozenset(EntryKind) - {EntryKind.ARRIVED, EntryKind.MADE}
+# what was poured needs a bottle to stand in, and the old lists tell of none
+HISTORY = frozenset(EntryKind) - {*BEGINNINGS, EntryKind.DECANTED}
 _ANSWERED = (EntryKind.LOOKED, EntryKind.TESTED)
 
 

@@ -15,7 +15,7 @@ from datetime import date
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_amount
 from stockroom.planning.facts import Happened, HappenedKind
-from stockroom.store.kinds import STANDING, EntryKind
+from stockroom.store.kinds import POURED, STANDING, EntryKind
 from stockroom.store.reading import Reader, Row
 
 Marks = dict[str, int]
@@ -118,6 +118,8 @@ def _said(kind: EntryKind, row: Row) -> tuple[str, str]:
         return f"{_SAID[kind]} {row['strength_text']}", ""
     if kind in (EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.LENT, EntryKind.MADE):
         return f"{change} {kind.value}", _for(row)
+    if kind in (EntryKind.DECANTED, *POURED):
+        return f"{change} {kind.value}", row["note"]
     if kind is EntryKind.MOVED:
         return f"moved to {row['place']}", ""
     if kind is EntryKind.COUNTED:
@@ -186,7 +188,7 @@ def _placed_changes(
 
 
 def _corrections(reader: Reader, marks: Marks) -> Iterator[Happened]:
-    keys = [row[0] for row in reader.ask("SELECT key FROM line ORDER BY LENGTH(key) DESC")]
+    keys = [row[0] for row in reader.ask("SELECT key FROM line ORDER BY LENGTH(key) DESC, id")]
     for row in reader.rows("row_change", "WHERE id > ? ORDER BY id", marks.get("row_change", 0)):
         key = row["row_key"]
         # a pack is named by its line and its size: the longest key that begins it is its line

@@ -27,7 +27,7 @@ from stockroom.planning.facts import (
 from stockroom.settings import StoreAt
 from stockroom.store.printed_plans import usual_of
 from stockroom.store.reading import Reader, Row, reading
-from stockroom.store.snapshot_bottles import bottles_of, drawn_of
+from stockroom.store.snapshot_bottles import bottles_of, drawn_of, written_off_of
 from stockroom.store.snapshot_lines import lines_of, methods_of, recipes_of
 from stockroom.store.snapshot_orders import former_of, placed_of, year_before_of
 
@@ -49,9 +49,13 @@ def facts(path: StoreAt, as_at: date, start: date | None = None, end: date | Non
 
 
 def facts_from(
-    reader: Reader, as_at: date, start: date | None = None, end: date | None = None
+    reader: Reader,
+    as_at: date,
+    start: date | None = None,
+    end: date | None = None,
+    known_on: date | None = None,
 ) -> Facts:
-    """The same as `facts`, from a store already open."""
+    """The same as `facts`, from a store already open; bottles and draws as known on a day."""
     settings = _settings(reader)
     first, last = _period(reader, as_at, start, end)
     before = year_before_of(reader, start or first, end or last)
@@ -68,13 +72,14 @@ def facts_from(
         bookings=_bookings(
             reader, settings, min(first, start or first, as_at), max(last, end or last)
         ),
-        bottles=bottles_of(reader, as_at),
+        bottles=bottles_of(reader, as_at, known_on),
         balances=_balances(reader),
         glassware=_glassware(reader),
         vessels=_vessels(reader),
         departments=_departments(reader),
         places=places_of(reader),
-        drawn=drawn_of(reader, as_at),
+        drawn=drawn_of(reader, as_at, known_on),
+        written_off=written_off_of(reader, as_at, known_on),
         usual=usual_of(reader, as_at),
         placed=placed_of(reader, as_at, min(first, as_at)),
         year_before=before,

@@ -21,20 +21,24 @@ from stockroom.planning.facts import (
     Requirement,
     Swap,
 )
-from stockroom.store.former_rules import formers_of, with_former_rules
+from stockroom.store.former_rules import formers_of, lines_named, with_former_rules
 from stockroom.store.reading import Reader, Row
 
 Value = TypeVar("Value")
 
 
-def lines_of(reader: Reader) -> dict[str, Line]:
-    """Every stock line by key, in the order they were entered."""
+def lines_of(reader: Reader, *only: str) -> dict[str, Line]:
+    """Every stock line by key, in the order they were entered; `only` those of these keys."""
+    of_line, of_substance = lines_named(only)
+    marks = ", ".join("?" * len(only))
+    owned = f"line_id IN (SELECT id FROM line WHERE key IN ({marks}))" if only else "1 = 1"
     # a starter rule that the house replaced stays in the table, out of use
-    in_use = "WHERE in_use ORDER BY id"
-    rules = _by_owner(reader, "keeping_rule", "line_id", rule_of, tail=in_use)
-    packs = _by_owner(reader, "pack", "line_id", _pack)
-    substances = {row["id"]: row for row in reader.rows("substance")}
-    formers = formers_of(reader)
+    in_use = f"WHERE in_use AND {owned} ORDER BY id"
+    rules = _by_owner(reader, "keeping_rule", "line_id", rule_of, in_use, *only)
+    packs = _by_owner(reader, "pack", "line_id", _pack, f"WHERE {owned} ORDER BY id", *only)
+    held = reader.rows("substance", of_substance.format("id"), *only)
+    substances = {row["id"]: row for row in held}
+    formers = formers_of(reader, *only)
     return {
         row["key"]: _line(
             row,
@@ -44,7 +48,7 @@ def lines_of(reader: Reader) -> dict[str, Line]:
             ),
             tuple(packs.get(row["id"], ())),
         )
-        for row in reader.rows("line")
+        for row in reader.rows("line", of_line.format("key"), *only)
     }
 
 
@@ -53,11 +57,11 @@ def _by_owner(
     table: str,
     owner: str,
     build: Callable[[Row], Value],
-    *,
     tail: str = "ORDER BY id",
+    *asked: str,
 ) -> dict[int, list[Value]]:
     found: dict[int, list[Value]] = {}
-    for row in reader.rows(table, tail):
+    for row in reader.rows(table, tail, *asked):
         found.setdefault(row[owner], []).append(build(row))
     return found
 

@@ -40,6 +40,7 @@ from stockroom.store.tables_house import (
 from stockroom.store.tables_ledger import (
     Bottle,
     Entry,
+    KeptBalance,
     Parent,
     RowChange,
 )
@@ -82,6 +83,7 @@ __all__ = [
     "House",
     "Ingredient",
     "KeepingRule",
+    "KeptBalance",
     "Line",
     "Method",
     "Numbered",

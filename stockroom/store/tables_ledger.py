@@ -5,8 +5,16 @@ No `from __future__ import annotations`: see `tables.py`.
 
 from datetime import date
 
-from sqlalchemy import BigInteger, Column, ForeignKey, Integer, UniqueConstraint
-from sqlmodel import Field
+from sqlalchemy import (
+    BigInteger,
+    Column,
+    ForeignKey,
+    Index,
+    Integer,
+    UniqueConstraint,
+    text,
+)
+from sqlmodel import Field, SQLModel
 
 from stockroom.store.tables_house import Numbered
 
@@ -61,8 +69,17 @@ class Parent(Numbered, table=True):
     parent_id: int = Field(foreign_key="bottle.id")
 
 
+_HAS_PLACE = text("place_id IS NOT NULL")
+
+
 class Entry(Numbered, table=True):
     """One line of the ledger; triggers refuse to alter or remove it."""
+
+    __table_args__ = (
+        Index(
+            "ix_entry_place_id", "place_id", sqlite_where=_HAS_PLACE, postgresql_where=_HAS_PLACE
+        ),
+    )
 
     bottle_id: int = Field(foreign_key="bottle.id", index=True)
     kind: str
@@ -88,3 +105,12 @@ class Entry(Numbered, table=True):
     # an estimate by eye; what it left is about right until the bottle is counted
     about: bool = False
     walk_id: int | None = Field(default=None, foreign_key="walk.id")
+
+
+class KeptBalance(SQLModel, table=True):
+    """What a bottle holds, kept up by a trigger with every entry: a copy of the sum."""
+
+    __tablename__ = "kept_balance"
+
+    bottle_id: int = Field(primary_key=True, foreign_key="bottle.id")
+    held: int = Field(sa_type=BigInteger)

@@ -5,7 +5,7 @@ A reading is kept in hundredths of a degree at a local clock time to the minute.
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from datetime import date, datetime, timedelta
 from typing import TYPE_CHECKING
@@ -27,18 +27,18 @@ PER_DEGREE = 100
 
 
 def logs_of(
-    reader: Reader, as_at: date, *, bottle: int | None = None, every: bool = False
+    reader: Reader, as_at: date, *, bottles: Sequence[int] | None = None, every: bool = False
 ) -> dict[int, TemperatureLog]:
     """The records of the places bottles have stood in, up to a day, by the place's row number.
 
     Only places where something ages by its warmth, unless `every` is asked for; with
-    `bottle` (its row number) only the places of that one.
+    `bottles` (their row numbers) only the places of those.
     """
     # most stores hold no reading at all, and then nothing more is asked
     if not reader.ask("SELECT 1 FROM reading LIMIT 1"):
         return {}
     day = as_at.isoformat()
-    places = reader.pairs(_stood(bottle, every=every), day)
+    places = reader.pairs(_stood(bottles, every=every), day)
     logs = {place: log_of(reader, place, _eve(since), day) for place, since in places.items()}
     return {place: log for place, log in logs.items() if log is not None}
 
@@ -48,14 +48,15 @@ def _eve(day: str) -> str:
     return (date.fromisoformat(day) - timedelta(days=1)).isoformat()
 
 
-def _stood(bottle: int | None, *, every: bool) -> str:
+def _stood(bottles: Sequence[int] | None, *, every: bool) -> str:
     """The question for each place and the first day a bottle was put there."""
     warm = (
         " AND line_id IN (SELECT line_id FROM keeping_rule WHERE factor_per_10c IS NOT NULL"
         " OR ea_kj_mol IS NOT NULL OR named_law <> '')"
     )
     # an id is a number, so it may stand in the question itself
-    only = "" if bottle is None else f" AND bottle_id = {int(bottle)}"
+    listed = "" if bottles is None else ", ".join(str(int(one)) for one in bottles)
+    only = f" AND bottle_id IN ({listed})" if listed else ""
     return (
         "SELECT place_id, MIN(happened_on) FROM entry JOIN bottle ON bottle.id = bottle_id"
         f" WHERE place_id IS NOT NULL AND happened_on <= ? AND {STANDING}{only}"

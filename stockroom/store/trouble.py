@@ -6,15 +6,20 @@ that guards every balance). Light: reading commands import this.
 
 from __future__ import annotations
 
+import os
 import sqlite3
 from collections.abc import Iterator
 from contextlib import contextmanager
 from pathlib import Path
 
 from stockroom.errors import NotEnough, Refused, StoreTrouble
+from stockroom.settings import StoreAt
 
-REVISIONS = ("0001", "0002", "0003", "0004", "0005", "0006", "0007")
+REVISIONS = ("0001", "0002", "0003", "0004", "0005", "0006", "0007", "0008")
 """The migrations this program knows, oldest first; the last is what it writes."""
+
+REPLACED = "replaced"
+"""The layout mark of a file whose place another took while somebody still had it open."""
 
 BUSY_SECONDS = 5.0
 """How long a writer waits for another before it gives up. A house choice."""
@@ -28,8 +33,8 @@ def missing(path: Path) -> StoreTrouble:
     )
 
 
-def foreign(path: Path) -> StoreTrouble:
-    """The error for a file that is something else."""
+def foreign(path: StoreAt) -> StoreTrouble:
+    """The error for a file, or a database, that is something else."""
     return StoreTrouble(
         f"{path} is not a stockroom store.", "Give the right file with --store PATH."
     )
@@ -60,13 +65,18 @@ def check_there(path: Path) -> None:
         raise missing(path)
 
 
-def is_older(path: Path, revision: str | None) -> bool:
+def is_older(path: StoreAt, revision: str | None) -> bool:
     """True when the store is in an earlier layout of this program, and can be brought up.
 
     Raises: StoreTrouble for a file with no layout mark, or with a newer one.
     """
     if revision is None:
         raise foreign(path)
+    if revision == REPLACED:
+        raise StoreTrouble(
+            f"A backup was put in the place of {path} a moment ago; nothing was saved.",
+            "Look at the store, then enter it again.",
+        )
     if revision not in REVISIONS:
         raise StoreTrouble(
             f"{path} was written by a newer stockroom (revision {revision};"
@@ -78,9 +88,7 @@ def is_older(path: Path, revision: str | None) -> bool:
 
 def in_words(error: sqlite3.Error, path: Path) -> Refused:
     """The driver's error as one of ours, quoting the file it is about."""
-    # absent on errors the driver raises itself, before it asks the library
-    name = str(getattr(error, "sqlite_errorname", ""))
-    text = str(error)
+    name, text = _name_of(error, path), str(error)
     # the two words our triggers begin with
     if text.startswith("NOTENOUGH"):
         return NotEnough("That is more than the bottle holds; nothing was saved.", "Count it.")
@@ -95,6 +103,34 @@ def in_words(error: sqlite3.Error, path: Path) -> Refused:
     if name.startswith("SQLITE_CORRUPT"):
         return damaged(path)
     return StoreTrouble(f"The store {path} cannot be used: {text}.", "Nothing was saved.")
+
+
+def _name_of(error: sqlite3.Error, path: Path) -> str:
+    """The driver's name for what went wrong, put straight where the file shows more."""
+    # absent on errors the driver raises itself, before it asks the library
+    name = str(getattr(error, "sqlite_errorname", ""))
+    # a full disc is told as such only where the file itself should grow, not its side files
+    if name.startswith("SQLITE_IOERR") and _room(path) < LEAST_ROOM:
+        return "SQLITE_FULL"
+    # there and not to be opened: it is the right that is missing, on the file or on its folder
+    if name.startswith("SQLITE_CANTOPEN") and path.exists():
+        return "SQLITE_READONLY" if os.access(path, os.R_OK) else "SQLITE_PERM"
+    return name
+
+
+LEAST_ROOM = 65_536
+"""Bytes: with less than this free, a store's side files do not fit beside it."""
+
+
+def _room(path: Path) -> int:
+    """The bytes still free on the disc that holds a file; as much as wanted where unknown."""
+    # loaded here: something has gone wrong already, and reading stays light
+    from shutil import disk_usage
+
+    try:
+        return disk_usage(path.parent).free
+    except OSError:
+        return LEAST_ROOM
 
 
 # each says what became of the entry: that is what somebody at the bench needs to know
@@ -115,8 +151,12 @@ _WORDS = {
         "The disc that holds {path} is full; nothing was saved.",
         "Make room, then enter it again.",
     ),
+    "SQLITE_PERM": (
+        "{path} may not be read; nothing was saved.",
+        "Ask for the right to read and write that file and its folder.",
+    ),
     "SQLITE_CANTOPEN": (
-        "{path} cannot be opened.",
+        "{path} cannot be opened; nothing was saved.",
         "Look whether the folder is there and may be written to.",
     ),
     "SQLITE_IOERR": (

@@ -30,8 +30,8 @@ AVOID = {
     "electronic notebook*",
     "the plan, its reasons": "smart, assistant*, insight, insights",
 }
-# `git checkout` is git's own word, and a note for developers may need it
-ALLOWED = re.compile(r"git checkout")
+# git's own words, which a note or a script for developers may need
+ALLOWED = re.compile(r"git checkout|\"git\", \"archive\"")
 
 # an absolute path into a home, a work folder or a drive; a placeholder in <> passes
 MACHINE_PATH = re.compile(

@@ -168,6 +168,7 @@ def test_a_file_that_is_no_store_is_named(stockroom: Stockroom, tmp_path: Path) 
     assert (result.code, str(letter) in result.err) == (1, True)
 
 
+@pytest.mark.file
 def test_an_existing_store_is_never_written_over(stockroom: Stockroom, own: Path) -> None:
     before = own.read_bytes()
     assert stockroom("new", store=own).code == 1

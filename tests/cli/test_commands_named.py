@@ -37,7 +37,7 @@ def test_every_command_named_is_there(path: Path) -> None:
 
 @pytest.mark.parametrize(
     "source",
-    ['hint = "Put it back with `stockroom restore`."', 'next = f"stockroom restore {path}"'],
+    ['hint = "Do it again with `stockroom redo`."', 'next = f"stockroom redo {path}"'],
 )
 def test_a_planted_command_that_is_not_there_is_caught(source: str) -> None:
-    assert unknown(source) == ["restore"]
+    assert unknown(source) == ["redo"]

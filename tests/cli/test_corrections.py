@@ -107,6 +107,7 @@ def test_a_correction_that_cannot_be_is_refused(
     assert (refused.code, said in refused.err) == (code, True), refused
 
 
+@pytest.mark.file
 def test_what_stood_there_before_stays_on_record(stockroom: Stockroom, own: Path) -> None:
     run(stockroom, own, "change places A3 temperature_c=21 --why measured")
     with sqlite3.connect(own) as connection:

@@ -55,6 +55,7 @@ def test_a_kept_plan_is_numbered_from_one(at: Callable[..., Result]) -> None:
     assert told(at("01-04", "plan", "--json"))["kept_as"] is None
 
 
+@pytest.mark.file
 def test_keeping_wants_initials(stockroom: Stockroom, own: Path) -> None:
     before = own.read_bytes()
     asked = stockroom("plan", "--keep", store=own)
@@ -217,6 +218,7 @@ SAME = [
 ]
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(("supposed", "real"), SAME, ids=lambda words: words[0])
 def test_what_if_is_what_follows_when_it_is_done(
     kept: Callable[..., Result],

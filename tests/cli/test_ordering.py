@@ -151,6 +151,7 @@ def test_a_mass_of_a_liquid_is_turned_to_its_volume(enter: Enter) -> None:
     assert "4 600 g is 2 500 cm³ at 1.84 g/cm³" in done.said
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(
     ("words", "code", "said"),
     [
@@ -229,6 +230,7 @@ def test_a_term_gone_by_is_written_down_once(enter: Enter) -> None:
     assert enter(*row[:-1]).code == 2
 
 
+@pytest.mark.file
 @pytest.mark.parametrize("table", ["placed", "placed_share", "placed_came", "placed_change"])
 def test_what_was_ordered_is_never_altered_or_removed(enter: Enter, own: Path, table: str) -> None:
     enter(*LITHIUM, "--expected", "2027-01-18")

@@ -62,6 +62,7 @@ def test_a_number_that_now_stands_for_something_else_says_so(enter: Enter) -> No
     assert f"Not {printed['O03']}, which has O02 in the plan now." in done.said
 
 
+@pytest.mark.file
 def test_an_order_of_the_sheet_is_not_placed_twice(enter: Enter, own: Path) -> None:
     printed = lines(enter)
     enter("plan", "--keep")
@@ -75,6 +76,7 @@ def test_an_order_of_the_sheet_is_not_placed_twice(enter: Enter, own: Path) -> N
     assert enter("order", "O01").code == 0
 
 
+@pytest.mark.file
 def test_what_is_no_longer_to_be_ordered_names_both_lines(enter: Enter, own: Path) -> None:
     enter("plan", "--keep")
     printed = lines(enter)
@@ -96,6 +98,7 @@ def test_without_a_kept_plan_the_number_is_of_the_plan_now_and_says_so(enter: En
     assert "The rest of the plan has other numbers now" in done.said
 
 
+@pytest.mark.file
 def test_a_note_is_kept_with_an_order_of_the_plan(enter: Enter, own: Path) -> None:
     assert enter("order", "O05", "--note", "rang twice").code == 0
     raw = sqlite3.connect(own)
@@ -199,6 +202,7 @@ def test_a_part_that_came_before_a_late_entry_stays(enter: Enter) -> None:
     assert "100 g of lithium chloride will not come" in enter(*late, day="2027-01-20").said
 
 
+@pytest.mark.file
 def test_no_row_of_an_order_or_a_kept_plan_is_written_over_by_any_key(
     enter: Enter, own: Path
 ) -> None:

@@ -28,6 +28,7 @@ RUN = (
     "strength-and-uncertainty.md",
     "data-and-sources.md",
     "how-the-plan-is-made.md",
+    "nothing-lost.md",
 )
 
 

@@ -154,6 +154,7 @@ def test_the_slip_of_the_pen_counts_fifty_grams(stockroom: Stockroom, practice: 
     assert by_item["sodium thiosulfate pentahydrate"] == (50, "g")
 
 
+@pytest.mark.file
 def test_ammoniacal_silver_cannot_be_saved(stockroom: Stockroom, own: Path) -> None:
     """T32. Asked to enter leftover ammoniacal silver as stock: refused, and nothing is entered."""
     before = own.read_bytes()

@@ -352,3 +352,23 @@ def test_the_same_record_is_judged_as_at_any_day() -> None:
     first = judged(bottle, rule, on="02-10")
     judged(bottle, rule, on="01-05")
     assert judged(bottle, rule, on="02-10") == first
+
+
+@pytest.mark.parametrize(
+    "known",
+    [
+        {"received": date(2026, 9, 1)},
+        {"made": date(2026, 9, 1)},
+        {"opened": date(2026, 9, 1)},
+        {"printed": parse_printed("03/2027")},
+    ],
+)
+def test_any_day_that_is_known_dates_a_bottle(known: dict[str, Any]) -> None:
+    judged = verdict(Record(**known), (), date(2027, 1, 4))
+    assert judged.condition is Condition.SOUND
+    assert verdict(Record(), (), date(2027, 1, 4)).condition is Condition.NO_DATE
+
+
+def test_a_printed_date_alone_ends_its_use() -> None:
+    judged = verdict(Record(printed=parse_printed("Oct-26")), (), date(2026, 11, 1))
+    assert (judged.condition, judged.decided_by) == (Condition.PAST, 'printed "Oct-26"')

@@ -85,6 +85,7 @@ def test_a_closed_day_can_be_kept_on_purpose(own: Path) -> None:
     assert seen(own, "K30").on == date(2027, 3, 8)
 
 
+@pytest.mark.file
 def test_a_shift_says_what_was_and_what_is(own: Path) -> None:
     done = bookings.shift(own, "K06", on=date(2027, 1, 21), groups=13, **WHO)
     assert done.text == "K06: day 2027-01-20 → 2027-01-21; groups 11 → 13."
@@ -101,6 +102,7 @@ def test_a_booking_may_be_done(own: Path) -> None:
     assert seen(own, "K01").firmness is Firmness.DONE
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(
     ("changed", "kind", "said"),
     [
@@ -119,6 +121,7 @@ def test_a_shift_that_cannot_be_meant_changes_nothing(
     assert changes(own) == []
 
 
+@pytest.mark.file
 def test_a_dropped_booking_stays_on_record(own: Path) -> None:
     bookings.cancel(own, "K06", **WHO)
     assert changes(own) == [("firmness", "firm", "dropped")]

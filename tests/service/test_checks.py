@@ -10,9 +10,14 @@ import pytest
 
 from stockroom.errors import BadAmount, BadDate, BadInput, NotAllowed, StockroomError
 from stockroom.keeping.record import CheckKind
+from stockroom.keeping.verdict import Condition
+from stockroom.measure.amounts import Amount
 from stockroom.measure.parsing import parse_strength
 from stockroom.planning.facts import Bottle
-from stockroom.service import checks, stock
+from stockroom.reports.shelf_text import shelf_text
+from stockroom.service import checks, hit, stock
+from stockroom.service.making import make_up
+from stockroom.service.shelf import shelf
 from stockroom.store.snapshot import facts
 
 TODAY = date(2027, 1, 11)
@@ -89,7 +94,8 @@ def test_nothing_extends_what_is_never_kept(own: Path) -> None:
 
 def test_setting_aside_lists_what_was_made_from_it(own: Path) -> None:
     done = checks.spoil(own, "B16", "rust specks", **WHO)
-    assert done.details == ("Made from it: S20 ammonia 2.00 mol/dm3.",)
+    # the plan draws on S20, and not on what it was made from: stockroom why S20
+    assert done.details == ("Made from it: S20 ammonia 2.00 mol/dm3. Drawn on for K16, K27.",)
     assert seen(own, "B16").record.set_aside == "rust specks"
 
 
@@ -124,10 +130,45 @@ def test_a_bottle_is_set_aside_though_no_plan_can_be_made(
     def fail(known: object) -> object:
         raise BadInput("A method goes round.", "Mend it.")
 
-    monkeypatch.setattr(checks, "replayed_plan", fail)
+    monkeypatch.setattr(hit, "replayed_plan", fail)
     done = checks.spoil(own, "S01", "cloudy", **WHO)
     assert "no plan can be made: A method goes round." in done.details[-1]
     assert seen(own, "S01").record.set_aside == "cloudy"
+
+
+def test_what_was_made_from_a_spoiled_bottle_is_doubted_wherever_it_is_met(own: Path) -> None:
+    made = make_up(
+        own, "hydrochloric acid 0.400 mol/dm3", Amount.cm3(500), sources=["S05"], place=None, **WHO
+    )
+    done = checks.spoil(own, "S05", "yellow tinge", **WHO)
+    assert any(f"Made from it: {made.bottle} " in detail for detail in done.details)
+    assert done.next == f"stockroom look {made.bottle}"
+    doubt = f"{made.bottle} was made from S05, since set aside (yellow tinge): look before it is"
+    drawn = stock.draw(own, made.bottle, Amount.cm3(10), **WHO)
+    looked = checks.look(own, made.bottle, passed=True, **WHO)
+    assert [any(doubt in one for one in each.details) for each in (drawn, looked)] == [True, True]
+    found = shelf(own, made.bottle, on=TODAY)
+    assert found.rows[0].doubt == "made from S05, since set aside (yellow tinge)"
+    assert "made from S05, since set aside" in " ".join(shelf_text(found, 100).split())
+    # in doubt, and not set aside by itself: whoever looks decides
+    assert found.rows[0].verdict.condition is Condition.SOUND
+
+
+def test_what_is_set_aside_is_set_aside_again_for_another_reason_only(own: Path) -> None:
+    checks.spoil(own, "S12", "cloudy", **WHO)
+    with pytest.raises(NotAllowed, match="S12 is set aside already: cloudy; nothing entered"):
+        checks.spoil(own, "S12", "Cloudy ", **WHO)
+    done = checks.spoil(own, "S12", "smells", **WHO)
+    assert done.details[0] == "It was set aside already: cloudy."
+    checks.lost(own, "B41", **WHO)
+    checks.turned_up(own, "B41", None, **WHO)
+    assert checks.spoil(own, "B41", "wet", **WHO).text.startswith("Set aside B41")
+
+
+def test_what_turned_up_does_not_turn_up_twice(own: Path) -> None:
+    checks.turned_up(own, "B28", None, **WHO)
+    with pytest.raises(NotAllowed, match=r"it is set aside \(turned up: needs a look\), at A2"):
+        checks.turned_up(own, "B28", None, **WHO)
 
 
 def test_setting_aside_wants_a_word(own: Path) -> None:
@@ -142,8 +183,20 @@ def test_a_lost_bottle_shows_its_last_place(own: Path) -> None:
 
 
 def test_a_lost_bottle_is_not_lost_twice(own: Path) -> None:
-    with pytest.raises(NotAllowed, match="So it is found"):
+    said = r"B28 is not found already, since 27 November 2026, T2.*; nothing entered"
+    with pytest.raises(NotAllowed, match=said):
         checks.lost(own, "B28", **WHO)
+
+
+def test_what_was_used_later_was_not_lost_before(own: Path) -> None:
+    drawn = stock.draw(own, "S11", Amount.cm3(10), on=date(2027, 1, 8), today=TODAY, by="T2")
+    late: dict[str, Any] = {"on": date(2027, 1, 7), "today": TODAY, "by": "T1"}
+    said = f"S11 was there after 7 January 2027: entry {drawn.entry}, drawn 8 January 2027 by T2"
+    with pytest.raises(NotAllowed, match=said):
+        checks.lost(own, "S11", **late)
+    assert not seen(own, "S11").record.not_found
+    checks.lost(own, "S11", **{**late, "on": date(2027, 1, 8)})
+    assert seen(own, "S11").record.not_found
 
 
 def test_what_turned_up_is_back_where_it_stood(own: Path) -> None:

@@ -29,6 +29,7 @@ def test_a_new_store_never_replaces_a_file(tmp_path: Path) -> None:
     assert (tmp_path / "ours.sqlite").read_text(encoding="utf-8") == "precious"
 
 
+@pytest.mark.file
 def test_an_earlier_practice_store_is_put_by(own: Path) -> None:
     database.add_row(own, "places", {"place": "Z1"}, by="T1")
     database.make_practice(own)
@@ -37,6 +38,7 @@ def test_an_earlier_practice_store_is_put_by(own: Path) -> None:
     assert "Z1" not in {place.name for place in facts(own, date(2027, 1, 4)).places}
 
 
+@pytest.mark.file
 def test_a_house_that_has_the_name_of_an_earlier_practice_store_is_left_alone(own: Path) -> None:
     ours = own.with_suffix(".old.sqlite")
     database.new_store(ours)
@@ -47,6 +49,7 @@ def test_a_house_that_has_the_name_of_an_earlier_practice_store_is_left_alone(ow
     assert database.is_practice(own.with_name("own.old-2.sqlite"))
 
 
+@pytest.mark.file
 def test_each_earlier_practice_store_is_kept(own: Path) -> None:
     for place in ("Z1", "Z2", "Z3"):
         database.add_row(own, "places", {"place": place}, by="T1")
@@ -56,6 +59,7 @@ def test_each_earlier_practice_store_is_kept(own: Path) -> None:
     assert [sorted(each & {"Z1", "Z2", "Z3"}) for each in placed] == [["Z1"], ["Z2"], ["Z3"]]
 
 
+@pytest.mark.file
 def test_a_name_whose_journal_is_another_stores_is_not_taken(own: Path) -> None:
     journal = own.with_name("own.old.sqlite-wal")
     journal.write_bytes(b"somebody's entries")
@@ -63,6 +67,7 @@ def test_a_name_whose_journal_is_another_stores_is_not_taken(own: Path) -> None:
     assert journal.read_bytes() == b"somebody's entries"
 
 
+@pytest.mark.file
 def test_entries_still_in_the_journal_go_along(own: Path) -> None:
     with sqlite3.connect(own) as held:
         held.execute("SELECT 1 FROM house").fetchall()

@@ -62,6 +62,7 @@ def test_what_came_in_is_told(own: Path, write: Write) -> None:
     assert done.above == pytest.approx(0.4)
 
 
+@pytest.mark.file
 def test_twice_adds_nothing_twice(own: Path, write: Write) -> None:
     file = write(5, 5.2, 5.4)
     assert brought(own, "F1", file) == (3, 0)
@@ -75,6 +76,7 @@ def test_a_place_goes_by_its_long_name_too(own: Path, write: Write) -> None:
     assert held(own, "f1").summary is not None
 
 
+@pytest.mark.file
 def test_another_temperature_of_the_same_time_is_refused(own: Path, write: Write) -> None:
     brought(own, "F1", write(5, 5))
     with pytest.raises(NotAllowed, match="2027-01-04 01:00: 5 °C is held, and the file says 9 °C"):
@@ -82,6 +84,7 @@ def test_another_temperature_of_the_same_time_is_refused(own: Path, write: Write
     assert rows_held(own) == 2
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(
     "bad", ["2027-01-04 02:00,warm", "2027-01-03 00:00,5", "2027-01-04 02:00,-127"]
 )
@@ -104,6 +107,7 @@ def test_a_gap_is_asked_about_and_named(own: Path, write: Write) -> None:
     assert brought(own, "F1", late) == (0, 2)
 
 
+@pytest.mark.file
 def test_a_gap_inside_a_file_is_asked_about(own: Path, write: Write) -> None:
     file = write(*[5.0] * 30)
     rows = file.read_text("utf-8").splitlines()
@@ -157,6 +161,7 @@ def test_a_file_that_is_not_there_is_named(own: Path, tmp_path: Path) -> None:
         brought(own, "F1", tmp_path / "nothing.csv")
 
 
+@pytest.mark.file
 def test_who_brought_which_file_stays_on_record(own: Path, write: Write) -> None:
     brought(own, "F1", write(5))
     with sqlite3.connect(own) as link:
@@ -223,6 +228,7 @@ def test_what_was_taken_back_no_longer_ages_a_bottle(own: Path, write: Write) ->
     assert expected(own, "B05a", date(2027, 1, 31)) == before
 
 
+@pytest.mark.file
 def test_what_was_taken_back_is_kept_beside(own: Path, write: Write) -> None:
     brought(own, "F1", write(5, 6, 7))
     back(own, "F1", FIRST.date(), FIRST.date())
@@ -233,6 +239,7 @@ def test_what_was_taken_back_is_kept_beside(own: Path, write: Write) -> None:
     assert [row[1:] for row in kept] == [(500, change), (600, change), (700, change)]
 
 
+@pytest.mark.file
 def test_only_the_days_named_and_the_place_named_are_taken_back(own: Path, write: Write) -> None:
     for place in ("F1", "H1"):
         brought(own, place, write(*[20.0] * 72))
@@ -243,6 +250,7 @@ def test_only_the_days_named_and_the_place_named_are_taken_back(own: Path, write
     assert rows_held(own) == 48 + 72
 
 
+@pytest.mark.file
 def test_a_reading_taken_back_twice_is_kept_twice(own: Path, write: Write) -> None:
     for _ in range(2):
         brought(own, "F1", write(5))

@@ -82,6 +82,9 @@ def test_a_look_put_right_no_longer_counts(own: Path) -> None:
 def test_an_unknown_entry_is_refused(own: Path) -> None:
     with pytest.raises(UnknownName, match="No entry 99999"):
         stock.put_right(own, 99999, "slip", **WHO)
+    for more in (2**63, 10**20):
+        with pytest.raises(UnknownName, match=f"No entry {more}"):
+            stock.put_right(own, more, "slip", **WHO)
 
 
 def test_a_reason_is_wanted(own: Path) -> None:
@@ -111,3 +114,12 @@ def test_a_reversal_that_would_leave_less_than_nothing_is_refused(own: Path) -> 
     stock.draw(own, "S13", Amount.cm3(150), **WHO)
     with pytest.raises(NotEnough, match="S13 holds 50 cm³; 70 cm³ asked"):
         stock.put_right(own, counted.entry or 0, "misread", **WHO)
+
+
+def test_a_make_does_not_take_with_it_what_only_reads_like_its_draw(own: Path) -> None:
+    copper = "copper(II) sulfate 0.500 mol/dm3"
+    made = making.make_up(own, copper, Amount.cm3(100), sources=["B19"], place="C1", **WHO)
+    stock.spill(own, "B19", Amount.grams(2), note=f"into {made.bottle}", **WHO)
+    stock.put_right(own, made.entry or 0, "never made", **WHO)
+    left = {bottle.number: bottle.left for bottle in facts(own, TODAY).bottles}
+    assert left["B19"] == Amount.grams(718).micro

@@ -19,8 +19,10 @@ from stockroom.errors import (
     UnknownName,
 )
 from stockroom.measure.amounts import Amount
+from stockroom.measure.by_eye import parse_drawn
 from stockroom.planning.facts import Bottle
 from stockroom.service import stock
+from stockroom.service.walk_entering import start
 from stockroom.store.diary import diary
 from stockroom.store.snapshot import facts
 
@@ -133,6 +135,45 @@ def test_a_draw_dated_before_the_opening_says_so(own: Path) -> None:
     )
 
 
+def test_a_draw_before_the_one_that_opened_it_opened_it_earlier(own: Path) -> None:
+    stock.draw(own, "B02", Amount.cm3(10), **WHO)
+    friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T1"}
+    done = stock.draw(own, "B02", Amount.cm3(20), **friday)
+    assert done.details == ("B02 was opened earlier than written: 8 January 2027.",)
+    assert seen(own, "B02").record.opened == date(2027, 1, 8)
+
+
+def test_a_draw_before_a_count_says_that_the_count_takes_it_in(own: Path) -> None:
+    counted = stock.count(own, "B06", Amount.grams(600), **WHO)
+    friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T1"}
+    done = stock.draw(own, "B06", Amount.grams(5), **friday)
+    told = f"The count of 11 January 2027 (entry {counted.entry}) takes it in: what is left stays"
+    assert done.details[0].startswith(told)
+    assert not stock.draw(own, "B06", Amount.grams(5), **WHO).details
+
+
+def test_several_bottles_give_the_numbers_of_all_their_entries(own: Path) -> None:
+    more: dict[str, Any] = {"printed": "03/2029", "place": "A2", "opened": TODAY} | WHO
+    done = stock.arrive(own, "sodium chloride", Amount.grams(500), count=3, **more)
+    first = done.entry or 0
+    assert done.text.endswith(f"Entries {first}\u2013{first + 5}.")
+    assert [row.kind for row in diary(own, "B48")] == ["arrived", "opened"]
+
+
+def test_what_is_gone_is_said_to_be_gone_before_how_is_asked(own: Path) -> None:
+    stock.discard(own, "S14", how="iron waste", why="past", **WHO)
+    with pytest.raises(NotAllowed, match="S14 is gone"):
+        stock.discard(own, "S14", how="", why="", **WHO)
+
+
+def test_what_was_judged_by_eye_is_refused_and_thrown_away_as_about(own: Path) -> None:
+    stock.draw(own, "B12", parse_drawn("a third left"), **WHO)
+    with pytest.raises(NotEnough, match="B12 holds about 167 g; 400 g asked"):
+        stock.draw(own, "B12", Amount.grams(400), **WHO)
+    done = stock.discard(own, "B12", how="iron waste", why="past", **WHO)
+    assert "B12 iron(II) sulfate heptahydrate, about 167 g: iron waste" in done.text
+
+
 def test_the_opening_can_be_put_right_as_told(own: Path) -> None:
     opened = stock.open_bottle(own, "B02", **WHO)
     friday: dict[str, Any] = {"on": date(2027, 1, 8), "today": TODAY, "by": "T1"}
@@ -237,6 +278,9 @@ def test_a_loan_to_nobody_is_refused(own: Path) -> None:
 
 
 def test_a_count_writes_the_difference(own: Path) -> None:
+    with pytest.raises(UnknownName, match='No walk "Jan-A2"'):
+        stock.count(own, "B06", Amount.grams(600), walk="Jan-A2", **WHO)
+    start(own, "Jan-A2", **WHO)
     done = stock.count(own, "B06", Amount.grams(600), walk="Jan-A2", **WHO)
     assert "40 g less than entered" in done.text
     assert diary(own, "B06")[-1].said == "Jan-A2"

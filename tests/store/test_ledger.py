@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import shutil
 import sqlite3
+from dataclasses import replace
 from datetime import date, datetime, timedelta
 from pathlib import Path
 
@@ -13,7 +14,7 @@ from hypothesis import strategies as st
 
 from stockroom.errors import BadDate, BadInput, NotEnough
 from stockroom.store.engine import writing
-from stockroom.store.kinds import EntryKind
+from stockroom.store.kinds import EntryKind, standing_on
 from stockroom.store.ledger import (
     Event,
     Stamp,
@@ -83,6 +84,7 @@ def play(path: Path, told: list[tuple[EntryKind, int, int]]) -> None:
                 continue
 
 
+@pytest.mark.file
 @settings(max_examples=25, suppress_health_check=[HealthCheck.function_scoped_fixture])
 @given(told=steps)
 def test_replaying_the_ledger_gives_every_balance(
@@ -101,6 +103,7 @@ def test_replaying_the_ledger_gives_every_balance(
         running += change
         assert running >= 0
     assert held(path, LATER) == running // 1_000
+    assert all(held(path, COUNTED + timedelta(days=days)) >= 0 for _, _, days in told)
 
 
 def test_a_draw_from_before_a_count_leaves_the_count_true(own: Path) -> None:
@@ -144,3 +147,49 @@ def test_numbers_run_on_past_those_with_letters(own: Path) -> None:
         assert next_bottle_number(session, made_here=True) == "S25"
         assert next_bottle_number(session, made_here=False) == "B46"
         assert next_booking_number(session) == "K30"
+
+
+def test_a_late_draw_may_not_leave_a_day_between_below_nothing(own: Path) -> None:
+    """What a later count evens out was still not there on the days before it."""
+    with writing(own) as session:
+        bottle = find_bottle(session, "S13")
+        append(session, bottle, drawn(100), stamp(date(2027, 1, 5)))
+        count = Event(EntryKind.COUNTED, change=80_000)
+        append(session, bottle, count, stamp(date(2027, 1, 8)))
+    words = r"S13 held 30 cm³ on 5 January 2027; 40 cm³ asked of 4 January 2027\."
+    with writing(own) as session, pytest.raises(NotEnough, match=words) as refused:
+        append(session, find_bottle(session, "S13"), drawn(40), stamp(date(2027, 1, 4)))
+    assert "--on 2027-01-05" in refused.value.hint
+    with writing(own) as session:
+        append(session, find_bottle(session, "S13"), drawn(30), stamp(date(2027, 1, 4)))
+    assert [held(own, date(2027, 1, day)) for day in (3, 4, 5, 7, 8)] == [
+        130, 100, 0, 0, 110,
+    ]  # fmt: skip
+
+
+def test_a_reversal_may_not_leave_a_day_between_below_nothing(own: Path) -> None:
+    with writing(own) as session:
+        bottle = find_bottle(session, "S13")
+        more = Event(EntryKind.COUNTED, change=20_000)
+        slip = append(session, bottle, more, stamp(date(2027, 1, 5)))
+        append(session, bottle, drawn(140), stamp(date(2027, 1, 6)))
+        append(session, bottle, replace(more, change=70_000), stamp(date(2027, 1, 8)))
+        undo = Event(EntryKind.PUT_RIGHT, change=-20_000, puts_right=slip.id)
+        with pytest.raises(NotEnough, match=r"held 10 cm³ on 6 January 2027; 20 cm³ asked of 5"):
+            append(session, bottle, undo, stamp(date(2027, 1, 11)))
+
+
+QUESTIONS = (
+    "SELECT SUM(change) FROM entry WHERE bottle_id = 3 AND {}",
+    "SELECT id FROM entry WHERE bottle_id = 3 AND kind = 'opened' AND {} ORDER BY happened_on",
+    "SELECT id FROM entry WHERE kind <> 'drawn' AND {} AND bottle_id IN (3, 4)",
+)
+
+
+@pytest.mark.file
+@pytest.mark.parametrize("question", QUESTIONS)
+def test_a_question_about_one_bottle_reads_its_entries_alone(own: Path, question: str) -> None:
+    for which in (standing_on(None), standing_on(date(2027, 1, 8))):
+        with reading(own) as reader:
+            steps = [row[3] for row in reader.ask("EXPLAIN QUERY PLAN " + question.format(which))]
+        assert steps[0].startswith("SEARCH entry USING INDEX ix_entry_bottle_id"), steps

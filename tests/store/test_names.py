@@ -12,6 +12,8 @@ from stockroom.errors import BadInput, UnknownName
 from stockroom.store import names
 from stockroom.store.engine import writing
 
+pytestmark = pytest.mark.file
+
 
 @pytest.fixture(scope="module")
 def session(tmp_path_factory: pytest.TempPathFactory, practice: Path) -> Iterator[Session]:
@@ -49,6 +51,15 @@ def test_a_name_of_several_things_lists_them(session: Session) -> None:
 
 def test_an_amount_in_grams_tells_the_solid_from_its_solution(session: Session) -> None:
     assert names.find_line(session, "LiCl", kind="mass").key == "lithium chloride"
+
+
+def test_what_is_like_nothing_here_may_be_new(session: Session) -> None:
+    with pytest.raises(UnknownName) as caught:
+        names.find_line(session, "unobtainium")
+    assert "If it is new here: stockroom add lines item='unobtainium'" in caught.value.hint
+    with pytest.raises(UnknownName) as caught:
+        names.find_line(session, "sodum chlorid")
+    assert "new here" not in caught.value.hint
 
 
 @pytest.mark.parametrize("text", ["hypo 0.3 M", "unobtainium", "", "sodium thiosulfate 5 % w/w"])

@@ -36,6 +36,7 @@ def raw(own: Path) -> Iterator[sqlite3.Connection]:
     connection.close()
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(
     "statement",
     [
@@ -51,6 +52,7 @@ def test_a_kept_plan_refuses(raw: sqlite3.Connection, statement: str) -> None:
         raw.execute(statement)
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(
     ("day", "number"),
     [("2027-01-03", None), ("2027-01-31", "0001"), ("2027-02-01", "0002")],
@@ -64,24 +66,28 @@ def test_the_last_kept_is_the_last_known_by_that_day(
         assert next_number(reader) == "0003"
 
 
+@pytest.mark.file
 def test_the_usual_days_are_of_the_plan_kept_last(raw: sqlite3.Connection, own: Path) -> None:
     with reading(own) as reader:
         assert usual_of(reader, date(2027, 1, 3)) == {}
         assert usual_of(reader, date(2027, 2, 1)) == {"x": (date(2027, 2, 2), date(2027, 2, 9))}
 
 
+@pytest.mark.file
 def test_the_planner_is_told_the_usual_days(raw: sqlite3.Connection, own: Path) -> None:
     with reading(own) as reader:
         known = facts_from(reader, date(2027, 1, 11))
     assert known.usual == {"x": (date(2027, 1, 12),)}
 
 
+@pytest.mark.file
 @pytest.mark.parametrize("typed", ["0002", "2", " 2 ", "#2"])
 def test_a_number_may_be_typed_short(raw: sqlite3.Connection, own: Path, typed: str) -> None:
     with reading(own) as reader:
         assert kept_under(reader, typed).number == "0002"
 
 
+@pytest.mark.file
 def test_a_number_nobody_gave_names_the_nearest(raw: sqlite3.Connection, own: Path) -> None:
     with reading(own) as reader, pytest.raises(UnknownName, match="0020"):
         kept_under(reader, "0020")
@@ -254,6 +260,7 @@ def damage(own: Path, **damaged: str) -> None:
     connection.close()
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(
     "damaged",
     [
@@ -281,6 +288,7 @@ def test_a_kept_plan_that_cannot_be_read_stops_no_plan(
     assert "cannot be read" in refused.err
 
 
+@pytest.mark.file
 def test_each_sheet_says_that_it_cannot_and_one_kept_anew_ends_it(
     own: Path, stockroom: Stockroom
 ) -> None:
@@ -295,6 +303,7 @@ def test_each_sheet_says_that_it_cannot_and_one_kept_anew_ends_it(
     assert "cannot be read" not in stockroom("plan", *DAY, store=own).said
 
 
+@pytest.mark.file
 def test_a_kept_plan_that_cannot_be_read_is_said_to_be(
     raw: sqlite3.Connection, own: Path, stockroom: Stockroom
 ) -> None:

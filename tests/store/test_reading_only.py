@@ -52,6 +52,7 @@ def read_by_nobody(practice: Path, store: Path) -> subprocess.CompletedProcess[s
     return subprocess.run(words, capture_output=True, text=True, check=False)
 
 
+@pytest.mark.file
 @AS_ROOT
 @pytest.mark.parametrize("litter", [(), ("-wal",), ("-shm",), ("-wal", "-shm")])
 def test_a_store_that_may_only_be_read_is_read(
@@ -63,6 +64,7 @@ def test_a_store_that_may_only_be_read_is_read(
     assert (ran.returncode, ran.stdout) == (0, "75\n"), ran.stderr
 
 
+@pytest.mark.file
 @AS_ROOT
 def test_entries_still_in_the_side_file_are_never_left_out(practice: Path, shut: Path) -> None:
     Path(f"{shut}-wal").write_bytes(b"x" * 4096)
@@ -70,6 +72,7 @@ def test_entries_still_in_the_side_file_are_never_left_out(practice: Path, shut:
     assert "was not closed properly" in ran.stderr
 
 
+@pytest.mark.file
 def test_reading_leaves_nothing_beside_the_store(own: Path) -> None:
     facts(own, DAY)
     assert [path.name for path in own.parent.glob(f"{own.name}*")] == [own.name]
@@ -83,6 +86,7 @@ def test_reading_cannot_write(own: Path) -> None:
         reader.ask("UPDATE booking SET groups = 1")
 
 
+@pytest.mark.file
 def test_a_writer_that_closes_leaves_nothing_beside_the_store(own: Path) -> None:
     from stockroom.service import bookings
 

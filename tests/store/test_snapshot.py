@@ -174,6 +174,7 @@ def test_alternatives_keep_their_order_and_their_conditions(known: Facts) -> Non
     assert part.only_if_held == {"potassium iodide 1.00 mol/dm3"}
 
 
+@pytest.mark.file
 def test_reading_loads_nothing_heavy(practice: Path) -> None:
     code = (
         "import sys, datetime, pathlib; from stockroom.store.snapshot import facts;"

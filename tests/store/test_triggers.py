@@ -8,6 +8,8 @@ from pathlib import Path
 
 import pytest
 
+pytestmark = pytest.mark.file
+
 NEW = (
     "INSERT INTO entry (bottle_id, kind, happened_on, entered_on, entered_at, by, change,"
     " strength_text, reason, note, booking, puts_right) VALUES"

@@ -73,6 +73,7 @@ def test_another_programs_database_is_left_alone(
         use(path)
 
 
+@pytest.mark.file
 @pytest.mark.parametrize("part", [0.3, 0.6, 0.9])
 def test_a_store_cut_short_is_called_damaged(own: Path, part: float) -> None:
     whole = own.read_bytes()
@@ -82,6 +83,7 @@ def test_a_store_cut_short_is_called_damaged(own: Path, part: float) -> None:
     assert caught.value.hint.endswith("Put the last good copy of the file back.")
 
 
+@pytest.mark.file
 @BOTH
 def test_a_store_from_a_newer_program_is_not_touched(
     own: Path, use: Callable[[Path], None]
@@ -93,6 +95,7 @@ def test_a_store_from_a_newer_program_is_not_touched(
         use(own)
 
 
+@pytest.mark.file
 def test_a_store_somebody_else_is_writing_to_is_busy(
     own: Path, monkeypatch: pytest.MonkeyPatch
 ) -> None:
@@ -110,6 +113,7 @@ def test_reading_goes_on_while_somebody_writes(own: Path) -> None:
         assert {booking.groups for booking in facts(own, DAY).bookings} != {199}
 
 
+@pytest.mark.file
 @pytest.mark.parametrize(
     ("pragma", "said"),
     [("query_only = ON", "read but not written"), ("max_page_count = 1", "is full")],

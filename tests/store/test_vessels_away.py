@@ -69,6 +69,7 @@ def test_an_odd_absence_is_refused_and_leaves_nothing(
     assert facts(own, TODAY).vessels == before
 
 
+@pytest.mark.file
 def test_an_absence_belongs_to_a_vessel_that_is_there(own: Path) -> None:
     with sqlite3.connect(own) as connection:
         connection.execute("PRAGMA foreign_keys = ON")

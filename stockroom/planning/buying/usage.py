@@ -64,6 +64,20 @@ def drawn_so_far(facts: Facts, drawn: Iterable[Drawn]) -> list[Use]:
     return [_use(facts.lines[key[1]], key, by, 0) for key, by in sorted(totals.items())]
 
 
+def written_off(facts: Facts) -> list[Use]:
+    """What was spilled and what is still lent in the period, by line: each its own total.
+
+    `form` says which; never part of what is used. What was lent and came back is left out.
+    """
+    totals: Totals = {}
+    for one in facts.written_off:
+        if facts.start <= one.on <= facts.end:
+            line = facts.lines[one.line]
+            _add(totals, (one.how, line.key, line.strength_text), one.bottle, one.amount)
+    uses = [_use(facts.lines[key[1]], key, by, 0) for key, by in sorted(totals.items())]
+    return [use for use in uses if use.amount > 0]
+
+
 def _bought(facts: Facts) -> set[str]:
     """The lines that come in bottles: without a method, and none of them made here."""
     made_here = {bottle.line for bottle in facts.bottles if bottle.made_here}

@@ -197,17 +197,24 @@ class Serving:
     def _filled_in_turn(self, want: Want, line: Line, alike: list[str]) -> Shares:
         if len(alike) < 2:
             return []
-        missing = self.amount_of(want, line, alike[0])
         shares: Shares = []
         for number in alike:
-            share = min(missing, self.shelf.left[number])
+            share = min(self._still_wanted(want, line, shares, number), self.shelf.left[number])
             if share:
                 shares.append((number, share))
-            missing -= share
         # only the last of them is left with something in it
-        if missing or self.too_close(want, *shares[-1]):
+        if self._still_wanted(want, line, shares, alike[-1]) or self.too_close(want, *shares[-1]):
             return []
         return shares
+
+    def _still_wanted(self, want: Want, line: Line, given: Shares, number: str) -> int:
+        """What one more bottle would give after others gave theirs, micro-units."""
+        whole = self.amount_of(want, line, given[0][0] if given else number)
+        if line.form is not Form.SOLID:
+            return whole - sum(amount for _, amount in given)
+        # in parts of the whole: a gram of one jar may hold more than a gram of another
+        part = sum(amount / self.amount_of(want, line, one) for one, amount in given)
+        return max(0, round(self.amount_of(want, line, number) * (1.0 - part)))
 
     def mixed(
         self, want: Want, line: Line, fit: list[str], to_empty: list[str]
@@ -219,10 +226,9 @@ class Serving:
                 if not all(self.alike(want, line, emptied[0], n) for n in emptied[1:]):
                     continue
                 given = [(number, left[number]) for number in emptied]
-                missing = self.amount_of(want, line, emptied[0])
-                missing -= sum(amount for _, amount in given)
-                for last in fit if missing > 0 else ():
-                    if last in emptied or missing > left[last]:
+                for last in fit:
+                    missing = self._still_wanted(want, line, given, last)
+                    if last in emptied or not 0 < missing <= left[last]:
                         continue
                     alike = self.alike(want, line, emptied[0], last)
                     if alike and not self.too_close(want, last, missing):
@@ -231,6 +237,9 @@ class Serving:
     def alike(self, want: Want, line: Line, first: str, number: str) -> bool:
         """True when a class may be given some of each of two bottles."""
         if want.under is None and want.need.requirement.closeness is Closeness.PRESENT:
+            return True
+        # any jar of a solid will do, whatever its assay: each is weighed by its own
+        if line.form is Form.SOLID:
             return True
         one, other = (self._strength(line, n, want.use_day) for n in (first, number))
         if one is None or other is None:

@@ -16,6 +16,7 @@ from stockroom.keeping.rules import Origin, Purpose, RuleKind
 from stockroom.keeping.strength import Strengths, strengths_on
 from stockroom.keeping.verdict import USABLE, Condition, Limit, Verdict, judge, limits_of
 from stockroom.measure.amounts import Kind
+from stockroom.planning.amounts import per_gram
 from stockroom.planning.choosing.promises import Judge as Judge
 from stockroom.planning.choosing.promises import Promise as Promise
 from stockroom.planning.choosing.promises import Promises
@@ -293,8 +294,11 @@ def _last_found(bottle: Bottle) -> int:
 
 
 def solute_held(shelf: Shelf, line: Line, number: str, on: date) -> float | None:
-    """The strength a bottle is expected to hold on a day, in the line's unit; None if a solid."""
+    """The strength a bottle is expected to hold on a day, in the line's unit.
+
+    Of a solid what a gram holds, by the bottle's own assay; None where it has none.
+    """
     if line.form is Form.SOLID:
-        return None
+        return per_gram(line, shelf.bottle[number])
     opened = shelf.opening(number) or on
     return shelf.verdict(number, on, opened=opened).strengths.expected

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 from stockroom.keeping.rules import Purpose
 from stockroom.planning.decisions import Draw, Make
-from stockroom.planning.facts import Form, Ingredient, Line, Method
+from stockroom.planning.facts import Bottle, Form, Ingredient, Line, Method
 from stockroom.planning.replaying.age import faded, good_until, judged_on
 from stockroom.planning.replaying.bottles import barred_in, too_old, wrong_strength
 from stockroom.planning.replaying.exact import titrated_in_time
@@ -132,7 +132,17 @@ def _part(laid: Walk, make: Make, draw: Draw, line: Line, method: Method) -> _Pa
     elif source is not None:
         strength = faded(laid, line, source, make.on).expected
     places = tuple(i for i, one in enumerate(method.ingredients) if line.key in one.lines)
-    return _Part(draw, line, None if line.form is Form.SOLID else strength, places)
+    if line.form is Form.SOLID:
+        strength = _in_a_gram(line, bottle)
+    return _Part(draw, line, strength, places)
+
+
+def _in_a_gram(line: Line, bottle: Bottle | None) -> float | None:
+    """Solute in a gram of a solid by the bottle's own assay; None where its line's holds."""
+    if bottle is None or bottle.assay is None or not line.solute_per_gram:
+        return None
+    thousandfold = bottle.assay * 1000.0
+    return thousandfold / line.molar_mass if line.molar_mass else thousandfold
 
 
 def _right_kind(make: Make, product: Line, method: Method, part: _Part) -> Iterator[Fault]:
@@ -183,7 +193,7 @@ def _whole(product: Line, ingredient: Ingredient, part: _Part, volume: int) -> f
         return None
     solute = product.strength * volume / 1000.0
     if part.line.form is Form.SOLID and part.line.solute_per_gram:
-        return solute / part.line.solute_per_gram * 1_000_000
+        return solute / (part.strength or part.line.solute_per_gram) * 1_000_000
     held = part.line.strength if part.strength is None else part.strength
     return solute / held * 1000.0 if held else None
 

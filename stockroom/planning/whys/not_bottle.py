@@ -6,7 +6,7 @@ from datetime import date, timedelta
 
 from stockroom.keeping.rules import Purpose
 from stockroom.measure.amounts import Kind
-from stockroom.planning.amounts import say
+from stockroom.planning.amounts import say, say_left
 from stockroom.planning.choosing.fitness import found_valid_from, judge_for_need
 from stockroom.planning.choosing.shelf import Shelf
 from stockroom.planning.decisions import Answer, Make
@@ -73,10 +73,10 @@ def too_little(
     if other.left <= 0:
         return "it is empty"
     if left <= 0 or (left < wanted and line.form is not Form.SOLID):
-        held = f"{say(other.left, line.kind)} of it, {say(wanted, line.kind)} wanted"
+        held = f"{say_left(other, line)} of it, {say(wanted, line.kind)} wanted"
         return f"only {held}" if not claims else f"{held}, and {_promised(claims, rank, line.kind)}"
     if line.form is not Form.SOLID and shelf.too_close(other.number, wanted, booking):
-        gone, held = say(other.left - left + wanted, line.kind), say(other.left, line.kind)
+        gone, held = say(other.left - left + wanted, line.kind), say_left(other, line)
         return f"{gone} of {held} in it would be promised: too close to call"
     return ""
 

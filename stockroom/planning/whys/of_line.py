@@ -9,7 +9,7 @@ from collections.abc import Iterable
 from stockroom.keeping.verdict import USABLE, Condition, verdict
 from stockroom.measure.amounts import Kind
 from stockroom.measure.reading import tidy
-from stockroom.planning.amounts import say
+from stockroom.planning.amounts import say, say_left
 from stockroom.planning.decisions import Answer, Make, Order, Outcome, Plan
 from stockroom.planning.facts import Bottle, Facts, Form, Line
 from stockroom.planning.whys.of_things import checks_of, coming_of, make_head, noted, order_rows
@@ -79,7 +79,7 @@ def _held(facts: Facts, plan: Plan, line: Line) -> str:
 def _bottle(facts: Facts, plan: Plan, line: Line, bottle: Bottle) -> str:
     judged = verdict(bottle.record, line.rules, plan.as_at)
     promised = _promised(plan, bottle.number)
-    words = f"{bottle.number} {say(bottle.left, line.kind)}"
+    words = f"{bottle.number} {say_left(bottle, line)}"
     if judged.condition not in USABLE:
         return f"{words} ({judged.condition})"
     until = f"until {judged.good_until}" if judged.good_until else ""

@@ -7,7 +7,7 @@ from datetime import date
 
 from stockroom.keeping.verdict import Verdict, verdict
 from stockroom.measure.amounts import Kind
-from stockroom.planning.amounts import say, say_strength
+from stockroom.planning.amounts import say, say_left, say_strength
 from stockroom.planning.decisions import CheckToDo, Coming, Make, Order, Plan
 from stockroom.planning.facts import Bottle, Facts, Firmness, Form
 from stockroom.planning.tell import inherited_doubt
@@ -88,7 +88,7 @@ def bottles(facts: Facts, plan: Plan, wanted: str) -> list[str]:
 def _bottle_rows(facts: Facts, plan: Plan, bottle: Bottle) -> Iterable[str]:
     line = facts.lines[bottle.line]
     judged = verdict(bottle.record, line.rules, plan.as_at)
-    left = say(bottle.left, line.kind)
+    left = say_left(bottle, line)
     until = f", good until {judged.good_until}" if judged.good_until else ""
     yield (
         f"{bottle.number} {line.key}, {left} left in {bottle.place or 'no place'}: "

@@ -10,6 +10,8 @@ from typing import Any
 import sqlalchemy as sa
 from alembic import op
 
+from stockroom.store.migrations.guards import Guard, put_up
+
 revision = "0001"
 down_revision = None
 
@@ -27,8 +29,7 @@ def upgrade() -> None:
     _changes()
     _bottles()
     _entries()
-    for trigger in TRIGGERS:
-        op.execute(trigger)
+    put_up(*GUARDS)
 
 
 def downgrade() -> None:
@@ -304,23 +305,22 @@ def _entries() -> None:
 
 
 # KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
-def _never(table: str, action: str, words: str) -> str:
-    return (
-        f"CREATE TRIGGER {table}_no_{action.lower()} BEFORE {action} ON {table}"
-        f" BEGIN SELECT RAISE(ABORT, 'KEPT {words}'); END"
-    )
+def _never(table: str, action: str, words: str) -> Guard:
+    return Guard(f"{table}_no_{action.lower()}", table, action, f"KEPT {words}")
 
 
-def _no_overwrite(table: str) -> str:
+def _no_overwrite(table: str) -> Guard:
     # INSERT OR REPLACE would remove the old row without waking the DELETE trigger
-    return (
-        f"CREATE TRIGGER {table}_no_overwrite BEFORE INSERT ON {table}"
-        f" WHEN EXISTS (SELECT 1 FROM {table} WHERE id = NEW.id)"
-        " BEGIN SELECT RAISE(ABORT, 'KEPT A saved entry is never written over.'); END"
+    return Guard(
+        f"{table}_no_overwrite",
+        table,
+        "INSERT",
+        "KEPT A saved entry is never written over.",
+        f"EXISTS (SELECT 1 FROM {table} WHERE id = NEW.id)",
     )
 
 
-TRIGGERS = (
+GUARDS = (
     _never("entry", "UPDATE", "A ledger entry is never altered."),
     _never("entry", "DELETE", "A ledger entry is never removed."),
     _never("booking_change", "UPDATE", "The record of a booking is never altered."),
@@ -331,12 +331,20 @@ TRIGGERS = (
     _no_overwrite("entry"),
     _no_overwrite("booking_change"),
     _no_overwrite("row_change"),
-    "CREATE TRIGGER entry_put_right_once BEFORE INSERT ON entry"
-    " WHEN EXISTS (SELECT 1 FROM entry WHERE puts_right = NEW.puts_right)"
-    " BEGIN SELECT RAISE(ABORT, 'KEPT An entry is put right once.'); END",
+    Guard(
+        "entry_put_right_once",
+        "entry",
+        "INSERT",
+        "KEPT An entry is put right once.",
+        "EXISTS (SELECT 1 FROM entry WHERE puts_right = NEW.puts_right)",
+    ),
     # two writers can never overdraw: the sum is taken inside the writer's own transaction
-    "CREATE TRIGGER entry_not_below_nothing BEFORE INSERT ON entry"
-    " WHEN NEW.change < 0 AND NEW.change + (SELECT COALESCE(SUM(change), 0) FROM entry"
-    " WHERE bottle_id = NEW.bottle_id) < 0"
-    " BEGIN SELECT RAISE(ABORT, 'NOTENOUGH The bottle holds less than that.'); END",
+    Guard(
+        "entry_not_below_nothing",
+        "entry",
+        "INSERT",
+        "NOTENOUGH The bottle holds less than that.",
+        "NEW.change < 0 AND NEW.change + (SELECT COALESCE(SUM(change), 0) FROM entry"
+        " WHERE bottle_id = NEW.bottle_id) < 0",
+    ),
 )

@@ -10,6 +10,8 @@ from typing import Any
 import sqlalchemy as sa
 from alembic import op
 
+from stockroom.store.migrations.guards import kept, put_up
+
 revision = "0002"
 down_revision = "0001"
 
@@ -23,8 +25,14 @@ def upgrade() -> None:
     _hazards()
     _columns()
     op.execute(TYPED_BY_THE_HOUSE)
-    for trigger in TRIGGERS:
-        op.execute(trigger)
+    put_up(
+        *kept("hazard_text", "What a sheet said"),
+        *kept(
+            "reading",
+            "What a logger read",
+            "id = NEW.id OR (place_id = NEW.place_id AND at = NEW.at)",
+        ),
+    )
 
 
 def downgrade() -> None:
@@ -112,8 +120,8 @@ def _columns() -> None:
     op.add_column("substance", _text("note", server_default=""))
     op.add_column("keeping_rule", _number("ea_kj_mol"))
     op.add_column("keeping_rule", _text("named_law", server_default=""))
-    for name, usual in (("house", "0"), ("in_use", "1")):
-        flag: Column = sa.Column(name, sa.Boolean(), nullable=False, server_default=sa.text(usual))
+    for name, usual in (("house", sa.false()), ("in_use", sa.true())):
+        flag: Column = sa.Column(name, sa.Boolean(), nullable=False, server_default=usual)
         op.add_column("keeping_rule", flag)
     op.add_column("entry", _number("uncertainty"))
     op.add_column("entry", _number("peroxide_mg_kg"))
@@ -123,31 +131,4 @@ def _columns() -> None:
 TYPED_BY_THE_HOUSE = (
     "UPDATE keeping_rule SET house = TRUE WHERE NOT EXISTS"
     " (SELECT 1 FROM house WHERE setting = 'practice' AND value = 'yes')"
-)
-
-
-# KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
-def _kept(table: str, what: str, alike: str) -> tuple[str, ...]:
-    def never(name: str, when: str, past: str, only: str = "") -> str:
-        return (
-            f"CREATE TRIGGER {table}_no_{name} BEFORE {when} ON {table}{only}"
-            f" BEGIN SELECT RAISE(ABORT, 'KEPT {what} is never {past}.'); END"
-        )
-
-    # INSERT OR REPLACE would remove the old row without waking the DELETE trigger
-    there = f" WHEN EXISTS (SELECT 1 FROM {table} WHERE {alike})"
-    return (
-        never("update", "UPDATE", "altered"),
-        never("delete", "DELETE", "removed"),
-        never("overwrite", "INSERT", "written over", there),
-    )
-
-
-TRIGGERS = (
-    *_kept("hazard_text", "What a sheet said", "id = NEW.id"),
-    *_kept(
-        "reading",
-        "What a logger read",
-        "id = NEW.id OR (place_id = NEW.place_id AND at = NEW.at)",
-    ),
 )

@@ -10,6 +10,8 @@ from typing import Any
 import sqlalchemy as sa
 from alembic import op
 
+from stockroom.store.migrations.guards import Guard, put_up, take_down
+
 revision = "0003"
 down_revision = "0002"
 
@@ -27,9 +29,8 @@ def upgrade() -> None:
     # a check for each of a year of readings would go through all of them
     op.create_index("reading_taken_back_at", "reading_taken_back", ["place_id", "at"])
     # a store made while 0002 was being written may not have it
-    op.execute("DROP TRIGGER IF EXISTS reading_no_delete")
-    for trigger in TRIGGERS:
-        op.execute(trigger)
+    take_down("reading_no_delete")
+    put_up(*GUARDS)
 
 
 def downgrade() -> None:
@@ -42,18 +43,24 @@ def _link(name: str, to: str) -> sa.Column[Any]:
 
 
 # KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
-def _never(name: str, when: str, past: str) -> str:
-    return (
-        f"CREATE TRIGGER reading_taken_back_no_{name} BEFORE {when} ON reading_taken_back"
-        f" BEGIN SELECT RAISE(ABORT, 'KEPT What was taken back is never {past}.'); END"
+def _never(action: str, past: str) -> Guard:
+    return Guard(
+        f"reading_taken_back_no_{action.lower()}",
+        "reading_taken_back",
+        action,
+        f"KEPT What was taken back is never {past}.",
     )
 
 
-TRIGGERS = (
-    "CREATE TRIGGER reading_no_delete BEFORE DELETE ON reading"
-    " WHEN NOT EXISTS (SELECT 1 FROM reading_taken_back AS kept WHERE kept.place_id = OLD.place_id"
-    " AND kept.at = OLD.at AND kept.centi = OLD.centi)"
-    " BEGIN SELECT RAISE(ABORT, 'KEPT What a logger read is never removed.'); END",
-    _never("update", "UPDATE", "altered"),
-    _never("delete", "DELETE", "removed"),
+GUARDS = (
+    Guard(
+        "reading_no_delete",
+        "reading",
+        "DELETE",
+        "KEPT What a logger read is never removed.",
+        "NOT EXISTS (SELECT 1 FROM reading_taken_back AS kept WHERE kept.place_id = OLD.place_id"
+        " AND kept.at = OLD.at AND kept.centi = OLD.centi)",
+    ),
+    _never("UPDATE", "altered"),
+    _never("DELETE", "removed"),
 )

@@ -10,6 +10,8 @@ from typing import Any
 import sqlalchemy as sa
 from alembic import op
 
+from stockroom.store.migrations.guards import kept, put_up
+
 revision = "0004"
 down_revision = "0003"
 
@@ -31,8 +33,16 @@ def upgrade() -> None:
     )
     op.add_column("line", _text("ask_first", server_default=""))
     op.add_column("line", _whole("ask_days", server_default="0"))
-    for trigger in TRIGGERS:
-        op.execute(trigger)
+    put_up(
+        *kept("placed", "An order that was placed", "id = NEW.id OR number = NEW.number"),
+        *kept(
+            "placed_share",
+            "Whose money an order was",
+            "id = NEW.id OR (placed_id = NEW.placed_id AND department_id = NEW.department_id)",
+        ),
+        *kept("placed_came", "What came of an order", "id = NEW.id OR entry_id = NEW.entry_id"),
+        *kept("placed_change", "The record of an order"),
+    )
 
 
 def downgrade() -> None:
@@ -98,32 +108,3 @@ def _link(name: str, to: str, **options: Any) -> Column:
 
 def _table(name: str, *columns: Any) -> None:
     op.create_table(name, sa.Column("id", sa.Integer(), primary_key=True), *columns)
-
-
-# KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
-def _kept(table: str, what: str, alike: str = "id = NEW.id") -> tuple[str, ...]:
-    def never(name: str, when: str, past: str, only: str = "") -> str:
-        return (
-            f"CREATE TRIGGER {table}_no_{name} BEFORE {when} ON {table}{only}"
-            f" BEGIN SELECT RAISE(ABORT, 'KEPT {what} is never {past}.'); END"
-        )
-
-    # INSERT OR REPLACE would remove the old row without waking the DELETE trigger
-    there = f" WHEN EXISTS (SELECT 1 FROM {table} WHERE {alike})"
-    return (
-        never("update", "UPDATE", "altered"),
-        never("delete", "DELETE", "removed"),
-        never("overwrite", "INSERT", "written over", there),
-    )
-
-
-TRIGGERS = (
-    *_kept("placed", "An order that was placed", "id = NEW.id OR number = NEW.number"),
-    *_kept(
-        "placed_share",
-        "Whose money an order was",
-        "id = NEW.id OR (placed_id = NEW.placed_id AND department_id = NEW.department_id)",
-    ),
-    *_kept("placed_came", "What came of an order", "id = NEW.id OR entry_id = NEW.entry_id"),
-    *_kept("placed_change", "The record of an order"),
-)

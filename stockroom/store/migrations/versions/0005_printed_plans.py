@@ -10,6 +10,8 @@ from typing import Any
 import sqlalchemy as sa
 from alembic import op
 
+from stockroom.store.migrations.guards import kept, put_up
+
 revision = "0005"
 down_revision = "0004"
 
@@ -26,8 +28,9 @@ def upgrade() -> None:
         sa.Column("cautious", sa.Boolean(), nullable=False),
         *[_text(name) for name in ("digest", "usual", "marks", "decisions")],
     )
-    for trigger in TRIGGERS:
-        op.execute(trigger)
+    put_up(
+        *kept("printed_plan", "A plan that was kept", "id = NEW.id OR number = NEW.number"),
+    )
 
 
 def downgrade() -> None:
@@ -37,24 +40,3 @@ def downgrade() -> None:
 
 def _text(name: str, **options: Any) -> sa.Column[Any]:
     return sa.Column(name, sa.String(), nullable=False, **options)
-
-
-# KEPT marks texts of ours among the driver's own errors; the rest is shown to the user
-def _never(name: str, when: str, past: str, only: str = "") -> str:
-    return (
-        f"CREATE TRIGGER printed_plan_no_{name} BEFORE {when} ON printed_plan{only}"
-        f" BEGIN SELECT RAISE(ABORT, 'KEPT A plan that was kept is never {past}.'); END"
-    )
-
-
-TRIGGERS = (
-    _never("update", "UPDATE", "altered"),
-    _never("delete", "DELETE", "removed"),
-    # INSERT OR REPLACE would remove the old row without waking the DELETE trigger
-    _never(
-        "overwrite",
-        "INSERT",
-        "written over",
-        " WHEN EXISTS (SELECT 1 FROM printed_plan WHERE id = NEW.id OR number = NEW.number)",
-    ),
-)
