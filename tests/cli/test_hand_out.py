@@ -175,7 +175,17 @@ def test_the_folder_says_what_each_file_column_and_unit_is(out: Path) -> None:
 
 # figures that are in no unit: they count or multiply
 _BARE = "entries version number groups alternative lasts_count decay_order packs factor m_factor"
-_UNITS = ("µg", "pence", "minutes", "hours", "days", "thousandths", "g/mol", "g/cm3", "per cent")
+_UNITS: tuple[str, ...] = (
+    "µg",
+    "pence",
+    "minutes",
+    "hours",
+    "days",
+    "thousandths",
+    "g/mol",
+    "g/cm3",
+    "per cent",
+)
 _UNITS += ("degree", "fraction", "own unit", "in unit", "kJ/mol", "mg/kg", "what it holds, in µL")
 _UNITS += ("in µL", "times faster")
 
