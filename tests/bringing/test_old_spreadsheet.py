@@ -59,7 +59,9 @@ OUTCOMES = [
 ]
 
 
-@pytest.mark.parametrize(("number", "status", "keys"), OUTCOMES, ids=lambda each: str(each)[:12])
+@pytest.mark.parametrize(
+    ("number", "status", "keys"), OUTCOMES, ids=[f"row {row}" for row, _, _ in OUTCOMES]
+)
 def test_each_row_is_accepted_asked_about_or_refused(
     old: ListRead, number: int, status: Status, keys: set[str]
 ) -> None:

@@ -145,7 +145,7 @@ def test_flags_are_shown_without_a_kind_of_value(stockroom: Stockroom) -> None:
 
 def test_an_empty_store_suggests_a_table_there_is(stockroom: Stockroom, tmp_path: Path) -> None:
     made = stockroom("new", store=tmp_path / "new.sqlite")
-    assert "stockroom add lines item=" in made.err
+    assert "add lines item=" in made.err
 
 
 @pytest.mark.parametrize(
