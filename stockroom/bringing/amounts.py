@@ -29,7 +29,9 @@ _PART = re.compile(
 )
 _ABOUT = re.compile(r"(?:about|approx(?:imately)?|ca|c)\b\.? ?|[~≈] ?", re.IGNORECASE)
 _OWN_UNIT = re.compile(r"(?<=[0-9 ])[^0-9.,\s/\u2044+-]+[0-9]?$")
-_MADE_A_DATE = re.compile(r"[0-9]{4}-[0-9]{2}(?:-[0-9]{2})?")
+_MADE_A_DATE = re.compile(
+    r"[0-9]{4}-[0-9]{2}(?:-[0-9]{2})?|[0-9]{1,2}/[0-9]{1,2}/(?:[0-9]{4}|[0-9]{2})"
+)
 _CONTAINERS = re.compile(
     r"(?:bottles?|btls?|jars?|tubs?|pots?|tins?|packs?|packets?|containers?|winchesters?)\.?",
     re.IGNORECASE,
@@ -102,7 +104,7 @@ def _measured(
     """With the amount in words that are no part of a bottle, its kind known from any unit."""
     size, unit = held.size, _unit(cells.get("unit", ""))
     own = _OWN_UNIT.search(tidy(written))
-    lent = None if own or unit else _lent(written, cells["size"] if size else "", size, decimals)
+    lent = None if own or unit else _lent(written, cells.get("size", ""), size, decimals)
     if lent is not None:
         doubts.note("unit", f"taken as {format_amount(lent)}, by the size beside it")
     left = lent if lent is not None else _amount(written, unit, "amount", decimals, doubts)

@@ -20,8 +20,8 @@ _LENGTH = 16
 class Standing:
     """A bottle here. `places` are all it ever stood in, `size` in millionths of its unit.
 
-    `opened` are the ISO days it may have in a list: one opened since it was brought in is
-    unopened there. `listed` is True where it was brought in from a list.
+    `opened` are the ISO days it may have in a list: one brought in may be
+    unopened there still. `listed` is True where it was brought in from a list.
     """
 
     number: str
@@ -86,7 +86,8 @@ NOTHING_HERE = Here()
 def standing_by_key(bottles: Iterable[Standing]) -> dict[Key, tuple[Standing, ...]]:
     """Bottles by everything a row may say of them, so that no list is searched through."""
     found: dict[Key, list[Standing]] = {}
-    for bottle in bottles:
+    # those of a list first: a row is sooner one of them than a bottle of no list
+    for bottle in sorted(bottles, key=lambda each: not each.listed):
         for key in _keys(bottle):
             found.setdefault(key, []).append(bottle)
     return {key: tuple(each) for key, each in found.items()}

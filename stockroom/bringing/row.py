@@ -89,10 +89,7 @@ def read_row(
     place, missing = _place(cells.get("place", ""), beside, doubts, accepted)
     of_the_house = found.line is not None and found.line.made
     known_part = bool(days.opened or days.opened_sometime or of_the_house)
-    # as the shelf judges it: any day that is known, or printed on it, dates a bottle
-    if not (days.received or days.made or days.opened or (printed is not None and printed.day)):
-        word = "made" if of_the_house else "it came"
-        doubts.note("received", f"no day {word}: needs a look")
+    _note_undated(days, printed, doubts, of_the_house=of_the_house)
     return Incoming(
         line=found.line,
         left=left,
@@ -111,6 +108,15 @@ def read_row(
         note=cells.get("note", ""),
         about=held.about,
     )
+
+
+def _note_undated(
+    days: _Days, printed: PrintedDate | None, doubts: Doubts, *, of_the_house: bool
+) -> None:
+    # as the shelf judges it: any day that is known, or printed on it, dates a bottle
+    if not (days.received or days.made or days.opened or (printed is not None and printed.day)):
+        word = "made" if of_the_house else "it came"
+        doubts.note("received", f"no day {word}: needs a look")
 
 
 def _left(

@@ -11,10 +11,10 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from stockroom.cli.printing import show, suggest, width
-from stockroom.cli.shared import of
+from stockroom.cli.shared import Shared, of
 
 if TYPE_CHECKING:
-    from stockroom.service.bring_in import Progress
+    from stockroom.service.bring_in import BroughtIn, Meant, Progress
 
 
 _File = Annotated[Path, typer.Argument(metavar="FILE", help="The list: .csv or .xlsx.")]
@@ -52,8 +52,7 @@ def bring_in(
     """
     from stockroom.reports.bring_in_json import bring_in_json
     from stockroom.reports.bring_in_text import bring_in_text, next_command
-    from stockroom.service.bring_in import bring_in as written
-    from stockroom.service.bring_in import look_at, meant
+    from stockroom.service.bring_in import meant
 
     shared = of(ctx)
     said = meant(
@@ -63,14 +62,7 @@ def bring_in(
         answers=answer or (),
         answers_in=answers,
     )
-    day = shared.today
-    with _progress() as progress:
-        if agree:
-            done = written(
-                shared.path, file, as_meant=said, today=day, by=shared.initials, progress=progress
-            )
-        else:
-            done = look_at(shared.path, file, as_meant=said, today=day, progress=progress)
+    done = _done(shared, file, said, agree=agree)
     outcome = {"agreed": done.agreed, "practice": done.practice}
     show(
         shared,
@@ -81,6 +73,19 @@ def bring_in(
     suggest(shared, next_command(done.read, str(file), agreed=done.agreed, more=more))
     if agree and done.waiting and not done.written:
         raise typer.Exit(1)
+
+
+def _done(shared: Shared, file: Path, said: Meant, *, agree: bool) -> BroughtIn:
+    from stockroom.service.bring_in import bring_in as written
+    from stockroom.service.bring_in import look_at
+
+    day = shared.today
+    with _progress() as progress:
+        if not agree:
+            return look_at(shared.path, file, as_meant=said, today=day, progress=progress)
+        return written(
+            shared.path, file, as_meant=said, today=day, by=shared.initials, progress=progress
+        )
 
 
 @contextmanager

@@ -84,9 +84,9 @@ def here_in(reader: Reader) -> Here:
 class _Days:
     """What the entries tell of bottles by their id; each opening with its day and its note."""
 
-    begun: dict[int, str]
+    begun: frozenset[int]
     gone: frozenset[int]
-    opened: dict[int, tuple[str, str, str]]
+    opened: dict[int, tuple[str, str]]
     places: dict[int, frozenset[str]]
 
 
@@ -98,34 +98,32 @@ def _days_of(reader: Reader) -> _Days:
     )
     for bottle, place in reader.ask(asked):
         places.setdefault(bottle, set()).add(place)
-    entered = {kind: _entries(reader, kind) for kind in (*BEGINNINGS, EntryKind.OPENED)}
+    begun = (one for kind in BEGINNINGS for one in _entries(reader, kind))
     return _Days(
-        begun={one: each[2] for kind in BEGINNINGS for one, each in entered[kind].items()},
+        begun=frozenset(begun),
         gone=frozenset(_entries(reader, EntryKind.DISCARDED)),
-        opened=entered[EntryKind.OPENED],
+        opened=_entries(reader, EntryKind.OPENED),
         places={one: frozenset(each) for one, each in places.items()},
     )
 
 
-def _entries(reader: Reader, kind: EntryKind) -> dict[int, tuple[str, str, str]]:
-    """Each bottle's first entry of a kind: its day, its note, and when it was entered."""
+def _entries(reader: Reader, kind: EntryKind) -> dict[int, tuple[str, str]]:
+    """Each bottle's first entry of a kind: its day and its note."""
     asked = (
-        "SELECT bottle_id, happened_on, note, entered_at FROM entry"
+        "SELECT bottle_id, happened_on, note FROM entry"
         f" WHERE kind = ? AND {STANDING} ORDER BY entry.id DESC"
     )
     # the first stands last, and is the one that stays
-    return {row[0]: (str(row[1]), row[2], str(row[3])) for row in reader.ask(asked, kind)}
+    return {row[0]: (str(row[1]), row[2]) for row in reader.ask(asked, kind)}
 
 
 def _standing(row: Row, line: str, days: _Days, *, listed: bool) -> Standing:
     printed = row["printed_readings"].partition(";")[0]
     opened = {UNOPENED}
     if row["id"] in days.opened:
-        day, note, entered = days.opened[row["id"]]
-        opened = {SOMETIME if note == DAY_NOT_WRITTEN else day}
-        if listed and entered != days.begun[row["id"]]:
-            # opened here since: the list does not know of it
-            opened.add(UNOPENED)
+        day, note = days.opened[row["id"]]
+        # opened here since, or opened in the list by now: the list and the house may differ
+        opened = {SOMETIME if note == DAY_NOT_WRITTEN else day, *([UNOPENED] if listed else ())}
     return Standing(
         number=row["number"],
         line=line,
