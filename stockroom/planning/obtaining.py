@@ -7,7 +7,7 @@ from datetime import date
 from itertools import islice
 
 from stockroom.planning.amounts import say
-from stockroom.planning.buying.on_way import OnWay, Receipt
+from stockroom.planning.buying.on_way import OnWay, Receipt, ordered_today
 from stockroom.planning.choosing.serve import Serving
 from stockroom.planning.facts import Facts, Form, Line
 from stockroom.planning.timing import Moment, earliest_ready
@@ -93,10 +93,7 @@ class Obtaining:
 
     def arrival(self, line: Line) -> date:
         """The open day an order placed today would come, at the shortest lead time known."""
-        # the dearest pack may be the quickest; whether it is worth it is for the order to say
-        leads = [pack.lead for pack in line.packs if pack.lead is not None]
-        lead = min(leads, default=self.facts.house.default_lead) + line.ask_days
-        return self.facts.calendar.after(self.facts.as_at, lead)
+        return ordered_today(self.facts, line)
 
     def in_hand(self, want: Want) -> Moment:
         """The first moment this can be in hand, from the bottom of its tree up.

@@ -59,6 +59,14 @@ def lasts_unopened(line: Line, received: date) -> date | None:
     return min((limit.until for limit in limits if not limit.known_until), default=None)
 
 
+def ordered_today(facts: Facts, line: Line) -> date:
+    """The open day an order placed today would come, at the shortest lead time known."""
+    # the dearest pack may be the quickest; whether it is worth it is for the order to say
+    leads = [pack.lead for pack in line.packs if pack.lead is not None]
+    lead = min(leads, default=facts.house.default_lead) + line.ask_days
+    return facts.calendar.after(facts.as_at, lead)
+
+
 class OnWay:
     """What is still to come, less what is promised of it. Nothing is promised twice."""
 
@@ -86,6 +94,11 @@ class OnWay:
     def promise_late(self, line: str, amount: int) -> list[tuple[Receipt, int]]:
         """Promise up to `amount` of what comes at all, be it too late."""
         return self._take(self._by_line.get(line, []), amount)
+
+    def set_apart(self, promised: Iterable[tuple[str, int]]) -> None:
+        """Leave out what was promised elsewhere, by the order's number."""
+        for number, amount in promised:
+            self._left[number] -= amount
 
     def release(self, promised: list[tuple[Receipt, int]]) -> None:
         """Take promises back."""

@@ -2,9 +2,12 @@
 
 from __future__ import annotations
 
+from datetime import date
+
 from stockroom.keeping.rules import Purpose
 from stockroom.measure.amounts import Kind
 from stockroom.planning.amounts import draw_for, say
+from stockroom.planning.buying.on_way import OnWay, ordered_today
 from stockroom.planning.choosing.fitness import judge_for_dilution
 from stockroom.planning.choosing.shelf import Promise, Shelf, solute_held
 from stockroom.planning.facts import Facts, Form, Ingredient, Line
@@ -17,11 +20,12 @@ class Drawing:
 
     `taken` is what each need takes of each bought line; `waiting` holds, by
     want, the sources that a batch still to be dated will fill; `outgrown` the
-    lines whose batches, made bigger than needed, ask for more than there is.
+    lines whose batches, made bigger than needed, ask for more than there is. `coming`
+    is what is on its way and promised to nobody.
     """
 
-    def __init__(self, facts: Facts, shelf: Shelf) -> None:
-        self.facts, self.shelf = facts, shelf
+    def __init__(self, facts: Facts, shelf: Shelf, coming: OnWay) -> None:
+        self.facts, self.shelf, self.coming = facts, shelf, coming
         self.taken: list[Taken] = []
         self.waiting: dict[int, Source] = {}
         self.outgrown: set[str] = set()
@@ -86,7 +90,7 @@ class Drawing:
         for part in parts:
             for promise in part.promises:
                 self.shelf.release(promise)
-        unique, to_buy = list(dict.fromkeys(numbers)), any(part.to_buy for part in parts)
+        unique, to_buy = list(dict.fromkeys(numbers)), sum(part.to_buy for part in parts)
         sources = self._from_bottles(batch, ingredient, line, unique, share, to_buy)
         batch.sources += sources
         if line.key not in self.facts.methods:
@@ -99,7 +103,7 @@ class Drawing:
         line: Line,
         numbers: list[str],
         share: float,
-        to_buy: bool,
+        to_buy: int,
     ) -> list[Source]:
         """Draw this share of an ingredient again: the promised bottles first, then other jars."""
         day, judge = batch.start[0], judge_for_dilution(line, batch.line, ingredient.per_dm3)
@@ -120,9 +124,21 @@ class Drawing:
         missing = round(whole * share_left)
         # what rounding each bottle's share to whole micro-units leaves is nothing to buy
         if missing > len(sources) and share_left > 1e-6:
-            self.outgrown |= set() if to_buy else _chain(batch)
+            # whole micro-units are left out, as above
+            more = missing - to_buy if missing - to_buy > len(numbers) + 1 else 0
+            if not to_buy or (more and not self._comes_too(line, more, day)):
+                self.outgrown |= _chain(batch)
             sources.append(Source(line, missing, strength=line.strength))
         return sources
+
+    def _comes_too(self, line: Line, more: int, day: date) -> bool:
+        """Whether so much more than the needs wait for is in hand by a day as well."""
+        if ordered_today(self.facts, line) <= day:
+            return True
+        if self.coming.available(line.key, day, day) < more:
+            return False
+        self.coming.promise(line.key, more, day, day)
+        return True
 
     def _note_taken(self, batch: Batch, line: Line, parts: list[Want], got: list[Source]) -> None:
         """Share what was drawn among the needs: each its exact part, the forced rest in proportion.

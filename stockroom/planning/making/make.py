@@ -15,6 +15,7 @@ from datetime import date, timedelta
 from stockroom.lots.arrange import arrange
 from stockroom.lots.model import Arrangement
 from stockroom.planning.amounts import draw_for
+from stockroom.planning.buying.on_way import OnWay
 from stockroom.planning.choosing.shelf import Shelf
 from stockroom.planning.facts import Facts, Ingredient
 from stockroom.planning.making.as_numbers import Numbers, as_numbers, window
@@ -62,7 +63,9 @@ def make_up(
         if not crossed - alone:
             break
         alone |= crossed
-    drawing = Drawing(facts, shelf)
+    coming = OnWay(facts)
+    coming.set_apart(promised for root in wants for want in root.tree() for promised in want.on_way)
+    drawing = Drawing(facts, shelf, coming)
     for root in wants:
         if root.settled in (Settled.HELD, Settled.BUY) and root.line not in facts.methods:
             drawing.taken.append(taken_alone(root, root.need.on))
