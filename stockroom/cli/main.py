@@ -6,6 +6,7 @@ import contextlib
 import os
 import sys
 from collections.abc import Callable, Sequence
+from functools import cache
 from typing import Annotated, Any
 
 import typer
@@ -40,7 +41,7 @@ from stockroom.cli import (
     verify,
     walk,
 )
-from stockroom.cli.shared import ANYWHERE, pull
+from stockroom.cli.shared import ANYWHERE, WITH_VALUE, pull
 from stockroom.errors import StockroomError
 
 COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
@@ -113,6 +114,9 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
 }
 """Every command under its heading in the help, in the order it is printed."""
 
+NAMES = frozenset(name for commands in COMMANDS.values() for name in commands)
+"""The names of all of them."""
+
 
 class _PlainFlags:
     """A command whose help shows a flag by its name alone: it takes no value to tell of."""
@@ -134,31 +138,12 @@ class _Commands(_PlainFlags, typer.core.TyperGroup):
     """All of them."""
 
 
-app = typer.Typer(
-    name="stockroom",
-    cls=_Commands,
-    pretty_exceptions_enable=False,
-    context_settings={"help_option_names": ["-h", "--help"]},
-    epilog="Try it: stockroom demo",
-)
-
-
-def _enter_commands() -> None:
-    for heading, commands in COMMANDS.items():
-        for name, command in commands.items():
-            app.command(name, cls=_Command, rich_help_panel=heading, epilog=ANYWHERE)(command)
-
-
-_enter_commands()
-
-
 def _print_version(asked: bool) -> None:
     if asked:
         print(f"stockroom {__version__}")
         raise typer.Exit
 
 
-@app.callback()
 def _front(
     store: Annotated[
         str | None,
@@ -181,6 +166,36 @@ def _front(
     The first four options may stand before or after the command.
     """
     # declared for the help and for completion; `pull` has taken their values already
+
+
+@cache
+def program(names: frozenset[str] = NAMES) -> Any:
+    """The front with these of its commands, or with all: built once in a process."""
+    app = typer.Typer(
+        name="stockroom",
+        cls=_Commands,
+        pretty_exceptions_enable=False,
+        context_settings={"help_option_names": ["-h", "--help"]},
+        epilog="Try it: stockroom demo",
+    )
+    for heading, commands in COMMANDS.items():
+        for name, command in commands.items():
+            if name in names:
+                app.command(name, cls=_Command, rich_help_panel=heading, epilog=ANYWHERE)(command)
+    app.callback()(_front)
+    return typer.main.get_command(app)
+
+
+def _wanted(words: Sequence[str]) -> frozenset[str]:
+    """The commands a command line can mean: all of them unless it plainly begins with one."""
+    # what a command's options are costs more to find out than most commands take
+    rest = iter(words)
+    for word in rest:
+        if word in WITH_VALUE:
+            next(rest, None)
+        elif word != "--json" and word.partition("=")[0] not in WITH_VALUE:
+            return NAMES & set(words) if word in NAMES else NAMES
+    return NAMES
 
 
 def run(argv: list[str] | None = None) -> None:
@@ -209,7 +224,7 @@ def run(argv: list[str] | None = None) -> None:
 
 
 def _call(words: Sequence[str]) -> int:
-    command = typer.main.get_command(app)
+    command = program(_wanted(words))
     shared, left = pull(words, value_options(command))
     code = command.main(left or ["--help"], "stockroom", standalone_mode=False, obj=shared)
     return code if isinstance(code, int) else 0

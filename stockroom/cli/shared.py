@@ -37,7 +37,8 @@ SEVERAL = {
 }
 """The options that take several values, for each command that has one."""
 
-_WITH_VALUE = {"--store": "a path", "--as-at": "a date", "--by": "initials"}
+WITH_VALUE = {"--store": "a path", "--as-at": "a date", "--by": "initials"}
+"""Those of the four that a value follows, and what it is."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -121,7 +122,7 @@ def pull(
     for word in rest:
         if word == "--":
             return _shared(found), [*left, word, *rest]
-        if word == "--json" or word.partition("=")[0] in _WITH_VALUE:
+        if word == "--json" or word.partition("=")[0] in WITH_VALUE:
             _keep(found, word, rest)
         elif word.partition("=")[0] in (takes or ()):
             given = [word] if "=" in word else [word, *_next(rest)]
@@ -165,9 +166,7 @@ def _keep(found: dict[str, str], word: str, rest: Iterator[str]) -> None:
         value = next(rest, "")
     if not value or value.startswith("--"):
         after = f", not {value!r}" if value else ""
-        raise BadInput(
-            f"{name} wants {_WITH_VALUE[name]} after it{after}.", "See stockroom --help."
-        )
+        raise BadInput(f"{name} wants {WITH_VALUE[name]} after it{after}.", "See stockroom --help.")
     _one_value(found, name, value)
 
 

@@ -11,7 +11,6 @@ from typing import TYPE_CHECKING
 from stockroom import clock
 from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 from stockroom.service.answers import Done
-from stockroom.service.hand_out import handed_back
 from stockroom.settings import StoreAt
 from stockroom.store import reading, sources
 
@@ -90,6 +89,7 @@ def new_store(path: StoreAt, *, tables: Path | None = None) -> Done:
     Raises: StoreTrouble when something is there already, or what was handed out is damaged;
     BadInput listing the faults of the tables, and then no store is left behind.
     """
+    from stockroom.service.hand_out import handed_back
     from stockroom.store.engine import create
     from stockroom.store.manifest import is_handed_out
     from stockroom.store.seeding import load_tables

@@ -3,9 +3,8 @@ from __future__ import annotations
 import shlex
 
 import pytest
-import typer
 
-from stockroom.cli.main import app, value_options
+from stockroom.cli.main import NAMES, _wanted, program, value_options
 from stockroom.cli.shared import SEVERAL, Shared, pull
 from stockroom.errors import BadInput
 
@@ -79,7 +78,7 @@ def test_initials_come_from_the_line_before_the_environment(
 
 
 def test_the_value_options_are_read_off_the_commands_themselves() -> None:
-    options = value_options(typer.main.get_command(app))
+    options = value_options(program())
     assert {"--for", "--on"} <= options["draw"]
     assert "--sure" not in options["found"]
     assert not {"--good", "--bad"} & options["look"]
@@ -90,7 +89,7 @@ def test_the_value_options_are_read_off_the_commands_themselves() -> None:
 )
 def test_a_second_value_of_an_option_is_refused_and_both_are_quoted(line: str) -> None:
     with pytest.raises(BadInput, match="--of is given twice: 'HCl' and 'NaOH'"):
-        pull(shlex.split(line), value_options(typer.main.get_command(app)))
+        pull(shlex.split(line), value_options(program()))
 
 
 @pytest.mark.parametrize(
@@ -98,11 +97,11 @@ def test_a_second_value_of_an_option_is_refused_and_both_are_quoted(line: str) -
 )
 def test_the_same_value_and_an_option_of_several_pass(line: str) -> None:
     words = shlex.split(line)
-    assert pull(words, value_options(typer.main.get_command(app)))[1] == words
+    assert pull(words, value_options(program()))[1] == words
 
 
 def test_the_options_that_take_several_are_all_named() -> None:
-    commands = vars(typer.main.get_command(app))["commands"]
+    commands = vars(program())["commands"]
     found = {
         name: frozenset(o for param in each.params if _again(param) for o in param.opts)
         for name, each in commands.items()
@@ -113,3 +112,24 @@ def test_the_options_that_take_several_are_all_named() -> None:
 def _again(param: object) -> bool:
     option = getattr(param, "param_type_name", "") == "option"
     return option and bool(getattr(param, "multiple", False))
+
+
+@pytest.mark.parametrize(
+    ("line", "built"),
+    [
+        ("draw S13 100cm3", {"draw"}),
+        ("--store draw --as-at 2027-01-04 plan", {"draw", "plan"}),
+        ("--json --by=T1 plan", {"plan"}),
+        ("why plan", {"why", "plan"}),
+    ],
+)
+def test_only_the_commands_a_line_can_mean_are_built(line: str, built: set[str]) -> None:
+    words = shlex.split(line)
+    front = program(_wanted(words))
+    assert set(vars(front)["commands"]) == built
+    assert pull(words, value_options(front)) == pull(words, value_options(program()))
+
+
+@pytest.mark.parametrize("line", ["", "--help", "--help draw", "drwa S13", "--version", "-- draw"])
+def test_a_line_that_begins_with_no_command_gets_them_all(line: str) -> None:
+    assert _wanted(shlex.split(line)) == NAMES
