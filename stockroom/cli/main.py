@@ -40,6 +40,7 @@ from stockroom.cli import (
     unknown,
     verify,
     walk,
+    walls,
 )
 from stockroom.cli.shared import ANYWHERE, WITH_VALUE, pull
 from stockroom.errors import StockroomError
@@ -85,6 +86,9 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "hazards": hazards.hazards,
         "diary": diary.diary,
         "put-right": righting.put_right,
+    },
+    "On paper and in files": {
+        "strip": walls.strip,
     },
     "Bookings": {
         "book": bookings.book,

@@ -58,6 +58,7 @@ COLUMNS: dict[str, tuple[str, ...]] = {
         "parent": "id bottle_id parent_id",
         "row_change": "id table_name row_key column_name before after why by entered_on entered_at",
         "printed_plan": "id number as_at kept_at by cautious digest usual marks decisions",
+        "printed_copy": "id number sheet about as_at printed_at by lines",
         "entry": "id bottle_id kind happened_on entered_on entered_at by change strength"
         " strength_text uncertainty peroxide_mg_kg passed place_id reason note booking puts_right"
         " about walk_id",

@@ -209,6 +209,14 @@ IN_TABLE: dict[str, dict[str, str]] = {
     },
     "placed_change": {"what": "what was changed: cancelled, or expected on another day"},
     "placed_share": {"pence": "what the department pays of the order, in pence"},
+    "printed_copy": {
+        "number": "the copy's number, as it is printed on it",
+        "sheet": "which sheet it is: week, day, card...",
+        "about": "what it is of: the first day of the week, a booking, a make",
+        "as_at": "the day it was thought of as today",
+        "printed_at": "date and time by the clock of the machine it was printed at",
+        "lines": "the key of each of its lines with what it said, as JSON",
+    },
     "printed_plan": {
         "number": "the plan's number, as it stands on its printed copy",
         "as_at": "the day it was thought of as today",

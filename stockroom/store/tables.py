@@ -62,7 +62,7 @@ from stockroom.store.tables_orders import (
     PlacedChange,
     PlacedShare,
 )
-from stockroom.store.tables_plans import PrintedPlan
+from stockroom.store.tables_plans import PrintedCopy, PrintedPlan
 
 __all__ = [
     "BackupMade",
@@ -95,6 +95,7 @@ __all__ = [
     "PlacedCame",
     "PlacedChange",
     "PlacedShare",
+    "PrintedCopy",
     "PrintedPlan",
     "Reading",
     "ReadingTakenBack",

@@ -15,7 +15,7 @@ from pathlib import Path
 from stockroom.errors import NotEnough, Refused, StoreTrouble
 from stockroom.settings import StoreAt
 
-REVISIONS = ("0001", "0002", "0003", "0004", "0005", "0006", "0007", "0008")
+REVISIONS = ("0001", "0002", "0003", "0004", "0005", "0006", "0007", "0008", "0009")
 """The migrations this program knows, oldest first; the last is what it writes."""
 
 REPLACED = "replaced"

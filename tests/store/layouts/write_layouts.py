@@ -37,6 +37,7 @@ WRITTEN_BY = {
     "0005": "f389ba9",
     "0006": "f389ba9",
     "0007": "6558a65",
+    "0008": "d1c0f5f",
 }
 """The last commit whose program wrote each layout."""
 

@@ -1,0 +1,136 @@
+"""The wall strip: one row a week, for the door of the prep room. No detail."""
+
+from __future__ import annotations
+
+from collections import Counter
+from dataclasses import dataclass
+from datetime import date, timedelta
+
+from stockroom.measure.days import MONTHS
+from stockroom.planning.decisions import Plan
+from stockroom.planning.facts import Booking, Facts, Firmness
+from stockroom.reports.paper.head import Head, foot_lines, head_lines, head_of, mark
+from stockroom.reports.paper.kinds import Kind
+from stockroom.reports.words import counted, day_heading
+
+WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
+
+CLASS, EVENING, CLOSED, START = "#", "*", "/", "o"
+KEY = (
+    (CLASS, "a class; two marks or more, so many"),
+    (EVENING, "outside staffed hours: someone must be here"),
+    (START, "something to start or make for a later day"),
+    (CLOSED, "closed"),
+)
+"""The marks of the strip, and what each says."""
+
+
+@dataclass(frozen=True, slots=True)
+class Day:
+    """One day: classes, those outside staffed hours among them, makes for later, or closed."""
+
+    on: date
+    classes: int = 0
+    evenings: int = 0
+    starts: int = 0
+    closed: bool = False
+
+    @property
+    def marks(self) -> str:
+        """The day in marks: "##o"; "." for an open day with nothing on it."""
+        if self.closed and not self.classes:
+            return CLOSED
+        plain = CLASS * (self.classes - self.evenings) + EVENING * self.evenings
+        return (plain + (START if self.starts else "")) or "."
+
+
+@dataclass(frozen=True, slots=True)
+class Week:
+    """One row: its number in the term, its Monday, Monday to Friday, and a weekend in use."""
+
+    number: int
+    label: str
+    days: tuple[Day, ...]
+    marks: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Strip:
+    """The whole term; `weekdays` are the columns: Monday to Friday, and a weekend in use."""
+
+    head: Head
+    weekdays: tuple[str, ...]
+    weeks: tuple[Week, ...]
+    key: tuple[tuple[str, str], ...] = KEY
+
+
+def strip_of(known: Facts, plan: Plan) -> Strip:
+    """The strip of the plan's term, whole weeks from the Monday it begins in."""
+    meant = [b for b in known.bookings if b.firmness is not Firmness.DROPPED]
+    meant = [b for b in meant if known.start <= b.on <= known.end]
+    columns = 7 if any(b.on.weekday() > 4 for b in meant) else 5
+    starts = Counter(make.on for make in plan.makes if make.ready > make.on)
+    first = known.start - timedelta(days=known.start.weekday())
+    count = (known.end - first).days // 7 + 1
+    mondays = [first + timedelta(weeks=number) for number in range(count)]
+    weeks = tuple(
+        _week(known, meant, starts, number, monday, columns)
+        for number, monday in enumerate(mondays, 1)
+    )
+    about = f"{counted(len(meant), 'booking')} in {counted(count, 'week')}"
+    return Strip(head_of(plan, "The term at a glance", about), WEEKDAYS[:columns], weeks)
+
+
+def _week(
+    known: Facts,
+    meant: list[Booking],
+    starts: Counter[date],
+    number: int,
+    monday: date,
+    columns: int,
+) -> Week:
+    days = []
+    for weekday in range(columns):
+        on = monday + timedelta(days=weekday)
+        classes = [booking for booking in meant if booking.on == on]
+        evenings = sum(not _staffed(known, booking) for booking in classes)
+        closed = not known.calendar.is_open(on)
+        days.append(Day(on, len(classes), evenings, starts[on], closed))
+    label = f"{monday.day} {MONTHS[monday.month - 1][:3]}"
+    return Week(number, label, tuple(days), tuple(d.marks for d in days))
+
+
+def _staffed(known: Facts, booking: Booking) -> bool:
+    ends = booking.minute + booking.lasts_minutes
+    within = known.calendar.open_from <= booking.minute and ends <= known.calendar.open_to
+    return within and known.calendar.is_open(booking.on)
+
+
+def strip_text(strip: Strip, width: int) -> str:
+    """The strip as text: a row a week, then what the marks say."""
+    widest = max((len(m) for week in strip.weeks for m in week.marks), default=1)
+    cell = max(widest, 3) + 1
+    rows = ["week          " + "".join(name.ljust(cell) for name in strip.weekdays).rstrip()]
+    for week in strip.weeks:
+        marks = "".join(each.ljust(cell) for each in week.marks)
+        front = f"{_changed(strip.head, week)}wk {week.number:>2}  {week.label:<7}"
+        rows.append(f"{front}{marks}".rstrip())
+    told = [f"  {sign}  {words}" for sign, words in strip.key]
+    parts = [head_lines(strip.head, width), "\n".join(rows), "\n".join(told)]
+    return "\n\n".join([*parts, foot_lines(strip.head, width)])
+
+
+def strip_lines(strip: Strip) -> dict[str, str]:
+    """Each day with its marks."""
+    days = [(week, day) for week in strip.weeks for day in week.days]
+    return {
+        day.on.isoformat(): f"week {week.number}, {day_heading(day.on)}: {day.marks}"
+        for week, day in days
+    }
+
+
+def _changed(head: Head, week: Week) -> str:
+    return ">" if any(mark(head, day.on.isoformat()) == ">" for day in week.days) else " "
+
+
+STRIP = Kind("strip", strip_text, strip_lines)
