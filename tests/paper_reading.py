@@ -11,8 +11,8 @@ from typing import Any
 
 POINTS_TO_MM = 25.4 / 72
 
-# the overprint of the practice store lies across everything on purpose
-OVERPRINT = frozenset("PRACTICE")
+# of a text's matrix: above this it does not stand upright
+TURNED = 0.05
 
 
 @dataclass(frozen=True)
@@ -48,17 +48,25 @@ def sizes_mm(pdf: bytes) -> list[tuple[float, float]]:
 
 
 def pieces(pdf: bytes) -> list[Piece]:
-    """Every stretch of text with its box, the practice overprint left out."""
+    """Every stretch of upright text with its box; the overprint, which is turned, left out."""
+    import pypdfium2.raw as raw
+
     found = []
     with _opened(pdf) as document:
         for number, page in enumerate(document):
             text = page.get_textpage()
-            for index in range(text.count_rects()):
-                left, bottom, right, top = text.get_rect(index)
-                said = text.get_text_bounded(left, bottom, right, top).strip()
-                if said and not set(said) <= OVERPRINT:
-                    found.append(Piece(number, said, left, bottom, right, top))
+            for each in page.get_objects(filter=[raw.FPDF_PAGEOBJ_TEXT]):
+                said = _said(raw, each, text)
+                if said and abs(each.get_matrix().b) < TURNED:
+                    found.append(Piece(number, said, *each.get_bounds()))
     return found
+
+
+def _said(raw: Any, each: Any, text: Any) -> str:
+    size = raw.FPDFTextObj_GetText(each, text, None, 0)
+    buffer = (raw.FPDF_WCHAR * (size // 2))()
+    raw.FPDFTextObj_GetText(each, text, buffer, size)
+    return bytes(buffer).decode("utf-16-le").rstrip("\0").strip()
 
 
 def outside(pdf: bytes, margin: float = 0.0) -> list[Piece]:
@@ -95,7 +103,9 @@ def codes(pdf: bytes, dpi: int = 300) -> list[str]:
 
     found: list[str] = []
     for picture in pictures(pdf, dpi):
-        read = zxingcpp.read_barcodes(picture, formats=zxingcpp.BarcodeFormat.QRCode)
+        read = zxingcpp.read_barcodes(
+            picture, formats=zxingcpp.BarcodeFormats(zxingcpp.BarcodeFormat.QRCode)
+        )
         found += [each.text for each in read]
     return found
 
@@ -118,4 +128,5 @@ def greys_only(pdf: bytes, dpi: int = 60) -> bool:
 def _opened(pdf: bytes) -> Any:
     import pypdfium2
 
-    return pypdfium2.PdfDocument(pdf)
+    opened: Any = pypdfium2.PdfDocument
+    return opened(pdf)
