@@ -49,8 +49,9 @@ def sizes_mm(pdf: bytes) -> list[tuple[float, float]]:
 
 def pieces(pdf: bytes) -> list[Piece]:
     """Every stretch of upright text with its box; the overprint, which is turned, left out."""
-    import pypdfium2.raw as raw
+    import pypdfium2.raw
 
+    raw: Any = pypdfium2.raw
     found = []
     with _opened(pdf) as document:
         for number, page in enumerate(document):
