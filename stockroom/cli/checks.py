@@ -6,7 +6,7 @@ from typing import Annotated
 
 import typer
 
-from stockroom.cli.printing import show_done
+from stockroom.cli.printing import show_done, suggest
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Bottle, Happened, when
 from stockroom.errors import BadInput
@@ -42,6 +42,8 @@ def found(
         shared.path, bottle, result, spread=spread, note=note, sure=sure, **when(shared, on)
     )
     show_done(shared, done)
+    # what is on the bottle now says another strength and another day
+    suggest(shared, f"stockroom label {done.bottle or bottle}")
 
 
 def look(

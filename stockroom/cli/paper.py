@@ -4,8 +4,10 @@ from __future__ import annotations
 
 import contextlib
 import os
+import re
+import stat
 import tempfile
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated, Any, TypeVar
@@ -14,9 +16,11 @@ import typer
 
 from stockroom.cli.printing import show, suggest, width
 from stockroom.cli.shared import Shared
-from stockroom.errors import BadInput, NotAllowed
+from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 
 if TYPE_CHECKING:
+    from datetime import date
+
     from stockroom.reports.paper.kinds import Kind
 
 Print = Annotated[
@@ -30,6 +34,9 @@ Paper = Annotated[
 ]
 """The option that goes with it."""
 
+USUAL = ("A4", "Letter")
+"""The papers a sheet can be printed on, where it does not say otherwise."""
+
 A = TypeVar("A", bound=Any)
 
 
@@ -41,6 +48,7 @@ def put_out(
     *,
     to: str | None,
     paper: str = "A4",
+    papers: Sequence[str] = USUAL,
 ) -> None:
     """Show a sheet, or print it to the file named `to` under the next copy's number.
 
@@ -50,8 +58,9 @@ def put_out(
     """
     from stockroom.reports.paper.data import as_data
     from stockroom.reports.paper.head import since
-    from stockroom.service.copies import copy_before, number_copy
+    from stockroom.service.copies import copy_before
 
+    form, size = form_of(to) if to is not None else "", paper_of(paper, papers)
     before, lines = copy_before(shared.path, kind.name, about), kind.lines(sheet)
     if before is not None and before.lines:
         told = since(before.number, before.lines, lines, sheet.head.as_at)
@@ -59,26 +68,53 @@ def put_out(
     if to is None:
         show(shared, lambda: kind.text(sheet, width()), lambda: as_data(sheet))
         return
-    from stockroom.reports.typesetting import typeset
-
-    target, form, size = Path(to), form_of(to), paper_of(paper)
-    with written_whole(target) as write:
-        number = number_copy(
-            shared.path,
-            kind.name,
-            about,
-            lines,
-            as_at=sheet.head.as_at,
-            by=shared.given_initials,
-        )
+    with written_whole(Path(to)) as write:
+        number = _numbered(shared, kind.name, about, lines, sheet.head.as_at)
         printed = replace(sheet, head=replace(sheet.head, copy=number))
-        pages = typeset(kind.name, kind.data(printed), form=form, paper=size, on=sheet.head.as_at)
-        names = write(pages)
+        names = _set_and_written(write, kind, printed, form, size)
+    older = older_pages(Path(to), len(names))
     show(
         shared,
-        lambda: f"{', '.join(names)}: {sheet.head.title}, copy {number}",
-        lambda: as_data(printed) | {"files": names},
+        lambda: _said_printed(names, f"{sheet.head.title}, copy {number}", older),
+        lambda: as_data(printed) | {"files": names, "older": older},
     )
+
+
+def _numbered(shared: Shared, name: str, about: str, lines: Mapping[str, str], as_at: date) -> str:
+    """The next copy's number, its lines kept. Raises: NotAllowed where none can be."""
+    from stockroom.service.copies import number_copy
+
+    try:
+        return number_copy(shared.path, name, about, lines, as_at=as_at, by=shared.given_initials)
+    except StoreTrouble as trouble:
+        raise NotAllowed(
+            f"No copy can be numbered, so nothing was printed. {trouble.message}",
+            f"To read it on the screen, leave --print off. {trouble.hint}".strip(),
+        ) from trouble
+
+
+def _set_and_written(
+    write: Callable[[Sequence[bytes]], list[str]], kind: Kind[A], printed: A, form: str, size: str
+) -> list[str]:
+    """Typeset it and write it. Raises: NotAllowed, naming the number that was taken for it."""
+    from stockroom.reports.typesetting import typeset
+
+    head = printed.head
+    pages = typeset(kind.name, kind.data(printed), form=form, paper=size, on=head.as_at)
+    try:
+        return write(pages)
+    except OSError as trouble:
+        raise NotAllowed(
+            f"Copy {head.copy} was numbered and not written: {trouble.strerror or trouble}.",
+            "Make room or name another place, and print it anew: it gets the next number.",
+        ) from trouble
+
+
+def _said_printed(names: Sequence[str], what: str, older: Sequence[str]) -> str:
+    said = f"{', '.join(names)}: {what}"
+    if older:
+        said += f"\nleft as they were, of an earlier print: {', '.join(older)}"
+    return said
 
 
 def form_of(to: str) -> str:
@@ -89,19 +125,19 @@ def form_of(to: str) -> str:
     if form not in FORMATS:
         raise BadInput(
             f"--print {to}: a sheet is written as .pdf, .svg or .png.",
-            f"Name it so: --print {Path(to).stem or 'sheet'}.pdf",
+            f"Name it so: --print {Path(to).stem.strip('.') or 'sheet'}.pdf",
         )
     return form
 
 
-def paper_of(paper: str) -> str:
+def paper_of(paper: str, papers: Sequence[str] = USUAL) -> str:
     """The paper named, in its usual spelling. Raises: BadInput for another."""
-    from stockroom.reports.typesetting import PAPERS
-
-    for name in PAPERS:
+    for name in papers:
         if name.lower() == paper.strip().lower():
             return name
-    raise BadInput(f"--paper {paper}: there is no such paper here.", "Write A4 or Letter.")
+    raise BadInput(
+        f"--paper {paper}: this is not printed on that.", f"Write {' or '.join(papers)}."
+    )
 
 
 def page_names(target: Path, count: int) -> list[Path]:
@@ -111,29 +147,47 @@ def page_names(target: Path, count: int) -> list[Path]:
     return [target.with_name(f"{target.stem}-{n}{target.suffix}") for n in range(1, count + 1)]
 
 
+def older_pages(target: Path, count: int) -> list[str]:
+    """Files beside it that look like pages of an earlier print and are none of this one.
+
+    Only pictures come in several; nothing is removed, since a name tells not what is in it.
+    """
+    if target.suffix.lower() == ".pdf":
+        return []
+    page = re.compile(rf"{re.escape(target.stem)}-(\d+){re.escape(target.suffix)}")
+    mine = {each.name for each in page_names(target, count)}
+    found = {
+        int(named[1]): each
+        for each in target.parent.iterdir()
+        if (named := page.fullmatch(each.name)) and each.name not in mine
+    }
+    alone = [target] if target.name not in mine and target.is_file() else []
+    return [str(each) for each in (*alone, *(found[number] for number in sorted(found)))]
+
+
 @contextlib.contextmanager
 def written_whole(target: Path) -> Iterator[Callable[[Sequence[bytes]], list[str]]]:
     """A writer of the file `target`, or of one for each page beside it; whole or not at all.
 
-    The folder is tried before the block begins, so that what the block does, taking a number,
-    is not done for a file that could never be written.
+    The folder and the name are tried before the block begins, so that what the block does,
+    taking a number, is not done for a file that could never be written.
     Raises: BadInput for a folder that is not there; NotAllowed where nothing can be written.
     """
-    folder = target.parent
-    if not folder.is_dir():
-        raise BadInput(f"{target}: there is no folder {folder}.", "Make it first, or name another.")
-    if target.is_dir():
-        raise BadInput(f"{target} is a folder.", "Name a file in it.")
     try:
-        with tempfile.TemporaryDirectory(dir=folder, prefix=".printing-") as beside:
+        _check_target(target)
+        with tempfile.TemporaryDirectory(dir=target.parent, prefix=".printing-") as beside:
+            _try_name(Path(beside), target)
 
             def write(pages: Sequence[bytes]) -> list[str]:
                 names = page_names(target, len(pages))
+                for name in names:
+                    _check_target(name)
                 for name, page in zip(names, pages, strict=True):
                     fresh = Path(beside) / name.name
                     fresh.write_bytes(page)
                 for name in names:
-                    os.replace(Path(beside) / name.name, name)
+                    # where a name leads elsewhere, the file it leads to is the one to write
+                    os.replace(Path(beside) / name.name, _led_to(name))
                 return [str(name) for name in names]
 
             yield write
@@ -142,6 +196,37 @@ def written_whole(target: Path) -> Iterator[Callable[[Sequence[bytes]], list[str
             f"{target} cannot be written: {trouble.strerror or trouble}.",
             "Nothing was printed; name a file where you may write.",
         ) from trouble
+
+
+def _check_target(target: Path) -> None:
+    """Pass for a file that may be made or written over. Raises: BadInput, NotAllowed."""
+    folder = target.parent
+    if not folder.is_dir():
+        raise BadInput(f"{target}: there is no folder {folder}.", "Make it first, or name another.")
+    if target.is_dir():
+        raise BadInput(f"{target} is a folder.", "Name a file in it.")
+    if target.exists() and not target.is_file():
+        raise BadInput(f"{target} is no file to write a sheet in.", "Name a file.")
+    if target.exists() and not target.stat().st_mode & stat.S_IWUSR:
+        # a rename would pass over what its owner meant
+        raise NotAllowed(
+            f"{target} may only be read.", "Nothing was printed; name another, or make it writable."
+        )
+
+
+def _try_name(beside: Path, target: Path) -> None:
+    # with a page number behind it, the longest it can become
+    tried = beside / f"{target.stem}-999{target.suffix}"
+    try:
+        tried.touch()
+    except ValueError as strange:
+        # a null in it
+        raise OSError(str(strange)) from strange
+    tried.unlink()
+
+
+def _led_to(name: Path) -> Path:
+    return name.resolve() if name.is_symlink() else name
 
 
 def next_step(shared: Shared, command: str) -> None:

@@ -7,8 +7,10 @@ from typing import Annotated, Any, TypedDict
 
 import typer
 
+from stockroom.cli.paper import Paper, Print, put_out
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared, of
+from stockroom.cli.tables import Bom, Csv, check_files, write_table
 from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
 
@@ -93,49 +95,79 @@ def past(
     ctx: typer.Context,
     on: Annotated[str | None, typer.Option(metavar="DATE", help="The day; else today.")] = None,
     cautious: Cautious = False,
+    csv: Csv = None,
+    bom: Bom = False,
 ) -> None:
     """What is past, weak, undated or unchecked on a day, and for which booking it matters.
 
     Example: stockroom past --on 2027-02-10
     """
+    from stockroom.reports.files.csv_out import past_csv
     from stockroom.reports.json_plan import past_json
     from stockroom.reports.past_text import past_text
     from stockroom.service.plan import past_on
 
     shared = of(ctx)
+    check_files(csv, bom=bom)
     today = shared.today
     day = day_or_none(on, "--on") or today
     answer = past_on(shared.path, as_at=today, on=day, cautious=cautious)
+    if csv is not None:
+        return write_table(shared, csv, "past", past_csv(answer, bom=bom))
     show(shared, lambda: past_text(answer, day, width()), lambda: past_json(answer, day))
 
 
 def usage(
-    ctx: typer.Context, start: From = None, end: To = None, cautious: Cautious = False
+    ctx: typer.Context,
+    start: From = None,
+    end: To = None,
+    cautious: Cautious = False,
+    csv: Csv = None,
+    bom: Bom = False,
 ) -> None:
     """What the term uses, by solution and in bought form.
 
     Example: stockroom usage
     """
+    from stockroom.reports.files.csv_out import usage_csv
     from stockroom.reports.json_plan import usage_json
     from stockroom.reports.usage_text import usage_text
     from stockroom.service.plan import term_plan
 
     shared = of(ctx)
+    check_files(csv, bom=bom)
     answer = term_plan(shared.path, **_asked(shared, start, end), cautious=cautious)
+    if csv is not None:
+        return write_table(shared, csv, "usage", usage_csv(answer, bom=bom))
     show(shared, lambda: usage_text(answer, width()), lambda: usage_json(answer))
 
 
-def buying(ctx: typer.Context, cautious: Cautious = False) -> None:
+def buying(
+    ctx: typer.Context,
+    cautious: Cautious = False,
+    to: Print = None,
+    paper: Paper = "A4",
+    csv: Csv = None,
+    bom: Bom = False,
+) -> None:
     """What to order, by when, why, and whose money it is.
 
-    Example: stockroom buying --as-at 2027-01-11
+    Example: stockroom buying --csv buying.csv
     """
     from stockroom.reports.buying_text import buying_text
+    from stockroom.reports.files.csv_out import buying_csv
     from stockroom.reports.json_plan import buying_json
+    from stockroom.reports.paper.buying_sheet import BUYING, buying_sheet_of
     from stockroom.service.plan import term_plan
 
     shared = of(ctx)
+    check_files(csv, bom=bom, to=to)
     answer = term_plan(shared.path, as_at=shared.today, cautious=cautious)
+    if csv is not None:
+        return write_table(shared, csv, "buying", buying_csv(answer, bom=bom))
+    if to is not None:
+        about = answer.start.isoformat()
+        return put_out(shared, BUYING, buying_sheet_of(answer), about, to=to, paper=paper)
     show(shared, lambda: buying_text(answer, width()), lambda: buying_json(answer))
 
 

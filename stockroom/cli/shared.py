@@ -32,6 +32,7 @@ SEVERAL = {
     "bring-in": frozenset({"--column", "--answer"}),
     "fades": frozenset({"--below"}),
     "make": frozenset({"--from"}),
+    "picture": frozenset({"--below"}),
     "titrate": frozenset({"--dilution"}),
     "what-if": frozenset({"--groups", "--shift", "--without", "--cancel", "--book"}),
 }

@@ -133,6 +133,8 @@ def _record(shared: Shared, bottle: str, found: Titrated, sure: bool, on: str | 
         lambda: report.written_json(written),
     )
     suggest(shared, written.done.next)
+    # what is on the bottle now says another strength and another day
+    suggest(shared, f"stockroom label {written.done.bottle or bottle}")
 
 
 def _refuse_unwritten(sure: bool, on: str | None) -> None:

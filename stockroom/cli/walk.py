@@ -6,13 +6,22 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from stockroom.cli.paper import USUAL, Print, form_of, paper_of, put_out
 from stockroom.cli.printing import show, tell, width
 from stockroom.cli.shared import Shared, of
 from stockroom.cli.stock import Happened, when
-from stockroom.errors import BadInput
+from stockroom.errors import BadInput, NotAllowed
 
 if TYPE_CHECKING:
     from datetime import date
+
+
+WalkPaper = Annotated[
+    str,
+    typer.Option("--paper", metavar="A4|Letter|A5", help="The paper it is printed on."),
+]
+PAPERS = (*USUAL, "A5")
+"""A walk is carried in a pocket, so its sheet may be small."""
 
 
 def walk(
@@ -36,6 +45,8 @@ def walk(
         bool, typer.Option("--end", help="It is finished; tell what came of it.")
     ] = False,
     on: Happened = None,
+    to: Print = None,
+    paper: WalkPaper = "A4",
 ) -> None:
     """Count the shelves: start a round or take it up again, print its sheet, enter counts.
 
@@ -46,6 +57,7 @@ def walk(
     shared = of(ctx)
     counts = enter or bool(file)
     _check_asked(name, places, under_way=counts or end)
+    _check_printed(name, to, paper, under_way=counts or end)
     if not name.strip():
         _list(shared)
         return
@@ -54,7 +66,11 @@ def walk(
     elif end:
         _end(shared, name, on)
     else:
-        _show(shared, name, places, again=again, on=on)
+        _start(shared, name, places, on)
+        if to is None:
+            _print(shared, name, shared.today, again=again)
+        else:
+            _to_paper(shared, name, to, paper, again=again)
 
 
 def _check_asked(name: str, places: str, *, under_way: bool) -> None:
@@ -66,6 +82,20 @@ def _check_asked(name: str, places: str, *, under_way: bool) -> None:
             f"--places {places} with a walk under way?",
             f'They are chosen when it is started: stockroom walk "{name}" --places {places}.',
         )
+
+
+def _check_printed(name: str, to: str | None, paper: str, *, under_way: bool) -> None:
+    """Pass when what is to be printed is the sheet of one walk. Raises: BadInput."""
+    if to is not None and (under_way or not name.strip()):
+        raise BadInput(
+            f"--print {to}: only the sheet to count by is printed.",
+            f'Name the walk, without --enter and --end: stockroom walk "{name.strip() or "Jan"}"'
+            f" --print {to}",
+        )
+    if to is not None:
+        # before the walk is started: a mistyped name must leave nothing behind
+        form_of(to)
+        paper_of(paper, PAPERS)
 
 
 def _enter(
@@ -92,7 +122,7 @@ def _list(shared: Shared) -> None:
     show(shared, lambda: walks_text(found, width()), lambda: walks_json(found))
 
 
-def _show(shared: Shared, name: str, places: str, *, again: bool, on: str | None) -> None:
+def _start(shared: Shared, name: str, places: str, on: str | None) -> None:
     from stockroom.service.walk import sheet
 
     # asked first: to look at a round takes no initials, and writes nothing
@@ -102,7 +132,23 @@ def _show(shared: Shared, name: str, places: str, *, again: bool, on: str | None
         along = tuple(part.strip() for part in places.split(",") if part.strip())
         # what comes next stands at the foot of the sheet, where it is read on paper too
         start(shared.path, name, places=along, **when(shared, on))
-    _print(shared, name, shared.today, again=again)
+
+
+def _to_paper(shared: Shared, name: str, to: str, paper: str, *, again: bool) -> None:
+    from stockroom.reports.paper.walk_sheet import WALK, walk_sheet_of
+    from stockroom.service.walk import sheet, standing_wrong
+
+    found = sheet(shared.path, name, on=shared.today, again=again)
+    assert found is not None
+    if found.walk.ended or not (found.again or found.to_count):
+        raise NotAllowed(
+            f'There is nothing to count on the walk "{found.walk.name}".',
+            f'Read what came of it: stockroom walk "{found.walk.name}"',
+        )
+    wrong = standing_wrong(shared.path, found, on=shared.today)
+    paper_sheet = walk_sheet_of(found, shared.today, wrong)
+    about = found.walk.name
+    put_out(shared, WALK, paper_sheet, about, to=to, paper=paper, papers=PAPERS)
 
 
 def _print(shared: Shared, name: str, today: date, *, again: bool = False) -> None:

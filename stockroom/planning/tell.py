@@ -148,9 +148,16 @@ def _closest_use(wants: Iterable[Want]) -> dict[str, Closeness]:
 
 
 def _about(facts: Facts, shelf: Shelf, bottle: Bottle, closest: Closeness) -> Iterable[str]:
-    line = facts.lines[bottle.line]
     last = max(promise.on for promise in shelf.promises[bottle.number])
-    judged = shelf.verdict_planned(bottle.number, last)
+    return leant_on(facts, bottle, shelf.verdict_planned(bottle.number, last), closest)
+
+
+def leant_on(facts: Facts, bottle: Bottle, judged: Verdict, closest: Closeness) -> Iterable[str]:
+    """What is not known of a bottle that is used as it was judged for a day, a sentence each.
+
+    `closest` is the strictest use of it: an exact one is doubted by its own rules.
+    """
+    line = facts.lines[bottle.line]
     yield from _two_readings(bottle)
     if bottle.about:
         yield "what is left was judged by eye, and not counted since"

@@ -9,6 +9,7 @@ symbols GHS01 to GHS09 of the Globally Harmonized System, from `ghs-hazard-picto
 
 from __future__ import annotations
 
+import re
 from functools import cache
 from importlib.util import find_spec
 from pathlib import Path
@@ -18,7 +19,7 @@ TEMPLATES = Path(__file__).parent / "templates"
 FACE = "Source Sans Pro"
 """The typeface of every sheet and picture. The marks come from those that Typst carries."""
 
-_RED = "#f00"
+_RED = re.compile(r"#ff0000|#f00\b|\bred\b", re.IGNORECASE)
 _BLACK = "#000"
 
 
@@ -38,7 +39,7 @@ def symbol(code: str) -> str:
     path = Path(folder) / f"{code.lower()}.svg"
     if not folder or not path.is_file():
         return ""
-    return path.read_text(encoding="utf-8").replace(_RED, _BLACK)
+    return _RED.sub(_BLACK, path.read_text(encoding="utf-8"))
 
 
 def _inside(package: str, folder: str) -> str:

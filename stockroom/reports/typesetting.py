@@ -21,7 +21,7 @@ if TYPE_CHECKING:
 FORMATS = ("pdf", "svg", "png")
 """What a sheet can be written as; the two pictures come one to a page."""
 
-PAPERS = {"A4": "a4", "Letter": "us-letter"}
+PAPERS = {"A4": "a4", "Letter": "us-letter", "A5": "a5"}
 """The papers sheets are made for, by the name people type."""
 
 PREVIEW_PPI = 144.0
@@ -39,10 +39,12 @@ def typeset(
 ) -> list[bytes]:
     """A template of `templates/` filled with data: a PDF whole, pictures one to a page.
 
-    `paper` is a name of `PAPERS`. `on` dates the PDF; without it, it carries no date.
+    `paper` is a name of `PAPERS`. `on` dates the PDF; without it, a sheet carries no date.
     """
     inputs = {"data": json.dumps(data, ensure_ascii=False), "paper": PAPERS[paper]}
-    moment = None if on is None else _noon(on)
+    inputs |= {} if on is None else {"dated": on.isoformat()}
+    # never left out: the moment of printing would take its place
+    moment = 0 if on is None else _noon(on)
     made = _compiler(template).compile(
         format=form,  # type: ignore[arg-type]
         ppi=ppi,

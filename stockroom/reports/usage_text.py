@@ -18,11 +18,12 @@ _APART = {
     "lent": "LENT, AND NOT COME BACK (no part of what is used)",
 }
 _BESIDE = " (this term, the same term a year before)"
-_KNOWN_BY = {
+KNOWN_BY = {
     "entries": "as the entries say",
     "bookings": "as its bookings work out",
     "table": "as written down",
 }
+"""By what the use of an earlier term is known, in words."""
 
 
 def usage_text(plan: Plan, width: int) -> str:
@@ -54,7 +55,7 @@ def _apart(plan: Plan, how: str, heading: str, width: int) -> str:
 
 def _differences(plan: Plan, width: int) -> str:
     basis = dict.fromkeys(use.basis for use in plan.usage if use.basis)
-    known = ", ".join(_KNOWN_BY.get(each, each) for each in basis)
+    known = ", ".join(KNOWN_BY.get(each, each) for each in basis)
     count = counted(len(plan.differences), "difference")
     heading = f"{count.upper()} FROM THE YEAR BEFORE, THE BIGGEST FIRST ({known})"
     return section(wrap(heading, width), [wrap(text, width, indent=2) for text in plan.differences])

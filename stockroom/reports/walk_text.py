@@ -17,10 +17,13 @@ WIDEST = 100
 """Columns of the sheet at most, so that it prints on one page upright."""
 
 _BLANK = "............"
-_SHEET_FOOT = (
-    f"How to write it: 640{TIED}g, same, about half, missing, here; blank for not yet."
-    f" +{TIED}brown{TIED}powder,{TIED}A2,{TIED}100{TIED}g for a bottle that is not listed."
+HOW = f"How to write it: 640{TIED}g, same, about half, missing, here; blank for not yet."
+"""How a count is written, as it is typed back."""
+
+HOW_UNLISTED = (
+    f"+{TIED}brown{TIED}powder,{TIED}A2,{TIED}100{TIED}g for a bottle that is not listed."
 )
+"""How a bottle that is not listed is written."""
 
 
 def walk_text(sheet: Sheet, width: int) -> str:
@@ -41,19 +44,23 @@ def sheet_text(sheet: Sheet, width: int) -> str:
             *shelves,
             section("LOOK OUT FOR", _look_out(sheet, wide)),
             f"Turned up, not listed: {'_' * (wide - 24)}",
-            wrap(_SHEET_FOOT, wide, hang=0),
+            wrap(f"{HOW} {HOW_UNLISTED}", wide, hang=0),
             _next(sheet, "--enter --again" if sheet.again else "--enter", wide),
         ]
     )
 
 
 def _head(sheet: Sheet, width: int) -> str:
+    lines = [sheet.house, wrap(f'Walk "{sheet.walk.name}" {about_walk(sheet)}', width)]
+    return "\n".join([PRACTICE, *lines] if sheet.practice else lines)
+
+
+def about_walk(sheet: Sheet) -> str:
+    """Where a walk goes along, since when, by whom, and how far it is."""
     walk = sheet.walk
     along = f"along {', '.join(walk.places)}" if walk.places else "along every shelf"
     ended = f", ended {day(walk.ended)} by {walk.ended_by}" if walk.ended else ""
-    about = f'Walk "{walk.name}" {along}, started {day(walk.started)} by {walk.by}{ended}'
-    lines = [sheet.house, wrap(f"{about}: {progress(sheet)}", width)]
-    return "\n".join([PRACTICE, *lines] if sheet.practice else lines)
+    return f"{along}, started {day(walk.started)} by {walk.by}{ended}: {progress(sheet)}"
 
 
 def progress(sheet: Sheet) -> str:

@@ -8,10 +8,12 @@ from __future__ import annotations
 from datetime import date
 
 from stockroom.errors import NotAllowed, UnknownName
+from stockroom.findings import Finding
 from stockroom.measure.amounts import Kind
 from stockroom.measure.days import spell_day
 from stockroom.planning.facts import Bottle
 from stockroom.planning.on_shelf import on_shelf
+from stockroom.planning.standing import where_things_stand
 from stockroom.planning.walking import Met, Visit, Walk, along
 
 # handed on by name: the command line may not reach into planning
@@ -50,6 +52,14 @@ def sheet(path: StoreAt, name: str, *, on: date, again: bool = False) -> Sheet |
         walk = walk_from(reader, row)
         day = walk.ended or on
         return _sheet(reader, row["id"], walk, bottles_of(reader, day), day, again=again)
+
+
+def standing_wrong(path: StoreAt, sheet: Sheet, *, on: date) -> tuple[Finding, ...]:
+    """What stands beside what it must not at the places of a walk, and tight caps there."""
+    with reading(path) as reader:
+        bottles, places = bottles_of(reader, on), places_of(reader)
+        here = [one for one in bottles if not sheet.walk.places or one.place in sheet.walk.places]
+        return tuple(where_things_stand(here, lines_of(reader), places))
 
 
 def open_sheet(path: StoreAt, name: str, *, on: date, again: bool = False) -> Sheet:

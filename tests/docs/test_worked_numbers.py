@@ -29,6 +29,7 @@ RUN = (
     "data-and-sources.md",
     "how-the-plan-is-made.md",
     "nothing-lost.md",
+    "on-paper.md",
 )
 
 

@@ -15,6 +15,10 @@ if TYPE_CHECKING:
     from stockroom.planning.decisions import Plan
 
 
+MOST_CHANGES = 12
+"""Changes told in full at the foot of a sheet; of more there is a count. Also in `base.typ`."""
+
+
 @dataclass(frozen=True, slots=True)
 class Since:
     """What a sheet says otherwise than the copy printed last: `number` is that copy's.
@@ -108,7 +112,7 @@ def _change(before: str | None, now: str) -> str:
 
 def head_lines(head: Head, width: int) -> str:
     """The top of a sheet as text: PRACTICE if it is, the house, the title, the copy."""
-    lines = [head.house, head.title]
+    lines = [wrap(head.house, width, hang=0), wrap(head.title, width, hang=0)]
     lines += [wrap(head.about, width)] if head.about else []
     lines += [wrap(head.safe_side, width)] if head.safe_side else []
     lines.append(wrap(copy_line(head), width))
@@ -137,6 +141,8 @@ def foot_lines(head: Head, width: int) -> str:
     lines: list[str] = []
     if head.since is not None and head.since.changes:
         lines = [f"CHANGED SINCE COPY {head.since.number}"]
-        lines += [wrap(change, width, indent=2) for change in head.since.changes]
+        told, more = head.since.changes[:MOST_CHANGES], len(head.since.changes) - MOST_CHANGES
+        lines += [wrap(change, width, indent=2) for change in told]
+        lines += [f"  and {more} more"] if more > 0 else []
         lines.append("")
     return "\n".join([*lines, wrap(head.caution, width, hang=0)])

@@ -11,18 +11,26 @@ from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Booking, Facts, Firmness
 from stockroom.reports.paper.head import Head, foot_lines, head_lines, head_of, mark
 from stockroom.reports.paper.kinds import Kind
+from stockroom.reports.sheet import page
 from stockroom.reports.words import counted, day_heading
 
 WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
+WEEKEND = 5
+"""The weekday a weekend begins on, Monday being 0."""
 
 CLASS, EVENING, CLOSED, START = "#", "*", "/", "o"
 KEY = (
-    (CLASS, "a class; two marks or more, so many"),
+    (CLASS, "a class; two marks are two, and more than four are counted: 6×"),
     (EVENING, "outside staffed hours: someone must be here"),
     (START, "something to start or make for a later day"),
     (CLOSED, "closed"),
 )
 """The marks of the strip, and what each says."""
+
+MOST = 4
+"""Marks of a kind drawn one by one; of more there is a count before one. Our choice."""
+
+NOTHING_BOOKED = "Nothing is booked this term."
 
 
 @dataclass(frozen=True, slots=True)
@@ -37,10 +45,10 @@ class Day:
 
     @property
     def marks(self) -> str:
-        """The day in marks: "##o"; "." for an open day with nothing on it."""
+        """The day in marks: "##o", "6×#"; "." for an open day with nothing on it."""
         if self.closed and not self.classes:
-            return CLOSED
-        plain = CLASS * (self.classes - self.evenings) + EVENING * self.evenings
+            return CLOSED + (START if self.starts else "")
+        plain = _so_many(CLASS, self.classes - self.evenings) + _so_many(EVENING, self.evenings)
         return (plain + (START if self.starts else "")) or "."
 
 
@@ -56,11 +64,15 @@ class Week:
 
 @dataclass(frozen=True, slots=True)
 class Strip:
-    """The whole term; `weekdays` are the columns: Monday to Friday, and a weekend in use."""
+    """The whole term; `weekdays` are the columns: Monday to Friday, and a weekend in use.
+
+    `told` says what there is to say of a term with nothing in it, "" else.
+    """
 
     head: Head
     weekdays: tuple[str, ...]
     weeks: tuple[Week, ...]
+    told: str = ""
     key: tuple[tuple[str, str], ...] = KEY
 
 
@@ -68,8 +80,10 @@ def strip_of(known: Facts, plan: Plan) -> Strip:
     """The strip of the plan's term, whole weeks from the Monday it begins in."""
     meant = [b for b in known.bookings if b.firmness is not Firmness.DROPPED]
     meant = [b for b in meant if known.start <= b.on <= known.end]
-    columns = 7 if any(b.on.weekday() > 4 for b in meant) else 5
     starts = Counter(make.on for make in plan.makes if make.ready > make.on)
+    # something started on a Saturday is looked for on the wall too
+    used = [*(b.on for b in meant), *(on for on in starts if known.start <= on <= known.end)]
+    columns = 7 if any(on.weekday() >= WEEKEND for on in used) else WEEKEND
     first = known.start - timedelta(days=known.start.weekday())
     count = (known.end - first).days // 7 + 1
     mondays = [first + timedelta(weeks=number) for number in range(count)]
@@ -78,7 +92,13 @@ def strip_of(known: Facts, plan: Plan) -> Strip:
         for number, monday in enumerate(mondays, 1)
     )
     about = f"{counted(len(meant), 'booking')} in {counted(count, 'week')}"
-    return Strip(head_of(plan, "The term at a glance", about), WEEKDAYS[:columns], weeks)
+    head = head_of(plan, "The term at a glance", about)
+    return Strip(head, WEEKDAYS[:columns], weeks, "" if meant else NOTHING_BOOKED)
+
+
+def _so_many(sign: str, count: int) -> str:
+    # a row of ten squares is counted by nobody from the door
+    return sign * count if count <= MOST else f"{count}×{sign}"
 
 
 def _week(
@@ -116,8 +136,8 @@ def strip_text(strip: Strip, width: int) -> str:
         front = f"{_changed(strip.head, week)}wk {week.number:>2}  {week.label:<7}"
         rows.append(f"{front}{marks}".rstrip())
     told = [f"  {sign}  {words}" for sign, words in strip.key]
-    parts = [head_lines(strip.head, width), "\n".join(rows), "\n".join(told)]
-    return "\n\n".join([*parts, foot_lines(strip.head, width)])
+    parts = [head_lines(strip.head, width), strip.told, "\n".join(rows), "\n".join(told)]
+    return page([*parts, foot_lines(strip.head, width)])
 
 
 def strip_lines(strip: Strip) -> dict[str, str]:

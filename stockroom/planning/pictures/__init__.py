@@ -1,0 +1,1 @@
+"""Day-by-day figures that pictures are drawn from, worked out as the plan works them out."""

@@ -1,0 +1,85 @@
+"""What the pages of the handover are made of: parts with points, and what the store tells."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from datetime import date
+from typing import Protocol
+
+
+@dataclass(frozen=True, slots=True)
+class Job:
+    """One thing to do, with a box to tick, and what to type when it is done."""
+
+    text: str
+    commands: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Point:
+    """One thing told: its name, what there is to say of it, and what there is to do."""
+
+    name: str
+    told: tuple[str, ...] = ()
+    jobs: tuple[Job, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class Part:
+    """One part of the pages; `intro` says what it is for, or that there is nothing."""
+
+    title: str
+    intro: str
+    points: tuple[Point, ...] = ()
+
+
+class Change(Protocol):
+    """What was corrected in a table of the house."""
+
+    @property
+    def table(self) -> str: ...
+    @property
+    def row(self) -> str: ...
+    @property
+    def column(self) -> str: ...
+    @property
+    def before(self) -> str: ...
+    @property
+    def after(self) -> str: ...
+    @property
+    def why(self) -> str: ...
+    @property
+    def by(self) -> str: ...
+    @property
+    def on(self) -> str: ...
+
+
+class HandIn(Protocol):
+    """Initials in the ledger."""
+
+    @property
+    def initials(self) -> str: ...
+    @property
+    def entries(self) -> int: ...
+    @property
+    def first(self) -> date: ...
+    @property
+    def last(self) -> date: ...
+
+
+class Beside(Protocol):
+    """What the store tells beside the facts and the plan."""
+
+    @property
+    def store(self) -> str: ...
+    @property
+    def settings(self) -> Sequence[tuple[str, str]]: ...
+    @property
+    def closures(self) -> Sequence[tuple[date, date, str]]: ...
+    @property
+    def changes(self) -> Sequence[Change]: ...
+    @property
+    def hands(self) -> Sequence[HandIn]: ...
+    @property
+    def backup(self) -> tuple[date, str] | None: ...

@@ -1,0 +1,197 @@
+"""Ten lines for a phone, read the evening before: is it ready, and is anything odd?
+
+No table, nothing wider than a small screen: what does not fit is counted and left to the sheet.
+"""
+
+from __future__ import annotations
+
+import textwrap
+from collections.abc import Iterator
+from dataclasses import dataclass
+from datetime import date
+
+from stockroom.measure.days import MONTHS
+from stockroom.planning.decisions import Answer, Outcome, Plan
+from stockroom.planning.facts import Booking, Facts
+from stockroom.planning.people import clock
+from stockroom.planning.ready import Readiness, readiness
+from stockroom.reports.paper.day import bookings_of, instead_of_planned, planned_for
+from stockroom.reports.paper.day_notes import different_of, tied
+from stockroom.reports.paper.day_rows import rows_of
+from stockroom.reports.paper.day_strengths import (
+    DILUTED,
+    FOUND,
+    Known,
+    differs,
+    percent_off,
+    strengths_of,
+)
+from stockroom.reports.sheet import PRACTICE
+from stockroom.reports.words import TIED, amount, counted, day_heading, listed
+
+LINES, WIDTH = 10, 38
+"""The most lines, and the most characters in one: a small screen, by the trade's own wish."""
+
+MAKES_NAMED = 2
+"""Makes still to do that are named; more are counted. Our choice."""
+
+
+@dataclass(frozen=True, slots=True)
+class Phone:
+    """The text: its lines, none longer than WIDTH, and how much more stands on the sheet."""
+
+    on: date
+    booking: str
+    ready: bool
+    lines: tuple[str, ...]
+    more: int = 0
+
+
+def phone_of(known: Facts, plan: Plan, on: date, number: str = "") -> Phone:
+    """The text for a day, or for the one booking of that number."""
+    bookings = bookings_of(known, on, number)
+    planned = planned_for(known, plan, bookings)
+    answer = readiness(known, plan, tuple(b.number for b in planned), "", on)
+    ready = bool(planned) and answer.ready
+    verdict = _verdict(known, plan, bookings, planned, answer)
+    practice = f"  {PRACTICE}" if plan.house.practice else ""
+    top = [*_cut(_what(known, on, bookings), 2), *_cut(f"{verdict}{practice}", 2)]
+    told = [_lines(each) for each in _news(known, plan, planned, answer)]
+    lines, more = _fitted(top, told)
+    return Phone(on, number, ready, tuple(lines), more)
+
+
+def phone_text(phone: Phone) -> str:
+    """The lines, as they are sent."""
+    return "\n".join(phone.lines)
+
+
+def _what(known: Facts, on: date, bookings: tuple[Booking, ...]) -> str:
+    day = day_heading(on).removesuffix(f" {on.year}")
+    if not bookings:
+        return f"{day}: nothing booked"
+    if len(bookings) > 1:
+        return f"{day} {clock(bookings[0].minute)}: {counted(len(bookings), 'booking')}"
+    (only,) = bookings
+    title = known.recipes[only.recipe, only.version].title
+    return f"{day} {clock(only.minute)} {only.number} {title}"
+
+
+def _verdict(
+    known: Facts,
+    plan: Plan,
+    bookings: tuple[Booking, ...],
+    planned: tuple[Booking, ...],
+    answer: Readiness,
+) -> str:
+    if planned:
+        return "Ready: YES" if answer.ready else f"Ready: NO, {len(answer.to_do)} to do"
+    if not bookings:
+        return "Ready: nothing to do"
+    return f"Ready: NO, {instead_of_planned(known, plan, bookings[0])}"
+
+
+# -- what is worth telling, the worst first ---------------------------------------------------
+
+
+def _news(
+    known: Facts, plan: Plan, planned: tuple[Booking, ...], answer: Readiness
+) -> Iterator[str]:
+    if not planned:
+        return
+    several = len(planned) > 1
+    lacking = [n for n in answer.needs if n.outcome in (Outcome.SHORT, Outcome.REFUSED)]
+    for need in lacking:
+        whose = f" for {need.booking.number}" if several else ""
+        yield f"Missing: {need.item} {need.strength}{whose}"
+    yield from _hours(known, plan, planned, answer)
+    strengths = strengths_of(known, plan, answer.needs)
+    yield from _strengths(strengths)
+    yield from _to_do(answer)
+    yield from _other(known, plan, answer.needs)
+    ready = [n for n in answer.needs if n.outcome is Outcome.HAVE]
+    if lacking and ready:
+        yield f"Other {len(ready)} ready"
+
+
+def _hours(
+    known: Facts, plan: Plan, planned: tuple[Booking, ...], answer: Readiness
+) -> Iterator[str]:
+    """What has a time: somebody there, what is never kept, what is soaked the day before."""
+    for row in rows_of(known, plan, planned, answer):
+        if row.key.startswith("here "):
+            yield row.what.capitalize()
+    for watch in plan.watch:
+        if watch.booking in {booking.number for booking in planned}:
+            mixed, gone = clock(watch.not_before), clock(watch.destroy_by)
+            yield f"{watch.booking}: mix from {mixed}, destroyed by {gone}, ticked"
+
+
+def _to_do(answer: Readiness) -> Iterator[str]:
+    for check in answer.checks:
+        yield f"{check.what.capitalize()} {check.subject} by {_short_day(check.by)}: {check.item}"
+    for need in answer.needs:
+        if need.outcome is Outcome.BUY:
+            order = f" ({need.order})" if need.order else ""
+            yield f"Buy: {amount(need.amount, need.kind)} {need.item}{order}"
+    makes = answer.makes
+    if len(makes) > MAKES_NAMED:
+        first, last = _short_day(makes[0].on), _short_day(max(make.on for make in makes))
+        when = first if first == last else f"{first} to {last}"
+        yield f"{len(makes)} makes still to do, {when}"
+        return
+    for make in makes:
+        yield f"Make {_short_day(make.on)}: {make.item} {make.strength}"
+
+
+def _other(known: Facts, plan: Plan, needs: tuple[Answer, ...]) -> Iterator[str]:
+    for words in different_of(known, plan, needs, ()):
+        # what is missing has been said, and first
+        if " goes without " not in words:
+            yield words
+
+
+def _strengths(strengths: tuple[Known, ...]) -> Iterator[str]:
+    """What is not checked, and what is other than the card; else that nothing is."""
+    unchecked = [told.item for told in strengths if not told.today]
+    if unchecked:
+        yield f"Not checked: {listed(dict.fromkeys(unchecked))}"
+    other = [told for told in strengths if differs(told)]
+    for told in other:
+        yield f"{told.item} {percent_off(told.off or 0.0)}: {told.today} {told.basis}"
+    if strengths and not unchecked and not other:
+        found = all(told.basis in (FOUND, DILUTED) for told in strengths)
+        yield "Strengths as card" if found else "Strengths as card, expected"
+
+
+def _short_day(on: date) -> str:
+    return f"{on.day} {MONTHS[on.month - 1][:3]}"
+
+
+# -- fitted to the screen ------------------------------------------------------------------------
+
+
+def _fitted(top: list[str], told: list[list[str]]) -> tuple[list[str], int]:
+    """As much of what is told as fits whole, and how many are left for the sheet."""
+    lines = list(top)
+    for place, each in enumerate(told):
+        left = len(told) - place
+        # the last one needs no room kept for the line that counts what is left
+        kept = 0 if left == 1 else 1
+        if len(lines) + len(each) + kept > LINES:
+            return [*lines, f"and {left} more on the sheet"], left
+        lines += each
+    return lines, 0
+
+
+def _lines(text: str) -> list[str]:
+    return _cut(text, 3)
+
+
+def _cut(text: str, most: int) -> list[str]:
+    """A text in at most so many lines; what is cut off ends with "…"."""
+    whole = textwrap.wrap(tied(text), WIDTH, break_on_hyphens=False)
+    lines = [line.replace(TIED, " ") for line in whole]
+    if len(lines) <= most:
+        return lines
+    return [*lines[: most - 1], textwrap.shorten(lines[most - 1], WIDTH - 1, placeholder="") + "…"]

@@ -1,0 +1,140 @@
+"""The term's workbook as XLSX bytes (ISO/IEC 29500): black on white, ready to print."""
+
+from __future__ import annotations
+
+import io
+import re
+import zipfile
+from datetime import datetime, time
+from typing import Any
+
+from stockroom.reports.files.harmless import harmless
+from stockroom.reports.files.workbook_sheets import Cell, Sheet, Workbook
+from stockroom.reports.words import TIED, counted
+
+NARROWEST, WIDEST = 6, 60
+"""Widths of columns in characters; what is longer wraps. Our choice."""
+
+LONGEST = 32_767
+"""Characters a cell may hold. Source: the published limits of the format's first program."""
+
+FIRST = "About"
+"""The name of the first sheet."""
+
+# what XML 1.0 cannot hold (its production 2), and halves of pairs, which have no UTF-8
+_NO_XML = re.compile("[\x00-\x08\x0b\x0c\x0e-\x1f\ud800-\udfff\ufffe\uffff]")
+_MODIFIED = re.compile(rb"(<dcterms:modified[^>]*>)[^<]*")
+_DAY_OF_ZIP = (1980, 1, 1, 0, 0, 0)
+
+
+def workbook_bytes(book: Workbook) -> bytes:
+    """The file: the same bytes for the same plan and day."""
+    from openpyxl import Workbook as Pages
+
+    pages = Pages(write_only=True)
+    pages.properties.creator = "stockroom"
+    pages.properties.title = _text(book.house)
+    pages.properties.created = datetime.combine(book.as_at, time())
+    _first(pages, book)
+    for sheet in book.sheets:
+        _page(pages, sheet, book)
+    drawn = io.BytesIO()
+    pages.save(drawn)
+    return _settled(drawn.getvalue(), book)
+
+
+def _settled(written: bytes, book: Workbook) -> bytes:
+    """The same file without the moment it was written at."""
+    day = f"{book.as_at.isoformat()}T00:00:00Z".encode()
+    drawn = io.BytesIO()
+    with zipfile.ZipFile(io.BytesIO(written)) as found, zipfile.ZipFile(drawn, "w") as settled:
+        for name in found.namelist():
+            part = found.read(name)
+            if name == "docProps/core.xml":
+                part = _MODIFIED.sub(rb"\g<1>" + day, part)
+            info = zipfile.ZipInfo(name, _DAY_OF_ZIP)
+            info.compress_type = zipfile.ZIP_DEFLATED
+            settled.writestr(info, part)
+    return drawn.getvalue()
+
+
+def _first(pages: Any, book: Workbook) -> None:
+    page = pages.create_sheet(FIRST)
+    page.column_dimensions["A"].width = 20
+    page.column_dimensions["B"].width = WIDEST
+    _for_paper(page, book)
+    for line in book.about:
+        page.append([_styled(page, line, bold=line in book.about[:2], wrap=False)])
+    page.append([])
+    for sheet in book.sheets:
+        rows = counted(len(sheet.rows), "row") if sheet.rows else "nothing"
+        page.append([_styled(page, sheet.name, bold=True), _styled(page, rows)])
+
+
+def _page(pages: Any, sheet: Sheet, book: Workbook) -> None:
+    page = pages.create_sheet(sheet.name)
+    for number, width in enumerate(_widths(sheet)):
+        page.column_dimensions[_letter(number)].width = width
+    # a heading goes along when the rows are rolled up, and stands on every printed side
+    page.freeze_panes = "A2"
+    page.print_title_rows = "1:1"
+    page.auto_filter.ref = f"A1:{_letter(len(sheet.headings) - 1)}{len(sheet.rows) + 1}"
+    _for_paper(page, book)
+    page.append([_styled(page, heading, bold=True) for heading in sheet.headings])
+    for row in sheet.rows:
+        page.append([_value(page, cell) for cell in row])
+
+
+def _letter(number: int) -> str:
+    from openpyxl.utils import get_column_letter
+
+    return str(get_column_letter(number + 1))
+
+
+def _widths(sheet: Sheet) -> list[int]:
+    """The longest cell of each column, within bounds, and a space on each side."""
+    longest = [len(heading) + 3 for heading in sheet.headings]
+    for row in sheet.rows:
+        for number, cell in enumerate(row):
+            if cell is not None:
+                longest[number] = max(longest[number], len(str(cell)))
+    return [min(max(length + 2, NARROWEST), WIDEST) for length in longest]
+
+
+def _for_paper(page: Any, book: Workbook) -> None:
+    page.page_setup.orientation = "landscape"
+    page.page_setup.paperSize = 9
+    page.page_setup.fitToWidth, page.page_setup.fitToHeight = 1, 0
+    page.sheet_properties.pageSetUpPr.fitToPage = True
+    # an ampersand begins a code there, and more than 255 characters are refused
+    house = _text(book.house)[:80].replace("&", "&&")
+    practice = "PRACTICE" if book.practice else None
+    page.oddHeader.left.text, page.oddHeader.center.text = house, practice
+    page.oddHeader.right.text = book.as_at.isoformat()
+    page.oddFooter.left.text, page.oddFooter.center.text = "&A", practice
+    page.oddFooter.right.text = "&P of &N"
+
+
+def _value(page: Any, cell: Cell) -> Any:
+    if cell is None:
+        return None
+    return _styled(page, cell) if isinstance(cell, str) else cell
+
+
+def _styled(page: Any, cell: str, *, bold: bool = False, wrap: bool = True) -> Any:
+    from openpyxl.cell import WriteOnlyCell
+    from openpyxl.styles import Alignment, Font
+
+    made = WriteOnlyCell(page, value=_text(cell))
+    # a text that looks like a day or a sum stays a text, when it is typed over too
+    made.number_format = "@"
+    made.alignment = Alignment(vertical="top", wrap_text=wrap)
+    if bold:
+        made.font = Font(bold=True)
+    return made
+
+
+def _text(words: str) -> str:
+    plain = _NO_XML.sub("", words.replace(TIED, " "))
+    safe = harmless(plain)
+    return safe if len(safe) <= LONGEST else f"{safe[: LONGEST - 1]}…"

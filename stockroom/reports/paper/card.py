@@ -1,0 +1,193 @@
+"""The make card: one page a make, big amounts on the left, the steps in order on the right."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass
+from typing import Any
+
+from stockroom.measure.amounts import Kind
+from stockroom.planning.decisions import Make, Plan
+from stockroom.planning.facts import Facts
+from stockroom.reports.paper.card_hazards import Danger, dangers_of, wants_gloves
+from stockroom.reports.paper.card_sources import Taken, amounts_of, taken_of
+from stockroom.reports.paper.card_steps import Care, Step, steps_of
+from stockroom.reports.paper.head import Head, head_of
+from stockroom.reports.words import amount, counted, day, day_heading, named, raised
+from stockroom.safety.hazards import Hazards
+
+
+@dataclass(frozen=True, slots=True)
+class Card:
+    """One make. `key` is its day and line: its number may be another's in tomorrow's plan."""
+
+    key: str
+    number: str
+    name: str
+    volume: str
+    when: str
+    fresh: bool
+    served: tuple[str, ...]
+    takes: tuple[Taken, ...]
+    vessels: str
+    steps: tuple[Step, ...]
+    warnings: tuple[str, ...]
+    over: str
+    good_until: str
+    dangers: tuple[Danger, ...]
+    blanks: tuple[str, ...]
+    type_back: tuple[str, ...]
+
+
+@dataclass(frozen=True, slots=True)
+class Cards:
+    """The cards asked for, in the order of their days."""
+
+    head: Head
+    cards: tuple[Card, ...]
+
+    @property
+    def about(self) -> str:
+        """What tells these cards from others when a copy is held against the last."""
+        return "; ".join(card.key for card in self.cards)
+
+
+def cards_of(
+    known: Facts,
+    plan: Plan,
+    makes: Sequence[Make],
+    hazards: Mapping[str, Hazards],
+    asked: str = "",
+) -> Cards:
+    """The cards of these makes.
+
+    `hazards` are by bottle number and by line key, of what goes in and what comes out.
+    `asked` says what was asked for, where no make answers it.
+    """
+    keys: dict[str, int] = {}
+    cards = []
+    for make in makes:
+        key = f"{make.on.isoformat()} {make.line}"
+        keys[key] = keys.get(key, 0) + 1
+        again = f" ({keys[key]})" if keys[key] > 1 else ""
+        cards.append(_card(known, plan, make, hazards, key + again))
+    if len(cards) == 1:
+        title, about = cards[0].name, ""
+    else:
+        title, about = "Make cards", counted(len(cards), "make") if cards else asked
+    return Cards(head_of(plan, title, about), tuple(cards))
+
+
+def _card(known: Facts, plan: Plan, make: Make, hazards: Mapping[str, Hazards], key: str) -> Card:
+    takes = tuple(taken_of(known, plan, make, draw) for draw in make.sources)
+    line = known.lines[make.line]
+    dangers = dangers_of(make, hazards)
+    care = Care(vented=line.vented_cap, gloves=any(map(wants_gloves, dangers)))
+    steps = steps_of(make, known.methods.get(make.line), amounts_of(make, takes), care)
+    return Card(
+        key=key,
+        number=make.id,
+        name=named(make.item, make.strength),
+        volume=amount(make.volume, Kind.VOLUME),
+        when=_when(make),
+        fresh=make.fresh,
+        served=_served(known, make),
+        takes=takes,
+        vessels=_vessels(make),
+        steps=tuple(steps),
+        warnings=tuple(raised(each) for each in make.too_little),
+        over=_over(make),
+        good_until=_good_until(make),
+        dangers=dangers,
+        blanks=_blanks(known, make),
+        type_back=_type_back(make),
+    )
+
+
+def _when(make: Make) -> str:
+    later = make.finish_on or make.ready
+    if later > make.on:
+        verb = "finish" if make.finish_on else "ready"
+        return f"start {day_heading(make.on)}, {verb} {day_heading(later)}"
+    return f"make {day_heading(make.on)}"
+
+
+def _served(known: Facts, make: Make) -> tuple[str, ...]:
+    bookings = {each.number: each for each in known.bookings}
+    found = [bookings[number] for number in make.bookings if number in bookings]
+    titles = {key: recipe.title for key, recipe in known.recipes.items()}
+    return tuple(
+        f"{one.number} {day_heading(one.on)}, {titles.get((one.recipe, one.version), one.recipe)}"
+        for one in found
+    )
+
+
+def _vessels(make: Make) -> str:
+    if make.vessels < 2:
+        return ""
+    each = amount(round(make.volume / make.vessels), Kind.VOLUME)
+    return f"in {make.vessels} vessels, {each} in each; then mixed"
+
+
+def _over(make: Make) -> str:
+    if make.heel <= 0:
+        return ""
+    left = amount(make.heel, Kind.VOLUME)
+    how = "label it and keep it" if make.heel_kept else "pour it away by the usual route"
+    return f"{left} over: {how}"
+
+
+def _good_until(make: Make) -> str:
+    if make.good_until is None:
+        return ""
+    if make.good_until == make.on:
+        return "good that day only"
+    return f"good until {day(make.good_until)}"
+
+
+def _blanks(known: Facts, make: Make) -> tuple[str, ...]:
+    weighed = any(draw.kind is Kind.MASS for draw in make.sources)
+    poured = any(draw.kind is Kind.VOLUME for draw in make.sources)
+    method = known.methods.get(make.line)
+    told = ["weighed"] if weighed else []
+    told += ["measured"] if poured else []
+    told += ["made by", "day and time"]
+    told += ["found, and day"] if method and method.titrated else ["found (if titrated)"]
+    return (*told, "bottle number given", "good until")
+
+
+def _type_back(make: Make) -> tuple[str, ...]:
+    """What is typed when it is made; what is not known yet is left blank, as on the card."""
+    volume = amount(make.volume, Kind.VOLUME).replace("\u00a0", "").replace("cm³", " cm3")
+    volume = volume.replace("dm³", " dm3")
+    bottles = dict.fromkeys(draw.bottle for draw in make.sources if draw.bottle)
+    # a blank for each that has no number yet
+    blanks = ["____" for draw in make.sources if not draw.bottle]
+    given = "".join(f" --from {bottle}" for bottle in [*bottles, *blanks])
+    told = f'stockroom make "{make.line}" "{volume}"{given} --place ____ --by ____'
+    return (told,)
+
+
+def cards_lines(sheet: Cards) -> dict[str, str]:
+    """Each card: its days, how much of it from what, for whom; its steps are not compared."""
+    return {card.key: _said(card) for card in sheet.cards}
+
+
+def _said(card: Card) -> str:
+    taken = " + ".join(f"{each.amount} of {each.bottle or each.what}" for each in card.takes)
+    told = f"{card.when}: {card.volume} of {card.name} from {taken}"
+    also = [card.vessels, *(f"for {one}" for one in card.served), card.over, *card.warnings]
+    return "; ".join([told, *filter(None, also)])
+
+
+def more_data(sheet: Cards) -> dict[str, Any]:
+    """The codes of the bottles drawn from, and the hazard symbols, as SVG."""
+    from stockroom.reports.paper.codes import code_svg
+    from stockroom.reports.shipped import symbol
+
+    bottles = {each.bottle for card in sheet.cards for each in card.takes if each.bottle}
+    marks = {mark for card in sheet.cards for one in card.dangers for mark in one.symbols}
+    return {
+        "codes": {number: code_svg(number) for number in sorted(bottles)},
+        "symbols": {mark: symbol(mark) for mark in sorted(marks)},
+    }

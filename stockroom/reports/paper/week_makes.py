@@ -1,0 +1,203 @@
+"""What is begun, made and finished on a day of the week sheet: a job each, cautions beside it."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from datetime import date, timedelta
+
+from stockroom.keeping.rules import RuleKind
+from stockroom.keeping.strength import strengths_on
+from stockroom.measure.days import format_time
+from stockroom.planning.amounts import say_strength
+from stockroom.planning.decisions import Draw, Make, Plan
+from stockroom.planning.facts import EXACT, Booking, Facts
+from stockroom.planning.known import how_known
+from stockroom.planning.making.make_card import goes_of
+from stockroom.planning.timing import hours
+from stockroom.reports.paper.week_parts import Job, made, short_day, tied, volume
+from stockroom.reports.words import amount, listed, named, raised
+from stockroom.safety.cautions import Step, cautions_about
+
+BEFORE_CLASS = 30
+"""Minutes before a class by which what is made for it stands ready. Our choice."""
+
+TOO_LITTLE = 5_000
+"""What is left over below this, in µL, is not worth a word. Our choice."""
+
+_ENDS = frozenset({RuleKind.LIFE, RuleKind.SAME_DAY, RuleKind.NEVER})
+_LASTS = frozenset({RuleKind.LOOK, RuleKind.RECHECK, RuleKind.TEST})
+
+
+class Makes:
+    """The jobs that makes give, by day."""
+
+    def __init__(self, known: Facts, plan: Plan) -> None:
+        self.known, self.plan = known, plan
+        self.by_id = {make.id: make for make in plan.makes}
+        self.bottles = {bottle.number: bottle for bottle in known.bottles}
+        self.bookings = {booking.number: booking for booking in known.bookings}
+
+    def started(self, on: date) -> list[Job]:
+        """What is begun on a day and ready on a later one."""
+        return [self._job(make) for make in self.plan.makes if make.on == on < make.ready]
+
+    def of_day(self, on: date) -> list[Job]:
+        """What is finished that was begun before, then what is made; timed ones first of these."""
+        finished = [self._finish(m) for m in self.plan.makes if m.finish_on == on > m.on]
+        row = [make for make in self.plan.makes if make.on == on == make.ready]
+        times = self._times([make for make in row if make.fresh])
+        jobs = [
+            replace(self._job(make), time=format_time(times[make.id])) for make in _by(times, row)
+        ]
+        return [*finished, *jobs, *(self._job(make) for make in row if make.id not in times)]
+
+    def _times(self, fresh: list[Make]) -> dict[str, int]:
+        """The last minute each may be begun at, one pair of hands making one after the other."""
+        calendar = self.known.calendar
+        cursor, times = calendar.open_to, {}
+        for make in sorted(fresh, key=self._begins, reverse=True):
+            begins = self._begins(make)
+            stands = round(60 * self.known.methods[make.line].stands_hours)
+            start = min(cursor, begins - BEFORE_CLASS - stands) - make.minutes
+            if start < calendar.open_from:
+                # no half hour to spare: then by the class itself
+                start = min(cursor, begins - stands) - make.minutes
+            times[make.id] = cursor = max(start, calendar.open_from)
+        return times
+
+    def _begins(self, make: Make) -> int:
+        return min(self.bookings[number].minute for number in make.bookings)
+
+    def _job(self, make: Make) -> Job:
+        method = self.known.methods[make.line]
+        stands = f"stands {hours(method.stands_hours)}" if method.stands_hours else ""
+        later = f"ready {short_day(make.ready)}" if make.ready > make.on else ""
+        vessels = f"in {make.vessels} vessels, then mixed" if make.vessels > 1 else ""
+        told = (self._from(make), vessels, stands, later, self._until(make), self._heel(make))
+        served = f"for {listed(make.bookings)}" if make.bookings else ""
+        verb = "start" if make.ready > make.on else "make"
+        return Job(
+            key=f"{make.on} {verb} {raised(make.line)}{self._which(make)}",
+            time="",
+            what=f"{made(make)}, {volume(make.volume)}",
+            more=tuple(each for each in (*told, served, *map(raised, make.too_little)) if each),
+            cautions=tuple(map(raised, make.cautions)),
+            ref=make.id,
+        )
+
+    def _which(self, make: Make) -> str:
+        """What tells two makes of one line on one day apart: whom they are for."""
+        same = [m for m in self.plan.makes if m.line == make.line and m.on == make.on]
+        return f" for {listed(make.bookings)}" if len(same) > 1 else ""
+
+    def _finish(self, make: Make) -> Job:
+        titrated = self.known.methods[make.line].titrated
+        work = "finish and titrate" if titrated else "finish"
+        vessels = f"{make.vessels} vessels, mixed first" if make.vessels > 1 else ""
+        # the last sentence of its steps is what is done once it has stood
+        last = raised(make.steps).rstrip(".").split(". ")[-1]
+        told = (last, vessels, tied(f"{make.finishing} min"), f"for {listed(make.bookings)}")
+        return Job(
+            key=f"{make.finish_on} finish {raised(make.line)}{self._which(make)}",
+            time="",
+            what=f"{work} {made(make)}, {volume(make.volume)}, started {short_day(make.on)}",
+            more=tuple(each for each in told if each),
+            cautions=tuple(map(raised, make.cautions)),
+            ref=make.id,
+        )
+
+    # -- what it is made from ------------------------------------------------------------
+
+    def _from(self, make: Make) -> str:
+        row = [self._source(make, draw) for draw in make.sources]
+        return f"from {' + '.join(row)}" if row else ""
+
+    def _source(self, make: Make, draw: Draw) -> str:
+        measured = amount(draw.amount, draw.kind)
+        if draw.make in self.by_id and not draw.bottle:
+            part = self.by_id[draw.make]
+            return f"{measured} of {made(part)} (made {short_day(part.ready)})"
+        if not draw.bottle:
+            return f"{measured} of {named(draw.item, '')} (to be bought)"
+        bottle = self.bottles[draw.bottle]
+        line = self.known.lines[bottle.line]
+        place = f" in {bottle.place}" if bottle.place else ""
+        number = tied(f"of {bottle.number}")
+        origin = f"{measured} {number} {named(line.item, line.strength_text)}{place}"
+        if not (line.strength and draw.strength) or not self._by_strength(make, bottle.line):
+            return origin
+        usual = round(draw.amount * draw.strength / line.strength)
+        if abs(usual - draw.amount) <= EXACT * draw.amount:
+            return origin
+        known = how_known(bottle, strengths_on(bottle.record, line.rules, make.on))
+        said = say_strength(line, draw.strength)
+        return f"{origin} (expected {said}, {known}), not {amount(usual, draw.kind)}"
+
+    def _by_strength(self, make: Make, line: str) -> bool:
+        """Whether its amount follows from how strong it is, and from nothing else."""
+        ingredients = self.known.methods[make.line].ingredients
+        return any(line in each.lines and each.per_dm3 is None for each in ingredients)
+
+    # -- how long it is good ---------------------------------------------------------------
+
+    def _until(self, make: Make) -> str:
+        if make.good_until is None:
+            return ""
+        if make.good_until == make.on:
+            return "good that day only"
+        near = make.good_until - make.on < timedelta(days=200)
+        return f"good until {short_day(make.good_until) if near else make.good_until.isoformat()}"
+
+    def left_over(self, on: date) -> list[Job]:
+        """What of this term's makes has its last day, and so is not put back, by the clock."""
+        row = [self._tidy(make, on) for make in self.plan.makes if self._last_day(make) == on]
+        return sorted(row, key=lambda job: job.time)
+
+    def _last_day(self, make: Make) -> date | None:
+        kinds = {rule.kind for rule in self.known.lines[make.line].rules}
+        if make.good_until is None or not kinds & _ENDS or kinds & _LASTS:
+            return None
+        used = max((self.bookings[number].on for number in make.bookings), default=make.on)
+        day = self.known.calendar.on_or_before(make.good_until)
+        return day if day >= used else make.good_until
+
+    def _tidy(self, make: Make, on: date) -> Job:
+        collected, never = self._clearing(make)
+        doing = "collect what is left" if collected else "pour away what is left"
+        again = [m.on for m in self.plan.makes if m.line == make.line and m.on > on]
+        soon = [day for day in again if (day - on).days < 7 - on.weekday()]
+        kept = f"do not keep it for {short_day(min(soon))}" if soon else ""
+        until = make.good_until or on
+        last = "its last day is today" if until == on else f"good until {short_day(until)}"
+        last = "good today only" if until == make.on else last
+        ends = [b.minute + b.lasts_minutes for b in self._on(make, on)]
+        return Job(
+            key=f"{on} tidy {raised(make.line)}{self._which(make)}",
+            time=format_time(max(ends)) if ends and max(ends) < 1440 else "",
+            what=f"{made(make)}: {doing}",
+            more=tuple(each for each in (last, kept) if each),
+            cautions=(*collected, *never),
+        )
+
+    def _heel(self, make: Make) -> str:
+        if make.heel < TOO_LITTLE:
+            return ""
+        doing = "collect it" if self._clearing(make)[0] else "pour away"
+        doing = "label it and keep it" if make.heel_kept else doing
+        return f"{volume(make.heel)} over: {doing}"
+
+    def _clearing(self, make: Make) -> tuple[list[str], list[str]]:
+        """What says that it is collected and not poured away, and what it must never meet."""
+        said = [raised(each) for each in make.cautions]
+        collected = [each for each in said if each.startswith("Collect")]
+        thing = goes_of(self.known.lines[make.line])
+        waste = cautions_about([thing], said=said, steps=(Step.WASTE,))
+        never = [each for each in said if each.startswith("Never")]
+        return [*collected, *(raised(each.text) for each in waste)], never
+
+    def _on(self, make: Make, on: date) -> list[Booking]:
+        return [self.bookings[n] for n in make.bookings if self.bookings[n].on == on]
+
+
+def _by(times: dict[str, int], row: list[Make]) -> list[Make]:
+    return sorted((make for make in row if make.id in times), key=lambda make: times[make.id])

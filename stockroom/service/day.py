@@ -1,0 +1,64 @@
+"""The facts and the plan of one day, or of one booking's day, asked for as a person types it.
+
+Light, as reading is: the day page, the class slip and the phone text are made from these.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from datetime import date
+
+from stockroom.errors import BadDate
+from stockroom.measure.days import parse_day
+from stockroom.planning.decisions import Plan
+from stockroom.planning.facts import Facts, Firmness
+from stockroom.service.known import known_from
+from stockroom.service.sheets import known_and_planned
+from stockroom.settings import StoreAt
+from stockroom.store.likeness import unknown
+from stockroom.store.reading import reading
+
+
+@dataclass(frozen=True, slots=True)
+class Asked:
+    """A day, the booking if one was asked for ("" for the whole day), and what is known of it."""
+
+    known: Facts
+    plan: Plan
+    on: date
+    booking: str = ""
+
+    @property
+    def about(self) -> str:
+        """What tells its copies from others: the booking, else the day."""
+        return self.booking or self.on.isoformat()
+
+
+def day_asked(path: StoreAt, ref: str | None, *, as_at: date) -> Asked:
+    """The day or booking named; for None the next day from `as_at` on with a booking.
+
+    Raises: UnknownName for a booking that does not exist, BadDate for a day that cannot be read.
+    """
+    with reading(path) as reader:
+        known = known_from(reader, as_at)
+    on, booking = _meant(known, ref, as_at)
+    known, plan = known_and_planned(path, as_at=as_at, through=on)
+    return Asked(known, plan, on, booking)
+
+
+def _meant(known: Facts, ref: str | None, as_at: date) -> tuple[date, str]:
+    if ref is None:
+        dropped = (Firmness.DONE, Firmness.DROPPED)
+        days = [b.on for b in known.bookings if b.on >= as_at and b.firmness not in dropped]
+        return min(days, default=as_at), ""
+    typed = ref.strip().lower()
+    booking = next((b for b in known.bookings if b.number.lower() == typed), None)
+    if booking is not None:
+        return booking.on, booking.number
+    try:
+        return parse_day(ref), ""
+    except BadDate:
+        # "K99" is a number mistyped, "31/02/2027" a day that is not there
+        if sum(map(str.isdigit, ref)) > 3:
+            raise
+        raise unknown("booking", ref, [each.number for each in known.bookings]) from None

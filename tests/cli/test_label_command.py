@@ -1,0 +1,103 @@
+"""`stockroom label`: what is asked for, what is refused, what is printed."""
+
+from __future__ import annotations
+
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+import paper_reading as reading
+import pytest
+
+if TYPE_CHECKING:
+    from conftest import Stockroom
+
+
+def test_labels_are_printed_and_their_codes_read(
+    own: Path, tmp_path: Path, stockroom: Stockroom
+) -> None:
+    target = tmp_path / "labels.pdf"
+    told = stockroom("label", "S02", "B14", "--print", str(target), store=own)
+    assert told.code == 0, told.err
+    assert "copy 0001" in told.out
+    # nobody sits at a terminal here, so no bar is drawn
+    assert told.err == ""
+    assert reading.codes(target.read_bytes()) == ["S02", "B14"]
+
+
+def test_data_are_the_same_as_the_words(practice: Path, stockroom: Stockroom) -> None:
+    data = stockroom("label", "S02", "--json", store=practice).json
+    (label,) = data["labels"]
+    assert label["name"] == "sodium thiosulfate"
+    assert label["known"] == "found 10 Dec 2026"
+    assert data["size"] == [70.0, 37.0]
+
+
+def test_a_place_gives_all_that_stand_there(practice: Path, stockroom: Stockroom) -> None:
+    labels = stockroom("label", "--place", "F1", "--json", store=practice).json["labels"]
+    assert len(labels) > 1
+    assert all("F1 refrigerator" in label["keep"] for label in labels)
+
+
+def test_a_stronger_make_has_another_hazard_text(own: Path, stockroom: Stockroom) -> None:
+    """0.40 and 0.55 mol/dm³ of sodium hydroxide: H315 and H319, and H314."""
+    weak = stockroom("label", "S07", "--json", store=own).json["labels"][0]
+    sure = ("--on", "2027-01-04", "--by", "T1", "--sure")
+    told = stockroom("found", "S07", "0.55 mol/dm3", *sure, store=own)
+    assert told.code == 0, told.err
+    strong = stockroom("label", "S07", "--json", store=own).json["labels"][0]
+    assert strong["strength"] == "0.55 mol/dm³"
+    assert strong["known"] == "found 4 Jan 2027"
+    assert [code for code, _ in weak["hazards"]["statements"]] == ["H315", "H319"]
+    assert [code for code, _ in strong["hazards"]["statements"]] == ["H314"]
+
+
+def test_text_typed_from_the_sheet_takes_its_place(own: Path, stockroom: Stockroom) -> None:
+    words = ("--text", "H290 May be corrosive to metals", "--sheet", "Brackley, 2026-05-01")
+    why = ("--signal", "warning", "--why", "new sheet", "--by", "T1")
+    told = stockroom("hazards", "S05", *words, *why, store=own)
+    assert told.code == 0, told.err
+    said = stockroom("label", "S05", store=own).said
+    assert "WARNING GHS05 H290 May be corrosive to metals from Brackley, 2026-05-01" in said
+
+
+def test_a_made_batch_keeps_its_day(practice: Path, stockroom: Stockroom) -> None:
+    said = stockroom("label", "M01", "--made-on", "2027-01-15", store=practice).said
+    assert "made 15 Jan 2027 ready from 16 Jan 2027" in said
+
+
+@pytest.mark.parametrize(
+    ("words", "code", "said"),
+    [
+        (("S06", "--short"), 1, "H314. Not on the relaxed list. Use the full text."),
+        (("S02", "--short"), 1, "a short label is for 125 cm³ or less"),
+        (("S11", "--short"), 1, "hazard text not entered"),
+        (("B08", "--short"), 1, "H372. Not on the relaxed list"),
+        (("B40", "--short"), 1, "how many cm³ it holds is not known"),
+        (("S23", "--short"), 1, "add --confirm"),
+        ((), 2, "Labels of what?"),
+        (("S999",), 2, 'S999"'),
+        (("M99999",), 2, 'M99999"'),
+        (("S02", "--opened", "--short"), 2, "one or the other"),
+        (("S02", "--confirm"), 2, "It goes with --short"),
+        (("S02", "--made-on", "2027-01-15"), 2, "of which make?"),
+        (("S02", "--sheet", "4x9"), 2, "A4 has 210 x 297 mm"),
+        (("S02", "--size", "20x10"), 2, "too small"),
+        (("--place", "Z9"), 2, 'Z9"'),
+    ],
+)
+def test_what_cannot_be_is_refused_with_a_way_on(
+    practice: Path, stockroom: Stockroom, words: tuple[str, ...], code: int, said: str
+) -> None:
+    told = stockroom("label", *words, store=practice)
+    assert said in " ".join(told.err.split())
+    assert (told.code, told.out) == (code, "")
+
+
+def test_a_short_label_is_there_once_the_list_is_confirmed(
+    practice: Path, stockroom: Stockroom
+) -> None:
+    (label,) = stockroom("label", "S23", "--short", "--confirm", "--json", store=practice).json[
+        "labels"
+    ]
+    assert label["sort"] == "short"
+    assert label["hazards"]["statements"] == []

@@ -1,0 +1,111 @@
+"""`stockroom week` as it is typed: which week, what is refused, and what changed since printed."""
+
+from __future__ import annotations
+
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+import pytest
+from paper_reading import page_words, words
+
+if TYPE_CHECKING:
+    from conftest import Stockroom
+
+BOOKED = (
+    *("book", "R01", "--on", "2027-04-14", "--at", "09:15", "--groups", "8"),
+    *("--dept", "CH", "--by", "T1"),
+)
+
+
+@pytest.mark.parametrize(
+    ("typed", "as_at", "title"),
+    [
+        (["2027-01-25"], "2027-01-04", "Week 4: 25 to 29 January 2027"),
+        (["31/01/2027"], "2027-01-04", "Week 4: 25 to 29 January 2027"),
+        ([], "2027-01-29", "Week 4: 25 to 29 January 2027"),
+        ([], "2027-01-30", "Week 5: 1 to 5 February 2027"),
+        ([], "2027-01-31", "Week 5: 1 to 5 February 2027"),
+        (["2027-03-31"], "2027-01-04", "Week 13: 29 March to 2 April 2027"),
+        (["2026-11-04"], "2027-01-04", "Week of 2 to 6 November 2026"),
+    ],
+)
+def test_any_day_names_its_week(
+    practice: Path, stockroom: Stockroom, typed: list[str], as_at: str, title: str
+) -> None:
+    told = stockroom("week", *typed, "--as-at", as_at, "--json", store=practice)
+    assert told.code == 0, told.err
+    assert told.json["head"]["title"] == title
+
+
+@pytest.mark.parametrize("typed", ["week 4", "2027-02-30", "05/06/2027", ""])
+def test_a_day_that_cannot_be_read_is_quoted(
+    practice: Path, stockroom: Stockroom, typed: str
+) -> None:
+    told = stockroom("week", typed, store=practice)
+    assert (told.code, told.out) == (2, "")
+    assert typed in told.err
+
+
+def test_days_before_the_day_of_asking_are_over(practice: Path, stockroom: Stockroom) -> None:
+    told = stockroom("week", "--as-at", "2027-01-28", "--json", store=practice).json
+    by_day = {rung["on"]: rung for rung in told["rungs"]}
+    tuesday, thursday = by_day["2027-01-26"], by_day["2027-01-28"]
+    assert (tuesday["told"], tuesday["shelves"], tuesday["minutes"]) == ("Over.", [], "")
+    assert [each["what"] for each in tuesday["classes"]] == ["Iodine clock: peroxide and iodide"]
+    assert thursday["state"] == ""
+    assert thursday["shelves"]
+
+
+def test_a_week_outside_the_term_says_that_nothing_is_booked(
+    practice: Path, stockroom: Stockroom
+) -> None:
+    told = stockroom("week", "2027-04-07", store=practice)
+    assert "No bookings." in told.said
+    assert "Nothing is booked in this week, and nothing has to be done in it." in told.said
+    assert "GUESSES: nothing guessed" in told.said
+
+
+def test_a_booking_past_the_term_is_planned_through(own: Path, stockroom: Stockroom) -> None:
+    booked = stockroom(*BOOKED, store=own)
+    assert booked.code == 0, booked.err
+    told = stockroom("week", "2027-04-14", store=own)
+    assert "MAKE" in told.out
+    assert "528 cm³ hydrogen peroxide 0.100 mol/dm³: made that day" in told.said
+
+
+def test_a_resize_and_a_move_are_marked_against_the_copy_printed_last(
+    own: Path, stockroom: Stockroom, tmp_path: Path
+) -> None:
+    first = tmp_path / "first.pdf"
+    assert stockroom("week", "2027-01-25", "--print", str(first), store=own).code == 0
+    same = stockroom("week", "2027-01-25", store=own)
+    assert "nothing changed since copy 0001" in same.said
+    assert stockroom("shift", "K08", "--groups", "11", "--by", "T1", store=own).code == 0
+    assert stockroom("shift", "K10", "--on", "2027-02-12", "--by", "T1", store=own).code == 0
+
+    told = stockroom("week", "2027-01-25", store=own)
+    lines = told.out.splitlines()
+    marked = [line for line in lines if line.lstrip().startswith(">")]
+    assert any("hydrogen peroxide 0.100 mol/dm³, 726 cm³" in line for line in marked)
+    assert any("968 cm³ potassium iodide 0.100 mol/dm³" in line for line in marked)
+    # what is as it was keeps no mark: the second class of the same thing
+    assert not any("704 cm³ potassium iodide" in line for line in marked)
+    assert not any("Water bath" in line for line in marked)
+    listed = stockroom("week", "2027-01-25", "--json", store=own).json["head"]["since"]["changes"]
+    assert listed[0].startswith("Tue 26 Jan 09:15 Iodine clock: peroxide and iodide, 11 groups")
+    assert "gone: Fri 29 Jan 09:15 Starch and amylase, 9 groups, LAB2, BI, K10" in listed
+    (fresh,) = [each for each in listed if each.startswith("Tue 26 Jan make: 08:35 hydrogen")]
+    assert "(was: Tue 26 Jan make: 08:35 hydrogen peroxide 0.100 mol/dm³, 528 cm³;" in fresh
+
+    second = tmp_path / "second.pdf"
+    assert stockroom("week", "2027-01-25", "--print", str(second), store=own).code == 0
+    printed = words(second.read_bytes())
+    assert "changes since copy 0001, marked >" in printed
+    assert "Iodine clock: peroxide and iodide, 11 groups" in printed
+    assert all("copy 0002" in each for each in page_words(second.read_bytes()))
+
+
+def test_another_week_is_another_sheet(own: Path, stockroom: Stockroom) -> None:
+    assert stockroom("week", "2027-01-25", "--print", "one.pdf", store=own).code == 0
+    told = stockroom("week", "2027-02-01", "--json", store=own).json
+    assert told["head"]["since"] is None

@@ -1,0 +1,118 @@
+"""The text for a phone: never more than ten lines of 38 characters, the worst first."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from datetime import date
+from pathlib import Path
+from typing import Any
+
+import houses
+import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
+
+from stockroom.planning.decisions import Plan
+from stockroom.planning.facts import Closeness, Facts, Firmness, House
+from stockroom.planning.plan import plan
+from stockroom.reports.files.phone import LINES, WIDTH, Phone, phone_of, phone_text
+from stockroom.service.sheets import known_and_planned
+
+ON = houses.day("01-12")
+
+
+@pytest.fixture(scope="module")
+def college(college_file: Path) -> tuple[Facts, Plan]:
+    return known_and_planned(college_file, as_at=houses.MONDAY)
+
+
+def test_ten_lines_of_38() -> None:
+    assert (LINES, WIDTH) == (10, 38)
+
+
+def test_every_booking_and_every_day_fits(college: tuple[Facts, Plan]) -> None:
+    known, made = college
+    for booking in known.bookings:
+        for number in (booking.number, ""):
+            fits(phone_of(known, made, booking.on, number))
+
+
+def fits(phone: Phone, practice: bool = True) -> None:
+    lines = phone_text(phone).splitlines()
+    assert len(lines) <= 10
+    assert all(0 < len(line) <= 38 for line in lines), lines
+    assert ("PRACTICE" in phone_text(phone)) is practice
+    assert any(line.startswith("Ready: ") for line in lines[:3])
+    if phone.more:
+        assert lines[-1] == f"and {phone.more} more on the sheet"
+
+
+def test_what_is_missing_comes_before_what_is_to_do(college: tuple[Facts, Plan]) -> None:
+    lines = phone_of(*college, ON, "K01").lines
+    assert lines[:3] == (
+        "Tue 12 Jan 09:15 K01 Flame tests",
+        "Ready: NO, 1 to do  PRACTICE",
+        "Missing: lithium chloride",
+    )
+    assert lines[-1] == "Other 5 ready"
+
+
+def test_the_evening_says_who_must_be_there(college: tuple[Facts, Plan]) -> None:
+    told = " ".join(phone_of(*college, date(2027, 2, 10)).lines)
+    assert "Someone must be here from 18:00 to 20:40" in told
+    assert "K16: mix from 18:00, destroyed by 20:40, ticked" in told
+
+
+def test_an_unchecked_strength_is_told_first(college: tuple[Facts, Plan]) -> None:
+    assert "Not checked: sodium thiosulfate" in phone_of(*college, date(2027, 3, 4), "K21").lines
+
+
+def test_a_day_with_nothing() -> None:
+    known = houses.house([houses.solid()])
+    assert phone_of(known, plan(known), ON).lines == (
+        "Tue 12 Jan: nothing booked",
+        "Ready: nothing to do",
+    )
+
+
+def test_all_ready_is_yes() -> None:
+    line = houses.solution(1.0)
+    found = (houses.found("01-04", 1.0),)
+    known = houses.house(
+        [line],
+        recipes=[houses.recipe(houses.wants(line, 1000))],
+        bookings=[houses.booking("K01", "01-12")],
+        bottles=[houses.made_bottle("S01", line, houses.cm3(500), checks=found)],
+    )
+    phone = phone_of(known, plan(known), ON, "K01")
+    assert (phone.ready, phone.lines[1:]) == (True, ("Ready: YES", "Strengths as card"))
+
+
+words = st.text(st.characters(exclude_categories=("Cs", "Cc")), max_size=200)
+
+
+@given(
+    title=words, name=words.filter(str.strip), never_kept=words, handling=words,
+    room=words, count=st.integers(1, 9), needs=st.integers(1, 9), practice=st.booleans(),
+    closeness=st.sampled_from(list(Closeness)), firmness=st.sampled_from(list(Firmness)),
+    minute=st.integers(0, 1439), single=st.booleans(), held=st.integers(0, 900),
+)  # fmt: skip
+@settings(max_examples=40)
+def test_whatever_the_facts_it_fits(
+    title: str, name: str, never_kept: str, handling: str, count: int, needs: int, practice: bool,
+    closeness: Closeness, firmness: Firmness, minute: int, single: bool, held: int, **more: Any,
+) -> None:  # fmt: skip
+    line = houses.solution(1.0, name=name)
+    wanted = houses.wants(line, houses.cm3(100), closeness=closeness)
+    told: dict[str, Any] = {"title": title, "never_kept": never_kept, "handling": handling}
+    known = houses.house(
+        [line],
+        house=House(name=title, practice=practice),
+        recipes=[replace(houses.recipe(*[wanted] * needs), **told)],
+        bookings=[
+            houses.booking(f"K{n:02}", "01-12", minute=minute, firmness=firmness, room=more["room"])
+            for n in range(1, count + 1)
+        ],
+        bottles=[houses.made_bottle("S01", line, houses.cm3(held))] if held else [],
+    )
+    fits(phone_of(known, plan(known), ON, "K01" if single else ""), practice)
