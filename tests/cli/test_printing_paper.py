@@ -257,7 +257,8 @@ def test_a_file_carries_a_date_only_where_one_is_given() -> None:
     from pypdf import PdfReader
 
     def made(pdf: bytes) -> object:
-        return (PdfReader(io.BytesIO(pdf)).metadata or {}).get("/CreationDate")
+        told = PdfReader(io.BytesIO(pdf)).metadata
+        return told.get("/CreationDate") if told else None
 
     data = STRIP.data(sheet())
     assert made(typeset("strip", data)[0]) is None

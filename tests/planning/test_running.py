@@ -19,7 +19,7 @@ SULFURIC = "sulfuric acid 2.00 mol/dm3"
 def disagreements(facts: Facts) -> list[str]:
     """Where the running of a line and the plan's level or order differ."""
     plan, found = whole_plan(facts), []
-    told_of = {one.line for one in (*plan.levels, *plan.orders)}
+    told_of = {level.line for level in plan.levels} | {order.line for order in plan.orders}
     for key in sorted(told_of):
         told = running(facts, key, plan.orders)
         mine = [level for level in plan.levels if level.line == key]

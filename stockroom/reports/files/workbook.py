@@ -6,6 +6,7 @@ import io
 import re
 import zipfile
 from datetime import datetime, time
+from textwrap import wrap
 from typing import Any
 
 from stockroom.reports.files.harmless import harmless
@@ -14,6 +15,9 @@ from stockroom.reports.words import TIED, counted
 
 NARROWEST, WIDEST = 6, 60
 """Widths of columns in characters; what is longer wraps. Our choice."""
+
+LINE, TALLEST = 13.5, 400.0
+"""Points of height for a line of text, and the most a row may have: the format ends at 409."""
 
 LONGEST = 32_767
 """Characters a cell may hold. Source: the published limits of the format's first program."""
@@ -64,7 +68,7 @@ def _first(pages: Any, book: Workbook) -> None:
     page.column_dimensions["B"].width = WIDEST
     _for_paper(page, book)
     for line in book.about:
-        page.append([_styled(page, line, bold=line in book.about[:2], wrap=False)])
+        page.append([_styled(page, line, bold=line in book.about[:2], wrapped=False)])
     page.append([])
     for sheet in book.sheets:
         rows = counted(len(sheet.rows), "row") if sheet.rows else "nothing"
@@ -73,8 +77,11 @@ def _first(pages: Any, book: Workbook) -> None:
 
 def _page(pages: Any, sheet: Sheet, book: Workbook) -> None:
     page = pages.create_sheet(sheet.name)
-    for number, width in enumerate(_widths(sheet)):
+    widths = _widths(sheet)
+    for number, width in enumerate(widths):
         page.column_dimensions[_letter(number)].width = width
+    for number, row in enumerate(sheet.rows, 2):
+        page.row_dimensions[number].height = _height(row, widths)
     # a heading goes along when the rows are rolled up, and stands on every printed side
     page.freeze_panes = "A2"
     page.print_title_rows = "1:1"
@@ -101,6 +108,20 @@ def _widths(sheet: Sheet) -> list[int]:
     return [min(max(length + 2, NARROWEST), WIDEST) for length in longest]
 
 
+def _height(row: tuple[Cell, ...], widths: list[int]) -> float:
+    """The height of a row for its wrapped texts: not every program works it out by itself."""
+    texts = [(cell, width) for cell, width in zip(row, widths, strict=True) if type(cell) is str]
+    lines = max((_lines(text, width) for text, width in texts), default=1)
+    return min(lines * LINE, TALLEST)
+
+
+def _lines(text: str, width: int) -> int:
+    parts = text.split("\n")
+    # a column as wide as its text needs no second line; else a margin for letters wider than a
+    # figure, by which widths are counted
+    return sum(len(wrap(part, width - 5)) if len(part) + 2 > width else 1 for part in parts)
+
+
 def _for_paper(page: Any, book: Workbook) -> None:
     page.page_setup.orientation = "landscape"
     page.page_setup.paperSize = 9
@@ -116,21 +137,24 @@ def _for_paper(page: Any, book: Workbook) -> None:
 
 
 def _value(page: Any, cell: Cell) -> Any:
-    if cell is None:
-        return None
-    return _styled(page, cell) if isinstance(cell, str) else cell
+    return None if cell is None else _styled(page, cell)
 
 
-def _styled(page: Any, cell: str, *, bold: bool = False, wrap: bool = True) -> Any:
+def _styled(page: Any, cell: Cell, *, bold: bool = False, wrapped: bool = True) -> Any:
     from openpyxl.cell import WriteOnlyCell
     from openpyxl.styles import Alignment, Font
 
+    if not isinstance(cell, str):
+        made = WriteOnlyCell(page, value=cell)
+        made.alignment = Alignment(vertical="top")
+        return made
     made = WriteOnlyCell(page, value=_text(cell))
     # a text that looks like a day or a sum stays a text, when it is typed over too
     made.number_format = "@"
-    made.alignment = Alignment(vertical="top", wrap_text=wrap)
+    made.alignment = Alignment(vertical="top", wrap_text=wrapped)
     if bold:
-        made.font = Font(bold=True)
+        # a font without a name is another one in some programs
+        made.font = Font(name="Calibri", size=11, bold=True)
     return made
 
 

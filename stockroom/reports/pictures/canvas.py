@@ -177,23 +177,26 @@ def fitted(text: str, points: float, width_mm: float, weight: str = "normal") ->
 
 
 def _cut(word: str, points: float, width_mm: float, weight: str) -> int:
-    cut = len(word) - 1
-    while cut > 1 and wide_mm(word[:cut], points, weight) > width_mm:
-        cut -= 1
-    return cut
+    fits, over = 1, len(word)
+    while over - fits > 1:
+        middle = (fits + over) // 2
+        if wide_mm(word[:middle], points, weight) > width_mm:
+            over = middle
+        else:
+            fits = middle
+    return fits
 
 
 @cache
 def wide_mm(text: str, points: float, weight: str = "normal") -> float:
-    """How wide a line of text is printed."""
+    """How wide a line of text is printed, mm; asked while a picture is drawn, in its style."""
     from matplotlib.font_manager import FontProperties
     from matplotlib.textpath import TextPath
 
     if not text.strip():
         return 0.0
     face = FontProperties(family=_families(), weight=weight, size=points)
-    with _our_style():
-        return float(TextPath((0, 0), text, prop=face).get_extents().width) / _POINT
+    return float(TextPath((0, 0), text, prop=face).get_extents().width) / _POINT
 
 
 # -- days along the foot ----------------------------------------------------------------

@@ -89,6 +89,17 @@ def test_it_is_laid_out_to_be_read_and_printed(written: bytes) -> None:
             assert sheet["A1"].font.b
 
 
+def test_a_row_is_as_high_as_its_longest_text(written: bytes) -> None:
+    book: Any = openpyxl.load_workbook(io.BytesIO(written))
+    for name in ("Needs", "Makes", "Orders", "Guesses"):
+        sheet = book[name]
+        for row in sheet.iter_rows(min_row=2):
+            for cell in row:
+                width = sheet.column_dimensions[cell.column_letter].width
+                lines = -(-len(str(cell.value or "")) // width)
+                assert sheet.row_dimensions[cell.row].height >= min(12.75 * lines, 400)
+
+
 def test_the_same_plan_gives_the_same_bytes(college: tuple[Facts, Plan], written: bytes) -> None:
     assert workbook_bytes(workbook_of(*college)) == written
 

@@ -62,12 +62,8 @@ def test_each_change_is_told_once(before: dict[str, str], now: dict[str, str]) -
 
 @BOTH
 @given(LINES, LINES)
-def test_the_order_of_the_lines_does_not_count(
-    before: dict[str, str], now: dict[str, str]
-) -> None:
-    backwards = since(
-        "0001", dict(reversed(before.items())), dict(reversed(now.items())), TODAY
-    )
+def test_the_order_of_the_lines_does_not_count(before: dict[str, str], now: dict[str, str]) -> None:
+    backwards = since("0001", dict(reversed(before.items())), dict(reversed(now.items())), TODAY)
     told = since("0001", before, now, TODAY)
     assert sorted(backwards.marked) == sorted(told.marked)
     assert sorted(backwards.changes) == sorted(told.changes)

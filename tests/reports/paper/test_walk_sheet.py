@@ -24,7 +24,7 @@ from stockroom.reports.paper.walk_sheet import (
 from stockroom.reports.typesetting import typeset
 
 ON = date(2027, 1, 4)
-PLACES = (Place("A1", "upper shelf", ""), Place("A2", "lower shelf", ""))
+PLACES = (Place("A1", "upper shelf"), Place("A2", "lower shelf"))
 LONG = ("a trade name with all that anybody ever wrote upon its label, " * 4)[:200]
 UNBROKEN = "x" * 90
 

@@ -1,4 +1,4 @@
-"""The fade of a bottle: its points are the law's, its band the fit's, and odd bottles are told of."""
+"""The fade of a bottle: its points are the law's, its band the fit's, odd bottles are told of."""
 
 from __future__ import annotations
 
