@@ -40,13 +40,16 @@ class Running:
     """The steps of one line, in the order they are taken; several may fall on one day.
 
     `falls_below` is the first day below its level and what is then left; `runs_out` the first
-    day with nothing left, or with a need that nothing in hand meets.
+    day with nothing left, or with a need that nothing in hand meets. `bought` is False for a line
+    made here. `first_asked` is the first day a booking asks for it, and its number.
     """
 
     line: Line
     steps: tuple[Step, ...]
     falls_below: tuple[date, int] | None = None
     runs_out: date | None = None
+    bought: bool = True
+    first_asked: tuple[date, str] | None = None
 
 
 @dataclass(frozen=True, slots=True)
@@ -119,7 +122,10 @@ class _Runner:
             self._until(take.on, lapses, arrivals)
             self._take(take)
         self._until(date.max, lapses, arrivals)
-        return Running(self.line, tuple(self.steps), self.falls_below, self.runs_out)
+        asked = min(((take.on, take.booking) for take in self.takes), default=None)
+        return Running(
+            self.line, tuple(self.steps), self.falls_below, self.runs_out, self.bought, asked
+        )
 
     def _arrivals(self) -> list[tuple[date, str]]:
         row = [(one.on, f"{one.number} comes") for one in self.receipts]
@@ -148,7 +154,8 @@ class _Runner:
                 self.coming.promise_late(self.line.key, missing)
         # what comes too late for a need is not drawn by it
         self.used += min(take.to_buy, max(0, self._come(take.on) - self.used))
-        self._step(take.on, f"{take.booking} draws")
+        used = self.bought or bool(take.held)
+        self._step(take.on, f"{take.booking} {'draws' if used else 'has it made'}")
 
     def _come(self, on: date) -> int:
         come = sum(one.amount for one in self.receipts if one.on <= on <= one.until)

@@ -19,6 +19,9 @@ NARROWEST, WIDEST = 6, 60
 LINE, TALLEST = 13.5, 400.0
 """Points of height for a line of text, and the most a row may have: the format ends at 409."""
 
+TEXT, NUMBER, HEADING, LINE_OF_TEXT = "text", "number", "heading", "line of text"
+"""The kinds of cell."""
+
 LONGEST = 32_767
 """Characters a cell may hold. Source: the published limits of the format's first program."""
 
@@ -39,6 +42,7 @@ def workbook_bytes(book: Workbook) -> bytes:
     pages.properties.creator = "stockroom"
     pages.properties.title = _text(book.house)
     pages.properties.created = datetime.combine(book.as_at, time())
+    _styles(pages)
     _first(pages, book)
     for sheet in book.sheets:
         _page(pages, sheet, book)
@@ -68,11 +72,11 @@ def _first(pages: Any, book: Workbook) -> None:
     page.column_dimensions["B"].width = WIDEST
     _for_paper(page, book)
     for line in book.about:
-        page.append([_styled(page, line, bold=line in book.about[:2], wrapped=False)])
+        page.append([_styled(page, line, HEADING if line in book.about[:2] else LINE_OF_TEXT)])
     page.append([])
     for sheet in book.sheets:
         rows = counted(len(sheet.rows), "row") if sheet.rows else "nothing"
-        page.append([_styled(page, sheet.name, bold=True), _styled(page, rows)])
+        page.append([_styled(page, sheet.name, HEADING), _styled(page, rows)])
 
 
 def _page(pages: Any, sheet: Sheet, book: Workbook) -> None:
@@ -87,7 +91,7 @@ def _page(pages: Any, sheet: Sheet, book: Workbook) -> None:
     page.print_title_rows = "1:1"
     page.auto_filter.ref = f"A1:{_letter(len(sheet.headings) - 1)}{len(sheet.rows) + 1}"
     _for_paper(page, book)
-    page.append([_styled(page, heading, bold=True) for heading in sheet.headings])
+    page.append([_styled(page, heading, HEADING) for heading in sheet.headings])
     for row in sheet.rows:
         page.append([_value(page, cell) for cell in row])
 
@@ -140,22 +144,27 @@ def _value(page: Any, cell: Cell) -> Any:
     return None if cell is None else _styled(page, cell)
 
 
-def _styled(page: Any, cell: Cell, *, bold: bool = False, wrapped: bool = True) -> Any:
+def _styled(page: Any, cell: Cell, style: str = "") -> Any:
     from openpyxl.cell import WriteOnlyCell
-    from openpyxl.styles import Alignment, Font
 
-    if not isinstance(cell, str):
-        made = WriteOnlyCell(page, value=cell)
-        made.alignment = Alignment(vertical="top")
-        return made
-    made = WriteOnlyCell(page, value=_text(cell))
-    # a text that looks like a day or a sum stays a text, when it is typed over too
-    made.number_format = "@"
-    made.alignment = Alignment(vertical="top", wrap_text=wrapped)
-    if bold:
-        # a font without a name is another one in some programs
-        made.font = Font(name="Calibri", size=11, bold=True)
+    is_text = isinstance(cell, str)
+    made = WriteOnlyCell(page, value=_text(cell) if isinstance(cell, str) else cell)
+    made.style = style or (TEXT if is_text else NUMBER)
     return made
+
+
+def _styles(pages: Any) -> None:
+    """The four kinds of cell, named once: a style of its own for each cell takes most of a run."""
+    from openpyxl.styles import Alignment, Font, NamedStyle
+
+    # a font without a name is another one in some programs
+    plain, bold = Font(name="Calibri", size=11), Font(name="Calibri", size=11, bold=True)
+    # a text that looks like a day or a sum stays a text, when it is typed over too
+    kinds = ((TEXT, plain, True, "@"), (LINE_OF_TEXT, plain, False, "@"))
+    more = ((HEADING, bold, False, "@"), (NUMBER, plain, False, "General"))
+    for name, font, wrapped, form in (*kinds, *more):
+        aligned = Alignment(vertical="top", wrap_text=wrapped)
+        pages.add_named_style(NamedStyle(name, font=font, alignment=aligned, number_format=form))
 
 
 def _text(words: str) -> str:

@@ -34,6 +34,11 @@ DOTS = 150
 _MM, _POINT = 1 / 25.4, 72 / 25.4
 _FACES = ("Regular", "Bold")
 _LEFT, _RIGHT = 17.0, 6.0
+_LARGE = 100.0
+# mm that the name of a day under the plot needs
+_TICK = 13.0
+# dots of a PNG are set to whole ones, and letters grow by up to so much
+_HINTED = 1.04
 
 Draw = Callable[["Axes"], None]
 
@@ -50,7 +55,7 @@ def drawn(
     with _our_style():
         dots = DOTS if form == "png" else 72
         figure = Figure(figsize=(size[0] * _MM, size[1] * _MM), facecolor=PAPER, dpi=dots)
-        above, below = _framed(figure, head, size) if bare else (9.0, 13.0)
+        above, below = _framed(figure, head, size) if bare else (1.5, 13.0)
         axes = figure.add_axes(
             (
                 _LEFT / size[0],
@@ -61,8 +66,22 @@ def drawn(
         )
         for side in ("top", "right"):
             axes.spines[side].set_visible(False)
+        # what lies under the plot, the lines of days and PRACTICE, shows through
+        axes.patch.set_visible(False)
         draw(axes)
         return _written(figure, form)
+
+
+def page_mm(axes: Axes) -> tuple[float, float]:
+    """How wide and high the whole picture is, mm."""
+    wide, high = axes.figure.get_size_inches()  # type: ignore[union-attr]
+    return float(wide) / _MM, float(high) / _MM
+
+
+def frame_mm(axes: Axes) -> tuple[float, float, float, float]:
+    """Where the plot is, mm from the left and the foot of the picture, its width and height."""
+    (wide, high), box = page_mm(axes), axes.get_position()
+    return box.x0 * wide, box.y0 * high, box.width * wide, box.height * high
 
 
 @contextmanager
@@ -123,23 +142,36 @@ def _framed(figure: Figure, head: Head, size: tuple[float, float]) -> tuple[floa
     wide, high = size
     room = wide - 12.0
     top = 5.0
-    house = f"{head.house}   {PRACTICE}" if head.practice else head.house
-    for text, points, weight in (
-        (house, 9.0, "bold" if head.practice else "normal"),
-        (head.title, 18.0, "bold"),
-        (head.about, 11.0, "normal"),
-    ):
-        for line in fitted(text, points, room, weight) if text else []:
-            figure.text(6 / wide, 1 - top / high, line, size=points, weight=weight, va="top")
-            top += points * 1.25 / _POINT
+    for line, points, weight in _titles(head, room):
+        figure.text(6 / wide, 1 - top / high, line, size=points, weight=weight, va="top")
+        top += points * 1.3 / _POINT
     foot = 4.0
     words = f"as at {day(head.as_at)}. {head.caution}"
     for line in reversed(fitted(words, 7.5, room, "normal")):
         figure.text(6 / wide, foot / high, line, size=7.5, va="bottom")
-        foot += 7.5 * 1.25 / _POINT
+        foot += 7.5 * 1.3 / _POINT
     if head.practice:
         _overprinted(figure)
-    return top + 8.0, foot + 12.0
+    return top + 2.0, foot + 12.0
+
+
+def _titles(head: Head, room: float) -> list[tuple[str, float, str]]:
+    """The lines above, their points and weight; long ones step down in size, then wrap."""
+    house = f"{head.house}   {PRACTICE}" if head.practice else head.house
+    for points in (18.0, 14.0, 11.0):
+        small, middle = min(9.0, points * 0.75), min(11.0, points * 0.85)
+        rows = [
+            (line, size, weight)
+            for text, size, weight in (
+                (house, small, "bold" if head.practice else "normal"),
+                (head.title, points, "bold"),
+                (head.about, middle, "normal"),
+            )
+            for line in (fitted(text, size, room, weight) if text else [])
+        ]
+        if len(rows) <= 4:
+            break
+    return rows
 
 
 def _overprinted(figure: Figure) -> None:
@@ -155,7 +187,9 @@ def _overprinted(figure: Figure) -> None:
     middle = figure.bbox.width / 2, figure.bbox.height * 0.48
     placed = centre.rotate_deg(24).scale(scale).translate(*middle)
     # an outline in grey, so that nothing under it is hidden
-    outline = PathPatch(path, fill=False, edgecolor="#a0a0a0", linewidth=0.8, transform=placed)
+    outline = PathPatch(
+        path, fill=False, edgecolor="#a0a0a0", linewidth=0.8, transform=placed, zorder=-1
+    )
     figure.add_artist(outline)
 
 
@@ -187,16 +221,24 @@ def _cut(word: str, points: float, width_mm: float, weight: str) -> int:
     return fits
 
 
-@cache
 def wide_mm(text: str, points: float, weight: str = "normal") -> float:
-    """How wide a line of text is printed, mm; asked while a picture is drawn, in its style."""
+    """How wide a line of text is printed at most, mm; asked while a picture is drawn.
+
+    The sum of its letters, so that a text of any length is measured at once.
+    """
+    return sum(_letter(one, weight) for one in text) * points * _HINTED / _POINT
+
+
+@cache
+def _letter(letter: str, weight: str) -> float:
+    """How far a letter takes the line on, in parts of the size of the type."""
     from matplotlib.font_manager import FontProperties
     from matplotlib.textpath import TextPath
 
-    if not text.strip():
-        return 0.0
-    face = FontProperties(family=_families(), weight=weight, size=points)
-    return float(TextPath((0, 0), text, prop=face).get_extents().width) / _POINT
+    face = FontProperties(family=_families(), weight=weight, size=_LARGE)
+    # between two letters, for a space has no shape of its own
+    ends = [TextPath((0, 0), text, prop=face).vertices[:, 0].max() for text in (f"{letter}I", "I")]
+    return float(ends[0] - ends[1]) / _LARGE
 
 
 # -- days along the foot ----------------------------------------------------------------
@@ -210,8 +252,8 @@ def day_axis(axes: Axes, first: date, last: date) -> None:
     start, end = first.toordinal(), last.toordinal()
     axes.set_xlim(start - 0.7, end + 0.7)
     mondays = [on for on in range(start, end + 1) if (on - 1) % 7 == 0]
-    step = 1
-    while len(mondays) / step > 18:
+    step, across = 1, frame_mm(axes)[2]
+    while len(mondays) / step > across / _TICK:
         step *= 2
     # a stretch within one week has no Monday to name
     ticks = mondays[::step] or [start]
@@ -232,10 +274,3 @@ def short_day(on: date) -> str:
     """A day inside a picture: "Tue 12 Jan"."""
     weekday = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")[on.weekday()]
     return f"{weekday} {on.day} {MONTHS[on.month - 1][:3]}"
-
-
-def as_at_line(axes: Axes, on: date) -> None:
-    """The day looked from, where it lies inside."""
-    left, right = axes.get_xlim()
-    if left <= on.toordinal() <= right:
-        axes.axvline(on.toordinal() - 0.5, color=FAINT, linewidth=0.8, linestyle=(0, (1, 2)))

@@ -3,72 +3,107 @@
 from __future__ import annotations
 
 from datetime import date
+from itertools import pairwise
 from typing import TYPE_CHECKING
 
 from stockroom.measure.formats import format_number
 from stockroom.reports.pictures.canvas import FAINT, INK, PALE, PAPER, day_axis, short_day
+from stockroom.reports.pictures.placing import Flag, Name, flags, key, margin, names
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
     from stockroom.keeping.course import Mark
-    from stockroom.reports.pictures.fade import Fade
+    from stockroom.reports.pictures.fade import Fade, Point
 
 # two standard uncertainties to each side, about 95 %
 _REACH = 1.960
 
+# strengths nearer than this part of the scale are told as one
+_NEAR = 0.15
+
+_KEY = "● found   ▼ needed on its day, ▽ too weak by then   × first day below"
+
 
 def draw_fade(axes: Axes, fade: Fade) -> None:
-    """Draw it, every line named where it runs."""
+    """Draw it: days named above the plot, strengths at its right end."""
+    margin(axes)
     day_axis(axes, fade.curve[0].on, fade.curve[-1].on)
-    _heights(axes, fade)
+    low, high = _heights(axes, fade)
+    booked = together([m for m in fade.wanted if m.by is not None], (high - low) * _NEAR)
+    asked = together([m for m in fade.wanted if m.by is None], (high - low) * _NEAR)
+    banded = any(p.low is not None and p.high is not None for p in fade.curve)
+    told = "grey: where the line of its own checks lies, 95 % sure" if banded else fade.no_band
+    key(axes, _KEY, told)
+    flags(axes, _days(fade, [*booked, *asked]))
     axes.set_ylabel(f"strength, {fade.unit}")
     _band(axes, fade)
-    _label(axes, fade)
-    days = [point.on.toordinal() for point in fade.curve]
-    axes.plot(days, [p.expected for p in fade.curve], color=INK, linewidth=2.2, zorder=4)
+    if fade.nominal is not None:
+        axes.axhline(fade.nominal, color=INK, linewidth=1.0, linestyle=(0, (6, 3)), zorder=2)
+    _expected(axes, fade)
     _found(axes, fade)
-    _needs(axes, fade)
-    _upright(axes, fade.head.as_at, "today", at=0.99)
-    if fade.recheck:
-        _upright(axes, fade.recheck, f"recheck by {short_day(fade.recheck)}", at=0.99)
-    _named(axes, fade)
+    for marks in (*booked, *asked):
+        _needs(axes, fade, marks)
+    row = [Name(fade.curve[-1].expected, "expected, an estimate", bold=True)]
+    row += [Name(fade.nominal, f"label {fade.label}")] if fade.nominal is not None else []
+    row += [
+        Name((marks[0].strength + marks[-1].strength) / 2, need_words(marks, fade.unit))
+        for marks in (*booked, *asked)
+    ]
+    names(axes, row)
 
 
-def _heights(axes: Axes, fade: Fade) -> None:
+def _heights(axes: Axes, fade: Fade) -> tuple[float, float]:
     row = [p.expected for p in fade.curve] + [one.strength for one in fade.found]
     row += [mark.strength for mark in fade.wanted]
     row += [fade.nominal] if fade.nominal is not None else []
     row += [end for p in fade.curve for end in (p.low, p.high) if end is not None]
     low, high = min(row), max(row)
     room = max(high - low, 0.05 * high)
-    axes.set_ylim(max(0.0, low - 0.28 * room), high + 0.18 * room)
+    ends = max(0.0, low - 0.1 * room), high + 0.08 * room
+    axes.set_ylim(*ends)
+    return ends
 
 
 def _band(axes: Axes, fade: Fade) -> None:
     known = [p for p in fade.curve if p.low is not None and p.high is not None]
     if not known:
-        axes.text(1.0, 1.04, fade.no_band, transform=axes.transAxes, ha="right", va="center")
         return
     days = [p.on.toordinal() for p in known]
     lows, highs = [p.low or 0.0 for p in known], [p.high or 0.0 for p in known]
     axes.fill_between(days, lows, highs, facecolor=PALE, linewidth=0, zorder=1)
     for ends in (lows, highs):
         axes.plot(days, ends, color=FAINT, linewidth=0.8, zorder=2)
-    axes.text(
-        1.0, 1.04, "grey: where the line of its own checks lies, 95 % sure",
-        transform=axes.transAxes, ha="right", va="center",
-    )  # fmt: skip
 
 
-def _label(axes: Axes, fade: Fade) -> None:
-    if fade.nominal is not None:
-        axes.axhline(fade.nominal, color=INK, linewidth=1.0, linestyle=(0, (6, 3)), zorder=2)
-        axes.annotate(
-            f"label {fade.label}", (0.005, fade.nominal),
-            xycoords=axes.get_yaxis_transform(), xytext=(0, 3), textcoords="offset points",
-            va="bottom", zorder=5,
+def _expected(axes: Axes, fade: Fade) -> None:
+    """The expected line, broken where a result moved it: a step in what is known, no fading."""
+    runs = stretches(fade)
+    for run in runs:
+        days, row = zip(*run, strict=True)
+        axes.plot(days, row, color=INK, linewidth=2.2, zorder=4)
+    for before, after in pairwise(runs):
+        (on, above), (_, below) = before[-1], after[0]
+        axes.plot(
+            [on, on], [above, below], color=INK, linewidth=1.1, linestyle=(0, (1, 2)), zorder=4,
         )  # fmt: skip
+
+
+def stretches(fade: Fade) -> list[list[tuple[int, float]]]:
+    """The expected line in pieces, day number and strength; each but the last ends at a result.
+
+    What was expected the day before a result is drawn up to the result's own day.
+    """
+    results = {one.on for one in fade.found}
+    runs: list[list[tuple[int, float]]] = [[]]
+    last: Point | None = None
+    for point in fade.curve:
+        if last is not None and point.on in results:
+            runs[-1].append((point.on.toordinal(), last.expected))
+            runs.append([])
+        runs[-1].append((point.on.toordinal(), point.expected))
+        last = point
+    return runs
 
 
 def _found(axes: Axes, fade: Fade) -> None:
@@ -80,79 +115,70 @@ def _found(axes: Axes, fade: Fade) -> None:
                 color=INK, capsize=4, linewidth=1.2, zorder=5,
             )  # fmt: skip
         axes.plot([on], [one.strength], marker="o", markersize=8, color=INK, zorder=6)
-    # many checks: the first and the last are told, the others can be read
-    told = fade.found if len(fade.found) <= 4 else (fade.found[0], fade.found[-1])
-    for one in told:
-        axes.annotate(
-            f"found {format_number(one.strength, 4)}", (one.on.toordinal(), one.strength),
-            xytext=(7, 4), textcoords="offset points", ha="left", va="bottom",
-            size=9, weight="bold", zorder=7,
-        )  # fmt: skip
 
 
-def _needs(axes: Axes, fade: Fade) -> None:
-    first, last = fade.curve[0].on, fade.curve[-1].on
-    for strength, marks in _by_strength(fade.wanted):
-        dated = [m for m in marks if m.by is not None and first <= m.by <= last]
+def _needs(axes: Axes, fade: Fade, marks: list[Mark]) -> None:
+    """The lines of strengths told as one, the lowest and the highest, and what is marked there."""
+    for strength in {marks[0].strength, marks[-1].strength}:
         axes.axhline(strength, color=INK, linewidth=1.0, linestyle=(0, (1, 1.5)), zorder=3)
-        for mark in dated:
-            assert mark.by is not None
+    first, last = fade.curve[0].on, fade.curve[-1].on
+    for mark in marks:
+        if mark.by is not None and first <= mark.by <= last:
             axes.plot(
-                [mark.by.toordinal()], [strength], color=INK, marker="v",
+                [mark.by.toordinal()], [mark.strength], color=INK, marker="v",
                 markersize=9, markeredgewidth=1.4,
                 markeredgecolor=INK, markerfacecolor=INK if mark.in_time else PAPER, zorder=6,
             )  # fmt: skip
-        _need(axes, fade, strength, _need_words(strength, marks, fade.unit))
-        below = marks[0].on
-        if below is not None and first < below <= last:
-            axes.plot([below.toordinal()], [strength], marker="x", markersize=10,
+    for mark in (marks[0], marks[-1]):
+        if mark.on is not None and first < mark.on <= last:
+            axes.plot([mark.on.toordinal()], [mark.strength], marker="x", markersize=10,
                       markeredgewidth=2.2, color=INK, zorder=7)  # fmt: skip
-            _upright(axes, below, f"below {format_number(strength, 3)} from {short_day(below)}")
 
 
-def _need(axes: Axes, fade: Fade, strength: float, words: str) -> None:
-    """Its words, where the expected line does not run: right above it, else left below."""
-    low, high = axes.get_ylim()
-    clear = strength - fade.curve[-1].expected > 0.12 * (high - low)
-    axes.annotate(
-        words, (0.995 if clear else 0.005, strength), xycoords=axes.get_yaxis_transform(),
-        xytext=(0, 7 if clear else -3), textcoords="offset points", size=9, zorder=7,
-        ha="right" if clear else "left", va="bottom" if clear else "top",
-    )  # fmt: skip
+# -- the words --------------------------------------------------------------------------
 
 
-def _by_strength(wanted: tuple[Mark, ...]) -> list[tuple[float, list[Mark]]]:
-    found: dict[float, list[Mark]] = {}
-    for mark in wanted:
-        found.setdefault(mark.strength, []).append(mark)
-    return sorted(found.items())
+def _days(fade: Fade, groups: list[list[Mark]]) -> list[Flag]:
+    """What falls on a day; of many results, and of strengths told as one, the first and last."""
+    row = [Flag(fade.head.as_at, f"today, {short_day(fade.head.as_at)}")]
+    row += [Flag(fade.recheck, f"recheck by {short_day(fade.recheck)}")] if fade.recheck else []
+    told = fade.found if len(fade.found) <= 4 else (fade.found[0], fade.found[-1])
+    row += [
+        Flag(one.on, f"found {format_number(one.strength, 4)} on {short_day(one.on)}", bold=True)
+        for one in told
+    ]
+    below: dict[date, set[float]] = {}
+    for marks in groups:
+        for mark in (marks[0], marks[-1]):
+            if mark.on is not None and fade.curve[0].on < mark.on:
+                below.setdefault(mark.on, set()).add(mark.strength)
+    for on, strengths in below.items():
+        words = " and ".join(format_number(one, 3) for one in sorted(strengths))
+        row.append(Flag(on, f"below {words} from {short_day(on)}"))
+    return row
 
 
-def _need_words(strength: float, marks: list[Mark], unit: str) -> str:
-    booked = [mark for mark in marks if mark.by is not None]
-    names = [f"{mark.what}{'' if mark.in_time else ' (too weak by then)'}" for mark in booked[:4]]
-    if len(booked) > 4:
-        names.append(f"{len(booked) - 4} more")
-    level = f"{format_number(strength, 3)} {unit}"
-    return f"{level} needed: {', '.join(names)}" if names else f"{level} asked about"
+def together(wanted: list[Mark], near: float) -> list[list[Mark]]:
+    """Marks in groups of nearly one strength, weakest first; no group spans more than `near`."""
+    groups: list[list[Mark]] = []
+    for mark in sorted(wanted, key=lambda mark: (mark.strength, mark.by or date.max, mark.what)):
+        if groups and mark.strength - groups[-1][0].strength <= near:
+            groups[-1].append(mark)
+        else:
+            groups.append([mark])
+    return groups
 
 
-def _upright(axes: Axes, on: date, words: str, *, at: float = 0.02) -> None:
-    """A thin upright line with its words along it."""
-    place = on.toordinal()
-    axes.axvline(place, color=FAINT, linewidth=0.8, linestyle=(0, (1, 2)), zorder=2)
-    axes.text(
-        place, at, f"{words} ", rotation=90, ha="right", va="top" if at > 0.4 else "bottom",
-        size=9, zorder=7, transform=axes.get_xaxis_transform(),
-    )  # fmt: skip
-
-
-def _named(axes: Axes, fade: Fade) -> None:
-    ahead = [p for p in fade.curve if p.on >= fade.head.as_at]
-    at = ahead[len(ahead) // 2]
-    axes.annotate(
-        "expected, an estimate", (at.on.toordinal(), at.expected), xytext=(4, 6),
-        textcoords="offset points", ha="left", va="bottom", weight="bold", zorder=7,
-    )  # fmt: skip
-    axes.text(0.0, 1.04, "● found   ▼ needed on its day, ▽ too weak by then   × first day below",
-              transform=axes.transAxes, va="center")  # fmt: skip
+def need_words(marks: list[Mark], unit: str) -> str:
+    """What a group of needs is called: "90 to 92 vol needed: K15, K26 and 18 more"."""
+    low, high = (format_number(one.strength, 3) for one in (marks[0], marks[-1]))
+    level = f"{low} {unit}" if low == high else f"{low} to {high} {unit}"
+    if marks[0].by is None:
+        return f"{level} asked about"
+    weak = sum(not mark.in_time for mark in marks)
+    told = [mark.what for mark in marks[:2]] if len(marks) > 3 else [mark.what for mark in marks]
+    more = f" and {len(marks) - len(told)} more" if len(marks) > len(told) else ""
+    words = f"{level} needed: {', '.join(told)}{more}"
+    if not weak:
+        return words
+    return f"{words}, too weak by then" if weak == len(marks) else f"{words}; {weak} too weak then"

@@ -17,6 +17,10 @@ from stockroom.reports.pictures.canvas import SIZE
 from stockroom.reports.sheet import columns, page, section, wrap
 from stockroom.reports.words import day, raised
 
+_DRAWN = "Drawn on the day of the booking it serves, as the plan counts it."
+
+MADE_HERE = "What is made for a class and used up is not shown."
+
 
 @dataclass(frozen=True, slots=True)
 class At:
@@ -42,7 +46,8 @@ class Due:
 class Stock:
     """Amounts are micro-units of `kind`. `level` is the line's reorder level, None for none.
 
-    `days` begin with the plan's day. `ordered` is True where anything comes or is to be bought.
+    `days` begin with the plan's day. `note` is what the picture
+    leaves out.
     """
 
     head: Head
@@ -55,6 +60,7 @@ class Stock:
     due: tuple[Due, ...]
     falls_below: date | None = None
     runs_out: date | None = None
+    note: str = ""
 
     @property
     def ordered(self) -> bool:
@@ -77,7 +83,7 @@ def level_of(known: Facts, plan: Plan, running: Running) -> Stock:
     ]
     falls = running.falls_below[0] if running.falls_below else None
     return Stock(
-        head=head_of(plan, f"Stock of {raised(line.key)}", _about(running)),
+        head=head_of(plan, f"Stock of {raised(line.key)}", _about(known, running)),
         line=line.key,
         kind=line.kind,
         first=min([known.as_at, *(one.order_by for one in due if one.order_by)]),
@@ -87,6 +93,7 @@ def level_of(known: Facts, plan: Plan, running: Running) -> Stock:
         due=tuple(sorted(due, key=lambda one: (one.comes, one.id))),
         falls_below=falls,
         runs_out=running.runs_out,
+        note="" if running.bought else MADE_HERE,
     )
 
 
@@ -100,7 +107,7 @@ def _days(running: Running) -> tuple[At, ...]:
     return tuple(found.values())
 
 
-def _about(running: Running) -> str:
+def _about(known: Facts, running: Running) -> str:
     line = running.line
     parts = []
     if line.level is None:
@@ -108,14 +115,26 @@ def _about(running: Running) -> str:
     elif running.falls_below is None:
         parts.append(f"stays above its level of {say(line.level, line.kind)}")
     else:
-        on, left = running.falls_below
-        parts.append(
-            f"falls below its level of {say(line.level, line.kind)} on {day(on)}, "
-            f"{say(left, line.kind)} then left"
-        )
-    if running.runs_out:
+        parts.append(_falls(known, running, *running.falls_below))
+    if running.runs_out and running.runs_out > known.as_at:
         parts.append(f"does not suffice from {day(running.runs_out)} on")
-    return f"without further orders {'; '.join(parts)}"
+    later = running.falls_below is not None and running.falls_below[0] > known.as_at
+    front = "without further orders " if later or len(parts) > 1 else ""
+    return front + "; ".join(parts)
+
+
+def _falls(known: Facts, running: Running, on: date, left: int) -> str:
+    line = running.line
+    assert line.level is not None
+    level = f"its level of {say(line.level, line.kind)}"
+    if on > known.as_at:
+        return f"falls below {level} on {day(on)}, {say(left, line.kind)} then left"
+    stands = any(bottle.line == line.key for bottle in known.bottles)
+    why = ": what is on record of it is used up, past or not found" if stands and not left else ""
+    words = f"below {level} already, {say(left, line.kind)} fit to use{why}"
+    # the plan tells of a level on the day of a booking
+    first = running.first_asked
+    return f"{words}; first asked for by {first[1]} on {day(first[0])}" if first else words
 
 
 def in_units(stock: Stock, micro: int) -> float:
@@ -141,7 +160,7 @@ def level_text(stock: Stock, width: int) -> str:
             head_lines(stock.head, width),
             "\n".join(columns([heading, *rows], width, indent=0)),
             section("ORDERS", due),
-            wrap("Drawn on the day of the booking it serves, as the plan counts it.", width),
+            wrap(f"{_DRAWN} {stock.note}".rstrip(), width),
             foot_lines(stock.head, width),
         ]
     )

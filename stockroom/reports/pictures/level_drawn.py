@@ -8,8 +8,9 @@ from typing import TYPE_CHECKING
 from stockroom.measure.amounts import BASE_UNIT
 from stockroom.measure.formats import unit_mark
 from stockroom.planning.amounts import say
-from stockroom.reports.pictures.canvas import FAINT, INK, PAPER, day_axis, short_day
+from stockroom.reports.pictures.canvas import INK, day_axis, short_day
 from stockroom.reports.pictures.level import in_units
+from stockroom.reports.pictures.placing import Flag, Name, flags, key, margin, names
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -18,25 +19,30 @@ if TYPE_CHECKING:
 
 
 def draw_level(axes: Axes, stock: Stock) -> None:
-    """Draw it; the two lines are told apart by stroke, and both are named above."""
+    """Draw it; the two lines are told apart by stroke, and both are named at their ends."""
+    margin(axes)
     day_axis(axes, stock.first, stock.last)
+    marked = "▼ order by   ▲ comes" if stock.due else "nothing is on order or to be ordered"
+    key(axes, marked, stock.note)
+    flags(axes, _days(stock))
     most = max(
         [stock.level or 0, *(max(at.left, at.with_orders) for at in stock.days), 1],
     )
-    axes.set_ylim(0, in_units(stock, most) * 1.3)
+    axes.set_ylim(0, in_units(stock, most) * 1.1)
     axes.set_ylabel(f"left, {unit_mark(BASE_UNIT[stock.kind])}")
     days = [at.on.toordinal() for at in stock.days] + [stock.last.toordinal()]
     if stock.ordered:
         _steps(axes, stock, days, [at.with_orders for at in stock.days], orders=True)
     _steps(axes, stock, days, [at.left for at in stock.days], orders=False)
-    _level(axes, stock)
-    _falls(axes, stock)
-    _due(axes, stock)
-    words = "solid: without further orders"
-    words += "   dashed: with all that comes" if stock.ordered else ""
-    marked = "▼ order by   ▲ comes" if stock.ordered else "nothing is on order or to be ordered"
-    axes.text(0.0, 1.04, words, transform=axes.transAxes, va="center")
-    axes.text(1.0, 1.04, marked, transform=axes.transAxes, ha="right", va="center")
+    if stock.level is not None:
+        high = in_units(stock, stock.level)
+        axes.axhline(high, color=INK, linewidth=1.0, linestyle=(0, (1, 1.5)), zorder=2)
+    for one in stock.due:
+        if one.order_by is not None:
+            _mark(axes, one.order_by, "v")
+        if one.comes <= stock.last:
+            _mark(axes, one.comes, "^")
+    names(axes, _names(stock))
 
 
 def _steps(axes: Axes, stock: Stock, days: list[int], row: list[int], *, orders: bool) -> None:
@@ -48,53 +54,43 @@ def _steps(axes: Axes, stock: Stock, days: list[int], row: list[int], *, orders:
     )  # fmt: skip
 
 
-def _level(axes: Axes, stock: Stock) -> None:
-    if stock.level is None:
-        return
-    high = in_units(stock, stock.level)
-    axes.axhline(high, color=INK, linewidth=1.0, linestyle=(0, (1, 1.5)), zorder=2)
-    axes.annotate(
-        f"its level {say(stock.level, stock.kind)}", (0.995, high),
-        xycoords=axes.get_yaxis_transform(), xytext=(0, 3), textcoords="offset points",
-        ha="right", va="bottom", zorder=6, bbox={"facecolor": PAPER, "edgecolor": "none", "pad": 1},
-    )  # fmt: skip
-
-
-def _falls(axes: Axes, stock: Stock) -> None:
-    told = ((stock.falls_below, "below its level"), (stock.runs_out, "does not suffice"))
-    days: dict[date, list[str]] = {}
-    for on, words in told:
-        if on is not None:
-            days.setdefault(on, []).append(words)
-    for on, row in days.items():
-        # a day outside is told under the title
-        if stock.first <= on <= stock.last:
-            _upright(axes, on, f"{', '.join(row)} from {short_day(on)}", weight="bold")
-
-
-def _due(axes: Axes, stock: Stock) -> None:
-    for one in stock.due:
-        if one.order_by is not None:
-            _mark(axes, one.order_by, "v", f"{one.id} order by {short_day(one.order_by)}")
-        if one.comes <= stock.last:
-            _mark(axes, one.comes, "^", f"{one.id} comes {short_day(one.comes)}: {one.pack}")
-
-
-def _mark(axes: Axes, on: date, shape: str, words: str) -> None:
+def _mark(axes: Axes, on: date, shape: str) -> None:
     axes.plot(
-        [on.toordinal()], [0.02], marker=shape, markersize=10, color=INK, zorder=7,
+        [on.toordinal()], [0.02], marker=shape, markersize=9, color=INK, zorder=7,
         transform=axes.get_xaxis_transform(), clip_on=False,
     )  # fmt: skip
-    axes.text(
-        on.toordinal() + 0.3, 0.055, words, rotation=90, ha="left", va="bottom", size=9, zorder=7,
-        transform=axes.get_xaxis_transform(),
-        bbox={"facecolor": PAPER, "edgecolor": "none", "pad": 0.8},
-    )  # fmt: skip
 
 
-def _upright(axes: Axes, on: date, words: str, weight: str) -> None:
-    axes.axvline(on.toordinal(), color=FAINT, linewidth=0.8, linestyle=(0, (1, 2)), zorder=1)
-    axes.text(
-        on.toordinal(), 0.99, f"{words} ", rotation=90, ha="right", va="top", size=9,
-        weight=weight, zorder=6, transform=axes.get_xaxis_transform(),
-    )  # fmt: skip
+def _names(stock: Stock) -> list[Name]:
+    end = stock.days[-1]
+    solid = "without further orders" if stock.ordered else "left"
+    row = [Name(in_units(stock, end.left), f"{solid}: {say(end.left, stock.kind)}", bold=True)]
+    if stock.ordered:
+        dashed = f"dashed, with all that comes: {say(end.with_orders, stock.kind)}"
+        row.append(Name(in_units(stock, end.with_orders), dashed))
+    if stock.level is not None:
+        words = f"its level: {say(stock.level, stock.kind)}"
+        row.append(Name(in_units(stock, stock.level), words))
+    return row
+
+
+def _days(stock: Stock) -> list[Flag]:
+    """What falls on a day; a day outside the picture is told under its title."""
+    days: dict[tuple[date, str], list[str]] = {}
+    for one in stock.due:
+        if one.order_by is not None:
+            days.setdefault((one.order_by, "order by"), []).append(one.id)
+        days.setdefault((one.comes, "comes"), []).append(f"{one.id} ({one.pack})")
+    row = [Flag(on, f"{_listed(row)} {verb} {short_day(on)}") for (on, verb), row in days.items()]
+    falls: dict[date, list[str]] = {}
+    for on, words in ((stock.falls_below, "below its level"), (stock.runs_out, "does not suffice")):
+        if on is not None:
+            falls.setdefault(on, []).append(words)
+    for on, told in falls.items():
+        since = "already" if on <= stock.head.as_at else f"from {short_day(on)}"
+        row.append(Flag(on, f"{', '.join(told)} {since}", bold=True))
+    return row
+
+
+def _listed(row: list[str]) -> str:
+    return ", ".join(row) if len(row) <= 3 else f"{row[0]}, {row[1]} and {len(row) - 2} more"

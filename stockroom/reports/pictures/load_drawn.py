@@ -10,30 +10,36 @@ from stockroom.reports.pictures.canvas import (
     INK,
     PALE,
     PAPER,
-    as_at_line,
     day_axis,
+    frame_mm,
+    page_mm,
     short_day,
+    wide_mm,
 )
 from stockroom.reports.pictures.load import runs
+from stockroom.reports.pictures.placing import LINE, SIZE_OF_WORDS, Flag, flags, key
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
     from stockroom.reports.pictures.load import Load
 
-MAKING, TITRATING = "////", "...."
-"""The hatches of the two kinds of work."""
+MAKING, TITRATING, CLOSED = "////", "....", "xx"
+"""The hatches of the two kinds of work, and of days with nobody there."""
 
 
 def draw_load(axes: Axes, load: Load) -> None:
-    """Draw it: one bar a day, titrating on top of making, words over what is over."""
+    """Draw it: one bar a day, titrating on top of making, words above what is over."""
     day_axis(axes, load.first, load.last)
+    limit = f"dashed: the limit, {load.limit} minutes" if load.limit else ""
+    key(axes, limit or " ")
+    _patches(axes, load)
+    flags(axes, _days(load))
     most = max([load.limit, *(one.minutes for one in load.days), 30])
-    # room for the words over a full day
-    axes.set_ylim(0, most * (1.6 if any(one.over for one in load.days) else 1.25))
+    axes.set_ylim(0, most * 1.1)
     axes.set_ylabel("hands-on minutes")
     _closed_days(axes, load)
-    for what, hatch, made in (("making", MAKING, True), ("titrating", TITRATING, False)):
+    for hatch, made in ((MAKING, True), (TITRATING, False)):
         for one in load.days:
             high, low = (one.makes, 0) if made else (one.checks, one.makes)
             if high:
@@ -41,11 +47,8 @@ def draw_load(axes: Axes, load: Load) -> None:
                     one.on.toordinal(), high, 0.82, bottom=low,
                     facecolor=PAPER, edgecolor=INK, hatch=hatch, linewidth=0.8, zorder=2,
                 )  # fmt: skip
-        _key(axes, what, hatch, made=made)
     if load.limit:
-        _limit(axes, load)
-    _over(axes, load)
-    as_at_line(axes, load.head.as_at)
+        axes.axhline(load.limit, color=INK, linewidth=1.6, linestyle=(0, (6, 3)), zorder=3)
 
 
 def _closed_days(axes: Axes, load: Load) -> None:
@@ -57,43 +60,42 @@ def _closed_days(axes: Axes, load: Load) -> None:
             on = closed.toordinal()
             axes.axvspan(
                 on - 0.5, on + 0.5,
-                facecolor=PALE, edgecolor=FAINT, hatch="xx", linewidth=0, zorder=0,
+                facecolor=PALE, edgecolor=FAINT, hatch=CLOSED, linewidth=0, zorder=0,
             )  # fmt: skip
-        axes.text(
-            (run[0].toordinal() + run[-1].toordinal()) / 2, 0.98, "closed",
-            rotation=90, ha="center", va="top", size=9, zorder=4,
-            transform=axes.get_xaxis_transform(),
-            bbox={"facecolor": PAPER, "edgecolor": "none", "pad": 1.0},
-        )  # fmt: skip
 
 
-def _key(axes: Axes, what: str, hatch: str, *, made: bool) -> None:
-    """A small patch of the hatch with its word, above the bars."""
+def _patches(axes: Axes, load: Load) -> None:
+    """Small patches of the hatches with their words, at the right of the key's first line."""
     from matplotlib.patches import Rectangle
 
-    left = 0.0 if made else 0.13
-    patch = Rectangle(
-        (left, 1.02), 0.03, 0.04, transform=axes.transAxes, clip_on=False,
-        facecolor=PAPER, edgecolor=INK, hatch=hatch, linewidth=0.8,
-    )  # fmt: skip
-    axes.add_patch(patch)
-    axes.text(left + 0.036, 1.04, what, transform=axes.transAxes, va="center")
+    kinds = [("making", MAKING, PAPER, INK), ("titrating", TITRATING, PAPER, INK)]
+    kinds += [("closed", CLOSED, PALE, FAINT)] if load.closed else []
+    wide, high = page_mm(axes)
+    start, bottom, across, tall = frame_mm(axes)
+    low, x = bottom + tall + 1.5, start + across
+    for what, hatch, face, edge in reversed(kinds):
+        x -= wide_mm(what, SIZE_OF_WORDS)
+        axes.figure.text(x / wide, low / high, what, size=SIZE_OF_WORDS, va="bottom")
+        x -= 9.5
+        axes.figure.add_artist(
+            Rectangle(
+                (x / wide, (low + 0.4) / high),
+                8 / wide,
+                (LINE - 1) / high,
+                facecolor=face,
+                edgecolor=edge,
+                hatch=hatch,
+                linewidth=0.8,
+            )
+        )
+        x -= 5.0
 
 
-def _limit(axes: Axes, load: Load) -> None:
-    axes.axhline(load.limit, color=INK, linewidth=1.6, linestyle=(0, (6, 3)), zorder=3)
-    # above the bars: wherever on the line it stood, a full day could stand under it
-    axes.text(
-        1.0, 1.04, f"dashed: the limit, {load.limit} minutes", ha="right", va="center",
-        transform=axes.transAxes, weight="bold",
-    )  # fmt: skip
-
-
-def _over(axes: Axes, load: Load) -> None:
-    # upright words: two full days may stand side by side
-    for one in load.days:
-        if one.over:
-            axes.text(
-                one.on.toordinal(), one.minutes, f" {short_day(one.on)}: {one.over} min over",
-                rotation=90, ha="center", va="bottom", size=9, weight="bold", zorder=4,
-            )  # fmt: skip
+def _days(load: Load) -> list[Flag]:
+    """Each day over the limit, and the day looked from."""
+    row = [Flag(load.head.as_at, f"today, {short_day(load.head.as_at)}")]
+    return row + [
+        Flag(one.on, f"{short_day(one.on)}: {one.over} min over", bold=True)
+        for one in load.days
+        if one.over
+    ]
