@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 from collections import Counter
+from collections.abc import Mapping
 from dataclasses import dataclass
 from datetime import date, timedelta
 
 from stockroom.measure.days import MONTHS
-from stockroom.planning.decisions import Plan
+from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.facts import Booking, Facts, Firmness
 from stockroom.reports.paper.head import Head, foot_lines, head_lines, head_of, mark
 from stockroom.reports.paper.kinds import Kind
@@ -80,7 +81,8 @@ def strip_of(known: Facts, plan: Plan) -> Strip:
     """The strip of the plan's term, whole weeks from the Monday it begins in."""
     meant = [b for b in known.bookings if b.firmness is not Firmness.DROPPED]
     meant = [b for b in meant if known.start <= b.on <= known.end]
-    starts = Counter(make.on for make in plan.makes if make.ready > make.on)
+    days = {booking.number: booking.on for booking in known.bookings}
+    starts = Counter(make.on for make in plan.makes if _for_later(make, days))
     # something started on a Saturday is looked for on the wall too
     used = [*(b.on for b in meant), *(on for on in starts if known.start <= on <= known.end)]
     columns = 7 if any(on.weekday() >= WEEKEND for on in used) else WEEKEND
@@ -99,6 +101,11 @@ def strip_of(known: Facts, plan: Plan) -> Strip:
 def _so_many(sign: str, count: int) -> str:
     # a row of ten squares is counted by nobody from the door
     return sign * count if count <= MOST else f"{count}×{sign}"
+
+
+def _for_later(make: Make, days: Mapping[str, date]) -> bool:
+    """Whether nothing is served by it on the day its work starts."""
+    return make.on not in {days[number] for number in make.bookings if number in days}
 
 
 def _week(

@@ -66,7 +66,7 @@ def drawn(
         )
         for side in ("top", "right"):
             axes.spines[side].set_visible(False)
-        # what lies under the plot, the lines of days and PRACTICE, shows through
+        # what lies under the plot, the lines of days, shows through
         axes.patch.set_visible(False)
         draw(axes)
         return _written(figure, form)
@@ -187,16 +187,14 @@ def _overprinted(figure: Figure) -> None:
     middle = figure.bbox.width / 2, figure.bbox.height * 0.48
     placed = centre.rotate_deg(24).scale(scale).translate(*middle)
     # an outline in grey, so that nothing under it is hidden
-    outline = PathPatch(
-        path, fill=False, edgecolor="#a0a0a0", linewidth=0.8, transform=placed, zorder=-1
-    )
+    outline = PathPatch(path, fill=False, edgecolor="#a0a0a0", linewidth=0.8, transform=placed)
     figure.add_artist(outline)
 
 
 def fitted(text: str, points: float, width_mm: float, weight: str = "normal") -> list[str]:
     """A text in lines no wider than so many mm; a word longer than a line is broken."""
     lines, line = [], ""
-    for word in text.split():
+    for word in text.split(" "):
         longer = f"{line} {word}".strip()
         if wide_mm(longer, points, weight) <= width_mm:
             line = longer
@@ -270,7 +268,8 @@ def _short(on: date, first: date) -> str:
     return f"{name}\n{on.year}" if turned else name
 
 
-def short_day(on: date) -> str:
-    """A day inside a picture: "Tue 12 Jan"."""
+def short_day(on: date, seen_from: date) -> str:
+    """A day inside a picture: "Tue 12 Jan", with the year where it is another."""
     weekday = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")[on.weekday()]
-    return f"{weekday} {on.day} {MONTHS[on.month - 1][:3]}"
+    year = f" {on.year}" if on.year != seen_from.year else ""
+    return f"{weekday} {on.day} {MONTHS[on.month - 1][:3]}{year}"

@@ -140,11 +140,19 @@ def _needs(axes: Axes, fade: Fade, marks: list[Mark]) -> None:
 
 def _days(fade: Fade, groups: list[list[Mark]]) -> list[Flag]:
     """What falls on a day; of many results, and of strengths told as one, the first and last."""
-    row = [Flag(fade.head.as_at, f"today, {short_day(fade.head.as_at)}")]
-    row += [Flag(fade.recheck, f"recheck by {short_day(fade.recheck)}")] if fade.recheck else []
+    row = [Flag(fade.head.as_at, f"today, {short_day(fade.head.as_at, fade.head.as_at)}")]
+    row += (
+        [Flag(fade.recheck, f"recheck by {short_day(fade.recheck, fade.head.as_at)}")]
+        if fade.recheck
+        else []
+    )
     told = fade.found if len(fade.found) <= 4 else (fade.found[0], fade.found[-1])
     row += [
-        Flag(one.on, f"found {format_number(one.strength, 4)} on {short_day(one.on)}", bold=True)
+        Flag(
+            one.on,
+            f"found {format_number(one.strength, 4)} on {short_day(one.on, fade.head.as_at)}",
+            bold=True,
+        )
         for one in told
     ]
     below: dict[date, set[float]] = {}
@@ -154,7 +162,7 @@ def _days(fade: Fade, groups: list[list[Mark]]) -> list[Flag]:
                 below.setdefault(mark.on, set()).add(mark.strength)
     for on, strengths in below.items():
         words = " and ".join(format_number(one, 3) for one in sorted(strengths))
-        row.append(Flag(on, f"below {words} from {short_day(on)}"))
+        row.append(Flag(on, f"below {words} from {short_day(on, fade.head.as_at)}"))
     return row
 
 
@@ -179,6 +187,5 @@ def need_words(marks: list[Mark], unit: str) -> str:
     told = [mark.what for mark in marks[:2]] if len(marks) > 3 else [mark.what for mark in marks]
     more = f" and {len(marks) - len(told)} more" if len(marks) > len(told) else ""
     words = f"{level} needed: {', '.join(told)}{more}"
-    if not weak:
-        return words
-    return f"{words}, too weak by then" if weak == len(marks) else f"{words}; {weak} too weak then"
+    count = "" if weak == len(marks) else f"{weak} "
+    return f"{words} ({count}too weak by then)" if weak else words

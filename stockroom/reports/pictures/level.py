@@ -19,6 +19,8 @@ from stockroom.reports.words import day, raised
 
 _DRAWN = "Drawn on the day of the booking it serves, as the plan counts it."
 
+NONE_LEFT = "none fit to use"
+
 MADE_HERE = "What is made for a class and used up is not shown."
 
 
@@ -118,8 +120,10 @@ def _about(known: Facts, running: Running) -> str:
         parts.append(_falls(known, running, *running.falls_below))
     if running.runs_out and running.runs_out > known.as_at:
         parts.append(f"does not suffice from {day(running.runs_out)} on")
+    elif running.runs_out and running.falls_below is None:
+        parts.append(NONE_LEFT)
     later = running.falls_below is not None and running.falls_below[0] > known.as_at
-    front = "without further orders " if later or len(parts) > 1 else ""
+    front = "without further orders " if later or "does not" in parts[-1] else ""
     return front + "; ".join(parts)
 
 
@@ -135,6 +139,13 @@ def _falls(known: Facts, running: Running, on: date, left: int) -> str:
     # the plan tells of a level on the day of a booking
     first = running.first_asked
     return f"{words}; first asked for by {first[1]} on {day(first[0])}" if first else words
+
+
+def out_words(stock: Stock) -> str:
+    """What is said of the day it runs out; with nothing there today, nobody need have asked."""
+    today = stock.days[0]
+    nothing = stock.runs_out == today.on and today.left <= 0
+    return NONE_LEFT if nothing else "does not suffice"
 
 
 def in_units(stock: Stock, micro: int) -> float:
@@ -171,7 +182,7 @@ def _happens(stock: Stock, at: At) -> str:
     if at.on == stock.falls_below:
         words.append("BELOW ITS LEVEL")
     if at.on == stock.runs_out:
-        words.append("DOES NOT SUFFICE")
+        words.append(out_words(stock).upper())
     return ", ".join(words)
 
 

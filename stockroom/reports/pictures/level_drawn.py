@@ -9,8 +9,9 @@ from stockroom.measure.amounts import BASE_UNIT
 from stockroom.measure.formats import unit_mark
 from stockroom.planning.amounts import say
 from stockroom.reports.pictures.canvas import INK, day_axis, short_day
-from stockroom.reports.pictures.level import in_units
+from stockroom.reports.pictures.level import in_units, out_words
 from stockroom.reports.pictures.placing import Flag, Name, flags, key, margin, names
+from stockroom.reports.words import TIED
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -64,14 +65,19 @@ def _mark(axes: Axes, on: date, shape: str) -> None:
 def _names(stock: Stock) -> list[Name]:
     end = stock.days[-1]
     solid = "without further orders" if stock.ordered else "left"
-    row = [Name(in_units(stock, end.left), f"{solid}: {say(end.left, stock.kind)}", bold=True)]
+    row = [Name(in_units(stock, end.left), f"{solid}: {_say(stock, end.left)}", bold=True)]
     if stock.ordered:
-        dashed = f"dashed, with all that comes: {say(end.with_orders, stock.kind)}"
+        dashed = f"dashed, with all that comes: {_say(stock, end.with_orders)}"
         row.append(Name(in_units(stock, end.with_orders), dashed))
     if stock.level is not None:
-        words = f"its level: {say(stock.level, stock.kind)}"
+        words = f"its level: {_say(stock, stock.level)}"
         row.append(Name(in_units(stock, stock.level), words))
     return row
+
+
+def _say(stock: Stock, micro: int) -> str:
+    # never a number at the end of one line and its unit on the next
+    return say(micro, stock.kind).replace(" ", TIED)
 
 
 def _days(stock: Stock) -> list[Flag]:
@@ -81,14 +87,19 @@ def _days(stock: Stock) -> list[Flag]:
         if one.order_by is not None:
             days.setdefault((one.order_by, "order by"), []).append(one.id)
         days.setdefault((one.comes, "comes"), []).append(f"{one.id} ({one.pack})")
-    row = [Flag(on, f"{_listed(row)} {verb} {short_day(on)}") for (on, verb), row in days.items()]
+    row = [
+        Flag(on, f"{_listed(row)} {verb} {short_day(on, stock.head.as_at)}")
+        for (on, verb), row in days.items()
+    ]
     falls: dict[date, list[str]] = {}
-    for on, words in ((stock.falls_below, "below its level"), (stock.runs_out, "does not suffice")):
+    for on, words in ((stock.falls_below, "below its level"), (stock.runs_out, out_words(stock))):
         if on is not None:
             falls.setdefault(on, []).append(words)
     for on, told in falls.items():
-        since = "already" if on <= stock.head.as_at else f"from {short_day(on)}"
-        row.append(Flag(on, f"{', '.join(told)} {since}", bold=True))
+        words = ", ".join(told)
+        already = on <= stock.head.as_at
+        words = f"already {words}" if already else f"{words} from {short_day(on, stock.head.as_at)}"
+        row.append(Flag(on, words, bold=True))
     return row
 
 

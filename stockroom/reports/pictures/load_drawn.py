@@ -93,9 +93,9 @@ def _patches(axes: Axes, load: Load) -> None:
 
 def _days(load: Load) -> list[Flag]:
     """Each day over the limit, and the day looked from."""
-    row = [Flag(load.head.as_at, f"today, {short_day(load.head.as_at)}")]
+    row = [Flag(load.head.as_at, f"today, {short_day(load.head.as_at, load.head.as_at)}")]
     return row + [
-        Flag(one.on, f"{short_day(one.on)}: {one.over} min over", bold=True)
+        Flag(one.on, f"{short_day(one.on, load.head.as_at)}: {one.over} min over", bold=True)
         for one in load.days
         if one.over
     ]

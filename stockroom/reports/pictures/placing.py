@@ -23,6 +23,7 @@ MARGIN, EDGE = 62.0, 6.0
 """Mm kept at the right for the names of levels, and at the edge of the paper."""
 
 _BACK = {"facecolor": PAPER, "edgecolor": "none", "pad": 0.6}
+# mm between a flag and its line, and between two flags
 _ASIDE, _GAP = 0.9, 2.5
 
 
@@ -143,7 +144,7 @@ def set_flags(wanted: list[tuple[float, float]], left: float, right: float) -> l
             Set(x, start, start + width, row) for row in range(len(found) + 1) for start in sides
         ]
         free = [one for one in tries if not any(_touch(one, other) for other in found)]
-        found.append(min(free, key=lambda one: (_crossed(one, found), one.row)))
+        found.append(min(free, key=lambda one: (_crossed(one, found), one.start < one.x, one.row)))
     return found[::-1]
 
 
@@ -154,8 +155,8 @@ def _touch(one: Set, other: Set) -> bool:
 def _crossed(one: Set, found: list[Set]) -> int:
     """How often its line passes through words, or the line of another through its own."""
     return sum(
-        (other.row > one.row and one.start <= other.x <= one.end)
-        + (other.row < one.row and other.start <= one.x <= other.end)
+        (other.row > one.row and one.start - _ASIDE < other.x < one.end + _ASIDE)
+        + (other.row < one.row and other.start - _ASIDE < one.x < other.end + _ASIDE)
         for other in found
     )
 
@@ -180,7 +181,7 @@ def names(axes: Axes, row: list[Name]) -> None:
         for number, words in enumerate(lines):
             axes.figure.text(
                 (edge + 7.0) / wide, (y + (len(lines) - number - 0.5) * line) / high, words,
-                size=points, weight=_weight(one.bold), va="center_baseline",
+                size=points, weight=_weight(one.bold), va="center_baseline", bbox=_BACK, zorder=6,
             )  # fmt: skip
 
 
