@@ -5,7 +5,7 @@ from __future__ import annotations
 import contextlib
 import os
 import sys
-from collections.abc import Callable, Sequence
+from collections.abc import Sequence
 from functools import cache
 from typing import Annotated, Any
 
@@ -13,132 +13,9 @@ import typer
 import typer.core
 
 from stockroom import __version__
-from stockroom.cli import (
-    bench_dilute,
-    bench_strength,
-    bench_weigh,
-    bookings,
-    bring_in,
-    cards,
-    changes,
-    checks,
-    daily,
-    database,
-    diary,
-    fades,
-    files,
-    hazards,
-    house_rules,
-    labels,
-    learn,
-    logger,
-    moving,
-    ordering,
-    pictures,
-    plan,
-    pouring,
-    righting,
-    safe,
-    shelf,
-    stock,
-    terms,
-    titrate,
-    unknown,
-    verify,
-    walk,
-    walls,
-    weekly,
-)
+from stockroom.cli.commands import COMMANDS, NAMES
 from stockroom.cli.shared import ANYWHERE, WITH_VALUE, pull
 from stockroom.errors import StockroomError
-
-COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
-    "The plan": {
-        "plan": plan.plan,
-        "fresh": plan.fresh,
-        "past": plan.past,
-        "usage": plan.usage,
-        "buying": plan.buying,
-        "on-order": ordering.on_order,
-        "ready": plan.ready,
-        "shelf": shelf.shelf,
-        "why": plan.why,
-        "learn": learn.learn,
-        "changed": changes.changed,
-        "what-if": changes.what_if,
-    },
-    "At the shelf": {
-        "order": ordering.order,
-        "arrive": stock.arrive,
-        "open": stock.open_,
-        "make": stock.make,
-        "decant": pouring.decant,
-        "mix": pouring.mix,
-        "draw": stock.draw,
-        "found": checks.found,
-        "look": checks.look,
-        "tested": checks.tested,
-        "printed": checks.printed,
-        "move": stock.move,
-        "count": stock.count,
-        "walk": walk.walk,
-        "lost": checks.lost,
-        "turned-up": checks.turned_up,
-        "spoil": checks.spoil,
-        "unknown": unknown.unknown,
-        "spill": stock.spill,
-        "lend": stock.lend,
-        "discard": stock.discard,
-        "fades": fades.fades,
-        "hazards": hazards.hazards,
-        "diary": diary.diary,
-        "put-right": righting.put_right,
-    },
-    "On paper and in files": {
-        "week": weekly.week,
-        "day": daily.day,
-        "slip": daily.slip,
-        "phone": daily.phone,
-        "card": cards.card,
-        "strip": walls.strip,
-        "label": labels.label,
-        "report": terms.report,
-        "calendar": files.calendar,
-        "workbook": files.workbook,
-        "morning": files.morning,
-        "handover": terms.handover,
-        "picture": pictures.picture,
-    },
-    "Bookings": {
-        "book": bookings.book,
-        "shift": bookings.shift,
-        "cancel": bookings.cancel,
-    },
-    "Bench sums (no store needed)": {
-        "strength": bench_strength.strength,
-        "weigh": bench_weigh.weigh,
-        "dilute": bench_dilute.dilute,
-        "titrate": titrate.titrate,
-    },
-    "The house": {
-        "logger": logger.logger,
-        "demo": database.demo,
-        "new": database.new,
-        "bring-in": bring_in.bring_in,
-        "add": database.add,
-        "change": database.change,
-        "move-house": moving.move_house,
-        "rule": house_rules.rule,
-        "verify": verify.verify,
-        "hand-out": safe.hand_out,
-        "backup": safe.backup,
-        "restore": safe.restore,
-    },
-}
-"""Every command under its heading in the help, in the order it is printed."""
-
-NAMES = frozenset(name for commands in COMMANDS.values() for name in commands)
-"""The names of all of them."""
 
 
 class _PlainFlags:

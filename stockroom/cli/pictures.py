@@ -66,11 +66,11 @@ def _fade(shared: Shared, name: str, below: tuple[str, ...], to: str | None, pap
 
 
 def _load(shared: Shared, _name: str, _below: tuple[str, ...], to: str | None, paper: str) -> None:
-    from stockroom.reports.pictures.load import LOAD, load_of, load_svg
+    from stockroom.reports.pictures.load import LOAD, load_of, load_picture
     from stockroom.service.sheets import known_and_planned
 
     load = load_of(*known_and_planned(shared.path, as_at=shared.today))
-    _put(shared, LOAD, load, "load", to, paper, load_svg)
+    _put(shared, LOAD, load, "load", to, paper, load_picture)
 
 
 def _level(shared: Shared, name: str, _below: tuple[str, ...], to: str | None, paper: str) -> None:

@@ -49,7 +49,7 @@ def readiness(
     checks = tuple(
         check for check in plan.checks if not check.optional and wanted & set(check.bookings)
     )
-    to_do = (*_shorts(plan, wanted), *_buys(needs), *_makes(makes), *_checks(checks))
+    to_do = (*_shorts(plan, wanted), *buys_of(plan, needs), *_makes(makes), *_checks(checks))
     strengths = _strengths(facts, needs)
     cautions = (*_words(facts, wanted), *_at_the_bench(facts, needs))
     return Readiness(not to_do, title, on, to_do, needs, makes, checks, strengths, cautions)
@@ -63,18 +63,33 @@ def _shorts(plan: Plan, wanted: set[str]) -> list[str]:
     ]
 
 
-def _buys(needs: tuple[Answer, ...]) -> list[str]:
-    return [
-        f"buy: {say(n.amount, n.kind)} of {n.item}".rstrip() + (f" ({n.order})" if n.order else "")
-        for n in needs
-        if n.outcome is Outcome.BUY
-    ]
+def buys_of(plan: Plan, needs: tuple[Answer, ...]) -> tuple[str, ...]:
+    """What is bought for these needs: each order once, as it is ordered; else how much of what.
+
+    An order is for a whole pack, and often of what a need is made from, not of the need itself.
+    """
+    orders = {order.id: order for order in plan.orders}
+    coming = {each.number: each for each in plan.on_order}
+    row = []
+    for need in needs:
+        if need.outcome is not Outcome.BUY:
+            continue
+        if need.order in orders:
+            order = orders[need.order]
+            what = f"{order.item}, {order.packs} × {order.pack}, by {order.order_by}"
+            row.append(f"order {order.id}: {what}")
+        elif need.order in coming:
+            placed = coming[need.order]
+            row.append(f"wait for {placed.number}: {placed.item}, expected {placed.expected}")
+        else:
+            row.append(f"buy: {say(need.amount, need.kind)} of {need.item}".rstrip())
+    return tuple(dict.fromkeys(row))
 
 
 def _makes(makes: tuple[Make, ...]) -> list[str]:
     return [
         f"make {make.id} on {make.on}: {make.item} {make.strength}".rstrip()
-        + (" (fresh, that morning)" if make.fresh else "")
+        + (" (fresh, that day)" if make.fresh else "")
         for make in makes
     ]
 

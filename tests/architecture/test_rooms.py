@@ -146,6 +146,13 @@ def test_a_library_in_its_own_room_passes(planted: Callable[..., dict[str, Modul
     assert wrong_libraries(planted(files)) == []
 
 
+def test_only_the_shipped_files_may_be_opened(planted: Callable[..., dict[str, Module]]) -> None:
+    opens = "from pathlib import Path\nfrom importlib.util import find_spec"
+    assert impure(planted({"reports/shipped.py": opens})) == []
+    assert len(impure(planted({"reports/unshipped.py": opens}))) == 2
+    assert len(impure(planted({"reports/shipped.py": opens + "\nimport subprocess"}))) == 1
+
+
 @pytest.mark.parametrize(
     "text",
     [

@@ -9,7 +9,7 @@ from pathlib import Path
 
 import pytest
 
-from stockroom.cli.main import COMMANDS
+from stockroom.cli.commands import COMMANDS
 
 HOUSE = Path(__file__).parents[2] / "stockroom"
 NAMES = {name for commands in COMMANDS.values() for name in commands}

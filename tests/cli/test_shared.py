@@ -4,7 +4,8 @@ import shlex
 
 import pytest
 
-from stockroom.cli.main import NAMES, _wanted, program, value_options
+from stockroom.cli.commands import NAMES
+from stockroom.cli.main import _wanted, program, value_options
 from stockroom.cli.shared import SEVERAL, Shared, pull
 from stockroom.errors import BadInput
 

@@ -9,7 +9,7 @@ from typing import TYPE_CHECKING
 
 import pytest
 
-from stockroom.cli.main import COMMANDS
+from stockroom.cli.commands import COMMANDS
 
 if TYPE_CHECKING:
     from conftest import Result, Stockroom

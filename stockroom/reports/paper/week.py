@@ -33,7 +33,7 @@ from stockroom.reports.paper.week_text import week_lines, week_text
 from stockroom.reports.words import counted
 
 NOTHING = "Nothing to do."
-NO_WORK = "Nothing is booked in this week, and nothing has to be done in it."
+NO_WORK = "Nothing is booked in this week: nothing to make or set out."
 TIMES = "A time beside a make is the latest to begin it."
 
 

@@ -13,9 +13,10 @@ from stockroom.planning.decisions import Answer, Draw, Outcome, Plan, Watch
 from stockroom.planning.facts import EXACT, Booking, Facts, Firmness, Form, Recipe
 from stockroom.planning.known import how_known
 from stockroom.planning.people import clock, unstaffed
-from stockroom.reports.paper.week_parts import Class, Item, Job, short_day, tied
+from stockroom.reports.paper.week_parts import Class, Item, Job, made_when, short_day, tied
 from stockroom.reports.words import amount, counted, named, raised
 
+_PASSED_OVER = " not used: "
 _SENTENCE = re.compile(r"(?<=[.!])\s+(?=[A-Z])")
 _MINUTES_BEFORE = re.compile(r"(\d+) ?min\b(?:[^.;]*\bbefore\b| to set out)")
 _DAY_BEFORE = re.compile(r"overnight|(?:day|evening) before", re.IGNORECASE)
@@ -123,13 +124,16 @@ class Classes:
         if not row:
             shop = self.known.lines[need.line].form is Form.SUNDRY
             row = ["from a shop" if shop else "still to come: see the orders"]
-        return Item(key, what, " + ".join(row))
+        passed = (each.split(_PASSED_OVER, 1) for each in need.reasons if _PASSED_OVER in each)
+        why = tuple(raised(f"{bottle}: {reason}") for bottle, reason in passed)
+        return Item(key, what, " + ".join(row), passed=why)
 
     def _made(self, need: Answer) -> str:
         make = self.makes[need.make]
         if make.ready == need.booking.on == make.on:
             return "made that day"
-        return f"made {short_day(make.on)}"
+        when = made_when(make, self.plan.as_at)
+        return f"{when}, once {need.order} has come" if need.order else when
 
     def _drawn(self, need: Answer, draw: Draw) -> str:
         bottle, line = self.bottles[draw.bottle], self.known.lines[need.line]

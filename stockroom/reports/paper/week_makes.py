@@ -172,12 +172,17 @@ class Makes:
         last = "good today only" if until == make.on else last
         ends = [b.minute + b.lasts_minutes for b in self._on(make, on)]
         return Job(
-            key=f"{on} tidy {raised(make.line)}{self._which(make)}",
+            key=f"{on} tidy {raised(make.line)}{self._which(make)}{self._beside(make, on)}",
             time=format_time(max(ends)) if ends and max(ends) < 1440 else "",
-            what=f"{made(make)}: {doing}",
+            what=f"{made(make)}, the one made {short_day(make.on)}: {doing}",
             more=tuple(each for each in (last, kept) if each),
             cautions=(*collected, *never),
         )
+
+    def _beside(self, make: Make, on: date) -> str:
+        """What tells it apart from one of the same line made on another day, over on this one."""
+        days = {m.on for m in self.plan.makes if m.line == make.line and self._last_day(m) == on}
+        return f" of {make.on}" if len(days) > 1 else ""
 
     def _heel(self, make: Make) -> str:
         if make.heel < TOO_LITTLE:

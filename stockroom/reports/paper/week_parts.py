@@ -20,12 +20,16 @@ _WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
 
 @dataclass(frozen=True, slots=True)
 class Item:
-    """One thing to set out: how much of what, and where it comes from; `tick` False for a lack."""
+    """One thing to set out: how much of what, and where it comes from; `tick` False for a lack.
+
+    `passed` tells the bottles that are passed over for it, and why: "S05: set aside".
+    """
 
     key: str
     what: str
     whence: str
     tick: bool = True
+    passed: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -100,6 +104,11 @@ def tied(text: str) -> str:
 def made(make: Make) -> str:
     """What a make gives: "starch 0.5 % w/v"."""
     return named(make.item, make.strength)
+
+
+def made_when(make: Make, as_at: date) -> str:
+    """When a make is or was made, as seen on the day of the plan: "to be made Mon 25 Jan"."""
+    return f"{'made' if make.on < as_at else 'to be made'} {short_day(make.on)}"
 
 
 def volume(micro: int) -> str:

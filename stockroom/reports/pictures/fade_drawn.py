@@ -140,17 +140,16 @@ def _needs(axes: Axes, fade: Fade, marks: list[Mark]) -> None:
 
 def _days(fade: Fade, groups: list[list[Mark]]) -> list[Flag]:
     """What falls on a day; of many results, and of strengths told as one, the first and last."""
-    row = [Flag(fade.head.as_at, f"today, {short_day(fade.head.as_at, fade.head.as_at)}")]
+    now = fade.head.as_at
+    row = [Flag(now, f"today, {short_day(now, now)}")]
     row += (
-        [Flag(fade.recheck, f"recheck by {short_day(fade.recheck, fade.head.as_at)}")]
-        if fade.recheck
-        else []
+        [Flag(fade.recheck, f"recheck by {short_day(fade.recheck, now)}")] if fade.recheck else []
     )
     told = fade.found if len(fade.found) <= 4 else (fade.found[0], fade.found[-1])
     row += [
         Flag(
             one.on,
-            f"found {format_number(one.strength, 4)} on {short_day(one.on, fade.head.as_at)}",
+            f"found {format_number(one.strength, 4)} on {short_day(one.on, now)}",
             bold=True,
         )
         for one in told
@@ -162,7 +161,7 @@ def _days(fade: Fade, groups: list[list[Mark]]) -> list[Flag]:
                 below.setdefault(mark.on, set()).add(mark.strength)
     for on, strengths in below.items():
         words = " and ".join(format_number(one, 3) for one in sorted(strengths))
-        row.append(Flag(on, f"below {words} from {short_day(on, fade.head.as_at)}"))
+        row.append(Flag(on, f"below {words} from {short_day(on, now)}"))
     return row
 
 

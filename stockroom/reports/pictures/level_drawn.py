@@ -82,14 +82,14 @@ def _say(stock: Stock, micro: int) -> str:
 
 def _days(stock: Stock) -> list[Flag]:
     """What falls on a day; a day outside the picture is told under its title."""
+    now = stock.head.as_at
     days: dict[tuple[date, str], list[str]] = {}
     for one in stock.due:
         if one.order_by is not None:
             days.setdefault((one.order_by, "order by"), []).append(one.id)
         days.setdefault((one.comes, "comes"), []).append(f"{one.id} ({one.pack})")
     row = [
-        Flag(on, f"{_listed(row)} {verb} {short_day(on, stock.head.as_at)}")
-        for (on, verb), row in days.items()
+        Flag(on, f"{_listed(row)} {verb} {short_day(on, now)}") for (on, verb), row in days.items()
     ]
     falls: dict[date, list[str]] = {}
     for on, words in ((stock.falls_below, "below its level"), (stock.runs_out, out_words(stock))):
@@ -97,8 +97,8 @@ def _days(stock: Stock) -> list[Flag]:
             falls.setdefault(on, []).append(words)
     for on, told in falls.items():
         words = ", ".join(told)
-        already = on <= stock.head.as_at
-        words = f"already {words}" if already else f"{words} from {short_day(on, stock.head.as_at)}"
+        already = on <= now
+        words = f"already {words}" if already else f"{words} from {short_day(on, now)}"
         row.append(Flag(on, words, bold=True))
     return row
 

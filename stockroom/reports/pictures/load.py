@@ -152,7 +152,7 @@ def load_lines(load: Load) -> dict[str, str]:
     }
 
 
-def load_svg(
+def load_picture(
     load: Load, size: tuple[float, float] = SIZE, *, form: str = "svg", bare: bool = False
 ) -> bytes:
     """The picture of it; `size` in mm. On a page the title is the page's: `bare` is False."""
@@ -163,5 +163,5 @@ def load_svg(
 
 
 LOAD = Kind(
-    "picture", load_text, load_lines, lambda load: {"picture": load_svg(load).decode("utf-8")}
+    "picture", load_text, load_lines, lambda load: {"picture": load_picture(load).decode("utf-8")}
 )

@@ -26,6 +26,12 @@ _BACK = {"facecolor": PAPER, "edgecolor": "none", "pad": 0.6}
 # mm between a flag and its line, and between two flags
 _ASIDE, _GAP = 0.9, 2.5
 
+# words to the left of their day are taken only to spare this many rows
+_LEFT_SIDE = 3
+
+# more of the plot than this is never given up for flags whose lines cross no words
+_MOST_OF_PLOT = 0.45
+
 
 @dataclass(frozen=True, slots=True)
 class Flag:
@@ -94,12 +100,15 @@ def flags(axes: Axes, row: list[Flag]) -> None:
     from matplotlib.lines import Line2D
 
     wide, high = page_mm(axes)
-    start, bottom, across, _ = frame_mm(axes)
+    start, bottom, across, tall = frame_mm(axes)
     first, last = axes.get_xlim()
     shown = sorted((one for one in row if first <= one.on.toordinal() <= last), key=_by_day)
     at = [start + (one.on.toordinal() - first) / (last - first) * across for one in shown]
     widths = [wide_mm(one.words, SIZE_OF_WORDS, _weight(one.bold)) for one in shown]
-    places = set_flags(list(zip(at, widths, strict=True)), EDGE, wide - EDGE)
+    wanted = list(zip(at, widths, strict=True))
+    places = set_flags(wanted, EDGE, wide - EDGE)
+    if max((one.row for one in places), default=0) * LINE > _MOST_OF_PLOT * tall:
+        places = set_flags(wanted, EDGE, wide - EDGE, close=True)
     take(axes, top=(max((one.row for one in places), default=-1) + 1) * LINE + 1.0)
     base = frame_mm(axes)[1] + frame_mm(axes)[3] + 1.0
     for one, place in zip(shown, places, strict=True):
@@ -129,11 +138,14 @@ def _weight(bold: bool) -> str:
     return "bold" if bold else "normal"
 
 
-def set_flags(wanted: list[tuple[float, float]], left: float, right: float) -> list[Set]:
+def set_flags(
+    wanted: list[tuple[float, float]], left: float, right: float, *, close: bool = False
+) -> list[Set]:
     """Places for flags (day, width of words), mm: no two words touch; few lines cross words.
 
     Set from the right, beside their day: words run to the right, so those further left pass
-    above. Words wider than the paper start at its left edge.
+    above. Words wider than the paper start at its left edge. `close` takes the fewest rows,
+    and lets lines pass behind words.
     """
     found: list[Set] = []
     for x, width in reversed(wanted):
@@ -144,8 +156,15 @@ def set_flags(wanted: list[tuple[float, float]], left: float, right: float) -> l
             Set(x, start, start + width, row) for row in range(len(found) + 1) for start in sides
         ]
         free = [one for one in tries if not any(_touch(one, other) for other in found)]
-        found.append(min(free, key=lambda one: (_crossed(one, found), one.start < one.x, one.row)))
+        found.append(min(free, key=lambda one: _cost(one, found, close=close)))
     return found[::-1]
+
+
+def _cost(one: Set, found: list[Set], *, close: bool) -> tuple[int, int]:
+    crossed = _crossed(one, found)
+    if close:
+        return one.row, crossed
+    return crossed, one.row + _LEFT_SIDE * (one.start < one.x)
 
 
 def _touch(one: Set, other: Set) -> bool:

@@ -1,0 +1,94 @@
+"""When what is made and set out on a day is begun at the latest, by one pair of hands.
+
+Backwards from the classes, one thing after the other, so that nothing waits for two hands at
+once: first what is set out, before it what is made for it. One pair of hands is our choice.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable
+from dataclasses import dataclass
+from datetime import date
+
+from stockroom.planning.decisions import Make, Plan
+from stockroom.planning.facts import Booking, Facts, Firmness
+from stockroom.planning.numbers import natural
+from stockroom.planning.timing import DAY_MINUTES, latest_start
+
+SET_OUT = 30
+"""Minutes before a class by which all stands ready. Common practice, no source."""
+
+USUAL_MINUTES = 10
+"""Minutes to set out a class whose recipe says none. Our choice."""
+
+_TO_SET_OUT = re.compile(r"(\d+) ?min to set out")
+
+
+@dataclass(frozen=True, slots=True)
+class Times:
+    """Minutes after midnight: of setting out by booking, of beginning a make by its number."""
+
+    set_out: dict[str, int]
+    makes: dict[str, int]
+
+
+def minutes_to_set_out(known: Facts, booking: Booking) -> int:
+    """How long it takes: "25 min to set out" in the words of its recipe, else USUAL_MINUTES."""
+    found = _TO_SET_OUT.search(known.recipes[booking.recipe, booking.version].handling)
+    return int(found[1]) if found else USUAL_MINUTES
+
+
+def times_of(known: Facts, plan: Plan, on: date) -> Times:
+    """The latest times of a day, whichever of its classes a sheet is about.
+
+    All stands ready SET_OUT minutes before its class where that fits into staffed hours, else by
+    the class; what fits neither way begins when the doors open.
+    """
+    over = (Firmness.DONE, Firmness.DROPPED)
+    classes = [b for b in known.bookings if b.on == on and b.firmness not in over]
+    day = _Backwards(known, on, classes)
+    for minute in sorted({booking.minute for booking in classes}, reverse=True):
+        same = [booking for booking in classes if booking.minute == minute]
+        for booking in sorted(same, key=lambda b: natural(b.number), reverse=True):
+            day.set_out(booking)
+        for make in sorted(plan.makes, key=lambda each: natural(each.id)):
+            if make.on == on == make.ready and day.first_of(make) == minute:
+                day.make(make)
+    return Times(day.outs, day.begun)
+
+
+class _Backwards:
+    def __init__(self, known: Facts, on: date, classes: Iterable[Booking]) -> None:
+        self.known, self.on, self.calendar = known, on, known.calendar
+        self.minutes = {booking.number: booking.minute for booking in classes}
+        self.free = DAY_MINUTES
+        self.outs: dict[str, int] = {}
+        self.begun: dict[str, int] = {}
+
+    def first_of(self, make: Make) -> int | None:
+        """When the first class of the day begins that a make is for; None for none."""
+        return min((self.minutes[b] for b in make.bookings if b in self.minutes), default=None)
+
+    def set_out(self, booking: Booking) -> None:
+        takes = minutes_to_set_out(self.known, booking)
+        opens, shuts = self.calendar.open_from, self.calendar.open_to
+        start = min(self.free, booking.minute - SET_OUT) - takes
+        if not opens <= start < shuts and self.calendar.is_open(self.on):
+            # no half hour to spare, or nobody there yet: then by the class itself
+            start = min(self.free, booking.minute) - takes
+        if booking.minute >= opens:
+            start = max(start, opens)
+        self.outs[booking.number] = self.free = max(start, 0)
+
+    def make(self, make: Make) -> None:
+        method = self.known.methods.get(make.line)
+        opens = self.calendar.open_from
+        due = self.first_of(make) or 0
+        outs = min(self.outs[b] for b in make.bookings if b in self.outs)
+        begun = None
+        for ready in (outs, due):
+            if method is not None and begun is None:
+                begun = latest_start((make.on, ready), method, self.calendar, make.on)
+        minute = begun[1] if begun else opens
+        self.begun[make.id] = self.free = max(min(minute, self.free - make.minutes), opens)
