@@ -91,6 +91,15 @@ def _made(want: Want) -> _Take:
     return _Take(want.need.on, want.deadline[0], want.need.booking.number, held, 0)
 
 
+@dataclass(slots=True)
+class _Lot:
+    """What comes on a day and is good up to and including another; `left` goes down."""
+
+    on: date
+    until: date
+    left: int
+
+
 class _Runner:
     """One line run through the plan. Not reused."""
 
@@ -108,7 +117,10 @@ class _Runner:
         self.receipts: list[Receipt] = receipts(facts).get(line.key, [])
         self.orders = sorted(orders, key=lambda order: (order.arrives, order.id))
         self.drawn: dict[str, int] = {}
-        self.used = 0
+        # what comes, each with its days and what nobody has drawn of it
+        self.lots = [_Lot(one.on, one.until, one.amount) for one in self.receipts]
+        self.lots += [_Lot(order.arrives, date.max, order.amount) for order in self.orders]
+        self.lots.sort(key=lambda lot: (lot.until, lot.on))
         self.falls_below: tuple[date, int] | None = None
         self.runs_out: date | None = None
         self.steps: list[Step] = []
@@ -152,14 +164,20 @@ class _Runner:
             self.runs_out = min(self.runs_out or take.on, take.on)
             if take.start < soonest_arrival(self.facts, self.line):
                 self.coming.promise_late(self.line.key, missing)
-        # what comes too late for a need is not drawn by it
-        self.used += min(take.to_buy, max(0, self._come(take.on) - self.used))
+        self._draw(take.to_buy, take.on)
         used = self.bought or bool(take.held)
         self._step(take.on, f"{take.booking} {'draws' if used else 'has it made'}")
 
+    def _draw(self, amount: int, on: date) -> None:
+        """From what has come, what goes past first; what comes too late is not drawn."""
+        for lot in self.lots:
+            if lot.on <= on <= lot.until:
+                share = min(amount, lot.left)
+                lot.left -= share
+                amount -= share
+
     def _come(self, on: date) -> int:
-        come = sum(one.amount for one in self.receipts if one.on <= on <= one.until)
-        return come + sum(order.amount for order in self.orders if order.arrives <= on)
+        return sum(lot.left for lot in self.lots if lot.on <= on <= lot.until)
 
     def _step(self, on: date, what: str, *, counts: bool = True) -> None:
         stands = left_on(self.shelf, self.line, on, self.drawn)
@@ -171,4 +189,4 @@ class _Runner:
         noticed = self.bought or self.falls_below is not None
         if counts and left <= 0 and noticed and self.runs_out is None:
             self.runs_out = on
-        self.steps.append(Step(on, left, stands + max(0, self._come(on) - self.used), what))
+        self.steps.append(Step(on, left, stands + self._come(on), what))

@@ -22,7 +22,7 @@ from stockroom.reports.paper.term_report_waste import (
     total_of,
     wasted,
 )
-from stockroom.reports.pictures.load import Load, load_of, load_svg
+from stockroom.reports.pictures.load import Load, load_of, load_picture
 from stockroom.reports.sheet import columns, page, section, wrap
 from stockroom.reports.usage_text import KNOWN_BY
 from stockroom.reports.words import amount, counted, listed, money, named
@@ -182,7 +182,7 @@ def term_report_lines(report: TermReport) -> dict[str, str]:
 def _picture(report: TermReport) -> dict[str, str]:
     if not report.load.days:
         return {}
-    return {"load_svg": load_svg(report.load, _PICTURE).decode("utf-8")}
+    return {"load_svg": load_picture(report.load, _PICTURE).decode("utf-8")}
 
 
 REPORT = Kind("report", term_report_text, term_report_lines, _picture)
