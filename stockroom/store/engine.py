@@ -12,8 +12,6 @@ from itertools import count
 from pathlib import Path
 from typing import Any
 
-from alembic import command
-from alembic.config import Config
 from sqlalchemy import Connection, Engine, create_engine, event
 from sqlalchemy.exc import DBAPIError
 from sqlalchemy.pool import NullPool
@@ -219,6 +217,10 @@ def _build(path: Path, rows: Rows | None) -> None:
 
 def migrate(connection: Connection, layout: str = "head") -> None:
     """Bring the tables behind an open connection to a layout, the newest, in its transaction."""
+    # only a store of an earlier layout, or a new one, ever asks for it
+    from alembic import command
+    from alembic.config import Config
+
     config = Config()
     # a per cent sign in a folder's name would be read as a substitution
     config.set_main_option("script_location", str(MIGRATIONS).replace("%", "%%"))
