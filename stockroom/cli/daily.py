@@ -28,7 +28,7 @@ def day(ctx: typer.Context, ref: Ref = None, to: Print = None, paper: Paper = "A
 
     shared = of(ctx)
     asked = day_asked(shared.path, ref, as_at=shared.today)
-    sheet = day_of(asked.known, asked.plan, asked.on, asked.booking)
+    sheet = day_of(asked.known, asked.plan, asked.on, asked.booking, asked.closed)
     put_out(shared, DAY, sheet, asked.about, to=to, paper=paper)
 
 

@@ -16,6 +16,7 @@ import typer
 
 from stockroom.cli.printing import show, suggest, width
 from stockroom.cli.shared import Shared
+from stockroom.cli.whose import check_ours
 from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 
 if TYPE_CHECKING:
@@ -57,13 +58,12 @@ def put_out(
     Raises: BadInput for a file or paper that cannot be; NotAllowed where nothing can be written.
     """
     from stockroom.reports.paper.data import as_data
-    from stockroom.reports.paper.head import since
     from stockroom.service.copies import copy_before
 
     form, size = form_of(to) if to is not None else "", paper_of(paper, papers)
     before, lines = copy_before(shared.path, kind.name, about), kind.lines(sheet)
     if before is not None and before.lines:
-        told = since(before.number, before.lines, lines, sheet.head.as_at)
+        told = kind.since(sheet, before.number, before.lines)
         sheet = replace(sheet, head=replace(sheet.head, since=told))
     if to is None:
         show(shared, lambda: kind.text(sheet, width()), lambda: as_data(sheet))
@@ -103,6 +103,11 @@ def _set_and_written(
     pages = typeset(kind.name, kind.data(printed), form=form, paper=size, on=head.as_at)
     try:
         return write(pages)
+    except (BadInput, NotAllowed) as trouble:
+        # the name of a further page, which is known only now
+        raise NotAllowed(
+            f"Copy {head.copy} was numbered and not written. {trouble.message}", trouble.hint
+        ) from trouble
     except OSError as trouble:
         raise NotAllowed(
             f"Copy {head.copy} was numbered and not written: {trouble.strerror or trouble}.",
@@ -165,23 +170,35 @@ def older_pages(target: Path, count: int) -> list[str]:
     return [str(each) for each in (*alone, *(found[number] for number in sorted(found)))]
 
 
+def check_writable(target: Path) -> None:
+    """Pass where `written_whole` would begin: for what must not be done for a file in vain.
+
+    Raises: BadInput for a folder that is not there; NotAllowed where nothing can be written.
+    """
+    with written_whole(target):
+        pass
+
+
 @contextlib.contextmanager
 def written_whole(target: Path) -> Iterator[Callable[[Sequence[bytes]], list[str]]]:
     """A writer of the file `target`, or of one for each page beside it; whole or not at all.
 
     The folder and the name are tried before the block begins, so that what the block does,
     taking a number, is not done for a file that could never be written.
-    Raises: BadInput for a folder that is not there; NotAllowed where nothing can be written.
+    Raises: BadInput for a folder that is not there; NotAllowed where nothing can be written,
+    and for a file that is there and not of our making.
     """
     try:
         _check_target(target)
+        check_ours(target)
         with tempfile.TemporaryDirectory(dir=target.parent, prefix=".printing-") as beside:
             _try_name(Path(beside), target)
 
             def write(pages: Sequence[bytes]) -> list[str]:
                 names = page_names(target, len(pages))
-                for name in names:
+                for name, page in zip(names, pages, strict=True):
                     _check_target(name)
+                    check_ours(name, page)
                 for name, page in zip(names, pages, strict=True):
                     fresh = Path(beside) / name.name
                     fresh.write_bytes(page)
@@ -194,7 +211,7 @@ def written_whole(target: Path) -> Iterator[Callable[[Sequence[bytes]], list[str
     except OSError as trouble:
         raise NotAllowed(
             f"{target} cannot be written: {trouble.strerror or trouble}.",
-            "Nothing was printed; name a file where you may write.",
+            "Nothing was written; name a file where you may write.",
         ) from trouble
 
 
@@ -210,7 +227,7 @@ def _check_target(target: Path) -> None:
     if target.exists() and not target.stat().st_mode & stat.S_IWUSR:
         # a rename would pass over what its owner meant
         raise NotAllowed(
-            f"{target} may only be read.", "Nothing was printed; name another, or make it writable."
+            f"{target} may only be read.", "Nothing was written; name another, or make it writable."
         )
 
 

@@ -125,14 +125,13 @@ def _others(shared: Shared, size: str, known: Any, plan: Any) -> Iterator[tuple[
 
 def _printed(shared: Shared, kind: Kind[A], sheet: A, about: str, size: str) -> tuple[bytes, A]:
     """A sheet as PDF under the next copy's number, held against the copy before it."""
-    from stockroom.reports.paper.head import since
     from stockroom.reports.typesetting import typeset
     from stockroom.service.copies import copy_before, number_copy
 
     head, lines = sheet.head, kind.lines(sheet)
     before = copy_before(shared.path, kind.name, about)
     if before is not None and before.lines:
-        head = replace(head, since=since(before.number, before.lines, lines, head.as_at))
+        head = replace(head, since=kind.since(sheet, before.number, before.lines))
     number = number_copy(
         shared.path, kind.name, about, lines, as_at=head.as_at, by=shared.given_initials
     )

@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
+from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from stockroom.cli.paper import USUAL, Print, form_of, paper_of, put_out
+from stockroom.cli.paper import USUAL, Print, check_writable, form_of, paper_of, put_out
 from stockroom.cli.printing import show, tell, width
 from stockroom.cli.shared import Shared, of
 from stockroom.cli.stock import Happened, when
@@ -96,6 +97,7 @@ def _check_printed(name: str, to: str | None, paper: str, *, under_way: bool) ->
         # before the walk is started: a mistyped name must leave nothing behind
         form_of(to)
         paper_of(paper, PAPERS)
+        check_writable(Path(to))
 
 
 def _enter(

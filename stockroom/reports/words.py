@@ -62,6 +62,21 @@ def amount(micro: int, kind: Kind) -> str:
     return re.sub(r"\s", TIED, format_amount(shown))
 
 
+def measured(micro: int, kind: Kind) -> str:
+    """An amount to take, to what a person can read off: "6.61 cm³", "20.7 cm³", "432 cm³".
+
+    Volumes below 10 cm³ have two decimals, below 100 cm³ one, from there none (common practice,
+    no source); masses, and drops below 0.1 cm³ that would lose more than they may, are as
+    `amount` has them.
+    """
+    cm3 = micro / PER_UNIT[kind]
+    if kind is not Kind.VOLUME or cm3 < 0.1:
+        return amount(micro, kind)
+    # the size that counts is the one shown: 9.996 is 10.0
+    places = 2 if round(cm3, 2) < 10 else 1 if round(cm3, 1) < 100 else 0
+    return amount(round(round(cm3, places) * PER_UNIT[kind]), kind)
+
+
 def raised(text: str) -> str:
     """Text with its cm3 and dm3 written as they are printed: cm³, dm³."""
     return re.sub(r"\b([cdm]m)3\b", r"\1³", text)

@@ -12,6 +12,7 @@ from stockroom.errors import BadDate
 from stockroom.measure.days import parse_day
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Firmness
+from stockroom.service.closures import why_closed
 from stockroom.service.known import known_from
 from stockroom.service.sheets import known_and_planned
 from stockroom.settings import StoreAt
@@ -21,12 +22,16 @@ from stockroom.store.reading import reading
 
 @dataclass(frozen=True, slots=True)
 class Asked:
-    """A day, the booking if one was asked for ("" for the whole day), and what is known of it."""
+    """A day, the booking if one was asked for ("" for the whole day), and what is known of it.
+
+    `closed` is why the house is shut that day, where somebody wrote it down.
+    """
 
     known: Facts
     plan: Plan
     on: date
     booking: str = ""
+    closed: str = ""
 
     @property
     def about(self) -> str:
@@ -43,7 +48,7 @@ def day_asked(path: StoreAt, ref: str | None, *, as_at: date) -> Asked:
         known = known_from(reader, as_at)
     on, booking = _meant(known, ref, as_at)
     known, plan = known_and_planned(path, as_at=as_at, through=on)
-    return Asked(known, plan, on, booking)
+    return Asked(known, plan, on, booking, why_closed(path, on, on).get(on, ""))
 
 
 def _meant(known: Facts, ref: str | None, as_at: date) -> tuple[date, str]:

@@ -334,8 +334,11 @@ def _rewritten(folder: Path, **changed: object) -> None:
 def test_an_older_folder_comes_up_by_the_migrations(
     stockroom: Stockroom, mine: Path, practice: Path, tmp_path: Path
 ) -> None:
-    """Layout 0007 had every table that is handed out, and no kept balances."""
-    _rewritten(mine, layout="0007")
+    """Layout 0007 had no kept balances, which are not handed out, and no printed copies."""
+    told = json.loads((mine / "manifest.json").read_text(encoding="utf-8"))["tables"]
+    (mine / "tables" / "printed_copy.csv").unlink()
+    kept = [each for each in told if each["table"] != "printed_copy"]
+    _rewritten(mine, layout="0007", tables=kept)
     again = tmp_path / "again.sqlite"
     assert stockroom("new", "--from", str(mine), store=again).code == 0
     question = "SELECT * FROM kept_balance ORDER BY bottle_id"

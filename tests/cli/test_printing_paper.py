@@ -110,7 +110,7 @@ def test_a_hideous_name_that_can_be_is_written(tmp_path: Path) -> None:
 
 
 def test_where_a_name_leads_elsewhere_that_file_is_written(tmp_path: Path) -> None:
-    (tmp_path / "real.pdf").write_bytes(b"before")
+    (tmp_path / "real.pdf").write_bytes(OURS)
     (tmp_path / "link.pdf").symlink_to("real.pdf")
     with written_whole(tmp_path / "link.pdf") as write:
         write([b"after"])
@@ -122,7 +122,7 @@ def test_where_a_name_leads_elsewhere_that_file_is_written(tmp_path: Path) -> No
 def test_a_disc_that_fills_up_says_which_number_was_not_written(
     own: Path, stockroom: Stockroom, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
 ) -> None:
-    (tmp_path / "s.pdf").write_text("before")
+    (tmp_path / "s.pdf").write_bytes(OURS)
 
     def full(path: Path, data: bytes) -> int:
         raise OSError(errno.ENOSPC, "No space left on device", str(path))
@@ -132,7 +132,7 @@ def test_a_disc_that_fills_up_says_which_number_was_not_written(
         told = stockroom("strip", "--print", "s.pdf", store=own)
     assert told.code == 1
     assert "Copy 0001 was numbered and not written: No space left on device." in told.err
-    assert (tmp_path / "s.pdf").read_text() == "before"
+    assert (tmp_path / "s.pdf").read_bytes() == OURS
     assert nothing_left(tmp_path)
     assert "copy 0002" in stockroom("strip", "--print", "s.pdf", store=own).out
 
@@ -148,7 +148,7 @@ def test_a_folder_that_may_not_be_written_takes_no_number(
     told = stockroom("strip", "--print", "shut/s.pdf", store=own)
     shut.chmod(0o755)
     assert told.code == 1
-    assert "Nothing was printed" in told.err
+    assert "Nothing was written" in told.err
 
 
 def test_a_store_that_cannot_be_written_says_how_to_read_it(

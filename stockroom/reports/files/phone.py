@@ -14,7 +14,7 @@ from stockroom.measure.days import MONTHS
 from stockroom.planning.decisions import Answer, Outcome, Plan
 from stockroom.planning.facts import Booking, Facts
 from stockroom.planning.people import clock
-from stockroom.planning.ready import Readiness, readiness
+from stockroom.planning.ready import Readiness, buys_of, readiness
 from stockroom.reports.paper.day import bookings_of, instead_of_planned, planned_for
 from stockroom.reports.paper.day_notes import different_of, tied
 from stockroom.reports.paper.day_rows import rows_of
@@ -27,7 +27,7 @@ from stockroom.reports.paper.day_strengths import (
     strengths_of,
 )
 from stockroom.reports.sheet import PRACTICE
-from stockroom.reports.words import TIED, amount, counted, day_heading, listed
+from stockroom.reports.words import TIED, counted, day_heading, listed
 
 LINES, WIDTH = 10, 38
 """The most lines, and the most characters in one: a small screen, by the trade's own wish."""
@@ -38,12 +38,16 @@ MAKES_NAMED = 2
 
 @dataclass(frozen=True, slots=True)
 class Phone:
-    """The text: its lines, none longer than WIDTH, and how much more stands on the sheet."""
+    """The text: its lines, none longer than WIDTH, and how much more stands on the sheet.
+
+    `to_do` of what is left out are things to do, `more` is other news.
+    """
 
     on: date
     booking: str
     ready: bool
     lines: tuple[str, ...]
+    to_do: int = 0
     more: int = 0
 
 
@@ -56,9 +60,9 @@ def phone_of(known: Facts, plan: Plan, on: date, number: str = "") -> Phone:
     verdict = _verdict(known, plan, bookings, planned, answer)
     practice = f"  {PRACTICE}" if plan.house.practice else ""
     top = [*_cut(_what(known, on, bookings), 2), *_cut(f"{verdict}{practice}", 2)]
-    told = [_lines(each) for each in _news(known, plan, planned, answer)]
-    lines, more = _fitted(top, told)
-    return Phone(on, number, ready, tuple(lines), more)
+    told = [(_lines(text), done) for text, done in _news(known, plan, planned, answer)]
+    lines, to_do, more = _fitted(top, told, len(answer.to_do) if planned else 0)
+    return Phone(on, number, ready, tuple(lines), to_do, more)
 
 
 def phone_text(phone: Phone) -> str:
@@ -85,7 +89,7 @@ def _verdict(
     answer: Readiness,
 ) -> str:
     if planned:
-        return "Ready: YES" if answer.ready else f"Ready: NO, {len(answer.to_do)} to do"
+        return "Ready: YES" if answer.ready else f"Ready: NO, NOT YET: {len(answer.to_do)} to do"
     if not bookings:
         return "Ready: nothing to do"
     return f"Ready: NO, {instead_of_planned(known, plan, bookings[0])}"
@@ -96,22 +100,23 @@ def _verdict(
 
 def _news(
     known: Facts, plan: Plan, planned: tuple[Booking, ...], answer: Readiness
-) -> Iterator[str]:
+) -> Iterator[tuple[str, int]]:
+    """Each piece of news, with how many of the things to do it tells."""
     if not planned:
         return
     several = len(planned) > 1
     lacking = [n for n in answer.needs if n.outcome in (Outcome.SHORT, Outcome.REFUSED)]
     for need in lacking:
         whose = f" for {need.booking.number}" if several else ""
-        yield f"Missing: {need.item} {need.strength}{whose}"
-    yield from _hours(known, plan, planned, answer)
-    strengths = strengths_of(known, plan, answer.needs)
-    yield from _strengths(strengths)
-    yield from _to_do(answer)
-    yield from _other(known, plan, answer.needs)
+        yield f"Missing: {need.item} {need.strength}{whose}", 1
+    for words in (*_hours(known, plan, planned, answer), *_strengths_of(known, plan, answer)):
+        yield words, 0
+    yield from _to_do(plan, answer)
+    for words in _other(known, plan, answer.needs):
+        yield words, 0
     ready = [n for n in answer.needs if n.outcome is Outcome.HAVE]
     if lacking and ready:
-        yield f"Other {len(ready)} ready"
+        yield f"Other {len(ready)} ready", 0
 
 
 def _hours(
@@ -127,21 +132,20 @@ def _hours(
             yield f"{watch.booking}: mix from {mixed}, destroyed by {gone}, ticked"
 
 
-def _to_do(answer: Readiness) -> Iterator[str]:
+def _to_do(plan: Plan, answer: Readiness) -> Iterator[tuple[str, int]]:
     for check in answer.checks:
-        yield f"{check.what.capitalize()} {check.subject} by {_short_day(check.by)}: {check.item}"
-    for need in answer.needs:
-        if need.outcome is Outcome.BUY:
-            order = f" ({need.order})" if need.order else ""
-            yield f"Buy: {amount(need.amount, need.kind)} {need.item}{order}"
+        by = _short_day(check.by)
+        yield f"{check.what.capitalize()} {check.subject} by {by}: {check.item}", 1
+    for words in buys_of(plan, answer.needs):
+        yield f"{words[:1].upper()}{words[1:]}", 1
     makes = answer.makes
     if len(makes) > MAKES_NAMED:
         first, last = _short_day(makes[0].on), _short_day(max(make.on for make in makes))
         when = first if first == last else f"{first} to {last}"
-        yield f"{len(makes)} makes still to do, {when}"
+        yield f"{len(makes)} makes still to do, {when}", len(makes)
         return
     for make in makes:
-        yield f"Make {_short_day(make.on)}: {make.item} {make.strength}"
+        yield f"Make {_short_day(make.on)}: {make.item} {make.strength}", 1
 
 
 def _other(known: Facts, plan: Plan, needs: tuple[Answer, ...]) -> Iterator[str]:
@@ -149,6 +153,10 @@ def _other(known: Facts, plan: Plan, needs: tuple[Answer, ...]) -> Iterator[str]
         # what is missing has been said, and first
         if " goes without " not in words:
             yield words
+
+
+def _strengths_of(known: Facts, plan: Plan, answer: Readiness) -> Iterator[str]:
+    return _strengths(strengths_of(known, plan, answer.needs))
 
 
 def _strengths(strengths: tuple[Known, ...]) -> Iterator[str]:
@@ -171,17 +179,28 @@ def _short_day(on: date) -> str:
 # -- fitted to the screen ------------------------------------------------------------------------
 
 
-def _fitted(top: list[str], told: list[list[str]]) -> tuple[list[str], int]:
-    """As much of what is told as fits whole, and how many are left for the sheet."""
-    lines = list(top)
-    for place, each in enumerate(told):
-        left = len(told) - place
+def _fitted(
+    top: list[str], told: list[tuple[list[str], int]], to_do: int
+) -> tuple[list[str], int, int]:
+    """As much of what is told as fits whole; how many to do, and how much else, is left out."""
+    lines, to_tell = list(top), to_do
+    for place, (each, done) in enumerate(told):
+        left = told[place:]
         # the last one needs no room kept for the line that counts what is left
-        kept = 0 if left == 1 else 1
+        kept = 0 if len(left) == 1 else 1
         if len(lines) + len(each) + kept > LINES:
-            return [*lines, f"and {left} more on the sheet"], left
+            other = sum(not number for _, number in left)
+            return [*lines, _left_words(to_tell, other)], to_tell, other
         lines += each
-    return lines, 0
+        to_tell = max(0, to_tell - done)
+    return lines, 0, 0
+
+
+def _left_words(to_do: int, other: int) -> str:
+    """What is left out: "and 10 to do, 3 more on the sheet"."""
+    if not to_do:
+        return f"and {other} more on the sheet"
+    return f"and {to_do} to do{f', {other} more' if other else ''} on the sheet"
 
 
 def _lines(text: str) -> list[str]:

@@ -2,24 +2,40 @@
 
 from __future__ import annotations
 
+import re
+import shlex
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
+from stockroom.keeping.record import Record
+from stockroom.keeping.verdict import verdict
 from stockroom.measure.amounts import Kind
 from stockroom.planning.decisions import Make, Plan
-from stockroom.planning.facts import Facts
+from stockroom.planning.facts import Facts, Line
+from stockroom.planning.making.make_card import goes_of
 from stockroom.reports.paper.card_hazards import Danger, dangers_of, wants_gloves
 from stockroom.reports.paper.card_sources import Taken, amounts_of, taken_of
 from stockroom.reports.paper.card_steps import Care, Step, steps_of
 from stockroom.reports.paper.head import Head, head_of
-from stockroom.reports.words import amount, counted, day, day_heading, named, raised
+from stockroom.reports.words import (
+    amount,
+    counted,
+    day,
+    day_heading,
+    listed,
+    measured,
+    named,
+    raised,
+)
+from stockroom.safety.cautions import Step as When
+from stockroom.safety.cautions import cautions_about
 from stockroom.safety.hazards import Hazards
 
 
 @dataclass(frozen=True, slots=True)
 class Card:
-    """One make. `key` is its day and line: its number may be another's in tomorrow's plan."""
+    """One make. `key` is its line and bookings: its number may be another's in tomorrow's plan."""
 
     key: str
     number: str
@@ -67,7 +83,7 @@ def cards_of(
     keys: dict[str, int] = {}
     cards = []
     for make in makes:
-        key = f"{make.on.isoformat()} {make.line}"
+        key = " for ".join(filter(None, (make.line, listed(make.bookings))))
         keys[key] = keys.get(key, 0) + 1
         again = f" ({keys[key]})" if keys[key] > 1 else ""
         cards.append(_card(known, plan, make, hazards, key + again))
@@ -96,8 +112,8 @@ def _card(known: Facts, plan: Plan, make: Make, hazards: Mapping[str, Hazards], 
         vessels=_vessels(make),
         steps=tuple(steps),
         warnings=tuple(raised(each) for each in make.too_little),
-        over=_over(make),
-        good_until=_good_until(make),
+        over=_over(make, line),
+        good_until=_good_until(make, line),
         dangers=dangers,
         blanks=_blanks(known, make),
         type_back=_type_back(make),
@@ -129,20 +145,30 @@ def _vessels(make: Make) -> str:
     return f"in {make.vessels} vessels, {each} in each; then mixed"
 
 
-def _over(make: Make) -> str:
+def _over(make: Make, line: Line) -> str:
     if make.heel <= 0:
         return ""
-    left = amount(make.heel, Kind.VOLUME)
-    how = "label it and keep it" if make.heel_kept else "pour it away by the usual route"
-    return f"{left} over: {how}"
+    left = measured(make.heel, Kind.VOLUME)
+    # a caution speaks of where it goes: a card must not send to the sink what is collected
+    collected = any(each.startswith("Collect") for each in (*make.cautions, *waste_words(line)))
+    how = "collect it" if collected else "pour it away by the usual route"
+    return f"{left} over: {'label it and keep it' if make.heel_kept else how}"
 
 
-def _good_until(make: Make) -> str:
-    if make.good_until is None:
-        return ""
+def waste_words(line: Line) -> tuple[str, ...]:
+    """What the list of cautions says of what is left of a line."""
+    return tuple(each.text for each in cautions_about([goes_of(line)], steps=(When.WASTE,)))
+
+
+def _good_until(make: Make, line: Line) -> str:
+    record = Record(made=make.on, nominal=line.strength, ready_on=make.ready)
+    recheck = verdict(record, line.rules, make.ready).recheck_by
     if make.good_until == make.on:
         return "good that day only"
-    return f"good until {day(make.good_until)}"
+    last = f"good until {day(make.good_until)}" if make.good_until else ""
+    if recheck is None or (make.good_until and recheck >= make.good_until):
+        return last
+    return "; ".join(filter(None, (f"recheck by {day(recheck)}", last)))
 
 
 def _blanks(known: Facts, make: Make) -> tuple[str, ...]:
@@ -164,13 +190,45 @@ def _type_back(make: Make) -> tuple[str, ...]:
     # a blank for each that has no number yet
     blanks = ["____" for draw in make.sources if not draw.bottle]
     given = "".join(f" --from {bottle}" for bottle in [*bottles, *blanks])
-    told = f'stockroom make "{make.line}" "{volume}"{given} --place ____ --by ____'
-    return (told,)
+    what = f"{shlex.quote(make.line)} {shlex.quote(volume)}"
+    return (f"stockroom make {what}{given} --on ____ --place ____ --by ____",)
 
 
 def cards_lines(sheet: Cards) -> dict[str, str]:
-    """Each card: its days, how much of it from what, for whom; its steps are not compared."""
-    return {card.key: _said(card) for card in sheet.cards}
+    """Each card: its days, how much of it from what, for whom; then each step, each hazard."""
+    told: dict[str, str] = {}
+    for card in sheet.cards:
+        told[card.key] = _said(card)
+        for number, step in enumerate(card.steps, 1):
+            told[step_key(card, number)] = f"{card.name}, step {number}: {_step_said(step)}"
+        told |= {
+            danger_key(card, each): f"{card.name}, {_danger_said(each)}" for each in card.dangers
+        }
+    return told
+
+
+def step_key(card: Card, number: int) -> str:
+    """The key of a step; `card.typ` puts it together likewise."""
+    return f"{card.key}, step {number}"
+
+
+def danger_key(card: Card, danger: Danger) -> str:
+    """The key of one thing's hazards; `card.typ` puts it together likewise."""
+    return f"{card.key}, hazards of {'what is made' if danger.product else danger.whose}"
+
+
+def _step_said(step: Step) -> str:
+    # a source made first goes by its number in the plan, which says nothing of the work
+    details = [re.sub(r"\(M\d+, made first", "(made first", each) for each in step.details]
+    words = re.sub(r"\(M\d+, made first", "(made first", step.words)
+    return " | ".join(filter(None, (step.day, words, *details, *step.cautions)))
+
+
+def _danger_said(danger: Danger) -> str:
+    marks = " ".join(filter(None, (danger.signal, *danger.symbols)))
+    said = [f"{code} {words}".strip() for code, words in danger.statements]
+    way = "comes out" if danger.product else "goes in"
+    return "; ".join(filter(None, (f"{way}: {danger.whose}", marks, *said, danger.basis)))
 
 
 def _said(card: Card) -> str:

@@ -12,13 +12,13 @@ from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import Draw, Make, Plan
 from stockroom.planning.facts import Bottle, Facts, Form, Line
 from stockroom.reports.paper.card_steps import Amounts
-from stockroom.reports.words import TIED, amount, day, day_heading, named, raised
+from stockroom.reports.words import TIED, amount, day, day_heading, measured, named, raised
 
 NOT_CHECKED = "nominal, not checked"
 
 # the form decides the mass: a card must name it larger than the rest of the name
 _FORM = re.compile(
-    r"\b((?:mono|hemi|di|tri|tetra|penta|hexa|hepta|octa|nona|deca)hydrate|anhydrous)\b"
+    r"\b((?:mono|hemi|di|tri|tetra|penta|hexa|hepta|octa|nona|deca|dodeca)hydrate|anhydrous)\b"
 )
 
 
@@ -49,9 +49,9 @@ def taken_of(known: Facts, plan: Plan, make: Make, draw: Draw) -> Taken:
     line = known.lines.get(draw.line)
     bottle = next((each for each in known.bottles if each.number == draw.bottle), None)
     form = _FORM.search(draw.item) if draw.kind is Kind.MASS else None
-    often = amount(round(draw.amount / make.vessels), draw.kind)
+    often = measured(round(draw.amount / make.vessels), draw.kind)
     return Taken(
-        amount=amount(draw.amount, draw.kind),
+        amount=measured(draw.amount, draw.kind),
         what=_what(line, draw),
         form=form.group(1) if form else "",
         bottle=draw.bottle,
@@ -107,7 +107,7 @@ def _habit(line: Line | None, draw: Draw) -> str:
     if abs(draw.strength / line.strength - 1) <= 1e-3:
         return ""
     by_label = round(draw.amount * draw.strength / line.strength)
-    return f"not {amount(by_label, draw.kind)}, the label's {raised(line.strength_text)}"
+    return f"not {measured(by_label, draw.kind)}, the label's {raised(line.strength_text)}"
 
 
 def _tool(known: Facts, make: Make, draw: Draw) -> str:

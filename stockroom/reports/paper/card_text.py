@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import textwrap
 
-from stockroom.reports.paper.card import Card, Cards, cards_lines, more_data
+from stockroom.reports.paper.card import Card, Cards, cards_lines, danger_key, more_data, step_key
 from stockroom.reports.paper.card_hazards import Danger
 from stockroom.reports.paper.card_sources import Taken
 from stockroom.reports.paper.card_steps import Step
@@ -33,9 +33,17 @@ def _card(sheet: Cards, card: Card, width: int) -> str:
     taken = [line for each in card.takes for line in _taken(each, width)]
     into = " ".join(filter(None, [card.volume, card.vessels]))
     taken.append(wrap(f"into {into}", width, indent=2, hang=8))
-    steps = [line for n, step in enumerate(card.steps, 1) for line in _step(n, step, width)]
+    steps = [
+        line
+        for n, step in enumerate(card.steps, 1)
+        for line in _step(n, step, width, mark(sheet.head, step_key(card, n)))
+    ]
     over = [wrap(card.over, width, indent=2)] if card.over else []
-    dangers = [line for each in card.dangers for line in _danger(each, width)]
+    dangers = [
+        line
+        for each in card.dangers
+        for line in _danger(each, width, mark(sheet.head, danger_key(card, each)))
+    ]
     blanks = [f"  {each:<22}{_BLANK}" for each in card.blanks]
     back = [line for each in card.type_back for line in _typed(each, width)]
     parts = (
@@ -66,19 +74,19 @@ def _taken(each: Taken, width: int) -> list[str]:
     return lines + [wrap(one, width, indent=6, hang=8) for one in told if one]
 
 
-def _step(number: int, step: Step, width: int) -> list[str]:
+def _step(number: int, step: Step, width: int, sign: str) -> list[str]:
     lines = [f"  {step.day}".replace("\u00a0", " ")] if step.day else []
-    lines.append(wrap(f"[ ] {number:>2}  {step.words}", width, indent=2, hang=10))
+    lines.append(wrap(f"{sign} [ ] {number:>2}  {step.words}", width, hang=10))
     lines += [wrap(each, width, indent=10, hang=12) for each in step.details]
     return lines + [wrap(f"! {each}", width, indent=10, hang=12) for each in step.cautions]
 
 
-def _danger(each: Danger, width: int) -> list[str]:
+def _danger(each: Danger, width: int, sign: str) -> list[str]:
     said = [f"{code} {words}".strip() for code, words in each.statements]
     marks = [" ".join(filter(None, [each.signal, *each.symbols]))]
     told = ". ".join(one.rstrip(".") for one in [*filter(None, marks), *said])
     out = "comes out: " if each.product else "goes in: "
-    lines = [wrap(f"{out}{each.whose}", width, indent=2, hang=4)]
+    lines = [wrap(f"{sign} {out}{each.whose}", width, hang=4)]
     lines.append(wrap(f"{told}.", width, indent=4, hang=4))
     return lines + ([wrap(f"({each.basis})", width, indent=4, hang=4)] if each.basis else [])
 

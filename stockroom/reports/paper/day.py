@@ -69,7 +69,7 @@ class Part:
 class Day:
     """The page; `single` is the number of the booking it is about, "" for a whole day.
 
-    `verdict` is its first line: YES, NOT YET with the count, or what there is instead.
+    `verdict` is its first line: YES, or NO, NOT YET with the count, or what there is instead.
     """
 
     head: Head
@@ -103,8 +103,11 @@ def instead_of_planned(known: Facts, plan: Plan, booking: Booking) -> str:
     return "" if answered or not recipe.requirements else "not planned yet"
 
 
-def day_of(known: Facts, plan: Plan, on: date, number: str = "") -> Day:
-    """The page of a day, or of the one booking of that number on its day."""
+def day_of(known: Facts, plan: Plan, on: date, number: str = "", closed: str = "") -> Day:
+    """The page of a day, or of the one booking of that number on its day.
+
+    `closed` is why the house is shut that day, where somebody wrote it down.
+    """
     bookings = bookings_of(known, on, number)
     planned = planned_for(known, plan, bookings)
     answers = {b.number: _answer(known, plan, (b,), on) for b in planned}
@@ -116,7 +119,7 @@ def day_of(known: Facts, plan: Plan, on: date, number: str = "") -> Day:
     groups = [planned] if len(planned) <= TOGETHER else [(b,) for b in planned]
     parts = tuple(_part(known, plan, group, on) for group in groups if group)
     return Day(
-        head=head_of(plan, title),
+        head=head_of(plan, title, "" if known.calendar.is_open(on) else closed_words(closed)),
         on=on,
         single=number,
         verdict=_verdict(whole, standing, planned),
@@ -124,6 +127,11 @@ def day_of(known: Facts, plan: Plan, on: date, number: str = "") -> Day:
         bookings=standing,
         parts=parts,
     )
+
+
+def closed_words(reason: str) -> str:
+    """That the house is shut, and why: "Closed: half-term."."""
+    return f"Closed: {reason.rstrip('.')}." if reason else "Closed."
 
 
 def _answer(known: Facts, plan: Plan, bookings: tuple[Booking, ...], on: date) -> Readiness:
@@ -165,8 +173,8 @@ def _verdict(whole: Readiness, standing: tuple[Standing, ...], planned: tuple[Bo
 
 
 def verdict_words(answer: Readiness) -> str:
-    """YES, or NOT YET with the count."""
-    return "YES" if answer.ready else f"NOT YET: {counted(len(answer.to_do), 'thing')} to do"
+    """YES, or NO, NOT YET with the count: NO is the word of every sheet and command."""
+    return "YES" if answer.ready else f"NO, NOT YET: {counted(len(answer.to_do), 'thing')} to do"
 
 
 def _part(known: Facts, plan: Plan, bookings: tuple[Booking, ...], on: date) -> Part:

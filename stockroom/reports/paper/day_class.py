@@ -11,14 +11,16 @@ from stockroom.planning.facts import Booking, Facts, Recipe
 from stockroom.planning.making.make_card import goes_of
 from stockroom.planning.people import clock
 from stockroom.planning.timing import DAY_MINUTES
+from stockroom.reports.paper.day_times import TOO_LATE, Times, minutes_to_set_out
+from stockroom.reports.paper.week_parts import made_when, tied
 from stockroom.reports.words import amount, named, raised
 from stockroom.safety.cautions import Caution, Step, cautions_about
 
 BEFORE_IT, HERE, WORK, SET_OUT_STEP, MIX, BEGIN, END, DESTROY = range(8)
 """The order of what is done at one minute."""
 
-SET_OUT = 30
-"""Minutes before a class by which all stands ready. Common practice, no source."""
+DESTROY_FIRST = "first destroy what is never kept"
+"""What stands at the end of a class before anything is cleared away."""
 
 DAY_BEFORE = "day before"
 
@@ -72,6 +74,7 @@ class Lesson:
     plan: Plan
     booking: Booking
     needs: tuple[Answer, ...]
+    times: Times
     recipe: Recipe = field(init=False)
 
     def __post_init__(self) -> None:
@@ -121,14 +124,15 @@ class Lesson:
         return f"{self.booking.number} {self.recipe.title}"
 
     def _set_out(self, notes: tuple[str, ...]) -> Row:
-        minute = self.booking.minute - SET_OUT
-        opens = self.known.calendar.open_from
-        if self.booking.minute >= opens:
-            minute = max(minute, opens)
         items = tuple(self._item(need) for need in self.needs)
         told = (*notes, *self._cautions(Step.USE))
-        what = f"set out for {self._name()}"
-        return self._row("set out", minute, SET_OUT_STEP, what, items=items, cautions=told)
+        takes = tied(f"{minutes_to_set_out(self.known, self.booking)} min")
+        number = self.booking.number
+        late = f"; {TOO_LATE}" if number in self.times.too_late else ""
+        what = f"set out for {self._name()}, {takes}{late}"
+        return self._row(
+            "set out", self.times.set_out[number], SET_OUT_STEP, what, items=items, cautions=told
+        )
 
     def _item(self, need: Answer) -> Item:
         what = f"{named(need.item, need.strength)} {amount(need.amount, need.kind)}"
@@ -136,7 +140,7 @@ class Lesson:
             return Item(what, "NOT THERE", missing=True)
         bottles = {bottle.number: bottle for bottle in self.known.bottles}
         drawn = [draw.bottle for draw in need.draws if draw.bottle]
-        made = [f"{need.make}" if need.make else "", need.order]
+        made = [self._made(need)]
         places = [bottles[number].place for number in drawn if number in bottles]
         origin = " + ".join(filter(None, (*drawn, *made)))
         # an answer without a source is something a shop sells
@@ -144,23 +148,39 @@ class Lesson:
         where = ", ".join(dict.fromkeys(filter(None, places)))
         return Item(what, "bought" if bought else origin, ", ".join(drawn), where)
 
+    def _made(self, need: Answer) -> str:
+        """What is made or bought for it: by its day, since the plan's numbers move."""
+        make = next((each for each in self.plan.makes if each.id == need.make), None)
+        comes = f"after {need.order}" if need.order else ""
+        if make is None:
+            return f"once {need.order} has come" if need.order else ""
+        when = made_when(make, self.plan.as_at)
+        when = "to be made that day" if make.on == self.booking.on else when
+        return f"{' '.join(filter(None, (when, comes)))} ({make.id})"
+
     def _never_kept_begin(self) -> Iterator[Row]:
         for each in self.plan.watch:
             if each.booking == self.booking.number:
-                what = f"NOT BEFORE {clock(each.not_before)}: mix what is never kept"
+                what = f"NOT BEFORE {clock(each.not_before)}: mix for {self._name()}, never kept"
                 yield self._row("mix", each.not_before, MIX, what, cautions=mixed_how(each.how))
 
     def _never_kept_end(self) -> Iterator[Row]:
         for each in self.plan.watch:
             if each.booking == self.booking.number:
                 by = f", ticked by {each.ticked_by}" if each.ticked_by else ""
-                what = f"DESTROYED BY {clock(each.destroy_by)}, every vessel rinsed{by}"
-                how = destroyed_how(each.how)
+                whose = f"what is left of {self._name()}"
+                what = f"DESTROYED BY {clock(each.destroy_by)}: {whose}, every vessel rinsed{by}"
+                # a container takes nothing of it before: these are of what then remains
+                waste = tuple(f"Once destroyed: {text}" for text in self._cautions(Step.WASTE))
+                how = (*destroyed_how(each.how), *waste)
                 row = self._row("destroy", each.destroy_by, DESTROY, what, cautions=how)
                 yield replace(row, must=True)
 
     def _end(self) -> Row:
         minute = self.booking.minute + self.booking.lasts_minutes
+        if any(each.booking == self.booking.number for each in self.plan.watch):
+            what = f"END {self._name()}: {DESTROY_FIRST}, then clear away"
+            return self._row("end", minute, END, what)
         what = f"END {self._name()}: clear away"
         return self._row("end", minute, END, what, cautions=self._cautions(Step.WASTE))
 

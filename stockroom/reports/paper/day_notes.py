@@ -7,9 +7,9 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from datetime import date
 
-from stockroom.findings import Finding
-from stockroom.planning.decisions import Answer, Draw, Make, Outcome, Plan
+from stockroom.planning.decisions import Answer, Make, Outcome, Plan
 from stockroom.planning.facts import Booking, Facts, Recipe
+from stockroom.planning.leaned_on import leaned_on
 from stockroom.reports.paper.day_strengths import Known, differs, percent_off
 from stockroom.reports.words import TIED, amount, named, raised
 
@@ -102,51 +102,13 @@ def _other_form(known: Facts, make: Make | None, booking: str) -> Iterator[str]:
 
 
 def guessed_of(plan: Plan, needs: tuple[Answer, ...], known: Facts) -> tuple[str, ...]:
-    """The guesses of the plan that these needs lean on, a sentence each."""
-    makes = {make.id: make for make in plan.makes}
-    subjects: set[str] = set()
-    for need in needs:
-        subjects |= {need.line, need.item, *_drawn(need.draws)}
-        subjects |= _under(need.make, makes)
+    """The guesses that these needs lean on, as the week sheet has them, a sentence each."""
     items = {bottle.number: known.lines[bottle.line].key for bottle in known.bottles}
-
     row = []
-    for guess in plan.guesses:
-        if guess.subject in subjects:
-            whose = " ".join(filter(None, (guess.subject, items.get(guess.subject))))
-            row.append(tied(f"{whose}: {guess.text}{_of_last_use(plan, guess, needs)}"))
+    for guess in leaned_on(known, plan, needs):
+        whose = " ".join(filter(None, (guess.subject, items.get(guess.subject))))
+        row.append(tied(f"{whose}: {guess.text}"))
     return tuple(row)
-
-
-def _of_last_use(plan: Plan, guess: Finding, needs: tuple[Answer, ...]) -> str:
-    """Words for a strength that is told of a later day than this one: it is weaker then."""
-    if not guess.text.startswith("expected "):
-        return ""
-    uses = [n.booking.on for n in plan.needs if guess.subject in _drawn(n.draws)]
-    uses += [make.on for make in plan.makes if guess.subject in _drawn(make.sources)]
-    last = max(uses, default=None)
-    here = {need.booking.on for need in needs}
-    return f" (that is on {last}, its last use)" if last and last not in here else ""
-
-
-def _drawn(draws: tuple[Draw, ...]) -> set[str]:
-    return {draw.bottle for draw in draws if draw.bottle}
-
-
-def _under(make: str, makes: dict[str, Make]) -> set[str]:
-    """The bottles and lines a make comes from, through every make under it."""
-    found: set[str] = set()
-    waiting = [make]
-    seen: set[str] = set()
-    while waiting:
-        one = waiting.pop()
-        if one not in makes or one in seen:
-            continue
-        seen.add(one)
-        found |= {makes[one].line, *_drawn(makes[one].sources)}
-        found |= {draw.line for draw in makes[one].sources}
-        waiting += [draw.make for draw in makes[one].sources if draw.make]
-    return found
 
 
 def waste_of(known: Facts, bookings: tuple[Booking, ...]) -> tuple[str, ...]:

@@ -13,8 +13,8 @@ from stockroom.planning.facts import Booking, Facts
 from stockroom.planning.making.make_card import goes_of
 from stockroom.planning.people import DESTROY_AFTER, clock, unstaffed
 from stockroom.planning.ready import Readiness
-from stockroom.planning.timing import DAY_MINUTES, latest_start
-from stockroom.reports.paper.day_class import BEGIN, END, HERE, SET_OUT, WORK, Lesson, Row
+from stockroom.reports.paper.day_class import BEGIN, DESTROY_FIRST, END, HERE, WORK, Lesson, Row
+from stockroom.reports.paper.day_times import TOO_LATE, Times, times_of
 from stockroom.reports.words import amount, named, raised
 from stockroom.safety.cautions import Step, cautions_about
 
@@ -23,10 +23,12 @@ def rows_of(
     known: Facts, plan: Plan, bookings: tuple[Booking, ...], answer: Readiness
 ) -> tuple[Row, ...]:
     """The list of these bookings, all of one day, in the order of the clock."""
-    rows = [*_somebody(known, plan, bookings, answer), *_work_rows(known, bookings, answer)]
+    times = times_of(known, plan, answer.on)
+    somebody = _somebody(known, plan, bookings, answer, times)
+    rows = [*somebody, *_work_rows(known, bookings, answer, times)]
     for booking in bookings:
         needs = tuple(n for n in answer.needs if n.booking.number == booking.number)
-        rows += Lesson(known, plan, booking, needs).rows()
+        rows += Lesson(known, plan, booking, needs, times).rows()
     # sorting keeps the order of the bookings where all else is equal
     return tuple(_merged(sorted(rows, key=lambda row: (row.minute, row.step))))
 
@@ -44,16 +46,27 @@ def _merged(rows: list[Row]) -> Iterator[Row]:
         yield replace(
             first,
             key=f"{'end' if end else 'begin'} {first.at}",
-            what=f"END {names}: clear away" if end else f"START {names}",
+            what=_together("END", same) if end else f"START {names}",
             booking=names,
             cautions=tuple(dict.fromkeys(each for row in same for each in row.cautions)),
         )
 
 
+def _together(word: str, same: list[Row]) -> str:
+    """The line of classes that end at once: what has to be destroyed is said by booking."""
+    names = ", ".join(row.booking for row in same)
+    first = [row.booking for row in same if DESTROY_FIRST in row.what]
+    if not first:
+        return f"{word} {names}: clear away"
+    return f"{word} {names}: {DESTROY_FIRST} ({', '.join(first)}), then clear away"
+
+
 # -- made or checked that day -----------------------------------------------------------
 
 
-def _work_rows(known: Facts, bookings: tuple[Booking, ...], answer: Readiness) -> Iterator[Row]:
+def _work_rows(
+    known: Facts, bookings: tuple[Booking, ...], answer: Readiness, times: Times
+) -> Iterator[Row]:
     if not bookings:
         return
     on = answer.on
@@ -66,15 +79,17 @@ def _work_rows(known: Facts, bookings: tuple[Booking, ...], answer: Readiness) -
         if make.finish_on == on and make.on < on:
             what = f"finish {_made(make)}, begun {make.on}"
             yield Row(f"finish {raised(make.line)}", opens, WORK, format_time(opens), what, make.id)
-    starts = _starts(known, bookings, [make for make in answer.makes if make.on == on])
-    for make, minute in starts:
+    begun = {make.id: times.makes.get(make.id, opens) for make in answer.makes if make.on == on}
+    for make in sorted((m for m in answer.makes if m.id in begun), key=lambda m: begun[m.id]):
+        minute = begun[make.id]
+        late = f"; {TOO_LATE}" if make.id in times.too_late else ""
         fresh = " (fresh)" if make.fresh else ""
         yield Row(
             key=f"make {_whom(make)} {raised(make.line)}",
             minute=minute,
             step=WORK,
             at=format_time(minute),
-            what=f"begin {_made(make)}{fresh}, {make.minutes} min by hand",
+            what=f"begin {_made(make)}{fresh}, {make.minutes} min by hand{late}",
             ref=make.id,
             booking=_whom(make),
             cautions=tuple(raised(each) for each in make.cautions),
@@ -89,43 +104,15 @@ def _whom(make: Make) -> str:
     return ", ".join(make.bookings)
 
 
-def _starts(
-    known: Facts, bookings: tuple[Booking, ...], makes: list[Make]
-) -> list[tuple[Make, int]]:
-    """When each make of that day is begun at the latest, one pair of hands doing one at a time.
-
-    Ready half an hour before its class where that fits into staffed hours, else by the class.
-    """
-    classes = {booking.number: booking.minute for booking in bookings}
-    opens = known.calendar.open_from
-
-    def due(make: Make) -> int:
-        return min((classes[b] for b in make.bookings if b in classes), default=opens)
-
-    row: list[tuple[Make, int]] = []
-    free = DAY_MINUTES
-    for make in sorted(makes, key=lambda each: (-due(each), each.id)):
-        method = known.methods.get(make.line)
-        begun = None
-        for ready in (due(make) - SET_OUT, due(make)):
-            if method is not None and begun is None:
-                begun = latest_start((make.on, ready), method, known.calendar, make.on)
-        minute = begun[1] if begun else opens
-        minute = max(min(minute, free - make.minutes), opens)
-        row.append((make, minute))
-        free = minute
-    return row[::-1]
-
-
 def _somebody(
-    known: Facts, plan: Plan, bookings: tuple[Booking, ...], answer: Readiness
+    known: Facts, plan: Plan, bookings: tuple[Booking, ...], answer: Readiness, times: Times
 ) -> Iterator[Row]:
     """When someone must be there outside staffed hours, stretches that meet put together."""
     kept = {each.booking for each in plan.watch}
     gaps = [
         gap
         for booking in bookings
-        for gap in _hours(known, booking, never_kept=booking.number in kept)
+        for gap in _hours(known, booking, times, never_kept=booking.number in kept)
     ]
     joined: list[tuple[int, int]] = []
     for first, last in sorted(gaps):
@@ -140,9 +127,11 @@ def _somebody(
         yield Row(f"here {clock(first)}", first, HERE, clock(first), what, cautions=alone)
 
 
-def _hours(known: Facts, booking: Booking, *, never_kept: bool) -> list[tuple[int, int]]:
+def _hours(
+    known: Facts, booking: Booking, times: Times, *, never_kept: bool
+) -> list[tuple[int, int]]:
     if known.calendar.is_open(booking.on):
         return unstaffed(known, booking, never_kept=never_kept)
     # nobody is there at all on a closed day: from setting out to the end, or until it is destroyed
     ends = booking.minute + booking.lasts_minutes + (DESTROY_AFTER if never_kept else 0)
-    return [(booking.minute - SET_OUT, ends)]
+    return [(times.set_out[booking.number], ends)]

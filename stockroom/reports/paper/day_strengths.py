@@ -279,7 +279,9 @@ def _in_time(strengths: Strengths, wanted: Requirement, line: Line, on: date) ->
 
 def _off(wanted: Requirement, value: float) -> float | None:
     low, high = wanted.lowest, wanted.highest
-    if not low or not high or low <= value <= high:
+    if not low or not high:
+        return None
+    if low <= value <= high:
         return None if low != high else 0.0
     nearest = low if value < low else high
     return value / nearest - 1

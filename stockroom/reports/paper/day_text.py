@@ -2,8 +2,11 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import replace
+from datetime import date
 
+from stockroom.reports.paper.changes import since_by_booking
 from stockroom.reports.paper.day import Day, Part, Standing
 from stockroom.reports.paper.day_class import BEGIN, END, Item, Row
 from stockroom.reports.paper.day_notes import NO_REFERENCE, Cover
@@ -15,7 +18,8 @@ from stockroom.reports.paper.day_strengths import (
     differs,
     how_words,
 )
-from stockroom.reports.paper.head import foot_lines, head_lines, mark
+from stockroom.reports.paper.day_times import LATEST
+from stockroom.reports.paper.head import Since, foot_lines, head_lines, mark
 from stockroom.reports.paper.kinds import Kind
 from stockroom.reports.sheet import PRACTICE, columns, page, wrap
 from stockroom.reports.words import TIED, day_heading
@@ -25,7 +29,7 @@ _TO_FILL = f"local{TIED}assessment{TIED}ref{TIED}________ review{TIED}date{TIED}
 
 
 def day_text(sheet: Day, width: int) -> str:
-    """The page as text: YES or NOT YET first, also before the house it is of."""
+    """The page as text: YES or NO first, also before the house it is of."""
     first = f"{sheet.verdict}{f'   {PRACTICE}' if sheet.head.practice else ''}"
     # PRACTICE stands behind the answer, so that the answer comes first
     top = head_lines(replace(sheet.head, practice=False), width)
@@ -75,7 +79,7 @@ def _guess_title(part: Part) -> str:
 
 
 def _rows(sheet: Day, rows: tuple[Row, ...], width: int) -> str:
-    lines = ["THE DAY, and who ticks"]
+    lines = ["THE DAY, and who ticks", wrap(LATEST, width, indent=2)]
     for row in rows:
         lines += _row(sheet, row, width)
     return "\n".join(lines)
@@ -181,4 +185,12 @@ def _of(item: Item) -> str:
     return item.origin if item.missing else f"of {item.bottles}" if item.bottles else ""
 
 
-DAY = Kind("day", day_text, day_lines)
+def _more(sheet: Day) -> dict[str, str]:
+    return {"latest": LATEST}
+
+
+def _since(sheet: Day, number: str, before: Mapping[str, str], today: date) -> Since:
+    return since_by_booking(number, before, day_lines(sheet), today)
+
+
+DAY = Kind("day", day_text, day_lines, _more, _since)

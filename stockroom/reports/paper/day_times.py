@@ -22,20 +22,34 @@ SET_OUT = 30
 USUAL_MINUTES = 10
 """Minutes to set out a class whose recipe says none. Our choice."""
 
-_TO_SET_OUT = re.compile(r"(\d+) ?min to set out")
+LATEST = (
+    "Latest times for one pair of hands; to set out takes "
+    f"{USUAL_MINUTES} min where the recipe says nothing."
+)
+"""What the list says of its times."""
+
+TOO_LATE = "does not fit before the class for one pair of hands: begin the day before, or with help"
+"""What is said of work that does not."""
+
+TO_SET_OUT = re.compile(r"(\d+) ?min to set out")
+"""How the words of a recipe say how long it takes."""
 
 
 @dataclass(frozen=True, slots=True)
 class Times:
-    """Minutes after midnight: of setting out by booking, of beginning a make by its number."""
+    """Minutes after midnight: of setting out by booking, of beginning a make by its number.
+
+    `too_late` are the bookings and makes that do not fit between the opening and the class.
+    """
 
     set_out: dict[str, int]
     makes: dict[str, int]
+    too_late: frozenset[str] = frozenset()
 
 
 def minutes_to_set_out(known: Facts, booking: Booking) -> int:
     """How long it takes: "25 min to set out" in the words of its recipe, else USUAL_MINUTES."""
-    found = _TO_SET_OUT.search(known.recipes[booking.recipe, booking.version].handling)
+    found = TO_SET_OUT.search(known.recipes[booking.recipe, booking.version].handling)
     return int(found[1]) if found else USUAL_MINUTES
 
 
@@ -52,10 +66,11 @@ def times_of(known: Facts, plan: Plan, on: date) -> Times:
         same = [booking for booking in classes if booking.minute == minute]
         for booking in sorted(same, key=lambda b: natural(b.number), reverse=True):
             day.set_out(booking)
-        for make in sorted(plan.makes, key=lambda each: natural(each.id)):
+        # what another is made from has the lower number, and so is begun before it
+        for make in sorted(plan.makes, key=lambda each: natural(each.id), reverse=True):
             if make.on == on == make.ready and day.first_of(make) == minute:
                 day.make(make)
-    return Times(day.outs, day.begun)
+    return Times(day.outs, day.begun, frozenset(day.too_late))
 
 
 class _Backwards:
@@ -65,6 +80,7 @@ class _Backwards:
         self.free = DAY_MINUTES
         self.outs: dict[str, int] = {}
         self.begun: dict[str, int] = {}
+        self.too_late: set[str] = set()
 
     def first_of(self, make: Make) -> int | None:
         """When the first class of the day begins that a make is for; None for none."""
@@ -77,8 +93,9 @@ class _Backwards:
         if not opens <= start < shuts and self.calendar.is_open(self.on):
             # no half hour to spare, or nobody there yet: then by the class itself
             start = min(self.free, booking.minute) - takes
-        if booking.minute >= opens:
-            start = max(start, opens)
+        if booking.minute >= opens > start:
+            self.too_late.add(booking.number)
+            start = opens
         self.outs[booking.number] = self.free = max(start, 0)
 
     def make(self, make: Make) -> None:
@@ -91,4 +108,7 @@ class _Backwards:
             if method is not None and begun is None:
                 begun = latest_start((make.on, ready), method, self.calendar, make.on)
         minute = begun[1] if begun else opens
-        self.begun[make.id] = self.free = max(min(minute, self.free - make.minutes), opens)
+        start = min(minute, self.free - make.minutes)
+        if begun is None or start < opens:
+            self.too_late.add(make.id)
+        self.begun[make.id] = self.free = max(start, opens)

@@ -91,9 +91,16 @@ def since(number: str, before: Mapping[str, str], now: Mapping[str, str], today:
     marked = tuple(
         key for key, said in now.items() if before.get(key) != said and not _over(key, today)
     )
-    changes = [_change(before.get(key), now[key]) for key in marked]
-    gone = [key for key in before if key not in now and not _over(key, today)]
+    changes = [change_words(before.get(key), now[key]) for key in marked]
+    gone = gone_since(before, now, today)
     return Since(number, marked, (*changes, *(f"gone: {before[key]}" for key in gone)))
+
+
+def gone_since(
+    before: Mapping[str, str], now: Mapping[str, str], today: date
+) -> tuple[str, ...]:
+    """The keys of lines that the copy before had and the sheet has no more."""
+    return tuple(key for key in before if key not in now and not _over(key, today))
 
 
 def _over(key: str, today: date) -> bool:
@@ -103,7 +110,8 @@ def _over(key: str, today: date) -> bool:
         return False
 
 
-def _change(before: str | None, now: str) -> str:
+def change_words(before: str | None, now: str) -> str:
+    """A line that is new, or what it says now and what it said."""
     return f"new: {now}" if before is None else f"{now} (was: {before})"
 
 

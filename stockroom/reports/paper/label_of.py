@@ -18,11 +18,14 @@ from stockroom.planning.decisions import Make
 from stockroom.planning.facts import Bottle, Form, Line, Place
 from stockroom.reports.paper.label import UNKNOWN, HazardText, Label, Sort
 from stockroom.reports.words import MARKS, raised
-from stockroom.safety.clp import NOT_ENTERED
+from stockroom.safety.clp import NOT_ENTERED, PH_RULE
 from stockroom.safety.hazards import Hazards
 from stockroom.safety.statements import statement
 
-NO_STATEMENT = "No statement follows from the limits held."
+NO_STATEMENT = (
+    "No hazard statement by the limits held: not proof of none; see the supplier's sheet."
+)
+PH_NOT_HELD = "pH not held: look it up"
 LOOK_IT_UP = f"Hazard text {NOT_ENTERED}."
 VENTED = "VENTED CAP"
 
@@ -259,11 +262,14 @@ def hazard_text(found: Hazards, what: str) -> HazardText:
     words = tuple((code, _wording(found, code)) for code in codes)
     lacking = found.worked_out.unknown
     more = f"; of {', '.join(lacking)} nothing is held: look it up" if lacking else ""
+    # a strong acid or alkali is corrosive by its pH, whatever the limits say
+    acid = PH_RULE in found.worked_out.notes
+    also = f"; {PH_NOT_HELD}" if acid and words else ""
     return HazardText(
         found.signal_word,
         found.pictograms,
-        words or (("", NO_STATEMENT),),
-        f"worked out; the supplier's sheet comes first{more}",
+        words or (("", f"{NO_STATEMENT}{f' {PH_NOT_HELD}.' if acid else ''}"),),
+        f"worked out; the supplier's sheet comes first{more}{also}",
         ask,
     )
 

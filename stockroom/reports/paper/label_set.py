@@ -6,12 +6,13 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from datetime import date
 
+from stockroom.errors import NotAllowed
 from stockroom.planning.decisions import Make
 from stockroom.planning.facts import Line, Place
 from stockroom.planning.on_shelf import OnShelf
 from stockroom.reports.paper.head import head_for
 from stockroom.reports.paper.label import Label, Labels, Sort
-from stockroom.reports.paper.label_grid import Grid
+from stockroom.reports.paper.label_grid import FULL, Grid
 from stockroom.reports.paper.label_of import (
     batch_label,
     full_label,
@@ -53,6 +54,12 @@ def labels_of(
     Raises: NotAllowed for a formula instead of a name, or a short label that may not be.
     """
     labels = [_of_bottle(row, found, places, wish) for row, found in bottles]
+    batches = list(batches)
+    if batches and wish.sort is not Sort.FULL:
+        raise NotAllowed(
+            f"{batches[0][0].id} is a batch to be made: --{wish.sort} is for bottles.",
+            "Leave the option out, or name its bottle once it has a number.",
+        )
     labels += [batch_label(make, line, found, wish.made_on) for make, line, found in batches]
     if wish.sort is Sort.SHORT and not wish.confirmed:
         raise must_confirm()
@@ -62,6 +69,11 @@ def labels_of(
 
 def _of_bottle(row: OnShelf, found: Hazards, places: tuple[Place, ...], wish: Wish) -> Label:
     if row.line.key in _UNKNOWN:
+        if wish.size[0] < FULL[0] or wish.size[1] < FULL[1]:
+            raise NotAllowed(
+                f"{row.bottle.number} is unknown, and its warning needs a full label.",
+                f"Leave out --{wish.sort} for it: stockroom label {row.bottle.number}.",
+            )
         return unknown_label(row.bottle)
     if wish.sort is Sort.OPENED:
         return opened_strip(row.bottle, row.line, row.verdict)

@@ -10,7 +10,7 @@ from stockroom.errors import NotAllowed
 from stockroom.measure.amounts import Kind
 from stockroom.planning.facts import Bottle, Line
 from stockroom.reports.words import amount
-from stockroom.safety.clp import NOT_ENTERED
+from stockroom.safety.clp import NOT_ENTERED, PH_RULE
 from stockroom.safety.hazards import Hazards
 
 LARGEST = 125_000
@@ -47,6 +47,8 @@ def check_short(bottle: Bottle, line: Line, hazards: Hazards) -> None:
     use = "Use the full text: leave out --short."
     if not hazards.entered or hazards.worked_out.unknown:
         raise NotAllowed(f"{bottle.number}: hazard text {NOT_ENTERED}.", use)
+    if hazards.sheet is None and PH_RULE in hazards.worked_out.notes:
+        raise NotAllowed(f"{bottle.number}: its pH is not held, it may be corrosive.", use)
     full = [c for c in (*hazards.statements, *hazards.supplemental) if c not in _CODES]
     if full:
         raise NotAllowed(

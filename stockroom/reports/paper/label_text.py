@@ -49,4 +49,5 @@ def in_one_line(label: Label) -> str:
     parts += [label.keep, label.vented, label.warning, label.hazards.signal]
     parts += [" ".join(label.hazards.symbols)]
     parts += [f"{code} {words}".strip() for code, words in label.hazards.statements]
+    parts += [label.hazards.basis]
     return f"{label.number or label.about}: {'; '.join(part for part in parts if part)}"

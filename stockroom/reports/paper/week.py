@@ -9,6 +9,7 @@ from datetime import date, timedelta
 from stockroom.measure.days import MONTHS
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts
+from stockroom.reports.paper.day import closed_words
 from stockroom.reports.paper.head import Head, head_of
 from stockroom.reports.paper.kinds import Kind
 from stockroom.reports.paper.week_also import also_of, checks_on, guesses_of
@@ -29,7 +30,7 @@ from stockroom.reports.paper.week_parts import (
     short_day,
     tied,
 )
-from stockroom.reports.paper.week_text import week_lines, week_text
+from stockroom.reports.paper.week_text import week_lines, week_since, week_text
 from stockroom.reports.words import counted
 
 NOTHING = "Nothing to do."
@@ -147,8 +148,7 @@ class _Week:
         if state == "over":
             return "Over."
         if state == "closed":
-            reason = self.closed.get(on, "")
-            return f"Closed: {reason}." if reason else "Closed."
+            return closed_words(self.closed.get(on, ""))
         return "" if busy else NOTHING
 
     def _jobs(self, on: date) -> dict[str, list[Job]]:
@@ -167,4 +167,4 @@ class _Week:
         }
 
 
-WEEK = Kind("week", week_text, week_lines)
+WEEK = Kind("week", week_text, week_lines, by_cause=week_since)

@@ -22,7 +22,7 @@ _BESIDE = re.compile(r"stands beside (?P<others>.*?) in [^:]*: (?P<why>[^:]*)")
 def also_of(known: Facts, plan: Plan, monday: date, sunday: date) -> tuple[Also, ...]:
     """What belongs to the week and to no hour of it."""
     return (
-        *_orders(plan, sunday),
+        *_orders(plan, monday, sunday),
         *_coming(plan, monday, sunday),
         *_loads(plan, monday, sunday),
         *_standing(known),
@@ -30,7 +30,7 @@ def also_of(known: Facts, plan: Plan, monday: date, sunday: date) -> tuple[Also,
     )
 
 
-def _orders(plan: Plan, sunday: date) -> Iterator[Also]:
+def _orders(plan: Plan, monday: date, sunday: date) -> Iterator[Also]:
     for order in plan.orders:
         if order.order_by <= sunday:
             late = f", late by {counted(order.late, 'open day')}" if order.late else ""
@@ -40,7 +40,10 @@ def _orders(plan: Plan, sunday: date) -> Iterator[Also]:
                 f"{named(order.item, '')}, {order.packs} × {order.pack}, {money(order.pence)}: "
                 f"order by {short_day(order.order_by)}{late}{served}{leave}"
             )
-            yield Also(f"order {raised(order.line)}", "order", text)
+            # what is late is for now; seen from a later week it is earlier work
+            earlier = order.order_by < monday and plan.as_at < monday
+            about = "order, before this week" if earlier else "order"
+            yield Also(f"order {raised(order.line)}", about, text)
 
 
 def _coming(plan: Plan, monday: date, sunday: date) -> Iterator[Also]:

@@ -13,12 +13,13 @@ from stockroom.planning.decisions import Answer, Draw, Outcome, Plan, Watch
 from stockroom.planning.facts import EXACT, Booking, Facts, Firmness, Form, Recipe
 from stockroom.planning.known import how_known
 from stockroom.planning.people import clock, unstaffed
+from stockroom.reports.paper.day_times import TO_SET_OUT, times_of
 from stockroom.reports.paper.week_parts import Class, Item, Job, made_when, short_day, tied
 from stockroom.reports.words import amount, counted, named, raised
 
 _PASSED_OVER = " not used: "
 _SENTENCE = re.compile(r"(?<=[.!])\s+(?=[A-Z])")
-_MINUTES_BEFORE = re.compile(r"(\d+) ?min\b(?:[^.;]*\bbefore\b| to set out)")
+_MINUTES_BEFORE = re.compile(r"(\d+) ?min\b[^.;]*\bbefore\b")
 _DAY_BEFORE = re.compile(r"overnight|(?:day|evening) before", re.IGNORECASE)
 
 
@@ -109,6 +110,9 @@ class Classes:
         return [words for words in _SENTENCE.split(handling) if words]
 
     def _before(self, booking: Booking, words: str) -> str:
+        if TO_SET_OUT.search(words):
+            begins = times_of(self.known, self.plan, booking.on).set_out
+            return format_time(begins[booking.number]) if booking.number in begins else ""
         found = _MINUTES_BEFORE.search(words)
         minute = booking.minute - int(found[1]) if found else -1
         return format_time(minute) if minute >= 0 else ""
@@ -131,9 +135,9 @@ class Classes:
     def _made(self, need: Answer) -> str:
         make = self.makes[need.make]
         if make.ready == need.booking.on == make.on:
-            return "made that day"
+            return "to be made that day"
         when = made_when(make, self.plan.as_at)
-        return f"{when}, once {need.order} has come" if need.order else when
+        return f"{when}, once its order has come" if need.order else when
 
     def _drawn(self, need: Answer, draw: Draw) -> str:
         bottle, line = self.bottles[draw.bottle], self.known.lines[need.line]

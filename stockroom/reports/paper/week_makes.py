@@ -14,12 +14,10 @@ from stockroom.planning.facts import EXACT, Booking, Facts
 from stockroom.planning.known import how_known
 from stockroom.planning.making.make_card import goes_of
 from stockroom.planning.timing import hours
+from stockroom.reports.paper.day_times import times_of
 from stockroom.reports.paper.week_parts import Job, made, short_day, tied, volume
 from stockroom.reports.words import amount, listed, named, raised
 from stockroom.safety.cautions import Step, cautions_about
-
-BEFORE_CLASS = 30
-"""Minutes before a class by which what is made for it stands ready. Our choice."""
 
 TOO_LITTLE = 5_000
 """What is left over below this, in µL, is not worth a word. Our choice."""
@@ -45,28 +43,11 @@ class Makes:
         """What is finished that was begun before, then what is made; timed ones first of these."""
         finished = [self._finish(m) for m in self.plan.makes if m.finish_on == on > m.on]
         row = [make for make in self.plan.makes if make.on == on == make.ready]
-        times = self._times([make for make in row if make.fresh])
+        times = times_of(self.known, self.plan, on).makes
         jobs = [
             replace(self._job(make), time=format_time(times[make.id])) for make in _by(times, row)
         ]
         return [*finished, *jobs, *(self._job(make) for make in row if make.id not in times)]
-
-    def _times(self, fresh: list[Make]) -> dict[str, int]:
-        """The last minute each may be begun at, one pair of hands making one after the other."""
-        calendar = self.known.calendar
-        cursor, times = calendar.open_to, {}
-        for make in sorted(fresh, key=self._begins, reverse=True):
-            begins = self._begins(make)
-            stands = round(60 * self.known.methods[make.line].stands_hours)
-            start = min(cursor, begins - BEFORE_CLASS - stands) - make.minutes
-            if start < calendar.open_from:
-                # no half hour to spare: then by the class itself
-                start = min(cursor, begins - stands) - make.minutes
-            times[make.id] = cursor = max(start, calendar.open_from)
-        return times
-
-    def _begins(self, make: Make) -> int:
-        return min(self.bookings[number].minute for number in make.bookings)
 
     def _job(self, make: Make) -> Job:
         method = self.known.methods[make.line]

@@ -2,9 +2,12 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+from datetime import date
 from typing import TYPE_CHECKING
 
-from stockroom.reports.paper.head import Head, foot_lines, head_lines, mark
+from stockroom.reports.paper.changes import since_by_booking
+from stockroom.reports.paper.head import Head, Since, foot_lines, head_lines, mark
 from stockroom.reports.paper.week_parts import Also, Class, Item, Job, Rung
 from stockroom.reports.sheet import wrap
 from stockroom.reports.words import TIED
@@ -101,3 +104,10 @@ def _said(when: str, job: Job) -> dict[str, str]:
     # of a make, what it is made from: the rest follows from that and from its day
     more = job.more[:1] if job.ref else job.more
     return {job.key: f"{when}: {timed}{'; '.join([job.what, *more])}"}
+
+
+def week_since(week: Week, number: str, before: Mapping[str, str], today: date) -> Since:
+    """What changed since that copy, bookings first, and why a bottle is no longer taken."""
+    jobs = (job for rung in week.rungs for shelf in rung.shelves for job in shelf.jobs)
+    passed = {item.key: item.passed for job in jobs for item in job.items if item.passed}
+    return since_by_booking(number, before, week_lines(week), today, passed)

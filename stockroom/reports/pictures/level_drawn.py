@@ -29,7 +29,8 @@ def draw_level(axes: Axes, stock: Stock) -> None:
     most = max(
         [stock.level or 0, *(max(at.left, at.with_orders) for at in stock.days), 1],
     )
-    axes.set_ylim(0, in_units(stock, most) * 1.1)
+    # with nothing there the scale is still one of whole units
+    axes.set_ylim(0, max(in_units(stock, most), 1.0) * 1.1)
     axes.set_ylabel(f"left, {unit_mark(BASE_UNIT[stock.kind])}")
     days = [at.on.toordinal() for at in stock.days] + [stock.last.toordinal()]
     if stock.ordered:

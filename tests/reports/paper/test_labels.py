@@ -244,6 +244,31 @@ def test_nothing_held_is_said_and_never_guessed(college: Callable[..., Labels]) 
     assert (label.hazards.symbols, label.hazards.signal) == ((), "")
 
 
+@pytest.mark.parametrize("number", ["S05", "S12", "S07"])
+def test_a_ph_that_is_not_held_is_said_on_the_label(
+    college: Callable[..., Labels], number: str
+) -> None:
+    (label,) = college(number).labels
+    said = label.hazards.basis + " ".join(words for _, words in label.hazards.statements)
+    assert "pH not held: look it up" in said
+
+
+def test_no_statement_does_not_read_as_harmless(college: Callable[..., Labels]) -> None:
+    (label,) = college("S02").labels
+    ((_, words),) = label.hazards.statements
+    assert "not proof of none" in words
+    assert "pH" not in words
+
+
+@pytest.mark.parametrize("sort", [Sort.OPENED, Sort.SHORT])
+@pytest.mark.parametrize("what", ["M03", "B36"])
+def test_a_make_and_an_unknown_have_no_small_label(
+    college: Callable[..., Labels], sort: Sort, what: str
+) -> None:
+    with pytest.raises(NotAllowed, match=what):
+        college(what, sort=sort, size=STRIP if sort is Sort.OPENED else SHORT)
+
+
 def test_a_peroxide_former_says_by_when_to_test_it(college: Callable[..., Labels]) -> None:
     (label,) = college("B29").labels
     (strip,) = college("B29", sort=Sort.OPENED, size=STRIP).labels

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
-from datetime import date
+from datetime import date, timedelta
 from functools import cache
 from pathlib import Path
 
@@ -15,10 +15,11 @@ from hypothesis import strategies as st
 from stockroom.measure.amounts import Kind
 from stockroom.planning.decisions import Draw, Make, Plan
 from stockroom.planning.facts import Facts
-from stockroom.reports.paper.card import Card, Cards, cards_of
+from stockroom.reports.paper.card import Card, Cards, cards_lines, cards_of
 from stockroom.reports.paper.card_steps import Amounts, Care, Step, parted, steps_of
 from stockroom.reports.paper.card_text import CARD, cards_text
 from stockroom.reports.typesetting import typeset
+from stockroom.reports.words import day_heading, measured
 from stockroom.service.cards import hazards_for
 from stockroom.service.sheets import known_and_planned
 
@@ -51,7 +52,8 @@ def planned(practice: Path) -> tuple[Facts, Plan, Cards]:
 
 
 def of(sheet: Cards, day: str, line: str) -> Card:
-    return next(card for card in sheet.cards if card.key == f"{day} {line}")
+    when = day_heading(date.fromisoformat(day))
+    return next(c for c in sheet.cards if when in c.when and c.key.startswith(f"{line} for "))
 
 
 # -- the steps -------------------------------------------------------------------------
@@ -87,7 +89,7 @@ def test_acid_goes_into_water_then_cools_and_only_then_is_made_up(
 ) -> None:
     card = of(planned[2], "2027-03-17", "sulfuric acid 2.00 mol/dm3")
     words = [step.words for step in card.steps]
-    order = ("Measure 47.86", "Stand a beaker", "Add the acid", "Leave to cool", "Make up to", "St")
+    order = ("Measure 47.9", "Stand a beaker", "Add the acid", "Leave to cool", "Make up to", "St")
     assert [each[: len(start)] for each, start in zip(words[1:], order, strict=False)] == list(
         order
     )
@@ -169,7 +171,7 @@ def test_the_habit_is_caught_where_the_bottle_is_not_what_its_label_says(
     planned: tuple[Facts, Plan, Cards],
 ) -> None:
     [peroxide] = of(planned[2], "2027-01-26", "hydrogen peroxide 0.100 mol/dm3").takes
-    assert peroxide.habit.replace("\u00a0", " ") == "not 5.917 cm³, the label's 100 vol"
+    assert peroxide.habit.replace("\u00a0", " ") == "not 5.92 cm³, the label's 100 vol"
     assert "found 91" in peroxide.known
     [acid] = of(planned[2], "2027-01-13", "hydrochloric acid 1.00 mol/dm3").takes
     assert acid.habit == ""
@@ -201,6 +203,51 @@ def test_hazards_that_nobody_entered_are_to_be_looked_up(
     assert {danger.statements for danger in card.dangers} == {
         (("", "Hazard text not entered: look it up."),)
     }
+
+
+def test_a_changed_caution_is_marked_at_its_step_and_nowhere_else(
+    planned: tuple[Facts, Plan, Cards],
+) -> None:
+    known, plan, _ = planned
+    one = plan.makes[13]
+    before, after = (
+        cards_lines(cards_of(known, plan, [each], {}))
+        for each in (one, replace(one, cautions=(*one.cautions, "Ask Joan.")))
+    )
+    changed = [key for key, said in after.items() if before.get(key) != said]
+    assert [key.rpartition(", ")[2] for key in changed] == ["step 1"]
+    assert after[changed[0]].endswith("Ask Joan.")
+
+
+def test_a_make_moved_or_numbered_anew_keeps_its_keys(
+    planned: tuple[Facts, Plan, Cards],
+) -> None:
+    known, plan, _ = planned
+    one = plan.makes[13]
+    before = cards_lines(cards_of(known, plan, [one], {}))
+    anew = cards_lines(cards_of(known, plan, [replace(one, id="M99")], {}))
+    moved = cards_lines(cards_of(known, plan, [replace(one, on=one.on - timedelta(1))], {}))
+    assert anew == before
+    first = next(iter(before))
+    assert moved[first] != before[first]
+
+
+@pytest.mark.parametrize(
+    ("micro", "kind", "said"),
+    [
+        (6_608, Kind.VOLUME, "6.61 cm³"),
+        (9_996, Kind.VOLUME, "10 cm³"),
+        (20_710, Kind.VOLUME, "20.7 cm³"),
+        (26_400, Kind.VOLUME, "26.4 cm³"),
+        (99_960, Kind.VOLUME, "100 cm³"),
+        (432_200, Kind.VOLUME, "432 cm³"),
+        (12, Kind.VOLUME, "0.012 cm³"),
+        (0, Kind.VOLUME, "0 cm³"),
+        (35_330_000, Kind.MASS, "35.33 g"),
+    ],
+)
+def test_an_amount_is_one_a_person_can_read_off(micro: int, kind: Kind, said: str) -> None:
+    assert measured(micro, kind).replace("\u00a0", " ") == said
 
 
 # -- on paper ----------------------------------------------------------------------------
