@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from stockroom.cli.paper import written_whole
+from stockroom.cli.paper import Paper, paper_of, written_whole
 from stockroom.cli.printing import show, suggest, width
 from stockroom.cli.shared import Shared, of
 from stockroom.errors import BadInput, NotAllowed, StoreTrouble
@@ -64,7 +64,7 @@ def _write_calendar(shared: Shared, target: Path, term: date, answer: Calendar) 
                 f"To read it on the screen, name no file. {trouble.hint}".strip(),
             ) from trouble
         names = write([written])
-    said = f"{names[0]}: {counts(answer.entries)}; copy {number}"
+    said = f"{names[0]}: {counts(answer)}; copy {number}"
     practice = "PRACTICE\n" if answer.head.practice else ""
     show(shared, lambda: practice + said, lambda: as_data(answer) | {"files": names})
 
@@ -72,6 +72,7 @@ def _write_calendar(shared: Shared, target: Path, term: date, answer: Calendar) 
 def workbook(
     ctx: typer.Context,
     file: Annotated[str, typer.Argument(metavar="FILE.xlsx", help="The file to write.")],
+    paper: Paper = "A4",
 ) -> None:
     """The term as a workbook, a sheet for each subject: days as text, amounts as numbers.
 
@@ -83,9 +84,9 @@ def workbook(
     from stockroom.service.sheets import known_and_planned
 
     shared = of(ctx)
-    target = _named(file, ".xlsx", "term.xlsx")
+    target, size = _named(file, ".xlsx", "term.xlsx"), paper_of(paper)
     book = workbook_of(*known_and_planned(shared.path, as_at=shared.today))
-    written = workbook_bytes(book)
+    written = workbook_bytes(book, size)
     with written_whole(target) as write:
         names = write([written])
     rows = {sheet.name: len(sheet.rows) for sheet in book.sheets}

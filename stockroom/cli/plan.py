@@ -7,7 +7,7 @@ from typing import Annotated, Any, TypedDict
 
 import typer
 
-from stockroom.cli.paper import Paper, Print, put_out
+from stockroom.cli.paper import Paper, Print, form_of, paper_of, put_out
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared, of
 from stockroom.cli.tables import Bom, Csv, check_files, write_table
@@ -161,10 +161,16 @@ def buying(
     from stockroom.service.plan import term_plan
 
     shared = of(ctx)
-    check_files(csv, bom=bom, to=to)
+    check_files(csv, bom=bom)
     answer = term_plan(shared.path, as_at=shared.today, cautious=cautious)
+    if to is not None:
+        # nothing is written where the other file could not be
+        form_of(to), paper_of(paper)
     if csv is not None:
-        return write_table(shared, csv, "buying", buying_csv(answer, bom=bom))
+        table = buying_csv(answer, bom=bom)
+        write_table(shared, csv, "buying", table, beside=to is not None)
+    if to is None and csv is not None:
+        return
     if to is not None:
         about = answer.start.isoformat()
         return put_out(shared, BUYING, buying_sheet_of(answer), about, to=to, paper=paper)

@@ -23,8 +23,10 @@ Bom = Annotated[
 """The option that goes with it."""
 
 
-def write_table(shared: Shared, to: str, name: str, table: bytes) -> None:
+def write_table(shared: Shared, to: str, name: str, table: bytes, *, beside: bool = False) -> None:
     """Write an answer as a table; `name` is what it is a table of.
+
+    `beside` a sheet that is printed too, whose data is then the answer for programs.
 
     Raises: BadInput for a file that cannot be; NotAllowed where nothing can be written.
     """
@@ -33,16 +35,12 @@ def write_table(shared: Shared, to: str, name: str, table: bytes) -> None:
         raise BadInput(f"--csv {to}: a table is written as .csv.", f"Name it {name}.csv.")
     with written_whole(target) as write:
         names = write([table])
-    show(shared, lambda: f"{names[0]}: {name} as a table", lambda: {"files": names})
+    if not (beside and shared.json):
+        show(shared, lambda: f"{names[0]}: {name} as a table", lambda: {"files": names})
 
 
-def check_files(csv: str | None, *, bom: bool, to: str | None = None) -> None:
-    """Pass where one file is asked for, or none. Raises: BadInput for what goes not together."""
+def check_files(csv: str | None, *, bom: bool) -> None:
+    """Raises: BadInput for --bom without a table it could stand in."""
     # what is left out without a word is taken to have been done
     if bom and csv is None:
         raise BadInput("--bom goes with --csv only, and there is none.", "Add --csv FILE.")
-    if csv is not None and to is not None:
-        raise BadInput(
-            f"--csv {csv} and --print {to} are two things to write.",
-            "Ask for one, then for the other.",
-        )

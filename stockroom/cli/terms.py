@@ -48,11 +48,11 @@ def report(
     Example: stockroom report --print report.pdf
     """
     from stockroom.reports.paper.term_report import REPORT, term_report_of
-    from stockroom.service.term_report import term_told
+    from stockroom.service.term_report import term_entered, term_told
 
     shared = of(ctx)
     known, plan, left = term_told(shared.path, as_at=shared.today, term=term or "")
-    sheet = term_report_of(known, plan, left)
+    sheet = term_report_of(known, plan, left, entered=term_entered(shared.path))
     put_out(shared, REPORT, sheet, known.start.isoformat(), to=to, paper=paper)
 
 
@@ -106,7 +106,7 @@ def _others(shared: Shared, size: str, known: Any, plan: Any) -> Iterator[tuple[
     from stockroom.reports.paper.week import WEEK, monday_of, week_of
     from stockroom.service.closures import why_closed
     from stockroom.service.sheets import known_and_planned
-    from stockroom.service.term_report import term_told
+    from stockroom.service.term_report import term_entered, term_told
 
     about = known.start.isoformat()
     yield "strip.pdf", _printed(shared, STRIP, strip_of(known, plan), about, size)[0]
@@ -119,7 +119,7 @@ def _others(shared: Shared, size: str, known: Any, plan: Any) -> Iterator[tuple[
     yield "week.pdf", _printed(shared, WEEK, week, monday.isoformat(), size)[0]
     # of the term begun last, which may be over
     of_term, its_plan, left = term_told(shared.path, as_at=shared.today)
-    told = term_report_of(of_term, its_plan, left)
+    told = term_report_of(of_term, its_plan, left, entered=term_entered(shared.path))
     yield "report.pdf", _printed(shared, REPORT, told, of_term.start.isoformat(), size)[0]
 
 

@@ -184,6 +184,14 @@ def unstaffed(facts: Facts, booking: Booking, *, never_kept: bool) -> list[tuple
     return [(start, end) for start, end in (early, late) if start < end]
 
 
+def must_be_here(facts: Facts, booking: Booking, *, never_kept: bool) -> list[tuple[int, int]]:
+    """As `unstaffed`, and on a closed day, when nobody is there at all, the whole session."""
+    if facts.calendar.is_open(booking.on):
+        return unstaffed(facts, booking, never_kept=never_kept)
+    ends = booking.minute + booking.lasts_minutes + (DESTROY_AFTER if never_kept else 0)
+    return [(booking.minute - MIX_BEFORE, ends)]
+
+
 def watches(needs: Iterable[Need], short: Collection[str]) -> list[Watch]:
     """Each booking with something that is never kept, in the order of the needs.
 

@@ -35,9 +35,13 @@ class Hand:
 
 @dataclass(frozen=True, slots=True)
 class Kept:
-    """All of it. `backup` is the day and place of the last copy made, None for never."""
+    """All of it. `terms` is how many are entered.
+
+    `backup` is the day and place of the last copy made, None for never.
+    """
 
     store: str
+    terms: int
     settings: tuple[tuple[str, str], ...]
     closures: tuple[tuple[date, date, str], ...]
     changes: tuple[Changed, ...]
@@ -51,6 +55,7 @@ def kept_of(path: StoreAt, as_at: date) -> Kept:
         backups = reader.rows("backup_made", "ORDER BY entered_on DESC, id DESC LIMIT 1")
         return Kept(
             store=str(path),
+            terms=len(reader.rows("term", "")),
             settings=tuple((row["setting"], row["value"]) for row in reader.rows("house", "")),
             closures=_closures(reader, as_at),
             changes=tuple(_changed(row) for row in reader.rows("row_change")),

@@ -31,6 +31,12 @@ def term_told(
     return known, with_backup(path, replayed_plan(known)), gone
 
 
+def term_entered(path: StoreAt) -> bool:
+    """Whether any term is entered, so that there is one to report on."""
+    with reading(path) as reader:
+        return bool(reader.rows("term", ""))
+
+
 def _span(reader: Reader, as_at: date, term: str) -> tuple[date | None, date | None]:
     """First and last day of a term; nothing where none is begun, and the plan's own is taken."""
     rows = reader.rows("term", "ORDER BY starts_on, id")

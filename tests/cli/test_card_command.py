@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -37,9 +38,9 @@ def test_a_day_names_what_is_begun_and_what_is_gone_on_with(
 
 def test_a_week_is_all_its_days(practice: Path, stockroom: Stockroom) -> None:
     cards = stockroom("card", "--week", "2027-01-27", "--json", store=practice).json["cards"]
-    days = [card["key"][:10] for card in cards]
+    days = [re.findall(r"\d+ Jan 2027", card["when"])[0] for card in cards]
     assert days == sorted(days)
-    assert (days[0], days[-1]) == ("2027-01-25", "2027-01-29")
+    assert (days[0], days[-1]) == ("25 Jan 2027", "29 Jan 2027")
 
 
 @pytest.mark.parametrize(
@@ -67,9 +68,9 @@ def test_printed_it_is_a_page_for_each_make_and_its_codes_are_the_bottles(
     assert told.code == 0, told.err
     pdf = (tmp_path / "cards.pdf").read_bytes()
     first, second = paper.page_words(pdf)
-    assert "6.608 cm³" in first
-    assert "not 5.917 cm³, the label's 100 vol" in first
-    assert "47.86 cm³" in second
+    assert "6.61 cm³" in first
+    assert "not 5.92 cm³, the label's 100 vol" in first
+    assert "47.9 cm³" in second
     assert "nominal, not checked" in second
     assert paper.codes(pdf) == ["B01", "B13"]
     assert paper.overlapping(pdf) == []
@@ -89,11 +90,11 @@ def test_a_day_with_nothing_to_make_can_be_printed_and_says_so(
 def test_the_line_to_type_back_is_taken_as_it_stands(own: Path, stockroom: Stockroom) -> None:
     [line] = stockroom("card", "M02", "--json", store=own).json["cards"][0]["type_back"]
     assert line == (
-        'stockroom make "copper(II) sulfate 0.100 mol/dm3" "66 cm3" '
-        "--from S15 --place ____ --by ____"
+        "stockroom make 'copper(II) sulfate 0.100 mol/dm3' '66 cm3' "
+        "--from S15 --on ____ --place ____ --by ____"
     )
     done = stockroom(
         "make", "copper(II) sulfate 0.100 mol/dm3", "66 cm3",
-        "--from", "S15", "--place", "A3", "--by", "T1", store=own,
+        "--from", "S15", "--on", "2027-01-04", "--place", "A3", "--by", "T1", store=own,
     )  # fmt: skip
     assert done.code == 0, done.err

@@ -6,7 +6,11 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 import icalendar
+import openpyxl
 import pytest
+
+from stockroom.cli.paper import written_whole
+from stockroom.errors import NotAllowed
 
 if TYPE_CHECKING:
     from conftest import Stockroom
@@ -74,3 +78,72 @@ def test_the_morning_says_by_its_code_whether_there_is_anything(
     told = stockroom("morning", "--as-at", "2027-01-26", store=empty)
     assert told.code == 0
     assert told.out.startswith("Nothing due today, Tue 26 Jan 2027\n")
+
+
+STRANGERS = {
+    "x.xlsx": b"keep",
+    "x.ics": b"BEGIN:VCALENDAR\r\nPRODID:-//somebody//EN\r\nEND:VCALENDAR\r\n",
+    "x.csv": b"name,telephone\r\n",
+    "x.pdf": b"%PDF-1.7 somebody's",
+    "x.svg": b"keep",
+    "x.png": b"keep",
+}
+
+
+@pytest.mark.parametrize("name", STRANGERS)
+def test_a_strangers_file_is_never_written_over(tmp_path: Path, name: str) -> None:
+    kept = tmp_path / name
+    kept.write_bytes(STRANGERS[name])
+    refused = pytest.raises(NotAllowed, match="is not a sheet of stockroom's")
+    with refused, written_whole(kept) as write:
+        write([b"item,packs\r\nsalt,1\r\n"])
+    assert kept.read_bytes() == STRANGERS[name]
+    assert list(tmp_path.iterdir()) == [kept]
+
+
+def test_a_workbook_of_somebody_elses_is_left(
+    stockroom: Stockroom, own: Path, tmp_path: Path
+) -> None:
+    kept = tmp_path / "x.xlsx"
+    book = openpyxl.Workbook()
+    book.properties.creator = "somebody"
+    book.save(kept)
+    before = kept.read_bytes()
+    told = stockroom("workbook", str(kept), store=own)
+    assert (told.code, told.out) == (1, "")
+    assert "Name another file, or move it away." in " ".join(told.err.split())
+    assert kept.read_bytes() == before
+
+
+def test_our_own_files_are_replaced(stockroom: Stockroom, own: Path, tmp_path: Path) -> None:
+    for words in (
+        ("workbook", "t.xlsx"),
+        ("workbook", "t.xlsx", "--paper", "letter"),
+        ("calendar", "t.ics"),
+        ("calendar", "t.ics"),
+        ("strip", "--print", "s.pdf"),
+        ("strip", "--print", "s.pdf"),
+        ("buying", "--csv", "b.csv"),
+        ("buying", "--csv", "b.csv"),
+    ):
+        told = stockroom(*words, store=own)
+        assert told.code == 0, told.err
+    first = openpyxl.load_workbook("t.xlsx").worksheets[0]
+    assert first.page_setup.paperSize == 1
+
+
+def test_a_file_that_cannot_be_written_is_said_so_of_any_kind(
+    stockroom: Stockroom, own: Path
+) -> None:
+    told = stockroom("calendar", "/proc/x.ics", store=own)
+    assert told.code == 1
+    assert "Nothing was written" in told.err
+
+
+def test_a_walk_is_not_begun_for_a_sheet_that_cannot_be(
+    stockroom: Stockroom, own: Path, tmp_path: Path
+) -> None:
+    nowhere = str(tmp_path / "no" / "w.pdf")
+    told = stockroom("walk", "Jan", "--places", "A2", "--by", "T1", "--print", nowhere, store=own)
+    assert told.code == 2
+    assert stockroom("walk", "--json", store=own).json["walks"] == []

@@ -22,6 +22,7 @@ from stockroom.reports.typesetting import typeset
 if TYPE_CHECKING:
     from conftest import Stockroom
 
+OURS = b"%PDF-1.7 /Author(stockroom) before"
 A4, LETTER, A5 = (210.0, 297.0), (215.9, 279.4), (148.0, 210.0)
 
 

@@ -91,7 +91,7 @@ def test_a_table_is_written_and_read_back(
     ("words", "said"),
     [
         (("buying", "--csv", "a.xls"), "Name it buying.csv"),
-        (("buying", "--csv", "a.csv", "--print", "a.pdf"), "two things to write"),
+        (("buying", "--csv", "a.csv", "--print", "a.doc"), "written as .pdf"),
         (("past", "--bom"), "--bom goes with --csv only"),
         (("usage", "--csv", "no/such/a.csv"), "there is no folder"),
         (("report", "--print", "a.doc"), "written as .pdf"),

@@ -61,7 +61,7 @@ def test_a_week_outside_the_term_says_that_nothing_is_booked(
 ) -> None:
     told = stockroom("week", "2027-04-07", store=practice)
     assert "No bookings." in told.said
-    assert "Nothing is booked in this week, and nothing has to be done in it." in told.said
+    assert "Nothing is booked in this week: nothing to make or set out." in told.said
     assert "GUESSES: nothing guessed" in told.said
 
 
@@ -70,7 +70,7 @@ def test_a_booking_past_the_term_is_planned_through(own: Path, stockroom: Stockr
     assert booked.code == 0, booked.err
     told = stockroom("week", "2027-04-14", store=own)
     assert "MAKE" in told.out
-    assert "528 cm³ hydrogen peroxide 0.100 mol/dm³: made that day" in told.said
+    assert "528 cm³ hydrogen peroxide 0.100 mol/dm³: to be made that day" in told.said
 
 
 def test_a_resize_and_a_move_are_marked_against_the_copy_printed_last(
@@ -93,9 +93,12 @@ def test_a_resize_and_a_move_are_marked_against_the_copy_printed_last(
     assert not any("Water bath" in line for line in marked)
     listed = stockroom("week", "2027-01-25", "--json", store=own).json["head"]["since"]["changes"]
     assert listed[0].startswith("Tue 26 Jan 09:15 Iodine clock: peroxide and iodide, 11 groups")
-    assert "gone: Fri 29 Jan 09:15 Starch and amylase, 9 groups, LAB2, BI, K10" in listed
-    (fresh,) = [each for each in listed if each.startswith("Tue 26 Jan make: 08:35 hydrogen")]
-    assert "(was: Tue 26 Jan make: 08:35 hydrogen peroxide 0.100 mol/dm³, 528 cm³;" in fresh
+    # what hangs on a booking that is gone is counted beside it
+    assert listed[1] == (
+        "gone: Fri 29 Jan 09:15 Starch and amylase, 9 groups, LAB2, BI, K10; 5 lines with it"
+    )
+    (fresh,) = [each for each in listed if each.startswith("Tue 26 Jan make: 08:10 hydrogen")]
+    assert "(was: Tue 26 Jan make: 08:10 hydrogen peroxide 0.100 mol/dm³, 528 cm³;" in fresh
 
     second = tmp_path / "second.pdf"
     assert stockroom("week", "2027-01-25", "--print", str(second), store=own).code == 0

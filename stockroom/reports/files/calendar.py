@@ -10,7 +10,7 @@ from __future__ import annotations
 import hashlib
 import json
 import re
-from collections.abc import Iterable, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from datetime import date
 from enum import StrEnum
@@ -71,15 +71,15 @@ def calendar_of(
     entries = []
     for place, work in enumerate(works):
         if place in given:
-            entries.append(_again(given[place], work))
+            entries.append(_again(given[place], work, plan.as_at))
         else:
             uid = _born(plan.house.name, work, taken)
             taken.add(uid)
             entries.append(Entry(uid, 0, State.NEW, work))
     used = {each.uid for each in given.values()}
     left = [each for each in kept if each.uid not in used]
-    gone = [_withdrawn(each) for each in left if each.work.on >= plan.as_at]
-    over = tuple(each for each in left if each.work.on < plan.as_at)
+    gone = [_withdrawn(each) for each in left if _stands(each, plan.as_at)]
+    over = tuple(each for each in left if not _stands(each, plan.as_at))
     row = sorted((*entries, *gone), key=lambda e: (e.work.on, e.withdrawn, _hour(e.work), e.uid))
     since = f" Held against file {number}." if number else ""
     head = head_of(plan, "The calendar of the term", f"{ABOUT}{since}")
@@ -129,7 +129,20 @@ def _likeness(work: Work, other: Work) -> tuple[bool, int, int]:
     return work.bookings != other.bookings, -len(shared), abs((work.on - other.on).days)
 
 
-def _again(before: Entry, work: Work) -> Entry:
+def _stands(left: Entry, as_at: date) -> bool:
+    """Whether what is no longer planned still has to be taken out of the reader's calendar.
+
+    An order or a delivery that was late stands on a day that is over, and is withdrawn once.
+    """
+    waited = left.work.kind in (ORDER, COMING) and not left.withdrawn
+    return waited or left.work.on >= as_at
+
+
+def _again(before: Entry, work: Work, as_at: date) -> Entry:
+    late = work.kind in (ORDER, COMING) and work.on == as_at
+    if late and before.work.on < as_at and not before.withdrawn:
+        # it was told on its day; to move it every morning would hide how long it has waited
+        work = replace(work, on=before.work.on)
     if before.work == work and not before.withdrawn:
         return replace(before, state=State.SAME)
     return Entry(before.uid, before.sequence + 1, State.CHANGED, work)
@@ -203,17 +216,24 @@ def calendar_text(calendar: Calendar, width: int) -> str:
     for each in calendar.entries:
         days.setdefault(each.work.on, []).append(wrap(_said(each), width, indent=2, hang=6))
     parts = [section(day_heading(on), lines) for on, lines in sorted(days.items())]
-    told = counts(calendar.entries) if calendar.entries else NONE
+    told = counts(calendar) if calendar.entries else NONE
     return page([head_lines(calendar.head, width), told, *parts, foot_lines(calendar.head, width)])
 
 
-def counts(entries: Iterable[Entry]) -> str:
-    """How many entries, and how they stand to the file before: "93 entries: 93 new"."""
-    row = list(entries)
-    told = [(state, sum(each.state is state for each in row)) for state in State]
+def counts(calendar: Calendar) -> str:
+    """How many entries are planned, and how they stand to the file before; the others apart.
+
+    "88 entries: 6 new, 71 same, 11 changed; 4 withdrawn; 16 over, left out". Over are those
+    of files before whose day has passed: they stay in the reader's calendar as they were.
+    """
+    planned = [each for each in calendar.entries if not each.withdrawn]
+    told = [(state, sum(each.state is state for each in planned)) for state in State]
     parts = ", ".join(f"{count} {state}" for state, count in told if count)
-    many = "1 entry" if len(row) == 1 else f"{len(row)} entries"
-    return f"{many}: {parts}" if row else "no entry"
+    many = "1 entry" if len(planned) == 1 else f"{len(planned)} entries"
+    gone, over = len(calendar.entries) - len(planned), len(calendar.over)
+    rest = [f"{gone} withdrawn" if gone else "", f"{over} over, left out" if over else ""]
+    said = f"{many}: {parts}" if planned else "no entry"
+    return "; ".join(each for each in (said, *rest) if each)
 
 
 def _said(entry: Entry) -> str:

@@ -1,4 +1,4 @@
-"""The calendar as iCalendar bytes. Source: RFC 5545; METHOD as in RFC 5546, 3.2.1."""
+"""The calendar as iCalendar bytes, a plain file to bring in. Source: RFC 5545."""
 
 from __future__ import annotations
 
@@ -7,7 +7,7 @@ from datetime import UTC, date, datetime, time, timedelta
 from typing import TYPE_CHECKING
 
 from stockroom.reports.files.calendar import Calendar, Entry
-from stockroom.reports.files.calendar_work import BOOKING, DESTROY
+from stockroom.reports.files.calendar_work import BOOKING, DESTROY, Work
 from stockroom.reports.sheet import CAUTION, PRACTICE
 from stockroom.reports.words import TIED
 
@@ -17,18 +17,20 @@ if TYPE_CHECKING:
 EVENING_BEFORE = timedelta(hours=-6)
 """Before an all-day entry, which begins at midnight: 18:00 the day before. Our choice."""
 
+GONE = "Withdrawn: done or no longer needed."
+"""What a withdrawn entry says first: a make done and an order placed leave the plan too."""
+
 # controls a text value may not hold (RFC 5545, 3.1: CONTROL); line ends are left to the library
 _CONTROLS = re.compile(r"[\x00-\x08\x0b\x0c\x0e-\x1f\x7f]")
 
 
 def calendar_bytes(calendar: Calendar) -> bytes:
-    """The file: published, every entry free time, the same for the same plan and day."""
+    """The file: every entry free time, the same for the same plan and day."""
     import icalendar
 
     found = icalendar.Calendar()
     found.add("prodid", "-//stockroom//calendar//EN")
     found.add("version", "2.0")
-    found.add("method", "PUBLISH")
     name = f"{calendar.head.house}: prep room"
     found.add("x-wr-calname", _text(f"{PRACTICE} {name}" if calendar.head.practice else name))
     for entry in calendar.entries:
@@ -49,13 +51,22 @@ def _event(entry: Entry, calendar: Calendar) -> icalendar.Event:
     event.add("dtstart", begins)
     event.add("dtend", ends)
     event.add("summary", _text(_summary(entry, practice=head.practice)))
-    event.add("description", _text("\n".join((*work.more, "", CAUTION))))
+    event.add("description", _text("\n".join((*_gone(entry), *work.more, "", CAUTION))))
     event.add("status", _status(entry))
     event.add("transp", "TRANSPARENT")
     event.add("categories", [work.kind])
-    if not entry.withdrawn and work.kind != BOOKING:
+    if not entry.withdrawn and work.kind != BOOKING and _ahead(work, head.as_at):
         event.add_component(_alarm(entry))
     return event
+
+
+def _gone(entry: Entry) -> tuple[str, ...]:
+    return (GONE,) if entry.withdrawn else ()
+
+
+def _ahead(work: Work, as_at: date) -> bool:
+    """Whether its alarm is still to ring: that of a whole day rings the evening before it."""
+    return work.on >= as_at if work.at is not None else work.on > as_at
 
 
 def _span(entry: Entry) -> tuple[date, date]:

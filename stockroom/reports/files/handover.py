@@ -5,9 +5,9 @@ from __future__ import annotations
 from dataclasses import dataclass
 from datetime import date
 
-from stockroom.keeping.verdict import Condition
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts
+from stockroom.reports.files.handover_danger import dangers
 from stockroom.reports.files.handover_house import (
     never,
     places,
@@ -15,14 +15,13 @@ from stockroom.reports.files.handover_house import (
     rules,
     suppliers,
 )
-from stockroom.reports.files.handover_parts import Beside, Job, Part, Point
+from stockroom.reports.files.handover_open import leans_on, open_questions
+from stockroom.reports.files.handover_parts import Beside, Job, Part, Point, together
 from stockroom.reports.files.handover_week import first_week
 from stockroom.reports.paper.head import Head, foot_lines, head_lines, head_of, mark
 from stockroom.reports.paper.kinds import Kind
 from stockroom.reports.sheet import page, wrap
-from stockroom.reports.words import amount, named, raised
-
-_OPEN = (Condition.NO_DATE, Condition.SET_ASIDE, Condition.NOT_FOUND)
+from stockroom.reports.words import raised
 
 
 @dataclass(frozen=True, slots=True)
@@ -40,10 +39,11 @@ def handover_of(
     """The handover as at the plan's day, its first week the one from `monday`."""
     about = "For whoever comes after: the first week, then everything else, with its reasons"
     parts = (
-        first_week(known, plan, monday),
+        first_week(known, plan, monday, beside),
         never(known, plan),
-        open_questions(plan),
+        open_questions(known, plan),
         noticed(plan),
+        leans_on(plan),
         backups(beside, practice=plan.house.practice),
         places(known),
         rules(known, beside),
@@ -54,48 +54,12 @@ def handover_of(
     return Handover(head_of(plan, "Start here", about), files, parts)
 
 
-def open_questions(plan: Plan) -> Part:
-    """What nobody has settled: short, on order, undated, unknown, not found, guessed."""
-    points = [
-        Point(
-            f"{one.ref} {named(one.item, one.strength)}",
-            (f"{amount(one.amount, one.kind)} short: {one.reason}",),
-        )
-        for one in plan.short
-    ]
-    points += [
-        Point(
-            f"{one.number} {one.item}",
-            (f"{amount(one.amount, one.kind)} to come, expected {one.expected}",),
-        )
-        for one in plan.on_order
-    ]
-    points += [
-        Point(
-            raised(f"{one.bottle} {one.item}"),
-            (raised(f"{one.condition.value}: {one.decided_by}"),),
-        )
-        for one in plan.past
-        if one.condition in _OPEN
-    ]
-    points += [Point(one.subject, (raised(one.text),)) for one in plan.guesses]
-    intro = "Ask whoever is leaving, while they are still here." if points else "Nothing is open."
-    return Part("Open questions", intro, _together(points))
-
-
 def noticed(plan: Plan) -> Part:
     """What the plan noticed on the way: wrong neighbours, hours nobody is here, money, remarks."""
-    points = [Point(one.subject, (raised(one.text),)) for one in plan.notes]
+    first = dangers(plan)
+    points = [Point(n.subject, (raised(n.text),)) for n in plan.notes if n not in first]
     intro = "Noticed on the way, as at today." if points else "Nothing was noticed."
-    return Part("What the plan noticed", intro, _together(points))
-
-
-def _together(points: list[Point]) -> tuple[Point, ...]:
-    """Points of one name as one, so that all there is to ask of a bottle stands together."""
-    told: dict[str, tuple[str, ...]] = {}
-    for point in points:
-        told[point.name] = (*told.get(point.name, ()), *point.told)
-    return tuple(Point(name, texts) for name, texts in told.items())
+    return Part("What the plan noticed", intro, together(points))
 
 
 def backups(beside: Beside, *, practice: bool) -> Part:
@@ -144,7 +108,8 @@ def handover_text(sheet: Handover, width: int) -> str:
         lines = [f"{number}  {part.title.upper()}", wrap(part.intro, width, indent=3, hang=3)]
         for point in part.points:
             changed = mark(sheet.head, _key(part, point))
-            lines.append(wrap(f"{changed}  {point.name}", width, hang=5))
+            name = f"!! {point.name.upper()} !!" if point.boxed else point.name
+            lines.append(wrap(f"{changed}  {name}", width, hang=5))
             lines += [wrap(text, width, indent=5, hang=7) for text in point.told]
             lines += [line for job in point.jobs for line in _job_lines(job, width)]
         parts.append("\n".join(lines))

@@ -22,7 +22,7 @@ def places(known: Facts) -> Part:
         stood.setdefault(bottle.place, []).append(bottle.number)
     points = []
     for place in known.places:
-        warm = "nobody hung a thermometer here"
+        warm = "temperature not written"
         if place.temperature_c is not None:
             warm = f"{place.temperature_c:g} °C"
         meant = f"for {place.meant_for}; " if place.meant_for else ""

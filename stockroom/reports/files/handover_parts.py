@@ -7,6 +7,9 @@ from dataclasses import dataclass
 from datetime import date
 from typing import Protocol
 
+WHO = "--by XX"
+"""What stands for the reader's own initials in a command."""
+
 
 @dataclass(frozen=True, slots=True)
 class Job:
@@ -18,11 +21,15 @@ class Job:
 
 @dataclass(frozen=True, slots=True)
 class Point:
-    """One thing told: its name, what there is to say of it, and what there is to do."""
+    """One thing told: its name, what there is to say of it, and what there is to do.
+
+    `boxed` is for what must not be read past.
+    """
 
     name: str
     told: tuple[str, ...] = ()
     jobs: tuple[Job, ...] = ()
+    boxed: bool = False
 
 
 @dataclass(frozen=True, slots=True)
@@ -32,6 +39,17 @@ class Part:
     title: str
     intro: str
     points: tuple[Point, ...] = ()
+
+
+def together(points: Sequence[Point]) -> tuple[Point, ...]:
+    """Points of one name as one, so that all there is to say of a bottle stands together."""
+    told: dict[str, Point] = {}
+    for point in points:
+        before = told.get(point.name, Point(point.name))
+        told[point.name] = Point(
+            point.name, (*before.told, *point.told), (*before.jobs, *point.jobs)
+        )
+    return tuple(told.values())
 
 
 class Change(Protocol):
@@ -73,6 +91,8 @@ class Beside(Protocol):
 
     @property
     def store(self) -> str: ...
+    @property
+    def terms(self) -> int: ...
     @property
     def settings(self) -> Sequence[tuple[str, str]]: ...
     @property

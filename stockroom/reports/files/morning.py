@@ -8,7 +8,13 @@ from datetime import date
 
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Booking, Facts
-from stockroom.planning.people import clock, unstaffed
+from stockroom.planning.people import clock, must_be_here
+from stockroom.reports.files.morning_shelf import (
+    Due,
+    at_the_shelf,
+    leaned_on_late,
+    not_written,
+)
 from stockroom.reports.paper.head import Head, head_of
 from stockroom.reports.paper.week_also import checks_on
 from stockroom.reports.paper.week_classes import Classes
@@ -19,15 +25,6 @@ from stockroom.reports.words import counted, day_heading, listed, money, named, 
 
 WIDTH = 72
 """Columns of the note: what a mailer shows without breaking lines. Common practice, no source."""
-
-
-@dataclass(frozen=True, slots=True)
-class Due:
-    """One thing: what it is, what goes with it, and the cautions of its step."""
-
-    what: str
-    more: tuple[str, ...] = ()
-    cautions: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
@@ -53,8 +50,10 @@ class Morning:
 def morning_of(known: Facts, plan: Plan) -> Morning:
     """The note for the plan's own day, open or closed.
 
-    A check is due on its best day, an order from its order-by day until it is placed, a
-    delivery on the day it is expected and after; what only saves work is told and not counted.
+    A check is due on its best day, and before it where it is overdue and a class within a
+    fortnight leans on it; what stands wrong at the shelf every day until it is mended (our
+    choice); an order from its order-by day until it is placed, a delivery on the day it is
+    expected and after; what only saves work is told and not counted.
     """
     rows = [part for part in _parts(known, plan) if part.rows]
     count = sum(len(part.rows) for part in rows if part.counted)
@@ -69,8 +68,9 @@ def _parts(known: Facts, plan: Plan) -> Iterator[Part]:
     of_day = makes.of_day(on)
     _, destroy = classes.never_kept(on)
     yield _part("CLASSES", [_class(classes, booking) for booking in classes.on(on)], counted=False)
-    yield _part("CANNOT BE HAD for today", _short(plan), counted=False)
+    yield _part("CANNOT BE HAD for today", _short(plan))
     yield _part("SOMEONE MUST BE HERE", _someone(classes, plan))
+    yield _part("AT THE SHELF", at_the_shelf(known))
     yield _part("CHECK", _checks(plan, optional=False))
     yield _part("FINISH", [_due(job) for job in of_day if job.key.startswith(finish)])
     yield _part("START", [_due(job) for job in makes.started(on)])
@@ -79,6 +79,7 @@ def _parts(known: Facts, plan: Plan) -> Iterator[Part]:
     yield _part("DESTROY", [_due(job) for job in destroy if job.sign])
     yield _part("ORDER", _orders(plan))
     yield _part("DELIVERIES", _coming(plan))
+    yield _part("NOT WRITTEN DOWN", not_written(known))
     yield _part("WOULD SAVE WORK", _checks(plan, optional=True), counted=False)
 
 
@@ -100,8 +101,8 @@ def _class(classes: Classes, booking: Booking) -> Due:
 def _someone(classes: Classes, plan: Plan) -> list[Due]:
     rows = []
     for booking in classes.on(plan.as_at):
-        kept = bool(classes.known.recipes[booking.recipe, booking.version].never_kept)
-        for first, last in unstaffed(classes.known, booking, never_kept=kept):
+        kept = booking.number in {each.booking for each in plan.watch}
+        for first, last in must_be_here(classes.known, booking, never_kept=kept):
             rows.append(Due(f"{clock(first)} to {clock(last)}: for {booking.number}"))
     return rows
 
@@ -116,8 +117,10 @@ def _short(plan: Plan) -> list[Due]:
 
 
 def _checks(plan: Plan, *, optional: bool) -> list[Due]:
-    days = sorted({check.best for check in plan.checks if check.best <= plan.as_at})
+    late = set() if optional else leaned_on_late(plan)
     row = tuple(check for check in plan.checks if check.optional is optional)
+    row = tuple(c for c in row if c.best <= plan.as_at or c.subject in late)
+    days = sorted({check.best for check in row})
     return [_due(job) for on in days for job in checks_on(replace(plan, checks=row), on)]
 
 

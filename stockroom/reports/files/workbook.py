@@ -25,6 +25,9 @@ TEXT, NUMBER, HEADING, LINE_OF_TEXT = "text", "number", "heading", "line of text
 LONGEST = 32_767
 """Characters a cell may hold. Source: the published limits of the format's first program."""
 
+PAPERS = {"A4": 9, "Letter": 1}
+"""The papers it can be set up for, by the number the format has for them."""
+
 FIRST = "About"
 """The name of the first sheet."""
 
@@ -34,8 +37,8 @@ _MODIFIED = re.compile(rb"(<dcterms:modified[^>]*>)[^<]*")
 _DAY_OF_ZIP = (1980, 1, 1, 0, 0, 0)
 
 
-def workbook_bytes(book: Workbook) -> bytes:
-    """The file: the same bytes for the same plan and day."""
+def workbook_bytes(book: Workbook, paper: str = "A4") -> bytes:
+    """The file, to print on one of `PAPERS`: the same bytes for the same plan and day."""
     from openpyxl import Workbook as Pages
 
     pages = Pages(write_only=True)
@@ -43,9 +46,9 @@ def workbook_bytes(book: Workbook) -> bytes:
     pages.properties.title = _text(book.house)
     pages.properties.created = datetime.combine(book.as_at, time())
     _styles(pages)
-    _first(pages, book)
+    _first(pages, book, paper)
     for sheet in book.sheets:
-        _page(pages, sheet, book)
+        _page(pages, sheet, book, paper)
     drawn = io.BytesIO()
     pages.save(drawn)
     return _settled(drawn.getvalue(), book)
@@ -66,11 +69,11 @@ def _settled(written: bytes, book: Workbook) -> bytes:
     return drawn.getvalue()
 
 
-def _first(pages: Any, book: Workbook) -> None:
+def _first(pages: Any, book: Workbook, paper: str) -> None:
     page = pages.create_sheet(FIRST)
     page.column_dimensions["A"].width = 20
     page.column_dimensions["B"].width = WIDEST
-    _for_paper(page, book)
+    _for_paper(page, book, paper)
     for line in book.about:
         page.append([_styled(page, line, HEADING if line in book.about[:2] else LINE_OF_TEXT)])
     page.append([])
@@ -79,7 +82,7 @@ def _first(pages: Any, book: Workbook) -> None:
         page.append([_styled(page, sheet.name, HEADING), _styled(page, rows)])
 
 
-def _page(pages: Any, sheet: Sheet, book: Workbook) -> None:
+def _page(pages: Any, sheet: Sheet, book: Workbook, paper: str) -> None:
     page = pages.create_sheet(sheet.name)
     widths = _widths(sheet)
     for number, width in enumerate(widths):
@@ -90,7 +93,7 @@ def _page(pages: Any, sheet: Sheet, book: Workbook) -> None:
     page.freeze_panes = "A2"
     page.print_title_rows = "1:1"
     page.auto_filter.ref = f"A1:{_letter(len(sheet.headings) - 1)}{len(sheet.rows) + 1}"
-    _for_paper(page, book)
+    _for_paper(page, book, paper)
     page.append([_styled(page, heading, HEADING) for heading in sheet.headings])
     for row in sheet.rows:
         page.append([_value(page, cell) for cell in row])
@@ -126,9 +129,9 @@ def _lines(text: str, width: int) -> int:
     return sum(len(wrap(part, width - 5)) if len(part) + 2 > width else 1 for part in parts)
 
 
-def _for_paper(page: Any, book: Workbook) -> None:
+def _for_paper(page: Any, book: Workbook, paper: str) -> None:
     page.page_setup.orientation = "landscape"
-    page.page_setup.paperSize = 9
+    page.page_setup.paperSize = PAPERS[paper]
     page.page_setup.fitToWidth, page.page_setup.fitToHeight = 1, 0
     page.sheet_properties.pageSetUpPr.fitToPage = True
     # an ampersand begins a code there, and more than 255 characters are refused

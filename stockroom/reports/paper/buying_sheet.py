@@ -14,13 +14,15 @@ from stockroom.reports.words import TIED, amount, counted, day, listed, money, r
 
 NO_SUPPLIER = "Supplier not entered"
 NOTHING = "Nothing to order in this period."
+SHOWN = 3
+"""How many ways round stand on the sheet. Our choice."""
 
 
 @dataclass(frozen=True, slots=True)
 class Row:
     """One order: `late` in words, "" while there is time; `paid` by which department.
 
-    `instead` is the first way round where it comes too late; `stockroom why` tells them all.
+    `instead` is the first ways round where it comes too late; `stockroom buying` tells them all.
     """
 
     key: str
@@ -177,9 +179,18 @@ def _row(order: Order, key: str) -> Row:
         paid=shared_by(order),
         served=listed(order.for_bookings),
         ask=ask,
-        instead=f"or {order.instead[0].text}" if order.instead else "",
+        instead=ways_round(order),
         why=why(order),
     )
+
+
+def ways_round(order: Order) -> str:
+    """The first way of each sort where it comes too late, three at most, and how many more."""
+    sorts = {one.what: one.text for one in reversed(order.instead)}
+    first = [sorts[what] for what in dict.fromkeys(one.what for one in order.instead)][:SHOWN]
+    more = len(order.instead) - len(first)
+    told = "; ".join(f"or {raised(text)}" for text in first)
+    return f"{told}; and {more} more: stockroom buying" if more else told
 
 
 def _awaited(one: Coming) -> Awaited:

@@ -53,9 +53,11 @@ class _Lines:
         row = [
             f"{self._change(key)}{self._with(one, whole)}" for one, key in changed.items() if one
         ]
-        for one in dict.fromkeys([*new, *gone]):
-            if one:
-                row.append(f"{self._came(new.get(one), gone.get(one))}{self._with(one, whole)}")
+        row += [
+            f"{self._came(new.get(one), gone.get(one))}{self._with(one, whole)}"
+            for one in dict.fromkeys([*new, *gone])
+            if one
+        ]
         rest = [key for key in self.gone if not _booking(key) and not _hangs(key, whole)]
         row += [f"gone: {self.before[key]}" for key in rest]
         rest = [key for key in self.marked if not _booking(key) and not _hangs(key, whole)]

@@ -149,14 +149,17 @@ class Lesson:
         return Item(what, "bought" if bought else origin, ", ".join(drawn), where)
 
     def _made(self, need: Answer) -> str:
-        """What is made or bought for it: by its day, since the plan's numbers move."""
+        """What is made or bought for it: by its day, since the plan's numbers move.
+
+        Its number stands once, under what is still to do.
+        """
         make = next((each for each in self.plan.makes if each.id == need.make), None)
         comes = f"after {need.order}" if need.order else ""
         if make is None:
             return f"once {need.order} has come" if need.order else ""
         when = made_when(make, self.plan.as_at)
-        when = "to be made that day" if make.on == self.booking.on else when
-        return f"{' '.join(filter(None, (when, comes)))} ({make.id})"
+        when = "to be made today" if make.on == self.booking.on else when
+        return f"{when} {comes}".strip()
 
     def _never_kept_begin(self) -> Iterator[Row]:
         for each in self.plan.watch:
@@ -171,8 +174,9 @@ class Lesson:
                 whose = f"what is left of {self._name()}"
                 what = f"DESTROYED BY {clock(each.destroy_by)}: {whose}, every vessel rinsed{by}"
                 # a container takes nothing of it before: these are of what then remains
-                waste = tuple(f"Once destroyed: {text}" for text in self._cautions(Step.WASTE))
-                how = (*destroyed_how(each.how), *waste)
+                waste = self._cautions(Step.WASTE)
+                after = (f"Once destroyed: {' '.join(waste)}",) if waste else ()
+                how = (*destroyed_how(each.how), *after)
                 row = self._row("destroy", each.destroy_by, DESTROY, what, cautions=how)
                 yield replace(row, must=True)
 

@@ -64,12 +64,13 @@ def times_of(known: Facts, plan: Plan, on: date) -> Times:
     day = _Backwards(known, on, classes)
     for minute in sorted({booking.minute for booking in classes}, reverse=True):
         same = [booking for booking in classes if booking.minute == minute]
-        for booking in sorted(same, key=lambda b: natural(b.number), reverse=True):
-            day.set_out(booking)
-        # what another is made from has the lower number, and so is begun before it
-        for make in sorted(plan.makes, key=lambda each: natural(each.id), reverse=True):
-            if make.on == on == make.ready and day.first_of(make) == minute:
-                day.make(make)
+        makes = [m for m in plan.makes if m.on == on == m.ready and day.first_of(m) == minute]
+        earlier, before = set(day.too_late), day.free
+        day.group(same, makes, SET_OUT)
+        if day.too_late != earlier:
+            # no half hour to spare, or nobody there yet: then by the class itself
+            day.too_late, day.free = earlier, before
+            day.group(same, makes, 0)
     return Times(day.outs, day.begun, frozenset(day.too_late))
 
 
@@ -86,29 +87,30 @@ class _Backwards:
         """When the first class of the day begins that a make is for; None for none."""
         return min((self.minutes[b] for b in make.bookings if b in self.minutes), default=None)
 
-    def set_out(self, booking: Booking) -> None:
-        takes = minutes_to_set_out(self.known, booking)
+    def group(self, classes: list[Booking], makes: list[Make], spare: int) -> None:
+        """Classes of one minute, all ready so many minutes before it, and what is made for them."""
+        for booking in sorted(classes, key=lambda b: natural(b.number), reverse=True):
+            self._set_out(booking, spare)
+        # what another is made from has the lower number, and so is begun before it
+        for make in sorted(makes, key=lambda each: natural(each.id), reverse=True):
+            self._make(make)
+
+    def _set_out(self, booking: Booking, spare: int) -> None:
+        start = min(self.free, booking.minute - spare) - minutes_to_set_out(self.known, booking)
         opens, shuts = self.calendar.open_from, self.calendar.open_to
-        start = min(self.free, booking.minute - SET_OUT) - takes
-        if not opens <= start < shuts and self.calendar.is_open(self.on):
-            # no half hour to spare, or nobody there yet: then by the class itself
-            start = min(self.free, booking.minute) - takes
-        if booking.minute >= opens > start:
+        staffed = opens <= start < shuts or not self.calendar.is_open(self.on)
+        if not staffed and (spare or booking.minute >= opens > start):
             self.too_late.add(booking.number)
-            start = opens
+        if booking.minute >= opens:
+            start = max(start, opens)
         self.outs[booking.number] = self.free = max(start, 0)
 
-    def make(self, make: Make) -> None:
+    def _make(self, make: Make) -> None:
         method = self.known.methods.get(make.line)
         opens = self.calendar.open_from
-        due = self.first_of(make) or 0
         outs = min(self.outs[b] for b in make.bookings if b in self.outs)
-        begun = None
-        for ready in (outs, due):
-            if method is not None and begun is None:
-                begun = latest_start((make.on, ready), method, self.calendar, make.on)
-        minute = begun[1] if begun else opens
-        start = min(minute, self.free - make.minutes)
+        begun = latest_start((make.on, outs), method, self.calendar, make.on) if method else None
+        start = min(begun[1] if begun else opens, self.free - make.minutes)
         if begun is None or start < opens:
             self.too_late.add(make.id)
         self.begun[make.id] = self.free = max(start, opens)

@@ -86,21 +86,22 @@ def since(number: str, before: Mapping[str, str], now: Mapping[str, str], today:
     """The copy of that number, which said `before`, against what the sheet says now.
 
     Lines are told apart by their keys; their order does not count. A key that begins with a
-    day before `today` is left out: what was done since is no change of the plan.
+    day before `today` is left out: what was done since is no change of the plan. So is one
+    that says nothing, "", in either: it is there and was not to be held against anything.
     """
     marked = tuple(
-        key for key, said in now.items() if before.get(key) != said and not _over(key, today)
+        key
+        for key, said in now.items()
+        if said and before.get(key) not in (said, "") and not _over(key, today)
     )
     changes = [change_words(before.get(key), now[key]) for key in marked]
     gone = gone_since(before, now, today)
     return Since(number, marked, (*changes, *(f"gone: {before[key]}" for key in gone)))
 
 
-def gone_since(
-    before: Mapping[str, str], now: Mapping[str, str], today: date
-) -> tuple[str, ...]:
+def gone_since(before: Mapping[str, str], now: Mapping[str, str], today: date) -> tuple[str, ...]:
     """The keys of lines that the copy before had and the sheet has no more."""
-    return tuple(key for key in before if key not in now and not _over(key, today))
+    return tuple(k for k in before if before[k] and k not in now and not _over(k, today))
 
 
 def _over(key: str, today: date) -> bool:

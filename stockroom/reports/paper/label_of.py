@@ -14,6 +14,7 @@ from stockroom.keeping.verdict import Condition, Verdict, verdict
 from stockroom.measure.days import MONTHS
 from stockroom.measure.formats import format_strength
 from stockroom.measure.periods import format_period
+from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import Make
 from stockroom.planning.facts import Bottle, Form, Line, Place
 from stockroom.reports.paper.label import UNKNOWN, HazardText, Label, Sort
@@ -176,7 +177,7 @@ def strength_words(bottle: Bottle, line: Line, found: Verdict) -> tuple[str, str
     known, nominal = found.strengths, raised(line.strength_text)
     if known.found is not None and known.found_on is not None and line.unit:
         said = f"found {short_day(known.found_on)}"
-        return format_strength(known.found, line.unit), said
+        return raised(say_strength(line, known.found)), said
     if bottle.record.blend is not None and line.unit:
         how = f", {bottle.known_by}" if bottle.known_by else ""
         blend = bottle.record.blend

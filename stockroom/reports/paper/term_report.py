@@ -57,13 +57,19 @@ class TermReport:
     load: Load
 
 
-def term_report_of(known: Facts, plan: Plan, left: Sequence[Left]) -> TermReport:
-    """The report of a term as at the plan's day; `left` is what went unused up to it."""
+def term_report_of(
+    known: Facts, plan: Plan, left: Sequence[Left], *, entered: bool = True
+) -> TermReport:
+    """The report of a term as at the plan's day; `left` is what went unused up to it.
+
+    `entered` is False where there is no term, and the plan's own days are taken for one.
+    """
     uses = [use for use in plan.usage if use.form == BOUGHT]
     misses = misses_of(plan)
     held = [b for b in known.bookings if b.firmness is not Firmness.DROPPED]
     held = [b for b in held if known.start <= b.on <= known.end]
     about = f"{known.start} to {known.end}; what is still to come is planned, and so an estimate"
+    about = about if entered else f"No term is entered: stockroom add terms. {about}"
     return TermReport(
         head=head_of(plan, "The term's report", about),
         sentences=(
@@ -115,11 +121,12 @@ def _money_in_words(plan: Plan) -> str:
     promised = sum(one.promised for one in plan.budgets)
     over = [f"{one.department} {left_of(one)}" for one in plan.budgets if (one.left or 0) < 0]
     limits = [one.left for one in plan.budgets if one.left is not None]
+    later = f" and {money(promised)} still to be ordered" if promised else ""
     told = f"{money(spent)} is ordered and {money(promised)} still to be ordered"
     if over:
         return f"{told}, which puts {' and '.join(over)}."
     if not limits:
-        return f"{told}; no department has a limit."
+        return f"{money(spent)} is ordered{later}; no department has a limit."
     return f"{told}, and no department goes over: {money(sum(limits))} is left in all."
 
 

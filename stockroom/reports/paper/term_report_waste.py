@@ -114,6 +114,11 @@ def _bottle(one: Left) -> str:
     return f"{one.bottle}, {one.way}" if one.how == POURED and one.way else one.bottle
 
 
+def _said(one: Left) -> str:
+    reason = reason_of(one.why)
+    return reason if reason != OTHER else one.why.strip() or "no reason given"
+
+
 def poured_in_words(left: Sequence[Left]) -> str:
     """The sentence on what was poured away, spilled and lent."""
     gone, spilled, lent = (
@@ -123,11 +128,10 @@ def poured_in_words(left: Sequence[Left]) -> str:
     )
     if not (gone or spilled or lent):
         return "Nothing is entered as poured away, spilled or lent this term."
-    by_reason = [
-        f"{sum(reason_of(one.why) == reason for one in gone)} {reason}"
-        for reason in (*REASONS, OTHER)
-        if any(reason_of(one.why) == reason for one in gone)
-    ]
+    # a reason in words of one's own is said in them
+    said = [_said(one) for one in gone]
+    order = [each for each in dict.fromkeys((*REASONS, *said)) if each in said]
+    by_reason = [f"{said.count(each)} {each}" for each in order]
     why = f" ({', '.join(by_reason)})" if by_reason else ""
     count = counted(len(gone), "bottle")
     verb = "was" if len(gone) == 1 else "were"

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+import shlex
 from collections import Counter
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
@@ -67,6 +68,7 @@ class WalkSheet:
     """The whole walk; `look_out` are bottles not found when last looked for, and where that was.
 
     `how` says how a count is written, as it is typed back; `unlisted` how a stranger is.
+    `met` are the bottles the walk has met already, which stand in no row.
     """
 
     head: Head
@@ -75,6 +77,7 @@ class WalkSheet:
     how: str
     unlisted: str
     typed: str
+    met: tuple[str, ...] = ()
 
 
 def walk_sheet_of(sheet: Sheet, on: date, wrong: Iterable[Finding] = ()) -> WalkSheet:
@@ -95,7 +98,8 @@ def walk_sheet_of(sheet: Sheet, on: date, wrong: Iterable[Finding] = ()) -> Walk
         tuple(_looked_for(row) for row in sheet.look_out),
         HOW,
         HOW_UNLISTED,
-        f'stockroom walk "{walk.name}" --enter{again}',
+        f"stockroom walk {shlex.quote(walk.name)} --enter{again}",
+        () if sheet.again else tuple(visit.bottle for visit in sheet.visits),
     )
 
 
@@ -170,10 +174,13 @@ def _cells(row: Row) -> tuple[str, str, str]:
 
 
 def walk_sheet_lines(sheet: WalkSheet) -> dict[str, str]:
-    """Each bottle by its number: where it stands, what it is, what should be in it."""
+    """Each bottle by its number: where it stands, what it is, what should be in it.
+
+    One that the walk has met says nothing, so that it is not told as gone from the sheet.
+    """
     told = {row.number: _line(shelf, row) for shelf in sheet.shelves for row in shelf.rows}
     looked = {each.number: f"look out for {each.number} {each.text}" for each in sheet.look_out}
-    return told | looked
+    return dict.fromkeys(sheet.met, "") | told | looked
 
 
 def _line(shelf: Shelf, row: Row) -> str:

@@ -69,11 +69,11 @@ def _loads(plan: Plan, monday: date, sunday: date) -> Iterator[Also]:
 
 
 def _standing(known: Facts) -> Iterator[Also]:
-    for each in _once(where_things_stand(known.bottles, known.lines, known.places)):
+    for each in told_once(where_things_stand(known.bottles, known.lines, known.places)):
         yield Also(f"standing {each.subject} {each.text}", each.subject, raised(each.text))
 
 
-def _once(findings: list[Finding]) -> list[Finding]:
+def told_once(findings: list[Finding]) -> list[Finding]:
     """Each wrong pair told once, by the bottle that has the most of them."""
     pairs = {each: _pairs(each) for each in findings}
     told: set[tuple[frozenset[str], str]] = set()

@@ -14,9 +14,9 @@ from stockroom.planning.facts import EXACT, Booking, Facts
 from stockroom.planning.known import how_known
 from stockroom.planning.making.make_card import goes_of
 from stockroom.planning.timing import hours
-from stockroom.reports.paper.day_times import times_of
+from stockroom.reports.paper.day_times import TOO_LATE, times_of
 from stockroom.reports.paper.week_parts import Job, made, short_day, tied, volume
-from stockroom.reports.words import amount, listed, named, raised
+from stockroom.reports.words import listed, measured, named, raised
 from stockroom.safety.cautions import Step, cautions_about
 
 TOO_LITTLE = 5_000
@@ -43,11 +43,18 @@ class Makes:
         """What is finished that was begun before, then what is made; timed ones first of these."""
         finished = [self._finish(m) for m in self.plan.makes if m.finish_on == on > m.on]
         row = [make for make in self.plan.makes if make.on == on == make.ready]
-        times = times_of(self.known, self.plan, on).makes
+        day = times_of(self.known, self.plan, on)
+        times = day.makes
         jobs = [
-            replace(self._job(make), time=format_time(times[make.id])) for make in _by(times, row)
+            self._timed(make, times[make.id], late=make.id in day.too_late)
+            for make in _by(times, row)
         ]
         return [*finished, *jobs, *(self._job(make) for make in row if make.id not in times)]
+
+    def _timed(self, make: Make, minute: int, *, late: bool) -> Job:
+        job = self._job(make)
+        more = (*job.more, TOO_LATE) if late else job.more
+        return replace(job, time=format_time(minute), more=more)
 
     def _job(self, make: Make) -> Job:
         method = self.known.methods[make.line]
@@ -94,17 +101,17 @@ class Makes:
         return f"from {' + '.join(row)}" if row else ""
 
     def _source(self, make: Make, draw: Draw) -> str:
-        measured = amount(draw.amount, draw.kind)
+        much = measured(draw.amount, draw.kind)
         if draw.make in self.by_id and not draw.bottle:
             part = self.by_id[draw.make]
-            return f"{measured} of {made(part)} (made {short_day(part.ready)})"
+            return f"{much} of {made(part)} (made {short_day(part.ready)})"
         if not draw.bottle:
-            return f"{measured} of {named(draw.item, '')} (to be bought)"
+            return f"{much} of {named(draw.item, '')} (to be bought)"
         bottle = self.bottles[draw.bottle]
         line = self.known.lines[bottle.line]
         place = f" in {bottle.place}" if bottle.place else ""
         number = tied(f"of {bottle.number}")
-        origin = f"{measured} {number} {named(line.item, line.strength_text)}{place}"
+        origin = f"{much} {number} {named(line.item, line.strength_text)}{place}"
         if not (line.strength and draw.strength) or not self._by_strength(make, bottle.line):
             return origin
         usual = round(draw.amount * draw.strength / line.strength)
@@ -112,7 +119,7 @@ class Makes:
             return origin
         known = how_known(bottle, strengths_on(bottle.record, line.rules, make.on))
         said = say_strength(line, draw.strength)
-        return f"{origin} (expected {said}, {known}), not {amount(usual, draw.kind)}"
+        return f"{origin} (expected {said}, {known}), not {measured(usual, draw.kind)}"
 
     def _by_strength(self, make: Make, line: str) -> bool:
         """Whether its amount follows from how strong it is, and from nothing else."""

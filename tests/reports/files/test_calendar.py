@@ -16,7 +16,7 @@ import recurring_ical_events
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Firmness
 from stockroom.planning.plan import plan
-from stockroom.reports.files.calendar import Calendar, State, calendar_lines, calendar_of
+from stockroom.reports.files.calendar import Calendar, State, calendar_lines, calendar_of, counts
 from stockroom.reports.files.calendar_ics import calendar_bytes
 from stockroom.service.sheets import known_and_planned
 
@@ -76,7 +76,8 @@ def test_whole_days_end_before_the_next_and_ring_the_evening_before(
             assert alarms == [timedelta(0)]
             assert ends - begins == timedelta(minutes=30)
         else:
-            assert alarms == [timedelta(hours=-6)]
+            # the evening before today is over
+            assert alarms == ([timedelta(hours=-6)] if begins > houses.MONDAY else [])
             assert ends - begins == timedelta(days=1)
 
 
@@ -115,6 +116,8 @@ def test_what_is_cancelled_is_withdrawn_once_and_comes_back_as_itself(
     assert booking.uid in gone
     assert all(e["sequence"] == 1 and "withdrawn: " in e["summary"] for e in gone.values())
     assert all(not event.walk("VALARM") for event in gone.values())
+    told = "Withdrawn: done or no longer needed."
+    assert all(event["description"].startswith(told) for event in gone.values())
     third = calendar_of(*dropped, calendar_lines(second))
     assert calendar_bytes(third) == calendar_bytes(second)
     back = calendar_of(*college, calendar_lines(third))
@@ -166,3 +169,40 @@ def test_what_cannot_be_read_of_the_last_file_is_entered_anew(
 ) -> None:
     found = calendar_of(*college, {"x": kept})
     assert {entry.state for entry in found.entries} == {State.NEW}
+
+
+def test_what_is_over_and_what_is_withdrawn_are_counted_apart(
+    college: tuple[Facts, Plan],
+) -> None:
+    known, made = college
+    first = calendar_of(known, made)
+    late = replace(known, as_at=date(2027, 1, 20))
+    second = calendar_of(late, plan(late), calendar_lines(first))
+    gone = [entry for entry in second.entries if entry.withdrawn]
+    planned = len(second.entries) - len(gone)
+    said = counts(second)
+    assert said.startswith(f"{planned} entries: ")
+    assert said.endswith(f"; {len(gone)} withdrawn; {len(second.over)} over, left out")
+    new = [entry for entry in second.entries if entry.state is State.NEW]
+    assert len(first.entries) + len(new) == planned + len(gone) + len(second.over)
+
+
+def test_a_late_order_stays_where_it_was_put_out_until_it_is_placed(
+    college: tuple[Facts, Plan],
+) -> None:
+    known, made = college
+    (order,) = [o for o in made.orders if o.order_by <= made.as_at][:1]
+    made = replace(made, orders=(order,))
+    first = calendar_of(known, made)
+    later = replace(made, as_at=made.as_at + timedelta(days=2))
+    second = calendar_of(known, later, calendar_lines(first))
+    (entry,) = [e for e in second.entries if e.work.kind == "order"]
+    assert entry.work.on == made.as_at
+    (event,) = [e for e in read(second) if e.categories == ["order"]]
+    assert not event.walk("VALARM")
+    placed = replace(later, orders=())
+    third = calendar_of(known, placed, calendar_lines(second))
+    (entry,) = [e for e in third.entries if e.work.kind == "order"]
+    assert entry.withdrawn
+    fourth = calendar_of(known, placed, calendar_lines(third))
+    assert not [e for e in fourth.entries if e.work.kind == "order"]

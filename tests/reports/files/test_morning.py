@@ -9,10 +9,12 @@ from pathlib import Path
 import houses
 import pytest
 
-from stockroom.planning.decisions import Plan
-from stockroom.planning.facts import Facts
+from stockroom.planning.decisions import Plan, Short
+from stockroom.planning.facts import Drawn, Facts
+from stockroom.planning.people import must_be_here
 from stockroom.planning.plan import plan
 from stockroom.reports.files.morning import Morning, morning_of, morning_text
+from stockroom.reports.files.morning_shelf import at_the_shelf, leaned_on_late, not_written
 from stockroom.service.sheets import known_and_planned
 
 
@@ -82,3 +84,66 @@ def test_a_closed_day_with_nothing_says_both() -> None:
         "this house",
         "Closed today.",
     ]
+
+
+def test_what_can_hurt_is_due_every_day_until_it_is_mended(college_file: Path) -> None:
+    known, made = known_and_planned(college_file, as_at=houses.MONDAY)
+    note = morning_of(known, made)
+    (part,) = [each for each in note.parts if each.title == "AT THE SHELF"]
+    assert part.counted
+    assert [due.what.split()[0] for due in part.rows] == ["S19", "B04", "S12"]
+    assert "tight cap" in part.rows[0].more[0]
+    # B29 forms peroxides: its safety date is 2 March
+    on = houses.day("03-03")
+    (first, *_) = at_the_shelf(replace(known, as_at=on))
+    assert first.what.startswith("B29 ")
+    assert "do not open or move it; ask" in first.more[0]
+    mended = tuple(replace(b, place="", cap="") for b in known.bottles)
+    assert at_the_shelf(replace(known, bottles=mended)) == []
+
+
+def test_an_overdue_check_is_due_once_a_class_leans_on_it(college_file: Path) -> None:
+    """Scenario T12: S02, which nobody needs before March, is not nagged about."""
+    known, made = known_and_planned(college_file, as_at=houses.MONDAY)
+    assert leaned_on_late(made) == set()
+    (check,) = [each for each in made.checks if each.subject == "B27"]
+    soon = tuple(
+        replace(n, booking=replace(n.booking, on=houses.day("01-18")))
+        if n.booking.number in check.bookings
+        else n
+        for n in made.needs
+    )
+    near = replace(made, needs=soon)
+    assert leaned_on_late(near) == {"B27"}
+    (part,) = [each for each in morning_of(known, near).parts if each.title == "CHECK"]
+    assert [due.what for due in part.rows] == ["titrate B27 bromine water 0.2 mol/dm³"]
+
+
+def test_a_class_that_is_over_with_nothing_entered_is_asked_for(college_file: Path) -> None:
+    known, _ = known_and_planned(college_file, as_at=houses.day("01-19"))
+    (due,) = not_written(known)
+    assert due.what == "K01, K02, K04, K03"
+    drawn = tuple(Drawn("B01", "x", known.as_at, 1, number) for number in ("K01", "K02", "K04"))
+    (due,) = not_written(replace(known, drawn=drawn))
+    assert (due.what, due.more) == ("K03", ("nothing is entered as drawn for it",))
+    assert not_written(replace(known, as_at=known.start)) == []
+
+
+def test_a_class_that_is_short_is_counted(college: tuple[Facts, Plan]) -> None:
+    known, made = college
+    need = next(each for each in made.needs if each.booking.on >= made.as_at)
+    lack = Short(
+        need.ref, need.booking.number, need.item, need.strength, 1, need.kind, "none is left"
+    )
+    today = replace(made, as_at=need.booking.on, short=(lack,))
+    note = morning_of(known, today)
+    (part,) = [each for each in note.parts if each.title.startswith("CANNOT BE HAD")]
+    assert part.counted
+    assert len(part.rows) == 1
+
+
+def test_on_a_closed_day_somebody_must_be_here_for_all_of_it() -> None:
+    known = houses.house([])
+    closed = replace(houses.booking("K01", "01-09", 555), lasts_minutes=60)
+    assert must_be_here(known, closed, never_kept=False) == [(525, 615)]
+    assert must_be_here(known, closed, never_kept=True) == [(525, 645)]

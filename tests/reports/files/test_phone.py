@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import replace
 from datetime import date
 from pathlib import Path
@@ -43,15 +44,22 @@ def fits(phone: Phone, practice: bool = True) -> None:
     assert all(0 < len(line) <= 38 for line in lines), lines
     assert ("PRACTICE" in phone_text(phone)) is practice
     assert any(line.startswith("Ready: ") for line in lines[:3])
-    if phone.more:
-        assert lines[-1] == f"and {phone.more} more on the sheet"
+    if phone.more or phone.to_do:
+        assert re.fullmatch(r"and (\d+ to do(, \d+ more)?|\d+ more) on the sheet", lines[-1])
+
+
+def test_what_is_left_out_is_what_is_to_do_and_not_told(college: tuple[Facts, Plan]) -> None:
+    phone = phone_of(*college, date(2027, 3, 23))
+    # of 13, the titration and the washing-up liquid are told
+    assert phone.lines[1] == "Ready: NO, NOT YET: 13 to do  PRACTICE"
+    assert (phone.lines[-1], phone.to_do) == ("and 11 to do, 3 more on the sheet", 11)
 
 
 def test_what_is_missing_comes_before_what_is_to_do(college: tuple[Facts, Plan]) -> None:
     lines = phone_of(*college, ON, "K01").lines
     assert lines[:3] == (
         "Tue 12 Jan 09:15 K01 Flame tests",
-        "Ready: NO, 1 to do  PRACTICE",
+        "Ready: NO, NOT YET: 1 to do  PRACTICE",
         "Missing: lithium chloride",
     )
     assert lines[-1] == "Other 5 ready"

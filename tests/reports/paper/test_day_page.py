@@ -24,6 +24,7 @@ from stockroom.planning.facts import (
     Recipe,
     Swap,
 )
+from stockroom.planning.leaned_on import leaned_on
 from stockroom.planning.plan import plan
 from stockroom.reports.paper.day import Day, day_of
 from stockroom.reports.paper.day_class import Row, destroyed_how, handling_of, mixed_how
@@ -31,6 +32,7 @@ from stockroom.reports.paper.day_notes import NO_REFERENCE, OVERDUE
 from stockroom.reports.paper.day_strengths import DILUTED, EXPECTED, FOUND, Known, two_figures
 from stockroom.reports.paper.day_text import DAY
 from stockroom.reports.typesetting import typeset
+from stockroom.reports.words import raised
 from stockroom.service.sheets import known_and_planned
 
 OPEN_DAY, EVENING = date(2027, 3, 23), date(2027, 2, 10)
@@ -68,8 +70,10 @@ def test_the_open_day_in_the_order_of_the_clock(page_of: PageOf) -> None:
     told = timed(page_of(OPEN_DAY))
     order = [
         ("day before", "Splints soak overnight"),
-        ("12:50", "begin hydrogen peroxide"),
-        ("13:00", "set out for K26"),
+        ("11:55", "begin hydrogen peroxide"),
+        ("12:05", "set out for K26"),
+        ("12:25", "set out for K28"),
+        ("12:50", "set out for K29"),
         ("13:00", "NOT BEFORE 13:00"),
         ("13:30", "START K26, K27, K28, K29"),
         ("15:10", "END K26, K27, K28, K29"),
@@ -126,7 +130,12 @@ def test_cautions_stand_beside_their_step(page_of: PageOf) -> None:
     assert "sulfur dioxide" in by_key["K28 set out"]
     assert "30 min before use" in by_key["K27 mix"]
     assert "excess sodium chloride" in by_key["K27 destroy"]
-    assert "chloramines" in by_key["end 15:10"]
+    # no container takes anything that is not destroyed yet
+    assert by_key["end 15:10"] == ""
+    assert "Once destroyed: silver nitrate: Oxidising" in by_key["K27 destroy"]
+    assert "chloramines" in by_key["K27 destroy"]
+    [end] = [row.what for row in rows(page_of(OPEN_DAY)) if row.key == "end 15:10"]
+    assert "first destroy what is never kept (K27), then clear away" in end
 
 
 def test_a_short_line_is_not_there_and_its_swaps_are(page_of: PageOf) -> None:
@@ -260,13 +269,55 @@ def test_a_closed_day_wants_somebody() -> None:
     bookings = [houses.booking("K01", "01-16")]
     sheet = house_page(houses.wants(STOCK, 1000), bookings=bookings, on=houses.day("01-16"))
     [here] = [row for row in rows(sheet) if row.key.startswith("here")]
-    assert "08:45 to 10:55" in here.what
+    assert "08:35 to 10:55" in here.what
 
 
 def test_fresh_makes_take_turns_and_are_ready_when_it_is_set_out() -> None:
     sheet = _two_fresh(houses.solution(0.2))
     begins = [(row.minute, row.at) for row in rows(sheet) if row.key.startswith("make")]
-    assert [at for _, at in begins] == ["08:25", "08:35"]
+    assert [at for _, at in begins] == ["08:15", "08:25"]
+
+
+def test_each_class_has_its_own_time_to_be_set_out(page_of: PageOf) -> None:
+    outs = {row.booking: (row.at, row.what) for row in rows(page_of(OPEN_DAY)) if row.items}
+    assert [at for at, _ in outs.values()] == ["12:05", "12:15", "12:25", "12:50"]
+    assert outs["K28"][1].replace("\xa0", " ").endswith(", 25 min")
+
+
+def test_what_does_not_fit_before_the_class_says_so() -> None:
+    bookings = [houses.booking("K01", "01-12", minute=495)]
+    wanted = houses.wants(WEAK, houses.cm3(50), fresh=True)
+    sheet = house_page(wanted, bookings=bookings, bottles=[stock_found(1.0)])
+    told = " ".join(row.what for row in rows(sheet))
+    assert "does not fit before the class for one pair of hands" in told
+
+
+def test_what_is_not_made_yet_is_to_be_made_and_an_order_is_not_set_out(page_of: PageOf) -> None:
+    items = [item for row in rows(page_of(OPEN_DAY)) for item in row.items]
+    origins = {item.what.split(" 0")[0]: item.origin.replace("\xa0", " ") for item in items}
+    assert origins["lithium chloride"] == "to be made Mon 22 Mar after O01"
+    assert origins["silver nitrate"] == "to be made Mon 22 Mar"
+    assert origins["hydrogen peroxide"] == "to be made today"
+    to_do = page_of(OPEN_DAY).parts[0].to_do
+    assert "order O01: lithium chloride, 1 × 100 g, by 2026-12-11" in [
+        each.replace("\xa0", " ") for each in to_do
+    ]
+
+
+def test_a_closed_day_says_why(college: tuple[Facts, Plan]) -> None:
+    sheet = day_of(*college, date(2027, 2, 16), closed="mid-term week")
+    assert sheet.head.about == "Closed: mid-term week."
+
+
+def test_the_day_and_the_week_guess_alike(college: tuple[Facts, Plan], page_of: PageOf) -> None:
+    known, made = college
+    for number in ("K08", "K11", "K26"):
+        needs = tuple(need for need in made.needs if need.booking.number == number)
+        guesses = [raised(each.text) for each in leaned_on(known, made, needs)]
+        told = page_of(needs[0].booking.on, number).parts[0].guessed
+        assert [each.replace("\xa0", " ").split(": ", 1)[1] for each in told] == guesses
+    on_the_day = " ".join(page_of(date(2027, 1, 26)).parts[0].guessed)
+    assert "its check falls due" not in on_the_day
 
 
 def _two_fresh(other: Any) -> Day:
@@ -335,7 +386,7 @@ def test_the_open_day_is_one_side(page_of: PageOf) -> None:
     assert paper_reading.greys_only(pdf)
     told = paper_reading.words(pdf)
     for words in (
-        "NOT YET: 13 things to do",
+        "NO, NOT YET: 13 things to do",
         "PRACTICE",
         "DESTROYED BY 15:40",
         "must be ticked",
@@ -351,7 +402,7 @@ def test_the_open_day_is_one_side(page_of: PageOf) -> None:
 def test_the_verdict_is_the_biggest_thing(page_of: PageOf) -> None:
     seen = paper_reading.pieces(printed(page_of(EVENING)))
     tallest = max(seen, key=lambda piece: piece.top - piece.bottom)
-    assert tallest.text.startswith("NOT YET")
+    assert tallest.text.startswith("NO, NOT YET")
 
 
 def hideous(count: int) -> Day:

@@ -12,8 +12,8 @@ from houses import bought_bottle, g, solid
 from stockroom.findings import Finding
 from stockroom.planning.facts import Line, Place
 from stockroom.planning.on_shelf import OnShelf, on_shelf
-from stockroom.planning.walking import Sheet, Walk
-from stockroom.reports.paper.head import Since
+from stockroom.planning.walking import Met, Sheet, Visit, Walk
+from stockroom.reports.paper.head import Since, since
 from stockroom.reports.paper.walk_sheet import (
     WALK,
     WalkSheet,
@@ -99,7 +99,7 @@ def test_what_stands_wrong_is_told_at_its_place_only() -> None:
 
 def test_counting_again_says_so_in_what_is_typed_back() -> None:
     sheet = walk_sheet_of(walk_of(standing("B01", DRY), again=True), ON)
-    assert sheet.typed == 'stockroom walk "Jan" --enter --again'
+    assert sheet.typed == "stockroom walk Jan --enter --again"
 
 
 def hideous() -> WalkSheet:
@@ -159,3 +159,15 @@ def test_each_bottle_is_held_against_the_last_copy() -> None:
     assert walk_sheet_lines(sheet)["B07"] == (
         "B07 sodium thiosulfate, ANHYDROUS, at A2, should be 500 g, ● sound"
     )
+
+
+def test_a_bottle_counted_meanwhile_is_not_told_as_gone() -> None:
+    rows = standing("B06", WET), standing("B07", WET)
+    before = walk_sheet_lines(walk_sheet_of(walk_of(*rows), ON))
+    met = Visit("B06", WET.key, WET.kind, Met.COUNTED, g(1), g(1), False, "T1", ON, 7)
+    half = walk_sheet_of(replace(walk_of(rows[1]), visits=(met,)), ON)
+    now = walk_sheet_lines(half)
+    assert now["B06"] == ""
+    assert since("0001", before, now, ON) == Since("0001", (), ())
+    # and with all of them once more, the one that was not on it is no change
+    assert since("0002", now, before, ON) == Since("0002", (), ())

@@ -1,0 +1,81 @@
+"""What the morning note says of the shelf: what stands wrong, what waits, what was not entered."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from datetime import timedelta
+
+from stockroom.findings import Finding
+from stockroom.keeping.verdict import Condition, verdict
+from stockroom.planning.decisions import Plan
+from stockroom.planning.facts import Facts, Firmness
+from stockroom.planning.standing import standing_there, where_things_stand
+from stockroom.reports.paper.week_also import told_once
+from stockroom.reports.words import listed, raised
+
+FORTNIGHT = timedelta(days=14)
+"""How far ahead a class makes a check urgent, how far back an entry is asked for. Our choice."""
+
+_NO_RULE = "neighbours not checked"
+
+
+@dataclass(frozen=True, slots=True)
+class Due:
+    """One thing: what it is, what goes with it, and the cautions of its step."""
+
+    what: str
+    more: tuple[str, ...] = ()
+    cautions: tuple[str, ...] = ()
+
+
+def at_the_shelf(known: Facts) -> list[Due]:
+    """Tight caps where gas is made, wrong neighbours, and what is past its safety date.
+
+    Due every day until it is mended: what can hurt does not become less by being told once.
+    """
+    stand = where_things_stand(known.bottles, known.lines, known.places)
+    wrong = [each for each in told_once(stand) if not each.text.startswith(_NO_RULE)]
+    item = {bottle.number: known.lines[bottle.line].item for bottle in known.bottles}
+    # the cap and the safety date first: they can hurt whoever does nothing
+    row = sorted([*_past(known), *wrong], key=lambda each: each.text.startswith("stands"))
+    return [
+        Due(f"{each.subject} {raised(item[each.subject])}", (raised(each.text),)) for each in row
+    ]
+
+
+def _past(known: Facts) -> list[Finding]:
+    found = []
+    for bottle in standing_there(known.bottles):
+        judged = verdict(bottle.record, known.lines[bottle.line].rules, known.as_at)
+        if judged.warning:
+            text = f"safety date {judged.good_until} ({judged.decided_by}): past it, "
+            found.append(Finding(bottle.number, text + judged.warning))
+    return found
+
+
+def leaned_on_late(plan: Plan) -> set[str]:
+    """The bottles whose check is overdue and which a class within a fortnight leans on."""
+    overdue = {each.bottle for each in plan.past if each.condition is Condition.WATCH}
+    soon = {need.booking.number for need in plan.needs if need.booking.on <= plan.as_at + FORTNIGHT}
+    return {
+        check.subject
+        for check in plan.checks
+        if check.subject in overdue and check.not_before <= plan.as_at and soon & {*check.bookings}
+    }
+
+
+def not_written(known: Facts) -> list[Due]:
+    """The firm classes of this term, of the last fortnight, for which no draw was entered."""
+    entered = {each.booking for each in known.drawn}
+    first = max(known.start, known.as_at - FORTNIGHT)
+    missed = [
+        booking.number
+        for booking in sorted(known.bookings, key=lambda one: (one.on, one.minute, one.number))
+        if booking.firmness is Firmness.FIRM
+        and first <= booking.on < known.as_at
+        and booking.number not in entered
+        and known.recipes[booking.recipe, booking.version].requirements
+    ]
+    what = "nothing is entered as drawn for it" if len(missed) == 1 else ""
+    what = what or "nothing is entered as drawn for them"
+    return [Due(listed(missed), (what,))] if missed else []
