@@ -8,9 +8,11 @@ from dataclasses import dataclass
 from datetime import date
 
 from stockroom.errors import BadInput, NotAllowed, StockroomError
+from stockroom.measure.workdays import Calendar
 from stockroom.planning.decisions import Make
-from stockroom.planning.facts import Bottle, Line, Place
+from stockroom.planning.facts import Bottle, Facts, Line, Place
 from stockroom.planning.on_shelf import OnShelf, on_shelf
+from stockroom.planning.tell import inherited_doubt
 from stockroom.safety.clp import Classification
 from stockroom.safety.hazards import Hazards
 from stockroom.service.hazard_names import House, house_of
@@ -38,7 +40,8 @@ class Labelled:
     house: str
     practice: bool
     places: tuple[Place, ...]
-    bottles: tuple[tuple[OnShelf, Hazards], ...]
+    bottles: tuple[tuple[OnShelf, Hazards, str], ...]
+    """Each with its hazards and the doubt it has from what it was made from, "" for none."""
     batches: tuple[tuple[Make, Line, Hazards], ...]
 
 
@@ -63,9 +66,12 @@ def labelled(
         every = bottles_of(reader, as_at, gone=True)
         wanted = _bottles(reader, every, places, words, place)
         rows = {r.bottle.number: r for r in on_shelf(wanted, lines, places, as_at, every)}
-        bottles: list[tuple[OnShelf, Hazards]] = []
+        known = Facts(as_at, as_at, as_at, Calendar(), lines=dict(lines), bottles=every)
+        bottles: list[tuple[OnShelf, Hazards, str]] = []
         for bottle in wanted:
-            bottles.append((rows[bottle.number], _hazards(house, lines[bottle.line], bottle)))
+            hazards = _hazards(house, lines[bottle.line], bottle)
+            doubt = inherited_doubt(known, bottle)
+            bottles.append((rows[bottle.number], hazards, doubt))
             if step:
                 step(len(bottles), len(wanted))
         batches = tuple((m, lines[m.line], _hazards(house, lines[m.line])) for m in makes)

@@ -101,3 +101,20 @@ def test_a_short_label_is_there_once_the_list_is_confirmed(
     ]
     assert label["sort"] == "short"
     assert label["hazards"]["statements"] == []
+
+
+def test_a_doubt_inherited_stands_on_the_label(practice: Path, stockroom: Stockroom) -> None:
+    told = stockroom("label", "S20", "S04", store=practice).said
+    ammonia, _, acid = told.partition("S04")
+    assert "made from B16 6 d after its recheck fell due: in doubt with it" in ammonia
+    assert "in doubt" not in acid
+
+
+def test_what_is_still_to_be_titrated_has_its_recheck_left_blank(
+    practice: Path, stockroom: Stockroom
+) -> None:
+    (label,) = stockroom("label", "M19", "--json", store=practice).json["labels"]
+    assert ["recheck by", ""] in label["dates"]
+    # known from the titration on Monday 1 February, and not from Friday's weighing
+    card = stockroom("card", "M19", store=practice).said
+    assert "recheck by Wed 2027-03-03" in card

@@ -5,14 +5,14 @@ from __future__ import annotations
 import re
 import shlex
 from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Any
 
-from stockroom.keeping.record import Record
+from stockroom.keeping.record import Check, CheckKind, Record
 from stockroom.keeping.verdict import verdict
 from stockroom.measure.amounts import Kind
 from stockroom.planning.decisions import Make, Plan
-from stockroom.planning.facts import Facts, Line
+from stockroom.planning.facts import Facts, Line, Method
 from stockroom.planning.making.make_card import goes_of
 from stockroom.reports.paper.card_hazards import Danger, dangers_of, wants_gloves
 from stockroom.reports.paper.card_sources import Taken, amounts_of, taken_of
@@ -113,7 +113,7 @@ def _card(known: Facts, plan: Plan, make: Make, hazards: Mapping[str, Hazards], 
         steps=tuple(steps),
         warnings=tuple(raised(each) for each in make.too_little),
         over=_over(make, line),
-        good_until=_good_until(make, line),
+        good_until=_good_until(make, line, known.methods.get(make.line)),
         dangers=dangers,
         blanks=_blanks(known, make),
         type_back=_type_back(make),
@@ -160,8 +160,12 @@ def waste_words(line: Line) -> tuple[str, ...]:
     return tuple(each.text for each in cautions_about([goes_of(line)], steps=(When.WASTE,)))
 
 
-def _good_until(make: Make, line: Line) -> str:
+def _good_until(make: Make, line: Line, method: Method | None) -> str:
     record = Record(made=make.on, nominal=line.strength, ready_on=make.ready)
+    if method is not None and method.titrated:
+        # what is titrated on finishing is known from that day, whatever comes of it
+        on = make.finish_on or make.ready
+        record = replace(record, checks=(Check(on, CheckKind.FOUND, strength=line.strength),))
     recheck = verdict(record, line.rules, make.ready).recheck_by
     if make.good_until == make.on:
         return "good that day only"

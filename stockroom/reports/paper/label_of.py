@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable
+from dataclasses import replace
 from datetime import date
 
 from stockroom.chemistry.formula import molar_mass
@@ -44,9 +45,17 @@ def short_day(when: date) -> str:
 
 
 def full_label(
-    bottle: Bottle, line: Line, found: Verdict, hazards: Hazards, places: Iterable[Place]
+    bottle: Bottle,
+    line: Line,
+    found: Verdict,
+    hazards: Hazards,
+    places: Iterable[Place],
+    doubt: str = "",
 ) -> Label:
-    """The label of a bottle that is there. Raises: NotAllowed for a formula instead of a name."""
+    """The label of a bottle that is there; `doubt` is what it has from what it was made from.
+
+    Raises: NotAllowed for a formula instead of a name.
+    """
     check_name(bottle.number, line.item)
     strength, known = strength_words(bottle, line, found)
     return Label(
@@ -58,7 +67,7 @@ def full_label(
         dates=tuple(_dates(bottle, line, found)),
         keep=keep_words(line, bottle.place, places),
         vented=_cap(line, bottle),
-        warning=_warning(found),
+        warning="; ".join(filter(None, (_warning(found), doubt))),
         hazards=hazard_text(hazards, bottle.number),
     )
 
@@ -91,7 +100,7 @@ def opened_strip(bottle: Bottle, line: Line, found: Verdict) -> Label:
     dates = (
         (came, short_day(first) if first else ""),
         ("opened", f"{short_day(opened)}{guess}" if opened else ""),
-        _use_by(found) if opened or not lasts else ("use by", ""),
+        *(_use_by(found) if opened or not lasts else [("use by", "")]),
     )
     note = f"use by: opened + {lasts}" if lasts and not opened else ""
     return Label(
@@ -106,12 +115,17 @@ def opened_strip(bottle: Bottle, line: Line, found: Verdict) -> Label:
     )
 
 
-def _use_by(found: Verdict) -> tuple[str, str]:
-    """The nearest day ahead that ends its use or the knowledge of it; a blank where none is set."""
+def _use_by(found: Verdict) -> Dates:
+    """The day that ends its use, and before it the one that ends the knowledge of it.
+
+    A blank where neither is set.
+    """
+    last = short_day(found.usable_until) if found.usable_until else ""
+    rows: Dates = [(_until_word(found, "use by"), last)]
     if found.recheck_by and (found.usable_until or date.max) > found.recheck_by:
-        return "recheck by", short_day(found.recheck_by)
-    word = _until_word(found, "use by")
-    return word, short_day(found.usable_until) if found.usable_until else ""
+        recheck = ("recheck by", short_day(found.recheck_by))
+        rows = [recheck, *rows] if last else [recheck]
+    return rows
 
 
 def _until_word(found: Verdict, usual: str) -> str:
@@ -143,7 +157,11 @@ def batch_label(make: Make, line: Line, hazards: Hazards, made_on: date | None) 
     record = Record(made=made, nominal=line.strength, ready_on=ready)
     dates: Dates = [("made", short_day(made))]
     dates += [("ready from", short_day(ready))] if ready != made else []
-    dates += until_rows(verdict(record, line.rules, ready))
+    # what is titrated on finishing is known from that day: nobody can print it before
+    titrated = make.finishing and any(rule.kind is RuleKind.RECHECK for rule in line.rules)
+    judged = verdict(record, line.rules, ready)
+    dates += until_rows(replace(judged, recheck_by=None) if titrated else judged)
+    dates += [("recheck by", "")] if titrated else []
     return Label(
         sort=Sort.FULL,
         number="",

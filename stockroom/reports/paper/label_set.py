@@ -44,7 +44,7 @@ class Wish:
 def labels_of(
     house: tuple[str, bool],
     as_at: date,
-    bottles: Iterable[tuple[OnShelf, Hazards]],
+    bottles: Iterable[tuple[OnShelf, Hazards, str]],
     batches: Iterable[tuple[Make, Line, Hazards]],
     places: tuple[Place, ...],
     wish: Wish,
@@ -53,7 +53,7 @@ def labels_of(
 
     Raises: NotAllowed for a formula instead of a name, or a short label that may not be.
     """
-    labels = [_of_bottle(row, found, places, wish) for row, found in bottles]
+    labels = [_of_bottle(row, found, doubt, places, wish) for row, found, doubt in bottles]
     batches = list(batches)
     if batches and wish.sort is not Sort.FULL:
         raise NotAllowed(
@@ -67,7 +67,9 @@ def labels_of(
     return Labels(head, wish.size, wish.grid, tuple(labels))
 
 
-def _of_bottle(row: OnShelf, found: Hazards, places: tuple[Place, ...], wish: Wish) -> Label:
+def _of_bottle(
+    row: OnShelf, found: Hazards, doubt: str, places: tuple[Place, ...], wish: Wish
+) -> Label:
     if row.line.key in _UNKNOWN:
         if wish.size[0] < FULL[0] or wish.size[1] < FULL[1]:
             raise NotAllowed(
@@ -80,4 +82,4 @@ def _of_bottle(row: OnShelf, found: Hazards, places: tuple[Place, ...], wish: Wi
     if wish.sort is Sort.SHORT:
         check_short(row.bottle, row.line, found)
         return short_label(row.bottle, row.line, row.verdict, found)
-    return full_label(row.bottle, row.line, row.verdict, found, places)
+    return full_label(row.bottle, row.line, row.verdict, found, places, doubt)
