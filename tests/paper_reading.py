@@ -7,6 +7,7 @@ from __future__ import annotations
 
 import io
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Any
 
 POINTS_TO_MM = 25.4 / 72
@@ -47,6 +48,7 @@ def sizes_mm(pdf: bytes) -> list[tuple[float, float]]:
     return [(round(w * POINTS_TO_MM, 1), round(h * POINTS_TO_MM, 1)) for w, h in sizes]
 
 
+@lru_cache(maxsize=4)
 def pieces(pdf: bytes) -> list[Piece]:
     """Every stretch of upright text with its box; the overprint, which is turned, left out."""
     import pypdfium2.raw
@@ -86,11 +88,12 @@ def outside(pdf: bytes, margin: float = 0.0) -> list[Piece]:
 
 def overlapping(pdf: bytes, slack: float = 0.8) -> list[tuple[str, str]]:
     """Pairs of stretches whose boxes lie over each other by more than `slack` points each way."""
-    found, seen = [], pieces(pdf)
+    # from the top of each page down, so that only what is level with it need be looked at
+    found, seen = [], sorted(pieces(pdf), key=lambda each: (each.page, -each.top))
     for place, one in enumerate(seen):
         for other in seen[place + 1 :]:
-            if one.page != other.page:
-                continue
+            if one.page != other.page or other.top <= one.bottom:
+                break
             across = min(one.right, other.right) - max(one.left, other.left)
             along = min(one.top, other.top) - max(one.bottom, other.bottom)
             if across > slack and along > slack:

@@ -1,12 +1,13 @@
 """Commands that only read start light: the heavy libraries stay on the shelf.
 
-Each command runs in an interpreter of its own, which says on leaving what it had
-loaded. pydantic is not on the list: whether the command line needs it is typer's
+They run one after another in an interpreter of their own, and what is loaded is looked
+at after each. pydantic is not on the list: whether the command line needs it is typer's
 affair, not ours.
 """
 
 from __future__ import annotations
 
+import json
 import os
 import subprocess
 import sys
@@ -32,6 +33,23 @@ atexit.register(tell)
 {act}
 """
 RUN = "from stockroom.cli.main import run\nraise SystemExit(run())"
+EACH = """
+import contextlib, io, json
+from stockroom.cli.main import run
+
+store, told = sys.argv[1], {}
+heavy, rows = json.loads(sys.argv[2])
+for words in rows:
+    code, out = 0, io.StringIO()
+    with contextlib.redirect_stdout(out):
+        try:
+            run(["--store", store, *words])
+        except SystemExit as leaving:
+            code = leaving.code or 0
+    loaded = [name for name in heavy if name in sys.modules]
+    told[" ".join(words)] = [code, bool(out.getvalue().strip()), loaded]
+print(json.dumps(told))
+"""
 
 READING = [
     ["plan"],
@@ -100,13 +118,32 @@ def left_loaded(act: str, *argv: str, folder: Path) -> tuple[list[str], str]:
     return told.removeprefix(TELL).split(), ran.stdout
 
 
-@pytest.mark.parametrize("words", READING, ids=" ".join)
-def test_a_reading_command_loads_nothing_heavy(
-    words: list[str], practice: Path, tmp_path: Path
-) -> None:
-    loaded, out = left_loaded(RUN, "--store", str(practice), *words, folder=tmp_path)
-    assert loaded == []
-    assert out.strip(), "it answered nothing, so it cannot have read"
+def after_each(rows: list[list[str]], store: Path, folder: Path) -> dict[str, list[object]]:
+    """Of each command, run one after another: its exit code, whether it answered, what is loaded.
+
+    One interpreter for all of them: the first that loads something is the one that is told.
+    """
+    _, out = left_loaded(EACH, str(store), json.dumps([HEAVY, rows]), folder=folder)
+    told: dict[str, list[object]] = json.loads(out)
+    return told
+
+
+def test_no_reading_command_loads_anything_heavy(practice: Path, tmp_path: Path) -> None:
+    told = after_each(READING, practice, tmp_path)
+    codes = {name: code for name, (code, _, _) in told.items() if code}
+    # these two end with 1 when there is something to do
+    assert {name.partition(" ")[0] for name in codes} <= {"ready", "morning"}
+    assert set(codes.values()) <= {1}
+    assert [name for name, (_, answered, _) in told.items() if not answered] == []
+    assert {name: loaded for name, (_, _, loaded) in told.items() if loaded} == {}
+    assert len(told) == len(READING)
+
+
+def test_the_command_that_loads_something_is_the_one_told(own: Path, tmp_path: Path) -> None:
+    rows = [["past"], ["week", "--print", "w.pdf"]]
+    told = after_each(rows, own, tmp_path)
+    assert told["past"] == [0, True, []]
+    assert "sqlalchemy" in str(told["week --print w.pdf"])
 
 
 def test_what_changed_is_told_with_nothing_heavy(own: Path, tmp_path: Path) -> None:
