@@ -11,6 +11,7 @@ import unicodedata
 from dataclasses import dataclass
 
 from stockroom.chemistry.equivalents import REACTIONS, Reaction
+from stockroom.chemistry.water_words import WATER_WORD
 from stockroom.errors import BadAmount
 
 _NUMBER = r"(?P<number>[0-9]+(?:\.[0-9]+)?)"
@@ -23,8 +24,7 @@ _STATED = (
 )
 _MOST = 24.0  # no mole of anything on a bench takes part in more steps than these
 _ARROWS = re.compile(r" ?(?:->|=>|→|⇌|⟶) ?")
-_HYDRATE = re.compile(r"[.·*•∙⋅ ][0-9]*h2o$|,? (?:anhydrous|(?:mono|di|tri|penta|hexa|hepta|deca"
-                      r"|dodeca)?hydrate)$")  # fmt: skip
+_HYDRATE = re.compile(rf"[.·*•∙⋅ ][0-9]*h2o$|,? {WATER_WORD}$")
 
 
 @dataclass(frozen=True, slots=True)

@@ -7,7 +7,9 @@ from typing import Annotated
 
 import typer
 
+from stockroom.cli.make_numbers import numbers_before
 from stockroom.cli.paper import Paper, Print, put_out
+from stockroom.cli.printing import tell
 from stockroom.cli.shared import of
 from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
@@ -56,4 +58,9 @@ def card(
         found.known, found.plan, found.makes, hazards, f"for {asked}: nothing to make up"
     )
     about = sheet.about if makes else asked
+    typed = {each.strip().upper() for each in makes or []}
+    named = {each.number: each.name for each in sheet.cards if each.number in typed}
+    told = numbers_before(shared, named)
     put_out(shared, CARD, sheet, about or asked, to=to, paper=paper)
+    for line in told:
+        tell(line)

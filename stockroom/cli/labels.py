@@ -10,50 +10,64 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from stockroom.cli.make_numbers import numbers_before
 from stockroom.cli.paper import Paper, Print, paper_of, put_out
-from stockroom.cli.shared import of
+from stockroom.cli.printing import tell
+from stockroom.cli.shared import Shared, of
 from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
 
 if TYPE_CHECKING:
     from stockroom.reports.paper.label import Sort
+    from stockroom.reports.paper.label_set import Wish
 
 _WORTH_A_BAR = 20
 """Labels from which on a bar is shown. Our choice: fewer are there before it is read."""
 
 
+What = Annotated[
+    list[str] | None,
+    typer.Argument(metavar="WHAT...", help="Bottles, makes (M14), names of things, or all."),
+]
+Place = Annotated[str, typer.Option(metavar="PLACE", help="All that stand there.")]
+Opened = Annotated[bool, typer.Option("--opened", help="Strips: received, opened, use by.")]
+Short = Annotated[bool, typer.Option("--short", help="For 125 cm³ or less.")]
+Confirm = Annotated[
+    bool, typer.Option("--confirm", help="With --short: you have read the list of classes.")
+]
+MadeOn = Annotated[
+    str | None, typer.Option("--made-on", metavar="DATE", help="Of a make: its real day.")
+]
+Size = Annotated[
+    str | None, typer.Option("--size", metavar="WxH", help="Of one label in mm: 70x37.")
+]
+Sheet = Annotated[
+    str | None, typer.Option("--sheet", metavar="NxM", help="Labels across and down: 3x8.")
+]
+Margin = Annotated[
+    str | None, typer.Option("--margin", metavar="LEFT,TOP", help="Of the sheet, in mm.")
+]
+Gap = Annotated[
+    str | None, typer.Option("--gap", metavar="ACROSS,DOWN", help="Between labels, in mm.")
+]
+Start = Annotated[
+    int, typer.Option("--start", metavar="N", help="The first free place of a used sheet.")
+]
+
+
 def label(
     ctx: typer.Context,
-    what: Annotated[
-        list[str] | None,
-        typer.Argument(metavar="WHAT...", help="Bottles, makes (M14), names of things, or all."),
-    ] = None,
-    place: Annotated[str, typer.Option(metavar="PLACE", help="All that stand there.")] = "",
-    opened: Annotated[
-        bool, typer.Option("--opened", help="Strips: received, opened, use by.")
-    ] = False,
-    short: Annotated[bool, typer.Option("--short", help="For 125 cm³ or less.")] = False,
-    confirm: Annotated[
-        bool, typer.Option("--confirm", help="With --short: you have read the list of classes.")
-    ] = False,
-    made_on: Annotated[
-        str | None, typer.Option("--made-on", metavar="DATE", help="Of a make: its real day.")
-    ] = None,
-    size: Annotated[
-        str | None, typer.Option("--size", metavar="WxH", help="Of one label in mm: 70x37.")
-    ] = None,
-    sheet: Annotated[
-        str | None, typer.Option("--sheet", metavar="NxM", help="Labels across and down: 3x8.")
-    ] = None,
-    margin: Annotated[
-        str | None, typer.Option("--margin", metavar="LEFT,TOP", help="Of the sheet, in mm.")
-    ] = None,
-    gap: Annotated[
-        str | None, typer.Option("--gap", metavar="ACROSS,DOWN", help="Between labels, in mm.")
-    ] = None,
-    start: Annotated[
-        int, typer.Option("--start", metavar="N", help="The first free place of a used sheet.")
-    ] = 1,
+    what: What = None,
+    place: Place = "",
+    opened: Opened = False,
+    short: Short = False,
+    confirm: Confirm = False,
+    made_on: MadeOn = None,
+    size: Size = None,
+    sheet: Sheet = None,
+    margin: Margin = None,
+    gap: Gap = None,
+    start: Start = 1,
     to: Print = None,
     paper: Paper = "A4",
 ) -> None:
@@ -61,26 +75,51 @@ def label(
 
     Example: stockroom label S02 S04 --sheet 3x8 --print labels.pdf
     """
-    from stockroom.reports.paper.label import LABEL
     from stockroom.reports.paper.label_grid import check_fits, grid_of, size_of
-    from stockroom.reports.paper.label_set import Wish, labels_of
-    from stockroom.service.labels import labelled
+    from stockroom.reports.paper.label_set import Wish
 
-    shared = of(ctx)
     sort = _sort(opened, short, confirm)
     each = size_of(size, _usual(sort))
-    grid = grid_of(sheet, margin, gap, start, each)
+    grid = grid_of(sheet, margin, gap, start)
     if grid:
         check_fits(grid, each, paper_of(paper))
     wish = Wish(sort, each, grid, day_or_none(made_on, "--made-on"), confirm)
-    words = what or []
-    _check_made_on(made_on, words)
+    _check_made_on(made_on, what or [])
+    _put_out(of(ctx), what or [], place, wish, to, paper)
+
+
+def _put_out(
+    shared: Shared, words: list[str], place: str, wish: Wish, to: str | None, paper: str
+) -> None:
+    from stockroom.reports.paper.label import LABEL, things_of
+    from stockroom.reports.paper.label_set import labels_of
+    from stockroom.service.labels import labelled
+
     with _bar() as step:
         found = labelled(shared.path, words, place, as_at=shared.today, step=step)
         house = (found.house, found.practice)
         labels = labels_of(house, shared.today, found.bottles, found.batches, found.places, wish)
-        about = f"{sort}: {' '.join([*words, place])}".strip()
+        about = f"{wish.sort}: {' '.join([*words, place])}".strip()
+        told = numbers_before(shared, things_of(labels))
         put_out(shared, LABEL, labels, about, to=to, paper=paper)
+    for line in (*told, *(_of_the_print(wish, paper) if to is not None else ())):
+        tell(line)
+
+
+def _of_the_print(wish: Wish, paper: str) -> Iterator[str]:
+    """What is worth knowing of labels that were just printed."""
+    from stockroom.reports.paper.label_grid import EDGE, from_edge
+    from stockroom.reports.paper.label_text import SMALL, small_words
+    from stockroom.reports.typesetting import carried
+
+    small = small_words([str(each) for each in carried("label", SMALL)], wish.sort, wish.size)
+    if small:
+        yield small
+    if wish.grid and from_edge(wish.grid, wish.size, paper_of(paper)) < EDGE:
+        yield (
+            f"the outer labels lie within {EDGE:g} mm of the paper's edge, which many printers"
+            " leave blank: print one sheet on plain paper first"
+        )
 
 
 def _sort(opened: bool, short: bool, confirm: bool) -> Sort:

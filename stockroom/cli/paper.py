@@ -7,7 +7,7 @@ import os
 import re
 import stat
 import tempfile
-from collections.abc import Callable, Iterator, Mapping, Sequence
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated, Any, TypeVar
@@ -20,8 +20,6 @@ from stockroom.cli.whose import check_ours
 from stockroom.errors import BadInput, NotAllowed, StoreTrouble
 
 if TYPE_CHECKING:
-    from datetime import date
-
     from stockroom.reports.paper.kinds import Kind
 
 Print = Annotated[
@@ -58,39 +56,52 @@ def put_out(
     Raises: BadInput for a file or paper that cannot be; NotAllowed where nothing can be written.
     """
     from stockroom.reports.paper.data import as_data
-    from stockroom.service.copies import copy_before
 
     form, size = form_of(to) if to is not None else "", paper_of(paper, papers)
-    before, lines = copy_before(shared.path, kind.name, about), kind.lines(sheet)
-    if before is not None and before.lines:
-        told = kind.since(sheet, before.number, before.lines)
-        sheet = replace(sheet, head=replace(sheet.head, since=told))
+    sheet = held_against(shared, kind, sheet, about)
     if to is None:
         show(shared, lambda: kind.text(sheet, width()), lambda: as_data(sheet))
         return
     with written_whole(Path(to)) as write:
-        number = _numbered(shared, kind.name, about, lines, sheet.head.as_at)
-        printed = replace(sheet, head=replace(sheet.head, copy=number))
+        printed = numbered(shared, kind, sheet, about)
         names = _set_and_written(write, kind, printed, form, size)
     older = older_pages(Path(to), len(names))
     show(
         shared,
-        lambda: _said_printed(names, f"{sheet.head.title}, copy {number}", older),
+        lambda: _said_printed(names, f"{sheet.head.title}, copy {printed.head.copy}", older),
         lambda: as_data(printed) | {"files": names, "older": older},
     )
 
 
-def _numbered(shared: Shared, name: str, about: str, lines: Mapping[str, str], as_at: date) -> str:
-    """The next copy's number, its lines kept. Raises: NotAllowed where none can be."""
+def held_against(shared: Shared, kind: Kind[A], sheet: A, about: str) -> A:
+    """The sheet with what it says otherwise than the copy printed last of the same."""
+    from stockroom.service.copies import copy_before
+
+    before = copy_before(shared.path, kind.name, about)
+    if before is None or not before.lines:
+        return sheet
+    told = kind.since(sheet, before.number, before.lines)
+    return replace(sheet, head=replace(sheet.head, since=told))
+
+
+def numbered(shared: Shared, kind: Kind[A], sheet: A, about: str) -> A:
+    """The sheet under the next copy's number, its lines kept.
+
+    Raises: NotAllowed where none can be taken.
+    """
     from stockroom.service.copies import number_copy
 
+    head, lines = sheet.head, kind.lines(sheet)
     try:
-        return number_copy(shared.path, name, about, lines, as_at=as_at, by=shared.given_initials)
+        number = number_copy(
+            shared.path, kind.name, about, lines, as_at=head.as_at, by=shared.given_initials
+        )
     except StoreTrouble as trouble:
         raise NotAllowed(
             f"No copy can be numbered, so nothing was printed. {trouble.message}",
             f"To read it on the screen, leave --print off. {trouble.hint}".strip(),
         ) from trouble
+    return replace(sheet, head=replace(head, copy=number))
 
 
 def _set_and_written(

@@ -6,13 +6,12 @@ import contextlib
 import os
 import tempfile
 from collections.abc import Iterator
-from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated, Any, TypeVar
 
 import typer
 
-from stockroom.cli.paper import Paper, Print, paper_of, put_out
+from stockroom.cli.paper import Paper, Print, held_against, numbered, paper_of, put_out
 from stockroom.cli.printing import show
 from stockroom.cli.shared import Shared, of
 from stockroom.errors import BadInput, NotAllowed
@@ -79,24 +78,27 @@ def handover(
     sheet = handover_of(known, plan, beside, monday, FILES)
     if folder is None:
         return put_out(shared, HANDOVER, sheet, "", to=None)
-    with _folder_whole(Path(folder)) as into:
-        pdf, numbered = _printed(shared, HANDOVER, sheet, "", size)
+    printed: list[str] = []
+    with _telling_numbers(printed), _folder_whole(Path(folder)) as into:
+        pdf, copy = _printed(shared, HANDOVER, sheet, "", size, printed)
         (into / "start-here.pdf").write_bytes(pdf)
-        text = HANDOVER.text(numbered, TEXT_WIDTH)
+        text = HANDOVER.text(copy, TEXT_WIDTH)
         (into / "start-here.txt").write_text(f"{text}\n", encoding="utf-8")
-        for name, content in _others(shared, size, known, plan):
+        for name, content in _others(shared, size, known, plan, printed):
             (into / name).write_bytes(content)
     listing = [f"  {name}: {what}" for name, what in FILES]
-    copy = numbered.head.copy
+    number = copy.head.copy
     show(
         shared,
-        lambda: "\n".join([f"{folder}: the handover, start-here is copy {copy}", *listing]),
-        lambda: {"folder": folder, "copy": copy, "files": [name for name, _ in FILES]},
+        lambda: "\n".join([f"{folder}: the handover, start-here is copy {number}", *listing]),
+        lambda: {"folder": folder, "copy": number, "files": [name for name, _ in FILES]},
     )
 
 
-def _others(shared: Shared, size: str, known: Any, plan: Any) -> Iterator[tuple[str, bytes]]:
-    """The other sheets of the folder, each printed under a number of its own."""
+def _others(
+    shared: Shared, size: str, known: Any, plan: Any, taken: list[str]
+) -> Iterator[tuple[str, bytes]]:
+    """The other sheets of the folder, each printed under a number of its own: `taken` has them."""
     from datetime import timedelta
 
     from stockroom.reports.files.csv_out import buying_csv
@@ -109,34 +111,44 @@ def _others(shared: Shared, size: str, known: Any, plan: Any) -> Iterator[tuple[
     from stockroom.service.term_report import term_entered, term_told
 
     about = known.start.isoformat()
-    yield "strip.pdf", _printed(shared, STRIP, strip_of(known, plan), about, size)[0]
-    yield "buying.pdf", _printed(shared, BUYING, buying_sheet_of(plan), about, size)[0]
+    yield "strip.pdf", _printed(shared, STRIP, strip_of(known, plan), about, size, taken)[0]
+    yield "buying.pdf", _printed(shared, BUYING, buying_sheet_of(plan), about, size, taken)[0]
     yield "buying.csv", buying_csv(plan)
     monday = monday_of(None, shared.today)
     sunday = monday + timedelta(days=6)
     seen = known_and_planned(shared.path, as_at=shared.today, through=sunday)
     week = week_of(*seen, monday, why_closed(shared.path, monday, sunday))
-    yield "week.pdf", _printed(shared, WEEK, week, monday.isoformat(), size)[0]
+    yield "week.pdf", _printed(shared, WEEK, week, monday.isoformat(), size, taken)[0]
     # of the term begun last, which may be over
     of_term, its_plan, left = term_told(shared.path, as_at=shared.today)
     told = term_report_of(of_term, its_plan, left, entered=term_entered(shared.path))
-    yield "report.pdf", _printed(shared, REPORT, told, of_term.start.isoformat(), size)[0]
+    begun = of_term.start.isoformat()
+    yield "report.pdf", _printed(shared, REPORT, told, begun, size, taken)[0]
 
 
-def _printed(shared: Shared, kind: Kind[A], sheet: A, about: str, size: str) -> tuple[bytes, A]:
-    """A sheet as PDF under the next copy's number, held against the copy before it."""
+def _printed(
+    shared: Shared, kind: Kind[A], sheet: A, about: str, size: str, taken: list[str]
+) -> tuple[bytes, A]:
+    """A sheet as PDF under the next copy's number, which `taken` is told of."""
     from stockroom.reports.typesetting import typeset
-    from stockroom.service.copies import copy_before, number_copy
 
-    head, lines = sheet.head, kind.lines(sheet)
-    before = copy_before(shared.path, kind.name, about)
-    if before is not None and before.lines:
-        head = replace(head, since=kind.since(sheet, before.number, before.lines))
-    number = number_copy(
-        shared.path, kind.name, about, lines, as_at=head.as_at, by=shared.given_initials
-    )
-    printed = replace(sheet, head=replace(head, copy=number))
-    return typeset(kind.name, kind.data(printed), paper=size, on=head.as_at)[0], printed
+    copy = numbered(shared, kind, held_against(shared, kind, sheet, about), about)
+    taken.append(copy.head.copy)
+    return typeset(kind.name, kind.data(copy), paper=size, on=copy.head.as_at)[0], copy
+
+
+@contextlib.contextmanager
+def _telling_numbers(taken: list[str]) -> Iterator[None]:
+    """Says of a folder that could not be written which numbers its sheets had been given."""
+    try:
+        yield
+    except NotAllowed as trouble:
+        if not taken:
+            raise
+        were = f"Copies {taken[0]} to {taken[-1]} were" if taken[1:] else f"Copy {taken[0]} was"
+        raise NotAllowed(
+            f"{were} numbered and not written. {trouble.message}", trouble.hint
+        ) from trouble
 
 
 @contextlib.contextmanager

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator
 from datetime import date
 
-from stockroom.findings import Finding
+from stockroom.findings import Finding, Lasting
 from stockroom.keeping.verdict import verdict
 from stockroom.planning.decisions import Answer, Draw, Plan
 from stockroom.planning.facts import Closeness, Facts
@@ -25,6 +25,7 @@ def leaned_on(facts: Facts, plan: Plan, needs: Iterable[Answer]) -> list[Finding
     subjects: set[str] = set()
     for need in needs:
         subjects |= {need.line, need.booking.number}
+        subjects |= {one.number for one in plan.on_order if need.booking.number in one.bookings}
         closeness = Closeness(need.closeness) if need.closeness else Closeness.PRESENT
         for on, draw in _draws(plan, need):
             subjects |= {draw.line, draw.bottle, draw.make}
@@ -58,6 +59,5 @@ def _of_bottles(facts: Facts, uses: dict[str, list[tuple[date, Closeness]]]) -> 
 def _of_the_rest(plan: Plan, subjects: set[str]) -> Iterator[Finding]:
     for each in plan.guesses:
         # a bottle's own are told anew, for the day; these hang on no day
-        lasting = any(word in each.text for word in ("uncertainty", "assumed", "overdue"))
-        if each.subject in subjects and lasting:
+        if each.subject in subjects and isinstance(each, Lasting):
             yield each

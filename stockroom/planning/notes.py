@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
-from stockroom.findings import DO_NOT_TOUCH, Finding
+from stockroom.findings import Danger, DangerKind, Finding
 from stockroom.keeping.laws import warmth
 from stockroom.keeping.strength import law_of, temperature_on
 from stockroom.keeping.verdict import USABLE, Condition, verdict
@@ -17,7 +17,7 @@ from stockroom.planning.facts import Facts, Form
 from stockroom.planning.making.batch import Batch
 from stockroom.planning.making.equipment import equipment_notes
 from stockroom.planning.people import clock, hour_notes, load_notes, watch_note
-from stockroom.planning.standing import standing_there, where_things_stand
+from stockroom.planning.standing import past_safety_date, standing_there, where_things_stand
 
 
 def notes(
@@ -105,12 +105,11 @@ def _shelf(facts: Facts) -> Iterable[Finding]:
         if rule and rule.law and warmth(rule.law, place) > 1.5:
             times = warmth(rule.law, place)
             text = f"stands at {place:g} °C and fades {times:.1f} times as fast there: move it"
-            yield Finding(bottle.number, text)
+            yield Danger(bottle.number, text, DangerKind.WARM)
         # at the end of the term, so that it is dealt with before and not after
         judged = verdict(bottle.record, rules, facts.end)
         if judged.safety and judged.condition is Condition.PAST:
-            text = f"safety date {judged.good_until} ({judged.decided_by}): past it, {DO_NOT_TOUCH}"
-            yield Finding(bottle.number, text)
+            yield past_safety_date(bottle.number, judged)
 
 
 def _remarks(shelf: Shelf) -> Iterable[Finding]:

@@ -184,12 +184,18 @@ def unstaffed(facts: Facts, booking: Booking, *, never_kept: bool) -> list[tuple
     return [(start, end) for start, end in (early, late) if start < end]
 
 
-def must_be_here(facts: Facts, booking: Booking, *, never_kept: bool) -> list[tuple[int, int]]:
-    """As `unstaffed`, and on a closed day, when nobody is there at all, the whole session."""
+def must_be_here(
+    facts: Facts, booking: Booking, *, set_out: int, never_kept: bool
+) -> list[tuple[int, int]]:
+    """As `unstaffed`, and on a closed day, when nobody is there at all, the whole session.
+
+    Then from when it is set out (`set_out`, a minute of the day) or what is never kept may be
+    mixed, whichever comes first, to the end, or until all of it is destroyed.
+    """
     if facts.calendar.is_open(booking.on):
         return unstaffed(facts, booking, never_kept=never_kept)
     ends = booking.minute + booking.lasts_minutes + (DESTROY_AFTER if never_kept else 0)
-    return [(booking.minute - MIX_BEFORE, ends)]
+    return [(min(set_out, booking.minute - MIX_BEFORE), ends)]
 
 
 def watches(needs: Iterable[Need], short: Collection[str]) -> list[Watch]:

@@ -133,17 +133,20 @@ def _recipes(facts: Facts, wanted: set[str]) -> list[Recipe]:
 
 def _at_the_bench(facts: Facts, needs: tuple[Answer, ...]) -> tuple[str, ...]:
     """The cautions of using these things and of clearing them away, each once, unless said."""
-    items: dict[Caution, list[str]] = {}
+    items: dict[tuple[Caution, bool], list[str]] = {}
     for need in needs:
         # each recipe's own words cover its own class, and no other of that day
         recipe = facts.recipes[need.booking.recipe, need.booking.version]
         said = (recipe.handling, recipe.never_kept, recipe.waste)
         thing = goes_of(facts.lines[need.line])
         for caution in cautions_about([thing], said=said, steps=(Step.USE, Step.WASTE)):
-            items.setdefault(caution, []).append(need.item)
+            # no container takes what is never kept before it is destroyed
+            after = bool(recipe.never_kept) and caution.collects
+            items.setdefault((caution, after), []).append(need.item)
     order = list(Step)
-    row = sorted(items.items(), key=lambda pair: (order.index(pair[0].step), pair[0].number))
+    row = sorted(items.items(), key=lambda pair: (order.index(pair[0][0].step), pair[0][0].number))
     return tuple(
-        f"{caution.step} ({'; '.join(dict.fromkeys(names))}): {caution.text}"
-        for caution, names in row
+        f"{caution.step} ({'; '.join(dict.fromkeys(names))}): "
+        f"{'once destroyed: ' if after else ''}{caution.text}"
+        for (caution, after), names in row
     )

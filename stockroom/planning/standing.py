@@ -1,10 +1,11 @@
-"""Where bottles stand: beside what they must not, and under a cap that lets no gas out."""
+"""Where bottles stand: beside what they must not, under a tight cap, past a safety date."""
 
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping
 
-from stockroom.findings import Finding
+from stockroom.findings import DO_NOT_TOUCH, Danger, DangerKind, Finding
+from stockroom.keeping.verdict import Verdict
 from stockroom.planning.facts import Bottle, Line, Place
 from stockroom.planning.numbers import natural
 from stockroom.safety.neighbours import (
@@ -34,6 +35,12 @@ def where_things_stand(
         *not_checked(_pairs(stands)),
         *tight_caps((b.number, b.cap, lines[b.line].vented_cap) for b in here),
     ]
+
+
+def past_safety_date(number: str, judged: Verdict) -> Danger:
+    """The danger of a bottle that was judged past its safety date, and what must be said of it."""
+    text = f"safety date {judged.good_until} ({judged.decided_by}): past it, {DO_NOT_TOUCH}"
+    return Danger(number, text, DangerKind.SAFETY_DATE, day=judged.good_until)
 
 
 def _stands(bottle: Bottle, line: Line, meant: Mapping[str, str]) -> Stands:

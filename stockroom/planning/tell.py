@@ -6,7 +6,7 @@ from collections.abc import Iterable, Sequence
 from dataclasses import replace
 from datetime import date
 
-from stockroom.findings import Finding
+from stockroom.findings import Finding, Lasting
 from stockroom.keeping.rules import Purpose, RuleKind
 from stockroom.keeping.verdict import Condition, Verdict, verdict
 from stockroom.planning.amounts import say_strength
@@ -87,38 +87,38 @@ def guesses(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> list[Finding]:
         *_of_dates(wants, shelf),
         *_of_needs(facts, wants, shelf),
     )
-    row = [Finding(subject, text) for subject, text in dict.fromkeys(told)]
-    return sorted(row, key=lambda f: (natural(f.subject), f.text))
+    return sorted(dict.fromkeys(told), key=lambda f: (natural(f.subject), f.text))
 
 
-def _of_bottles(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> Iterable[tuple[str, str]]:
+def _of_bottles(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> Iterable[Finding]:
     closest = _closest_use(wants)
     for number, promises in shelf.promises.items():
         if promises:
             bottle = shelf.bottle[number]
             for text in _about(facts, shelf, bottle, closest.get(number, Closeness.PRESENT)):
-                yield number, text
+                yield Finding(number, text)
 
 
-def _of_dates(wants: Sequence[Want], shelf: Shelf) -> Iterable[tuple[str, str]]:
+def _of_dates(wants: Sequence[Want], shelf: Shelf) -> Iterable[Finding]:
     for want in [part for root in wants for part in root.tree()]:
         # a date read too early is what may have kept it out
         for number, _ in want.passed_over:
             for text in _two_readings(shelf.bottle[number]):
-                yield number, text
+                yield Finding(number, text)
 
 
-def _of_needs(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> Iterable[tuple[str, str]]:
+def _of_needs(facts: Facts, wants: Sequence[Want], shelf: Shelf) -> Iterable[Lasting]:
     for want in wants:
         for number in _taken_at_its_word(facts, want, shelf):
-            yield number, "its found strength has no uncertainty: taken as exact enough"
+            text = "its found strength has no uncertainty: taken as exact enough"
+            yield Lasting(number, text)
         if want.need.requirement.closeness_guessed:
             recipe = want.need.recipe.code
-            yield want.need.line.key, f"no closeness written in {recipe}: close assumed"
+            yield Lasting(want.need.line.key, f"no closeness written in {recipe}: close assumed")
         for part in want.tree():
             if part.method and part.method.minutes_guessed:
                 minutes = part.method.minutes
-                yield part.line, f"no hands-on time written: {minutes} min assumed"
+                yield Lasting(part.line, f"no hands-on time written: {minutes} min assumed")
 
 
 def _taken_at_its_word(facts: Facts, want: Want, shelf: Shelf) -> Iterable[str]:

@@ -7,24 +7,15 @@ from typing import Any, Protocol
 
 from stockroom.keeping.rule_words import rule_in_words
 from stockroom.keeping.rules import Rule
+from stockroom.reports.corrected import Corrected
 from stockroom.reports.sheet import PRACTICE, wrap
 
 HOUSE_RULE, STARTER = "house rule", "starter value"
 
 
-class _Change(Protocol):
+class _RuleChange(Corrected, Protocol):
     @property
     def rule(self) -> str: ...
-    @property
-    def before(self) -> str: ...
-    @property
-    def after(self) -> str: ...
-    @property
-    def why(self) -> str: ...
-    @property
-    def by(self) -> str: ...
-    @property
-    def on(self) -> str: ...
 
 
 class _Keeping(Protocol):
@@ -35,7 +26,7 @@ class _Keeping(Protocol):
     @property
     def rules(self) -> Sequence[Rule]: ...
     @property
-    def changes(self) -> Sequence[_Change]: ...
+    def changes(self) -> Sequence[_RuleChange]: ...
     @property
     def sources(self) -> Mapping[str, str]: ...
     @property

@@ -55,6 +55,15 @@ def typeset(
     return made if isinstance(made, list) else [made]
 
 
+def carried(template: str, mark: str) -> list[Any]:
+    """The values the sheet of that template typeset last carries under a mark, in their order.
+
+    What only the typesetting finds out: how large a thing could be drawn. [] for none.
+    """
+    found: list[Any] = json.loads(_compiler(template).query(f"<{mark}>", field="value"))
+    return found
+
+
 @cache
 def _compiler(template: str) -> Compiler:
     # made once: to read the fonts takes longer than to set a page

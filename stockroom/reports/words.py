@@ -14,7 +14,8 @@ from stockroom.measure.formats import format_amount
 from stockroom.planning.decisions import Draw
 
 # Not strftime: its names follow the machine's language, and a printed sheet must not.
-_WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
+WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
+"""The names of the days, Monday first, as every sheet has them."""
 
 TIED = "\u00a0"
 """A space no line is broken at; `sheet.wrap` turns it back into a plain one."""
@@ -39,12 +40,34 @@ def marked(condition: Condition) -> str:
 
 def day(when: date) -> str:
     """A day with its weekday, ISO, kept on one line: "Mon 2027-01-25"."""
-    return f"{_WEEKDAYS[when.weekday()]}{TIED}{when.isoformat()}"
+    return f"{WEEKDAYS[when.weekday()]}{TIED}{when.isoformat()}"
 
 
 def day_heading(when: date) -> str:
     """A day as a heading reads it: "Mon 25 Jan 2027"."""
-    return f"{_WEEKDAYS[when.weekday()]} {when.day} {MONTHS[when.month - 1][:3]} {when.year}"
+    return f"{WEEKDAYS[when.weekday()]} {day_in_words(when)}"
+
+
+def day_in_words(when: date) -> str:
+    """A day with its month in letters: "10 Dec 2026". Of one reading, and short."""
+    return f"{day_and_month(when)} {when.year}"
+
+
+def day_and_month(when: date) -> str:
+    """A day where the year is plain: "10 Dec"."""
+    return f"{when.day} {MONTHS[when.month - 1][:3]}"
+
+
+def weekday_and_day(when: date) -> str:
+    """A day inside a sheet that says its year: "Tue 26 Jan", kept on one line."""
+    return f"{WEEKDAYS[when.weekday()]} {day_and_month(when)}".replace(" ", TIED)
+
+
+def day_seen_from(when: date, seen_from: date) -> str:
+    """A day as seen from another: "Tue 12 Jan", with the year where that is another."""
+    if when.year != seen_from.year:
+        return day_heading(when)
+    return weekday_and_day(when).replace(TIED, " ")
 
 
 def rounded(number: float, figures: int) -> float:

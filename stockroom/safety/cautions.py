@@ -82,7 +82,8 @@ class Caution:
     It speaks of these groups and substances; `solid` None: in any form; `strong`: only
     of the concentrated. `key` has the words, parted by |, that tell it has been said already;
     `parts` the same for each thing it says, where some may have been said and others not.
-    `also` are further steps it belongs to.
+    `also` are further steps it belongs to. `collects` says that it sends what is left into a
+    container: of what is never kept, only once that is destroyed.
     """
 
     number: int
@@ -97,6 +98,7 @@ class Caution:
     neat: bool = False
     also: frozenset[Step] = frozenset()
     parts: tuple[tuple[str, str], ...] = ()
+    collects: bool = False
 
     def speaks_of(self, thing: Goes) -> bool:
         """True when the thing is of its kind, in its form and strong enough."""
@@ -188,6 +190,7 @@ CAUTIONS: tuple[Caution, ...] = (
         8, Step.WASTE, "Oxidising and nitric waste: a vented container of its own, no more than "
         "two thirds full, never one that held solvent; cool it first.",
         "a", "two thirds", groups=_of("oxidiser|oxidising acid"), substances=_of("nitric acid"),
+        collects=True,
     ),
     Caution(
         9, Step.OPEN, "Under pressure when warm: open the strong bottle in the fume cupboard.",
@@ -227,7 +230,7 @@ CAUTIONS: tuple[Caution, ...] = (
     ),
     Caution(
         13, Step.WASTE, "Collect the residues: local limits decide what may go down a sink.",
-        "c", "residues", substances=_METALS | _HALOGENATED,
+        "c", "residues", substances=_METALS | _HALOGENATED, collects=True,
     ),
     Caution(
         14, Step.LABEL, "Hazard text goes with strength: a stronger make needs a new label.",

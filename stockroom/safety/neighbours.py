@@ -10,10 +10,13 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
+from typing import TypeVar
 
-from stockroom.findings import Finding
+from stockroom.findings import Danger, DangerKind, Finding, Moves
 from stockroom.safety.kinds import also
 from stockroom.safety.peroxide_formers import class_of
+
+_Found = TypeVar("_Found", bound=Finding)
 
 
 @dataclass(frozen=True, slots=True)
@@ -185,8 +188,8 @@ class Stands:
     meant_for: str = ""
 
 
-def wrong_neighbours(standing: Iterable[Stands]) -> list[Finding]:
-    """Findings on bottles that stand where they should not: beside which, where, and why not.
+def wrong_neighbours(standing: Iterable[Stands]) -> list[Danger]:
+    """Dangers of bottles that stand where they should not: beside which, where, and why not.
 
     In the order given, one for a bottle and a reason; a pair without a rule is passed over.
     """
@@ -198,7 +201,7 @@ def wrong_neighbours(standing: Iterable[Stands]) -> list[Finding]:
     return [found for each in row for found in _wrong(each, there.get(each.place, {}))]
 
 
-def _wrong(each: Stands, there: Mapping[str, list[str]]) -> Iterator[Finding]:
+def _wrong(each: Stands, there: Mapping[str, list[str]]) -> Iterator[Danger]:
     beside: dict[str, list[str]] = {}
     kept = {APART.get(frozenset({kind, each.meant_for}), "") for kind in each.kinds}
     for kind in each.kinds:
@@ -209,18 +212,53 @@ def _wrong(each: Stands, there: Mapping[str, list[str]]) -> Iterator[Finding]:
     for reason, numbers in beside.items():
         others = [number for number in dict.fromkeys(numbers) if number != each.bottle]
         if others or reason in kept:
-            yield Finding(each.bottle, _words(each, others, reason, kept=reason in kept))
+            yield _beside(each, others, reason, kept=reason in kept)
 
 
-def _words(each: Stands, others: list[str], reason: str, *, kept: bool) -> str:
+def _beside(each: Stands, others: list[str], reason: str, *, kept: bool) -> Danger:
+    # what the place is kept for says which of the two has to go
+    belongs = each.meant_for in each.kinds and others
+    moves = Moves.IT if kept else Moves.OTHER if belongs else Moves.ONE
+    text = f"{_words(each, others, kept=kept)}: {reason.replace(': ', ', ')}: move {moves}"
+    return Danger(each.bottle, text, DangerKind.BESIDE, tuple(others), reason, moves)
+
+
+def _words(each: Stands, others: list[str], *, kept: bool) -> str:
     more = len(others) - _NAMED
     listed = ", ".join(others[:_NAMED]) + (f" and {more} more" if more > 0 else "")
     where = f"in {each.place}" + (f", kept for {each.meant_for}" if kept else "")
-    stands = f"stands beside {listed} {where}" if others else f"stands {where}"
-    # what the place is kept for says which of the two has to go
-    belongs = each.meant_for in each.kinds and others
-    goes = "it" if kept else "the other" if belongs else "one"
-    return f"{stands}: {reason.replace(': ', ', ')}: move {goes}"
+    return f"stands beside {listed} {where}" if others else f"stands {where}"
+
+
+def told_once(findings: Iterable[_Found]) -> list[_Found]:
+    """The same in their order, each wrong pair once: by what has to go, else by whoever has most.
+
+    Of a pair with two reasons both are told. What must itself go is told always; what no
+    sentence names but its own (of many neighbours four are named) is told too, and so is
+    every finding of another kind.
+    """
+    row = list(findings)
+    told: set[tuple[frozenset[str], str]] = set()
+    kept: set[_Found] = set()
+    for each in sorted(row, key=_sooner):
+        pairs = _pairs(each)
+        goes = isinstance(each, Danger) and each.moves is Moves.IT
+        if goes or not pairs or not told.issuperset(pairs):
+            kept.add(each)
+            told.update(pairs[:_NAMED])
+    return [each for each in row if each in kept]
+
+
+def _sooner(finding: Finding) -> tuple[int, int]:
+    if not isinstance(finding, Danger):
+        return 0, 0
+    return list(Moves).index(finding.moves), -len(finding.others)
+
+
+def _pairs(finding: Finding) -> list[tuple[frozenset[str], str]]:
+    if not isinstance(finding, Danger):
+        return []
+    return [(frozenset({finding.subject, other}), finding.why) for other in finding.others]
 
 
 def not_checked(standing: Iterable[tuple[str, str, str]]) -> list[Finding]:
@@ -244,7 +282,8 @@ def not_checked(standing: Iterable[tuple[str, str, str]]) -> list[Finding]:
     ]
 
 
-def tight_caps(bottles: Iterable[tuple[str, str, bool]]) -> list[Finding]:
-    """Findings on (bottle, cap as written, must it be vented): tight where gas is made."""
+def tight_caps(bottles: Iterable[tuple[str, str, bool]]) -> list[Danger]:
+    """Dangers of (bottle, cap as written, must it be vented): tight where gas is made."""
     text = "tight cap on a solution that gives off gas: vent it with care, change the cap"
-    return [Finding(number, text) for number, cap, vented in bottles if vented and cap == "tight"]
+    tight = [number for number, cap, vented in bottles if vented and cap == "tight"]
+    return [Danger(number, text, DangerKind.TIGHT) for number in tight]

@@ -16,6 +16,7 @@ from stockroom.service.hazards import of_bottle, of_kept_line
 from stockroom.service.sheets import known_and_planned
 from stockroom.settings import StoreAt
 from stockroom.store.likeness import unknown
+from stockroom.store.printed_copies import copy_with
 from stockroom.store.reading import reading
 
 
@@ -61,6 +62,12 @@ def makes_between(path: StoreAt, first: date, last: date, *, as_at: date) -> Ask
 
 def _days(make: Make) -> tuple[date, date]:
     return make.on, make.finish_on or max(make.on, make.ready)
+
+
+def copy_numbering(path: StoreAt, start: str) -> tuple[str, str] | None:
+    """The card or labels printed last with a line whose key begins so: copy number and key."""
+    with reading(path) as reader:
+        return copy_with(reader, ("card", "label"), start)
 
 
 def hazards_for(path: StoreAt, plan: Plan, makes: Sequence[Make]) -> dict[str, Hazards]:

@@ -17,6 +17,7 @@ from stockroom.findings import DO_NOT_TOUCH
 from stockroom.keeping.record import Check, CheckKind, Record
 from stockroom.keeping.rules import Rule, RuleKind
 from stockroom.keeping.strength import last_check
+from stockroom.keeping.unnamed import UNKNOWN, is_unnamed
 from stockroom.keeping.verdict import limits_of
 from stockroom.measure.days import spell_day
 from stockroom.planning.facts import Form
@@ -24,7 +25,6 @@ from stockroom.safety.peroxide_formers import Outcome, outcome
 from stockroom.service.work import Work
 from stockroom.store.former_rules import formers_of
 from stockroom.store.tables import Bottle
-from stockroom.store.unnamed import LABEL, is_unnamed
 
 UNMOVED = "A"
 """The class that is discarded on its day, whatever a test says."""
@@ -49,7 +49,7 @@ def check_named(work: Work, bottle: Bottle) -> None:
     if is_unnamed(work.line(bottle).key):
         number = bottle.number
         raise NotAllowed(
-            f"{number} is set aside: {work.seen(bottle).record.set_aside}. {LABEL}.",
+            f"{number} is set aside: {work.seen(bottle).record.set_aside}. {UNKNOWN}.",
             f"Named by evidence: stockroom unknown {number} --is LINE --evidence …;"
             f" thrown away: stockroom discard {number}.",
         )

@@ -5,6 +5,7 @@ from __future__ import annotations
 from datetime import date
 
 from stockroom.errors import BadAmount, BadInput, NotAllowed, UnknownName
+from stockroom.keeping.unnamed import UNKNOWN, UNNAMED, is_unnamed
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_about, format_amount
 from stockroom.service.answers import Done
@@ -16,7 +17,7 @@ from stockroom.store.changing import record_change
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, next_bottle_number
 from stockroom.store.tables import Bottle, Entry, Line, Substance
-from stockroom.store.unnamed import LABEL, NAMED, UNNAMED, is_unnamed
+from stockroom.store.unnamed import NAMED
 
 _NOTE = "never identify by trial; never use or move without asking"
 _FORM = {Kind.MASS: "solid", Kind.VOLUME: "liquid"}
@@ -41,7 +42,7 @@ def log_unknown(
     with working(path, on=on, today=today, by=by) as work:
         bottle, entry = log_in(work, look, size, place)
         text = f"{bottle.number}: unknown, {look.strip()}, {format_about(size)}, at {place}."
-        details = (f'Write on it: {bottle.number} "{LABEL}".', *told_of_place(work, bottle))
+        details = (f'Write on it: {bottle.number} "{UNKNOWN}".', *told_of_place(work, bottle))
         following = f"stockroom discard {bottle.number} --how … --why unknown"
         return work.done(text, bottle, entry, following=following, details=details)
 
@@ -132,7 +133,7 @@ def name_taken_back(work: Work, bottle: Bottle, wrong: Entry, why: str) -> tuple
     bottle.line_id = line.id
     work.session.add(bottle)
     record_change(work.desk, "bottle", bottle.number, "line", (named.key, line.key), why)
-    return (f'{bottle.number} is unknown again. Write on it: "{LABEL}".',)
+    return (f'{bottle.number} is unknown again. Write on it: "{UNKNOWN}".',)
 
 
 def _check_new(work: Work, look: str) -> None:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from stockroom.errors import BadInput
+from stockroom.keeping.unnamed import UNKNOWN
 from stockroom.service.recount import Round
 from stockroom.service.standing import told_of_place
 from stockroom.service.unknown import log_in
@@ -14,7 +15,6 @@ from stockroom.store import walks as rows
 from stockroom.store.kinds import EntryKind
 from stockroom.store.likeness import plain
 from stockroom.store.tables import Bottle
-from stockroom.store.unnamed import LABEL
 
 
 def unlisted(work: Work, walk: Round, typed: Typed, along: tuple[str, ...], *, again: bool) -> Told:
@@ -34,7 +34,7 @@ def unlisted(work: Work, walk: Round, typed: Typed, along: tuple[str, ...], *, a
     bottle, entry = log_in(work, looks, typed.amount, place, note=walk.name, walk_id=walk.walk_id)
     text = f"{bottle.number}: unknown, {looks}, turned up at {place}."
     details = (
-        f'Write on it: {bottle.number} "{LABEL}".',
+        f'Write on it: {bottle.number} "{UNKNOWN}".',
         *_may_be(work, bottle.number, looks),
         *told_of_place(work, bottle),
     )

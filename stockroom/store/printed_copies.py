@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date
 
@@ -33,6 +34,20 @@ def last_copy(reader: Reader, sheet: str, about: str) -> Copy | None:
         return None
     row = rows[0]
     return Copy(row["number"], date.fromisoformat(row["as_at"]), row["by"], _lines(row["lines"]))
+
+
+def copy_with(reader: Reader, sheets: Sequence[str], start: str) -> tuple[str, str] | None:
+    """The copy of these sheets printed last with a line whose key begins so: its number, the key.
+
+    None when none was. `start` is of plain letters and digits.
+    """
+    marks = ", ".join("?" * len(sheets))
+    where = f"WHERE sheet IN ({marks}) AND lines LIKE ? ORDER BY id DESC LIMIT 1"
+    for row in reader.rows(TABLE, where, *sheets, f'%"{start}%'):
+        for key in _lines(row["lines"]):
+            if key.startswith(start):
+                return row["number"], key
+    return None
 
 
 def next_copy(reader: Reader) -> str:

@@ -1,4 +1,4 @@
-"""Bottles nobody can name: the lines they are logged under, and what is written on them. Light."""
+"""Bottles nobody can name, as the ledger has them: set aside, and named later. Light."""
 
 from __future__ import annotations
 
@@ -6,23 +6,12 @@ from dataclasses import replace
 from datetime import date
 
 from stockroom.keeping.record import Record
-from stockroom.measure.amounts import Kind
+from stockroom.keeping.unnamed import is_unnamed
 from stockroom.store.kinds import EntryKind
 from stockroom.store.reading import Reader
 
-UNNAMED = {Kind.MASS: "unknown", Kind.VOLUME: "unknown liquid"}
-"""The line an unknown is logged under, by what its content is measured by."""
-
-LABEL = "UNKNOWN, do not use or move"
-"""What stands on the label of a bottle that nobody can name."""
-
 NAMED = "named from evidence: needs a look"
 """Why a bottle that was given a name stands apart until somebody has looked at it."""
-
-
-def is_unnamed(line: str) -> bool:
-    """Whether a line, by its key, is one that nobody can name."""
-    return line in UNNAMED.values()
 
 
 def named_later(reader: Reader, known_on: date | None) -> dict[str, str]:

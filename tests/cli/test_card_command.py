@@ -80,6 +80,30 @@ def test_printed_it_is_a_page_for_each_make_and_its_codes_are_the_bottles(
     assert "nothing changed since copy" in again.said
 
 
+def test_a_number_that_was_another_make_on_paper_is_said(
+    own: Path, stockroom: Stockroom, tmp_path: Path
+) -> None:
+    printed = stockroom("card", "M15", "--print", "card.pdf", store=own)
+    assert (printed.code, printed.err) == (0, "")
+    assert stockroom("card", "M15", store=own).err == ""
+    # its booking is dropped, and the number goes to another make
+    assert stockroom("cancel", "K08", "--why", "ill", "--by", "T1", store=own).code == 0
+    said = (
+        "M15 was hydrogen peroxide 0.100 mol/dm³ on copy 0001;"
+        " makes are numbered anew in each plan\n"
+    )
+    (now,) = stockroom("card", "M15", "--json", store=own).json["cards"]
+    assert now["name"].startswith("starch")
+    assert stockroom("card", "m15", store=own).err == said
+    assert stockroom("label", "M15", store=own).err == said
+    # nobody named a number here
+    assert stockroom("card", "--on", "2027-01-29", store=own).err == ""
+    again = stockroom("label", "M15", "--print", "label.pdf", store=own)
+    assert said in again.err
+    # from now on the newest copy is right
+    assert stockroom("card", "M15", store=own).err == ""
+
+
 def test_a_day_with_nothing_to_make_can_be_printed_and_says_so(
     own: Path, stockroom: Stockroom, tmp_path: Path
 ) -> None:

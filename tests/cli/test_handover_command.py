@@ -89,4 +89,6 @@ def test_a_failure_half_way_leaves_no_folder(
     told = stockroom("handover", str(tmp_path / "new"), store=own)
     assert told.code == 1
     assert "No space left" in told.err
+    # three sheets had their numbers by then: nobody is to look for those papers
+    assert "Copies 0001 to 0003 were numbered and not written." in told.err
     assert set(tmp_path.iterdir()) == before

@@ -11,6 +11,11 @@ import pytest
 if TYPE_CHECKING:
     from conftest import Stockroom
 
+EDGE = (
+    "the outer labels lie within 4 mm of the paper's edge, which many printers leave blank:"
+    " print one sheet on plain paper first\n"
+)
+
 
 def test_labels_are_printed_and_their_codes_read(
     own: Path, tmp_path: Path, stockroom: Stockroom
@@ -20,8 +25,31 @@ def test_labels_are_printed_and_their_codes_read(
     assert told.code == 0, told.err
     assert "copy 0001" in told.out
     # nobody sits at a terminal here, so no bar is drawn
-    assert told.err == ""
+    assert told.err == "symbols on B14 are smaller than 1 cm²: --size 105x74\n"
     assert reading.codes(target.read_bytes()) == ["S02", "B14"]
+
+
+@pytest.mark.parametrize(
+    ("words", "said"),
+    [
+        # thiosulfate has no symbol, and 105 x 74 mm is room enough for one of 1 cm²
+        (("S02",), ""),
+        (("B14", "--size", "105x74"), ""),
+        (("S02", "--sheet", "2x7", "--margin", "4,4"), ""),
+        (("S02", "--sheet", "2x7", "--margin", "4,3.9"), EDGE),
+        (("S02", "--sheet", "2x7", "--margin", "66.5,10"), EDGE),
+        (("S02", "--sheet", "2x7", "--margin", "10,35"), EDGE),
+    ],
+)
+def test_what_a_printer_or_the_law_would_mind_is_said_once_printed(
+    own: Path, stockroom: Stockroom, tmp_path: Path, words: tuple[str, ...], said: str
+) -> None:
+    told = stockroom("label", *words, "--print", str(tmp_path / "labels.pdf"), store=own)
+    assert (told.code, told.err) == (0, said)
+
+
+def test_nothing_is_said_of_a_print_that_was_not_made(practice: Path, stockroom: Stockroom) -> None:
+    assert stockroom("label", "B14", "--sheet", "3x8", store=practice).err == ""
 
 
 def test_data_are_the_same_as_the_words(practice: Path, stockroom: Stockroom) -> None:

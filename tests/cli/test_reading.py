@@ -137,6 +137,14 @@ def test_a_class_is_told_of_flames_peroxides_and_waste(
     assert "clearing away (bromine water): Oxidising and nitric waste" in said
 
 
+def test_what_is_never_kept_goes_into_no_container_undestroyed(
+    stockroom: Stockroom, practice: Path
+) -> None:
+    said = stockroom("ready", "K27", store=practice).said
+    assert "clearing away (silver nitrate): once destroyed: Oxidising and nitric waste" in said
+    assert "clearing away (ammonia): Ammonia never with bleach" in said
+
+
 def test_what_to_do_next_is_never_a_look_at_what_must_not_be_opened(
     stockroom: Stockroom, practice: Path
 ) -> None:

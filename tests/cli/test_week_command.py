@@ -108,7 +108,49 @@ def test_a_resize_and_a_move_are_marked_against_the_copy_printed_last(
     assert all("copy 0002" in each for each in page_words(second.read_bytes()))
 
 
+def test_a_make_done_since_is_told_by_its_bottle_and_comes_back_when_that_is_gone(
+    own: Path, stockroom: Stockroom
+) -> None:
+    on = ("--as-at", "2027-01-26")
+    week = ("week", "2027-01-25", *on)
+
+    def changes() -> list[str]:
+        told: list[str] = stockroom(*week, "--json", store=own).json["head"]["since"]["changes"]
+        return told
+
+    assert stockroom(*week, "--print", "one.pdf", store=own).code == 0
+    made = ("make", "starch 0.5 % w/v", "176 cm3", *on, "--by", "T1")
+    assert stockroom(*made, store=own).code == 0
+    assert changes()[0] == "made: S25 starch 0.5 % w/v"
+    assert not any(each.startswith("gone: Tue 26 Jan make") for each in changes())
+    assert "made: S25 starch 0.5 % w/v" in stockroom(*week, store=own).said
+
+    # the next copy knows of it: it is told once, and a make to be done again is new
+    assert stockroom(*week, "--print", "two.pdf", store=own).code == 0
+    assert changes() == []
+    thrown = stockroom(
+        "discard", "S25", "--how", "sink", "--why", "mould", *on, "--by", "T1", store=own
+    )
+    assert thrown.code == 0, thrown.err
+    assert any(each.startswith("new: Tue 26 Jan make: 08:") for each in changes())
+
+
 def test_another_week_is_another_sheet(own: Path, stockroom: Stockroom) -> None:
     assert stockroom("week", "2027-01-25", "--print", "one.pdf", store=own).code == 0
     told = stockroom("week", "2027-02-01", "--json", store=own).json
     assert told["head"]["since"] is None
+
+
+def test_what_was_made_and_is_good_today_only_is_still_poured_away(
+    own: Path, stockroom: Stockroom
+) -> None:
+    made = stockroom(
+        "make", "hydrogen peroxide 0.100 mol/dm3", "528 cm3", "--as-at", "2027-01-26",
+        "--by", "T1", store=own,
+    )  # fmt: skip
+    assert made.code == 0, made.err
+    told = stockroom("week", "--as-at", "2027-01-26", store=own).said
+    assert "S25 hydrogen peroxide 0.100 mol/dm³: pour away what is left good today only" in told
+    assert "Never return any to the bottle" in told.partition("S25 hydrogen peroxide")[2]
+    # a bottle that keeps, and one from before the term, are nobody's tidying
+    assert "S01 sodium thiosulfate 1.00 mol/dm³: pour away" not in told

@@ -21,6 +21,7 @@ from houses import (
     wants,
 )
 
+from stockroom.findings import Lasting
 from stockroom.keeping.record import Check, CheckKind
 from stockroom.keeping.rules import Law, Rule, RuleKind
 from stockroom.measure.periods import Period
@@ -188,6 +189,7 @@ TAKEN = ("S01", "its found strength has no uncertainty: taken as exact enough")
 
 def test_a_result_without_an_uncertainty_that_serves_an_exact_line_is_a_guess() -> None:
     assert guessed(held(None)) == [TAKEN]
+    assert all(isinstance(guess, Lasting) for guess in held(None).guesses)
 
 
 def test_a_bottle_that_serves_two_of_them_is_told_once() -> None:

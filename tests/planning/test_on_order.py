@@ -31,6 +31,7 @@ from stockroom.keeping.rules import Origin
 from stockroom.planning.buying.on_way import receipts
 from stockroom.planning.decisions import Outcome, Plan
 from stockroom.planning.facts import Form, Line, Placed, Swap
+from stockroom.planning.leaned_on import leaned_on
 from stockroom.planning.plan import plan
 
 # 100 g/mol: 1 dm³ of 0.5 takes 50 g
@@ -165,6 +166,18 @@ def test_overdue_it_counts_from_the_next_open_day_and_is_a_guess() -> None:
     assert [guess.subject for guess in made.guesses if "guess" in guess.text] == ["P01"]
     (note,) = [note.text for note in made.notes if note.subject == "P01"]
     assert note == "100 g of salt expected 2027-01-07, 6 open days overdue: ask the supplier"
+
+
+def test_only_the_class_an_overdue_order_serves_leans_on_it() -> None:
+    # each takes 50 g: so much is on its way
+    known = house(
+        [SALT, HALF], methods=[made_from(HALF, SALT)], recipes=[recipe(wants(HALF, cm3(1000)))],
+        bookings=[booking(number, on) for number, on in CLASSES],
+        placed=(placed(expected="01-07", grams=50),), as_at=day("01-15"),
+    )  # fmt: skip
+    made = plan(known)
+    leant = [[g.subject for g in leaned_on(known, made, [need])] for need in made.needs]
+    assert leant == [["P01"], []]
 
 
 def test_expected_on_a_closed_day_it_counts_from_the_next_open_one() -> None:

@@ -26,6 +26,7 @@ from houses import (
     wants,
 )
 
+from stockroom.findings import Lasting
 from stockroom.keeping.rules import Origin, Rule, RuleKind
 from stockroom.keeping.verdict import Condition
 from stockroom.measure.days import parse_printed
@@ -106,6 +107,7 @@ def test_a_closeness_and_minutes_nobody_wrote_are_guesses() -> None:
         (TENTH.key, "no closeness written in R01: close assumed"),
         (TENTH.key, "no hands-on time written: 10 min assumed"),
     ]
+    assert all(isinstance(guess, Lasting) for guess in made.guesses)
 
 
 def test_a_bottle_made_from_one_overdue_its_check_is_in_doubt_with_it() -> None:

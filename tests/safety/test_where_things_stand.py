@@ -3,8 +3,11 @@
 from __future__ import annotations
 
 import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
-from stockroom.safety.neighbours import APART, Stands, tight_caps, wrong_neighbours
+from stockroom.findings import Danger, DangerKind, Finding, Moves
+from stockroom.safety.neighbours import APART, Stands, tight_caps, told_once, wrong_neighbours
 
 
 def told(*shelf: tuple[str, str], meant_for: str = "", place: str = "A1") -> list[tuple[str, str]]:
@@ -75,3 +78,91 @@ def test_a_tight_cap_is_found_only_where_gas_is_made() -> None:
     (found,) = tight_caps([*caps, ("B02", "", True)])
     assert found.subject == "S19"
     assert "vent it" in found.text
+
+
+# -- as values -------------------------------------------------------------------------
+
+
+def found(*shelf: tuple[str, str], meant_for: str = "") -> list[Danger]:
+    """The dangers of bottles of these groups in one place."""
+    return wrong_neighbours([Stands(bottle, (kind,), "A1", meant_for) for bottle, kind in shelf])
+
+
+def test_what_a_sheet_decides_by_stands_beside_the_sentence() -> None:
+    bleach, acid = found(("B04", "hypochlorite"), ("B13", "acid"), meant_for="acid")
+    why = "bleach beside acid: chlorine if they meet"
+    assert (bleach.kind, bleach.others, bleach.why) == (DangerKind.BESIDE, ("B13",), why)
+    assert (bleach.moves, acid.moves) == (Moves.IT, Moves.OTHER)
+    alone = found(("B04", "hypochlorite"), meant_for="acid")
+    assert [(one.others, one.moves) for one in alone] == [((), Moves.IT)]
+    (tight,) = tight_caps([("S19", "tight", True)])
+    assert tight.kind is DangerKind.TIGHT
+
+
+def test_all_neighbours_stand_there_though_four_are_named() -> None:
+    row = found(("B1", "acid"), *((f"B{n}", "alkali") for n in range(2, 8)))
+    assert row[0].others == ("B2", "B3", "B4", "B5", "B6", "B7")
+
+
+def test_of_two_that_stand_wrongly_one_is_told() -> None:
+    assert [each.subject for each in told_once(found(("B1", "acid"), ("B2", "alkali")))] == ["B1"]
+
+
+def test_what_has_to_go_is_told_and_not_what_may_stay() -> None:
+    # one acid beside three bleaches has the most of them, and stands where it belongs
+    shelf = (("B0", "acid"), ("B1", "hypochlorite"), ("B2", "hypochlorite"), ("B3", "hypochlorite"))
+    row = told_once(found(*shelf, meant_for="acid"))
+    assert [(each.subject, each.moves) for each in row] == [
+        (number, Moves.IT) for number in ("B1", "B2", "B3")
+    ]
+
+
+def test_whoever_has_most_tells_for_the_others() -> None:
+    row = told_once(found(("B1", "alkali"), ("B2", "alkali"), ("B3", "acid")))
+    assert [each.subject for each in row] == ["B3"]
+
+
+def test_of_two_that_both_have_to_go_both_are_told() -> None:
+    row = [
+        Danger(one, "x", DangerKind.BESIDE, (other,), "fire", Moves.IT)
+        for one, other in (("B1", "B2"), ("B2", "B1"))
+    ]
+    assert told_once(row) == row
+
+
+def test_who_is_not_named_by_another_speaks_for_himself() -> None:
+    row = told_once(found(("B1", "acid"), *((f"B{n}", "alkali") for n in range(2, 8))))
+    assert [each.subject for each in row] == ["B1", "B6", "B7"]
+
+
+def test_of_a_pair_with_two_reasons_both_are_told() -> None:
+    one = Stands("B1", ("acid", "cyanide"), "A1")
+    row = told_once(wrong_neighbours([one, Stands("B2", ("alkali", "acid"), "A1")]))
+    assert {each.why.split(":")[0] for each in row} == {"acid beside alkali", "cyanide beside acid"}
+    assert len(row) == 2
+
+
+def test_other_findings_stay_where_they_were() -> None:
+    strange = Finding("B9", "neighbours not checked")
+    tight = tight_caps([("S19", "tight", True)])
+    acid, alkali = found(("B1", "acid"), ("B2", "alkali"))
+    assert told_once([strange, acid, alkali, *tight]) == [strange, acid, *tight]
+
+
+@settings(max_examples=40)
+@given(
+    shelf=st.lists(
+        st.sampled_from(("acid", "alkali", "oxidiser", "flammable", "cyanide")), max_size=9
+    ),
+    meant_for=st.sampled_from(("", "acid", "flammable")),
+)
+def test_no_wrong_pair_goes_untold(shelf: list[str], meant_for: str) -> None:
+    every = found(*((f"B{n}", kind) for n, kind in enumerate(shelf)), meant_for=meant_for)
+    row = told_once(every)
+    named = {(each.subject, other, each.why) for each in row for other in each.others[:4]}
+    for each in every:
+        assert each in row or all(
+            {(each.subject, other, each.why), (other, each.subject, each.why)} & named
+            for other in each.others
+        )
+        assert each.moves is not Moves.IT or each in row

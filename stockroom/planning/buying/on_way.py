@@ -10,7 +10,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from datetime import date
 
-from stockroom.findings import Finding
+from stockroom.findings import Finding, Lasting
 from stockroom.keeping.record import Record
 from stockroom.keeping.verdict import limits_of
 from stockroom.planning.amounts import say
@@ -170,7 +170,7 @@ def placed_for(wants: Iterable[Want]) -> dict[str, str]:
 def overdue_guesses(facts: Facts) -> list[Finding]:
     """A guess for each order that should have come already and is counted on all the same."""
     return [
-        Finding(one.number, f"{one.line} counted from {one.counts}: overdue, so that is a guess")
+        Lasting(one.number, f"{one.line} counted from {one.counts}: overdue, so that is a guess")
         for one in on_its_way(facts)
         if one.expected < facts.as_at
     ]

@@ -11,8 +11,8 @@ from stockroom.planning.facts import Booking, Facts, Firmness
 from stockroom.reports.paper.week_also import checks_on
 from stockroom.reports.paper.week_classes import Classes
 from stockroom.reports.paper.week_makes import Makes
-from stockroom.reports.paper.week_parts import Job, short_day, tied
-from stockroom.reports.words import counted, listed, money, named
+from stockroom.reports.paper.week_parts import Job, tied
+from stockroom.reports.words import counted, listed, money, named, weekday_and_day
 
 BOOKING, DESTROY, ORDER, COMING = "booking", "destroy", "order", "delivery"
 MAKE, START, FINISH, BEFORE = "make", "start", "finish", "day before"
@@ -82,7 +82,7 @@ def _makes(known: Facts, plan: Plan) -> Iterator[Work]:
     for make in plan.makes:
         kind = START if make.ready > make.on else MAKE
         work = _make(make, kind, make.on, begun[make.id])
-        late = f"on {short_day(make.latest)} at the latest" if make.latest > make.on else ""
+        late = f"on {weekday_and_day(make.latest)} at the latest" if make.latest > make.on else ""
         by = f"begin by {begun[make.id].time}" if begun[make.id].time else ""
         yield replace(work, what=f"{kind} {work.what}", more=_some(by, *work.more, late))
         if make.id in ended and make.finish_on is not None:
@@ -118,14 +118,14 @@ def _before(known: Facts, plan: Plan) -> Iterator[Work]:
 
 def _order(plan: Plan, order: Order) -> Work:
     late = f"late by {counted(order.late, 'open day')}" if order.late else ""
-    by = f"order by {short_day(order.order_by)}"
+    by = f"order by {weekday_and_day(order.order_by)}"
     served = f"for {listed(order.for_bookings)}" if order.for_bookings else ""
     ask = f"ask {order.ask_first} first" if order.ask_first else ""
     supplier = f"from {order.supplier}" if order.supplier else ""
     # what should have been ordered is of no use on a day that is over
     on = max(order.order_by, plan.as_at)
     what = f"order {named(order.item, '')}, {order.packs} × {order.pack}"
-    needed = f"needed {short_day(order.need_by)}"
+    needed = f"needed {weekday_and_day(order.need_by)}"
     more = _some(by, late, ask, supplier, money(order.pence), needed, served)
     return Work(ORDER, order.line, order.for_bookings, on, what, more)
 

@@ -7,6 +7,8 @@ from dataclasses import dataclass
 from datetime import date
 from typing import Protocol
 
+from stockroom.reports.corrected import Corrected
+
 WHO = "--by XX"
 """What stands for the reader's own initials in a command."""
 
@@ -52,7 +54,7 @@ def together(points: Sequence[Point]) -> tuple[Point, ...]:
     return tuple(told.values())
 
 
-class Change(Protocol):
+class Change(Corrected, Protocol):
     """What was corrected in a table of the house."""
 
     @property
@@ -61,16 +63,6 @@ class Change(Protocol):
     def row(self) -> str: ...
     @property
     def column(self) -> str: ...
-    @property
-    def before(self) -> str: ...
-    @property
-    def after(self) -> str: ...
-    @property
-    def why(self) -> str: ...
-    @property
-    def by(self) -> str: ...
-    @property
-    def on(self) -> str: ...
 
 
 class HandIn(Protocol):

@@ -15,13 +15,22 @@ from stockroom.reports.files.morning_shelf import (
     leaned_on_late,
     not_written,
 )
+from stockroom.reports.paper.day_times import times_of
 from stockroom.reports.paper.head import Head, head_of
 from stockroom.reports.paper.week_also import checks_on
 from stockroom.reports.paper.week_classes import Classes
 from stockroom.reports.paper.week_makes import Makes
-from stockroom.reports.paper.week_parts import Job, short_day
+from stockroom.reports.paper.week_parts import Job
 from stockroom.reports.sheet import PRACTICE, page, section, wrap
-from stockroom.reports.words import counted, day_heading, listed, money, named, raised
+from stockroom.reports.words import (
+    counted,
+    day_heading,
+    listed,
+    money,
+    named,
+    raised,
+    weekday_and_day,
+)
 
 WIDTH = 72
 """Columns of the note: what a mailer shows without breaking lines. Common practice, no source."""
@@ -100,9 +109,12 @@ def _class(classes: Classes, booking: Booking) -> Due:
 
 def _someone(classes: Classes, plan: Plan) -> list[Due]:
     rows = []
-    for booking in classes.on(plan.as_at):
-        kept = booking.number in {each.booking for each in plan.watch}
-        for first, last in must_be_here(classes.known, booking, never_kept=kept):
+    kept = {each.booking for each in plan.watch}
+    outs = times_of(classes.known, plan, plan.as_at).set_out
+    # what is done already is not set out any more
+    for booking in (each for each in classes.on(plan.as_at) if each.number in outs):
+        out, never = outs[booking.number], booking.number in kept
+        for first, last in must_be_here(classes.known, booking, set_out=out, never_kept=never):
             rows.append(Due(f"{clock(first)} to {clock(last)}: for {booking.number}"))
     return rows
 
@@ -131,7 +143,7 @@ def _orders(plan: Plan) -> list[Due]:
             late = f"late by {counted(order.late, 'open day')}" if order.late else "today"
             served = f"for {listed(order.for_bookings)}" if order.for_bookings else ""
             ask = f"ask {order.ask_first} first" if order.ask_first else ""
-            needed = f"needed {short_day(order.need_by)}"
+            needed = f"needed {weekday_and_day(order.need_by)}"
             what = f"{named(order.item, '')}, {order.packs} × {order.pack}: {late}"
             more = (ask, money(order.pence), needed, served)
             rows.append(Due(what, tuple(each for each in more if each)))
@@ -144,7 +156,7 @@ def _coming(plan: Plan) -> list[Due]:
         if each.expected <= plan.as_at:
             late = f"overdue by {counted(each.overdue, 'open day')}" if each.overdue else ""
             what = f"{named(each.item, '')}, {each.packs} × {each.pack}, order {each.number}"
-            expected = f"expected {short_day(each.expected)}"
+            expected = f"expected {weekday_and_day(each.expected)}"
             ask = f"ask {each.supplier or 'the supplier'}" if each.overdue else ""
             rows.append(Due(what, tuple(one for one in (late or expected, ask) if one)))
     return rows

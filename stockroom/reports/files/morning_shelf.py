@@ -5,18 +5,16 @@ from __future__ import annotations
 from dataclasses import dataclass
 from datetime import timedelta
 
-from stockroom.findings import Finding
+from stockroom.findings import Danger, DangerKind
 from stockroom.keeping.verdict import Condition, verdict
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Firmness
-from stockroom.planning.standing import standing_there, where_things_stand
-from stockroom.reports.paper.week_also import told_once
+from stockroom.planning.standing import past_safety_date, standing_there, where_things_stand
 from stockroom.reports.words import listed, raised
+from stockroom.safety.neighbours import told_once
 
 FORTNIGHT = timedelta(days=14)
 """How far ahead a class makes a check urgent, how far back an entry is asked for. Our choice."""
-
-_NO_RULE = "neighbours not checked"
 
 
 @dataclass(frozen=True, slots=True)
@@ -34,22 +32,22 @@ def at_the_shelf(known: Facts) -> list[Due]:
     Due every day until it is mended: what can hurt does not become less by being told once.
     """
     stand = where_things_stand(known.bottles, known.lines, known.places)
-    wrong = [each for each in told_once(stand) if not each.text.startswith(_NO_RULE)]
+    # a group without a rule is for the office to settle, not for the shelf
+    wrong = [each for each in told_once(stand) if isinstance(each, Danger)]
     item = {bottle.number: known.lines[bottle.line].item for bottle in known.bottles}
     # the cap and the safety date first: they can hurt whoever does nothing
-    row = sorted([*_past(known), *wrong], key=lambda each: each.text.startswith("stands"))
+    row = sorted([*_past(known), *wrong], key=lambda each: each.kind is DangerKind.BESIDE)
     return [
         Due(f"{each.subject} {raised(item[each.subject])}", (raised(each.text),)) for each in row
     ]
 
 
-def _past(known: Facts) -> list[Finding]:
+def _past(known: Facts) -> list[Danger]:
     found = []
     for bottle in standing_there(known.bottles):
         judged = verdict(bottle.record, known.lines[bottle.line].rules, known.as_at)
         if judged.warning:
-            text = f"safety date {judged.good_until} ({judged.decided_by}): past it, "
-            found.append(Finding(bottle.number, text + judged.warning))
+            found.append(past_safety_date(bottle.number, judged))
     return found
 
 

@@ -10,13 +10,12 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from datetime import date
 
-from stockroom.measure.days import MONTHS
 from stockroom.planning.decisions import Answer, Outcome, Plan
 from stockroom.planning.facts import Booking, Facts
 from stockroom.planning.people import clock
 from stockroom.planning.ready import Readiness, buys_of, readiness
 from stockroom.reports.paper.day import bookings_of, instead_of_planned, planned_for
-from stockroom.reports.paper.day_notes import different_of, tied
+from stockroom.reports.paper.day_notes import amounts_tied, different_of
 from stockroom.reports.paper.day_rows import rows_of
 from stockroom.reports.paper.day_strengths import (
     DILUTED,
@@ -27,7 +26,7 @@ from stockroom.reports.paper.day_strengths import (
     strengths_of,
 )
 from stockroom.reports.sheet import PRACTICE
-from stockroom.reports.words import TIED, counted, day_heading, listed
+from stockroom.reports.words import TIED, counted, day_and_month, day_heading, listed
 
 LINES, WIDTH = 10, 38
 """The most lines, and the most characters in one: a small screen, by the trade's own wish."""
@@ -72,8 +71,11 @@ def phone_text(phone: Phone) -> str:
 
 def _what(known: Facts, on: date, bookings: tuple[Booking, ...]) -> str:
     day = day_heading(on).removesuffix(f" {on.year}")
+    shut = not known.calendar.is_open(on)
     if not bookings:
-        return f"{day}: nothing booked"
+        return f"{day}{', closed' if shut else ''}: nothing booked"
+    # before all that may be cut off, since a class on such a day is out of the ordinary
+    day += ", closed," if shut else ""
     if len(bookings) > 1:
         return f"{day} {clock(bookings[0].minute)}: {counted(len(bookings), 'booking')}"
     (only,) = bookings
@@ -134,18 +136,18 @@ def _hours(
 
 def _to_do(plan: Plan, answer: Readiness) -> Iterator[tuple[str, int]]:
     for check in answer.checks:
-        by = _short_day(check.by)
+        by = day_and_month(check.by)
         yield f"{check.what.capitalize()} {check.subject} by {by}: {check.item}", 1
     for words in buys_of(plan, answer.needs):
         yield f"{words[:1].upper()}{words[1:]}", 1
     makes = answer.makes
     if len(makes) > MAKES_NAMED:
-        first, last = _short_day(makes[0].on), _short_day(max(make.on for make in makes))
+        first, last = day_and_month(makes[0].on), day_and_month(max(make.on for make in makes))
         when = first if first == last else f"{first} to {last}"
         yield f"{len(makes)} makes still to do, {when}", len(makes)
         return
     for make in makes:
-        yield f"Make {_short_day(make.on)}: {make.item} {make.strength}", 1
+        yield f"Make {day_and_month(make.on)}: {make.item} {make.strength}", 1
 
 
 def _other(known: Facts, plan: Plan, needs: tuple[Answer, ...]) -> Iterator[str]:
@@ -170,10 +172,6 @@ def _strengths(strengths: tuple[Known, ...]) -> Iterator[str]:
     if strengths and not unchecked and not other:
         found = all(told.basis in (FOUND, DILUTED) for told in strengths)
         yield "Strengths as card" if found else "Strengths as card, expected"
-
-
-def _short_day(on: date) -> str:
-    return f"{on.day} {MONTHS[on.month - 1][:3]}"
 
 
 # -- fitted to the screen ------------------------------------------------------------------------
@@ -209,7 +207,7 @@ def _lines(text: str) -> list[str]:
 
 def _cut(text: str, most: int) -> list[str]:
     """A text in at most so many lines; what is cut off ends with "…"."""
-    whole = textwrap.wrap(tied(text), WIDTH, break_on_hyphens=False)
+    whole = textwrap.wrap(amounts_tied(text), WIDTH, break_on_hyphens=False)
     lines = [line.replace(TIED, " ") for line in whole]
     if len(lines) <= most:
         return lines

@@ -13,23 +13,21 @@ from stockroom.keeping.verdict import verdict
 from stockroom.measure.amounts import Kind
 from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.facts import Facts, Line, Method
-from stockroom.planning.making.make_card import goes_of
 from stockroom.reports.paper.card_hazards import Danger, dangers_of, wants_gloves
 from stockroom.reports.paper.card_sources import Taken, amounts_of, taken_of
 from stockroom.reports.paper.card_steps import Care, Step, steps_of
 from stockroom.reports.paper.head import Head, head_of
+from stockroom.reports.paper.left_over import over_words
+from stockroom.reports.paper.make_number import number_line
 from stockroom.reports.words import (
     amount,
     counted,
     day,
     day_heading,
     listed,
-    measured,
     named,
     raised,
 )
-from stockroom.safety.cautions import Step as When
-from stockroom.safety.cautions import cautions_about
 from stockroom.safety.hazards import Hazards
 
 
@@ -112,7 +110,7 @@ def _card(known: Facts, plan: Plan, make: Make, hazards: Mapping[str, Hazards], 
         vessels=_vessels(make),
         steps=tuple(steps),
         warnings=tuple(raised(each) for each in make.too_little),
-        over=_over(make, line),
+        over=over_words(make, line),
         good_until=_good_until(make, line, known.methods.get(make.line)),
         dangers=dangers,
         blanks=_blanks(known, make),
@@ -143,21 +141,6 @@ def _vessels(make: Make) -> str:
         return ""
     each = amount(round(make.volume / make.vessels), Kind.VOLUME)
     return f"in {make.vessels} vessels, {each} in each; then mixed"
-
-
-def _over(make: Make, line: Line) -> str:
-    if make.heel <= 0:
-        return ""
-    left = measured(make.heel, Kind.VOLUME)
-    # a caution speaks of where it goes: a card must not send to the sink what is collected
-    collected = any(each.startswith("Collect") for each in (*make.cautions, *waste_words(line)))
-    how = "collect it" if collected else "pour it away by the usual route"
-    return f"{left} over: {'label it and keep it' if make.heel_kept else how}"
-
-
-def waste_words(line: Line) -> tuple[str, ...]:
-    """What the list of cautions says of what is left of a line."""
-    return tuple(each.text for each in cautions_about([goes_of(line)], steps=(When.WASTE,)))
 
 
 def _good_until(make: Make, line: Line, method: Method | None) -> str:
@@ -199,9 +182,10 @@ def _type_back(make: Make) -> tuple[str, ...]:
 
 
 def cards_lines(sheet: Cards) -> dict[str, str]:
-    """Each card: its days, how much of it from what, for whom; then each step, each hazard."""
+    """Each card: its number, days, how much of it from what, for whom; each step, each hazard."""
     told: dict[str, str] = {}
     for card in sheet.cards:
+        told |= number_line(card.number, card.name)
         told[card.key] = _said(card)
         for number, step in enumerate(card.steps, 1):
             told[step_key(card, number)] = f"{card.name}, step {number}: {_step_said(step)}"

@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 from stockroom.planning.decisions import Make
-from stockroom.reports.paper.label_of import LOOK_IT_UP, hazard_text
+from stockroom.reports.paper.label_of import hazard_text
 from stockroom.reports.words import named, raised
 from stockroom.safety.hazards import Hazards
 
@@ -44,7 +44,5 @@ def dangers_of(make: Make, hazards: Mapping[str, Hazards]) -> tuple[Danger, ...]
 
 
 def _danger(whose: str, key: str, found: Hazards | None, *, product: bool = False) -> Danger:
-    if found is None:
-        return Danger(whose, product, statements=(("", LOOK_IT_UP),))
     text = hazard_text(found, key)
     return Danger(whose, product, text.signal, text.symbols, text.statements, text.basis)

@@ -6,6 +6,7 @@ import re
 from collections.abc import Sequence
 from dataclasses import dataclass
 
+from stockroom.chemistry.water_words import parted
 from stockroom.keeping.strength import strengths_on
 from stockroom.measure.amounts import Kind
 from stockroom.planning.amounts import say_strength
@@ -15,11 +16,6 @@ from stockroom.reports.paper.card_steps import Amounts
 from stockroom.reports.words import TIED, amount, day, day_heading, measured, named, raised
 
 NOT_CHECKED = "nominal, not checked"
-
-# the form decides the mass: a card must name it larger than the rest of the name
-_FORM = re.compile(
-    r"\b((?:mono|hemi|di|tri|tetra|penta|hexa|hepta|octa|nona|deca|dodeca)hydrate|anhydrous)\b"
-)
 
 
 @dataclass(frozen=True, slots=True)
@@ -48,12 +44,13 @@ def taken_of(known: Facts, plan: Plan, make: Make, draw: Draw) -> Taken:
     """One source of a make, as its card shows it."""
     line = known.lines.get(draw.line)
     bottle = next((each for each in known.bottles if each.number == draw.bottle), None)
-    form = _FORM.search(draw.item) if draw.kind is Kind.MASS else None
+    # the form decides the mass: a card must name it larger than the rest of the name
+    form = parted(draw.item)[1] if draw.kind is Kind.MASS else ""
     often = measured(round(draw.amount / make.vessels), draw.kind)
     return Taken(
         amount=measured(draw.amount, draw.kind),
         what=_what(line, draw),
-        form=form.group(1) if form else "",
+        form=form,
         bottle=draw.bottle,
         place=bottle.place if bottle else "",
         origin="" if draw.bottle else _origin(plan, draw),

@@ -18,10 +18,10 @@ from stockroom.planning.ready import Readiness, readiness
 from stockroom.reports.paper.day_class import Row
 from stockroom.reports.paper.day_notes import (
     Cover,
+    amounts_tied,
     cover_of,
     different_of,
     guessed_of,
-    tied,
     waste_of,
 )
 from stockroom.reports.paper.day_rows import rows_of
@@ -187,7 +187,7 @@ def _part(known: Facts, plan: Plan, bookings: tuple[Booking, ...], on: date) -> 
         title=raised(title) if len(bookings) == 1 else "",
         verdict=verdict_words(answer),
         ready=answer.ready,
-        to_do=tuple(tied(each) for each in answer.to_do),
+        to_do=tuple(amounts_tied(each) for each in answer.to_do),
         rows=rows_of(known, plan, bookings, answer),
         strengths=strengths,
         different=different_of(known, plan, answer.needs, strengths),

@@ -174,8 +174,8 @@ class Lesson:
                 whose = f"what is left of {self._name()}"
                 what = f"DESTROYED BY {clock(each.destroy_by)}: {whose}, every vessel rinsed{by}"
                 # a container takes nothing of it before: these are of what then remains
-                waste = self._cautions(Step.WASTE)
-                after = (f"Once destroyed: {' '.join(waste)}",) if waste else ()
+                into = self._cautions(Step.WASTE, collects=True)
+                after = (f"Once destroyed: {' '.join(into)}",) if into else ()
                 how = (*destroyed_how(each.how), *after)
                 row = self._row("destroy", each.destroy_by, DESTROY, what, cautions=how)
                 yield replace(row, must=True)
@@ -184,17 +184,23 @@ class Lesson:
         minute = self.booking.minute + self.booking.lasts_minutes
         if any(each.booking == self.booking.number for each in self.plan.watch):
             what = f"END {self._name()}: {DESTROY_FIRST}, then clear away"
-            return self._row("end", minute, END, what)
+            never = self._cautions(Step.WASTE, collects=False)
+            return self._row("end", minute, END, what, cautions=never)
         what = f"END {self._name()}: clear away"
         return self._row("end", minute, END, what, cautions=self._cautions(Step.WASTE))
 
-    def _cautions(self, step: Step) -> tuple[str, ...]:
-        """What the list of cautions says of these things at a step, unless the recipe has."""
+    def _cautions(self, step: Step, *, collects: bool | None = None) -> tuple[str, ...]:
+        """What the list of cautions says of these things at a step, unless the recipe has.
+
+        `collects` asks for those alone that name a container, or for the others.
+        """
         said = (self.recipe.handling, self.recipe.never_kept, self.recipe.waste)
         items: dict[Caution, list[str]] = {}
         for need in self.needs:
             thing = goes_of(self.known.lines[need.line])
             for caution in cautions_about([thing], said=said, steps=(step,)):
+                if collects not in (None, caution.collects):
+                    continue
                 items.setdefault(caution, []).append(need.item)
         return tuple(
             f"{'; '.join(dict.fromkeys(names))}: {caution.text}" for caution, names in items.items()

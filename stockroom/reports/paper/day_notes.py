@@ -47,10 +47,10 @@ def different_of(
         row += [_strength_words(told) for told in mine if differs(told)]
         row += _other_bottle(need)
         row += _other_form(known, makes.get(need.make), need.booking.number)
-    return tuple(tied(each) for each in dict.fromkeys(row))
+    return tuple(amounts_tied(each) for each in dict.fromkeys(row))
 
 
-def tied(text: str) -> str:
+def amounts_tied(text: str) -> str:
     """Words of the plan as they are printed, no amount parted from its unit or in two."""
     whole = re.sub(r"(?<=\d) (?=\d{3}\b)", TIED, raised(text))
     return re.sub(r"(?<=\d) (?=(?:cm³|dm³|mol/dm³|g|vol|%|min|h|°C)(?![a-z]))", TIED, whole)
@@ -107,7 +107,7 @@ def guessed_of(plan: Plan, needs: tuple[Answer, ...], known: Facts) -> tuple[str
     row = []
     for guess in leaned_on(known, plan, needs):
         whose = " ".join(filter(None, (guess.subject, items.get(guess.subject))))
-        row.append(tied(f"{whose}: {guess.text}"))
+        row.append(amounts_tied(f"{whose}: {guess.text}"))
     return tuple(row)
 
 
@@ -116,7 +116,9 @@ def waste_of(known: Facts, bookings: tuple[Booking, ...]) -> tuple[str, ...]:
     row = []
     for booking in bookings:
         waste = known.recipes[booking.recipe, booking.version].waste
-        row.append(tied(f"{booking.number}: {waste or 'none named: ask before it goes anywhere'}"))
+        row.append(
+            amounts_tied(f"{booking.number}: {waste or 'none named: ask before it goes anywhere'}")
+        )
     return tuple(row)
 
 

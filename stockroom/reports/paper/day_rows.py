@@ -11,7 +11,7 @@ from stockroom.measure.days import format_time
 from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.facts import Booking, Facts
 from stockroom.planning.making.make_card import goes_of
-from stockroom.planning.people import DESTROY_AFTER, clock, unstaffed
+from stockroom.planning.people import clock, must_be_here
 from stockroom.planning.ready import Readiness
 from stockroom.reports.paper.day_class import BEGIN, DESTROY_FIRST, END, HERE, WORK, Lesson, Row
 from stockroom.reports.paper.day_times import TOO_LATE, Times, times_of
@@ -112,7 +112,12 @@ def _somebody(
     gaps = [
         gap
         for booking in bookings
-        for gap in _hours(known, booking, times, never_kept=booking.number in kept)
+        for gap in must_be_here(
+            known,
+            booking,
+            set_out=times.set_out[booking.number],
+            never_kept=booking.number in kept,
+        )
     ]
     joined: list[tuple[int, int]] = []
     for first, last in sorted(gaps):
@@ -125,13 +130,3 @@ def _somebody(
     for first, last in joined:
         what = f"someone must be here from {clock(first)} to {clock(last)}: not staffed"
         yield Row(f"here {clock(first)}", first, HERE, clock(first), what, cautions=alone)
-
-
-def _hours(
-    known: Facts, booking: Booking, times: Times, *, never_kept: bool
-) -> list[tuple[int, int]]:
-    if known.calendar.is_open(booking.on):
-        return unstaffed(known, booking, never_kept=never_kept)
-    # nobody is there at all on a closed day: from setting out to the end, or until it is destroyed
-    ends = booking.minute + booking.lasts_minutes + (DESTROY_AFTER if never_kept else 0)
-    return [(times.set_out[booking.number], ends)]

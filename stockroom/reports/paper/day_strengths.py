@@ -14,13 +14,12 @@ from decimal import Decimal
 
 from stockroom.keeping.record import Record
 from stockroom.keeping.strength import Strengths, strengths_on
-from stockroom.measure.days import MONTHS
 from stockroom.planning.amounts import label_scale, say_strength
 from stockroom.planning.choosing.fitness import found_valid_from
 from stockroom.planning.decisions import Answer, Draw, Make, Plan
 from stockroom.planning.facts import Bottle, Closeness, Facts, Line, Requirement
 from stockroom.planning.known import by_dilution
-from stockroom.reports.words import raised
+from stockroom.reports.words import day_in_words, raised
 
 FOUND, DILUTED, EXPECTED, LABEL, UNCHECKED = (
     "found",
@@ -132,17 +131,17 @@ class _Seen:
         value = draw.strength or strengths.likely or line.strength or 0.0
         last = strengths.found_on
         if wanted.closeness is Closeness.EXACT and not _in_time(strengths, wanted, line, on):
-            before = f"found {plain_day(last)}, too long before" if last else ""
+            before = f"found {day_in_words(last)}, too long before" if last else ""
             return _Basis(value, UNCHECKED, before, bottle.number)
         if wanted.closeness is Closeness.EXACT and strengths.found and last:
             # in time, so what was found counts; a class reckons with no estimate
-            return _Basis(strengths.found, FOUND, plain_day(last), bottle.number)
+            return _Basis(strengths.found, FOUND, day_in_words(last), bottle.number)
         return self._of_bottle(bottle, line, strengths, value)
 
     def _of_bottle(self, bottle: Bottle, line: Line, strengths: Strengths, value: float) -> _Basis:
         here = bottle.number
         if strengths.found is not None and strengths.found_on is not None:
-            found, day = say_strength(line, strengths.found), plain_day(strengths.found_on)
+            found, day = say_strength(line, strengths.found), day_in_words(strengths.found_on)
             if _alike(value, strengths.found):
                 return _Basis(value, FOUND, day, here)
             return _Basis(value, EXPECTED, f"carried forward from {found} found {day}", here)
@@ -157,7 +156,7 @@ class _Seen:
         value = self._aged(make, line, on)
         method = self.known.methods.get(line.key)
         to_find = method is not None and method.titrated
-        when = plain_day(make.finish_on or make.ready)
+        when = day_in_words(make.finish_on or make.ready)
         if wanted.closeness is Closeness.EXACT:
             return _Basis(value, UNCHECKED, _titrate(to_find, when), make.id)
         if to_find:
@@ -216,11 +215,6 @@ def two_figures(line: Line, value: float) -> str:
     return f"{shown:f} {unit.replace('dm3', 'dm³')}".strip()
 
 
-def plain_day(day: date) -> str:
-    """A day as it is said on a board: "20 Nov 2026"."""
-    return f"{day.day} {MONTHS[day.month - 1][:3]} {day.year}"
-
-
 def percent_off(off: float) -> str:
     """ "weaker by 3.5 %", "stronger by 12 %": two figures, since neither end is better known."""
     size = abs(off) * 100
@@ -257,7 +251,7 @@ def _basis_words(basis: str) -> str:
 
 
 def _spelt(text: str) -> str:
-    return _ISO.sub(lambda found: plain_day(date.fromisoformat(found[0])), text)
+    return _ISO.sub(lambda found: day_in_words(date.fromisoformat(found[0])), text)
 
 
 def _titrate(to_find: bool, when: str) -> str:

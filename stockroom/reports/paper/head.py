@@ -112,8 +112,19 @@ def _over(key: str, today: date) -> bool:
 
 
 def change_words(before: str | None, now: str) -> str:
-    """A line that is new, or what it says now and what it said."""
-    return f"new: {now}" if before is None else f"{now} (was: {before})"
+    """A line that is new, or what it says now and what it said.
+
+    Of a line of several parts, "; " between them, the first is always told, and of the others
+    those alone that changed.
+    """
+    if before is None:
+        return f"new: {now}"
+    first, *rest = now.split("; ")
+    was, *others = before.split("; ")
+    new = [each for each in rest if each not in others]
+    old = [each for each in others if each not in rest]
+    here = [was] if was != first else []
+    return f"{'; '.join([first, *new])} (was: {'; '.join([*here, *old]) or 'without'})"
 
 
 # -- as text ------------------------------------------------------------------------

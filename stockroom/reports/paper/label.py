@@ -15,9 +15,6 @@ from stockroom.reports.paper.head import Head
 from stockroom.reports.paper.kinds import Kind
 from stockroom.reports.paper.label_grid import Grid
 
-UNKNOWN = "UNKNOWN, do not use or move"
-"""What is written on a bottle nobody can name."""
-
 
 class Sort(StrEnum):
     """What a label is for."""
@@ -82,10 +79,21 @@ def labels_text(sheet: Labels, width: int) -> str:
 
 
 def label_lines(sheet: Labels) -> dict[str, str]:
-    """Each label by its number, and all it says."""
+    """Each label by its number, and all it says; for a batch which make had that number."""
     from stockroom.reports.paper.label_text import in_one_line
+    from stockroom.reports.paper.make_number import number_line
 
-    return {label.number or label.about: in_one_line(label) for label in sheet.labels}
+    told = {label.number or label.about: in_one_line(label) for label in sheet.labels}
+    for number, thing in things_of(sheet).items():
+        told |= number_line(number, thing)
+    return told
+
+
+def things_of(sheet: Labels) -> dict[str, str]:
+    """What the batches among them are, by the number of the make."""
+    batches = [label for label in sheet.labels if label.about]
+    # what is not known of the strength is no part of what it is
+    return {b.about: f"{b.name} {b.strength if b.known else ''}".strip() for b in batches}
 
 
 def _more(sheet: Labels) -> Mapping[str, Any]:

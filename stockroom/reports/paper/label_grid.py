@@ -16,6 +16,9 @@ PAPER_MM = {"A4": (210.0, 297.0), "Letter": (215.9, 279.4)}
 FULL, STRIP, SHORT = (70.0, 37.0), (50.0, 15.0), (50.0, 20.0)
 """The sizes usually printed. Our choice; the first two fit their sheets three and four across."""
 
+EDGE = 4.0
+"""mm along the edge of the paper that many printers leave blank. Our choice."""
+
 SLACK = 0.05
 """mm by which sums of typed figures may be over: they are rounded."""
 
@@ -62,17 +65,19 @@ def size_of(text: str | None, usual: tuple[float, float]) -> tuple[float, float]
             f"--size {text}: too small for what stands on it.",
             f"At least {usual[0]:g}x{usual[1]:g} mm for this label.",
         )
-    if max(wide, high) > _LARGEST:
-        raise BadInput(f"--size {text}: that is no label.", f"At most {_LARGEST:g} mm each way.")
+    for side, name in ((wide, "wide"), (high, "high")):
+        if side > _LARGEST:
+            raise BadInput(
+                f"--size {text}: {side:g} mm {name} is no label.",
+                f"At most {_LARGEST:g} mm each way.",
+            )
     return wide, high
 
 
 _LARGEST = 200.0
 
 
-def grid_of(
-    sheet: str | None, margin: str | None, gap: str | None, start: int, size: tuple[float, float]
-) -> Grid | None:
+def grid_of(sheet: str | None, margin: str | None, gap: str | None, start: int) -> Grid | None:
     """The sheet meant by "3x8" with its margins (left,top) and gaps (across,down), None for none.
 
     Raises: BadInput for what cannot be read, or was given without --sheet.
@@ -104,14 +109,27 @@ def grid_of(
 def check_fits(grid: Grid, size: tuple[float, float], paper: str) -> None:
     """Nothing if the sheet fits on the paper. Raises: BadInput with what it wants."""
     wide, high = PAPER_MM[paper]
-    across = grid.left + grid.across * size[0] + (grid.across - 1) * grid.gap_across
-    along = grid.top + grid.down * size[1] + (grid.down - 1) * grid.gap_down
+    across, along = _reach(grid, size)
     if across > wide + SLACK or along > high + SLACK:
         raise BadInput(
             f"{grid.across}x{grid.down} labels of {size[0]:g}x{size[1]:g} mm want"
             f" {across:g} x {along:g} mm; {paper} has {wide:g} x {high:g} mm.",
             "Give fewer, smaller ones, or --margin and --gap as they are on the sheet.",
         )
+
+
+def from_edge(grid: Grid, size: tuple[float, float], paper: str) -> float:
+    """How far the outermost labels are from the nearest edge of the paper, in mm."""
+    wide, high = PAPER_MM[paper]
+    across, along = _reach(grid, size)
+    return min(grid.left, grid.top, wide - across, high - along)
+
+
+def _reach(grid: Grid, size: tuple[float, float]) -> tuple[float, float]:
+    """Where the last label across and the last one down end, in mm."""
+    across = grid.left + grid.across * size[0] + (grid.across - 1) * grid.gap_across
+    along = grid.top + grid.down * size[1] + (grid.down - 1) * grid.gap_down
+    return across, along
 
 
 def _two(text: str | None, option: str, said: str) -> tuple[float, float]:

@@ -11,15 +11,15 @@ from stockroom.chemistry.formula import molar_mass
 from stockroom.errors import BadAmount, NotAllowed
 from stockroom.keeping.record import Record
 from stockroom.keeping.rules import Origin, Rule, RuleKind
+from stockroom.keeping.unnamed import UNKNOWN
 from stockroom.keeping.verdict import Condition, Verdict, verdict
-from stockroom.measure.days import MONTHS
 from stockroom.measure.formats import format_strength
 from stockroom.measure.periods import format_period
 from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import Make
 from stockroom.planning.facts import Bottle, Form, Line, Place
-from stockroom.reports.paper.label import UNKNOWN, HazardText, Label, Sort
-from stockroom.reports.words import MARKS, raised
+from stockroom.reports.paper.label import HazardText, Label, Sort
+from stockroom.reports.words import MARKS, day_in_words, raised
 from stockroom.safety.clp import NOT_ENTERED, PH_RULE
 from stockroom.safety.hazards import Hazards
 from stockroom.safety.statements import statement
@@ -37,11 +37,6 @@ Dates = list[tuple[str, str]]
 
 # one word that begins as an element does, without three small letters on end: not "Iodine"
 _LIKE_FORMULA = re.compile(r"(?!.*[a-z]{3})[A-Z(\[][A-Za-z0-9().·*+\-\[\]]*")
-
-
-def short_day(when: date) -> str:
-    """A day with its month in letters: "10 Dec 2026". Of one reading, and short."""
-    return f"{when.day} {MONTHS[when.month - 1][:3]} {when.year}"
 
 
 def full_label(
@@ -98,8 +93,8 @@ def opened_strip(bottle: Bottle, line: Line, found: Verdict) -> Label:
     opened, lasts = record.opened, _from_opening(line.rules)
     guess = " (guessed)" if record.opened_guessed else ""
     dates = (
-        (came, short_day(first) if first else ""),
-        ("opened", f"{short_day(opened)}{guess}" if opened else ""),
+        (came, day_in_words(first) if first else ""),
+        ("opened", f"{day_in_words(opened)}{guess}" if opened else ""),
         *(_use_by(found) if opened or not lasts else [("use by", "")]),
     )
     note = f"use by: opened + {lasts}" if lasts and not opened else ""
@@ -120,10 +115,10 @@ def _use_by(found: Verdict) -> Dates:
 
     A blank where neither is set.
     """
-    last = short_day(found.usable_until) if found.usable_until else ""
+    last = day_in_words(found.usable_until) if found.usable_until else ""
     rows: Dates = [(_until_word(found, "use by"), last)]
     if found.recheck_by and (found.usable_until or date.max) > found.recheck_by:
-        recheck = ("recheck by", short_day(found.recheck_by))
+        recheck = ("recheck by", day_in_words(found.recheck_by))
         rows = [recheck, *rows] if last else [recheck]
     return rows
 
@@ -155,8 +150,8 @@ def batch_label(make: Make, line: Line, hazards: Hazards, made_on: date | None) 
     made = made_on or make.on
     ready = made + (make.ready - make.on)
     record = Record(made=made, nominal=line.strength, ready_on=ready)
-    dates: Dates = [("made", short_day(made))]
-    dates += [("ready from", short_day(ready))] if ready != made else []
+    dates: Dates = [("made", day_in_words(made))]
+    dates += [("ready from", day_in_words(ready))] if ready != made else []
     # what is titrated on finishing is known from that day: nobody can print it before
     titrated = make.finishing and any(rule.kind is RuleKind.RECHECK for rule in line.rules)
     judged = verdict(record, line.rules, ready)
@@ -194,12 +189,13 @@ def strength_words(bottle: Bottle, line: Line, found: Verdict) -> tuple[str, str
     """The strength to print and, in words, how it is known: found and when, or that it is not."""
     known, nominal = found.strengths, raised(line.strength_text)
     if known.found is not None and known.found_on is not None and line.unit:
-        said = f"found {short_day(known.found_on)}"
+        said = f"found {day_in_words(known.found_on)}"
         return raised(say_strength(line, known.found)), said
     if bottle.record.blend is not None and line.unit:
         how = f", {bottle.known_by}" if bottle.known_by else ""
         blend = bottle.record.blend
-        return format_strength(blend.strength, line.unit), f"worked out {short_day(blend.on)}{how}"
+        said = f"worked out {day_in_words(blend.on)}{how}"
+        return format_strength(blend.strength, line.unit), said
     if nominal:
         fades = any(rule.kind is RuleKind.FADES for rule in line.rules)
         how = f", {bottle.known_by}" if bottle.known_by else ""
@@ -215,13 +211,13 @@ def _dates(bottle: Bottle, line: Line, found: Verdict) -> Dates:
     record = bottle.record
     rows: Dates = []
     if bottle.made_here or record.made:
-        rows.append(("made", short_day(record.made) if record.made else ""))
+        rows.append(("made", day_in_words(record.made) if record.made else ""))
         if record.ready_on and record.ready_on != record.made:
-            rows.append(("ready from", short_day(record.ready_on)))
+            rows.append(("ready from", day_in_words(record.ready_on)))
     else:
         guessed = " (guessed)" if record.opened_guessed else ""
-        rows.append(("received", short_day(record.received) if record.received else ""))
-        rows.append(("opened", f"{short_day(record.opened)}{guessed}" if record.opened else ""))
+        rows.append(("received", day_in_words(record.received) if record.received else ""))
+        rows.append(("opened", f"{day_in_words(record.opened)}{guessed}" if record.opened else ""))
     # a blank, where a look has to set the day first
     undated = found.condition is Condition.NO_DATE
     return rows + ([("good until", "")] if undated else until_rows(found))
@@ -231,9 +227,9 @@ def until_rows(found: Verdict) -> Dates:
     """ "good until" (or by when to test or discard) and "recheck by", whichever are set."""
     rows: Dates = []
     if found.usable_until:
-        rows.append((_until_word(found, "good until"), short_day(found.usable_until)))
+        rows.append((_until_word(found, "good until"), day_in_words(found.usable_until)))
     if found.recheck_by:
-        rows.append(("recheck by", short_day(found.recheck_by)))
+        rows.append(("recheck by", day_in_words(found.recheck_by)))
     return rows
 
 
@@ -264,10 +260,13 @@ def _from_opening(rules: Iterable[Rule]) -> str:
     return next((format_period(lasts) for lasts in lives if lasts), "")
 
 
-def hazard_text(found: Hazards, what: str) -> HazardText:
-    """The hazards for a label: the house's text where typed, else what is worked out, else so."""
+def hazard_text(found: Hazards | None, what: str) -> HazardText:
+    """The hazards for a label: the house's text where typed, else what is worked out.
+
+    Where neither is held, that it is not entered; so too for None.
+    """
     ask = f"stockroom hazards {what}"
-    if found.sheet:
+    if found is not None and found.sheet:
         return HazardText(
             found.signal_word,
             found.pictograms,
@@ -275,7 +274,7 @@ def hazard_text(found: Hazards, what: str) -> HazardText:
             f"from {found.sheet.sheet}",
             ask,
         )
-    if not found.entered:
+    if found is None or not found.entered:
         return HazardText(statements=(("", LOOK_IT_UP),), ask=ask)
     codes = (*found.statements, *found.supplemental)
     words = tuple((code, _wording(found, code)) for code in codes)

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from datetime import date
 
 from stockroom.errors import NotAllowed
+from stockroom.keeping.unnamed import is_unnamed
 from stockroom.planning.decisions import Make
 from stockroom.planning.facts import Line, Place
 from stockroom.planning.on_shelf import OnShelf
@@ -22,9 +23,6 @@ from stockroom.reports.paper.label_of import (
 )
 from stockroom.reports.paper.label_short import check_short, must_confirm
 from stockroom.safety.hazards import Hazards
-
-_UNKNOWN = frozenset({"unknown", "unknown liquid"})
-"""The lines that bottles are logged under which nobody can name."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -70,7 +68,7 @@ def labels_of(
 def _of_bottle(
     row: OnShelf, found: Hazards, doubt: str, places: tuple[Place, ...], wish: Wish
 ) -> Label:
-    if row.line.key in _UNKNOWN:
+    if is_unnamed(row.line.key):
         if wish.size[0] < FULL[0] or wish.size[1] < FULL[1]:
             raise NotAllowed(
                 f"{row.bottle.number} is unknown, and its warning needs a full label.",

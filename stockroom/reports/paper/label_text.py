@@ -2,12 +2,26 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 from stockroom.reports.paper.head import foot_lines, head_lines
 from stockroom.reports.paper.label import Label, Labels, Sort
 from stockroom.reports.sheet import wrap
-from stockroom.reports.words import counted
+from stockroom.reports.words import counted, listed
 
 _BLANK = "........"
+
+SMALL = "small"
+"""The mark in `label.typ` of a label with symbols below 1 cm², which CLP asks for at least.
+
+Annex I 1.2.1.4 of the regulation, from memory.
+"""
+
+_ROOMY = (105.0, 74.0)
+"""A label, mm, whose symbols are 1 cm² with any usual text. Our choice."""
+
+_NAMED = 6
+"""Labels with small symbols that are named; of more there is a count. Our choice."""
 
 
 def told(sheet: Labels, width: int) -> str:
@@ -36,6 +50,21 @@ def block(label: Label, width: int) -> str:
     first, *rest = [row for row in rows if row.strip()]
     # a strength of nothing but what is known of it stands without its brackets
     return "\n".join([wrap(first, width), *(wrap(_bare(row), width, indent=2) for row in rest)])
+
+
+def small_words(names: Sequence[str], sort: Sort, size: tuple[float, float]) -> str:
+    """That hazard symbols came out smaller than 1 cm², and what gives them room; "" for none."""
+    if not names:
+        return ""
+    more = f" and {len(names) - _NAMED} more" if len(names) > _NAMED else ""
+    way = "leave out --short for a full label" if sort is Sort.SHORT else _larger(size)
+    return f"symbols on {listed(names[:_NAMED])}{more} are smaller than 1 cm²: {way}"
+
+
+def _larger(size: tuple[float, float]) -> str:
+    if size[0] < _ROOMY[0] or size[1] < _ROOMY[1]:
+        return f"--size {max(size[0], _ROOMY[0]):g}x{max(size[1], _ROOMY[1]):g}"
+    return "give it more room with --size"
 
 
 def _bare(row: str) -> str:

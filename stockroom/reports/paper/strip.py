@@ -7,15 +7,13 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 from datetime import date, timedelta
 
-from stockroom.measure.days import MONTHS
 from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.facts import Booking, Facts, Firmness
 from stockroom.reports.paper.head import Head, foot_lines, head_lines, head_of, mark
 from stockroom.reports.paper.kinds import Kind
 from stockroom.reports.sheet import page
-from stockroom.reports.words import counted, day_heading
+from stockroom.reports.words import WEEKDAYS, counted, day_and_month, day_heading
 
-WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
 WEEKEND = 5
 """The weekday a weekend begins on, Monday being 0."""
 
@@ -123,7 +121,7 @@ def _week(
         evenings = sum(not _staffed(known, booking) for booking in classes)
         closed = not known.calendar.is_open(on)
         days.append(Day(on, len(classes), evenings, starts[on], closed))
-    label = f"{monday.day} {MONTHS[monday.month - 1][:3]}"
+    label = day_and_month(monday)
     return Week(number, label, tuple(days), tuple(d.marks for d in days))
 
 

@@ -2,14 +2,14 @@
 
 from __future__ import annotations
 
-import re
 import shlex
 from collections import Counter
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
 from itertools import groupby
 
+from stockroom.chemistry.water_words import parted
 from stockroom.findings import Finding
 from stockroom.planning.amounts import say_left
 from stockroom.planning.on_shelf import OnShelf
@@ -20,16 +20,12 @@ from stockroom.reports.sheet import columns, page, section, wrap
 from stockroom.reports.walk_text import HOW, HOW_UNLISTED, about_walk
 from stockroom.reports.words import TIED, marked, raised
 
-_FORM = re.compile(
-    r"(?P<name>.+?),? (?P<form>anhydrous|(?:hemi|mono|di|tri|tetra|penta|hexa|hepta|octa|nona|deca|"
-    r"dodeca)?hydrate)(?P<rest>.*)"
-)
 VENTED = "vented cap"
 
 
 @dataclass(frozen=True, slots=True)
 class Row:
-    """One bottle to count. `form` is told apart where two forms stand there, "" else.
+    """One bottle to count. `form` is told apart where the walk meets two forms, "" else.
 
     `should` is what the entries come to, `condition` mark and word, `warned` what must be
     known before it is touched, `cap` "vented cap" where its line wants one.
@@ -90,11 +86,15 @@ def walk_sheet_of(sheet: Sheet, on: date, wrong: Iterable[Finding] = ()) -> Walk
         about=raised(about_walk(sheet)).replace(TIED, " "),
         practice=sheet.practice,
     )
-    places = groupby(sheet.again or sheet.to_count, key=lambda row: row.bottle.place)
+    rows_left = sheet.again or sheet.to_count
+    # by the whole walk, met or not: a copy printed half-way must not say otherwise
+    keys = {row.line.key for row in rows_left} | {visit.line for visit in sheet.visits}
+    names = Counter(parted(key)[0] for key in keys)
+    places = groupby(rows_left, key=lambda row: row.bottle.place)
     again = " --again" if sheet.again else ""
     return WalkSheet(
         head,
-        tuple(_shelf(sheet, place, list(rows), told) for place, rows in places),
+        tuple(_shelf(sheet, place, list(rows), told, names) for place, rows in places),
         tuple(_looked_for(row) for row in sheet.look_out),
         HOW,
         HOW_UNLISTED,
@@ -103,14 +103,19 @@ def walk_sheet_of(sheet: Sheet, on: date, wrong: Iterable[Finding] = ()) -> Walk
     )
 
 
-def _shelf(sheet: Sheet, place: str, rows: Sequence[OnShelf], wrong: Iterable[Finding]) -> Shelf:
+def _shelf(
+    sheet: Sheet,
+    place: str,
+    rows: Sequence[OnShelf],
+    wrong: Iterable[Finding],
+    names: Mapping[str, int],
+) -> Shelf:
     title = next((one.title for one in sheet.places if one.name == place), "")
-    names = Counter(_parts(key)[0] for key in {row.line.key for row in rows})
     here = {row.bottle.number for row in rows}
     return Shelf(
         place or "at no place",
         title,
-        tuple(_row(row, two_forms=names[_parts(row.line.key)[0]] > 1) for row in rows),
+        tuple(_row(row, two_forms=names[parted(row.line.key)[0]] > 1) for row in rows),
         tuple(
             Wrong(each.subject, raised(each.text))
             for each in wrong
@@ -121,7 +126,7 @@ def _shelf(sheet: Sheet, place: str, rows: Sequence[OnShelf], wrong: Iterable[Fi
 
 def _row(row: OnShelf, *, two_forms: bool) -> Row:
     bottle = row.bottle
-    name, form, rest = _parts(row.line.key) if two_forms else (row.line.key, "", "")
+    name, form, rest = parted(row.line.key) if two_forms else (row.line.key, "", "")
     # the one without water is the one taken by mistake
     form = form.upper() if form == "anhydrous" else form
     return Row(
@@ -134,12 +139,6 @@ def _row(row: OnShelf, *, two_forms: bool) -> Row:
         VENTED if row.line.vented_cap else "",
         bottle.remark,
     )
-
-
-def _parts(key: str) -> tuple[str, str, str]:
-    """A name, its form and what follows: ("sodium carbonate", "anhydrous", "")."""
-    found = _FORM.fullmatch(key)
-    return (found["name"], found["form"], found["rest"]) if found else (key, "", "")
 
 
 def _looked_for(row: OnShelf) -> Wrong:

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, replace
 from datetime import date, timedelta
 
 from stockroom.measure.days import MONTHS
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts
+from stockroom.reports.paper.changes import Made
 from stockroom.reports.paper.day import closed_words
 from stockroom.reports.paper.head import Head, head_of
 from stockroom.reports.paper.kinds import Kind
@@ -27,11 +28,10 @@ from stockroom.reports.paper.week_parts import (
     Job,
     Rung,
     Shelf,
-    short_day,
     tied,
 )
 from stockroom.reports.paper.week_text import week_lines, week_since, week_text
-from stockroom.reports.words import counted
+from stockroom.reports.words import counted, raised, weekday_and_day
 
 NOTHING = "Nothing to do."
 NO_WORK = "Nothing is booked in this week: nothing to make or set out."
@@ -42,7 +42,8 @@ TIMES = "A time beside a make is the latest to begin it."
 class Week:
     """A week from its Monday: `told` is said in place of rungs where there is nothing at all.
 
-    `guesses` are those its bookings lean on, `guess_count` how many in words.
+    `guesses` are those its bookings lean on, `guess_count` how many in words. `made` are the
+    bottles made here in it, of which the sheet says nothing but what they changed.
     """
 
     head: Head
@@ -51,6 +52,7 @@ class Week:
     also: tuple[Also, ...]
     guesses: tuple[Also, ...]
     guess_count: str
+    made: tuple[Made, ...] = ()
 
 
 def monday_of(asked: date | None, as_at: date) -> date:
@@ -80,7 +82,15 @@ def week_of(known: Facts, plan: Plan, monday: date, closed: Mapping[date, str]) 
         also=also_of(known, plan, monday, days[-1]),
         guesses=guesses,
         guess_count=counted(len(guesses), "guess") if guesses else "nothing guessed",
+        made=tuple(_made(known, monday, days[-1])),
     )
+
+
+def _made(known: Facts, first: date, last: date) -> Iterator[Made]:
+    for bottle in known.bottles:
+        on = bottle.record.made
+        if bottle.made_here and on and first <= on <= last:
+            yield Made(bottle.number, on, raised(bottle.line), bottle.meant_for)
 
 
 def _title(known: Facts, monday: date, last: date) -> str:
@@ -136,7 +146,7 @@ class _Week:
         minutes = self.minutes.get(on, 0)
         return Rung(
             on=on,
-            name=short_day(on),
+            name=weekday_and_day(on),
             state=state,
             told=self._told(on, state, busy=bool(shelves or classes)),
             minutes=tied(f"{minutes} min hands-on") if minutes and not over else "",

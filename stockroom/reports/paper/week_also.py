@@ -2,21 +2,19 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterator
 from datetime import date
 
-from stockroom.findings import Finding
 from stockroom.planning.decisions import CheckToDo, Plan
 from stockroom.planning.facts import Facts
 from stockroom.planning.leaned_on import leaned_on
 from stockroom.planning.standing import where_things_stand
-from stockroom.reports.paper.week_parts import Also, Job, made, short_day, tied
+from stockroom.reports.paper.week_parts import Also, Job, made, tied, without_figure
 from stockroom.reports.sheet import OLD_BACKUP, backup_age
-from stockroom.reports.words import counted, listed, money, named, raised
+from stockroom.reports.words import counted, listed, money, named, raised, weekday_and_day
+from stockroom.safety.neighbours import told_once
 
 _ONE_LINE = 500
-_BESIDE = re.compile(r"stands beside (?P<others>.*?) in [^:]*: (?P<why>[^:]*)")
 
 
 def also_of(known: Facts, plan: Plan, monday: date, sunday: date) -> tuple[Also, ...]:
@@ -38,7 +36,7 @@ def _orders(plan: Plan, monday: date, sunday: date) -> Iterator[Also]:
             leave = f"; ask {order.ask_first} first" if order.ask_first else ""
             text = (
                 f"{named(order.item, '')}, {order.packs} × {order.pack}, {money(order.pence)}: "
-                f"order by {short_day(order.order_by)}{late}{served}{leave}"
+                f"order by {weekday_and_day(order.order_by)}{late}{served}{leave}"
             )
             # what is late is for now; seen from a later week it is earlier work
             earlier = order.order_by < monday and plan.as_at < monday
@@ -48,7 +46,8 @@ def _orders(plan: Plan, monday: date, sunday: date) -> Iterator[Also]:
 
 def _coming(plan: Plan, monday: date, sunday: date) -> Iterator[Also]:
     for each in plan.on_order:
-        what = f"order {each.number}, {named(each.item, '')}, expected {short_day(each.expected)}"
+        comes = f"expected {weekday_and_day(each.expected)}"
+        what = f"order {each.number}, {named(each.item, '')}, {comes}"
         if each.overdue:
             late = counted(each.overdue, "open day")
             supplier = f": ask {each.supplier}" if each.supplier else ": ask the supplier"
@@ -61,36 +60,17 @@ def _loads(plan: Plan, monday: date, sunday: date) -> Iterator[Also]:
     by_id = {make.id: make for make in plan.makes}
     for load in plan.loads:
         if load.over and monday <= load.day <= sunday:
-            moves = [f"{made(by_id[one])} on {short_day(to)}" for one, to in load.movable]
+            moves = [f"{made(by_id[one])} on {weekday_and_day(to)}" for one, to in load.movable]
             earlier = f"could go earlier: {', '.join(moves)}" if moves else "nothing fits earlier"
             work = tied(f"{load.minutes} min")
-            text = f"{short_day(load.day)} has {work} of hands-on work, {load.over} over: {earlier}"
+            day = weekday_and_day(load.day)
+            text = f"{day} has {work} of hands-on work, {load.over} over: {earlier}"
             yield Also(f"{load.day} load", "too much", text)
 
 
 def _standing(known: Facts) -> Iterator[Also]:
     for each in told_once(where_things_stand(known.bottles, known.lines, known.places)):
         yield Also(f"standing {each.subject} {each.text}", each.subject, raised(each.text))
-
-
-def told_once(findings: list[Finding]) -> list[Finding]:
-    """Each wrong pair told once, by the bottle that has the most of them."""
-    pairs = {each: _pairs(each) for each in findings}
-    told: set[tuple[frozenset[str], str]] = set()
-    kept = []
-    for each in sorted(findings, key=lambda one: -len(pairs[one])):
-        if not pairs[each] or not pairs[each] <= told:
-            kept.append(each)
-            told |= pairs[each]
-    return [each for each in findings if each in kept]
-
-
-def _pairs(finding: Finding) -> set[tuple[frozenset[str], str]]:
-    found = _BESIDE.match(finding.text)
-    if found is None:
-        return set()
-    others = found["others"].split(", ")
-    return {(frozenset({finding.subject, other}), found["why"]) for other in others}
 
 
 def _backup(plan: Plan) -> Iterator[Also]:
@@ -109,7 +89,11 @@ def guesses_of(known: Facts, plan: Plan, monday: date, sunday: date) -> tuple[Al
     """The guesses that bookings of the week lean on."""
     needs = tuple(need for need in plan.needs if monday <= need.booking.on <= sunday)
     return tuple(
-        Also(f"guess {raised(each.subject)} {each.text}", raised(each.subject), raised(each.text))
+        Also(
+            f"guess {raised(each.subject)} {without_figure(raised(each.text))}",
+            raised(each.subject),
+            raised(each.text),
+        )
         for each in leaned_on(known, plan, needs)
     )
 
@@ -127,10 +111,10 @@ def _check(plan: Plan, check: CheckToDo) -> Job:
     by_id = {make.id: make for make in plan.makes}
     make = by_id.get(check.subject)
     # the number of a make changes from plan to plan
-    subject = f"{made(make)} made {short_day(make.on)}" if make else ""
+    subject = f"{made(make)} made {weekday_and_day(make.on)}" if make else ""
     subject = subject or f"{check.subject} {raised(check.item)}"
     verb = "look at" if check.what == "look" else check.what
-    by = f"by {short_day(check.by)}" if check.by > check.best else ""
+    by = f"by {weekday_and_day(check.by)}" if check.by > check.best else ""
     why = _worth(plan, check) if check.optional else raised(check.reason)
     work = tied(f"{check.minutes} min") if check.minutes else ""
     served = f"for {listed(check.bookings)}" if check.bookings else ""

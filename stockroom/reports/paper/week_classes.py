@@ -14,8 +14,8 @@ from stockroom.planning.facts import EXACT, Booking, Facts, Firmness, Form, Reci
 from stockroom.planning.known import how_known
 from stockroom.planning.people import clock, unstaffed
 from stockroom.reports.paper.day_times import TO_SET_OUT, times_of
-from stockroom.reports.paper.week_parts import Class, Item, Job, made_when, short_day, tied
-from stockroom.reports.words import amount, counted, named, raised
+from stockroom.reports.paper.week_parts import Class, Item, Job, made_when, tied
+from stockroom.reports.words import amount, counted, named, raised, weekday_and_day
 
 _PASSED_OVER = " not used: "
 _SENTENCE = re.compile(r"(?<=[.!])\s+(?=[A-Z])")
@@ -74,7 +74,7 @@ class Classes:
                     # what comes from a shop has its own line, with its amounts
                     bought = "bought" in words and self._from_shop(booking)
                     if _DAY_BEFORE.search(words) and not bought:
-                        whom = f"for {booking.number}, {short_day(booking.on)}"
+                        whom = f"for {booking.number}, {weekday_and_day(booking.on)}"
                         key = f"{day} handling {booking.number} {number}"
                         yield Job(key, "", words, (whom,))
 
@@ -82,7 +82,7 @@ class Classes:
         row = self._from_shop(booking)
         if row:
             things = ", ".join(f"{amount(n.amount, n.kind)} of {named(n.item, '')}" for n in row)
-            whom = f"for {booking.number}, {short_day(booking.on)}"
+            whom = f"for {booking.number}, {weekday_and_day(booking.on)}"
             yield Job(f"{day} shop {booking.number}", "", f"from a shop: {things}", (whom,))
 
     def _from_shop(self, booking: Booking) -> list[Answer]:

@@ -7,20 +7,18 @@ from datetime import date, timedelta
 
 from stockroom.keeping.rules import RuleKind
 from stockroom.keeping.strength import strengths_on
+from stockroom.keeping.verdict import verdict
 from stockroom.measure.days import format_time
 from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import Draw, Make, Plan
-from stockroom.planning.facts import EXACT, Booking, Facts
+from stockroom.planning.facts import EXACT, Booking, Bottle, Facts
 from stockroom.planning.known import how_known
-from stockroom.planning.making.make_card import goes_of
+from stockroom.planning.standing import standing_there
 from stockroom.planning.timing import hours
 from stockroom.reports.paper.day_times import TOO_LATE, times_of
-from stockroom.reports.paper.week_parts import Job, made, short_day, tied, volume
-from stockroom.reports.words import listed, measured, named, raised
-from stockroom.safety.cautions import Step, cautions_about
-
-TOO_LITTLE = 5_000
-"""What is left over below this, in µL, is not worth a word. Our choice."""
+from stockroom.reports.paper.left_over import clearing_words, collected, over_words
+from stockroom.reports.paper.week_parts import Job, made, tied, volume
+from stockroom.reports.words import listed, measured, named, raised, weekday_and_day
 
 _ENDS = frozenset({RuleKind.LIFE, RuleKind.SAME_DAY, RuleKind.NEVER})
 _LASTS = frozenset({RuleKind.LOOK, RuleKind.RECHECK, RuleKind.TEST})
@@ -59,9 +57,10 @@ class Makes:
     def _job(self, make: Make) -> Job:
         method = self.known.methods[make.line]
         stands = f"stands {hours(method.stands_hours)}" if method.stands_hours else ""
-        later = f"ready {short_day(make.ready)}" if make.ready > make.on else ""
+        later = f"ready {weekday_and_day(make.ready)}" if make.ready > make.on else ""
         vessels = f"in {make.vessels} vessels, then mixed" if make.vessels > 1 else ""
-        told = (self._from(make), vessels, stands, later, self._until(make), self._heel(make))
+        over = over_words(make, self.known.lines[make.line])
+        told = (self._from(make), vessels, stands, later, self._until(make), over)
         served = f"for {listed(make.bookings)}" if make.bookings else ""
         verb = "start" if make.ready > make.on else "make"
         return Job(
@@ -88,7 +87,7 @@ class Makes:
         return Job(
             key=f"{make.finish_on} finish {raised(make.line)}{self._which(make)}",
             time="",
-            what=f"{work} {made(make)}, {volume(make.volume)}, started {short_day(make.on)}",
+            what=f"{work} {made(make)}, {volume(make.volume)}, started {weekday_and_day(make.on)}",
             more=tuple(each for each in told if each),
             cautions=tuple(map(raised, make.cautions)),
             ref=make.id,
@@ -104,7 +103,7 @@ class Makes:
         much = measured(draw.amount, draw.kind)
         if draw.make in self.by_id and not draw.bottle:
             part = self.by_id[draw.make]
-            return f"{much} of {made(part)} (made {short_day(part.ready)})"
+            return f"{much} of {made(part)} (made {weekday_and_day(part.ready)})"
         if not draw.bottle:
             return f"{much} of {named(draw.item, '')} (to be bought)"
         bottle = self.bottles[draw.bottle]
@@ -133,13 +132,47 @@ class Makes:
             return ""
         if make.good_until == make.on:
             return "good that day only"
-        near = make.good_until - make.on < timedelta(days=200)
-        return f"good until {short_day(make.good_until) if near else make.good_until.isoformat()}"
+        last, near = make.good_until, make.good_until - make.on < timedelta(days=200)
+        return f"good until {weekday_and_day(last) if near else last.isoformat()}"
 
     def left_over(self, on: date) -> list[Job]:
-        """What of this term's makes has its last day, and so is not put back, by the clock."""
+        """What is made this term and has its last day, so is not put back, by the clock."""
         row = [self._tidy(make, on) for make in self.plan.makes if self._last_day(make) == on]
+        row += [self._tidy_bottle(each, on) for each in self._made_and_over(on)]
         return sorted(row, key=lambda job: job.time)
+
+    def _made_and_over(self, on: date) -> list[Bottle]:
+        """The bottles made here this term of which that is the last day."""
+        found = []
+        for bottle in standing_there(self.known.bottles):
+            line, born = self.known.lines[bottle.line], bottle.record.made
+            kinds = {rule.kind for rule in line.rules}
+            if not bottle.made_here or born is None or born < self.known.start:
+                continue
+            if kinds & _ENDS and not kinds & _LASTS:
+                until = verdict(bottle.record, line.rules, on).usable_until
+                last = until and max(self.known.calendar.on_or_before(until), born)
+                found += [bottle] if last == on else []
+        return found
+
+    def _tidy_bottle(self, bottle: Bottle, on: date) -> Job:
+        line = self.known.lines[bottle.line]
+        method = self.known.methods.get(bottle.line)
+        cautions = method.cautions if method else ()
+        doing = "collect" if collected(cautions, line) else "pour away"
+        ends = [
+            self.bookings[number].minute + self.bookings[number].lasts_minutes
+            for number in bottle.meant_for
+            if number in self.bookings and self.bookings[number].on == on
+        ]
+        last = "good today only" if bottle.record.made == on else "its last day is today"
+        return Job(
+            key=f"{on} tidy {bottle.number}",
+            time=format_time(max(ends)) if ends and max(ends) < 1440 else "",
+            what=f"{bottle.number} {named(line.item, line.strength_text)}: {doing} what is left",
+            more=(last,),
+            cautions=clearing_words(cautions, line),
+        )
 
     def _last_day(self, make: Make) -> date | None:
         kinds = {rule.kind for rule in self.known.lines[make.line].rules}
@@ -150,43 +183,28 @@ class Makes:
         return day if day >= used else make.good_until
 
     def _tidy(self, make: Make, on: date) -> Job:
-        collected, never = self._clearing(make)
-        doing = "collect what is left" if collected else "pour away what is left"
+        line = self.known.lines[make.line]
+        kept_apart = collected(make.cautions, line)
+        doing = "collect what is left" if kept_apart else "pour away what is left"
         again = [m.on for m in self.plan.makes if m.line == make.line and m.on > on]
         soon = [day for day in again if (day - on).days < 7 - on.weekday()]
-        kept = f"do not keep it for {short_day(min(soon))}" if soon else ""
+        kept = f"do not keep it for {weekday_and_day(min(soon))}" if soon else ""
         until = make.good_until or on
-        last = "its last day is today" if until == on else f"good until {short_day(until)}"
+        last = "its last day is today" if until == on else f"good until {weekday_and_day(until)}"
         last = "good today only" if until == make.on else last
         ends = [b.minute + b.lasts_minutes for b in self._on(make, on)]
         return Job(
             key=f"{on} tidy {raised(make.line)}{self._which(make)}{self._beside(make, on)}",
             time=format_time(max(ends)) if ends and max(ends) < 1440 else "",
-            what=f"{made(make)}, the one made {short_day(make.on)}: {doing}",
+            what=f"{made(make)}, the one made {weekday_and_day(make.on)}: {doing}",
             more=tuple(each for each in (last, kept) if each),
-            cautions=(*collected, *never),
+            cautions=clearing_words(make.cautions, line),
         )
 
     def _beside(self, make: Make, on: date) -> str:
         """What tells it apart from one of the same line made on another day, over on this one."""
         days = {m.on for m in self.plan.makes if m.line == make.line and self._last_day(m) == on}
         return f" of {make.on}" if len(days) > 1 else ""
-
-    def _heel(self, make: Make) -> str:
-        if make.heel < TOO_LITTLE:
-            return ""
-        doing = "collect it" if self._clearing(make)[0] else "pour away"
-        doing = "label it and keep it" if make.heel_kept else doing
-        return f"{volume(make.heel)} over: {doing}"
-
-    def _clearing(self, make: Make) -> tuple[list[str], list[str]]:
-        """What says that it is collected and not poured away, and what it must never meet."""
-        said = [raised(each) for each in make.cautions]
-        collected = [each for each in said if each.startswith("Collect")]
-        thing = goes_of(self.known.lines[make.line])
-        waste = cautions_about([thing], said=said, steps=(Step.WASTE,))
-        never = [each for each in said if each.startswith("Never")]
-        return [*collected, *(raised(each.text) for each in waste)], never
 
     def _on(self, make: Make, on: date) -> list[Booking]:
         return [self.bookings[n] for n in make.bookings if self.bookings[n].on == on]

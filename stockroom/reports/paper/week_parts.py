@@ -2,20 +2,18 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass
 from datetime import date
 
 from stockroom.measure.amounts import Kind
-from stockroom.measure.days import MONTHS
 from stockroom.planning.decisions import Make
-from stockroom.reports.words import TIED, amount, named
+from stockroom.reports.words import TIED, amount, named, weekday_and_day
 
 CHECK, START, MAKE, SET_OUT = "check", "start", "make", "set out"
 DESTROY, TIDY = "destroy", "tidy"
 SHELVES = (CHECK, START, MAKE, SET_OUT, DESTROY, TIDY)
 """The shelves of a day in the order they are worked: what a check finds decides the makes."""
-
-_WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
 
 
 @dataclass(frozen=True, slots=True)
@@ -90,12 +88,6 @@ class Also:
     text: str
 
 
-def short_day(when: date) -> str:
-    """A day inside a sheet that says its year: "Tue 26 Jan", kept on one line."""
-    month = MONTHS[when.month - 1][:3]
-    return f"{_WEEKDAYS[when.weekday()]}{TIED}{when.day}{TIED}{month}"
-
-
 def tied(text: str) -> str:
     """The same with no line broken inside it."""
     return text.replace(" ", TIED)
@@ -108,9 +100,17 @@ def made(make: Make) -> str:
 
 def made_when(make: Make, as_at: date) -> str:
     """When a make is or was made, as seen on the day of the plan: "to be made Mon 25 Jan"."""
-    return f"{'made' if make.on < as_at else 'to be made'} {short_day(make.on)}"
+    return f"{'made' if make.on < as_at else 'to be made'} {weekday_and_day(make.on)}"
 
 
 def volume(micro: int) -> str:
     """A volume as it is measured: "528 cm³"."""
     return amount(micro, Kind.VOLUME)
+
+
+def without_figure(guess: str) -> str:
+    """A guess less how strong it expects a bottle to be, which is another figure every day."""
+    return _EXPECTED.sub("expected", guess)
+
+
+_EXPECTED = re.compile(r"\bexpected [\d.]+\s\S+")

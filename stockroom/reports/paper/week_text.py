@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 from stockroom.reports.paper.changes import since_by_booking
 from stockroom.reports.paper.head import Head, Since, foot_lines, head_lines, mark
-from stockroom.reports.paper.week_parts import Also, Class, Item, Job, Rung
+from stockroom.reports.paper.week_parts import Also, Class, Item, Job, Rung, without_figure
 from stockroom.reports.sheet import wrap
 from stockroom.reports.words import TIED
 
@@ -80,9 +80,11 @@ def _foot(title: str, row: tuple[Also, ...], head: Head, width: int) -> str:
 
 
 def week_lines(week: Week) -> dict[str, str]:
-    """Everything the sheet says, by what it is about: a day first, so that a past one drops out.
+    """What the sheet says, by what it is about: a day first, so that a past one drops out.
 
     Bookings stand before the work they give, so that a list of changes begins with its causes.
+    Left out are the minutes of a day, and how strong a guess expects a bottle to be: it is
+    another every day.
     """
     closed = [rung for rung in week.rungs if rung.state == "closed"]
     lines = {f"{rung.on} closed": f"{rung.name}: {rung.told}" for rung in closed}
@@ -94,6 +96,10 @@ def week_lines(week: Week) -> dict[str, str]:
             for job in shelf.jobs:
                 lines |= _said(f"{rung.name} {shelf.name}", job)
     lines |= {each.key: f"{each.about}: {each.text}" for each in week.also}
+    lines |= {each.key: "" for each in week.made}
+    lines |= {
+        guess.key: f"guess: {guess.about}: {without_figure(guess.text)}" for guess in week.guesses
+    }
     return {key: said.replace(TIED, " ") for key, said in lines.items()}
 
 
@@ -103,11 +109,12 @@ def _said(when: str, job: Job) -> dict[str, str]:
     timed = f"{job.time} " if job.time else ""
     # of a make, what it is made from: the rest follows from that and from its day
     more = job.more[:1] if job.ref else job.more
-    return {job.key: f"{when}: {timed}{'; '.join([job.what, *more])}"}
+    warned = [f"! {each}" for each in job.cautions]
+    return {job.key: f"{when}: {timed}{'; '.join([job.what, *more, *warned])}"}
 
 
 def week_since(week: Week, number: str, before: Mapping[str, str], today: date) -> Since:
     """What changed since that copy, bookings first, and why a bottle is no longer taken."""
     jobs = (job for rung in week.rungs for shelf in rung.shelves for job in shelf.jobs)
     passed = {item.key: item.passed for job in jobs for item in job.items if item.passed}
-    return since_by_booking(number, before, week_lines(week), today, passed)
+    return since_by_booking(number, before, week_lines(week), today, passed, week.made)

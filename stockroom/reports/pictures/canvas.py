@@ -12,11 +12,10 @@ from datetime import date, timedelta
 from functools import cache
 from typing import TYPE_CHECKING, Any
 
-from stockroom.measure.days import MONTHS
 from stockroom.reports.paper.head import Head
 from stockroom.reports.sheet import PRACTICE
 from stockroom.reports.shipped import FACE, font_folder
-from stockroom.reports.words import day
+from stockroom.reports.words import day, day_and_month
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -262,14 +261,7 @@ def day_axis(axes: Axes, first: date, last: date) -> None:
 
 
 def _short(on: date, first: date) -> str:
-    name = f"{on.day} {MONTHS[on.month - 1][:3]}"
+    name = day_and_month(on)
     # the year where it changes, and at the start
     turned = on.year != (on - timedelta(days=7)).year or on - first < timedelta(days=7)
     return f"{name}\n{on.year}" if turned else name
-
-
-def short_day(on: date, seen_from: date) -> str:
-    """A day inside a picture: "Tue 12 Jan", with the year where it is another."""
-    weekday = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")[on.weekday()]
-    year = f" {on.year}" if on.year != seen_from.year else ""
-    return f"{weekday} {on.day} {MONTHS[on.month - 1][:3]}{year}"

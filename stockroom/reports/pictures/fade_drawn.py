@@ -7,8 +7,9 @@ from itertools import pairwise
 from typing import TYPE_CHECKING
 
 from stockroom.measure.formats import format_number
-from stockroom.reports.pictures.canvas import FAINT, INK, PALE, PAPER, day_axis, short_day
+from stockroom.reports.pictures.canvas import FAINT, INK, PALE, PAPER, day_axis
 from stockroom.reports.pictures.placing import Flag, Name, flags, key, margin, names
+from stockroom.reports.words import day_seen_from
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -141,15 +142,17 @@ def _needs(axes: Axes, fade: Fade, marks: list[Mark]) -> None:
 def _days(fade: Fade, groups: list[list[Mark]]) -> list[Flag]:
     """What falls on a day; of many results, and of strengths told as one, the first and last."""
     now = fade.head.as_at
-    row = [Flag(now, f"today, {short_day(now, now)}")]
+    row = [Flag(now, f"today, {day_seen_from(now, now)}")]
     row += (
-        [Flag(fade.recheck, f"recheck by {short_day(fade.recheck, now)}")] if fade.recheck else []
+        [Flag(fade.recheck, f"recheck by {day_seen_from(fade.recheck, now)}")]
+        if fade.recheck
+        else []
     )
     told = fade.found if len(fade.found) <= 4 else (fade.found[0], fade.found[-1])
     row += [
         Flag(
             one.on,
-            f"found {format_number(one.strength, 4)} on {short_day(one.on, now)}",
+            f"found {format_number(one.strength, 4)} on {day_seen_from(one.on, now)}",
             bold=True,
         )
         for one in told
@@ -161,7 +164,7 @@ def _days(fade: Fade, groups: list[list[Mark]]) -> list[Flag]:
                 below.setdefault(mark.on, set()).add(mark.strength)
     for on, strengths in below.items():
         words = " and ".join(format_number(one, 3) for one in sorted(strengths))
-        row.append(Flag(on, f"below {words} from {short_day(on, now)}"))
+        row.append(Flag(on, f"below {words} from {day_seen_from(on, now)}"))
     return row
 
 

@@ -8,10 +8,10 @@ from typing import TYPE_CHECKING
 from stockroom.measure.amounts import BASE_UNIT
 from stockroom.measure.formats import unit_mark
 from stockroom.planning.amounts import say
-from stockroom.reports.pictures.canvas import INK, day_axis, short_day
+from stockroom.reports.pictures.canvas import INK, day_axis
 from stockroom.reports.pictures.level import in_units, out_words
 from stockroom.reports.pictures.placing import Flag, Name, flags, key, margin, names
-from stockroom.reports.words import TIED
+from stockroom.reports.words import TIED, day_seen_from
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -90,7 +90,8 @@ def _days(stock: Stock) -> list[Flag]:
             days.setdefault((one.order_by, "order by"), []).append(one.id)
         days.setdefault((one.comes, "comes"), []).append(f"{one.id} ({one.pack})")
     row = [
-        Flag(on, f"{_listed(row)} {verb} {short_day(on, now)}") for (on, verb), row in days.items()
+        Flag(on, f"{_listed(row)} {verb} {day_seen_from(on, now)}")
+        for (on, verb), row in days.items()
     ]
     falls: dict[date, list[str]] = {}
     for on, words in ((stock.falls_below, "below its level"), (stock.runs_out, out_words(stock))):
@@ -99,7 +100,7 @@ def _days(stock: Stock) -> list[Flag]:
     for on, told in falls.items():
         words = ", ".join(told)
         already = on <= now
-        words = f"already {words}" if already else f"{words} from {short_day(on, now)}"
+        words = f"already {words}" if already else f"{words} from {day_seen_from(on, now)}"
         row.append(Flag(on, words, bold=True))
     return row
 

@@ -13,11 +13,11 @@ from stockroom.reports.pictures.canvas import (
     day_axis,
     frame_mm,
     page_mm,
-    short_day,
     wide_mm,
 )
 from stockroom.reports.pictures.load import runs
 from stockroom.reports.pictures.placing import LINE, SIZE_OF_WORDS, Flag, flags, key
+from stockroom.reports.words import day_seen_from
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -93,9 +93,9 @@ def _patches(axes: Axes, load: Load) -> None:
 
 def _days(load: Load) -> list[Flag]:
     """Each day over the limit, and the day looked from."""
-    row = [Flag(load.head.as_at, f"today, {short_day(load.head.as_at, load.head.as_at)}")]
+    row = [Flag(load.head.as_at, f"today, {day_seen_from(load.head.as_at, load.head.as_at)}")]
     return row + [
-        Flag(one.on, f"{short_day(one.on, load.head.as_at)}: {one.over} min over", bold=True)
+        Flag(one.on, f"{day_seen_from(one.on, load.head.as_at)}: {one.over} min over", bold=True)
         for one in load.days
         if one.over
     ]

@@ -10,11 +10,12 @@ import houses
 import pytest
 
 from stockroom.planning.decisions import Plan, Short
-from stockroom.planning.facts import Drawn, Facts
+from stockroom.planning.facts import Drawn, Facts, Firmness
 from stockroom.planning.people import must_be_here
 from stockroom.planning.plan import plan
 from stockroom.reports.files.morning import Morning, morning_of, morning_text
 from stockroom.reports.files.morning_shelf import at_the_shelf, leaned_on_late, not_written
+from stockroom.reports.paper.day import day_of
 from stockroom.service.sheets import known_and_planned
 
 
@@ -145,5 +146,39 @@ def test_a_class_that_is_short_is_counted(college: tuple[Facts, Plan]) -> None:
 def test_on_a_closed_day_somebody_must_be_here_for_all_of_it() -> None:
     known = houses.house([])
     closed = replace(houses.booking("K01", "01-09", 555), lasts_minutes=60)
-    assert must_be_here(known, closed, never_kept=False) == [(525, 615)]
-    assert must_be_here(known, closed, never_kept=True) == [(525, 645)]
+    assert must_be_here(known, closed, set_out=515, never_kept=False) == [(515, 615)]
+    assert must_be_here(known, closed, set_out=515, never_kept=True) == [(515, 645)]
+    # what is never kept is mixed half an hour before, whenever the rest is set out
+    assert must_be_here(known, closed, set_out=545, never_kept=True) == [(525, 645)]
+
+
+@pytest.mark.parametrize(("minute", "never_kept"), [(555, ""), (555, "explosive"), (485, "")])
+def test_on_a_closed_day_the_note_and_the_page_for_the_day_say_the_same_hours(
+    minute: int, never_kept: str
+) -> None:
+    on, salt = houses.day("01-09"), houses.solid()
+    words = houses.recipe(houses.wants(salt, houses.g(1)), never_kept=never_kept)
+    known = houses.house(
+        [salt],
+        recipes=[words],
+        bookings=[houses.booking("K01", "01-09", minute)],
+        bottles=[houses.bought_bottle("B1", salt, houses.g(50))],
+        as_at=on,
+    )
+    made = plan(known)
+    (part,) = [p for p in morning_of(known, made).parts if p.title == "SOMEONE MUST BE HERE"]
+    hours = [due.what.removesuffix(": for K01") for due in part.rows]
+    rows = [row for of in day_of(known, made, on).parts for row in of.rows]
+    here = [row.what for row in rows if row.key.startswith("here")]
+    assert here == [f"someone must be here from {each}: not staffed" for each in hours]
+    assert len(here) == 1
+
+
+def test_nobody_must_be_here_for_what_is_done(college_file: Path) -> None:
+    known, made = known_and_planned(college_file, as_at=houses.day("02-10"))
+    over = tuple(
+        replace(b, firmness=Firmness.DONE) if b.number == "K16" else b for b in known.bookings
+    )
+    note = morning_of(replace(known, bookings=over), made)
+    (part,) = [each for each in note.parts if each.title == "SOMEONE MUST BE HERE"]
+    assert [due.what.rpartition(" ")[2] for due in part.rows] == ["K15"]

@@ -83,6 +83,32 @@ def test_a_day_with_nothing() -> None:
     )
 
 
+@pytest.mark.parametrize("on", ["2027-02-13", "2027-02-17"])
+def test_a_closed_day_says_so(college: tuple[Facts, Plan], on: str) -> None:
+    day = date.fromisoformat(on)
+    phone = phone_of(*college, day)
+    assert phone.lines == (
+        f"{day:%a} {day.day} Feb, closed: nothing booked",
+        "Ready: nothing to do  PRACTICE",
+    )
+
+
+def test_a_class_on_a_closed_day_says_so_before_all_that_may_be_cut_off() -> None:
+    recipe = replace(houses.recipe(), title="a long title " * 20)
+    for count, said in ((1, "K01 a long title"), (2, "2 bookings")):
+        known = houses.house(
+            [houses.solid()],
+            recipes=[recipe],
+            bookings=[houses.booking(f"K0{n}", "01-16") for n in range(1, count + 1)],
+        )
+        phone = phone_of(known, plan(known), houses.day("01-16"))
+        assert phone.lines[0].startswith("Sat 16 Jan, closed, 09:15")
+        assert said in " ".join(phone.lines[:2])
+        fits(phone, practice=False)
+    # and an open one does not
+    assert "closed" not in " ".join(phone_of(known, plan(known), ON).lines)
+
+
 def test_all_ready_is_yes() -> None:
     line = houses.solution(1.0)
     found = (houses.found("01-04", 1.0),)

@@ -131,9 +131,11 @@ def test_cautions_stand_beside_their_step(page_of: PageOf) -> None:
     assert "30 min before use" in by_key["K27 mix"]
     assert "excess sodium chloride" in by_key["K27 destroy"]
     # no container takes anything that is not destroyed yet
-    assert by_key["end 15:10"] == ""
+    assert "Oxidising" not in by_key["end 15:10"]
     assert "Once destroyed: silver nitrate: Oxidising" in by_key["K27 destroy"]
-    assert "chloramines" in by_key["K27 destroy"]
+    # what must never meet is said where clearing away begins
+    assert "Ammonia never with bleach" in by_key["end 15:10"]
+    assert "chloramines" not in by_key["K27 destroy"]
     [end] = [row.what for row in rows(page_of(OPEN_DAY)) if row.key == "end 15:10"]
     assert "first destroy what is never kept (K27), then clear away" in end
 

@@ -12,6 +12,7 @@ from stockroom.reports.paper.head import (
     MOST_CHANGES,
     Head,
     Since,
+    change_words,
     copy_line,
     foot_lines,
     head_for,
@@ -112,3 +113,12 @@ def test_practice_is_the_first_line() -> None:
     assert head_lines(head_for("A school", "A sheet", TODAY, practice=True), 80).startswith(
         "PRACTICE\nA school\nA sheet\nas at"
     )
+
+
+def test_of_a_line_in_parts_only_those_are_told_that_changed() -> None:
+    before = "make starch, 176 cm³; from B23; ! Boiling water"
+    now = "make starch, 176 cm³; from B30; ! Boiling water; ! Mould"
+    assert change_words(before, now) == ("make starch, 176 cm³; from B30; ! Mould (was: from B23)")
+    assert change_words("a; b; c", "a; b") == "a (was: c)"
+    assert change_words("a; b", "a; b; c") == "a; c (was: without)"
+    assert change_words("a, 1; b", "a, 2; b") == "a, 2 (was: a, 1)"

@@ -16,8 +16,9 @@ import paper_reading as reading
 import pytest
 
 from stockroom.errors import BadInput, NotAllowed
+from stockroom.keeping.unnamed import UNKNOWN
 from stockroom.reports.paper.head import head_for
-from stockroom.reports.paper.label import LABEL, UNKNOWN, HazardText, Label, Labels, Sort
+from stockroom.reports.paper.label import LABEL, HazardText, Label, Labels, Sort
 from stockroom.reports.paper.label_grid import (
     FULL,
     SHORT,
@@ -30,11 +31,13 @@ from stockroom.reports.paper.label_grid import (
 from stockroom.reports.paper.label_of import check_name
 from stockroom.reports.paper.label_set import Wish, labels_of
 from stockroom.reports.paper.label_short import RELAXED
+from stockroom.reports.paper.label_text import SMALL, small_words
 from stockroom.reports.shipped import symbol
-from stockroom.reports.typesetting import typeset
+from stockroom.reports.typesetting import carried, typeset
 from stockroom.safety.statements import statement
 from stockroom.service.labels import labelled
 
+MM = reading.POINTS_TO_MM
 TODAY = date(2027, 1, 4)
 LONG = (
     "Keep away from heat and from whatever it must not meet, and never return any of it to the"
@@ -175,6 +178,64 @@ def test_every_name_is_whole_and_the_largest_thing_on_its_label(every: Any) -> N
         assert words.split()[0] in label.name
 
 
+def test_symbols_told_as_small_are_those_that_are(college: Callable[..., Labels]) -> None:
+    """Held against what is drawn: the frame of each symbol, by its own measure."""
+    # of a size at which some have room and others not
+    sheet = college("all", size=(80.0, 40.0))
+    pdf = typeset("label", LABEL.data(sheet))[0]
+    told = carried("label", SMALL)
+    frames = _largest_frames(pdf)
+    marked = [i for i, label in enumerate(sheet.labels) if label.hazards.symbols]
+    # half of the square on its corners, whose frame is drawn a little inside
+    small = [sheet.labels[i].number for i in marked if frames[i] ** 2 / 2 < 0.94 * 100]
+    assert told == small
+    assert 0 < len(small) < len(marked)
+
+
+def _largest_frames(pdf: bytes) -> list[float]:
+    """On each page how wide the largest thing is that is as wide as high, the code aside, mm."""
+    import pypdfium2
+    import pypdfium2.raw
+
+    opened: Any = pypdfium2.PdfDocument
+    raw: Any = pypdfium2.raw
+    found = []
+    with opened(pdf) as document:
+        for page in document:
+            paths = page.get_objects(filter=[raw.FPDF_PAGEOBJ_PATH])
+            boxes = [each.get_bounds() for each in paths]
+            sides = [(box[2] - box[0], box[3] - box[1]) for box in boxes if box[0] < 62 / MM]
+            square = [wide * MM for wide, high in sides if abs(wide - high) < 0.1]
+            found.append(max(square, default=0.0))
+    return found
+
+
+@pytest.mark.parametrize(
+    ("sort", "size", "said"),
+    [
+        (Sort.FULL, FULL, "--size 105x74"),
+        (Sort.FULL, (120.0, 40.0), "--size 120x74"),
+        (Sort.FULL, (150.0, 100.0), "give it more room with --size"),
+        (Sort.SHORT, SHORT, "leave out --short for a full label"),
+    ],
+)
+def test_small_symbols_say_what_gives_them_room(
+    sort: Sort, size: tuple[float, float], said: str
+) -> None:
+    assert small_words([], sort, size) == ""
+    assert small_words(["S06"], sort, size).endswith(f"on S06 are smaller than 1 cm²: {said}")
+    many = small_words([f"S{n:02d}" for n in range(20)], sort, size)
+    assert "S04, S05 and 14 more are smaller" in many
+
+
+def test_the_short_label_and_one_that_is_too_full_tell_of_their_symbols() -> None:
+    for sort, size in ((Sort.SHORT, SHORT), (Sort.FULL, FULL)):
+        worst = replace(hideous(sort)[-1], name="tin")
+        head = head_for("Quillmere College", "Labels", TODAY)
+        typeset("label", LABEL.data(Labels(head, size, None, (worst,))))
+        assert carried("label", SMALL) == ["S1234f"]
+
+
 @pytest.mark.parametrize(
     ("sort", "size"),
     [(Sort.FULL, FULL), (Sort.OPENED, STRIP), (Sort.SHORT, SHORT)],
@@ -310,7 +371,7 @@ def test_the_symbols_have_a_black_frame() -> None:
 
 def test_a_used_sheet_begins_at_its_first_free_place() -> None:
     labels = tuple(Label(Sort.FULL, f"S{n}", "tin") for n in range(1, 6))
-    grid = grid_of("2x3", "10,15", "5,4", 5, FULL)
+    grid = grid_of("2x3", "10,15", "5,4", 5)
     assert grid is not None
     pdf = printed(labels, grid=grid, practice=False)
     assert reading.sizes_mm(pdf) == [(210.0, 297.0)] * 2
@@ -336,6 +397,13 @@ def test_a_size_that_cannot_be_is_refused_and_quoted(text: str) -> None:
         size_of(text, FULL)
 
 
+def test_the_side_that_is_too_long_is_named() -> None:
+    with pytest.raises(BadInput, match="500 mm high is no label"):
+        size_of("70x500", FULL)
+    with pytest.raises(BadInput, match="201 mm wide is no label"):
+        size_of("201x40", FULL)
+
+
 @pytest.mark.parametrize(
     ("sheet", "margin", "gap", "start"),
     [
@@ -353,7 +421,7 @@ def test_a_sheet_that_cannot_be_is_refused(
     sheet: str | None, margin: str | None, gap: str | None, start: int
 ) -> None:
     with pytest.raises(BadInput):
-        grid_of(sheet, margin, gap, start, FULL)
+        grid_of(sheet, margin, gap, start)
 
 
 def test_a_sheet_has_to_fit_on_its_paper() -> None:

@@ -18,8 +18,17 @@ from stockroom.planning.facts import Facts
 from stockroom.reports.paper.card import Card, Cards, cards_lines, cards_of
 from stockroom.reports.paper.card_steps import Amounts, Care, Step, parted, steps_of
 from stockroom.reports.paper.card_text import CARD, cards_text
+from stockroom.reports.paper.head import since
+from stockroom.reports.paper.label import Labels, things_of
+from stockroom.reports.paper.label_grid import FULL
+from stockroom.reports.paper.label_of import batch_label
+from stockroom.reports.paper.left_over import TOO_LITTLE, collected
+from stockroom.reports.paper.make_number import number_line
+from stockroom.reports.paper.week_makes import Makes
 from stockroom.reports.typesetting import typeset
 from stockroom.reports.words import day_heading, measured
+from stockroom.safety.clp import Classification
+from stockroom.safety.hazards import Hazards
 from stockroom.service.cards import hazards_for
 from stockroom.service.sheets import known_and_planned
 
@@ -224,12 +233,58 @@ def test_a_make_moved_or_numbered_anew_keeps_its_keys(
 ) -> None:
     known, plan, _ = planned
     one = plan.makes[13]
-    before = cards_lines(cards_of(known, plan, [one], {}))
-    anew = cards_lines(cards_of(known, plan, [replace(one, id="M99")], {}))
-    moved = cards_lines(cards_of(known, plan, [replace(one, on=one.on - timedelta(1))], {}))
-    assert anew == before
-    first = next(iter(before))
+    before, anew, moved = (
+        cards_lines(cards_of(known, plan, [each], {}))
+        for each in (one, replace(one, id="M99"), replace(one, on=one.on - timedelta(1)))
+    )
+    # which number it had is kept in a key of its own that says nothing
+    said = {key: words for key, words in before.items() if words}
+    assert {key: words for key, words in anew.items() if words} == said
+    assert since("0001", before, anew, plan.as_at).changes == ()
+    first = next(iter(said))
     assert moved[first] != before[first]
+
+
+def test_card_and_label_name_every_make_alike(planned: tuple[Facts, Plan, Cards]) -> None:
+    """Else a number would be told as another make's that is still the same one's."""
+    known, plan, sheet = planned
+    for one, card in zip(plan.makes, sheet.cards, strict=True):
+        label = batch_label(one, known.lines[one.line], Hazards("", "", Classification()), None)
+        ((number, thing),) = things_of(Labels(sheet.head, FULL, None, (label,))).items()
+        assert number_line(number, thing) == number_line(card.number, card.name)
+
+
+@pytest.mark.parametrize("kept", [True, False])
+def test_card_and_week_sheet_say_the_same_of_what_is_over(
+    planned: tuple[Facts, Plan, Cards], kept: bool
+) -> None:
+    known, plan, _ = planned
+    words = set()
+    for heel in (0, TOO_LITTLE - 1, TOO_LITTLE, 324_000):
+        makes = [replace(one, heel=heel, heel_kept=kept) for one in plan.makes]
+        find, days = Makes(known, replace(plan, makes=tuple(makes))), {one.on for one in makes}
+        jobs = [job for on in days for job in (*find.started(on), *find.of_day(on))]
+        begun = {job.ref: job for job in jobs if " finish " not in job.key}
+        for one, card in zip(makes, cards_of(known, plan, makes, {}).cards, strict=True):
+            assert card.over == next((w for w in begun[one.id].more if " over: " in w), "")
+            assert bool(card.over) == (heel >= TOO_LITTLE)
+            words.add(card.over.partition(" over: ")[2])
+    assert words - {""} == ({"label it and keep it"} if kept else {"collect it", "pour away"})
+
+
+def test_what_the_list_collects_is_never_poured_away(planned: tuple[Facts, Plan, Cards]) -> None:
+    known, plan, _ = planned
+    apart = {one.item for one in plan.makes if collected(one.cautions, known.lines[one.line])}
+    # metals and halogens, and what the list gives a container of its own
+    assert {"copper(II) sulfate", "silver nitrate", "potassium permanganate"} <= apart
+    assert {"bromine water", "iodine in iodide"} <= apart
+    assert not apart & {"ascorbic acid", "starch", "hydrogen peroxide", "hydrochloric acid"}
+    # the house may collect what the list does not, and says nothing against the list
+    acid = next(one for one in plan.makes if one.item == "ascorbic acid")
+    silver = next(one for one in plan.makes if one.item == "silver nitrate")
+    said = replace(acid, cautions=("Collect it: the drain is being mended.",))
+    assert collected(said.cautions, known.lines[acid.line])
+    assert collected(("The residues stain.",), known.lines[silver.line])
 
 
 @pytest.mark.parametrize(

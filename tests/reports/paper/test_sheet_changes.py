@@ -7,10 +7,11 @@ from datetime import date
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from stockroom.reports.paper.changes import since_by_booking
+from stockroom.reports.paper.changes import Made, since_by_booking
 from stockroom.reports.paper.head import since
 
 TODAY = date(2027, 1, 4)
+TUESDAY = date(2027, 1, 26)
 DAY, NEXT = "2027-01-26", "2027-01-27"
 
 KEYS = st.sampled_from(
@@ -73,3 +74,63 @@ def test_a_bottle_no_longer_taken_is_told_with_its_cause() -> None:
     assert told == ("5 g, from B14 in A1 (was: 5 g, from S05 in A1); S05: set aside",)
     # of a line that is new nothing was taken before
     assert since_by_booking("0001", {}, now, TODAY, passed).changes == ("new: 5 g, from B14 in A1",)
+
+
+# -- what is gone because it was done ----------------------------------------------------------
+
+
+def came(before: dict[str, str], now: dict[str, str], *made: Made) -> tuple[str, ...]:
+    """The changes told on the Tuesday."""
+    return since_by_booking("0001", before, now, TUESDAY, made=made).changes
+
+
+def test_makes_that_were_done_are_told_by_their_bottles_before_what_that_changed() -> None:
+    before = {
+        f"{DAY} booking K08": "8",
+        f"{DAY} make starch": "1",
+        f"{DAY} start lime": "2",
+        f"{DAY} make acid": "3",
+    }
+    now = {f"{DAY} set out K08 starch": "of S25", f"{DAY} booking K08": "9"}
+    done = (
+        Made("S25", TUESDAY, "starch"),
+        Made("S26", TUESDAY, "lime"),
+        Made("S27", TUESDAY, "lime"),
+    )
+    assert came(before, now, *done) == (
+        "9 (was: 8)",
+        "made: S25 starch; S26 lime; S27 lime",
+        "gone: 3",
+        "new: of S25",
+    )
+
+
+def test_a_make_that_is_still_to_do_is_not_told_as_made() -> None:
+    lines = {f"{DAY} make starch": "starch, 500 cm³"}
+    less = {f"{DAY} make starch": "starch, 200 cm³"}
+    some = Made("S25", TUESDAY, "starch")
+    assert came(lines, less, some) == ("starch, 200 cm³ (was: starch, 500 cm³)",)
+
+
+def test_another_line_another_day_and_a_finish_are_gone() -> None:
+    before = {f"{NEXT} make starch": "tomorrow", f"{DAY} make starch 1 %": "stronger"}
+    before |= {f"{DAY} finish starch": "finish", f"{DAY} tidy starch": "pour away"}
+    told = came(before, {}, Made("S25", TUESDAY, "starch"))
+    assert sorted(told) == [f"gone: {each}" for each in sorted(before.values())]
+
+
+def test_of_two_on_one_day_it_is_the_one_of_its_bookings() -> None:
+    before = {f"{DAY} make salt for K08": "first", f"{DAY} make salt for K09 and K10": "second"}
+    assert came(before, {}, Made("S25", TUESDAY, "salt", ("K10",))) == (
+        "made: S25 salt",
+        "gone: first",
+    )
+    # nobody wrote whom it is for
+    assert came(before, {}, Made("S25", TUESDAY, "salt")) == ("made: S25 salt",)
+
+
+def test_a_bottle_that_was_there_when_the_copy_was_printed_did_not_come_of_its_lines() -> None:
+    salt = Made("S25", TUESDAY, "salt")
+    before = {f"{DAY} make salt": "a second lot", salt.key: ""}
+    assert came(before, {salt.key: ""}, salt) == ("gone: a second lot",)
+    assert came({}, {salt.key: ""}, salt) == ()

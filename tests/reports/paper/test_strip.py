@@ -15,7 +15,6 @@ from stockroom.reports.paper.head import Since, head_for
 from stockroom.reports.paper.strip import (
     NOTHING_BOOKED,
     STRIP,
-    WEEKDAYS,
     Day,
     Strip,
     Week,
@@ -24,6 +23,7 @@ from stockroom.reports.paper.strip import (
     strip_text,
 )
 from stockroom.reports.typesetting import typeset
+from stockroom.reports.words import WEEKDAYS
 
 if TYPE_CHECKING:
     from stockroom.planning.decisions import Plan

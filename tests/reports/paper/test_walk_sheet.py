@@ -52,11 +52,22 @@ def test_two_forms_at_one_place_are_told_apart() -> None:
     ]
 
 
-def test_one_form_alone_keeps_its_name() -> None:
-    rows = standing("B06", WET, "A1"), standing("B07", DRY, "A2"), standing("B08", DRY, "A2")
-    sheet = walk_sheet_of(walk_of(*rows), ON)
-    names = [(row.name, row.form) for shelf in sheet.shelves for row in shelf.rows]
-    assert names == [(WET.key, ""), (DRY.key, ""), (DRY.key, "")]
+def test_two_forms_a_walk_apart_are_told_apart_too_and_one_alone_keeps_its_name() -> None:
+    wet, dry = standing("B06", WET, "A1"), standing("B07", DRY, "A2")
+    sheet = walk_sheet_of(walk_of(wet, dry), ON)
+    assert [row.form for shelf in sheet.shelves for row in shelf.rows] == [
+        "pentahydrate",
+        "ANHYDROUS",
+    ]
+    alone = walk_sheet_of(walk_of(dry, standing("B08", DRY, "A2")), ON)
+    names = [(row.name, row.form) for shelf in alone.shelves for row in shelf.rows]
+    assert names == [(DRY.key, ""), (DRY.key, "")]
+
+
+def test_a_form_is_told_apart_still_once_the_other_is_counted() -> None:
+    met = Visit("B06", WET.key, WET.kind, Met.COUNTED, g(1), g(1), False, "T1", ON, 7)
+    half = walk_sheet_of(replace(walk_of(standing("B07", DRY)), visits=(met,)), ON)
+    assert [row.form for shelf in half.shelves for row in shelf.rows] == ["ANHYDROUS"]
 
 
 @pytest.mark.parametrize(

@@ -207,6 +207,22 @@ def test_every_line_has_a_key_of_its_own_and_no_number_of_a_make_in_it(
 # -- small houses -----------------------------------------------------------------------------
 
 
+def test_a_caution_or_a_guess_that_is_new_is_marked_and_a_figure_of_the_day_is_not(
+    practice: Path,
+) -> None:
+    week = college(practice, MONDAY)
+    before = dict(WEEK.lines(week))
+    (starch,) = (key for key in before if key.endswith("make starch 0.5 % w/v"))
+    caution = "; ! Boiling water: pour the cream in slowly"
+    assert caution in before[starch]
+    milder = before | {starch: before[starch].replace(caution, "")}
+    assert WEEK.since(week, "0001", milder).marked == (starch,)
+    (guess,) = (key for key in before if key.startswith("guess B01"))
+    assert "89.5" not in guess + before[guess]
+    fewer = {key: said for key, said in before.items() if key != guess}
+    assert WEEK.since(week, "0001", fewer).changes == (f"new: {before[guess]}",)
+
+
 def crowded(classes: int, *, on: tuple[int, ...], long: bool = False) -> Facts:
     """A house with so many classes, each with a make, spread over days of January."""
     salt = solid()
