@@ -4,6 +4,7 @@
     own         a copy of it, for one test to write in
     term        its plan for the term, as at 2027-01-04
     stockroom   runs a command in this process and gives back what it printed
+    window      the pages of a store of one's own, without a browser
 
 A typed test names the last one with `if TYPE_CHECKING: from conftest import Stockroom`.
 The stores are files, and typed so; with STOCKROOM_TEST_SERVER they stand on a real server,
@@ -29,6 +30,8 @@ import server_stores
 from hypothesis import settings
 
 if TYPE_CHECKING:
+    from windows import Window
+
     from stockroom.planning.decisions import Plan
 
 # a busy machine is slow now and then, and no test here is about time
@@ -119,6 +122,18 @@ def term(practice: Path) -> Plan:
     from stockroom.service.plan import term_plan
 
     return term_plan(practice, as_at=date(2027, 1, 4))
+
+
+@pytest.fixture
+def window(own: Path) -> Iterator[Window]:
+    """A window on a copy of the practice store, on its first day."""
+    from windows import FIRST_DAY, KEY, window_on
+
+    from stockroom.web.house import House
+
+    made = window_on(House(own, KEY, FIRST_DAY))
+    with made.client:
+        yield made
 
 
 @pytest.fixture

@@ -17,7 +17,7 @@ from stockroom.cli.bench import (
     show_sum,
 )
 from stockroom.cli.shared import of
-from stockroom.cli.values import amount_of
+from stockroom.service.typed import amount_of
 
 
 def dilute(

@@ -21,7 +21,7 @@ from stockroom.cli.bench import (
 )
 from stockroom.cli.bench_assay import assay_of
 from stockroom.cli.shared import of
-from stockroom.cli.values import amount_of
+from stockroom.service.typed import amount_of
 
 
 def weigh(

@@ -8,14 +8,14 @@ import typer
 
 from stockroom.cli.printing import show_done
 from stockroom.cli.shared import of
-from stockroom.cli.values import (
+from stockroom.errors import BadInput
+from stockroom.service.typed import (
     day_or_none,
     percent,
     time_or_none,
     whole,
     whole_or_none,
 )
-from stockroom.errors import BadInput
 
 Booking = Annotated[str, typer.Argument(metavar="BOOKING", help="Its number: K06.")]
 Firm = Annotated[str | None, typer.Option(metavar="WORD", help="pencilled, firm or done.")]

@@ -11,8 +11,8 @@ from stockroom.cli.make_numbers import numbers_before
 from stockroom.cli.paper import Paper, Print, put_out
 from stockroom.cli.printing import tell
 from stockroom.cli.shared import of
-from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
+from stockroom.service.typed import day_or_none
 
 
 def card(

@@ -9,8 +9,8 @@ import typer
 from stockroom.cli.bookings import KeepClosed
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import of
-from stockroom.cli.values import whole
 from stockroom.errors import BadInput
+from stockroom.service.typed import whole
 
 if TYPE_CHECKING:
     from stockroom.service.what_if import Extra, Shift

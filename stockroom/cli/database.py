@@ -9,8 +9,8 @@ import typer
 
 from stockroom.cli.printing import show, show_done, suggest, tell, width
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import column_and_value
 from stockroom.errors import BadInput
+from stockroom.service.typed import column_and_value
 
 
 def demo(ctx: typer.Context) -> None:

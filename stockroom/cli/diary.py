@@ -9,7 +9,7 @@ import typer
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Bottle
-from stockroom.cli.values import day_or_none
+from stockroom.service.typed import day_or_none
 
 if TYPE_CHECKING:
     from stockroom.reports.diary_text import DiaryRow

@@ -8,8 +8,8 @@ import typer
 
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import number_or_none, signed_or_none, whole_or_none
 from stockroom.errors import BadInput
+from stockroom.service.typed import number_or_none, signed_or_none, whole_or_none
 
 if TYPE_CHECKING:
     from stockroom.service.fades import Typed

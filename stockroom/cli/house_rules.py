@@ -8,7 +8,7 @@ import typer
 
 from stockroom.cli.printing import show, show_done, width
 from stockroom.cli.shared import of
-from stockroom.cli.values import column_and_value
+from stockroom.service.typed import column_and_value
 
 
 def rule(

@@ -14,8 +14,8 @@ from stockroom.cli.make_numbers import numbers_before
 from stockroom.cli.paper import Paper, Print, paper_of, put_out
 from stockroom.cli.printing import tell
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
+from stockroom.service.typed import day_or_none
 
 if TYPE_CHECKING:
     from stockroom.reports.paper.label import Sort

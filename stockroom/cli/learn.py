@@ -8,8 +8,8 @@ import typer
 
 from stockroom.cli.printing import show, show_done, width
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import day_or_none, number_or_none, whole_or_none
 from stockroom.errors import BadInput
+from stockroom.service.typed import day_or_none, number_or_none, whole_or_none
 
 
 def learn(

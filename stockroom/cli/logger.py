@@ -9,8 +9,8 @@ import typer
 
 from stockroom.cli.printing import show, suggest, width
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import day_or_none, number_or_none
 from stockroom.errors import BadInput
+from stockroom.service.typed import day_or_none, number_or_none
 
 if TYPE_CHECKING:
     from stockroom.service.logger import Meant, Warmth

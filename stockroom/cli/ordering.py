@@ -9,8 +9,8 @@ import typer
 from stockroom.cli.printing import show, show_done, width
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Happened, when
-from stockroom.cli.values import amount_of, day_or_none, whole
 from stockroom.errors import BadAmount, BadInput
+from stockroom.service.typed import amount_of, day_or_none, whole
 
 _HOW = 'Write it as: stockroom order "silver nitrate" 1 "25 g" --price 46.00'
 

@@ -11,8 +11,8 @@ from stockroom.cli.paper import Paper, Print, form_of, paper_of, put_out
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared, of
 from stockroom.cli.tables import Bom, Csv, check_files, write_table
-from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
+from stockroom.service.typed import day_or_none
 
 From = Annotated[
     str | None,

@@ -9,7 +9,7 @@ import typer
 from stockroom.cli.printing import show_done
 from stockroom.cli.shared import of
 from stockroom.cli.stock import AmountText, Bottle, Happened, when
-from stockroom.cli.values import amount_of, day_or_none
+from stockroom.service.typed import amount_of, day_or_none
 
 Place = Annotated[
     str | None, typer.Option(metavar="PLACE", help="Where it is put; else where the first stands.")

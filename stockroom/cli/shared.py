@@ -15,8 +15,8 @@ from datetime import date
 
 import typer
 
-from stockroom.cli.values import day_or_none
 from stockroom.errors import BadInput
+from stockroom.service.typed import day_or_none
 from stockroom.settings import StoreAt
 
 ANYWHERE = (

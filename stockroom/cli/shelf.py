@@ -8,7 +8,7 @@ import typer
 
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import of
-from stockroom.cli.values import day_or_none
+from stockroom.service.typed import day_or_none
 
 
 def shelf(

@@ -8,7 +8,8 @@ import typer
 
 from stockroom.cli.printing import show_done
 from stockroom.cli.shared import Shared, of
-from stockroom.cli.values import (
+from stockroom.errors import BadInput
+from stockroom.service.typed import (
     amount_of,
     amount_or_none,
     day_or_none,
@@ -16,7 +17,6 @@ from stockroom.cli.values import (
     fraction_or_none,
     whole,
 )
-from stockroom.errors import BadInput
 
 if TYPE_CHECKING:
     from datetime import date

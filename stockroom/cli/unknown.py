@@ -9,8 +9,8 @@ import typer
 from stockroom.cli.printing import show_done
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Happened, when
-from stockroom.cli.values import amount_of
 from stockroom.errors import BadInput
+from stockroom.service.typed import amount_of
 
 
 def unknown(

@@ -9,7 +9,7 @@ import typer
 
 from stockroom.cli.paper import Paper, Print, put_out
 from stockroom.cli.shared import of
-from stockroom.cli.values import day_or_none
+from stockroom.service.typed import day_or_none
 
 
 def week(

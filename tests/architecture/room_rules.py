@@ -74,6 +74,11 @@ OUTSIDE: dict[str, frozenset[str]] = {
     "platformdirs": frozenset({ROOT}),
     "fastapi": frozenset({"web"}),
     "starlette": frozenset({"web"}),
+    "jinja2": frozenset({"web"}),
+    "uvicorn": frozenset({"web"}),
+    "itsdangerous": frozenset({"web"}),
+    "argon2": frozenset({"web"}),
+    "python_multipart": frozenset({"web"}),
     "typer": frozenset({"cli"}),
 }
 

@@ -1,4 +1,4 @@
-"""Words of the command line to values; every refusal quotes what was typed."""
+"""What was typed, at the command line or into a page, to values; every refusal quotes it."""
 
 from __future__ import annotations
 

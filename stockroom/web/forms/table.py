@@ -1,0 +1,20 @@
+"""Every form there is, under its heading, in the order they are listed."""
+
+from __future__ import annotations
+
+from stockroom.web.forms import taking
+from stockroom.web.forms.field import Form, by_name
+
+FORMS: tuple[Form, ...] = (*taking.FORMS,)
+"""All of them."""
+
+BY_NAME = by_name(FORMS)
+"""Each by the name in its address."""
+
+
+def subjects() -> dict[str, list[Form]]:
+    """The forms under their headings, in the order of the list."""
+    found: dict[str, list[Form]] = {}
+    for form in FORMS:
+        found.setdefault(form.subject, []).append(form)
+    return found

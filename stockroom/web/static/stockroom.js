@@ -1,0 +1,2 @@
+// A little help where a browser can give it; every page works without.
+"use strict";

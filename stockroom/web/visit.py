@@ -1,0 +1,128 @@
+"""One request: whose it is, on which day, and how it is answered."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from datetime import date
+from typing import Annotated, Any
+from urllib.parse import quote, urlencode
+
+from fastapi import Depends, HTTPException, Request
+from fastapi.responses import HTMLResponse, RedirectResponse
+from starlette.datastructures import FormData
+
+from stockroom.service.front import Front, front
+from stockroom.settings import StoreAt
+from stockroom.web.door.roles import Role
+from stockroom.web.door.session import Session, form_token, is_our_form
+from stockroom.web.house import House
+
+
+@dataclass(frozen=True, slots=True)
+class Visit:
+    """What every page is given. `today` is the day to think of as today."""
+
+    request: Request
+    house: House
+    session: Session
+    front: Front
+
+    @property
+    def path(self) -> StoreAt:
+        """The store."""
+        return self.house.path
+
+    @property
+    def today(self) -> date:
+        """The day looked from: the one the visitor chose, else the house's."""
+        return self.session.as_at or self.front.today
+
+    @property
+    def looks_elsewhere(self) -> bool:
+        """Whether the day was moved in a house that is no practice: then nothing is entered."""
+        return self.today != self.front.today and not self.front.practice
+
+    @property
+    def here(self) -> str:
+        """This page's own address within the house, for coming back to."""
+        query = [(k, v) for k, v in self.request.query_params.multi_items() if k != "said"]
+        return self.request.url.path + (f"?{urlencode(query)}" if query else "")
+
+    def may(self, role: Role) -> bool:
+        """Whether this visitor may do what the role allows."""
+        return self.session.role >= role
+
+    def page(self, template: str, page: object, *, status: int = 200, **more: Any) -> HTMLResponse:
+        """The page of a template, filled with a value from `reports/pages`."""
+        from stockroom.web.showing import shown
+
+        return HTMLResponse(shown(template, self, page, more), status)
+
+
+def visiting(request: Request) -> Visit:
+    """The visit of a request. Raises: StoreTrouble."""
+    house: House = request.app.state.house
+    token = request.query_params.get("said", "")
+    return Visit(request, house, request.state.session, front(house.path, house.given, token))
+
+
+def _of_role(role: Role) -> Callable[[Visit], Visit]:
+    def allowed(visit: Annotated[Visit, Depends(visiting)]) -> Visit:
+        if visit.may(role):
+            return visit
+        api = visit.request.url.path.startswith("/api/")
+        if visit.session.role is Role.NOBODY and not api:
+            where = visit.here if visit.request.method == "GET" else "/"
+            headers = {"location": f"/come-in?back={quote(where)}"}
+            raise HTTPException(303, headers=headers)
+        if visit.session.role is Role.NOBODY:
+            raise HTTPException(401, "Nobody is known by this cookie: come in first.")
+        raise HTTPException(
+            403, f"This needs the role {role.words}; yours is {visit.session.role.words}."
+        )
+
+    return allowed
+
+
+Reading = Annotated[Visit, Depends(_of_role(Role.READ))]
+Recording = Annotated[Visit, Depends(_of_role(Role.RECORD))]
+Keeping = Annotated[Visit, Depends(_of_role(Role.KEEP_HOUSE))]
+Anybody = Annotated[Visit, Depends(visiting)]
+"""The visit, where its role allows what the name says; else turned away."""
+
+
+async def form_sent(request: Request) -> FormData:
+    """The fields of a form that is one of ours. Raises: 403 for one that is not."""
+    form = await request.form(max_files=1, max_fields=200, max_part_size=64 * 1024)
+    token = form.get("form_token")
+    house: House = request.app.state.house
+    if not isinstance(token, str) or not is_our_form(house, request.state.session, token):
+        raise HTTPException(
+            403, "This form is not from this visit: open the page again, then send it."
+        )
+    return form
+
+
+Sent = Annotated[FormData, Depends(form_sent)]
+"""What a form of ours sent."""
+
+
+def token_of(visit: Visit) -> str:
+    """The token every form of this visit carries."""
+    return form_token(visit.house, visit.session)
+
+
+def values_of(form: FormData) -> dict[str, str]:
+    """The fields of a form that hold text."""
+    return {key: value for key, value in form.items() if isinstance(value, str)}
+
+
+def back_to(path: str, said: str = "") -> RedirectResponse:
+    """Back to a page of ours, telling what was done; a path that leads elsewhere goes home."""
+    # two slashes, or one of the other kind, would lead to another host
+    ours = path.startswith("/") and path[1:2] not in ("/", "\\") and path.isprintable()
+    target = path if ours else "/"
+    if said:
+        target += ("&" if "?" in target else "?") + urlencode({"said": said})
+    return RedirectResponse(target, 303)
