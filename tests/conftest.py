@@ -5,6 +5,7 @@
     term        its plan for the term, as at 2027-01-04
     stockroom   runs a command in this process and gives back what it printed
     window      the pages of a store of one's own, without a browser
+    chromium    a real browser, for the tests in tests/browser
 
 A typed test names the last one with `if TYPE_CHECKING: from conftest import Stockroom`.
 The stores are files, and typed so; with STOCKROOM_TEST_SERVER they stand on a real server,
@@ -30,6 +31,7 @@ import server_stores
 from hypothesis import settings
 
 if TYPE_CHECKING:
+    from playwright.sync_api import Browser
     from windows import Window
 
     from stockroom.planning.decisions import Plan
@@ -134,6 +136,15 @@ def window(own: Path) -> Iterator[Window]:
     made = window_on(House(own, KEY, FIRST_DAY))
     with made.client:
         yield made
+
+
+@pytest.fixture(scope="session")
+def chromium() -> Iterator[Browser]:
+    """A real browser without a window; the test is passed over where there is none."""
+    from browsing import chromium_open
+
+    with chromium_open() as browser:
+        yield browser
 
 
 @pytest.fixture

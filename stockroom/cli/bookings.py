@@ -115,3 +115,27 @@ def cancel(
     change = bookings.take_back if undo else bookings.cancel
     done = change(shared.path, booking, why=reason, today=shared.today, by=shared.initials)
     show_done(shared, done)
+
+
+def destroyed(
+    ctx: typer.Context,
+    booking: Booking,
+    undo: Annotated[bool, typer.Option("--undo", help="Take the tick back: it stands.")] = False,
+    reason: Annotated[str, typer.Option("--why", help="With --undo: why.")] = "",
+) -> None:
+    """Tick that a booking's mixture that is never kept was destroyed, every vessel rinsed.
+
+    Example: stockroom destroyed K16 --by T1
+    """
+    from stockroom.service import destroying
+
+    shared = of(ctx)
+    if reason and not undo:
+        raise BadInput(f"--why {reason!r} is for a tick taken back.", "Add --undo, or leave it.")
+    if undo:
+        done = destroying.not_destroyed(
+            shared.path, booking, why=reason, today=shared.today, by=shared.initials
+        )
+    else:
+        done = destroying.destroyed(shared.path, booking, today=shared.today, by=shared.initials)
+    show_done(shared, done)

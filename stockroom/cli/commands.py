@@ -103,6 +103,7 @@ COMMANDS: dict[str, dict[str, Callable[..., None]]] = {
         "book": bookings.book,
         "shift": bookings.shift,
         "cancel": bookings.cancel,
+        "destroyed": bookings.destroyed,
     },
     "Bench sums (no store needed)": {
         "strength": bench_strength.strength,

@@ -217,7 +217,10 @@ class Recipe:
 
 @dataclass(frozen=True, slots=True)
 class Booking:
-    """A recipe version on a day. `spare` in thousandths; `minute` after midnight."""
+    """A recipe version on a day. `spare` in thousandths; `minute` after midnight.
+
+    `destroyed_by` holds the initials of whoever destroyed what it must not keep; "" till then.
+    """
 
     number: str
     recipe: str
@@ -230,6 +233,7 @@ class Booking:
     firmness: Firmness = Firmness.FIRM
     room: str = ""
     lasts_minutes: int = 100
+    destroyed_by: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -35,7 +35,7 @@ def notes(
     bookings = list({need.booking.number: (need.booking, need.recipe) for need in needs}.values())
     return [
         *hour_notes(facts, bookings),
-        *map(watch_note, watch),
+        *(watch_note(each) for each in watch if not each.ticked_by),
         *load_notes(facts, loads, makes),
         *_full_mornings(facts, makes),
         *equipment_notes(facts, batches, orders),

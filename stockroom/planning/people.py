@@ -217,6 +217,7 @@ def watches(needs: Iterable[Need], short: Collection[str]) -> list[Watch]:
                 not_before=booking.minute - MIX_BEFORE,
                 destroy_by=ends + DESTROY_AFTER,
                 how=how,
+                ticked_by=booking.destroyed_by,
             )
     return list(row.values())
 

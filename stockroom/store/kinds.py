@@ -110,3 +110,6 @@ def standing_on(known_on: date | None) -> str:
 
 CANCELLED, EXPECTED = "cancelled", "expected"
 """What may be changed of an order that was placed: given up, or put off to another day."""
+
+MIXTURE, STANDS, DESTROYED = "mixture", "stands", "destroyed"
+"""In a booking's record: its mixture that is never kept, before and after somebody destroyed it."""

@@ -7,6 +7,7 @@ stands on the shelves.
 
 from __future__ import annotations
 
+from dataclasses import replace
 from datetime import date, timedelta
 
 from stockroom.errors import BadDate
@@ -25,6 +26,7 @@ from stockroom.planning.facts import (
     Vessel,
 )
 from stockroom.settings import StoreAt
+from stockroom.store.kinds import DESTROYED, MIXTURE
 from stockroom.store.printed_plans import usual_of
 from stockroom.store.reading import Reader, Row, reading
 from stockroom.store.snapshot_bottles import bottles_of, drawn_of, written_off_of
@@ -155,13 +157,24 @@ def _bookings(
     lasts = int(settings.get("session_minutes", "100"))
     recipes = {row["id"]: (row["recipe"], row["version"]) for row in reader.rows("recipe")}
     payers = reader.pairs("SELECT id, department FROM department")
+    # the last word counts: a tick may have been taken back
+    ticks = reader.pairs(_TICKED, MIXTURE)
     rows = reader.rows(
         "booking",
         "WHERE on_day BETWEEN ? AND ? ORDER BY on_day, minute, number",
         first.isoformat(),
         last.isoformat(),
     )
-    return tuple(_booking(row, recipes, payers, lasts) for row in rows)
+    return tuple(
+        replace(_booking(row, recipes, payers, lasts), destroyed_by=ticks.get(row["id"], ""))
+        for row in rows
+    )
+
+
+_TICKED = f"""
+    SELECT booking_id, CASE after WHEN '{DESTROYED}' THEN by ELSE '' END
+    FROM booking_change WHERE what = ? ORDER BY id
+"""
 
 
 def _booking(

@@ -2,10 +2,10 @@
 
 from __future__ import annotations
 
-from stockroom.web.forms import taking
+from stockroom.web.forms import destroying, taking
 from stockroom.web.forms.field import Form, by_name
 
-FORMS: tuple[Form, ...] = (*taking.FORMS,)
+FORMS: tuple[Form, ...] = (*taking.FORMS, *destroying.FORMS)
 """All of them."""
 
 BY_NAME = by_name(FORMS)
