@@ -5,6 +5,9 @@
     term        its plan for the term, as at 2027-01-04
     stockroom   runs a command in this process and gives back what it printed
     window      the pages of a store of one's own, without a browser
+    onlooker    the same on the practice college itself, for tests that save nothing
+    room        a store of one's own that is shared with the room, and who comes in there
+    quick_hash  passphrases are hashed in no time
     chromium    a real browser, for the tests in tests/browser
 
 A typed test names the last one with `if TYPE_CHECKING: from conftest import Stockroom`.
@@ -31,6 +34,7 @@ import server_stores
 from hypothesis import settings
 
 if TYPE_CHECKING:
+    from doors import Room
     from playwright.sync_api import Browser
     from windows import Window
 
@@ -145,6 +149,34 @@ def chromium() -> Iterator[Browser]:
 
     with chromium_open() as browser:
         yield browser
+
+
+@pytest.fixture(scope="module")
+def onlooker(practice: Path) -> Iterator[Window]:
+    """A window on the practice college, on its first day. Only for looking."""
+    from windows import FIRST_DAY, KEY, window_on
+
+    from stockroom.web.house import House
+
+    made = window_on(House(practice, KEY, FIRST_DAY))
+    with made.client:
+        yield made
+
+
+@pytest.fixture
+def quick_hash(monkeypatch: pytest.MonkeyPatch) -> None:
+    """Passphrases are hashed by parameters nobody would keep one with."""
+    from doors import hash_in_no_time
+
+    hash_in_no_time(monkeypatch)
+
+
+@pytest.fixture
+def room(own: Path, quick_hash: None) -> Iterator[Room]:
+    """A copy of the practice store, shared by passphrase, on its first day."""
+    from doors import shared_room
+
+    yield from shared_room(own)
 
 
 @pytest.fixture

@@ -9,8 +9,8 @@ import typer
 from stockroom.cli.printing import show, show_done, width
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Happened, when
-from stockroom.errors import BadAmount, BadInput
-from stockroom.service.typed import amount_of, day_or_none, whole
+from stockroom.errors import BadInput
+from stockroom.service.typed import amount_of, day_or_none, pence_or_none, whole
 
 _HOW = 'Write it as: stockroom order "silver nitrate" 1 "25 g" --price 46.00'
 
@@ -84,7 +84,8 @@ def order(
         if line is None or packs is None or pack is None:
             raise BadInput(f"How much of {line or 'what'} was ordered?", _HOW)
         count, each = whole(packs, "PACKS"), amount_of(pack)
-        asked = Asked(line, count, each, _pence(price), due, supplier, dept or "", note or "")
+        pence = pence_or_none(price, "--price")
+        asked = Asked(line, count, each, pence, due, supplier, dept or "", note or "")
         done = ordering.order(path, asked, **happened)
     show_done(shared, done)
 
@@ -119,15 +120,3 @@ def _check_used(what: str, given: dict[str, str | None], *used: str) -> None:
             f"{what} takes no {' and no '.join(unused)}: {'it' if one else 'they'} would be lost.",
             f"Leave {'it' if one else 'them'} out; {what} takes {' and '.join(used)}.",
         )
-
-
-def _pence(text: str | None) -> int | None:
-    """Pounds as typed, "£14.50", in whole pence. Raises: BadAmount."""
-    if text is None:
-        return None
-    from stockroom.measure.reading import read_number
-
-    pence = read_number(text.strip().removeprefix("£"), where="--price", whole=text) * 100
-    if pence != int(pence):
-        raise BadAmount(f"--price {text!r} has parts of a penny.", "Give pounds and pence.")
-    return int(pence)

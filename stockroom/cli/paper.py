@@ -8,7 +8,6 @@ import re
 import stat
 import tempfile
 from collections.abc import Callable, Iterator, Sequence
-from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated, Any, TypeVar
 
@@ -17,7 +16,7 @@ import typer
 from stockroom.cli.printing import show, suggest, width
 from stockroom.cli.shared import Shared
 from stockroom.cli.whose import check_ours
-from stockroom.errors import BadInput, NotAllowed, StoreTrouble
+from stockroom.errors import BadInput, NotAllowed
 
 if TYPE_CHECKING:
     from stockroom.reports.paper.kinds import Kind
@@ -75,13 +74,9 @@ def put_out(
 
 def held_against(shared: Shared, kind: Kind[A], sheet: A, about: str) -> A:
     """The sheet with what it says otherwise than the copy printed last of the same."""
-    from stockroom.service.copies import copy_before
+    from stockroom.service.printing import held_against as held
 
-    before = copy_before(shared.path, kind.name, about)
-    if before is None or not before.lines:
-        return sheet
-    told = kind.since(sheet, before.number, before.lines)
-    return replace(sheet, head=replace(sheet.head, since=told))
+    return held(shared.path, kind, sheet, about)
 
 
 def numbered(shared: Shared, kind: Kind[A], sheet: A, about: str) -> A:
@@ -89,19 +84,12 @@ def numbered(shared: Shared, kind: Kind[A], sheet: A, about: str) -> A:
 
     Raises: NotAllowed where none can be taken.
     """
-    from stockroom.service.copies import number_copy
+    from stockroom.service.printing import numbered as with_number
 
-    head, lines = sheet.head, kind.lines(sheet)
-    try:
-        number = number_copy(
-            shared.path, kind.name, about, lines, as_at=head.as_at, by=shared.given_initials
-        )
-    except StoreTrouble as trouble:
-        raise NotAllowed(
-            f"No copy can be numbered, so nothing was printed. {trouble.message}",
-            f"To read it on the screen, leave --print off. {trouble.hint}".strip(),
-        ) from trouble
-    return replace(sheet, head=replace(head, copy=number))
+    otherwise = "To read it on the screen, leave --print off."
+    return with_number(
+        shared.path, kind, sheet, about, by=shared.given_initials, otherwise=otherwise
+    )
 
 
 def _set_and_written(

@@ -34,7 +34,7 @@ def show_done(shared: Shared, done: Done, *, at: StoreAt | None = None) -> None:
 
     `at` is the store that command is for, where it is not the one of this command.
     """
-    show(shared, lambda: _done_text(done), lambda: _done_json(done))
+    show(shared, lambda: _done_text(done), done.as_data)
     suggest(shared, done.next, at=at)
 
 
@@ -68,13 +68,3 @@ def _done_text(done: Done) -> str:
 
     lines = [raised(done.text), *(f"  {raised(detail)}" for detail in done.details)]
     return "\n".join([PRACTICE, *lines] if done.practice else lines)
-
-
-def _done_json(done: Done) -> dict[str, Any]:
-    return {
-        "text": done.text,
-        "bottle": done.bottle or None,
-        "entry": done.entry,
-        "practice": done.practice,
-        "details": list(done.details),
-    }

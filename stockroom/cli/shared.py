@@ -33,6 +33,7 @@ SEVERAL = {
     "fades": frozenset({"--below"}),
     "make": frozenset({"--from"}),
     "picture": frozenset({"--below"}),
+    "serve": frozenset({"--name"}),
     "titrate": frozenset({"--dilution"}),
     "what-if": frozenset({"--groups", "--shift", "--without", "--cancel", "--book"}),
 }

@@ -185,6 +185,11 @@ class Order:
     instead: tuple[Instead, ...] = ()
     sold_as: tuple[Pack, ...] = ()
 
+    @property
+    def wanted(self) -> str:
+        """What it is of, the same while its number moves: "ascorbic acid, 1 × 100 g"."""
+        return f"{self.line}, {self.packs} × {self.pack}"
+
 
 @dataclass(frozen=True, slots=True)
 class Short:

@@ -48,7 +48,7 @@ def bring_in_text(
 def _after(read: ListRead, written: Written, width: int) -> Iterable[str]:
     """Each bottle written with what it was in the list, and each row that waits with why."""
     done = [
-        wrap(f"{_span(list(written[row.row]))}: {_in_words(row)} (row {row.row})", width, indent=2)
+        wrap(f"{span(list(written[row.row]))}: {in_words(row)} (row {row.row})", width, indent=2)
         for row in read.rows
         if row.row in written
     ]
@@ -83,15 +83,15 @@ def _summary(read: ListRead, written: Written, *, agreed: bool) -> list[str]:
     ]
     if agreed:
         numbers = [number for each in written.values() for number in each]
-        span = f": {_span(numbers)}" if numbers else ""
-        lines.append(f"Brought in {counted(len(numbers), 'bottle')}{span}.")
+        which = f": {span(numbers)}" if numbers else ""
+        lines.append(f"Brought in {counted(len(numbers), 'bottle')}{which}.")
         if numbers:
             lines.append(
                 f"To take one back: stockroom diary {numbers[0]}, then put-right each of"
                 " its entries, the last one first."
             )
         held = [number for row in read.rows for number in row.bottles]
-        lines += [f"Here already: {_span(held)}."] if held else []
+        lines += [f"Here already: {span(held)}."] if held else []
     else:
         going = sum(row.incoming.count for row in read.going_in if row.incoming)
         asked = sum(column.asked for column in read.table.columns)
@@ -107,7 +107,8 @@ def _summary(read: ListRead, written: Written, *, agreed: bool) -> list[str]:
     return lines
 
 
-def _span(numbers: list[str]) -> str:
+def span(numbers: list[str]) -> str:
+    """Bottle numbers in a row, shortened where there are many: "B40 to B52"."""
     if len(numbers) <= _MOST_NAMED:
         return ", ".join(numbers)
     # each letter counts by itself, so each has its own first and last
@@ -153,7 +154,7 @@ def _rows(read: ListRead, width: int) -> Iterable[str]:
 
 def _row(row: RowRead, read: ListRead, width: int) -> list[str]:
     notes = [doubt.text for doubt in row.doubts if doubt.weight is Weight.NOTE]
-    said = "; ".join([row.why or _in_words(row), *notes])
+    said = "; ".join([row.why or in_words(row), *notes])
     lines = [wrap(f"row {row.row}, line {row.line}: {said}", width, indent=2)]
     asked = [_doubt(doubt, read) for doubt in row.doubts if doubt.weight > Weight.NOTE]
     if row.status is Status.REFUSED:
@@ -172,7 +173,7 @@ def _doubt(doubt: Doubt, read: ListRead) -> str:
     return f"{column}{value}{': ' if column or value else ''}{doubt.text} ({said})"
 
 
-def _in_words(row: RowRead) -> str:
+def in_words(row: RowRead) -> str:
     """What will be written of a row: "lithium chloride, 38 g, opened 16 September 2024, in A2"."""
     said = row.incoming
     if said is None:

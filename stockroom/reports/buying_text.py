@@ -84,22 +84,22 @@ def _order(order: Order, today: date, width: int, reasons: int, *, ways: bool) -
     paid = ", ".join(f"{department}{TIED}{money(pence)}" for department, pence in order.shares)
     details = [f"{needed}{served}{'; paid by ' + paid if paid else ''}"]
     if ways:
-        details += [text for text in (_falling(order, today),) if text]
+        details += [text for text in (falling(order, today),) if text]
     details += order.reasons[:reasons]
-    details += [*_split(order), *_ways(order.instead)] if ways else []
+    details += [*split_in_words(order), *_ways(order.instead)] if ways else []
     return [
         wrap(first, width, indent=2, hang=18),
         *(wrap(detail, width, indent=18, hang=18) for detail in details),
     ]
 
 
-def _falling(order: Order, today: date) -> str:
-    """The days the usable stock is below its level, and does not suffice."""
+def falling(order: Order, today: date) -> str:
+    """The days the usable stock is below its level, and does not suffice; "" for neither."""
     told = (("falls below its level", order.falls_below), ("runs out", order.runs_out))
     return ", ".join(f"{what} {'now' if on <= today else day(on)}" for what, on in told if on)
 
 
-def _split(order: Order) -> list[str]:
+def split_in_words(order: Order) -> list[str]:
     """How an order that would be thrown away in part may come in several deliveries."""
     return [
         f"delivery {number}: {each.packs}{TIED}×{TIED}{each.pack.replace(' ', TIED)}, "

@@ -16,6 +16,8 @@ _HEADINGS = {
     About.ORDER: "ORDERS",
     About.CHECK: "CHECKS",
 }
+PAST = "Past, and nothing was entered for it"
+"""The heading over what nobody can say was done."""
 
 
 def changed_text(
@@ -25,25 +27,18 @@ def changed_text(
 
     `against` is the kept plan's number, `by` who kept it. PRACTICE stands on the first line.
     """
-    count = len(comparison.open)
-    done = [change for change in comparison.done if What.DONE in change.what]
-    past = [change for change in comparison.done if What.PAST in change.what]
-    first = f"{counted(count, 'change')} since plan {against} was kept"
-    if not count:
-        first = f"nothing changed since plan {against}"
-    tail = [f"{len(each)} {word}" for each, word in ((done, "done"), (past, "past")) if each]
-    first += f"; {', '.join(tail)}" if tail else ""
     kept, now = comparison.before, comparison.after
     about = f"{house}: kept as at {day(kept.as_at)} by {by}, held against {day(now.as_at)}."
+    first = since_kept(comparison, against)
     puzzling = _puzzling(comparison)
     following = (f"stockroom why {puzzling}",) if puzzling else ()
     return page(
         [
             _first(first, practice) + "\n" + wrap(about, width),
             *_sections(comparison, width),
-            section("DONE", _lines(done, width)),
-            section("PAST, AND NOTHING WAS ENTERED FOR IT", _past(past, width)),
-            section("ALTOGETHER", _totals(comparison, width)) if count else "",
+            section("DONE", columns(rows_done(comparison), width)),
+            section(PAST.upper(), columns(rows_past(comparison), width)),
+            section("ALTOGETHER", columns(totals(comparison), width)) if comparison.open else "",
             foot(width, *following, "stockroom plan"),
         ]
     )
@@ -53,14 +48,13 @@ def what_if_text(
     comparison: Comparison, width: int, *, asked: tuple[str, ...], house: str, practice: bool
 ) -> str:
     """What would change: the count first, then by kind, then minutes and money."""
-    count = len(comparison.open)
-    first = f"{counted(count, 'change')} if so" if count else "nothing would change"
+    first = if_so(comparison)
     about = f"{house}, as at {day(comparison.after.as_at)}, if {'; '.join(asked)}:"
     return page(
         [
             _first(first, practice) + "\n" + wrap(about, width),
             *_sections(comparison, width),
-            section("ALTOGETHER", _totals(comparison, width)) if count else "",
+            section("ALTOGETHER", columns(totals(comparison), width)) if comparison.open else "",
             wrap("Nothing was written.", width),
             foot(width, "stockroom plan"),
         ]
@@ -72,25 +66,57 @@ def _first(text: str, practice: bool) -> str:
     return f"{text}   {PRACTICE}" if practice else text
 
 
-def _sections(comparison: Comparison, width: int) -> list[str]:
-    return [
-        section(heading, _lines([c for c in comparison.open if c.about is about], width))
+def since_kept(comparison: Comparison, against: str) -> str:
+    """How much changed since the plan of a number was kept: "3 changes since ...; 2 done"."""
+    count = len(comparison.open)
+    first = f"{counted(count, 'change')} since plan {against} was kept"
+    if not count:
+        first = f"nothing changed since plan {against}"
+    kinds = ((_done_as(comparison, what), what) for what in (What.DONE, What.PAST))
+    tail = [f"{len(each)} {what}" for each, what in kinds if each]
+    return first + (f"; {', '.join(tail)}" if tail else "")
+
+
+def if_so(comparison: Comparison) -> str:
+    """How much would change: "7 changes if so"."""
+    count = len(comparison.open)
+    return f"{counted(count, 'change')} if so" if count else "nothing would change"
+
+
+def headed(comparison: Comparison) -> list[tuple[str, list[tuple[str, str]]]]:
+    """The changes under their headings, none of them empty: (number, what and why) each."""
+    found = [
+        (heading, _rows([change for change in comparison.open if change.about is about]))
         for about, heading in _HEADINGS.items()
     ]
+    return [(heading, rows) for heading, rows in found if rows]
 
 
-def _lines(changes: tuple[Change, ...] | list[Change], width: int) -> list[str]:
-    return columns([(_number(change), _told(change)) for change in changes], width)
+def rows_done(comparison: Comparison) -> list[tuple[str, str]]:
+    """What was carried out since, (number, what) each."""
+    return _rows(_done_as(comparison, What.DONE))
 
 
-def _past(changes: list[Change], width: int) -> list[str]:
+def rows_past(comparison: Comparison) -> list[tuple[str, str]]:
     """One row a kind: what is past needs no telling line by line."""
     rows = []
     for about, heading in _HEADINGS.items():
-        alike = [change for change in changes if change.about is about]
+        alike = [change for change in _done_as(comparison, What.PAST) if change.about is about]
         told = [c.ref if about is About.BOOKING else f"{c.ref} {c.item}" for c in alike]
         rows += [(heading.lower(), "; ".join(told))] if told else []
-    return columns(rows, width)
+    return rows
+
+
+def _sections(comparison: Comparison, width: int) -> list[str]:
+    return [section(heading, columns(rows, width)) for heading, rows in headed(comparison)]
+
+
+def _done_as(comparison: Comparison, what: What) -> list[Change]:
+    return [change for change in comparison.done if what in change.what]
+
+
+def _rows(changes: list[Change]) -> list[tuple[str, str]]:
+    return [(_number(change), _told(change)) for change in changes]
 
 
 def _number(change: Change) -> str:
@@ -110,15 +136,15 @@ def _told(change: Change) -> str:
     return f"{change.item}: {text}{cause}"
 
 
-def _totals(comparison: Comparison, width: int) -> list[str]:
+def totals(comparison: Comparison) -> list[tuple[str, str]]:
+    """Minutes, money and what cannot be had: before and after, or once where it is the same."""
     was, now = comparison.before, comparison.after
     short_was, short_now = _shorts(was, now)
-    rows = [
+    return [
         ("hands-on", _from_to(f"{was.minutes} min", f"{now.minutes} min")),
         ("orders", _from_to(money(was.pence), money(now.pence))),
         ("cannot be had", _from_to(counted(short_was, "need"), counted(short_now, "need"))),
     ]
-    return columns(rows, width)
 
 
 def _from_to(old: str, new: str) -> str:

@@ -57,21 +57,32 @@ def entry_line(told: DiaryRow) -> str:
 
 
 def _cells(told: DiaryRow) -> tuple[str, ...]:
-    # a plus sign sets what came in apart from what was counted to be there
-    sign = "+" if told.change.micro > 0 else ""
     return (
         str(told.entry),
         told.happened.isoformat(),
         told.entered.isoformat(),
         told.by,
         f"{told.kind} (put right by {told.undone_by})" if told.undone_by else told.kind,
-        f"{sign}{_written(told.change)}" if told.change.micro else "",
-        format_about(told.left) if told.about and told.left.micro else _written(told.left),
-        _said(told),
+        change_words(told),
+        left_words(told),
+        said_words(told),
     )
 
 
-def _said(told: DiaryRow) -> str:
+def change_words(told: DiaryRow) -> str:
+    """What an entry added or took, signed: "+500 cm³"; "" for one that changed no amount."""
+    # a plus sign sets what came in apart from what was counted to be there
+    sign = "+" if told.change.micro > 0 else ""
+    return f"{sign}{_written(told.change)}" if told.change.micro else ""
+
+
+def left_words(told: DiaryRow) -> str:
+    """What was left after an entry, with "about" where that was judged by eye."""
+    return format_about(told.left) if told.about and told.left.micro else _written(told.left)
+
+
+def said_words(told: DiaryRow) -> str:
+    """What it puts right, where to, for which booking, and what somebody said of it."""
     mends = f"puts right {told.puts_right}" if told.puts_right else ""
     to = f"at {told.place}" if told.place else ""
     booking = f"for {told.booking.replace(';', ', ')}" if told.booking else ""

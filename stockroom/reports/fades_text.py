@@ -48,9 +48,21 @@ class Scale:
 
 def fades_text(of: Fading, width: int) -> str:
     """The course of one bottle under its name, one thing a row."""
+    rows = [*strength_rows(of), *course_rows(of)]
+    lines = [wrap(f"{of.bottle} {of.line}, as at {day(of.on)}", width), *columns(rows, width)]
+    lines.append(wrap(CAUTION, width, hang=0))
+    return "\n".join([PRACTICE, *lines] if of.practice else lines)
+
+
+def strength_rows(of: Fading) -> list[tuple[str, str]]:
+    """The three strengths, never mixed: label, found, expected, each with what is said of it."""
+    return _strengths(of, Scale(*of.shown))
+
+
+def course_rows(of: Fading) -> list[tuple[str, str]]:
+    """Its law, how warm it stood, how fast it goes, until when; "" goes on from the row above."""
     found, scale = of.course, Scale(*of.shown)
-    rows = [
-        *_strengths(of, scale),
+    return [
         *_law(of),
         *([("figures", of.cited)] if of.cited else []),
         *_warmth(found),
@@ -58,9 +70,6 @@ def fades_text(of: Fading, width: int) -> str:
         *_marks(of, scale),
         *(("guess", doubt) for doubt in found.doubts),
     ]
-    lines = [wrap(f"{of.bottle} {of.line}, as at {day(of.on)}", width), *columns(rows, width)]
-    lines.append(wrap(CAUTION, width, hang=0))
-    return "\n".join([PRACTICE, *lines] if of.practice else lines)
 
 
 def _strengths(of: Fading, scale: Scale) -> list[tuple[str, str]]:

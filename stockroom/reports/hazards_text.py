@@ -37,9 +37,25 @@ def hazards_text(found: Hazards, width: int) -> str:
         section("CAUTIONS", [wrap(text, width, indent=2) for text in found.cautions]),
         section("BEFORE THAT", [wrap(_sheet_line(one), width, indent=2) for one in found.older]),
         section("SOURCES", [wrap(text, width, indent=2) for text in _sources(found)]),
-        wrap(f"{_how_good(found)} {HOUSE_LINE}".strip(), width, hang=0),
+        wrap(how_good(found), width, hang=0),
     ]
     return page(parts)
+
+
+def hazard_grounds(found: Hazards) -> list[tuple[str, list[str]]]:
+    """Why it is classed so: each heading with its lines, headings without any left out."""
+    parts = [
+        ("Decided by", _decided_by(found)),
+        ("Notes", _notes(found)),
+        ("Before that", [_sheet_line(one) for one in found.older]),
+        ("Sources", _sources(found)),
+    ]
+    return [(title, lines) for title, lines in parts if lines]
+
+
+def how_good(found: Hazards) -> str:
+    """How good the limits are that were weighed, and what comes first in any case."""
+    return f"{_how_good(found)} {HOUSE_LINE}".strip()
 
 
 def _label(found: Hazards, width: int) -> str:

@@ -13,7 +13,9 @@ from stockroom.reports.sheet import PRACTICE, wrap
 HOUSE_RULE, STARTER = "house rule", "starter value"
 
 
-class _RuleChange(Corrected, Protocol):
+class RuleChange(Corrected, Protocol):
+    """One change of a line's rules."""
+
     @property
     def rule(self) -> str: ...
 
@@ -26,7 +28,7 @@ class _Keeping(Protocol):
     @property
     def rules(self) -> Sequence[Rule]: ...
     @property
-    def changes(self) -> Sequence[_RuleChange]: ...
+    def changes(self) -> Sequence[RuleChange]: ...
     @property
     def sources(self) -> Mapping[str, str]: ...
     @property
@@ -43,7 +45,7 @@ def rules_text(keeping: _Keeping, width: int = 100) -> str:
         lines.append("  no ageing rule: it counts as good until somebody says otherwise")
     for rule in keeping.rules:
         lines.append(wrap(rule_in_words(rule, keeping.unit, keeping.shown), width, indent=2))
-        lines.append(wrap(_whose(rule, keeping.sources), width, indent=4))
+        lines.append(wrap(rule_owner(rule, keeping.sources), width, indent=4))
     if keeping.changes:
         lines.append("Changed")
     for change in keeping.changes:
@@ -81,7 +83,8 @@ def rules_json(keeping: _Keeping) -> dict[str, Any]:
     }
 
 
-def _whose(rule: Rule, sources: Mapping[str, str]) -> str:
+def rule_owner(rule: Rule, sources: Mapping[str, str]) -> str:
+    """Whose rule it is, with its source: "house rule", "starter value; Bench experience…"."""
     cited = sources.get(rule.source, rule.source)
     if rule.house:
         return HOUSE_RULE if rule.source in ("", HOUSE_RULE) else f"{HOUSE_RULE}; {cited}"

@@ -37,7 +37,7 @@ def _cells(row: OnShelf) -> tuple[str, ...]:
         bottle.place or "-",
         marked(row.verdict.condition),
         left_of(row),
-        f"{bottle.line}; {_until(row)}{_remark(row)}",
+        f"{bottle.line}; {until_words(row)}{_remark(row)}",
     )
 
 
@@ -55,7 +55,8 @@ def left_of(row: OnShelf) -> str:
     return f"{number} of {full}".replace(" ", TIED)
 
 
-def _until(row: OnShelf) -> str:
+def until_words(row: OnShelf) -> str:
+    """Until when it is good, what decided that, and what is to be said of it."""
     found = row.verdict
     until = f"good until {day(found.good_until)}, " if found.good_until else ""
     warned = f" ({found.warning})" if found.warning else ""

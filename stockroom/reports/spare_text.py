@@ -47,7 +47,7 @@ def in_words(line: LineSpare) -> str:
 def _recipe(found: RecipeSpare, width: int) -> str:
     rows = [(named(x.item, x.strength), f"{in_words(x)} ({_now(x)} now)") for x in found.lines]
     silent = f"nothing drawn for a class of: {listed(found.silent)}" if found.silent else ""
-    told = [_advice(found), silent, *_how(found)]
+    told = [advice(found), silent, *_how(found)]
     return "\n".join(
         [
             wrap(f"{found.code} {found.title}, {_classes(found.classes)}", width),
@@ -123,7 +123,8 @@ def _amount(line: LineSpare, micro: int) -> str:
     return format_amount(Amount(line.kind, micro)).replace(" ", TIED)
 
 
-def _advice(found: RecipeSpare) -> str:
+def advice(found: RecipeSpare) -> str:
+    """What spare would do for the whole recipe, or why none can be told, in one sentence."""
     if found.would_do is None or found.decides is None:
         return f"No spare can be told yet: {FEWEST} classes of a line are needed."
     now = _from_to(min(found.now), max(found.now))

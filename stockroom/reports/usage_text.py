@@ -53,11 +53,17 @@ def _apart(plan: Plan, how: str, heading: str, width: int) -> str:
     return section(heading, _lines(uses, width))
 
 
-def _differences(plan: Plan, width: int) -> str:
+def differences_heading(plan: Plan) -> str:
+    """How many differences from the year before are told, and by what that year is known."""
     basis = dict.fromkeys(use.basis for use in plan.usage if use.basis)
     known = ", ".join(KNOWN_BY.get(each, each) for each in basis)
     count = counted(len(plan.differences), "difference")
-    heading = f"{count.upper()} FROM THE YEAR BEFORE, THE BIGGEST FIRST ({known})"
+    return f"{count} from the year before, the biggest first ({known})"
+
+
+def _differences(plan: Plan, width: int) -> str:
+    title, _, known = differences_heading(plan).partition(" (")
+    heading = f"{title.upper()} ({known}"
     return section(wrap(heading, width), [wrap(text, width, indent=2) for text in plan.differences])
 
 

@@ -60,7 +60,9 @@ def about_walk(sheet: Sheet) -> str:
     walk = sheet.walk
     along = f"along {', '.join(walk.places)}" if walk.places else "along every shelf"
     ended = f", ended {day(walk.ended)} by {walk.ended_by}" if walk.ended else ""
-    return f"{along}, started {day(walk.started)} by {walk.by}{ended}: {progress(sheet)}"
+    # one that nobody signs was not started: its sheet is only to count by
+    since = f", started {day(walk.started)} by {walk.by}" if walk.by else ""
+    return f"{along}{since}{ended}: {progress(sheet)}"
 
 
 def progress(sheet: Sheet) -> str:

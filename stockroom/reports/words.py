@@ -17,6 +17,8 @@ from stockroom.planning.decisions import Draw
 WEEKDAYS = ("Mon", "Tue", "Wed", "Thu", "Fri", "Sat", "Sun")
 """The names of the days, Monday first, as every sheet has them."""
 
+_DAYS = re.compile(r'"[^"]*"|\b(\d{4}-(?:0[1-9]|1[0-2])-(?:0[1-9]|[12]\d|3[01]))\b')
+
 TIED = "\u00a0"
 """A space no line is broken at; `sheet.wrap` turns it back into a plain one."""
 
@@ -61,6 +63,23 @@ def day_and_month(when: date) -> str:
 def weekday_and_day(when: date) -> str:
     """A day inside a sheet that says its year: "Tue 26 Jan", kept on one line."""
     return f"{WEEKDAYS[when.weekday()]} {day_and_month(when)}".replace(" ", TIED)
+
+
+def days_in_words(text: str) -> str:
+    """A sentence with its ISO days in words; what stands in quotes is left as somebody wrote it.
+
+    >>> days_in_words('found Thu 2026-12-10 + 28 days; printed "2026-12-31"')
+    'found Thu 10 Dec 2026 + 28 days; printed "2026-12-31"'
+    """
+    return _DAYS.sub(_spelt, text)
+
+
+def _spelt(found: re.Match[str]) -> str:
+    try:
+        return day_in_words(date.fromisoformat(found[1])) if found[1] else found[0]
+    except ValueError:
+        # somebody's note may name 31 February
+        return found[0]
 
 
 def day_seen_from(when: date, seen_from: date) -> str:

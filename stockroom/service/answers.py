@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import Any
 
 
 @dataclass(frozen=True, slots=True)
@@ -10,7 +11,8 @@ class Done:
     """What was saved, in one sentence, with what may be wanted next.
 
     `bottle` and `entry` are the numbers it touched; `next` a command that
-    usually follows; `practice` whether the store is the invented college;
+    usually follows, `undo` the one that takes it back where there is no entry
+    to put right; `practice` whether the store is the invented college;
     `details` further lines (draws of a make, children of a spoiled bottle).
     """
 
@@ -20,3 +22,16 @@ class Done:
     next: str = ""
     practice: bool = False
     details: tuple[str, ...] = ()
+    undo: str = ""
+
+    def as_data(self) -> dict[str, Any]:
+        """The same as data, for --json and for the API: keys are added to, never renamed."""
+        return {
+            "text": self.text,
+            "bottle": self.bottle or None,
+            "entry": self.entry,
+            "practice": self.practice,
+            "details": list(self.details),
+            "next": self.next or None,
+            "undo": self.undo or None,
+        }

@@ -47,11 +47,11 @@ class Hand:
         )
         self.session.add(change)
 
-    def done(self, text: str, details: tuple[str, ...] = ()) -> Done:
-        """The answer, saying whether this is the practice store."""
+    def done(self, text: str, details: tuple[str, ...] = (), *, undo: str = "") -> Done:
+        """The answer, saying whether this is the practice store, and what takes it back."""
         setting = self.session.get(House, "practice")
         practice = setting is not None and setting.value == "yes"
-        return Done(text, next="stockroom plan", practice=practice, details=details)
+        return Done(text, "", None, "stockroom plan", practice, details, undo)
 
 
 def book(
@@ -109,7 +109,8 @@ def _booked(hand: Hand, booking: Booking) -> Done:
     # its first state, so that the record can be read from the beginning
     hand.record(booking, "booked", "", _in_words(session, booking))
     text = f"Booked {booking.number}: {_in_words(session, booking)}."
-    return hand.done(text, (*twice, *_outside_terms(session, booking.on_day)))
+    details = (*twice, *_outside_terms(session, booking.on_day))
+    return hand.done(text, details, undo=f"stockroom cancel {booking.number}")
 
 
 def _the_same(session: Session, booking: Booking) -> tuple[str, ...]:
@@ -197,14 +198,24 @@ def shift(
             _check_day(hand, on, keep=keep)
         if groups is not None:
             checked_groups(groups)
-        before = found.groups
+        before, undo = found.groups, _shifted_back(found, wanted)
         changes = _changes(hand, found, wanted)
         details = _outside_terms(session, found.on_day) if on is not None else ()
         if found.groups != before:
             session.flush()
             recipe = session.get_one(Recipe, found.recipe_id)
             details += extra(reader_in(session), found, recipe, before)
-        return hand.done(f"{found.number}: {'; '.join(changes)}.", details)
+        return hand.done(f"{found.number}: {'; '.join(changes)}.", details, undo=undo)
+
+
+def _shifted_back(booking: Booking, wanted: dict[str, object]) -> str:
+    """The command that makes a booking again what it is now, before it is changed."""
+    back = [
+        f"{option} {_say(column, getattr(booking, column))}"
+        for column, option in _OPTIONS.items()
+        if wanted[column] not in (None, getattr(booking, column))
+    ]
+    return " ".join(["stockroom shift", booking.number, *back])
 
 
 def _changes(hand: Hand, booking: Booking, wanted: dict[str, object]) -> list[str]:
@@ -223,6 +234,7 @@ def _changes(hand: Hand, booking: Booking, wanted: dict[str, object]) -> list[st
 
 
 _SAID = {"on_day": "day", "minute": "time", "groups": "groups", "firmness": "firmness"}
+_OPTIONS = {"on_day": "--on", "minute": "--at", "groups": "--groups", "firmness": "--firmness"}
 
 
 def _change(hand: Hand, booking: Booking, column: str, value: object, why: str = "") -> str:
@@ -254,7 +266,8 @@ def cancel(path: StoreAt, booking: str, *, why: str = "", today: date, by: str) 
         gone = withdrawn(reader, found.number, today)
         _change(hand, found, "firmness", Firmness.DROPPED.value, why)
         details = (*gone, *kept_as_stock(reader, found.number, today))
-        return hand.done(f"Dropped {found.number}: {_in_words(session, found)}.", details)
+        text = f"Dropped {found.number}: {_in_words(session, found)}."
+        return hand.done(text, details, undo=f"stockroom cancel {found.number} --undo --why …")
 
 
 def take_back(path: StoreAt, booking: str, *, why: str, today: date, by: str) -> Done:
@@ -272,7 +285,8 @@ def take_back(path: StoreAt, booking: str, *, why: str, today: date, by: str) ->
         _change(hand, found, "firmness", _before_dropped(session, found), why)
         past = found.on_day < today
         told = (f"{spell_day(found.on_day)} is past: it changes no plan.",) if past else ()
-        return hand.done(f"{found.number} is back: {_in_words(session, found)}.", told)
+        text = f"{found.number} is back: {_in_words(session, found)}."
+        return hand.done(text, told, undo=f"stockroom cancel {found.number}")
 
 
 def _before_dropped(session: Session, booking: Booking) -> str:

@@ -87,19 +87,22 @@ def look_at(
     *,
     as_meant: Meant = AS_IT_STANDS,
     today: date,
+    called: str = "",
     progress: Progress | None = None,
 ) -> BroughtIn:
     """A list tried on the house: what each row would become. Nothing is written.
 
+    `called` is the list's name where the file has another.
     Raises: BadInput for what is no spreadsheet, a heading or an answer that is not there.
     """
-    sheet = read_file(_bytes_of(file), file.name, sheet=as_meant.sheet, encoding=as_meant.encoding)
+    name = called or file.name
+    sheet = read_file(_bytes_of(file), name, sheet=as_meant.sheet, encoding=as_meant.encoding)
     with reading(path) as reader:
         house, here = house_in(reader), here_in(reader)
     read = read_list(
         sheet,
         house,
-        file=file.name,
+        file=name,
         today=today,
         answers=as_meant.answers,
         columns=as_meant.columns,
@@ -116,6 +119,7 @@ def bring_in(
     as_meant: Meant = AS_IT_STANDS,
     today: date,
     by: str,
+    called: str = "",
     progress: Progress | None = None,
 ) -> BroughtIn:
     """Write every row of a list that nothing is open in, all of them or, on any fault, none.
@@ -127,7 +131,7 @@ def bring_in(
     from stockroom.service.work import initials, working
 
     whose = initials(by)
-    tried = look_at(path, file, as_meant=as_meant, today=today, progress=progress)
+    tried = look_at(path, file, as_meant=as_meant, today=today, called=called, progress=progress)
     _check_columns(tried.read)
     going = tried.read.going_in
     if not going:
@@ -145,7 +149,7 @@ def bring_in(
             for row in going
             if row.mark not in since.marks and not since.read_so(row.reading, mine)
         ]
-        written = write_rows(work, file.name, new)
+        written = write_rows(work, tried.read.file, new)
     if progress:
         progress("writing", len(going), len(going))
     return replace(tried, agreed=True, written=written)

@@ -122,25 +122,57 @@ def _started(path: StoreAt) -> Done:
     )
 
 
-def add_row(path: StoreAt, table: str, values: dict[str, str], *, by: str) -> Done:
+def add_row(
+    path: StoreAt,
+    table: str,
+    values: dict[str, str],
+    *,
+    by: str,
+    why: str = "",
+    today: date | None = None,
+) -> Done:
     """Add one row to a table, its cells given by column name.
 
-    Raises: UnknownName for a table or column that is not there; BadInput naming the column.
+    With a reason, it stays on record who added it, when and why; a setting of the house
+    with what it was before. Raises: UnknownName for a table or column that is not there;
+    BadInput naming the column.
     """
     from stockroom.store import seeding
     from stockroom.store.engine import reader_in, writing
     from stockroom.store.snapshot import calendar_of
 
     with writing(path) as session:
-        seeding.add_row(_desk(session, by), table, values)
+        desk = _desk(session, by)
+        desk = replace(desk, today=today or desk.today)
+        before = _setting(reader_in(session), table, values)
+        seeding.add_row(desk, table, values)
         if table in _MAKES_METHODS:
             _check_methods(session)
         if table == "house":
             # one new hour beside the usual other one can run backwards, and stop every plan
             calendar_of(reader_in(session))
+        if why.strip():
+            _note_added(desk, table, values, before, why.strip())
     # the first cell names the row in every table, so it is enough to tell it by
     first = next(iter(values.values()), "")
     return Done(f"Added to {table}: {first}.", practice=is_practice(path))
+
+
+def _setting(reader: reading.Reader, table: str, values: dict[str, str]) -> str:
+    """What a setting of the house is now; "" for none, and for a row of another table."""
+    if table != "house":
+        return ""
+    rows = reader.rows("house", "WHERE setting = ?", values.get("setting", "").strip())
+    return str(rows[0]["value"]) if rows else ""
+
+
+def _note_added(desk: Desk, table: str, values: dict[str, str], before: str, why: str) -> None:
+    from stockroom.store.changing import record_change
+
+    first, *rest = ((column, cell.strip()) for column, cell in values.items() if cell.strip())
+    said = ", ".join(f"{column} {cell}" for column, cell in rest)
+    column, after = ("value", values.get("value", "")) if table == "house" else ("added", said)
+    record_change(desk, table, first[1], column, (before, after.strip() or first[1]), why)
 
 
 def change_row(
@@ -191,6 +223,16 @@ def column_words(table: str) -> dict[str, tuple[str, ...]]:
     from stockroom.store import layout
 
     return layout.column_words(table)
+
+
+def changeable_columns(table: str) -> tuple[str, ...]:
+    """The columns of a table that may be corrected, because no earlier entry leans on them.
+
+    Raises: NotAllowed for a table none of whose rows are; UnknownName for no table.
+    """
+    from stockroom.store.changing import changeable
+
+    return tuple(changeable(table).columns)
 
 
 def is_practice(path: StoreAt) -> bool:

@@ -13,11 +13,10 @@ from stockroom.measure.days import parse_day
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Firmness
 from stockroom.service.closures import why_closed
-from stockroom.service.known import known_from
+from stockroom.service.known import known_of
 from stockroom.service.sheets import known_and_planned
 from stockroom.settings import StoreAt
 from stockroom.store.likeness import unknown
-from stockroom.store.reading import reading
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,9 +43,7 @@ def day_asked(path: StoreAt, ref: str | None, *, as_at: date) -> Asked:
 
     Raises: UnknownName for a booking that does not exist, BadDate for a day that cannot be read.
     """
-    with reading(path) as reader:
-        known = known_from(reader, as_at)
-    on, booking = _meant(known, ref, as_at)
+    on, booking = _meant(known_of(path, as_at), ref, as_at)
     known, plan = known_and_planned(path, as_at=as_at, through=on)
     return Asked(known, plan, on, booking, why_closed(path, on, on).get(on, ""))
 

@@ -51,10 +51,16 @@ def fading(path: StoreAt, number: str, *, as_at: date, below: tuple[str, ...] = 
     BadAmount and MissingFigure for a strength that cannot be set beside its label.
     """
     with reading(path) as reader:
-        known = facts_from(reader, as_at)
-        found = _number(reader, number, known)
-        bottle = bottle_of(reader, found, as_at, every_log=True)
-        changes = changes_of(reader, bottle.line) if bottle else ()
+        return fading_among(reader, facts_from(reader, as_at), number, below=below)
+
+
+def fading_among(
+    reader: Reader, known: Facts, number: str, *, below: tuple[str, ...] = ()
+) -> Fading:
+    """The same among facts read before, as at their day. Raises: as `fading`."""
+    as_at, found = known.as_at, _number(reader, number, known)
+    bottle = bottle_of(reader, found, as_at, every_log=True)
+    changes = changes_of(reader, bottle.line) if bottle else ()
     if bottle is None:
         raise UnknownName(f"{found} was not there yet on {as_at}.", "Give a later day.")
     line = known.lines[bottle.line]

@@ -7,6 +7,7 @@ from datetime import date
 
 from stockroom import clock
 from stockroom.service.answers import Done
+from stockroom.service.kept import kept
 from stockroom.service.once import answered
 from stockroom.settings import StoreAt
 from stockroom.store.reading import reading
@@ -27,9 +28,16 @@ def front(path: StoreAt, given: date | None, token: str = "") -> Front:
 
     `token` is that of the submission whose answer is to be shown. Raises: StoreTrouble.
     """
-    with reading(path) as reader:
-        house = reader.pairs("SELECT setting, value FROM house")
-        said = answered(reader, token) if token else None
+    house = kept(path, "house", (), lambda: _settings(path))
+    said = None
+    if token:
+        with reading(path) as reader:
+            said = answered(reader, token)
     practice_day = house.get("practice_day")
     usual = date.fromisoformat(practice_day) if practice_day else clock.today()
     return Front(house.get("name", ""), given or usual, house.get("practice") == "yes", said)
+
+
+def _settings(path: StoreAt) -> dict[str, str]:
+    with reading(path) as reader:
+        return reader.pairs("SELECT setting, value FROM house")

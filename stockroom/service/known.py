@@ -1,4 +1,4 @@
-"""What the planner is told, from a store already open: as it stands, or on the safe side."""
+"""What the planner is told, as the store stands, or on the safe side."""
 
 from __future__ import annotations
 
@@ -6,9 +6,31 @@ from datetime import date
 
 from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Facts
-from stockroom.store.reading import Reader
+from stockroom.service.kept import kept
+from stockroom.settings import StoreAt
+from stockroom.store.reading import Reader, reading
 from stockroom.store.snapshot import facts_from
 from stockroom.store.snapshot_bottles import bottles_of
+
+
+def known_of(
+    path: StoreAt,
+    as_at: date,
+    start: date | None = None,
+    end: date | None = None,
+    *,
+    cautious: bool = False,
+) -> Facts:
+    """The facts of the store at `path`, as `known_from`; a server reads them once while they hold.
+
+    Raises: BadDate when the period runs backwards; StoreTrouble.
+    """
+
+    def read() -> Facts:
+        with reading(path) as reader:
+            return known_from(reader, as_at, start, end, cautious=cautious)
+
+    return kept(path, "facts", (as_at, start, end, cautious), read)
 
 
 def known_from(
@@ -19,7 +41,7 @@ def known_from(
     *,
     cautious: bool = False,
 ) -> Facts:
-    """The facts as at a day, for the term or for the period given, methods worked out.
+    """The facts of a store already open, for the term or for the period given, methods worked out.
 
     Raises: BadDate when the period runs backwards.
     """

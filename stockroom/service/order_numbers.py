@@ -30,13 +30,17 @@ class Numbered:
     told: tuple[str, ...]
 
 
-def numbered(work: Work, number: str, today: date) -> Numbered:
+def numbered(work: Work, number: str, today: date, meant: str = "") -> Numbered:
     """The order that a number stands for, as the plan now has it.
 
+    `meant` is what stood beside the number (`Order.wanted`) in the plan it was read off: then
+    that is what it stands for, and nothing else.
     Raises: UnknownName for a number neither has; NotAllowed where an order placed since is of
     it already, or the plan now has something else under the number; BrokenPlan.
     """
     wanted = number.strip().upper()
+    if meant:
+        return _as_meant(wanted, meant, replayed_plan(known_from(work.reader, today)))
     printed = last_kept(work.reader, today)
     # made as the sheet was: on the safe side the same bookings may want more
     cautious = printed is not None and printed.cautious
@@ -56,6 +60,28 @@ _MOVED = (
     "The rest of the plan has other numbers now: look again with stockroom buying, or keep the"
     " plan you print with stockroom plan --keep."
 )
+
+
+def _as_meant(number: str, meant: str, now: Plan) -> Numbered:
+    """What stood beside the number where it was read, and as the plan still has it.
+
+    Raises: NotAllowed where the plan has it no more, or in other packs.
+    """
+    alike = [one for one in now.orders if one.wanted == meant]
+    # its own number first, should two orders be of the same
+    alike.sort(key=lambda one: one.id != number)
+    if alike:
+        moved = f"It was {number} when it was shown, and {alike[0].id} by now."
+        return Numbered(alike[0], () if alike[0].id == number else (moved,))
+    same = next((one for one in now.orders if one.id == number), None)
+    line = next((one for one in now.orders if meant.startswith(f"{one.line}, ")), None)
+    told = f"which is no longer to be ordered so: {number} of the plan now is "
+    raise NotAllowed(
+        f"{number} was {meant}, {told}{same.wanted if same else 'nothing'}.",
+        f"The plan now wants {line.wanted} ({line.id}): look again, then enter it."
+        if line
+        else "Was it ordered a moment ago? Look again before more is ordered.",
+    )
 
 
 def _kept(printed: Printed | None, wanted: str) -> tuple[KeptOrder | None, tuple[str, ...]]:

@@ -78,13 +78,15 @@ def order_planned(
     today: date,
     by: str,
     note: str = "",
+    meant: str = "",
 ) -> Done:
     """Write that an order of the plan was sent off as it now stands, one for each pack size.
 
-    Raises: as `numbered`; NotAllowed when no pack is entered.
+    `meant` is what stood beside its number, as `numbered` takes it. Raises: as `numbered`;
+    NotAllowed when no pack is entered.
     """
     with working(path, on=on, today=today, by=by) as work:
-        found = numbered(work, number, today)
+        found = numbered(work, number, today, meant)
         order, told = found.order, list(found.told)
         if not all(pack.size for pack in order.sold_as):
             raise NotAllowed(
@@ -207,4 +209,6 @@ def _done(work: Work, placed: list[Placed], details: tuple[str, ...]) -> Done:
             f" {spell_day(row.expected_on)}"
         )
     text = f"Ordered {'; '.join(words)}."
-    return Done(text, next="stockroom on-order", practice=work.practice, details=details)
+    undo = f"stockroom order --cancel {placed[0].number}" if len(placed) == 1 else ""
+    following = "stockroom on-order"
+    return Done(text, next=following, practice=work.practice, details=details, undo=undo)

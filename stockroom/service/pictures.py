@@ -9,12 +9,12 @@ from stockroom.keeping.course import Fading
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Bottle, Facts
 from stockroom.planning.pictures.running import Running, running
-from stockroom.service.fades import fading
+from stockroom.service.fades import fading_among
 from stockroom.service.finding import line_among
+from stockroom.service.known import known_of
 from stockroom.service.sheets import known_and_planned
 from stockroom.settings import StoreAt
 from stockroom.store.reading import reading
-from stockroom.store.snapshot import facts_from
 from stockroom.store.snapshot_bottles import bottle_of
 
 
@@ -25,11 +25,11 @@ def bottle_fading(
 
     Raises: as `fading` does.
     """
-    found = fading(path, number, as_at=as_at, below=below)
+    known = known_of(path, as_at)
     with reading(path) as reader:
-        known = facts_from(reader, as_at)
+        found = fading_among(reader, known, number, below=below)
         bottle = bottle_of(reader, found.bottle, as_at, every_log=True)
-    # `fading` has refused what is not there
+    # `fading_among` has refused what is not there
     assert bottle is not None
     return known, bottle, found
 

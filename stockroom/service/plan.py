@@ -15,25 +15,13 @@ from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.facts import Facts, Firmness
 from stockroom.planning.ready import Readiness, readiness
 from stockroom.service.backup_age import with_backup
-from stockroom.service.known import known_from
+from stockroom.service.kept import MANY, kept
+from stockroom.service.known import known_of
 from stockroom.service.printed_plans import beside_the_kept
 from stockroom.service.replayed import replayed_plan
 from stockroom.service.why import reasons
 from stockroom.settings import StoreAt
 from stockroom.store.likeness import unknown
-from stockroom.store.reading import reading
-
-
-def _known(
-    path: StoreAt,
-    as_at: date,
-    start: date | None = None,
-    end: date | None = None,
-    *,
-    cautious: bool = False,
-) -> Facts:
-    with reading(path) as reader:
-        return known_from(reader, as_at, start, end, cautious=cautious)
 
 
 def term_plan(
@@ -48,9 +36,13 @@ def term_plan(
 
     `cautious`, here and below: every strength at its lower 95 % limit, where there is one.
     """
-    known = _known(path, as_at, start, end, cautious=cautious)
-    whole = start is None and end is None
-    return with_backup(path, beside_the_kept(path, known, replayed_plan(known), whole=whole))
+
+    def make() -> Plan:
+        known = known_of(path, as_at, start, end, cautious=cautious)
+        whole = start is None and end is None
+        return with_backup(path, beside_the_kept(path, known, replayed_plan(known), whole=whole))
+
+    return kept(path, "term", (as_at, start, end, cautious), make)
 
 
 def to_make(
@@ -75,8 +67,12 @@ def _finished(make: Make, first: date, last: date) -> bool:
 def past_on(path: StoreAt, *, as_at: date, on: date, cautious: bool = False) -> Plan:
     """A plan whose `past` is told for the day `on`, from what is known as at `as_at`."""
     # an earlier day is told as it stood then, not with what has happened since
-    known = _known(path, min(as_at, on), cautious=cautious)
-    return replace(replayed_plan(known, past_day=on), as_at=as_at)
+    then = min(as_at, on)
+
+    def make() -> Plan:
+        return replayed_plan(known_of(path, then, cautious=cautious), past_day=on)
+
+    return replace(kept(path, "past", (then, on, cautious), make), as_at=as_at)
 
 
 def ready(path: StoreAt, ref: str, *, as_at: date, cautious: bool = False) -> Readiness:
@@ -85,7 +81,12 @@ def ready(path: StoreAt, ref: str, *, as_at: date, cautious: bool = False) -> Re
     Raises UnknownName for a booking that does not exist, BadDate for a day
     that cannot be read.
     """
-    known = _known(path, as_at, cautious=cautious)
+    asked = (ref, as_at, cautious)
+    return kept(path, "ready", asked, lambda: _ready(path, ref, as_at, cautious), most=MANY)
+
+
+def _ready(path: StoreAt, ref: str, as_at: date, cautious: bool) -> Readiness:
+    known = known_of(path, as_at, cautious=cautious)
     booking = next((b for b in known.bookings if b.number.lower() == ref.strip().lower()), None)
     if booking is not None:
         whole = replayed_plan(_reaching(path, known, booking.on))
@@ -113,7 +114,7 @@ def _reaching(path: StoreAt, known: Facts, day: date) -> Facts:
     if day <= known.end:
         return known
     cautious = known.lower_limits is not None
-    return _known(path, known.as_at, known.start, day, cautious=cautious)
+    return known_of(path, known.as_at, known.start, day, cautious=cautious)
 
 
 def _no_such(known: Facts, ref: str) -> BadInput:
@@ -127,4 +128,8 @@ def why(
 
     At most five lines. Raises: as `service.why.reasons`.
     """
-    return reasons(path, _known(path, as_at, cautious=cautious), ref, instead)
+
+    def make() -> tuple[str, ...]:
+        return reasons(path, known_of(path, as_at, cautious=cautious), ref, instead)
+
+    return kept(path, "why", (ref, instead, as_at, cautious), make, most=MANY)

@@ -7,10 +7,10 @@ from datetime import date
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts
 from stockroom.service.backup_age import with_backup
-from stockroom.service.known import known_from
+from stockroom.service.kept import keeping, kept
+from stockroom.service.known import known_of
 from stockroom.service.replayed import replayed_plan
 from stockroom.settings import StoreAt
-from stockroom.store.reading import reading
 
 
 def known_and_planned(
@@ -20,8 +20,16 @@ def known_and_planned(
 
     `through` is a day the sheet is about: past the term's end, the plan reaches that far.
     """
-    with reading(path) as reader:
-        known = known_from(reader, as_at, cautious=cautious)
-        if through is not None and through > known.end:
-            known = known_from(reader, as_at, known.start, through, cautious=cautious)
-    return known, with_backup(path, replayed_plan(known))
+    term = known_of(path, as_at, cautious=cautious)
+    start, end = None, None
+    if through is not None and through > term.end:
+        start, end = term.start, through
+
+    def make() -> tuple[Facts, Plan]:
+        known = term
+        # where it is kept, the facts may be older than the mark they would be kept under
+        if end is not None or keeping():
+            known = known_of(path, as_at, start, end, cautious=cautious)
+        return known, with_backup(path, replayed_plan(known))
+
+    return kept(path, "sheets", (as_at, start, end, cautious), make)

@@ -6,7 +6,7 @@ import math
 from datetime import date
 from typing import TYPE_CHECKING
 
-from stockroom.errors import BadInput
+from stockroom.errors import BadAmount, BadInput
 
 if TYPE_CHECKING:
     from stockroom.measure.amounts import Amount
@@ -65,6 +65,18 @@ def drawn_of(
     if tare is not None:
         raise BadInput(f"{bottle}: a tare of {tare}, and no gross.", 'Add --gross "812 g".')
     return parse_drawn(amount or "")
+
+
+def pence_or_none(text: str | None, where: str) -> int | None:
+    """Pounds typed after `where`, "£14.50", in whole pence; or None. Raises: BadAmount."""
+    if text is None:
+        return None
+    from stockroom.measure.reading import read_number
+
+    pence = read_number(text.strip().removeprefix("£"), where=where, whole=text) * 100
+    if pence != int(pence):
+        raise BadAmount(f"{where} {text!r} has parts of a penny.", "Give pounds and pence.")
+    return int(pence)
 
 
 def fraction_or_none(text: str | None, where: str) -> float | None:

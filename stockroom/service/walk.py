@@ -5,6 +5,7 @@ Only reads; `walk_entering.py` is where a walk is started, counted and ended.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from datetime import date
 
 from stockroom.errors import NotAllowed, UnknownName
@@ -26,6 +27,9 @@ from stockroom.store.reading import Reader, Row, reading
 from stockroom.store.snapshot import places_of
 from stockroom.store.snapshot_bottles import bottles_of
 from stockroom.store.snapshot_lines import lines_of
+
+_NOBODYS = 0
+"""The number of a walk that was not started: no row has it."""
 
 
 def sheets(path: StoreAt, *, on: date) -> tuple[Sheet, ...]:
@@ -52,6 +56,21 @@ def sheet(path: StoreAt, name: str, *, on: date, again: bool = False) -> Sheet |
         walk = walk_from(reader, row)
         day = walk.ended or on
         return _sheet(reader, row["id"], walk, bottles_of(reader, day), day, again=again)
+
+
+def sheet_along(path: StoreAt, places: Sequence[str], *, on: date) -> Sheet:
+    """What a walk along these places would count, none for every shelf; nobody has started it.
+
+    Raises: UnknownName with the nearest for a place the house has not.
+    """
+    with reading(path) as reader:
+        held = {place.name.lower(): place.name for place in places_of(reader)}
+        for place in places:
+            if place.lower() not in held:
+                raise unknown("place", place, list(held.values()))
+        meant = tuple(dict.fromkeys(held[place.lower()] for place in places))
+        walk = Walk(", ".join(meant) or "all shelves", meant, on, "")
+        return _sheet(reader, _NOBODYS, walk, bottles_of(reader, on), on)
 
 
 def standing_wrong(path: StoreAt, sheet: Sheet, *, on: date) -> tuple[Finding, ...]:

@@ -62,15 +62,15 @@ def change_row(desk: Desk, table: str, key: str, values: dict[str, str], why: st
     """
     if not why.strip():
         raise BadInput(f"Why is {key} of {table} changed?", "One word is enough: --why …")
-    changeable = _changeable(table)
-    _check_columns(table, changeable, values)
+    rows = changeable(table)
+    _check_columns(table, rows, values)
     # found by the same names as everywhere else, so no number has to be known
-    row = changeable.find(desk, key)
-    named = changeable.key(desk, row)
+    row = rows.find(desk, key)
+    named = rows.key(desk, row)
     fields = Fields(values)
     told = []
     for name in values:
-        column = changeable.columns[name]
+        column = rows.columns[name]
         before = column.said(row)
         with told_with_place(table, fields):
             setattr(row, column.attribute, column.read(fields, row))
@@ -84,7 +84,8 @@ def change_row(desk: Desk, table: str, key: str, values: dict[str, str], why: st
     return told
 
 
-def _changeable(table: str) -> Changeable:
+def changeable(table: str) -> Changeable:
+    """A table whose rows may be corrected. Raises: NotAllowed for another; UnknownName for none."""
     if table in CHANGEABLE:
         return CHANGEABLE[table]
     # a table nobody knows is a slip; one of ours that is not here is closed on purpose
@@ -95,16 +96,16 @@ def _changeable(table: str) -> Changeable:
     )
 
 
-def _check_columns(table: str, changeable: Changeable, values: dict[str, str]) -> None:
+def _check_columns(table: str, rows: Changeable, values: dict[str, str]) -> None:
     for name in values:
-        if name in changeable.columns:
+        if name in rows.columns:
             continue
         if name in table_columns(table):
             raise NotAllowed(
                 f"{name} of {table} is not changed: earlier entries lean on it.",
-                f"May be changed: {', '.join(changeable.columns)}. Else add another row.",
+                f"May be changed: {', '.join(rows.columns)}. Else add another row.",
             )
-        raise unknown(f"column of {table}", name, changeable.columns)
+        raise unknown(f"column of {table}", name, rows.columns)
 
 
 def record_change(

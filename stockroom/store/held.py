@@ -9,8 +9,11 @@ from __future__ import annotations
 import threading
 from collections.abc import Callable
 from pathlib import Path
+from typing import TYPE_CHECKING
 
-from sqlalchemy import Connection
+if TYPE_CHECKING:
+    # the reading half asks for the mark of a file too, and stays light
+    from sqlalchemy import Connection
 
 
 class _Held(threading.local):

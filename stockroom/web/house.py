@@ -16,7 +16,9 @@ class House:
     `given` is the day of --as-at. `key` signs cookies and forms, the same in every worker.
     `door` is the file with the passphrases, None where only this machine may come in: then
     whoever comes in keeps the house. `secure` where what is sent is encrypted (TLS).
-    `names` are the hosts it answers to; a request for another is refused.
+    `names` are the hosts it answers to, and a shared house to any address in figures too;
+    a request for another is refused. `port` tells its cookies from those of another house on
+    the same machine, for browsers do not.
     """
 
     path: StoreAt
@@ -26,3 +28,4 @@ class House:
     secure: bool = False
     names: tuple[str, ...] = ("127.0.0.1", "localhost", "[::1]")
     workers: int = 1
+    port: int = 0

@@ -39,29 +39,30 @@ def listen_for(app: FastAPI) -> None:
 
     @app.exception_handler(StockroomError)
     def refused(request: Request, error: StockroomError) -> Response:
-        return _answer(request, status_of(error), error.message, error.hint)
+        return answer(request, status_of(error), error.message, error.hint)
 
     @app.exception_handler(HTTPException)
     def turned_away(request: Request, error: HTTPException) -> Response:
         if error.status_code == 303 and error.headers:
             return Response(status_code=303, headers=error.headers)
-        return _answer(request, error.status_code, str(error.detail), headers=error.headers)
+        return answer(request, error.status_code, str(error.detail), headers=error.headers)
 
     @app.exception_handler(RequestValidationError)
     def unreadable(request: Request, error: RequestValidationError) -> Response:
         first = error.errors()[0]
         where = ".".join(str(part) for part in first["loc"][1:])
-        return _answer(request, 422, f"{where}: {first['msg']}.")
+        return answer(request, 422, f"{where}: {first['msg']}.")
 
 
-def _answer(
+def answer(
     request: Request, status: int, message: str, hint: str = "", headers: Any = None
 ) -> Response:
+    """One refusal as whoever asked can read it: a page, or a problem in JSON under /api/."""
     if request.url.path.startswith("/api/"):
-        answer: Response = problem(status, message, hint)
+        refused: Response = problem(status, message, hint)
     else:
         from stockroom.web.showing import refusal_page
 
-        answer = refusal_page(request, status, message, hint)
-    answer.headers.update(headers or {})
-    return answer
+        refused = refusal_page(request, status, message, hint)
+    refused.headers.update(headers or {})
+    return refused

@@ -10,10 +10,12 @@ from typing import TYPE_CHECKING, Any
 from fastapi.responses import HTMLResponse
 from jinja2 import Environment, FileSystemLoader, StrictUndefined
 
+from stockroom.reports.pages.links import linked
 from stockroom.reports.sheet import CAUTION
 from stockroom.reports.words import day_heading, raised
 from stockroom.web.door.roles import Role
 from stockroom.web.forms.field import Form
+from stockroom.web.hints import hinted
 
 if TYPE_CHECKING:
     from starlette.requests import Request
@@ -32,6 +34,7 @@ PAGES = (
     ("/use", "Use over the term"),
     ("/try", "Try it"),
     ("/enter", "Enter"),
+    ("/paper", "Paper"),
     ("/rules", "House rules"),
     ("/bring-in", "Bring in"),
 )
@@ -48,7 +51,7 @@ def templates() -> Environment:
         trim_blocks=True,
         lstrip_blocks=True,
     )
-    made.filters |= {"raised": raised, "day": day_heading}
+    made.filters |= {"raised": raised, "day": day_heading, "linked": linked, "hinted": hinted}
     made.globals |= {"pages": PAGES, "caution": CAUTION, "Role": Role, "form_named": _form_named}
     return made
 

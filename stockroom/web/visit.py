@@ -6,7 +6,7 @@ from collections.abc import Callable
 from dataclasses import dataclass
 from datetime import date
 from typing import Annotated, Any
-from urllib.parse import quote, urlencode
+from urllib.parse import urlencode
 
 from fastapi import Depends, HTTPException, Request
 from fastapi.responses import HTMLResponse, RedirectResponse
@@ -14,6 +14,7 @@ from starlette.datastructures import FormData
 
 from stockroom.service.front import Front, front
 from stockroom.settings import StoreAt
+from stockroom.web.door.bounds import FIELDS, LARGEST, LONGEST_PATH
 from stockroom.web.door.roles import Role
 from stockroom.web.door.session import Session, form_token, is_our_form
 from stockroom.web.house import House
@@ -46,8 +47,7 @@ class Visit:
     @property
     def here(self) -> str:
         """This page's own address within the house, for coming back to."""
-        query = [(k, v) for k, v in self.request.query_params.multi_items() if k != "said"]
-        return self.request.url.path + (f"?{urlencode(query)}" if query else "")
+        return here(self.request)
 
     def may(self, role: Role) -> bool:
         """Whether this visitor may do what the role allows."""
@@ -60,6 +60,12 @@ class Visit:
         return HTMLResponse(shown(template, self, page, more), status)
 
 
+def here(request: Request) -> str:
+    """A request's own address within the house, without what was told at its top."""
+    query = [(k, v) for k, v in request.query_params.multi_items() if k != "said"]
+    return request.url.path + (f"?{urlencode(query)}" if query else "")
+
+
 def visiting(request: Request) -> Visit:
     """The visit of a request. Raises: StoreTrouble."""
     house: House = request.app.state.house
@@ -67,22 +73,27 @@ def visiting(request: Request) -> Visit:
     return Visit(request, house, request.state.session, front(house.path, house.given, token))
 
 
-def _of_role(role: Role) -> Callable[[Visit], Visit]:
-    def allowed(visit: Annotated[Visit, Depends(visiting)]) -> Visit:
-        if visit.may(role):
-            return visit
-        api = visit.request.url.path.startswith("/api/")
-        if visit.session.role is Role.NOBODY and not api:
-            where = visit.here if visit.request.method == "GET" else "/"
-            headers = {"location": f"/come-in?back={quote(where)}"}
-            raise HTTPException(303, headers=headers)
-        if visit.session.role is Role.NOBODY:
-            raise HTTPException(401, "Nobody is known by this cookie: come in first.")
-        raise HTTPException(
-            403, f"This needs the role {role.words}; yours is {visit.session.role.words}."
-        )
+def _of_role(role: Role) -> Callable[[Request], Visit]:
+    def allowed(request: Request) -> Visit:
+        # before the store is opened: a stranger costs it nothing
+        turn_away(request, role)
+        return visiting(request)
 
     return allowed
+
+
+def turn_away(request: Request, role: Role) -> None:
+    """Turn away whoever has not the role. Raises: 303 to where one comes in, 401 or 403."""
+    session: Session = request.state.session
+    if session.role >= role:
+        return
+    api = request.url.path.startswith("/api/")
+    if session.role is Role.NOBODY and not api:
+        where = here(request) if request.method == "GET" else "/"
+        raise HTTPException(303, headers={"location": f"/come-in?{urlencode({'back': where})}"})
+    if session.role is Role.NOBODY:
+        raise HTTPException(401, "Nobody is known by this cookie: come in first, at /come-in.")
+    raise HTTPException(403, f"This needs the role {role.words}; yours is {session.role.words}.")
 
 
 Reading = Annotated[Visit, Depends(_of_role(Role.READ))]
@@ -93,14 +104,16 @@ Anybody = Annotated[Visit, Depends(visiting)]
 
 
 async def form_sent(request: Request) -> FormData:
-    """The fields of a form that is one of ours. Raises: 403 for one that is not."""
-    form = await request.form(max_files=1, max_fields=200, max_part_size=64 * 1024)
+    """The fields of a form that is one of ours. Raises: 403 for one that is not, 400, 413."""
+    form = await request.form(max_files=1, max_fields=FIELDS, max_part_size=LARGEST)
     token = form.get("form_token")
     house: House = request.app.state.house
     if not isinstance(token, str) or not is_our_form(house, request.state.session, token):
         raise HTTPException(
             403, "This form is not from this visit: open the page again, then send it."
         )
+    if any("\x00" in value for value in values_of(form).values()):
+        raise HTTPException(400, "The form holds a sign that cannot be read: type it again.")
     return form
 
 
@@ -118,11 +131,16 @@ def values_of(form: FormData) -> dict[str, str]:
     return {key: value for key, value in form.items() if isinstance(value, str)}
 
 
-def back_to(path: str, said: str = "") -> RedirectResponse:
-    """Back to a page of ours, telling what was done; a path that leads elsewhere goes home."""
+def own_path(path: str) -> str:
+    """A path of this house as it was given, and the front page for what leads elsewhere."""
     # two slashes, or one of the other kind, would lead to another host
     ours = path.startswith("/") and path[1:2] not in ("/", "\\") and path.isprintable()
-    target = path if ours else "/"
+    return path if ours and len(path) <= LONGEST_PATH else "/"
+
+
+def back_to(path: str, said: str = "") -> RedirectResponse:
+    """Back to a page of ours, telling what was done; a path that leads elsewhere goes home."""
+    target = own_path(path)
     if said:
         target += ("&" if "?" in target else "?") + urlencode({"said": said})
     return RedirectResponse(target, 303)

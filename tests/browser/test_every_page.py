@@ -7,7 +7,8 @@ from datetime import date
 from pathlib import Path
 
 import pytest
-from browsing import WIDTHS, Browser, Page, faults, served, too_wide
+from browsing import WIDTHS, faults, served, too_wide
+from playwright.sync_api import Browser, Page
 from windows import KEY
 
 from stockroom.web.house import House

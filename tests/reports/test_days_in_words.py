@@ -14,6 +14,7 @@ from stockroom.reports.words import (
     day_heading,
     day_in_words,
     day_seen_from,
+    days_in_words,
     weekday_and_day,
 )
 
@@ -39,3 +40,15 @@ def test_another_year_is_said_and_this_one_is_not(seen_from: date, said: str) ->
 def test_every_weekday_has_its_own_name() -> None:
     week = [day_heading(ON + timedelta(days=n)).split()[0] for n in range(-1, 6)]
     assert tuple(week) == WEEKDAYS
+
+
+@pytest.mark.parametrize(
+    ("text", "told"),
+    [
+        ("made Tue 2027-01-05 + 30 days", "made Tue 5 Jan 2027 + 30 days"),
+        ('printed "2027-01-05", 2027-01-06', 'printed "2027-01-05", 6 Jan 2027'),
+        ("2027-02-31 is no day, 12027-01-05 no year", "2027-02-31 is no day, 12027-01-05 no year"),
+    ],
+)
+def test_days_in_a_sentence_are_spelt_and_what_is_quoted_is_not(text: str, told: str) -> None:
+    assert days_in_words(text) == told

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Collection
 from dataclasses import dataclass
 from datetime import timedelta
 
@@ -31,20 +32,32 @@ def at_the_shelf(known: Facts) -> list[Due]:
 
     Due every day until it is mended: what can hurt does not become less by being told once.
     """
+    return [danger_due(known, each) for each in dangers(known)]
+
+
+def dangers(known: Facts, past: Collection[str] | None = None) -> list[Danger]:
+    """What stands wrong or past its safety date; the cap and the date before neighbours.
+
+    `past` are the bottles a plan tells as not sound: no other can be past its safety date.
+    """
     stand = where_things_stand(known.bottles, known.lines, known.places)
     # a group without a rule is for the office to settle, not for the shelf
     wrong = [each for each in told_once(stand) if isinstance(each, Danger)]
-    item = {bottle.number: known.lines[bottle.line].item for bottle in known.bottles}
     # the cap and the safety date first: they can hurt whoever does nothing
-    row = sorted([*_past(known), *wrong], key=lambda each: each.kind is DangerKind.BESIDE)
-    return [
-        Due(f"{each.subject} {raised(item[each.subject])}", (raised(each.text),)) for each in row
-    ]
+    return sorted([*_past(known, past), *wrong], key=lambda each: each.kind is DangerKind.BESIDE)
 
 
-def _past(known: Facts) -> list[Danger]:
+def danger_due(known: Facts, danger: Danger) -> Due:
+    """One danger with the bottle it is about."""
+    line = next(bottle.line for bottle in known.bottles if bottle.number == danger.subject)
+    return Due(f"{danger.subject} {raised(known.lines[line].item)}", (raised(danger.text),))
+
+
+def _past(known: Facts, past: Collection[str] | None) -> list[Danger]:
     found = []
     for bottle in standing_there(known.bottles):
+        if past is not None and bottle.number not in past:
+            continue
         judged = verdict(bottle.record, known.lines[bottle.line].rules, known.as_at)
         if judged.warning:
             found.append(past_safety_date(bottle.number, judged))

@@ -85,7 +85,7 @@ def term_report_of(
         differences=plan.differences,
         compared=any(use.before is not None for use in uses),
         used_heading=_heading(uses),
-        used=tuple(_used(use) for use in uses),
+        used=tuple(used_of(use) for use in uses),
         load=load_of(known, plan),
     )
 
@@ -136,7 +136,8 @@ def _heading(uses: Sequence[Use]) -> str:
     return f"Used in bought form, as the bookings work out{beside}"
 
 
-def _used(use: Use) -> Used:
+def used_of(use: Use) -> Used:
+    """One use in words, by the group too where both years' groups are known."""
     before = "" if use.before is None else amount(use.before, use.kind)
     by_group = ""
     if use.before is not None and use.groups and use.groups_before:

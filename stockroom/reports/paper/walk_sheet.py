@@ -91,16 +91,25 @@ def walk_sheet_of(sheet: Sheet, on: date, wrong: Iterable[Finding] = ()) -> Walk
     keys = {row.line.key for row in rows_left} | {visit.line for visit in sheet.visits}
     names = Counter(parted(key)[0] for key in keys)
     places = groupby(rows_left, key=lambda row: row.bottle.place)
-    again = " --again" if sheet.again else ""
     return WalkSheet(
         head,
         tuple(_shelf(sheet, place, list(rows), told, names) for place, rows in places),
         tuple(_looked_for(row) for row in sheet.look_out),
         HOW,
         HOW_UNLISTED,
-        f"stockroom walk {shlex.quote(walk.name)} --enter{again}",
+        _typed_back(sheet),
         () if sheet.again else tuple(visit.bottle for visit in sheet.visits),
     )
+
+
+def _typed_back(sheet: Sheet) -> str:
+    walk = sheet.walk
+    begun = f"stockroom walk {shlex.quote(walk.name)}"
+    again = " --again" if sheet.again else ""
+    if walk.by:
+        return f"{begun} --enter{again}"
+    along = f" --places {shlex.quote(','.join(walk.places))}" if walk.places else ""
+    return f"{begun}{along}; {begun} --enter"
 
 
 def _shelf(

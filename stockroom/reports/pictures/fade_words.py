@@ -16,10 +16,7 @@ from stockroom.reports.words import day
 
 def fade_text(fade: Fade, width: int) -> str:
     """The picture in words: what was found, what is expected each month, what is needed."""
-    scale = Scale(fade.unit, 1.0)
-    found = [(day(one.on), _result(scale, one)) for one in fade.found]
-    rows = [(day(p.on), _expected(scale, p)) for p in _monthly(fade)]
-    wanted = [(mark.what, _wanted(scale, mark, fade.head.as_at)) for mark in fade.wanted]
+    found, rows, wanted = found_rows(fade), expected_rows(fade), wanted_rows(fade)
     label = f"label {fade.label}" if fade.label else ""
     recheck = f"recheck by {day(fade.recheck)}" if fade.recheck else ""
     told = [label, recheck, fade.no_band]
@@ -35,6 +32,24 @@ def fade_text(fade: Fade, width: int) -> str:
             foot_lines(fade.head, width),
         ]
     )
+
+
+def found_rows(fade: Fade) -> list[tuple[str, str]]:
+    """Each day a strength was found, and what it was."""
+    scale = Scale(fade.unit, 1.0)
+    return [(day(one.on), _result(scale, one)) for one in fade.found]
+
+
+def expected_rows(fade: Fade) -> list[tuple[str, str]]:
+    """From today on, a day about every four weeks, and what is expected then."""
+    scale = Scale(fade.unit, 1.0)
+    return [(day(point.on), _expected(scale, point)) for point in _monthly(fade)]
+
+
+def wanted_rows(fade: Fade) -> list[tuple[str, str]]:
+    """Each booking that needs a strength of it, and whether it gets it."""
+    scale, today = Scale(fade.unit, 1.0), fade.head.as_at
+    return [(mark.what, _wanted(scale, mark, today)) for mark in fade.wanted]
 
 
 def _result(scale: Scale, one: Found) -> str:
@@ -70,8 +85,7 @@ def _monthly(fade: Fade) -> list[Point]:
 
 def fade_lines(fade: Fade) -> dict[str, str]:
     """What each booking needs, and whether it gets it."""
-    scale, today = Scale(fade.unit, 1.0), fade.head.as_at
-    return {m.what: f"{m.what} {_wanted(scale, m, today)}" for m in fade.wanted}
+    return {what: f"{what} {needs}" for what, needs in wanted_rows(fade)}
 
 
 def fade_picture(

@@ -25,7 +25,8 @@ class Field:
 
     `kind` is text, long (several lines), date, time, amount, strength, number, choice, yes (a box
     to tick), or one of `NAMES`. `hint` shows the way to write it; `choices` are (value, words).
-    `usual` stands in the field until somebody writes otherwise.
+    `usual` stands in the field until somebody writes otherwise. A `late` box to tick is shown
+    only once a refusal asks whether it is meant.
     """
 
     name: str
@@ -35,6 +36,7 @@ class Field:
     hint: str = ""
     choices: tuple[tuple[str, str], ...] = ()
     usual: str = ""
+    late: bool = False
 
     @property
     def offers(self) -> str:
@@ -73,6 +75,20 @@ ON = Field("on", "Happened on", "date", hint="today, if left empty")
 
 BOTTLE = Field("bottle", "Bottle", "bottle", needed=True, hint="the number on its label, as S13")
 """The bottle it happened to."""
+
+AMOUNT = Field("amount", "Amount", "amount", needed=True, hint="with its unit, as 2 g")
+"""How much of it."""
+
+LINE = Field("line", "What it is", "line", needed=True, hint="by any of its names")
+"""The stock line it is of."""
+
+WHY = Field("why", "Why", needed=True, hint="one word is enough")
+"""The reason, where one is asked for."""
+
+
+def sure(label: str) -> Field:
+    """The box to tick where a first answer asks whether it is meant."""
+    return Field("sure", label, "yes", late=True)
 
 
 def by_name(forms: tuple[Form, ...]) -> Mapping[str, Form]:

@@ -5,22 +5,31 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-from stockroom.errors import NotAllowed, StockroomError
+from stockroom.errors import BadInput, NotAllowed, StockroomError
 from stockroom.service.answers import Done
 from stockroom.service.once import once
+from stockroom.web.door.session import LONGEST_INITIALS, with_initials
+from stockroom.web.forms.blaming import blamed, to_tick
 from stockroom.web.forms.field import Form
-from stockroom.web.forms.typed import AtField, Typed, blamed
+from stockroom.web.forms.typed import AtField, Typed, check_plain
 from stockroom.web.visit import Visit
+
+MOST_INITIALS = LONGEST_INITIALS
+"""Signs that the initials in a form may have."""
 
 
 @dataclass(frozen=True, slots=True)
 class Trouble:
-    """Why a form was refused: the field it stands beside ("" for the whole), and what to do."""
+    """Why a form was refused: the field it stands beside ("" for the whole), and what to do.
+
+    `tick` is the box that says it is meant all the same, "" where nothing but mending helps.
+    """
 
     field: str
     message: str
     hint: str
     status: int
+    tick: str = ""
 
 
 def send(visit: Visit, form: Form, values: Mapping[str, str], token: str) -> Done:
@@ -28,7 +37,7 @@ def send(visit: Visit, form: Form, values: Mapping[str, str], token: str) -> Don
     if visit.looks_elsewhere:
         told = f"You are looking from {visit.today.isoformat()}, which is not today."
         raise AtField("", NotAllowed(told, "Go back to today, then enter it."))
-    by = values.get("by", "").strip() or visit.session.initials
+    by = initials_in(values) or visit.session.initials
     typed = Typed(form, values, visit.path, visit.today, by)
     try:
         return once(visit.path, token, lambda: form.do(typed), today=visit.today, by=by)
@@ -38,8 +47,26 @@ def send(visit: Visit, form: Form, values: Mapping[str, str], token: str) -> Don
         raise AtField(blamed(form, values, error), error) from error
 
 
-def trouble_of(refused: AtField) -> Trouble:
+def remember_initials(visit: Visit, values: Mapping[str, str]) -> None:
+    """Keep the initials a form carries for the rest of the visit. Raises: as `initials_in`."""
+    by = initials_in(values)
+    if by and by != visit.session.initials:
+        visit.request.state.session = with_initials(visit.session, by)
+
+
+def initials_in(values: Mapping[str, str]) -> str:
+    """The initials a form carries, "" for none. Raises: AtField for what is too long for any."""
+    by = values.get("by", "").strip()
+    check_plain("by", by)
+    if len(by) > MOST_INITIALS or "\n" in by or "\t" in by or "\r" in by:
+        told = f"{by[:30]!r} is no initials."
+        raise AtField("by", BadInput(told, f"Give at most {MOST_INITIALS} signs, as T1."))
+    return by
+
+
+def trouble_of(form: Form, refused: AtField) -> Trouble:
     """The refusal as a page shows it."""
     from stockroom.web.refusals import status_of
 
-    return Trouble(refused.field, refused.message, refused.hint, status_of(refused.error))
+    status, tick = status_of(refused.error), to_tick(form, refused.error)
+    return Trouble(refused.field, refused.message, refused.hint, status, tick)

@@ -2,10 +2,32 @@
 
 from __future__ import annotations
 
-from stockroom.web.forms import destroying, taking
+from stockroom.web.forms import (
+    arriving,
+    booking,
+    destroying,
+    house,
+    looking,
+    making,
+    ordering,
+    righting,
+    shelf,
+    taking,
+)
 from stockroom.web.forms.field import Form, by_name
 
-FORMS: tuple[Form, ...] = (*taking.FORMS, *destroying.FORMS)
+FORMS: tuple[Form, ...] = (
+    *arriving.FORMS,
+    *taking.FORMS,
+    *shelf.FORMS,
+    *looking.FORMS,
+    *making.FORMS,
+    *ordering.FORMS,
+    *booking.FORMS,
+    *destroying.FORMS,
+    *righting.FORMS,
+    *house.FORMS,
+)
 """All of them."""
 
 BY_NAME = by_name(FORMS)

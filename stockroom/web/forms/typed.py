@@ -2,17 +2,18 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Iterator, Mapping
+from contextlib import contextmanager
 from dataclasses import dataclass
 from datetime import date
 from typing import TypedDict, TypeVar
 
-from stockroom.errors import BadAmount, BadDate, BadInput, NotEnough, StockroomError
+from stockroom.errors import BadInput, StockroomError
 from stockroom.measure.amounts import Amount
 from stockroom.measure.strengths import Strength
 from stockroom.service import typed as words
 from stockroom.settings import StoreAt
-from stockroom.web.forms.field import LONGEST, Field, Form
+from stockroom.web.forms.field import LONGEST, Form
 
 Value = TypeVar("Value")
 
@@ -50,6 +51,7 @@ class Typed:
         if len(value) > LONGEST:
             told = f"{value[:30]}… is {len(value)} signs long, and {LONGEST} are taken."
             raise AtField(name, BadInput(told, "Say it shorter."))
+        check_plain(name, value)
         return value
 
     def needed(self, name: str) -> str:
@@ -64,6 +66,16 @@ class Typed:
         """What was typed, or None for nothing."""
         return self.text(name) or None
 
+    def choice(self, name: str) -> str:
+        """One of the choices, which must be made. Raises: AtField."""
+        value, field = self.text(name), self.form.field(name)
+        choices = [one for one, _ in field.choices if one] if field else []
+        if value not in choices:
+            said = f"{value!r} is no choice" if value else "nothing is chosen"
+            told = f"{self._label(name)}: {said}."
+            raise AtField(name, BadInput(told, f"Choose {' or '.join(choices)}."))
+        return value
+
     def yes(self, name: str) -> bool:
         """Whether a box was ticked."""
         return self.text(name) not in ("", "no", "false")
@@ -76,12 +88,17 @@ class Typed:
         """Minutes after midnight, or None for nothing. Raises: AtField."""
         return self.read(name, lambda text: words.time_or_none(text, self._label(name)))
 
+    def day_needed(self, name: str) -> date:
+        """A day, which must be said. Raises: AtField."""
+        return self._there(name, self.day)
+
+    def time_needed(self, name: str) -> int:
+        """Minutes after midnight, which must be said. Raises: AtField."""
+        return self._there(name, self.time)
+
     def amount(self, name: str) -> Amount:
-        """An amount with its unit. Raises: AtField."""
-        self.needed(name)
-        amount = self.read(name, words.amount_of)
-        assert amount is not None
-        return amount
+        """An amount with its unit, which must be said. Raises: AtField."""
+        return self._there(name, self.amount_or_none)
 
     def amount_or_none(self, name: str) -> Amount | None:
         """An amount with its unit, or None for nothing. Raises: AtField."""
@@ -91,55 +108,63 @@ class Typed:
         """A whole number, or None for nothing. Raises: AtField."""
         return self.read(name, lambda text: words.whole(text, self._label(name)))
 
+    def whole_needed(self, name: str) -> int:
+        """A whole number, which must be said. Raises: AtField."""
+        return self._there(name, self.whole)
+
     def strength(self, name: str) -> Strength:
-        """A strength with its unit. Raises: AtField."""
+        """A strength with its unit, which must be said. Raises: AtField."""
+        return self._there(name, self.strength_or_none)
+
+    def strength_or_none(self, name: str) -> Strength | None:
+        """A strength with its unit, or None for nothing. Raises: AtField."""
         from stockroom.measure.parsing import parse_strength
 
-        self.needed(name)
-        strength = self.read(name, parse_strength)
-        assert strength is not None
-        return strength
+        return self.read(name, lambda text: parse_strength(text, where=self._label(name)))
 
-    def when(self) -> When:
-        """The day it happened, the day it is entered, and who. Raises: AtField."""
+    def signed(self) -> str:
+        """Whose hand this is. Raises: AtField where nobody says."""
         if not self.by.strip():
             told = "Nobody's initials stand beside this."
             raise AtField("by", BadInput(told, "Write yours: they stand with every entry."))
-        return When(on=self.day("on"), today=self.today, by=self.by)
+        return self.by
+
+    def when(self) -> When:
+        """The day it happened, the day it is entered, and who. Raises: AtField."""
+        return When(on=self.day("on"), today=self.today, by=self.signed())
+
+    @contextmanager
+    def about(self, name: str) -> Iterator[None]:
+        """Whatever is refused inside stands beside the field of that name. Raises: AtField."""
+        try:
+            yield
+        except AtField:
+            raise
+        except StockroomError as error:
+            raise AtField(name, error) from error
 
     def read(self, name: str, parse: Callable[[str], Value]) -> Value | None:
         """What was typed as `parse` reads it, None for nothing. Raises: AtField."""
         text = self.text(name)
         if not text:
             return None
-        try:
+        with self.about(name):
             return parse(text)
-        except StockroomError as error:
-            raise AtField(name, error) from error
+
+    def _there(self, name: str, read: Callable[[str], Value | None]) -> Value:
+        self.needed(name)
+        value = read(name)
+        assert value is not None
+        return value
 
     def _label(self, name: str) -> str:
         field = self.form.field(name)
         return field.label if field else name
 
 
-def blamed(form: Form, values: Mapping[str, str], error: StockroomError) -> str:
-    """The field a refusal of the use case is about: of its kind, else the one it quotes; or ""."""
-    if isinstance(error, AtField):
-        return error.field
-    filled = [each for each in form.fields if values.get(each.name, "").strip()]
-    for each in filled:
-        if _fits(each, error):
-            return each.name
-    quoted = [each for each in filled if _quotes(error.message, values[each.name])]
-    # the longest says most: a bottle's number stands in nearly every message
-    return max(quoted, key=lambda each: len(values[each.name])).name if quoted else ""
-
-
-def _quotes(message: str, value: str) -> bool:
-    # one sign stands in any sentence
-    return len(value.strip()) > 1 and value.strip().lower() in message.lower()
-
-
-def _fits(field: Field, error: StockroomError) -> bool:
-    kinds = {BadDate: ("date", "time"), BadAmount: ("amount", "strength"), NotEnough: ("amount",)}
-    return any(isinstance(error, each) and field.kind in of for each, of in kinds.items())
+def check_plain(name: str, value: str) -> None:
+    """Pass what can be written on paper. Raises: AtField for signs that no key of a desk gives."""
+    odd = next((one for one in value if not one.isprintable() and one not in "\n\r\t"), None)
+    if odd is not None:
+        told = f"There is a sign in it that cannot be printed (U+{ord(odd):04X})."
+        raise AtField(name, BadInput(told, "Type it anew."))

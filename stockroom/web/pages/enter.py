@@ -2,15 +2,21 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+from dataclasses import fields
+
 from fastapi import APIRouter, HTTPException
 from starlette.responses import Response
 
-from stockroom.web.door.session import with_initials
-from stockroom.web.forms.field import Form
-from stockroom.web.forms.sending import send, trouble_of
+from stockroom.errors import StockroomError
+from stockroom.reports.diary_text import DiaryRow
+from stockroom.reports.pages.entry import EntryTold, entry_told
+from stockroom.service.diary import entry_story
+from stockroom.web.forms.field import LONGEST, Form
+from stockroom.web.forms.sending import Trouble, remember_initials, send, trouble_of
 from stockroom.web.forms.table import BY_NAME, subjects
 from stockroom.web.forms.typed import AtField
-from stockroom.web.visit import Reading, Recording, Sent, Visit, back_to, values_of
+from stockroom.web.visit import Reading, Recording, Sent, Visit, back_to, own_path, values_of
 
 router = APIRouter(include_in_schema=False)
 
@@ -26,32 +32,67 @@ def alone(visit: Recording, name: str) -> Response:
     """One form, with whatever the address already says filled in."""
     form = _form(visit, name)
     asked = visit.request.query_params
-    values = form.usual() | {key: value for key, value in asked.items() if form.field(key)}
-    back = asked.get("back", "/week")
-    return visit.page("form.html", form, values=values, back=back, trouble=None)
+    given = {key: value[:LONGEST] for key, value in asked.items() if form.field(key)}
+    return form_page(visit, form, form.usual() | given, asked.get("back", "/week"))
 
 
 @router.post("/do/{name}")
 def sent_in(visit: Recording, name: str, sent: Sent) -> Response:
     """A form sent in: done, and back to where it was opened; else shown again as it was typed."""
-    form, values = _form(visit, name), values_of(sent)
+    return answered(visit, _form(visit, name), values_of(sent))
+
+
+def answered(visit: Visit, form: Form, values: Mapping[str, str]) -> Response:
+    """Do what a form asks and go back; a refusal shows it again, with everything typed kept."""
     back, token = values.get("back", "/week"), values.get("once", "")
-    if values.get("by", "").strip():
-        session = with_initials(visit.session, values["by"][:8])
-        visit.request.state.session = session
     try:
+        remember_initials(visit, values)
         send(visit, form, values, token)
     except AtField as refused:
-        trouble = trouble_of(refused)
-        more = {"values": values, "back": back, "trouble": trouble}
-        return visit.page("form.html", form, status=trouble.status, **more)
+        return form_page(visit, form, values, back, trouble_of(form, refused))
     return back_to(back, said=token)
+
+
+def form_page(
+    visit: Visit,
+    form: Form,
+    values: Mapping[str, str],
+    back: str,
+    trouble: Trouble | None = None,
+) -> Response:
+    """A form on a page of its own, with why it was refused where it was."""
+    told: tuple[EntryTold, ...] = ()
+    try:
+        told = _entry_told(visit, form, values)
+    except StockroomError as error:
+        trouble = trouble or trouble_of(form, AtField("entry", error))
+    return visit.page(
+        "form.html",
+        form,
+        status=trouble.status if trouble else 200,
+        values=values,
+        back=own_path(back),
+        trouble=trouble,
+        told=told,
+    )
+
+
+def _entry_told(visit: Visit, form: Form, values: Mapping[str, str]) -> tuple[EntryTold, ...]:
+    """What the entry says that is about to be put right, where its number is known."""
+    entry = values.get("entry", "").strip() if form.name == "put-right" else ""
+    if not (entry.isascii() and entry.isdigit() and len(entry) < 20):
+        return ()
+    diary = entry_story(visit.path, int(entry)).diary
+    # the store's own entries, row for row: reports know no store
+    names = [each.name for each in fields(DiaryRow)]
+    rows = [DiaryRow(**{name: getattr(told, name) for name in names}) for told in diary.entries]
+    return entry_told(diary.bottle, diary.line, rows)
 
 
 def _form(visit: Visit, name: str) -> Form:
     form = BY_NAME.get(name)
     if form is None:
-        raise HTTPException(404, f"Nothing is entered by the name {name}.")
+        raise HTTPException(404, f"Nothing is entered by the name {name[:60]}.")
     if not visit.may(form.role):
         raise HTTPException(403, f"{form.title} needs the role {form.role.words}.")
     return form

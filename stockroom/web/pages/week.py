@@ -2,25 +2,29 @@
 
 from __future__ import annotations
 
+from dataclasses import asdict
 from datetime import timedelta
+from typing import Annotated
 
-from fastapi import APIRouter
+from fastapi import APIRouter, Query
 from starlette.responses import Response
 
-from stockroom.reports.paper.week import monday_of, week_of
-from stockroom.service.closures import why_closed
-from stockroom.service.sheets import known_and_planned
+from stockroom.reports.pages.week import week_page
+from stockroom.reports.pages.week_done import Entered
+from stockroom.reports.paper.week import monday_of
 from stockroom.service.typed import day_or_none
+from stockroom.service.week import week_seen
+from stockroom.web.forms.table import BY_NAME
 from stockroom.web.visit import Reading
 
 router = APIRouter(include_in_schema=False)
 
 
 @router.get("/week")
-def week(visit: Reading, of: str = "") -> Response:
+def week(visit: Reading, of: Annotated[str, Query(max_length=40)] = "") -> Response:
     """The week that holds the day `of`, else this week."""
-    monday = monday_of(day_or_none(of or None, "of"), visit.today)
-    sunday = monday + timedelta(days=6)
-    known, plan = known_and_planned(visit.path, as_at=visit.today, through=sunday)
-    sheet = week_of(known, plan, monday, why_closed(visit.path, monday, sunday))
-    return visit.page("week.html", sheet)
+    monday = monday_of(day_or_none(of.strip() or None, "of"), visit.today)
+    seen = week_seen(visit.path, monday, monday + timedelta(days=6), as_at=visit.today)
+    entered = tuple(Entered(**asdict(each)) for each in seen.entered)
+    page = week_page(seen.known, seen.plan, monday, seen.closed, entered)
+    return visit.page("week.html", page, forms=BY_NAME)

@@ -1,0 +1,63 @@
+"""Which field of a form a refusal is about, so that it can stand beside it."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping
+
+from stockroom.errors import BadAmount, BadDate, NotEnough, StockroomError
+from stockroom.web.forms.field import Field, Form
+from stockroom.web.forms.options import field_of
+from stockroom.web.forms.typed import AtField
+
+_KINDS: dict[type[StockroomError], tuple[str, ...]] = {
+    BadDate: ("date", "time"),
+    BadAmount: ("amount", "strength"),
+    NotEnough: ("amount",),
+}
+_MEASURED = ("amount", "strength", "date")
+_OPTION = re.compile(r"--[a-z][a-z-]*")
+
+
+def blamed(form: Form, values: Mapping[str, str], error: StockroomError) -> str:
+    """The field a refusal of the use case is about, "" for the form as a whole.
+
+    One of its kind, else an empty one its hint asks for, else one its message quotes.
+    """
+    if isinstance(error, AtField):
+        return error.field
+    filled = [each for each in form.fields if values.get(each.name, "").strip()]
+    said = {each.name: values[each.name].strip().lower() for each in filled}
+    message, tick = error.message.lower(), to_tick(form, error)
+    # the longest says most, and one sign stands in any sentence
+    by_length = sorted(filled, key=lambda each: -len(said[each.name]))
+    quoted = [each for each in by_length if len(said[each.name]) > 1 and said[each.name] in message]
+    fitting = [each for each in filled if _fits(each, error)]
+    for found in (
+        [each for each in filled if tick and each.kind in _MEASURED],
+        [each for each in quoted if each in fitting],
+        fitting,
+        _asked_for(form, filled, error.hint),
+        # what a message begins with, it is about
+        [each for each in quoted if message.startswith(said[each.name])],
+        quoted,
+    ):
+        if found:
+            return found[0].name
+    return ""
+
+
+def to_tick(form: Form, error: StockroomError) -> str:
+    """The box that says it is meant all the same, where the refusal asks for it; else ""."""
+    asked = (field_of(form, option) for option in _OPTION.findall(error.hint))
+    return next((each.name for each in asked if each and each.kind == "yes"), "")
+
+
+def _asked_for(form: Form, filled: list[Field], hint: str) -> list[Field]:
+    asked = (field_of(form, option) for option in _OPTION.findall(hint))
+    # a box to tick is shown beside what it is about
+    return [each for each in asked if each and each not in filled and each.kind != "yes"]
+
+
+def _fits(field: Field, error: StockroomError) -> bool:
+    return any(isinstance(error, each) and field.kind in of for each, of in _KINDS.items())

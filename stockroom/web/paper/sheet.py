@@ -1,0 +1,125 @@
+"""A sheet that can be printed: what it asks for, and how it is made."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, replace
+from typing import Any, NoReturn
+
+from stockroom.errors import BadInput, NotAllowed, StockroomError
+from stockroom.reports.paper.kinds import Kind
+from stockroom.reports.typesetting import PAPERS
+from stockroom.service.printing import held_against, numbered
+from stockroom.settings import StoreAt
+from stockroom.web.forms.blaming import blamed
+from stockroom.web.forms.field import Field, Form
+from stockroom.web.forms.typed import AtField, Typed
+from stockroom.web.visit import Visit
+
+USUAL = ("A4", "Letter")
+"""The papers of a sheet that does not say otherwise."""
+
+OTHERWISE = "To read it, open it without a number."
+"""What can be done where no number can be taken."""
+
+
+@dataclass(frozen=True, slots=True)
+class Ready:
+    """A sheet ready to be set. `about` tells its copies from others of its kind.
+
+    `told` is worth knowing before it is printed; `paper` a key of `typesetting.PAPERS`.
+    """
+
+    kind: Kind[Any]
+    sheet: Any
+    about: str
+    told: tuple[str, ...] = ()
+    paper: str = "A4"
+
+
+@dataclass(frozen=True, slots=True)
+class Sheet:
+    """One kind of sheet. Its address is /paper/NAME, its file NAME.pdf.
+
+    `promise` is one sentence on what it is for. All `fields` may be left empty, but not each of
+    those in `one_of`.
+    """
+
+    name: str
+    title: str
+    promise: str
+    make: Callable[[Typed], Ready]
+    fields: tuple[Field, ...] = ()
+    papers: tuple[str, ...] = USUAL
+    one_of: tuple[str, ...] = ()
+
+    @property
+    def form(self) -> Form:
+        """Its fields as a form, with the paper it is printed on."""
+        choices = tuple((name, name) for name in self.papers)
+        paper = Field("paper", "Paper", "choice", choices=choices, usual=self.papers[0])
+        fields = (*self.fields, paper)
+        return Form(self.name, self.title, self.promise, fields, _nothing, subject="Paper")
+
+    def is_asked(self, values: Mapping[str, str]) -> bool:
+        """Whether enough is said to make one."""
+        return not self.one_of or any(values.get(name, "").strip() for name in self.one_of)
+
+
+def ready(visit: Visit, sheet: Sheet, values: Mapping[str, str]) -> Ready:
+    """The sheet asked for, held against the copy printed last. Writes nothing. Raises: AtField."""
+    typed = _typed(visit, sheet, values)
+    with_paper = _paper_of(sheet, typed)
+    try:
+        made = sheet.make(typed)
+        held = held_against(visit.path, made.kind, made.sheet, made.about)
+    except AtField:
+        raise
+    except StockroomError as error:
+        raise AtField(blamed(sheet.form, values, error), error) from error
+    return replace(made, sheet=held, paper=with_paper)
+
+
+def with_number(visit: Visit, made: Ready) -> Ready:
+    """The same under the next copy's number. Raises: NotAllowed where none can be taken."""
+    if visit.looks_elsewhere:
+        told = f"You are looking from {visit.today.isoformat()}, which is not today."
+        raise NotAllowed(told, f"Go back to today, then print it. {OTHERWISE}")
+    by = visit.session.initials
+    sheet = numbered(visit.path, made.kind, made.sheet, made.about, by=by, otherwise=OTHERWISE)
+    return replace(made, sheet=sheet)
+
+
+def numbers_before(path: StoreAt, things: Mapping[str, str]) -> tuple[str, ...]:
+    """What there is to say of makes by number whose number was another's on paper: a line each.
+
+    Asked before the sheet is printed: by then its own copy would be the newest.
+    """
+    from stockroom.reports.paper.make_number import another_words, number_start
+    from stockroom.service.cards import copy_numbering
+
+    told = []
+    for number, thing in things.items():
+        before = copy_numbering(path, number_start(number))
+        if before is not None:
+            copy, key = before
+            told.append(another_words(number, thing, key, copy))
+    return tuple(line for line in told if line)
+
+
+def _typed(visit: Visit, sheet: Sheet, values: Mapping[str, str]) -> Typed:
+    return Typed(sheet.form, values, visit.path, visit.today, visit.session.initials)
+
+
+def _paper_of(sheet: Sheet, typed: Typed) -> str:
+    asked = typed.text("paper")
+    for name in sheet.papers:
+        if name.lower() == asked.lower() or not asked:
+            return name
+    assert set(sheet.papers) <= set(PAPERS)
+    told = f"{asked}: this is not printed on that."
+    raise AtField("paper", BadInput(told, f"Choose {' or '.join(sheet.papers)}."))
+
+
+def _nothing(typed: Typed) -> NoReturn:
+    raise AssertionError(f"{typed.form.name} is printed, and nothing is entered by it")
