@@ -17,6 +17,7 @@ from houses import (
     days,
     found,
     g,
+    house,
     keeps,
     looked,
     made_bottle,
@@ -34,6 +35,8 @@ from stockroom.keeping.laws import DAYS_PER_MONTH
 from stockroom.keeping.rules import Law, Origin, Rule, RuleKind
 from stockroom.planning.decisions import Outcome, Plan
 from stockroom.planning.facts import Bottle, Closeness, Firmness, Line
+from stockroom.planning.plan import plan
+from stockroom.planning.replaying.replay import replay
 
 TENTH = solution(0.1)
 LIFE = solution(0.1, rules=(keeps(60),))
@@ -319,6 +322,23 @@ def test_it_is_opened_when_the_open_one_has_faded_too_far() -> None:
     made = peroxide_plan(("K15", "02-10", 180))
     assert bottles_of(made, "K15.1") == ["B02"]
     assert "89.1" in reasons(made, "K15.1")
+
+
+def test_two_put_together_for_a_class_are_not_opened_apart_for_a_later_choice() -> None:
+    # firm before pencilled: K2 has both first, and K1 would then open one of them ten days before
+    row = [
+        booking("K1", "02-10", recipe="R1", firmness=Firmness.PENCILLED),
+        booking("K2", "02-20", recipe="R2"),
+    ]
+    recipes = [
+        recipe(wants(PEROXIDE, cm3(amount), **NEVER_BELOW_NINETY), code=code)
+        for code, amount in (("R1", 15.0), ("R2", 180.0))
+    ]
+    sealed = [bought_bottle(number, PEROXIDE, cm3(100)) for number in ("X1", "X2")]
+    known = house([PEROXIDE], recipes=recipes, bookings=row, bottles=sealed)
+    made = plan(known)
+    assert outcomes(made)["K2.1"] is Outcome.HAVE
+    assert replay(known, made) == ()
 
 
 def test_once_opened_it_ages_from_that_day() -> None:

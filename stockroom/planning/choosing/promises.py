@@ -16,7 +16,10 @@ Judge = Callable[[Bottle, Verdict], str]
 
 @dataclass(frozen=True, slots=True)
 class Promise:
-    """So much of a bottle for somebody (`for_ref`), on a day, judged by `judge`."""
+    """So much of a bottle for somebody (`for_ref`), on a day, judged by `judge`.
+
+    `beside` others: of equal strength on that day, which an opening on another would end.
+    """
 
     bottle: str
     amount: int
@@ -24,6 +27,7 @@ class Promise:
     for_ref: str
     purpose: Purpose
     judge: Judge
+    beside: bool = False
 
 
 class Promises:

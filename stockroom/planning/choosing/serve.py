@@ -279,8 +279,10 @@ class Serving:
 
     def _promise(self, want: Want, line: Line, shares: Shares) -> None:
         judge = self.judge(want, line)
+        beside = len(shares) > 1 and line.form is not Form.SOLID
         for number, amount in shares:
             if amount:
-                made = Promise(number, amount, want.use_day, want.ref, want.purpose, judge)
+                day, ref = want.use_day, want.ref
+                made = Promise(number, amount, day, ref, want.purpose, judge, beside)
                 self.shelf.promise(made)
                 want.promises.append(made)

@@ -188,6 +188,8 @@ class Shelf:
     def spoilt(self, number: str, opened: date) -> str:
         """Whom opening it on a day would spoil it for, of those it is promised to; "" if nobody."""
         for promise in self.promises[number]:
+            if promise.beside:
+                return f"opening it on {opened} changes its strength for {promise.for_ref}"
             if self.unfit_opened(number, promise.on, promise.purpose, promise.judge, opened):
                 return f"opening it on {opened} spoils it for {promise.for_ref}"
         return ""
