@@ -9,6 +9,7 @@
         ├── MissingFigure   a density, molar mass or strength is needed first
         ├── NotEnough       more asked for than there is
         ├── NotAllowed      barred, never kept, set aside, gone, out of order
+        │   └── SentOtherwise   sent in before, with something else in it
         ├── StoreTrouble    the store is missing, busy, damaged, read-only or too new
         └── BrokenPlan      the plan made breaks a rule of the house, and is not shown
 
@@ -68,6 +69,10 @@ class NotEnough(Refused):
 
 class NotAllowed(Refused):
     """Barred by the recipe, never kept, set aside, gone, or before its time."""
+
+
+class SentOtherwise(NotAllowed):
+    """What was sent in before comes again with something else in it."""
 
 
 class StoreTrouble(Refused):

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, Annotated
+from typing import Annotated
 
 import typer
 
@@ -10,10 +10,6 @@ from stockroom.cli.printing import show, width
 from stockroom.cli.shared import of
 from stockroom.cli.stock import Bottle
 from stockroom.service.typed import day_or_none
-
-if TYPE_CHECKING:
-    from stockroom.reports.diary_text import DiaryRow
-    from stockroom.service.diary import Told
 
 
 def diary(
@@ -28,36 +24,15 @@ def diary(
 
     Example: stockroom diary B06
     """
-    from stockroom.reports.diary_text import diary_json, diary_text
+    from stockroom.reports.diary_text import diary_json, diary_rows, diary_text
     from stockroom.service.diary import story
 
     shared = of(ctx)
     told = story(shared.path, bottle, day_or_none(known_on, "--known-on"))
     number, item = told.diary.bottle, told.diary.line
-    rows = [row_of(entry) for entry in told.diary.entries]
+    rows = list(diary_rows(told.diary.entries))
     show(
         shared,
         lambda: diary_text(number, item, rows, width(), practice=told.practice),
         lambda: diary_json(number, item, rows, practice=told.practice),
-    )
-
-
-def row_of(told: Told) -> DiaryRow:
-    """A row of the report for an entry as the store tells it."""
-    from stockroom.reports.diary_text import DiaryRow
-
-    return DiaryRow(
-        entry=told.entry,
-        happened=told.happened,
-        entered=told.entered,
-        by=told.by,
-        kind=told.kind,
-        change=told.change,
-        left=told.left,
-        said=told.said,
-        place=told.place,
-        booking=told.booking,
-        puts_right=told.puts_right,
-        undone_by=told.undone_by,
-        about=told.about,
     )

@@ -70,8 +70,8 @@ def restore(
 
 
 def _words(told: Everything) -> Iterator[str]:
-    from stockroom.cli.diary import row_of
+    from stockroom.reports.diary_text import diary_rows
     from stockroom.reports.house_text import house_text
 
-    stories = ((each.bottle, each.line, map(row_of, each.entries)) for each in told.diaries)
+    stories = ((each.bottle, each.line, diary_rows(each.entries)) for each in told.diaries)
     return house_text(told.known, told.bottles, stories, terms=told.terms, lists=told.lists)

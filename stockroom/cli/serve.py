@@ -23,6 +23,16 @@ MOST_WORKERS = 8
 """Processes that answer: more than a college's machine has cores is of no use. Our choice."""
 
 
+Certificate = Annotated[
+    Path | None, typer.Option(metavar="FILE", help="For TLS, as PEM; with --key.")
+]
+Key = Annotated[Path | None, typer.Option(metavar="FILE", help="The key to it, as PEM.")]
+Names = Annotated[
+    list[str] | None,
+    typer.Option(metavar="NAME", help="Another name this machine has; may be given again."),
+]
+
+
 def serve(
     ctx: typer.Context,
     port: Annotated[
@@ -34,14 +44,9 @@ def serve(
     host: Annotated[
         str, typer.Option(metavar="ADDRESS", help="With --share: listen at this address only.")
     ] = "",
-    name: Annotated[
-        list[str] | None,
-        typer.Option(metavar="NAME", help="Another name this machine has; may be given again."),
-    ] = None,
-    certificate: Annotated[
-        Path | None, typer.Option(metavar="FILE", help="For TLS, as PEM; with --key.")
-    ] = None,
-    key: Annotated[Path | None, typer.Option(metavar="FILE", help="The key to it, as PEM.")] = None,
+    name: Names = None,
+    certificate: Certificate = None,
+    key: Key = None,
     workers: Annotated[
         str, typer.Option(metavar="NUMBER", help=f"Processes that answer, 1 to {MOST_WORKERS}.")
     ] = "1",

@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from datetime import date
 from functools import lru_cache
-from typing import Any
+from typing import Any, Protocol
 
 from stockroom.measure.amounts import Amount
 from stockroom.measure.formats import format_about, format_amount
@@ -40,6 +40,57 @@ class DiaryRow:
     puts_right: int | None = None
     undone_by: int | None = None
     about: bool = False
+
+
+class Entry(Protocol):
+    """An entry as the store tells it, with what a row says of it."""
+
+    @property
+    def entry(self) -> int: ...
+    @property
+    def happened(self) -> date: ...
+    @property
+    def entered(self) -> date: ...
+    @property
+    def by(self) -> str: ...
+    @property
+    def kind(self) -> str: ...
+    @property
+    def change(self) -> Amount: ...
+    @property
+    def left(self) -> Amount: ...
+    @property
+    def said(self) -> str: ...
+    @property
+    def place(self) -> str: ...
+    @property
+    def booking(self) -> str: ...
+    @property
+    def puts_right(self) -> int | None: ...
+    @property
+    def undone_by(self) -> int | None: ...
+    @property
+    def about(self) -> bool: ...
+
+
+def diary_rows(entries: Iterable[Entry]) -> Iterator[DiaryRow]:
+    """The store's entries as rows, one by one: a ledger may be longer than memory."""
+    for told in entries:
+        yield DiaryRow(
+            entry=told.entry,
+            happened=told.happened,
+            entered=told.entered,
+            by=told.by,
+            kind=told.kind,
+            change=told.change,
+            left=told.left,
+            said=told.said,
+            place=told.place,
+            booking=told.booking,
+            puts_right=told.puts_right,
+            undone_by=told.undone_by,
+            about=told.about,
+        )
 
 
 def diary_text(

@@ -20,7 +20,9 @@ class RuleChange(Corrected, Protocol):
     def rule(self) -> str: ...
 
 
-class _Keeping(Protocol):
+class Keeping(Protocol):
+    """How a line keeps, as the house has it."""
+
     @property
     def line(self) -> str: ...
     @property
@@ -37,7 +39,7 @@ class _Keeping(Protocol):
     def practice(self) -> bool: ...
 
 
-def rules_text(keeping: _Keeping, width: int = 100) -> str:
+def rules_text(keeping: Keeping, width: int = 100) -> str:
     """The rules in use, each with whose it is and its source; then every change of them."""
     lines = [PRACTICE] if keeping.practice else []
     lines.append(keeping.line)
@@ -55,7 +57,7 @@ def rules_text(keeping: _Keeping, width: int = 100) -> str:
     return "\n".join(lines)
 
 
-def rules_json(keeping: _Keeping) -> dict[str, Any]:
+def rules_json(keeping: Keeping) -> dict[str, Any]:
     """The same as plain values."""
     return {
         "practice": keeping.practice,

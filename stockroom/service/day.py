@@ -5,8 +5,10 @@ Light, as reading is: the day page, the class slip and the phone text are made f
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass
 from datetime import date
+from typing import Any
 
 from stockroom.errors import BadDate
 from stockroom.measure.days import parse_day
@@ -14,6 +16,7 @@ from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Firmness
 from stockroom.service.closures import why_closed
 from stockroom.service.known import known_of
+from stockroom.service.printing import Kind, held_against
 from stockroom.service.sheets import known_and_planned
 from stockroom.settings import StoreAt
 from stockroom.store.likeness import unknown
@@ -46,6 +49,28 @@ def day_asked(path: StoreAt, ref: str | None, *, as_at: date) -> Asked:
     on, booking = _meant(known_of(path, as_at), ref, as_at)
     known, plan = known_and_planned(path, as_at=as_at, through=on)
     return Asked(known, plan, on, booking, why_closed(path, on, on).get(on, ""))
+
+
+@dataclass(frozen=True, slots=True)
+class DayHeld:
+    """What is known of a day, and its sheet held against the copy printed last."""
+
+    asked: Asked
+    sheet: Any
+
+
+def day_held(
+    path: StoreAt,
+    kind: Kind,
+    make: Callable[[Facts, Plan, date, str, str], Any],
+    ref: str | None,
+    *,
+    as_at: date,
+) -> DayHeld:
+    """The day or booking named, with the sheet `make` makes of it. Raises: as `day_asked`."""
+    asked = day_asked(path, ref, as_at=as_at)
+    sheet = make(asked.known, asked.plan, asked.on, asked.booking, asked.closed)
+    return DayHeld(asked, held_against(path, kind, sheet, asked.about))
 
 
 def _meant(known: Facts, ref: str | None, as_at: date) -> tuple[date, str]:

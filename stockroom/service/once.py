@@ -2,14 +2,15 @@
 
 from __future__ import annotations
 
+import hashlib
 import json
 from collections.abc import Callable
 from dataclasses import asdict
 from datetime import date, datetime, timedelta
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 from stockroom import clock
-from stockroom.errors import BadInput
+from stockroom.errors import BadInput, SentOtherwise
 from stockroom.service.answers import Done
 from stockroom.settings import StoreAt
 from stockroom.store.kinds import EntryKind
@@ -24,16 +25,22 @@ MOMENT = timedelta(minutes=1)
 LONGEST = 200
 """The most signs of a token: room for any identifier, none for a letter. Our choice."""
 
+SENT = "sent"
+"""The key, beside the answer, of a digest of what was sent: no answer has one of that name."""
+
 _ASKED = (EntryKind.DRAWN, EntryKind.SPILLED, EntryKind.LENT)
 
 
-def once(path: StoreAt, token: str, call: Callable[[], Done], *, today: date, by: str) -> Done:
+def once(
+    path: StoreAt, token: str, call: Callable[[], Done], *, today: date, by: str, sent: str = ""
+) -> Done:
     """Do what `call` does, or give the answer it gave when the token was first sent in.
 
     What the call writes in the store at `path` and the token are saved together or not at
     all; a call that is refused leaves the token free. `token` is whatever the sender drew
-    by lot for this one submission. Raises: BadInput for no token or one over 200 signs;
-    StoreTrouble; and as the call.
+    by lot for this one submission; `sent` says in any words what it was drawn for, so that
+    something else under the same token is never taken for it. Raises: BadInput for no token
+    or one over 200 signs; SentOtherwise; StoreTrouble; and as the call.
     """
     # loaded here: whoever only wants to know what was entered a moment ago goes without
     from stockroom.store.engine import joined, reader_in
@@ -42,9 +49,10 @@ def once(path: StoreAt, token: str, call: Callable[[], Done], *, today: date, by
     mark = _checked(token)
     with joined(path) as session:
         # asked under the write lock: the first may have been saved a moment ago, elsewhere
-        known = answered(reader_in(session), mark)
+        known = _submitted(reader_in(session), mark)
         if known is not None:
-            return known
+            _check_the_same(known, sent)
+            return _answer_in(known)
         answer = call()
         session.add(
             Submission(
@@ -52,7 +60,7 @@ def once(path: StoreAt, token: str, call: Callable[[], Done], *, today: date, by
                 entered_on=today,
                 entered_at=clock.now().isoformat(sep=" "),
                 by=by.strip(),
-                answer=json.dumps(asdict(answer), ensure_ascii=False),
+                answer=json.dumps(asdict(answer) | {SENT: _digest(sent)}, ensure_ascii=False),
             )
         )
         return answer
@@ -60,11 +68,8 @@ def once(path: StoreAt, token: str, call: Callable[[], Done], *, today: date, by
 
 def answered(reader: Reader, token: str) -> Done | None:
     """What was answered when the token was sent in; None for one that is new."""
-    rows = reader.rows("submission", "WHERE token = ?", token)
-    if not rows:
-        return None
-    said = json.loads(rows[0]["answer"])
-    return Done(**{**said, "details": tuple(said["details"])})
+    known = _submitted(reader, token)
+    return None if known is None else _answer_in(known)
 
 
 def entered_a_moment_ago(reader: Reader, entry: Entry) -> tuple[str, ...]:
@@ -91,6 +96,29 @@ _ALIKE = """
     AND NOT EXISTS (SELECT 1 FROM entry r WHERE r.puts_right = a.id)
     ORDER BY a.id DESC LIMIT 1
 """
+
+
+def _submitted(reader: Reader, token: str) -> dict[str, Any] | None:
+    rows = reader.rows("submission", "WHERE token = ?", token)
+    return dict(json.loads(rows[0]["answer"])) if rows else None
+
+
+def _answer_in(known: dict[str, Any]) -> Done:
+    said = {key: value for key, value in known.items() if key != SENT}
+    return Done(**{**said, "details": tuple(said["details"])})
+
+
+def _check_the_same(known: dict[str, Any], sent: str) -> None:
+    # an answer kept before there was a digest stands for whatever was sent
+    if known.get(SENT, _digest(sent)) != _digest(sent):
+        raise SentOtherwise(
+            "This page was sent already with something else, and nothing was saved now.",
+            "Open it again, then send it.",
+        )
+
+
+def _digest(sent: str) -> str:
+    return hashlib.sha256(sent.encode(errors="surrogatepass")).hexdigest()
 
 
 def _checked(token: str) -> str:

@@ -20,7 +20,6 @@ from stockroom.planning.facts import Facts, Happened
 from stockroom.service.answers import Done
 from stockroom.service.backup_age import with_backup
 from stockroom.service.known import known_from
-from stockroom.service.once import once
 from stockroom.service.replayed import replayed_plan
 from stockroom.settings import StoreAt
 from stockroom.store.printed_plans import (
@@ -88,18 +87,11 @@ def keep(
         return with_backup(path, replace(shown, kept_as=row.number))
 
 
-def keep_once(path: StoreAt, token: str, *, as_at: date, by: str) -> Done:
-    """Keep the term's plan as `keep` does; the same token sent in twice keeps it once.
-
-    Raises: as `keep` and `once`.
-    """
-
-    def kept() -> Done:
-        plan = keep(path, as_at=as_at, by=by)
-        text = f"Plan {plan.kept_as} is kept: what changes from now on is told against it."
-        return Done(text, next="stockroom changed", practice=plan.house.practice)
-
-    return once(path, token, kept, today=as_at, by=by)
+def keep_told(path: StoreAt, *, as_at: date, by: str) -> Done:
+    """Keep the term's plan as `keep` does, and say under which number. Raises: as `keep`."""
+    plan = keep(path, as_at=as_at, by=by)
+    text = f"Plan {plan.kept_as} is kept: what changes from now on is told against it."
+    return Done(text, next="stockroom changed", practice=plan.house.practice)
 
 
 def changed(path: StoreAt, number: str | None = None, *, as_at: date) -> Changed:

@@ -5,7 +5,8 @@ To look at a sheet writes nothing; to print one takes the next number and keeps 
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Iterator, Mapping
+from contextlib import contextmanager
 from dataclasses import replace
 from typing import Any, Protocol, TypeVar
 
@@ -14,6 +15,7 @@ from stockroom.service import copies
 from stockroom.settings import StoreAt
 
 A = TypeVar("A", bound=Any)
+Drawn = TypeVar("Drawn")
 
 
 class Kind(Protocol):
@@ -48,12 +50,44 @@ def numbered(path: StoreAt, kind: Kind, sheet: A, about: str, *, by: str, otherw
 
     `otherwise` is how it can be read without one. Raises: NotAllowed where none can be taken.
     """
+    with _telling(otherwise):
+        return _next(path, kind, sheet, about, by)
+
+
+def printed(
+    path: StoreAt,
+    kind: Kind,
+    sheet: A,
+    about: str,
+    *,
+    by: str,
+    otherwise: str,
+    draw: Callable[[A], Drawn],
+) -> tuple[A, Drawn]:
+    """The sheet under the next copy's number, and what `draw` makes of it, as one piece.
+
+    What cannot be drawn takes no number. While it is drawn nobody else can save, so `draw` asks
+    nobody and waits for nothing. Raises: as `numbered`, and as `draw`.
+    """
+    from stockroom.store.engine import joined
+
+    with _telling(otherwise), joined(path):
+        copy = _next(path, kind, sheet, about, by)
+        return copy, draw(copy)
+
+
+def _next(path: StoreAt, kind: Kind, sheet: A, about: str, by: str) -> A:
     head, lines = sheet.head, kind.lines(sheet)
+    number = copies.number_copy(path, kind.name, about, lines, as_at=head.as_at, by=by)
+    return replace(sheet, head=replace(head, copy=number))
+
+
+@contextmanager
+def _telling(otherwise: str) -> Iterator[None]:
     try:
-        number = copies.number_copy(path, kind.name, about, lines, as_at=head.as_at, by=by)
+        yield
     except StoreTrouble as trouble:
         raise NotAllowed(
             f"No copy can be numbered, so nothing was printed. {trouble.message}",
             f"{otherwise} {trouble.hint}".strip(),
         ) from trouble
-    return replace(sheet, head=replace(head, copy=number))

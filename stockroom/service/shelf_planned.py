@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, replace
 from datetime import date
 
+from stockroom.errors import UnknownName
 from stockroom.findings import Finding
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Place
@@ -32,6 +33,14 @@ class ShelfPlanned:
     plan: Plan | None = None
 
 
+class NoneOfThatName(UnknownName):
+    """Nothing on the shelf goes by that name; `places` are every place there is to choose from."""
+
+    def __init__(self, error: UnknownName, places: tuple[Place, ...]) -> None:
+        super().__init__(error.message, error.hint)
+        self.places = places
+
+
 def places(path: StoreAt) -> tuple[Place, ...]:
     """Every place of the house, in its order. Raises: StoreTrouble."""
     with reading(path) as reader:
@@ -49,12 +58,15 @@ def shelf_planned(
 ) -> ShelfPlanned:
     """The bottles meant by `what` ("" for all) that stand at `place` ("" for any), on a day.
 
-    Raises: UnknownName with the nearest three, for the place too; StoreTrouble.
+    Raises: NoneOfThatName with the nearest three, for the place too; StoreTrouble.
     """
-    every = places(path)
-    there = _place(every, place)
-    asked, day = what or (there.name if there else ""), on or today
-    found = shelf(path, asked, on=day, known_on=known_on, today=today)
+    every, day = places(path), on or today
+    try:
+        there = _place(every, place)
+        asked = what or (there.name if there else "")
+        found = shelf(path, asked, on=day, known_on=known_on, today=today)
+    except UnknownName as error:
+        raise NoneOfThatName(error, every) from error
     if not asked:
         found = replace(found, neighbours=_everywhere(found, every))
     elif there is not None:

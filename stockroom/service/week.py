@@ -2,16 +2,20 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
-from datetime import date
+from datetime import date, timedelta
+from typing import Any, TypeVar
 
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts
 from stockroom.service.closures import why_closed
+from stockroom.service.printing import Kind, held_against
 from stockroom.service.sheets import known_and_planned
 from stockroom.settings import StoreAt
 from stockroom.store.reading import Row, reading
+
+S = TypeVar("S", bound=Any)
 
 BACK = 2000
 """How many entries back a day is looked for: more are entered by no hand in a day. Our choice."""
@@ -50,6 +54,24 @@ def week_seen(path: StoreAt, first: date, last: date, *, as_at: date) -> WeekSee
     known, plan = known_and_planned(path, as_at=as_at, through=last)
     closed = why_closed(path, min(first, as_at), last)
     return WeekSeen(known, plan, closed, entries_of(path, as_at))
+
+
+def week_held(
+    path: StoreAt,
+    kind: Kind,
+    make: Callable[[Facts, Plan, date, Mapping[date, str]], S],
+    monday: date,
+    *,
+    as_at: date,
+) -> S:
+    """The sheet `make` makes of the week from `monday`, held against its copy printed last.
+
+    Writes nothing. Raises: StoreTrouble.
+    """
+    sunday = monday + timedelta(days=6)
+    known, plan = known_and_planned(path, as_at=as_at, through=sunday)
+    sheet = make(known, plan, monday, why_closed(path, monday, sunday))
+    return held_against(path, kind, sheet, monday.isoformat())
 
 
 def entries_of(path: StoreAt, day: date) -> tuple[EntryOfDay, ...]:

@@ -61,6 +61,14 @@ def facts_from(
     settings = _settings(reader)
     first, last = _period(reader, as_at, start, end)
     before = year_before_of(reader, start or first, end or last)
+    bookings = _bookings(
+        reader, settings, min(first, start or first, as_at), max(last, end or last)
+    )
+    drawn = drawn_of(reader, as_at, known_on)
+    # what a class still to come has had, even of a bottle thrown away since
+    to_come = {one.number for one in bookings if one.on >= as_at}
+    served = {one.bottle for one in drawn if to_come.intersection(one.booking.split(";"))}
+    every = bottles_of(reader, as_at, known_on, gone=True)
     return Facts(
         as_at=as_at,
         start=start or first,
@@ -71,16 +79,14 @@ def facts_from(
         lines=lines_of(reader),
         methods=methods_of(reader),
         recipes=recipes_of(reader),
-        bookings=_bookings(
-            reader, settings, min(first, start or first, as_at), max(last, end or last)
-        ),
-        bottles=bottles_of(reader, as_at, known_on),
+        bookings=bookings,
+        bottles=tuple(b for b in every if b.left or not b.record.gone or b.number in served),
         balances=_balances(reader),
         glassware=_glassware(reader),
         vessels=_vessels(reader),
         departments=_departments(reader),
         places=places_of(reader),
-        drawn=drawn_of(reader, as_at, known_on),
+        drawn=drawn,
         written_off=written_off_of(reader, as_at, known_on),
         usual=usual_of(reader, as_at),
         placed=placed_of(reader, as_at, min(first, as_at)),

@@ -39,8 +39,12 @@ def alone(patience: float = PATIENCE) -> Iterator[None]:
 
 def pages_of(kind: Kind[Any], sheet: Any, *, form: str, paper: str) -> list[bytes]:
     """A sheet typeset: a PDF whole, a picture one to a page. Raises: 503."""
+    with alone():
+        return drawn(kind, sheet, form=form, paper=paper)
+
+
+def drawn(kind: Kind[Any], sheet: Any, *, form: str, paper: str) -> list[bytes]:
+    """The same, for whoever is `alone` already."""
     from stockroom.reports.typesetting import typeset
 
-    data = kind.data(sheet)
-    with alone():
-        return typeset(kind.name, data, form=form, paper=paper, on=sheet.head.as_at)
+    return typeset(kind.name, kind.data(sheet), form=form, paper=paper, on=sheet.head.as_at)

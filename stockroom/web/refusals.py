@@ -39,30 +39,40 @@ def listen_for(app: FastAPI) -> None:
 
     @app.exception_handler(StockroomError)
     def refused(request: Request, error: StockroomError) -> Response:
-        return answer(request, status_of(error), error.message, error.hint)
+        return answer(request, status_of(error), error.message, error.hint, inside=True)
 
     @app.exception_handler(HTTPException)
     def turned_away(request: Request, error: HTTPException) -> Response:
         if error.status_code == 303 and error.headers:
             return Response(status_code=303, headers=error.headers)
-        return answer(request, error.status_code, str(error.detail), headers=error.headers)
+        detail, headers = str(error.detail), error.headers
+        return answer(request, error.status_code, detail, headers=headers, inside=True)
 
     @app.exception_handler(RequestValidationError)
     def unreadable(request: Request, error: RequestValidationError) -> Response:
         first = error.errors()[0]
         where = ".".join(str(part) for part in first["loc"][1:])
-        return answer(request, 422, f"{where}: {first['msg']}.")
+        return answer(request, 422, f"{where}: {first['msg']}.", inside=True)
 
 
 def answer(
-    request: Request, status: int, message: str, hint: str = "", headers: Any = None
+    request: Request,
+    status: int,
+    message: str,
+    hint: str = "",
+    headers: Any = None,
+    *,
+    inside: bool = False,
 ) -> Response:
-    """One refusal as whoever asked can read it: a page, or a problem in JSON under /api/."""
+    """One refusal as whoever asked can read it: a page, or a problem in JSON under /api/.
+
+    `inside` says that the request came as far as the pages: then the top of a page is shown too.
+    """
     if request.url.path.startswith("/api/"):
         refused: Response = problem(status, message, hint)
     else:
         from stockroom.web.showing import refusal_page
 
-        refused = refusal_page(request, status, message, hint)
+        refused = refusal_page(request, status, message, hint, inside=inside)
     refused.headers.update(headers or {})
     return refused

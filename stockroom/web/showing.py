@@ -10,6 +10,7 @@ from typing import TYPE_CHECKING, Any
 from fastapi.responses import HTMLResponse
 from jinja2 import Environment, FileSystemLoader, StrictUndefined
 
+from stockroom.errors import StockroomError
 from stockroom.reports.pages.links import linked
 from stockroom.reports.sheet import CAUTION
 from stockroom.reports.words import day_heading, raised
@@ -73,10 +74,31 @@ def shown(template: str, visit: Visit, page: object, more: dict[str, Any]) -> st
     )
 
 
-def refusal_page(request: Request, status: int, message: str, hint: str) -> HTMLResponse:
-    """The page for what cannot be shown; plain, since the store itself may be the trouble."""
-    page = templates().get_template("refused.html")
-    return HTMLResponse(page.render(status=status, message=message, hint=hint), status)
+def refusal_page(
+    request: Request, status: int, message: str, hint: str, *, inside: bool
+) -> HTMLResponse:
+    """The page for what cannot be shown, with the line and the pages at its top.
+
+    Plain for whoever is not `inside`, and where the store itself may be the trouble.
+    """
+    told = {"message": message, "hint": hint, "status": status}
+    visit = _visit_of(request) if inside and status < 500 else None
+    if visit is not None:
+        # not back here, where there is nothing
+        return visit.page("refused_inside.html", told, status=status, top_back="/week")
+    return HTMLResponse(templates().get_template("refused.html").render(page=told), status)
+
+
+def _visit_of(request: Request) -> Visit | None:
+    from stockroom.web.visit import visiting
+
+    session = getattr(request.state, "session", None)
+    if session is None or session.role is Role.NOBODY:
+        return None
+    try:
+        return visiting(request)
+    except StockroomError:
+        return None
 
 
 def _form_named(name: str) -> Form:

@@ -12,6 +12,8 @@ from fastapi import Depends, HTTPException, Request
 from fastapi.responses import HTMLResponse, RedirectResponse
 from starlette.datastructures import FormData
 
+from stockroom.errors import NotAllowed
+from stockroom.reports.words import day_heading
 from stockroom.service.front import Front, front
 from stockroom.settings import StoreAt
 from stockroom.web.door.bounds import FIELDS, LARGEST, LONGEST_PATH
@@ -44,6 +46,15 @@ class Visit:
         """Whether the day was moved in a house that is no practice: then nothing is entered."""
         return self.today != self.front.today and not self.front.practice
 
+    def check_today(self, then: str, otherwise: str = "") -> None:
+        """Pass who looks from today; `then` is what else to do once back ("print it").
+
+        `otherwise` is a sentence on what can be done meanwhile. Raises: NotAllowed.
+        """
+        if self.looks_elsewhere:
+            told = f"You are looking from {day_heading(self.today)}, which is not today."
+            raise NotAllowed(told, f"Go back to today, then {then}. {otherwise}".strip())
+
     @property
     def here(self) -> str:
         """This page's own address within the house, for coming back to."""
@@ -61,9 +72,12 @@ class Visit:
 
 
 def here(request: Request) -> str:
-    """A request's own address within the house, without what was told at its top."""
+    """A request's own address within the house, without what was told at its top.
+
+    The front page for one that leads elsewhere once it stands in a link.
+    """
     query = [(k, v) for k, v in request.query_params.multi_items() if k != "said"]
-    return request.url.path + (f"?{urlencode(query)}" if query else "")
+    return own_path(request.url.path + (f"?{urlencode(query)}" if query else ""))
 
 
 def visiting(request: Request) -> Visit:

@@ -145,7 +145,10 @@ def serving(*words: str, store: Path) -> Iterator[tuple[subprocess.Popen[str], s
     program = "from stockroom.cli.main import run; run()"
     command = [sys.executable, "-c", program, "--store", str(store), "--as-at", "2027-01-04"]
     process = subprocess.Popen(
-        [*command, "serve", "--port", "0", *words], stderr=subprocess.PIPE, text=True
+        [*command, "serve", "--port", "0", *words],
+        stderr=subprocess.PIPE,
+        text=True,
+        preexec_fn=_heed_ctrl_c,
     )
     said: list[str] = []
     threading.Thread(target=_listen, args=(process, said), daemon=True).start()
@@ -156,6 +159,11 @@ def serving(*words: str, store: Path) -> Iterator[tuple[subprocess.Popen[str], s
         process.wait(10)
         assert process.stderr
         process.stderr.close()
+
+
+def _heed_ctrl_c() -> None:
+    # what a shell runs in the background is born deaf to it, and so is all that it runs
+    signal.signal(signal.SIGINT, signal.SIG_DFL)
 
 
 def _listen(process: subprocess.Popen[str], said: list[str]) -> None:

@@ -154,3 +154,20 @@ def test_what_was_made_and_is_good_today_only_is_still_poured_away(
     assert "Never return any to the bottle" in told.partition("S25 hydrogen peroxide")[2]
     # a bottle that keeps, and one from before the term, are nobody's tidying
     assert "S01 sodium thiosulfate 1.00 mol/dm³: pour away" not in told
+
+
+def test_what_a_class_had_of_a_bottle_thrown_away_since_is_still_told(
+    stockroom: Stockroom, own: Path
+) -> None:
+    """Made, drawn to the last drop for its class and thrown away, all on the class's day."""
+    at = ("--as-at", "2027-01-26", "--by", "T1")
+    made = stockroom("make", "hydrogen peroxide 0.100 mol/dm3", "528 cm3", *at, "--json", store=own)
+    bottle = made.json["bottle"]
+    assert stockroom("draw", bottle, "528 cm3", "--for", "K08", *at, store=own).code == 0
+    thrown = ("discard", bottle, "--how", "sink", "--why", "surplus")
+    assert stockroom(*thrown, *at, store=own).code == 0
+    for command in (("week",), ("day", "K08"), ("ready", "K08")):
+        told = stockroom(*command, *at, store=own)
+        assert (told.code in (0, 1), told.err) == (True, told.err)
+        assert "hydrogen peroxide" in told.said
+    assert bottle not in stockroom("past", *at, store=own).out

@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
+from dataclasses import fields, replace
 from datetime import date
+from typing import Any
 
 from stockroom.measure.amounts import Amount
-from stockroom.reports.diary_text import DiaryRow, diary_json, diary_text
+from stockroom.reports.diary_text import DiaryRow, diary_json, diary_rows, diary_text
 
 DRAWN = DiaryRow(
     7,
@@ -18,6 +19,14 @@ DRAWN = DiaryRow(
     left=Amount.cm3(2550),
     said="poured by eye",
 )
+
+
+def test_a_row_says_all_that_the_entry_says() -> None:
+    full = DRAWN
+    for number, each in enumerate(fields(DiaryRow)):
+        value: Any = f"value {number}"
+        full = replace(full, **{each.name: value})
+    assert list(diary_rows([full, DRAWN])) == [full, DRAWN]
 
 
 def told(entry: DiaryRow, *, practice: bool = False) -> list[str]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import contextlib
+import json
 from collections.abc import Callable
 from datetime import date, datetime
 from pathlib import Path
@@ -10,16 +11,17 @@ from pathlib import Path
 import pytest
 
 from stockroom import clock
-from stockroom.errors import BadInput, NotEnough, StockroomError
+from stockroom.errors import BadInput, NotEnough, SentOtherwise, StockroomError
 from stockroom.measure.amounts import Amount
 from stockroom.service import bookings, checks, stock
 from stockroom.service.answers import Done
-from stockroom.service.once import once
+from stockroom.service.once import answered, once
 from stockroom.store.engine import writing
 from stockroom.store.kinds import EntryKind
 from stockroom.store.ledger import Event, Stamp, append
 from stockroom.store.names import find_bottle
 from stockroom.store.reading import reading
+from stockroom.store.tables import Submission
 
 TODAY = date(2027, 1, 4)
 
@@ -140,3 +142,32 @@ def test_what_differs_is_not_asked_about(
     changed = {"by": {"by": "T2"}, "bottle": {"bottle": "S14"}, "booking": {"booking": "K06"}}
     second = drawn(own, 11 if other == "amount" else 10, **changed.get(other, {}))
     assert not any("a moment ago" in line for line in second.details)
+
+
+# -- what the token was drawn for --------------------------------------------------------
+
+
+def test_another_thing_under_the_same_token_is_refused_and_not_dropped(own: Path) -> None:
+    once(own, "a1", lambda: drawn(own), today=TODAY, by="T1", sent="ten")
+    before = written(own)
+    with pytest.raises(SentOtherwise, match="sent already with something else"):
+        once(own, "a1", lambda: drawn(own, 20), today=TODAY, by="T1", sent="twenty")
+    assert written(own) == before
+
+
+def test_the_same_thing_under_the_same_token_is_answered_as_before(own: Path) -> None:
+    first = once(own, "a1", lambda: drawn(own), today=TODAY, by="T1", sent="ten")
+    again = once(own, "a1", lambda: drawn(own), today=TODAY, by="T1", sent="ten")
+    assert again == first
+    with reading(own) as reader:
+        assert answered(reader, "a1") == first
+
+
+def test_an_answer_kept_before_there_was_a_digest_is_still_given(own: Path) -> None:
+    kept = {"text": "Drew 10 cm³ from S13", "details": []}
+    with writing(own) as session:
+        at = "2027-01-04 10:00:00"
+        said = json.dumps(kept)
+        session.add(Submission(token="a1", answer=said, entered_on=TODAY, entered_at=at, by="T1"))
+    told = once(own, "a1", lambda: drawn(own), today=TODAY, by="T1", sent="ten")
+    assert told.text == "Drew 10 cm³ from S13"

@@ -73,6 +73,7 @@ def rested(marks: Marks, path: Path) -> None:
     raise AssertionError(f"{path} is still held")
 
 
+@pytest.mark.file
 def test_asked_again_it_is_the_same(practice: Path, marks: Marks) -> None:
     first = marks.of(practice)
     term_plan(practice, as_at=TODAY)

@@ -15,26 +15,26 @@ if TYPE_CHECKING:
 OPEN_EVENING, OPEN_DAY = date(2027, 2, 10), date(2027, 3, 23)
 
 
-def test_yes_or_no_is_the_first_thing_said(window: Window) -> None:
-    page = window.get("/day/K15")
+def test_yes_or_no_is_the_first_thing_said(onlooker: Window) -> None:
+    page = onlooker.get("/day/K15")
     main = page.html.split("<main", 1)[1]
     said = main.index("NO, NOT YET: ")
     assert said < main.index("Wed 10 Feb 2027") < main.index("To do") < main.index("by the clock")
 
 
-def test_without_a_day_it_is_the_next_one_booked(window: Window) -> None:
-    assert "Tue 12 Jan 2027" in window.get("/day").text
-    assert "Wed 10 Feb 2027" in window.on(OPEN_EVENING).get("/day").text
+def test_without_a_day_it_is_the_next_one_booked(onlooker: Window) -> None:
+    assert "Tue 12 Jan 2027" in onlooker.get("/day").text
+    assert "Wed 10 Feb 2027" in onlooker.on(OPEN_EVENING).get("/day").text
 
 
-def test_a_booking_may_be_asked_for_by_its_number_or_its_day(window: Window) -> None:
-    assert "K15, Wed 10 Feb 2027" in window.get("/day", of="k15").text
-    assert "Wed 10 Feb 2027" in window.get("/day", of="10 Feb 2027").text
+def test_a_booking_may_be_asked_for_by_its_number_or_its_day(onlooker: Window) -> None:
+    assert "K15, Wed 10 Feb 2027" in onlooker.get("/day", of="k15").text
+    assert "Wed 10 Feb 2027" in onlooker.get("/day", of="10 Feb 2027").text
 
 
-def test_the_page_and_the_command_say_the_same(window: Window, stockroom: Stockroom) -> None:
-    told = stockroom("--as-at", "2027-03-15", "day", "K27", store=window.house.path).said  # type: ignore[arg-type]
-    page = window.on(date(2027, 3, 15)).get("/day/K27").text
+def test_the_page_and_the_command_say_the_same(onlooker: Window, stockroom: Stockroom) -> None:
+    told = stockroom("--as-at", "2027-03-15", "day", "K27", store=onlooker.house.path).said  # type: ignore[arg-type]
+    page = onlooker.on(date(2027, 3, 15)).get("/day/K27").text
     for said in (
         "NOT BEFORE 13:00: mix for K27 Silver mirror, never kept",
         "Mix not more than 30 min before use.",
@@ -44,8 +44,8 @@ def test_the_page_and_the_command_say_the_same(window: Window, stockroom: Stockr
         assert (said in told, said in page) == (True, True), said
 
 
-def test_found_expected_and_label_are_never_mixed(window: Window) -> None:
-    page = window.on(date(2027, 3, 15)).get("/day/K28").html
+def test_found_expected_and_label_are_never_mixed(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 3, 15)).get("/day/K28").html
     rows = page.split('class="strengths"')[1].split("</table>")[0].split("<tr>")[2:]
     told = [re.sub("<[^>]+>", "", row) for row in rows]
     assert [row for row in told if "expected: " not in row] == []
@@ -53,34 +53,34 @@ def test_found_expected_and_label_are_never_mixed(window: Window) -> None:
     assert "by dilution of B01, 88 vol expected, M" in told[1]
 
 
-def test_a_caution_stands_at_its_step(window: Window) -> None:
-    page = window.on(date(2027, 3, 15)).get("/day/K27").html
+def test_a_caution_stands_at_its_step(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 3, 15)).get("/day/K27").html
     step = page[page.index("NOT BEFORE 13:00") : page.index("START K27")]
     assert "Mix not more than 30 min before use." in step
 
 
-def test_what_is_to_do_leads_to_its_form_and_its_reasons(window: Window) -> None:
-    page = window.on(date(2027, 1, 25)).get("/day/K07").html
+def test_what_is_to_do_leads_to_its_form_and_its_reasons(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 1, 25)).get("/day/K07").html
     assert 'href="/do/make?line=glucose+1.0+%25+w%2Fv&amp;volume=88+cm3&amp;sources=B25' in page
     assert "&amp;back=%2Fday%2FK07" in page or "&amp;back=/day/K07" in page
     assert 'href="/why?ref=M01"' in page
 
 
-def test_days_before_and_after_and_the_whole_day_are_one_click_away(window: Window) -> None:
-    page = window.on(OPEN_DAY).get("/day/K27").html
+def test_days_before_and_after_and_the_whole_day_are_one_click_away(onlooker: Window) -> None:
+    page = onlooker.on(OPEN_DAY).get("/day/K27").html
     assert 'href="/day/2027-03-18"' in page
     assert 'href="/day/2027-03-23"' in page
     assert 'href="/paper/slip.pdf?ref=K27"' in page
 
 
-def test_what_was_never_kept_can_be_ticked_on_its_day_only(window: Window) -> None:
+def test_what_was_never_kept_can_be_ticked_on_its_day_only(onlooker: Window) -> None:
     ticked = "/do/destroyed?booking=K27"
-    assert ticked not in window.on(date(2027, 3, 22)).get("/day/K27").html
-    assert ticked in window.on(OPEN_DAY).get("/day/K27").html
+    assert ticked not in onlooker.on(date(2027, 3, 22)).get("/day/K27").html
+    assert ticked in onlooker.on(OPEN_DAY).get("/day/K27").html
 
 
-def test_the_ten_lines_stand_on_it(window: Window) -> None:
-    page = window.get("/day/K15").html
+def test_the_ten_lines_stand_on_it(onlooker: Window) -> None:
+    page = onlooker.get("/day/K15").html
     lines = page.split('<pre class="phone">')[1].split("</pre>")[0].splitlines()
     assert 1 < len(lines) <= 10
     assert max(map(len, lines)) <= 38
@@ -100,8 +100,8 @@ def test_a_booking_that_fell_out_says_so_and_comes_back(window: Window) -> None:
     assert "It falls out" in again.text
 
 
-def test_a_day_with_nothing_booked_says_so(window: Window) -> None:
-    page = window.get("/day/2027-01-09")
+def test_a_day_with_nothing_booked_says_so(onlooker: Window) -> None:
+    page = onlooker.get("/day/2027-01-09")
     assert page.status == 200
     assert "Nothing booked" in page.text
     assert 'href="/day/2027-01-12"' in page.html
@@ -117,11 +117,11 @@ def test_a_day_with_nothing_booked_says_so(window: Window) -> None:
     ],
 )
 def test_what_is_no_day_and_no_booking_is_refused(
-    window: Window, ref: str, status: int, said: str
+    onlooker: Window, ref: str, status: int, said: str
 ) -> None:
-    page = window.get(f"/day/{ref}")
+    page = onlooker.get(f"/day/{ref}")
     assert (page.status, said in page.html) == (status, True)
 
 
-def test_a_reference_without_end_is_refused(window: Window) -> None:
-    assert window.get(f"/day/{'K' * 300}").status == 422
+def test_a_reference_without_end_is_refused(onlooker: Window) -> None:
+    assert onlooker.get(f"/day/{'K' * 300}").status == 422

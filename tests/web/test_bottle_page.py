@@ -23,41 +23,41 @@ def said(page: Answer) -> str:
     return re.sub(r" ([,.:;])", r"\1", page.text)
 
 
-def test_a_number_is_found_in_small_letters_and_large(window: Window) -> None:
+def test_a_number_is_found_in_small_letters_and_large(onlooker: Window) -> None:
     for number in ("b01", "B01"):
-        assert "B01 hydrogen peroxide 100 vol" in window.get(f"/bottle/{number}").text
+        assert "B01 hydrogen peroxide 100 vol" in onlooker.get(f"/bottle/{number}").text
 
 
-def test_an_unknown_number_is_404_with_the_nearest_three(window: Window) -> None:
-    page = window.get("/bottle/S99")
+def test_an_unknown_number_is_404_with_the_nearest_three(onlooker: Window) -> None:
+    page = onlooker.get("/bottle/S99")
     assert (page.status, 'No bottle "S99"' in page.text) == (404, True)
     assert len(re.findall(r"\b[BS]\d\d\b", page.text.partition("Nearest")[2])) == 3
 
 
 @pytest.mark.parametrize("number", ["x" * 201, "%00", "S01%27%20OR%201", "..%2F..%2Fetc", "<b>"])
-def test_what_is_no_number_finds_nothing(window: Window, number: str) -> None:
-    page = window.get(f"/bottle/{number}")
+def test_what_is_no_number_finds_nothing(onlooker: Window, number: str) -> None:
+    page = onlooker.get(f"/bottle/{number}")
     assert page.status in (400, 404, 422)
     assert "<b>" not in page.html
 
 
-def test_the_three_strengths_stand_apart(window: Window) -> None:
-    text = window.get("/bottle/B01").text
+def test_the_three_strengths_stand_apart(onlooker: Window) -> None:
+    text = onlooker.get("/bottle/B01").text
     told = text.partition("Its strength")[2].partition("The picture")[0]
     assert "label 100 vol" in told
     assert "found 91 vol on Tue 8 Dec 2026" in told
     assert "expected 90 vol, from what its last result was" in told
 
 
-def test_its_days_are_told_and_a_printed_one_as_it_is_printed(window: Window) -> None:
-    text = window.get("/bottle/B01").text
+def test_its_days_are_told_and_a_printed_one_as_it_is_printed(onlooker: Window) -> None:
+    text = onlooker.get("/bottle/B01").text
     assert "received 14 Sep 2026 opened 29 Sep 2026" in text
     assert 'printed on it "03/2027", read as 31 Mar 2027' in text
     assert "recheck by 8 Mar 2027" in text
 
 
-def test_its_fade_is_a_picture_with_words_beside_it(window: Window) -> None:
-    page = window.get("/bottle/B01")
+def test_its_fade_is_a_picture_with_words_beside_it(onlooker: Window) -> None:
+    page = onlooker.get("/bottle/B01")
     alt = re.search(
         r'<img class="picture" src="/picture/fade/B01.svg"[^>]* alt="([^"]*)"', page.html
     )
@@ -67,31 +67,31 @@ def test_its_fade_is_a_picture_with_words_beside_it(window: Window) -> None:
 
 
 @pytest.mark.parametrize("number", ["B06", "S12", "B36"])
-def test_where_nothing_fades_there_is_no_picture(window: Window, number: str) -> None:
-    assert "/picture/fade/" not in window.get(f"/bottle/{number}").html
+def test_where_nothing_fades_there_is_no_picture(onlooker: Window, number: str) -> None:
+    assert "/picture/fade/" not in onlooker.get(f"/bottle/{number}").html
 
 
-def test_who_it_is_promised_to_is_told_with_the_way_there(window: Window) -> None:
-    page = window.get("/bottle/S02")
+def test_who_it_is_promised_to_is_told_with_the_way_there(onlooker: Window) -> None:
+    page = onlooker.get("/bottle/S02")
     assert "1 056 cm³ of it is promised" in page.text
     assert 'href="/day/K21"' in page.html
     assert 'href="/why?ref=K21.4"' in page.html
 
 
-def test_what_cannot_be_counted_on_says_whom_it_matters_for(window: Window) -> None:
-    page = window.on(date(2027, 1, 25)).get("/bottle/S03")
+def test_what_cannot_be_counted_on_says_whom_it_matters_for(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 1, 25)).get("/bottle/S03")
     assert "it cannot be counted on; it matters for K08, K09" in said(page)
 
 
-def test_its_hazards_are_those_of_its_strength(window: Window) -> None:
-    text = said(window.get("/bottle/B14"))
+def test_its_hazards_are_those_of_its_strength(onlooker: Window) -> None:
+    text = said(onlooker.get("/bottle/B14"))
     assert "Danger: corrosion, exclamation mark" in text
     assert "H314 Causes severe skin burns and eye damage" in text
     assert text.index("open the strong bottle in the fume cupboard") < text.index("Drawn Some")
 
 
-def test_the_likely_events_stand_open_and_the_rest_is_folded(window: Window) -> None:
-    page = window.get("/bottle/S13")
+def test_the_likely_events_stand_open_and_the_rest_is_folded(onlooker: Window) -> None:
+    page = onlooker.get("/bottle/S13")
     assert forms(page, folded=False)[0] == "draw"
     assert {"spill", "move", "discard"} <= set(forms(page, folded=True))
     ids = re.findall(r'\bid="([^"]+)"', page.html)
@@ -109,9 +109,9 @@ def test_the_likely_events_stand_open_and_the_rest_is_folded(window: Window) -> 
     ],
 )
 def test_each_sort_of_bottle_offers_what_it_needs(
-    window: Window, number: str, mark: str, first: str
+    onlooker: Window, number: str, mark: str, first: str
 ) -> None:
-    page = window.get(f"/bottle/{number}")
+    page = onlooker.get(f"/bottle/{number}")
     assert f'<p class="stands"><span class="mark mark-{mark}">' in page.html
     assert forms(page, folded=False)[0] == first
 
@@ -154,6 +154,6 @@ def test_both_ends_of_a_decanting_name_each_other(window: Window) -> None:
     assert "Decanted from B14 hydrochloric acid" in window.get(f"/bottle/{child[1]}").text
 
 
-def test_a_day_before_it_came_says_that_it_was_not_there_yet(window: Window) -> None:
-    page = window.on(date(2020, 1, 6)).get("/bottle/S13")
+def test_a_day_before_it_came_says_that_it_was_not_there_yet(onlooker: Window) -> None:
+    page = onlooker.on(date(2020, 1, 6)).get("/bottle/S13")
     assert (page.status, "S13 was not there yet on 2020-01-06" in page.text) == (404, True)

@@ -234,8 +234,8 @@ def test_a_list_is_held_for_its_own_visit_alone(window: Window) -> None:
 
 
 @pytest.mark.parametrize("token", ["x", "..%2F..%2Fetc%2Fpasswd", "%F0%9F%92%A5"])
-def test_a_token_of_nothing_leads_nowhere(window: Window, token: str) -> None:
-    assert window.get(f"/bring-in/{token}").status == 404
+def test_a_token_of_nothing_leads_nowhere(onlooker: Window, token: str) -> None:
+    assert onlooker.get(f"/bring-in/{token}").status == 404
 
 
 def test_it_is_held_where_nobody_else_can_read(window: Window, folder: Path) -> None:

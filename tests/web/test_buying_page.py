@@ -30,8 +30,8 @@ def pressed(window: Window, one: Order, **more: str) -> Any:
     return window.enter("order-planned", order=one.id, meant=one.wanted, back="/buying", **more)
 
 
-def test_each_order_says_when_what_for_whom_and_why(window: Window) -> None:
-    text = window.on(BUSY).get("/buying").text
+def test_each_order_says_when_what_for_whom_and_why(onlooker: Window) -> None:
+    text = onlooker.on(BUSY).get("/buying").text
     assert "5 orders, £80.00 in all; 2 late already." in text
     assert "order by Mon 18 Jan 2027 late by 5 open days ascorbic acid , 1 × 100 g, £9.60" in text
     assert "needed Wed 3 Feb 2027 for K12 , K14" in text
@@ -40,19 +40,19 @@ def test_each_order_says_when_what_for_whom_and_why(window: Window) -> None:
     assert "100 g lasts 8.5 years at this rate" in text
 
 
-def test_the_same_orders_stand_on_the_page_and_in_the_plan(window: Window) -> None:
-    shown = re.findall(r'<li id="(O\d+)">', window.get("/buying").html)
-    assert sorted(shown) == [one.id for one in orders(window)]
+def test_the_same_orders_stand_on_the_page_and_in_the_plan(onlooker: Window) -> None:
+    shown = re.findall(r'<li id="(O\d+)">', onlooker.get("/buying").html)
+    assert sorted(shown) == [one.id for one in orders(onlooker)]
 
 
-def test_the_line_that_stock_falls_below_is_named_with_its_day(window: Window) -> None:
-    text = window.on(BUSY).get("/buying").text
+def test_the_line_that_stock_falls_below_is_named_with_its_day(onlooker: Window) -> None:
+    text = onlooker.on(BUSY).get("/buying").text
     assert "Falls below the line on" in text
     assert "Thu 4 Mar 2027 sulfuric acid 2.00 mol/dm³ 875.4 cm³ 1 000 cm³ not this term" in text
 
 
-def test_money_is_told_to_the_penny_and_what_is_over_in_words(window: Window) -> None:
-    text = window.on(BUSY).get("/buying").text
+def test_money_is_told_to_the_penny_and_what_is_over_in_words(onlooker: Window) -> None:
+    text = onlooker.on(BUSY).get("/buying").text
     assert "BI biology £0.00 £26.80 £25.00 £1.80 over" in text
     assert "All £0.00 £80.00" in text
 
@@ -66,13 +66,13 @@ def test_a_press_records_the_order_and_puts_it_on_its_way(window: Window) -> Non
     assert "P01" in told.html.split('id="coming"')[1]
 
 
-def test_every_button_carries_what_its_number_stands_for(window: Window) -> None:
-    page = window.get("/buying").html
+def test_every_button_carries_what_its_number_stands_for(onlooker: Window) -> None:
+    page = onlooker.get("/buying").html
     sent = re.findall(
         r'name="order" value="(O\d+)">\s*<input[^>]*name="meant" value="([^"]*)"', page
     )
     assert {(number, unescape(meant)) for number, meant in sent} == {
-        (one.id, one.wanted) for one in orders(window)
+        (one.id, one.wanted) for one in orders(onlooker)
     }
 
 
@@ -136,7 +136,7 @@ def test_what_is_overdue_says_by_how_much(window: Window) -> None:
     assert "expected Mon 18 Jan 2027 5 open days overdue" in text
 
 
-def test_looking_writes_nothing(window: Window) -> None:
-    before = window.house.path.read_bytes()  # type: ignore[union-attr]
-    window.get("/buying")
-    assert window.house.path.read_bytes() == before  # type: ignore[union-attr]
+def test_looking_writes_nothing(onlooker: Window) -> None:
+    before = onlooker.house.path.read_bytes()  # type: ignore[union-attr]
+    onlooker.get("/buying")
+    assert onlooker.house.path.read_bytes() == before  # type: ignore[union-attr]

@@ -4,8 +4,16 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
+from stockroom.store.reading import reading
+
 if TYPE_CHECKING:
     from windows import Window
+
+
+def entries(window: Window) -> int:
+    with reading(window.house.path) as reader:
+        [[count]] = reader.ask("SELECT COUNT(*) FROM entry")
+    return int(count)
 
 
 def test_a_draw_is_saved_and_told_where_it_was_opened(window: Window) -> None:
@@ -19,6 +27,35 @@ def test_sent_twice_a_draw_counts_once(window: Window) -> None:
     for _ in range(2):
         told = window.enter("draw", bottle="S13", amount="100 cm3", once="the same")
         assert "30 cm³ left" in told.text
+
+
+def test_something_else_under_the_token_of_a_page_is_refused_and_told(window: Window) -> None:
+    window.post("/initials", initials="T1", back="/enter")
+    window.post("/line", line="S13 1 cm3", once="the same", back="/enter")
+    before = entries(window)
+    for told in (
+        window.post("/line", line="S10 20 cm3", once="the same", back="/enter"),
+        window.enter("lost", bottle="S10", once="the same"),
+        window.enter("draw", bottle="S13", amount="2 cm3", once="the same"),
+    ):
+        assert (told.status, "sent already with something else" in told.text) == (409, True)
+        # the page that says so can be sent
+        assert told.field("once") != "the same"
+    assert entries(window) == before
+    assert "129 cm³ left" in window.post("/line", line="S13 1 cm3", once="the same").text
+
+
+def test_what_was_mended_can_be_sent_from_the_page_that_refused_it(window: Window) -> None:
+    window.enter("draw", bottle="S13", amount="1 cm3", once="the same")
+    again = window.enter("draw", bottle="S13", amount="2 cm3", once="the same")
+    mended = {name: again.field(name) for name in ("bottle", "amount", "once")}
+    assert "127 cm³ left" in window.enter("draw", **mended).text
+
+
+def test_a_day_chosen_meanwhile_makes_the_same_words_another_event(window: Window) -> None:
+    window.enter("draw", bottle="S13", amount="1 cm3", once="the same")
+    window.post("/as-at", as_at="2027-01-05", back="/enter")
+    assert window.enter("draw", bottle="S13", amount="1 cm3", once="the same").status == 409
 
 
 def test_a_refusal_stands_beside_its_field_and_keeps_what_was_typed(window: Window) -> None:

@@ -56,14 +56,14 @@ def test_a_number_or_a_name_leads_to_its_page(window: Window) -> None:
     }
 
 
-def test_a_link_leads_where_the_line_would_and_enters_nothing(window: Window) -> None:
-    came = window.client.get("/go", params={"what": "K15"}, follow_redirects=False)
+def test_a_link_leads_where_the_line_would_and_enters_nothing(onlooker: Window) -> None:
+    came = onlooker.client.get("/go", params={"what": "K15"}, follow_redirects=False)
     assert came.headers["location"] == "/day/K15"
-    shown = window.get("/go", what="S13 100 cm3 K16")
+    shown = onlooker.get("/go", what="S13 100 cm3 K16")
     assert [shown.field(each) for each in ("bottle", "amount", "booking")] == [
         "S13", "100 cm3", "K16",
     ]  # fmt: skip
-    assert "Entry 179" not in window.get("/do/put-right", entry="179").text
+    assert "Entry 179" not in onlooker.get("/do/put-right", entry="179").text
 
 
 @pytest.mark.parametrize("typed", DRAWN)
@@ -127,6 +127,38 @@ def test_a_number_nobody_gave_is_told_with_the_nearest(
     told = window.post("/line", line=typed)
     assert told.status == 404
     assert f"Nearest: {nearest}" in told.text.replace(" ;", ";")
+
+
+@pytest.mark.parametrize("typed", ["K99", "r77", "x" * 201, '"><b>' * 41])
+def test_what_leads_nowhere_stands_in_the_line_again_with_why_beside_it(
+    window: Window, typed: str
+) -> None:
+    told = window.post("/line", line=typed, back="/enter?a=b")
+    assert (told.status in (404, 422), told.field("line")) == (True, typed)
+    assert 'aria-invalid="true" aria-describedby="line-wrong"' in told.html
+    assert 'id="line-wrong"' in told.html
+    assert "<b>" not in told.html
+    assert told.field("back") == "/enter?a=b"
+
+
+def test_the_nearest_numbers_are_links_and_a_link_that_leads_nowhere_says_the_same(
+    window: Window,
+) -> None:
+    for told in (window.post("/line", line="K99"), window.get("/go", what="K99")):
+        assert (told.status, '<a href="/day/K09">K09</a>' in told.html) == (404, True)
+        assert told.field("line") == "K99"
+
+
+def test_a_draw_mended_in_the_line_comes_back_to_where_it_was_typed(window: Window) -> None:
+    window.post("/initials", initials="T1", back="/enter")
+    wrong = window.post("/line", line="S99", back="/enter")
+    told = window.post("/line", line="S13 100 cm3", back=wrong.field("back"))
+    assert ("/enter?said=" in told.at, "30 cm³ left" in told.text) == (True, True)
+
+
+def test_a_way_back_that_leads_elsewhere_is_not_followed_from_the_line(window: Window) -> None:
+    wrong = window.post("/line", line="S99", back="//elsewhere.example/x")
+    assert "elsewhere.example" not in wrong.html
 
 
 def test_whoever_only_reads_goes_where_the_line_says_and_draws_nothing(window: Window) -> None:

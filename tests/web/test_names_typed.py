@@ -33,20 +33,20 @@ def _names(window: Window, kind: str, of: str) -> list[str]:
         ("all", "iodine clock", "K08"),
     ],
 )
-def test_any_name_of_a_thing_finds_it(window: Window, kind: str, of: str, first: str) -> None:
-    assert _names(window, kind, of)[0].startswith(first)
+def test_any_name_of_a_thing_finds_it(onlooker: Window, kind: str, of: str, first: str) -> None:
+    assert _names(onlooker, kind, of)[0].startswith(first)
 
 
-def test_at_most_twelve_are_offered_each_told_from_the_others(window: Window) -> None:
-    found: Any = window.api("/names", kind="bottle", of="b")
+def test_at_most_twelve_are_offered_each_told_from_the_others(onlooker: Window) -> None:
+    found: Any = onlooker.api("/names", kind="bottle", of="b")
     assert len(found) == 12
     assert found[0] == {"value": "B01", "words": "B01 hydrogen peroxide 100 vol"}
     assert len({each["words"] for each in found}) == 12
 
 
-def test_the_name_that_was_typed_stands_in_the_words(window: Window) -> None:
+def test_the_name_that_was_typed_stands_in_the_words(onlooker: Window) -> None:
     # a browser leaves out of its list what does not hold the signs typed
-    found: Any = window.api("/names", kind="line", of="hypo")
+    found: Any = onlooker.api("/names", kind="line", of="hypo")
     assert all("hypo" in each["words"] for each in found)
 
 
@@ -59,12 +59,12 @@ def test_what_was_thrown_away_is_not_offered(window: Window) -> None:
 
 
 @pytest.mark.parametrize("of", ["", "  ", "zzzzqq", "'; DROP TABLE bottle; --"])
-def test_nothing_like_it_is_an_empty_answer(window: Window, of: str) -> None:
-    assert _names(window, "bottle", of) == []
+def test_nothing_like_it_is_an_empty_answer(onlooker: Window, of: str) -> None:
+    assert _names(onlooker, "bottle", of) == []
 
 
 @pytest.mark.parametrize(
     "query", [{"kind": "cats", "of": "x"}, {"kind": "x" * 99, "of": "x"}, {"of": "x" * 101}]
 )
-def test_a_question_nobody_may_ask_is_refused(window: Window, query: dict[str, str]) -> None:
-    assert window.get("/names", **query).status == 422
+def test_a_question_nobody_may_ask_is_refused(onlooker: Window, query: dict[str, str]) -> None:
+    assert onlooker.get("/names", **query).status == 422

@@ -20,9 +20,9 @@ if TYPE_CHECKING:
     ],
 )
 def test_each_picture_is_what_its_name_says(
-    window: Window, path: str, kind: str, begins: bytes
+    onlooker: Window, path: str, kind: str, begins: bytes
 ) -> None:
-    came = window.client.get(path)
+    came = onlooker.client.get(path)
     assert (came.status_code, came.headers["content-type"]) == (200, kind)
     assert came.content.startswith(begins)
     assert came.headers["cache-control"] == "no-store"
@@ -38,14 +38,14 @@ def test_each_picture_is_what_its_name_says(
     ],
 )
 def test_where_there_is_nothing_to_draw_it_is_404_in_words(
-    window: Window, path: str, said: str
+    onlooker: Window, path: str, said: str
 ) -> None:
-    page = window.get(path)
+    page = onlooker.get(path)
     assert (page.status, said in page.text) == (404, True)
 
 
 @pytest.mark.parametrize(
     "path", ["/picture/fade/B01.exe", "/picture/load.pdf", "/picture/level.svg", "/picture/x.svg"]
 )
-def test_what_is_no_picture_is_refused(window: Window, path: str) -> None:
-    assert window.get(path).status in (404, 422)
+def test_what_is_no_picture_is_refused(onlooker: Window, path: str) -> None:
+    assert onlooker.get(path).status in (404, 422)

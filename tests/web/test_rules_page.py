@@ -39,8 +39,8 @@ def changed(window: Window, table: str, key: str, **cells: str) -> Answer:
 # -- reading --------------------------------------------------------------------------
 
 
-def test_every_part_of_the_house_is_shown(window: Window) -> None:
-    page = window.get("/rules").text
+def test_every_part_of_the_house_is_shown(onlooker: Window) -> None:
+    page = onlooker.get("/rules").text
     assert "starch 0.5 % w/v life: 3 days from made starter value" in page
     assert "A1 acids cupboard 19 °C acid" in page
     assert "BAL2 0.001 g 1 Feb 2027 to 12 Feb 2027" in page
@@ -50,25 +50,25 @@ def test_every_part_of_the_house_is_shown(window: Window) -> None:
     assert "Staffed from 08:00" in page
 
 
-def test_words_leave_only_the_lines_that_hold_them(window: Window) -> None:
-    page = window.get("/rules", what="THIO 0.200").text
+def test_words_leave_only_the_lines_that_hold_them(onlooker: Window) -> None:
+    page = onlooker.get("/rules", what="THIO 0.200").text
     assert "sodium thiosulfate 0.200 mol/dm³" in page
     assert "starch" not in page
     assert "acids cupboard" not in page
 
 
-def test_a_line_shows_whose_each_rule_is_and_its_source(window: Window) -> None:
-    page = window.get("/rules", line=STARCH).text
+def test_a_line_shows_whose_each_rule_is_and_its_source(onlooker: Window) -> None:
+    page = onlooker.get("/rules", line=STARCH).text
     assert "life: 3 days from made starter value; Bench experience" in page
     assert "common practice, no source" in page
 
 
-def test_a_bottles_number_opens_its_line(window: Window) -> None:
-    assert "How hydrogen peroxide 100 vol keeps" in window.get("/rules", line="B01").text
+def test_a_bottles_number_opens_its_line(onlooker: Window) -> None:
+    assert "How hydrogen peroxide 100 vol keeps" in onlooker.get("/rules", line="B01").text
 
 
-def test_a_line_nobody_knows_is_a_404_with_the_nearest(window: Window) -> None:
-    page = window.get("/rules", line="starsh 0.5")
+def test_a_line_nobody_knows_is_a_404_with_the_nearest(onlooker: Window) -> None:
+    page = onlooker.get("/rules", line="starsh 0.5")
     assert (page.status, "starch 0.5" in page.text) == (404, True)
 
 
@@ -214,16 +214,16 @@ def test_a_row_refused_adds_nothing(
     ],
 )
 def test_tables_with_other_forms_are_not_written_here(
-    window: Window, path: str, status: int
+    onlooker: Window, path: str, status: int
 ) -> None:
-    assert window.get(path).status == status
+    assert onlooker.get(path).status == status
 
 
-def test_every_table_that_may_be_added_to_has_a_form(window: Window) -> None:
+def test_every_table_that_may_be_added_to_has_a_form(onlooker: Window) -> None:
     from stockroom.web.forms.house import ADDED
 
     for table in ADDED:
-        assert window.get(f"/rules/add/{table}").status == 200, table
+        assert onlooker.get(f"/rules/add/{table}").status == 200, table
 
 
 # -- the same in one form, as the API has it ------------------------------------------

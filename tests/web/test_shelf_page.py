@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from datetime import date
+from pathlib import Path
 from typing import TYPE_CHECKING
 
 import pytest
@@ -22,48 +23,48 @@ def said(page: Answer) -> str:
     return re.sub(r" ([,.:;])", r"\1", page.text)
 
 
-def test_without_a_filter_every_bottle_is_listed_and_counted(window: Window) -> None:
-    page = window.get("/shelf")
+def test_without_a_filter_every_bottle_is_listed_and_counted(onlooker: Window) -> None:
+    page = onlooker.get("/shelf")
     assert page.status == 200
     assert f"All shelves: {len(numbers(page))} bottles on Mon 4 Jan 2027" in page.text
 
 
-def test_any_name_of_a_thing_finds_it(window: Window) -> None:
-    page = window.get("/shelf", what="hypo")
+def test_any_name_of_a_thing_finds_it(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", what="hypo")
     assert {"B06", "S01", "S02"} <= set(numbers(page))
     assert "hydrochloric" not in page.text
 
 
-def test_a_place_tells_first_what_must_not_stand_together(window: Window) -> None:
-    page = window.get("/shelf", place="a1")
+def test_a_place_tells_first_what_must_not_stand_together(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", place="a1")
     assert "B04: stands beside B13, B14, B15 in A1" in said(page)
     assert page.text.index("chlorine if they meet") < page.text.index("610 of 1 000 cm³")
     assert '<option value="A1" selected>' in page.html
     assert "/paper/walk.pdf?places=A1" in page.html
 
 
-def test_name_place_and_condition_together_leave_only_what_fits_all(window: Window) -> None:
-    everywhere = numbers(window.get("/shelf", what="hydrogen peroxide", condition="past"))
-    there = window.get("/shelf", what="hydrogen peroxide", place="A3", condition="past")
+def test_name_place_and_condition_together_leave_only_what_fits_all(onlooker: Window) -> None:
+    everywhere = numbers(onlooker.get("/shelf", what="hydrogen peroxide", condition="past"))
+    there = onlooker.get("/shelf", what="hydrogen peroxide", place="A3", condition="past")
     assert numbers(there) == ["B03"]
     assert len(everywhere) > 1
     assert there.field("what") == "hydrogen peroxide"
     assert "hydrogen peroxide in A3: 1 of 3 bottles" in said(there)
 
 
-def test_a_condition_stands_as_its_mark_and_its_word(window: Window) -> None:
-    page = window.get("/shelf", what="B28")
+def test_a_condition_stands_as_its_mark_and_its_word(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", what="B28")
     assert 'class="mark mark-not-found"' in page.html
     assert "not found when last looked for" in page.text
 
 
-def test_promised_bottles_link_to_who_they_are_promised_to(window: Window) -> None:
-    page = window.get("/shelf", what="S02")
+def test_promised_bottles_link_to_who_they_are_promised_to(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", what="S02")
     assert 'href="/day/K21"' in page.html
 
 
-def test_each_bottle_can_be_drawn_from_and_counted_at_once(window: Window) -> None:
-    page = window.get("/shelf", place="A2")
+def test_each_bottle_can_be_drawn_from_and_counted_at_once(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", place="A2")
     assert "/do/count?bottle=B06&amp;back=%2Fshelf%3Fplace%3DA2" in page.html
     assert "/do/draw?bottle=B06&amp;back=" in page.html
     # nobody draws from what cannot be found
@@ -71,29 +72,29 @@ def test_each_bottle_can_be_drawn_from_and_counted_at_once(window: Window) -> No
     assert "/do/turned-up?bottle=B28" in page.html
 
 
-def test_sorted_by_how_long_they_are_good_the_longest_past_is_first(window: Window) -> None:
-    page = window.get("/shelf", order="until", condition="past")
+def test_sorted_by_how_long_they_are_good_the_longest_past_is_first(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", order="until", condition="past")
     assert numbers(page)[0] == "B03"
     assert "sort by place" in page.text
 
 
-def test_an_unknown_name_is_404_with_the_nearest_as_links(window: Window) -> None:
-    page = window.get("/shelf", what="sodium thiosulphat 7")
+def test_an_unknown_name_is_404_with_the_nearest_as_links(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", what="sodium thiosulphat 7")
     assert page.status == 404
     assert page.field("what") == "sodium thiosulphat 7"
     nearest = re.search(r'<a href="(/shelf\?what=[^"]+)">', page.html)
     assert nearest
-    assert window.get(nearest[1]).status == 200
+    assert onlooker.get(nearest[1]).status == 200
 
 
-def test_a_filter_that_nothing_fits_is_no_error_and_shows_the_way_out(window: Window) -> None:
-    page = window.get("/shelf", place="A1", condition="weak")
+def test_a_filter_that_nothing_fits_is_no_error_and_shows_the_way_out(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", place="A1", condition="weak")
     assert (page.status, numbers(page)) == (200, [])
     assert "No bottle fits. Without the condition there are 4: show them." in said(page)
 
 
-def test_what_is_typed_is_shown_as_text_and_never_as_markup(window: Window) -> None:
-    page = window.get("/shelf", what='"><script>alert(1)</script>')
+def test_what_is_typed_is_shown_as_text_and_never_as_markup(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", what='"><script>alert(1)</script>')
     assert "<script>alert" not in page.html
     assert page.field("what") == '"><script>alert(1)</script>'
 
@@ -112,26 +113,42 @@ def test_what_is_typed_is_shown_as_text_and_never_as_markup(window: Window) -> N
     ],
 )
 def test_what_cannot_be_read_is_refused_in_words(
-    window: Window, query: dict[str, str], status: int, told: str
+    onlooker: Window, query: dict[str, str], status: int, told: str
 ) -> None:
-    page = window.get("/shelf", **query)
+    page = onlooker.get("/shelf", **query)
     assert page.status == status
     assert told in page.text
 
 
-def test_a_page_past_the_last_is_the_last(window: Window) -> None:
-    assert "B01" in numbers(window.get("/shelf", page="99999"))
+def test_a_page_past_the_last_is_the_last(onlooker: Window) -> None:
+    assert "B01" in numbers(onlooker.get("/shelf", page="99999"))
 
 
-def test_another_day_is_a_forecast_or_as_it_was_known(window: Window) -> None:
-    ahead = window.get("/shelf", what="S09", on="2027-03-01")
+def test_another_day_is_a_forecast_or_as_it_was_known(onlooker: Window) -> None:
+    ahead = onlooker.get("/shelf", what="S09", on="2027-03-01")
     assert "a forecast: if nothing happens until then" in ahead.text
-    before = window.get("/shelf", what="S09", on="2026-12-20", known_on="2026-12-20")
+    before = onlooker.get("/shelf", what="S09", on="2026-12-20", known_on="2026-12-20")
     assert "as it was known on Sun 20 Dec 2026" in before.text
     assert "Promised to" not in before.text
 
 
-def test_looked_at_from_another_day_the_shelf_is_that_day_s(window: Window) -> None:
+def test_looked_at_from_another_day_the_shelf_is_that_day_s(onlooker: Window) -> None:
     past = {"what": "S02", "condition": "watch"}
-    assert numbers(window.get("/shelf", **past)) == []
-    assert numbers(window.on(date(2027, 1, 25)).get("/shelf", **past)) == ["S02"]
+    assert numbers(onlooker.get("/shelf", **past)) == []
+    assert numbers(onlooker.on(date(2027, 1, 25)).get("/shelf", **past)) == ["S02"]
+
+
+def test_a_name_nobody_knows_still_offers_every_place_from_one_call(
+    onlooker: Window, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    from stockroom.service import shelf_planned
+
+    read, places = list[object](), shelf_planned.places
+
+    def counted(path: Path) -> object:
+        read.append(path)
+        return places(path)
+
+    monkeypatch.setattr(shelf_planned, "places", counted)
+    page = onlooker.get("/shelf", what="no such thing at all").html
+    assert ('<option value="A1"' in page, len(read)) == (True, 1)

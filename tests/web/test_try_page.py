@@ -25,8 +25,8 @@ def wrong(page: Answer) -> list[str]:
     return re.findall(r'<input id="([^"]+)"[^>]*aria-invalid', page.html)
 
 
-def test_only_the_difference_is_told_each_with_its_cause(window: Window) -> None:
-    told = tried(window, ("groups", "K08"), ("number", "11"), ("without", "S03"))
+def test_only_the_difference_is_told_each_with_its_cause(onlooker: Window) -> None:
+    told = tried(onlooker, ("groups", "K08"), ("number", "11"), ("without", "S03"))
     assert "7 changes if so" in told.text.lower()
     assert "if K08 8 → 11 groups; without S03" in told.text
     assert "hydrogen peroxide 0.100 mol/dm³: 528 cm³ → 726 cm³: K08 8 → 11 groups" in told.text
@@ -34,26 +34,26 @@ def test_only_the_difference_is_told_each_with_its_cause(window: Window) -> None
     assert told.field("without") == "S03"
 
 
-def test_nothing_changing_is_said(window: Window) -> None:
-    told = tried(window, ("without", "B20"))
+def test_nothing_changing_is_said(onlooker: Window) -> None:
+    told = tried(onlooker, ("without", "B20"))
     assert (told.status, "Nothing would change" in told.text) == (200, True)
 
 
-def test_empty_it_only_asks(window: Window) -> None:
-    told = window.get("/try")
+def test_empty_it_only_asks(onlooker: Window) -> None:
+    told = onlooker.get("/try")
     assert (told.status, "if so" in told.text, len(wrong(told))) == (200, False, 0)
 
 
-def test_trying_writes_nothing(window: Window) -> None:
-    before = window.house.path.read_bytes()  # type: ignore[union-attr]
-    tried(window, ("cancel", "K08"), ("book", "R01"), ("on", "2027-02-11"), ("for", "12"))
-    assert window.house.path.read_bytes() == before  # type: ignore[union-attr]
+def test_trying_writes_nothing(onlooker: Window) -> None:
+    before = onlooker.house.path.read_bytes()  # type: ignore[union-attr]
+    tried(onlooker, ("cancel", "K08"), ("book", "R01"), ("on", "2027-02-11"), ("for", "12"))
+    assert onlooker.house.path.read_bytes() == before  # type: ignore[union-attr]
 
 
-def test_what_was_tried_is_really_done_by_a_form_filled_in(window: Window) -> None:
-    told = tried(window, ("groups", "K08"), ("number", "11"))
+def test_what_was_tried_is_really_done_by_a_form_filled_in(onlooker: Window) -> None:
+    told = tried(onlooker, ("groups", "K08"), ("number", "11"))
     (href,) = re.findall(r'href="(/do/shift[^"]*)"', told.html)
-    form = window.on(BUSY).get(href.replace("&amp;", "&"))
+    form = onlooker.on(BUSY).get(href.replace("&amp;", "&"))
     assert (form.field("booking"), form.field("groups")) == ("K08", "11")
 
 
@@ -87,41 +87,41 @@ CASES: dict[str, tuple[Rows, str]] = {
 
 @pytest.mark.parametrize(("fields", "where"), CASES.values(), ids=CASES)
 def test_a_refusal_stands_beside_its_field_and_what_was_typed_stays(
-    window: Window, fields: Rows, where: str
+    onlooker: Window, fields: Rows, where: str
 ) -> None:
-    refused = tried(window, *fields)
+    refused = tried(onlooker, *fields)
     assert refused.status in (404, 409, 422)
     assert wrong(refused) == [where]
     assert all(f'value="{value}"' in refused.html for _, value in fields)
     assert not re.search(r"(?<!\w)--[a-z]", refused.text)
 
 
-def test_the_second_row_is_blamed_and_not_the_first(window: Window) -> None:
+def test_the_second_row_is_blamed_and_not_the_first(onlooker: Window) -> None:
     rows = [("groups", "K08"), ("number", "11"), ("groups", "K09"), ("number", "x2")]
-    assert wrong(tried(window, *rows)) == ["number-2"]
+    assert wrong(tried(onlooker, *rows)) == ["number-2"]
 
 
-def test_a_closed_day_may_be_kept(window: Window) -> None:
+def test_a_closed_day_may_be_kept(onlooker: Window) -> None:
     shift = [("shift", "K15"), ("day", "2027-02-13"), ("keep_closed", "yes")]
-    told = tried(window, *shift)
+    told = tried(onlooker, *shift)
     assert told.status == 200
     assert "keep=yes" in told.html
 
 
-def test_what_is_only_supposed_has_no_page(window: Window) -> None:
-    told = tried(window, ("book", "R01"), ("on", "2027-02-11"), ("for", "12"))
+def test_what_is_only_supposed_has_no_page(onlooker: Window) -> None:
+    told = tried(onlooker, ("book", "R01"), ("on", "2027-02-11"), ("for", "12"))
     assert "new K30" in told.text
     assert "/day/K30" not in told.html
 
 
-def test_on_the_safe_side_is_asked_alone(window: Window) -> None:
-    told = tried(window, ("cautious", "yes"))
+def test_on_the_safe_side_is_asked_alone(onlooker: Window) -> None:
+    told = tried(onlooker, ("cautious", "yes"))
     assert "every strength at its lower 95 % limit" in told.text
     assert "if so" in told.text or "Nothing would change" in told.text
 
 
-def test_more_rows_keep_what_was_typed(window: Window) -> None:
-    told = tried(window, ("groups", "K08"), ("number", ""), ("rows", "6"))
+def test_more_rows_keep_what_was_typed(onlooker: Window) -> None:
+    told = tried(onlooker, ("groups", "K08"), ("number", ""), ("rows", "6"))
     assert len(re.findall('name="groups"', told.html)) == 6
     assert told.field("groups") == "K08"
 
@@ -135,13 +135,13 @@ def test_more_rows_keep_what_was_typed(window: Window) -> None:
         [("cautious", "y" * 11)],
     ],
 )
-def test_what_is_asked_has_bounds(window: Window, fields: Rows) -> None:
-    assert tried(window, *fields).status == 422
+def test_what_is_asked_has_bounds(onlooker: Window, fields: Rows) -> None:
+    assert tried(onlooker, *fields).status == 422
 
 
 @pytest.mark.parametrize("rows", ["many", "-3", "²", "0"])
-def test_a_number_of_rows_nobody_can_read_is_the_usual(window: Window, rows: str) -> None:
-    told = tried(window, ("rows", rows))
+def test_a_number_of_rows_nobody_can_read_is_the_usual(onlooker: Window, rows: str) -> None:
+    told = tried(onlooker, ("rows", rows))
     assert (told.status, len(re.findall('name="groups"', told.html))) == (200, 3)
 
 
@@ -168,6 +168,22 @@ def test_sent_twice_it_is_kept_once(window: Window) -> None:
         assert "Plan 0001 is kept" in window.post("/changed/keep", by="T1", once="same").text
 
 
-def test_without_initials_nothing_is_kept(window: Window) -> None:
-    assert window.post("/changed/keep", by=" ").status == 422
+@pytest.mark.parametrize(
+    ("by", "said"),
+    [(" ", "Nobody's initials"), ("far too long", "no initials"), ("T\x071", "cannot be printed")],
+)
+def test_a_plan_without_initials_is_not_kept_and_the_page_says_so_beside_them(
+    window: Window, by: str, said: str
+) -> None:
+    told = window.post("/changed/keep", by=by)
+    assert (told.status, said in told.text) == (422, True)
+    assert 'id="keep-by-wrong"' in told.html
     assert "No plan was kept" in window.get("/changed").text
+
+
+def test_the_initials_a_plan_was_kept_by_are_not_cut_and_stay_for_the_visit(window: Window) -> None:
+    refused = window.post("/changed/keep", by="far too long")
+    assert refused.field("by") == "far too long"
+    window.post("/changed/keep", by="8 signs!")
+    assert "by 8 signs!" in window.get("/changed").text
+    assert window.get("/do/draw").field("by") == "8 signs!"

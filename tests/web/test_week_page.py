@@ -37,21 +37,21 @@ def known_by_initials(window: Window, day: date = BUSY) -> Window:
     return seen
 
 
-def test_today_stands_above_the_days_that_follow(window: Window) -> None:
-    page = window.on(BUSY).get("/week")
+def test_today_stands_above_the_days_that_follow(onlooker: Window) -> None:
+    page = onlooker.on(BUSY).get("/week")
     assert page.status == 200
     places = [page.text.index(words) for words in ("Today, Mon 25 Jan 2027", "Thu 28 Jan 35 min")]
     assert places == sorted(places)
 
 
-def test_what_is_late_comes_before_the_work_of_the_day(window: Window) -> None:
-    text = window.on(BUSY).get("/week").text
+def test_what_is_late_comes_before_the_work_of_the_day(onlooker: Window) -> None:
+    text = onlooker.on(BUSY).get("/week").text
     assert text.index("late by 6 open days") < text.index("Looks count as well as dates")
     assert "K06 nothing is entered as drawn for them" in text
 
 
-def test_the_page_says_what_the_sheet_says(window: Window) -> None:
-    text = window.on(BUSY).get("/week").text
+def test_the_page_says_what_the_sheet_says(onlooker: Window) -> None:
+    text = onlooker.on(BUSY).get("/week").text
     assert "4 bookings, 12 makes, 1 check." in text
     assert "from 26.4 cm³ of S01 sodium thiosulfate 1.00 mol/dm³ in D1" in text
     assert "Acid into water, slowly and stirring, never the reverse" in text
@@ -145,42 +145,42 @@ def test_what_is_never_kept_has_no_tick_before_its_day(window: Window) -> None:
     assert presses(page, "destroyed") == []
 
 
-def test_a_tick_that_is_missing_is_late_in_the_weeks_after(window: Window) -> None:
-    text = window.on(date(2027, 3, 3)).get("/week").text
+def test_a_tick_that_is_missing_is_late_in_the_weeks_after(onlooker: Window) -> None:
+    text = onlooker.on(date(2027, 3, 3)).get("/week").text
     assert "destroy what is left of K16 Silver mirror not ticked since Wed 10 Feb" in text
 
 
-def test_without_initials_a_press_opens_the_form_filled_in(window: Window) -> None:
-    page = window.on(BUSY).get("/week")
+def test_without_initials_a_press_opens_the_form_filled_in(onlooker: Window) -> None:
+    page = onlooker.on(BUSY).get("/week")
     first = presses(page, "make")[0]
     assert "form_token" not in first
-    form = window.on(BUSY).get("/do/make", **first)
+    form = onlooker.on(BUSY).get("/do/make", **first)
     assert form.field("volume") == "88 cm³"
     assert "Initials" in form.text
 
 
-def test_what_cannot_be_had_stands_first_with_its_reasons(window: Window) -> None:
-    page = window.on(date(2027, 2, 2)).get("/week")
+def test_what_cannot_be_had_stands_first_with_its_reasons(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 2, 2)).get("/week")
     assert page.text.index("Cannot be done as it stands") < page.text.index("Today, Tue 2 Feb")
     assert 'href="/why?ref=K11.1"' in page.html
 
 
-def test_another_week_has_no_today_and_keeps_its_address(window: Window) -> None:
-    page = window.on(BUSY).get("/week", of="2027-03-01")
+def test_another_week_has_no_today_and_keeps_its_address(onlooker: Window) -> None:
+    page = onlooker.on(BUSY).get("/week", of="2027-03-01")
     assert "Week 9: 1 to 5 March 2027" in page.text
     assert "Today, " not in page.text
     assert 'href="/week?of=2027-02-22"' in page.html
 
 
-def test_on_a_saturday_the_coming_week_is_shown_and_today_above_it(window: Window) -> None:
-    text = window.on(date(2027, 1, 30)).get("/week").text
+def test_on_a_saturday_the_coming_week_is_shown_and_today_above_it(onlooker: Window) -> None:
+    text = onlooker.on(date(2027, 1, 30)).get("/week").text
     assert "Week 5: 1 to 5 February 2027" in text
     assert "Today, Sat 30 Jan 2027" in text
 
 
 @pytest.mark.parametrize("of", ["31/02/2027", "next week", "x" * 41, "2027-13-01"])
-def test_a_day_nobody_can_read_is_refused(window: Window, of: str) -> None:
-    assert window.get("/week", of=of).status == 422
+def test_a_day_nobody_can_read_is_refused(onlooker: Window, of: str) -> None:
+    assert onlooker.get("/week", of=of).status == 422
 
 
 def test_looking_at_a_week_or_the_term_writes_nothing(window: Window, own: Path) -> None:

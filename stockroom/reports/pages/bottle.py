@@ -86,12 +86,26 @@ class HazardPart:
 
 
 @dataclass(frozen=True, slots=True)
+class Story:
+    """A page of what happened, the newest first: entries `first` to `last` of `of`.
+
+    It is page number `sheet` of `sheets`.
+    """
+
+    entries: tuple[EntryRow, ...]
+    first: int
+    last: int
+    of: int
+    sheet: int
+    sheets: int
+
+
+@dataclass(frozen=True, slots=True)
 class BottlePage:
     """Everything the page shows. What there is nothing to say of is empty, or None.
 
     `warning` has to be read before the bottle is touched. `came` is how it came from
-    `made_from`; `kin` are pairs of a number and what it holds. The story is the newest first,
-    entries `first` to `last` of `of`.
+    `made_from`, which like `made_into` are pairs of a number and what it holds.
     """
 
     number: str
@@ -112,12 +126,7 @@ class BottlePage:
     came: str
     made_from: Rows
     made_into: Rows
-    story: tuple[EntryRow, ...]
-    first: int
-    last: int
-    of: int
-    sheet: int
-    sheets: int
+    story: Story
     forms: Forms
     line: str
     of_stock: bool
@@ -137,9 +146,6 @@ def bottle_page(
     """The page of a bottle; `sheet` is which page of its story, or the last there is."""
     bottle, line, judged = seen.bottle, seen.line, seen.verdict
     gone = judged.condition is Condition.GONE
-    sheets = max(1, -(-len(entries) // ENTRIES))
-    sheet = min(sheet, sheets)
-    newest = entries[::-1][(sheet - 1) * ENTRIES : sheet * ENTRIES]
     return BottlePage(
         number=bottle.number,
         what=what_of(line),
@@ -159,15 +165,24 @@ def bottle_page(
         came=_came(entries),
         made_from=_rows(made_from),
         made_into=_rows(made_into),
-        story=tuple(_entry(told) for told in newest),
+        story=_story(entries, sheet),
+        forms=forms_for(seen),
+        line=line.key,
+        of_stock=not line.never_kept and not is_unnamed(line.key),
+    )
+
+
+def _story(entries: Sequence[DiaryRow], sheet: int) -> Story:
+    sheets = max(1, -(-len(entries) // ENTRIES))
+    sheet = min(sheet, sheets)
+    newest = entries[::-1][(sheet - 1) * ENTRIES : sheet * ENTRIES]
+    return Story(
+        entries=tuple(_entry(told) for told in newest),
         first=(sheet - 1) * ENTRIES + 1 if newest else 0,
         last=(sheet - 1) * ENTRIES + len(newest),
         of=len(entries),
         sheet=sheet,
         sheets=sheets,
-        forms=forms_for(seen),
-        line=line.key,
-        of_stock=not line.never_kept and not is_unnamed(line.key),
     )
 
 

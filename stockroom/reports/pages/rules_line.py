@@ -2,16 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date
-from typing import Protocol
 
 from stockroom.keeping.rule_words import rule_in_words
 from stockroom.keeping.rules import Rule, RuleKind
 from stockroom.measure.periods import format_period
 from stockroom.planning.facts import Line
-from stockroom.reports.house_rules_text import RuleChange, rule_owner
+from stockroom.reports.house_rules_text import Keeping, RuleChange, rule_owner
 from stockroom.reports.pages.rules import asks, level_of, packs_of
 from stockroom.reports.pages.rules_parts import Row
 from stockroom.reports.words import day_heading, raised
@@ -19,21 +17,6 @@ from stockroom.reports.words import day_heading, raised
 PERIOD = ("lasts", "counted_from")
 LAW = ("order", "rate", "rate_of", "rate_per", "named_law", "at_c", "factor_per_10c", "ea_kj_mol")
 """What is asked for to change a rule of a period, and one of a law."""
-
-
-class _Keeping(Protocol):
-    @property
-    def line(self) -> str: ...
-    @property
-    def unit(self) -> str: ...
-    @property
-    def rules(self) -> Sequence[Rule]: ...
-    @property
-    def changes(self) -> Sequence[RuleChange]: ...
-    @property
-    def sources(self) -> dict[str, str]: ...
-    @property
-    def shown(self) -> tuple[str, float]: ...
 
 
 @dataclass(frozen=True, slots=True)
@@ -80,7 +63,7 @@ class Page:
     packs: tuple[Row, ...]
 
 
-def line_page(keeping: _Keeping, line: Line, usual_lead: int) -> Page:
+def line_page(keeping: Keeping, line: Line, usual_lead: int) -> Page:
     """The page of one line; `usual_lead` is the lead time in open days where none is written."""
     return Page(
         line=raised(line.key),
@@ -96,7 +79,7 @@ def line_page(keeping: _Keeping, line: Line, usual_lead: int) -> Page:
     )
 
 
-def _rule(keeping: _Keeping, line: Line, rule: Rule) -> Kept:
+def _rule(keeping: Keeping, line: Line, rule: Rule) -> Kept:
     return Kept(
         words=raised(rule_in_words(rule, keeping.unit, keeping.shown)),
         whose=raised(rule_owner(rule, keeping.sources)),

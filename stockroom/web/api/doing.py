@@ -11,7 +11,7 @@ from typing import Annotated, Any
 from fastapi import APIRouter, Depends, Header, HTTPException, Request
 from starlette.responses import JSONResponse, Response
 
-from stockroom.errors import BadInput
+from stockroom.errors import BadInput, SentOtherwise
 from stockroom.web.api.answering import refused
 from stockroom.web.api.contract import DoneAnswer
 from stockroom.web.door.roles import Role
@@ -51,7 +51,8 @@ Key = Annotated[
     Header(
         alias="Idempotency-Key",
         max_length=200,
-        description="Drawn by the sender; sent again with the same one, it counts once.",
+        description="Drawn by the sender. The same sent again under it counts once; "
+        "something else under it is refused (422).",
     ),
 ]
 
@@ -71,6 +72,10 @@ def _take(form: Form) -> Callable[..., Response]:
 
 def _refused(form: Form, told: AtField) -> Response:
     trouble = trouble_of(form, told)
+    if isinstance(told.error, SentOtherwise):
+        # as the draft on this header has it, and not 409: sent as it is, it is refused for ever
+        said = "This Idempotency-Key was sent already with something else; nothing was saved now."
+        return problem(422, said, "Draw a new key for each event.")
     more = {"field": trouble.field} if trouble.field else {}
     return problem(trouble.status, trouble.message, trouble.hint, **more)
 

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from datetime import timedelta
 from typing import Annotated
 
 from fastapi import APIRouter, Path
@@ -13,10 +12,8 @@ from stockroom.reports.paper.day import Day as DaySheet
 from stockroom.reports.paper.day import day_of
 from stockroom.reports.paper.day_text import DAY
 from stockroom.reports.paper.week import WEEK, Week, monday_of, week_of
-from stockroom.service.closures import why_closed
-from stockroom.service.day import day_asked
-from stockroom.service.printing import held_against
-from stockroom.service.sheets import known_and_planned
+from stockroom.service.day import day_held
+from stockroom.service.week import week_held
 from stockroom.web.api.answering import Asking, Data, Day, Question, day, told
 
 router = APIRouter(prefix="/api", tags=["Sheets"])
@@ -26,12 +23,9 @@ router = APIRouter(prefix="/api", tags=["Sheets"])
 def week(question: Asking, of: Day = "") -> Response:
     """The week that holds the day `of`, else this one: check, start, make, set out, destroy."""
     monday = monday_of(day(of, "of"), question.today)
-    sunday = monday + timedelta(days=6)
 
     def make() -> Data:
-        known, plan = known_and_planned(question.path, as_at=question.today, through=sunday)
-        sheet = week_of(known, plan, monday, why_closed(question.path, monday, sunday))
-        return dict(as_data(held_against(question.path, WEEK, sheet, monday.isoformat())))
+        return dict(as_data(week_held(question.path, WEEK, week_of, monday, as_at=question.today)))
 
     return question.answer("week", (monday,), make)
 
@@ -53,8 +47,7 @@ def one_day(
 
 def _day(question: Question, ref: str | None) -> Response:
     def make() -> Data:
-        asked = day_asked(question.path, ref, as_at=question.today)
-        sheet = day_of(asked.known, asked.plan, asked.on, asked.booking, asked.closed)
-        return dict(as_data(held_against(question.path, DAY, sheet, asked.about)))
+        held = day_held(question.path, DAY, day_of, ref, as_at=question.today)
+        return dict(as_data(held.sheet))
 
     return question.answer("day", (ref,), make)

@@ -2,13 +2,12 @@
 
 from __future__ import annotations
 
-from dataclasses import fields
 from typing import Annotated
 
 from fastapi import APIRouter, Path, Query
 from starlette.responses import Response
 
-from stockroom.reports.diary_text import DiaryRow, diary_json
+from stockroom.reports.diary_text import diary_json, diary_rows
 from stockroom.reports.fades_text import fades_json
 from stockroom.reports.hazards_text import hazards_json
 from stockroom.reports.house_rules_text import rules_json
@@ -59,11 +58,7 @@ def diary(question: Asking, bottle: Bottle, known_on: Day = "") -> Response:
 
     def make() -> Data:
         found = story(question.path, bottle, known)
-        names = [each.name for each in fields(DiaryRow)]
-        rows = [
-            DiaryRow(**{name: getattr(entry, name) for name in names})
-            for entry in found.diary.entries
-        ]
+        rows = list(diary_rows(found.diary.entries))
         number, item = found.diary.bottle, found.diary.line
         return diary_json(number, item, rows, practice=found.practice)
 

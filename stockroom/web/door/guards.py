@@ -19,6 +19,14 @@ from stockroom.web.refusals import answer
 
 log = logging.getLogger("stockroom.door")
 
+LOOKING = ("GET", "HEAD", "OPTIONS")
+
+_FAULT = "This is a fault in stockroom itself"
+_WHERE = "What went wrong stands where stockroom serve runs."
+LOOKED = f"{_FAULT}, and nothing was saved.", f"Try it once more. {_WHERE}"
+SENT = f"{_FAULT}.", f"It may not have been saved: look before you send it again. {_WHERE}"
+"""What a fault is told as: of what was sent nobody knows how far it came."""
+
 
 class Faults:
     """Answers a fault of the program in words; what it was goes to the server's own record."""
@@ -39,9 +47,10 @@ class Faults:
             await self.app(scope, receive, sending)
         except Exception:
             if scope["type"] == "http" and not begun:
-                told = "This is a fault in stockroom itself, and nothing was saved."
-                hint = "Try it once more; what went wrong stands where stockroom serve runs."
-                await answer(Request(scope), 500, told, hint)(scope, receive, send)
+                looks = scope["method"] in LOOKING
+                await answer(Request(scope), 500, *(LOOKED if looks else SENT))(
+                    scope, receive, send
+                )
             raise
 
 

@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+import json
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-from stockroom.errors import BadInput, NotAllowed, StockroomError
+from stockroom.errors import BadInput, NotAllowed, SentOtherwise, StockroomError
 from stockroom.service.answers import Done
 from stockroom.service.once import once
 from stockroom.web.door.session import LONGEST_INITIALS, with_initials
@@ -16,6 +17,9 @@ from stockroom.web.visit import Visit
 
 MOST_INITIALS = LONGEST_INITIALS
 """Signs that the initials in a form may have."""
+
+
+_OF_THE_PAGE = ("form_token", "once", "back", "by")
 
 
 @dataclass(frozen=True, slots=True)
@@ -33,18 +37,34 @@ class Trouble:
 
 
 def send(visit: Visit, form: Form, values: Mapping[str, str], token: str) -> Done:
-    """Do what the form asks, once for each token. Raises: AtField, with nothing saved."""
-    if visit.looks_elsewhere:
-        told = f"You are looking from {visit.today.isoformat()}, which is not today."
-        raise AtField("", NotAllowed(told, "Go back to today, then enter it."))
+    """Do what the form asks, once for each token.
+
+    The same token with something else in the form is refused. Raises: AtField, with nothing
+    saved.
+    """
+    try:
+        visit.check_today("enter it")
+    except NotAllowed as elsewhere:
+        raise AtField("", elsewhere) from elsewhere
     by = initials_in(values) or visit.session.initials
     typed = Typed(form, values, visit.path, visit.today, by)
+    sent = _sent(visit, form, values, by)
     try:
-        return once(visit.path, token, lambda: form.do(typed), today=visit.today, by=by)
+        return once(visit.path, token, lambda: form.do(typed), today=visit.today, by=by, sent=sent)
     except AtField:
         raise
+    except SentOtherwise as error:
+        raise AtField("", error) from error
     except StockroomError as error:
         raise AtField(blamed(form, values, error), error) from error
+
+
+def _sent(visit: Visit, form: Form, values: Mapping[str, str], by: str) -> str:
+    """All that makes one event another: an empty field is as good as none."""
+    filled = {key: text.strip() for key, text in values.items() if key not in _OF_THE_PAGE}
+    # the day that was chosen and not today's, or what is sent again after midnight would differ
+    said = [form.name, form.title, by.strip(), str(visit.session.as_at or "")]
+    return json.dumps([said, sorted((key, text) for key, text in filled.items() if text)])
 
 
 def remember_initials(visit: Visit, values: Mapping[str, str]) -> None:

@@ -7,11 +7,10 @@ from typing import Annotated
 from fastapi import APIRouter, Path, Query
 from starlette.responses import Response
 
-from stockroom.reports.diary_text import DiaryRow
+from stockroom.reports.diary_text import diary_rows
 from stockroom.reports.pages.bottle import BottlePage, bottle_page
 from stockroom.reports.pages.bottle_forms import NAMED_OTHERWISE
 from stockroom.service.bottle import bottle_seen
-from stockroom.service.diary import Told
 from stockroom.web.forms.field import Form
 from stockroom.web.forms.table import BY_NAME
 from stockroom.web.visit import Reading, Visit
@@ -31,7 +30,7 @@ def bottle(
         found.known,
         found.plan,
         found.seen,
-        [_row(entry) for entry in found.diary.entries],
+        list(diary_rows(found.diary.entries)),
         found.fading,
         found.hazards,
         found.made_from,
@@ -60,21 +59,3 @@ def _forms(visit: Visit, names: tuple[str, ...]) -> list[Form]:
     if visit.looks_elsewhere:
         return []
     return [form for name in names if visit.may((form := BY_NAME[name]).role)]
-
-
-def _row(told: Told) -> DiaryRow:
-    return DiaryRow(
-        entry=told.entry,
-        happened=told.happened,
-        entered=told.entered,
-        by=told.by,
-        kind=told.kind,
-        change=told.change,
-        left=told.left,
-        said=told.said,
-        place=told.place,
-        booking=told.booking,
-        puts_right=told.puts_right,
-        undone_by=told.undone_by,
-        about=told.about,
-    )

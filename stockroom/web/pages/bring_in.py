@@ -10,7 +10,7 @@ from fastapi import APIRouter, HTTPException, Path
 from starlette.datastructures import FormData, UploadFile
 from starlette.responses import Response
 
-from stockroom.errors import BadInput, NotAllowed, StockroomError
+from stockroom.errors import BadInput, StockroomError
 from stockroom.reports.pages.bring_in import BringIn, bring_in_page, done_of
 from stockroom.service.bring_in import COLUMN, Meant, bring_in, look_at, meant
 from stockroom.web.forms.sending import Trouble, remember_initials
@@ -102,9 +102,7 @@ def agreed(visit: Keeping, token: Token, sent: Sent) -> Response:
     known, values = held(visit.house, visit.session, token), values_of(sent)
     try:
         remember_initials(visit, values)
-        if visit.looks_elsewhere:
-            told = f"You are looking from {visit.today.isoformat()}, which is not today."
-            raise NotAllowed(told, "Go back to today, then agree.")
+        visit.check_today("agree")
         done = bring_in(
             visit.path,
             known.path,

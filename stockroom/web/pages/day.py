@@ -10,8 +10,7 @@ from starlette.responses import Response
 from stockroom.reports.pages.day import day_page
 from stockroom.reports.paper.day import day_of
 from stockroom.reports.paper.day_text import DAY
-from stockroom.service.day import day_asked
-from stockroom.service.printing import held_against
+from stockroom.service.day import day_held
 from stockroom.web.visit import Reading, Visit
 
 router = APIRouter(include_in_schema=False)
@@ -32,7 +31,5 @@ def one_day(visit: Reading, ref: Annotated[str, Path(max_length=200)]) -> Respon
 
 
 def _shown(visit: Visit, ref: str | None) -> Response:
-    asked = day_asked(visit.path, ref, as_at=visit.today)
-    sheet = day_of(asked.known, asked.plan, asked.on, asked.booking, asked.closed)
-    held = held_against(visit.path, DAY, sheet, asked.about)
-    return visit.page("day.html", day_page(asked.known, asked.plan, held))
+    held = day_held(visit.path, DAY, day_of, ref, as_at=visit.today)
+    return visit.page("day.html", day_page(held.asked.known, held.asked.plan, held.sheet))

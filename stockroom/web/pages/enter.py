@@ -3,13 +3,12 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import fields
 
 from fastapi import APIRouter, HTTPException
 from starlette.responses import Response
 
 from stockroom.errors import StockroomError
-from stockroom.reports.diary_text import DiaryRow
+from stockroom.reports.diary_text import diary_rows
 from stockroom.reports.pages.entry import EntryTold, entry_told
 from stockroom.service.diary import entry_story
 from stockroom.web.forms.field import LONGEST, Form
@@ -83,10 +82,7 @@ def _entry_told(visit: Visit, form: Form, values: Mapping[str, str]) -> tuple[En
     if not (entry.isascii() and entry.isdigit() and len(entry) < 20):
         return ()
     diary = entry_story(visit.path, int(entry)).diary
-    # the store's own entries, row for row: reports know no store
-    names = [each.name for each in fields(DiaryRow)]
-    rows = [DiaryRow(**{name: getattr(told, name) for name in names}) for told in diary.entries]
-    return entry_told(diary.bottle, diary.line, rows)
+    return entry_told(diary.bottle, diary.line, diary_rows(diary.entries))
 
 
 def _form(visit: Visit, name: str) -> Form:

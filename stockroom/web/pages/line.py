@@ -8,12 +8,14 @@ from urllib.parse import quote, urlencode
 from fastapi import APIRouter, HTTPException, Query
 from starlette.responses import RedirectResponse, Response
 
-from stockroom.errors import BadInput
+from stockroom.errors import BadInput, UnknownName
 from stockroom.service.line_box import Meant, meant_by
 from stockroom.web.door.roles import Role
+from stockroom.web.forms.sending import Trouble
 from stockroom.web.forms.table import BY_NAME
 from stockroom.web.pages.enter import answered
-from stockroom.web.visit import Reading, Sent, Visit, back_to, values_of
+from stockroom.web.refusals import status_of
+from stockroom.web.visit import Reading, Sent, Visit, back_to, own_path, values_of
 
 router = APIRouter(include_in_schema=False)
 
@@ -34,7 +36,7 @@ _PAGES = {
 def line(visit: Reading, sent: Sent) -> Response:
     """What was typed into the line: gone to, or the draw saved."""
     values = values_of(sent)
-    meant = _meant(visit, values.get("line", ""), values.get("back", "/week"))
+    meant = _meant(visit, values.get("line", ""), own_path(values.get("back", "/week")))
     if isinstance(meant, Response):
         return meant
     if meant.kind != "draw":
@@ -66,13 +68,24 @@ def go(visit: Reading, what: Annotated[str, Query(max_length=LONGEST)] = "") -> 
 
 
 def _meant(visit: Visit, text: str, back: str) -> Meant | Response:
-    """What the line means; nothing typed stays where one was. Raises: BadInput, UnknownName."""
+    """What the line means; nothing typed stays where one was, and what is refused is there again.
+
+    `back` is where a draw mended in the line comes back to.
+    """
     if not text.strip():
         return back_to(back)
-    if len(text) > LONGEST or not text.strip().isprintable():
-        told = f"{text[:30]!r}… is no number and no name."
-        raise BadInput(told, f"Type at most {LONGEST} signs: S13, or S13 100 cm3.")
-    return meant_by(visit.path, text)
+    try:
+        if len(text) > LONGEST or not text.strip().isprintable():
+            told = f"{text[:30]!r}… is no number and no name."
+            raise BadInput(told, f"Type at most {LONGEST} signs: S13, or S13 100 cm3.")
+        return meant_by(visit.path, text)
+    except (BadInput, UnknownName) as error:
+        trouble = Trouble("line", error.message, error.hint, status_of(error))
+        # a sign that cannot be printed cannot be seen to be taken out either
+        typed = "".join(one for one in text if one.isprintable())
+        return visit.page(
+            "line.html", trouble, status=trouble.status, typed_line=typed, top_back=back
+        )
 
 
 def _address(meant: Meant) -> str:

@@ -14,12 +14,11 @@ from urllib.parse import urlencode
 from fastapi import APIRouter, HTTPException, Query
 from starlette.responses import Response
 
-from stockroom.errors import NotAllowed
 from stockroom.web.forms.sending import Trouble, trouble_of
 from stockroom.web.forms.typed import AtField, Typed
 from stockroom.web.making import pages_of
 from stockroom.web.paper.files import BY_FILE, FILES, TYPES, File, calendar_now
-from stockroom.web.paper.sheet import Ready, Sheet, ready, with_number
+from stockroom.web.paper.sheet import Ready, Sheet, printed, ready
 from stockroom.web.paper.sheets import BY_NAME, SHEETS
 from stockroom.web.visit import Reading, Recording, Sent, Visit, values_of
 
@@ -78,7 +77,7 @@ def before_printing(visit: Reading, name: str) -> Response:
 
 
 @router.post("/paper/{name}")
-def printed(visit: Recording, name: str, sent: Sent) -> Response:
+def copied(visit: Recording, name: str, sent: Sent) -> Response:
     """A numbered copy as PDF, its lines kept; the calendar likewise, its entries kept.
 
     Sent twice it is printed twice, each copy with its own number: the first answer may never
@@ -88,10 +87,8 @@ def printed(visit: Recording, name: str, sent: Sent) -> Response:
     if name == "calendar":
         return _calendar_kept(visit)
     made = _ready(visit, _sheet(name), values)
-    copy = with_number(visit, made)
-    number = copy.sheet.head.copy
-    drawn = pages_of(copy.kind, copy.sheet, form="pdf", paper=copy.paper)
-    return _sent(drawn[0], f"{name}-copy-{number}", "pdf", save=True)
+    number, pdf = printed(visit, made)
+    return _sent(pdf, f"{name}-copy-{number}", "pdf", save=True)
 
 
 def _ready(visit: Visit, sheet: Sheet, values: Mapping[str, str]) -> Ready:
@@ -120,9 +117,7 @@ def _file(visit: Visit, file: File) -> Response:
 
 
 def _calendar_kept(visit: Visit) -> Response:
-    if visit.looks_elsewhere:
-        told = f"You are looking from {visit.today.isoformat()}, which is not today."
-        raise NotAllowed(told, "Go back to today, then take it.")
+    visit.check_today("take it")
     file = BY_FILE["calendar.ics"]
     typed = Typed(file.form, {}, visit.path, visit.today, visit.session.initials)
     content, keep = calendar_now(typed)

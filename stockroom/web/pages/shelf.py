@@ -7,7 +7,6 @@ from typing import Annotated
 from fastapi import APIRouter, Query
 from starlette.responses import Response
 
-from stockroom.errors import UnknownName
 from stockroom.reports.pages.shelf import (
     CONDITIONS,
     Asked,
@@ -16,7 +15,7 @@ from stockroom.reports.pages.shelf import (
     order_of,
     shelf_page,
 )
-from stockroom.service.shelf_planned import places, shelf_planned
+from stockroom.service.shelf_planned import NoneOfThatName, shelf_planned
 from stockroom.service.typed import day_or_none
 from stockroom.web.visit import Reading
 
@@ -43,10 +42,8 @@ def shelf(
         found = shelf_planned(
             visit.path, asked.what, place, today=visit.today, on=day, known_on=known
         )
-    except UnknownName as trouble:
-        nothing = nothing_found(
-            asked, places(visit.path), trouble.message, nearest_in(trouble.hint)
-        )
+    except NoneOfThatName as trouble:
+        nothing = nothing_found(asked, trouble.places, trouble.message, nearest_in(trouble.hint))
         return visit.page("shelf.html", nothing, status=404, conditions=CONDITIONS)
     told = shelf_page(found.shelf, asked, found.places, found.place, found.plan, page)
     return visit.page("shelf.html", told, conditions=CONDITIONS)

@@ -6,14 +6,16 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass, replace
 from typing import Any, NoReturn
 
-from stockroom.errors import BadInput, NotAllowed, StockroomError
+from stockroom.errors import BadInput, StockroomError
 from stockroom.reports.paper.kinds import Kind
 from stockroom.reports.typesetting import PAPERS
-from stockroom.service.printing import held_against, numbered
+from stockroom.service.printing import held_against
+from stockroom.service.printing import printed as with_number
 from stockroom.settings import StoreAt
 from stockroom.web.forms.blaming import blamed
 from stockroom.web.forms.field import Field, Form
 from stockroom.web.forms.typed import AtField, Typed
+from stockroom.web.making import alone, drawn
 from stockroom.web.visit import Visit
 
 USUAL = ("A4", "Letter")
@@ -80,14 +82,23 @@ def ready(visit: Visit, sheet: Sheet, values: Mapping[str, str]) -> Ready:
     return replace(made, sheet=held, paper=with_paper)
 
 
-def with_number(visit: Visit, made: Ready) -> Ready:
-    """The same under the next copy's number. Raises: NotAllowed where none can be taken."""
-    if visit.looks_elsewhere:
-        told = f"You are looking from {visit.today.isoformat()}, which is not today."
-        raise NotAllowed(told, f"Go back to today, then print it. {OTHERWISE}")
+def printed(visit: Visit, made: Ready) -> tuple[str, bytes]:
+    """The next copy's number and the sheet under it as PDF; what cannot be drawn takes none.
+
+    Raises: NotAllowed where none can be taken; 503 where too many are drawn.
+    """
+    visit.check_today("print it", OTHERWISE)
+
+    def draw(sheet: Any) -> bytes:
+        return drawn(made.kind, sheet, form="pdf", paper=made.paper)[0]
+
     by = visit.session.initials
-    sheet = numbered(visit.path, made.kind, made.sheet, made.about, by=by, otherwise=OTHERWISE)
-    return replace(made, sheet=sheet)
+    # waited for first: nobody else can save while this has the store
+    with alone():
+        copy, pdf = with_number(
+            visit.path, made.kind, made.sheet, made.about, by=by, otherwise=OTHERWISE, draw=draw
+        )
+    return copy.head.copy, pdf
 
 
 def numbers_before(path: StoreAt, things: Mapping[str, str]) -> tuple[str, ...]:

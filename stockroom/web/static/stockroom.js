@@ -145,7 +145,7 @@ const keys = document.getElementById("use-keys");
 if (keys) offerSwitch(keys);
 const wrong = document.querySelector("main [aria-invalid=true]");
 if (wrong) wrong.focus();
-// back from another page: what was pressed may be pressed again
+// back from another page: each form was drawn for one event, so all are drawn anew
 addEventListener("pageshow", (event) => {
-  if (event.persisted) for (const form of document.forms) press(form, false);
+  if (event.persisted) location.reload();
 });

@@ -67,7 +67,7 @@ def test_a_guessed_opening_is_told_as_a_guess() -> None:
 
 
 def test_the_story_is_told_from_the_newest() -> None:
-    told = page(entries=[entry(1, "made"), entry(2), entry(3)]).story
+    told = page(entries=[entry(1, "made"), entry(2), entry(3)]).story.entries
     assert [one.number for one in told] == [3, 2, 1]
     assert told[0].happened == "Mon 4 Jan 2027"
     assert told[0].change == "-10 cm³"
@@ -75,20 +75,20 @@ def test_the_story_is_told_from_the_newest() -> None:
 
 def test_what_was_put_right_and_what_did_it_offer_no_putting_right() -> None:
     slip, mending = entry(2, undone_by=3), entry(3, "put right", puts_right=2)
-    told = page(entries=[entry(1, "made"), slip, mending]).story
+    told = page(entries=[entry(1, "made"), slip, mending]).story.entries
     assert [one.may_mend for one in told] == [False, False, True]
 
 
 def test_a_long_story_is_told_in_pages_and_past_the_last_is_the_last() -> None:
     long = [entry(n) for n in range(1, ENTRIES + 4)]
-    last = page(entries=long, sheet=9)
+    last = page(entries=long, sheet=9).story
     assert (last.first, last.last, last.of, last.sheet) == (
         ENTRIES + 1,
         ENTRIES + 3,
         ENTRIES + 3,
         2,
     )
-    assert [one.number for one in last.story] == [3, 2, 1]
+    assert [one.number for one in last.entries] == [3, 2, 1]
 
 
 @pytest.mark.parametrize(
@@ -102,7 +102,7 @@ def test_how_it_came_from_others_is_in_its_first_entry(kind: str, words: str) ->
 def test_a_bottle_that_is_gone_has_a_story_and_nothing_else_to_enter() -> None:
     told = page(like(gone=True), [entry(1, "made"), entry(2, "discarded")])
     assert (told.gone, told.forms, told.hazards) == (True, Forms(), None)
-    assert len(told.story) == 2
+    assert len(told.story.entries) == 2
     assert "good until" not in dict(told.facts)
 
 

@@ -9,7 +9,7 @@ import pytest
 
 from stockroom.reports.pages.changed import ChangedPage, changed_page_of
 from stockroom.service.ordering import order_planned
-from stockroom.service.printed_plans import changed, keep_once
+from stockroom.service.printed_plans import changed, keep_told
 
 if TYPE_CHECKING:
     from pathlib import Path
@@ -19,7 +19,7 @@ DAY = date(2027, 1, 4)
 
 @pytest.fixture
 def told(own: Path) -> ChangedPage:
-    keep_once(own, "a token", as_at=DAY, by="T1")
+    keep_told(own, as_at=DAY, by="T1")
     order_planned(own, "O01", expected=None, on=None, today=DAY, by="P1")
     since = changed(own, as_at=DAY)
     return changed_page_of(since.comparison, against=since.against, by=since.by)

@@ -61,17 +61,17 @@ def test_every_key_of_every_answer_is_described(window: Window) -> None:
         jsonschema_rs.validator_for(schema, validate_formats=True).validate(found)
 
 
-def test_a_key_left_out_of_the_description_is_noticed(window: Window) -> None:
-    shut = closed(window.api("/api/openapi.json"))
+def test_a_key_left_out_of_the_description_is_noticed(onlooker: Window) -> None:
+    shut = closed(onlooker.api("/api/openapi.json"))
     del shut["components"]["schemas"]["Need"]["properties"]["outcome"]
     checker = jsonschema_rs.validator_for(answers(shut, "/api/plan"))
     with pytest.raises(jsonschema_rs.ValidationError):
-        checker.validate(window.api("/api/plan"))
+        checker.validate(onlooker.api("/api/plan"))
 
 
 @pytest.mark.parametrize("part", DESIGN)
-def test_the_keys_of_the_design_are_required(window: Window, part: str) -> None:
-    schemas = window.api("/api/openapi.json")["components"]["schemas"]
+def test_the_keys_of_the_design_are_required(onlooker: Window, part: str) -> None:
+    schemas = onlooker.api("/api/openapi.json")["components"]["schemas"]
     plan = schemas["PlanAnswer"]
     if part != "plan":
         plan = schemas[plan["properties"][part]["items"]["$ref"].rpartition("/")[2]]

@@ -55,27 +55,33 @@ def test_the_same_key_for_another_form_is_another_event(window: Window) -> None:
     assert left(window) == 110
 
 
-@pytest.mark.parametrize(
-    ("sent", "status", "field"),
-    [
-        (DRAW | {"amount": "300 cm3"}, 409, "amount"),
-        (DRAW | {"amount": "a drop"}, 422, "amount"),
-        (DRAW | {"bottle": "S99"}, 404, "bottle"),
-        (DRAW | {"by": ""}, 422, "by"),
-        (DRAW | {"amount": 1.5}, 422, "amount"),
-        (DRAW | {"amount": ["1 g"]}, 422, "amount"),
-        (DRAW | {"amount": "1 g\ud800"}, 422, "amount"),
-        (DRAW | {"booking": "K16\x00"}, 422, "booking"),
-        (DRAW | {"amount": "9" * 600}, 422, "amount"),
-    ],
-)
-def test_a_refusal_names_its_field_and_saves_nothing(
-    window: Window, sent: dict[str, Any], status: int, field: str
-) -> None:
+def test_the_same_key_for_something_else_is_refused_and_not_dropped(window: Window) -> None:
+    do(window, "draw", DRAW | {"amount": "10 cm3"}, idempotency_key="one")
+    status, told = do(window, "draw", DRAW | {"amount": "20 cm3"}, idempotency_key="one")
+    assert (status, told["hint"]) == (422, "Draw a new key for each event.")
+    assert left(window) == 120
+
+
+REFUSED: list[tuple[dict[str, Any], int, str]] = [
+    ({"amount": "300 cm3"}, 409, "amount"),
+    ({"amount": "a drop"}, 422, "amount"),
+    ({"bottle": "S99"}, 404, "bottle"),
+    ({"by": ""}, 422, "by"),
+    ({"amount": 1.5}, 422, "amount"),
+    ({"amount": ["1 g"]}, 422, "amount"),
+    ({"amount": "1 g\ud800"}, 422, "amount"),
+    ({"booking": "K16\x00"}, 422, "booking"),
+    ({"amount": "9" * 600}, 422, "amount"),
+]
+"""What a draw is sent with, the status, and the field the refusal names."""
+
+
+def test_a_refusal_names_its_field_and_saves_nothing(window: Window) -> None:
     before = window.client.get("/api/shelf").content
-    came = do(window, "draw", sent)
-    assert (came[0], came[1].get("field")) == (status, field)
-    assert window.client.get("/api/shelf").content == before
+    for sent, status, field in REFUSED:
+        came = do(window, "draw", DRAW | sent)
+        assert (came[0], came[1].get("field")) == (status, field), sent
+        assert window.client.get("/api/shelf").content == before, sent
 
 
 def test_a_key_that_is_no_field_is_refused_with_those_that_are(window: Window) -> None:
@@ -106,10 +112,10 @@ def test_true_and_whole_numbers_are_read_as_they_would_be_typed(window: Window) 
     assert do(window, "put-right", entry)[0] == 200
 
 
-def test_every_form_can_be_sent_in_and_is_described(window: Window) -> None:
+def test_every_form_can_be_sent_in_and_is_described(onlooker: Window) -> None:
     from stockroom.web.forms.table import FORMS
 
-    paths = window.api("/api/openapi.json")["paths"]
+    paths = onlooker.api("/api/openapi.json")["paths"]
     for form in FORMS:
         body = paths[f"/api/do/{form.name}"]["post"]["requestBody"]
         schema = body["content"]["application/json"]["schema"]

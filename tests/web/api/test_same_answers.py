@@ -45,14 +45,14 @@ def test_what_its_checks_teach_is_told_as_learn_tells_it(
     assert window.api("/api/learn", what="S02", to="95") == told.json
 
 
-def test_every_question_there_is_stands_in_the_list(window: Window) -> None:
-    paths = window.api("/api/openapi.json")["paths"]
+def test_every_question_there_is_stands_in_the_list(onlooker: Window) -> None:
+    paths = onlooker.api("/api/openapi.json")["paths"]
     questions = {path.split("/")[2] for path, of in paths.items() if "get" in of}
     assert questions - {asked.split("/")[0] for asked, _, _ in QUESTIONS} == {"learn"}
 
 
-def test_a_day_given_is_looked_from(window: Window) -> None:
-    assert window.api("/api/plan", as_at="2027-02-02")["as_at"] == "2027-02-02"
+def test_a_day_given_is_looked_from(onlooker: Window) -> None:
+    assert onlooker.api("/api/plan", as_at="2027-02-02")["as_at"] == "2027-02-02"
 
 
 @pytest.mark.parametrize(
@@ -72,9 +72,9 @@ def test_a_day_given_is_looked_from(window: Window) -> None:
     ],
 )
 def test_what_cannot_be_answered_is_a_problem_in_words(
-    window: Window, address: str, status: int, word: str
+    onlooker: Window, address: str, status: int, word: str
 ) -> None:
-    came = window.client.get(address)
+    came = onlooker.client.get(address)
     assert came.status_code == status
     assert came.headers["content-type"] == "application/problem+json"
     told = came.json()

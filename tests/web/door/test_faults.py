@@ -26,6 +26,7 @@ def faulty(own: Path) -> TestClient:
     app = house_app(House(own, KEY, FIRST_DAY))
 
     @app.get("/faulty")
+    @app.post("/faulty")
     @app.get("/api/faulty")
     def fault() -> None:
         raise RuntimeError("the secret reason")
@@ -41,6 +42,13 @@ def test_a_fault_is_told_in_words_without_where_it_stands(faulty: TestClient) ->
     assert "Traceback" not in came.text
     assert came.headers["content-type"] == "text/html; charset=utf-8"
     assert "content-security-policy" in came.headers
+
+
+def test_of_what_was_sent_it_is_not_said_that_nothing_was_saved(faulty: TestClient) -> None:
+    assert "and nothing was saved" in faulty.get("/faulty").text
+    came = faulty.post("/faulty")
+    assert (came.status_code, "nothing was saved" in came.text) == (500, False)
+    assert "look before you send it again" in came.text
 
 
 def test_the_api_is_told_of_it_as_a_problem(faulty: TestClient) -> None:

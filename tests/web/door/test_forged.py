@@ -92,3 +92,13 @@ def test_a_link_from_another_site_takes_one_step_inside_before_it_is_answered(ro
     assert 'content="0; url=/day/K15?a=%22%3E%3Cb%3E"' in came.text
     onward = arriving | {"referer": "http://127.0.0.1/day/K15"}
     assert room.client.get("/day/K15", headers=onward).status_code == 303
+
+
+@pytest.mark.parametrize("path", ["//evil.example/x", "/%09/evil.example", "///evil.example?a=b"])
+def test_an_address_that_reads_as_another_site_leads_home(room: Room, path: str) -> None:
+    arriving = {"sec-fetch-site": "cross-site", "sec-fetch-mode": "navigate"}
+    came = room.client.get(f"http://127.0.0.1{path}", headers=arriving)
+    assert ('content="0; url=/"' in came.text, "evil" in came.text) == (True, False)
+    # and no page that is shown there leads on to it
+    inside = room.visitor(room.session(Role.READ)).get(f"http://127.0.0.1{path}")
+    assert (inside.status_code, 'value="//' in inside.text) == (404, False)

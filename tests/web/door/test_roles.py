@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from datetime import date
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -113,15 +112,3 @@ def test_only_whoever_keeps_the_house_changes_it() -> None:
 def test_on_this_machine_the_keeper_may_do_everything(window: Window) -> None:
     assert window.get("/do/draw").status == 200
     assert window.enter("draw", bottle="S13", amount="100 cm3").status == 200
-
-
-def test_looking_from_another_day_in_a_house_of_its_own_nothing_is_entered(window: Window) -> None:
-    from stockroom.web.visit import Visit
-
-    elsewhere = property(lambda visit: visit.today != visit.front.today)
-    with pytest.MonkeyPatch.context() as patched:
-        patched.setattr(Visit, "looks_elsewhere", elsewhere)
-        window.post("/as-at", as_at=date(2027, 1, 25).isoformat())
-        refused = window.enter("draw", bottle="S13", amount="100 cm3")
-    assert refused.status == 409
-    assert "nothing can be entered" in refused.text
