@@ -91,10 +91,8 @@ def _heel(known: Facts, product: Line, bottle: str, over: int) -> str:
             f"{left}: worth a label. It stays in {bottle}; into a smaller bottle:"
             f' stockroom decant {bottle} "{_cm3(over)}"'
         )
-    return (
-        f"{left}: not worth a label. Pour it away by the usual route: stockroom discard {bottle}"
-        " --how … --why heel."
-    )
+    # no command to throw it away stands beside this: all of it still serves its classes
+    return f"{left}: not worth a label. Once all have had theirs, pour the rest of {bottle} away."
 
 
 def _cm3(micro: int) -> str:

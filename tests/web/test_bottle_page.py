@@ -157,3 +157,9 @@ def test_both_ends_of_a_decanting_name_each_other(window: Window) -> None:
 def test_a_day_before_it_came_says_that_it_was_not_there_yet(onlooker: Window) -> None:
     page = onlooker.on(date(2020, 1, 6)).get("/bottle/S13")
     assert (page.status, "S13 was not there yet on 2020-01-06" in page.text) == (404, True)
+
+
+def test_a_bottle_that_stands_wrongly_says_so_at_its_top(onlooker: Window) -> None:
+    for number, danger in (("B04", "bleach beside acid"), ("S19", "ight cap"), ("S12", "acid")):
+        told, _, _ = onlooker.get(f"/bottle/{number}").text.partition("On this page:")
+        assert danger in told, number

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from typing import TYPE_CHECKING
 
 from stockroom.store.reading import reading
@@ -74,3 +75,14 @@ def test_an_amount_nobody_can_read_is_refused_beside_it(window: Window) -> None:
 def test_a_form_that_is_not_ours_is_turned_away(window: Window) -> None:
     sent = {"bottle": "S13", "amount": "100 cm3", "by": "T1", "form_token": "guessed"}
     assert window.client.post("/do/draw", data=sent).status_code == 403
+
+
+def test_a_make_put_right_on_its_own_page_is_told_where_there_still_is_a_page(
+    window: Window,
+) -> None:
+    made = window.enter("make", line="starch 0.5 % w/v", volume="200 cm3", place="F1")
+    found = re.search(r"entry=(\d+)&amp;back", made.html)
+    assert found
+    right = window.enter("put-right", entry=found[1], why="a slip", back="/bottle/S25")
+    assert (right.status, "/week?said=" in right.at) == (200, True)
+    assert "S25" in right.text

@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
 from datetime import date
 
 from stockroom.errors import NotAllowed
+from stockroom.findings import Danger, DangerKind
 from stockroom.keeping.course import Fading
 from stockroom.keeping.record import Record
 from stockroom.keeping.unnamed import is_unnamed
@@ -104,7 +105,8 @@ class Story:
 class BottlePage:
     """Everything the page shows. What there is nothing to say of is empty, or None.
 
-    `warning` has to be read before the bottle is touched. `came` is how it came from
+    `warning` has to be read before the bottle is touched, `dangers` are what can hurt somebody
+    as it stands there. `came` is how it came from
     `made_from`, which like `made_into` are pairs of a number and what it holds.
     """
 
@@ -115,6 +117,7 @@ class BottlePage:
     condition: str
     until: str
     warning: str
+    dangers: tuple[str, ...]
     gone: bool
     facts: Rows
     strengths: Rows
@@ -154,6 +157,7 @@ def bottle_page(
         condition=judged.condition.value,
         until=_said(until_words(seen)),
         warning=judged.warning,
+        dangers=tuple(_dangers(plan, bottle.number)),
         gone=gone,
         facts=tuple(_facts(known, seen)),
         strengths=_rows(strength_rows(fading)) if fading else (),
@@ -170,6 +174,14 @@ def bottle_page(
         line=line.key,
         of_stock=not line.never_kept and not is_unnamed(line.key),
     )
+
+
+def _dangers(plan: Plan, number: str) -> Iterator[str]:
+    """What can hurt somebody as it stands; its safety date is its condition, told already."""
+    for note in plan.notes:
+        told = isinstance(note, Danger) and note.kind is not DangerKind.SAFETY_DATE
+        if told and note.subject == number:
+            yield _begun(note.text)
 
 
 def _story(entries: Sequence[DiaryRow], sheet: int) -> Story:

@@ -3,13 +3,15 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
+from urllib.parse import unquote, urlsplit
 
 from fastapi import APIRouter, HTTPException
 from starlette.responses import Response
 
-from stockroom.errors import StockroomError
+from stockroom.errors import StockroomError, UnknownName
 from stockroom.reports.diary_text import diary_rows
 from stockroom.reports.pages.entry import EntryTold, entry_told
+from stockroom.service.bottle import bottle_seen
 from stockroom.service.diary import entry_story
 from stockroom.web.forms.field import LONGEST, Form
 from stockroom.web.forms.sending import Trouble, remember_initials, send, trouble_of
@@ -49,7 +51,20 @@ def answered(visit: Visit, form: Form, values: Mapping[str, str]) -> Response:
         send(visit, form, values, token)
     except AtField as refused:
         return form_page(visit, form, values, back, trouble_of(form, refused))
-    return back_to(back, said=token)
+    return back_to(_still_there(visit, back), said=token)
+
+
+def _still_there(visit: Visit, back: str) -> str:
+    """The page to go back to; this week in place of a bottle whose beginning was put right."""
+    address = urlsplit(back)
+    number = unquote(address.path.removeprefix("/bottle/"))
+    if number == address.path:
+        return back
+    try:
+        bottle_seen(visit.path, number, as_at=visit.today)
+    except UnknownName:
+        return "/week"
+    return back
 
 
 def form_page(
