@@ -50,6 +50,11 @@ class Shelf:
         rules = [(key, rule) for key, line in facts.lines.items() for rule in line.rules]
         self._opening_matters = {key for key, rule in rules if rule.origin is Origin.OPENED}
         self._fading = {key for key, rule in rules if rule.kind is RuleKind.FADES}
+        self._fading_opened = {
+            key
+            for key, rule in rules
+            if rule.kind is RuleKind.FADES and rule.origin is Origin.OPENED
+        }
         # sorted once here, and every tie further on is broken by it
         for bottle in sorted(facts.bottles, key=lambda b: natural(b.number)):
             self._by_line[bottle.line].append(bottle)
@@ -188,7 +193,7 @@ class Shelf:
     def spoilt(self, number: str, opened: date) -> str:
         """Whom opening it on a day would spoil it for, of those it is promised to; "" if nobody."""
         for promise in self.promises[number]:
-            if promise.beside:
+            if promise.beside and self.fades_from_opening(number):
                 return f"opening it on {opened} changes its strength for {promise.for_ref}"
             if self.unfit_opened(number, promise.on, promise.purpose, promise.judge, opened):
                 return f"opening it on {opened} spoils it for {promise.for_ref}"
@@ -200,6 +205,10 @@ class Shelf:
             matters = self.bottle[number].line in self._opening_matters
             self._ages[number] = matters and self.is_sealed(number)
         return self._ages[number]
+
+    def fades_from_opening(self, number: str) -> bool:
+        """True for a bottle still sealed whose strength, and not only its life, opening changes."""
+        return self.bottle[number].line in self._fading_opened and self.is_sealed(number)
 
     def unfit_opened(
         self, number: str, on: date, purpose: Purpose, judge: Judge, opened: date
