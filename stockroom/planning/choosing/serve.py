@@ -12,7 +12,8 @@ from itertools import combinations
 
 from stockroom.planning.amounts import say, take_for
 from stockroom.planning.choosing.fitness import judge_for_dilution, judge_for_need
-from stockroom.planning.choosing.shelf import Judge, Promise, Shelf, same_house, solute_held
+from stockroom.planning.choosing.shelf import Judge, Promise, Shelf, same_house
+from stockroom.planning.choosing.strengths_held import solute_held
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
 from stockroom.planning.wants import Settled, Want
 from stockroom.safety.bars import barred_by

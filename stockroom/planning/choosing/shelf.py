@@ -11,16 +11,16 @@ from collections.abc import Iterable
 from dataclasses import replace
 from datetime import date, timedelta
 
-from stockroom.keeping.record import CheckKind, Record
+from stockroom.keeping.record import Record
 from stockroom.keeping.rules import Origin, Purpose, RuleKind
 from stockroom.keeping.strength import Strengths, strengths_on
 from stockroom.keeping.verdict import USABLE, Condition, Limit, Verdict, judge, limits_of
 from stockroom.measure.amounts import Kind
-from stockroom.planning.amounts import per_gram
 from stockroom.planning.choosing.promises import Judge as Judge
 from stockroom.planning.choosing.promises import Promise as Promise
 from stockroom.planning.choosing.promises import Promises
-from stockroom.planning.facts import Bottle, Facts, Form, Line
+from stockroom.planning.choosing.strengths_held import last_found
+from stockroom.planning.facts import Bottle, Facts, Line
 from stockroom.planning.numbers import Natural, natural
 
 TOO_CLOSE_UL = 5_000
@@ -285,7 +285,7 @@ class Shelf:
 
     def _sorted(self, key: str, opened: date | None, purpose: Purpose) -> list[Bottle]:
         def rank(bottle: Bottle) -> tuple[int, date, bool, Natural]:
-            recent = -_last_found(bottle) if purpose is Purpose.EXACT else 0
+            recent = -last_found(bottle) if purpose is Purpose.EXACT else 0
             until = self.usable_until(bottle.number, purpose, opened)
             return recent, until, self.is_sealed(bottle.number), natural(bottle.number)
 
@@ -296,20 +296,3 @@ def same_house(facts: Facts, other: Facts) -> bool:
     """True when only what stands on the shelf may differ: the same lines and methods, one day."""
     same = facts.lines is other.lines and facts.methods is other.methods
     return same and facts.calendar is other.calendar and facts.as_at == other.as_at
-
-
-def _last_found(bottle: Bottle) -> int:
-    """The day, as a number, of the last strength found of it; 0 when never."""
-    found = [c.on for c in bottle.record.checks if c.kind is CheckKind.FOUND and c.passed]
-    return max(found).toordinal() if found else 0
-
-
-def solute_held(shelf: Shelf, line: Line, number: str, on: date) -> float | None:
-    """The strength a bottle is expected to hold on a day, in the line's unit.
-
-    Of a solid what a gram holds, by the bottle's own assay; None where it has none.
-    """
-    if line.form is Form.SOLID:
-        return per_gram(line, shelf.bottle[number])
-    opened = shelf.opening(number) or on
-    return shelf.verdict(number, on, opened=opened).strengths.expected

@@ -16,7 +16,8 @@ from stockroom.planning.amounts import solute_in, take_for
 from stockroom.planning.choosing.fitness import judge_for_dilution
 from stockroom.planning.choosing.make_or_take import Window, makes_of
 from stockroom.planning.choosing.serve import Serving
-from stockroom.planning.choosing.shelf import Judge, solute_held
+from stockroom.planning.choosing.shelf import Judge
+from stockroom.planning.choosing.strengths_held import solute_held
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
 from stockroom.planning.making_times import Times
 from stockroom.planning.timing import Moment, ready_at

@@ -9,7 +9,8 @@ from stockroom.measure.amounts import Kind
 from stockroom.planning.amounts import draw_for, say
 from stockroom.planning.buying.on_way import OnWay, ordered_today
 from stockroom.planning.choosing.fitness import judge_for_dilution
-from stockroom.planning.choosing.shelf import Promise, Shelf, solute_held
+from stockroom.planning.choosing.shelf import Promise, Shelf
+from stockroom.planning.choosing.strengths_held import solute_held
 from stockroom.planning.facts import Facts, Form, Ingredient, Line
 from stockroom.planning.making.batch import Batch, Source, Taken, taken_for
 from stockroom.planning.wants import Settled, Want

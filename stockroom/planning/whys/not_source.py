@@ -5,7 +5,7 @@ from __future__ import annotations
 from stockroom.errors import StockroomError
 from stockroom.keeping.rules import Purpose
 from stockroom.planning.amounts import draw_for, say
-from stockroom.planning.choosing.shelf import solute_held
+from stockroom.planning.choosing.strengths_held import solute_held
 from stockroom.planning.decisions import Draw, Make
 from stockroom.planning.facts import Bottle, Ingredient, Line
 from stockroom.planning.whys.not_bottle import barred_in, goes_first, too_little

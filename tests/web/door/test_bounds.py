@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import asyncio
 from collections.abc import Iterator
-from concurrent.futures import ThreadPoolExecutor
+from concurrent.futures import Future, ThreadPoolExecutor
 from typing import TYPE_CHECKING
 
 import pytest
@@ -89,7 +89,7 @@ def test_what_takes_too_long_to_come_is_refused(
     # in a thread of its own: where a browser's tests ran before, this one has a loop already
     receiving = bounds._counted(never, LARGEST)  # type: ignore[arg-type]
     with ThreadPoolExecutor() as threads:
-        read = threads.submit(asyncio.run, receiving())  # type: ignore[arg-type]
+        read: Future[object] = threads.submit(asyncio.run, receiving())  # type: ignore[arg-type]
         with pytest.raises(HTTPException) as refused:
             read.result()
     assert refused.value.status_code == 408
