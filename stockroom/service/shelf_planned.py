@@ -6,7 +6,7 @@ from dataclasses import dataclass, replace
 from datetime import date
 
 from stockroom.errors import UnknownName
-from stockroom.findings import Finding
+from stockroom.findings import Danger, Finding
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Place
 from stockroom.planning.on_shelf import Shelf
@@ -17,6 +17,8 @@ from stockroom.settings import StoreAt
 from stockroom.store.likeness import plain, unknown
 from stockroom.store.reading import reading
 from stockroom.store.snapshot import places_of
+from stockroom.store.snapshot_bottles import bottles_of
+from stockroom.store.snapshot_lines import lines_of
 
 
 @dataclass(frozen=True, slots=True)
@@ -71,6 +73,8 @@ def shelf_planned(
         found = replace(found, neighbours=_everywhere(found, every))
     elif there is not None:
         found = replace(found, rows=tuple(r for r in found.rows if r.bottle.place == there.name))
+    if what and not found.neighbours:
+        found = replace(found, neighbours=_of_those_shown(path, found, every))
     if day < today or known_on is not None:
         return ShelfPlanned(found, there, every)
     return ShelfPlanned(found, there, every, known_and_planned(path, as_at=today)[1])
@@ -83,6 +87,28 @@ def _place(every: tuple[Place, ...], asked: str) -> Place | None:
         if plain(asked) in (plain(place.name), plain(place.title)):
             return place
     raise unknown("place", asked, [place.name for place in every])
+
+
+def _of_those_shown(
+    path: StoreAt, found: Shelf, every: tuple[Place, ...]
+) -> tuple[Finding, ...]:
+    """What is wrong where the bottles found stand: with whatever stands beside them there."""
+    shown = {row.bottle.number for row in found.rows}
+    there = {row.bottle.place for row in found.rows} - {""}
+    if not shown:
+        return ()
+    with reading(path) as reader:
+        bottles = bottles_of(reader, found.on, found.known_on)
+        lines = lines_of(reader)
+    # a filter leaves out the other bottle, and the danger stays
+    here = [one for one in bottles if one.place in there or one.number in shown]
+    told = where_things_stand(here, lines, every)
+    return tuple(one for one in told if shown.intersection(_all_in(one)))
+
+
+def _all_in(finding: Finding) -> tuple[str, ...]:
+    others = finding.others if isinstance(finding, Danger) else ()
+    return (*finding.subject.split(", "), *others)
 
 
 def _everywhere(found: Shelf, every: tuple[Place, ...]) -> tuple[Finding, ...]:

@@ -43,6 +43,14 @@ def test_a_place_tells_first_what_must_not_stand_together(onlooker: Window) -> N
     assert "/paper/walk.pdf?places=A1" in page.html
 
 
+def test_a_filter_hides_no_warning_of_a_bottle_it_shows(onlooker: Window) -> None:
+    page = onlooker.get("/shelf", what="B04", place="A1")
+    assert numbers(page) == ["B04"]
+    assert "B04: stands beside B13, B14, B15 in A1" in said(page)
+    by_name = onlooker.get("/shelf", what="B13")
+    assert "B04: stands beside B13, B14, B15 in A1" in said(by_name)
+
+
 def test_name_place_and_condition_together_leave_only_what_fits_all(onlooker: Window) -> None:
     everywhere = numbers(onlooker.get("/shelf", what="hydrogen peroxide", condition="past"))
     there = onlooker.get("/shelf", what="hydrogen peroxide", place="A3", condition="past")
