@@ -8,7 +8,7 @@ from pathlib import Path
 
 import pytest
 from browsing import served
-from playwright.sync_api import Browser, Page, Route
+from playwright.sync_api import Browser, Page, Route, expect
 from windows import KEY
 
 from stockroom.web.house import House
@@ -43,7 +43,7 @@ def test_names_are_offered_while_somebody_types(page: Page) -> None:
 
 def test_keys_lead_to_the_line_and_to_pages(page: Page) -> None:
     page.keyboard.press("/")
-    assert page.evaluate(FOCUSED) == "line"
+    expect(page.locator("#line")).to_be_focused()
     page.evaluate("document.activeElement.blur()")
     for key in "ge":
         # faster than a hand would be taken for a scanner
@@ -75,7 +75,7 @@ def test_a_scanned_number_lands_in_the_line_wherever_one_is(page: Page) -> None:
     # all at once, as a scanner types: a busy machine would put pauses between
     page.evaluate(SCANNED)
     assert page.locator("#line").input_value() == "S13 "
-    assert page.evaluate(FOCUSED) == "line"
+    expect(page.locator("#line")).to_be_focused()
 
 
 def test_what_a_hand_types_slowly_is_no_scan(page: Page) -> None:
@@ -105,11 +105,11 @@ def test_after_a_refusal_the_wrong_field_has_the_focus(page: Page) -> None:
     page.fill("#line", "S13 900 cm3")
     page.press("#line", "Enter")
     page.locator("#f-by-wrong").wait_for()
-    assert page.evaluate(FOCUSED) == "f-by"
+    expect(page.locator("#f-by")).to_be_focused()
     page.fill("#f-by", "T1")
     page.press("#f-by", "Enter")
     page.locator("#f-amount-wrong").wait_for()
-    assert page.evaluate(FOCUSED) == "f-amount"
+    expect(page.locator("#f-amount")).to_be_focused()
     page.fill("#f-amount", "100 cm3")
     page.press("#f-amount", "Enter")
     page.locator(".said").wait_for()
