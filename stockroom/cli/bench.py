@@ -13,6 +13,7 @@ import typer
 from stockroom.cli.printing import show, width
 from stockroom.cli.shared import Shared
 from stockroom.errors import BadInput, MissingFigure
+from stockroom.service.figures import PER_CENT, figure
 
 if TYPE_CHECKING:
     from stockroom.service.bench import Sum
@@ -32,49 +33,13 @@ Volume = Annotated[
 ]
 
 
-NO_UNITS: Mapping[str, float] = MappingProxyType({"": 1.0})
-PER_CENT: Mapping[str, float] = MappingProxyType({"": 1.0, "%": 1.0, "percent": 1.0})
 GRAMS: Mapping[str, float] = MappingProxyType({"": 1.0, "g": 1.0, "mg": 0.001})
-CUBIC: Mapping[str, float] = MappingProxyType({"": 1.0, "cm3": 1.0, "ml": 1.0, "cc": 1.0})
 PER_MOLE: Mapping[str, float] = MappingProxyType({"": 1.0, "dm3/mol": 1.0, "l/mol": 1.0})
 _PER_CM3: Mapping[str, float] = MappingProxyType(
     {"": 1.0, "g/cm3": 1.0, "g/ml": 1.0, "gcm-3": 1.0, "gml-1": 1.0, "kg/l": 1.0, "kg/dm3": 1.0}
     | {"kg/m3": 0.001, "kgm-3": 0.001, "g/l": 0.001, "g/dm3": 0.001}
 )
 _LIGHTEST, _HEAVIEST = 0.5, 20.0
-
-
-def figure(
-    text: str | None,
-    where: str,
-    *,
-    like: str,
-    units: Mapping[str, float] = NO_UNITS,
-    zero: bool = False,
-) -> float | None:
-    """A number above 0 typed after the option `where`, or None; "1,18 g/cm3" as 1.18.
-
-    `units` are those that may stand behind it, with what each is multiplied by; `like` is
-    shown as what may be written. With `zero`, 0 will do.
-    Raises: BadInput; BadAmount for "1,000", which has two readings.
-    """
-    if text is None:
-        return None
-    from stockroom.measure.reading import NUMBER, read_number, tidy
-
-    shown = f"{where} {text.strip()!r}"
-    read = re.fullmatch(rf"(?P<number>{NUMBER}) ?(?P<unit>.*)", tidy(text))
-    unit = re.sub(r"[ .·]", "", read["unit"]).lower() if read else ""
-    if read is None or unit not in units or read["number"].startswith("-"):
-        raise BadInput(f"{shown} is not a number {_above(zero)}.", f"Write it as {like}.")
-    value = float(read_number(read["number"], where=where, whole=text)) * units[unit]
-    if not (value > 0 or (zero and value == 0)) or value == float("inf"):
-        raise BadInput(f"{shown} is not a number {_above(zero)}.", f"Write it as {like}.")
-    return value
-
-
-def _above(zero: bool) -> str:
-    return "from 0 up" if zero else "above 0"
 
 
 def density_of(text: str | None, where: str) -> float | None:

@@ -14,11 +14,11 @@ from stockroom.cli.bench import (
     asking_density,
     celsius_or_none,
     density_of,
-    figure,
     name_of,
     show_sum,
 )
 from stockroom.cli.shared import of
+from stockroom.service.figures import figure
 
 
 def strength(

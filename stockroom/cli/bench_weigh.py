@@ -15,12 +15,11 @@ from stockroom.cli.bench import (
     asking_density,
     closeness_of,
     density_of,
-    figure,
     name_of,
     show_sum,
 )
-from stockroom.cli.bench_assay import assay_of
 from stockroom.cli.shared import of
+from stockroom.service.figures import assay_of, figure
 from stockroom.service.typed import amount_of
 
 

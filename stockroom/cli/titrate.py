@@ -6,12 +6,11 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from stockroom.cli.bench import CUBIC, figure
-from stockroom.cli.bench_assay import assay_of
 from stockroom.cli.printing import show, suggest, width
 from stockroom.cli.shared import Shared, of
 from stockroom.cli.stock import Happened, when
 from stockroom.errors import BadInput
+from stockroom.service.figures import assay_of, cm3_of, titres_of
 
 if TYPE_CHECKING:
     from stockroom.service.titrate import Titrated
@@ -90,7 +89,7 @@ def titrate(
     label = assay_of(assay)
     asked = service.Asked(
         reaction,
-        [_titre(text) for text in titres or []],
+        titres_of(titres or []),
         titrant=titrant,
         uncertainty=uncertainty,
         standard=standard,
@@ -107,9 +106,9 @@ def titrate(
 
 def _cubic(blank: str | None, within: str, burette: str) -> dict[str, float]:
     return {
-        "blank_cm3": _cm3(blank or "0", "--blank", like="0.05", zero=True),
-        "within_cm3": _cm3(within, "--within", like="0.10"),
-        "burette_cm3": _cm3(burette, "--burette", like="50"),
+        "blank_cm3": cm3_of(blank or "0", "--blank", like="0.05", zero=True),
+        "within_cm3": cm3_of(within, "--within", like="0.10"),
+        "burette_cm3": cm3_of(burette, "--burette", like="50"),
     }
 
 
@@ -145,13 +144,3 @@ def _refuse_unwritten(sure: bool, on: str | None) -> None:
                 f"{option}{'' if given is True else f' {given}'}: nothing is written to a bottle.",
                 "Add --bottle, or leave it out.",
             )
-
-
-def _titre(text: str) -> float:
-    if "," in text and "." in text:
-        raise BadInput(f"titre {text!r} is more than one.", "Write them apart: 25.30 25.35.")
-    return _cm3(text, "titre", like="25.35")
-
-
-def _cm3(text: str, where: str, *, like: str, zero: bool = False) -> float:
-    return figure(text, where, like=like, units=CUBIC, zero=zero) or 0.0
