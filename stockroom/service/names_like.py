@@ -41,8 +41,8 @@ class _Held:
 def names_like(path: StoreAt, kind: str, text: str, *, today: date) -> tuple[Named, ...]:
     """The names of a kind like `text`, at most twelve: those that begin with it first.
 
-    `kind` is bottle, line, place, booking, recipe, department or all; any of a thing's names
-    finds it. Raises: BadInput for another kind; StoreTrouble.
+    `kind` is bottle, line, place, booking, recipe, department, reaction or all; any of a
+    thing's names finds it. Raises: BadInput for another kind; StoreTrouble.
     """
     readers = _KINDS.get(kind)
     if readers is None:
@@ -121,6 +121,13 @@ def _recipes(reader: Reader, today: date) -> Iterator[_Held]:
         yield _held(code, newest[code])
 
 
+def _reactions(reader: Reader, today: date) -> Iterator[_Held]:
+    from stockroom.chemistry.reactions import TITRATIONS
+
+    for each in TITRATIONS:
+        yield _held(each.name, "")
+
+
 def _bookings(reader: Reader, today: date) -> Iterator[_Held]:
     for number, code, title, on, firmness in reader.ask(_BOOKED, today.isoformat()):
         firm = "" if firmness == "firm" else f", {firmness}"
@@ -155,5 +162,6 @@ _KINDS: dict[str, tuple[Callable[[Reader, date], Iterator[_Held]], ...]] = {
     "booking": (_bookings,),
     "recipe": (_recipes,),
     "department": (_departments,),
+    "reaction": (_reactions,),
     "all": (_bottle_numbers, _bookings, _recipes, _lines),
 }

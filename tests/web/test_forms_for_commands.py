@@ -35,7 +35,7 @@ NO_FORM = {
 SHOWN = frozenset(
     "fresh past usage buying on-order ready shelf why changed what-if fades diary week day slip"
     " phone card strip label report calendar workbook morning handover picture strength weigh"
-    " dilute titrate".split()
+    " dilute".split()
 )
 """Commands that enter nothing; a copy of a sheet may be numbered, which pages do themselves."""
 

@@ -15,6 +15,7 @@ EVERY = (
     "count",
     "look",
     "found",
+    "titrate",
     "tested",
     "open",
     "printed",
@@ -84,7 +85,7 @@ def _possible(seen: OnShelf, name: str) -> bool:
     if name == "printed":
         # only where a date is printed on it is there a reading to settle
         return bottle.record.printed is not None
-    if name == "found":
+    if name in ("found", "titrate"):
         return _strong(seen)
     if name == "tested":
         return _tested(seen)

@@ -54,7 +54,10 @@ def check_act(check: CheckToDo, bottles: dict[str, Bottle]) -> tuple[Act, ...]:
         buttons = (("good", "Good"), ("bad", "Not good"))
         return (Act("look", bottle, buttons, (("note", ""),), "passed"),)
     found = (("", "Found"),)
-    return (Act("found", bottle, found, (("strength", ""),), other="with its uncertainty"),)
+    return (
+        Act("found", bottle, found, (("strength", ""),), other="with its uncertainty"),
+        Act("titrate", bottle, other="from its titres"),
+    )
 
 
 def entered_for(known: Facts) -> dict[tuple[str, str], list[Drawn]]:

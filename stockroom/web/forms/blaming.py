@@ -38,6 +38,8 @@ def blamed(form: Form, values: Mapping[str, str], error: StockroomError) -> str:
         [each for each in quoted if each in fitting],
         fitting,
         _asked_for(form, filled, error.hint),
+        # a figure is refused by the name of its option
+        [each for each in _named_in(form, error.message) if each in filled],
         # what a message begins with, it is about
         [each for each in quoted if message.startswith(said[each.name])],
         quoted,
@@ -45,6 +47,21 @@ def blamed(form: Form, values: Mapping[str, str], error: StockroomError) -> str:
         if found:
             return found[0].name
     return ""
+
+
+def in_labels(form: Form, message: str) -> str:
+    """A refusal's message with the options of a command as the labels of their fields."""
+
+    def label(option: re.Match[str]) -> str:
+        field = field_of(form, option[0])
+        return f"“{field.label}”" if field else option[0]
+
+    return _OPTION.sub(label, message)
+
+
+def _named_in(form: Form, message: str) -> list[Field]:
+    named = (field_of(form, option) for option in _OPTION.findall(message))
+    return [each for each in named if each]
 
 
 def to_tick(form: Form, error: StockroomError) -> str:

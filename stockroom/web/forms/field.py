@@ -15,7 +15,7 @@ if TYPE_CHECKING:
 LONGEST = 500
 """Signs a field takes; a longer note belongs on paper. Our choice."""
 
-NAMES = ("bottle", "line", "place", "booking", "recipe", "department")
+NAMES = ("bottle", "line", "place", "booking", "recipe", "department", "reaction")
 """Kinds of field for which names are offered while somebody types."""
 
 

@@ -13,6 +13,7 @@ from stockroom.web.forms import (
     righting,
     shelf,
     taking,
+    titrating,
 )
 from stockroom.web.forms.field import Form, by_name
 
@@ -21,6 +22,7 @@ FORMS: tuple[Form, ...] = (
     *taking.FORMS,
     *shelf.FORMS,
     *looking.FORMS,
+    *titrating.FORMS,
     *making.FORMS,
     *ordering.FORMS,
     *booking.FORMS,
