@@ -76,7 +76,7 @@ FORMS = (
             Field(
                 "dilution",
                 "Sample diluted before",
-                hint="10 cm3 to 250 cm3; a second step after a comma and then",
+                hint="10 cm3 to 250 cm3, then 25 cm3 to 100 cm3",
             ),
             Field("assay", "Assay of what was weighed", hint="99.9 ± 0.1 %"),
             Field("blank", "Blank, in cm³", hint="taken off every titre"),
