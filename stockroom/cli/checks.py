@@ -24,7 +24,8 @@ def found(
     ] = "",
     note: Annotated[str, typer.Option(help="How it was found.")] = "",
     sure: Annotated[
-        bool, typer.Option("--sure", help="Keep it though it is far from the label.")
+        bool,
+        typer.Option("--sure", help="Keep it though it is far from the label, or still stands."),
     ] = False,
     on: Happened = None,
 ) -> None:

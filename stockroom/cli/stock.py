@@ -123,6 +123,9 @@ def make(
         typer.Option("--from", metavar="BOTTLE", help="A bottle to make it from; may be repeated."),
     ] = None,
     place: Annotated[str | None, typer.Option(metavar="PLACE", help="Where it is put.")] = None,
+    sure: Annotated[
+        bool, typer.Option("--sure", help="It was made a second time, or is as much as that.")
+    ] = False,
     on: Happened = None,
 ) -> None:
     """A solution was made up: its sources are drawn and it gets a number.
@@ -138,6 +141,7 @@ def make(
         amount_of(volume),
         sources=source or [],
         place=place,
+        sure=sure,
         **when(shared, on),
     )
     show_done(shared, done)

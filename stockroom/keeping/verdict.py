@@ -83,6 +83,12 @@ class Verdict:
     """True when only a look stands between this bottle and being sound."""
 
     @property
+    def until_word(self) -> str:
+        """What the day of `good_until` is called: past a recheck a bottle is not known, not bad."""
+        known_only = self.good_until is not None and self.good_until == self.recheck_by
+        return "recheck by" if known_only and self.good_until != self.usable_until else "good until"
+
+    @property
     def warning(self) -> str:
         """What must be said of a bottle past its safety date; "" of any other."""
         here = self.condition not in USABLE and self.condition is not Condition.GONE

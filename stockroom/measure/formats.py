@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import re
 from decimal import ROUND_HALF_EVEN, Decimal
 
 from stockroom.errors import BadAmount
@@ -58,6 +59,29 @@ def format_strength(value: float, unit: str) -> str:
     if unit == StrengthUnit.PARTS:
         return f"{unit} {format_number(value)}"
     return f"{format_number(value)} {unit_mark(unit)}"
+
+
+def figures_like(number: str, like: str) -> str:
+    """A number as written, with zeros at its end to as many figures as `like` begins with.
+
+    >>> figures_like("0.046", "0.0500 mol/dm3"), figures_like("19", "20 vol")
+    ('0.0460', '19')
+    """
+    plain = _NUMBER.match(like)
+    # only behind a point: a zero before it would be another number
+    if plain is None or "." not in plain[0] or not _NUMBER.fullmatch(number):
+        return number
+    lacking = _significant(plain[0]) - _significant(number)
+    if lacking <= 0:
+        return number
+    return f"{number}{'' if '.' in number else '.'}{'0' * lacking}"
+
+
+_NUMBER = re.compile(r"\d[\d ]*(?:\.\d+)?")
+
+
+def _significant(number: str) -> int:
+    return len(number.replace(".", "").replace(" ", "").lstrip("0"))
 
 
 def unit_mark(unit: str) -> str:

@@ -7,7 +7,13 @@ from functools import lru_cache
 
 from stockroom.errors import MissingFigure, NotAllowed
 from stockroom.measure.amounts import Amount, Kind
-from stockroom.measure.formats import format_about, format_amount, format_number, format_strength
+from stockroom.measure.formats import (
+    figures_like,
+    format_about,
+    format_amount,
+    format_number,
+    format_strength,
+)
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line
 
 UL_PER_DM3 = 1_000_000
@@ -136,8 +142,10 @@ def say_strength(line: Line, value: float | None) -> str:
         return line.strength_text.replace("dm3", "dm³")
     scale, unit = label_scale(line)
     if unit == line.unit:
-        return format_strength(value, line.unit)
-    return f"{format_number(value * scale, 3)} {unit}"
+        # as many figures as its label: 0.0460 beside 0.0500
+        said, number = format_strength(value, line.unit), format_number(value)
+        return said.replace(number, figures_like(number, line.strength_text), 1)
+    return f"{figures_like(format_number(value * scale, 3), line.strength_text)} {unit}"
 
 
 def label_scale(line: Line) -> tuple[float, str]:

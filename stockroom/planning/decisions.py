@@ -13,7 +13,8 @@ from enum import StrEnum
 from stockroom.findings import Finding
 from stockroom.keeping.caution import LowerLimits
 from stockroom.keeping.verdict import Condition
-from stockroom.measure.amounts import Kind
+from stockroom.measure.amounts import Amount, Kind
+from stockroom.measure.formats import format_amount
 from stockroom.planning.facts import Booking, House, Pack
 from stockroom.planning.order_decisions import Budget as Budget
 from stockroom.planning.order_decisions import Coming as Coming
@@ -106,6 +107,11 @@ class Make:
     reasons: tuple[str, ...] = ()
     too_little: tuple[str, ...] = ()
     vessels: int = 1
+
+    @property
+    def wanted(self) -> str:
+        """What it is, the same while its number moves: "starch 0.5 % w/v, 176 cm³, 2027-01-25"."""
+        return f"{self.line}, {format_amount(Amount(Kind.VOLUME, self.volume))}, {self.on}"
 
 
 @dataclass(frozen=True, slots=True)
@@ -271,6 +277,7 @@ class Watch:
 
     `not_before` and `destroy_by` are minutes after midnight of its day, 1440 and more the day
     after. `ticked_by` holds the initials of whoever destroyed it, "" while nobody has.
+    `dangers` say why it is never kept, where `how` does not.
     """
 
     booking: str
@@ -280,11 +287,15 @@ class Watch:
     destroy_by: int
     how: str
     ticked_by: str = ""
+    dangers: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)
 class Level:
-    """The day a line falls below its reorder level, what is then left, and when it runs out."""
+    """The day a line falls below its reorder level, what is then left, and when it runs out.
+
+    `not_counted` names the bottles that stand there and may not be used as they are, and why.
+    """
 
     line: str
     item: str
@@ -293,6 +304,7 @@ class Level:
     level: int
     kind: Kind
     runs_out: date | None = None
+    not_counted: tuple[str, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

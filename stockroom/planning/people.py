@@ -3,15 +3,17 @@
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Collection, Iterable, Iterator
+from collections.abc import Collection, Iterable, Iterator, Mapping
+from dataclasses import replace
 from datetime import date
 
 from stockroom.findings import Finding
 from stockroom.measure.days import format_time
 from stockroom.planning.decisions import CheckToDo, DayLoad, Make, Watch
 from stockroom.planning.explode import Need
-from stockroom.planning.facts import Booking, Facts, Recipe
+from stockroom.planning.facts import Booking, Facts, Line, Recipe
 from stockroom.planning.making.equipment import largest_vessel_on
+from stockroom.planning.never_kept import dangers_of
 from stockroom.planning.timing import DAY_MINUTES, ready_at
 
 # common practice, no source
@@ -198,28 +200,54 @@ def must_be_here(
     return [(min(set_out, booking.minute - MIX_BEFORE), ends)]
 
 
+def longest_stay(gaps: Mapping[str, Iterable[tuple[int, int]]], number: str) -> str:
+    """Who must stay longest on a day, where that is after this booking's own last minute.
+
+    `gaps` are the stretches of each booking of the day. "" where no other one goes on longer,
+    or none of this one's own is to be covered.
+
+    >>> longest_stay({"K15": [(1080, 1210)], "K16": [(1080, 1240)]}, "K15")
+    'that day to 20:40 (K16)'
+    """
+    ends = {each: max(last for _, last in row) for each, row in gaps.items() if row}
+    if number not in ends:
+        return ""
+    latest = max(ends, key=lambda each: ends[each])
+    return f"that day to {clock(ends[latest])} ({latest})" if ends[latest] > ends[number] else ""
+
+
 def watches(needs: Iterable[Need], short: Collection[str]) -> list[Watch]:
     """Each booking with something that is never kept, in the order of the needs.
 
     By the words of its recipe, else by those of a line it really gets (not in `short`).
     """
     row: dict[str, Watch] = {}
+    lines: dict[str, list[Line]] = {}
+    recipes: dict[str, Recipe] = {}
     for need in needs:
+        recipes[need.booking.number] = need.recipe
+        lines.setdefault(need.booking.number, []).append(need.line)
         gets = need.ref not in short
         how = need.recipe.never_kept or (need.line.never_kept if gets else "")
         if how and need.booking.number not in row:
-            booking = need.booking
-            ends = booking.minute + booking.lasts_minutes
-            row[booking.number] = Watch(
-                booking=booking.number,
-                on=booking.on,
-                title=need.recipe.title,
-                not_before=booking.minute - MIX_BEFORE,
-                destroy_by=ends + DESTROY_AFTER,
-                how=how,
-                ticked_by=booking.destroyed_by,
-            )
-    return list(row.values())
+            row[need.booking.number] = _watch(need, how)
+    return [
+        replace(watch, dangers=dangers_of(watch.how, recipes[number], lines[number]))
+        for number, watch in row.items()
+    ]
+
+
+def _watch(need: Need, how: str) -> Watch:
+    booking = need.booking
+    return Watch(
+        booking=booking.number,
+        on=booking.on,
+        title=need.recipe.title,
+        not_before=booking.minute - MIX_BEFORE,
+        destroy_by=booking.minute + booking.lasts_minutes + DESTROY_AFTER,
+        how=how,
+        ticked_by=booking.destroyed_by,
+    )
 
 
 def watch_note(watch: Watch) -> Finding:

@@ -11,6 +11,7 @@ from stockroom.planning.decisions import Answer, CheckToDo, Make, Outcome, Plan
 from stockroom.planning.facts import Facts, Recipe
 from stockroom.planning.known import how_known
 from stockroom.planning.making.make_card import goes_of
+from stockroom.planning.never_kept import dangers_of
 from stockroom.safety.cautions import Caution, Step, cautions_about
 
 
@@ -121,7 +122,10 @@ def _words(facts: Facts, wanted: set[str]) -> tuple[str, ...]:
     for recipe in _recipes(facts, wanted):
         waste = f"waste: {recipe.waste}" if recipe.waste else ""
         covered = recipe.assessment or "none named: ask before it runs"
-        said = (recipe.handling, recipe.never_kept, waste, f"local risk assessment: {covered}")
+        lines = [facts.lines[each.line] for each in recipe.requirements]
+        why = dangers_of(recipe.never_kept, recipe, lines) if recipe.never_kept else ()
+        local = f"local risk assessment: {covered}"
+        said = (recipe.handling, *why, recipe.never_kept, waste, local)
         row += [f"{recipe.code} {words}" for words in said if words]
     return tuple(row)
 
@@ -140,8 +144,11 @@ def _at_the_bench(facts: Facts, needs: tuple[Answer, ...]) -> tuple[str, ...]:
         said = (recipe.handling, recipe.never_kept, recipe.waste)
         thing = goes_of(facts.lines[need.line])
         for caution in cautions_about([thing], said=said, steps=(Step.USE, Step.WASTE)):
-            # no container takes what is never kept before it is destroyed
+            # no container takes what is never kept before it is destroyed; what it then is, and
+            # where it goes, its recipe knows best
             after = bool(recipe.never_kept) and caution.collects
+            if after and recipe.waste:
+                continue
             items.setdefault((caution, after), []).append(need.item)
     order = list(Step)
     row = sorted(items.items(), key=lambda pair: (order.index(pair[0][0].step), pair[0][0].number))

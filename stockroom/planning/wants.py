@@ -29,6 +29,10 @@ class Settled(StrEnum):
     REFUSED = "refused"
 
 
+TOO_CLOSE = "too close to call"
+"""Said of a bottle in which so little would be left that nothing is counted on it."""
+
+
 @dataclass(slots=True)
 class Want:
     """So much of a line (`amount`, or `solute` at its strength), in hand by `deadline`.

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from datetime import date
 
-from stockroom.planning.decisions import Budget, Coming, Instead, Order, Plan
+from stockroom.planning.decisions import Budget, Coming, Instead, Level, Order, Plan
 from stockroom.reports.sheet import columns, foot, head, page, section, spanning, wrap
 from stockroom.reports.words import TIED, amount, counted, day, listed, money, raised
 
@@ -59,11 +59,17 @@ def level_section(plan: Plan, width: int) -> str:
             day(level.on),
             f"{raised(level.line)}: {amount(level.left, level.kind)} left, "
             f"level {amount(level.level, level.kind)}"
-            + (f", runs out {day(level.runs_out)}" if level.runs_out else ""),
+            + (f", runs out {day(level.runs_out)}" if level.runs_out else "")
+            + (f"; {not_counted(level)}" if level.not_counted else ""),
         )
         for level in sorted(plan.levels, key=lambda level: (level.on, level.item))
     ]
     return section("FALLS BELOW THE LINE ON", columns(rows, width))
+
+
+def not_counted(level: Level) -> str:
+    """What stands there and is not counted, in words: "not counted: B35 no date"."""
+    return f"not counted: {', '.join(level.not_counted)}"
 
 
 def lateness(order: Order) -> str:

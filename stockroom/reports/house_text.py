@@ -132,7 +132,7 @@ def _condition(known: Facts, bottle: Bottle) -> str:
         return f"{condition}: {bottle.record.set_aside}"
     if judged.good_until is None:
         return f"{condition}, no last good day" if judged.condition in USABLE else condition
-    was = "was good until" if judged.good_until < known.as_at else "good until"
+    was = "was good until" if judged.good_until < known.as_at else judged.until_word
     if judged.condition is Condition.WATCH:
         was = "strength known until"
     return f"{condition}, {was} {judged.good_until}"

@@ -65,6 +65,7 @@ def watch_data(watch: Watch) -> Data:
         "not_before": _moment(watch.on, watch.not_before),
         "destroy_by": _moment(watch.on, watch.destroy_by),
         "how": watch.how,
+        "dangers": list(watch.dangers),
         "ticked_by": watch.ticked_by or None,
     }
 

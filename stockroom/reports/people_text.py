@@ -43,4 +43,4 @@ def _watch(watch: Watch) -> str:
     mix, destroy = clock(watch.not_before), clock(watch.destroy_by)
     ticked = watch.ticked_by or "........"
     times = f"mix not before {mix}, destroyed by {destroy}, ticked by {ticked}"
-    return f"{watch.title}: {times}: {watch.how}"
+    return f"{watch.title}: {times}: {' '.join((*watch.dangers, watch.how))}"

@@ -8,7 +8,7 @@ from stockroom.planning.decisions import Answer, Outcome
 from stockroom.reports.checks_text import check_lines
 from stockroom.reports.makes_text import makes_by_day
 from stockroom.reports.sheet import CAUTIOUS, PRACTICE, columns, foot, page, section, wrap
-from stockroom.reports.words import amount, counted, named, raised, source
+from stockroom.reports.words import amount, by_bottle, counted, named, raised, source
 
 if TYPE_CHECKING:
     from stockroom.planning.ready import Readiness
@@ -65,7 +65,7 @@ def served(need: Answer) -> str:
 
 
 def _bottles(need: Answer) -> list[str]:
-    drawn = [draw for draw in need.draws if draw.bottle]
+    drawn = [draw for draw in by_bottle(need.draws) if draw.bottle]
     if len(drawn) == 1 and drawn[0].amount == need.amount:
         return [drawn[0].bottle]  # the amount has just been said
     return [source(draw) for draw in drawn]

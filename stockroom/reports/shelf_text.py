@@ -58,7 +58,7 @@ def left_of(row: OnShelf) -> str:
 def until_words(row: OnShelf) -> str:
     """Until when it is good, what decided that, and what is to be said of it."""
     found = row.verdict
-    until = f"good until {day(found.good_until)}, " if found.good_until else ""
+    until = f"{found.until_word} {day(found.good_until)}, " if found.good_until else ""
     warned = f" ({found.warning})" if found.warning else ""
     doubt = f"; {row.doubt}" if row.doubt else ""
     return f"{until}decided by: {found.decided_by}{warned}{doubt}"

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 import re
 from collections.abc import Iterable
+from dataclasses import replace
 from datetime import date
 
 from stockroom.keeping.verdict import Condition
@@ -146,6 +147,21 @@ def source(draw: Draw) -> str:
     origin = draw.bottle or named(draw.item, "")
     made = f" ({draw.make})" if draw.make and not draw.bottle else ""
     return f"{amount(draw.amount, draw.kind)} of {origin}{made}"
+
+
+def by_bottle(draws: Iterable[Draw]) -> list[Draw]:
+    """The draws with each bottle once: what is entered already and the rest are one draw of it."""
+    found: dict[str, Draw] = {}
+    rest: list[Draw] = []
+    for draw in draws:
+        before = found.get(draw.bottle)
+        if not draw.bottle:
+            rest.append(draw)
+        elif before is None:
+            found[draw.bottle] = draw
+        else:
+            found[draw.bottle] = replace(before, amount=before.amount + draw.amount)
+    return [*found.values(), *rest]
 
 
 def money(pence: int) -> str:

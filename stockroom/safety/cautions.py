@@ -13,6 +13,7 @@ from dataclasses import dataclass, replace
 from enum import StrEnum
 
 from stockroom.findings import DO_NOT_TOUCH
+from stockroom.safety.collected import HALOGENATED, METALS
 from stockroom.safety.peroxide_formers import SIGNS, class_of
 
 HOUSE_LINE = (
@@ -127,22 +128,8 @@ def _of(words: str) -> frozenset[str]:
     return frozenset(part.strip() for part in words.split("|") if part.strip())
 
 
-_CLASS = frozenset({Step.USE})
+_CLASS, _CLEARING = frozenset({Step.USE}), frozenset({Step.WASTE})
 _ACIDS = _of("acid|oxidising acid")
-_METALS = _of(
-    "barium chloride|barium nitrate|barium hydroxide|barium carbonate|copper(II) sulfate"
-    "|copper(II) chloride|copper(II) nitrate|copper(II) oxide|basic copper(II) carbonate"
-    "|silver nitrate|silver sulfate|ammoniacal silver|potassium permanganate|manganese dioxide"
-    "|manganese(II) sulfate|manganese(II) chloride|lead(II) nitrate|lead(II) ethanoate"
-    "|lead(II) bromide|lead(II) oxide|lead(IV) oxide|nickel(II) sulfate|nickel(II) chloride"
-    "|nickel(II) nitrate|cobalt(II) chloride|cobalt(II) sulfate|cobalt(II) nitrate"
-    "|potassium dichromate|potassium chromate|ammonium dichromate|sodium dichromate|zinc sulfate"
-)
-_HALOGENATED = _of(
-    "dichloromethane|trichloromethane|chlorobenzene|bromobenzene|1-bromobutane|1-chlorobutane"
-    "|1-iodobutane|bromoethane|tetrachloroethene|2-bromo-2-methylpropane|2-chloro-2-methylpropane"
-)
-
 CAUTIONS: tuple[Caution, ...] = (
     Caution(1, Step.BEGIN, HOUSE_LINE, "c", "come first"),
     Caution(
@@ -181,10 +168,17 @@ CAUTIONS: tuple[Caution, ...] = (
         "c", "chloramines", substances=_of("ammonia"),
     ),
     Caution(
-        6, Step.MIX, "Ammoniacal silver is never kept: mix it just before, in clean glass, and let "
-        "no residue dry. Cold does not make it safe. Destroy it at once with an excess of "
-        "chloride or of dilute acid, and rinse every vessel.",
-        "a", "destroy", substances=_of("ammoniacal silver"),
+        6, Step.MIX, "Ammoniacal silver is never kept: it can turn explosive on standing, cold or "
+        "warm. Mix it just before, in clean glass, and let no residue dry. Destroy it at once with "
+        "an excess of chloride or of dilute acid, and rinse every vessel.",
+        "a", "destroy", substances=_of("ammoniacal silver"), also=_CLEARING, parts=(
+            ("explo", "ammoniacal silver is never kept: it can turn explosive on standing, cold "
+             "or warm"),
+            ("just before|before use", "mix it just before, in clean glass"),
+            ("dries|dry", "let no residue dry"),
+            ("destroy", "destroy it at once with an excess of chloride or of dilute acid"),
+            ("rinse", "rinse every vessel"),
+        ),
     ),
     Caution(
         8, Step.WASTE, "Oxidising and nitric waste: a vented container of its own, no more than "
@@ -230,7 +224,7 @@ CAUTIONS: tuple[Caution, ...] = (
     ),
     Caution(
         13, Step.WASTE, "Collect the residues: local limits decide what may go down a sink.",
-        "c", "residues", substances=_METALS | _HALOGENATED, collects=True,
+        "c", "residues", substances=_of(f"{METALS}|{HALOGENATED}"), collects=True,
     ),
     Caution(
         14, Step.LABEL, "Hazard text goes with strength: a stronger make needs a new label.",

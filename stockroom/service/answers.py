@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Any
 
 
@@ -13,6 +13,7 @@ class Done:
     `bottle` and `entry` are the numbers it touched; `next` a command that
     usually follows, `undo` the one that takes it back where there is no entry
     to put right; `practice` whether the store is the invented college;
+    `also` more entries that are put right by themselves, as each of several arrivals;
     `details` further lines (draws of a make, children of a spoiled bottle).
     """
 
@@ -23,6 +24,11 @@ class Done:
     practice: bool = False
     details: tuple[str, ...] = ()
     undo: str = ""
+    also: tuple[int, ...] = ()
+
+    def telling(self, more: tuple[str, ...]) -> Done:
+        """The same with these further lines behind its own."""
+        return replace(self, details=(*self.details, *more))
 
     def as_data(self) -> dict[str, Any]:
         """The same as data, for --json and for the API: keys are added to, never renamed."""

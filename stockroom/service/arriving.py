@@ -83,7 +83,10 @@ def arrive(
         first = bottles[0]
         told = (*_told_of_assay(found, label.assay), *_told_of_printed(work, first))
         details = (*usual.told, *told, *told_of_place(work, first), *came)
-        return work.done(text, first, entries[0], details=details, last=entries[-1].id)
+        # each of several is a bottle by itself, and its slip is put right by itself
+        also = tuple(entry.id for entry in entries[1:count] if entry.id is not None)
+        last = entries[-1].id
+        return work.done(text, first, entries[0], details=details, last=last, also=also)
 
 
 def _put_away(

@@ -9,12 +9,30 @@ from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_amount
 from stockroom.planning.amounts import say_left
 from stockroom.planning.explode import amount_needed
+from stockroom.planning.rooms import shared_rooms
 from stockroom.service.known import known_from
 from stockroom.service.replayed import replayed_plan
+from stockroom.store import names
+from stockroom.store.engine import Session
 from stockroom.store.reading import Reader
+from stockroom.store.snapshot import bookings_between
 from stockroom.store.snapshot_bottles import bottles_of
 from stockroom.store.snapshot_lines import lines_of, recipes_of
 from stockroom.store.tables import Booking, Recipe
+
+
+def the_same(session: Session, booking: Booking) -> tuple[str, ...]:
+    """A question where the like of it is booked at that hour already; nothing where it is not."""
+    found = names.bookings_alike(session, booking)
+    # two classes side by side are nothing unusual, so it is asked and not refused
+    told = f"the same as {', '.join(found)}, at the same hour: is it booked twice?"
+    return (told,) if found else ()
+
+
+def room_shared(reader: Reader, booking: Booking) -> tuple[str, ...]:
+    """Who else has the room while a booking just saved lasts; none where nobody has."""
+    day = bookings_between(reader, booking.on_day, booking.on_day)
+    return shared_rooms([each for each in day if each.number == booking.number], day)
 
 
 def extra(reader: Reader, booking: Booking, recipe: Recipe, before: int) -> tuple[str, ...]:

@@ -10,8 +10,8 @@ from stockroom.errors import BadInput, NotAllowed
 from stockroom.measure.days import format_time, spell_day
 from stockroom.measure.formats import format_number
 from stockroom.planning.facts import Firmness
+from stockroom.service import booking_effects as effects
 from stockroom.service.answers import Done
-from stockroom.service.booking_effects import extra, kept_as_stock, withdrawn
 from stockroom.service.booking_rules import check_day, check_in_use, check_may_be_dropped
 from stockroom.service.work import initials
 from stockroom.settings import StoreAt
@@ -103,22 +103,15 @@ def book(
 def _booked(hand: Hand, booking: Booking) -> Done:
     """Save a new booking, and say what is odd about it."""
     session = hand.session
-    twice = _the_same(session, booking)
+    twice = effects.the_same(session, booking)
     session.add(booking)
     session.flush()
     # its first state, so that the record can be read from the beginning
     hand.record(booking, "booked", "", _in_words(session, booking))
     text = f"Booked {booking.number}: {_in_words(session, booking)}."
-    details = (*twice, *_outside_terms(session, booking.on_day))
+    rooms = effects.room_shared(reader_in(session), booking)
+    details = (*twice, *rooms, *_outside_terms(session, booking.on_day))
     return hand.done(text, details, undo=f"stockroom cancel {booking.number}")
-
-
-def _the_same(session: Session, booking: Booking) -> tuple[str, ...]:
-    """A question where the like of it is booked at that hour already; nothing where it is not."""
-    found = names.bookings_alike(session, booking)
-    # two classes side by side are nothing unusual, so it is asked and not refused
-    told = f"the same as {', '.join(found)}, at the same hour: is it booked twice?"
-    return (told,) if found else ()
 
 
 def _firmness(word: str) -> Firmness:
@@ -201,10 +194,13 @@ def shift(
         before, undo = found.groups, _shifted_back(found, wanted)
         changes = _changes(hand, found, wanted)
         details = _outside_terms(session, found.on_day) if on is not None else ()
+        if on is not None or time is not None:
+            session.flush()
+            details += effects.room_shared(reader_in(session), found)
         if found.groups != before:
             session.flush()
             recipe = session.get_one(Recipe, found.recipe_id)
-            details += extra(reader_in(session), found, recipe, before)
+            details += effects.extra(reader_in(session), found, recipe, before)
         return hand.done(f"{found.number}: {'; '.join(changes)}.", details, undo=undo)
 
 
@@ -263,9 +259,9 @@ def cancel(path: StoreAt, booking: str, *, why: str = "", today: date, by: str) 
         found = names.find_booking(session, booking)
         check_may_be_dropped(found.number, found.firmness)
         # asked before it is dropped: afterwards the plan no longer has them
-        gone = withdrawn(reader, found.number, today)
+        gone = effects.withdrawn(reader, found.number, today)
         _change(hand, found, "firmness", Firmness.DROPPED.value, why)
-        details = (*gone, *kept_as_stock(reader, found.number, today))
+        details = (*gone, *effects.kept_as_stock(reader, found.number, today))
         text = f"Dropped {found.number}: {_in_words(session, found)}."
         return hand.done(text, details, undo=f"stockroom cancel {found.number} --undo --why …")
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from datetime import date
 
@@ -79,8 +79,15 @@ def hazards_for(path: StoreAt, plan: Plan, makes: Sequence[Make]) -> dict[str, H
     draws = [draw for make in makes for draw in make.sources]
     numbers = {draw.bottle for draw in draws if draw.bottle}
     lines = {make.line for make in makes} | {draw.line for draw in draws if not draw.bottle}
+    return hazards_held(path, numbers, lines, as_at=plan.as_at)
+
+
+def hazards_held(
+    path: StoreAt, numbers: Iterable[str], lines: Iterable[str], *, as_at: date
+) -> dict[str, Hazards]:
+    """The hazards of bottles by number, and of lines by key. Never raises for one of them."""
     with reading(path) as reader:
-        house = house_of(reader, plan.as_at)
+        house = house_of(reader, as_at)
         found = {key: _of_line(house, key) for key in sorted(lines)}
         return found | {number: _of_bottle(house, number) for number in sorted(numbers)}
 

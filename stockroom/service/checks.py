@@ -14,7 +14,7 @@ from stockroom.service.hit import drawn_on_for, made_from
 from stockroom.service.peroxide_tests import check_tested, has_passed, result_words
 from stockroom.service.righting import check_nothing_later
 from stockroom.service.spoiling import spoil as spoil
-from stockroom.service.taking import last_use, made_from_doubtful
+from stockroom.service.taking import last_use, made_from_doubtful, still_standing
 from stockroom.service.touching import check_may_open, check_not_condemned
 from stockroom.service.work import Work, check_at_hand, last_said, unsettled, working
 from stockroom.settings import StoreAt
@@ -46,8 +46,8 @@ def found(
     """Write a strength that was measured; its recheck counts from that day.
 
     `spread` is its standard uncertainty, `note` how it was found.
-    Raises: NotAllowed when it is more than 25 % from the label, unless `sure`;
-    BadAmount for a strength without a number; MissingFigure for a missing density.
+    Raises: NotAllowed when it is more than 25 % from the label, or the bottle has still to
+    stand, unless `sure`; BadAmount for a strength without a number; MissingFigure.
     """
     with working(path, on=on, today=today, by=by) as work:
         checked = work.bottle(bottle)
@@ -57,6 +57,8 @@ def found(
         substance = substance_of(work.session, line)
         value = number_beside(strength, substance, line)
         _check_usual(line, strength, value, sure=sure)
+        if not sure:
+            _check_stood(work, checked)
         known = None if spread is None else number_beside(spread, substance, line)
         _check_spread(strength, value, spread, known)
         event = Event(
@@ -86,6 +88,16 @@ def _check_usual(line: Line, strength: Strength, value: float, *, sure: bool) ->
         raise NotAllowed(
             f"Unusual: {strength.text} against {line.strength_text}.",
             "Check the units, or confirm with --sure.",
+        )
+
+
+def _check_stood(work: Work, bottle: Bottle) -> None:
+    # what still settles is weaker once it has: found now, it is wrong by its first day of use
+    stands = still_standing(work, work.seen(bottle))
+    if stands:
+        raise NotAllowed(
+            f"{bottle.number} is {stands}: a strength found before then does not last.",
+            "Find it once it has stood, or confirm with --sure.",
         )
 
 

@@ -5,7 +5,7 @@ Light, as reading is: the day page, the class slip and the phone text are made f
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from datetime import date
 from typing import Any
@@ -14,6 +14,8 @@ from stockroom.errors import BadDate
 from stockroom.measure.days import parse_day
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Facts, Firmness
+from stockroom.safety.hazards import Hazards
+from stockroom.service.cards import hazards_held
 from stockroom.service.closures import why_closed
 from stockroom.service.known import known_of
 from stockroom.service.printing import Kind, held_against
@@ -53,10 +55,14 @@ def day_asked(path: StoreAt, ref: str | None, *, as_at: date) -> Asked:
 
 @dataclass(frozen=True, slots=True)
 class DayHeld:
-    """What is known of a day, and its sheet held against the copy printed last."""
+    """What is known of a day, and its sheet held against the copy printed last.
+
+    `hazards` are those of what its classes get: by bottle, or by line while it has none.
+    """
 
     asked: Asked
     sheet: Any
+    hazards: Mapping[str, Hazards]
 
 
 def day_held(
@@ -70,7 +76,18 @@ def day_held(
     """The day or booking named, with the sheet `make` makes of it. Raises: as `day_asked`."""
     asked = day_asked(path, ref, as_at=as_at)
     sheet = make(asked.known, asked.plan, asked.on, asked.booking, asked.closed)
-    return DayHeld(asked, held_against(path, kind, sheet, asked.about))
+    return DayHeld(asked, held_against(path, kind, sheet, asked.about), _hazards(path, asked))
+
+
+def _hazards(path: StoreAt, asked: Asked) -> dict[str, Hazards]:
+    mine = [
+        need
+        for need in asked.plan.needs
+        if need.booking.on == asked.on and asked.booking in ("", need.booking.number)
+    ]
+    numbers = {draw.bottle for need in mine for draw in need.draws if draw.bottle}
+    lines = {need.line for need in mine if not any(draw.bottle for draw in need.draws)}
+    return hazards_held(path, numbers, lines, as_at=asked.plan.as_at)
 
 
 def _meant(known: Facts, ref: str | None, as_at: date) -> tuple[date, str]:

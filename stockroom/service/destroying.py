@@ -39,7 +39,7 @@ def destroyed(path: StoreAt, booking: str, *, today: date, by: str) -> Done:
         if ticked:
             raise NotAllowed(f"{found.number} is ticked as destroyed already, by {ticked}.")
         hand.record(found, MIXTURE, STANDS, DESTROYED)
-        return hand.done(f"{found.number}: destroyed, ticked by {hand.by}.", (how,))
+        return hand.done(f"{found.number}: destroyed, ticked by {hand.by}.", how)
 
 
 def not_destroyed(path: StoreAt, booking: str, *, why: str, today: date, by: str) -> Done:
@@ -63,14 +63,14 @@ def _ticked_by(hand: Hand, booking: Booking) -> str:
     return ticks[-1].by if ticks and ticks[-1].after == DESTROYED else ""
 
 
-def _how(known: Facts, booking: Booking) -> str:
-    """How it is destroyed, as its recipe or the line says. Raises: NotAllowed where nothing is."""
+def _how(known: Facts, booking: Booking) -> tuple[str, ...]:
+    """Why and how it is destroyed, as its recipe or line says. Raises: NotAllowed for nothing."""
     if booking.firmness == Firmness.DROPPED:
         raise NotAllowed(f"{booking.number} is dropped: nothing was mixed for it.")
     # by the plan of its own day, which knows what it got
     for watch in replayed_plan(known).watch:
         if watch.booking == booking.number:
-            return watch.how
+            return (*watch.dangers, watch.how)
     recipe = next(b for b in known.bookings if b.number == booking.number).recipe
     raise NotAllowed(
         f"{booking.number} ({recipe}) mixes nothing that is never kept.",

@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
-from stockroom.errors import BrokenPlan
+from stockroom.errors import BrokenPlan, StockroomError
 from stockroom.measure.amounts import Amount, Kind
 from stockroom.measure.formats import format_amount, format_number
 from stockroom.planning.decisions import Make, Plan
@@ -18,7 +18,7 @@ class Meant:
     """The make the plan has of a line next, and how far a volume (µL) goes towards it.
 
     `bookings` get all they need of it, in their order; `unserved` do not, and lack `lacking` µL
-    among them. `over` µL are left when all have had theirs.
+    among them. `over` µL are left when all have had theirs. `missed` are those it does not reach.
     """
 
     planned: Make | None = None
@@ -26,6 +26,7 @@ class Meant:
     unserved: tuple[str, ...] = ()
     lacking: int = 0
     over: int = 0
+    missed: tuple[str, ...] = ()
 
 
 def meant_for(known: Facts, product: Line, volume: int) -> Meant:
@@ -57,6 +58,40 @@ def _meant(whole: Plan, planned: Make, volume: int) -> Meant:
     return Meant(planned, tuple(served), tuple(unserved), short, max(0, volume - planned.needed))
 
 
+def served_from(known: Facts, bottle: str) -> frozenset[str] | None:
+    """The bookings that are given of a bottle by the plan as it is once it stands there.
+
+    None where no plan can be made. What is made from it serves those it is made for.
+    """
+    try:
+        whole = replayed_plan(known)
+    except StockroomError:
+        return None
+    direct = {
+        need.booking.number
+        for need in whole.needs
+        if any(draw.bottle == bottle for draw in need.draws)
+    }
+    through = {
+        number
+        for make in whole.makes
+        if any(draw.bottle == bottle for draw in make.sources)
+        for number in make.bookings
+    }
+    return frozenset(direct | through)
+
+
+def reached(meant: Meant, served: frozenset[str] | None) -> Meant:
+    """The same, less the bookings it turns out not to reach: too early, too late, too little."""
+    if served is None:
+        return meant
+    return replace(
+        meant,
+        bookings=tuple(one for one in meant.bookings if one in served),
+        missed=tuple(one for one in meant.bookings if one not in served),
+    )
+
+
 def told_of_make(
     known: Facts, product: Line, volume: Amount, bottle: str, meant: Meant
 ) -> list[str]:
@@ -69,6 +104,9 @@ def told_of_make(
         needed = f"{_cm3(planned.needed)} needed, " if meant.over else ""
         beside = _beside(planned.volume, volume)
         told.append(f"For {', '.join(meant.bookings)}, {needed}{beside}.")
+    if meant.missed:
+        who = ", ".join(meant.missed)
+        told.append(f"Planned for {who} too, and not used there: stockroom why {meant.missed[0]}.")
     if meant.lacking:
         who = f" for {', '.join(meant.unserved)}" if meant.unserved else ""
         told.append(f"{_cm3(meant.lacking)} short of what is needed{who}: make the rest.")

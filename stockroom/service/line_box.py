@@ -12,6 +12,7 @@ from stockroom.store.reading import Reader, reading
 
 _NUMBER = re.compile(r"[BSKR]\d+[a-z]{0,2}", re.IGNORECASE)
 _PLANNED = re.compile(r"[MOP]\d+|K\d+[a-z]{0,2}\.\d+", re.IGNORECASE)
+_BOOKING = re.compile(r"K\d+[a-z]{0,2}", re.IGNORECASE)
 _DAY = re.compile(r"\d{4}-\d{2}-\d{2}")
 _KINDS = {"B": "bottle", "S": "bottle", "K": "booking", "R": "recipe"}
 _LAST = re.compile(
@@ -73,8 +74,13 @@ _ASKED = {
 
 
 def _drawn(bottle: str, rest: str, bookings: Mapping[str, str]) -> Meant:
-    """ "100 cm3 for K16": the last word is the booking where it is one, or where "for" says so."""
+    """ "100 cm3 for K16": the last word is the booking where it is one, or where "for" says so.
+
+    What looks like a booking and is none is refused by its name, and not read as a unit.
+    """
     found = _LAST.fullmatch(rest)
     if found is not None and (found["for"] or plain(found["booking"]) in bookings):
         return Meant("draw", bottle, found["amount"] or "", found["booking"])
+    if found is not None and found["amount"] and _BOOKING.fullmatch(found["booking"]):
+        return Meant("draw", bottle, found["amount"], found["booking"])
     return Meant("draw", bottle, rest)

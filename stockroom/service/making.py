@@ -15,7 +15,9 @@ from stockroom.planning.derive import with_derived
 from stockroom.planning.facts import Bottle, Facts, Form, Ingredient, Line, Method
 from stockroom.planning.known import by_dilution
 from stockroom.service.answers import Done
-from stockroom.service.heel import meant_for, told_of_make
+from stockroom.service.asking import check_make
+from stockroom.service.heel import Meant, meant_for, reached, served_from, told_of_make
+from stockroom.service.known import known_from
 from stockroom.service.standing import told_of_place
 from stockroom.service.taking import open_if_sealed, take
 from stockroom.service.touching import check_may_open
@@ -60,6 +62,7 @@ def make_up(
     *,
     sources: list[str],
     place: str | None,
+    sure: bool = False,
     on: date | None,
     today: date,
     by: str,
@@ -69,7 +72,8 @@ def make_up(
     `sources` are bottle numbers, one for each ingredient that is not to be
     chosen here; the choice is the good one going past soonest that is enough.
     Raises: NotAllowed for what is never kept, has no method, or a source that
-    does not belong; NotEnough, MissingFigure, UnknownName, BadAmount.
+    does not belong, and for what `asking` asks about unless `sure`; NotEnough,
+    MissingFigure, UnknownName, BadAmount.
     """
     with working(path, on=on, today=today, by=by) as work:
         # as on the day of making: a draw entered late is made from what was there then
@@ -79,20 +83,32 @@ def make_up(
         _check_volume(product, volume)
         given = [_given(work, known, number) for number in sources]
         _check_belong(method, given)
-        chosen = [_source(known, product, part, given, volume.micro) for part in method.ingredients]
         meant = meant_for(known, product, volume.micro)
+        if not sure:
+            named = {bottle.number for bottle in given}
+            check_make(work, product, method, volume, named, meant)
+        chosen = [_source(known, product, part, given, volume.micro) for part in method.ingredients]
         bottle, made, details = _write(
             work, product, volume, chosen, place, meant.bookings, _carried(method, chosen)
         )
-        told = told_of_make(known, product, volume, bottle.number, meant)
+        told = _told(work, known, product, volume, bottle.number, meant)
         judged = work.verdict(bottle)
-        until = f"; good until {judged.good_until}" if judged.good_until else ""
+        until = f"; {judged.until_word} {judged.good_until}" if judged.good_until else ""
         text = f"Made {bottle.number}: {format_amount(volume)} of {product.key}{until}."
         # last where it stands: that is what there is still time to change
         details = (*details, *told, *told_of_place(work, bottle))
         # else it is counted and looked for at no place
         following = "" if place else f"stockroom move {bottle.number} PLACE"
         return work.done(text, bottle, made, following=following, details=details)
+
+
+def _told(
+    work: Work, known: Facts, product: Line, volume: Amount, bottle: str, meant: Meant
+) -> list[str]:
+    # whom the plan meant it for is one thing, whom it serves now that it stands here another
+    if meant.bookings:
+        meant = reached(meant, served_from(known_from(work.reader, work.on), bottle))
+    return told_of_make(known, product, volume, bottle, meant)
 
 
 def _method(known: Facts, product: Line) -> Method:

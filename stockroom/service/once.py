@@ -105,7 +105,7 @@ def _submitted(reader: Reader, token: str) -> dict[str, Any] | None:
 
 def _answer_in(known: dict[str, Any]) -> Done:
     said = {key: value for key, value in known.items() if key != SENT}
-    return Done(**{**said, "details": tuple(said["details"])})
+    return Done(**{**said, "details": tuple(said["details"]), "also": tuple(said.get("also", ()))})
 
 
 def _check_the_same(known: dict[str, Any], sent: str) -> None:

@@ -228,7 +228,7 @@ def _until(work: Work, into: Bottle) -> str:
     # past it already is told of its source
     if judged.good_until is None or judged.good_until < work.on:
         return ""
-    return f"; good until {spell_day(judged.good_until)} ({judged.decided_by})"
+    return f"; {judged.until_word} {spell_day(judged.good_until)} ({judged.decided_by})"
 
 
 def _known_by(one: Poured, other: Poured) -> str:

@@ -89,9 +89,7 @@ def _place(every: tuple[Place, ...], asked: str) -> Place | None:
     raise unknown("place", asked, [place.name for place in every])
 
 
-def _of_those_shown(
-    path: StoreAt, found: Shelf, every: tuple[Place, ...]
-) -> tuple[Finding, ...]:
+def _of_those_shown(path: StoreAt, found: Shelf, every: tuple[Place, ...]) -> tuple[Finding, ...]:
     """What is wrong where the bottles found stand: with whatever stands beside them there."""
     shown = {row.bottle.number for row in found.rows}
     there = {row.bottle.place for row in found.rows} - {""}

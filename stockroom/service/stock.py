@@ -18,6 +18,7 @@ from stockroom.service.answers import Done
 # whoever writes at the shelf finds all of it here
 from stockroom.service.arriving import Label as Label
 from stockroom.service.arriving import arrive as arrive
+from stockroom.service.asking import check_count
 from stockroom.service.drawing import draw as draw
 from stockroom.service.drawing import spill as spill
 from stockroom.service.estimates import Weighed as Weighed
@@ -62,7 +63,7 @@ def open_bottle(path: StoreAt, bottle: str, *, on: date | None, today: date, by:
             )
         entry = work.write(found, Event(EntryKind.OPENED))
         after = work.verdict(found)
-        until = f"; good until {spell_day(after.good_until)}" if after.good_until else ""
+        until = f"; {after.until_word} {spell_day(after.good_until)}" if after.good_until else ""
         why = f" ({after.decided_by})" if until else ""
         return work.done(f"Opened {work.called(found)}{until}{why}.", found, entry)
 
@@ -99,15 +100,16 @@ def count(
 
     Zero is a count. `walk` names the round of counting it belongs to, "" for none. Less of a
     solution than entered, with nothing drawn, is asked about: water lost, or not written down.
-    Raises: BadAmount for the wrong kind; NotAllowed for over 5 % more than the bottle's size, or
-    counted twice on one walk, unless `sure`, and for a walk that was ended; UnknownName for one
-    that nobody started.
+    Raises: BadAmount for the wrong kind; NotAllowed for over 5 % more than the bottle's size, too
+    little to be seen or counted twice on one walk, unless `sure`, and for a walk that was
+    ended; UnknownName for one that nobody started.
     """
     with working(path, on=on, today=today, by=by) as work:
         found = work.bottle(bottle)
         round_ = round_named(work, walk)
         if not sure:
             check_first(work, found, round_, "confirm with --sure")
+            check_count(work, found, amount)
         counted = count_in(work, found, amount, walk=round_, sure=sure)
         return work.done(f"{counted.text}.", found, counted.entry, details=counted.details)
 

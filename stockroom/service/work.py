@@ -122,13 +122,15 @@ class Work:
         following: str = "",
         details: tuple[str, ...] = (),
         last: int | None = None,
+        also: tuple[int, ...] = (),
     ) -> Done:
         """What was saved, as the answer to whoever asked; `last` of the entries, where several."""
         # the number is what put-right asks for, should this prove a slip
         several = last is not None and last != entry.id
         told = f"{text} Entries {entry.id}–{last}." if several else f"{text} Entry {entry.id}."
         asked = entered_a_moment_ago(self.reader, entry)
-        return Done(told, bottle.number, entry.id, following, self.practice, (*details, *asked))
+        details = (*details, *asked)
+        return Done(told, bottle.number, entry.id, following, self.practice, details, also=also)
 
 
 @contextmanager

@@ -27,6 +27,10 @@ def yes_or_no(text: str, *, where: str) -> bool:
     return found in _YES
 
 
+MOST = 10**12
+"""No figure in a table of a prep room is larger. Our choice."""
+
+
 class Fields:
     """The cells of one row by column name. Blank means not known.
 
@@ -174,4 +178,8 @@ class Fields:
 
     def _decimal(self, column: str) -> Decimal | None:
         found = self.text(column)
-        return read_number(found, where=column) if found else None
+        number = read_number(found, where=column) if found else None
+        if number is not None and number > MOST:
+            # no column of a table holds it, and a figure without end would pass for one
+            raise BadAmount(f'{column} "{found}" is too large to be meant.', "Check the figure.")
+        return number

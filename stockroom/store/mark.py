@@ -28,16 +28,20 @@ file would miss it, and no backup can be put in its place.
 
 _BUSY_SECONDS = 0.1
 
+ASKED_FOR = 5
+"""Seconds a server may take to tell its mark; then nothing is kept. Our choice."""
+
 
 class Marks:
     """The marks of the stores asked about, each held open for reading as long as it is asked for.
 
-    For many threads. `let_go_after` is in seconds.
+    For many threads; who asks of one store never waits for another that does not answer.
+    `let_go_after` is in seconds.
     """
 
     def __init__(self, let_go_after: float = LET_GO) -> None:
         self._lock = threading.Lock()
-        self._watched: dict[StoreAt, _Watch] = {}
+        self._watched: dict[StoreAt, _Alone] = {}
         self._let_go_after = let_go_after
         self._asked = 0.0
         self._timer: threading.Timer | None = None
@@ -45,13 +49,17 @@ class Marks:
     def of(self, path: StoreAt) -> str | None:
         """The mark of a store now; None where it cannot be told, and nothing is to be kept."""
         with self._lock:
-            watch = self._watched.get(path)
-            if watch is None:
-                watch = self._watched[path] = _watch_on(path)
+            store = self._watched.get(path)
+            if store is None:
+                store = self._watched[path] = _Alone(_watch_on(path))
+        with store.lock:
+            mark = store.watch.mark()
+        # after it was opened: else one opened while all are closed would be held for ever
+        with self._lock:
             self._asked = time.monotonic()
             if self._timer is None:
                 self._wait(self._let_go_after)
-            return watch.mark()
+        return mark
 
     def close(self) -> None:
         """Let go of every store at once."""
@@ -59,8 +67,10 @@ class Marks:
             if self._timer is not None:
                 self._timer.cancel()
                 self._timer = None
-            for watch in self._watched.values():
-                watch.close()
+            watched = list(self._watched.values())
+        for store in watched:
+            with store.lock:
+                store.watch.close()
 
     def _wait(self, seconds: float) -> None:
         self._timer = threading.Timer(seconds, self._rest)
@@ -77,10 +87,24 @@ class Marks:
             if idle < self._let_go_after:
                 self._wait(self._let_go_after - idle)
                 return
-            rested = [watch.rest() for watch in self._watched.values()]
-            # one that had something to write back is looked at once more before it is closed
-            if not all(rested):
+            watched = list(self._watched.values())
+        rested = [store.rest() for store in watched]
+        # one that had something to write back is looked at once more before it is closed
+        with self._lock:
+            if self._timer is None and not all(rested):
                 self._wait(self._let_go_after)
+
+
+class _Alone:
+    """A watch that one thread at a time may use."""
+
+    def __init__(self, watch: _Watch) -> None:
+        self.lock, self.watch = threading.Lock(), watch
+
+    def rest(self) -> bool:
+        """As the watch's own."""
+        with self.lock:
+            return self.watch.rest()
 
 
 class _Watch(Protocol):
@@ -252,6 +276,7 @@ class _OfServer:
                 if self._held is None:
                     self._held = connect(self._server)
                     self._held.autocommit = True
+                    self._held.execute(f"SET statement_timeout = {ASKED_FOR * 1000}")
                 row = self._held.execute("SELECT pg_current_snapshot()::text").fetchone()
                 return str(row[0])
         except StockroomError:

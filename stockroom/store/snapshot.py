@@ -157,6 +157,11 @@ def _volume(cubic: str) -> int:
     return Amount.cm3(float(cubic)).micro
 
 
+def bookings_between(reader: Reader, first: date, last: date) -> tuple[Booking, ...]:
+    """The bookings of the days from `first` to `last`, both counted, by day and time."""
+    return _bookings(reader, _settings(reader), first, last)
+
+
 def _bookings(
     reader: Reader, settings: dict[str, str], first: date, last: date
 ) -> tuple[Booking, ...]:

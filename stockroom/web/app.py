@@ -13,6 +13,7 @@ from stockroom import __version__
 from stockroom.service.kept import answers_kept
 from stockroom.web.api import doing, planning, sheets, standing
 from stockroom.web.door.guards import guard
+from stockroom.web.held_files import sweep_lists
 from stockroom.web.house import House
 from stockroom.web.pages import (
     bottle,
@@ -69,8 +70,10 @@ ROUTERS = (
 @asynccontextmanager
 async def _serving(app: FastAPI) -> AsyncIterator[None]:
     """What was worked out is kept for the next who asks, as long as the server runs."""
+    sweep_lists()
     with answers_kept():
         yield
+    sweep_lists()
 
 
 def house_app(house: House) -> FastAPI:

@@ -30,8 +30,11 @@ from stockroom.web.house import House
 KEPT = 2 * 3600
 """Seconds a list is held after it was last looked at. Our choice."""
 
-MOST_HELD = 20
-"""Lists held at once; the one longest untouched makes room. Our choice."""
+MOST_HELD = 8
+"""Lists of one visit held at once; its one longest untouched makes room. Our choice."""
+
+MOST_OF_ALL = 60
+"""Lists of everybody held at once: half a gigabyte at the most. Our choice."""
 
 MOST_UNPACKED = 100_000_000
 """Bytes a workbook may unpack to here: twelve times the largest that is taken. Our choice."""
@@ -72,16 +75,11 @@ def hold(house: House, session: Session, data: bytes, said: Said) -> str:
     """
     _check_packed(data, said.name)
     folder = _folder()
-    _sweep(folder)
+    _sweep(folder, room_for=_whose(house, session))
     token = secrets.token_urlsafe(24)
     path = _path(folder, house, session, token)
-    try:
-        _write(path, data)
-        keep(Held(path, said), said)
-    except OSError as error:
-        raise StoreTrouble(
-            f"The list cannot be held: {error.strerror}.", "See whether the disc is full."
-        ) from error
+    _write(path, data)
+    keep(Held(path, said), said)
     return token
 
 
@@ -100,7 +98,10 @@ def held(house: House, session: Session, token: str) -> Held:
 
 
 def keep(list_held: Held, said: Said) -> None:
-    """Note what is said of a list by now, in the place of what was said before."""
+    """Note what is said of a list by now, in the place of what was said before.
+
+    Raises: StoreTrouble where it cannot be noted; what was said before stands then.
+    """
     data = {
         "name": said.name,
         "sheet": said.sheet,
@@ -117,6 +118,13 @@ def put_away(list_held: Held) -> None:
         path.unlink(missing_ok=True)
 
 
+def sweep_lists() -> None:
+    """Take away what nobody looks at any more; nothing where none was ever held. Never fails."""
+    with contextlib.suppress(OSError, StoreTrouble):
+        if _place().is_dir():
+            _sweep(_folder())
+
+
 def shown_name(given: str) -> str:
     """A file's own name as it may be shown: no folders, no odd signs, not too long."""
     last = re.split(r"[\\/]", given)[-1]
@@ -131,8 +139,17 @@ def _said(data: Mapping[str, Any]) -> Said:
 
 def _path(folder: Path, house: House, session: Session, token: str) -> Path:
     # made of what nobody else has: another visit's token, or a path for one, leads nowhere
-    said = f"held {session.number} {token}".encode(errors="replace")
-    return folder / f"{hmac.new(house.key, said, hashlib.sha256).hexdigest()}.list"
+    name = _signed(house, f"held {session.number} {token}")
+    return folder / f"{_whose(house, session)}{name}.list"
+
+
+def _whose(house: House, session: Session) -> str:
+    """How the names of a visit's lists begin."""
+    return f"{_signed(house, f'lists of {session.number}')[:24]}-"
+
+
+def _signed(house: House, said: str) -> str:
+    return hmac.new(house.key, said.encode(errors="replace"), hashlib.sha256).hexdigest()
 
 
 def _beside(path: Path) -> Path:
@@ -141,8 +158,7 @@ def _beside(path: Path) -> Path:
 
 def _folder() -> Path:
     """The folder, ours alone. Raises: StoreTrouble where somebody else has made it."""
-    mine = getattr(os, "getuid", lambda: 0)()
-    folder = Path(tempfile.gettempdir()) / f"stockroom-lists-{mine}"
+    mine, folder = _me(), _place()
     with contextlib.suppress(FileExistsError):
         folder.mkdir(mode=0o700)
     found = folder.lstat()
@@ -156,22 +172,46 @@ def _folder() -> Path:
     return folder
 
 
+def _place() -> Path:
+    return Path(tempfile.gettempdir()) / f"stockroom-lists-{_me()}"
+
+
+def _me() -> int:
+    return int(getattr(os, "getuid", lambda: 0)())
+
+
 def _write(path: Path, data: bytes) -> None:
-    # whole or not at all: another worker may be reading it
-    handle, name = tempfile.mkstemp(dir=path.parent, suffix=".new")
-    with open(handle, "wb") as file:
-        file.write(data)
-    Path(name).replace(path)
+    """Write a file whole or not at all: another worker may be reading it. Raises: StoreTrouble."""
+    name = ""
+    try:
+        handle, name = tempfile.mkstemp(dir=path.parent, suffix=".new")
+        with open(handle, "wb") as file:
+            file.write(data)
+        Path(name).replace(path)
+    except OSError as error:
+        if name:
+            Path(name).unlink(missing_ok=True)
+        raise StoreTrouble(
+            f"The list cannot be held: {error.strerror}.", "See whether the disc is full."
+        ) from error
 
 
-def _sweep(folder: Path) -> None:
-    """Take away what is old, and the lists longest untouched where there are too many."""
+def _sweep(folder: Path, *, room_for: str = "") -> None:
+    """Take away what is old, and the lists longest untouched where there are too many.
+
+    `room_for` is how the names of the lists begin that get one more.
+    """
     ages, now = [], clock.now().timestamp()
     for path in folder.iterdir():
         with contextlib.suppress(OSError):
             ages.append((path.stat().st_mtime, path))
     lists = sorted((age, path) for age, path in ages if path.suffix == ".list")
-    crowded = [path for _, path in lists[: max(0, len(lists) - MOST_HELD + 1)]]
+    crowded: list[Path] = []
+    if room_for:
+        own = [path for _, path in lists if path.name.startswith(room_for)]
+        crowded = own[: max(0, len(own) - MOST_HELD + 1)]
+        others = [path for _, path in lists if path not in crowded]
+        crowded += others[: max(0, len(others) - MOST_OF_ALL + 1)]
     young = {path for age, path in lists if now - age < KEPT} - set(crowded)
     for age, path in ages:
         kept = path.with_suffix(".list") in young or path.suffix == ".new"

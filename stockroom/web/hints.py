@@ -6,10 +6,11 @@ it with a form; what has none is left in the words of the command line, and says
 
 from __future__ import annotations
 
+import json
 import re
 from collections.abc import Iterator
 from dataclasses import dataclass, field
-from urllib.parse import quote, urlencode
+from urllib.parse import parse_qsl, quote, urlencode
 
 from stockroom.reports.pages.links import Piece, linked
 from stockroom.web.forms.field import Form
@@ -54,6 +55,25 @@ def hinted(text: str, form: Form | None = None, back: str = "") -> tuple[Piece, 
         # a name beside a field is to be typed into it, not followed away from the form
         return tuple(pieces)
     return tuple(one for each in pieces for one in ((each,) if each.href else linked(each.text)))
+
+
+def for_programs(text: str, form: Form | None = None) -> str:
+    """A hint in the words of the API: a command is the request that does it, an option its key."""
+    said = "".join(_for_program(each) for each in _pieces(text, form, "") if each.text)
+    labels = {each.label: each.name for each in form.fields} if form else {}
+    for label, name in ({label: name for name, label in LABELS.items()} | labels).items():
+        said = said.replace(f"“{label}”", f'"{name}"')
+    return said if said.startswith("stockroom ") else said[:1].upper() + said[1:]
+
+
+def _for_program(piece: Piece) -> str:
+    if not piece.href:
+        return piece.text
+    address, _, query = piece.href.partition("?")
+    if not address.startswith("/do/"):
+        return f"{piece.text} ({piece.href})"
+    given = f" {json.dumps(dict(parse_qsl(query)), ensure_ascii=False)}" if query else ""
+    return f"{piece.text} (POST /api{address}{given})"
 
 
 def _pieces(text: str, form: Form | None, back: str) -> Iterator[Piece]:

@@ -69,7 +69,10 @@ def answer(
     `inside` says that the request came as far as the pages: then the top of a page is shown too.
     """
     if request.url.path.startswith("/api/"):
-        refused: Response = problem(status, message, hint)
+        # loaded here: the forms are a part of the pages, and these words of neither
+        from stockroom.web.hints import for_programs
+
+        refused: Response = problem(status, message, for_programs(hint))
     else:
         from stockroom.web.showing import refusal_page
 

@@ -21,6 +21,9 @@ from stockroom.web.door.roles import Role
 from stockroom.web.door.session import Session, form_token, is_our_form
 from stockroom.web.house import House
 
+LONGEST_SAID = 200
+"""Signs of what an address tells to be told at the top of a page."""
+
 
 @dataclass(frozen=True, slots=True)
 class Visit:
@@ -84,6 +87,8 @@ def visiting(request: Request) -> Visit:
     """The visit of a request. Raises: StoreTrouble."""
     house: House = request.app.state.house
     token = request.query_params.get("said", "")
+    # none of ours is longer, so nothing was said by it
+    token = token if len(token) <= LONGEST_SAID else ""
     return Visit(request, house, request.state.session, front(house.path, house.given, token))
 
 

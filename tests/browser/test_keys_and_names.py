@@ -55,6 +55,16 @@ def test_keys_lead_to_the_line_and_to_pages(page: Page) -> None:
     page.wait_for_url("**/enter#keys")
 
 
+def test_two_keys_typed_at_once_are_a_way_to_a_page_and_no_scan(page: Page) -> None:
+    page.evaluate(SCANNED.replace('"S", "1", "3", "Enter"', '"g", "e"'))
+    page.wait_for_url("**/enter")
+
+
+def test_three_signs_are_too_few_for_a_scanner(page: Page) -> None:
+    page.evaluate(SCANNED.replace('"S", "1", "3", "Enter"', '"S", "1", "Enter"'))
+    assert page.locator("#line").input_value() == ""
+
+
 def test_in_a_field_a_key_is_only_a_letter(page: Page) -> None:
     page.locator("#f-note, #f-booking").first.press_sequentially("g/e?", delay=80)
     assert page.locator("#f-booking").input_value() == "g/e?"

@@ -27,7 +27,7 @@ def written(path: Path) -> list[int]:
 def test_a_decant_is_told_in_one_line_with_its_date(stockroom: Stockroom, own: Path) -> None:
     done = stockroom("decant", "B02", "50 cm3", "--place", "A3", *BY, store=own)
     assert done.code == 0
-    assert "Decanted 50 cm³ of B02 hydrogen peroxide 100 vol into B46; good until" in done.said
+    assert "Decanted 50 cm³ of B02 hydrogen peroxide 100 vol into B46; recheck by" in done.said
     assert "B02: 450 cm³ left." in done.said
 
 

@@ -141,7 +141,9 @@ def test_what_is_never_kept_goes_into_no_container_undestroyed(
     stockroom: Stockroom, practice: Path
 ) -> None:
     said = stockroom("ready", "K27", store=practice).said
-    assert "clearing away (silver nitrate): once destroyed: Oxidising and nitric waste" in said
+    assert "can turn explosive on standing" in said
+    assert "Collect silver residues after destroying" in said
+    assert "Oxidising and nitric waste" not in said
     assert "clearing away (ammonia): Ammonia never with bleach" in said
 
 

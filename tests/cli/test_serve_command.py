@@ -9,17 +9,14 @@ import signal
 import socket
 import ssl
 import subprocess
-import sys
-import threading
 import time
 import urllib.error
 import urllib.request
-from collections.abc import Iterator
-from contextlib import contextmanager
 from pathlib import Path
 from typing import TYPE_CHECKING
 
 import pytest
+from serving_process import PATIENCE, serving
 
 from stockroom.web.door.door_file import door_of, read_door
 from stockroom.web.door.roles import Role
@@ -28,8 +25,6 @@ from stockroom.web.serving import house_as_text, house_from
 if TYPE_CHECKING:
     from conftest import Stockroom
 
-# on a busy machine the libraries of the pages take long to load
-PATIENCE = 120
 GOOD = "seven dull grey herons\n"
 
 pytestmark = pytest.mark.file
@@ -137,50 +132,6 @@ def test_what_is_no_certificate_is_told(stockroom: Stockroom, own: Path, tmp_pat
         files = ("--certificate", str(tmp_path / name), "--key", str(tmp_path / name))
         result = stockroom("serve", *files, "--port", "0", store=own)
         assert (result.code, "cannot be used" in result.err) == (1, True), result.err
-
-
-@contextmanager
-def serving(*words: str, store: Path) -> Iterator[tuple[subprocess.Popen[str], str, list[str]]]:
-    """A server in a process of its own, its address once it listens, and what it says."""
-    program = "from stockroom.cli.main import run; run()"
-    command = [sys.executable, "-c", program, "--store", str(store), "--as-at", "2027-01-04"]
-    process = subprocess.Popen(
-        [*command, "serve", "--port", "0", *words],
-        stderr=subprocess.PIPE,
-        text=True,
-        preexec_fn=_heed_ctrl_c,
-    )
-    said: list[str] = []
-    threading.Thread(target=_listen, args=(process, said), daemon=True).start()
-    try:
-        yield process, _address(process, said), said
-    finally:
-        process.kill()
-        process.wait(10)
-        assert process.stderr
-        process.stderr.close()
-
-
-def _heed_ctrl_c() -> None:
-    # what a shell runs in the background is born deaf to it, and so is all that it runs
-    signal.signal(signal.SIGINT, signal.SIG_DFL)
-
-
-def _listen(process: subprocess.Popen[str], said: list[str]) -> None:
-    assert process.stderr
-    # line by line: each is to be seen as soon as it is said
-    while line := process.stderr.readline():
-        said.append(line)
-
-
-def _address(process: subprocess.Popen[str], said: list[str]) -> str:
-    until = time.monotonic() + PATIENCE
-    while time.monotonic() < until and process.poll() is None:
-        found = re.search(r"(https?://\S+:\d+)/ \(Ctrl-C ends it\)", "".join(said))
-        if found:
-            return found[1]
-        time.sleep(0.05)
-    raise AssertionError(f"never listened: {said}")
 
 
 def page(address: str, path: str = "/static/mark.svg") -> tuple[int, str]:

@@ -8,7 +8,13 @@ from hypothesis import strategies as st
 
 from stockroom.errors import BadAmount
 from stockroom.measure.amounts import Amount, Kind
-from stockroom.measure.formats import format_amount, format_number, format_strength, unit_mark
+from stockroom.measure.formats import (
+    figures_like,
+    format_amount,
+    format_number,
+    format_strength,
+    unit_mark,
+)
 
 
 @pytest.mark.parametrize(
@@ -94,3 +100,17 @@ def test_four_figures_are_within_half_a_thousandth(number: float) -> None:
 @given(st.integers(-(10**13), 10**13))
 def test_an_amount_of_any_size_can_be_written(micro: int) -> None:
     assert format_amount(Amount(Kind.MASS, micro)).endswith(" g")
+
+
+@pytest.mark.parametrize(
+    ("number", "like", "text"),
+    [
+        ("0.046", "0.0500 mol/dm3", "0.0460"),
+        ("0.04604", "0.0500 mol/dm3", "0.04604"),
+        ("2", "2.00 mol/dm3", "2.00"),
+        ("19", "20 vol", "19"),
+        ("1 250", "saturated", "1 250"),
+    ],
+)
+def test_a_strength_has_the_figures_of_its_label(number: str, like: str, text: str) -> None:
+    assert figures_like(number, like) == text

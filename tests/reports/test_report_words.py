@@ -76,3 +76,14 @@ def test_counts_agree_with_their_noun(number: int, noun: str, shown: str) -> Non
 
 def test_money_is_pounds_and_two_figures_of_pence() -> None:
     assert words.money(1405) == "£14.05"
+
+
+def test_two_draws_from_one_bottle_are_told_as_one() -> None:
+    taken = (("S13", 20), ("S13", 28), ("S14", 1))
+    row = [Draw(much, Kind.VOLUME, bottle) for bottle, much in taken]
+    assert [(draw.bottle, draw.amount) for draw in words.by_bottle(row)] == [
+        ("S13", 48),
+        ("S14", 1),
+    ]
+    still_to_come = [Draw(1, Kind.VOLUME), Draw(2, Kind.VOLUME)]
+    assert words.by_bottle(still_to_come) == still_to_come

@@ -17,6 +17,7 @@ from stockroom.safety.cautions import (
     Step,
     cautions_about,
 )
+from stockroom.safety.formed import formed_of
 
 
 def numbers(*things: Goes) -> set[int]:
@@ -99,8 +100,18 @@ def test_of_a_caution_of_several_parts_only_what_was_said_is_left_out() -> None:
 
 
 def test_the_parts_of_a_caution_are_its_text() -> None:
-    (whole,) = (each for each in CAUTIONS if each.parts)
-    assert all(words in whole.text.casefold() for _, words in whole.parts)
+    parted = [each for each in CAUTIONS if each.parts]
+    assert [each.number for each in parted] == [4, 6]
+    assert all(words in each.text.casefold() for each in parted for _, words in each.parts)
+
+
+def test_silver_and_ammonia_are_known_by_what_they_give() -> None:
+    silver, ammonia = Goes("silver nitrate", "oxidiser"), Goes("ammonia", "alkali")
+    assert [each.substance for each in formed_of([silver, ammonia])] == ["ammoniacal silver"]
+    assert formed_of([silver]) == formed_of([ammonia]) == ()
+    said = ("Mix just before use; destroy it; rinse all; nothing dries.",)
+    [left] = cautions_about(formed_of([ammonia, silver]), said=said, steps=(Step.MIX,))
+    assert left.text.endswith("explosive on standing, cold or warm.")
 
 
 @pytest.mark.parametrize(("percent", "said"), [(89.9, set()), (90.0, {11, 12}), (99.5, {11, 12})])

@@ -44,6 +44,15 @@ def test_a_booking_gets_the_next_number_and_ten_per_cent_spare(own: Path) -> Non
     assert (booking.version, booking.firmness) == (1, Firmness.FIRM)
 
 
+def test_a_room_that_is_taken_is_told_and_not_refused(own: Path) -> None:
+    room: dict[str, Any] = {"room": "hall lab", "on": date(2027, 2, 10)}
+    said = book(own, time=19 * 60, **room).details
+    assert any("hall lab has K16 (R10) at the same time as K30" in each for each in said)
+    assert not [each for each in book(own, time=555, **room).details if "same time" in each]
+    moved = bookings.shift(own, "K31", time=19 * 60, **WHO).details
+    assert len([each for each in moved if "at the same time as K31" in each]) == 3
+
+
 def test_a_booking_keeps_the_number_it_is_given(own: Path) -> None:
     book(own, number="K77", spare=20.0, firmness="pencilled")
     assert (seen(own, "K77").spare, seen(own, "K77").firmness) == (200, Firmness.PENCILLED)

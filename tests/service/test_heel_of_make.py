@@ -94,3 +94,11 @@ def test_a_solution_is_not_made_from_itself(own: Path) -> None:
 def test_the_bottle_made_is_the_stock(own: Path) -> None:
     done = make(own, planned(own).volume)
     assert "left" in stock.draw(own, done.bottle, Amount.cm3(10), **WHO).text
+
+
+def test_a_make_too_early_is_credited_to_no_booking_it_does_not_reach(own: Path) -> None:
+    starch = "starch 0.5 % w/v"
+    meant = planned(own, starch)
+    done = make(own, meant.volume, starch)
+    assert not any(each.startswith("For ") for each in done.details)
+    assert f"Planned for {', '.join(meant.bookings)} too, and not used there" in said(done)

@@ -23,7 +23,7 @@ WHO: dict[str, Any] = {"on": None, "today": TODAY, "by": "T1"}
 
 def make(path: Path, line: str, cubic: float, *sources: str) -> Done:
     volume = Amount.cm3(cubic)
-    return make_up(path, line, volume, sources=list(sources), place="D1", **WHO)
+    return make_up(path, line, volume, sources=list(sources), place="D1", sure=True, **WHO)
 
 
 def shelf(path: Path) -> dict[str, Bottle]:

@@ -180,7 +180,9 @@ def test_a_bottle_topped_up_again_and_again_asks_once_for_each_pouring(own: Path
     number = "S02"
     asked: list[str] = []
     for _ in range(7):
-        part = making.make_up(own, THIO, Amount.cm3(20), sources=["S01"], place="D1", **WHO)
+        part = making.make_up(
+            own, THIO, Amount.cm3(20), sources=["S01"], place="D1", sure=True, **WHO
+        )
         number = mix(own, number, part.bottle, size=Amount.cm3(5000)).bottle
     with reading(own) as reader:
         reader.connection.set_trace_callback(asked.append)

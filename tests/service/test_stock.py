@@ -96,7 +96,7 @@ def test_an_arrival_that_cannot_be_is_refused(
 def test_opening_starts_the_life_once_opened(own: Path) -> None:
     done = stock.open_bottle(own, "B02", **WHO)
     # 100 vol peroxide is rechecked 90 days after opening: scenario section 5, house rule
-    assert "good until 11 April 2027" in done.text
+    assert "recheck by 11 April 2027" in done.text
     assert seen(own, "B02").record.opened == TODAY
 
 

@@ -9,6 +9,7 @@ import sys
 import threading
 import time
 from collections.abc import Callable, Iterator
+from concurrent.futures import ThreadPoolExecutor
 from contextlib import closing
 from datetime import date
 from pathlib import Path
@@ -22,6 +23,7 @@ from stockroom.service.backup import backup
 from stockroom.service.plan import term_plan
 from stockroom.service.restore import restore
 from stockroom.settings import StoreAt
+from stockroom.store import mark
 from stockroom.store.mark import Marks
 
 if TYPE_CHECKING:
@@ -220,3 +222,32 @@ def test_many_threads_see_each_saving(own: Path, marks: Marks) -> None:
         each.join()
     assert len(seen) == 400
     assert None not in seen
+
+
+def test_a_store_that_does_not_answer_keeps_nobody_from_another(
+    marks: Marks, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    answers = threading.Event()
+
+    class Hung:
+        def mark(self) -> str | None:
+            return str(answers.wait(10))
+
+        def rest(self) -> bool:
+            return True
+
+        close = rest
+
+    class Quick(Hung):
+        def mark(self) -> str | None:
+            return "1"
+
+    monkeypatch.setattr(mark, "_watch_on", lambda path: Hung() if path.name == "hung" else Quick())
+    waiting = threading.Thread(target=marks.of, args=(Path("hung"),))
+    waiting.start()
+    try:
+        asked = ThreadPoolExecutor().submit(marks.of, Path("quick"))
+        assert asked.result(timeout=5) == "1"
+    finally:
+        answers.set()
+        waiting.join()

@@ -59,6 +59,32 @@ def test_a_caution_stands_at_its_step(onlooker: Window) -> None:
     assert "Mix not more than 30 min before use." in step
 
 
+def test_what_can_hurt_stands_right_after_the_yes_or_no(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 2, 9)).get("/day/2027-02-10").html
+    first = page[page.index("Mind first") : page.index("To do")]
+    for said in ("explosive on standing", "Someone must be here from 18:00 to 20:40", "B02 hydro"):
+        assert said in first, said
+
+
+def test_what_is_set_out_says_what_it_does_to_eyes_and_skin(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 2, 9)).get("/day/K15").html
+    step = page[page.index("set out for K15") : page.index("START K15")]
+    assert "B02 hydrogen peroxide: Danger: " in step
+    assert "Causes serious eye damage (H318)" in step
+    assert "H41" not in step
+
+
+def test_two_classes_in_one_room_at_one_time_are_told_once(onlooker: Window) -> None:
+    page = onlooker.on(date(2027, 2, 9)).get("/day/2027-02-10").text
+    assert page.count("at the same time as") == 1
+    assert "HALL LAB has K16 (R10) at the same time as K15, 18:30 to 20:10" in page
+    assert "HALL LAB has K15" in onlooker.on(date(2027, 2, 9)).get("/day/K16").text
+
+
+def test_whoever_takes_one_class_is_told_who_stays_longest(onlooker: Window) -> None:
+    assert "that day to 20:40 (K16)" in onlooker.on(date(2027, 2, 9)).get("/day/K15").text
+
+
 def test_what_is_to_do_leads_to_its_form_and_its_reasons(onlooker: Window) -> None:
     page = onlooker.on(date(2027, 1, 25)).get("/day/K07").html
     assert 'href="/do/make?line=glucose+1.0+%25+w%2Fv&amp;volume=88+cm3&amp;sources=B25' in page

@@ -3,19 +3,17 @@
 from __future__ import annotations
 
 import io
-import os
 import tempfile
-import time
 import zipfile
 from pathlib import Path
 from typing import TYPE_CHECKING
 
 import openpyxl
 import pytest
+from lists_given import bottles, give, path_of
 from old_spreadsheet import OLD, SETTLED, reader_of
-from windows import Answer, window_on
+from windows import window_on
 
-from stockroom.store.reading import reading
 from stockroom.web import held_files
 
 if TYPE_CHECKING:
@@ -30,31 +28,12 @@ def folder(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> Path:
     return tmp_path
 
 
-def give(window: Window, data: bytes | str, name: str = "old.csv", **fields: str) -> Answer:
-    """A list given, followed to where it is shown."""
-    body = data.encode() if isinstance(data, str) else data
-    sent = {"form_token": window.get("/bring-in").field("form_token"), **fields}
-    came = window.client.post("/bring-in", data=sent, files={"file": (name, body)})
-    return Answer(came.status_code, came.text, str(came.url))
-
-
-def path_of(page: Answer) -> str:
-    return page.at.removeprefix("http://127.0.0.1")
-
-
 def workbook(rows: list[list[object]]) -> bytes:
     book, out = openpyxl.Workbook(), io.BytesIO()
     for row in rows:
         book.worksheets[0].append(row)
     book.save(out)
     return out.getvalue()
-
-
-def bottles(store: object) -> list[tuple[object, ...]]:
-    """All bottles as they are kept, but for when they were entered."""
-    with reading(store) as reader:  # type: ignore[arg-type]
-        asked = "SELECT number, line_id, size, printed_text, source, remark FROM bottle ORDER BY id"
-        return [tuple(row) for row in reader.ask(asked)]
 
 
 # -- the old spreadsheet, from end to end ----------------------------------------------
@@ -236,36 +215,3 @@ def test_a_list_is_held_for_its_own_visit_alone(window: Window) -> None:
 @pytest.mark.parametrize("token", ["x", "..%2F..%2Fetc%2Fpasswd", "%F0%9F%92%A5"])
 def test_a_token_of_nothing_leads_nowhere(onlooker: Window, token: str) -> None:
     assert onlooker.get(f"/bring-in/{token}").status == 404
-
-
-def test_it_is_held_where_nobody_else_can_read(window: Window, folder: Path) -> None:
-    give(window, OLD)
-    held = next(folder.rglob("*.list"))
-    assert held.stat().st_mode & 0o077 == 0
-    assert held.parent.stat().st_mode & 0o077 == 0
-
-
-def test_a_folder_open_to_others_holds_nothing(window: Window, folder: Path) -> None:
-    give(window, OLD)
-    next(folder.rglob("*.list")).parent.chmod(0o755)
-    assert give(window, OLD).status == 503
-
-
-def test_what_is_old_is_swept_and_what_is_many_makes_room(
-    window: Window, folder: Path, monkeypatch: pytest.MonkeyPatch
-) -> None:
-    monkeypatch.setattr(held_files, "MOST_HELD", 3)
-    first = path_of(give(window, OLD))
-    old = time.time() - held_files.KEPT - 10
-    os.utime(next(folder.rglob("*.list")), (old, old))
-    for _ in range(4):
-        last = path_of(give(window, "name,amount\npotassium iodide,5 g\n"))
-    assert len(list(folder.rglob("*.list"))) == 3
-    assert (window.get(first).status, window.get(last).status) == (404, 200)
-
-
-def test_a_list_put_away_is_gone(window: Window, folder: Path) -> None:
-    address = path_of(give(window, OLD))
-    window.post(f"{address}/away")
-    assert window.get(address).status == 404
-    assert not list(folder.rglob("*.list"))

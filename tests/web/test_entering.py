@@ -86,3 +86,35 @@ def test_a_make_put_right_on_its_own_page_is_told_where_there_still_is_a_page(
     right = window.enter("put-right", entry=found[1], why="a slip", back="/bottle/S25")
     assert (right.status, "/week?said=" in right.at) == (200, True)
     assert "S25" in right.text
+
+
+def test_what_an_address_tells_is_not_looked_for_where_it_is_longer_than_any_of_ours(
+    window: Window,
+) -> None:
+    for length, told in ((200, True), (201, False)):
+        token = "x" * length
+        window.enter("draw", bottle="S13", amount="10 cm3", once=token)
+        assert ("Drew 10 cm³" in window.get("/week", said=token).text) is told
+
+
+def test_of_several_arrivals_each_can_be_put_right(window: Window) -> None:
+    came = {"line": "lithium chloride", "printed": "none", "place": "A2", "count": "3"}
+    told = window.enter("arrive", **came, back="/enter")
+    assert len(set(re.findall(r"Put entry (\d+) right", told.text))) == 3
+
+
+def test_a_make_sent_from_a_second_window_asks_first_and_is_kept_when_meant(window: Window) -> None:
+    made = {"line": "potassium permanganate 0.0200 mol/dm3", "volume": "1 dm3", "sources": "B10"}
+    window.enter("make", **made)
+    before = entries(window)
+    asked = window.enter("make", **made)
+    assert (asked.status, entries(window)) == (409, before)
+    assert "Again?" in asked.text
+    assert window.enter("make", **made, sure="yes").status == 200
+    assert entries(window) > before
+
+
+def test_a_form_says_why_initials_are_asked_where_nobody_gave_any(window: Window) -> None:
+    assert "Initials are asked once" in window.get("/do/make").text
+    window.post("/initials", initials="T1", back="/enter")
+    assert "Initials are asked once" not in window.get("/do/make").text

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import itertools
+import re
 import sqlite3
 from pathlib import Path
 from typing import TYPE_CHECKING
@@ -149,6 +150,12 @@ def test_initials_once_given_stay_for_the_visit(window: Window) -> None:
     assert window.get("/do/draw").field("by") == "T7"
     told = window.post("/do/draw", bottle="S13", amount="1 cm3")
     assert (told.status, "Drew 1 cm³" in told.text) == (200, True)
+
+
+def test_what_a_booking_wants_ordered_is_told_at_once(window: Window) -> None:
+    asked = {"recipe": "R04", "on": "2027-03-09", "time": "9:15", "groups": "200"}
+    told = window.enter("book", department="CH", **asked)
+    assert re.search(r"Order \d+ × .+ more of .+, by \d+ \w+ 2027", told.text)
 
 
 def test_a_booking_or_an_order_is_taken_back_by_a_link_beside_what_was_done(

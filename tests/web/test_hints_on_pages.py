@@ -11,7 +11,7 @@ import pytest
 
 from stockroom.web.forms.table import BY_NAME
 from stockroom.web.hint_words import ABOUT_ONE, ENTER, PAGES, POSITIONAL
-from stockroom.web.hints import hinted
+from stockroom.web.hints import for_programs, hinted
 
 SERVICE = Path(__file__).parents[2] / "stockroom" / "service"
 
@@ -166,3 +166,20 @@ def test_no_hint_of_a_use_case_names_a_command_that_has_a_page() -> None:
 def test_a_command_left_in_the_words_would_be_found() -> None:
     (said,) = _said('HINT = f"See {name}: stockroom brew {name}."')
     assert _left(said) == {"brew"}
+
+
+@pytest.mark.parametrize(
+    ("hint", "said"),
+    [
+        (
+            "Is it wanted? stockroom cancel K06 --undo",
+            "Is it wanted? take the cancelling of K06 back"
+            ' (POST /api/do/cancel-undo {"booking": "K06"})',
+        ),
+        ("stockroom plan", "The term (/term)"),
+        ("stockroom verify", "stockroom verify (at the command line)"),
+        ("Give initials with --by.", 'Give initials with "by".'),
+    ],
+)
+def test_a_program_is_told_the_request_and_not_the_command(hint: str, said: str) -> None:
+    assert for_programs(hint) == said

@@ -103,6 +103,7 @@ def test_without_initials_they_are_asked_for_and_what_was_typed_is_kept(window: 
         ("S13 100", "amount", "S13"),
         ("S99 10 cm3", "bottle", "Nearest: S09"),
         ("S13 10 cm3 for K99", "booking", "Nearest: K09"),
+        ("S13 10 cm3 K99", "booking", "K99"),
         ("S13 for K16", "amount", "how much was drawn?"),
     ],
 )

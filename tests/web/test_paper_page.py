@@ -4,10 +4,13 @@ from __future__ import annotations
 
 import hashlib
 import io
+import re
 import threading
 from datetime import date
+from html import unescape
 from pathlib import Path
 from typing import TYPE_CHECKING
+from urllib.parse import parse_qs, urlsplit
 
 import paper_reading as read
 import pytest
@@ -261,3 +264,19 @@ def test_two_never_draw_at_once_and_whoever_waits_too_long_is_told() -> None:
     assert refused.value.status_code == 503
     with alone(0.01):
         pass
+
+
+def test_a_card_asked_from_a_page_left_open_is_of_the_make_it_showed(window: Window) -> None:
+    shown = window.get("/week", of="2027-01-25").html
+    address = next(each for each in re.findall(r'"(/paper/card\.pdf\?[^"]*)"', shown))
+    what, meant = (parse_qs(urlsplit(unescape(address)).query)[key][0] for key in ("what", "meant"))
+    right = read.words(bytes_of(window, "/paper/card.pdf", what=what))
+    moved = bytes_of(window, "/paper/card.pdf", what="M01", meant=meant)
+    assert read.words(moved) == right
+
+
+def test_a_card_of_a_make_the_plan_has_no_more_is_refused(window: Window) -> None:
+    seen = "starch 0.5 % w/v, 9 cm³, 2027-01-25"
+    came = window.client.get("/paper/label.pdf", params={"what": "M03", "meant": seen})
+    assert came.status_code == 409
+    assert f"The plan changed: M03 was {seen}, and is now " in unescape(came.text)

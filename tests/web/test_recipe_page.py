@@ -42,6 +42,16 @@ def test_a_recipe_shows_lines_bars_swaps_waste_and_what_covers_it(onlooker: Wind
     assert "no assessment reference entered" in page
 
 
+def test_why_a_mixture_is_never_kept_stands_at_the_bench_and_at_clearing_away(
+    onlooker: Window,
+) -> None:
+    page = onlooker.get("/recipe/R10").html
+    bench, after = page[page.index('id="bench"') :].split('id="after"')
+    for part in (bench, after.split('id="ahead"')[0]):
+        assert "explosive on standing" in part
+    assert "two thirds" not in after
+
+
 def test_its_next_bookings_say_whether_all_is_ready(onlooker: Window) -> None:
     page = onlooker.get("/recipe/R01")
     assert "/day/K" in page.html

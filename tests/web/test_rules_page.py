@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from datetime import date
 from typing import TYPE_CHECKING
 
@@ -105,6 +106,8 @@ def test_a_rule_withdrawn_is_no_longer_there_and_stays_on_record(window: Window)
         ({"lasts": "2 d", "why": ""}, "why"),
         ({"lasts": "2 d", "stronger_than": "much", "why": "x"}, "stronger_than"),
         ({"lasts": "2 d", "colder_than_c": "cold", "why": "x"}, "colder_than_c"),
+        ({"counted_from": "moon", "why": "x"}, "counted_from"),
+        ({"factor_per_10c": "400", "why": "x"}, "factor_per_10c"),
         ({"rule": "nonsense", "lasts": "2 d", "why": "x"}, "rule"),
         ({"line": "unobtainium", "lasts": "2 d", "why": "x"}, "line"),
     ],
@@ -115,6 +118,9 @@ def test_a_rule_refused_says_so_beside_its_cell(
     page = window.enter("rule", **({"line": STARCH, "rule": "life", "by": "H1"} | typed))
     assert page.status in (404, 422)
     assert f'id="f-{field}-wrong"' in page.html
+    # the words of the field, and not the name its column has in the tables
+    wrong = page.html.split(f'id="f-{field}-wrong"')[1].split("</p>")[0]
+    assert not re.search("keeping:|[a-z]_[a-z]", wrong)
     assert kept_of(window.house.path, _DAY).changes == ()
 
 
@@ -125,6 +131,12 @@ def test_what_is_never_kept_cannot_be_made_to_keep(window: Window) -> None:
 
 
 # -- correcting and adding ------------------------------------------------------------
+
+
+def test_a_figure_no_table_holds_is_refused(window: Window) -> None:
+    asked = {"table": "departments", "cells": "department=ZZ\nleft_gbp=1e400", "why": "x"}
+    page = window.enter("add", by="H1", **asked)
+    assert (page.status, "too large to be meant" in page.text) == (422, True)
 
 
 def test_a_place_is_changed_and_what_it_was_is_told(window: Window) -> None:
@@ -270,3 +282,8 @@ def test_sent_twice_a_row_is_added_once(window: Window) -> None:
             "/rules/add/places", place="A9", why="new", by="H1", once="the same token"
         )
         assert "Added to places: A9." in page.text
+
+
+def test_what_an_address_fills_in_is_cut_to_what_a_field_takes(onlooker: Window) -> None:
+    page = onlooker.get("/rules/add/places", place="x" * 2000)
+    assert (page.status, page.field("place")) == (200, "x" * 500)

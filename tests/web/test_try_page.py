@@ -187,3 +187,9 @@ def test_the_initials_a_plan_was_kept_by_are_not_cut_and_stay_for_the_visit(wind
     window.post("/changed/keep", by="8 signs!")
     assert "by 8 signs!" in window.get("/changed").text
     assert window.get("/do/draw").field("by") == "8 signs!"
+
+
+def test_what_was_supposed_together_is_not_told_apart(onlooker: Window) -> None:
+    page = onlooker.get("/try", groups="K08", number="20", without="B01").text
+    assert "supposed together: K08 8 → 20 groups; without B01" in page
+    assert "supposed together" not in onlooker.get("/try", without="B01").text

@@ -88,7 +88,7 @@ _AT_THE_SHELF: dict[str, Does] = {
         path, int(act.words["entry"]), "slip of the pen", **said
     ),
     "make": lambda path, act, said: making.make_up(
-        path, act.words["line"], act.amount, sources=[], place=act.words["place"], **said
+        path, act.words["line"], act.amount, sources=[], place=act.words["place"], sure=True, **said
     ),
     "decant": lambda path, act, said: pouring.decant(
         path, act.bottle, act.amount, place=act.words["place"], **said

@@ -3,9 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
+from dataclasses import replace
 from datetime import date
 
 from stockroom.findings import Finding
+from stockroom.keeping.verdict import USABLE
 from stockroom.planning.amounts import say
 from stockroom.planning.buying.course import Course, lapse_days, left_on
 from stockroom.planning.buying.on_way import OnWay
@@ -37,7 +39,18 @@ def levels(
             level = _fall(facts, line, line.level, takes, shelf, coming)
             found += [level] if level else []
     found += [level for course in runs for level in _past_the_needs(course)]
-    return sorted(found, key=lambda level: (level.on, level.line))
+    told = [replace(level, not_counted=_not_counted(facts, level.line, shelf)) for level in found]
+    return sorted(told, key=lambda level: (level.on, level.line))
+
+
+def _not_counted(facts: Facts, line: str, shelf: Shelf) -> tuple[str, ...]:
+    # whoever sees the bottle stand there would not believe that nothing is left
+    judged = [(b, shelf.verdict_planned(b.number, facts.as_at)) for b in shelf.of_line(line)]
+    return tuple(
+        f"{bottle.number} {each.condition}"
+        for bottle, each in judged
+        if bottle.left and each.condition not in USABLE
+    )
 
 
 def _past_the_needs(course: Course) -> Iterator[Level]:

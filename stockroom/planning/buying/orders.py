@@ -165,6 +165,11 @@ def _why(facts: Facts, course: Course, shelf: Shelf, lead: int) -> Iterator[str]
         last, number = order_by_day(facts, waiting.take, lead), waiting.take.need.booking.number
         amount = say(waiting.amount, line.kind)
         yield f"{amount} short for {number}: order by {last} at the latest"
+    # for a drop more a whole pack may be bought: it is said which drop
+    asked = [course.crossing, *(waiting.take for waiting in course.waiting)]
+    yield from dict.fromkeys(
+        f"{take.need.booking.number}: {words}" for take in asked if take for words in take.close
+    )
     for bottle in shelf.of_line(line.key):
         judged = shelf.verdict_planned(bottle.number, facts.as_at)
         if judged.condition not in USABLE:

@@ -68,7 +68,7 @@ def compared(
     told = [
         replace(change, cause="as asked")
         if supposed and change.about is About.BOOKING
-        else _caused(change, roots, web, before, after)
+        else _caused(change, roots, web, before, after, supposed=supposed)
         for change in found
     ]
     whole = tuple(
@@ -109,7 +109,13 @@ def _of_booking(change: Change, happened: Sequence[Happened]) -> Happened:
 
 
 def _caused(
-    change: Change, roots: Sequence[_Root], web: _Web, before: KeptPlan, after: KeptPlan
+    change: Change,
+    roots: Sequence[_Root],
+    web: _Web,
+    before: KeptPlan,
+    after: KeptPlan,
+    *,
+    supposed: bool = False,
 ) -> Change:
     later = f"today is later, {after.as_at}"
     if change.about is About.BOOKING and not change.done:
@@ -121,6 +127,10 @@ def _caused(
         for place, root in enumerate(roots)
         if (rank := _rank(change, root, web)) is not None
     )
+    if supposed and len(ranked) > 1:
+        # each may do nothing alone: what was supposed together is not told apart
+        alike = [roots[place] for _, place in ranked]
+        return replace(change, cause=f"supposed together: {_named(alike)}")
     nearest = ranked[0][0][0] if ranked else _HOUSE
     missed = _missed(change, roots, web, before, after) if nearest > _OWN else ""
     if missed:

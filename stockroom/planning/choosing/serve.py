@@ -15,7 +15,7 @@ from stockroom.planning.choosing.fitness import judge_for_dilution, judge_for_ne
 from stockroom.planning.choosing.shelf import Judge, Promise, Shelf, same_house
 from stockroom.planning.choosing.strengths_held import solute_held
 from stockroom.planning.facts import Bottle, Closeness, Facts, Form, Line
-from stockroom.planning.wants import Settled, Want
+from stockroom.planning.wants import TOO_CLOSE, Settled, Want
 from stockroom.safety.bars import barred_by
 
 # a fifth of what an exact line allows, so that putting together never decides a need
@@ -113,7 +113,7 @@ class Serving:
         line = self.facts.lines[self.shelf.bottle[number].line]
         held = self.shelf.bottle[number].left
         gone = held - self.shelf.left[number] + amount
-        words = f"{say(gone, line.kind)} of {say(held, line.kind)} in {number}: too close to call"
+        words = f"{say(gone, line.kind)} of {say(held, line.kind)} in {number}: {TOO_CLOSE}"
         want.passed_over.append((number, words))
         want.reasons.append(f"{words}, count on a fresh make or bottle")
         return True

@@ -10,7 +10,7 @@ from stockroom.planning.facts import Facts, Line, Method
 from stockroom.planning.making.batches import Run
 from stockroom.planning.making.groups import Group
 from stockroom.planning.timing import Moment
-from stockroom.planning.wants import Want
+from stockroom.planning.wants import TOO_CLOSE, Want
 from stockroom.planning.windows import good_until
 
 
@@ -80,7 +80,8 @@ class Taken:
     """What a need takes of a bought line: from the shelf by bottle, and still `to_buy`.
 
     Running sums, orders and shares are made of these. `start` is the day it is
-    wanted: of the make, or of the booking itself.
+    wanted: of the make, or of the booking itself. `close` says of bottles that would have
+    done, but for so little that nothing is counted on it.
     """
 
     line: str
@@ -88,6 +89,7 @@ class Taken:
     start: date
     held: tuple[tuple[str, int], ...] = ()
     to_buy: int = 0
+    close: tuple[str, ...] = ()
 
     @property
     def amount(self) -> int:
@@ -105,7 +107,17 @@ def taken_for(want: Want, start: date, held: int, to_buy: int, bottles: list[str
     last = next(iter([*reversed(bottles), *row]), "")
     if held and last:
         row[last] = row.get(last, 0) + held
-    return Taken(want.line, want.need, start, tuple(row.items()), to_buy)
+    return Taken(want.line, want.need, start, tuple(row.items()), to_buy, _too_close(want))
+
+
+def _too_close(want: Want) -> tuple[str, ...]:
+    """What was too close to call for it, or for what it goes into, in words."""
+    asked: Want | None = want
+    found: list[str] = []
+    while asked is not None:
+        found += [words for words in asked.reasons if TOO_CLOSE in words]
+        asked = asked.under
+    return tuple(dict.fromkeys(words.partition(", count on")[0] for words in found))
 
 
 def taken_alone(want: Want, start: date) -> Taken:

@@ -12,6 +12,7 @@ from stockroom.planning.making.day_chosen import Load, day_reason
 from stockroom.planning.making.how_good import how_good
 from stockroom.planning.wants import Want
 from stockroom.safety.cautions import MAKING, Goes, cautions_about
+from stockroom.safety.formed import formed_of
 from stockroom.safety.group_cautions import cautions_for
 
 
@@ -23,7 +24,7 @@ def cautions_of(batch: Batch) -> tuple[str, ...]:
     vented = batch.line.vented_cap and not any("vented" in text.lower() for text in written)
     general = cautions_for(groups, vented=vented, never_kept=batch.line.never_kept)
     # what the substance itself asks for, unless the house has said as much
-    things = [*sources, goes_of(batch.line)]
+    things = [*sources, goes_of(batch.line), *formed_of(sources)]
     special = cautions_about(things, said=(*written, *general), steps=MAKING)
     return tuple(dict.fromkeys([*written, *general, *(each.text for each in special)]))
 

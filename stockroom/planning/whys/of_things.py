@@ -89,7 +89,7 @@ def _bottle_rows(facts: Facts, plan: Plan, bottle: Bottle) -> Iterable[str]:
     line = facts.lines[bottle.line]
     judged = verdict(bottle.record, line.rules, plan.as_at)
     left = say_left(bottle, line)
-    until = f", good until {judged.good_until}" if judged.good_until else ""
+    until = f", {judged.until_word} {judged.good_until}" if judged.good_until else ""
     yield (
         f"{bottle.number} {line.key}, {left} left in {bottle.place or 'no place'}: "
         f"{judged.condition}{until}"

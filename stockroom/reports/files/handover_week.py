@@ -102,7 +102,7 @@ def destroyed(watch: Watch) -> str:
     """When a mixture that is never kept may be mixed, and must be gone, and how."""
     return (
         f"{watch.booking} {watch.title}: mix not before {_clock(watch.not_before)}, destroy what "
-        f"is left by {_clock(watch.destroy_by)}: {watch.how}"
+        f"is left by {_clock(watch.destroy_by)}: {' '.join((*watch.dangers, watch.how))}"
     )
 
 

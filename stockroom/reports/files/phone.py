@@ -20,6 +20,7 @@ from stockroom.reports.paper.day_rows import rows_of
 from stockroom.reports.paper.day_strengths import (
     DILUTED,
     FOUND,
+    LABEL,
     Known,
     differs,
     percent_off,
@@ -127,7 +128,7 @@ def _hours(
     """What has a time: somebody there, what is never kept, what is soaked the day before."""
     for row in rows_of(known, plan, planned, answer):
         if row.key.startswith("here "):
-            yield row.what.capitalize()
+            yield f"{row.what[0].upper()}{row.what[1:]}"
     for watch in plan.watch:
         if watch.booking in {booking.number for booking in planned}:
             mixed, gone = clock(watch.not_before), clock(watch.destroy_by)
@@ -169,9 +170,21 @@ def _strengths(strengths: tuple[Known, ...]) -> Iterator[str]:
     other = [told for told in strengths if differs(told)]
     for told in other:
         yield f"{told.item} {percent_off(told.off or 0.0)}: {told.today} {told.basis}"
-    if strengths and not unchecked and not other:
-        found = all(told.basis in (FOUND, DILUTED) for told in strengths)
-        yield "Strengths as card" if found else "Strengths as card, expected"
+    # a card that asks for a range is told what of it there is
+    ranged = [told for told in strengths if told.today and told.off is None and told.card]
+    for told in ranged:
+        yield f"{told.item} {told.today}, {told.basis}"
+    rest = [told for told in strengths if told not in ranged]
+    if rest and not unchecked and not other:
+        yield f"{'Others' if ranged else 'Strengths'} as card{_how_known(rest)}"
+
+
+def _how_known(strengths: list[Known]) -> str:
+    """How it is known that they are the card's: nothing where all were found."""
+    if all(told.basis in (FOUND, DILUTED) for told in strengths):
+        return ""
+    labels = sum(told.basis == LABEL for told in strengths)
+    return f"; {labels} by label only" if labels else ", expected"
 
 
 # -- fitted to the screen ------------------------------------------------------------------------

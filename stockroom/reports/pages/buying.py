@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from datetime import date
 
 from stockroom.planning.decisions import Coming, Level, Order, Plan
-from stockroom.reports.buying_text import falling, split_in_words
+from stockroom.reports.buying_text import falling, not_counted, split_in_words
 from stockroom.reports.paper.buying_sheet import (
     Awaited,
     BuyingSheet,
@@ -165,4 +165,5 @@ def _on_its_way(row: Awaited, one: Coming) -> OnItsWay:
 
 def _falls(level: Level) -> Falls:
     left, line = amount(level.left, level.kind), amount(level.level, level.kind)
+    left = f"{left}; {not_counted(level)}" if level.not_counted else left
     return Falls(level.on, raised(level.line), left, line, level.runs_out)

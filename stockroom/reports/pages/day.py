@@ -3,19 +3,25 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Container, Iterator
-from dataclasses import dataclass
+from collections.abc import Container, Iterator, Mapping
+from dataclasses import dataclass, field
 from datetime import date
 
 from stockroom.measure.amounts import PER_UNIT, Kind
 from stockroom.planning.decisions import Make, Outcome, Plan
 from stockroom.planning.facts import Facts, Firmness
 from stockroom.planning.people import clock
+from stockroom.planning.rooms import shared_rooms
 from stockroom.reports.files.phone import Phone, phone_of
+from stockroom.reports.pages.day_dangers import for_eyes, harm_of, mind_first
 from stockroom.reports.paper.day import Day, Part, bookings_of
+from stockroom.reports.paper.day_class import SET_OUT_STEP
 from stockroom.reports.paper.day_strengths import Known, differs, how_words
 from stockroom.reports.paper.day_times import LATEST
 from stockroom.reports.words import TIED, named
+from stockroom.safety.hazards import Hazards
+
+_NO_HAZARDS: Mapping[str, Hazards] = {}
 
 Given = tuple[tuple[str, str], ...]
 
@@ -63,12 +69,16 @@ class Strength:
 
 @dataclass(frozen=True, slots=True)
 class Stretch:
-    """A part of the sheet with its things to do; `id` tells its headings from another part's."""
+    """A part of the sheet with its things to do; `id` tells its headings from another part's.
+
+    `harm` is what the things of a line of the list can do, by the key of that line.
+    """
 
     id: str
     part: Part
     to_do: tuple[ToDo, ...]
     strengths: tuple[Strength, ...]
+    harm: Mapping[str, tuple[str, ...]] = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True)
@@ -89,7 +99,7 @@ class DayPage:
     """The page. `about` names it in addresses; `earlier` and `later` are days with a booking.
 
     `waiting` are the numbers of bookings whose leftovers must be destroyed and ticked;
-    `latest` says how the times of the list are meant.
+    `latest` says how the times of the list are meant; `mind` what must be known before all.
     """
 
     sheet: Day
@@ -99,36 +109,55 @@ class DayPage:
     waiting: tuple[str, ...]
     phone: Phone
     latest: str
+    mind: tuple[str, ...]
     earlier: date | None
     later: date | None
 
 
-def day_page(known: Facts, plan: Plan, sheet: Day) -> DayPage:
-    """The page of a day, or of the one booking the sheet is about."""
+def day_page(
+    known: Facts, plan: Plan, sheet: Day, hazards: Mapping[str, Hazards] = _NO_HAZARDS
+) -> DayPage:
+    """The page of a day, or of the one booking the sheet is about.
+
+    `hazards` are by bottle, or by line; what is not among them has none said of it.
+    """
     days = sorted({b.on for b in known.bookings if b.firmness is not Firmness.DROPPED})
     mine = {each.booking for each in sheet.bookings}
+    needs = [need for need in plan.needs if need.booking.number in mine]
     return DayPage(
         sheet=sheet,
         about=sheet.single or sheet.on.isoformat(),
         stretches=tuple(
-            _stretch(plan, f"part-{number}", part, mine)
+            _stretch(plan, f"part-{number}", part, mine, hazards)
             for number, part in enumerate(sheet.parts, 1)
         ),
         booked=tuple(_booked(known, sheet)),
         waiting=tuple(w.booking for w in plan.watch if w.booking in mine and not w.ticked_by),
         phone=phone_of(known, plan, sheet.on, sheet.single),
         latest=LATEST,
+        mind=(
+            *mind_first(sheet.parts),
+            *for_eyes(needs, hazards),
+            *shared_rooms(bookings_of(known, sheet.on, sheet.single), known.bookings),
+        ),
         earlier=max((day for day in days if day < sheet.on), default=None),
         later=min((day for day in days if day > sheet.on), default=None),
     )
 
 
-def _stretch(plan: Plan, id: str, part: Part, bookings: Container[str]) -> Stretch:
+def _stretch(
+    plan: Plan, id: str, part: Part, bookings: Container[str], hazards: Mapping[str, Hazards]
+) -> Stretch:
     return Stretch(
         id,
         part,
         tuple(to_do_of(plan, each, bookings) for each in part.to_do),
         tuple(Strength(each, how_words(each), differs(each)) for each in part.strengths),
+        {
+            row.key: harm_of((n for n in plan.needs if n.booking.number == row.booking), hazards)
+            for row in part.rows
+            if row.step == SET_OUT_STEP
+        },
     )
 
 
@@ -151,7 +180,7 @@ def _ways(plan: Plan, text: str, bookings: Container[str]) -> Iterator[Way]:
         make = next((each for each in plan.makes if each.id == found[1]), None)
         if make is not None:
             yield Way("enter it as made", "/do/make", make_given(make))
-            yield Way("its card", "/paper/card.pdf", (("what", make.id),))
+            yield Way("its card", "/paper/card.pdf", (("what", make.id), ("meant", make.wanted)))
         yield _why(found[1])
     elif found := _ORDER.match(text):
         order = next((each for each in plan.orders if each.id == found[1]), None)

@@ -15,6 +15,8 @@ def form_caution(form: str) -> str:
         return f"Of what makes peroxides: {_small(PAST_TESTING.text.partition('. ')[2])}"
     if form == "discard":
         return " ".join(_text(number, step) for number, step in _TO_CLEAR)
+    if form == "destroyed":
+        return f"Tick it only once nothing of it stands. {_text(6, Step.MIX)}"
     if form in ("unknown", "name-unknown"):
         return _text(*_TO_BEGIN)
     return ""

@@ -53,3 +53,15 @@ class Part:
 
     title: str
     rows: tuple[Row, ...]
+
+
+def in_address(text: str) -> str:
+    """A text as it stands in an address: each sign but plain letters and digits by its bytes.
+
+    >>> in_address("5 % & 2 cm³")
+    '5%20%25%20%26%202%20cm%C2%B3'
+    """
+    return "".join(
+        each if each.isascii() and each.isalnum() else "".join(f"%{b:02X}" for b in each.encode())
+        for each in text
+    )

@@ -9,6 +9,7 @@ from stockroom.measure.days import format_time
 from stockroom.planning.decisions import Plan
 from stockroom.planning.facts import Booking, Facts, Firmness, Recipe
 from stockroom.planning.making.make_card import goes_of
+from stockroom.planning.never_kept import dangers_of
 from stockroom.planning.ready import readiness
 from stockroom.planning.spare import RecipeSpare
 from stockroom.reports.pages.recipe_lines import Line, changes_between, lines_of
@@ -126,7 +127,7 @@ def recipe_page(known: Facts, plan: Plan, recipe: Recipe, spare: RecipeSpare | N
         bars=tuple((raised(bar.substance), raised(bar.reason)) for bar in recipe.bars),
         swaps=tuple(_swaps(recipe)),
         handling=raised(recipe.handling),
-        at_bench=tuple(_cautions(known, recipe, Step.USE)),
+        at_bench=(*_dangers(known, recipe), *_cautions(known, recipe, Step.USE)),
         after=tuple(_after(known, recipe)),
         assessment=raised(recipe.assessment),
         uncovered="" if recipe.assessment else NO_REFERENCE,
@@ -171,14 +172,24 @@ def _cautions(known: Facts, recipe: Recipe, step: Step) -> Iterator[str]:
     for need in recipe.requirements:
         line = known.lines[need.line]
         for caution in cautions_about([goes_of(line)], said=said, steps=(step,)):
-            # no container takes what is never kept before it is destroyed
+            # no container takes what is never kept before it is destroyed; what it then is, and
+            # where it goes, its recipe knows best
+            if recipe.never_kept and caution.collects and recipe.waste:
+                continue
             first = "once destroyed: " if recipe.never_kept and caution.collects else ""
             items.setdefault((caution.number, f"{first}{caution.text}"), []).append(line.item)
     for (_, text), names in sorted(items.items()):
         yield raised(f"{', '.join(dict.fromkeys(names))}: {text}")
 
 
+def _dangers(known: Facts, recipe: Recipe) -> tuple[str, ...]:
+    lines = [known.lines[each.line] for each in recipe.requirements]
+    why = dangers_of(recipe.never_kept, recipe, lines) if recipe.never_kept else ()
+    return tuple(raised(each) for each in why)
+
+
 def _after(known: Facts, recipe: Recipe) -> Iterator[str]:
+    yield from _dangers(known, recipe)
     if recipe.never_kept:
         yield raised(f"Never kept: {recipe.never_kept}")
     if recipe.waste:

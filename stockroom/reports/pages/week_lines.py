@@ -8,7 +8,7 @@ from datetime import date
 
 from stockroom.planning.decisions import Answer, Outcome, Plan
 from stockroom.planning.facts import Drawn, Facts
-from stockroom.reports.pages.parts import Act, Pairs, Row
+from stockroom.reports.pages.parts import Act, Pairs, Row, in_address
 from stockroom.reports.pages.week_acts import (
     check_act,
     coming_acts,
@@ -84,9 +84,11 @@ class Lines:
         # what is finished was entered when it was started
         if make is None or make.on != on:
             return _row(job)
+        # numbers move when the plan does: a page left open must not print another make
+        asked = f"what={make.id}&meant={in_address(make.wanted)}"
         links: Pairs = (
-            ("card", f"/paper/card.pdf?what={make.id}"),
-            ("label", f"/paper/label.pdf?what={make.id}"),
+            ("card", f"/paper/card.pdf?{asked}"),
+            ("label", f"/paper/label.pdf?{asked}"),
         )
         return replace(_row(job), links=links, acts=(make_act(self.known, make),))
 

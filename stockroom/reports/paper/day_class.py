@@ -9,11 +9,12 @@ from dataclasses import dataclass, field, replace
 from stockroom.planning.decisions import Answer, Outcome, Plan
 from stockroom.planning.facts import Booking, Facts, Recipe
 from stockroom.planning.making.make_card import goes_of
+from stockroom.planning.never_kept import standing_of
 from stockroom.planning.people import clock
 from stockroom.planning.timing import DAY_MINUTES
 from stockroom.reports.paper.day_times import TOO_LATE, Times, minutes_to_set_out
 from stockroom.reports.paper.week_parts import made_when, tied
-from stockroom.reports.words import amount, named, raised
+from stockroom.reports.words import amount, by_bottle, named, raised
 from stockroom.safety.cautions import Caution, Step, cautions_about
 
 BEFORE_IT, HERE, WORK, SET_OUT_STEP, MIX, BEGIN, END, DESTROY = range(8)
@@ -139,7 +140,7 @@ class Lesson:
         if need.outcome in (Outcome.SHORT, Outcome.REFUSED):
             return Item(what, "NOT THERE", missing=True)
         bottles = {bottle.number: bottle for bottle in self.known.bottles}
-        drawn = [draw.bottle for draw in need.draws if draw.bottle]
+        drawn = [draw.bottle for draw in by_bottle(need.draws) if draw.bottle]
         made = [self._made(need)]
         places = [bottles[number].place for number in drawn if number in bottles]
         origin = " + ".join(filter(None, (*drawn, *made)))
@@ -165,7 +166,8 @@ class Lesson:
         for each in self.plan.watch:
             if each.booking == self.booking.number:
                 what = f"NOT BEFORE {clock(each.not_before)}: mix for {self._name()}, never kept"
-                yield self._row("mix", each.not_before, MIX, what, cautions=mixed_how(each.how))
+                how = _joined(*each.dangers, *mixed_how(each.how))
+                yield self._row("mix", each.not_before, MIX, what, cautions=how)
 
     def _never_kept_end(self) -> Iterator[Row]:
         for each in self.plan.watch:
@@ -173,10 +175,11 @@ class Lesson:
                 by = f", ticked by {each.ticked_by}" if each.ticked_by else ""
                 whose = f"what is left of {self._name()}"
                 what = f"DESTROYED BY {clock(each.destroy_by)}: {whose}, every vessel rinsed{by}"
-                # a container takes nothing of it before: these are of what then remains
-                into = self._cautions(Step.WASTE, collects=True)
+                # a container takes nothing of it before: this is of what then remains
+                # which a recipe that names its waste knows best, and the page says it below
+                into = () if self.recipe.waste else self._cautions(Step.WASTE, collects=True)
                 after = (f"Once destroyed: {' '.join(into)}",) if into else ()
-                how = (*destroyed_how(each.how), *after)
+                how = _joined(*each.dangers, *destroyed_how(each.how), standing_of(each)) + after
                 row = self._row("destroy", each.destroy_by, DESTROY, what, cautions=how)
                 yield replace(row, must=True)
 
@@ -205,6 +208,11 @@ class Lesson:
         return tuple(
             f"{'; '.join(dict.fromkeys(names))}: {caution.text}" for caution, names in items.items()
         )
+
+
+def _joined(*words: str) -> tuple[str, ...]:
+    """What is said of one thing, as one caution: a side of paper has no room for several."""
+    return (" ".join(words),) if words else ()
 
 
 _ENDING = re.compile(r"destroy|rinse|wash", re.IGNORECASE)

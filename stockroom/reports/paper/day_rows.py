@@ -11,12 +11,13 @@ from stockroom.measure.days import format_time
 from stockroom.planning.decisions import Make, Plan
 from stockroom.planning.facts import Booking, Facts
 from stockroom.planning.making.make_card import goes_of
-from stockroom.planning.people import clock, must_be_here
+from stockroom.planning.people import clock, longest_stay, must_be_here
 from stockroom.planning.ready import Readiness
 from stockroom.reports.paper.day_class import BEGIN, DESTROY_FIRST, END, HERE, WORK, Lesson, Row
 from stockroom.reports.paper.day_times import TOO_LATE, Times, times_of
 from stockroom.reports.words import amount, named, raised
 from stockroom.safety.cautions import Step, cautions_about
+from stockroom.safety.formed import formed_of
 
 
 def rows_of(
@@ -109,24 +110,25 @@ def _somebody(
 ) -> Iterator[Row]:
     """When someone must be there outside staffed hours, stretches that meet put together."""
     kept = {each.booking for each in plan.watch}
-    gaps = [
-        gap
-        for booking in bookings
-        for gap in must_be_here(
-            known,
-            booking,
-            set_out=times.set_out[booking.number],
-            never_kept=booking.number in kept,
+    # of the whole day, since whoever takes one of its classes is told who stays longest
+    gaps = {
+        each.number: must_be_here(
+            known, each, set_out=times.set_out[each.number], never_kept=each.number in kept
         )
-    ]
+        for each in known.bookings
+        if each.number in times.set_out
+    }
+    longest = longest_stay(gaps, bookings[0].number) if len(bookings) == 1 else ""
     joined: list[tuple[int, int]] = []
-    for first, last in sorted(gaps):
+    for first, last in sorted(gap for booking in bookings for gap in gaps[booking.number]):
         if joined and first <= joined[-1][1]:
             joined[-1] = (joined[-1][0], max(joined[-1][1], last))
         else:
             joined.append((first, last))
     things = [goes_of(known.lines[need.line]) for need in answer.needs]
+    things += formed_of(things)
     alone = tuple(each.text for each in cautions_about(things, steps=(Step.BEGIN,)))
     for first, last in joined:
-        what = f"someone must be here from {clock(first)} to {clock(last)}: not staffed"
+        told = f"; {longest}" if longest and last == joined[-1][1] else ""
+        what = f"someone must be here from {clock(first)} to {clock(last)}: not staffed{told}"
         yield Row(f"here {clock(first)}", first, HERE, clock(first), what, cautions=alone)

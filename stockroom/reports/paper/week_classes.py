@@ -12,10 +12,11 @@ from stockroom.planning.amounts import say_strength
 from stockroom.planning.decisions import Answer, Draw, Outcome, Plan, Watch
 from stockroom.planning.facts import EXACT, Booking, Facts, Firmness, Form, Recipe
 from stockroom.planning.known import how_known
-from stockroom.planning.people import clock, unstaffed
+from stockroom.planning.never_kept import standing_of
+from stockroom.planning.people import clock, longest_stay, unstaffed
 from stockroom.reports.paper.day_times import TO_SET_OUT, times_of
 from stockroom.reports.paper.week_parts import Class, Item, Job, made_when, tied
-from stockroom.reports.words import amount, counted, named, raised, weekday_and_day
+from stockroom.reports.words import amount, by_bottle, counted, named, raised, weekday_and_day
 
 _PASSED_OVER = " not used: "
 _SENTENCE = re.compile(r"(?<=[.!])\s+(?=[A-Z])")
@@ -58,10 +59,15 @@ class Classes:
         return self.known.recipes[booking.recipe, booking.version]
 
     def _staffed(self, booking: Booking) -> str:
+        gaps = {each.number: self._unstaffed(each) for each in self.on(booking.on)}
+        mine = gaps[booking.number]
+        spans = " and ".join(f"{clock(first)} to {clock(last)}" for first, last in mine)
+        longest = longest_stay(gaps, booking.number)
+        return f"someone must be here {spans}{f', {longest}' if longest else ''}" if spans else ""
+
+    def _unstaffed(self, booking: Booking) -> list[tuple[int, int]]:
         kept = bool(self._recipe(booking).never_kept)
-        gaps = unstaffed(self.known, booking, never_kept=kept)
-        spans = " and ".join(f"{clock(first)} to {clock(last)}" for first, last in gaps)
-        return f"someone must be here {spans}" if spans else ""
+        return unstaffed(self.known, booking, never_kept=kept)
 
     # -- the day before --------------------------------------------------------------------
 
@@ -123,7 +129,7 @@ class Classes:
         if need.outcome in (Outcome.SHORT, Outcome.REFUSED):
             reason = self.short.get(need.ref) or (need.reasons[-1] if need.reasons else "")
             return Item(key, what, raised(f"{need.outcome.value.upper()}: {reason}"), tick=False)
-        row = [self._drawn(need, draw) for draw in need.draws if draw.bottle]
+        row = [self._drawn(need, draw) for draw in by_bottle(need.draws) if draw.bottle]
         row += [self._made(need)] if need.make in self.makes else []
         if not row:
             shop = self.known.lines[need.line].form is Form.SUNDRY
@@ -171,7 +177,12 @@ class Classes:
 
 def _mix(watch: Watch) -> Job:
     key, title = f"{watch.on} mix {watch.booking}", f"{watch.booking} {raised(watch.title)}"
-    return Job(key, f"from {clock(watch.not_before)}", f"mix for {title}, not sooner: never kept")
+    what = f"mix for {title}, not sooner: never kept"
+    return Job(key, f"from {clock(watch.not_before)}", what, _dangers(watch))
+
+
+def _dangers(watch: Watch) -> tuple[str, ...]:
+    return tuple(raised(each).rstrip(".") for each in watch.dangers)
 
 
 def _destroy(watch: Watch) -> Job:
@@ -182,4 +193,6 @@ def _destroy(watch: Watch) -> Job:
         return Job(f"{watch.on} destroy {watch.booking}", "", what)
     how = raised(watch.how).rstrip(".")
     key, what = f"{watch.on} destroy {watch.booking}", f"destroy what is left of {title}"
-    return Job(key, f"by {by}", what, (how,), sign=True)
+    # in sentences of their own: what is joined by semicolons would run together
+    told = ". ".join((*_dangers(watch), how, standing_of(watch).rstrip(".")))
+    return Job(key, f"by {by}", what, (told,), sign=True)

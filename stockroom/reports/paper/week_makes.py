@@ -142,7 +142,10 @@ class Makes:
         return sorted(row, key=lambda job: job.time)
 
     def _made_and_over(self, on: date) -> list[Bottle]:
-        """The bottles made here this term of which that is the last day."""
+        """The bottles made here this term of which that is the last day.
+
+        One that stands there longer is told of today, until somebody has poured it away.
+        """
         found = []
         for bottle in standing_there(self.known.bottles):
             line, born = self.known.lines[bottle.line], bottle.record.made
@@ -152,7 +155,8 @@ class Makes:
             if kinds & _ENDS and not kinds & _LASTS:
                 until = verdict(bottle.record, line.rules, on).usable_until
                 last = until and max(self.known.calendar.on_or_before(until), born)
-                found += [bottle] if last == on else []
+                late = last is not None and last < on == self.plan.as_at
+                found += [bottle] if last == on or late else []
         return found
 
     def _tidy_bottle(self, bottle: Bottle, on: date) -> Job:
@@ -165,14 +169,22 @@ class Makes:
             for number in bottle.meant_for
             if number in self.bookings and self.bookings[number].on == on
         ]
-        last = "good today only" if bottle.record.made == on else "its last day is today"
         return Job(
             key=f"{on} tidy {bottle.number}",
             time=format_time(max(ends)) if ends and max(ends) < 1440 else "",
             what=f"{bottle.number} {named(line.item, line.strength_text)}: {doing} what is left",
-            more=(last,),
+            more=(self._last_of(bottle, on),),
             cautions=clearing_words(cautions, line),
         )
+
+    def _last_of(self, bottle: Bottle, on: date) -> str:
+        if bottle.record.made == on:
+            return "good today only"
+        rules = self.known.lines[bottle.line].rules
+        until = verdict(bottle.record, rules, on).usable_until
+        if until is None or until >= on:
+            return "its last day is today"
+        return f"its last day was {weekday_and_day(until)}"
 
     def _last_day(self, make: Make) -> date | None:
         kinds = {rule.kind for rule in self.known.lines[make.line].rules}

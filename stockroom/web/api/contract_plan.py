@@ -175,6 +175,7 @@ class Watch(Keys):
     not_before: str
     destroy_by: str
     how: str
+    dangers: list[str]
     ticked_by: str | None
 
 

@@ -19,6 +19,7 @@ from stockroom.web.forms.field import LONGEST, Field, Form
 from stockroom.web.forms.sending import MOST_INITIALS, send, trouble_of
 from stockroom.web.forms.table import FORMS
 from stockroom.web.forms.typed import AtField
+from stockroom.web.hints import for_programs
 from stockroom.web.refusals import problem
 from stockroom.web.visit import Keeping, Reading, Recording, Visit
 
@@ -77,7 +78,8 @@ def _refused(form: Form, told: AtField) -> Response:
         said = "This Idempotency-Key was sent already with something else; nothing was saved now."
         return problem(422, said, "Draw a new key for each event.")
     more = {"field": trouble.field} if trouble.field else {}
-    return problem(trouble.status, trouble.message, trouble.hint, **more)
+    hint = for_programs(trouble.hint, form)
+    return problem(trouble.status, trouble.message, hint, **more)
 
 
 def _token(form: Form, visit: Visit, key: str) -> str:

@@ -18,8 +18,8 @@ LARGEST = 64 * 1024
 LARGEST_FILE = 8 * 1024 * 1024
 """Bytes sent to a page that takes a file: a spreadsheet of ten thousand rows. Our choice."""
 
-FILES_AT = ("/bring-in", "/api/bring-in")
-"""The pages that take a file."""
+FILES_AT = ("/bring-in",)
+"""The pages that take a file; what is answered about one is a form like others."""
 
 LONGEST_QUERY = 8 * 1024
 """Bytes after the question mark of an address."""
@@ -55,8 +55,7 @@ class Bounds:
 
 def largest_at(path: str) -> int:
     """Bytes a request to that page may have."""
-    takes_file = any(path == each or path.startswith(f"{each}/") for each in FILES_AT)
-    return LARGEST_FILE if takes_file else LARGEST
+    return LARGEST_FILE if path in FILES_AT else LARGEST
 
 
 def _refused_at_once(scope: Scope, most: int) -> tuple[int, str, str] | None:

@@ -8,7 +8,7 @@ from starlette.types import ASGIApp, Message, Receive, Scope, Send
 from stockroom.web.house import House
 
 POLICY = (
-    "default-src 'none'; script-src 'self'; style-src 'self'; img-src 'self' data:;"
+    "default-src 'none'; script-src 'self'; style-src 'self'; img-src 'self';"
     " font-src 'self'; connect-src 'self'; form-action 'self'; frame-ancestors 'none';"
     " base-uri 'none'"
 )
@@ -23,10 +23,10 @@ _ALWAYS = {
     "referrer-policy": "same-origin",
     "cross-origin-opener-policy": "same-origin",
     "cross-origin-resource-policy": "same-origin",
-    "permissions-policy": "camera=(self), geolocation=(), microphone=(), payment=(), usb=()",
+    "permissions-policy": "camera=(), geolocation=(), microphone=(), payment=(), usb=()",
     "x-frame-options": "DENY",
 }
-"""The camera may be asked for by these pages, to scan a label; everything else by nobody."""
+"""Nothing of the machine is asked for by these pages: what scans a label types, like a key."""
 
 TLS_ONLY = "max-age=15724800"
 """Half a year in which a browser asks by TLS only, said where TLS is spoken."""

@@ -16,6 +16,9 @@ _KINDS: dict[type[StockroomError], tuple[str, ...]] = {
     NotEnough: ("amount",),
 }
 _MEASURED = ("amount", "strength", "date")
+_OF_TABLES = ("rule", "change", "add")
+# where a row stood is of use to whoever keeps the tables, and not beside the field itself
+_TABLE = re.compile(r"^(?P<table>[a-z]+(?:_[a-z]+)*)(?:: |, (?=[a-z_]+ \"))")
 _OPTION = re.compile(r"--[a-z][a-z-]*")
 
 
@@ -56,7 +59,23 @@ def in_labels(form: Form, message: str) -> str:
         field = field_of(form, option[0])
         return f"“{field.label}”" if field else option[0]
 
-    return _OPTION.sub(label, message)
+    return in_columns(form, _OPTION.sub(label, message))
+
+
+def in_columns(form: Form, text: str) -> str:
+    """A refusal or its hint with the columns of a table as the labels of their fields.
+
+    A column of one word is a word like any other, unless it stands at the beginning.
+    """
+    told = _TABLE.sub("", text, count=1) if form.name in _OF_TABLES else text
+    for field in form.fields:
+        # no label holds a backslash, which would mean something here
+        name, label = re.escape(field.name), f"“{field.label}”"
+        if "_" in field.name:
+            told = re.sub(rf"\b{name}\b", label, told)
+        elif form.name in _OF_TABLES:
+            told = re.sub(rf'^{name}(?= (?:"|is\b|of\b))', label, told)
+    return told
 
 
 def _named_in(form: Form, message: str) -> list[Field]:

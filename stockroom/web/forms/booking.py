@@ -5,12 +5,17 @@ from __future__ import annotations
 from stockroom.errors import BadInput
 from stockroom.service import bookings
 from stockroom.service.answers import Done
+from stockroom.service.booking_orders import with_orders
 from stockroom.service.typed import percent
 from stockroom.web.forms.field import WHY, Field, Form
 from stockroom.web.forms.typed import AtField, Typed
 
 
 def _book(typed: Typed) -> Done:
+    return with_orders(typed.path, lambda: _booked(typed), today=typed.today)
+
+
+def _booked(typed: Typed) -> Done:
     return bookings.book(
         typed.path,
         None,
@@ -34,6 +39,10 @@ def _shift(typed: Typed) -> Done:
     if not any(typed.text(name) for name in changed):
         told = f"{number}: shifted how?"
         raise AtField("on", BadInput(told, "Fill in the day, the time, the groups or how firm."))
+    return with_orders(typed.path, lambda: _shifted(typed, number), today=typed.today)
+
+
+def _shifted(typed: Typed, number: str) -> Done:
     return bookings.shift(
         typed.path,
         number,

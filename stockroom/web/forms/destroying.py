@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from stockroom.reports.pages.form_cautions import form_caution
 from stockroom.service import destroying
 from stockroom.service.answers import Done
 from stockroom.web.forms.field import Field, Form
@@ -36,7 +37,7 @@ FORMS = (
         (BOOKING,),
         _destroyed,
         subject="Bookings",
-        caution="Tick it only once nothing of it stands: no residue is left to dry.",
+        caution=form_caution("destroyed"),
     ),
     Form(
         "destroyed-undo",

@@ -62,7 +62,7 @@ FORMS = (
             ),
             Field("uncertainty", "Its standard uncertainty", "strength", hint="0.0002 mol/dm3"),
             Field("note", "How it was found", "long"),
-            sure("Keep it though it is far from the label"),
+            sure("Keep it all the same"),
             ON,
         ),
         _found,

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from stockroom.service import making, pouring
 from stockroom.service.answers import Done
-from stockroom.web.forms.field import AMOUNT, BOTTLE, ON, Field, Form
+from stockroom.web.forms.field import AMOUNT, BOTTLE, ON, Field, Form, sure
 from stockroom.web.forms.typed import Typed
 
 
@@ -15,6 +15,7 @@ def _make(typed: Typed) -> Done:
         typed.amount("volume"),
         sources=[one.strip() for one in typed.text("sources").split(",") if one.strip()],
         place=typed.or_none("place"),
+        sure=typed.yes("sure"),
         **typed.when(),
     )
 
@@ -67,6 +68,7 @@ FORMS = (
                 hint="S01, B08; left empty, the good ones going past soonest",
             ),
             Field("place", "Where it is put", "place", hint="F1"),
+            sure("It was made so, and not entered yet"),
             ON,
         ),
         _make,

@@ -10,7 +10,7 @@ from stockroom.errors import BadInput, NotAllowed, SentOtherwise, StockroomError
 from stockroom.service.answers import Done
 from stockroom.service.once import once
 from stockroom.web.door.session import LONGEST_INITIALS, with_initials
-from stockroom.web.forms.blaming import blamed, in_labels, to_tick
+from stockroom.web.forms.blaming import blamed, in_columns, in_labels, to_tick
 from stockroom.web.forms.field import Form
 from stockroom.web.forms.typed import AtField, Typed, check_plain
 from stockroom.web.visit import Visit
@@ -90,4 +90,5 @@ def trouble_of(form: Form, refused: AtField) -> Trouble:
 
     status, tick = status_of(refused.error), to_tick(form, refused.error)
     message = in_labels(form, refused.message)
-    return Trouble(refused.field, message, refused.hint, status, tick)
+    hint = in_columns(form, refused.hint) if refused.hint else ""
+    return Trouble(refused.field, message, hint, status, tick)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from stockroom.service import stock
 from stockroom.service.answers import Done
+from stockroom.service.draw_effects import draw_and_tell
 from stockroom.service.typed import drawn_of
 from stockroom.web.forms.field import AMOUNT, BOTTLE, ON, Field, Form
 from stockroom.web.forms.typed import Typed
@@ -13,7 +14,8 @@ def _draw(typed: Typed) -> Done:
     bottle, amount, gross = typed.needed("bottle"), typed.or_none("amount"), typed.or_none("gross")
     with typed.about("gross" if gross and not amount else "amount"):
         said = drawn_of(bottle, amount, gross, typed.or_none("tare"))
-    return stock.draw(typed.path, bottle, said, booking=typed.or_none("booking"), **typed.when())
+    booking = typed.or_none("booking")
+    return draw_and_tell(typed.path, bottle, said, booking=booking, **typed.when())
 
 
 def _spill(typed: Typed) -> Done:

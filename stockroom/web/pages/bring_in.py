@@ -10,7 +10,7 @@ from fastapi import APIRouter, HTTPException, Path
 from starlette.datastructures import FormData, UploadFile
 from starlette.responses import Response
 
-from stockroom.errors import BadInput, StockroomError
+from stockroom.errors import BadInput, StockroomError, StoreTrouble
 from stockroom.reports.pages.bring_in import BringIn, bring_in_page, done_of
 from stockroom.service.bring_in import COLUMN, Meant, bring_in, look_at, meant
 from stockroom.web.forms.sending import Trouble, remember_initials
@@ -21,6 +21,9 @@ from stockroom.web.visit import Keeping, Reading, Recording, Sent, Visit, back_t
 router = APIRouter(include_in_schema=False)
 
 Token = Annotated[str, Path(max_length=80)]
+
+ALL_IN = "The rows are in the store, but this page cannot note which."
+HERE_ALREADY = "Given again, the list shows them as here already."
 
 _OPTION = re.compile(r"--(sheet|column|encoding|answer)\b")
 _CHOSEN, _TYPED, _COLUMN = "chosen.", "typed.", "column."
@@ -114,8 +117,15 @@ def agreed(visit: Keeping, token: Token, sent: Sent) -> Response:
     except StockroomError as error:
         return _page(visit, token, known, trouble=_trouble("agree", error))
     # sent twice, the second finds its rows here already and adds none
-    rows = (*known.said.done, *done_of(done.read, done.written))
-    keep(known, replace(known.said, done=rows))
+    said = replace(known.said, done=(*known.said.done, *done_of(done.read, done.written)))
+    try:
+        keep(known, said)
+    except StoreTrouble as error:
+        if not done.written:
+            return _page(visit, token, known, trouble=_trouble("agree", error))
+        # the rows were saved before: nobody is to think that they were not
+        told = StoreTrouble(f"{ALL_IN} {error.message}", f"{error.hint} {HERE_ALREADY}")
+        return _page(visit, token, Held(known.path, said), trouble=_trouble("agree", told))
     return back_to(f"/bring-in/{token}")
 
 

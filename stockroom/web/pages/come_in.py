@@ -48,8 +48,9 @@ def knock(request: Request, sent: Sent) -> Response:
     values, keeper = values_of(sent), _keeper(request)
     if request.state.session.role is not Role.NOBODY:
         return back_to(values.get("back", "/"))
+    typed = values.get("initials", "").strip()
     try:
-        initials = _initials(values.get("initials", ""))
+        initials = _initials(typed) if typed else ""
     except BadInput as error:
         return _page(request, values, _trouble("initials", error, 422))
     address = request.client.host if request.client else ""
@@ -63,7 +64,11 @@ def knock(request: Request, sent: Sent) -> Response:
         return _page(request, values, _trouble("passphrase", told, 403))
     role, generation = found
     keeper.pace.came_in(address)
-    log.warning("%s came in from %s with the role %s", initials, address, role.words)
+    if role > Role.READ and not initials:
+        # who only reads enters nothing, and is not asked who it is
+        told = BadInput("No initials are given.", "Write yours: they stand with what you enter.")
+        return _page(request, values, _trouble("initials", told, 422))
+    log.warning("%s came in from %s with the role %s", initials or "-", address, role.words)
     request.state.session = come_in(role, generation, initials)
     return back_to(values.get("back", "/"))
 

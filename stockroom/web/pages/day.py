@@ -32,4 +32,5 @@ def one_day(visit: Reading, ref: Annotated[str, Path(max_length=200)]) -> Respon
 
 def _shown(visit: Visit, ref: str | None) -> Response:
     held = day_held(visit.path, DAY, day_of, ref, as_at=visit.today)
-    return visit.page("day.html", day_page(held.asked.known, held.asked.plan, held.sheet))
+    page = day_page(held.asked.known, held.asked.plan, held.sheet, held.hazards)
+    return visit.page("day.html", page)

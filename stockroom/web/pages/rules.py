@@ -11,7 +11,7 @@ from stockroom.reports.pages.rules import rules_page
 from stockroom.reports.pages.rules_cells import cells_of
 from stockroom.reports.pages.rules_line import line_page
 from stockroom.service.rules import house_kept, line_kept
-from stockroom.web.forms.field import Form
+from stockroom.web.forms.field import LONGEST, Form
 from stockroom.web.forms.house import add_form, change_form, rule_form
 from stockroom.web.forms.sending import Trouble, remember_initials, send, trouble_of
 from stockroom.web.forms.typed import AtField
@@ -39,7 +39,7 @@ def rules(visit: Reading, line: Words = "", what: Words = "") -> Response:
 def adding(visit: Keeping, table: Table) -> Response:
     """The form for a row of a table, with whatever the address already says filled in."""
     form, asked = add_form(table), visit.request.query_params
-    values = form.usual() | {key: value for key, value in asked.items() if form.field(key)}
+    values = form.usual() | {key: text[:LONGEST] for key, text in asked.items() if form.field(key)}
     return _shown(visit, form, f"/rules/add/{table}", values, asked.get("back", _section(table)))
 
 

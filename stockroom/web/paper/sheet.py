@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, replace
 from typing import Any, NoReturn
@@ -9,6 +10,7 @@ from typing import Any, NoReturn
 from stockroom.errors import BadInput, StockroomError
 from stockroom.reports.paper.kinds import Kind
 from stockroom.reports.typesetting import PAPERS
+from stockroom.service.make_meant import make_now
 from stockroom.service.printing import held_against
 from stockroom.service.printing import printed as with_number
 from stockroom.settings import StoreAt
@@ -17,6 +19,8 @@ from stockroom.web.forms.field import Field, Form
 from stockroom.web.forms.typed import AtField, Typed
 from stockroom.web.making import alone, drawn
 from stockroom.web.visit import Visit
+
+_MAKE = re.compile(r"[Mm]\d{1,9}")
 
 USUAL = ("A4", "Letter")
 """The papers of a sheet that does not say otherwise."""
@@ -70,7 +74,7 @@ class Sheet:
 
 def ready(visit: Visit, sheet: Sheet, values: Mapping[str, str]) -> Ready:
     """The sheet asked for, held against the copy printed last. Writes nothing. Raises: AtField."""
-    typed = _typed(visit, sheet, values)
+    typed = _typed(visit, sheet, as_shown(visit, values))
     with_paper = _paper_of(sheet, typed)
     try:
         made = sheet.make(typed)
@@ -80,6 +84,20 @@ def ready(visit: Visit, sheet: Sheet, values: Mapping[str, str]) -> Ready:
     except StockroomError as error:
         raise AtField(blamed(sheet.form, values, error), error) from error
     return replace(made, sheet=held, paper=with_paper)
+
+
+def as_shown(visit: Visit, values: Mapping[str, str]) -> Mapping[str, str]:
+    """The values with the number a make has by now, where it is said what was shown beside it.
+
+    Raises: AtField where the plan has no such make any more.
+    """
+    meant, number = values.get("meant", "").strip(), values.get("what", "")
+    if not meant or not _MAKE.fullmatch(number.strip()):
+        return values
+    try:
+        return {**values, "what": make_now(visit.path, number, meant, as_at=visit.today)}
+    except StockroomError as error:
+        raise AtField("what", error) from error
 
 
 def printed(visit: Visit, made: Ready) -> tuple[str, bytes]:

@@ -8,6 +8,7 @@ const KEYS = {
 const OFF = "stockroom-keys-off";
 const WAIT = 150; // ms without a key before names are asked for
 const QUICK = 80; // ms between the keys of a scanner; hardly a hand is so fast
+const SIGNS = 4; // a scanner sends at least so many, Enter among them: our choice
 const AGAIN = 4000; // ms until a button may be pressed again where the page stayed
 
 // -- names while somebody types ------------------------------------------------------------
@@ -93,7 +94,7 @@ function isTyping(target) {
 function scan(event) {
   const quick = event.timeStamp - last < QUICK;
   last = event.timeStamp;
-  if (event.key === "Enter" && quick && scanned.length > 1) {
+  if (event.key === "Enter" && quick && scanned.length + 1 >= SIGNS) {
     event.preventDefault();
     // with room for an amount behind it; Enter alone goes to the bottle
     line.value = `${scanned} `;
@@ -104,7 +105,8 @@ function scan(event) {
     return false;
   }
   scanned = quick ? scanned + event.key : event.key;
-  return quick;
+  // two keys of a quick hand are a way to a page; the third of a run is a scanner's
+  return scanned.length >= SIGNS - 1;
 }
 
 function onKey(event) {

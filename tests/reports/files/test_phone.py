@@ -122,6 +122,16 @@ def test_all_ready_is_yes() -> None:
     assert (phone.ready, phone.lines[1:]) == (True, ("Ready: YES", "Strengths as card"))
 
 
+def test_a_label_nobody_checked_is_not_passed_off_as_the_cards(
+    college: tuple[Facts, Plan],
+) -> None:
+    evening = date(2027, 2, 10)
+    assert "Strengths as card; 3 by label only" in phone_of(*college, evening, "K16").lines
+    # the card asks for 90-100 vol: what there is of it is told
+    told = phone_of(*college, evening, "K15").lines
+    assert {"hydrogen peroxide 100 vol, label", "Others as card, expected"} <= set(told)
+
+
 words = st.text(st.characters(exclude_categories=("Cs", "Cc")), max_size=200)
 
 

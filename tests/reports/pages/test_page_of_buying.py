@@ -75,3 +75,10 @@ def test_levels_stand_by_their_day_and_money_over_is_known_by_its_code() -> None
     assert [one.on.day for one in told.falls] == [2, 9]
     assert told.over == {"CH"}
     assert (told.all_spent, told.all_planned) == ("£1.01", "£9.11")
+
+
+def test_a_line_that_is_out_names_the_bottles_that_are_not_counted() -> None:
+    why = ("B35 no date",)
+    level = Level("salt", "salt", date(2027, 2, 2), 0, 1, Kind.MASS, not_counted=why)
+    (one,) = buying_page_of(replace(PLAN, levels=(level,))).falls
+    assert one.left.endswith("; not counted: B35 no date")

@@ -132,7 +132,11 @@ def test_cautions_stand_beside_their_step(page_of: PageOf) -> None:
     assert "excess sodium chloride" in by_key["K27 destroy"]
     # no container takes anything that is not destroyed yet
     assert "Oxidising" not in by_key["end 15:10"]
-    assert "Once destroyed: silver nitrate: Oxidising" in by_key["K27 destroy"]
+    # nor is what is destroyed oxidising waste any more: where it goes, the recipe says
+    assert "Oxidising" not in by_key["K27 destroy"]
+    for step in ("K27 mix", "K27 destroy"):
+        assert "can turn explosive on standing" in by_key[step]
+    assert "Mixed at 13:00 it has stood 2 h 40 min by then" in by_key["K27 destroy"]
     # what must never meet is said where clearing away begins
     assert "Ammonia never with bleach" in by_key["end 15:10"]
     assert "chloramines" not in by_key["K27 destroy"]

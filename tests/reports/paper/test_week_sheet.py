@@ -427,3 +427,16 @@ def test_a_class_on_a_saturday_brings_its_day_onto_the_sheet() -> None:
     (out,) = shelf(week, "01-30", "set out")
     whence = out.items[0].whence.replace("\u00a0", " ")
     assert whence == "from S01, expected 0.0987 mol/dm³ (found 2027-01-04)"
+
+
+def test_what_is_past_stands_today_until_it_is_poured_away() -> None:
+    starch = solution(0.1, "starch", rules=(keeps(3),))
+    facts = house(
+        [starch], bottles=[made_bottle("S28", starch, cm3(500), "01-18")],
+        start=date(2027, 1, 4), as_at=date(2027, 1, 27),
+    )  # fmt: skip
+    week = sheet(facts)
+    (job,) = shelf(week, "01-27", "tidy")
+    assert whats((job,)).startswith("S28 starch")
+    assert told(job) == "its last day was Thu 21 Jan"
+    assert not shelf(week, "01-28", "tidy")

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+from datetime import date
 from typing import TYPE_CHECKING, Any
 
 import pytest
@@ -82,6 +83,13 @@ def test_a_refusal_names_its_field_and_saves_nothing(window: Window) -> None:
         came = do(window, "draw", DRAW | sent)
         assert (came[0], came[1].get("field")) == (status, field), sent
         assert window.client.get("/api/shelf").content == before, sent
+
+
+def test_the_hint_of_a_refusal_names_the_request_and_not_the_command(window: Window) -> None:
+    on_its_day = window.on(date(2027, 1, 12))
+    _, told = do(on_its_day, "destroyed", {"booking": "K01", "by": "T1"})
+    assert "POST /api/do/discard" in told["hint"]
+    assert "stockroom " not in told["hint"]
 
 
 def test_a_key_that_is_no_field_is_refused_with_those_that_are(window: Window) -> None:

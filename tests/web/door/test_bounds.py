@@ -49,8 +49,8 @@ def test_the_api_is_told_of_it_as_a_problem(onlooker: Window) -> None:
 
 
 def test_a_page_that_takes_a_file_takes_a_larger_one() -> None:
-    assert largest_at("/bring-in") == largest_at("/bring-in/answers") == LARGEST_FILE
-    assert largest_at("/bring-inn") == largest_at("/do/draw") == LARGEST
+    assert largest_at("/bring-in") == LARGEST_FILE
+    assert {largest_at(path) for path in ("/bring-inn", "/bring-in/x", "/do/draw")} == {LARGEST}
 
 
 @pytest.mark.parametrize("path", ["/shelf?what=" + "a" * 9000, "/" + "a" * 3000])

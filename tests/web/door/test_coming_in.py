@@ -79,9 +79,16 @@ def test_the_initials_typed_are_kept_when_the_passphrase_is_wrong(room: Room) ->
     assert 'value="AB"' in room.come_in("wrong", initials="AB").text
 
 
+@pytest.mark.parametrize("initials", ["", "   "])
+def test_who_only_reads_needs_no_initials(room: Room, initials: str) -> None:
+    assert room.come_in(WORDS[Role.READ], initials=initials).status_code == 303
+    page = room.client.get("/week").text
+    assert "whose initials?" not in page
+
+
 @pytest.mark.parametrize("initials", ["", "   ", "far too long", "a\x07b"])
 def test_what_are_no_initials_is_told_beside_their_field(room: Room, initials: str) -> None:
-    refused = room.come_in(WORDS[Role.READ], initials=initials)
+    refused = room.come_in(WORDS[Role.RECORD], initials=initials)
     assert refused.status_code == 422
     assert 'id="door-initials-wrong"' in refused.text
 
