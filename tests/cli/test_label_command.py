@@ -73,7 +73,8 @@ def test_a_stronger_make_has_another_hazard_text(own: Path, stockroom: Stockroom
     told = stockroom("found", "S07", "0.55 mol/dm3", *sure, store=own)
     assert told.code == 0, told.err
     strong = stockroom("label", "S07", "--json", store=own).json["labels"][0]
-    assert strong["strength"] == "0.55 mol/dm³"
+    # as many figures as its line has: 0.400
+    assert strong["strength"] == "0.550 mol/dm³"
     assert strong["known"] == "found 4 Jan 2027"
     assert [code for code, _ in weak["hazards"]["statements"]] == ["H315", "H319"]
     assert [code for code, _ in strong["hazards"]["statements"]] == ["H314"]

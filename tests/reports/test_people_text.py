@@ -117,7 +117,7 @@ def test_a_watch_is_dated_also_past_midnight() -> None:
     assert watch == {
         "booking": "K16", "on": "2027-01-12", "title": "Silver mirror",
         "not_before": "2027-01-12T23:00", "destroy_by": "2027-01-13T00:10",
-        "how": "Drown it in salt water.", "ticked_by": None,
+        "how": "Drown it in salt water.", "dangers": [], "ticked_by": None,
     }  # fmt: skip
 
 

@@ -53,6 +53,10 @@ def knock(request: Request, sent: Sent) -> Response:
         initials = _initials(typed) if typed else ""
     except BadInput as error:
         return _page(request, values, _trouble("initials", error, 422))
+    if not values.get("passphrase"):
+        # nobody tried anything: it does not count as a try
+        told = BadInput("No passphrase is given.", "Whoever keeps the house knows it.")
+        return _page(request, values, _trouble("passphrase", told, 422))
     address = request.client.host if request.client else ""
     seconds = keeper.pace.wait(address)
     if seconds:

@@ -58,7 +58,7 @@ def test_whoever_comes_in_gets_a_number_nobody_had_before(room: Room) -> None:
 
 
 def test_a_wrong_passphrase_is_told_beside_its_field_and_not_shown_again(room: Room) -> None:
-    for typed in ("", "herring", "seven dull grey heron"):
+    for typed in ("herring", "seven dull grey heron"):
         refused = room.come_in(typed, initials="AB")
         assert refused.status_code == 403, typed
         assert 'id="door-passphrase-wrong"' in refused.text
@@ -228,3 +228,10 @@ def test_a_day_nobody_can_look_from_is_told_beside_it(window: Window, day: str) 
     assert refused.status == 422
     assert 'id="page-as_at-told"' in refused.html
     assert f'id="page-as_at" name="as_at" value="{day}"' in refused.html
+
+
+def test_no_passphrase_at_all_is_told_and_is_no_try(room: Room) -> None:
+    for _ in range(30):
+        refused = room.come_in("")
+        assert (refused.status_code, refused.text.count('id="door-passphrase-wrong"')) == (422, 1)
+    assert room.come_in(WORDS[Role.RECORD]).status_code == 303
