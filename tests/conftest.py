@@ -18,6 +18,7 @@ and only tests that open them are run: see `server_stores.py`.
 from __future__ import annotations
 
 import contextlib
+import gc
 import hashlib
 import io
 import json
@@ -32,6 +33,10 @@ from typing import TYPE_CHECKING, Any, Protocol
 import pytest
 import server_stores
 from hypothesis import settings
+
+# a worker holds a great many objects that stay, and looking through them again and again takes
+# about a fourteenth of all its time
+gc.set_threshold(100_000, 50, 100)
 
 if TYPE_CHECKING:
     from doors import Room
