@@ -5,16 +5,12 @@ from __future__ import annotations
 from collections.abc import Callable
 from datetime import date
 
-from stockroom.errors import StockroomError
 from stockroom.measure.days import spell_day
 from stockroom.planning.buying.packs import NO_PACK
-from stockroom.planning.decisions import Order, Plan
+from stockroom.planning.decisions import Order
 from stockroom.service.answers import Done
-from stockroom.service.known import known_from
-from stockroom.service.replayed import replayed_plan
-from stockroom.service.sheets import known_and_planned
+from stockroom.service.plans_told import with_plans
 from stockroom.settings import StoreAt
-from stockroom.store.engine import joined, reader_in
 
 _Key = tuple[str, str]
 _Packs = tuple[int, date]
@@ -22,26 +18,10 @@ _NONE: _Packs = (0, date.max)
 
 
 def with_orders(path: StoreAt, change: Callable[[], Done], *, today: date) -> Done:
-    """Carry out a change, and tell what it wants ordered more, less or sooner. Raises: as it does.
-
-    Nothing is added where the plan cannot be made, since what was saved is saved.
-    """
-    with joined(path) as session:
-        before = _orders(lambda: known_and_planned(path, as_at=today)[1])
-        done = change()
-        # on the writer's own connection, which sees what is not saved yet; whoever asks for the
-        # plan next has the same facts, and need not wait for it again
-        after = _orders(lambda: replayed_plan(known_from(reader_in(session), today)))
-    if before is None or after is None:
-        return done
-    return done.telling(orders_told(before, after))
-
-
-def _orders(make: Callable[[], Plan]) -> tuple[Order, ...] | None:
-    try:
-        return make().orders
-    except StockroomError:
-        return None
+    """Carry out a change, and tell what it wants ordered more, less or sooner. Raises: as that."""
+    return with_plans(
+        path, change, lambda before, after: orders_told(before.orders, after.orders), today=today
+    )
 
 
 def orders_told(before: tuple[Order, ...], after: tuple[Order, ...]) -> tuple[str, ...]:

@@ -2,22 +2,17 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
 from datetime import date
 
-from stockroom.errors import StockroomError
 from stockroom.measure.amounts import Amount
 from stockroom.measure.by_eye import ByEye
 from stockroom.measure.formats import format_amount
-from stockroom.planning.decisions import Short
+from stockroom.planning.decisions import Plan, Short
 from stockroom.service.answers import Done
 from stockroom.service.drawing import draw
 from stockroom.service.estimates import Weighed
-from stockroom.service.known import known_from
-from stockroom.service.replayed import replayed_plan
+from stockroom.service.plans_told import with_plans
 from stockroom.settings import StoreAt
-from stockroom.store.engine import joined, reader_in
-from stockroom.store.reading import Reader
 
 _TOLD = 6
 """Needs that are named; more are counted. Our choice."""
@@ -33,26 +28,17 @@ def draw_and_tell(
     today: date,
     by: str,
 ) -> Done:
-    """Draw as `drawing.draw`, and say which bookings are short by it. Raises: as `draw`.
-
-    It makes the plan twice, so it is for somebody who reads the answer.
-    """
-    with joined(path) as session:
-        before = _short(reader_in(session), today)
-        done = draw(path, bottle, amount, booking=booking, on=on, today=today, by=by)
-        session.flush()
-        after = _short(reader_in(session), today)
-    told = _newly(before, after) if before is not None and after is not None else ()
-    return replace(done, details=(*done.details, *told))
+    """Draw as `drawing.draw`, and say which bookings are short by it. Raises: as `draw`."""
+    return with_plans(
+        path,
+        lambda: draw(path, bottle, amount, booking=booking, on=on, today=today, by=by),
+        lambda before, after: _newly(_short(before), _short(after)),
+        today=today,
+    )
 
 
-def _short(reader: Reader, today: date) -> dict[str, Short] | None:
-    """What the plan has as short, by its need; None where no plan can be made."""
-    try:
-        return {each.ref: each for each in replayed_plan(known_from(reader, today)).short}
-    except StockroomError:
-        # what was drawn is drawn, whatever the plan makes of it
-        return None
+def _short(plan: Plan) -> dict[str, Short]:
+    return {each.ref: each for each in plan.short}
 
 
 def _newly(before: dict[str, Short], after: dict[str, Short]) -> tuple[str, ...]:
